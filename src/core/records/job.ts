@@ -1,0 +1,134 @@
+// A job as read: every decision resolved, defaults in place. Types only; reading stands in job/.
+import type { Vec3 } from "../surface/surface.ts";
+import type { Fabric } from "./fabric.ts";
+import type { EdgeKind } from "./foundForm.ts";
+import type { Flaw } from "./roll.ts";
+
+/** A mesh as a program wrote it, before any check: polygons of any size, names kept, its own unit and axis. */
+export interface MeshSource {
+  /** 3*nV */
+  xyz: Float64Array<ArrayBuffer>;
+  /** Polygons, 0-based, flat: corners of face f are faceVertex[faceStart[f] … faceStart[f+1]). */
+  faceStart: Uint32Array<ArrayBuffer>;
+  faceVertex: Uint32Array<ArrayBuffer>;
+  /** Named polylines; name null where the file gives none. */
+  lines: { name: string | null; vertices: number[] }[];
+  /** Named points (fixed points). */
+  points: { name: string | null; vertices: number[] }[];
+  unit: "m" | "mm" | "cm" | "ft" | "in";
+  up: "z" | "y";
+  outside: "up" | "down" | "normals";
+}
+
+export interface CableSpec {
+  /** Catalogue id, or "job". */
+  id: string;
+  /** kN */
+  EA: number | null;
+  minBreakingForce: number | null;
+  /** mm */
+  diameter: number | null;
+  /** kg/m */
+  mass: number | null;
+  alpha: number | null;
+}
+
+export interface EdgeDecision {
+  kind?: EdgeKind;
+  /** kN; null: best balance */
+  force?: number | null;
+  cable?: CableSpec;
+  prestretched?: boolean;
+}
+
+export interface AnchorDecision {
+  name: string;
+  vertex?: number;
+  at?: Vec3;
+  support?: Vec3;
+  cutBack?: number;
+}
+
+/** A seam end or a point a seam runs through: a place along an edge of the form, 0…1 by arc length. */
+export interface EdgePlace {
+  edge: string;
+  at: number;
+}
+
+export interface SeamDecision {
+  layout: "auto" | "bands" | "gores" | "pairs";
+  from: string | null;
+  to: string | null;
+  count: number | "auto";
+  pairs: EdgePlace[][];
+  /** mm, flat width with allowances; null: the roll's usable width */
+  maxWidth: number | null;
+  /** mm; null: no limit but the roll's length */
+  maxLength: number | null;
+}
+
+/** mm */
+export interface Allowances {
+  /** Finished overlap of a seam. */
+  seam: number;
+  seamOn: "both" | "one";
+  pocket: number;
+  pocketStrip: boolean;
+  /** Set-back, positive takes cloth away. */
+  clamp: number;
+  hem: number;
+}
+
+export interface RollDecision {
+  id: string;
+  width: number;
+  selvedge: number;
+  length: number;
+  batch: string | null;
+  start: number;
+  flaws: Flaw[];
+}
+
+export interface NestDecision {
+  steps: number;
+  seconds: number | null;
+  seed: number;
+  gap: number;
+  turn: boolean;
+  bite: number | null;
+  pins: { panel: string; roll: string; x: number; y: number; rotation: 0 | 180 }[];
+}
+
+export interface PapersDecision {
+  date: string;
+  drawnBy: string;
+  checkedBy: string;
+  sheet: "A4" | "A3" | "Letter" | "Tabloid";
+  units: "metric" | "imperial";
+}
+
+/** Everything a plan needs but the mesh itself. */
+export interface Job {
+  title: string;
+  issue: string;
+  /** File name of the mesh as the job names it, or "inline". */
+  meshName: string;
+  prestress: { warp: number; weft: number };
+  /** Warp direction before seams exist; null: along the strips. */
+  warp: Vec3 | null;
+  settle: boolean;
+  fabric: Fabric;
+  edges: Record<string, EdgeDecision>;
+  anchors: AnchorDecision[];
+  seams: SeamDecision;
+  panels: Record<string, { batch?: string; warp?: number }>;
+  /** Engineering strain of the whole compensation by batch, or "default". */
+  compensation: Record<string, { warp: number; weft: number }>;
+  /** Fade in m; null: not decompensated. */
+  decompensation: { clamped: number | null; ring: number | null; cable: number | null };
+  allowances: Allowances;
+  /** null: as many rolls as needed of the fabric's width and length. */
+  rolls: RollDecision[] | null;
+  nest: NestDecision;
+  papers: PapersDecision;
+}

@@ -1,0 +1,58 @@
+// What the rolls station takes and hands on. Types only.
+import type { Ring } from "./flatPanel.ts";
+
+/** A piece of cloth to be nested. */
+export interface NestPiece {
+  id: string;
+  fabric: string;
+  batch: string | null;
+  cut: Ring;
+}
+
+/** Zone not to be used: x from the roll's start, y from the inner edge of the selvedge. mm */
+export interface Flaw {
+  x: number;
+  y: number;
+  length: number;
+  width: number;
+}
+
+/** A roll in the store. mm */
+export interface StockRoll {
+  id: string;
+  fabric: string;
+  batch: string | null;
+  width: number;
+  selvedge: number;
+  length: number;
+  /** Trim at the start. */
+  start: number;
+  flaws: Flaw[];
+  /** True for a roll that is taken for granted, not listed in the job: as many as needed. */
+  assumed: boolean;
+}
+
+/** A placed piece: R(rotation)·point + (x, y). mm */
+export interface Placement {
+  panel: string;
+  rotation: 0 | 180;
+  x: number;
+  y: number;
+}
+
+/** A roll with what lies on it; x along the roll, y = 0 the inner edge of the selvedge, outer face up. mm */
+export interface NestedRoll {
+  id: string;
+  fabric: string;
+  batch: string | null;
+  width: number;
+  usableWidth: number;
+  length: number;
+  used: number;
+  gap: number;
+  flaws: Flaw[];
+  placements: Placement[];
+  /** cut area / (used × width) */
+  utilisation: number;
+  lowerBound: number;
+}

@@ -1,0 +1,59 @@
+// What the seams station hands on: the surface cut into strips, and the seams between them. Types only.
+import type { Surface } from "../surface/surface.ts";
+
+/** One side of a strip: the run of its outline that belongs to one seam or one edge of the form. */
+export interface StripSide {
+  kind: "seam" | "cable" | "clamped" | "free";
+  /** Seam id or edge id. */
+  id: string;
+  /** Vertices of the cut surface, counter-clockwise around the strip on its outer face, both ends included. */
+  vertices: number[];
+}
+
+/** A strip of the surface that becomes one panel. */
+export interface Strip {
+  /** P1, P2, … in reading order from one side of the roof to the other. */
+  id: string;
+  /** Triangles of the cut surface. */
+  triangles: number[];
+  /** Sides in order, counter-clockwise; each begins where the one before ends; together the whole outline. */
+  sides: StripSide[];
+  /** The strip's two ends: all vertices of the sides there, corners too, or the one vertex of a pointed end. */
+  from: number[];
+  to: number[];
+}
+
+/** A seam: exactly two strip sides that share all their points. */
+export interface Seam {
+  /** S1, S2, … */
+  id: string;
+  /** Id of the continuous weld it is part of: the first seam's id. */
+  weld: string;
+  /** Inner cable that lies on it, or null. */
+  cable: string | null;
+  /** Vertices of the cut surface along it. */
+  vertices: number[];
+  /** The two strips, the upper one (water runs off it) first is not promised: see upper. */
+  strips: [string, string];
+  upper: string;
+  /** m */
+  length: number;
+}
+
+/** What was laid out, in words and numbers for the papers. */
+export interface LayoutChoice {
+  layout: "bands" | "gores" | "pairs" | "whole";
+  from: string;
+  to: string;
+  count: number;
+  why: string;
+}
+
+/** Output of the seams station. */
+export interface StripLayout {
+  /** The form's surface with all seam crossings inserted: its first vertices are the form's own, same indices. */
+  surface: Surface;
+  seams: Seam[];
+  strips: Strip[];
+  choices: LayoutChoice[];
+}

@@ -1,0 +1,18 @@
+import { defineConfig } from "vite";
+
+// One build: the command line and the bench as plain Node files. Packages stay in node_modules.
+export default defineConfig({
+  build: {
+    ssr: true,
+    target: "node20",
+    outDir: "dist",
+    emptyOutDir: false,
+    sourcemap: true,
+    minify: false,
+    rollupOptions: {
+      input: { seamstay: "src/cli/seamstay.ts", bench: "test/bench/bench.ts" },
+      output: { entryFileNames: "[name].js", chunkFileNames: "chunks/[name].js" },
+    },
+  },
+  test: { include: ["test/**/*.test.ts"], testTimeout: 60_000, hookTimeout: 60_000 },
+} as Parameters<typeof defineConfig>[0]);
