@@ -42,7 +42,12 @@ export class PlanError extends Error {
   readonly where: string | string[];
   readonly facts: Readonly<Record<string, number | string>>;
 
-  constructor(code: string, message: string, where: string | string[] = [], facts: Record<string, number | string> = {}) {
+  constructor(
+    code: string,
+    message: string,
+    where: string | string[] = [],
+    facts: Record<string, number | string> = {},
+  ) {
     super(message);
     this.name = "PlanError";
     this.code = code;

@@ -30,7 +30,15 @@ export interface FactsForm {
   vertices: Vec3[];
   triangles: Vec3[];
   stress: { warp: number; weft: number };
-  edges: { id: string; kind: EdgeKind; vertices: number[]; force: number | null; reaction: { resultant: Vec3; greatest: number } | null; forceFrom: string; length: number }[];
+  edges: {
+    id: string;
+    kind: EdgeKind;
+    vertices: number[];
+    force: number | null;
+    reaction: { resultant: Vec3; greatest: number } | null;
+    forceFrom: string;
+    length: number;
+  }[];
   anchors: { id: string; vertex: number; isolated: boolean }[];
   residual: Residual;
   area: number;

@@ -43,9 +43,15 @@ export function buildStiffness(c: ClothConstants): ClothStiffness {
  * Green strain that carries a given stress: E0 = D⁻¹ S0, no shear.
  * @units stress kN/m, strain dimensionless
  */
-export function measureTargetStrain(d: ClothStiffness, stress: { warp: number; weft: number }): { warp: number; weft: number } {
+export function measureTargetStrain(
+  d: ClothStiffness,
+  stress: { warp: number; weft: number },
+): { warp: number; weft: number } {
   const det = d.ww * d.ff - d.wf * d.wf;
-  return { warp: (d.ff * stress.warp - d.wf * stress.weft) / det, weft: (d.ww * stress.weft - d.wf * stress.warp) / det };
+  return {
+    warp: (d.ff * stress.warp - d.wf * stress.weft) / det,
+    weft: (d.ww * stress.weft - d.wf * stress.warp) / det,
+  };
 }
 
 /** Engineering strain of a Green strain: √(1 + 2E) − 1. */
