@@ -14,5 +14,10 @@ export default defineConfig({
       output: { entryFileNames: "[name].js", chunkFileNames: "chunks/[name].js" },
     },
   },
-  test: { include: ["test/**/*.test.ts"], testTimeout: 60_000, hookTimeout: 60_000 },
+  test: {
+    include: ["test/**/*.test.ts"],
+    testTimeout: 60_000,
+    hookTimeout: 60_000,
+    reporters: ["default", ["json", { outputFile: "out/test-results.json" }]],
+  },
 } as Parameters<typeof defineConfig>[0]);
