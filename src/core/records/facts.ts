@@ -4,6 +4,7 @@ import type { Vec3 } from "../surface/surface.ts";
 import type { Fabric } from "./fabric.ts";
 import type { PanelMark, StressFigures } from "./flatPanel.ts";
 import type { EdgeKind, Residual } from "./foundForm.ts";
+import type { FactsAsBuilt, FactsCable, FactsRig, FactsTensioning } from "./rig.ts";
 import type { NestedRoll } from "./roll.ts";
 import type { LayoutChoice } from "./stripLayout.ts";
 
@@ -109,6 +110,10 @@ export interface Facts {
   panels?: FactsPanel[];
   pieces?: FactsPiece[];
   rolls?: NestedRoll[];
+  cables?: FactsCable[];
+  rig?: FactsRig;
+  asBuilt?: FactsAsBuilt;
+  tensioning?: FactsTensioning;
   checks: Check[];
   findings: Finding[];
 }

@@ -50,8 +50,13 @@ export interface PanelMark {
   /** seam-line, fold-line, match, warp, name, face, side-name, station, corner */
   kind: string;
   points?: [number, number][];
+  /** Middle of the text. */
   at?: [number, number];
   text?: string;
+  /** Height of the text, mm; the drawing's own where absent. */
+  height?: number;
+  /** Direction the text reads in, degrees from +x, within (-90, 90]; 0 where absent. */
+  angle?: number;
 }
 
 /** A panel ready to be cut. */
