@@ -1,0 +1,52 @@
+// Keys of the job file that are read and checked in shape but that no station uses yet. Each is said once, so that nobody
+// counts on them. A key leaves this list in the change that puts it to use.
+import type { Finding } from "../problem.ts";
+import { writePath } from "./jobProblems.ts";
+
+/** "*" stands for any name or number. `plain`: the value that asks for nothing, so that nothing need be said. */
+const KEYS: { path: string[]; plain?: unknown }[] = [
+  { path: ["settle"], plain: false },
+  { path: ["edges", "*", "cable"] },
+  { path: ["edges", "*", "prestretched"] },
+  { path: ["anchors", "*", "support"] },
+  { path: ["anchors", "*", "cutBack"] },
+  { path: ["allowances", "pocketStrip"], plain: false },
+  { path: ["nest", "bite"], plain: null },
+  { path: ["papers", "site"] },
+  { path: ["rig"] },
+  { path: ["survey"] },
+];
+
+/** One note for each such key that the job gives. */
+export function noteKeysWithoutEffect(job: unknown): Finding[] {
+  return KEYS.flatMap(({ path, plain }): Finding[] => {
+    const found = findPaths(job, path, []).filter((f) => f.value !== plain);
+    if (found.length === 0) return [];
+    const where = found.map((f) => writePath(f.path));
+    return [
+      {
+        code: "job-key-without-effect",
+        level: "note",
+        station: "job",
+        where: where.length === 1 ? where[0] : where,
+        value: null,
+        limit: null,
+        text: `${path.join(".").replace(/\.\*/g, ".…")} is accepted, without effect yet`,
+        remedy: "nothing to do; do not count on it in this plan",
+        basis: "own argument",
+      },
+    ];
+  });
+}
+
+function findPaths(value: unknown, path: string[], before: PropertyKey[]): { path: PropertyKey[]; value: unknown }[] {
+  if (path.length === 0) return [{ path: before, value }];
+  if (value === null || typeof value !== "object") return [];
+  const [step, ...rest] = path;
+  if (step !== "*") {
+    if (!Object.hasOwn(value, step)) return [];
+    return findPaths((value as Record<string, unknown>)[step], rest, [...before, step]);
+  }
+  const entries: [PropertyKey, unknown][] = Array.isArray(value) ? value.map((v, i) => [i, v]) : Object.entries(value);
+  return entries.flatMap(([key, inner]) => findPaths(inner, rest, [...before, key]));
+}
