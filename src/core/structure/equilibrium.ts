@@ -41,11 +41,13 @@ export interface EquilibriumOptions {
   maxSteps: number;
   /** Longest way a node may go in one step, m; keeps slack steps in the neighbourhood. */
   stride: number;
+  /** Out-of-balance force that is good enough however small the element forces are, kN. */
+  floor: number;
   cancelled?: () => boolean;
 }
 
 /** Defaults of solveEquilibrium; stride is set from the structure's size where 0. */
-export const equilibriumDefaults: EquilibriumOptions = { tolerance: 1e-10, maxSteps: 80, stride: 0 };
+export const equilibriumDefaults: EquilibriumOptions = { tolerance: 1e-10, maxSteps: 80, stride: 0, floor: 0 };
 
 export interface EquilibriumState {
   x: Float64Array<ArrayBuffer>;
@@ -179,11 +181,11 @@ export function solveEquilibrium(
   const stride = options.stride || 0.05 * measureSize(start);
   let { force, scale } = measureForces(s, x, L0);
   let energy = measureEnergy(s, x, L0);
-  const floor = measureRounding(s, start, L0);
+  const floor = Math.max(measureRounding(s, start, L0), options.floor);
   let shift = 0;
   for (let steps = 0; ; steps++) {
     const residual = scale > 0 ? largestFree(force, unknown) / scale : 0;
-    const good = residual < Math.max(options.tolerance, floor / scale);
+    const good = residual < options.tolerance || residual * scale < floor;
     if (good || steps === options.maxSteps || solver.n === 0) return { x, steps, residual, scale, converged: good };
     if (options.cancelled?.()) throw new PlanError("cancelled", "stopped on request");
     assembleTangentInPlace(solver, x, L0);

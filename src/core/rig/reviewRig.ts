@@ -1,0 +1,263 @@
+// What a person must know of the rig: targets missed, limits passed, travel too short, slack members, poor balance.
+import type { Check, Finding } from "../problem.ts";
+import type { FactsAsBuilt, FactsMove, FactsStage } from "../records/rig.ts";
+import { measureLink } from "../structure/elements.ts";
+import { measureDistance } from "../surface/measures.ts";
+import type { Rig, RigInput } from "./buildRig.ts";
+import { type RigState, readAdjusters } from "./solveLengths.ts";
+
+/** Share of the target an adjuster may miss before and after moves are rounded. */
+const exactLimit = 0.005;
+const roundedLimit = 0.03;
+
+/** Adjusters whose target cannot be had by any lengths, as stops. */
+export function findTargetMisses(rig: Rig, exact: RigState & { off: number }): Finding[] {
+  if (exact.off <= exactLimit) return [];
+  const forces = readAdjusters(rig, exact);
+  return rig.adjusters.flatMap((a, i) => {
+    const off = Math.abs(forces[i] / a.target - 1);
+    if (off <= exactLimit) return [];
+    return [
+      {
+        code: "adjuster-target",
+        level: "stop" as const,
+        station: "rig" as const,
+        where: a.id,
+        value: forces[i],
+        limit: a.target,
+        text: `${a.id} reaches ${forces[i].toFixed(2)} kN of its target of ${a.target.toFixed(2)} kN: no lengths of the adjusters give all targets at once`,
+        remedy: "put the far pin where the pull of the form points, check the cable forces and the balance of the form",
+        basis: "0.5 % before moves are rounded (design)",
+      },
+    ];
+  });
+}
+
+/** Findings and checks on a finished rig and its sequence. */
+export function reviewRig(
+  input: RigInput,
+  rig: Rig,
+  plan: { stages: FactsStage[]; finished: RigState; asBuilt: FactsAsBuilt; singular: number[] },
+): { findings: Finding[]; checks: Check[] } {
+  const findings: Finding[] = [];
+  const checks: Check[] = [];
+  const forces = readAdjusters(rig, plan.finished);
+  const off = Math.max(...forces.map((f, i) => Math.abs(f / rig.adjusters[i].target - 1)));
+  checks.push({
+    station: "rig",
+    text: "finished state with moves as a hand sets them: adjusters off their targets by at most",
+    value: off,
+    limit: roundedLimit,
+    holds: off <= roundedLimit,
+  });
+  checks.push({
+    station: "rig",
+    text: "finished state: out-of-balance force over the largest force",
+    value: plan.finished.equilibrium.residual,
+    limit: 1e-8,
+    holds: plan.finished.equilibrium.residual < 1e-8,
+  });
+  checks.push({
+    station: "rig",
+    text: "finished state: share of the cloth that is not taut",
+    value: plan.asBuilt.compressedShare,
+    limit: 0.02,
+    holds: plan.asBuilt.compressedShare <= 0.02,
+  });
+  if (plan.asBuilt.compressedShare > 0.02) findings.push(slackCloth(plan.asBuilt.compressedShare));
+  findings.push(
+    ...reviewReach(rig, plan.stages, plan.finished),
+    ...reviewPeaks(rig, plan.stages, input.rig.limit),
+    ...reviewModes(rig, plan.singular),
+    ...reviewDirections(input, rig),
+  );
+  for (const a of rig.adjusters) if (a.turnbuckle.capacity === null) findings.push(noCapacity(a.id, "turnbuckle"));
+  for (const c of rig.cables) if (c.minBreakingForce === null) findings.push(noCapacity(c.id, "cable"));
+  return { findings, checks };
+}
+
+function slackCloth(share: number): Finding {
+  return {
+    code: "cloth-slack",
+    level: "caution",
+    station: "rig",
+    where: [],
+    value: share,
+    limit: 0.02,
+    text: `${(100 * share).toFixed(1)} % of the cloth is not taut at the finished state`,
+    remedy: "use narrower strips, check the compensation and the balance of the form",
+    basis: "own argument: slack cloth flutters and wears",
+  };
+}
+
+function noCapacity(id: string, what: string): Finding {
+  return {
+    code: "capacity-missing",
+    level: "caution",
+    station: "rig",
+    where: id,
+    value: null,
+    limit: null,
+    text: `${id}: the ${what}'s breaking force or capacity is not given, so no step is checked against it`,
+    remedy: `give the ${what} of ${id} in the job; the engineer sizes it from design forces, not from prestress`,
+    basis: "rules of the facts file",
+  };
+}
+
+/** Travel: every length an adjuster takes must lie between its shortest and longest. */
+function reviewReach(rig: Rig, stages: FactsStage[], finished: RigState): Finding[] {
+  const findings: Finding[] = [];
+  for (const a of rig.adjusters) {
+    const pin = measureLink(rig.structure, finished.x, finished.L0, a.link).length * 1000;
+    const moves = stages.flatMap((s) => s.moves).filter((m) => m.adjuster === a.id);
+    const longest = Math.max(pin, ...moves.map((m) => m.pinFrom * 1000));
+    const { shortest: low, longest: high } = a.turnbuckle;
+    if (pin < low || pin > high) {
+      findings.push({
+        code: "adjuster-reach",
+        level: "stop",
+        station: "rig",
+        where: a.id,
+        value: pin,
+        limit: pin < low ? low : high,
+        text: `${a.id} would have to be ${pin.toFixed(0)} mm pin to pin at the finished state; its turnbuckle reaches from ${low.toFixed(0)} to ${high.toFixed(0)} mm`,
+        remedy: "take another turnbuckle or link, or move the far pin",
+        basis: "turnbuckle lengths as given",
+      });
+      continue;
+    }
+    const hang =
+      longest -
+      Math.max(
+        ...moves.filter((m) => m.step === Math.min(...moves.map((q) => q.step))).map((m) => m.pinTo * 1000),
+        pin,
+      );
+    if (hang < 10)
+      findings.push({
+        code: "adjuster-hang",
+        level: "stop",
+        station: "rig",
+        where: a.id,
+        value: hang,
+        limit: 10,
+        text: `${a.id} can be let out only ${hang.toFixed(0)} mm beyond its first stage; the cloth cannot be hung slack`,
+        remedy: "take a turnbuckle with more travel, or hang the cloth with temporary links",
+        basis: "common practice",
+      });
+    const left = pin - low;
+    const all = high - low;
+    if (left < 0.25 * all)
+      findings.push({
+        code: "travel-spent",
+        level: "caution",
+        station: "rig",
+        where: a.id,
+        value: left,
+        limit: 0.25 * all,
+        text: `${a.id} has ${left.toFixed(0)} mm of ${all.toFixed(0)} mm left to shorten at the finished state`,
+        remedy: "keep a quarter of the travel for re-tensioning: shorten the link or take a longer turnbuckle",
+        basis: "common practice",
+      });
+  }
+  return findings;
+}
+
+/** Peaks: no member past its limit at any step, none of the adjusters slack after the first stage. */
+function reviewPeaks(rig: Rig, stages: FactsStage[], limit: number): Finding[] {
+  const findings: Finding[] = [];
+  let worst: FactsMove | null = null;
+  for (const m of stages.flatMap((s) => s.moves)) if (m.greatest.share > (worst?.greatest.share ?? 0)) worst = m;
+  if (worst && worst.greatest.share > 1) {
+    findings.push({
+      code: "limit-passed",
+      level: "stop",
+      station: "rig",
+      where: worst.greatest.id,
+      value: worst.greatest.kN,
+      limit: worst.greatest.kN / worst.greatest.share,
+      text: `${worst.greatest.id} carries ${worst.greatest.kN.toFixed(1)} kN after step ${worst.step}; its limit is ${(worst.greatest.kN / worst.greatest.share).toFixed(1)} kN (${(100 * limit).toFixed(0)} % of the weakest part)`,
+      remedy: "take stronger parts or a lower prestress; the engineer decides",
+      basis: "limit as given in the job",
+    });
+  } else if (worst && worst.greatest.share > 0.9) {
+    findings.push({
+      code: "limit-near",
+      level: "caution",
+      station: "rig",
+      where: worst.greatest.id,
+      value: worst.greatest.share,
+      limit: 1,
+      text: `${worst.greatest.id} comes to ${(100 * worst.greatest.share).toFixed(0)} % of its limit at step ${worst.step}`,
+      remedy: "watch its gauge at that step",
+      basis: "limit as given in the job",
+    });
+  }
+  for (const s of stages.slice(1)) {
+    for (const a of rig.adjusters)
+      if (s.forces[a.id] < 0.01 * a.target)
+        findings.push({
+          code: "adjuster-slack",
+          level: "caution",
+          station: "rig",
+          where: a.id,
+          value: s.forces[a.id],
+          limit: 0.01 * a.target,
+          text: `${a.id} is slack at the end of stage ${s.name}`,
+          remedy: "check its target and the order of the moves",
+          basis: "own argument",
+        });
+  }
+  return findings;
+}
+
+/** How many tension modes the adjusters have: forces say nothing of the weak ones. */
+function reviewModes(rig: Rig, singular: number[]): Finding[] {
+  if (singular.length === 0) return [];
+  const strong = singular.filter((s) => s > 0.05 * singular[0]).length;
+  if (strong === rig.adjusters.length) return [];
+  return [
+    {
+      code: "tension-modes",
+      level: "note",
+      station: "rig",
+      where: rig.adjusters.map((a) => a.id),
+      value: strong,
+      limit: rig.adjusters.length,
+      text: `${strong} of ${rig.adjusters.length} tension modes are strong enough to be read from forces; where the corners stand must be measured too`,
+      remedy: "survey the corners at every hold point and compare them with the plan",
+      basis: "singular values of the influence matrix, those above 5 % of the greatest counted",
+    },
+  ];
+}
+
+/** Far pins that do not lie where the form pulls. */
+function reviewDirections(input: RigInput, rig: Rig): Finding[] {
+  const findings: Finding[] = [];
+  const pulls = new Map(input.form.reactions.map((r) => [r.anchor, r.force]));
+  for (const a of rig.adjusters) {
+    const pull = pulls.get(a.anchor);
+    const support = input.supports[a.anchor];
+    if (!pull || !support) continue;
+    const at: [number, number, number] = [0, 1, 2].map((i) => rig.structure.xyz[3 * a.nodes[0] + i]) as [
+      number,
+      number,
+      number,
+    ];
+    const far = measureDistance(at, support);
+    const cos = [0, 1, 2].reduce((sum, i) => sum - (pull[i] / a.target) * ((support[i] - at[i]) / far), 0);
+    const angle = (Math.acos(Math.min(1, Math.max(-1, cos))) * 180) / Math.PI;
+    if (angle > 3)
+      findings.push({
+        code: "pin-direction",
+        level: "caution",
+        station: "rig",
+        where: a.id,
+        value: angle,
+        limit: 3,
+        text: `the far pin of ${a.id} lies ${angle.toFixed(1)}° off the line of the form's pull`,
+        remedy: "move the pin into the line of pull, or let the form be found with the pin where it is",
+        basis: "own argument: the corner would move until it lines up",
+      });
+  }
+  return findings;
+}

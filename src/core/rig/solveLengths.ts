@@ -1,0 +1,155 @@
+// Adjuster lengths that give stated forces on the full structure. A roof hung from its corners has hardly more than one tension
+// mode: forces set what they determine, the other modes are held at a reference geometry (Tikhonov).
+// Source: influence matrix as in Kwan & Pellegrino 1993 (from memory), repeated Gauss–Newton with a regularising term; own.
+import { Matrix, SingularValueDecomposition } from "ml-matrix";
+import type { Check } from "../problem.ts";
+import { measureLink } from "../structure/elements.ts";
+import {
+  type EquilibriumSolver,
+  type EquilibriumState,
+  measureInfluence,
+  solveEquilibrium,
+} from "../structure/equilibrium.ts";
+import type { Rig } from "./buildRig.ts";
+
+/** A state of the rig: positions, slack lengths of all links, and how far the solve came. */
+export interface RigState {
+  x: Float64Array<ArrayBuffer>;
+  L0: Float64Array<ArrayBuffer>;
+  equilibrium: EquilibriumState;
+}
+
+export interface LengthOptions {
+  /** Greatest allowed |force − target| over the target. */
+  tolerance: number;
+  /** Longest change of an adjuster in one round, m. */
+  stride: number;
+  rounds: number;
+  cancelled?: () => boolean;
+}
+
+/** Defaults of solveLengths: a tenth of the 0.5 % that the schedule promises before rounding. */
+export const lengthDefaults: LengthOptions = { tolerance: 5e-4, stride: 0.015, rounds: 40 };
+
+/** Forces of the adjusters in a state, kN. */
+export function readAdjusters(
+  rig: Rig,
+  state: { x: Float64Array<ArrayBuffer>; L0: Float64Array<ArrayBuffer> },
+): number[] {
+  return rig.adjusters.map((a) => measureLink(rig.structure, state.x, state.L0, a.link).force);
+}
+
+/** A state from slack lengths, starting near another one. */
+export function solveState(
+  rig: Rig,
+  solver: EquilibriumSolver,
+  x: Float64Array<ArrayBuffer>,
+  L0: Float64Array<ArrayBuffer>,
+  cancelled?: () => boolean,
+): RigState {
+  const least = Math.min(...rig.adjusters.map((a) => a.target), Infinity);
+  const equilibrium = solveEquilibrium(solver, x, L0, {
+    floor: Number.isFinite(least) ? 1e-7 * least : 0,
+    ...(cancelled ? { cancelled } : {}),
+  });
+  return { x: equilibrium.x, L0, equilibrium };
+}
+
+/** Influence of adjusters on each other, kN per m of length ADDED. @shape n × n */
+export function measureAdjusterInfluence(rig: Rig, solver: EquilibriumSolver, state: RigState): Matrix {
+  const links = rig.adjusters.map((a) => a.link);
+  return Matrix.from1DArray(links.length, links.length, measureInfluence(solver, state.x, state.L0, links, links));
+}
+
+/**
+ * State in which every adjuster carries its wanted force within the tolerance, as near as may be to the reference lengths.
+ * @shape wanted, reference: one for each adjuster, kN and m
+ * @units off: greatest |force − wanted| / target reached
+ */
+export function solveLengths(
+  rig: Rig,
+  solver: EquilibriumSolver,
+  start: RigState,
+  wanted: number[],
+  reference: number[],
+  given: Partial<LengthOptions> = {},
+): RigState & { off: number; singular: number[] } {
+  const options = { ...lengthDefaults, ...given };
+  const n = rig.adjusters.length;
+  const links = rig.adjusters.map((a) => a.link);
+  const targets = rig.adjusters.map((a) => a.target);
+  let state = start;
+  let softness = 0.05;
+  let singular: number[] = [];
+  let best: RigState | null = null;
+  let least = Infinity;
+  for (let round = 0; round < options.rounds; round++) {
+    const forces = readAdjusters(rig, state);
+    const miss = forces.map((f, i) => (wanted[i] - f) / targets[i]);
+    const off = Math.max(...miss.map(Math.abs));
+    if (off < least && state.equilibrium.converged) {
+      least = off;
+      best = state;
+    }
+    if (off < options.tolerance) break;
+    const J = measureAdjusterInfluence(rig, solver, state);
+    for (let i = 0; i < n; i++) for (let j = 0; j < n; j++) J.set(i, j, J.get(i, j) / targets[i]);
+    const svd = new SingularValueDecomposition(J, { autoTranspose: true });
+    singular = svd.diagonal;
+    if (!(singular[0] > 0)) {
+      // everything slack: take in a little everywhere
+      state = turned(
+        rig,
+        solver,
+        state,
+        links.map(() => -options.stride / 3),
+        options.cancelled,
+      );
+      continue;
+    }
+    const mu = softness * singular[0];
+    const home = links.map((k, i) => reference[i] - state.L0[k]);
+    // (JᵀJ + μ²) d = Jᵀ miss + μ² home
+    const left = J.transpose().mmul(J);
+    for (let i = 0; i < n; i++) left.set(i, i, left.get(i, i) + mu * mu);
+    const right = J.transpose().mmul(Matrix.columnVector(miss));
+    for (let i = 0; i < n; i++) right.set(i, 0, right.get(i, 0) + mu * mu * home[i]);
+    const d = new SingularValueDecomposition(left, { autoTranspose: true }).solve(right).to1DArray();
+    const longest = Math.max(...d.map(Math.abs));
+    const share = longest > options.stride ? options.stride / longest : 1;
+    state = turned(
+      rig,
+      solver,
+      state,
+      d.map((q) => q * share),
+      options.cancelled,
+    );
+    if (longest < 2e-4 || round % 4 === 3) softness /= 4;
+  }
+  return { ...(best ?? state), off: least, singular };
+}
+
+function turned(
+  rig: Rig,
+  solver: EquilibriumSolver,
+  state: RigState,
+  change: number[],
+  cancelled?: () => boolean,
+): RigState {
+  const L0 = state.L0.slice();
+  rig.adjusters.forEach((a, i) => {
+    L0[a.link] += change[i];
+  });
+  return solveState(rig, solver, state.x, L0, cancelled);
+}
+
+/** The check that forces hold before rounding. */
+export function checkLengths(name: string, off: number): Check {
+  return {
+    station: "rig",
+    text: `stage ${name}: forces before moves are rounded, off by at most`,
+    value: off,
+    limit: 0.005,
+    holds: off <= 0.005,
+  };
+}
