@@ -1,7 +1,7 @@
 // Outlines against shapes worked by hand, and properties on random panels.
 import fc from "fast-check";
 import { describe, expect, it } from "vitest";
-import { FAIRING_MM, offsetOutline, simplifyRing } from "../../src/core/panels/offsetOutline.ts";
+import { FAIRING_MM, offsetOutline } from "../../src/core/panels/offsetOutline.ts";
 import { outlinePanel, sideCurvature } from "../../src/core/panels/outlinePanel.ts";
 import type { PanelPlace } from "../../src/core/panels/placeMarks.ts";
 import { subtractRings, unionPositive } from "../../src/core/panels/polygonBooleans.ts";
@@ -15,6 +15,7 @@ import {
   ringDistance,
   ringHolds,
 } from "../../src/core/surface/ring.ts";
+import { simplifyRing } from "../../src/core/surface/simplifyRing.ts";
 import { type Part, panelFrom } from "./panelFrom.ts";
 
 const ALLOW: Allowances = { seam: 40, seamOn: "both", pocket: 60, pocketStrip: false, clamp: 50, hem: 30 };

@@ -4,6 +4,7 @@
 // Source: own. A flap end mirrors, about the fold line, the cut line of its neighbour, and never flares past the square.
 import type { Ring } from "../records/flatPanel.ts";
 import { isSimpleRing, ringArea } from "../surface/ring.ts";
+import { simplifyRing } from "../surface/simplifyRing.ts";
 import { subtractRings, unionPositive } from "./polygonBooleans.ts";
 
 type Point = [number, number];
@@ -251,57 +252,6 @@ function discRing(x: number, y: number, radius: number): Ring {
     ring[2 * k + 1] = y + r * Math.sin((2 * Math.PI * k) / n);
   }
   return ring;
-}
-
-/** Two points that are true corners of a ring: the leftmost (lowest of them) and the one furthest from it. */
-function twoCorners(ring: Ring): [number, number] {
-  const n = ring.length / 2;
-  let first = 0;
-  for (let i = 1; i < n; i++)
-    if (ring[2 * i] < ring[2 * first] || (ring[2 * i] === ring[2 * first] && ring[2 * i + 1] < ring[2 * first + 1]))
-      first = i;
-  const away = (i: number) => Math.hypot(ring[2 * i] - ring[2 * first], ring[2 * i + 1] - ring[2 * first + 1]);
-  let far = first === 0 ? 1 : 0;
-  for (let i = 0; i < n; i++) if (away(i) > away(far)) far = i;
-  return [first, far];
-}
-
-/** Fewer points, none of those left out further than `within` from the new line (Douglas and Peucker 1973, on two halves). */
-export function simplifyRing(ring: Ring, within: number): Ring {
-  const n = ring.length / 2;
-  if (n <= 4) return ring;
-  const [first, far] = twoCorners(ring);
-  const keep = new Uint8Array(n);
-  keep[first] = 1;
-  keep[far] = 1;
-  const stack = [
-    [first, far > first ? far : far + n],
-    [far, first > far ? first : first + n],
-  ];
-  while (stack.length > 0) {
-    const [a, b] = stack.pop() as number[];
-    const at = (i: number): Point => [ring[2 * (i % n)], ring[2 * (i % n) + 1]];
-    const p = at(a);
-    const q = at(b);
-    const u = unit(p, q);
-    const length = gap(p, q);
-    let worst = within;
-    let split = -1;
-    for (let i = a + 1; i < b; i++) {
-      const w: Point = [at(i)[0] - p[0], at(i)[1] - p[1]];
-      const s = Math.max(0, Math.min(length, dot(w, u)));
-      const off = gap(w, [s * u[0], s * u[1]]);
-      if (off > worst) {
-        worst = off;
-        split = i;
-      }
-    }
-    if (split >= 0) {
-      keep[split % n] = 1;
-      stack.push([a, split], [split, b]);
-    }
-  }
-  return ring.filter((_, i) => keep[i >> 1] === 1);
 }
 
 /**
