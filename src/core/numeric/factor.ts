@@ -1,84 +1,121 @@
-// Cholesky factor of a sparse symmetric positive definite matrix: analyse once, factor for every set of values, solve.
+// Cholesky factor of a sparse symmetric positive definite matrix: analyse a pattern once, factor it for every set of values,
+// solve for any number of right-hand sides. Supernodal and multifrontal: every supernode adds its update straight to the
+// panel and the trailing triangle of its parent. Does not pivot and does not factor indefinite matrices: it names the row.
+// Source: J. W. Liu, The multifrontal method for sparse matrix solution: theory and practice, SIAM Review 34, 1992;
+// differs: update and assembly in one sweep, trailing triangles of even and odd depth on two stacks.
 import { PlanError } from "../problem.ts";
-import { orderUnknowns } from "./order.ts";
+import { placeEntries, placeTrails, relateRows } from "./factorLayout.ts";
+import { buildNodeGraph } from "./graph.ts";
+import { orderNodes } from "./order.ts";
+import { countBlocks, factorTriangleInPlace, measurePanel, solveRowsInPlace, updateParentInPlace } from "./panel.ts";
+import {
+  backwardOneInPlace,
+  backwardThreeInPlace,
+  forwardOneInPlace,
+  forwardThreeInPlace,
+  type PanelPlace,
+} from "./panelSolve.ts";
 import type { SymmetricPattern } from "./pattern.ts";
+import { buildSupernodes, type Supernodes } from "./supernodes.ts";
 
-/** What depends on the pattern alone. */
+/** What an analysis is given beside the pattern. */
+export interface AnalyseOptions {
+  /** A pivot must exceed this share of its own diagonal entry; below it the matrix counts as singular. Default 1e-13. */
+  pivotFloor?: number;
+}
+
+/**
+ * All that depends on the pattern alone; may serve any number of factors.
+ * @shape position n: elimination position of an unknown; panel nS: place of a panel in the store; trail nS: place of the
+ *   trailing triangle, -1 if no child writes to it; rel: places of a supernode's rows among its parent's, as rowStart;
+ *   into: place in the store of every entry of the pattern
+ */
 export interface SymbolicFactor {
   pattern: SymmetricPattern;
-  order: Int32Array<ArrayBuffer>;
-  rank: Int32Array<ArrayBuffer>;
-  parent: Int32Array<ArrayBuffer>;
-  start: Int32Array<ArrayBuffer>;
-  upStart: Int32Array<ArrayBuffer>;
-  upRow: Int32Array<ArrayBuffer>;
-  upFrom: Int32Array<ArrayBuffer>;
-  /** Entries of the factor, diagonal included. */
+  pivotFloor: number;
+  supernodes: Supernodes;
+  position: Int32Array<ArrayBuffer>;
+  panel: Int32Array<ArrayBuffer>;
+  trail: Int32Array<ArrayBuffer>;
+  rel: Int32Array<ArrayBuffer>;
+  into: Int32Array<ArrayBuffer>;
+  /** Entries of all panels, and of panels and stacks together. */
+  panelEntries: number;
+  storeEntries: number;
+  /** Entries of the factor, zeros of joined supernodes included, padding not. */
   factorEntries: number;
+  /** Multiply-add pairs of one factorisation, about. */
+  work: number;
 }
 
 /** A factored matrix. Owns its storage; refactorInPlace overwrites it. */
 export interface NumericFactor {
   symbolic: SymbolicFactor;
-  row: Int32Array<ArrayBuffer>;
-  value: Float64Array<ArrayBuffer>;
+  store: Float64Array<ArrayBuffer>;
+  /** Least pivot allowed, by position. */
+  floor: Float64Array<ArrayBuffer>;
+  /** Right-hand sides by position. */
+  side: Float64Array<ArrayBuffer>;
   /** False after a failed factorisation: solving is then refused. */
   ready: boolean;
 }
 
-/** Order and symbolic factor of a pattern. */
-export function analyseSymmetric(pattern: SymmetricPattern): SymbolicFactor {
-  const { n, colStart, rowIndex } = pattern;
-  const order = orderUnknowns(pattern);
-  const rank = new Int32Array(n);
-  for (let k = 0; k < n; k++) rank[order[k]] = k;
-  const upStart = new Int32Array(n + 1);
-  const up = (p: number, j: number) => Math.max(rank[rowIndex[p]], rank[j]);
-  for (let j = 0; j < n; j++) for (let p = colStart[j]; p < colStart[j + 1]; p++) upStart[up(p, j) + 1]++;
-  for (let k = 0; k < n; k++) upStart[k + 1] += upStart[k];
-  const fill = upStart.slice(0, n);
-  const upRow = new Int32Array(upStart[n]);
-  const upFrom = new Int32Array(upStart[n]);
-  for (let j = 0; j < n; j++)
-    for (let p = colStart[j]; p < colStart[j + 1]; p++) {
-      const k = up(p, j);
-      upRow[fill[k]] = Math.min(rank[rowIndex[p]], rank[j]);
-      upFrom[fill[k]++] = p;
-    }
-  const parent = new Int32Array(n).fill(-1);
-  const ancestor = new Int32Array(n).fill(-1);
-  for (let k = 0; k < n; k++)
-    for (let p = upStart[k]; p < upStart[k + 1]; p++)
-      for (let i = upRow[p]; i !== -1 && i < k; ) {
-        const next = ancestor[i];
-        ancestor[i] = k;
-        if (next === -1) parent[i] = k;
-        i = next;
-      }
-  const count = new Int32Array(n + 1);
-  const mark = new Int32Array(n).fill(-1);
-  for (let k = 0; k < n; k++) {
-    mark[k] = k;
-    count[k + 1]++;
-    for (let p = upStart[k]; p < upStart[k + 1]; p++)
-      for (let i = upRow[p]; mark[i] !== k; i = parent[i]) {
-        mark[i] = k;
-        count[i + 1]++;
-      }
+/**
+ * Order of elimination and structure of the factor of a pattern.
+ * @throws PlanError matrix-pattern: a column without its diagonal first or with rows not ascending
+ */
+export function analyseSymmetric(pattern: SymmetricPattern, options: AnalyseOptions = {}): SymbolicFactor {
+  checkPattern(pattern);
+  const graph = buildNodeGraph(pattern);
+  const supernodes = buildSupernodes(graph, orderNodes(graph));
+  const { nS, order, first, rowStart } = supernodes;
+  const position = new Int32Array(pattern.n);
+  for (let k = 0; k < pattern.n; k++) position[order[k]] = k;
+  const panel = new Int32Array(nS);
+  let panelEntries = 0;
+  let factorEntries = 0;
+  let work = 0;
+  for (let s = 0; s < nS; s++) {
+    const w = first[s + 1] - first[s];
+    const r = rowStart[s + 1] - rowStart[s];
+    panel[s] = panelEntries;
+    panelEntries += measurePanel(w, r);
+    factorEntries += (w * (w + 1)) / 2 + w * r;
+    work += (w * w * w) / 6 + (w * w * r) / 2 + (w * r * (r + 1)) / 2;
   }
-  for (let k = 0; k < n; k++) count[k + 1] += count[k];
-  return { pattern, order, rank, parent, start: count, upStart, upRow, upFrom, factorEntries: count[n] };
+  const { trail, storeEntries } = placeTrails(supernodes, panelEntries);
+  const rel = relateRows(supernodes);
+  const into = placeEntries(pattern, supernodes, position, panel);
+  const pivotFloor = options.pivotFloor ?? 1e-13;
+  return {
+    ...{ pattern, pivotFloor, supernodes, position, panel, trail, rel, into },
+    ...{ panelEntries, storeEntries, factorEntries, work },
+  };
 }
 
 /**
  * Factors the matrix with these values.
- * @throws PlanError not-positive-definite: facts row (caller's numbering) and pivot
+ * @shape values: one for every rowIndex of the pattern
+ * @throws PlanError not-positive-definite: facts row (caller's numbering), pivot; matrix-memory; matrix-values
  */
 export function factorSymmetric(symbolic: SymbolicFactor, values: Float64Array<ArrayBuffer>): NumericFactor {
+  const n = symbolic.pattern.n;
+  let store: Float64Array<ArrayBuffer>;
+  try {
+    store = new Float64Array(symbolic.storeEntries);
+  } catch {
+    throw new PlanError(
+      "matrix-memory",
+      `the factor of ${n} unknowns needs ${Math.round(symbolic.storeEntries / 131072)} MB, more than this engine gives: use a coarser mesh`,
+      [],
+      { unknowns: n, entries: symbolic.storeEntries },
+    );
+  }
   const factor: NumericFactor = {
     symbolic,
-    row: new Int32Array(symbolic.factorEntries),
-    value: new Float64Array(symbolic.factorEntries),
+    store,
+    floor: new Float64Array(n),
+    side: new Float64Array(3 * n),
     ready: false,
   };
   refactorInPlace(factor, values);
@@ -87,74 +124,151 @@ export function factorSymmetric(symbolic: SymbolicFactor, values: Float64Array<A
 
 /**
  * Factors again with other values of the same pattern, in the storage of the factor.
- * @throws PlanError not-positive-definite: facts row (caller's numbering) and pivot
+ * @throws PlanError not-positive-definite: facts row (caller's numbering) and pivot; the factor is then not usable until
+ *   the next refactorInPlace that holds. matrix-values: values of another length than the pattern
  */
 export function refactorInPlace(factor: NumericFactor, values: Float64Array<ArrayBuffer>): void {
-  const { row, value, symbolic } = factor;
-  const { start, parent, upStart, upRow, upFrom, order } = symbolic;
-  const n = order.length;
+  const failed = tryRefactorInPlace(factor, values);
+  if (failed < 0) return;
+  const { symbolic, store } = factor;
+  const { supernodes, panel, position } = symbolic;
+  const k = position[failed];
+  let s = 0;
+  while (supernodes.first[s + 1] <= k) s++;
+  const w = supernodes.first[s + 1] - supernodes.first[s];
+  const i = k - supernodes.first[s];
+  const pivot = store[panel[s] + 3 * (((i / 3) | 0) * w + i) + (i % 3)];
+  throw new PlanError(
+    "not-positive-definite",
+    `the matrix is not positive definite: the pivot of unknown ${failed} is ${pivot}, it must exceed ${factor.floor[k]}: the structure can move freely there or is unstable`,
+    `unknown ${failed}`,
+    { row: failed, pivot, floor: factor.floor[k] },
+  );
+}
+
+/**
+ * Like refactorInPlace, but hands back the unknown whose pivot fails instead of throwing, for methods that then shift.
+ * @returns the failing unknown in the caller's numbering, -1 when the factor holds
+ * @throws PlanError matrix-values: values of another length than the pattern
+ */
+export function tryRefactorInPlace(factor: NumericFactor, values: Float64Array<ArrayBuffer>): number {
+  const { symbolic, store, floor } = factor;
+  const { pattern, supernodes, into, panel, trail, rel, panelEntries, position, pivotFloor } = symbolic;
+  const { nS, first, parent, rowStart, order } = supernodes;
+  if (values.length !== into.length)
+    throw new PlanError("matrix-values", `${values.length} values for a pattern of ${into.length} entries`, [], {
+      values: values.length,
+      entries: into.length,
+    });
   factor.ready = false;
-  const next = start.slice(0, n);
-  const x = new Float64Array(n);
-  const mark = new Int32Array(n).fill(-1);
-  const stack = new Int32Array(n);
-  const path = new Int32Array(n);
-  for (let k = 0; k < n; k++) {
-    let top = n;
-    mark[k] = k;
-    for (let p = upStart[k]; p < upStart[k + 1]; p++) {
-      x[upRow[p]] += values[upFrom[p]];
-      let depth = 0;
-      for (let i = upRow[p]; mark[i] !== k; i = parent[i]) {
-        mark[i] = k;
-        path[depth++] = i;
-      }
-      while (depth > 0) stack[--top] = path[--depth];
+  store.fill(0, 0, panelEntries);
+  for (let p = 0; p < values.length; p++) store[into[p]] = values[p];
+  for (let j = 0; j < pattern.n; j++) floor[position[j]] = pivotFloor * values[pattern.colStart[j]];
+  const open = new Uint8Array(nS);
+  for (let s = 0; s < nS; s++) {
+    const w = first[s + 1] - first[s];
+    const r = rowStart[s + 1] - rowStart[s];
+    const failed = factorTriangleInPlace(store, panel[s], w, floor, first[s]);
+    if (failed >= 0) return order[first[s] + failed];
+    if (r === 0) continue;
+    solveRowsInPlace(store, panel[s], w, r);
+    const q = parent[s];
+    if (!open[q] && trail[q] >= 0) {
+      const rq = rowStart[q + 1] - rowStart[q];
+      store.fill(0, trail[q], trail[q] + (rq * (rq + 1)) / 2);
     }
-    let d = x[k];
-    const own = d;
-    x[k] = 0;
-    for (; top < n; top++) {
-      const i = stack[top];
-      const l = x[i] / value[start[i]];
-      x[i] = 0;
-      for (let p = start[i] + 1; p < next[i]; p++) x[row[p]] -= value[p] * l;
-      d -= l * l;
-      row[next[i]] = k;
-      value[next[i]++] = l;
-    }
-    if (!(d > 1e-14 * own))
-      throw new PlanError(
-        "not-positive-definite",
-        `the matrix is not positive definite: pivot ${d} in row ${order[k]} (must be above 0)`,
-        `row ${order[k]}`,
-        { row: order[k], pivot: d },
-      );
-    row[next[k]] = k;
-    value[next[k]++] = Math.sqrt(d);
+    open[q] = 1;
+    updateParentInPlace(store, {
+      below: panel[s] + 3 * w * countBlocks(w),
+      w,
+      r,
+      own: trail[s],
+      rel,
+      relStart: rowStart[s],
+      panel: panel[q],
+      width: first[q + 1] - first[q],
+      trail: trail[q],
+    });
   }
   factor.ready = true;
+  return -1;
 }
 
 /**
  * Solves A x = b in place.
  * @shape b n × nRhs by columns: unknown i of right-hand side r at r*n + i
+ * @throws PlanError factor-not-ready: the last factorisation failed; matrix-values: b is not n × nRhs long
  */
 export function solveInPlace(factor: NumericFactor, b: Float64Array<ArrayBuffer>, nRhs = 1): void {
-  const { row, value } = factor;
-  const { start, order } = factor.symbolic;
+  const { order } = factor.symbolic.supernodes;
+  const y = factor.side;
   const n = order.length;
-  const x = new Float64Array(n);
-  for (let r = 0; r < nRhs; r++) {
-    for (let k = 0; k < n; k++) x[k] = b[r * n + order[k]];
+  if (!factor.ready)
+    throw new PlanError(
+      "factor-not-ready",
+      "the last factorisation failed: factor values that are positive definite first",
+    );
+  if (b.length !== n * nRhs)
+    throw new PlanError("matrix-values", `right-hand sides of ${b.length} values for ${n} unknowns × ${nRhs}`, [], {
+      values: b.length,
+      unknowns: n,
+      sides: nRhs,
+    });
+  let r = 0;
+  for (; r + 3 <= nRhs; r += 3) {
+    const [r0, r1, r2] = [r * n, (r + 1) * n, (r + 2) * n];
     for (let k = 0; k < n; k++) {
-      x[k] /= value[start[k]];
-      for (let p = start[k] + 1; p < start[k + 1]; p++) x[row[p]] -= value[p] * x[k];
+      y[3 * k] = b[r0 + order[k]];
+      y[3 * k + 1] = b[r1 + order[k]];
+      y[3 * k + 2] = b[r2 + order[k]];
     }
-    for (let k = n - 1; k >= 0; k--) {
-      for (let p = start[k] + 1; p < start[k + 1]; p++) x[k] -= value[p] * x[row[p]];
-      x[k] /= value[start[k]];
+    sweep(factor, forwardThreeInPlace, backwardThreeInPlace);
+    for (let k = 0; k < n; k++) {
+      b[r0 + order[k]] = y[3 * k];
+      b[r1 + order[k]] = y[3 * k + 1];
+      b[r2 + order[k]] = y[3 * k + 2];
     }
-    for (let k = 0; k < n; k++) b[r * n + order[k]] = x[k];
+  }
+  for (; r < nRhs; r++) {
+    for (let k = 0; k < n; k++) y[k] = b[r * n + order[k]];
+    sweep(factor, forwardOneInPlace, backwardOneInPlace);
+    for (let k = 0; k < n; k++) b[r * n + order[k]] = y[k];
+  }
+}
+
+type Step = (x: Float64Array<ArrayBuffer>, place: PanelPlace, y: Float64Array<ArrayBuffer>) => void;
+
+function sweep({ symbolic, store, side }: NumericFactor, forward: Step, backward: Step): void {
+  const { panel, supernodes } = symbolic;
+  const { nS, first, row, rowStart } = supernodes;
+  const place: PanelPlace = { panel: 0, first: 0, w: 0, row, rowStart: 0, rowEnd: 0 };
+  const go = (s: number) => {
+    place.panel = panel[s];
+    place.first = first[s];
+    place.w = first[s + 1] - first[s];
+    place.rowStart = rowStart[s];
+    place.rowEnd = rowStart[s + 1];
+  };
+  for (let s = 0; s < nS; s++) {
+    go(s);
+    forward(store, place, side);
+  }
+  for (let s = nS - 1; s >= 0; s--) {
+    go(s);
+    backward(store, place, side);
+  }
+}
+
+function checkPattern({ n, colStart, rowIndex }: SymmetricPattern): void {
+  for (let j = 0; j < n; j++) {
+    let good = colStart[j + 1] > colStart[j] && rowIndex[colStart[j]] === j;
+    for (let p = colStart[j] + 1; good && p < colStart[j + 1]; p++) good = rowIndex[p] > rowIndex[p - 1];
+    if (good && rowIndex[colStart[j + 1] - 1] < n) continue;
+    throw new PlanError(
+      "matrix-pattern",
+      `column ${j} of the pattern must hold its diagonal first, then rows ascending below ${n}: use buildPattern`,
+      `column ${j}`,
+      { column: j, unknowns: n },
+    );
   }
 }

@@ -1,45 +1,355 @@
-// Order of elimination.
-import type { SymmetricPattern } from "./pattern.ts";
+// Order of elimination with little fill: approximate minimum degree on the quotient graph.
+// Does not number the unknowns within a node and does not make supernodes: supernodes.ts does.
+import type { NodeGraph } from "./graph.ts";
+
+/** Working state of the elimination. Nodes turn from variable to element when eliminated. */
+interface Quotient {
+  n: number;
+  /** Lists of all nodes: variable = its elements, then its variables; element = its variables. */
+  list: Int32Array<ArrayBuffer>;
+  free: number;
+  from: Int32Array<ArrayBuffer>;
+  length: Int32Array<ArrayBuffer>;
+  /** Elements at the head of a variable's list. */
+  elements: Int32Array<ArrayBuffer>;
+  /** Unknowns in a variable; 0 for elements, merged and postponed nodes; negative while in the pivot's list. */
+  weight: Int32Array<ArrayBuffer>;
+  /** Approximate external degree of a variable, weight of the list of an element. */
+  degree: Int32Array<ArrayBuffer>;
+  /** Stamp of an element, 0 when absorbed. */
+  stamp: Int32Array<ArrayBuffer>;
+  /** Variables by degree, doubly linked; `before` also chains the buckets of equal hash. */
+  head: Int32Array<ArrayBuffer>;
+  after: Int32Array<ArrayBuffer>;
+  before: Int32Array<ArrayBuffer>;
+  /** Nodes merged into a node, as chains. */
+  chainNext: Int32Array<ArrayBuffer>;
+  chainEnd: Int32Array<ArrayBuffer>;
+}
 
 /**
- * Reverse Cuthill–McKee order: order[k] is the unknown eliminated k-th.
- * @source A. George, J. W. Liu, Computer Solution of Large Sparse Positive Definite Systems, 1981, chapter 4
+ * Elimination order of the nodes.
+ * @shape order[k] is the node eliminated k-th
+ * @source P. Amestoy, T. Davis, I. Duff, An approximate minimum degree ordering algorithm, SIAM J. Matrix Anal. Appl. 17(4),
+ *   1996: approximate degrees, mass elimination, merging of indistinguishable variables, aggressive absorption
  */
-export function orderUnknowns(pattern: SymmetricPattern): Int32Array<ArrayBuffer> {
-  const { n, colStart, rowIndex } = pattern;
-  const start = new Int32Array(n + 1);
-  for (let j = 0; j < n; j++)
-    for (let p = colStart[j] + 1; p < colStart[j + 1]; p++) {
-      start[j + 1]++;
-      start[rowIndex[p] + 1]++;
-    }
-  for (let j = 0; j < n; j++) start[j + 1] += start[j];
-  const near = new Int32Array(start[n]);
-  const fill = start.slice(0, n);
-  for (let j = 0; j < n; j++)
-    for (let p = colStart[j] + 1; p < colStart[j + 1]; p++) {
-      const i = rowIndex[p];
-      near[fill[j]++] = i;
-      near[fill[i]++] = j;
-    }
-  const degree = (v: number) => start[v + 1] - start[v];
-  const byDegree = Int32Array.from({ length: n }, (_, i) => i).sort((a, b) => degree(a) - degree(b) || a - b);
+export function orderNodes(graph: NodeGraph): Int32Array<ArrayBuffer> {
+  const n = graph.nNodes;
+  const q = openQuotient(graph);
   const order = new Int32Array(n);
-  const seen = new Uint8Array(n);
-  let end = 0;
-  for (const root of byDegree) {
-    if (seen[root]) continue;
-    seen[root] = 1;
-    order[end++] = root;
-    for (let k = end - 1; k < end; k++) {
-      const from = end;
-      for (let p = start[order[k]]; p < start[order[k] + 1]; p++)
-        if (!seen[near[p]]) {
-          seen[near[p]] = 1;
-          order[end++] = near[p];
-        }
-      order.subarray(from, end).sort((a, b) => degree(a) - degree(b) || a - b);
+  const postponed: number[] = [];
+  let total = 0;
+  for (let v = 0; v < n; v++) total += q.weight[v];
+  const dense = Math.max(16, 10 * Math.sqrt(total));
+  let left = total;
+  let done = 0;
+  for (let v = n - 1; v >= 0; v--) {
+    if (q.degree[v] > dense) {
+      postponed.push(v);
+      left -= q.weight[v];
+      q.weight[v] = 0;
+    } else enlist(q, v);
+  }
+  const hashHead = new Int32Array(n).fill(-1);
+  const hashOf = new Int32Array(n);
+  let lowest = 0;
+  let flag = 2;
+  let longest = 0;
+  while (done + postponed.length < n) {
+    while (q.head[lowest] === -1) lowest++;
+    const me = q.head[lowest];
+    delist(q, me);
+    left -= q.weight[me];
+    const pivotWeight = q.weight[me];
+    q.weight[me] = -pivotWeight;
+    let reach = gatherPivot(q, me);
+    if (reach > longest) longest = reach;
+    flag = markOverlap(q, me, flag);
+    const swallowed = updateDegrees(q, me, flag, hashHead, hashOf);
+    left -= swallowed;
+    reach -= swallowed;
+    flag += longest + 1;
+    flag = mergeTwins(q, me, flag, hashHead, hashOf);
+    lowest = closePivot(q, me, reach, left, lowest);
+    for (let v = me; v !== -1; v = q.chainNext[v]) order[done++] = v;
+  }
+  for (const v of postponed.reverse()) order[done++] = v;
+  return order;
+}
+
+function openQuotient({ nNodes: n, nearStart, near, memberStart }: NodeGraph): Quotient {
+  const size = near.length + (near.length >> 2) + 2 * n + 16;
+  const list = new Int32Array(size);
+  list.set(near);
+  const weight = new Int32Array(n);
+  const length = new Int32Array(n);
+  const degree = new Int32Array(n);
+  const chainEnd = new Int32Array(n);
+  let total = 0;
+  for (let v = 0; v < n; v++) {
+    weight[v] = memberStart[v + 1] - memberStart[v];
+    total += weight[v];
+    length[v] = nearStart[v + 1] - nearStart[v];
+    chainEnd[v] = v;
+  }
+  for (let v = 0; v < n; v++) for (let p = nearStart[v]; p < nearStart[v + 1]; p++) degree[v] += weight[near[p]];
+  return {
+    n,
+    list,
+    free: near.length,
+    from: nearStart.slice(0, n),
+    length,
+    elements: new Int32Array(n),
+    weight,
+    degree,
+    stamp: new Int32Array(n).fill(1),
+    head: new Int32Array(total + 1).fill(-1),
+    after: new Int32Array(n).fill(-1),
+    before: new Int32Array(n).fill(-1),
+    chainNext: new Int32Array(n).fill(-1),
+    chainEnd,
+  };
+}
+
+function enlist({ head, after, before, degree }: Quotient, v: number): void {
+  const first = head[degree[v]];
+  after[v] = first;
+  before[v] = -1;
+  if (first !== -1) before[first] = v;
+  head[degree[v]] = v;
+}
+
+function delist({ head, after, before, degree }: Quotient, v: number): void {
+  if (after[v] !== -1) before[after[v]] = before[v];
+  if (before[v] !== -1) after[before[v]] = after[v];
+  else head[degree[v]] = after[v];
+}
+
+/** Moves all living lists to the front of the store. */
+function packLists(q: Quotient): void {
+  const { n, list, from, length, weight, stamp, elements } = q;
+  // the first entry of a list is kept in `from` while its place holds the owner's name
+  for (let v = 0; v < n; v++) {
+    const living = length[v] > 0 && (weight[v] !== 0 || (elements[v] < 0 && stamp[v] !== 0));
+    if (!living) {
+      length[v] = 0;
+      continue;
+    }
+    const p = from[v];
+    from[v] = list[p];
+    list[p] = -1 - v;
+  }
+  let to = 0;
+  for (let p = 0; p < q.free; ) {
+    const owner = -1 - list[p++];
+    if (owner < 0) continue;
+    list[to] = from[owner];
+    from[owner] = to++;
+    for (let k = 1; k < length[owner]; k++) list[to++] = list[p++];
+  }
+  q.free = to;
+}
+
+/**
+ * Builds the list of the new element: all variables that touch the pivot or one of its elements. Their weights are negated,
+ * they leave the degree lists, the elements are absorbed.
+ */
+function gatherPivot(q: Quotient, me: number): number {
+  const { list, from, length, weight, elements, stamp, degree } = q;
+  const nElements = elements[me];
+  let reach = 0;
+  if (nElements === 0) {
+    const p0 = from[me];
+    let to = p0;
+    for (let p = p0; p < p0 + length[me]; p++) {
+      const v = list[p];
+      if (weight[v] <= 0) continue;
+      reach += weight[v];
+      delist(q, v);
+      weight[v] = -weight[v];
+      list[to++] = v;
+    }
+    length[me] = to - p0;
+  } else {
+    let need = length[me] - nElements;
+    for (let k = 0; k < nElements; k++) need += length[list[from[me] + k]];
+    if (q.free + need > list.length) packLists(q);
+    const p0 = q.free;
+    let to = p0;
+    const last = from[me] + length[me];
+    for (let p = from[me]; p < last; p++) {
+      const isElement = p < from[me] + nElements;
+      const e = list[p];
+      const a = isElement ? from[e] : p;
+      const b = isElement ? a + length[e] : p + 1;
+      for (let r = a; r < b; r++) {
+        const v = list[r];
+        if (weight[v] <= 0) continue;
+        reach += weight[v];
+        delist(q, v);
+        weight[v] = -weight[v];
+        list[to++] = v;
+      }
+      if (isElement) {
+        stamp[e] = 0;
+        length[e] = 0;
+      }
+    }
+    from[me] = p0;
+    length[me] = to - p0;
+    q.free = to;
+  }
+  elements[me] = -1;
+  degree[me] = reach;
+  return reach;
+}
+
+/** Stamps every element near the pivot with flag + weight of what it reaches beyond the pivot's list. */
+function markOverlap(q: Quotient, me: number, flagIn: number): number {
+  const { list, from, length, weight, elements, stamp, degree, n } = q;
+  let flag = flagIn;
+  if (flag > 1 << 29) {
+    for (let v = 0; v < n; v++) if (stamp[v] !== 0) stamp[v] = 1;
+    flag = 2;
+  }
+  stamp[me] = 1;
+  for (let p = from[me]; p < from[me] + length[me]; p++) {
+    const v = list[p];
+    const own = -weight[v];
+    for (let r = from[v]; r < from[v] + elements[v]; r++) {
+      const e = list[r];
+      if (stamp[e] >= flag) stamp[e] -= own;
+      else if (stamp[e] !== 0) stamp[e] = degree[e] + flag - own;
     }
   }
-  return order.reverse();
+  return flag;
+}
+
+/**
+ * New degree of every variable of the pivot's list, dead entries of its list removed, the pivot's element put first. A
+ * variable that touches nothing else is eliminated with the pivot; its weight is returned in sum.
+ */
+function updateDegrees(
+  q: Quotient,
+  me: number,
+  flag: number,
+  hashHead: Int32Array<ArrayBuffer>,
+  hashOf: Int32Array<ArrayBuffer>,
+): number {
+  const { list, from, length, weight, elements, stamp, degree, n } = q;
+  let swallowed = 0;
+  for (let p = from[me]; p < from[me] + length[me]; p++) {
+    const v = list[p];
+    const first = from[v];
+    const firstVariable = first + elements[v];
+    const last = first + length[v];
+    let to = first;
+    let hash = 0;
+    let sum = 0;
+    for (let r = first; r < firstVariable; r++) {
+      const e = list[r];
+      if (stamp[e] === 0) continue;
+      const beyond = stamp[e] - flag;
+      if (beyond > 0) {
+        sum += beyond;
+        list[to++] = e;
+        hash += e;
+      } else {
+        // its variables all lie in the pivot's list: aggressive absorption
+        stamp[e] = 0;
+        length[e] = 0;
+      }
+    }
+    const kept = to - first;
+    const toVariables = to;
+    for (let r = firstVariable; r < last; r++) {
+      const u = list[r];
+      if (weight[u] <= 0) continue;
+      sum += weight[u];
+      list[to++] = u;
+      hash += u;
+    }
+    if (kept === 0 && to === toVariables) {
+      swallowed -= weight[v];
+      mergeInto(q, v, me);
+      continue;
+    }
+    if (sum < degree[v]) degree[v] = sum;
+    // one entry at least fell away (the pivot, or an element it absorbed), so there is room for the new element
+    list[to] = list[toVariables];
+    list[toVariables] = list[first];
+    list[first] = me;
+    elements[v] = kept + 1;
+    length[v] = to - first + 1;
+    const bucket = hash % n;
+    hashOf[v] = bucket;
+    q.before[v] = hashHead[bucket];
+    hashHead[bucket] = v;
+  }
+  return swallowed;
+}
+
+function mergeInto(q: Quotient, v: number, into: number): void {
+  q.weight[v] = 0;
+  q.length[v] = 0;
+  q.elements[v] = 0;
+  q.chainNext[q.chainEnd[into]] = v;
+  q.chainEnd[into] = q.chainEnd[v];
+}
+
+/** Merges variables of the pivot's list with the same elements and variables. */
+function mergeTwins(
+  q: Quotient,
+  me: number,
+  flagIn: number,
+  hashHead: Int32Array<ArrayBuffer>,
+  hashOf: Int32Array<ArrayBuffer>,
+): number {
+  const { list, from, length, weight, elements, stamp, before } = q;
+  let flag = flagIn;
+  for (let p = from[me]; p < from[me] + length[me]; p++) {
+    const seed = list[p];
+    if (weight[seed] === 0) continue;
+    const bucket = hashOf[seed];
+    let v = hashHead[bucket];
+    hashHead[bucket] = -1;
+    for (; v !== -1 && before[v] !== -1; v = before[v]) {
+      const first = from[v];
+      const last = first + length[v];
+      for (let r = first + 1; r < last; r++) stamp[list[r]] = flag;
+      let previous = v;
+      for (let u = before[v]; u !== -1; u = before[u]) {
+        let same = length[u] === length[v] && elements[u] === elements[v];
+        for (let r = from[u] + 1; same && r < from[u] + length[u]; r++) same = stamp[list[r]] === flag;
+        if (same) {
+          weight[v] += weight[u];
+          mergeInto(q, u, v);
+          before[previous] = before[u];
+        } else previous = u;
+      }
+      flag++;
+    }
+  }
+  return flag;
+}
+
+/** Gives the variables their weights back, enters them by degree and leaves only living ones in the element's list. */
+function closePivot(q: Quotient, me: number, reach: number, left: number, lowestIn: number): number {
+  const { list, from, length, weight, degree } = q;
+  let lowest = lowestIn;
+  let to = from[me];
+  for (let p = from[me]; p < from[me] + length[me]; p++) {
+    const v = list[p];
+    const own = -weight[v];
+    if (own <= 0) continue;
+    weight[v] = own;
+    degree[v] = Math.max(0, Math.min(degree[v] + reach - own, left - own));
+    enlist(q, v);
+    if (degree[v] < lowest) lowest = degree[v];
+    list[to++] = v;
+  }
+  length[me] = to - from[me];
+  degree[me] = reach;
+  weight[me] = 0;
+  return lowest;
 }
