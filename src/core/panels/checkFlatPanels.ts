@@ -92,12 +92,13 @@ export function listPanelFindings(panels: readonly FlatPanel[]): Finding[] {
       const limit = FLAT_LIMITS.rms * Math.max(Math.abs(p.target[way]), 1e-9);
       const { rmsError } = p.stress[way];
       if (rmsError > limit) {
+        const taken = p.decompensated.length > 0 ? "; part of it is the compensation taken back along its sides" : "";
         out.push(
           caution(
             "panel-stress",
             p.id,
             [rmsError, limit],
-            `panel ${p.id}: ${way} stress as patterned is off by ${rmsError.toFixed(2)} kN/m rms from the intended ${p.target[way].toFixed(2)} kN/m; ${limit.toFixed(2)} kN/m (25 %) is allowed`,
+            `panel ${p.id}: ${way} stress as patterned is off by ${rmsError.toFixed(2)} kN/m rms from the intended ${p.target[way].toFixed(2)} kN/m; ${limit.toFixed(2)} kN/m (25 %) is allowed${taken}`,
           ),
         );
       }

