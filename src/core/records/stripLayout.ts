@@ -40,13 +40,19 @@ export interface Seam {
   length: number;
 }
 
-/** What was laid out, in words and numbers for the papers. */
+/** What was laid out on one region (piece between inner cables), in words and numbers for the papers. */
 export interface LayoutChoice {
+  /** "region 1", … in reading order. */
+  region: string;
+  /** Its strips, in order. */
+  panels: string[];
   layout: "bands" | "gores" | "pairs" | "whole";
   from: string;
   to: string;
   count: number;
   why: string;
+  /** Estimated flat width of each strip without allowances, m, in the order of `panels`; empty for pairs. */
+  widths: number[];
 }
 
 /** Output of the seams station. */

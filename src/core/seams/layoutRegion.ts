@@ -1,0 +1,242 @@
+// The layout of one region: tries the ways that make sense, takes the fewest strips that fit, says why.
+import { type Finding, PlanError } from "../problem.ts";
+import type { FoundForm } from "../records/foundForm.ts";
+import type { Job } from "../records/job.ts";
+import type { LayoutChoice } from "../records/stripLayout.ts";
+import { bandsBetween, type Candidate, findSector, listBands, listGores, orientCandidate } from "./candidate.ts";
+import { measureChain } from "./chain.ts";
+import { buildComb, type Comb, countStrips, curveAt, sizeBetween, spreadStrips } from "./comb.ts";
+import { type Placement, placeSeams } from "./placeSeams.ts";
+import type { Region } from "./region.ts";
+import { BAYS, type Curve } from "./stripWidth.ts";
+
+/** What the layout must respect, resolved for one region. */
+export interface RegionLimits {
+  /** m, flat, net of seam allowances. */
+  usableWidth: number;
+  /** m, or null. */
+  maxLength: number | null;
+  count: number | "auto";
+  /** Strips on top of the fewest that fit. */
+  more: number;
+  /** Measured over estimated width, strip by strip of an earlier run; empty: 1. */
+  factors: readonly number[];
+  /** Arc lengths on a candidate's ends that carry seam ends already. */
+  findMarks: (candidate: Candidate) => { start: number[]; finish: number[] };
+}
+
+/** A region laid out. */
+export interface RegionLayout {
+  region: Region;
+  candidate: Candidate;
+  placement: Placement;
+  why: string;
+  findings: Finding[];
+}
+
+/** Bays traced before a candidate is judged: across, and round a ring. own: the width between them is blended. */
+const TRIAL_BAYS = 4;
+const TRIAL_BAYS_ROUND = 12;
+/** Candidates placed in full at most. */
+const MOST_PLACED = 4;
+
+interface Trial {
+  candidate: Candidate;
+  comb: Comb;
+  count: number;
+  metres: number;
+  key: number[];
+}
+
+function measureCurve(curve: Curve): number {
+  let sum = 0;
+  for (let k = 0; k < BAYS; k++)
+    sum += Math.sqrt(
+      (curve[3 * k + 3] - curve[3 * k]) ** 2 +
+        (curve[3 * k + 4] - curve[3 * k + 1]) ** 2 +
+        (curve[3 * k + 5] - curve[3 * k + 2]) ** 2,
+    );
+  return sum;
+}
+
+/** Steps of two per cent, so that figures that differ by rounding only count as alike. */
+function coarse(x: number): number {
+  return Math.round(Math.log(Math.max(x, 1e-9)) / 0.02);
+}
+
+/** Judges a candidate from a few traced seams. */
+function tryCandidate(region: Region, raw: Candidate, limits: RegionLimits): Trial {
+  const candidate = orientCandidate(region, raw);
+  const round = candidate.left === null;
+  const comb = buildComb(region, candidate, round ? TRIAL_BAYS_ROUND : TRIAL_BAYS, limits.factors);
+  const open = { first: 0, last: 1 };
+  const least = round ? 3 : 1;
+  const count = limits.count === "auto" ? countStrips(comb, limits.usableWidth, least, open) : limits.count;
+  const shares = count > 200 ? [0, 1] : spreadStrips(comb, count, open);
+  const sizes = shares.slice(1).map((u, j) => sizeBetween(comb, shares[j], u));
+  const seams = (round ? shares.slice(0, -1) : shares.slice(1, -1)).map((u) => curveAt(comb, u));
+  const metres = seams.reduce((sum, curve) => sum + measureCurve(curve), 0);
+  const widths = sizes.map((size) => size.width);
+  const variation = 1 - Math.min(...widths) / Math.max(...widths);
+  const hugs = comb.teeth.some((tooth) => tooth.line !== null && !tooth.line.clear);
+  const tooLong = limits.maxLength !== null && sizes.some((size) => size.length > (limits.maxLength ?? 0));
+  const widest = Math.max(...widths);
+  const middle = curveAt(comb, 0.5);
+  const way = [0, 1, 2].map((c) => middle[3 * BAYS + c] - middle[c]);
+  const across = Math.abs(way[0]) / Math.hypot(...way);
+  return {
+    candidate,
+    comb,
+    count,
+    metres,
+    key: [
+      Number(tooLong),
+      Number(hugs),
+      count,
+      limits.count === "auto" ? 0 : coarse(widest),
+      coarse(metres),
+      Math.round(50 * variation),
+      -Math.round(20 * across),
+      coarse(measureChain(candidate.start)),
+    ],
+  };
+}
+
+function compareKeys(a: Trial, b: Trial): number {
+  const k = a.key.findIndex((x, i) => x !== b.key[i]);
+  return k < 0 ? 0 : a.key[k] - b.key[k];
+}
+
+/** The ways to lay strips that the job and the region's shape allow, and what had to be passed over. */
+function listCandidates(form: FoundForm, region: Region, job: Job): { list: Candidate[]; passed: string } {
+  const { layout, from, to } = job.seams;
+  if (region.outlines.length > 2)
+    throw new PlanError(
+      "seam-holes",
+      `${region.id} has ${region.outlines.length} boundary loops: strips can be laid on a piece with one loop or round one ring; name cables between the rings that divide it, or give the seams one by one ("pairs") so that every panel has one outline`,
+      region.id,
+      { loops: region.outlines.length },
+    );
+  if (region.outlines.length === 2) return { list: listGores(form, region, from), passed: "" };
+  let passed = "";
+  if (from !== null && to !== null && (layout === "bands" || layout === "gores")) {
+    const asked = bandsBetween(
+      form,
+      region,
+      (edge) => edge.id === from,
+      (edge) => edge.id === to,
+    );
+    if (asked) return { list: [{ ...asked, layout }], passed };
+    passed = `it does not touch both ${from} and ${to} in one run each`;
+  }
+  const sector = layout === "bands" ? null : findSector(form, region);
+  if (sector) return { list: [sector], passed };
+  const list = listBands(form, region);
+  if (layout === "bands" && from !== null) {
+    const names = (c: Candidate) => [c.from, c.to].some((name) => name.split(" + ").includes(from));
+    const named = list.filter(names);
+    if (named.length > 0) return { list: named, passed };
+  }
+  if (layout === "gores") passed ||= "it has no ring to start gores on";
+  return { list, passed };
+}
+
+/** Lays out one region. */
+export function layoutRegion(form: FoundForm, region: Region, job: Job, limits: RegionLimits): RegionLayout {
+  const { list, passed } = listCandidates(form, region, job);
+  const trials = list.map((candidate) => tryCandidate(region, candidate, limits)).sort(compareKeys);
+  const findings: Finding[] = [];
+  let best: { trial: Trial; placement: Placement } | null = null;
+  let spare: { trial: Trial; placement: Placement } | null = null;
+  const round = region.outlines.length === 2;
+  for (const trial of trials.slice(0, MOST_PLACED)) {
+    if (best && (trial.key[0] || trial.key[1] || trial.count >= best.placement.sizes.length)) break;
+    const placement = placeSeams(trial.comb, {
+      usableWidth: limits.usableWidth,
+      count: limits.count === "auto" ? "auto" : Math.max(limits.count, round ? 2 : 1),
+      least: round ? 3 : 1,
+      more: limits.more,
+      marks: limits.findMarks(trial.candidate),
+    });
+    const sound = placement.hugging.length === 0 && placement.sizes.length > 0;
+    const good = sound && (placement.fits || limits.count !== "auto");
+    if (good && (!best || placement.sizes.length < best.placement.sizes.length)) best = { trial, placement };
+    if (placement.sizes.length > 0) spare ??= { trial, placement };
+  }
+  const chosen = best ?? spare;
+  if (!chosen)
+    throw new PlanError(
+      "seam-none",
+      `no layout of ${region.id} fits a usable width of ${limits.usableWidth.toFixed(3)} m with seams clear of its edges; give a wider cloth, or the seams one by one ("pairs")`,
+      region.id,
+      { usableWidth: limits.usableWidth },
+    );
+  if (passed)
+    findings.push({
+      code: "seam-layout-fallback",
+      level: "note",
+      station: "seams",
+      where: [region.id, "seams.layout"],
+      value: job.seams.layout,
+      limit: null,
+      text: `${region.id} was laid out automatically: ${passed}.`,
+      remedy: "Name edges that both border it, or give the seams one by one.",
+      basis: "own argument",
+    });
+  if (round && limits.count !== "auto" && limits.count < 2)
+    findings.push({
+      code: "seam-ring-count",
+      level: "caution",
+      station: "seams",
+      where: [region.id, "seams.count"],
+      value: limits.count,
+      limit: 2,
+      text: `A panel round a ring that joins itself is no panel: ${region.id} has 2 strips in place of ${limits.count}.`,
+      remedy: "Ask for 2 strips or more.",
+      basis: "own argument",
+    });
+  return {
+    region,
+    candidate: chosen.trial.candidate,
+    placement: chosen.placement,
+    why: explainChoice(chosen, trials, limits),
+    findings,
+  };
+}
+
+function explainChoice(chosen: { trial: Trial; placement: Placement }, trials: Trial[], limits: RegionLimits): string {
+  const { placement, trial } = chosen;
+  const n = placement.sizes.length;
+  const widest = Math.max(...placement.sizes.map((size) => size.width));
+  const width = `widest about ${widest.toFixed(2)} m of ${limits.usableWidth.toFixed(2)} m usable`;
+  const told = limits.count === "auto" ? "" : " as asked";
+  const head = n === 1 ? `one panel${told}, ${width}` : `${n} strips${told}, ${width}`;
+  const others = trials.filter((other) => other !== trial);
+  if (others.length === 0) return `${head}.`;
+  const more = others.filter((other) => other.count > n).length;
+  const metres = others.filter((other) => other.count <= n && other.metres > 1.02 * trial.metres).length;
+  const words: string[] = [];
+  if (more > 0) words.push(`${more} other ${more === 1 ? "way needs" : "ways need"} more strips`);
+  if (metres > 0) words.push(`${metres} more metres of seam`);
+  const rest = others.length - more - metres;
+  if (rest > 0)
+    words.push(
+      `${rest} ${rest === 1 ? "is" : "are"} alike in both, or ${rest === 1 ? "runs" : "run"} too near an edge`,
+    );
+  return `${head}; of ${trials.length} ways: ${words.join(", ")}.`;
+}
+
+/** The choice in the words of the papers. */
+export function describeChoice(layout: RegionLayout, panels: string[]): LayoutChoice {
+  const { candidate, placement, region } = layout;
+  return {
+    region: region.id,
+    panels,
+    layout: panels.length === 1 ? "whole" : candidate.layout,
+    from: candidate.from,
+    to: candidate.to,
+    count: panels.length,
+    why: layout.why,
+    widths: placement.sizes.map((size) => size.width),
+  };
+}
