@@ -1,0 +1,213 @@
+// The form station: from a mesh as a program wrote it to a sound surface with named edges, anchors and its balance.
+// Settling is not built: the form is taken as it is and checked.
+import { type Check, type Finding, PlanError, type StationContext, type StationResult } from "../problem.ts";
+import type { FormEdge, FoundForm, Residual } from "../records/foundForm.ts";
+import type { Job, MeshSource } from "../records/job.ts";
+import { buildAdjacency } from "../surface/adjacency.ts";
+import { measureArea } from "../surface/measures.ts";
+import { buildLoops, buildTearFinding, findTears } from "./boundaryLoops.ts";
+import { balanceCablesInPlace } from "./cableForces.ts";
+import { isCable, measureStations } from "./cablePull.ts";
+import { type BoundaryRun, cutLoop, sideKey } from "./cutLoops.ts";
+import { findCorners } from "./findCorners.ts";
+import { buildFormFinding, describeVertex } from "./formFinding.ts";
+import { addJobAnchorsInPlace, readHeldPoints } from "./heldPoints.ts";
+import { matchLines, type SurfaceLine } from "./matchLines.ts";
+import { measureReactionsInPlace, measureResidual, sumForces } from "./measureBalance.ts";
+import { measureMembraneForces, type StressField } from "./membraneForces.ts";
+import { nameAnchors } from "./nameAnchors.ts";
+import { nameEdges } from "./nameEdges.ts";
+import { buildSoundSurface, type SoundSurface } from "./soundSurface.ts";
+
+/** Residual above which the form is not in balance (share of the mean summed force of the cloth at a vertex). */
+const BALANCED = 0.01;
+
+function chooseField(job: Job): { field: StressField; findings: Finding[] } {
+  const { warp, weft } = job.prestress;
+  if (!(warp > 0 && weft > 0))
+    throw new PlanError(
+      "form-prestress",
+      `prestress: warp ${warp} and weft ${weft} kN/m must both be above 0; a cloth without tension has no form`,
+      "prestress",
+      { warp, weft },
+    );
+  const findings: Finding[] = [];
+  if (warp !== weft && job.warp === null)
+    findings.push(
+      buildFormFinding("note", {
+        code: "form-mean-stress",
+        where: "warp",
+        value: (warp + weft) / 2,
+        text: `prestress ${warp} and ${weft} kN/m differ, but no warp direction is given: the balance is that of their mean, ${(warp + weft) / 2} kN/m both ways`,
+        remedy: "give the warp direction in the job (warp)",
+      }),
+    );
+  if (job.settle)
+    findings.push(
+      buildFormFinding("caution", {
+        code: "form-settle",
+        where: "settle",
+        text: "settle is asked for, but the form is taken as it is and only checked: settling has no effect yet",
+        remedy: "bring the form into balance in the program it comes from, and read the residual here",
+      }),
+    );
+  return { field: { warp, weft, direction: job.warp }, findings };
+}
+
+interface Skeleton {
+  loops: number[][];
+  runs: BoundaryRun[];
+  anchorVertices: number[];
+  inner: SurfaceLine[];
+  findings: Finding[];
+}
+
+function cutBoundary(
+  sound: SoundSurface,
+  source: MeshSource,
+  held: ReturnType<typeof readHeldPoints>["held"],
+): Skeleton {
+  const adjacency = buildAdjacency(sound.surface);
+  const loops = buildLoops(sound.surface, adjacency);
+  const sides = new Set<string>();
+  for (const loop of loops) for (const [i, v] of loop.entries()) sides.add(sideKey(v, loop[(i + 1) % loop.length]));
+  const { lines, findings } = matchLines(sound, adjacency, source.lines, (a, b) => sides.has(sideKey(a, b)));
+  const spoken = new Uint8Array(sound.toSource.length);
+  for (const line of lines) for (const v of line.vertices) spoken[v] = 1;
+  for (const v of held.keys()) spoken[v] = 1;
+  const tears = new Set(findTears(sound, loops, spoken));
+  const lineOfSide = new Map<string, SurfaceLine>();
+  for (const line of lines)
+    if (line.boundary)
+      for (let i = 1; i < line.vertices.length; i++)
+        lineOfSide.set(sideKey(line.vertices[i - 1], line.vertices[i]), line);
+  const { xyz } = sound.surface;
+  const cut = loops.map((loop, i) =>
+    cutLoop(loop, i, { xyz, lineOfSide, held, corners: findCorners(xyz, loop), tear: tears.has(i) }),
+  );
+  return {
+    loops,
+    runs: cut.flatMap((c) => c.runs),
+    anchorVertices: cut.flatMap((c) => c.anchors),
+    inner: lines.filter((l) => !l.boundary),
+    findings,
+  };
+}
+
+function reportResidual(
+  sound: SoundSurface,
+  residual: Residual,
+  worst: number,
+): { checks: Check[]; findings: Finding[] } {
+  const holds = residual.max <= BALANCED;
+  const check: Check = {
+    station: "form",
+    text: "residual at free vertices over the mean summed force of the cloth",
+    value: residual.max,
+    limit: BALANCED,
+    holds,
+  };
+  if (holds) return { checks: [check], findings: [] };
+  const percent = (r: number) => `${(100 * r).toPrecision(3)} %`;
+  return {
+    checks: [check],
+    findings: [
+      buildFormFinding("caution", {
+        code: "form-balance",
+        where: `vertex ${sound.toSource[worst]}`,
+        value: residual.max,
+        limit: BALANCED,
+        text: `the form is not in balance under this prestress and these cable forces: residual up to ${percent(residual.max)} of the cloth's force at a vertex (rms ${percent(residual.rms)}, normal ${percent(residual.normalMax)}, limit ${percent(BALANCED)}), worst at ${describeVertex(sound.surface.xyz, worst).replace(`vertex ${worst}`, `vertex ${sound.toSource[worst]}`)}`,
+        remedy:
+          "check prestress and cable forces against those the form was found with; the roof will move towards its own balance when it is pulled up",
+      }),
+    ],
+  };
+}
+
+/** Every boundary side belongs to exactly one edge; all coordinates and forces are finite. */
+function checkOutput(form: FoundForm): Check[] {
+  const sides = form.loops.reduce((n, loop) => n + loop.length, 0);
+  const covered = form.edges.reduce((n, e) => n + (e.loop >= 0 ? e.vertices.length - 1 : 0), 0);
+  const numbers = [
+    form.area,
+    form.residual.max,
+    ...form.reactions.flatMap((r) => r.force),
+    ...form.edges.map((e) => e.force ?? 0),
+  ];
+  const broken = numbers.filter((x) => !Number.isFinite(x)).length;
+  return [
+    {
+      station: "form",
+      text: "boundary sides covered by edges",
+      value: covered,
+      limit: sides,
+      holds: covered === sides,
+    },
+    { station: "form", text: "results that are not finite", value: broken, limit: 0, holds: broken === 0 },
+  ];
+}
+
+/**
+ * The found form of a mesh: repaired, named, balanced; every repair and default is a finding.
+ * @units metres, kN; reactions are the pull of the structure on what holds it
+ * @throws PlanError mesh-flat, mesh-closed, mesh-three-way-edge, mesh-one-sided, anchor-unknown, anchor-double, edge-unknown,
+ *   edge-kind, form-prestress, cancelled
+ */
+export function runForm(source: MeshSource, job: Job, context: StationContext): StationResult<FoundForm> {
+  const step = (share: number, words: string) => {
+    if (context.cancelled?.()) throw new PlanError("cancelled", "the form station was stopped", "form");
+    context.onProgress?.(share, words);
+  };
+  step(0, "checking the mesh");
+  const stress = chooseField(job);
+  const sound = buildSoundSurface(source);
+  const { surface } = sound;
+  step(0.4, "cutting the boundary into edges");
+  const points = readHeldPoints(sound, source);
+  addJobAnchorsInPlace(points.held, sound, job.anchors);
+  const skeleton = cutBoundary(sound, source, points.held);
+  const taken = new Set([...points.held.values()].map((h) => h.name).filter((n) => n !== null));
+  const even = measureMembraneForces(surface, { warp: 1, weft: 1, direction: null });
+  const named = nameEdges({ xyz: surface.xyz, pull: even.force }, skeleton.runs, skeleton.inner, job.edges, taken);
+  const edges: FormEdge[] = named.edges.map((n) => n.edge);
+  const tears = named.edges
+    .filter((n) => n.tear)
+    .map((n) => buildTearFinding(sound, n.edge.vertices.slice(1), n.edge.id));
+  const anchorage = nameAnchors(surface, skeleton.anchorVertices, points.held, edges, job.anchors);
+  step(0.7, "balancing cloth and cables");
+  const membrane = measureMembraneForces(surface, stress.field);
+  const stations = edges.map((e) => (isCable(e) ? measureStations(surface.xyz, e.vertices) : null));
+  const cableFindings = balanceCablesInPlace(edges, stations, membrane.force, anchorage.fixed);
+  const total = sumForces(membrane, edges, stations);
+  const { residual, worst } = measureResidual(surface, membrane, total, anchorage.fixed, stations);
+  const { reactions, check } = measureReactionsInPlace(surface, total, edges, anchorage.anchors, stress.field);
+  const balance = reportResidual(sound, residual, worst);
+  const output: FoundForm = {
+    surface,
+    fixed: anchorage.fixed,
+    loops: skeleton.loops,
+    stress: { warp: job.prestress.warp, weft: job.prestress.weft },
+    edges,
+    anchors: anchorage.anchors,
+    residual,
+    area: measureArea(surface),
+    reactions,
+  };
+  step(1, "form done");
+  return {
+    output,
+    findings: [
+      ...sound.findings,
+      ...points.findings,
+      ...skeleton.findings,
+      ...tears,
+      ...named.findings,
+      ...anchorage.findings,
+      ...stress.findings,
+      ...cableFindings,
+      ...balance.findings,
+    ],
+    checks: [...balance.checks, check, ...checkOutput(output)],
+  };
+}

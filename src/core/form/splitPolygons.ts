@@ -1,0 +1,115 @@
+// Polygons into triangles: quads along the diagonal that bends least, larger ones by cutting the best ear each time.
+// Source of the ear rule: G. H. Meisters, Polygons have ears, Amer. Math. Monthly 82 (1975); the choice of ear is our own.
+import type { MeshSource } from "../records/job.ts";
+
+type Three = [number, number, number];
+
+function cross(x: Float64Array<ArrayBuffer>, a: number, b: number, c: number): Three {
+  const u = [0, 1, 2].map((k) => x[3 * b + k] - x[3 * a + k]);
+  const v = [0, 1, 2].map((k) => x[3 * c + k] - x[3 * a + k]);
+  return [u[1] * v[2] - u[2] * v[1], u[2] * v[0] - u[0] * v[2], u[0] * v[1] - u[1] * v[0]];
+}
+
+function dot(a: Three, b: Three): number {
+  return a[0] * b[0] + a[1] * b[1] + a[2] * b[2];
+}
+
+function distance(x: Float64Array<ArrayBuffer>, a: number, b: number): number {
+  return Math.sqrt(
+    (x[3 * a] - x[3 * b]) ** 2 + (x[3 * a + 1] - x[3 * b + 1]) ** 2 + (x[3 * a + 2] - x[3 * b + 2]) ** 2,
+  );
+}
+
+/** Cosine of the fold between two triangles; -1 where one of them has no area. */
+function measureFold(n: Three, m: Three): number {
+  const l = Math.sqrt(dot(n, n) * dot(m, m));
+  return l > 0 ? dot(n, m) / l : -1;
+}
+
+/** Two triangles of a quad; of two equally flat diagonals the shorter one. */
+function splitQuad(x: Float64Array<ArrayBuffer>, q: number[]): number[] {
+  const [a, b, c, d] = q;
+  const ac = measureFold(cross(x, a, b, c), cross(x, a, c, d));
+  const bd = measureFold(cross(x, b, c, d), cross(x, b, d, a));
+  const tie = Math.abs(ac - bd) < 1e-9;
+  const first = tie ? distance(x, a, c) <= distance(x, b, d) * (1 + 1e-9) : ac > bd;
+  return first ? [a, b, c, a, c, d] : [b, c, d, b, d, a];
+}
+
+/** Whether p lies in triangle abc or on its rim, seen along n. */
+function holds(x: Float64Array<ArrayBuffer>, n: Three, abc: Three, p: number): boolean {
+  const [a, b, c] = abc;
+  return dot(cross(x, a, b, p), n) >= 0 && dot(cross(x, b, c, p), n) >= 0 && dot(cross(x, c, a, p), n) >= 0;
+}
+
+/** Roundness of a triangle: area over the sum of squared sides, negative where it is wound against n. */
+function measureEar(x: Float64Array<ArrayBuffer>, n: Three, [a, b, c]: Three): number {
+  const l = distance(x, a, b) ** 2 + distance(x, b, c) ** 2 + distance(x, c, a) ** 2;
+  return l > 0 ? dot(cross(x, a, b, c), n) / l : 0;
+}
+
+function splitMany(x: Float64Array<ArrayBuffer>, polygon: number[]): number[] {
+  const out: number[] = [];
+  const ring = polygon.slice();
+  const n: Three = [0, 0, 0];
+  for (let i = 1; i + 1 < ring.length; i++)
+    cross(x, ring[0], ring[i], ring[i + 1]).forEach((w, k) => {
+      n[k] += w;
+    });
+  const length = Math.sqrt(dot(n, n));
+  if (length > 0) for (let k = 0; k < 3; k++) n[k] /= length;
+  while (ring.length > 3) {
+    let best = -1;
+    let bestEar = -Infinity;
+    for (let i = 0; i < ring.length; i++) {
+      const abc: Three = [ring[(i + ring.length - 1) % ring.length], ring[i], ring[(i + 1) % ring.length]];
+      const ear = measureEar(x, n, abc);
+      if (ear <= bestEar * (1 + 1e-9) || ear <= 0 || ring.some((p) => !abc.includes(p) && holds(x, n, abc, p)))
+        continue;
+      best = i;
+      bestEar = ear;
+    }
+    const i = Math.max(best, 0);
+    out.push(ring[(i + ring.length - 1) % ring.length], ring[i], ring[(i + 1) % ring.length]);
+    ring.splice(i, 1);
+  }
+  out.push(...ring);
+  return out;
+}
+
+/**
+ * Triangles of a mesh whose vertices are welded; corners that fell together are taken once, faces left with fewer than
+ * three corners vanish.
+ * @shape target nV (vertex each is welded to) -> tri 3*nT, face nT (polygon it comes from)
+ */
+export function splitPolygons(
+  x: Float64Array<ArrayBuffer>,
+  source: Pick<MeshSource, "faceStart" | "faceVertex">,
+  target: Uint32Array<ArrayBuffer>,
+): { tri: Uint32Array<ArrayBuffer>; face: Uint32Array<ArrayBuffer>; vanished: number[] } {
+  const { faceStart, faceVertex } = source;
+  const nF = faceStart.length - 1;
+  const room = Math.max(0, faceVertex.length - 2 * nF);
+  const tri = new Uint32Array(3 * room);
+  const face = new Uint32Array(room);
+  const vanished: number[] = [];
+  let n = 0;
+  for (let f = 0; f < nF; f++) {
+    const ring: number[] = [];
+    for (let i = faceStart[f]; i < faceStart[f + 1]; i++) {
+      const v = target[faceVertex[i]];
+      if (v !== ring[ring.length - 1]) ring.push(v);
+    }
+    while (ring.length > 1 && ring[0] === ring[ring.length - 1]) ring.pop();
+    if (ring.length < 3) {
+      vanished.push(f);
+      continue;
+    }
+    const parts = ring.length === 3 ? ring : ring.length === 4 ? splitQuad(x, ring) : splitMany(x, ring);
+    for (let i = 0; i < parts.length; i += 3) {
+      tri.set(parts.slice(i, i + 3), 3 * n);
+      face[n++] = f;
+    }
+  }
+  return { tri: tri.slice(0, 3 * n), face: face.slice(0, n), vanished };
+}
