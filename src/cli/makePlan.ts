@@ -1,0 +1,71 @@
+// From what was read to facts and papers, with progress shown. Writes no files.
+import { PlanError, type Station, type StationContext } from "../core/problem.ts";
+import type { Facts } from "../core/records/facts.ts";
+import type { Job, MeshSource } from "../core/records/job.ts";
+import type { OutputFile } from "./outputFolder.ts";
+import { loadFonts } from "./packageFiles.ts";
+import type { PlanInput } from "./readInput.ts";
+import { openProgress, type Terminal } from "./terminal.ts";
+
+/** The two doors of core that the verbs go through; tests put their own in. */
+export interface PlanDoors {
+  runPlan: (
+    job: Job,
+    source: MeshSource,
+    options: { until?: Station; revision: string },
+    context: StationContext,
+  ) => Facts;
+  writePapers: (
+    facts: Facts,
+    options: { fonts: { regular: Uint8Array; bold: Uint8Array } },
+  ) => Promise<{ files: OutputFile[] }>;
+}
+
+/** How the verbs reach the world: doors are opened only by those that plan, because opening takes time. */
+export interface Surroundings {
+  terminal: Terminal;
+  openDoors: () => Promise<PlanDoors>;
+}
+
+/** The facts of a plan, with the findings of reading in front. */
+export async function makeFacts(
+  input: PlanInput,
+  around: Surroundings,
+  options: { until?: Station; quiet: boolean },
+): Promise<Facts> {
+  const doors = await around.openDoors();
+  const progress = openProgress(around.terminal, options.quiet);
+  try {
+    const { until } = options;
+    const settings = { revision: input.revision, ...(until === undefined ? {} : { until }) };
+    const facts = doors.runPlan(input.job, input.source, settings, { onProgress: progress.show });
+    return { ...facts, findings: [...input.findings, ...facts.findings] };
+  } finally {
+    progress.end();
+  }
+}
+
+/** facts.json and the papers drawn from it. */
+export async function makePapers(facts: Facts, around: Surroundings): Promise<OutputFile[]> {
+  const doors = await around.openDoors();
+  const { files } = await doors.writePapers(facts, { fonts: loadFonts() });
+  return [{ path: "facts.json", bytes: writeFactsJson(facts) }, ...files];
+}
+
+/**
+ * The bytes of facts.json.
+ * @throws PlanError facts-not-finite: JSON has no NaN, and a null would pass for "none"
+ */
+export function writeFactsJson(facts: Facts): Uint8Array {
+  const text = JSON.stringify(facts, (key, value) => {
+    if (typeof value === "number" && !Number.isFinite(value)) {
+      throw new PlanError(
+        "facts-not-finite",
+        `the plan holds ${value} under ${JSON.stringify(key)}: a fault of this program; nothing was written`,
+        key,
+      );
+    }
+    return value;
+  });
+  return new TextEncoder().encode(`${text}\n`);
+}

@@ -1,0 +1,48 @@
+// What the verbs are and how they are called. The texts of `seamstay help`.
+
+/** Stations a plan can stop after. */
+export const UNTIL = ["form", "seams", "panels", "rolls"] as const;
+
+/** The verbs in the order a person meets them. */
+export const VERBS: { verb: string; call: string; words: string; more: string[] }[] = [
+  {
+    verb: "start",
+    call: "start [TEMPLATE DIR]",
+    words: "copies a starter job into a new folder; without arguments lists the starters",
+    more: ["  nothing that exists is overwritten"],
+  },
+  {
+    verb: "plan",
+    call: "plan JOB|FORM.obj --out DIR [--until STATION] [--json] [--quiet]",
+    words: "plans a job and writes facts.json and the papers into DIR",
+    more: [
+      "  JOB is a job file (JSON); a mesh (OBJ, metres, z up) is planned with the defaults of common practice",
+      `  --until STATION   stops after ${UNTIL.join(", ")}`,
+      "  --json            prints one JSON object on stdout in place of words",
+      "  --quiet           prints nothing but errors",
+      "  DIR is made, or replaced where it holds an earlier plan; files in it that are not of the plan stay",
+    ],
+  },
+  {
+    verb: "check",
+    call: "check JOB|FORM.obj [--json] [--quiet]",
+    words: "plans a job without writing anything, and prints its checks and findings",
+    more: [],
+  },
+  { verb: "demo", call: "demo", words: "plans the starter jobs into ./out and says what came out", more: [] },
+  { verb: "help", call: "help [VERB]", words: "this text, or more on one verb", more: [] },
+];
+
+/** The whole help, or that of one verb. */
+export function writeHelp(verb?: string): string {
+  const one = VERBS.find((v) => v.verb === verb);
+  if (one !== undefined) return [`seamstay ${one.call}`, `  ${one.words}`, ...one.more].join("\n");
+  return [
+    "seamstay: from a found tensile form to cut cloth",
+    "",
+    ...VERBS.flatMap((v) => [`  seamstay ${v.call}`, `      ${v.words}`]),
+    "",
+    "Exit status: 0 done, 1 the plan holds a stop and its papers are not for issue, 2 bad input or usage.",
+    "First steps: seamstay start market-hall bay && seamstay plan bay/job.json --out bay/plan",
+  ].join("\n");
+}
