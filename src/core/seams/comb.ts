@@ -46,7 +46,7 @@ export function traceTooth(comb: Comb, ends: SeamEnds): SeamLine {
 }
 
 /** Puts the seam at share u into the comb. */
-export function addTooth(comb: Comb, u: number, ends: SeamEnds = endsAt(comb.candidate, u)): SeamLine {
+function addTooth(comb: Comb, u: number, ends: SeamEnds = endsAt(comb.candidate, u)): SeamLine {
   const line = traceTooth(comb, ends);
   const at = comb.teeth.findIndex((tooth) => tooth.u >= u - 1e-12);
   const same = at >= 0 && Math.abs(comb.teeth[at].u - u) <= 1e-12;
@@ -102,8 +102,13 @@ export function sizeBetween(comb: Comb, u0: number, u1: number): StripSize {
   const step = Math.ceil(inside.length / 3);
   const middle = inside.filter((_, k) => k % Math.max(1, step) === Math.floor(step / 2));
   const curves = [curveAt(comb, u0), ...middle.map((tooth) => tooth.curve), curveAt(comb, u1)];
+  return sizeOfCurves(comb, curves, (u0 + u1) / 2);
+}
+
+/** Flat size of the strip over these curves, corrected by the factor at its middle share. */
+export function sizeOfCurves(comb: Comb, curves: readonly Curve[], middle: number): StripSize {
   const size = measureStripSize(curves);
-  return { length: size.length, width: size.width * factorAt(comb.factors, (u0 + u1) / 2) };
+  return { length: size.length, width: size.width * factorAt(comb.factors, middle) };
 }
 
 function factorAt(factors: readonly number[], u: number): number {
@@ -125,7 +130,7 @@ function reach(comb: Comb, u0: number, w: number): number {
   if (sizeBetween(comb, u0, 1).width <= w) return 1;
   let low = u0;
   let high = 1;
-  for (let k = 0; k < 26; k++) {
+  for (let k = 0; k < 14; k++) {
     const mid = (low + high) / 2;
     if (sizeBetween(comb, u0, mid).width <= w) low = mid;
     else high = mid;
@@ -167,7 +172,7 @@ export function spreadStrips(comb: Comb, n: number, bounds: Bounds): number[] {
   let low = 0;
   let high = sizeBetween(comb, 0, 1).width;
   let best: number[] | null = null;
-  for (let k = 0; k < 26 && high - low > 1e-6 * high; k++) {
+  for (let k = 0; k < 14 && high - low > 1e-3 * high; k++) {
     const mid = (low + high) / 2;
     const at = march(comb, mid, n, bounds);
     if (at) {

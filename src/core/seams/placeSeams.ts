@@ -3,13 +3,13 @@
 import type { Candidate } from "./candidate.ts";
 import { type Chain, listChainPoints, measureChain } from "./chain.ts";
 import {
-  addTooth,
   type Bounds,
   type Comb,
   countStrips,
   endsAt,
   type SeamEnds,
   sizeBetween,
+  sizeOfCurves,
   spreadStrips,
   traceTooth,
 } from "./comb.ts";
@@ -46,6 +46,11 @@ const SNAP = 0.1;
 const SNAP_SHARE = 0.06;
 /** Least waist of a strip beside a hollow rim, of the usable width. own: less is a ribbon that cannot be welded from both sides. */
 const WAIST = 0.06;
+/** Seams stand still within this part of a strip. */
+const EVEN = 0.003;
+/** Rounds of shifting, and counts tried beside the first. own: three rounds are the rule, each costs one trace a seam. */
+const ROUNDS = 8;
+const TRIES = 5;
 /** More strips than this in one region are a mistake in the units. */
 const MOST_STRIPS = 200;
 
@@ -101,14 +106,14 @@ function findClear(comb: Comb, from: number, step: number, rim: Chain, usable: n
   return 2;
 }
 
-/** Drops blended knowledge beside a seam that is about to be traced. */
-function addSeam(comb: Comb, u: number, n: number, ends: SeamEnds): SeamLine {
-  comb.teeth = comb.teeth.filter((tooth) => tooth.u === 0 || tooth.u === 1 || Math.abs(tooth.u - u) > 0.25 / n);
-  return addTooth(comb, u, ends);
-}
-
 /** Tightens the bounds where the first or last seam is not clear of its rim; true where it did. */
-function tightenBounds(comb: Comb, shares: number[], lines: SeamLine[], bounds: Bounds, usable: number): boolean {
+function tightenBoundsInPlace(
+  bounds: Bounds,
+  comb: Comb,
+  shares: readonly number[],
+  lines: readonly SeamLine[],
+  usable: number,
+): boolean {
   const { left, right } = comb.candidate;
   const n = shares.length - 1;
   let changed = false;
@@ -124,66 +129,135 @@ function tightenBounds(comb: Comb, shares: number[], lines: SeamLine[], bounds: 
   return changed;
 }
 
-/** Places the seams of a candidate. */
-export function placeSeams(comb: Comb, options: PlaceOptions): Placement {
-  const { usableWidth: usable, marks } = options;
-  const bounds: Bounds = { first: 0, last: 1 };
-  const fail: Placement = { shares: [0, 1], lines: [], sizes: [], hugging: [], fits: false };
-  let least = options.least;
-  let before: number[] = [];
-  let shares: number[] = [];
-  let lines: SeamLine[] = [];
-  for (let round = 0; round < 8; round++) {
-    const n =
-      options.count === "auto" ? countStrips(comb, usable, least, bounds, MOST_STRIPS) + options.more : options.count;
-    if (n > MOST_STRIPS) return fail;
-    if (bounds.first > bounds.last) return { ...fail, hugging: [0] };
-    shares = spreadStrips(comb, n, bounds);
-    const same = shares.length === before.length && shares.every((u, j) => Math.abs(u - before[j]) < 0.01 / n);
-    if (same && round > 1) {
-      const over = options.count === "auto" && sizesOf(comb, before).some((size) => size.width > usable);
-      if (!over) {
-        shares = before;
-        break;
-      }
-      least = n + 1 - options.more;
+/** Shares at which all strips are equally wide, if width grows evenly within each strip of today; bounds kept. */
+function evenOut(shares: readonly number[], sizes: readonly StripSize[], bounds: Bounds): number[] {
+  const n = sizes.length;
+  const spread = (from: number, to: number): number[] => {
+    const total = sizes.slice(from, to).reduce((sum, size) => sum + size.width, 0);
+    const out = [shares[from]];
+    let j = from;
+    let done = 0;
+    for (let k = 1; k < to - from; k++) {
+      const goal = (total * k) / (to - from);
+      while (j < to - 1 && done + sizes[j].width < goal) done += sizes[j++].width;
+      out.push(shares[j] + ((goal - done) / sizes[j].width) * (shares[j + 1] - shares[j]));
+    }
+    return [...out, shares[to]];
+  };
+  const free = spread(0, n);
+  const first = free[1] < bounds.first && n > 2 ? 1 : 0;
+  const last = free[n - 1] > bounds.last && n > 2 ? n - 1 : n;
+  if (first === 0 && last === n) return free;
+  const kept = [...shares];
+  if (first === 1) kept[1] = bounds.first;
+  if (last === n - 1) kept[n - 1] = bounds.last;
+  if (last - first < 1) return kept;
+  const inner = spread(first, last);
+  return kept.map((u, k) => (k > first && k < last ? inner[k - first] : u));
+}
+
+interface Settled {
+  shares: number[];
+  lines: SeamLine[];
+  sizes: StripSize[];
+  widest: number;
+  /** Falls as the strips become alike: the eighth power mean of the widths, so that a strip held wide by its rim does not hide the rest. */
+  unevenness: number;
+}
+
+/** Sizes of the strips between traced lines. */
+function sizesOf(comb: Comb, shares: readonly number[], lines: readonly SeamLine[]): StripSize[] {
+  if (lines.length === 0) return [sizeBetween(comb, 0, 1)];
+  const rim = [comb.teeth[0].curve, ...lines.map((line) => line.curve), comb.teeth[comb.teeth.length - 1].curve];
+  return shares.slice(1).map((u, j) => sizeOfCurves(comb, [rim[j], rim[j + 1]], (shares[j] + u) / 2));
+}
+
+/** Traces n strips and shifts their seams until all are equally wide; the best found. */
+function settleStrips(comb: Comb, start: number[], bounds: Bounds, usable: number): Settled | null {
+  let shares = start;
+  let best: Settled | null = null;
+  for (let round = 0; round < ROUNDS; round++) {
+    const lines = shares.slice(1, -1).map((u) => traceTooth(comb, endsAt(comb.candidate, u)));
+    if (lines.length > 0 && tightenBoundsInPlace(bounds, comb, shares, lines, usable)) {
+      if (bounds.first > bounds.last) return null;
+      shares = clampShares(shares, bounds);
       continue;
     }
-    lines = shares.slice(1, -1).map((u) => addSeam(comb, u, n, endsAt(comb.candidate, u)));
-    if (n > 1 && tightenBounds(comb, shares, lines, bounds, usable)) before = [];
-    else before = shares;
+    const sizes = sizesOf(comb, shares, lines);
+    const widths = sizes.map((size) => size.width);
+    const widest = Math.max(...widths);
+    const unevenness = widths.reduce((sum, w) => sum + (w / usable) ** 8, 0);
+    if (!best || unevenness < best.unevenness) best = { shares, lines, sizes, widest, unevenness };
+    const next = evenOut(shares, sizes, bounds);
+    if (next.every((u, j) => Math.abs(u - shares[j]) < EVEN / shares.length)) break;
+    shares = next;
   }
-  return finishPlacement(comb, shares, usable, marks, options.count === "auto");
+  return best;
 }
 
-function sizesOf(comb: Comb, shares: readonly number[]): StripSize[] {
-  return shares.slice(1).map((u, j) => sizeBetween(comb, shares[j], u));
-}
-
-/** Snaps the ends, as far as the strips still fit, and reads the figures off the seams as they will be cut. */
-function finishPlacement(
-  comb: Comb,
-  shares: number[],
-  usable: number,
-  marks: PlaceOptions["marks"],
-  auto: boolean,
-): Placement {
+/** Keeps the first and last seam to the bounds, and the rest between them in their order. */
+function clampShares(shares: readonly number[], bounds: Bounds): number[] {
   const n = shares.length - 1;
-  const inner = shares.slice(1, -1);
-  const round = comb.candidate.left === null;
-  const place = (snapped: boolean) =>
-    inner.map((u) => {
-      const ends = endsAt(comb.candidate, u);
-      return addSeam(comb, u, n, snapped ? snapEnds(comb.candidate, ends, n, marks) : ends);
-    });
-  let lines = place(true);
-  let sizes = sizesOf(comb, shares);
-  const wide = (list: StripSize[]) => list.some((size) => size.width > usable);
-  if (auto && wide(sizes)) {
-    lines = place(false);
-    sizes = sizesOf(comb, shares);
+  const low = n > 1 ? Math.max(shares[1], bounds.first) : 0;
+  const high = n > 1 ? Math.min(shares[n - 1], bounds.last) : 1;
+  if (n === 2) return [0, Math.min(low, bounds.last), 1];
+  const scale = (high - low) / (shares[n - 1] - shares[1]);
+  return shares.map((u, j) => (j === 0 || j === n ? u : low + scale * (u - shares[1])));
+}
+
+/** How many strips more (or fewer) it takes, judged by the strips that no bound holds. */
+function countChange(settled: Settled, bounds: Bounds, usable: number): number {
+  const { shares, sizes } = settled;
+  const n = sizes.length;
+  const held = (j: number) =>
+    n > 2 && ((j === 0 && shares[1] === bounds.first) || (j === n - 1 && shares[n - 1] === bounds.last));
+  const free = sizes.filter((_, j) => !held(j));
+  const total = free.reduce((sum, size) => sum + size.width, 0);
+  return Math.ceil(total / (0.999 * usable)) - free.length;
+}
+
+/** Places the seams of a candidate. */
+export function placeSeams(comb: Comb, options: PlaceOptions): Placement {
+  const { usableWidth: usable } = options;
+  const bounds: Bounds = { first: 0, last: 1 };
+  const settle = (n: number) => settleStrips(comb, clampShares(spreadStrips(comb, n, bounds), bounds), bounds, usable);
+  let kept: Settled | null = null;
+  if (options.count !== "auto") kept = settle(options.count);
+  else {
+    const tried = new Set<number>();
+    let n = countStrips(comb, usable, options.least, bounds, MOST_STRIPS);
+    while (n <= MOST_STRIPS && !tried.has(n) && tried.size < TRIES) {
+      tried.add(n);
+      const settled = settle(n);
+      if (!settled) break;
+      const fits = settled.widest <= usable;
+      if (!kept || kept.widest > usable || (fits && n < kept.sizes.length)) kept = settled;
+      const better = Math.max(options.least, n + countChange(settled, bounds, usable));
+      if (fits && better >= n) break;
+      n = fits ? better : Math.max(n + 1, better);
+    }
+    if (kept && options.more > 0) kept = settle(kept.sizes.length + options.more) ?? kept;
   }
-  if (round) lines = [traceTooth(comb, endsAt(comb.candidate, 0)), ...lines];
+  if (!kept) return { shares: [0, 1], lines: [], sizes: [], hugging: [], fits: false };
+  return finishPlacement(comb, kept, options);
+}
+
+/** Snaps the ends, as far as the strips still fit. */
+function finishPlacement(comb: Comb, settled: Settled, options: PlaceOptions): Placement {
+  const { shares } = settled;
+  const usable = options.usableWidth;
+  const n = shares.length - 1;
+  const wide = (list: readonly StripSize[]) => list.some((size) => size.width > usable);
+  let { lines, sizes } = settled;
+  const snapped = shares
+    .slice(1, -1)
+    .map((u) => traceTooth(comb, snapEnds(comb.candidate, endsAt(comb.candidate, u), n, options.marks)));
+  const after = sizesOf(comb, shares, snapped);
+  if (snapped.every((line, j) => line.clear || !lines[j].clear) && (wide(sizes) || !wide(after))) {
+    lines = snapped;
+    sizes = after;
+  }
+  if (comb.candidate.left === null) lines = [traceTooth(comb, endsAt(comb.candidate, 0)), ...lines];
   const hugging = lines.flatMap((line, j) => (line.clear ? [] : [j]));
   return { shares, lines, sizes, hugging, fits: !wide(sizes) };
 }
