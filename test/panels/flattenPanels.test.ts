@@ -412,8 +412,19 @@ describe("what cannot be flattened is refused by name, what is poor is said", ()
 
   test("ends that are no ends", () => {
     const layout = saddleLayout();
-    layout.strips[1].to = layout.strips[1].from;
-    expect(() => flattenPanels(layout, PLAIN, {})).toThrow(/strip P2 has no two ends/);
+    const { from, sides } = layout.strips[1];
+    const round = sides.flatMap((s) => s.vertices.slice(0, -1));
+    for (const [a, b] of [
+      [from, from],
+      [[], from],
+      [round, from],
+      [from, round],
+      [from, [layout.surface.xyz.length / 3 - 12]],
+    ]) {
+      layout.strips[1].from = a;
+      layout.strips[1].to = b;
+      expect(() => flattenPanels(layout, PLAIN, {})).toThrow(/strip P2 has no two ends/);
+    }
   });
 
   test("a seam that leaves its strip", () => {

@@ -5,8 +5,9 @@ import {
   analyseSymmetric,
   factorSymmetric,
   type NumericFactor,
-  refactorInPlace,
+  type SymbolicFactor,
   solveInPlace,
+  tryRefactorInPlace,
 } from "../numeric/factor.ts";
 import { PlanError } from "../problem.ts";
 import { measureTriangleStrain } from "../structure/cloth.ts";
@@ -62,6 +63,7 @@ export function solveFlatten(
   onStep: (step: number) => void,
 ): FlattenResult {
   const system = buildFlattenSystem(problem, STIFF * problem.stiffness.ww);
+  const symbolic = analyseSymmetric(system.where.pattern);
   let factor: NumericFactor | null = null;
   let x = start.slice();
   let state = measureFlattenState(system, x);
@@ -75,8 +77,12 @@ export function solveFlatten(
     onStep(step);
     assembleFlattenInPlace(system, x);
     addDamping(system, damping * problem.stiffness.ww);
-    if (factor === null) factor = factorSymmetric(analyseSymmetric(system.where.pattern), system.values);
-    else refactorInPlace(factor, system.values);
+    factor = factorAgain(symbolic, factor, system.values);
+    if (factor === null || !factor.ready) {
+      damping = damping === 0 ? FIRST_DAMPING : 100 * damping;
+      if (damping > LAST_DAMPING) break;
+      continue;
+    }
     const move = system.gradient.map((g) => -g);
     solveInPlace(factor, move);
     let promise = 0;
@@ -86,7 +92,8 @@ export function solveFlatten(
     const next = small ? tryStep(system, x, move, 1) : searchLine(system, x, move, state.merit - 2e-4 * promise);
     if (next === null) {
       damping = damping === 0 ? FIRST_DAMPING : 100 * damping;
-      if (damping > LAST_DAMPING) return { x, energy: state.energy, gap: state.gap, steps: step, converged: false };
+      settled = false;
+      if (damping > LAST_DAMPING) break;
       continue;
     }
     ({ x, state } = next);
@@ -99,6 +106,24 @@ export function solveFlatten(
     state = measureFlattenState(system, x);
   }
   return { x, energy: state.energy, gap: state.gap, steps: tolerance.steps, converged: settled };
+}
+
+/** The factor of these values; null, or not ready, where they are too badly conditioned: more damping is due. */
+function factorAgain(
+  symbolic: SymbolicFactor,
+  factor: NumericFactor | null,
+  values: Float64Array<ArrayBuffer>,
+): NumericFactor | null {
+  if (factor !== null) {
+    tryRefactorInPlace(factor, values);
+    return factor;
+  }
+  try {
+    return factorSymmetric(symbolic, values);
+  } catch (error) {
+    if (error instanceof PlanError && error.code === "not-positive-definite") return null;
+    throw error;
+  }
 }
 
 /** Levenberg damping against the cloth's warp stiffness: the first tried, and where it is given up. */

@@ -17,7 +17,7 @@ export interface LocalStrip {
 /**
  * The strip in its own numbers: vertices ascending as on the surface.
  * @throws PlanError strip-outline: the strip is no disc, or its sides are not its outline, in order and counter-clockwise
- * @throws PlanError strip-ends: an end names a vertex that is not on the outline, or both ends are the same points
+ * @throws PlanError strip-ends: an end names no vertex, or one that is not on the outline, or lies within the other end
  */
 export function buildLocalStrip(layout: StripLayout, strip: Strip): LocalStrip {
   const { xyz, tri } = layout.surface;
@@ -61,11 +61,9 @@ function checkOutline(strip: Strip, own: LocalStrip): void {
   const same = around.length === loops[0].length && around.every((v, i) => v === loops[0][(at + i) % around.length]);
   if (!joined || !same) refuseOutline(strip, "its sides do not run once, counter-clockwise, round its triangles");
   const rim = new Set(around);
-  const ends = [own.from, own.to];
-  if (
-    ends.some((end) => end.length === 0 || end.some((v) => !rim.has(v))) ||
-    own.from.every((v) => own.to.includes(v))
-  ) {
+  const { from, to } = own;
+  const stray = [...from, ...to].some((v) => !rim.has(v));
+  if (stray || from.every((v) => to.includes(v)) || to.every((v) => from.includes(v))) {
     throw new PlanError(
       "strip-ends",
       `strip ${strip.id} has no two ends on its outline (${own.from.length} and ${own.to.length} vertices); each end is all vertices of the sides there, or one point`,
