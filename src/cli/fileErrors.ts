@@ -8,6 +8,7 @@ const WORDS: Record<string, [code: string, text: string]> = {
   EROFS: ["file-forbidden", "the disk is read-only; choose another folder"],
   EISDIR: ["file-folder", "this is a folder, a file is wanted; name the file in it"],
   ENOTDIR: ["file-not-folder", "part of this path is a file, a folder is wanted; choose another name"],
+  EEXIST: ["file-not-folder", "part of this path is a file, a folder is wanted; choose another name"],
   ENOSPC: ["file-disk-full", "the disk is full; make room or choose another one"],
   EDQUOT: ["file-disk-full", "the disk quota is used up; make room or choose another disk"],
   ENAMETOOLONG: ["file-name-long", "the name is too long for this disk; choose a shorter one"],

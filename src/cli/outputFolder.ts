@@ -155,10 +155,19 @@ export function writeOutputFolder(folder: string, files: OutputFile[]): void {
       throw error;
     }
   } catch (error) {
-    rmSync(aside, { recursive: true, force: true });
+    removeQuietly(aside);
     throw error;
   }
   withFile(old, () => rmSync(old, { recursive: true, force: true }));
+}
+
+/** Clears up after a failure, which is what must be told, whether or not this succeeds. */
+function removeQuietly(path: string): void {
+  try {
+    rmSync(path, { recursive: true, force: true });
+  } catch {
+    // The failure itself is thrown by the caller.
+  }
 }
 
 function carryOver(from: string, to: string, path: string): void {

@@ -27,7 +27,7 @@ export async function planInto(
   checkOutputFolder(folder);
   const facts = await makeFacts(readInput(jobPath, loadCatalogues()), around, options);
   const files = await makePapers(facts, around);
-  holdSignals(() => writeOutputFolder(folder, files));
+  await holdSignals(() => writeOutputFolder(folder, files));
   return { facts, files };
 }
 

@@ -50,7 +50,7 @@ async function dispatch(verb: string | undefined, rest: string[], around: Surrou
     case "check":
       return await checkCommand(rest, around);
     case "start":
-      return startCommand(rest, around.terminal);
+      return await startCommand(rest, around.terminal);
     case "demo":
       return await demoCommand(rest, around);
     case "help":

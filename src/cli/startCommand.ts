@@ -9,7 +9,7 @@ import { parseOptions } from "./parseOptions.ts";
 import { type Terminal, usageError } from "./terminal.ts";
 
 /** The verb; without arguments it lists the starters. @returns exit status 0 */
-export function startCommand(args: string[], terminal: Terminal): number {
+export async function startCommand(args: string[], terminal: Terminal): Promise<number> {
   const { operands } = parseOptions("start", args, { operands: ["TEMPLATE?", "DIR?"], values: [], flags: [] });
   const starters = listStarters();
   const [name, folder] = operands;
@@ -25,7 +25,7 @@ export function startCommand(args: string[], terminal: Terminal): number {
   if (folder === undefined) throw usageError("start wants DIR, the folder the starter is copied into");
   const target = resolve(folder);
   refuseTaken(folder, target);
-  holdSignals(() => copyWhole(starterFolder(name), folder, target));
+  await holdSignals(() => copyWhole(starterFolder(name), folder, target));
   const job = join(folder, "job.json");
   terminal.out(`Copied ${name} to ${folder}; next: seamstay plan ${job} --out ${join(folder, "plan")}`);
   return 0;

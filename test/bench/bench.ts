@@ -1,0 +1,98 @@
+// `npm run -s bench -- NAME …`: one measured case, one JSON object on stdout. Times are this machine's; no test asserts them.
+import { readFileSync, writeFileSync } from "node:fs";
+import { loadCatalogues } from "../../src/cli/packageFiles.ts";
+import { readInput } from "../../src/cli/readInput.ts";
+import { buildSoundSurface, type SoundSurface } from "../../src/core/form/soundSurface.ts";
+import { runPlan } from "../../src/core/plan/runPlan.ts";
+import type { Station } from "../../src/core/problem.ts";
+import { benchFlatten } from "./flattenCase.ts";
+import { benchForm } from "./formCase.ts";
+import { benchGeodesic } from "./geodesicCase.ts";
+import { benchPack, type PackInstance } from "./packCase.ts";
+
+const CASES: Record<string, { call: string; least: number; run: (args: string[]) => unknown }> = {
+  plan: { call: "plan JOB|FORM.obj", least: 1, run: ([job]) => benchPlan(job) },
+  flatten: { call: "flatten STRIP.obj", least: 1, run: ([strip]) => benchFlatten(readSurface(strip).surface) },
+  form: { call: "form N", least: 1, run: ([n]) => benchForm(readCount(n, "N")) },
+  geodesic: { call: "geodesic MESH.obj PAIRS.txt", least: 2, run: ([mesh, pairs]) => benchPairs(mesh, pairs) },
+  pack: {
+    call: "pack INSTANCE.json SECONDS SEED OUT.json",
+    least: 4,
+    run: ([instance, seconds, seed, out]) => {
+      const read: PackInstance = JSON.parse(readFileSync(instance, "utf8"));
+      const span = Number(seconds);
+      if (!(span > 0)) throw new UsageError(`SECONDS ${seconds} is not above 0`);
+      const { result, ...figures } = benchPack(read, span, readCount(seed, "SEED", 0), () => performance.now());
+      writeFileSync(out, `${JSON.stringify(result)}\n`);
+      return { name: read.name, ...figures };
+    },
+  },
+};
+
+class UsageError extends Error {}
+
+function readCount(text: string, name: string, least = 1): number {
+  const n = Number(text);
+  if (!Number.isInteger(n) || n < least) throw new UsageError(`${name} ${text} is no whole number from ${least}`);
+  return n;
+}
+
+/** The surface of a mesh file as the form station would take it: metres, z up. */
+function readSurface(path: string): SoundSurface {
+  return buildSoundSurface(readInput(path, loadCatalogues()).source);
+}
+
+/** Pairs of vertices, counted from 0 in the file's own order, one pair a line. */
+function benchPairs(meshPath: string, pairsPath: string): unknown {
+  const { surface, fromSource } = readSurface(meshPath);
+  const pairs = readFileSync(pairsPath, "utf8")
+    .split("\n")
+    .filter((line) => line.trim() !== "")
+    .map((line): [number, number] => {
+      const [a, b] = line
+        .trim()
+        .split(/[\s,]+/)
+        .map((n) => fromSource[readCount(n, "vertex", 0)] ?? -1);
+      if (!(a >= 0 && b >= 0)) throw new UsageError(`the mesh has no pair "${line.trim()}"`);
+      return [a, b];
+    });
+  return benchGeodesic(surface, pairs);
+}
+
+/** Milliseconds a station takes, summed where it is run more than once, and of the whole chain; one cold run. */
+function benchPlan(path: string): { stations: Partial<Record<Station, number>>; totalMs: number } {
+  const { job, source, revision } = readInput(path, loadCatalogues());
+  const stations: Partial<Record<Station, number>> = {};
+  const begin = performance.now();
+  let open: Station | null = null;
+  let since = begin;
+  const close = (next: Station | null) => {
+    const now = performance.now();
+    if (open !== null) stations[open] = (stations[open] ?? 0) + now - since;
+    open = next;
+    since = now;
+  };
+  runPlan(job, source, { revision, onStation: close }, {});
+  close(null);
+  return { stations, totalMs: performance.now() - begin };
+}
+
+function runBench([name, ...args]: string[]): number {
+  const found = name === undefined ? undefined : CASES[name];
+  if (found === undefined || args.length !== found.least) {
+    const calls = Object.values(CASES).map((c) => `  bench ${c.call}`);
+    process.stderr.write(
+      `bench: ${found === undefined ? `no case ${name ?? ""}` : `call it as`}\n${calls.join("\n")}\n`,
+    );
+    return 2;
+  }
+  try {
+    process.stdout.write(`${JSON.stringify(found.run(args))}\n`);
+    return 0;
+  } catch (error) {
+    process.stderr.write(`bench ${name}: ${error instanceof Error ? error.message : String(error)}\n`);
+    return 2;
+  }
+}
+
+process.exitCode = runBench(process.argv.slice(2));
