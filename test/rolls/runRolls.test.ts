@@ -1,0 +1,423 @@
+// Nests worked by hand, and properties on random pieces with a brute-force judge of its own.
+import fc from "fast-check";
+import { describe, expect, it } from "vitest";
+import type { PlanError } from "../../src/core/problem.ts";
+import type { NestDecision } from "../../src/core/records/job.ts";
+import type { NestedRoll, NestPiece, StockRoll } from "../../src/core/records/roll.ts";
+import { runRolls } from "../../src/core/rolls/runRolls.ts";
+import { isSimpleRing, ringArea } from "../../src/core/surface/ring.ts";
+
+const OPTIONS: NestDecision = { steps: 40, seconds: null, seed: 1, gap: 0, turn: true, bite: null, pins: [] };
+const ROLL: StockRoll = {
+  id: "A",
+  fabric: "f",
+  batch: null,
+  width: 2000,
+  selvedge: 0,
+  length: 50_000,
+  start: 0,
+  flaws: [],
+  assumed: false,
+};
+
+const piece = (id: string, points: number[], batch: string | null = null): NestPiece => ({
+  id,
+  fabric: "f",
+  batch,
+  cut: Float64Array.from(points),
+});
+const box = (id: string, length: number, width: number, batch: string | null = null) =>
+  piece(id, [0, 0, length, 0, length, width, 0, width], batch);
+
+type Points = [number, number][];
+
+function placedPoints(p: NestPiece, at: { rotation: number; x: number; y: number }): Points {
+  const s = at.rotation === 180 ? -1 : 1;
+  return Array.from({ length: p.cut.length / 2 }, (_, i) => [s * p.cut[2 * i] + at.x, s * p.cut[2 * i + 1] + at.y]);
+}
+
+/** Brute force, written apart from the code under test: all segments against all, and winding of sample points. */
+function oracleGap(a: Points, b: Points): number {
+  const inside = (r: Points, [x, y]: [number, number]) => {
+    let angle = 0;
+    for (let i = 0; i < r.length; i++) {
+      const [p, q] = [r[i], r[(i + 1) % r.length]];
+      angle += Math.atan2(
+        (p[0] - x) * (q[1] - y) - (p[1] - y) * (q[0] - x),
+        (p[0] - x) * (q[0] - x) + (p[1] - y) * (q[1] - y),
+      );
+    }
+    return Math.abs(angle) > Math.PI;
+  };
+  const toSegment = ([x, y]: [number, number], p: [number, number], q: [number, number]) => {
+    let best = Infinity;
+    const l2 = (q[0] - p[0]) ** 2 + (q[1] - p[1]) ** 2;
+    const t = Math.max(0, Math.min(1, ((x - p[0]) * (q[0] - p[0]) + (y - p[1]) * (q[1] - p[1])) / l2));
+    best = Math.min(best, Math.hypot(x - p[0] - t * (q[0] - p[0]), y - p[1] - t * (q[1] - p[1])));
+    return best;
+  };
+  const depth = (r: Points, v: [number, number]) =>
+    Math.min(...r.map((p, i) => toSegment(v, p, r[(i + 1) % r.length])));
+  let gap = Infinity;
+  for (const [r, o] of [
+    [a, b],
+    [b, a],
+  ])
+    for (let i = 0; i < o.length; i++) {
+      const [p, q] = [o[i], o[(i + 1) % o.length]];
+      // Points all along the side: a crossing shows as a point that lies deep inside.
+      for (let t = 0; t < 1; t += 1 / 64) {
+        const v: [number, number] = [p[0] + t * (q[0] - p[0]), p[1] + t * (q[1] - p[1])];
+        if (inside(r, v) && depth(r, v) > 0.01) return -1;
+      }
+      gap = Math.min(gap, depth(r, p));
+    }
+  return gap;
+}
+
+function judge(rolls: NestedRoll[], pieces: NestPiece[], gap: number): void {
+  for (const roll of rolls) {
+    const lying = roll.placements.map((at) => ({
+      at,
+      points: placedPoints(pieces.find((p) => p.id === at.panel)!, at),
+    }));
+    let reach = 0;
+    for (const { points, at } of lying)
+      for (const [x, y] of points) {
+        reach = Math.max(reach, x);
+        expect(x, at.panel).toBeGreaterThan(-1e-6);
+        expect(x, at.panel).toBeLessThan(roll.length + 1e-6);
+        expect(y, at.panel).toBeGreaterThan(-1e-6);
+        expect(y, at.panel).toBeLessThan(roll.usableWidth + 1e-6);
+      }
+    expect(reach).toBeCloseTo(roll.used, 6);
+    for (let i = 0; i < lying.length; i++)
+      for (let j = 0; j < i; j++)
+        expect(
+          oracleGap(lying[i].points, lying[j].points),
+          `${lying[i].at.panel} and ${lying[j].at.panel}`,
+        ).toBeGreaterThanOrEqual(gap - 0.01);
+    const area = lying.reduce((sum, l) => sum + ringArea(Float64Array.from(l.points.flat())), 0);
+    expect(roll.utilisation).toBeCloseTo(area / (roll.used * roll.width), 9);
+    expect(roll.lowerBound).toBeLessThanOrEqual(roll.used + 1e-6);
+    expect(roll.lowerBound).toBeGreaterThanOrEqual(area / roll.width - 1e-6);
+  }
+}
+
+describe("exact nests", () => {
+  it("tiles rectangles without loss", () => {
+    const pieces = ["a", "b", "c", "d", "e", "f"].map((id) => box(id, 1000, id < "d" ? 1200 : 800));
+    const { output, findings } = runRolls(pieces, [ROLL], OPTIONS);
+    expect(findings).toEqual([]);
+    expect(output[0].used).toBeCloseTo(3000, 3);
+    expect(output[0].utilisation).toBeCloseTo(1, 6);
+    expect(output[0].lowerBound).toBeCloseTo(3000, 3);
+    judge(output, pieces, 0);
+  });
+
+  it("fills a roll to its last millimetre", () => {
+    const pieces = ["a", "b", "c"].map((id) => box(id, 1001.3, 2000));
+    const { output, findings } = runRolls(pieces, [{ ...ROLL, length: 3003.9 }], OPTIONS);
+    expect(findings).toEqual([]);
+    expect(output[0].used).toBeCloseTo(3003.9, 6);
+  });
+
+  it("turns one triangle by 180 degrees against the other, only where it may", () => {
+    const triangle = [0, 0, 3000, 0, 0, 1900];
+    const pieces = [piece("a", triangle), piece("b", triangle)];
+    const turned = runRolls(pieces, [{ ...ROLL, width: 1900 }], OPTIONS);
+    expect(turned.output[0].used).toBeCloseTo(3000, 2);
+    judge(turned.output, pieces, 0);
+    const straight = runRolls(pieces, [{ ...ROLL, width: 1900 }], { ...OPTIONS, turn: false });
+    expect(straight.output[0].placements.every((p) => p.rotation === 0)).toBe(true);
+    expect(straight.output[0].used).toBeCloseTo(6000, 2);
+  });
+
+  it("keeps the gap and the trim, and no more", () => {
+    const pieces = [box("a", 1000, 995), box("b", 1000, 995), box("c", 500, 2000)];
+    const { output } = runRolls(pieces, [{ ...ROLL, start: 150 }], { ...OPTIONS, gap: 10 });
+    expect(output[0].used).toBeCloseTo(150 + 1000 + 10 + 500, 3);
+    expect(output[0].lowerBound).toBeCloseTo(150 + 1000 + 500 + 10 * (1500 / 2010) - 10 * (1500 / 2010), -2);
+    judge(output, pieces, 10);
+  });
+
+  it("lets a round corner keep its true distance: a disc above two discs", () => {
+    const disc = (r: number) =>
+      Array.from({ length: 96 }, (_, k) => [r * Math.cos((k * Math.PI) / 48), r * Math.sin((k * Math.PI) / 48)]).flat();
+    const pieces = [piece("a", disc(400)), piece("b", disc(400)), piece("c", disc(400))];
+    const { output } = runRolls(pieces, [{ ...ROLL, width: 1620 }], { ...OPTIONS, gap: 20 });
+    // Two abreast (800 + 20 + 800), the third between them: at best a regular triangle of side 820, and at the true gap.
+    expect(output[0].used).toBeLessThan(800 + Math.sqrt(820 ** 2 - 410 ** 2) + 8);
+    const [a, b, c] = output[0].placements.map((at, k) => placedPoints(pieces[k], at));
+    expect(Math.min(oracleGap(a, b), oracleGap(a, c), oracleGap(b, c))).toBeLessThan(20.001);
+    judge(output, pieces, 20);
+  });
+});
+
+describe("stock", () => {
+  it("goes round flaws", () => {
+    const flaws = [{ x: 0, y: 500, length: 400, width: 1500 }];
+    const pieces = [box("a", 1000, 1600), box("b", 300, 480)];
+    const { output } = runRolls(pieces, [{ ...ROLL, flaws }], OPTIONS);
+    judge(output, pieces, 0);
+    expect(output[0].used).toBeCloseTo(1400, 3);
+    const b = output[0].placements.find((p) => p.panel === "b")!;
+    expect(placedPoints(pieces[1], b).every(([x]) => x <= 400 + 1e-6)).toBe(true);
+  });
+
+  it("keeps batches apart and uses several rolls in order", () => {
+    const rolls = [
+      { ...ROLL, id: "A", batch: "b1", length: 2100 },
+      { ...ROLL, id: "B", batch: "b2", length: 2100 },
+      { ...ROLL, id: "C", batch: null, length: 2100 },
+    ];
+    const pieces = [
+      box("p", 1000, 1900, "b2"),
+      box("q", 1000, 1900, "b1"),
+      box("r", 1000, 1900),
+      box("s", 1000, 1900),
+      box("t", 1000, 1900),
+    ];
+    const { output, findings } = runRolls(pieces, rolls, OPTIONS);
+    expect(findings).toEqual([]);
+    const on = (id: string) => output.find((r) => r.placements.some((p) => p.panel === id))?.id;
+    expect(on("q")).toBe("A");
+    expect(on("p")).toBe("B");
+    expect(output.map((r) => r.id)).toEqual(["A", "B", "C"]);
+    judge(output, pieces, 0);
+  });
+
+  it("opens assumed rolls R1, R2, … as needed, one set a batch", () => {
+    const assumed = { ...ROLL, id: "any", assumed: true, length: 2500 };
+    const many = Array.from({ length: 5 }, (_, k) => box(`p${k}`, 1000, 1800));
+    const { output, findings } = runRolls(many, [assumed], OPTIONS);
+    expect(findings).toEqual([]);
+    expect(output.map((r) => r.id)).toEqual(["R1", "R2", "R3"]);
+    const mixed = runRolls([box("a", 100, 100, "b2"), box("b", 100, 100)], [assumed], OPTIONS).output;
+    expect(mixed.map((r) => [r.id, r.batch])).toEqual([
+      ["R1", "b2"],
+      ["R2", null],
+    ]);
+  });
+
+  it("says how many metres are missing and who is left over", () => {
+    const many = Array.from({ length: 5 }, (_, k) => box(`p${k}`, 1000, 1800));
+    const { output, findings, checks } = runRolls(many, [{ ...ROLL, length: 3500 }], OPTIONS);
+    expect(output[0].placements.length).toBe(3);
+    const stop = findings.find((f) => f.code === "roll-short")!;
+    expect(stop.level).toBe("stop");
+    expect(stop.value as number).toBeCloseTo(2, 3);
+    expect((stop.where as string[]).length).toBe(2);
+    expect(checks.some((c) => !c.holds)).toBe(true);
+  });
+
+  it("names pieces that are too wide, too long, past the bite, or without cloth", () => {
+    const pieces = [
+      box("wide", 100, 2100),
+      box("long", 60_000, 100),
+      box("bitten", 9000, 100),
+      box("other", 100, 100, "b9"),
+    ];
+    const { output, findings } = runRolls(pieces, [ROLL], { ...OPTIONS, bite: 8000 });
+    expect(findings.map((f) => [f.code, f.where, f.level])).toEqual([
+      ["roll-width", "wide", "stop"],
+      ["roll-length", "long", "stop"],
+      ["roll-bite", "bitten", "stop"],
+      ["roll-cloth", "other", "stop"],
+    ]);
+    expect(findings[0].text).toContain("2100 mm");
+    expect(output[0].placements.map((p) => p.panel)).toEqual(["bitten"]);
+  });
+});
+
+describe("pins", () => {
+  it("are kept exactly, the rest goes round them", () => {
+    const pieces = [box("a", 1000, 900), box("b", 1000, 900), box("c", 700, 2000)];
+    const pins = [{ panel: "b", roll: "A", x: 2345.678, y: 1950, rotation: 180 as const }];
+    const { output } = runRolls(pieces, [ROLL], { ...OPTIONS, gap: 5, pins });
+    expect(output[0].placements.find((p) => p.panel === "b")).toEqual({
+      panel: "b",
+      x: 2345.678,
+      y: 1950,
+      rotation: 180,
+    });
+    judge(output, pieces, 5);
+  });
+
+  it("are refused with names where they overlap, leave the cloth, lie on a flaw, turn or name nothing", () => {
+    const pieces = [box("a", 1000, 900), box("b", 1000, 900)];
+    const pin = (panel: string, x: number, y: number, rotation: 0 | 180 = 0, roll = "A") => ({
+      panel,
+      roll,
+      x,
+      y,
+      rotation,
+    });
+    const run = (pins: NestDecision["pins"], more: Partial<NestDecision> = {}, roll: Partial<StockRoll> = {}) => {
+      try {
+        runRolls(pieces, [{ ...ROLL, ...roll }], { ...OPTIONS, pins, ...more });
+      } catch (error) {
+        return error as PlanError;
+      }
+      return null;
+    };
+    const overlap = run([pin("a", 0, 0), pin("b", 500, 500)]);
+    expect(overlap?.code).toBe("pin-overlap");
+    expect(overlap?.where).toEqual(["a", "b"]);
+    expect(run([pin("a", 0, 0), pin("b", 1000, 0)])).toBe(null);
+    expect(run([pin("a", 0, 0), pin("b", 1005, 0)], { gap: 10 })?.message).toMatch(/5.00 mm apart/);
+    expect(run([pin("a", 0, 1200)])?.code).toBe("pin-place");
+    expect(run([pin("a", 0, 0)], {}, { start: 100 })?.code).toBe("pin-place");
+    expect(run([pin("a", 0, 0)], {}, { flaws: [{ x: 500, y: 500, length: 10, width: 10 }] })?.code).toBe("pin-flaw");
+    expect(run([pin("a", 1000, 900, 180)], { turn: false })?.code).toBe("pin-turn");
+    expect(run([pin("z", 0, 0)])?.code).toBe("pin-piece");
+    expect(run([pin("a", 0, 0), pin("a", 2000, 0)])?.code).toBe("pin-piece");
+    expect(run([pin("a", 0, 0, 0, "Z")])?.code).toBe("pin-roll");
+  });
+
+  it("may name a roll that is taken for granted", () => {
+    const assumed = { ...ROLL, id: "any", assumed: true };
+    const pins = [{ panel: "a", roll: "R2", x: 10, y: 20, rotation: 0 as const }];
+    const { output } = runRolls([box("a", 100, 100), box("b", 100, 100)], [assumed], { ...OPTIONS, pins });
+    expect(output.find((r) => r.id === "R2")?.placements[0].panel).toBe("a");
+  });
+});
+
+describe("hard input", () => {
+  it("answers lines, points, crossings and missing numbers with a finding", () => {
+    const bad = [
+      piece("line", [0, 0, 10, 0, 20, 0]),
+      piece("bow", [0, 0, 10, 10, 10, 0, 0, 10]),
+      piece("two", [0, 0, 1, 1]),
+      piece("nan", [0, 0, Number.NaN, 0, 5, 5]),
+      piece("spike", [0, 0, 10, 0, 20, 0, 10, 0, 10, 10]),
+    ];
+    const { output, findings } = runRolls(bad, [ROLL], OPTIONS);
+    expect(output).toEqual([]);
+    expect(findings.map((f) => f.code)).toEqual(bad.map(() => "piece-outline"));
+    expect(runRolls([], [ROLL], OPTIONS).output).toEqual([]);
+    expect(runRolls([box("a", 10, 10)], [], OPTIONS).findings[0].code).toBe("roll-cloth");
+  });
+
+  it("takes an outline of 10 000 points, smooth or ragged", () => {
+    const round = (ragged: number) =>
+      Array.from({ length: 10_000 }, (_, k) => {
+        const r = 500 + ragged * (k % 2);
+        return [r * Math.cos((k * Math.PI) / 5000), r * Math.sin((k * Math.PI) / 5000)];
+      }).flat();
+    const pieces = [piece("a", round(0)), piece("b", round(30)), piece("c", round(0))];
+    const { output, checks } = runRolls(pieces, [ROLL], { ...OPTIONS, gap: 8, steps: 6 });
+    expect(output[0].placements.length).toBe(3);
+    expect(checks.every((c) => c.holds)).toBe(true);
+  });
+
+  it("takes a clockwise outline", () => {
+    const { output } = runRolls([piece("a", [0, 0, 0, 500, 700, 500, 700, 0])], [ROLL], OPTIONS);
+    expect(output[0].used).toBeCloseTo(700, 6);
+  });
+});
+
+describe("stopping", () => {
+  const pieces = Array.from({ length: 6 }, (_, k) => box(`p${k}`, 700 + 90 * k, 500 + 77 * k));
+
+  it("hands back the best so far with a note, or nothing where there is none", () => {
+    let asked = 0;
+    const result = runRolls(pieces, [ROLL], OPTIONS, { cancelled: () => ++asked > 3 });
+    expect(result.output[0].placements.length).toBe(6);
+    expect(result.findings.map((f) => [f.code, f.level, f.value])).toEqual([["nest-cut-short", "note", 3]]);
+    expect(() => runRolls(pieces, [ROLL], OPTIONS, { cancelled: () => true })).toThrow(/before the first layout/);
+  });
+
+  it("reports progress, rising to 1", () => {
+    const shares: number[] = [];
+    runRolls(pieces, [ROLL], OPTIONS, { onProgress: (share) => shares.push(share) });
+    expect(shares[shares.length - 1]).toBe(1);
+    expect([...shares].sort((a, b) => a - b)).toEqual(shares);
+  });
+
+  it("gives the same layout for the same seed, and never a worse one for more steps", () => {
+    const run = (steps: number, seed = 1) => runRolls(pieces, [ROLL], { ...OPTIONS, gap: 7, steps, seed });
+    expect(JSON.stringify(run(60))).toBe(JSON.stringify(run(60)));
+    expect(run(200).output[0].used).toBeLessThanOrEqual(run(5).output[0].used + 1);
+  });
+});
+
+/** Random stars and bent strips. */
+const shape = fc.oneof(
+  fc
+    .record({
+      n: fc.integer({ min: 3, max: 12 }),
+      radii: fc.array(fc.double({ min: 80, max: 700, noNaN: true }), { minLength: 12, maxLength: 12 }),
+    })
+    .map(({ n, radii }) =>
+      Array.from({ length: n }, (_, k) => [
+        radii[k] * Math.cos((2 * Math.PI * k) / n),
+        radii[k] * Math.sin((2 * Math.PI * k) / n),
+      ]).flat(),
+    ),
+  fc
+    .record({
+      length: fc.double({ min: 800, max: 6000, noNaN: true }),
+      width: fc.double({ min: 100, max: 900, noNaN: true }),
+      bow: fc.double({ min: -0.1, max: 0.1, noNaN: true }),
+      taper: fc.double({ min: 0.1, max: 1, noNaN: true }),
+    })
+    .map(({ length, width, bow, taper }) => {
+      const at = (s: number, side: number) => [
+        s * length,
+        bow * length * 4 * s * (1 - s) + side * (width / 2) * (1 + (taper - 1) * s),
+      ];
+      const steps = Array.from({ length: 9 }, (_, k) => k / 8);
+      return [...steps.flatMap((s) => at(s, -1)), ...steps.reverse().flatMap((s) => at(s, 1))];
+    }),
+);
+const nests = fc.record({
+  shapes: fc.array(shape, { minLength: 1, maxLength: 7 }),
+  gap: fc.constantFrom(0, 3, 12),
+  turn: fc.boolean(),
+  seed: fc.integer({ min: 0, max: 1e6 }),
+});
+
+describe("random pieces", () => {
+  it("never overlap, keep the gap, stay on the cloth, and beat no bound: brute-force judge", () => {
+    let laid = 0;
+    fc.assert(
+      fc.property(nests, ({ shapes, gap, turn, seed }) => {
+        const pieces = shapes.map((points, k) => piece(`p${k}`, points)).filter((p) => isSimpleRing(p.cut));
+        const { output, findings, checks } = runRolls(pieces, [{ ...ROLL, selvedge: 40 }], {
+          ...OPTIONS,
+          steps: 8,
+          gap,
+          turn,
+          seed,
+        });
+        judge(output, pieces, gap);
+        laid += output.reduce((sum, r) => sum + r.placements.length, 0);
+        const fit = pieces.length - findings.length;
+        expect(output.reduce((sum, r) => sum + r.placements.length, 0)).toBe(fit);
+        for (const c of checks) if (!c.text.startsWith("every")) expect(c.holds, c.text).toBe(true);
+      }),
+      { seed: 20261201, numRuns: 60 },
+    );
+    expect(laid).toBeGreaterThan(150);
+  });
+
+  it("lie alike wherever their outlines were drawn", () => {
+    fc.assert(
+      fc.property(nests, fc.integer({ min: -9000, max: 9000 }), ({ shapes, gap }, shift) => {
+        const whole = shapes.map((s) => s.map((v) => Math.round(v)));
+        const pieces = whole.map((points, k) => piece(`p${k}`, points)).filter((p) => isSimpleRing(p.cut));
+        const moved = pieces.map((p) => ({ ...p, cut: p.cut.map((v) => v + shift) }));
+        const run = (list: NestPiece[]) => runRolls(list, [ROLL], { ...OPTIONS, steps: 4, gap }).output;
+        const [a, b] = [run(pieces), run(moved)];
+        a.forEach((roll, i) => {
+          expect(b[i].used).toBeCloseTo(roll.used, 6);
+          expect(b[i].placements.map((p) => [p.panel, p.rotation])).toEqual(
+            roll.placements.map((p) => [p.panel, p.rotation]),
+          );
+        });
+      }),
+      { seed: 5, numRuns: 20 },
+    );
+  });
+});
