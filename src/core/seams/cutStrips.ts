@@ -43,8 +43,8 @@ export interface CutForm {
   findings: Finding[];
 }
 
-/** Shares of an edge within which a crossing is moved to its end; the smaller one where the larger pinches a narrow strip. */
-const SNAPS = [0.01, 0.0005];
+/** Shares of an edge within which a crossing is moved to its end: 2 mm on a side of half a metre; the smaller one where the larger pinches a narrow strip. */
+const SNAPS = [0.004, 0.0005];
 
 function formPoints(plans: readonly RegionPlan[], path: SeamPath): SurfacePoint[] {
   const of = plans[path.region].region.formVertex;

@@ -44,6 +44,8 @@ export interface Placement {
 /** A seam end is drawn to a corner within this, m, and within SNAP_SHARE of a strip's end. own: shorter pieces of edge cannot be clamped or hemmed. */
 const SNAP = 0.1;
 const SNAP_SHARE = 0.06;
+/** A seam starts at a mesh vertex rather than within this share of a side beside it: no sliver at the rim. */
+const VERTEX_SHARE = 0.04;
 /** Least waist of a strip beside a hollow rim, of the usable width. own: less is a ribbon that cannot be welded from both sides. */
 const WAIST = 0.06;
 /** Seams stand still within this part of a strip. */
@@ -54,11 +56,10 @@ const TRIES = 5;
 /** More strips than this in one region are a mistake in the units. */
 const MOST_STRIPS = 200;
 
-/** The nearest stop within reach, or s itself. */
+/** The nearest stop within reach, else the next vertex of the mesh within VERTEX_SHARE of its side, else s itself. */
 function snapTo(s: number, chain: Chain, stops: readonly number[], spacing: number): number {
-  const within = Math.min(SNAP, SNAP_SHARE * spacing);
   let best = s;
-  let gap = within;
+  let gap = Math.min(SNAP, SNAP_SHARE * spacing);
   for (const stop of stops) {
     const d = Math.abs(stop - s);
     if (d < gap && stop > 1e-9 && stop < measureChain(chain) - 1e-9) {
@@ -66,7 +67,12 @@ function snapTo(s: number, chain: Chain, stops: readonly number[], spacing: numb
       gap = d;
     }
   }
-  return best;
+  if (best !== s) return best;
+  for (let i = 1; i < chain.vertices.length - 1; i++) {
+    const side = s < chain.arc[i] ? chain.arc[i] - chain.arc[i - 1] : chain.arc[i + 1] - chain.arc[i];
+    if (Math.abs(chain.arc[i] - s) < VERTEX_SHARE * side) return chain.arc[i];
+  }
+  return s;
 }
 
 function snapEnds(candidate: Candidate, ends: SeamEnds, n: number, marks: PlaceOptions["marks"]): SeamEnds {

@@ -1,0 +1,366 @@
+// The seams station on made forms and, where they lie beside the project, on the found forms of ../shared/meshes.
+import { existsSync, readFileSync } from "node:fs";
+import fc from "fast-check";
+import { describe, expect, test } from "vitest";
+import { runSeams } from "../../src/core/seams/runSeams.ts";
+import type { Vec3 } from "../../src/core/surface/surface.ts";
+import { expectSoundLayout, listLengths } from "./judgeLayout.ts";
+import { makeForm, makeGrid, makeJob, makeRing, makeSurface, makeTent, readForm, renumber } from "./madeForms.ts";
+
+const hypar = (u: number, v: number): Vec3 => {
+  const x = 16 * u - 8;
+  const y = 16 * v - 8;
+  return [x, y, (2.5 * x * y) / 64];
+};
+const square = (side: number) => makeForm(makeGrid(12, 12, (u, v) => [side * u, side * v, 0]));
+const options = (usableWidth: number) => ({ usableWidth, maxLength: null });
+
+function fan(n: number, rows: number, corner: (i: number) => Vec3, middle: Vec3) {
+  // polygon of n sides, `rows` rings of triangles about its middle
+  const places: Vec3[] = [middle];
+  const at: number[][] = [[0]];
+  for (let r = 1; r <= rows; r++) {
+    at.push([]);
+    for (let i = 0; i < n; i++)
+      for (let k = 0; k < r; k++) {
+        const p = corner(i);
+        const q = corner((i + 1) % n);
+        const s = k / r;
+        at[r].push(places.length);
+        places.push([0, 1, 2].map((c) => middle[c] + (r / rows) * (p[c] + s * (q[c] - p[c]) - middle[c])) as Vec3);
+      }
+  }
+  const faces: number[][] = [];
+  for (let r = 1; r <= rows; r++)
+    for (let i = 0; i < n; i++)
+      for (let k = 0; k < r; k++) {
+        const out = (j: number) => at[r][(i * r + j) % (n * r)];
+        const inner = (j: number) => (r === 1 ? 0 : at[r - 1][(i * (r - 1) + j) % (n * (r - 1))]);
+        faces.push([inner(k), out(k), out(k + 1)]);
+        if (k < r - 1) faces.push([inner(k), out(k + 1), inner(k + 1)]);
+      }
+  return makeSurface(places, faces);
+}
+
+describe("bands", () => {
+  test("a plane square of 7 m on 2.4 m cloth has 3 strips of one width, seams straight and parallel", () => {
+    const form = square(7);
+    const { output, findings } = runSeams(form, makeJob(), options(2.4));
+    expectSoundLayout(form, output);
+    expect(output.strips.map((s) => s.id)).toEqual(["P1", "P2", "P3"]);
+    expect(output.seams.map((s) => s.id)).toEqual(["S1", "S2"]);
+    for (const seam of output.seams) expect(seam.length).toBeCloseTo(7, 5);
+    for (const w of output.choices[0].widths) expect(w).toBeCloseTo(7 / 3, 2);
+    expect(findings.filter((f) => f.level !== "note")).toEqual([]);
+  });
+
+  test("a form that fits one roll has no seam, and its one panel has two whole ends", () => {
+    const form = square(2);
+    const { output } = runSeams(form, makeJob(), options(2.4));
+    expectSoundLayout(form, output);
+    expect(output.strips.length).toBe(1);
+    expect(output.seams).toEqual([]);
+    expect(output.choices[0].layout).toBe("whole");
+  });
+
+  test("strips run from the edge asked for to the other, seams end on both, in the number asked for", () => {
+    const form = makeForm(makeGrid(20, 20, hypar));
+    const [a, , c] = form.edges.map((e) => e.id);
+    const { output } = runSeams(form, makeJob({ layout: "bands", from: a, to: c, count: 5 }), options(4));
+    expectSoundLayout(form, output);
+    expect(output.strips.length).toBe(5);
+    for (const strip of output.strips) {
+      const ends = strip.sides.filter((s) => s.id === a || s.id === c);
+      expect(new Set(ends.flatMap((s) => s.vertices))).toEqual(new Set([...strip.from, ...strip.to]));
+    }
+    expect(output.choices[0]).toMatchObject({ layout: "bands", from: a, to: c, count: 5 });
+  });
+
+  test("a saddle of straight edges is laid along its rulings: seams of a hypar are straight lines (check-values 4.2)", () => {
+    const form = makeForm(makeGrid(20, 20, hypar));
+    const { output } = runSeams(form, makeJob(), options(2.4));
+    expectSoundLayout(form, output);
+    expect(output.strips.length).toBe(7);
+    // by symmetry the strips mirror each other about the middle; the ruling at x has length 16·sqrt(1 + (2.5 x / 64)²)
+    for (const seam of output.seams) {
+      const x = output.surface.xyz[3 * seam.vertices[0]];
+      const y = output.surface.xyz[3 * seam.vertices[0] + 1];
+      const at = Math.abs(Math.abs(y) - 8) < 1e-9 ? x : y;
+      expect(seam.length).toBeCloseTo(16 * Math.sqrt(1 + ((2.5 * at) / 64) ** 2), 2); // facets of 0.8 m
+    }
+  });
+
+  test("panels are read from one side to the other", () => {
+    const form = makeForm(makeGrid(20, 20, hypar));
+    const { output } = runSeams(form, makeJob(), options(2.4));
+    const middle = output.strips.map((s) => {
+      const v = s.sides.flatMap((q) => q.vertices);
+      return [0, 1].map((k) => v.reduce((sum, i) => sum + output.surface.xyz[3 * i + k] / v.length, 0));
+    });
+    const k = Math.abs(middle[6][0] - middle[0][0]) > Math.abs(middle[6][1] - middle[0][1]) ? 0 : 1;
+    for (let i = 1; i < middle.length; i++) expect(middle[i][k]).toBeGreaterThan(middle[i - 1][k]);
+  });
+
+  test("more strips, and widths measured by the flattening, change the layout", () => {
+    const form = square(7);
+    const three = runSeams(form, makeJob(), options(2.4)).output;
+    const four = runSeams(form, makeJob(), { ...options(2.4), moreStrips: { "region 1": 1 } }).output;
+    expect([three.strips.length, four.strips.length]).toEqual([3, 4]);
+    const wider = runSeams(form, makeJob(), { ...options(2.4), widthFactors: { "region 1": [1.1, 1, 1] } }).output;
+    expectSoundLayout(form, wider);
+    expect(wider.strips.length).toBe(4);
+    const shifted = runSeams(form, makeJob(), { ...options(2.45), widthFactors: { "region 1": [1.02, 1, 1] } }).output;
+    expect(shifted.strips.length).toBe(3);
+    const first = shifted.seams[0].vertices[0];
+    expect(Math.min(shifted.surface.xyz[3 * first], shifted.surface.xyz[3 * first + 1])).toBeLessThan(7 / 3);
+  });
+});
+
+describe("other outlines", () => {
+  const polygon = (n: number, r: number, up = 0) =>
+    makeForm(
+      fan(n, 10, (i) => [r * Math.cos((2 * Math.PI * i) / n), r * Math.sin((2 * Math.PI * i) / n), i % 2 ? up : 0], [
+        0,
+        0,
+        up / 2,
+      ]),
+    );
+  test.each([3, 4, 5, 6, 7, 8])("a polygon of %i sides", (n) => {
+    for (const w of [0.9, 1.7, 3.1]) {
+      const form = polygon(n, 4);
+      const { output, findings } = runSeams(form, makeJob(), options(w));
+      expectSoundLayout(form, output);
+      expect(findings.filter((f) => f.level === "stop")).toEqual([]);
+      const across = 4 * Math.cos(Math.PI / n) + (n % 2 ? 4 : 4 * Math.cos(Math.PI / n));
+      expect(output.strips.length).toBeLessThanOrEqual(Math.ceil((across + 4) / w));
+    }
+  });
+
+  test("a disc with one closed edge: its edge is parted where the ends of the tip strips meet", () => {
+    const form = polygon(96, 4);
+    expect(form.edges.length).toBe(1);
+    for (const w of [1, 2.4, 9]) {
+      const { output } = runSeams(form, makeJob(), options(w));
+      expectSoundLayout(form, output);
+    }
+  });
+
+  test("a lens of two arcs, and a drop with one corner", () => {
+    const lens = makeForm(
+      makeGrid(20, 20, (u, v) => {
+        const half = 0.2 + 3 * Math.sin(Math.PI * u) ** 1;
+        return [8 * u, (2 * v - 1) * half, 0];
+      }),
+    );
+    for (const w of [1, 2.4]) expectSoundLayout(lens, runSeams(lens, makeJob(), options(w)).output);
+    const drop = makeForm(
+      fan(
+        48,
+        8,
+        (i) => {
+          const a = (2 * Math.PI * i) / 48;
+          const r = i === 0 ? 6 : 3;
+          return [r * Math.cos(a), r * Math.sin(a), 0];
+        },
+        [0, 0, 0],
+      ),
+    );
+    for (const w of [1, 2.4]) expectSoundLayout(drop, runSeams(drop, makeJob(), options(w)).output);
+  });
+});
+
+describe("rings and belts", () => {
+  test("a ring has gores from the inner loop to the outer one, at equal turns", () => {
+    const form = makeForm(
+      makeRing(64, 10, (turn, row) => [(1 + 4 * row) * Math.cos(turn), (1 + 4 * row) * Math.sin(turn), 2 * (1 - row)]),
+    );
+    const { output } = runSeams(form, makeJob(), options(2.4));
+    expectSoundLayout(form, output);
+    expect(output.choices[0].layout).toBe("gores");
+    // a cone of slant 4.47 m: a generator is the geodesic (check-values 4.2)
+    for (const seam of output.seams) expect(seam.length).toBeCloseTo(Math.hypot(4, 2), 2);
+    expect(output.seams.length).toBe(output.strips.length);
+  });
+
+  test("a ring asked for in one strip gets two, and says so", () => {
+    const form = makeForm(makeRing(32, 4, (turn, row) => [(1 + row) * Math.cos(turn), (1 + row) * Math.sin(turn), 0]));
+    const { output, findings } = runSeams(form, makeJob({ count: 1 }), options(9));
+    expectSoundLayout(form, output);
+    expect(output.strips.length).toBe(2);
+    expect(findings.map((f) => f.code)).toContain("seam-ring-count");
+  });
+
+  test.each([1, 2, 3, 8])("a tent with %i radial belts: belts are seams with their cable, water runs off", (belts) => {
+    const form = makeTent(48, 10, 6, 4, belts);
+    const { output, findings } = runSeams(form, makeJob(), options(2.4));
+    expectSoundLayout(form, output);
+    expect(findings.filter((f) => f.level === "stop")).toEqual([]);
+    const cables = new Set(output.seams.map((s) => s.cable).filter((c) => c !== null));
+    expect(cables.size).toBe(belts);
+  });
+
+  test("hoop belts: the upper panel laps over the lower one, welds of a hoop share one name", () => {
+    const surface = makeRing(48, 12, (turn, row) => [
+      (1 + 5 * row) * Math.cos(turn),
+      (1 + 5 * row) * Math.sin(turn),
+      4 * (1 - row),
+    ]);
+    const hoop = Array.from({ length: 49 }, (_, i) => 6 * 48 + (i % 48));
+    const form = makeForm(surface, [{ id: "hoop", kind: "belt", vertices: hoop }]);
+    const { output } = runSeams(form, makeJob(), options(2.4));
+    expectSoundLayout(form, output);
+    const height = (id: string) => {
+      const strip = output.strips.find((s) => s.id === id);
+      return Math.max(...(strip?.sides ?? []).flatMap((s) => s.vertices.map((v) => output.surface.xyz[3 * v + 2])));
+    };
+    const on = output.seams.filter((s) => s.cable === "hoop");
+    expect(on.length).toBeGreaterThan(3);
+    for (const seam of on) {
+      const other = seam.strips.find((id) => id !== seam.upper) ?? "";
+      expect(height(seam.upper)).toBeGreaterThan(height(other) + 1);
+    }
+    expect(new Set(on.map((s) => s.weld)).size).toBe(1);
+  });
+
+  test("a ridge cable across a saddle divides it; seams of both sides meet on it within 0.1 m or well apart", () => {
+    const surface = makeGrid(20, 20, hypar);
+    const ridge = Array.from({ length: 21 }, (_, i) => 10 * 21 + i);
+    const form = makeForm(surface, [{ id: "ridge", kind: "ridge", vertices: ridge }]);
+    for (const w of [1.4, 2.4, 4.9]) {
+      const { output } = runSeams(form, makeJob(), options(w));
+      expectSoundLayout(form, output);
+      for (const seam of output.seams.filter((s) => s.cable === "ridge")) expect(seam.length).toBeGreaterThan(0.05);
+    }
+  });
+
+  test("a cable that ends inside the cloth is a caution and no border", () => {
+    const surface = makeGrid(12, 12, hypar);
+    const form = makeForm(surface, [{ id: "stub", kind: "valley", vertices: [6, 19, 32, 45] }]);
+    const { output, findings } = runSeams(form, makeJob(), options(9));
+    expectSoundLayout(form, output);
+    expect(findings.filter((f) => f.code === "seam-cable-open").map((f) => f.where)).toEqual(["stub"]);
+    expect(output.seams.every((s) => s.cable === null)).toBe(true);
+  });
+});
+
+describe("invariants", () => {
+  test("renumbered, moved and scaled copies get the same seams", () => {
+    for (const form of [makeForm(makeGrid(16, 16, (u, v) => [9 * u, 7 * v, u * v * 3])), makeTent(48, 8, 6, 4, 3)]) {
+      const lengths = listLengths(runSeams(form, makeJob(), options(2)).output);
+      const other = listLengths(runSeams(renumber(form), makeJob(), options(2)).output);
+      expect(other.length).toBe(lengths.length);
+      other.forEach((l, i) => {
+        expect(Math.abs(l - lengths[i])).toBeLessThan(1e-3 * lengths[i]);
+      });
+      const moved = makeMoved(form, 1, [100, -50, 7]);
+      listLengths(runSeams(moved, makeJob(), options(2)).output).forEach((l, i) => {
+        expect(Math.abs(l - lengths[i])).toBeLessThan(1e-3 * lengths[i]);
+      });
+      const grown = makeMoved(form, 3, [0, 0, 0]);
+      const big = listLengths(runSeams(grown, makeJob(), options(6)).output);
+      expect(big.length).toBe(lengths.length);
+    }
+  });
+
+  test("same input, same bytes out", () => {
+    const form = makeTent(40, 8, 6, 4, 4);
+    const a = JSON.stringify(runSeams(form, makeJob(), options(1.9)).output);
+    expect(JSON.stringify(runSeams(form, makeJob(), options(1.9)).output)).toBe(a);
+  });
+
+  test("any bumpy sheet on any cloth comes out whole", () => {
+    fc.assert(
+      fc.property(
+        fc.record({
+          length: fc.double({ min: 3, max: 14, noNaN: true }),
+          width: fc.double({ min: 3, max: 14, noNaN: true }),
+          rise: fc.double({ min: -2, max: 2, noNaN: true }),
+          sag: fc.double({ min: 0, max: 0.12, noNaN: true }),
+          lean: fc.double({ min: -0.4, max: 0.4, noNaN: true }),
+          usable: fc.double({ min: 1, max: 5, noNaN: true }),
+          nx: fc.integer({ min: 6, max: 15 }),
+        }),
+        (p) => {
+          const surface = makeGrid(p.nx, 11, (u, v) => {
+            const inX = 1 - 4 * p.sag * v * (1 - v) * 2 * Math.abs(u - 0.5);
+            const inY = 1 - 4 * p.sag * u * (1 - u) * 2 * Math.abs(v - 0.5);
+            const x = p.length * (u - 0.5) * inX;
+            const y = p.width * (v - 0.5) * inY;
+            return [x + p.lean * y, y, p.rise * (2 * u - 1) * (2 * v - 1)];
+          });
+          const form = makeForm(surface);
+          const { output, findings } = runSeams(form, makeJob(), options(p.usable));
+          expectSoundLayout(form, output);
+          expect(findings.filter((f) => f.level === "stop")).toEqual([]);
+          for (const w of output.choices[0].widths) expect(w).toBeLessThanOrEqual(p.usable * 1.0005);
+        },
+      ),
+      { seed: 20260511, numRuns: 40 },
+    );
+  });
+
+  test("names already taken by edges are not given twice", () => {
+    const surface = makeGrid(8, 8, hypar);
+    const form = makeForm(surface, [
+      { id: "P1", kind: "cable", vertices: [0, 1, 2, 3, 4, 5, 6, 7, 8] },
+      { id: "S2", kind: "cable", vertices: [72, 73, 74, 75, 76, 77, 78, 79, 80] },
+    ]);
+    const { output } = runSeams(form, makeJob(), options(4.9));
+    expectSoundLayout(form, output);
+    expect(output.strips[0].id).toBe("Panel-1");
+    expect(output.seams[0].id).toBe("Seam-1");
+  });
+});
+
+describe("refusals", () => {
+  test("a strip longer than the cloth is a stop with its panel", () => {
+    const { findings } = runSeams(square(7), makeJob(), { usableWidth: 2.4, maxLength: 5 });
+    const stops = findings.filter((f) => f.code === "strip-length");
+    expect(stops.map((f) => f.where)).toEqual(["P1", "P2", "P3"]);
+    expect(stops[0]).toMatchObject({ level: "stop", limit: 5 });
+  });
+
+  test("unknown edges, no width, a form of two rings in one piece", () => {
+    const form = square(7);
+    expect(() => runSeams(form, makeJob({ layout: "bands", from: "nowhere", to: "E1" }), options(2))).toThrow(
+      /nowhere/,
+    );
+    expect(() => runSeams(form, makeJob({ layout: "bands", from: "E1", to: "E1" }), options(2))).toThrow(/itself/);
+    expect(() => runSeams(form, makeJob(), options(0))).toThrow(/usable width/);
+    const grid = makeGrid(12, 6, (u, v) => [12 * u, 6 * v, 0]);
+    const holes = new Set([3, 8].flatMap((i) => [2, 3].map((j) => 12 * j + i)));
+    const kept: number[] = [];
+    for (let t = 0; t < grid.tri.length / 3; t++)
+      if (!holes.has(Math.floor(t / 2))) kept.push(...grid.tri.slice(3 * t, 3 * t + 3));
+    const used = [...new Set(kept)].sort((a, b) => a - b);
+    const places = used.map((v): Vec3 => [grid.xyz[3 * v], grid.xyz[3 * v + 1], grid.xyz[3 * v + 2]]);
+    const faces = Array.from({ length: kept.length / 3 }, (_, t) =>
+      [0, 1, 2].map((k) => used.indexOf(kept[3 * t + k])),
+    );
+    expect(() => runSeams(makeForm(makeSurface(places, faces)), makeJob(), options(2))).toThrow(/3 boundary loops/);
+  });
+
+  test("a plan that is stopped says so", () => {
+    expect(() => runSeams(square(7), makeJob(), options(2), { cancelled: () => true })).toThrow(/stopped/);
+  });
+});
+
+const meshes = "../shared/meshes";
+describe.skipIf(!existsSync(meshes))("found forms beside the project (skipped where ../shared is absent)", () => {
+  for (const name of ["hypar_16x16", "sail4_cables", "conic_belts", "catenoid_090"])
+    test.each([1.4, 2.4, 4.9])(`${name} on %f m`, (w) => {
+      const form = readForm(readFileSync(`${meshes}/${name}.obj`, "utf8"));
+      const { output, findings, checks } = runSeams(form, makeJob(), { usableWidth: w, maxLength: 50 });
+      expectSoundLayout(form, output);
+      expect(findings.filter((f) => f.level !== "note")).toEqual([]);
+      expect(checks.filter((c) => !c.holds)).toEqual([]);
+      const widths = output.choices.flatMap((c) => c.widths);
+      expect(Math.max(...widths)).toBeLessThanOrEqual(w);
+      expect(Math.min(...widths)).toBeGreaterThan(0.97 * Math.max(...widths));
+    });
+});
+
+function makeMoved(form: ReturnType<typeof makeForm>, scale: number, by: number[]) {
+  const xyz = form.surface.xyz.map((x, i) => scale * x + by[i % 3]);
+  return { ...form, surface: { xyz, tri: form.surface.tri } };
+}
