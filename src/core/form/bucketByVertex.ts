@@ -1,4 +1,5 @@
 // Things sorted by a vertex number, and the sides that triangles share whichever way they are wound.
+import { nextHalfedge } from "../surface/adjacency.ts";
 
 /** Items with key v stand at item[start[v] … start[v+1]), in rising order. */
 export interface Buckets {
@@ -26,7 +27,7 @@ export function findMates(tri: Uint32Array<ArrayBuffer>, nV: number): Int32Array
   const high = new Uint32Array(tri.length);
   for (let h = 0; h < tri.length; h++) {
     const a = tri[h];
-    const b = tri[h % 3 === 2 ? h - 2 : h + 1];
+    const b = tri[nextHalfedge(h)];
     low[h] = Math.min(a, b);
     high[h] = Math.max(a, b);
   }

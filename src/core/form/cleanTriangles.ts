@@ -8,16 +8,31 @@ export interface CleanTriangles {
   doubledAt: number[];
 }
 
-/** Height over the longest side and the corner opposite to it; height 0 where two corners are one. */
-function measureHeight(x: Float64Array<ArrayBuffer>, tri: Uint32Array<ArrayBuffer>, t: number): [number, number] {
+/** Height over the longest side. */
+function measureHeight(x: Float64Array<ArrayBuffer>, tri: Uint32Array<ArrayBuffer>, t: number): number {
+  const a = 3 * tri[3 * t];
+  const b = 3 * tri[3 * t + 1];
+  const c = 3 * tri[3 * t + 2];
+  const ux = x[b] - x[a];
+  const uy = x[b + 1] - x[a + 1];
+  const uz = x[b + 2] - x[a + 2];
+  const vx = x[c] - x[a];
+  const vy = x[c + 1] - x[a + 1];
+  const vz = x[c + 2] - x[a + 2];
+  const square = (uy * vz - uz * vy) ** 2 + (uz * vx - ux * vz) ** 2 + (ux * vy - uy * vx) ** 2;
+  const opposite = (vx - ux) ** 2 + (vy - uy) ** 2 + (vz - uz) ** 2;
+  const longest = Math.max(ux * ux + uy * uy + uz * uz, vx * vx + vy * vy + vz * vz, opposite);
+  return longest > 0 ? Math.sqrt(square / longest) : 0;
+}
+
+/** Corner opposite to the longest side, 0…2. */
+function findMiddleCorner(x: Float64Array<ArrayBuffer>, tri: Uint32Array<ArrayBuffer>, t: number): number {
   const p = [0, 1, 2].map((k) => 3 * tri[3 * t + k]);
-  const side = (a: number, b: number) => [0, 1, 2].map((k) => x[p[b] + k] - x[p[a] + k]);
-  const s = [side(1, 2), side(2, 0), side(0, 1)];
-  const l = s.map((v) => v[0] ** 2 + v[1] ** 2 + v[2] ** 2);
-  const k = l[0] >= l[1] && l[0] >= l[2] ? 0 : l[1] >= l[2] ? 1 : 2;
-  const [a, b] = [s[k], s[(k + 1) % 3]];
-  const n = [a[1] * b[2] - a[2] * b[1], a[2] * b[0] - a[0] * b[2], a[0] * b[1] - a[1] * b[0]];
-  return [l[k] > 0 ? Math.sqrt((n[0] ** 2 + n[1] ** 2 + n[2] ** 2) / l[k]) : 0, k];
+  const l = [0, 1, 2].map((k) => {
+    const [b, c] = [p[(k + 1) % 3], p[(k + 2) % 3]];
+    return (x[b] - x[c]) ** 2 + (x[b + 1] - x[c + 1]) ** 2 + (x[b + 2] - x[c + 2]) ** 2;
+  });
+  return l[0] >= l[1] && l[0] >= l[2] ? 0 : l[1] >= l[2] ? 1 : 2;
 }
 
 /** Triangles that are no higher than the tolerance. */
@@ -27,12 +42,8 @@ function findFlat(x: Float64Array<ArrayBuffer>, tri: Uint32Array<ArrayBuffer>, t
     const a = tri[3 * t];
     const b = tri[3 * t + 1];
     const c = tri[3 * t + 2];
-    if (a === b || b === c || c === a) {
-      out.set(t, -1);
-      continue;
-    }
-    const [height, corner] = measureHeight(x, tri, t);
-    if (height <= tolerance) out.set(t, corner);
+    if (a === b || b === c || c === a) out.set(t, -1);
+    else if (measureHeight(x, tri, t) <= tolerance) out.set(t, findMiddleCorner(x, tri, t));
   }
   return out;
 }
@@ -81,9 +92,11 @@ function findDoubled(tri: Uint32Array<ArrayBuffer>, nV: number): number[] {
   const sorted = new Uint32Array(tri.length);
   const low = new Uint32Array(nT);
   for (let t = 0; t < nT; t++) {
-    const s = [tri[3 * t], tri[3 * t + 1], tri[3 * t + 2]].sort((a, b) => a - b);
-    sorted.set(s, 3 * t);
-    low[t] = s[0];
+    const [a, b, c] = [tri[3 * t], tri[3 * t + 1], tri[3 * t + 2]];
+    low[t] = Math.min(a, b, c);
+    sorted[3 * t] = low[t];
+    sorted[3 * t + 2] = Math.max(a, b, c);
+    sorted[3 * t + 1] = a + b + c - sorted[3 * t] - sorted[3 * t + 2];
   }
   const { start, item } = bucketByVertex(low, nV);
   const out: number[] = [];
@@ -112,8 +125,9 @@ export function cleanTriangles(
   const nV = x.length / 3;
   const doubled = findDoubled(given, nV);
   let tri = keepInOrder(given, new Set(doubled)).slice();
-  const flatAt = [...findFlat(x, tri, tolerance).keys()].map((t) => tri[3 * t]);
-  for (let left = findFlat(x, tri, tolerance), round = 0; left.size > 0; round++) {
+  let left = findFlat(x, tri, tolerance);
+  const flatAt = [...left.keys()].map((t) => tri[3 * t]);
+  for (let round = 0; left.size > 0; round++) {
     const dropped = round < 64 ? closeFlatInPlace(tri, nV, left) : new Set(left.keys());
     tri = keepInOrder(tri, dropped);
     left = findFlat(x, tri, tolerance);

@@ -3,7 +3,7 @@
 import type { Finding } from "../problem.ts";
 import type { MeshSource } from "../records/job.ts";
 import type { Adjacency } from "../surface/adjacency.ts";
-import { nextHalfedge } from "../surface/adjacency.ts";
+import { nextHalfedge, previousHalfedge } from "../surface/adjacency.ts";
 import { buildFormFinding, describeVertex } from "./formFinding.ts";
 import { findNearestVertex, measureMeanSide } from "./nearestVertex.ts";
 import type { SoundSurface } from "./soundSurface.ts";
@@ -37,7 +37,7 @@ function findNeighbours(tri: Uint32Array<ArrayBuffer>, adjacency: Adjacency, v: 
   const out: number[] = [];
   for (let i = adjacency.fanStart[v]; i < adjacency.fanStart[v + 1]; i++) {
     const h = adjacency.fan[i];
-    out.push(tri[nextHalfedge(h)], tri[h % 3 === 0 ? h + 2 : h - 1]);
+    out.push(tri[nextHalfedge(h)], tri[previousHalfedge(h)]);
   }
   return [...new Set(out)];
 }

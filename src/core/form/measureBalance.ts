@@ -1,6 +1,8 @@
 // What is left of the balance at the free vertices, and what the held ones carry.
+
 import type { Check } from "../problem.ts";
 import type { FormAnchor, FormEdge, Residual } from "../records/foundForm.ts";
+import { nextHalfedge } from "../surface/adjacency.ts";
 import { measureVectorAreas, measureVertexNormals } from "../surface/measures.ts";
 import type { Surface, Vec3 } from "../surface/surface.ts";
 import type { Stations } from "./cableForces.ts";
@@ -78,11 +80,12 @@ function measureGreatest(surface: Surface, edges: readonly FormEdge[], field: St
   const out = new Map<FormEdge, number>();
   if (owner.size === 0) return out;
   const areas = measureVectorAreas(surface);
-  const onClamp = new Set([...out.keys(), ...owner.values()].flatMap((e) => e.vertices));
+  const onClamp = new Uint8Array(surface.xyz.length / 3);
+  for (const edge of owner.values()) for (const v of edge.vertices) onClamp[v] = 1;
   for (let h = 0; h < tri.length; h++) {
     const a = tri[h];
-    const b = tri[h % 3 === 2 ? h - 2 : h + 1];
-    if (!onClamp.has(a) || !onClamp.has(b)) continue;
+    const b = tri[nextHalfedge(h)];
+    if (!onClamp[a] || !onClamp[b]) continue;
     const edge = owner.get(sideKey(a, b));
     if (edge) out.set(edge, Math.max(out.get(edge) ?? 0, measureLinePull(surface, areas, h, field)));
   }

@@ -1,4 +1,5 @@
 // Forces of the prestressed cloth at its vertices, and its pull across a side. Stress is given, not iterated.
+import { nextHalfedge, previousHalfedge } from "../surface/adjacency.ts";
 import { measureVectorAreas } from "../surface/measures.ts";
 import type { Surface, Vec3 } from "../surface/surface.ts";
 
@@ -38,7 +39,7 @@ function pullAcross(surface: Surface, areas: Float64Array<ArrayBuffer>, h: numbe
   const l = Math.sqrt(areas[t] ** 2 + areas[t + 1] ** 2 + areas[t + 2] ** 2);
   const n: Vec3 = [areas[t] / l, areas[t + 1] / l, areas[t + 2] / l];
   const a = 3 * tri[h];
-  const b = 3 * tri[h % 3 === 2 ? h - 2 : h + 1];
+  const b = 3 * tri[nextHalfedge(h)];
   const e: Vec3 = [x[b] - x[a], x[b + 1] - x[a + 1], x[b + 2] - x[a + 2]];
   return applyStress(field, n, [n[1] * e[2] - n[2] * e[1], n[2] * e[0] - n[0] * e[2], n[0] * e[1] - n[1] * e[0]]);
 }
@@ -56,7 +57,7 @@ export function measureMembraneForces(surface: Surface, field: StressField): Mem
   const size = new Float64Array(xyz.length / 3);
   for (let h = 0; h < tri.length; h++) {
     const p = pullAcross(surface, areas, h, field);
-    const v = tri[h % 3 === 0 ? h + 2 : h - 1];
+    const v = tri[previousHalfedge(h)];
     for (let k = 0; k < 3; k++) force[3 * v + k] -= p[k] / 2;
     size[v] += Math.sqrt(p[0] ** 2 + p[1] ** 2 + p[2] ** 2) / 2;
   }
@@ -76,7 +77,7 @@ export function measureLinePull(
   const { xyz: x, tri } = surface;
   const p = pullAcross(surface, areas, h, field);
   const a = 3 * tri[h];
-  const b = 3 * tri[h % 3 === 2 ? h - 2 : h + 1];
+  const b = 3 * tri[nextHalfedge(h)];
   const l = (x[b] - x[a]) ** 2 + (x[b + 1] - x[a + 1]) ** 2 + (x[b + 2] - x[a + 2]) ** 2;
   return Math.sqrt((p[0] ** 2 + p[1] ** 2 + p[2] ** 2) / l);
 }

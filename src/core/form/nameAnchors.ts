@@ -1,7 +1,9 @@
 // The form's anchors in order with their names, and which vertices are held in space. Forces come later.
+
 import { type Finding, PlanError } from "../problem.ts";
 import type { FormAnchor, FormEdge } from "../records/foundForm.ts";
 import type { AnchorDecision } from "../records/job.ts";
+import { nextHalfedge } from "../surface/adjacency.ts";
 import type { Surface } from "../surface/surface.ts";
 import { buildFormFinding } from "./formFinding.ts";
 import type { HeldPoint } from "./heldPoints.ts";
@@ -20,7 +22,7 @@ function findCrowded(surface: Surface, fixed: Uint8Array<ArrayBuffer>): Set<numb
   const { tri } = surface;
   for (let h = 0; h < tri.length; h++) {
     const a = tri[h];
-    const b = tri[h % 3 === 2 ? h - 2 : h + 1];
+    const b = tri[nextHalfedge(h)];
     if (fixed[a] && fixed[b]) out.add(a).add(b);
   }
   return out;

@@ -1,4 +1,5 @@
 // The surface vertex nearest to a place. One pass, for a handful of questions.
+import { nextHalfedge } from "../surface/adjacency.ts";
 import type { Surface } from "../surface/surface.ts";
 
 /** Nearest vertex among those the filter lets pass, and its distance; vertex -1 where none passes. @units m */
@@ -25,7 +26,7 @@ export function measureMeanSide(surface: Surface): number {
   let sum = 0;
   for (let h = 0; h < tri.length; h++) {
     const a = 3 * tri[h];
-    const b = 3 * tri[h % 3 === 2 ? h - 2 : h + 1];
+    const b = 3 * tri[nextHalfedge(h)];
     sum += Math.sqrt((xyz[a] - xyz[b]) ** 2 + (xyz[a + 1] - xyz[b + 1]) ** 2 + (xyz[a + 2] - xyz[b + 2]) ** 2);
   }
   return sum / tri.length;

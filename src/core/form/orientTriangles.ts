@@ -1,6 +1,8 @@
 // One winding for every piece of a triangle surface, and the outer face as the job wants it. Moves and drops nothing.
+
 import { PlanError } from "../problem.ts";
 import type { MeshSource } from "../records/job.ts";
+import { nextHalfedge } from "../surface/adjacency.ts";
 import { measureVectorAreas } from "../surface/measures.ts";
 import { findMates } from "./bucketByVertex.ts";
 import { describePlace, describeVertex } from "./formFinding.ts";
@@ -30,7 +32,7 @@ function checkSides(x: Float64Array<ArrayBuffer>, tri: Uint32Array<ArrayBuffer>,
   for (let h = 0; h < mate.length; h++) {
     if (mate[h] !== -2) continue;
     const a = tri[h];
-    const b = tri[h % 3 === 2 ? h - 2 : h + 1];
+    const b = tri[nextHalfedge(h)];
     seen.set(`${Math.min(a, b)}-${Math.max(a, b)}`, [Math.min(a, b), Math.max(a, b)]);
   }
   if (seen.size === 0) return;

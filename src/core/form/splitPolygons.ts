@@ -95,8 +95,21 @@ export function splitPolygons(
   const vanished: number[] = [];
   let n = 0;
   for (let f = 0; f < nF; f++) {
+    const first = faceStart[f];
+    if (faceStart[f + 1] - first === 3) {
+      const a = target[faceVertex[first]];
+      const b = target[faceVertex[first + 1]];
+      const c = target[faceVertex[first + 2]];
+      if (a !== b && b !== c && c !== a) {
+        tri[3 * n] = a;
+        tri[3 * n + 1] = b;
+        tri[3 * n + 2] = c;
+        face[n++] = f;
+        continue;
+      }
+    }
     const ring: number[] = [];
-    for (let i = faceStart[f]; i < faceStart[f + 1]; i++) {
+    for (let i = first; i < faceStart[f + 1]; i++) {
       const v = target[faceVertex[i]];
       if (v !== ring[ring.length - 1]) ring.push(v);
     }
