@@ -58,7 +58,7 @@ function giveIds(drafts: readonly Draft[], taken: ReadonlySet<string>): string[]
   const groups = new Map<string, Draft[]>();
   for (const d of drafts) if (d.lineName !== null) groups.set(d.lineName, [...(groups.get(d.lineName) ?? []), d]);
   const ids = new Map<Draft, string>();
-  const used = new Set<string>(taken);
+  const used = new Set<string>();
   for (const [name, group] of groups) {
     // where a cable's line runs on over a fixed plate, the cable keeps the name
     const loose = group.filter((d) => !d.run?.held);
@@ -77,7 +77,7 @@ function giveIds(drafts: readonly Draft[], taken: ReadonlySet<string>): string[]
     const letter = d.run ? "E" : "K";
     let id = "";
     do id = `${letter}${++count[letter]}`;
-    while (used.has(id));
+    while (used.has(id) || taken.has(id));
     return id;
   });
 }
