@@ -7,7 +7,7 @@ import { PlanError } from "../problem.ts";
 import { placeEntries, placeTrails, relateRows } from "./factorLayout.ts";
 import { buildNodeGraph } from "./graph.ts";
 import { orderNodes } from "./order.ts";
-import { countBlocks, factorTriangleInPlace, measurePanel, solveRowsInPlace, updateParentInPlace } from "./panel.ts";
+import { countBlocks, factorTriangleInPlace, measurePanel, solveRowsInPlace } from "./panel.ts";
 import {
   backwardOneInPlace,
   backwardThreeInPlace,
@@ -15,6 +15,7 @@ import {
   forwardThreeInPlace,
   type PanelPlace,
 } from "./panelSolve.ts";
+import { updateParentInPlace } from "./panelUpdate.ts";
 import type { SymmetricPattern } from "./pattern.ts";
 import { buildSupernodes, type Supernodes } from "./supernodes.ts";
 
