@@ -1,12 +1,12 @@
 // Geodesics: locally shortest paths over the triangles, straight on the unfolded surface. Start from a best-first sleeve,
-// then funnel and flips (sleeve.ts); round holes the other way is tried as well.
-// Not here: exact all-pairs distances. On domes more than one geodesic may join two places with the same way round the holes; the
-// start is then the one that looks shortest, which is not proven to be so. On saddle-shaped membranes it is the only one.
+// then funnel and flips (sleeve.ts); round holes the other way is tried as well. Where the surface between is domed more than one
+// geodesic may join two places: there a bounded exact search (exactSearch.ts) looks for a shorter one.
 import { PlanError } from "../problem.ts";
 import type { Adjacency } from "./adjacency.ts";
+import { findShorterSleeve } from "./exactSearch.ts";
 import { buildHoleCuts, type HoleCuts } from "./holeCuts.ts";
-import { measureDistance, pointAt } from "./measures.ts";
-import { type SleeveField, shortenSleeve, touchesBoundary } from "./sleeve.ts";
+import { measureDistance, pointAt, vertexAt } from "./measures.ts";
+import { measureAngle, type SleeveField, shortenSleeve, touchesBoundary } from "./sleeve.ts";
 import { createSearchScratch, findSleeve, type SearchField } from "./sleeveSearch.ts";
 import type { Surface, SurfacePoint } from "./surface.ts";
 import { checkPoint, findTrianglesAt, isSamePoint, namePoint } from "./surfacePoint.ts";
@@ -17,6 +17,12 @@ const DETOUR = 1.05;
 
 /** Two ways are equally long within this share. */
 const EQUAL_SHARE = 1e-9;
+
+/**
+ * Positive curvature (rad, summed over inner vertices near the path) below which one way round the holes holds one geodesic, or
+ * two that differ by less than half its square in length.
+ */
+const LEAST_DOME = 1e-4;
 
 /** A path over the surface. */
 export interface SurfacePath {
@@ -89,6 +95,22 @@ function isInOrder(p: SurfacePoint, q: SurfacePoint): boolean {
   return p.b !== q.b ? p.b < q.b : p.t < q.t;
 }
 
+/** True where the vertices that a path of this length could pass hold positive curvature. */
+function isDomed(solver: GeodesicSolver, from: SurfacePoint, to: SurfacePoint, length: number): boolean {
+  const { surface, adjacency, onBoundary } = solver;
+  const [p, q] = [pointAt(surface, from), pointAt(surface, to)];
+  let sum = 0;
+  for (let v = 0; v < adjacency.nV; v++) {
+    if (onBoundary[v] || adjacency.fanStart[v] === adjacency.fanStart[v + 1]) continue;
+    const excess = 2 * Math.PI - measureAngle(solver, v);
+    if (excess <= 0) continue;
+    const at = vertexAt(surface, v);
+    if (measureDistance(p, at) + measureDistance(at, q) <= length) sum += excess;
+    if (sum > LEAST_DOME) return true;
+  }
+  return false;
+}
+
 function traceOrdered(solver: GeodesicSolver, from: SurfacePoint, to: SurfacePoint, shortest: boolean): SurfacePath {
   const { cuts } = solver;
   const sleeve = findSleeve(solver, { from, to, hole: -1, parity: 0, limit: Number.POSITIVE_INFINITY });
@@ -111,6 +133,17 @@ function traceOrdered(solver: GeodesicSolver, from: SurfacePoint, to: SurfacePoi
     else if (path.length < best.length) {
       best = path;
       unique = true;
+    }
+  }
+  if (shortest && isDomed(solver, from, to, best.length)) {
+    const bends = (v: number) => solver.onBoundary[v] === 1 || measureAngle(solver, v) > 2 * Math.PI;
+    const shorter = findShorterSleeve(solver, [from, to], best.length, bends);
+    if (shorter) {
+      const path = shortenSleeve(solver, from, to, shorter);
+      if (path.length < best.length) {
+        best = path;
+        unique = true;
+      }
     }
   }
   return { ...best, touchesBoundary: touchesBoundary(solver, best.points), unique };

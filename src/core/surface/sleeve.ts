@@ -195,7 +195,8 @@ function runFunnel(field: SleeveField, sleeve: Sleeve, plane: SleevePlane): Slee
   return line;
 }
 
-function totalAngle(field: SleeveField, v: number): number {
+/** Sum of the corner angles round vertex v, rad. */
+export function measureAngle(field: SleeveField, v: number): number {
   if (field.angle[v] < 0) {
     const { fan, fanStart } = field.adjacency;
     let sum = 0;
@@ -242,7 +243,7 @@ function flipBends(field: SleeveField, sleeve: Sleeve, line: SleeveLine): number
     const v = line.vertex[k];
     if (field.onBoundary[v]) continue;
     // The corner's far side holds angle(v) - π - turn; below π the line gets shorter there.
-    if (measureTurn(line, k) <= totalAngle(field, v) - 2 * Math.PI + LEAST_TURN) continue;
+    if (measureTurn(line, k) <= measureAngle(field, v) - 2 * Math.PI + LEAST_TURN) continue;
     const left = line.hand[k] > 0;
     const ends = (i: number) => (left ? tri[nextHalfedge(sides[i])] : tri[sides[i]]) === v;
     const i = line.from[k];
