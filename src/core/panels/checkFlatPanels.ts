@@ -84,6 +84,24 @@ export function checkFlatPanels(panels: readonly FlatPanel[], layout: StripLayou
   ];
 }
 
+/** A check that does not hold stops the papers. */
+export function listBrokenChecks(checks: readonly Check[], panels: readonly FlatPanel[]): Finding[] {
+  return checks
+    .filter((c) => !c.holds)
+    .map((c) => ({
+      code: "flatten-check",
+      level: "stop",
+      station: "panels",
+      where: panels.map((p) => p.id),
+      value: c.value,
+      limit: c.limit,
+      text: `${c.text}: ${c.value}, allowed ${c.limit}`,
+      remedy:
+        "the panels do not fit each other: look for needle triangles and very curved strips, lay the seams closer",
+      basis: "own argument",
+    }));
+}
+
 /** Cautions about stress as patterned and about compensations that do not fit the cloth's stiffness. */
 export function listPanelFindings(panels: readonly FlatPanel[]): Finding[] {
   const out: Finding[] = [];

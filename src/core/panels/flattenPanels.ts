@@ -4,7 +4,7 @@ import { PlanError, type StationContext, type StationResult } from "../problem.t
 import type { FlatPanel } from "../records/flatPanel.ts";
 import type { StripLayout } from "../records/stripLayout.ts";
 import { buildStiffness, type ClothStiffness } from "../structure/cloth.ts";
-import { checkFlatPanels, listPanelFindings } from "./checkFlatPanels.ts";
+import { checkFlatPanels, listBrokenChecks, listPanelFindings } from "./checkFlatPanels.ts";
 import { buildFlattenProblem, listDrafts, type PanelDraft } from "./flattenProblem.ts";
 import { FLATTEN_TOLERANCE, solveFlatten } from "./flattenSolve.ts";
 import { buildFlattenStart } from "./flattenStart.ts";
@@ -40,7 +40,8 @@ export function flattenPanels(
       basis: "own argument",
     });
   }
-  return { output: panels, findings, checks: checkFlatPanels(panels, layout) };
+  const checks = checkFlatPanels(panels, layout);
+  return { output: panels, findings: [...listBrokenChecks(checks, panels), ...findings], checks };
 }
 
 /**

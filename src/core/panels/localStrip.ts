@@ -82,7 +82,7 @@ function refuseOutline(strip: Strip, why: string): never {
 
 /**
  * Direction of the strip's run at each triangle, on the form: tangents of the outline between the two ends, led from `from` to `to`,
- * averaged with the inverse square of their distance, turned into the triangle's plane. Zero where the outline gives none.
+ * averaged with the inverse fourth power of their distance, turned into the triangle's plane. Zero where the outline gives none.
  * @shape 3*nT, unit or zero @source own: what a welder sees as "along the panel"
  */
 export function buildRunDirections(strip: LocalStrip): Float64Array<ArrayBuffer> {
@@ -98,7 +98,7 @@ export function buildRunDirections(strip: LocalStrip): Float64Array<ArrayBuffer>
     }
     for (let i = 0; i < pieces.length; i += 6) {
       const d = (pieces[i] - m[0]) ** 2 + (pieces[i + 1] - m[1]) ** 2 + (pieces[i + 2] - m[2]) ** 2;
-      for (let k = 0; k < 3; k++) sum[k] += pieces[i + 3 + k] / d;
+      for (let k = 0; k < 3; k++) sum[k] += pieces[i + 3 + k] / (d * d);
     }
     const p = [0, 1, 2].map((k) => x[3 * tri[t + 1] + k] - x[3 * tri[t] + k]);
     const q = [0, 1, 2].map((k) => x[3 * tri[t + 2] + k] - x[3 * tri[t] + k]);
