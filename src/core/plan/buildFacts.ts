@@ -38,7 +38,15 @@ export function buildFormFacts(form: FoundForm): FactsForm {
     vertices: listTriples(form.surface.xyz),
     triangles: listTriples(form.surface.tri),
     stress: form.stress,
-    edges: form.edges.map((e) => ({ id: e.id, kind: e.kind, vertices: e.vertices, force: e.force, reaction: e.reaction, forceFrom: e.forceFrom, length: measurePathLength(listPath(form.surface, e.vertices)) })),
+    edges: form.edges.map((e) => ({
+      id: e.id,
+      kind: e.kind,
+      vertices: e.vertices,
+      force: e.force,
+      reaction: e.reaction,
+      forceFrom: e.forceFrom,
+      length: measurePathLength(listPath(form.surface, e.vertices)),
+    })),
     anchors: form.anchors,
     residual: form.residual,
     area: form.area,
@@ -46,7 +54,7 @@ export function buildFormFacts(form: FoundForm): FactsForm {
   };
 }
 
-/** The seams' part; sides in the panels' own vertex numbers, both in the seam's order. */
+/** The seams' part; sides in the panels' own vertex numbers, both in the seam's order (empty while there are no panels). */
 export function buildSeamFacts(layout: StripLayout, panels: readonly CutPanel[]): FactsSeam[] {
   const local = new Map(panels.map((p) => [p.id, new Map(Array.from(p.surfaceVertex, (v, i) => [v, i]))]));
   return layout.seams.map((s) => ({
@@ -56,7 +64,10 @@ export function buildSeamFacts(layout: StripLayout, panels: readonly CutPanel[])
     weld: s.weld,
     cable: s.cable,
     upper: s.upper,
-    sides: s.strips.map((panel) => ({ panel, vertices: s.vertices.map((v) => local.get(panel)?.get(v) ?? -1) })),
+    sides: s.strips.map((panel) => {
+      const own = local.get(panel);
+      return { panel, vertices: own ? s.vertices.map((v) => own.get(v) ?? -1) : [] };
+    }),
   }));
 }
 

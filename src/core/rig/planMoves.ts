@@ -125,7 +125,7 @@ export function playStage(
   rig: Rig,
   solver: EquilibriumSolver,
   decision: RigDecision,
-  stage: { name: string; fraction: number; begin: RigState; end: RigState },
+  stage: { name: string; fraction: number; begin: RigState; end: RigState; slack: boolean },
   firstStep: number,
 ): { stage: FactsStage; states: RigState[] } {
   const from = rig.adjusters.map((a) => stage.begin.L0[a.link]);
@@ -141,7 +141,7 @@ export function playStage(
     if (s === 0) break;
     const L0 = state.L0.slice();
     for (const i of groups[s]) L0[rig.adjusters[i].link] = from[i];
-    state = solveState(rig, solver, state.x, L0);
+    state = solveState(rig, solver, { x: state.x, L0 }, { slack: stage.slack });
   }
   const moves: FactsMove[] = [];
   groups.forEach((group, s) => {

@@ -57,7 +57,7 @@ export function runRig(input: RigInput, context: StationContext): StationResult<
   const solver = createEquilibriumSolver(rig.structure);
   const cancelled = context.cancelled ? { cancelled: context.cancelled } : {};
   context.onProgress?.(0.05, "finished state");
-  const first = solveState(rig, solver, rig.structure.xyz, rig.L0, context.cancelled);
+  const first = solveState(rig, solver, { x: rig.structure.xyz, L0: rig.L0 }, context);
   const targets = rig.adjusters.map((a) => a.target);
   const geometry = rig.adjusters.map((a) => rig.L0[a.link]);
   const exact = solveLengths(rig, solver, first, targets, geometry, cancelled);
@@ -97,6 +97,8 @@ interface Stage {
   fraction: number;
   begin: RigState;
   end: RigState;
+  /** Begins with slack cloth. */
+  slack: boolean;
 }
 
 /** Stage ends on whole notches from the hanging lengths, and the states between them. */
@@ -143,19 +145,20 @@ function solveStages(
     rig.adjusters.forEach((a, i) => {
       L0[a.link] = to[i];
     });
-    rounded[k] = solveState(rig, solver, end.x, L0, out.context.cancelled);
+    rounded[k] = solveState(rig, solver, { x: end.x, L0 }, out.context);
     before = to;
   });
   const hung = rounded[0].L0.slice();
   rig.adjusters.forEach((a, i) => {
     hung[a.link] = start[i];
   });
-  const slack = solveState(rig, solver, rounded[0].x, hung, out.context.cancelled);
+  const slack = solveState(rig, solver, { x: rounded[0].x, L0: hung }, { slack: true, ...out.context });
   return rounded.map((end, k) => ({
     name: nameStage(fractions[k]),
     fraction: fractions[k],
     begin: k === 0 ? slack : rounded[k - 1],
     end,
+    slack: k === 0,
   }));
 }
 

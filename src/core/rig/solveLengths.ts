@@ -39,20 +39,21 @@ export function readAdjusters(
   return rig.adjusters.map((a) => measureLink(rig.structure, state.x, state.L0, a.link).force);
 }
 
-/** A state from slack lengths, starting near another one. */
+/** A state from slack lengths, starting near another one. slack: cloth hangs loose, so that its rest need not be found sharply. */
 export function solveState(
   rig: Rig,
   solver: EquilibriumSolver,
-  x: Float64Array<ArrayBuffer>,
-  L0: Float64Array<ArrayBuffer>,
-  cancelled?: () => boolean,
+  near: { x: Float64Array<ArrayBuffer>; L0: Float64Array<ArrayBuffer> },
+  options: { slack?: boolean; cancelled?: (() => boolean) | undefined } = {},
 ): RigState {
   const least = Math.min(...rig.adjusters.map((a) => a.target), Infinity);
-  const equilibrium = solveEquilibrium(solver, x, L0, {
-    floor: Number.isFinite(least) ? 1e-7 * least : 0,
+  const { cancelled } = options;
+  const equilibrium = solveEquilibrium(solver, near.x, near.L0, {
+    floor: (options.slack ? 1e-4 : 1e-9) * least,
+    maxSteps: options.slack ? 40 : 80,
     ...(cancelled ? { cancelled } : {}),
   });
-  return { x: equilibrium.x, L0, equilibrium };
+  return { x: equilibrium.x, L0: near.L0, equilibrium };
 }
 
 /** Influence of adjusters on each other, kN per m of length ADDED. @shape n × n */
@@ -140,7 +141,7 @@ function turned(
   rig.adjusters.forEach((a, i) => {
     L0[a.link] += change[i];
   });
-  return solveState(rig, solver, state.x, L0, cancelled);
+  return solveState(rig, solver, { x: state.x, L0 }, { cancelled });
 }
 
 /** The check that forces hold before rounding. */

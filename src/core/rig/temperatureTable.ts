@@ -39,7 +39,7 @@ export function buildTemperatureTable(
     const warm = { ...rig, structure };
     return {
       temperature: reference + step,
-      forces: readForces(warm, solveState(warm, createEquilibriumSolver(structure), finished.x, L0)),
+      forces: readForces(warm, solveState(warm, createEquilibriumSolver(structure), { x: finished.x, L0 })),
     };
   });
 }

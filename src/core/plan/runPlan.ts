@@ -1,0 +1,90 @@
+// The chain: job and mesh in, facts out. Calls the stations by name, in order, and can stop after any of them.
+import { runForm } from "../form/runForm.ts";
+import type { Station, StationContext, StationResult } from "../problem.ts";
+import type { Facts } from "../records/facts.ts";
+import type { Job, MeshSource } from "../records/job.ts";
+import type { StockRoll } from "../records/roll.ts";
+import { runRolls } from "../rolls/runRolls.ts";
+import { runSeams } from "../seams/runSeams.ts";
+import { buildFormFacts, buildHead, buildPanelFacts, buildSeamFacts } from "./buildFacts.ts";
+import { firstOptions, fitPanels, measureRoom } from "./fitPanels.ts";
+
+/** How a plan is asked for. */
+export interface PlanOptions {
+  /** Last station to run; left out: all. */
+  until?: Station;
+  /** Short hash of the job and everything it reads. */
+  revision: string;
+  /** Told when a station begins; for timing by the caller. */
+  onStation?: (station: Station) => void;
+}
+
+/** Share of the progress bar at which each station begins. */
+const begins: Record<Station, number> = { job: 0, form: 0, seams: 0.1, panels: 0.25, rolls: 0.5, rig: 0.75, papers: 1 };
+
+/** The job's rolls, or one that is taken for granted and opened as often as needed. mm */
+function buildStock(job: Job): StockRoll[] {
+  const { fabric } = job;
+  if (job.rolls) return job.rolls.map((r) => ({ ...r, fabric: fabric.id, assumed: false }));
+  return [
+    {
+      id: "R",
+      fabric: fabric.id,
+      batch: null,
+      width: fabric.rollWidth,
+      selvedge: fabric.selvedge,
+      length: fabric.rollLength,
+      start: 0,
+      flaws: [],
+      assumed: true,
+    },
+  ];
+}
+
+/**
+ * Plans a job.
+ * @throws PlanError of any station; a plan that can be finished but must not be issued holds a finding of level stop instead
+ */
+export function runPlan(job: Job, source: MeshSource, options: PlanOptions, context: StationContext): Facts {
+  const facts = buildHead(job, options.revision);
+  const share = (station: Station, next: Station): StationContext => ({
+    ...context,
+    onProgress: (s, words) => context.onProgress?.(begins[station] + s * (begins[next] - begins[station]), words),
+  });
+  const take = <T>(result: StationResult<T>): T => {
+    facts.findings.push(...result.findings);
+    facts.checks.push(...result.checks);
+    return result.output;
+  };
+  options.onStation?.("form");
+  const form = take(runForm(source, job, share("form", "seams")));
+  facts.form = buildFormFacts(form);
+  if (options.until === "form") return facts;
+
+  if (options.until === "seams") {
+    options.onStation?.("seams");
+    const layout = take(
+      runSeams(form, job, firstOptions(measureRoom(job), job.allowances.seam / 1000), share("seams", "panels")),
+    );
+    facts.layouts = layout.choices;
+    facts.seams = buildSeamFacts(layout, []);
+    return facts;
+  }
+  const fitted = fitPanels(form, job, {
+    seams: share("seams", "panels"),
+    panels: share("panels", "rolls"),
+    onStation: (station) => options.onStation?.(station),
+  });
+  const layout = take(fitted.seams);
+  const panels = take(fitted.panels);
+  facts.layouts = layout.choices;
+  facts.seams = buildSeamFacts(layout, panels);
+  facts.panels = panels.map(buildPanelFacts);
+  facts.pieces = [];
+  if (options.until === "panels") return facts;
+
+  options.onStation?.("rolls");
+  const pieces = panels.map((p) => ({ id: p.id, fabric: p.fabric, batch: p.batch, cut: p.cut }));
+  facts.rolls = take(runRolls(pieces, buildStock(job), job.nest, share("rolls", "rig")));
+  return facts;
+}
