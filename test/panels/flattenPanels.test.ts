@@ -457,7 +457,7 @@ describe("what cannot be flattened is refused by name, what is poor is said", ()
   });
 });
 
-// Reach of design.md section 5: strips of 2 m at 2.0 kN/m, warp rms 0.12 kN/m, 99 % of the area within 0.30; here 1.92 m wide or less.
+// Reach the project set itself: strips of 2 m at 2.0 kN/m, warp rms 0.12 kN/m, 99 % of the area within 0.30; here 1.92 m wide or less.
 test.skipIf(!existsSync(`${MESHES}hypar_16x16.obj`))(
   "the minimal saddle meets its figures (skipped where the mesh is absent)",
   () => {

@@ -85,7 +85,7 @@ export function readTriangles(file: string): Surface {
   return { xyz: Float64Array.from(xyz), tri: Uint32Array.from(tri) };
 }
 
-/** The cloth of the tests; constants of design.md section 5. */
+/** The cloth of the tests, a light coated polyester. */
 export const CLOTH = { id: "job", Ew: 600, Ef: 500, nuWf: 0.25, G: 20 };
 
 export const PLAIN = {

@@ -3,7 +3,7 @@ import type { Check, Finding } from "../problem.ts";
 import type { FlatPanel } from "../records/flatPanel.ts";
 import type { StripLayout } from "../records/stripLayout.ts";
 
-/** Limits on flat panels. Seams, pieces and axis: design.md section 5; rms and compressed share: facts.md. */
+/** Limits on flat panels: what a welding floor joins without a pucker (own), and the shares above which facts.md asks for a finding. */
 export const FLAT_LIMITS = {
   /** mm */
   seam: 0.5,

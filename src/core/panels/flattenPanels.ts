@@ -1,5 +1,5 @@
 // The flattening station: strips of the form to flat, compensated panels with the stress they will carry. No outlines, no marks.
-// Method: least strain energy of E − E0 over the flat points of all panels together, sides of seams cut equally long (design.md "panels").
+// Method: least strain energy of E − E0 over the flat points of all panels together, sides of seams cut equally long.
 import { PlanError, type StationContext, type StationResult } from "../problem.ts";
 import type { FlatPanel } from "../records/flatPanel.ts";
 import type { StripLayout } from "../records/stripLayout.ts";

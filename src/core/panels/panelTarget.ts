@@ -1,5 +1,5 @@
 // What each panel is meant to carry: strain from the prestress, the permanent part of a tested compensation, where it is taken back.
-// Source: facts.md "Strain and stress" and design.md "panels"; taking back beside rigid parts: common practice.
+// Source: facts.md "Strain and stress"; taking back beside rigid parts: common practice.
 import { PlanError } from "../problem.ts";
 import type { ClothStiffness } from "../structure/cloth.ts";
 import { measureEngineeringStrain, measureTargetStrain } from "../structure/cloth.ts";

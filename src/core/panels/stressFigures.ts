@@ -96,7 +96,7 @@ export function measurePanelStress(panel: PatternedPanel, d: ClothStiffness): Pa
     }
     if (measureLeastPrincipal(s[t], s[t + 1], s[t + 2]) <= 0) compressed += area;
     const [rx, ry, rz] = [panel.run[t], panel.run[t + 1], panel.run[t + 2]];
-    if (rx === 0 && ry === 0 && rz === 0) continue;
+    if (area === 0 || (rx === 0 && ry === 0 && rz === 0)) continue;
     const { warp: w, side: v } = frame;
     const along = rx * w[0] + ry * w[1] + rz * w[2];
     const across = rx * v[0] + ry * v[1] + rz * v[2];
