@@ -30,7 +30,7 @@ function describePlan(facts: Facts, files: OutputFile[], folder: string): string
   return [
     `  To cut      ${f.panels} panels${f.pieces ? ` and ${f.pieces} pieces` : ""}, ${f.cutArea?.toFixed(1)} m2 with allowances`,
     `  To weld     ${f.seams} seams, ${f.seamLength?.toFixed(1)} m`,
-    `  To order    ${f.rollLength?.toFixed(2)} m of cloth on ${f.rolls} roll${f.rolls === 1 ? "" : "s"} (${cloths.join("; ")}), ${(100 * (f.utilisation ?? 0)).toFixed(0)} % used`,
+    `  To lay out  ${f.rollLength?.toFixed(2)} m of cloth from ${f.rolls} roll${f.rolls === 1 ? "" : "s"} (${cloths.join("; ")}), ${(100 * (f.utilisation ?? 0)).toFixed(0)} % used`,
     `  To trust    stress in the cloth within ${f.stressError?.toFixed(2)} kN/m (rms) of what is wanted; ${f.checks - f.checksFailed} of ${f.checks} checks hold`,
     `  To decide   ${f.stops} stops, ${f.cautions} cautions, ${f.notes} notes. ${stamp}`,
     ...(urgent === "" ? [] : [urgent]),

@@ -2,6 +2,7 @@
 import { PlanError, type Station, type StationContext } from "../core/problem.ts";
 import type { Facts } from "../core/records/facts.ts";
 import type { Job, MeshSource } from "../core/records/job.ts";
+import { capNest } from "./capNest.ts";
 import type { OutputFile } from "./outputFolder.ts";
 import { loadFonts } from "./packageFiles.ts";
 import type { PlanInput } from "./readInput.ts";
@@ -12,7 +13,7 @@ export interface PlanDoors {
   runPlan: (
     job: Job,
     source: MeshSource,
-    options: { until?: Station; revision: string },
+    options: { until?: Station; revision: string; onStation?: (station: Station) => void },
     context: StationContext,
   ) => Facts;
   writePapers: (
@@ -37,8 +38,9 @@ export async function makeFacts(
   const progress = openProgress(around.terminal, options.quiet);
   try {
     const { until } = options;
-    const settings = { revision: input.revision, ...(until === undefined ? {} : { until }) };
-    const facts = doors.runPlan(input.job, input.source, settings, { onProgress: progress.show });
+    const { onStation, cancelled } = capNest(input.job.nest.seconds, () => performance.now());
+    const settings = { revision: input.revision, onStation, ...(until === undefined ? {} : { until }) };
+    const facts = doors.runPlan(input.job, input.source, settings, { onProgress: progress.show, cancelled });
     return { ...facts, findings: [...input.findings, ...facts.findings] };
   } finally {
     progress.end();

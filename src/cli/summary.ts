@@ -92,9 +92,12 @@ export function writeFindings(findings: Finding[], levels: Finding["level"][]): 
   return levels
     .flatMap((level) => findings.filter((f) => f.level === level))
     .map((f) => {
+      const { level } = f;
       const where = typeof f.where === "string" ? f.where : f.where.slice(0, 8).join(", ");
       const place = where === "" || f.text.startsWith(where) ? "" : `${where}: `;
-      return `  ${f.level.toUpperCase().padEnd(8)}${place}${f.text}\n          ${f.remedy} (${f.code})`;
+      // What a note advises is said on the findings sheet; here it would bury the rest.
+      const remedy = level === "note" ? "" : `\n          ${f.remedy}`;
+      return `  ${level.toUpperCase().padEnd(8)}${place}${f.text}${remedy} (${f.code})`;
     })
     .join("\n");
 }

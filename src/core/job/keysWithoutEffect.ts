@@ -5,13 +5,10 @@ import { writePath } from "./jobProblems.ts";
 
 /** "*" stands for any name or number. `plain`: the value that asks for nothing, so that nothing need be said. */
 const KEYS: { path: string[]; plain?: unknown }[] = [
-  { path: ["settle"], plain: false },
   { path: ["edges", "*", "cable"] },
   { path: ["edges", "*", "prestretched"] },
   { path: ["anchors", "*", "support"] },
-  { path: ["anchors", "*", "cutBack"] },
-  { path: ["allowances", "pocketStrip"], plain: false },
-  { path: ["nest", "bite"], plain: null },
+  { path: ["papers", "units"], plain: "metric" },
   { path: ["papers", "site"] },
   { path: ["rig"] },
   { path: ["survey"] },
