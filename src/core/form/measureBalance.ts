@@ -28,8 +28,17 @@ export function sumForces(
   return total;
 }
 
+/** Residual with what is needed to speak of it. */
+export interface ResidualReport {
+  residual: Residual;
+  /** Vertex where it is greatest, -1 where nothing is free. */
+  worst: number;
+  /** Residual force at each vertex, 0 where held. @shape nV @units kN */
+  size: Float64Array<ArrayBuffer>;
+}
+
 /**
- * Residual as facts.md defines it, and the vertex where it is greatest (-1 where nothing is free).
+ * Residual as facts.md defines it.
  * @source facts.md, form.residual
  */
 export function measureResidual(
@@ -38,7 +47,7 @@ export function measureResidual(
   total: Float64Array<ArrayBuffer>,
   fixed: Uint8Array<ArrayBuffer>,
   stations: Stations,
-): { residual: Residual; worst: number } {
+): ResidualReport {
   const along = collectAlong(stations.filter((s) => s !== null));
   const normal = measureVertexNormals(surface);
   let nFree = 0;
@@ -47,6 +56,7 @@ export function measureResidual(
   let square = 0;
   let normalMax = 0;
   let worst = -1;
+  const size = new Float64Array(fixed.length);
   for (let v = 0; v < fixed.length; v++) {
     if (fixed[v]) continue;
     nFree++;
@@ -54,6 +64,7 @@ export function measureResidual(
     const r = removeAlong([total[3 * v], total[3 * v + 1], total[3 * v + 2]], along.get(v) ?? []);
     const l = Math.sqrt(r[0] ** 2 + r[1] ** 2 + r[2] ** 2);
     square += l * l;
+    size[v] = l;
     normalMax = Math.max(
       normalMax,
       Math.abs(r[0] * normal[3 * v] + r[1] * normal[3 * v + 1] + r[2] * normal[3 * v + 2]),
@@ -62,11 +73,12 @@ export function measureResidual(
     max = l;
     worst = v;
   }
-  if (nFree === 0) return { residual: { max: 0, rms: 0, normalMax: 0 }, worst };
+  if (nFree === 0) return { residual: { max: 0, rms: 0, normalMax: 0 }, worst, size };
   scale /= nFree;
   return {
     residual: { max: max / scale, rms: Math.sqrt(square / nFree) / scale, normalMax: normalMax / scale },
     worst,
+    size,
   };
 }
 

@@ -1,7 +1,7 @@
 // The form station: from a mesh as a program wrote it to a sound surface with named edges, anchors and its balance.
 // Settling is not built: the form is taken as it is and checked.
 import { type Check, type Finding, PlanError, type StationContext, type StationResult } from "../problem.ts";
-import type { FormEdge, FoundForm, Residual } from "../records/foundForm.ts";
+import type { FormEdge, FoundForm } from "../records/foundForm.ts";
 import type { Job, MeshSource } from "../records/job.ts";
 import { buildAdjacency } from "../surface/adjacency.ts";
 import { measureArea } from "../surface/measures.ts";
@@ -10,13 +10,14 @@ import { balanceCablesInPlace } from "./cableForces.ts";
 import { isCable, measureStations } from "./cablePull.ts";
 import { type BoundaryRun, cutLoop, sideKey } from "./cutLoops.ts";
 import { findCorners } from "./findCorners.ts";
-import { buildFormFinding, describeVertex } from "./formFinding.ts";
+import { buildFormFinding, describePlace } from "./formFinding.ts";
 import { addJobAnchorsInPlace, readHeldPoints } from "./heldPoints.ts";
 import { matchLines, type SurfaceLine } from "./matchLines.ts";
-import { measureReactionsInPlace, measureResidual, sumForces } from "./measureBalance.ts";
+import { measureReactionsInPlace, measureResidual, type ResidualReport, sumForces } from "./measureBalance.ts";
 import { measureMembraneForces, type StressField } from "./membraneForces.ts";
 import { nameAnchors } from "./nameAnchors.ts";
 import { nameEdges } from "./nameEdges.ts";
+import { findStepMetres, isExplainedByRounding, measureRoundingReach } from "./roundingReach.ts";
 import { buildSoundSurface, type SoundSurface } from "./soundSurface.ts";
 
 /** Residual above which the form is not in balance (share of the mean summed force of the cloth at a vertex). */
@@ -96,8 +97,9 @@ function cutBoundary(
 
 function reportResidual(
   sound: SoundSurface,
-  residual: Residual,
-  worst: number,
+  { residual, worst, size }: ResidualReport,
+  step: number,
+  reach: () => Float64Array<ArrayBuffer>,
 ): { checks: Check[]; findings: Finding[] } {
   const holds = residual.max <= BALANCED;
   const check: Check = {
@@ -109,20 +111,30 @@ function reportResidual(
   };
   if (holds) return { checks: [check], findings: [] };
   const percent = (r: number) => `${(100 * r).toPrecision(3)} %`;
-  return {
-    checks: [check],
-    findings: [
-      buildFormFinding("caution", {
-        code: "form-balance",
-        where: `vertex ${sound.toSource[worst]}`,
+  const source = sound.toSource[worst];
+  const words = `residual up to ${percent(residual.max)} of the cloth's force at a vertex (rms ${percent(residual.rms)}, normal ${percent(residual.normalMax)}, limit ${percent(BALANCED)}), worst at vertex ${source} at ${describePlace(sound.surface.xyz, worst)}`;
+  const bound = step > 0 ? reach() : null;
+  const explained = bound !== null && isExplainedByRounding(size, bound);
+  const rounded = `the mesh file's coordinates are rounded to ${1000 * step} mm`;
+  const finding = explained
+    ? buildFormFinding("note", {
+        code: "form-balance-rounding",
+        where: `vertex ${source}`,
         value: residual.max,
         limit: BALANCED,
-        text: `the form is not in balance under this prestress and these cable forces: residual up to ${percent(residual.max)} of the cloth's force at a vertex (rms ${percent(residual.rms)}, normal ${percent(residual.normalMax)}, limit ${percent(BALANCED)}), worst at ${describeVertex(sound.surface.xyz, worst).replace(`vertex ${worst}`, `vertex ${sound.toSource[worst]}`)}`,
+        text: `whether the form is in balance cannot be told more finely: ${words}; ${rounded}, and that alone can leave as much at every vertex`,
+        remedy: "export the mesh with more digits to see the balance itself",
+      })
+    : buildFormFinding("caution", {
+        code: "form-balance",
+        where: `vertex ${source}`,
+        value: residual.max,
+        limit: BALANCED,
+        text: `the form is not in balance under this prestress and these cable forces: ${words}${bound ? `; ${rounded}, which does not explain it` : ""}`,
         remedy:
           "check prestress and cable forces against those the form was found with; the roof will move towards its own balance when it is pulled up",
-      }),
-    ],
-  };
+      });
+  return { checks: [check], findings: [finding] };
 }
 
 /** Every boundary side belongs to exactly one edge; all coordinates and forces are finite. */
@@ -180,9 +192,11 @@ export function runForm(source: MeshSource, job: Job, context: StationContext): 
   const stations = edges.map((e) => (isCable(e) ? measureStations(surface.xyz, e.vertices) : null));
   const cableFindings = balanceCablesInPlace(edges, stations, membrane.force, anchorage.fixed);
   const total = sumForces(membrane, edges, stations);
-  const { residual, worst } = measureResidual(surface, membrane, total, anchorage.fixed, stations);
+  const report = measureResidual(surface, membrane, total, anchorage.fixed, stations);
   const { reactions, check } = measureReactionsInPlace(surface, total, edges, anchorage.anchors, stress.field);
-  const balance = reportResidual(sound, residual, worst);
+  const balance = reportResidual(sound, report, findStepMetres(source), () =>
+    measureRoundingReach(surface, edges, Math.max(job.prestress.warp, job.prestress.weft), findStepMetres(source)),
+  );
   const output: FoundForm = {
     surface,
     fixed: anchorage.fixed,
@@ -190,7 +204,7 @@ export function runForm(source: MeshSource, job: Job, context: StationContext): 
     stress: { warp: job.prestress.warp, weft: job.prestress.weft },
     edges,
     anchors: anchorage.anchors,
-    residual,
+    residual: report.residual,
     area: measureArea(surface),
     reactions,
   };
