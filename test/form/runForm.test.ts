@@ -316,7 +316,10 @@ test("lines: given link by link, with gaps, off the mesh, and inside the surface
     { name: null, vertices: north },
     { name: "ridge_line", vertices: Array.from({ length: n + 1 }, (_, i) => 4 * (n + 1) + i) },
     { name: "astray", vertices: [46, 22] },
+    { name: "stay", vertices: [0, 81] },
+    { name: "missed", vertices: [10, 82] },
   ];
+  parts.xyz = Float64Array.from([...parts.xyz, -12, -12, 0, ...parts.xyz.slice(33, 35), 3.3]);
   const { output: form, findings } = run(placeMesh(parts));
   expect(form.edges.map((e) => [e.id, e.kind, e.vertices.length])).toEqual([
     ["south", "cable", 9],
@@ -327,7 +330,11 @@ test("lines: given link by link, with gaps, off the mesh, and inside the surface
   ]);
   expect(edgeOf(form, "E2").vertices).toEqual(west);
   const off = findings.filter((f) => f.code === "mesh-line-off");
-  expect(off.map((f) => f.level)).toEqual(["stop"]);
+  expect(off.map((f) => [f.level, (f.where as string[])[0]])).toEqual([
+    ["stop", "astray"],
+    ["stop", "missed"],
+  ]);
+  expect(findings.find((f) => f.code === "mesh-line-elsewhere")?.where).toEqual(["stay", "vertex 81"]);
   // the arcs it ends on are in balance without it: slack, and said
   expect(edgeOf(form, "ridge_line").force).toBe(0);
   expect(findings.filter((f) => f.code === "cable-slack").map((f) => f.where)).toEqual([["ridge_line"]]);
@@ -339,6 +346,43 @@ test("a straight cable between clamps can carry any force: said, not guessed", (
   const { output: form, findings } = run(placeMesh(parts));
   expect(edgeOf(form, "valley")).toMatchObject({ kind: "valley", loop: -1, force: null, forceFrom: "none" });
   expect(findings.filter((f) => f.code === "cable-force-open").map((f) => f.where)).toEqual([["valley"]]);
+});
+
+test("one name for all four cables: parted at the corners, numbered, and the job may speak to all at once", () => {
+  const parts = buildArcSail(8, 5, 12);
+  parts.lines = parts.lines.map((l) => ({ ...l, name: "rim" }));
+  const { output: form } = run(placeMesh(parts), { edges: { rim: { force: 20 }, "rim-2": { force: 21 } } });
+  expect(form.edges.map((e) => [e.id, e.kind, e.force])).toEqual([
+    ["rim-1", "cable", 20],
+    ["rim-2", "cable", 21],
+    ["rim-3", "cable", 20],
+    ["rim-4", "cable", 20],
+  ]);
+});
+
+test("the job outranks the mesh: a fixed run told to be a cable is let go between its ends", () => {
+  const { output: form } = run(placeMesh(readFixture("sound")), { edges: { E1: { kind: "cable", force: 10 } } });
+  const [first] = form.edges;
+  expect([first.kind, first.force, first.forceFrom]).toEqual(["cable", 10, "job"]);
+  expect(first.vertices.map((v) => form.fixed[v])).toEqual([1, 0, 0, 0, 0, 0, 0, 0, 1]);
+  expect(form.anchors.map((a) => a.isolated)).toEqual([false, false, false, false]);
+});
+
+test("without a word in the mesh a hole of a few sides is still torn, a ring is not", () => {
+  const bare = { ...readFixture("hole"), points: [] };
+  expect(listCodes(run(placeMesh(bare)).findings, "stop")).toEqual(["mesh-hole"]);
+  const tent = buildGrid(
+    24,
+    10,
+    (u, v) => {
+      const [r, a] = [10 - 9 * v, 2 * Math.PI * u];
+      return [r * Math.cos(a), r * Math.sin(a), 5 * v * v];
+    },
+    true,
+  );
+  const { output: form, findings } = run(placeMesh(tent));
+  expect(listCodes(findings, "stop")).toEqual([]);
+  expect(form.edges.map((e) => e.kind)).toEqual(["clamped", "clamped"]);
 });
 
 test("a run of fixed points is a clamped edge between cables; where it ends an anchor stands that takes no adjuster", () => {

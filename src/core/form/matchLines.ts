@@ -98,23 +98,26 @@ function addLinkInPlace(links: Links, a: number, b: number): void {
   links.count++;
 }
 
-/** Surface vertices of a line's points, or the number of the first point that lies nowhere near the surface. */
-function snapLine(
-  sound: SoundSurface,
-  vertices: readonly number[],
-  reach: number,
-): number[] | { off: number; distance: number } {
+/** The point of a line that lies farthest off the surface. */
+interface Astray {
+  source: number;
+  distance: number;
+}
+
+/** Surface vertices of a line's points, or the point farthest off where one is beyond reach. */
+function snapLine(sound: SoundSurface, vertices: readonly number[], reach: number): number[] | Astray {
   const out: number[] = [];
+  let off: Astray | null = null;
   for (const source of vertices) {
     let v = sound.fromSource[source];
     if (v < 0) {
       const near = findNearestVertex(sound.surface, sound.sourceXyz.subarray(3 * source, 3 * source + 3));
-      if (near.distance > reach) return { off: source, distance: near.distance };
+      if (near.distance > reach && near.distance > (off?.distance ?? 0)) off = { source, distance: near.distance };
       v = near.vertex;
     }
     if (out[out.length - 1] !== v) out.push(v);
   }
-  return out;
+  return off ?? out;
 }
 
 /** Paths of a set of links, parted at branches and where boundary and inside meet. */
@@ -155,6 +158,20 @@ function reportOff(sound: SoundSurface, name: string, source: number, why: strin
   });
 }
 
+/** A line that leaves the surface by more than a side is a mast, a stay or a drawing aid; one that just misses it is a fault. */
+function reportAstray(sound: SoundSurface, name: string, off: Astray, side: number): Finding {
+  const far = `its nearest vertex is ${off.distance.toFixed(3)} m away (limit ${(SNAP * side).toFixed(3)} m)`;
+  if (off.distance <= side) return reportOff(sound, name, off.source, far);
+  return buildFormFinding("note", {
+    code: "mesh-line-elsewhere",
+    where: [name, `vertex ${off.source}`],
+    value: off.distance,
+    limit: side,
+    text: `line ${name} leaves the surface by up to ${off.distance.toFixed(3)} m at ${describeVertex(sound.sourceXyz, off.source)}: taken for a mast, a stay or a drawing aid, not for an edge`,
+    remedy: "nothing to do if it is that; else draw it through vertices of the surface",
+  });
+}
+
 /**
  * The file's lines as paths of the surface.
  * @shape onBoundary: whether the side between two vertices is on the boundary
@@ -167,19 +184,12 @@ export function matchLines(
 ): { lines: SurfaceLine[]; findings: Finding[] } {
   const findings: Finding[] = [];
   const groups = new Map<string | null, Links>();
-  const reach = SNAP * measureMeanSide(sound.surface);
+  const side = measureMeanSide(sound.surface);
   for (const line of lines) {
     const label = line.name ?? "without a name";
-    const snapped = snapLine(sound, line.vertices, reach);
+    const snapped = snapLine(sound, line.vertices, SNAP * side);
     if (!Array.isArray(snapped)) {
-      findings.push(
-        reportOff(
-          sound,
-          label,
-          snapped.off,
-          `its nearest vertex is ${snapped.distance.toFixed(3)} m away (limit ${reach.toFixed(3)} m)`,
-        ),
-      );
+      findings.push(reportAstray(sound, label, snapped, side));
       continue;
     }
     const ways = snapped.slice(1).map((b, i) => {

@@ -5,7 +5,7 @@ import type { MeshSource } from "../records/job.ts";
 import { measureAreas } from "../surface/measures.ts";
 import type { Surface } from "../surface/surface.ts";
 import { cleanTriangles } from "./cleanTriangles.ts";
-import { buildFormFinding, describeVertex } from "./formFinding.ts";
+import { buildFormFinding, describePlace, describeVertex } from "./formFinding.ts";
 import { checkSize, convertToMetres, measureExtent } from "./meshSize.ts";
 import { type Orientation, orientTrianglesInPlace } from "./orientTriangles.ts";
 import { partPinches } from "./partPinches.ts";
@@ -119,7 +119,7 @@ function reportPieces(s: { xyz: Float64Array<ArrayBuffer>; tri: Uint32Array<Arra
   ];
 }
 
-function findNeedles(s: Surface): Finding[] {
+function findNeedles(s: Surface, toSource: Uint32Array<ArrayBuffer>): Finding[] {
   const { xyz: x, tri } = s;
   const area = measureAreas(s);
   let count = 0;
@@ -140,13 +140,14 @@ function findNeedles(s: Surface): Finding[] {
     at = tri[3 * t];
   }
   if (count === 0) return [];
+  const vertex = `vertex ${toSource[at]}`;
   return [
     buildFormFinding("note", {
       code: "mesh-needles",
-      where: `vertex ${at}`,
+      where: vertex,
       value: count,
       limit: NEEDLE,
-      text: `${countWords(count, "triangle is a needle", "triangles are needles")} (height below ${NEEDLE} of the longest side), worst at ${describeVertex(x, at)}`,
+      text: `${countWords(count, "triangle is a needle", "triangles are needles")} (height below ${NEEDLE} of the longest side), worst at ${vertex} at ${describePlace(x, at)}`,
       remedy: "balance and stress are less exact there; a more even mesh helps",
     }),
   ];
@@ -208,6 +209,7 @@ export function buildSoundSurface(source: MeshSource): SoundSurface {
   surface.tri.forEach((v, h) => {
     piece[v] = orientation.piece[Math.floor(h / 3)];
   });
+  const toSource = kept.map((v) => (v < nSource ? v : parted.copyOf[v - nSource]));
   const within = `within ${(1000 * tolerance).toPrecision(2)} mm (a millionth of the form's diagonal)`;
   const vanished = split.vanished.map((f) => source.faceVertex[source.faceStart[f]]);
   const findings = [
@@ -246,8 +248,7 @@ export function buildSoundSurface(source: MeshSource): SoundSurface {
       }),
     ),
     ...reportPieces({ xyz: x, tri }, orientation),
-    ...findNeedles(surface),
+    ...findNeedles(surface, toSource),
   ];
-  const toSource = kept.map((v) => (v < nSource ? v : parted.copyOf[v - nSource]));
   return { surface, sourceXyz: x, fromSource, toSource, piece, nPieces: orientation.nPieces, diagonal, findings };
 }
