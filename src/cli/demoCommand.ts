@@ -6,7 +6,7 @@ import type { OutputFile } from "./outputFolder.ts";
 import { listStarters, starterFolder } from "./packageFiles.ts";
 import { parseOptions } from "./parseOptions.ts";
 import { planInto } from "./planCommand.ts";
-import { measurePlan, writeFindings } from "./summary.ts";
+import { measurePlan, writeUrgent } from "./summary.ts";
 
 /** The verb. @returns exit status 0, or 1 where a plan holds a stop */
 export async function demoCommand(args: string[], around: Surroundings): Promise<number> {
@@ -25,7 +25,7 @@ export async function demoCommand(args: string[], around: Surroundings): Promise
 function describePlan(facts: Facts, files: OutputFile[], folder: string): string[] {
   const f = measurePlan(facts);
   const cloths = [...new Set((facts.rolls ?? []).map((r) => `${r.fabric}, ${(r.width / 1000).toFixed(2)} m wide`))];
-  const urgent = writeFindings(facts.findings, ["stop", "caution"]);
+  const urgent = writeUrgent(facts.findings);
   const stamp = f.stops > 0 ? "The papers are stamped NOT FOR ISSUE." : "Nothing stops the papers from being issued.";
   return [
     `  To cut      ${f.panels} panels${f.pieces ? ` and ${f.pieces} pieces` : ""}, ${f.cutArea?.toFixed(1)} m2 with allowances`,

@@ -7,7 +7,7 @@ import { checkOutputFolder, type OutputFile, writeOutputFolder } from "./outputF
 import { loadCatalogues } from "./packageFiles.ts";
 import { parseOptions } from "./parseOptions.ts";
 import { readInput } from "./readInput.ts";
-import { measurePlan, writeFindings, writeSummary } from "./summary.ts";
+import { measurePlan, writeSummary, writeUrgent } from "./summary.ts";
 import { usageError } from "./terminal.ts";
 import { UNTIL } from "./usage.ts";
 
@@ -54,7 +54,7 @@ export async function planCommand(args: string[], around: Surroundings): Promise
     const { findings, checks, job } = facts;
     around.terminal.out(JSON.stringify({ command: "plan", exit, out, job, figures, findings, checks, files: listed }));
   } else if (!quiet) {
-    const urgent = writeFindings(facts.findings, ["stop", "caution"]);
+    const urgent = writeUrgent(facts.findings);
     around.terminal.out(
       [
         writeSummary(facts, figures),

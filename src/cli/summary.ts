@@ -87,17 +87,39 @@ export function writeSummary(facts: Facts, figures: PlanFigures): string {
   return lines.join("\n");
 }
 
-/** Findings of some levels, the gravest first, each with place, remedy and code. */
+/** Places a finding speaks of, shortened. */
+function writeWhere(where: string | string[]): string {
+  if (typeof where === "string") return where;
+  return where.length > 8 ? `${where.slice(0, 7).join(", ")} and ${where.length - 7} more` : where.join(", ");
+}
+
+function writeFinding(f: Finding): string {
+  const where = writeWhere(f.where);
+  const place = where === "" || f.text.startsWith(where) ? "" : `${where}: `;
+  // What a note advises is said on the findings sheet; here it would bury the rest.
+  const remedy = f.level === "note" ? "" : `\n          ${f.remedy}`;
+  return `  ${f.level.toUpperCase().padEnd(8)}${place}${f.text}${remedy} (${f.code})`;
+}
+
+/** Every finding of some levels, the gravest first, each with place, remedy and code. */
 export function writeFindings(findings: Finding[], levels: Finding["level"][]): string {
-  return levels
-    .flatMap((level) => findings.filter((f) => f.level === level))
-    .map((f) => {
-      const { level } = f;
-      const where = typeof f.where === "string" ? f.where : f.where.slice(0, 8).join(", ");
-      const place = where === "" || f.text.startsWith(where) ? "" : `${where}: `;
-      // What a note advises is said on the findings sheet; here it would bury the rest.
-      const remedy = level === "note" ? "" : `\n          ${f.remedy}`;
-      return `  ${level.toUpperCase().padEnd(8)}${place}${f.text}${remedy} (${f.code})`;
+  return levels.flatMap((level) => findings.filter((f) => f.level === level).map(writeFinding)).join("\n");
+}
+
+/** Stops and cautions; where many are of one kind, the first in full and the places of the others. */
+export function writeUrgent(findings: Finding[]): string {
+  const kinds = new Map<string, Finding[]>();
+  for (const level of ["stop", "caution"]) {
+    for (const f of findings.filter((g) => g.level === level)) {
+      const kind = `${level} ${f.code}`;
+      kinds.set(kind, [...(kinds.get(kind) ?? []), f]);
+    }
+  }
+  return [...kinds.values()]
+    .flatMap(([first, ...others]) => {
+      if (others.length < 2) return [first, ...others].map(writeFinding);
+      const places = writeWhere([...new Set(others.map((f) => [f.where].flat().slice(0, 3).join("/")))]);
+      return [writeFinding(first), `          and ${others.length} more of this kind: ${places}`];
     })
     .join("\n");
 }

@@ -11,6 +11,7 @@ import { type JobFile, jobSchema } from "./jobSchema.ts";
 import { JOB_VERSION, migrateJob } from "./jobVersions.ts";
 import { noteKeysWithoutEffect } from "./keysWithoutEffect.ts";
 import { checkUsableWidth, resolveCable, resolveFabric } from "./resolveEntries.ts";
+import { resolveRig } from "./resolveRig.ts";
 
 /** A job as read, where its mesh is, and what was taken for granted. */
 export interface ReadJob {
@@ -124,6 +125,7 @@ function resolveJob(file: JobFile, catalogues: Catalogues, ledger: DefaultLedger
     allowances: resolveAllowances(file, ledger),
     rolls: resolveRolls(file, fabric, ledger),
     nest: resolveNest(file, ledger),
+    rig: resolveRig(file, catalogues),
     papers: {
       date: papers.date ?? "",
       drawnBy: papers.drawnBy ?? "",
@@ -156,7 +158,11 @@ function resolveSeams(file: JobFile, ledger: DefaultLedger): Job["seams"] {
     layout: takeDefault(ledger, layout, "auto", "seams.layout", words),
     from: given.from ?? null,
     to: given.to ?? null,
-    count: takeDefault<number | "auto">(ledger, given.count, "auto", "seams.count", words),
+    // Pairs are their own count.
+    count:
+      layout === "pairs"
+        ? (given.count ?? "auto")
+        : takeDefault<number | "auto">(ledger, given.count, "auto", "seams.count", words),
     pairs: given.pairs ?? [],
     maxWidth: takeDefault(ledger, given.maxWidth, null, "seams.maxWidth", "the usable width of the roll"),
     maxLength: takeDefault(ledger, given.maxLength, null, "seams.maxLength", "no limit but the length of the roll"),

@@ -1,0 +1,67 @@
+// The rig's part of a job: catalogue entries looked up, defaults in place, and a list of what was not the job's own word.
+import type { RigJob } from "../records/job.ts";
+import type { Turnbuckle } from "../records/rig.ts";
+import type { Catalogues } from "./catalogues.ts";
+import type { JobFile } from "./jobSchema.ts";
+
+/** Values taken where the job says nothing of its rig; all of them keep the schedule from being issued. */
+export const RIG_DEFAULTS = {
+  stages: [0.1, 0.3, 0.6, 0.85, 1],
+  /** degC */
+  temperature: 15,
+  /** Share of the weakest part: construction stage, several components (EN 1993-1-11:2006 Table 7.1, from memory). */
+  limit: 0.55,
+  /** Clamp-on tension meter after calibration (common practice: 3 to 5 %). */
+  readingError: 0.05,
+  cable: "1x19-stainless-16",
+  turnbuckle: "open-body-m24",
+} as const;
+
+type FileAdjuster = NonNullable<NonNullable<JobFile["rig"]>["adjusters"]>[number];
+
+function resolveTurnbuckle(given: FileAdjuster["turnbuckle"], catalogues: Catalogues): Turnbuckle | null {
+  if (given === undefined) return null;
+  if (typeof given === "string") return readTurnbuckle(given, catalogues);
+  const { perTurn, shortest, longest, capacity } = given;
+  return { id: "job", perTurn, shortest, longest, capacity: capacity ?? null, status: {} };
+}
+
+function readTurnbuckle(id: string, catalogues: Catalogues): Turnbuckle {
+  const { perTurn, shortest, longest, capacity, status } = catalogues.turnbuckles[id];
+  return { id, perTurn, shortest, longest, capacity, status };
+}
+
+/** The rig as the job gives it; names and places are checked against the form later. */
+export function resolveRig(file: JobFile, catalogues: Catalogues): RigJob {
+  const rig = file.rig ?? {};
+  const cable = catalogues.cables[RIG_DEFAULTS.cable];
+  const defaults: string[] = [];
+  if (rig.limit === undefined) defaults.push("rig.limit");
+  return {
+    adjusters:
+      rig.adjusters?.map((a) => ({
+        name: a.name,
+        anchor: a.anchor ?? null,
+        edge: a.edge ?? null,
+        end: a.end === undefined ? null : a.end === 0 ? "first" : a.end === 1 ? "last" : a.end,
+        turnbuckle: resolveTurnbuckle(a.turnbuckle, catalogues),
+        EA: a.EA ?? null,
+      })) ?? null,
+    struts: (rig.struts ?? []).map((s) => ({ name: s.name, from: s.from, to: s.to, EA: s.EA ?? null })),
+    stays: (rig.stays ?? []).map((s) => ({
+      name: s.name,
+      from: s.from,
+      to: s.to,
+      EA: s.EA ?? null,
+      force: s.force ?? null,
+      minBreakingForce: s.minBreakingForce ?? null,
+    })),
+    stages: rig.stages ?? [...RIG_DEFAULTS.stages],
+    temperature: rig.temperature ?? RIG_DEFAULTS.temperature,
+    limit: rig.limit ?? RIG_DEFAULTS.limit,
+    readingError: rig.reading?.error ?? RIG_DEFAULTS.readingError,
+    defaults,
+    defaultCable: { ...cable.cable, status: cable.status },
+    defaultTurnbuckle: readTurnbuckle(RIG_DEFAULTS.turnbuckle, catalogues),
+  };
+}
