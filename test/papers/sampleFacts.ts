@@ -54,16 +54,20 @@ function grid(k: number): { erected: Vec3[]; flat: Vec2[]; triangles: Vec3[] } {
   const at = (i: number, j: number) => point(-1 + (2 * i) / NU, t(j));
   const erected: Vec3[] = [];
   const flat: Vec2[] = [];
-  let along = 0;
+  // Along the warp each row keeps its own length, so that both sides of a seam are nearly equal.
+  const along = Array.from({ length: NV + 1 }, (_, j) => {
+    const sums = [0];
+    for (let i = 1; i <= NU; i++) sums.push(sums[i - 1]! + gap3(at(i - 1, j), at(i, j)));
+    return sums.map((s) => s - sums[NU / 2]!);
+  });
   for (let i = 0; i <= NU; i++) {
-    if (i > 0) along += (gap3(at(i - 1, 1), at(i, 1)) + gap3(at(i - 1, 2), at(i, 2))) / 2;
     const widths = [0];
     for (let j = 1; j <= NV; j++) widths.push(widths[j - 1]! + gap3(at(i, j - 1), at(i, j)));
     for (let j = 0; j <= NV; j++) {
       erected.push(at(i, j));
       // The middle panel stays straight, the outer ones turn their hollow side outward.
       const base = k === 0 ? widths[NV]! : k === 2 ? 0 : widths[NV]! / 2;
-      flat.push([(1000 * along) / (1 + EW), (1000 * (widths[j]! - base)) / (1 + EF)]);
+      flat.push([(1000 * along[j]![i]!) / (1 + EW), (1000 * (widths[j]! - base)) / (1 + EF)]);
     }
   }
   const triangles: Vec3[] = [];
@@ -381,7 +385,18 @@ export function sampleFacts(options: SampleOptions = {}): Facts {
         { anchor: "A2", force: [-22.1, 18.4, 5.2] },
       ],
     },
-    layouts: [{ layout: "bands", from: "E4", to: "E2", count: 3, why: "fewest strips that fit the roll" }],
+    layouts: [
+      {
+        region: "region 1",
+        panels: panels.map((p) => p.id),
+        widths: [1.8, 1.7, 1.8],
+        layout: "bands",
+        from: "E4",
+        to: "E2",
+        count: 3,
+        why: "fewest strips that fit the roll",
+      },
+    ],
     seams: [0, 1].map((k) => sampleSeam(k, panels, name)),
     panels,
     pieces: [{ id: "C1", kind: "patch", for: name("P1"), fabric: "pvc-2", batch: "B07", cut: patch }],

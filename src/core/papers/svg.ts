@@ -5,9 +5,9 @@ import { decimal } from "./decimal.ts";
 import { type Drawing, extents, LAYER_NAMES, LAYERS, type Layer } from "./drawing.ts";
 
 const MARGIN = 20;
-// Told apart by the dash and the width as well as by colour: black on white must do.
+// Told apart by width and by the name of the group as well as by colour.
 const PENS: Readonly<Record<Layer, string>> = {
-  bed: 'stroke="#777777" stroke-width="1" stroke-dasharray="30 15"',
+  bed: 'stroke="#777777" stroke-width="0.5"',
   mark: 'stroke="#0000ff" stroke-width="1"',
   text: 'stroke="none"',
   cut: 'stroke="#ff0000" stroke-width="1.5"',

@@ -30,8 +30,17 @@ export function scaleBar(length: number): Model {
 /** Draws a symbol turned by `rotation` degrees and moved to `at`. */
 export function addSymbolInPlace(drawing: Drawing, model: Model, layer: Layer, at: Vec2, rotation: number): void {
   const placed = makerjs.model.moveRelative(makerjs.model.rotate(makerjs.cloneObject(model), rotation), at);
-  for (const chain of makerjs.model.findChains(placed) as makerjs.IChain[]) {
-    const points = makerjs.chain.toKeyPoints(chain).map((p): Vec2 => [p[0] as number, p[1] as number]);
-    addStrokeInPlace(drawing, { layer, points, closed: chain.endless === true });
-  }
+  const draw = (points: makerjs.IPoint[], closed: boolean) =>
+    addStrokeInPlace(drawing, { layer, points: points.map((p): Vec2 => [p[0], p[1]]), closed });
+  makerjs.model.findChains(placed, (chains, loose) => {
+    for (const chain of chains) draw(makerjs.chain.toKeyPoints(chain), chain.endless === true);
+    // Ticks meet nothing at their ends: they belong to no chain.
+    for (const walk of loose) {
+      const points = makerjs.path.toKeyPoints(walk.pathContext);
+      draw(
+        points.map((p) => makerjs.point.add(p, walk.offset)),
+        false,
+      );
+    }
+  });
 }

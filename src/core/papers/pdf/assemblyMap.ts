@@ -1,0 +1,160 @@
+// The whole roof on one sheet with the names of panels, seams, edges and corners, then the seam schedule and the other cloth.
+import type { Facts, Vec2 } from "../../records/facts.ts";
+import { decimal } from "../decimal.ts";
+import { insidePoint, pointAlong } from "../flatGeometry.ts";
+import { placesOf, seamSide } from "../tables.ts";
+import { addSheet, type Book, drawParagraph, type Sheet } from "./book.ts";
+import { type LabelField, takePlaceInPlace } from "./labelField.ts";
+import { type BoxArea, drawBox, drawRun, drawText, fitText, SMALL, textWidth } from "./pen.ts";
+import { fitRoof, type RoofView } from "./roofView.ts";
+import { type Column, flowTableInPlace, flowTextInPlace, openFlow } from "./table.ts";
+
+const SEAM_COLUMNS: readonly Column[] = [
+  { head: ["Seam"], width: 20 },
+  { head: ["Weld"], width: 20 },
+  { head: ["Panel on", "top"], width: 28, bold: true },
+  { head: ["Panel", "below"], width: 28 },
+  { head: ["On the", "form, m"], width: 20, align: "end" },
+  { head: ["Flat, top", "panel, mm"], width: 24, align: "end" },
+  { head: ["Flat, panel", "below, mm"], width: 24, align: "end" },
+  { head: ["Difference,", "mm"], width: 24, align: "end" },
+  { head: ["Allowance,", "on top / below, mm"], width: 36, align: "end" },
+  { head: ["Cable"], width: 18 },
+  { head: ["Welded by, date"], width: 36 },
+];
+
+const PIECE_COLUMNS: readonly Column[] = [
+  { head: ["Piece"], width: 30 },
+  { head: ["Kind"], width: 25 },
+  { head: ["For"], width: 30 },
+  { head: ["Fabric"], width: 30 },
+  { head: ["Batch"], width: 25 },
+  { head: ["Roll"], width: 30 },
+  { head: ["Done by, date"], width: 50 },
+];
+
+/** Adds the map, the seam schedule and the list of other cloth to the book. */
+export function drawAssemblyMap(book: Book, view: RoofView): void {
+  const sheet = addSheet(book, "Assembly map");
+  const words = `The roof ${view.name}, not to scale; x of the mesh to the right. Thick lines: seams, with the panel that lies on top so that water runs off it.`;
+  const top = drawParagraph(book, sheet, words, sheet.top) - 2;
+  const box = { x: sheet.left, y: sheet.bottom, width: sheet.right - sheet.left, height: top - sheet.bottom };
+  drawMap(book, sheet, view, box);
+  drawSchedule(book);
+  drawPieces(book);
+}
+
+function setName(book: Book, sheet: Sheet, field: LabelField, text: string, middles: Vec2[], bold: boolean): boolean {
+  const font = bold ? book.bold : book.regular;
+  const size = bold ? 11 : SMALL;
+  const shown = fitText(text, font, size, 40);
+  const width = textWidth(shown, font, size);
+  const height = (3.6 * size) / SMALL;
+  const at = takePlaceInPlace(field, { width, height }, middles);
+  if (!at) return false;
+  drawBox(
+    sheet.page,
+    { x: at[0] - width / 2 - 0.3, y: at[1] - height / 2, width: width + 0.6, height },
+    { width: 0, fill: 1, outline: false },
+  );
+  drawText(sheet.page, shown, { x: at[0], y: at[1] - 0.32 * height, size, font, align: "middle" });
+  return true;
+}
+
+function drawMap(book: Book, sheet: Sheet, view: RoofView, box: BoxArea): void {
+  const inner = { x: box.x + 24, y: box.y + 8, width: box.width - 48, height: box.height - 16 };
+  const place = fitRoof(view, inner);
+  const field: LabelField = { within: box, outlines: [], taken: [] };
+  for (const p of view.panels) {
+    for (const o of p.outlines) drawRun(sheet.page, o.map(place), { width: 0.18, closed: true });
+  }
+  for (const s of view.seams) drawRun(sheet.page, s.run.map(place), { width: 0.6 });
+  for (const p of view.panels) {
+    const outline = (p.outlines[0] ?? []).map(place);
+    if (outline.length < 3) continue;
+    const { at } = insidePoint(outline);
+    const spots = [0, 4, -4, 8, -8].flatMap((dy) => [0, 8, -8, 16, -16].map((dx): Vec2 => [at[0] + dx, at[1] + dy]));
+    setName(book, sheet, field, p.id, spots, true);
+  }
+  for (const s of view.seams) {
+    const run = s.run.map(place);
+    const spots = [0.5, 0.4, 0.6, 0.3, 0.7, 0.2, 0.8, 0.12, 0.88].map((f) => pointAlong(run, f).at);
+    if (!setName(book, sheet, field, `${s.id}: ${s.upper} on top`, spots, false))
+      setName(book, sheet, field, s.id, spots, false);
+  }
+  const middle: Vec2 = [inner.x + inner.width / 2, inner.y + inner.height / 2];
+  for (const e of view.edges) {
+    const run = e.run.map(place);
+    const spots = [0.5, 0.4, 0.6, 0.3, 0.7, 0.2, 0.8].flatMap((f) =>
+      [4, 7, 11].map((r) => outward(pointAlong(run, f).at, middle, r)),
+    );
+    setName(book, sheet, field, e.id, spots, false);
+  }
+  for (const a of view.anchors) {
+    const p = place(a.at);
+    drawBox(sheet.page, { x: p[0] - 0.7, y: p[1] - 0.7, width: 1.4, height: 1.4 }, { width: 0.1, fill: 0 });
+    setName(
+      book,
+      sheet,
+      field,
+      a.id,
+      [5, 7, 10, 14].map((r) => outward(p, middle, r)),
+      false,
+    );
+  }
+}
+
+function outward(p: Vec2, middle: Vec2, reach: number): Vec2 {
+  const d: Vec2 = [p[0] - middle[0], p[1] - middle[1]];
+  const l = Math.hypot(d[0], d[1]) || 1;
+  return [p[0] + (reach * d[0]) / l, p[1] + (reach * d[1]) / l];
+}
+
+function seamRows(facts: Facts): string[][] {
+  return (facts.seams ?? []).map((s) => {
+    const sides = [seamSide(facts, s, 0), seamSide(facts, s, 1)];
+    const [top, below] = sides[0].panel === s.upper ? sides : [sides[1], sides[0]];
+    const mm = (v: number | null, digits: number) => (v === null ? "" : decimal(v, digits));
+    const both = top.flat !== null && below.flat !== null;
+    return [
+      s.id,
+      s.weld,
+      top.panel,
+      below.panel,
+      decimal(s.length, 3),
+      mm(top.flat, 1),
+      mm(below.flat, 1),
+      both ? decimal(Math.abs((top.flat as number) - (below.flat as number)), 2) : "",
+      `${mm(top.allowance, 0)} / ${mm(below.allowance, 0)}`,
+      s.cable ?? "",
+      "",
+    ];
+  });
+}
+
+function drawSchedule(book: Book): void {
+  const rows = seamRows(book.facts);
+  if (rows.length === 0) return;
+  const flow = openFlow(book, "Seam schedule");
+  flowTableInPlace(flow, SEAM_COLUMNS, rows);
+  flow.y -= 2;
+  const words =
+    "Seams with the same weld are one continuous weld. Join match mark to match mark, the same number on both panels; never stretch one side to meet the other. The lengths are along the net line.";
+  flowTextInPlace(flow, words);
+}
+
+function drawPieces(book: Book): void {
+  const pieces = book.facts.pieces ?? [];
+  if (pieces.length === 0) return;
+  const places = placesOf(book.facts);
+  const rows = pieces.map((p) => [
+    p.id,
+    p.kind,
+    p.for,
+    p.fabric,
+    p.batch ?? "not given",
+    places.get(p.id)?.roll ?? "none",
+    "",
+  ]);
+  flowTableInPlace(openFlow(book, "Patches, strips, covers and test pieces"), PIECE_COLUMNS, rows);
+}

@@ -1,0 +1,167 @@
+// The findings sheets: what is open, what was checked against what, what the engineer must supply. The one paper that is
+// written whatever the plan came to.
+import type { Check, Finding, FindingLevel } from "../../problem.ts";
+import type { Facts } from "../../records/facts.ts";
+import { cautions, ENGINEER_SUPPLIES } from "../cautionTexts.ts";
+import { decimal } from "../decimal.ts";
+import { type Book, closeBook, type FontFiles, openBook } from "./book.ts";
+import { drawBox, drawText, MM, PITCH, SMALL, textWidth, wrapText } from "./pen.ts";
+import {
+  type Column,
+  type Flow,
+  flowGapInPlace,
+  flowHeadingInPlace,
+  flowTableInPlace,
+  flowTextInPlace,
+  needInPlace,
+  openFlow,
+} from "./table.ts";
+
+const FINDING_COLUMNS: readonly Column[] = [
+  { head: ["Code", "and station"], width: 44, bold: true },
+  { head: ["Where"], width: 30 },
+  { head: ["What is the matter"], width: 78 },
+  { head: ["Value"], width: 24, align: "end" },
+  { head: ["Limit"], width: 24, align: "end" },
+  { head: ["What to do"], width: 62 },
+  { head: ["Basis"], width: 32 },
+];
+
+const CHECK_COLUMNS: readonly Column[] = [
+  { head: ["Station"], width: 22 },
+  { head: ["Check"], width: 150 },
+  { head: ["Value"], width: 34, align: "end" },
+  { head: ["Limit"], width: 34, align: "end" },
+  { head: ["Held"], width: 18, bold: true },
+];
+
+const PLACES = 10;
+
+const HEADINGS: Readonly<Record<FindingLevel, string>> = {
+  stop: "Stops: no paper may be issued while one of these is open",
+  caution: "Cautions: each wants a decision",
+  note: "Notes: defaults taken and repairs made",
+};
+
+/** A value as the reader wants it: four figures, no exponent. */
+export function valueText(value: number | string | null): string {
+  if (value === null) return "–";
+  if (typeof value === "string") return value;
+  if (!Number.isFinite(value)) return String(value);
+  const size = Math.abs(value);
+  if (size >= 1e12) return String(value);
+  if (size !== 0 && size < 1e-4) return `${Number(value.toPrecision(2))}`.replace("e-", " · 10^-");
+  return size >= 1000 ? decimal(value, 0) : String(Number(value.toPrecision(4)));
+}
+
+/** The bytes of findings.pdf. */
+export async function writeFindingSheets(facts: Facts, fonts: FontFiles): Promise<Uint8Array> {
+  const book = await openBook(facts, fonts, "findings");
+  const flow = openFlow(book, "Findings");
+  flowSummaryInPlace(flow, facts);
+  for (const level of ["stop", "caution"] as const) flowFindingsInPlace(flow, facts, level);
+  flowCautionsInPlace(flow, book);
+  flowEngineerInPlace(flow);
+  flowFindingsInPlace(flow, facts, "note");
+  flowChecksInPlace(flow, facts.checks);
+  return closeBook(book);
+}
+
+function count(n: number, one: string, many: string): string {
+  return n === 1 ? `1 ${one}` : `${n} ${many}`;
+}
+
+function flowSummaryInPlace(flow: Flow, facts: Facts): void {
+  const of = (level: FindingLevel) => facts.findings.filter((f) => f.level === level).length;
+  const held = facts.checks.filter((c) => c.holds).length;
+  const line = `${count(of("stop"), "stop", "stops")}, ${count(of("caution"), "caution", "cautions")}, ${count(of("note"), "note", "notes")}; ${held} of ${count(facts.checks.length, "check", "checks")} held.`;
+  flowTextInPlace(flow, line, { bold: true });
+  const ran = (["form", "seams", "panels", "rolls"] as const).filter((k) => facts[k] !== undefined);
+  const got = ran.length > 0 ? `Stations with a result: ${ran.join(", ")}.` : "No station came to a result.";
+  flowTextInPlace(
+    flow,
+    `${got} Mesh ${facts.job.mesh}. The plan is made for prestress; it does not design for wind, snow or ponding. Cautions for the work stand below, before anything is handled.`,
+  );
+}
+
+/** Places by name; of a long list the first ones and how many more, facts.json holds them all. */
+function placesText(places: readonly string[]): string {
+  const shown = places.slice(0, PLACES).join(", ");
+  return places.length > PLACES ? `${shown} and ${places.length - PLACES} more` : shown;
+}
+
+function findingRow(f: Finding): string[] {
+  return [
+    `${f.code} (${f.station})`,
+    placesText([f.where].flat()),
+    f.text,
+    valueText(f.value),
+    valueText(f.limit),
+    f.remedy,
+    f.basis,
+  ];
+}
+
+function flowFindingsInPlace(flow: Flow, facts: Facts, level: FindingLevel): void {
+  const found = facts.findings.filter((f) => f.level === level);
+  flowHeadingInPlace(flow, HEADINGS[level]);
+  if (found.length === 0) flowTextInPlace(flow, "None.");
+  else flowTableInPlace(flow, FINDING_COLUMNS, found.map(findingRow));
+}
+
+/** Signal word in a frame, its text beside it, kept together. */
+function flowCautionsInPlace(flow: Flow, book: Book): void {
+  flowHeadingInPlace(flow, "Before the cloth is handled, lifted or tensioned");
+  const indent = 28;
+  for (const { word, text } of cautions(book.facts)) {
+    const lines = wrapText(text, book.regular, SMALL, flow.sheet.right - flow.sheet.left - indent);
+    needInPlace(flow, lines.length * PITCH + 3);
+    const { page, left } = flow.sheet;
+    const width = Math.max(24, textWidth(word, book.bold, SMALL) + 4);
+    drawBox(page, { x: left, y: flow.y - 6, width, height: 5.4 }, { width: 0.5 });
+    drawText(page, word, { x: left + width / 2, y: flow.y - 4.4, size: SMALL, font: book.bold, align: "middle" });
+    flowTextInPlace(flow, text, { indent });
+    flowGapInPlace(flow, lines.length === 1 ? 3 : 2);
+  }
+}
+
+function flowEngineerInPlace(flow: Flow): void {
+  flowHeadingInPlace(flow, "What the engineer must supply or decide");
+  ENGINEER_SUPPLIES.forEach((text, i) => {
+    needInPlace(flow, 2 * PITCH);
+    drawText(flow.sheet.page, `${i + 1}.`, {
+      x: flow.sheet.left,
+      y: flow.y - PITCH + 1,
+      size: SMALL,
+      font: flow.book.bold,
+    });
+    flowTextInPlace(flow, text, { indent: 7 });
+  });
+  needInPlace(flow, 14);
+  flowGapInPlace(flow, 9);
+  const { page, left, right } = flow.sheet;
+  const quarter = (right - left) / 4;
+  ["Engineer", "Licence", "Date", "Signature"].forEach((what, i) => {
+    const x = left + i * quarter;
+    drawText(page, what, { x, y: flow.y, size: SMALL, font: flow.book.regular });
+    const from = x + textWidth(what, flow.book.regular, SMALL) + 2;
+    page.drawLine({
+      start: { x: from * MM, y: flow.y * MM },
+      end: { x: (x + quarter - 4) * MM, y: flow.y * MM },
+      thickness: 0.4,
+    });
+  });
+  flowGapInPlace(flow, 3);
+}
+
+function flowChecksInPlace(flow: Flow, checks: readonly Check[]): void {
+  flowHeadingInPlace(flow, "Checks made");
+  if (checks.length === 0) {
+    flowTextInPlace(flow, "None.");
+    return;
+  }
+  // What did not hold comes first; the order is otherwise the plan's.
+  const ordered = [...checks.filter((c) => !c.holds), ...checks.filter((c) => c.holds)];
+  const rows = ordered.map((c) => [c.station, c.text, valueText(c.value), valueText(c.limit), c.holds ? "yes" : "NO"]);
+  flowTableInPlace(flow, CHECK_COLUMNS, rows);
+}

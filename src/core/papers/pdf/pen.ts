@@ -1,0 +1,168 @@
+// The few strokes all sheets are made of: text, lines, boxes, in mm; and how long a text is, how it wraps, how it is shortened.
+import {
+  closePath,
+  degrees,
+  fill,
+  fillAndStroke,
+  lineTo,
+  moveTo,
+  type PDFFont,
+  type PDFOperator,
+  type PDFPage,
+  popGraphicsState,
+  pushGraphicsState,
+  setDashPattern,
+  setFillingGrayscaleColor,
+  setLineWidth,
+  setStrokingGrayscaleColor,
+  stroke,
+} from "pdf-lib";
+import type { Vec2 } from "../../records/facts.ts";
+import { plainText } from "../plainText.ts";
+
+/** Points in a millimetre. */
+export const MM = 72 / 25.4;
+/** Least size of anything written, pt. */
+export const SMALL = 9;
+/** Line pitch of the least size, mm. */
+export const PITCH = 4.4;
+
+// Advance of each character at 1 pt, kept by face: asking the font for every beginning of every line takes seconds.
+const advances = new WeakMap<PDFFont, Map<string, number>>();
+
+/** Width of a text in mm; the faces are set without ligatures and kerning, so it is the sum of its characters. */
+export function textWidth(text: string, font: PDFFont, size: number): number {
+  let known = advances.get(font);
+  if (!known) {
+    known = new Map();
+    advances.set(font, known);
+  }
+  let sum = 0;
+  for (const letter of text) {
+    let advance = known.get(letter);
+    if (advance === undefined) {
+      advance = font.widthOfTextAtSize(letter, 1);
+      known.set(letter, advance);
+    }
+    sum += advance;
+  }
+  return (sum * size) / MM;
+}
+
+/** The text, or its longest beginning with an ellipsis that fits. */
+export function fitText(text: string, font: PDFFont, size: number, width: number): string {
+  const plain = plainText(text);
+  if (textWidth(plain, font, size) <= width) return plain;
+  const letters = [...plain];
+  let low = 0;
+  let high = letters.length;
+  while (low < high) {
+    const half = Math.ceil((low + high) / 2);
+    if (textWidth(`${letters.slice(0, half).join("").trimEnd()}…`, font, size) <= width) low = half;
+    else high = half - 1;
+  }
+  return `${letters.slice(0, low).join("").trimEnd()}…`;
+}
+
+/** Lines no longer than the width; a word that is longer is broken. At least one line. */
+export function wrapText(text: string, font: PDFFont, size: number, width: number): string[] {
+  const lines: string[] = [];
+  let line = "";
+  for (const word of plainText(text).split(" ")) {
+    const longer = line === "" ? word : `${line} ${word}`;
+    if (textWidth(longer, font, size) <= width) {
+      line = longer;
+      continue;
+    }
+    if (line !== "") lines.push(line);
+    line = "";
+    for (const letter of word) {
+      if (line !== "" && textWidth(line + letter, font, size) > width) {
+        lines.push(line);
+        line = "";
+      }
+      line += letter;
+    }
+  }
+  lines.push(line);
+  return lines;
+}
+
+export interface TextOptions {
+  x: number;
+  /** Base line. */
+  y: number;
+  size: number;
+  font: PDFFont;
+  align?: "start" | "middle" | "end";
+  /** Degrees about the given point; only with align start. */
+  turn?: number;
+}
+
+/** One line of text. */
+export function drawText(page: PDFPage, text: string, options: TextOptions): void {
+  const plain = plainText(text);
+  if (plain === "") return;
+  const width = textWidth(plain, options.font, options.size);
+  const shift = options.align === "middle" ? width / 2 : options.align === "end" ? width : 0;
+  page.drawText(plain, {
+    x: (options.x - shift) * MM,
+    y: options.y * MM,
+    size: options.size,
+    font: options.font,
+    ...(options.turn ? { rotate: degrees(options.turn) } : {}),
+  });
+}
+
+export interface LineOptions {
+  /** mm */
+  width: number;
+  /** mm on, mm off */
+  dash?: number[];
+  closed?: boolean;
+  /** 0 black … 1 white; filled where given. */
+  fill?: number;
+  /** false: filled without a line. */
+  outline?: boolean;
+}
+
+/** A run of straight pieces. */
+export function drawRun(page: PDFPage, points: readonly Vec2[], options: LineOptions): void {
+  if (points.length < 2) return;
+  const operators: PDFOperator[] = [
+    pushGraphicsState(),
+    setLineWidth(options.width * MM),
+    setStrokingGrayscaleColor(0),
+    setDashPattern(
+      (options.dash ?? []).map((d) => d * MM),
+      0,
+    ),
+  ];
+  if (options.fill !== undefined) operators.push(setFillingGrayscaleColor(options.fill));
+  points.forEach(([x, y], i) => {
+    operators.push(i === 0 ? moveTo(x * MM, y * MM) : lineTo(x * MM, y * MM));
+  });
+  if (options.closed) operators.push(closePath());
+  operators.push(options.fill === undefined ? stroke() : options.outline === false ? fill() : fillAndStroke());
+  operators.push(popGraphicsState());
+  page.pushOperators(...operators);
+}
+
+export interface BoxArea {
+  x: number;
+  y: number;
+  width: number;
+  height: number;
+}
+
+/** A rectangle by its lower left corner. */
+export function drawBox(page: PDFPage, box: BoxArea, options: LineOptions): void {
+  const { x, y, width, height } = box;
+  const corners: Vec2[] = [
+    [x, y],
+    [x + width, y],
+    [x + width, y + height],
+    [x, y + height],
+  ];
+  drawRun(page, corners, { ...options, closed: true });
+}
