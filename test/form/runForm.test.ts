@@ -2,14 +2,14 @@ import { existsSync, readFileSync } from "node:fs";
 import fc from "fast-check";
 import { expect, test } from "vitest";
 import { readObj } from "../../src/core/form/readObj.ts";
-import { runForm } from "../../src/core/form/runForm.ts";
+import { type FormJob, runForm } from "../../src/core/form/runForm.ts";
 import type { FoundForm } from "../../src/core/records/foundForm.ts";
-import type { Job, MeshSource } from "../../src/core/records/job.ts";
+import type { MeshSource } from "../../src/core/records/job.ts";
 import { buildJob, listCodes, placeMesh } from "./formJob.ts";
 import { buildArcSail, buildCatenoid, buildGrid, listSides, mapPlaces, readFixture, renumber } from "./formMeshes.ts";
 
 const shared = new URL("../../../shared/meshes/", import.meta.url);
-const run = (source: MeshSource, own: Partial<Job> = {}) => runForm(source, buildJob(own), {});
+const run = (source: MeshSource, own: Partial<FormJob> = {}) => runForm(source, buildJob(own), {});
 const length = (v: ArrayLike<number>) => Math.hypot(v[0], v[1], v[2]);
 const edgeOf = (form: FoundForm, id: string) => {
   const e = form.edges.find((x) => x.id === id);
@@ -220,6 +220,18 @@ test("an untold hole is a stop with its place; a word of the job makes it an ope
   expect(meant.findings.filter((x) => x.level === "stop")).toEqual([]);
 });
 
+test("many holes: the first told one by one, the rest counted", () => {
+  const parts = buildGrid(40, 40, (u, v) => [20 * u, 20 * v, u * v]);
+  const faces = Array.from({ length: 3200 }, (_, f) => f).filter(
+    (f) => !(f % 2 === 0 && f % 80 > 4 && f % 80 < 74 && (f / 2) % 7 === 3 && Math.floor(f / 80) % 5 === 2),
+  );
+  const faceVertex = Uint32Array.from(faces.flatMap((f) => [...parts.faceVertex.subarray(3 * f, 3 * f + 3)]));
+  const faceStart = Uint32Array.from({ length: faces.length + 1 }, (_, f) => 3 * f);
+  const stops = run(placeMesh({ ...parts, faceStart, faceVertex })).findings.filter((f) => f.code === "mesh-hole");
+  expect(stops.length).toBe(9);
+  expect(8 + Number(stops[8].value)).toBe(3200 - faces.length);
+});
+
 test("nothing fixed and nothing named still plans, every default said", () => {
   const { output: form, findings } = run(placeMesh(readFixture("bare")));
   expect(form.edges.map((e) => e.kind)).toEqual(["clamped", "clamped", "clamped", "clamped"]);
@@ -257,7 +269,7 @@ test.each([
 
 test("names the job gives must exist; those that do are listed", () => {
   const source = placeMesh(buildArcSail(8, 5, 12));
-  const refuse = (own: Partial<Job>, code: string, words: string) =>
+  const refuse = (own: Partial<FormJob>, code: string, words: string) =>
     expect(() => run(source, own)).toThrow(expect.objectContaining({ code, message: expect.stringContaining(words) }));
   refuse({ edges: { arc_9: { force: 3 } } }, "edge-unknown", "arc_1, arc_2, arc_3, arc_4");
   refuse({ edges: { arc_1: { kind: "ridge" } } }, "edge-kind", "cable, clamped, free");

@@ -90,17 +90,42 @@ export function findTears(sound: SoundSurface, loops: readonly number[][], spoke
   });
 }
 
-/** The stop for a tear. */
-export function buildTearFinding(sound: SoundSurface, loop: readonly number[], id: string): Finding {
+/** Tears that are told one by one; the rest are counted. */
+const TOLD = 8;
+
+/** A stop for each tear, longest first; beyond the first few one for all the rest. */
+export function buildTearFindings(
+  sound: SoundSurface,
+  tears: readonly { id: string; loop: readonly number[] }[],
+): Finding[] {
   const { xyz } = sound.surface;
-  const first = loop.reduce((a, b) => Math.min(a, b));
-  const length = measureLoopLength(xyz, loop);
-  return buildFormFinding("stop", {
-    code: "mesh-hole",
-    where: [id, `vertex ${sound.toSource[first]}`],
-    value: loop.length,
-    limit: 0,
-    text: `a hole is torn in the surface: ${loop.length} sides, ${length.toFixed(3)} m round, at ${describePlace(xyz, first)} (vertex ${sound.toSource[first]} of the mesh); nothing holds its rim`,
-    remedy: `close it in the mesh; if it is an opening, fix its points or name its cable in the mesh, or give edges.${id}.kind in the job`,
+  const words = tears.map(({ id, loop }) => {
+    const first = loop.reduce((a, b) => Math.min(a, b));
+    const vertex = `vertex ${sound.toSource[first]}`;
+    const size = `${loop.length} sides, ${measureLoopLength(xyz, loop).toFixed(3)} m round, at ${describePlace(xyz, first)} (${vertex} of the mesh)`;
+    return { id, vertex, size, sides: loop.length };
   });
+  const told = words.slice(0, TOLD).map((w) =>
+    buildFormFinding("stop", {
+      code: "mesh-hole",
+      where: [w.id, w.vertex],
+      value: w.sides,
+      limit: 0,
+      text: `a hole is torn in the surface: ${w.size}; nothing holds its rim`,
+      remedy: `close it in the mesh; if it is an opening, fix its points or name its cable in the mesh, or give edges.${w.id}.kind in the job`,
+    }),
+  );
+  const rest = words.slice(TOLD);
+  if (rest.length === 0) return told;
+  return [
+    ...told,
+    buildFormFinding("stop", {
+      code: "mesh-hole",
+      where: rest.map((w) => w.id),
+      value: rest.length,
+      limit: 0,
+      text: `${rest.length} more holes are torn in the surface, the longest ${rest[0].size}`,
+      remedy: "close them in the mesh, or export it anew",
+    }),
+  ];
 }

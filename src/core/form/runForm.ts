@@ -5,7 +5,7 @@ import type { FormEdge, FoundForm } from "../records/foundForm.ts";
 import type { Job, MeshSource } from "../records/job.ts";
 import { buildAdjacency } from "../surface/adjacency.ts";
 import { measureArea } from "../surface/measures.ts";
-import { buildLoops, buildTearFinding, findTears } from "./boundaryLoops.ts";
+import { buildLoops, buildTearFindings, findTears } from "./boundaryLoops.ts";
 import { balanceCablesInPlace } from "./cableForces.ts";
 import { isCable, measureStations } from "./cablePull.ts";
 import { type BoundaryRun, cutLoop, sideKey } from "./cutLoops.ts";
@@ -20,10 +20,13 @@ import { nameEdges } from "./nameEdges.ts";
 import { findStepMetres, isExplainedByRounding, measureRoundingReach } from "./roundingReach.ts";
 import { buildSoundSurface, type SoundSurface } from "./soundSurface.ts";
 
+/** The decisions of a job that concern the form. */
+export type FormJob = Pick<Job, "prestress" | "warp" | "settle" | "edges" | "anchors">;
+
 /** Residual above which the form is not in balance (share of the mean summed force of the cloth at a vertex). */
 const BALANCED = 0.01;
 
-function chooseField(job: Job): { field: StressField; findings: Finding[] } {
+function chooseField(job: FormJob): { field: StressField; findings: Finding[] } {
   const { warp, weft } = job.prestress;
   if (!(warp > 0 && weft > 0))
     throw new PlanError(
@@ -166,7 +169,7 @@ function checkOutput(form: FoundForm): Check[] {
  * @throws PlanError mesh-flat, mesh-closed, mesh-three-way-edge, mesh-one-sided, anchor-unknown, anchor-double, edge-unknown,
  *   edge-kind, form-prestress, cancelled
  */
-export function runForm(source: MeshSource, job: Job, context: StationContext): StationResult<FoundForm> {
+export function runForm(source: MeshSource, job: FormJob, context: StationContext): StationResult<FoundForm> {
   const step = (share: number, words: string) => {
     if (context.cancelled?.()) throw new PlanError("cancelled", "the form station was stopped", "form");
     context.onProgress?.(share, words);
@@ -183,9 +186,10 @@ export function runForm(source: MeshSource, job: Job, context: StationContext): 
   const even = measureMembraneForces(surface, { warp: 1, weft: 1, direction: null });
   const named = nameEdges({ xyz: surface.xyz, pull: even.force }, skeleton.runs, skeleton.inner, job.edges, taken);
   const edges: FormEdge[] = named.edges.map((n) => n.edge);
-  const tears = named.edges
-    .filter((n) => n.tear)
-    .map((n) => buildTearFinding(sound, n.edge.vertices.slice(1), n.edge.id));
+  const tears = buildTearFindings(
+    sound,
+    named.edges.filter((n) => n.tear).map(({ edge }) => ({ id: edge.id, loop: edge.vertices.slice(1) })),
+  );
   const anchorage = nameAnchors(surface, skeleton.anchorVertices, points.held, edges, job.anchors);
   step(0.7, "balancing cloth and cables");
   const membrane = measureMembraneForces(surface, stress.field);
