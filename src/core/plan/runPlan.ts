@@ -4,9 +4,11 @@ import type { Station, StationContext, StationResult } from "../problem.ts";
 import type { Facts } from "../records/facts.ts";
 import type { Job, MeshSource } from "../records/job.ts";
 import type { StockRoll } from "../records/roll.ts";
+import { runRig } from "../rig/runRig.ts";
 import { runRolls } from "../rolls/runRolls.ts";
 import { runSeams } from "../seams/runSeams.ts";
 import { buildFormFacts, buildHead, buildPanelFacts, buildSeamFacts } from "./buildFacts.ts";
+import { buildRigInput } from "./buildRigInput.ts";
 import { firstOptions, fitPanels, measureRoom } from "./fitPanels.ts";
 
 /** How a plan is asked for. */
@@ -85,6 +87,16 @@ export function runPlan(job: Job, source: MeshSource, options: PlanOptions, cont
 
   options.onStation?.("rolls");
   const pieces = panels.map((p) => ({ id: p.id, fabric: p.fabric, batch: p.batch, cut: p.cut }));
-  facts.rolls = take(runRolls(pieces, buildStock(job), job.nest, share("rolls", "rig")));
+  const nested = take(runRolls(pieces, buildStock(job), job.nest, share("rolls", "rig")));
+  facts.rolls = nested;
+  if (options.until === "rolls") return facts;
+
+  options.onStation?.("rig");
+  const rigInput = take(buildRigInput(job, { form, layout, panels, rolls: nested.map((r) => r.id) }));
+  const rig = take(runRig(rigInput, share("rig", "papers")));
+  facts.cables = rig.cables;
+  if (rig.rig) facts.rig = rig.rig;
+  if (rig.asBuilt) facts.asBuilt = rig.asBuilt;
+  if (rig.tensioning) facts.tensioning = rig.tensioning;
   return facts;
 }

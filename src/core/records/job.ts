@@ -1,7 +1,8 @@
 // A job as read: every decision resolved, defaults in place. Types only; reading stands in job/.
 import type { Vec3 } from "../surface/surface.ts";
-import type { Fabric } from "./fabric.ts";
+import type { Fabric, ValueStatus } from "./fabric.ts";
 import type { EdgeKind } from "./foundForm.ts";
+import type { RigPlace, Turnbuckle } from "./rig.ts";
 import type { Flaw } from "./roll.ts";
 
 /** A mesh as a program wrote it, before any check: polygons of any size, names kept, its own unit and axis. */
@@ -107,6 +108,40 @@ export interface PapersDecision {
   units: "metric" | "imperial";
 }
 
+/** The rig as the job gives it: null where it leaves a thing to the rules. */
+export interface RigJob {
+  /** null: one at every isolated anchor */
+  adjusters:
+    | {
+        name: string;
+        anchor: string | null;
+        edge: string | null;
+        /** "first", "last", or the anchor at that end. */
+        end: string | null;
+        turnbuckle: Turnbuckle | null;
+        EA: number | null;
+      }[]
+    | null;
+  struts: { name: string; from: RigPlace; to: RigPlace; EA: number | null }[];
+  stays: {
+    name: string;
+    from: RigPlace;
+    to: RigPlace;
+    EA: number | null;
+    force: number | null;
+    minBreakingForce: number | null;
+  }[];
+  stages: number[];
+  /** degC */
+  temperature: number;
+  limit: number;
+  readingError: number;
+  /** Paths of what is not the job's own word. */
+  defaults: string[];
+  defaultCable: CableSpec & { status: Record<string, ValueStatus> };
+  defaultTurnbuckle: Turnbuckle;
+}
+
 /** Everything a plan needs but the mesh itself. */
 export interface Job {
   title: string;
@@ -130,5 +165,6 @@ export interface Job {
   /** null: as many rolls as needed of the fabric's width and length. */
   rolls: RollDecision[] | null;
   nest: NestDecision;
+  rig: RigJob;
   papers: PapersDecision;
 }

@@ -34,14 +34,15 @@ export interface CableType {
 /** A place of the rig: an anchor's or node's name, or coordinates in m. */
 export type RigPlace = string | Vec3;
 
+/** An adjuster as the plan settles it: at an anchor, or in the first or last link of a cable edge. */
 export interface AdjusterDecision {
   name: string;
   anchor: string | null;
   edge: string | null;
   end: "first" | "last" | null;
-  turnbuckle: Turnbuckle | null;
+  turnbuckle: Turnbuckle;
   /** kN */
-  EA: number | null;
+  EA: number;
 }
 
 export interface StrutDecision {

@@ -1,30 +1,20 @@
 // The structure the tensioning is worked out on: all cloth with its flat panels, cables, masts, stays and adjusters.
 // Leaves out what structure.ts leaves out. Nodes 0 … nV-1 are those of the cut surface, then pins, mast heads and feet.
 import { PlanError } from "../problem.ts";
-import type { Fabric } from "../records/fabric.ts";
-import type { FlatPanel } from "../records/flatPanel.ts";
-import type { FoundForm } from "../records/foundForm.ts";
-import type { CableType, RigDecision, RigPlace, Turnbuckle } from "../records/rig.ts";
-import type { StripLayout } from "../records/stripLayout.ts";
+import type { AdjusterDecision, Turnbuckle } from "../records/rig.ts";
 import { buildStiffness } from "../structure/cloth.ts";
 import { buildStructure, type Structure } from "../structure/structure.ts";
-import { measureDistance, vertexAt } from "../surface/measures.ts";
-import type { Vec3 } from "../surface/surface.ts";
 import { balanceHeads } from "./balanceHeads.ts";
+import type { RigInput } from "./rigInput.ts";
+import {
+  holdClampedEdges,
+  type NodeList,
+  type PlacedAdjuster,
+  placeAdjusters,
+  resolvePlace,
+  settleTurnbuckle,
+} from "./rigNodes.ts";
 import { traceCable } from "./traceCable.ts";
-
-/** What the rig station is given. */
-export interface RigInput {
-  form: FoundForm;
-  layout: StripLayout;
-  panels: FlatPanel[];
-  fabric: Fabric;
-  /** Cable of every cable edge, by edge id. */
-  cables: Record<string, { type: CableType; prestretched: boolean }>;
-  /** Far pin of an anchor, where the job gives it, by anchor id. */
-  supports: Record<string, Vec3>;
-  rig: RigDecision;
-}
 
 /** A cable or stay: a run of links that share one EA. */
 export interface RigCable {
@@ -38,9 +28,10 @@ export interface RigCable {
   firstLink: number;
 }
 
-/** A link with a turnbuckle. */
+/** A link with a turnbuckle: between a corner and its far pin, or the first or last link of a cable. */
 export interface RigAdjuster {
   id: string;
+  /** Anchor it stands at, or the edge at whose end it sits. */
   anchor: string;
   nodes: [number, number];
   EA: number;
@@ -66,22 +57,6 @@ export interface Rig {
   /** Panel of every cloth triangle, and its corners in that panel's cut cloth, mm. */
   panelOf: string[];
   flat: [number, number][][];
-}
-
-/** Pull of the structure on each anchor by id. */
-function readPulls(form: FoundForm): Map<string, Vec3> {
-  return new Map(form.reactions.map((r) => [r.anchor, r.force]));
-}
-
-interface NodeList {
-  xyz: number[];
-  held: number[];
-}
-
-function addNode(nodes: NodeList, at: Vec3, held: boolean): number {
-  nodes.xyz.push(...at);
-  nodes.held.push(...(held ? [1, 1, 1] : [0, 0, 0]));
-  return nodes.xyz.length / 3 - 1;
 }
 
 /** Flat cloth of all panels, relaxed (permanent strain put back), m. */
@@ -112,81 +87,72 @@ function gatherCloth(input: RigInput) {
   return { cloth, panelOf, cut };
 }
 
-/** Adjusters with their far pins; frees the anchors they stand at. */
-function placeAdjusters(input: RigInput, nodes: NodeList): Omit<RigAdjuster, "link">[] {
-  const pulls = readPulls(input.form);
-  const out: Omit<RigAdjuster, "link">[] = [];
-  for (const a of input.rig.adjusters) {
-    if (a.anchor === null) continue;
-    const anchor = input.form.anchors.find((q) => q.id === a.anchor);
-    if (!anchor)
+/** Links while they are gathered, with the nodes' places. */
+interface LinkList {
+  link: number[];
+  EA: number[];
+  strut: number[];
+  L0: number[];
+  xyz: readonly number[];
+}
+
+/** Appends a link whose slack length gives it the force where its nodes are; returns its number. */
+function addLink(list: LinkList, nodes: readonly number[], EA: number, force: number, strut = 0): number {
+  const [a, b] = [3 * nodes[0], 3 * nodes[1]];
+  const { xyz } = list;
+  const length = Math.hypot(xyz[b] - xyz[a], xyz[b + 1] - xyz[a + 1], xyz[b + 2] - xyz[a + 2]);
+  list.link.push(nodes[0], nodes[1]);
+  list.EA.push(EA);
+  list.strut.push(strut);
+  list.L0.push(length / (1 + force / EA));
+  return list.EA.length - 1;
+}
+
+/** Cables along edges; where an adjuster sits at a cable's end, the link there is the adjuster's. */
+function layCables(input: RigInput, list: LinkList): { cables: RigCable[]; atEnds: PlacedAdjuster[] } {
+  const cables: RigCable[] = [];
+  const atEnds: PlacedAdjuster[] = [];
+  for (const edge of input.form.edges) {
+    const cable = input.cables[edge.id];
+    if (!cable || edge.force === null) continue;
+    const force = edge.force;
+    const whole = traceCable(input.layout, edge);
+    const ends = input.rig.adjusters.filter((a) => a.edge === edge.id);
+    const first = ends.find((a) => a.end === "first");
+    const last = ends.find((a) => a.end === "last");
+    const nodes = whole.slice(first ? 1 : 0, last ? -1 : undefined);
+    if (nodes.length < 2)
       throw new PlanError(
-        "adjuster-anchor",
-        `adjuster ${a.name} stands at anchor "${a.anchor}", which the form has not; it has ${input.form.anchors.map((q) => q.id).join(", ") || "none"}`,
-        a.name,
+        "adjuster-end",
+        `edge ${edge.id} has only ${whole.length - 1} links, too few for adjusters at its ends`,
+        edge.id,
       );
-    const pull = pulls.get(anchor.id) ?? [0, 0, 0];
-    const target = Math.sqrt(pull[0] ** 2 + pull[1] ** 2 + pull[2] ** 2);
-    if (!(target > 0))
-      throw new PlanError(
-        "adjuster-slack",
-        `adjuster ${a.name} at anchor ${anchor.id} would carry no force: the structure does not pull there. Take the adjuster away or give the edges their forces`,
-        a.name,
-      );
-    if (!a.turnbuckle)
-      throw new PlanError(
-        "adjuster-turnbuckle",
-        `adjuster ${a.name} has no turnbuckle; name one of the catalogue or give perTurn, shortest, longest and capacity`,
-        a.name,
-      );
-    const at = vertexAt({ xyz: new Float64Array(nodes.xyz), tri: new Uint32Array(0) }, anchor.vertex);
-    // outward along the pull, 1.0 m pin to pin, unless the far pin is given
-    const pin: Vec3 = input.supports[anchor.id] ?? [
-      at[0] - pull[0] / target,
-      at[1] - pull[1] / target,
-      at[2] - pull[2] / target,
-    ];
-    nodes.held.fill(0, 3 * anchor.vertex, 3 * anchor.vertex + 3);
-    const far = findNode(nodes, pin, input.layout.surface.xyz.length / 3) ?? addNode(nodes, pin, true);
-    out.push({
-      id: a.name,
-      anchor: anchor.id,
-      nodes: [anchor.vertex, far],
-      EA: a.EA ?? 0,
-      target,
-      turnbuckle: a.turnbuckle,
+    const put = (a: AdjusterDecision, near: number, end: number) => {
+      const pins = Math.hypot(...[0, 1, 2].map((i) => list.xyz[3 * near + i] - list.xyz[3 * end + i]));
+      atEnds.push({
+        id: a.name,
+        anchor: edge.id,
+        nodes: [near, end],
+        EA: a.EA,
+        target: force,
+        turnbuckle: settleTurnbuckle(a.turnbuckle, pins),
+      });
+    };
+    if (first) put(first, whole[1], whole[0]);
+    if (last) put(last, whole[whole.length - 2], whole[whole.length - 1]);
+    const firstLink = list.EA.length;
+    for (let i = 1; i < nodes.length; i++) addLink(list, [nodes[i - 1], nodes[i]], cable.type.EA, force);
+    cables.push({
+      id: edge.id,
+      edge: edge.id,
+      nodes,
+      EA: cable.type.EA,
+      force,
+      minBreakingForce: cable.type.minBreakingForce,
+      firstLink,
     });
   }
-  return out;
-}
-
-/** Extra node within a millimetre of a place. */
-function findNode(nodes: NodeList, at: Vec3, from: number): number | null {
-  for (let v = from; v < nodes.xyz.length / 3; v++) {
-    if (measureDistance([nodes.xyz[3 * v], nodes.xyz[3 * v + 1], nodes.xyz[3 * v + 2]], at) < 1e-3) return v;
-  }
-  return null;
-}
-
-/** Node of a place named by an anchor (its far pin where an adjuster stands there) or by coordinates. */
-function resolvePlace(
-  input: RigInput,
-  nodes: NodeList,
-  adjusters: Omit<RigAdjuster, "link">[],
-  place: RigPlace,
-  who: string,
-): number {
-  if (typeof place !== "string")
-    return findNode(nodes, place, input.layout.surface.xyz.length / 3) ?? addNode(nodes, place, true);
-  const adjuster = adjusters.find((a) => a.anchor === place || a.id === place);
-  if (adjuster) return adjuster.nodes[1];
-  const anchor = input.form.anchors.find((a) => a.id === place);
-  if (anchor) return anchor.vertex;
-  throw new PlanError(
-    "rig-place",
-    `${who} ends at "${place}", which is no anchor or adjuster of the form; name one of ${input.form.anchors.map((a) => a.id).join(", ")} or give coordinates in m`,
-    who,
-  );
+  return { cables, atEnds };
 }
 
 /**
@@ -210,38 +176,11 @@ export function buildRig(input: RigInput): Rig {
     ...s,
     nodes: [resolvePlace(input, nodes, placed, s.from, s.name), resolvePlace(input, nodes, placed, s.to, s.name)],
   }));
-  const link: number[] = [];
-  const EA: number[] = [];
-  const strut: number[] = [];
-  const L0: number[] = [];
-  const place = (v: number): Vec3 => [nodes.xyz[3 * v], nodes.xyz[3 * v + 1], nodes.xyz[3 * v + 2]];
-  const add = (a: number, b: number, ea: number, force: number, compressive: boolean) => {
-    link.push(a, b);
-    EA.push(ea);
-    strut.push(compressive ? 1 : 0);
-    L0.push(measureDistance(place(a), place(b)) / (1 + force / ea));
-    return EA.length - 1;
-  };
-  const cables: RigCable[] = [];
-  for (const edge of form.edges) {
-    const cable = input.cables[edge.id];
-    if (!cable || edge.force === null) continue;
-    const run = traceCable(layout, edge);
-    const firstLink = EA.length;
-    for (let i = 1; i < run.length; i++) add(run[i - 1], run[i], cable.type.EA, edge.force, false);
-    cables.push({
-      id: edge.id,
-      edge: edge.id,
-      nodes: run,
-      EA: cable.type.EA,
-      force: edge.force,
-      minBreakingForce: cable.type.minBreakingForce,
-      firstLink,
-    });
-  }
+  const list: LinkList = { link: [], EA: [], strut: [], L0: [], xyz: nodes.xyz };
+  const { cables, atEnds } = layCables(input, list);
   const heads = balanceHeads(nodes.xyz, placed, struts, stays);
   stays.forEach((s, i) => {
-    const firstLink = add(s.nodes[0], s.nodes[1], s.EA, heads.stay[i], false);
+    const firstLink = addLink(list, s.nodes, s.EA, heads.stay[i]);
     cables.push({
       id: s.name,
       edge: null,
@@ -252,21 +191,13 @@ export function buildRig(input: RigInput): Rig {
       firstLink,
     });
   });
-  const built = struts.map((s, i) => ({ ...s, link: add(s.nodes[0], s.nodes[1], s.EA, -heads.strut[i], true) }));
-  const adjusters = placed.map((a) => ({ ...a, link: add(a.nodes[0], a.nodes[1], a.EA, a.target, false) }));
+  const built = struts.map((s, i) => ({ ...s, link: addLink(list, s.nodes, s.EA, -heads.strut[i], 1) }));
+  const adjusters = [...placed, ...atEnds].map((a) => ({ ...a, link: addLink(list, a.nodes, a.EA, a.target) }));
   const { cloth, panelOf, cut } = gatherCloth(input);
   const structure = buildStructure({ xyz: new Float64Array(nodes.xyz), held: new Uint8Array(nodes.held) }, cloth, {
-    link: new Uint32Array(link),
-    EA: new Float64Array(EA),
-    strut: new Uint8Array(strut),
+    link: new Uint32Array(list.link),
+    EA: new Float64Array(list.EA),
+    strut: new Uint8Array(list.strut),
   });
-  return { structure, cables, struts: built, adjusters, L0: new Float64Array(L0), panelOf, flat: cut };
-}
-
-/** Seam ends inserted in a clamped edge are held as its own vertices are. */
-function holdClampedEdges(input: RigInput, nodes: NodeList): void {
-  for (const strip of input.layout.strips) {
-    for (const side of strip.sides)
-      if (side.kind === "clamped") for (const v of side.vertices) nodes.held.fill(1, 3 * v, 3 * v + 3);
-  }
+  return { structure, cables, struts: built, adjusters, L0: new Float64Array(list.L0), panelOf, flat: cut };
 }

@@ -3,7 +3,8 @@ import type { Check, Finding } from "../problem.ts";
 import type { FactsAsBuilt, FactsMove, FactsStage } from "../records/rig.ts";
 import { measureLink } from "../structure/elements.ts";
 import { measureDistance } from "../surface/measures.ts";
-import type { Rig, RigInput } from "./buildRig.ts";
+import type { Rig } from "./buildRig.ts";
+import type { RigInput } from "./rigInput.ts";
 import { type RigState, readAdjusters } from "./solveLengths.ts";
 
 /** Share of the target an adjuster may miss before and after moves are rounded. */

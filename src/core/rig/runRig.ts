@@ -4,10 +4,11 @@ import type { FactsAsBuilt, FactsCable, FactsRig, FactsStage, FactsTensioning } 
 import { measureLink } from "../structure/elements.ts";
 import { createEquilibriumSolver, type EquilibriumSolver } from "../structure/equilibrium.ts";
 import { measureAsBuilt } from "./asBuilt.ts";
-import { buildRig, type Rig, type RigInput } from "./buildRig.ts";
+import { buildRig, type Rig } from "./buildRig.ts";
 import { buildCableLine } from "./cableSchedule.ts";
 import { playStage, roundLengths } from "./planMoves.ts";
 import { findTargetMisses, reviewRig } from "./reviewRig.ts";
+import type { RigInput } from "./rigInput.ts";
 import { checkLengths, type RigState, solveLengths, solveState } from "./solveLengths.ts";
 import { buildTemperatureTable } from "./temperatureTable.ts";
 

@@ -1,0 +1,20 @@
+// What the rig station is given. Types only.
+import type { Fabric } from "../records/fabric.ts";
+import type { FlatPanel } from "../records/flatPanel.ts";
+import type { FoundForm } from "../records/foundForm.ts";
+import type { CableType, RigDecision } from "../records/rig.ts";
+import type { StripLayout } from "../records/stripLayout.ts";
+import type { Vec3 } from "../surface/surface.ts";
+
+/** What the rig station is given. */
+export interface RigInput {
+  form: FoundForm;
+  layout: StripLayout;
+  panels: FlatPanel[];
+  fabric: Fabric;
+  /** Cable of every cable edge, by edge id. */
+  cables: Record<string, { type: CableType; prestretched: boolean }>;
+  /** Far pin of an anchor, where the job gives it, by anchor id. */
+  supports: Record<string, Vec3>;
+  rig: RigDecision;
+}
