@@ -13,6 +13,9 @@ import { findTrianglesAt, isVertexPoint } from "./surfacePoint.ts";
 /** A shorter path counts only when shorter by this share. */
 const LEAST_GAIN = 1e-10;
 
+/** The search ends with the best found when it has followed so many beams (about 100 MB). */
+const MOST_BEAMS = 1_000_000;
+
 /** Part of side `side` (seen from the triangle behind it) lit from one source. */
 interface Beam {
   /** Crossed half-edge. */
@@ -44,7 +47,8 @@ interface Search {
   goalTriangles: ReadonlySet<number>;
   limit: number;
   beams: Beam[];
-  length: Map<number, number>;
+  /** Shortest length found to each vertex. @shape nV */
+  length: Float64Array;
   arrival: Map<number, Arrival>;
   /** Best way to the goal. */
   found: Arrival | null;
@@ -90,13 +94,11 @@ function pop(s: Search): number {
   return top;
 }
 
-const lengthTo = (s: Search, v: number): number => s.length.get(v) ?? Number.POSITIVE_INFINITY;
-
 function reachVertex(s: Search, v: number, length: number, beam: number, source: number): void {
-  if (length >= lengthTo(s, v)) return;
+  if (length >= s.length[v]) return;
   const bound = length + measureDistance(vertexAt(s.field.surface, v), s.goal);
   if (bound >= s.limit) return;
-  s.length.set(v, length);
+  s.length[v] = length;
   s.arrival.set(v, { beam, source });
   if (s.bends(v)) push(s, length, -1 - v);
 }
@@ -107,6 +109,18 @@ function reachGoal(s: Search, length: number, beam: number, source: number): voi
   s.found = { beam, source };
 }
 
+/** True where all that a beam lights is nearer by way of an end of its side. */
+function isOutshone(s: Search, beam: Beam): boolean {
+  const { surface, adjacency, unfolding } = s.field;
+  const g = adjacency.twin[beam.side];
+  const slack = LEAST_GAIN * s.limit * 1e-2;
+  const toFrom = Math.sqrt((beam.from - beam.x) ** 2 + beam.y ** 2);
+  const toTo = Math.sqrt((beam.to - beam.x) ** 2 + beam.y ** 2);
+  if (s.length[surface.tri[g]] + beam.to < beam.before + toTo - slack) return true;
+  const back = unfolding.length[g] - beam.from;
+  return s.length[surface.tri[nextHalfedge(g)]] + back < beam.before + toFrom - slack;
+}
+
 /** Enters a beam unless it is too narrow, cannot beat the limit, or all it lights is nearer by way of an end of its side. */
 function offerBeam(s: Search, beam: Beam): void {
   const { surface, adjacency, unfolding } = s.field;
@@ -114,13 +128,9 @@ function offerBeam(s: Search, beam: Beam): void {
   if (g < 0) return;
   const l = unfolding.length[g];
   if (beam.to - beam.from <= 1e-12 * l || !(beam.y < 0)) return;
+  if (isOutshone(s, beam)) return;
   const a = surface.tri[g];
   const b = surface.tri[nextHalfedge(g)];
-  const slack = LEAST_GAIN * s.limit * 1e-2;
-  const toFrom = Math.sqrt((beam.from - beam.x) ** 2 + beam.y ** 2);
-  const toTo = Math.sqrt((beam.to - beam.x) ** 2 + beam.y ** 2);
-  if (lengthTo(s, a) + beam.to < beam.before + toTo - slack) return;
-  if (lengthTo(s, b) + l - beam.from < beam.before + toFrom - slack) return;
   // The straight way through the side to a goal laid into the beam's plane is the shortest there can be.
   const A = vertexAt(surface, a);
   const B = vertexAt(surface, b);
@@ -262,7 +272,7 @@ function joinLegs(s: Search, from: SurfacePoint, last: Arrival): Sleeve {
 }
 
 /**
- * A sleeve that holds a path shorter than `length`, the shortest of all such; null where there is none.
+ * A sleeve that holds a path shorter than `length`, the shortest of all such (of those found within MOST_BEAMS); null where there is none.
  * Both places in normal form, not in one triangle; `bends` tells the vertices at which a shortest path may bend.
  * @units m
  */
@@ -281,20 +291,20 @@ export function findShorterSleeve(
     goalTriangles: new Set(findTrianglesAt(surface, adjacency, to).triangles),
     limit: length * (1 - LEAST_GAIN),
     beams: [],
-    length: new Map(),
+    length: new Float64Array(adjacency.nV).fill(Number.POSITIVE_INFINITY),
     arrival: new Map(),
     found: null,
     key: [],
     item: [],
     bends,
   };
-  if (isVertexPoint(from)) s.length.set(from.a, 0);
+  if (isVertexPoint(from)) s.length[from.a] = 0;
   for (const t of findTrianglesAt(surface, adjacency, from).triangles) lightTriangle(s, t, from, 0, -1);
-  while (s.key.length > 0 && s.key[0] < s.limit) {
+  while (s.key.length > 0 && s.key[0] < s.limit && s.beams.length < MOST_BEAMS) {
     const before = s.key[0];
     const item = pop(s);
     if (item >= 0) followBeam(s, item);
-    else if (before <= lengthTo(s, -1 - item)) {
+    else if (before <= s.length[-1 - item]) {
       const v = -1 - item;
       const p: SurfacePoint = { a: v, b: v, t: 0 };
       for (const t of findTrianglesAt(surface, adjacency, p).triangles) lightTriangle(s, t, p, before, v);

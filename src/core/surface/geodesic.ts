@@ -6,14 +6,18 @@ import type { Adjacency } from "./adjacency.ts";
 import { findShorterSleeve } from "./exactSearch.ts";
 import { buildHoleCuts, type HoleCuts } from "./holeCuts.ts";
 import { measureDistance, pointAt, vertexAt } from "./measures.ts";
-import { measureAngle, type SleeveField, shortenSleeve, touchesBoundary } from "./sleeve.ts";
+import { createSleeveScratch, measureAngle, type SleeveField, shortenSleeve, touchesBoundary } from "./sleeve.ts";
 import { createSearchScratch, findSleeve, type SearchField } from "./sleeveSearch.ts";
 import type { Surface, SurfacePoint } from "./surface.ts";
 import { checkPoint, findTrianglesAt, isSamePoint, namePoint } from "./surfacePoint.ts";
 import { buildUnfolding } from "./unfolding.ts";
 
-/** Another way round a hole is tried when it may be shorter than this times the first way found. */
-const DETOUR = 1.05;
+/**
+ * The search for another way round a hole ends at this times the length in hand and so many mean sides more: its lengths go through
+ * the middles of sides and may be too long by that.
+ */
+const DETOUR = 1.01;
+const DETOUR_SIDES = 2;
 
 /** Two ways are equally long within this share. */
 const EQUAL_SHARE = 1e-9;
@@ -47,6 +51,8 @@ export interface GeodesicOptions {
 /** Lengths, holes and scratch for many geodesics on one surface. */
 export interface GeodesicSolver extends SleeveField, SearchField {
   cuts: HoleCuts;
+  /** m */
+  meanSide: number;
 }
 
 /**
@@ -68,10 +74,12 @@ export function createGeodesicSolver(surface: Surface, adjacency: Adjacency): Ge
     adjacency,
     unfolding,
     cuts,
+    meanSide: unfolding.length.reduce((sum, l) => sum + l, 0) / (3 * nT),
     crossing: cuts.crossing,
     scratch: createSearchScratch(nT),
     angle: new Float64Array(nV).fill(-1),
     onBoundary,
+    sleeveScratch: createSleeveScratch(),
   };
 }
 
@@ -126,7 +134,13 @@ function traceOrdered(solver: GeodesicSolver, from: SurfacePoint, to: SurfacePoi
   for (let hole = 0; shortest && hole < cuts.holePiece.length; hole++) {
     if (cuts.holePiece[hole] !== cuts.piece[from.a]) continue;
     const parity = 1 - ((sleeve.marks >> hole) & 1);
-    const other = findSleeve(solver, { from, to, hole, parity, limit: DETOUR * best.length });
+    const other = findSleeve(solver, {
+      from,
+      to,
+      hole,
+      parity,
+      limit: DETOUR * best.length + DETOUR_SIDES * solver.meanSide,
+    });
     if (!other) continue;
     const path = shortenSleeve(solver, from, to, other);
     if (Math.abs(path.length - best.length) <= EQUAL_SHARE * best.length) unique = false;

@@ -25,6 +25,7 @@ export interface SleeveField {
   angle: Float64Array<ArrayBuffer>;
   /** 1 on the boundary. @shape nV */
   onBoundary: Uint8Array<ArrayBuffer>;
+  sleeveScratch: SleeveScratch;
 }
 
 /** A line in the plane of an unfolded sleeve. Node 0 is the start, the last node the end, between them the corners it may bend at. */
@@ -39,14 +40,43 @@ interface SleeveLine {
   length: number;
 }
 
-/** Ends of the crossed sides in the plane. */
-interface SleevePlane {
-  lx: number[];
-  ly: number[];
-  rx: number[];
-  ry: number[];
+/** Scratch for laying sleeves down, owned by the solver; valid until the next sleeve. */
+export interface SleeveScratch {
+  /** Ends of the crossed sides in the plane. */
+  lx: Float64Array<ArrayBuffer>;
+  ly: Float64Array<ArrayBuffer>;
+  rx: Float64Array<ArrayBuffer>;
+  ry: Float64Array<ArrayBuffer>;
   start: [number, number];
   end: [number, number];
+  /** Nodes of the funnel: start, ends of sides where they first occur, end. */
+  x: Float64Array<ArrayBuffer>;
+  y: Float64Array<ArrayBuffer>;
+  vertex: Int32Array<ArrayBuffer>;
+  at: Int32Array<ArrayBuffer>;
+  hand: Int8Array<ArrayBuffer>;
+  parent: Int32Array<ArrayBuffer>;
+  row: Int32Array<ArrayBuffer>;
+}
+
+/** Scratch for sleeves of up to `sides` crossed sides; it is made larger when needed. */
+export function createSleeveScratch(sides = 256): SleeveScratch {
+  const nodes = 2 * sides + 4;
+  return {
+    lx: new Float64Array(sides),
+    ly: new Float64Array(sides),
+    rx: new Float64Array(sides),
+    ry: new Float64Array(sides),
+    start: [0, 0],
+    end: [0, 0],
+    x: new Float64Array(nodes),
+    y: new Float64Array(nodes),
+    vertex: new Int32Array(nodes),
+    at: new Int32Array(nodes),
+    hand: new Int8Array(nodes),
+    parent: new Int32Array(nodes),
+    row: new Int32Array(2 * sides + 5),
+  };
 }
 
 function holdsPoint(surface: Surface, t: number, p: SurfacePoint): boolean {
@@ -77,93 +107,103 @@ function trimSleeve(
   return { first: start > 0 ? behind(start - 1) : first, sides: kept.slice(start, end), marks: 0 };
 }
 
-/** Lays the sleeve down in the plane, its first triangle's first side along x. */
-function layDown(field: SleeveField, from: SurfacePoint, to: SurfacePoint, sleeve: Sleeve): SleevePlane {
-  const { surface, adjacency, unfolding } = field;
-  const { tri } = surface;
+/** Plane position of a place in a triangle whose corners (vertex, x, y) are given. */
+function placeIn(corners: readonly (readonly [number, number, number])[], p: SurfacePoint): [number, number] {
+  const a = corners.find((c) => c[0] === p.a) ?? corners[0];
+  const b = corners.find((c) => c[0] === p.b) ?? corners[0];
+  return [a[1] + p.t * (b[1] - a[1]), a[2] + p.t * (b[2] - a[2])];
+}
+
+/** Lays the sleeve down in the plane, its first triangle's first side along x; writes the field's scratch. */
+function layDownInPlace(field: SleeveField, from: SurfacePoint, to: SurfacePoint, sleeve: Sleeve): void {
+  const { tri } = field.surface;
+  const { twin } = field.adjacency;
+  const { length, apexX, apexY } = field.unfolding;
   const { first, sides } = sleeve;
   const n = sides.length;
-  const plane: SleevePlane = { lx: [], ly: [], rx: [], ry: [], start: [0, 0], end: [0, 0] };
+  if (n > field.sleeveScratch.lx.length) field.sleeveScratch = createSleeveScratch(2 * n);
+  const scratch = field.sleeveScratch;
+  const { lx, ly, rx, ry } = scratch;
   const h0 = 3 * first;
   const corners: [number, number, number][] = [
     [tri[h0], 0, 0],
-    [tri[h0 + 1], unfolding.length[h0], 0],
-    [tri[h0 + 2], unfolding.apexX[h0], unfolding.apexY[h0]],
+    [tri[h0 + 1], length[h0], 0],
+    [tri[h0 + 2], apexX[h0], apexY[h0]],
   ];
-  const place = (p: SurfacePoint): [number, number] => {
-    const a = corners.find((c) => c[0] === p.a) ?? corners[0];
-    const b = corners.find((c) => c[0] === p.b) ?? corners[0];
-    return [a[1] + p.t * (b[1] - a[1]), a[2] + p.t * (b[2] - a[2])];
-  };
-  plane.start = place(from);
-  if (n > 0) {
-    const right = corners[sides[0] - h0];
-    const left = corners[nextHalfedge(sides[0]) - h0];
-    plane.lx.push(left[1]);
-    plane.ly.push(left[2]);
-    plane.rx.push(right[1]);
-    plane.ry.push(right[2]);
+  scratch.start = placeIn(corners, from);
+  if (n === 0) {
+    scratch.end = placeIn(corners, to);
+    return;
   }
-  for (let i = 0; i < n; i++) {
-    const g = adjacency.twin[sides[i]];
-    const ux = (plane.rx[i] - plane.lx[i]) / unfolding.length[g];
-    const uy = (plane.ry[i] - plane.ly[i]) / unfolding.length[g];
-    const cx = plane.lx[i] + unfolding.apexX[g] * ux - unfolding.apexY[g] * uy;
-    const cy = plane.ly[i] + unfolding.apexX[g] * uy + unfolding.apexY[g] * ux;
-    if (i + 1 < n) {
-      const left = sides[i + 1] === nextHalfedge(g);
-      plane.lx.push(left ? cx : plane.lx[i]);
-      plane.ly.push(left ? cy : plane.ly[i]);
-      plane.rx.push(left ? plane.rx[i] : cx);
-      plane.ry.push(left ? plane.ry[i] : cy);
-    } else {
-      corners[0] = [tri[g], plane.lx[i], plane.ly[i]];
-      corners[1] = [tri[nextHalfedge(g)], plane.rx[i], plane.ry[i]];
-      corners[2] = [tri[previousHalfedge(g)], cx, cy];
+  const right = corners[sides[0] - h0];
+  const left = corners[nextHalfedge(sides[0]) - h0];
+  lx[0] = left[1];
+  ly[0] = left[2];
+  rx[0] = right[1];
+  ry[0] = right[2];
+  for (let i = 0; ; i++) {
+    const g = twin[sides[i]];
+    const ux = (rx[i] - lx[i]) / length[g];
+    const uy = (ry[i] - ly[i]) / length[g];
+    const cx = lx[i] + apexX[g] * ux - apexY[g] * uy;
+    const cy = ly[i] + apexX[g] * uy + apexY[g] * ux;
+    if (i + 1 === n) {
+      scratch.end = placeIn(
+        [
+          [tri[g], lx[i], ly[i]],
+          [tri[nextHalfedge(g)], rx[i], ry[i]],
+          [tri[previousHalfedge(g)], cx, cy],
+        ],
+        to,
+      );
+      return;
     }
+    const leftNew = sides[i + 1] === nextHalfedge(g);
+    lx[i + 1] = leftNew ? cx : lx[i];
+    ly[i + 1] = leftNew ? cy : ly[i];
+    rx[i + 1] = leftNew ? rx[i] : cx;
+    ry[i + 1] = leftNew ? ry[i] : cy;
   }
-  plane.end = place(to);
-  return plane;
+}
+
+/** Twice the signed area of nodes i, j, k. */
+function crossNodes(x: Float64Array, y: Float64Array, i: number, j: number, k: number): number {
+  return (x[j] - x[i]) * (y[k] - y[i]) - (y[j] - y[i]) * (x[k] - x[i]);
 }
 
 /** Shortest line from start to end inside the laid-down sleeve, by a funnel kept as a double-ended row of nodes. */
-function runFunnel(field: SleeveField, sleeve: Sleeve, plane: SleevePlane): SleeveLine {
+function runFunnel(field: SleeveField, sleeve: Sleeve): SleeveLine {
   const { tri } = field.surface;
   const { sides } = sleeve;
-  const x = [plane.start[0]];
-  const y = [plane.start[1]];
-  const vertex = [-1];
-  const at = [0];
-  const hand = [0];
-  const parent = [-1];
+  const { lx, ly, rx, ry, start, end, x, y, vertex, at, hand, parent, row } = field.sleeveScratch;
   const n = sides.length;
-  const row = new Int32Array(2 * n + 5);
+  let count = 0;
   let apex = n + 2;
   let leftEnd = apex;
   let rightEnd = apex;
-  row[apex] = 0;
-  const cross = (i: number, j: number, k: number) => (x[j] - x[i]) * (y[k] - y[i]) - (y[j] - y[i]) * (x[k] - x[i]);
   const addNode = (px: number, py: number, v: number, i: number, side: number): number => {
-    x.push(px);
-    y.push(py);
-    vertex.push(v);
-    at.push(i);
-    hand.push(side);
-    return x.length - 1;
+    x[count] = px;
+    y[count] = py;
+    vertex[count] = v;
+    at[count] = i;
+    hand[count] = side;
+    return count++;
   };
+  row[apex] = addNode(start[0], start[1], -1, 0, 0);
+  parent[0] = -1;
   const addRight = (k: number) => {
-    while (rightEnd > apex && cross(row[rightEnd - 1], row[rightEnd], k) >= 0) rightEnd--;
+    while (rightEnd > apex && crossNodes(x, y, row[rightEnd - 1], row[rightEnd], k) >= 0) rightEnd--;
     if (rightEnd === apex) {
-      while (apex > leftEnd && cross(row[apex], row[apex - 1], k) >= 0) apex--;
+      while (apex > leftEnd && crossNodes(x, y, row[apex], row[apex - 1], k) >= 0) apex--;
       rightEnd = apex;
     }
     parent[k] = row[rightEnd];
     row[++rightEnd] = k;
   };
   const addLeft = (k: number) => {
-    while (leftEnd < apex && cross(row[leftEnd + 1], row[leftEnd], k) <= 0) leftEnd++;
+    while (leftEnd < apex && crossNodes(x, y, row[leftEnd + 1], row[leftEnd], k) <= 0) leftEnd++;
     if (leftEnd === apex) {
-      while (apex < rightEnd && cross(row[apex], row[apex + 1], k) <= 0) apex++;
+      while (apex < rightEnd && crossNodes(x, y, row[apex], row[apex + 1], k) <= 0) apex++;
       leftEnd = apex;
     }
     parent[k] = row[leftEnd];
@@ -174,15 +214,15 @@ function runFunnel(field: SleeveField, sleeve: Sleeve, plane: SleevePlane): Slee
   for (let i = 0; i < n; i++) {
     const r = tri[sides[i]];
     const l = tri[nextHalfedge(sides[i])];
-    if (l !== left) addLeft(addNode(plane.lx[i], plane.ly[i], l, i, 1));
-    if (r !== right) addRight(addNode(plane.rx[i], plane.ry[i], r, i, -1));
+    if (l !== left) addLeft(addNode(lx[i], ly[i], l, i, 1));
+    if (r !== right) addRight(addNode(rx[i], ry[i], r, i, -1));
     left = l;
     right = r;
   }
-  const end = addNode(plane.end[0], plane.end[1], -1, n, 0);
-  addRight(end);
+  const last = addNode(end[0], end[1], -1, n, 0);
+  addRight(last);
   const line: SleeveLine = { x: [], y: [], vertex: [], from: [], hand: [], length: 0 };
-  for (let k = end; k >= 0; k = parent[k]) {
+  for (let k = last; k >= 0; k = parent[k]) {
     line.x.push(x[k]);
     line.y.push(y[k]);
     line.vertex.push(vertex[k]);
@@ -232,30 +272,58 @@ function turnRound(field: SleeveField, sleeve: Sleeve, i: number, j: number, lef
   return out;
 }
 
-/** One round: the sleeve with every bend that can be shortened flipped (bends that share sides wait), or null where none can. */
-function flipBends(field: SleeveField, sleeve: Sleeve, line: SleeveLine): number[] | null {
-  const { tri } = field.surface;
-  const { sides } = sleeve;
-  const out: number[] = [];
-  let done = 0;
-  let flipped = false;
+/** A corner the sleeve is to pass on its other side, and the first side that ends in it. */
+interface Flip {
+  vertex: number;
+  from: number;
+  left: boolean;
+}
+
+/**
+ * Corners to flip: the bends that would be shorter on their far side, and where eager also the inner corners of the same hand that
+ * stand in the way of the straight line from the node before the bend to the node after it (they would be the next bends).
+ */
+function listFlips(field: SleeveField, line: SleeveLine, eager: boolean): Flip[] {
+  const { x, y, vertex, at, hand } = field.sleeveScratch;
+  const flips: Flip[] = [];
+  let node = 1;
   for (let k = 1; k + 1 < line.x.length; k++) {
     const v = line.vertex[k];
     if (field.onBoundary[v]) continue;
     // The corner's far side holds angle(v) - π - turn; below π the line gets shorter there.
     if (measureTurn(line, k) <= measureAngle(field, v) - 2 * Math.PI + LEAST_TURN) continue;
     const left = line.hand[k] > 0;
-    const ends = (i: number) => (left ? tri[nextHalfedge(sides[i])] : tri[sides[i]]) === v;
-    const i = line.from[k];
-    let j = i;
-    while (j + 1 < sides.length && ends(j + 1)) j++;
-    if (i < done) continue;
-    for (; done < i; done++) out.push(sides[done]);
-    for (const h of turnRound(field, sleeve, i, j, left)) out.push(h);
-    done = j + 1;
-    flipped = true;
+    if (!eager) {
+      flips.push({ vertex: v, from: line.from[k], left });
+      continue;
+    }
+    const dx = line.x[k + 1] - line.x[k - 1];
+    const dy = line.y[k + 1] - line.y[k - 1];
+    while (at[node] < line.from[k - 1]) node++;
+    for (; vertex[node] >= 0 && at[node] < line.from[k + 1]; node++) {
+      if (hand[node] !== line.hand[k] || field.onBoundary[vertex[node]]) continue;
+      const beside = hand[node] * (dx * (y[node] - line.y[k - 1]) - dy * (x[node] - line.x[k - 1]));
+      if (beside < 0 && vertex[node] !== line.vertex[k - 1]) flips.push({ vertex: vertex[node], from: at[node], left });
+    }
   }
-  if (!flipped) return null;
+  return flips;
+}
+
+/** The crossed sides with these corners passed on their other side; a flip that shares sides with one before it waits. */
+function flipCorners(field: SleeveField, sleeve: Sleeve, flips: readonly Flip[]): number[] {
+  const { tri } = field.surface;
+  const { sides } = sleeve;
+  const out: number[] = [];
+  let done = 0;
+  for (const { vertex, from, left } of flips) {
+    if (from < done) continue;
+    const ends = (i: number) => (left ? tri[nextHalfedge(sides[i])] : tri[sides[i]]) === vertex;
+    let j = from;
+    while (j + 1 < sides.length && ends(j + 1)) j++;
+    for (; done < from; done++) out.push(sides[done]);
+    for (const h of turnRound(field, sleeve, from, j, left)) out.push(h);
+    done = j + 1;
+  }
   for (; done < sides.length; done++) out.push(sides[done]);
   return out;
 }
@@ -265,10 +333,10 @@ function readPlaces(
   field: SleeveField,
   ends: [SurfacePoint, SurfacePoint],
   sleeve: Sleeve,
-  plane: SleevePlane,
   line: SleeveLine,
 ): SurfacePoint[] {
   const { tri } = field.surface;
+  const { lx, ly, rx, ry } = field.sleeveScratch;
   const places: SurfacePoint[] = [ends[0]];
   const add = (p: SurfacePoint) => {
     const q = places[places.length - 1];
@@ -285,8 +353,8 @@ function readPlaces(
     if (l === line.vertex[k] || r === line.vertex[k]) continue;
     const ux = line.x[k + 1] - line.x[k];
     const uy = line.y[k + 1] - line.y[k];
-    const toLeft = ux * (plane.ly[i] - line.y[k]) - uy * (plane.lx[i] - line.x[k]);
-    const toRight = ux * (plane.ry[i] - line.y[k]) - uy * (plane.rx[i] - line.x[k]);
+    const toLeft = ux * (ly[i] - line.y[k]) - uy * (lx[i] - line.x[k]);
+    const toRight = ux * (ry[i] - line.y[k]) - uy * (rx[i] - line.x[k]);
     // Along the side itself: its ends are met at the sides before and after.
     if (toLeft <= 0 && toRight >= 0) continue;
     const t = Math.min(1, Math.max(0, toRight / (toRight - toLeft)));
@@ -309,14 +377,20 @@ export function shortenSleeve(
   to: SurfacePoint,
   start: Sleeve,
 ): { points: SurfacePoint[]; length: number } {
-  let sleeve = trimSleeve(field, from, to, start.first, start.sides);
+  const lay = (first: number, sides: readonly number[]) => {
+    const trimmed = trimSleeve(field, from, to, first, sides);
+    layDownInPlace(field, from, to, trimmed);
+    return { sleeve: trimmed, line: runFunnel(field, trimmed) };
+  };
+  let now = lay(start.first, start.sides);
   const limit = 100 + 10 * start.sides.length;
   for (let round = 0; round < limit; round++) {
-    const plane = layDown(field, from, to, sleeve);
-    const line = runFunnel(field, sleeve, plane);
-    const flipped = flipBends(field, sleeve, line);
-    if (!flipped) return { points: readPlaces(field, [from, to], sleeve, plane, line), length: line.length };
-    sleeve = trimSleeve(field, from, to, sleeve.first, flipped);
+    const { sleeve, line } = now;
+    const sure = listFlips(field, line, false);
+    if (sure.length === 0) return { points: readPlaces(field, [from, to], sleeve, line), length: line.length };
+    now = lay(sleeve.first, flipCorners(field, sleeve, listFlips(field, line, true)));
+    // Only the flip of bends is sure to shorten; the eager one has to show it.
+    if (!(now.line.length < line.length)) now = lay(sleeve.first, flipCorners(field, sleeve, sure));
   }
   throw new PlanError(
     "geodesic-open",

@@ -12,6 +12,12 @@ import type { Unfolding } from "./unfolding.ts";
 /** Numbers kept for a state: portal left, right; source image; left and right bound of its view; length before the image; length to the side's middle. */
 const STRIDE = 12;
 
+/**
+ * Weight of the straight distance ahead where any way will do: a somewhat eager search sees fewer sides. Where a certain side of a
+ * hole is asked for the weight is 1, since nothing corrects the way afterwards.
+ */
+const EAGER = 1.06;
+
 /** Reusable scratch of the search, owned by the geodesic solver. */
 export interface SearchScratch {
   /** Best length per side and mark, valid where stamp equals run. @shape 2*3*nT */
@@ -179,7 +185,7 @@ function guideLength(surface: Surface, h: number, to: Vec3): number {
 }
 
 /** Enters a filled state (the last of the pool) in the heap, unless its side was reached on a shorter way. */
-function offerStateInPlace(field: SearchField, goal: Vec3, limit: number): void {
+function offerStateInPlace(field: SearchField, aim: SearchAim, goal: Vec3): void {
   const s = field.scratch;
   const n = s.count;
   const o = STRIDE * n;
@@ -188,12 +194,12 @@ function offerStateInPlace(field: SearchField, goal: Vec3, limit: number): void 
   const other = field.adjacency.twin[h];
   const slot = 2 * Math.min(h, other) + s.mark[n];
   if (s.stamp[slot] === s.run && s.best[slot] <= g) return;
-  const f = g + guideLength(field.surface, h, goal);
-  if (f > limit) return;
+  const guide = guideLength(field.surface, h, goal);
+  if (g + guide > aim.limit) return;
   s.stamp[slot] = s.run;
   s.best[slot] = g;
   s.data[o + 11] = g;
-  pushInPlace(s, n, f);
+  pushInPlace(s, n, g + (aim.hole < 0 ? EAGER : 1) * guide);
   s.count++;
 }
 
@@ -234,12 +240,12 @@ function seedTriangleInPlace(field: SearchField, aim: SearchAim, t: number, mark
     s.side[n] = h;
     s.parent[n] = -1;
     s.mark[n] = aim.hole < 0 || !crossing ? 0 : mark ^ ((crossing[h] >> aim.hole) & 1);
-    offerStateInPlace(field, goal, aim.limit);
+    offerStateInPlace(field, aim, goal);
   }
 }
 
-/** Lays the triangle behind a state's portal down and offers its two other sides; returns the plane position of the new corner. */
-function expandStateInPlace(field: SearchField, aim: SearchAim, n: number, goal: Vec3): [number, number] {
+/** Lays the triangle behind a state's portal down and offers its two other sides. */
+function expandStateInPlace(field: SearchField, aim: SearchAim, n: number, goal: Vec3): void {
   const { adjacency, unfolding, crossing, scratch: s } = field;
   const g = adjacency.twin[s.side[n]];
   if (s.count + 4 > s.side.length) growInPlace(s);
@@ -257,16 +263,36 @@ function expandStateInPlace(field: SearchField, aim: SearchAim, n: number, goal:
     if (adjacency.twin[h] < 0) continue;
     const m = s.count;
     const o = STRIDE * m;
-    d.copyWithin(o, from, from + STRIDE);
+    for (let i = 0; i < STRIDE - 1; i++) d[o + i] = d[from + i];
     d[left ? o : o + 2] = cx;
     d[left ? o + 1 : o + 3] = cy;
     narrowViewInPlace(d, o, left);
     s.side[m] = h;
     s.parent[m] = n;
     s.mark[m] = aim.hole < 0 || !crossing ? 0 : s.mark[n] ^ ((crossing[h] >> aim.hole) & 1);
-    offerStateInPlace(field, goal, aim.limit);
+    offerStateInPlace(field, aim, goal);
   }
-  return [cx, cy];
+}
+
+/** Length to the goal in the triangle behind state n, as seen from its source image. */
+function measureToGoal(field: SearchField, n: number, to: SurfacePoint): number {
+  const { adjacency, unfolding, surface, scratch } = field;
+  const d = scratch.data;
+  const o = STRIDE * n;
+  const g = adjacency.twin[scratch.side[n]];
+  const l = unfolding.length[g];
+  const ux = (d[o + 2] - d[o]) / l;
+  const uy = (d[o + 3] - d[o + 1]) / l;
+  const corner = (v: number) =>
+    v === surface.tri[g]
+      ? [0, 0]
+      : v === surface.tri[nextHalfedge(g)]
+        ? [l, 0]
+        : [unfolding.apexX[g], unfolding.apexY[g]];
+  const [a, b] = [corner(to.a), corner(to.b)];
+  const px = a[0] + to.t * (b[0] - a[0]);
+  const py = a[1] + to.t * (b[1] - a[1]);
+  return reachLength(d, o, d[o] + px * ux - py * uy, d[o + 1] + px * uy + py * ux);
 }
 
 /**
@@ -275,7 +301,6 @@ function expandStateInPlace(field: SearchField, aim: SearchAim, n: number, goal:
  */
 export function findSleeve(field: SearchField, aim: SearchAim): Sleeve | null {
   const { surface, adjacency, crossing, scratch: s } = field;
-  const { tri } = surface;
   const goal = pointAt(surface, aim.to);
   const starts = findTrianglesAt(surface, adjacency, aim.from, crossing);
   const ends = findTrianglesAt(surface, adjacency, aim.to, crossing);
@@ -293,22 +318,11 @@ export function findSleeve(field: SearchField, aim: SearchAim): Sleeve | null {
     const o = STRIDE * n;
     const g = adjacency.twin[h];
     if (s.best[2 * Math.min(h, g) + s.mark[n]] < s.data[o + 11]) continue;
-    const [cx, cy] = expandStateInPlace(field, aim, n, goal);
+    expandStateInPlace(field, aim, n, goal);
     const t = Math.floor(g / 3);
     const e = ends.triangles.indexOf(t);
     if (e < 0 || (aim.hole >= 0 && (s.mark[n] ^ bit(ends.marks[e])) !== aim.parity)) continue;
-    const xy = [0, 0, 0, 0, 0, 0];
-    const d = s.data;
-    for (const [corner, x, y] of [
-      [g, d[o], d[o + 1]],
-      [nextHalfedge(g), d[o + 2], d[o + 3]],
-      [previousHalfedge(g), cx, cy],
-    ]) {
-      xy[2 * (corner % 3)] = x;
-      xy[2 * (corner % 3) + 1] = y;
-    }
-    const [x, y] = placePoint(aim.to, tri, t, xy);
-    const l = reachLength(d, o, x, y);
+    const l = measureToGoal(field, n, aim.to);
     if (l >= length) continue;
     length = l;
     found = n;
