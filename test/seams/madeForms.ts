@@ -179,6 +179,26 @@ export function makeJob(seams: Partial<SeamDecision> = {}): Job {
     allowances: { seam: 40, seamOn: "both", pocket: 100, pocketStrip: false, clamp: 0, hem: 40 },
     rolls: null,
     nest: { steps: 1, seconds: null, seed: 1, gap: 10, turn: true, bite: null, pins: [] },
+    rig: {
+      adjusters: null,
+      struts: [],
+      stays: [],
+      stages: [1],
+      temperature: 20,
+      limit: 0.5,
+      readingError: 0.03,
+      defaults: [],
+      defaultCable: {
+        id: "job",
+        EA: null,
+        minBreakingForce: null,
+        diameter: null,
+        mass: null,
+        alpha: null,
+        status: {},
+      },
+      defaultTurnbuckle: {} as never,
+    },
     papers: { date: "", drawnBy: "", checkedBy: "", sheet: "A4", units: "metric" },
   };
 }

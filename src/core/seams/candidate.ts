@@ -133,6 +133,27 @@ export function findSector(form: FoundForm, region: Region): Candidate | null {
   return sector ? { ...sector, layout: "gores" } : null;
 }
 
+/**
+ * Strips from the spine of an opened region (opening seams and the rings between them) to the outer rim: with the rim's first and
+ * last straight piece beside the outer strips, and without. None where the region has no such spine.
+ */
+export function listSpineBands(form: FoundForm, region: Region): Candidate[] {
+  const o = region.outlines[0];
+  const n = o.vertices.length;
+  const inner = (e: number) => form.edges[e].loop !== 0;
+  const rings = new Set([...o.edge].map((e) => form.edges[e].loop).filter((loop) => loop > 0));
+  const spine = findRuns(o, inner);
+  if (rings.size === 0) return [];
+  if (spine.length === 2) return [makeBands(form, o, [spine[1][1], spine[0][0]], [spine[0][1], spine[1][0]])];
+  if (spine.length !== 1) return [];
+  const [first, last] = spine[0];
+  const onRim = o.turns.filter((i) => (i - last + n) % n > 0 && (i - last + n) % n < (first - last + n) % n);
+  onRim.sort((a, b) => ((a - last + n) % n) - ((b - last + n) % n));
+  const out = [makeBands(form, o, [first, first], [last, last])];
+  if (onRim.length > 1) out.push(makeBands(form, o, [onRim[onRim.length - 1], first], [last, onRim[0]]));
+  return out;
+}
+
 /** Gores from the shorter loop of a ring to the longer one; `from` names an edge of the loop to start on. */
 export function listGores(form: FoundForm, region: Region, from: string | null): Candidate[] {
   const [long, short] = region.outlines;

@@ -16,6 +16,9 @@ export interface Chain {
   reversed: boolean;
 }
 
+/** A place within this share of a side's end is the vertex there: 0.05 mm on a side of half a metre. */
+export const AT_VERTEX = 1e-4;
+
 /** Length of a chain, m. */
 export function measureChain(chain: Chain): number {
   return chain.arc[chain.vertices.length - 1];
@@ -71,8 +74,8 @@ export function placeOnChain(chain: Chain, s: number): SurfacePoint {
     else high = mid;
   }
   const t = (s - arc[low]) / (arc[high] - arc[low]);
-  if (t < 1e-9) return { a: vertices[low], b: vertices[low], t: 0 };
-  if (t > 1 - 1e-9) return { a: vertices[high], b: vertices[high], t: 0 };
+  if (t < AT_VERTEX) return { a: vertices[low], b: vertices[low], t: 0 };
+  if (t > 1 - AT_VERTEX) return { a: vertices[high], b: vertices[high], t: 0 };
   return { a: vertices[low], b: vertices[high], t };
 }
 

@@ -1,5 +1,5 @@
 // The strips of a candidate as functions of two shares of its ends: seams already traced, and what lies between them by
-// blending. So widths are read off without tracing, and the spots that use every strip's width alike are found by marching.
+// blending. So widths are read off without tracing, and the number of strips is found by marching from left to right.
 import { pointAt } from "../surface/measures.ts";
 import type { SurfacePoint } from "../surface/surface.ts";
 import type { Candidate } from "./candidate.ts";
@@ -138,20 +138,6 @@ function reach(comb: Comb, u0: number, w: number): number {
   return low;
 }
 
-/** Marches strips of width w from left to right; null where more than n are needed. */
-function march(comb: Comb, w: number, n: number, bounds: Bounds): number[] | null {
-  const at = [0];
-  for (let j = 1; j <= n; j++) {
-    let u = reach(comb, at[j - 1], w);
-    if (j === 1 && n > 1) u = Math.max(u, bounds.first);
-    if (u >= 1 - 1e-9 && j < n) u = 1 - 1e-6 * (n - j);
-    if (j === n - 1) u = Math.max(Math.min(u, bounds.last), at[j - 1]);
-    if (u >= 1 - 1e-9) return j === n ? [...at, 1] : null;
-    at.push(u);
-  }
-  return null;
-}
-
 /** Fewest strips that fit the usable width, at least `least`; limit + 1 where more than the limit are needed. */
 export function countStrips(comb: Comb, usable: number, least: number, bounds: Bounds, limit = 400): number {
   let u = 0;
@@ -166,19 +152,7 @@ export function countStrips(comb: Comb, usable: number, least: number, bounds: B
   return Math.max(n, least);
 }
 
-/** Shares of n strips of equal width as far as the bounds allow: [0, …, 1]. */
-export function spreadStrips(comb: Comb, n: number, bounds: Bounds): number[] {
-  if (n === 1) return [0, 1];
-  let low = 0;
-  let high = sizeBetween(comb, 0, 1).width;
-  let best: number[] | null = null;
-  for (let k = 0; k < 14 && high - low > 1e-3 * high; k++) {
-    const mid = (low + high) / 2;
-    const at = march(comb, mid, n, bounds);
-    if (at) {
-      best = at;
-      high = mid;
-    } else low = mid;
-  }
-  return best ?? Array.from({ length: n + 1 }, (_, j) => j / n);
+/** Shares of n strips at even steps of both ends: [0, …, 1]. */
+export function stepStrips(n: number): number[] {
+  return Array.from({ length: n + 1 }, (_, j) => j / n);
 }

@@ -3,10 +3,19 @@ import { type Finding, PlanError } from "../problem.ts";
 import type { FoundForm } from "../records/foundForm.ts";
 import type { Job } from "../records/job.ts";
 import type { LayoutChoice } from "../records/stripLayout.ts";
-import { bandsBetween, type Candidate, findSector, listBands, listGores, orientCandidate } from "./candidate.ts";
+import { measureDistance, vertexAt } from "../surface/measures.ts";
+import {
+  bandsBetween,
+  type Candidate,
+  findSector,
+  listBands,
+  listGores,
+  listSpineBands,
+  orientCandidate,
+} from "./candidate.ts";
 import { measureChain } from "./chain.ts";
-import { buildComb, type Comb, countStrips, curveAt, sizeBetween, spreadStrips } from "./comb.ts";
-import { type Placement, placeSeams } from "./placeSeams.ts";
+import { buildComb, type Comb, countStrips, curveAt, sizeBetween, stepStrips } from "./comb.ts";
+import { MOST_STRIPS, type Placement, placeSeams } from "./placeSeams.ts";
 import type { Region } from "./region.ts";
 import { BAYS, type Curve } from "./stripWidth.ts";
 
@@ -39,13 +48,37 @@ const TRIAL_BAYS = 4;
 const TRIAL_BAYS_ROUND = 12;
 /** Candidates placed in full at most. */
 const MOST_PLACED = 4;
+/** A first count may be this much too high where a rim is bent: what lies between it and the first traced seam is blended. */
+const DOUBT = 1.5;
+/** A rim longer than its chord by this share is bent. */
+const BENT = 1.002;
 
 interface Trial {
   candidate: Candidate;
   comb: Comb;
   count: number;
+  /** Least count it may turn out to need. */
+  hope: number;
   metres: number;
   key: number[];
+  /** Strips it took, where it was placed in full. */
+  placed?: number;
+}
+
+interface Placed {
+  trial: Trial;
+  placement: Placement;
+  /** Strips, metres of seam, unevenness: smaller is better, in this order. */
+  rank: number[];
+}
+
+/** True where strips are stacked against a rim that is no straight line. */
+function hasBentRim(region: Region, candidate: Candidate): boolean {
+  return [candidate.left, candidate.right].some((rim) => {
+    if (!rim || rim.vertices.length < 3) return false;
+    const ends = [rim.vertices[0], rim.vertices[rim.vertices.length - 1]].map((v) => vertexAt(region.surface, v));
+    return measureChain(rim) > BENT * measureDistance(ends[0], ends[1]);
+  });
 }
 
 function measureCurve(curve: Curve): number {
@@ -72,7 +105,7 @@ function tryCandidate(region: Region, raw: Candidate, limits: RegionLimits): Tri
   const open = { first: 0, last: 1 };
   const least = round ? 3 : 1;
   const count = limits.count === "auto" ? countStrips(comb, limits.usableWidth, least, open) : limits.count;
-  const shares = count > 200 ? [0, 1] : spreadStrips(comb, count, open);
+  const shares = stepStrips(count > MOST_STRIPS ? 1 : count);
   const sizes = shares.slice(1).map((u, j) => sizeBetween(comb, shares[j], u));
   const seams = (round ? shares.slice(0, -1) : shares.slice(1, -1)).map((u) => curveAt(comb, u));
   const metres = seams.reduce((sum, curve) => sum + measureCurve(curve), 0);
@@ -88,6 +121,7 @@ function tryCandidate(region: Region, raw: Candidate, limits: RegionLimits): Tri
     candidate,
     comb,
     count,
+    hope: hasBentRim(region, candidate) ? Math.floor(count / DOUBT) : count,
     metres,
     key: [
       Number(tooLong),
@@ -110,15 +144,11 @@ function compareKeys(a: Trial, b: Trial): number {
 /** The ways to lay strips that the job and the region's shape allow, and what had to be passed over. */
 function listCandidates(form: FoundForm, region: Region, job: Job): { list: Candidate[]; passed: string } {
   const { layout, from, to } = job.seams;
-  if (region.outlines.length > 2)
-    throw new PlanError(
-      "seam-holes",
-      `${region.id} has ${region.outlines.length} boundary loops: strips can be laid on a piece with one loop or round one ring; name cables between the rings that divide it, or give the seams one by one ("pairs") so that every panel has one outline`,
-      region.id,
-      { loops: region.outlines.length },
-    );
-  if (region.outlines.length === 2) return { list: listGores(form, region, from), passed: "" };
   let passed = "";
+  if (region.outlines.length === 2) {
+    if (layout === "bands") passed = "bands cannot run across the opening in it, so it has gores round it";
+    return { list: listGores(form, region, from), passed };
+  }
   if (from !== null && to !== null && (layout === "bands" || layout === "gores")) {
     const asked = bandsBetween(
       form,
@@ -131,7 +161,7 @@ function listCandidates(form: FoundForm, region: Region, job: Job): { list: Cand
   }
   const sector = layout === "bands" ? null : findSector(form, region);
   if (sector) return { list: [sector], passed };
-  const list = listBands(form, region);
+  const list = [...listSpineBands(form, region), ...listBands(form, region)];
   if (layout === "bands" && from !== null) {
     const names = (c: Candidate) => [c.from, c.to].some((name) => name.split(" + ").includes(from));
     const named = list.filter(names);
@@ -141,16 +171,14 @@ function listCandidates(form: FoundForm, region: Region, job: Job): { list: Cand
   return { list, passed };
 }
 
-/** Lays out one region. */
-export function layoutRegion(form: FoundForm, region: Region, job: Job, limits: RegionLimits): RegionLayout {
-  const { list, passed } = listCandidates(form, region, job);
-  const trials = list.map((candidate) => tryCandidate(region, candidate, limits)).sort(compareKeys);
-  const findings: Finding[] = [];
-  let best: { trial: Trial; placement: Placement } | null = null;
-  let spare: { trial: Trial; placement: Placement } | null = null;
-  const round = region.outlines.length === 2;
+/** Places the trials that may still be the best, in order; `spare` is the first that is at least something. */
+function placeTrials(trials: readonly Trial[], limits: RegionLimits, round: boolean) {
+  let best: Placed | null = null;
+  let spare: Placed | null = null;
   for (const trial of trials.slice(0, MOST_PLACED)) {
-    if (best && (trial.key[0] || trial.key[1] || trial.count >= best.placement.sizes.length)) break;
+    if (best && (trial.key[0] > best.trial.key[0] || trial.hope > best.rank[0])) continue;
+    if (best && trial.hope === trial.count && trial.count === best.rank[0] && trial.key[4] >= best.trial.key[4])
+      continue;
     const placement = placeSeams(trial.comb, {
       usableWidth: limits.usableWidth,
       count: limits.count === "auto" ? "auto" : Math.max(limits.count, round ? 2 : 1),
@@ -158,11 +186,32 @@ export function layoutRegion(form: FoundForm, region: Region, job: Job, limits: 
       more: limits.more,
       marks: limits.findMarks(trial.candidate),
     });
-    const sound = placement.hugging.length === 0 && placement.sizes.length > 0;
-    const good = sound && (placement.fits || limits.count !== "auto");
-    if (good && (!best || placement.sizes.length < best.placement.sizes.length)) best = { trial, placement };
-    if (placement.sizes.length > 0) spare ??= { trial, placement };
+    const { sizes, lines, hugging } = placement;
+    if (sizes.length === 0) continue;
+    trial.placed = sizes.length;
+    const widths = sizes.map((size) => size.width);
+    const metres = lines.reduce((sum, line) => sum + line.length, 0);
+    const uneven = Math.round(50 * (1 - Math.min(...widths) / Math.max(...widths)));
+    const placed: Placed = { trial, placement, rank: [sizes.length, coarse(metres), uneven] };
+    spare ??= placed;
+    if (hugging.length > 0 || (!placement.fits && limits.count === "auto")) continue;
+    if (!best || isBetter(placed.rank, best.rank)) best = placed;
   }
+  return { best, spare };
+}
+
+function isBetter(a: readonly number[], b: readonly number[]): boolean {
+  const k = a.findIndex((x, i) => x !== b[i]);
+  return k >= 0 && a[k] < b[k];
+}
+
+/** Lays out one region. */
+export function layoutRegion(form: FoundForm, region: Region, job: Job, limits: RegionLimits): RegionLayout {
+  const { list, passed } = listCandidates(form, region, job);
+  const trials = list.map((candidate) => tryCandidate(region, candidate, limits)).sort(compareKeys);
+  const findings: Finding[] = [];
+  const round = region.outlines.length === 2;
+  const { best, spare } = placeTrials(trials, limits, round);
   const chosen = best ?? spare;
   if (!chosen)
     throw new PlanError(
@@ -213,8 +262,9 @@ function explainChoice(chosen: { trial: Trial; placement: Placement }, trials: T
   const head = n === 1 ? `one panel${told}, ${width}` : `${n} strips${told}, ${width}`;
   const others = trials.filter((other) => other !== trial);
   if (others.length === 0) return `${head}.`;
-  const more = others.filter((other) => other.count > n).length;
-  const metres = others.filter((other) => other.count <= n && other.metres > 1.02 * trial.metres).length;
+  const countOf = (other: Trial) => other.placed ?? other.count;
+  const more = others.filter((other) => countOf(other) > n).length;
+  const metres = others.filter((other) => countOf(other) <= n && other.metres > 1.02 * trial.metres).length;
   const words: string[] = [];
   if (more > 0) words.push(`${more} other ${more === 1 ? "way needs" : "ways need"} more strips`);
   if (metres > 0) words.push(`${metres} more metres of seam`);

@@ -5,6 +5,7 @@ import type { Job } from "../records/job.ts";
 import type { Seam, Strip, StripSide } from "../records/stripLayout.ts";
 import { vertexAt } from "../surface/measures.ts";
 import type { CutForm } from "./cutStrips.ts";
+import { isOpening } from "./openHoles.ts";
 import type { RegionPlan } from "./seamPath.ts";
 import { findEnds, measureVertices } from "./stripEnds.ts";
 import { listSides, type RawSide } from "./stripSides.ts";
@@ -100,6 +101,7 @@ function noteLevel(level: string[]): Finding[] {
 
 /** Makes strips, sides, ends and seams of the cut form. */
 export function nameStrips(form: FoundForm, job: Job, plans: readonly RegionPlan[], cut: CutForm): NamedStrips {
+  const cableOf = (edge: number) => (edge >= 0 && !isOpening(form.edges[edge]) ? form.edges[edge].id : null);
   let sides = listSides(plans, cut);
   const ends = sides.map((list, s) => findEnds(cut, s, list));
   const forced = new Set(ends.flatMap((end) => (end.split === undefined ? [] : [end.split])));
@@ -136,7 +138,7 @@ export function nameStrips(form: FoundForm, job: Job, plans: readonly RegionPlan
     return {
       id,
       weld: weldOf.get(group) ?? id,
-      cable: side.edge >= 0 ? form.edges[side.edge].id : null,
+      cable: cableOf(side.edge),
       vertices,
       strips: [stripId(a), stripId(b)],
       upper: rise > -2 * LEVEL_SLOPE ? stripId(a) : stripId(b),

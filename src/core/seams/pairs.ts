@@ -6,6 +6,7 @@ import type { EdgePlace } from "../records/job.ts";
 import { measureDistance, vertexAt } from "../surface/measures.ts";
 import type { SurfacePoint } from "../surface/surface.ts";
 import { isSamePoint } from "../surface/surfacePoint.ts";
+import { AT_VERTEX } from "./chain.ts";
 import { type Region, segmentKey } from "./region.ts";
 import { type SeamLine, traceSeam } from "./seamLine.ts";
 
@@ -42,8 +43,8 @@ function placeOnEdge(form: FoundForm, edge: FormEdge, at: number): SurfacePoint 
   let i = 1;
   while (i < length.length - 1 && length[i] < s) i++;
   const t = (s - length[i - 1]) / (length[i] - length[i - 1]);
-  if (t < 1e-9) return { a: edge.vertices[i - 1], b: edge.vertices[i - 1], t: 0 };
-  if (t > 1 - 1e-9) return { a: edge.vertices[i], b: edge.vertices[i], t: 0 };
+  if (t < AT_VERTEX) return { a: edge.vertices[i - 1], b: edge.vertices[i - 1], t: 0 };
+  if (t > 1 - AT_VERTEX) return { a: edge.vertices[i], b: edge.vertices[i], t: 0 };
   return { a: edge.vertices[i - 1], b: edge.vertices[i], t };
 }
 

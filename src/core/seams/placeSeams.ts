@@ -10,7 +10,7 @@ import {
   type SeamEnds,
   sizeBetween,
   sizeOfCurves,
-  spreadStrips,
+  stepStrips,
   traceTooth,
 } from "./comb.ts";
 import { measureClearance, type SeamLine } from "./seamLine.ts";
@@ -47,14 +47,14 @@ const SNAP_SHARE = 0.06;
 /** A seam starts at a mesh vertex rather than within this share of a side beside it: no sliver at the rim. */
 const VERTEX_SHARE = 0.04;
 /** Least waist of a strip beside a hollow rim, of the usable width. own: less is a ribbon that cannot be welded from both sides. */
-const WAIST = 0.06;
+const WAIST = 0.08;
 /** Seams stand still within this part of a strip. */
 const EVEN = 0.003;
 /** Rounds of shifting, and counts tried beside the first. own: three rounds are the rule, each costs one trace a seam. */
 const ROUNDS = 8;
 const TRIES = 5;
 /** More strips than this in one region are a mistake in the units. */
-const MOST_STRIPS = 200;
+export const MOST_STRIPS = 200;
 
 /** The nearest stop within reach, else the next vertex of the mesh within VERTEX_SHARE of its side, else s itself. */
 function snapTo(s: number, chain: Chain, stops: readonly number[], spacing: number): number {
@@ -226,7 +226,7 @@ function countChange(settled: Settled, bounds: Bounds, usable: number): number {
 export function placeSeams(comb: Comb, options: PlaceOptions): Placement {
   const { usableWidth: usable } = options;
   const bounds: Bounds = { first: 0, last: 1 };
-  const settle = (n: number) => settleStrips(comb, clampShares(spreadStrips(comb, n, bounds), bounds), bounds, usable);
+  const settle = (n: number) => settleStrips(comb, clampShares(stepStrips(n), bounds), bounds, usable);
   let kept: Settled | null = null;
   if (options.count !== "auto") kept = settle(options.count);
   else {

@@ -13,6 +13,7 @@ import { checkStrips } from "./checkStrips.ts";
 import { cutStrips } from "./cutStrips.ts";
 import { describeChoice, layoutRegion, type RegionLayout } from "./layoutRegion.ts";
 import { nameStrips } from "./nameStrips.ts";
+import { openHoles } from "./openHoles.ts";
 import { findEdge, findInRegion, tracePairs } from "./pairs.ts";
 import { buildRegions, type Region, segmentKey } from "./region.ts";
 import type { RegionPlan, SeamPath } from "./seamPath.ts";
@@ -160,6 +161,16 @@ function notePruned(pruned: readonly string[]): Finding[] {
   }));
 }
 
+/** The form with its regions, those of several rings opened by seams from ring to ring. */
+function prepareRegions(found: FoundForm, job: Job) {
+  const adjacency = buildAdjacency(found.surface);
+  const parted = buildRegions(found, adjacency);
+  const form = job.seams.layout === "pairs" ? null : openHoles(found, adjacency, parted.regions);
+  if (!form) return { form: found, adjacency, ...parted };
+  const after = buildAdjacency(form.surface);
+  return { form, adjacency: after, ...buildRegions(form, after), pruned: parted.pruned };
+}
+
 /** Lays out all regions one after another; seams that meet on one cable are drawn together. */
 function layoutAll(
   form: FoundForm,
@@ -223,7 +234,7 @@ function layoutPairs(form: FoundForm, job: Job, options: SeamOptions, regions: r
  * @source own; geodesics and cutting as in surface/geodesic.ts and surface/cut.ts
  */
 export function runSeams(
-  form: FoundForm,
+  found: FoundForm,
   job: Job,
   options: SeamOptions,
   context: StationContext = {},
@@ -235,9 +246,8 @@ export function runSeams(
       ["fabric.rollWidth", "seams.maxWidth"],
       { usableWidth: options.usableWidth },
     );
-  checkNames(form, job);
-  const adjacency = buildAdjacency(form.surface);
-  const { regions, labels, pruned } = buildRegions(form, adjacency);
+  checkNames(found, job);
+  const { form, adjacency, regions, labels, pruned } = prepareRegions(found, job);
   const findings: Finding[] = notePruned(pruned);
   const given = job.seams.layout === "pairs" ? layoutPairs(form, job, options, regions) : null;
   const layouts = given ? [] : layoutAll(form, job, options, regions, context);
@@ -272,7 +282,7 @@ export function runSeams(
     };
   });
   const output: StripLayout = { surface: cut.surface, seams: named.seams, strips: named.strips, choices };
-  const checks: Check[] = checkStrips(form, output);
+  const checks: Check[] = checkStrips(found, output);
   const broken = checks.filter((check) => !check.holds);
   for (const check of broken)
     findings.push({

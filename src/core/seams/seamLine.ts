@@ -3,6 +3,7 @@
 import { traceGeodesic } from "../surface/geodesic.ts";
 import { measurePathLength, pointAt } from "../surface/measures.ts";
 import type { SurfacePoint, Vec3 } from "../surface/surface.ts";
+import { isSamePoint } from "../surface/surfacePoint.ts";
 import type { Region } from "./region.ts";
 import { BAYS, type Curve, sampleCurve } from "./stripWidth.ts";
 
@@ -17,8 +18,10 @@ export interface SeamLine {
   clear: boolean;
 }
 
-/** The geodesic between two places of a region. */
+/** The geodesic between two places of a region; two ends in one place give a line of no length that is not clear. */
 export function traceSeam(region: Region, from: SurfacePoint, to: SurfacePoint): SeamLine {
+  if (isSamePoint(from, to))
+    return { points: [from, to], curve: sampleCurve([pointAt(region.surface, from)]), length: 0, clear: false };
   const path = traceGeodesic(region.surface, region.adjacency, from, to, { solver: region.solver });
   const places = path.points.map((p) => pointAt(region.surface, p));
   return {

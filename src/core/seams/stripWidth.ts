@@ -45,31 +45,39 @@ function gap(a: Curve, i: number, b: Curve, j: number): number {
   );
 }
 
-/** Third corner of a triangle over the flat side p → q at distances a from p and b from q, on its left (side 1) or right (-1). */
-function raise(p: Float64Array, i: number, q: Float64Array, j: number, a: number, b: number, side: number) {
-  const dx = q[2 * j] - p[2 * i];
-  const dy = q[2 * j + 1] - p[2 * i + 1];
-  const d = Math.sqrt(dx * dx + dy * dy);
-  if (d < 1e-12) return [p[2 * i] + a, p[2 * i + 1]];
-  const along = (a * a - b * b + d * d) / (2 * d);
-  const up = side * Math.sqrt(Math.max(0, a * a - along * along));
-  return [p[2 * i] + (along * dx - up * dy) / d, p[2 * i + 1] + (along * dy + up * dx) / d];
-}
-
 /** Unrolls the ladder between two curves; both start on the flat y axis, left above right. */
 function unrollLadder(left: Curve, right: Curve): [Float64Array, Float64Array] {
-  const n = BAYS + 1;
-  const l = new Float64Array(2 * n);
-  const r = new Float64Array(2 * n);
-  l[1] = gap(left, 0, right, 0);
+  const l = new Float64Array(2 * (BAYS + 1));
+  const r = new Float64Array(2 * (BAYS + 1));
+  // the rung that is unrolled next, from p on the left curve to q on the right one, and the third corner over it
+  let px = 0;
+  let py = gap(left, 0, right, 0);
+  let qx = 0;
+  let qy = 0;
+  let x = 0;
+  let y = 0;
+  const raise = (fromP: number, fromQ: number) => {
+    const dx = qx - px;
+    const dy = qy - py;
+    const d = Math.sqrt(dx * dx + dy * dy);
+    const along = d < 1e-12 ? 0 : (fromP * fromP - fromQ * fromQ + d * d) / (2 * d);
+    const up = Math.sqrt(Math.max(0, fromP * fromP - along * along));
+    // seen along the rung from left to right, the strip's way lies on the left
+    x = d < 1e-12 ? px + fromP : px + (along * dx - up * dy) / d;
+    y = d < 1e-12 ? py : py + (along * dy + up * dx) / d;
+  };
+  l[1] = py;
   for (let i = 0; i < BAYS; i++) {
-    // seen with the rung l → r, the strip's way lies on the left
-    const next = raise(l, i, r, i, gap(left, i, left, i + 1), gap(right, i, left, i + 1), 1);
-    l[2 * i + 2] = next[0];
-    l[2 * i + 3] = next[1];
-    const over = raise(l, i + 1, r, i, gap(left, i + 1, right, i + 1), gap(right, i, right, i + 1), 1);
-    r[2 * i + 2] = over[0];
-    r[2 * i + 3] = over[1];
+    raise(gap(left, i, left, i + 1), gap(right, i, left, i + 1));
+    px = x;
+    py = y;
+    raise(gap(left, i + 1, right, i + 1), gap(right, i, right, i + 1));
+    qx = x;
+    qy = y;
+    l[2 * i + 2] = px;
+    l[2 * i + 3] = py;
+    r[2 * i + 2] = qx;
+    r[2 * i + 3] = qy;
   }
   return [l, r];
 }
