@@ -47,7 +47,9 @@ describe("measurePanel", () => {
       expect(w.netWidth).toBeCloseTo(3000, 9);
       expect(w.cutWidth).toBeCloseTo(3060, 9);
     }
-    expect(m.sides.map((s) => s.straight)).toEqual([4000, 3000, 4000, 3000]);
+    // Cut 30 mm outside all round: every side 60 mm longer on the cloth, the diagonal that of 4060 × 3060.
+    expect(m.sides).toEqual([4060, 3060, 4060, 3060].map((l) => ({ edge: l, chord: l })));
+    for (const d of m.diagonals) expect(d.cutLength).toBeCloseTo(Math.hypot(4060, 3060), 9);
     expect(m.start).toBe("side 4");
   });
 
@@ -70,6 +72,27 @@ describe("measurePanel", () => {
       expect(d.length).toBeCloseTo(Math.hypot(4000, 2500), 6);
       expect(d.length).toBeCloseTo(m.diagonals[i]!.length, 6);
     });
+  });
+
+  test("where the cut line has no corner near, nothing is measured along it; a bowed edge is longer than its chord", () => {
+    const base = quad([
+      [0, 0],
+      [4000, 0],
+      [4000, 3000],
+      [0, 3000],
+    ]);
+    const bowed: Vec2[] = Array.from({ length: 41 }, (_, i): Vec2 => [100 * i, -30 - 200 * (1 - ((i - 20) / 20) ** 2)]);
+    const m = measurePanel({ ...base, cut: [...bowed, [4000, 3000], [0, 3000]] });
+    // Arc of a parabola with sag f over the span l: l (1 + 8/3 (f/l)²) to the order of (f/l)⁴ (textbook series).
+    expect(m.sides[0]!.chord).toBeCloseTo(4000, 6);
+    expect(m.sides[0]!.edge).toBeCloseTo(4000 * (1 + (8 / 3) * 0.05 ** 2), 0);
+    const round: Vec2[] = Array.from({ length: 60 }, (_, i) => [
+      2000 + 2500 * Math.cos((i * Math.PI) / 30),
+      1500 + 2500 * Math.sin((i * Math.PI) / 30),
+    ]);
+    const none = measurePanel({ ...base, cut: round });
+    expect(none.sides.every((s) => s.edge === null && s.chord === null)).toBe(true);
+    expect(none.diagonals.every((d) => d.cutLength === null && d.length === 5000)).toBe(true);
   });
 
   test("a pointed panel has no diagonal and names the corner it is measured from", () => {

@@ -1,19 +1,25 @@
 // What a welder checks with a tape before a panel is joined: corners, diagonals, widths at the quarter points, all from the
-// panel's own flat outline. Does not judge: the tolerance is the office's.
+// panel's own flat outline. Where cloth is set back its net corner lies off the cloth: what a tape can reach is measured between
+// the corners of the cut line. Does not judge: the tolerance is the office's.
 import type { FactsPanel, Vec2 } from "../records/facts.ts";
-import { chordAcross, distance, sideRun } from "./flatGeometry.ts";
+import { chordAcross, distance } from "./flatGeometry.ts";
 
 export interface Corner {
   /** C1, C2, … in the order of the sides: corner k is where side k begins. */
   name: string;
+  /** Corner of the net line. */
   at: Vec2;
+  /** Place in the cut outline of the corner that belongs to it, or -1 where the cut line has none there. */
+  cut: number;
 }
 
 export interface Diagonal {
   from: Corner;
   to: Corner;
-  /** mm */
+  /** mm, between the net corners */
   length: number;
+  /** mm, between the cut corners; null where one is missing */
+  cutLength: number | null;
 }
 
 export interface Width {
@@ -27,9 +33,12 @@ export interface Width {
   cutWidth: number | null;
 }
 
+/** What can be measured on the cloth along a side, mm; null where the cut line has no corner at an end. */
 export interface SideMeasure {
-  /** Straight from corner to corner, mm. */
-  straight: number;
+  /** Along the cut line from corner to corner. */
+  edge: number | null;
+  /** Straight between the same corners. */
+  chord: number | null;
 }
 
 export interface PanelMeasures {
@@ -55,6 +64,39 @@ function startOf(panel: FactsPanel): string {
   return `corner C${(first >= 0 ? first : Math.max(corner, 0)) + 1}`;
 }
 
+/** A bend of the cut line counts as a corner from this angle on; none is looked for farther than this from the net corner. */
+const CORNER_SIN = Math.sin(Math.PI / 12);
+const CORNER_REACH = 700;
+
+function bend(outline: readonly Vec2[], i: number): number {
+  const n = outline.length;
+  const [a, b, c] = [outline[(i + n - 1) % n], outline[i], outline[(i + 1) % n]];
+  const [u, v] = [distance(a, b), distance(b, c)];
+  if (u === 0 || v === 0) return 0;
+  const cross = ((b[0] - a[0]) * (c[1] - b[1]) - (b[1] - a[1]) * (c[0] - b[0])) / (u * v);
+  const dot = ((b[0] - a[0]) * (c[0] - b[0]) + (b[1] - a[1]) * (c[1] - b[1])) / (u * v);
+  // A bend sharper than a right angle is a corner whatever its sine.
+  return dot < 0 ? 1 : Math.abs(cross);
+}
+
+/** The corner of the cut line nearest to a point, or -1. */
+function findCutCorner(cut: readonly Vec2[], at: Vec2): number {
+  let best = -1;
+  let reach = CORNER_REACH;
+  cut.forEach((p, i) => {
+    const d = distance(p, at);
+    if (d < reach && bend(cut, i) >= CORNER_SIN) [best, reach] = [i, d];
+  });
+  return best;
+}
+
+function measureSide(cut: readonly Vec2[], from: number, to: number): SideMeasure {
+  if (from < 0 || to < 0 || from === to) return { edge: null, chord: null };
+  let edge = 0;
+  for (let i = from; i !== to; i = (i + 1) % cut.length) edge += distance(cut[i], cut[(i + 1) % cut.length]);
+  return { edge, chord: distance(cut[from], cut[to]) };
+}
+
 function mean(points: Vec2[]): Vec2 {
   const n = Math.max(1, points.length);
   return [points.reduce((s, p) => s + p[0], 0) / n, points.reduce((s, p) => s + p[1], 0) / n];
@@ -72,11 +114,14 @@ function endCorners(panel: FactsPanel, corners: Corner[], end: number[], across:
 
 /** Corners, straight lengths of sides, both diagonals and the widths at the quarter points. @units mm */
 export function measurePanel(panel: FactsPanel): PanelMeasures {
-  const corners = panel.sides.map((s, i): Corner => ({ name: `C${i + 1}`, at: panel.net[s.netFrom] }));
-  const sides = panel.sides.map((s) => {
-    const run = sideRun(panel, s);
-    return { straight: distance(run[0], run[run.length - 1]) };
-  });
+  const corners = panel.sides.map(
+    (s, i): Corner => ({
+      name: `C${i + 1}`,
+      at: panel.net[s.netFrom],
+      cut: findCutCorner(panel.cut, panel.net[s.netFrom]),
+    }),
+  );
+  const sides = corners.map((c, i) => measureSide(panel.cut, c.cut, corners[(i + 1) % corners.length].cut));
   if (corners.length === 0 || panel.axis.from.length === 0 || panel.axis.to.length === 0) {
     return { corners, sides, diagonals: [], widths: [], start: "" };
   }
@@ -96,7 +141,12 @@ export function measurePanel(panel: FactsPanel): PanelMeasures {
           [a, d],
           [b, c],
         ];
-  const diagonals = pairs.map(([p, q]) => ({ from: p, to: q, length: distance(p.at, q.at) }));
+  const diagonals = pairs.map(([p, q]) => ({
+    from: p,
+    to: q,
+    length: distance(p.at, q.at),
+    cutLength: p.cut < 0 || q.cut < 0 || p.cut === q.cut ? null : distance(panel.cut[p.cut], panel.cut[q.cut]),
+  }));
   const widths = [1, 2, 3].map((k): Width => {
     const p: Vec2 = [from[0] + (length * k * along[0]) / 4, from[1] + (length * k * along[1]) / 4];
     const net = chordAcross(panel.net, p, across);

@@ -18,8 +18,8 @@ import {
 } from "./table.ts";
 
 const FINDING_COLUMNS: readonly Column[] = [
-  { head: ["Code", "and station"], width: 44, bold: true },
-  { head: ["Where"], width: 30 },
+  { head: ["Code", "and station"], width: 42, bold: true },
+  { head: ["Where"], width: 34 },
   { head: ["What is the matter"], width: 78 },
   { head: ["Value"], width: 24, align: "end" },
   { head: ["Limit"], width: 24, align: "end" },
@@ -50,7 +50,11 @@ export function valueText(value: number | string | null): string {
   if (!Number.isFinite(value)) return String(value);
   const size = Math.abs(value);
   if (size >= 1e12) return String(value);
-  if (size !== 0 && size < 1e-4) return `${Number(value.toPrecision(2))}`.replace("e-", " · 10^-");
+  if (size !== 0 && size < 1e-4) {
+    const [digits, power] = value.toExponential(1).split("e");
+    const raised = [...power].map((c) => (c === "-" ? "⁻" : "⁰¹²³⁴⁵⁶⁷⁸⁹"[Number(c)])).join("");
+    return `${Number(digits)}·10${raised}`;
+  }
   return size >= 1000 ? decimal(value, 0) : String(Number(value.toPrecision(4)));
 }
 

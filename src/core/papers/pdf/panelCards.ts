@@ -2,6 +2,7 @@
 // Then the assembly map and the seam schedule. Numbers come from the facts; nothing is judged here.
 import type { Facts, FactsPanel } from "../../records/facts.ts";
 import { decimal } from "../decimal.ts";
+import { boxOf } from "../flatGeometry.ts";
 import { measurePanel, type PanelMeasures } from "../panelMeasures.ts";
 import { massOf, placesOf } from "../tables.ts";
 import { drawAssemblyMap } from "./assemblyMap.ts";
@@ -17,14 +18,15 @@ const LEAST_FIGURE = 52;
 
 const SIDE_COLUMNS: readonly Column[] = [
   { head: ["No."], width: 10 },
-  { head: ["Seam", "or edge"], width: 22 },
-  { head: ["Meets"], width: 28 },
-  { head: ["Flat,", "mm"], width: 17, align: "end", bold: true },
-  { head: ["Straight,", "mm"], width: 20, align: "end" },
-  { head: ["On the", "form, m"], width: 19, align: "end" },
+  { head: ["Seam", "or edge"], width: 20 },
+  { head: ["Meets"], width: 27 },
+  { head: ["Net,", "mm"], width: 15, align: "end", bold: true },
+  { head: ["Edge,", "mm"], width: 15, align: "end" },
+  { head: ["Chord,", "mm"], width: 16, align: "end" },
+  { head: ["On the", "form, m"], width: 18, align: "end" },
   { head: ["Allow-", "ance, mm"], width: 23, align: "end" },
-  { head: ["Lap"], width: 16 },
-  { head: ["Tape,", "mm"], width: 24 },
+  { head: ["Lap"], width: 15 },
+  { head: ["Tape,", "mm"], width: 20 },
 ];
 
 const CHECK_COLUMNS: readonly Column[] = [
@@ -56,13 +58,19 @@ function allowanceText(mm: number): string {
   return mm < 0 ? `set back ${decimal(-mm, 0)}` : decimal(mm, 0);
 }
 
+/** A length that a tape can reach, or a dash. */
+function reach(length: number | null): string {
+  return length === null ? "–" : decimal(length, 0);
+}
+
 function sideRows(facts: Facts, panel: FactsPanel, measures: PanelMeasures): string[][] {
   return panel.sides.map((s, i) => [
     `${i + 1}`,
     s.id,
     sideMeets(facts, panel, i),
     decimal(s.lengthFlat, 0),
-    decimal(measures.sides[i].straight, 0),
+    reach(measures.sides[i].edge),
+    reach(measures.sides[i].chord),
     decimal(s.lengthErected, 3),
     allowanceText(s.allowance),
     lapOf(facts, panel, i),
@@ -71,11 +79,16 @@ function sideRows(facts: Facts, panel: FactsPanel, measures: PanelMeasures): str
 }
 
 function checkRows(measures: PanelMeasures): string[][] {
-  const diagonals = measures.diagonals.map((d) => [`${d.from.name} to ${d.to.name}`, decimal(d.length, 0), "", ""]);
+  const diagonals = measures.diagonals.map((d) => [
+    `${d.from.name} to ${d.to.name}`,
+    decimal(d.length, 0),
+    reach(d.cutLength),
+    "",
+  ]);
   const widths = measures.widths.map((w) => [
     `${w.name} at ${decimal(w.station, 0)}`,
-    w.netWidth === null ? "none" : decimal(w.netWidth, 0),
-    w.cutWidth === null ? "none" : decimal(w.cutWidth, 0),
+    reach(w.netWidth),
+    reach(w.cutWidth),
     "",
   ]);
   return [...diagonals, ...widths, ["Tolerance ±", "", "", ""]];
@@ -85,8 +98,10 @@ function checkRows(measures: PanelMeasures): string[][] {
 function headTexts(facts: Facts, panel: FactsPanel, measures: PanelMeasures, scale: number): string[] {
   const place = placesOf(facts).get(panel.id);
   const mass = massOf(facts, panel);
+  const cut = boxOf(panel.cut);
+  const [start, end] = place?.rotation === 180 ? [-cut.max[0], -cut.min[0]] : [cut.min[0], cut.max[0]];
   const lie = place
-    ? `roll ${place.roll} at x ${decimal(place.x, 0)}, y ${decimal(place.y, 0)} mm, turned ${place.rotation}°`
+    ? `roll ${place.roll} from ${decimal(place.x + start, 0)} to ${decimal(place.x + end, 0)} mm, turned ${place.rotation}°`
     : "not yet on a roll";
   const percent = (e: number) => `${decimal(100 * e, 2)} %`;
   const back = panel.decompensated.map(
@@ -95,10 +110,10 @@ function headTexts(facts: Facts, panel: FactsPanel, measures: PanelMeasures, sca
   const found = facts.findings.filter((f) => [f.where].flat().includes(panel.id));
   const codes = [...new Set(found.map((f) => `${f.code} (${f.level})`))];
   const weight = mass === null ? "" : `, ${decimal(mass, 1)} kg`;
-  const stations = measures.start === "" ? "" : ` Widths: at mm from ${measures.start}.`;
+  const stations = measures.start === "" ? "" : ` Widths: mm from ${measures.start}.`;
   return [
     `Scale 1:${scale}, outer face up, warp along the arrow. Fabric ${panel.fabric}, batch ${panel.batch ?? "not given"}, ${lie}. Cut area ${decimal(panel.area.cut, 2)} m²${weight}.`,
-    `Thick: cut line. Dashed: net line; flat lengths run along it. Ticks: match marks. Side n begins at corner Cn.${stations}`,
+    `Thick: cut. Dashed: net. Ticks: match marks. Side n begins at Cn. Edge, chord: along and straight between ringed cut corners.${stations}`,
     `The flat is compensated (warp ${percent(panel.compensation.warp)}, weft ${percent(panel.compensation.weft)}${back.length > 0 ? `; taken back ${back.join("; ")}` : ""}): do not compensate again.`,
     ...(codes.length > 0 ? [`See the findings sheets for this panel: ${codes.join(", ")}.`] : []),
   ];

@@ -5,7 +5,7 @@ import { boxOf, insidePoint, pointAlong, sideRun } from "../flatGeometry.ts";
 import type { PanelMeasures } from "../panelMeasures.ts";
 import type { Book, Sheet } from "./book.ts";
 import { type LabelField, takePlaceInPlace } from "./labelField.ts";
-import { type BoxArea, drawBox, drawRun, drawText, fitText, SMALL, textWidth } from "./pen.ts";
+import { type BoxArea, drawBox, drawRing, drawRun, drawText, fitText, SMALL, textWidth } from "./pen.ts";
 
 /** Scales a rule can be laid on: drawing scales of ISO 5455 and the 1:25, 1:75, 1:125 of scale rules (common practice). */
 const SCALES = [1, 2, 5, 10, 20, 25, 50, 75, 100, 125, 200, 250, 500, 1000];
@@ -204,7 +204,8 @@ function drawCorners(figure: Figure, measures: PanelMeasures): void {
   const middle = figure.place([(box.min[0] + box.max[0]) / 2, (box.min[1] + box.max[1]) / 2]);
   for (const corner of measures.corners) {
     const p = figure.place(corner.at);
-    drawBox(figure.sheet.page, { x: p[0] - 0.5, y: p[1] - 0.5, width: 1, height: 1 }, { width: 0.1, fill: 0 });
+    drawBox(figure.sheet.page, { x: p[0] - 0.4, y: p[1] - 0.4, width: 0.8, height: 0.8 }, { width: 0.1, fill: 0 });
+    if (corner.cut >= 0) drawRing(figure.sheet.page, figure.place(figure.panel.cut[corner.cut]), 1, { width: 0.2 });
     const sx = p[0] < middle[0] ? -1 : 1;
     const sy = p[1] < middle[1] ? -1 : 1;
     const around = [4, 6, 8, 11].flatMap((r): Vec2[] => [

@@ -78,8 +78,11 @@ export function wrapText(text: string, font: PDFFont, size: number, width: numbe
     line = "";
     for (const letter of word) {
       if (line !== "" && textWidth(line + letter, font, size) > width) {
-        lines.push(line);
-        line = "";
+        // Broken after a joint of the word where it has one, so that names stay legible.
+        const joint = Math.max(...[".", "-", "_", "/"].map((c) => line.lastIndexOf(c))) + 1;
+        const end = joint > 1 ? joint : line.length;
+        lines.push(line.slice(0, end));
+        line = line.slice(end);
       }
       line += letter;
     }
@@ -146,6 +149,15 @@ export function drawRun(page: PDFPage, points: readonly Vec2[], options: LineOpt
   operators.push(options.fill === undefined ? stroke() : options.outline === false ? fill() : fillAndStroke());
   operators.push(popGraphicsState());
   page.pushOperators(...operators);
+}
+
+/** A ring, drawn as a polygon of 24 sides. */
+export function drawRing(page: PDFPage, at: Vec2, radius: number, options: LineOptions): void {
+  const points = Array.from({ length: 24 }, (_, k): Vec2 => {
+    const a = (k * Math.PI) / 12;
+    return [at[0] + radius * Math.cos(a), at[1] + radius * Math.sin(a)];
+  });
+  drawRun(page, points, { ...options, closed: true });
 }
 
 export interface BoxArea {
