@@ -5,6 +5,9 @@ import type { NestTask } from "../../src/core/rolls/layPieces.ts";
 import { buildShape, clothArea, placementOf } from "../../src/core/rolls/nestShape.ts";
 import { searchOrders } from "../../src/core/rolls/searchOrders.ts";
 
+/** Columns across the strip's width. */
+const COLUMNS = 256;
+
 export interface PackInstance {
   name: string;
   stripWidth: number;
@@ -41,7 +44,10 @@ export function benchPack(
   }
   const width = instance.stripWidth;
   const lengths = shapes.reduce((sum, s) => sum + s[0].length, 0);
-  const size = { start: 0, length: 2 * lengths, width, gap: 0, dx: width / 256, slack: 0, flaws: [] };
+  const whole = instance.items.every((item) => item.polygon.flat().every(Number.isInteger));
+  // Outlines drawn on whole numbers get columns that divide them, so that what fits exactly is found.
+  const dx = whole ? 2 ** Math.floor(Math.log2(Math.min(1, width / COLUMNS))) : width / COLUMNS;
+  const size = { start: 0, length: 2 * lengths, width, gap: 0, dx, snap: whole ? 1 : 0, slack: 0, flaws: [] };
   const loose = shapes.map((_, i) => i);
   const task: NestTask = {
     shapes,

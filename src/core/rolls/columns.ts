@@ -7,79 +7,100 @@ export interface Columns {
   start: Uint32Array<ArrayBuffer>;
   lo: Float64Array<ArrayBuffer>;
   hi: Float64Array<ArrayBuffer>;
+  /** Tallest interval of each column. */
+  tall: Float64Array<ArrayBuffer>;
+}
+
+/** Sides of a ring that cross a slab, from below upward: y at its left and right end. Reused from slab to slab. */
+export interface SlabSides {
+  count: number;
+  left: number[];
+  right: number[];
+}
+
+/** Fills in the sides that cross the slab, sorted by their height in the middle; drops those that end before it. */
+function crossInPlace(sides: SlabSides, active: Float64Array[], xa: number, xb: number): void {
+  let kept = 0;
+  sides.count = 0;
+  for (const e of active) {
+    if (e[2] < xb) continue;
+    active[kept++] = e;
+    const slope = (e[3] - e[1]) / (e[2] - e[0]);
+    const ya = e[1] + slope * (xa - e[0]);
+    const yb = e[1] + slope * (xb - e[0]);
+    let i = sides.count++;
+    for (; i > 0 && sides.left[i - 1] + sides.right[i - 1] > ya + yb; i--) {
+      sides.left[i] = sides.left[i - 1];
+      sides.right[i] = sides.right[i - 1];
+    }
+    sides.left[i] = ya;
+    sides.right[i] = yb;
+  }
+  active.length = kept;
 }
 
 /**
- * Walks the slabs of a ring between neighbouring stops along x: its own corners and the ones given.
- * @shape visit gets, for each side that crosses the slab from xa to xb, its y at both ends; sides sorted upward
+ * Walks the slabs of a ring, shifted by x, between neighbouring stops: its own corners and the ones given.
+ * @shape visit gets the slab's ends and the sides that cross it, valid during the call
  */
 export function walkSlabs(
   ring: Float64Array,
   x: number,
   stops: number[],
-  visit: (xa: number, xb: number, sides: [number, number][]) => void,
+  visit: (xa: number, xb: number, sides: SlabSides) => void,
 ): void {
-  const edges: { x0: number; y0: number; x1: number; y1: number }[] = [];
-  const all = [...stops];
+  const n = ring.length / 2;
+  const edges: Float64Array[] = [];
+  const all = new Float64Array(n + stops.length);
+  all.set(stops, n);
   for (let i = 0, j = ring.length - 2; i < ring.length; j = i, i += 2) {
-    const [p, q] = ring[i] < ring[j] ? [i, j] : [j, i];
-    all.push(ring[i] + x);
-    if (ring[p] < ring[q]) edges.push({ x0: ring[p] + x, y0: ring[p + 1], x1: ring[q] + x, y1: ring[q + 1] });
+    const p = ring[i] < ring[j] ? i : j;
+    const q = p === i ? j : i;
+    all[i >> 1] = ring[i] + x;
+    if (ring[p] < ring[q]) edges.push(Float64Array.of(ring[p] + x, ring[p + 1], ring[q] + x, ring[q + 1]));
   }
-  all.sort((a, b) => a - b);
-  edges.sort((a, b) => a.x0 - b.x0);
+  all.sort();
+  edges.sort((a, b) => a[0] - b[0]);
+  const sides: SlabSides = { count: 0, left: [], right: [] };
+  const active: Float64Array[] = [];
   let next = 0;
-  let active: typeof edges = [];
   for (let k = 0; k + 1 < all.length; k++) {
-    const [xa, xb] = [all[k], all[k + 1]];
+    const xa = all[k];
+    const xb = all[k + 1];
     if (!(xb > xa)) continue;
-    active = active.filter((e) => e.x1 >= xb);
-    while (next < edges.length && edges[next].x0 <= xa) {
-      if (edges[next].x1 >= xb) active.push(edges[next]);
-      next++;
-    }
-    const sides = active.map((e): [number, number] => {
-      const slope = (e.y1 - e.y0) / (e.x1 - e.x0);
-      return [e.y0 + slope * (xa - e.x0), e.y0 + slope * (xb - e.x0)];
-    });
-    sides.sort((a, b) => a[0] + a[1] - b[0] - b[1]);
+    while (next < edges.length && edges[next][0] <= xa) active.push(edges[next++]);
+    crossInPlace(sides, active, xa, xb);
     visit(xa, xb, sides);
   }
 }
 
+/** Collects intervals by column, from the first column any can lie in. */
+interface Gather {
+  first: number;
+  lists: number[][];
+}
+
+function addTo(gather: Gather, column: number, lo: number, hi: number): void {
+  const k = column - gather.first;
+  if (k >= 0 && k < gather.lists.length) gather.lists[k].push(lo, hi);
+}
+
 /** Intervals of the inside of a ring, column by column. */
-function addInside(
-  ring: Float64Array,
-  x: number,
-  dx: number,
-  add: (column: number, lo: number, hi: number) => void,
-): void {
-  let least = Infinity;
-  let most = -Infinity;
-  for (let i = 0; i < ring.length; i += 2) {
-    least = Math.min(least, ring[i] + x);
-    most = Math.max(most, ring[i] + x);
-  }
+function addInside(ring: Float64Array, x: number, dx: number, ends: [number, number], gather: Gather): void {
   const stops: number[] = [];
-  for (let c = Math.floor(least / dx) + 1; c * dx < most; c++) stops.push(c * dx);
-  walkSlabs(ring, x, stops, (xa, xb, at) => {
+  for (let c = Math.floor(ends[0] / dx) + 1; c * dx < ends[1]; c++) stops.push(c * dx);
+  walkSlabs(ring, x, stops, (xa, xb, sides) => {
     const column = Math.floor((xa + xb) / 2 / dx);
-    for (let i = 0; i + 1 < at.length; i += 2)
-      add(column, Math.min(at[i][0], at[i][1]), Math.max(at[i + 1][0], at[i + 1][1]));
+    const { left, right } = sides;
+    for (let i = 0; i + 1 < sides.count; i += 2)
+      addTo(gather, column, Math.min(left[i], right[i]), Math.max(left[i + 1], right[i + 1]));
   });
 }
 
 /** Intervals of a band of width 2·grow round a ring's line (square ends: a little too much at corners). */
-function addBand(
-  ring: Float64Array,
-  x: number,
-  dx: number,
-  grow: number,
-  add: (column: number, lo: number, hi: number) => void,
-): void {
+function addBand(ring: Float64Array, x: number, dx: number, grow: number, gather: Gather): void {
   for (let i = 0, j = ring.length - 2; i < ring.length; j = i, i += 2) {
-    const flip = ring[i] < ring[j];
-    const [p, q] = flip ? [i, j] : [j, i];
+    const [p, q] = ring[i] < ring[j] ? [i, j] : [j, i];
     const [ax, ay, bx, by] = [ring[p] + x, ring[p + 1], ring[q] + x, ring[q + 1]];
     const slope = bx > ax ? (by - ay) / (bx - ax) : 0;
     for (let c = Math.floor((ax - grow) / dx); c <= Math.floor((bx + grow) / dx); c++) {
@@ -87,7 +108,25 @@ function addBand(
       const to = Math.min(bx, (c + 1) * dx + grow);
       const y0 = bx > ax ? ay + slope * (from - ax) : ay;
       const y1 = bx > ax ? ay + slope * (to - ax) : by;
-      add(c, Math.min(y0, y1) - grow, Math.max(y0, y1) + grow);
+      addTo(gather, c, Math.min(y0, y1) - grow, Math.max(y0, y1) + grow);
+    }
+  }
+}
+
+/** Overlapping intervals of a column run together, lower ends rising. */
+function mergeInto(list: number[], lo: number[], hi: number[]): void {
+  if (list.length === 2) {
+    lo.push(list[0]);
+    hi.push(list[1]);
+    return;
+  }
+  const order = Array.from({ length: list.length / 2 }, (_, i) => 2 * i).sort((a, b) => list[a] - list[b]);
+  const begin = lo.length;
+  for (const i of order) {
+    if (lo.length > begin && list[i] <= hi[hi.length - 1]) hi[hi.length - 1] = Math.max(hi[hi.length - 1], list[i + 1]);
+    else {
+      lo.push(list[i]);
+      hi.push(list[i + 1]);
     }
   }
 }
@@ -97,32 +136,24 @@ function addBand(
  * @shape ring 2*n, any simple ring
  */
 export function buildColumns(ring: Float64Array, x: number, dx: number, grow: number): Columns {
-  const lists = new Map<number, [number, number][]>();
-  let first = Infinity;
-  let last = -Infinity;
-  const add = (column: number, lo: number, hi: number) => {
-    const list = lists.get(column);
-    if (list) list.push([lo, hi]);
-    else lists.set(column, [[lo, hi]]);
-    first = Math.min(first, column);
-    last = Math.max(last, column);
-  };
-  addInside(ring, x, dx, add);
-  if (grow > 0) addBand(ring, x, dx, grow, add);
-  const count = Number.isFinite(first) ? last - first + 1 : 0;
+  const ends: [number, number] = [Infinity, -Infinity];
+  for (let i = 0; i < ring.length; i += 2) {
+    ends[0] = Math.min(ends[0], ring[i] + x);
+    ends[1] = Math.max(ends[1], ring[i] + x);
+  }
+  const first = Math.floor((ends[0] - grow) / dx);
+  const count = Math.floor((ends[1] + grow) / dx) - first + 1;
+  const gather: Gather = { first, lists: Array.from({ length: count }, () => []) };
+  addInside(ring, x, dx, ends, gather);
+  if (grow > 0) addBand(ring, x, dx, grow, gather);
   const start = new Uint32Array(count + 1);
+  const tall = new Float64Array(count);
   const lo: number[] = [];
   const hi: number[] = [];
   for (let k = 0; k < count; k++) {
-    const list = (lists.get(first + k) ?? []).sort((a, b) => a[0] - b[0]);
-    for (const [a, b] of list) {
-      if (lo.length > start[k] && a <= hi[hi.length - 1]) hi[hi.length - 1] = Math.max(hi[hi.length - 1], b);
-      else {
-        lo.push(a);
-        hi.push(b);
-      }
-    }
+    mergeInto(gather.lists[k], lo, hi);
     start[k + 1] = lo.length;
+    for (let i = start[k]; i < lo.length; i++) tall[k] = Math.max(tall[k], hi[i] - lo[i]);
   }
-  return { first: count > 0 ? first : 0, start, lo: Float64Array.from(lo), hi: Float64Array.from(hi) };
+  return { first, start, lo: Float64Array.from(lo), hi: Float64Array.from(hi), tall };
 }

@@ -67,7 +67,7 @@ function bestOn(bed: Bed, piece: number, task: NestTask, rule: TurnRule): LaidSh
   let best: LaidShape | null = null;
   let bestKey = Infinity;
   for (const shape of task.shapes[piece]) {
-    const place = findPlace(bed, shape, task.store, Infinity);
+    const place = findPlace(bed, shape, task.store);
     if (!place) continue;
     const trial: LaidShape = { piece, shape, ...place, pinned: false };
     Object.assign(trial, settle(bed, trial, ROUNDS));

@@ -36,9 +36,9 @@ function chordRuns(ring: PlaneRing, width: number, gap: number): [number, number
   walkSlabs(ring, 0, [], (xa, xb, sides) => {
     let a = gap;
     let b = gap;
-    for (let i = 0; i + 1 < sides.length; i += 2) {
-      a += sides[i + 1][0] - sides[i][0];
-      b += sides[i + 1][1] - sides[i][1];
+    for (let i = 0; i + 1 < sides.count; i += 2) {
+      a += sides.left[i + 1] - sides.left[i];
+      b += sides.right[i + 1] - sides.right[i];
     }
     const parts = Math.abs(a - b) < HAIR * width ? 1 : PARTS;
     for (let k = 0; k < parts; k++) {

@@ -3,6 +3,7 @@
 import { type PlaneRing, ringArea, ringBox } from "../surface/ring.ts";
 import { simplifyRing } from "../surface/simplifyRing.ts";
 import { buildColumns, type Columns } from "./columns.ts";
+import { risingOrders } from "./slideRoom.ts";
 
 /** A piece in one rotation. */
 export interface NestShape {
@@ -15,6 +16,8 @@ export interface NestShape {
   offset: [number, number];
   /** The true outline lies within this of the ring. */
   slack: number;
+  /** Points in rising order of x, and of y. */
+  rising: [Uint32Array<ArrayBuffer>, Uint32Array<ArrayBuffer>];
   /** Equal keys: equal ring, so what one could not find the other cannot either. */
   key: string;
 }
@@ -86,6 +89,7 @@ export function buildShape(cut: PlaneRing, rotation: number, key: string): NestS
     height: box.y1 - box.y0,
     offset: [box.x0, box.y0],
     slack: thin.slack,
+    rising: risingOrders(ring),
     key: `${key}/${rotation}`,
   };
 }

@@ -65,12 +65,43 @@ function deepInside(r: PlaneRing, x: number, y: number, touch: number): boolean 
   return ringHolds(r, x, y) && ringDistance(r, x, y) > touch;
 }
 
-/** Whether any point of one lies deeper than `touch` inside the other. */
+/** Shares of the side i–i2 of b at which it meets the line of a, with 0 and 1, rising. */
+function meetingShares(b: PlaneRing, i: number, i2: number, a: PlaneRing, near: number[]): number[] {
+  const shares = [0, 1];
+  const ux = b[i2] - b[i];
+  const uy = b[i2 + 1] - b[i + 1];
+  const [x0, x1] = [Math.min(b[i], b[i2]), Math.max(b[i], b[i2])];
+  for (const k of near) {
+    const k2 = k + 2 < a.length ? k + 2 : 0;
+    if (Math.max(a[k], a[k2]) < x0 || Math.min(a[k], a[k2]) > x1) continue;
+    const vx = a[k2] - a[k];
+    const vy = a[k2 + 1] - a[k + 1];
+    const det = ux * vy - uy * vx;
+    if (det === 0) continue;
+    const wx = a[k] - b[i];
+    const wy = a[k + 1] - b[i + 1];
+    const t = (wx * uy - wy * ux) / det;
+    const s = (wx * vy - wy * vx) / det;
+    if (t >= -1e-9 && t <= 1 + 1e-9 && s > 0 && s < 1) shares.push(s);
+  }
+  return shares.sort((p, q) => p - q);
+}
+
+/** Whether any part of the line of `inner` lies deeper than `touch` inside `outer`: corners, and middles between meetings. */
 function holdsDeep(outer: PlaneRing, inner: PlaneRing, touch: number): boolean {
   const box = boxOf(outer);
-  for (let i = 0; i < inner.length; i += 2) {
+  const within = (x: number, y: number) => x > box[0] && x < box[2] && y > box[1] && y < box[3];
+  const near = sidesNear(outer, boxOf(inner), 0);
+  for (const i of sidesNear(inner, box, 0)) {
+    const i2 = i + 2 < inner.length ? i + 2 : 0;
     const [x, y] = [inner[i], inner[i + 1]];
-    if (x > box[0] && x < box[2] && y > box[1] && y < box[3] && deepInside(outer, x, y, touch)) return true;
+    if (within(x, y) && deepInside(outer, x, y, touch)) return true;
+    const shares = meetingShares(inner, i, i2, outer, near);
+    for (let k = 0; k + 1 < shares.length; k++) {
+      const s = (shares[k] + shares[k + 1]) / 2;
+      const [px, py] = [x + s * (inner[i2] - x), y + s * (inner[i2 + 1] - y)];
+      if (within(px, py) && deepInside(outer, px, py, touch)) return true;
+    }
   }
   return innerPoints(inner).some(([x, y]) => deepInside(outer, x, y, touch));
 }
@@ -89,7 +120,8 @@ export function ringGap(
   const pb = placedPoints(b.ring, b.x, b.y);
   const [ba, bb] = [boxOf(pa), boxOf(pb)];
   if (ba[0] - reach > bb[2] || bb[0] - reach > ba[2] || ba[1] - reach > bb[3] || bb[1] - reach > ba[3]) return Infinity;
-  if (holdsDeep(pa, pb, touch) || holdsDeep(pb, pa, touch)) return -1;
+  const apart = ba[2] - bb[0] <= touch || bb[2] - ba[0] <= touch || ba[3] - bb[1] <= touch || bb[3] - ba[1] <= touch;
+  if (!apart && (holdsDeep(pa, pb, touch) || holdsDeep(pb, pa, touch))) return -1;
   const sa = sidesNear(pa, bb, reach);
   const sb = sidesNear(pb, ba, reach);
   let best = reach * reach;

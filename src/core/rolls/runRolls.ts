@@ -19,7 +19,16 @@ const COLUMNS_A_WIDTH = 128;
 const COLUMNS_A_PIECE = 48;
 
 function bedSize(roll: StockRoll, gap: number, dx: number, slack: number): BedSize {
-  return { start: roll.start, length: roll.length, width: usableWidth(roll), gap, dx, slack, flaws: roll.flaws };
+  return {
+    start: roll.start,
+    length: roll.length,
+    width: usableWidth(roll),
+    gap,
+    dx,
+    snap: 0,
+    slack,
+    flaws: roll.flaws,
+  };
 }
 
 function buildTask(pieces: NestPiece[], offers: OfferedRoll[], pins: LaidShape[][], options: NestDecision): NestTask {

@@ -1,7 +1,15 @@
 // Tries orders of the pieces and keeps the layout of least cloth: a few sorted orders, then seeded changes to the best one.
-// Stops by steps or when told to; same seed, same layout. Source: own (hill climbing over orders, ties accepted).
+// Stops by steps or when told to; same seed, same layout. Source: late acceptance (E. K. Burke and Y. Bykov, The late acceptance hill-climbing heuristic, 2017; from memory), on orders.
 import { buildRandom, drawInteger, type Random } from "../numeric/random.ts";
-import { compactInPlace, isLess, type Layout, layPieces, type NestTask, type TurnRule } from "./layPieces.ts";
+import {
+  compactInPlace,
+  isLess,
+  type Layout,
+  type LayoutCost,
+  layPieces,
+  type NestTask,
+  type TurnRule,
+} from "./layPieces.ts";
 
 export interface SearchLimits {
   /** Layouts built. */
@@ -28,47 +36,63 @@ function sortedOrders(task: NestTask): number[][] {
   return keys.map((key) => [...task.loose].sort((a, b) => key(b) - key(a) || a - b));
 }
 
-/** A changed copy: two places swapped, one piece moved, or a run turned round. */
-function changeOrder(order: number[], random: Random, kind: (p: number) => string): number[] {
-  const next = [...order];
-  const n = next.length;
+/** What a layout is built from. */
+interface Genome {
+  order: number[];
+  rule: TurnRule;
+}
+
+/** A changed copy: places swapped or a piece moved, near or far, never two alike; now and then another rule. */
+function changeGenome(genome: Genome, random: Random, kind: (p: number) => string): Genome {
+  const order = [...genome.order];
+  const n = order.length;
   for (let tries = 0; tries < 20; tries++) {
     const i = drawInteger(random, n);
     const near = random() < 0.5;
     const j = near ? Math.min(n - 1, i + 1 + drawInteger(random, Math.min(8, n))) : drawInteger(random, n);
-    if (i === j || kind(next[i]) === kind(next[j])) continue;
-    if (random() < 0.6) [next[i], next[j]] = [next[j], next[i]];
-    else next.splice(j, 0, ...next.splice(i, 1));
+    if (i === j || kind(order[i]) === kind(order[j])) continue;
+    if (random() < 0.6) [order[i], order[j]] = [order[j], order[i]];
+    else order.splice(j, 0, ...order.splice(i, 1));
     if (random() < 0.7) break;
   }
-  return next;
+  return { order, rule: random() < 0.05 ? RULES[drawInteger(random, RULES.length)] : genome.rule };
+}
+
+const worse = (a: LayoutCost, b: LayoutCost) => (isLess(a, b) ? b : a);
+
+/** How many steps back a changed order is compared with: patience to leave a dead end, none where steps are few. */
+function memoryOf(steps: number): number {
+  return Math.max(1, Math.min(40, Math.floor(steps / 25)));
 }
 
 /** The best layout found, compacted, with how many layouts were built. Null only where it was stopped before the first. */
 export function searchOrders(task: NestTask, limits: SearchLimits): { layout: Layout; steps: number } | null {
   const random = buildRandom(limits.seed);
   const kind = (p: number) => task.shapes[p][0].key;
+  const starts = sortedOrders(task).flatMap((order) => RULES.map((rule): Genome => ({ order, rule })));
   let best: Layout | null = null;
-  let bestOrder: number[] = [];
-  let bestRule: TurnRule = RULES[0];
-  const sorted = sortedOrders(task);
-  const starts = sorted.flatMap((order) => RULES.map((rule) => ({ order, rule })));
+  let bestOf: Genome = starts[0];
+  let now: { cost: LayoutCost; genome: Genome } | null = null;
+  let memory: LayoutCost[] = [];
   let steps = 0;
   for (; steps < Math.max(1, limits.steps); steps++) {
-    if (limits.stop()) break;
-    const { order, rule }: { order: number[]; rule: TurnRule } =
-      steps < starts.length
-        ? starts[steps]
-        : {
-            order: task.loose.length > 1 ? changeOrder(bestOrder, random, kind) : bestOrder,
-            rule: random() < 0.1 ? RULES[drawInteger(random, RULES.length)] : bestRule,
-          };
-    if (steps >= starts.length && task.loose.length < 2) break;
-    const layout = layPieces(task, order, rule, best?.cost ?? null);
+    if (limits.stop() || (steps >= starts.length && task.loose.length < 2)) break;
+    const sorting = steps < starts.length;
+    if (!sorting && !now && best) {
+      now = { cost: best.cost, genome: bestOf };
+      memory = new Array(memoryOf(limits.steps)).fill(best.cost);
+    }
+    const genome: Genome = sorting || !now ? starts[steps % starts.length] : changeGenome(now.genome, random, kind);
+    const slot = steps % Math.max(1, memory.length);
+    const toBeat: LayoutCost | null = now ? worse(memory[slot], now.cost) : (best?.cost ?? null);
+    const layout = layPieces(task, genome.order, genome.rule, toBeat);
     if (layout && (!best || !isLess(best.cost, layout.cost))) {
       best = layout;
-      bestOrder = order;
-      bestRule = rule;
+      bestOf = genome;
+    }
+    if (now) {
+      if (layout && toBeat && !isLess(toBeat, layout.cost)) now = { cost: layout.cost, genome };
+      memory[slot] = now.cost;
     }
     limits.onProgress?.((steps + 1) / limits.steps, `nest ${steps + 1} of ${limits.steps}`);
   }
