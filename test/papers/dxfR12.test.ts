@@ -155,13 +155,13 @@ describe("a roll as DXF R12", () => {
 
   test("text beyond ASCII is written as code points, commands of the text language are broken up", () => {
     const drawing = emptyDrawing("t");
-    for (const text of ["Ø→", "%%c^J", "a\u0000b\nc", "😀"]) {
+    for (const text of ["Ø→", "%%c^J", "a\u0000b\nc", "😀", "Ø".repeat(60)]) {
       addLabelInPlace(drawing, { layer: "text", at: [0, 0], height: 10, rotation: 0, anchor: "start", text });
     }
     const texts = readTags(writeDxfR12(drawing))
       .filter((t) => t.code === 1)
       .map((t) => t.value);
-    expect(texts.slice(1)).toEqual(["\\U+00D8\\U+2192", "% %c^ J", "a b c", "?"]);
+    expect(texts.slice(1)).toEqual(["\\U+00D8\\U+2192", "% %c^ J", "a b c", "?", "\\U+00D8".repeat(35)]);
   });
 
   test("a point that is not finite and an outline without area are refused by name", () => {

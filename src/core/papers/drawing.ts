@@ -52,8 +52,8 @@ export function emptyDrawing(name: string): Drawing {
 const STEP = 1000;
 
 function rounded(point: readonly number[], where: string): Vec2 {
-  const x = Math.round((point[0] as number) * STEP) / STEP;
-  const y = Math.round((point[1] as number) * STEP) / STEP;
+  const x = Math.round(point[0] * STEP) / STEP;
+  const y = Math.round(point[1] * STEP) / STEP;
   if (!Number.isFinite(x) || !Number.isFinite(y)) {
     throw new PlanError(
       "papers-number",
@@ -119,12 +119,12 @@ export function withoutRepeats(drawing: Drawing): Drawing {
 }
 
 function freshRuns(stroke: Stroke, drawn: Set<string>): Stroke[] {
-  const ring = stroke.closed ? [...stroke.points, stroke.points[0] as Vec2] : stroke.points;
+  const ring = stroke.closed ? [...stroke.points, stroke.points[0]] : stroke.points;
   const runs: Vec2[][] = [];
   let run: Vec2[] = [];
   for (let i = 0; i + 1 < ring.length; i++) {
-    const a = ring[i] as Vec2;
-    const b = ring[i + 1] as Vec2;
+    const a = ring[i];
+    const b = ring[i + 1];
     const key = pieceKey(a, b);
     if (drawn.has(key)) {
       if (run.length > 1) runs.push(run);

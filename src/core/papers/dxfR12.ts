@@ -6,6 +6,8 @@ import { type Drawing, extents, LAYER_NAMES, LAYERS, type Label, type Layer, typ
 
 const DECIMALS = 3;
 const STYLE = "STANDARD";
+/** R12 readers take 255 characters a line. */
+const LONGEST_TEXT = 250;
 /** Colour numbers of the standard index: 8 grey, 5 blue, 3 green, 1 red. */
 const COLOURS: Readonly<Record<Layer, number>> = { bed: 8, mark: 5, text: 3, cut: 1 };
 
@@ -26,9 +28,11 @@ function tagPoint(tags: Tags, code: number, x: number, y: number): void {
 function dxfText(text: string): string {
   let out = "";
   for (const c of text.replace(/%%/g, "% %").replace(/\^/g, "^ ")) {
-    const code = c.codePointAt(0) as number;
-    if (code >= 0x20 && code < 0x7f) out += c;
-    else out += code > 0xffff ? "?" : `\\U+${code.toString(16).toUpperCase().padStart(4, "0")}`;
+    const code = c.codePointAt(0) ?? 0;
+    const ascii = code >= 0x20 && code < 0x7f;
+    const next = ascii ? c : code > 0xffff ? "?" : `\\U+${code.toString(16).toUpperCase().padStart(4, "0")}`;
+    if (out.length + next.length > LONGEST_TEXT) break;
+    out += next;
   }
   return out;
 }

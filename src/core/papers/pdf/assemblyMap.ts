@@ -115,7 +115,6 @@ function seamRows(facts: Facts): string[][] {
     const sides = [seamSide(facts, s, 0), seamSide(facts, s, 1)];
     const [top, below] = sides[0].panel === s.upper ? sides : [sides[1], sides[0]];
     const mm = (v: number | null, digits: number) => (v === null ? "" : decimal(v, digits));
-    const both = top.flat !== null && below.flat !== null;
     return [
       s.id,
       s.weld,
@@ -124,7 +123,7 @@ function seamRows(facts: Facts): string[][] {
       decimal(s.length, 3),
       mm(top.flat, 1),
       mm(below.flat, 1),
-      both ? decimal(Math.abs((top.flat as number) - (below.flat as number)), 2) : "",
+      top.flat === null || below.flat === null ? "" : decimal(Math.abs(top.flat - below.flat), 2),
       `${mm(top.allowance, 0)} / ${mm(below.allowance, 0)}`,
       s.cable ?? "",
       "",
