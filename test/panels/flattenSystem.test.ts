@@ -39,7 +39,7 @@ function saddle(): { problem: FlattenProblem; x: Float64Array<ArrayBuffer> } {
 
 test("the gradient is that of the merit, by central differences", () => {
   const { problem, x } = saddle();
-  const system = buildFlattenSystem(problem, 700);
+  const system = { ...buildFlattenSystem(problem), stiff: 700 };
   system.multiplier.set([1.5, -2, 0.7]);
   assembleFlattenInPlace(system, x);
   const h = 1e-6;
@@ -58,11 +58,11 @@ test("the gradient is that of the merit, by central differences", () => {
 test("where the strain is as intended, the Gauss–Newton matrix is the second derivative of the merit", () => {
   const { problem, x } = saddle();
   // Intended strain = strain at x, and the conditions met at x: the residual is nought, so no second-order term is left out.
-  const probe = buildFlattenSystem(problem, 700);
+  const probe = { ...buildFlattenSystem(problem), stiff: 700 };
   const flat = { ...problem, target: strainsAt(problem, x), tie: problem.tie.slice(4), tieLength: new Float64Array(1) };
   flat.tieLength[0] = measureGaps({ ...flat, axes: [] }, x)[0];
   flat.axes = [];
-  const system = buildFlattenSystem(flat, 700);
+  const system = { ...buildFlattenSystem(flat), stiff: 700 };
   assembleFlattenInPlace(system, x);
   const values = system.values.slice();
   expect(measureFlattenState(system, x).merit).toBeLessThan(1e-20 * measureFlattenState(probe, x).merit);
@@ -110,7 +110,7 @@ function strainsAt(problem: FlattenProblem, xy: Float64Array<ArrayBuffer>): Floa
 
 test("a held vertex has no gradient and leaves the matrix positive", () => {
   const { problem, x } = saddle();
-  const system = buildFlattenSystem({ ...problem, pin: [7] }, 700);
+  const system = { ...buildFlattenSystem({ ...problem, pin: [7] }), stiff: 700 };
   assembleFlattenInPlace(system, x);
   expect(system.gradient[14]).toBe(0);
   expect(system.gradient[15]).toBe(0);

@@ -33,13 +33,16 @@ export interface FlattenTolerance {
 }
 
 /** Far below what a table cuts and a patterner reads. */
-export const FLATTEN_TOLERANCE: FlattenTolerance = { energy: 1e-10, strain: 1e-11, gap: 1e-9, steps: 40 };
+export const FLATTEN_TOLERANCE: FlattenTolerance = { energy: 1e-10, strain: 1e-11, gap: 1e-8, steps: 40 };
 
 /** A step that promises less than this share of the energy is no caution when the steps run out (strips that want to buckle creep on). */
 const SETTLED = 1e-6;
 
 /** Stiffness of the conditions against the cloth's warp stiffness; multipliers take what it leaves. */
 const STIFF = 1e5;
+/** Soft conditions where stiff ones let a far start only move in part steps, until a step promises less than this share. */
+const SOFT = 10;
+const SOFT_ENERGY = 0.02;
 
 /** Where the iteration ended. */
 export interface FlattenResult {
@@ -62,50 +65,96 @@ export function solveFlatten(
   tolerance: FlattenTolerance,
   onStep: (step: number) => void,
 ): FlattenResult {
-  const system = buildFlattenSystem(problem, STIFF * problem.stiffness.ww);
-  const symbolic = analyseSymmetric(system.where.pattern);
-  let factor: NumericFactor | null = null;
-  let x = start.slice();
-  let state = measureFlattenState(system, x);
-  if (!state.upright) refuseStart(problem, x);
+  const system = buildFlattenSystem(problem);
+  const walk: Walk = {
+    system,
+    symbolic: analyseSymmetric(system.where.pattern),
+    factor: null,
+    x: start.slice(),
+    state: measureFlattenState(system, start),
+    damping: 0,
+    steps: 0,
+  };
+  if (!walk.state.upright) refuseStart(problem, start);
   let total = 0;
   for (const a of problem.area) total += a;
   const floor = 0.5 * problem.stiffness.ww * total * tolerance.strain ** 2;
-  let damping = 0;
+  const soft = { ...tolerance, energy: Math.max(SOFT_ENERGY, tolerance.energy), gap: Number.POSITIVE_INFINITY, floor };
+  const stiff = { ...tolerance, floor };
+  let end = walkInPlace(walk, STIFF, { ...stiff, partSteps: false }, onStep);
+  if (end === "part step") {
+    walkInPlace(walk, SOFT, { ...soft, partSteps: true }, onStep);
+    end = walkInPlace(walk, STIFF, { ...stiff, partSteps: true }, onStep);
+  }
+  const converged = end === "settled";
+  const { x, state, steps } = walk;
+  return { x, energy: state.energy, gap: state.gap, steps, converged };
+}
+
+/** Where the iteration stands. */
+interface Walk {
+  system: FlattenSystem;
+  symbolic: SymbolicFactor;
+  factor: NumericFactor | null;
+  x: Float64Array<ArrayBuffer>;
+  state: FlattenState;
+  damping: number;
+  steps: number;
+}
+
+/**
+ * Gauss–Newton steps with conditions of one stiffness until the tolerance is met ("settled") or steps or damping run out ("spent");
+ * or until a whole step does not hold, where part steps are not allowed.
+ */
+function walkInPlace(
+  walk: Walk,
+  stiff: number,
+  until: FlattenTolerance & { floor: number; partSteps: boolean },
+  onStep: (step: number) => void,
+): "settled" | "spent" | "part step" {
+  const { system } = walk;
+  const { ww } = system.problem.stiffness;
+  system.stiff = stiff * ww;
+  walk.state = measureFlattenState(system, walk.x);
   let settled = false;
-  for (let step = 1; step <= tolerance.steps; step++) {
-    onStep(step);
-    assembleFlattenInPlace(system, x);
-    addDamping(system, damping * problem.stiffness.ww);
-    factor = factorAgain(symbolic, factor, system.values);
-    if (factor === null || !factor.ready) {
-      damping = damping === 0 ? FIRST_DAMPING : 100 * damping;
-      if (damping > LAST_DAMPING) break;
-      continue;
+  const brake = () => {
+    settled = false;
+    walk.damping = walk.damping === 0 ? FIRST_DAMPING : 100 * walk.damping;
+    return walk.damping <= LAST_DAMPING;
+  };
+  while (walk.steps < until.steps) {
+    onStep(++walk.steps);
+    assembleFlattenInPlace(system, walk.x);
+    addDamping(system, walk.damping * ww);
+    walk.factor = factorAgain(walk.symbolic, walk.factor, system.values);
+    if (walk.factor === null || !walk.factor.ready) {
+      if (brake()) continue;
+      break;
     }
     const move = system.gradient.map((g) => -g);
-    solveInPlace(factor, move);
+    solveInPlace(walk.factor, move);
     let promise = 0;
     for (let i = 0; i < move.length; i++) promise -= 0.5 * move[i] * system.gradient[i];
-    settled = promise <= SETTLED * state.energy + floor && state.gap <= tolerance.gap;
-    const small = promise <= tolerance.energy * state.energy + floor;
-    const next = small ? tryStep(system, x, move, 1) : searchLine(system, x, move, state.merit - 2e-4 * promise);
+    const { merit, energy, gap } = walk.state;
+    settled = promise <= SETTLED * energy + until.floor && gap <= until.gap;
+    const small = promise <= until.energy * energy + until.floor;
+    const next = small ? tryStep(system, walk.x, move, 1) : searchLine(system, walk.x, move, merit - 2e-4 * promise);
+    if (!until.partSteps && (next === null || next.share < 1)) return "part step";
     if (next === null) {
-      damping = damping === 0 ? FIRST_DAMPING : 100 * damping;
-      settled = false;
-      if (damping > LAST_DAMPING) break;
-      continue;
+      if (brake()) continue;
+      break;
     }
-    ({ x, state } = next);
-    const free = damping === 0;
-    damping = damping <= FIRST_DAMPING ? 0 : damping / 100;
+    walk.x = next.x;
+    walk.state = next.state;
+    const free = walk.damping === 0;
+    walk.damping = walk.damping <= FIRST_DAMPING ? 0 : walk.damping / 100;
     if (!small || !free) continue;
-    if (state.gap <= tolerance.gap) return { x, energy: state.energy, gap: state.gap, steps: step, converged: true };
-    const gaps = measureGaps(problem, x);
+    if (walk.state.gap <= until.gap) return "settled";
+    const gaps = measureGaps(system.problem, walk.x);
     for (let i = 0; i < gaps.length; i++) system.multiplier[i] += system.stiff * gaps[i];
-    state = measureFlattenState(system, x);
+    walk.state = measureFlattenState(system, walk.x);
   }
-  return { x, energy: state.energy, gap: state.gap, steps: tolerance.steps, converged: settled };
+  return settled ? "settled" : "spent";
 }
 
 /** The factor of these values; null, or not ready, where they are too badly conditioned: more damping is due. */
@@ -131,6 +180,7 @@ const FIRST_DAMPING = 1e-4;
 const LAST_DAMPING = 1e6;
 
 interface Trial {
+  share: number;
   x: Float64Array<ArrayBuffer>;
   state: FlattenState;
 }
@@ -144,7 +194,7 @@ function tryStep(
   const next = x.slice();
   for (let i = 0; i < next.length; i++) next[i] += share * move[i];
   const state = measureFlattenState(system, next);
-  return state.upright ? { x: next, state } : null;
+  return state.upright ? { share, x: next, state } : null;
 }
 
 /** The first of 1, ½, ¼ … of the step that keeps every triangle upright and brings the merit down; null where none does. */

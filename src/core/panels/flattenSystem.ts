@@ -16,7 +16,7 @@ export interface FlattenSystem {
   gradient: Float64Array<ArrayBuffer>;
   /** Multiplier of each condition, kN. @shape nTies + nAxes */
   multiplier: Float64Array<ArrayBuffer>;
-  /** Stiffness of the conditions, kN/m. */
+  /** Stiffness of the conditions, kN/m; set by who iterates. */
   stiff: number;
 }
 
@@ -28,8 +28,8 @@ export interface FlattenState {
   upright: boolean;
 }
 
-/** A system ready to be assembled; stiff in kN/m. */
-export function buildFlattenSystem(problem: FlattenProblem, stiff: number): FlattenSystem {
+/** A system ready to be assembled, its conditions not yet stiff. */
+export function buildFlattenSystem(problem: FlattenProblem): FlattenSystem {
   const { tri, tie, axes, nV, pin } = problem;
   const nT = tri.length / 3;
   const nTies = tie.length / 4;
@@ -58,7 +58,7 @@ export function buildFlattenSystem(problem: FlattenProblem, stiff: number): Flat
     values: new Float64Array(where.pattern.rowIndex.length),
     gradient: new Float64Array(2 * nV),
     multiplier: new Float64Array(nTies + axes.length),
-    stiff,
+    stiff: 0,
   };
 }
 
