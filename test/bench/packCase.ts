@@ -55,12 +55,9 @@ export function benchPack(
     offers: [{ size, takes: () => true, pins: [] }],
     loose,
     store: new Map(),
-  };
-  const found = searchOrders(task, {
-    steps: Number.MAX_SAFE_INTEGER,
-    seed,
     stop: () => now() - began > 1000 * seconds - 30,
-  });
+  };
+  const found = searchOrders(task, { steps: Number.MAX_SAFE_INTEGER, seed });
   if (!found || found.layout.left.length > 0) throw new Error(`${instance.name}: no layout within ${seconds} s`);
   const [bed] = found.layout.beds;
   const length = bedReach(bed);

@@ -321,8 +321,8 @@ describe("stopping", () => {
   const pieces = Array.from({ length: 6 }, (_, k) => box(`p${k}`, 700 + 90 * k, 500 + 77 * k));
 
   it("hands back the best so far with a note, or nothing where there is none", () => {
-    let asked = 0;
-    const result = runRolls(pieces, [ROLL], OPTIONS, { cancelled: () => ++asked > 3 });
+    let done = 0;
+    const result = runRolls(pieces, [ROLL], OPTIONS, { cancelled: () => done > 2, onProgress: () => done++ });
     expect(result.output[0].placements.length).toBe(6);
     expect(result.findings.map((f) => [f.code, f.level, f.value])).toEqual([["nest-cut-short", "note", 3]]);
     expect(() => runRolls(pieces, [ROLL], OPTIONS, { cancelled: () => true })).toThrow(/before the first layout/);

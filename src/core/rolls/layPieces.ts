@@ -32,6 +32,8 @@ export interface NestTask {
   /** Pieces to be laid (those pinned left out). */
   loose: number[];
   store: ColumnStore;
+  /** Asked before each piece; true gives the layout up. */
+  stop: () => boolean;
 }
 
 /** A layout. */
@@ -94,7 +96,7 @@ export function measureLayout(beds: Bed[], left: number[], areas: number[]): Lay
 
 /**
  * Lays the pieces in this order, each on the first roll that has room, at the least x, then least y.
- * @returns null where the layout grew past the cost to beat
+ * @returns null where the layout grew past the cost to beat, or was told to stop
  */
 export function layPieces(task: NestTask, order: number[], rule: TurnRule, beat: LayoutCost | null): Layout | null {
   const beds = task.offers.map((offer) => {
@@ -105,6 +107,7 @@ export function layPieces(task: NestTask, order: number[], rule: TurnRule, beat:
   const left: number[] = [];
   let leftArea = 0;
   for (const piece of order) {
+    if (task.stop()) return null;
     let laid: LaidShape | null = null;
     for (let b = 0; b < beds.length && !laid; b++) {
       if (!task.offers[b].takes(piece)) continue;

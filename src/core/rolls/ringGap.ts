@@ -1,5 +1,5 @@
 // The exact distance of two placed outlines, 0 where they overlap: the judge of every layout. Own segment code, boxes first.
-import { type PlaneRing, pointSegmentSquared, ringDistance, ringHolds } from "../surface/ring.ts";
+import { type PlaneRing, pointSegmentSquared, ringBox, ringDistance, ringHolds } from "../surface/ring.ts";
 
 /** Corners of a ring at a place. */
 function placedPoints(ring: PlaneRing, x: number, y: number): PlaneRing {
@@ -26,14 +26,8 @@ function sidesNear(r: PlaneRing, box: [number, number, number, number], reach: n
 }
 
 function boxOf(r: PlaneRing): [number, number, number, number] {
-  const box: [number, number, number, number] = [Infinity, Infinity, -Infinity, -Infinity];
-  for (let i = 0; i < r.length; i += 2) {
-    box[0] = Math.min(box[0], r[i]);
-    box[1] = Math.min(box[1], r[i + 1]);
-    box[2] = Math.max(box[2], r[i]);
-    box[3] = Math.max(box[3], r[i + 1]);
-  }
-  return box;
+  const { x0, y0, x1, y1 } = ringBox(r);
+  return [x0, y0, x1, y1];
 }
 
 /** How far points p and q lie on either side of the line a–b: the lesser of the two, 0 where both are on one side. */

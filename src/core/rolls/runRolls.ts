@@ -31,7 +31,12 @@ function bedSize(roll: StockRoll, gap: number, dx: number, slack: number): BedSi
   };
 }
 
-function buildTask(pieces: NestPiece[], offers: OfferedRoll[], pins: LaidShape[][], options: NestDecision): NestTask {
+function buildTask(
+  pieces: NestPiece[],
+  offers: OfferedRoll[],
+  pins: LaidShape[][],
+  options: NestDecision,
+): Omit<NestTask, "stop"> {
   const rotations = options.turn ? [0, 180] : [0];
   const keys = new Map<string, string>();
   const shapes = pieces.map((piece) => {
@@ -100,7 +105,7 @@ function shortage(left: number[], pieces: NestPiece[], task: NestTask, stock: St
     const roll = rolls.reduce((a, b) => (usableWidth(b) > usableWidth(a) ? b : a));
     const { gap, dx, slack } = task.offers[0].size;
     const size = { ...bedSize(roll, gap, dx, slack), length: Infinity, start: 0, flaws: [] };
-    const one = { ...task, offers: [{ size, takes: () => true, pins: [] }] };
+    const one = { ...task, stop: () => false, offers: [{ size, takes: () => true, pins: [] }] };
     const order = [...group].sort((a, b) => task.areas[b] - task.areas[a] || a - b);
     const metres = bedReach((layPieces(one, order, "least x", null) as { beds: Bed[] }).beds[0]) / 1000;
     const names = group.map((p) => pieces[p].id);
@@ -140,15 +145,15 @@ export function runRolls(
   const pins = layPins(fit, offers, options);
   const checks: Check[] = [];
   if (fit.length === 0) return { output: [], findings, checks: [checkComplete([], pieces)] };
-  const task = buildTask(fit, offers, pins, options);
   let told = false;
+  const stop = () => {
+    told = told || (context.cancelled?.() ?? false);
+    return told;
+  };
+  const task = { ...buildTask(fit, offers, pins, options), stop };
   const found = searchOrders(task, {
     steps: options.steps,
     seed: options.seed,
-    stop: () => {
-      told = told || (context.cancelled?.() ?? false);
-      return told;
-    },
     ...(context.onProgress ? { onProgress: context.onProgress } : {}),
   });
   if (!found) throw new PlanError("cancelled", "Nesting was stopped before the first layout was built.", "rolls");

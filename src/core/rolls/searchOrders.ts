@@ -15,8 +15,6 @@ export interface SearchLimits {
   /** Layouts built. */
   steps: number;
   seed: number;
-  /** True: stop with the best layout so far. */
-  stop: () => boolean;
   onProgress?: (share: number, words: string) => void;
 }
 
@@ -65,7 +63,7 @@ function memoryOf(steps: number): number {
   return Math.max(1, Math.min(40, Math.floor(steps / 25)));
 }
 
-/** The best layout found, compacted, with how many layouts were built. Null only where it was stopped before the first. */
+/** The best layout found, compacted, with how many layouts were built. Null only where it was stopped within the first. */
 export function searchOrders(task: NestTask, limits: SearchLimits): { layout: Layout; steps: number } | null {
   const random = buildRandom(limits.seed);
   const kind = (p: number) => task.shapes[p][0].key;
@@ -76,7 +74,7 @@ export function searchOrders(task: NestTask, limits: SearchLimits): { layout: La
   let memory: LayoutCost[] = [];
   let steps = 0;
   for (; steps < Math.max(1, limits.steps); steps++) {
-    if (limits.stop() || (steps >= starts.length && task.loose.length < 2)) break;
+    if (task.stop() || (steps >= starts.length && task.loose.length < 2)) break;
     const sorting = steps < starts.length;
     if (!sorting && !now && best) {
       now = { cost: best.cost, genome: bestOf };
