@@ -1,7 +1,8 @@
 // Dense kernels on the panels of a supernodal factor. A panel keeps the w columns of a supernode as blocks of three rows,
 // column by column: entry (row 3·B + lane, column k) at panel + 3·(B·w + k) + lane. The w rows of the triangle come first,
 // padded to whole blocks, then the rows below it, padded likewise; padding is zero. Diagonals hold their reciprocals.
-// All products are 3 × 3 blocks of dots with nine running sums: what fits the registers of a scalar engine.
+// All products are 3 × 3 blocks of dots with nine running sums: what fits the registers of a scalar engine. Places in the inner
+// loops are written (p + 1) | 0: told that they wrap, the engine leaves out a check for overflow (a twentieth of the time).
 // Source: left-looking blocked Cholesky, G. H. Golub, C. F. Van Loan, Matrix Computations, section 4.2; block size by measurement.
 
 type Store = Float64Array<ArrayBuffer>;
@@ -33,10 +34,10 @@ export function factorTriangleInPlace(x: Store, panel: number, w: number, floor:
     let d11 = two ? x[pi + 3 * i0 + 4] : 0;
     let d21 = two ? x[pi + 3 * i0 + 5] : 0;
     let d22 = three ? x[pi + 3 * i0 + 8] : 0;
-    for (let p = pi, end = pi + 3 * i0; p < end; p += 3) {
+    for (let p = pi, end = pi + 3 * i0; p < end; p = (p + 3) | 0) {
       const a = x[p];
-      const b = x[p + 1];
-      const c = x[p + 2];
+      const b = x[(p + 1) | 0];
+      const c = x[(p + 2) | 0];
       d00 -= a * a;
       d10 -= b * a;
       d20 -= c * a;
@@ -110,23 +111,23 @@ function solveBlockRowInPlace(x: Store, panel: number, w: number, pi: number, co
       s22 = x[at + 8];
     }
     let q = pj;
-    for (let p = pi; p < at; p += 3) {
+    for (let p = pi; p < at; p = (p + 3) | 0) {
       const a0 = x[p];
-      const a1 = x[p + 1];
-      const a2 = x[p + 2];
+      const a1 = x[(p + 1) | 0];
+      const a2 = x[(p + 2) | 0];
       const b0 = x[q];
       s00 -= a0 * b0;
       s10 -= a1 * b0;
       s20 -= a2 * b0;
-      const b1 = x[q + 1];
+      const b1 = x[(q + 1) | 0];
       s01 -= a0 * b1;
       s11 -= a1 * b1;
       s21 -= a2 * b1;
-      const b2 = x[q + 2];
+      const b2 = x[(q + 2) | 0];
       s02 -= a0 * b2;
       s12 -= a1 * b2;
       s22 -= a2 * b2;
-      q += 3;
+      q = (q + 3) | 0;
     }
     const r0 = x[q];
     s00 *= r0;
@@ -136,8 +137,8 @@ function solveBlockRowInPlace(x: Store, panel: number, w: number, pi: number, co
     x[at + 1] = s10;
     x[at + 2] = s20;
     if (!two) return;
-    const l10 = x[q + 1];
-    const r1 = x[q + 4];
+    const l10 = x[(q + 1) | 0];
+    const r1 = x[(q + 4) | 0];
     s01 = (s01 - s00 * l10) * r1;
     s11 = (s11 - s10 * l10) * r1;
     s21 = (s21 - s20 * l10) * r1;
@@ -145,9 +146,9 @@ function solveBlockRowInPlace(x: Store, panel: number, w: number, pi: number, co
     x[at + 4] = s11;
     x[at + 5] = s21;
     if (!three) return;
-    const l20 = x[q + 2];
-    const l21 = x[q + 5];
-    const r2 = x[q + 8];
+    const l20 = x[(q + 2) | 0];
+    const l21 = x[(q + 5) | 0];
+    const r2 = x[(q + 8) | 0];
     x[at + 6] = (s02 - s00 * l20 - s01 * l21) * r2;
     x[at + 7] = (s12 - s10 * l20 - s11 * l21) * r2;
     x[at + 8] = (s22 - s20 * l20 - s21 * l21) * r2;

@@ -55,23 +55,23 @@ export function updateParentInPlace(x: Store, target: UpdateTarget): void {
       let s12 = 0;
       let s22 = 0;
       let q = pj;
-      for (let p = pi, end = pi + stride; p < end; p += 3) {
+      for (let p = pi, end = pi + stride; p < end; p = (p + 3) | 0) {
         const a0 = x[p];
-        const a1 = x[p + 1];
-        const a2 = x[p + 2];
+        const a1 = x[(p + 1) | 0];
+        const a2 = x[(p + 2) | 0];
         const b0 = x[q];
         s00 += a0 * b0;
         s10 += a1 * b0;
         s20 += a2 * b0;
-        const b1 = x[q + 1];
+        const b1 = x[(q + 1) | 0];
         s01 += a0 * b1;
         s11 += a1 * b1;
         s21 += a2 * b1;
-        const b2 = x[q + 2];
+        const b2 = x[(q + 2) | 0];
         s02 += a0 * b2;
         s12 += a1 * b2;
         s22 += a2 * b2;
-        q += 3;
+        q = (q + 3) | 0;
       }
       const whole = j0 < i0;
       const inPanel = j0 + 3 <= split;
