@@ -13,8 +13,8 @@ import { embedConvex, relaxWithBarrier } from "./unfoldSafe.ts";
 const EXACT_STRAIN = 1e-10;
 
 /** As-rigid-as-possible rounds at most, and the change of energy (share) that ends them. */
-const MOST_ROUNDS = 60;
-const LEAST_CHANGE = 1e-4;
+const MOST_ROUNDS = 8;
+const LEAST_CHANGE = 1e-3;
 
 /** A triangle whose flat area is below this share of its area on the form counts as folded. */
 const LEAST_AREA_SHARE = 0.05;
@@ -246,12 +246,12 @@ export function unfoldSurface(
   const first = findMiddle(adjacency);
   const hinged = layHingeByHinge(tri, adjacency, unfolding, first);
   if (measureStrain(tri, unfolding, hinged) <= EXACT_STRAIN) return hinged;
-  const rigid = relaxRigid(tri, unfolding, hinged, tri[3 * first]);
-  if (measureLeastAreaShare(tri, unfolding, rigid) > LEAST_AREA_SHARE) return rigid;
-  const safe = relaxWithBarrier(tri, unfolding, embedConvex(surface, adjacency, loops[0]));
-  const settled = relaxRigid(tri, unfolding, safe, tri[3 * first]);
-  if (measureLeastAreaShare(tri, unfolding, settled) > LEAST_AREA_SHARE) return settled;
-  if (measureLeastAreaShare(tri, unfolding, safe) > 0) return safe;
+  // The rounds are quick but slow to straighten a long strip; the barrier's Newton steps do that.
+  let start = relaxRigid(tri, unfolding, hinged, tri[3 * first]);
+  if (!(measureLeastAreaShare(tri, unfolding, start) > LEAST_AREA_SHARE))
+    start = embedConvex(surface, adjacency, loops[0]);
+  const xy = relaxWithBarrier(tri, unfolding, start);
+  if (measureLeastAreaShare(tri, unfolding, xy) > 0) return xy;
   throw new PlanError(
     "panel-fold",
     "no flat layout of the strip without a triangle turned over was found: check it for needle triangles, or lay the seams closer",

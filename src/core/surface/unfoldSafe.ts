@@ -9,9 +9,10 @@ import { measureArea, measureDistance, vertexAt } from "./measures.ts";
 import type { Surface } from "./surface.ts";
 import type { Unfolding } from "./unfolding.ts";
 
-/** Newton steps at most, and the relative fall of energy that ends them. */
+/** Newton steps at most, the relative fall of energy that ends them, and the energy for each area that counts as none. */
 const MOST_STEPS = 100;
-const LEAST_FALL = 1e-5;
+const LEAST_FALL = 1e-2;
+const NO_ENERGY = 1e-14;
 
 /**
  * Embedding with the outline on an ellipse of the strip's area and, about, its slenderness; every inner vertex is the mean of its
@@ -87,7 +88,7 @@ function mapTriangle(tri: Uint32Array, unfolding: Unfolding, xy: Float64Array, t
   }
 }
 
-/** Symmetric Dirichlet energy ∑ A (|F|² + |F⁻¹|²), infinite where a triangle is turned over. */
+/** Symmetric Dirichlet energy ∑ A (|F|² + |F⁻¹|² - 4), none without strain, infinite where a triangle is turned over. */
 function measureEnergy(tri: Uint32Array, unfolding: Unfolding, xy: Float64Array): number {
   const F = new Float64Array(4);
   let sum = 0;
@@ -96,7 +97,7 @@ function measureEnergy(tri: Uint32Array, unfolding: Unfolding, xy: Float64Array)
     const det = F[0] * F[3] - F[2] * F[1];
     if (!(det > 0)) return Number.POSITIVE_INFINITY;
     const square = F[0] * F[0] + F[1] * F[1] + F[2] * F[2] + F[3] * F[3];
-    sum += ((unfolding.length[3 * t] * unfolding.apexY[3 * t]) / 2) * (square + square / (det * det));
+    sum += ((unfolding.length[3 * t] * unfolding.apexY[3 * t]) / 2) * (square + square / (det * det) - 4);
   }
   return sum;
 }
@@ -240,6 +241,8 @@ export function relaxWithBarrier(
   const part = { gradient: new Float64Array(6), hessian: new Float64Array(21) };
   let factor: ReturnType<typeof factorSymmetric> | null = null;
   let energy = measureEnergy(tri, unfolding, xy);
+  let none = 0;
+  for (let h = 0; h < tri.length; h += 3) none += NO_ENERGY * unfolding.length[h] * unfolding.apexY[h];
   for (let round = 0; round < MOST_STEPS; round++) {
     values.fill(0);
     side.fill(0);
@@ -273,7 +276,7 @@ export function relaxWithBarrier(
     const fall = energy - after;
     xy = next;
     energy = after;
-    if (fall < LEAST_FALL * energy) break;
+    if (fall < LEAST_FALL * energy || energy < none) break;
   }
   return xy;
 }
