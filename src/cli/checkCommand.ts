@@ -9,7 +9,7 @@ import { measurePlan, writeChecks, writeFindings, writeSummary } from "./summary
 export async function checkCommand(args: string[], around: Surroundings): Promise<number> {
   const { operands, flags } = parseOptions("check", args, { operands: ["JOB"], values: [], flags: ["json", "quiet"] });
   const quiet = flags.has("quiet");
-  const facts = await makeFacts(readInput(operands[0], loadCatalogues()), around, { until: "rolls", quiet });
+  const facts = await makeFacts(readInput(operands[0], loadCatalogues()), around, { quiet });
   const figures = measurePlan(facts);
   const exit = figures.stops > 0 ? 1 : 0;
   if (flags.has("json")) {

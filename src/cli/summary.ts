@@ -21,6 +21,12 @@ export interface PlanFigures {
   rollLength: number | null;
   /** cut area over cloth taken off the rolls */
   utilisation: number | null;
+  cables: number | null;
+  adjusters: number | null;
+  /** Steps of the tensioning, all stages. */
+  steps: number | null;
+  /** Greatest share of its limit any part reaches on the way. */
+  greatestShare: number | null;
   stops: number;
   cautions: number;
   notes: number;
@@ -35,6 +41,7 @@ export function measurePlan(facts: Facts): PlanFigures {
   const { form, seams, panels, rolls, findings, checks } = facts;
   const count = (level: Finding["level"]) => findings.filter((f) => f.level === level).length;
   const rollArea = rolls === undefined ? 0 : sum(rolls.map((r) => r.used * r.width));
+  const moves = facts.tensioning?.stages.flatMap((s) => s.moves);
   const stressErrors = panels?.flatMap((p) => [p.stress.warp.rmsError, p.stress.weft.rmsError]);
   return {
     triangles: form?.triangles.length ?? null,
@@ -50,6 +57,10 @@ export function measurePlan(facts: Facts): PlanFigures {
     rollLength: rolls === undefined ? null : sum(rolls.map((r) => r.used)) / 1000,
     utilisation:
       rolls === undefined || rollArea === 0 ? null : sum(rolls.map((r) => r.utilisation * r.used * r.width)) / rollArea,
+    cables: facts.cables?.length ?? null,
+    adjusters: facts.rig?.adjusters.length ?? null,
+    steps: moves === undefined ? null : new Set(moves.map((m) => m.step)).size,
+    greatestShare: moves === undefined || moves.length === 0 ? null : Math.max(...moves.map((m) => m.greatest.share)),
     stops: count("stop"),
     cautions: count("caution"),
     notes: count("note"),
@@ -80,6 +91,14 @@ export function writeSummary(facts: Facts, figures: PlanFigures): string {
   if (f.rolls !== null) {
     const share = f.utilisation === null ? "" : `, ${(100 * f.utilisation).toFixed(0)} % of it used`;
     lines.push(`  rolls   ${plural(f.rolls, "roll")}, ${f.rollLength?.toFixed(2)} m of cloth${share}`);
+  }
+  if (f.adjusters && f.steps !== null) {
+    const issue = facts.tensioning?.issuable === false ? "; on defaults, not for issue" : "";
+    const share =
+      f.greatestShare === null ? "" : `, greatest force ${(100 * f.greatestShare).toFixed(0)} % of its limit`;
+    lines.push(
+      `  rig     ${plural(f.cables ?? 0, "cable")}, ${plural(f.adjusters, "adjuster")}, ${plural(f.steps, "step")} in ${plural(facts.tensioning?.stages.length ?? 0, "stage")}${share}${issue}`,
+    );
   }
   lines.push(
     `  checks  ${f.checks - f.checksFailed} of ${f.checks} hold; ${plural(f.stops, "stop")}, ${plural(f.cautions, "caution")}, ${plural(f.notes, "note")}`,

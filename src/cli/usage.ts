@@ -1,7 +1,7 @@
 // What the verbs are and how they are called. The texts of `seamstay help`.
 
 /** Stations a plan can stop after. */
-export const UNTIL = ["form", "seams", "panels", "rolls"] as const;
+export const UNTIL = ["form", "seams", "panels", "rolls", "rig"] as const;
 
 /** The verbs in the order a person meets them. */
 export const VERBS: { verb: string; call: string; words: string; more: string[] }[] = [

@@ -27,7 +27,7 @@ describe("usage", () => {
     ["--json takes no value", ["plan", job, "--out", "x", "--json=yes"]],
     ["--out is given twice", ["plan", job, "--out", "x", "--out", "y"]],
     [
-      "--until sewing: no such station; it is one of form, seams, panels, rolls",
+      "--until sewing: no such station; it is one of form, seams, panels, rolls, rig",
       ["plan", job, "--out", "x", "--until", "sewing"],
     ],
     ['plan takes no "bay"; put names with spaces in quotes', ["plan", "my", "bay", "--out", "x"]],
@@ -168,11 +168,11 @@ describe("plan", () => {
 });
 
 describe("check", () => {
-  it("prints checks and every finding, plans to the rolls and writes nothing", async () => {
+  it("prints checks and every finding, plans to the end and writes nothing", async () => {
     const { doors, calls } = buildDoors({ findings: [stopFinding] });
     const { exit, out } = await call(["check", job], doors);
     expect(exit).toBe(1);
-    expect(calls[0][2].until).toBe("rolls");
+    expect(calls[0][2].until).toBeUndefined();
     expect(out).toContain("holds  form: residual: 1e-9 (limit 0.01)");
     expect(out).toContain("NOTE    prestress.warp");
     expect(out.indexOf("STOP")).toBeLessThan(out.indexOf("NOTE"));

@@ -5,6 +5,7 @@ import { join } from "node:path";
 import { build } from "vite";
 import { beforeAll, describe, expect, it } from "vitest";
 import { listStarters } from "../../src/cli/packageFiles.ts";
+import type { Finding } from "../../src/core/problem.ts";
 import { makeScratch, SQUARE } from "./fakePlan.ts";
 
 const dist = join(import.meta.dirname, "../../out/test-dist");
@@ -47,14 +48,22 @@ describe("the built command line", () => {
     const first = seamstay("plan", job, "--out", `a-${name}`, "--json");
     expect(first).toMatchObject({ exit: 0, err: "" });
     const told = JSON.parse(first.out);
-    expect(told.figures).toMatchObject({ stops: 0, cautions: 0, checksFailed: 0 });
+    expect(told.figures).toMatchObject({ stops: 0, checksFailed: 0 });
+    // A pocket along a curved edge wants slits whatever the plan: the only caution a starter may have.
+    const cautions = told.findings.filter((f: Finding) => f.level === "caution" && f.code !== "pocket-curve");
+    expect(cautions).toEqual([]);
     expect(told.figures.panels).toBeGreaterThan(1);
     for (const f of told.files) expect(existsSync(join(scratch, `a-${name}`, f.path)), f.path).toBe(true);
     expect(seamstay("plan", job, "--out", `b-${name}`, "--quiet")).toEqual({ exit: 0, out: "", err: "" });
     expect(hash(join(scratch, `b-${name}`))).toEqual(hash(join(scratch, `a-${name}`)));
     const facts = JSON.parse(readFileSync(join(scratch, `a-${name}`, "facts.json"), "utf8"));
     expect(facts.job.revision).toMatch(/^[0-9A-F]{8}$/);
-    expect(facts.form.residual.normalMax).toBeLessThan(1e-8);
+    const { edges, residual } = facts.form;
+    expect(residual.normalMax).toBeLessThan(name === "market-hall" ? 1e-8 : 1e-6);
+    // The boat shed was made with these forces by a program that knows nothing of the form station.
+    const forces = edges.map((e: { force: number | null }) => e.force);
+    if (name === "boat-shed")
+      expect(forces.map((kN: number) => Math.round(1000 * kN))).toEqual([24000, 21000, 24000, 21000]);
   });
 
   it("stops after the station asked for", () => {

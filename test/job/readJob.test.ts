@@ -80,7 +80,7 @@ describe("the full job", () => {
     const notes = read.findings.filter((f) => f.code === "job-key-without-effect");
     expect(notes.every((f) => f.level === "note")).toBe(true);
     const where = notes.flatMap((f) => f.where);
-    for (const key of ["rig", "survey", "papers.site", "papers.units"]) {
+    for (const key of ["rig.struts[0].pinned", "survey", "papers.site", "papers.units"]) {
       expect(where.filter((w) => w === key)).toEqual([key]);
     }
   });

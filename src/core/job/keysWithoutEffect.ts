@@ -5,12 +5,9 @@ import { writePath } from "./jobProblems.ts";
 
 /** "*" stands for any name or number. `plain`: the value that asks for nothing, so that nothing need be said. */
 const KEYS: { path: string[]; plain?: unknown }[] = [
-  { path: ["edges", "*", "cable"] },
-  { path: ["edges", "*", "prestretched"] },
-  { path: ["anchors", "*", "support"] },
   { path: ["papers", "units"], plain: "metric" },
   { path: ["papers", "site"] },
-  { path: ["rig"] },
+  { path: ["rig", "struts", "*", "pinned"] },
   { path: ["survey"] },
 ];
 

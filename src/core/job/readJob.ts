@@ -125,7 +125,7 @@ function resolveJob(file: JobFile, catalogues: Catalogues, ledger: DefaultLedger
     allowances: resolveAllowances(file, ledger),
     rolls: resolveRolls(file, fabric, ledger),
     nest: resolveNest(file, ledger),
-    rig: resolveRig(file, catalogues),
+    rig: resolveRig(file, catalogues, ledger),
     papers: {
       date: papers.date ?? "",
       drawnBy: papers.drawnBy ?? "",

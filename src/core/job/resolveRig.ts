@@ -2,6 +2,7 @@
 import type { RigJob } from "../records/job.ts";
 import type { Turnbuckle } from "../records/rig.ts";
 import type { Catalogues } from "./catalogues.ts";
+import { type DefaultLedger, noteDefault, takeDefault } from "./jobDefaults.ts";
 import type { JobFile } from "./jobSchema.ts";
 
 /** Values taken where the job says nothing of its rig; all of them keep the schedule from being issued. */
@@ -32,11 +33,20 @@ function readTurnbuckle(id: string, catalogues: Catalogues): Turnbuckle {
 }
 
 /** The rig as the job gives it; names and places are checked against the form later. */
-export function resolveRig(file: JobFile, catalogues: Catalogues): RigJob {
+export function resolveRig(file: JobFile, catalogues: Catalogues, ledger: DefaultLedger): RigJob {
   const rig = file.rig ?? {};
+  const d = RIG_DEFAULTS;
   const cable = catalogues.cables[RIG_DEFAULTS.cable];
   const defaults: string[] = [];
-  if (rig.limit === undefined) defaults.push("rig.limit");
+  if (rig.limit === undefined) {
+    defaults.push("rig.limit");
+    noteDefault(ledger, "rig.limit", d.limit, `${d.limit} of the weakest part, as while building`, "from memory");
+  }
+  if (rig.stages === undefined) {
+    const words = `stages at ${d.stages.map((s) => `${100 * s} %`).join(", ")} of the final forces`;
+    noteDefault(ledger, "rig.stages", null, words);
+  }
+  const { temperature, reading } = rig;
   return {
     adjusters:
       rig.adjusters?.map((a) => ({
@@ -56,10 +66,16 @@ export function resolveRig(file: JobFile, catalogues: Catalogues): RigJob {
       force: s.force ?? null,
       minBreakingForce: s.minBreakingForce ?? null,
     })),
-    stages: rig.stages ?? [...RIG_DEFAULTS.stages],
-    temperature: rig.temperature ?? RIG_DEFAULTS.temperature,
-    limit: rig.limit ?? RIG_DEFAULTS.limit,
-    readingError: rig.reading?.error ?? RIG_DEFAULTS.readingError,
+    stages: rig.stages ?? [...d.stages],
+    temperature: takeDefault<number>(ledger, temperature, d.temperature, "rig.temperature", `${d.temperature} degC`),
+    limit: rig.limit ?? d.limit,
+    readingError: takeDefault<number>(
+      ledger,
+      reading?.error,
+      d.readingError,
+      "rig.reading.error",
+      `readings may be off by ${100 * d.readingError} %`,
+    ),
     defaults,
     defaultCable: { ...cable.cable, status: cable.status },
     defaultTurnbuckle: readTurnbuckle(RIG_DEFAULTS.turnbuckle, catalogues),

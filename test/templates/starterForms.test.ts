@@ -3,11 +3,12 @@ import { describe, expect, it } from "vitest";
 import { readObj } from "../../src/core/form/readObj.ts";
 import { readJob } from "../../src/core/job/readJob.ts";
 import { catalogues, readTemplate } from "../job/catalogueFiles.ts";
-import { type MadeForm, makeSaddle, writeObj } from "./makeForms.ts";
+import { type MadeForm, writeObj } from "./madeForm.ts";
+import { makeSaddle } from "./makeForms.ts";
 import { STARTER_FORMS } from "./starterForms.ts";
 
-/** Forces of a uniform stress 1 by cotangents: a second way, apart from the generator's area gradient. */
-function measureResidual(form: Pick<MadeForm, "xyz" | "tri" | "fixed">): { max: number; normalMax: number } {
+/** Forces of a uniform stress 1 by cotangents, and of the cables by their links: a second way, apart from the generator's energy. */
+function measureResidual(form: MadeForm): { max: number; normalMax: number } {
   const { xyz, tri } = form;
   const force = new Float64Array(xyz.length);
   const size = new Float64Array(xyz.length / 3);
@@ -41,6 +42,23 @@ function measureResidual(form: Pick<MadeForm, "xyz" | "tri" | "fixed">): { max: 
       for (let m = 0; m < 3; m++) force[3 * tri[t + k] + m] += own[k][m];
     }
   }
+  const tangent = new Map<number, number[]>();
+  for (const { name, vertices } of form.lines.filter((l) => l.name in form.pull)) {
+    const unit = (a: number, b: number) => {
+      const d = minus(at(b), at(a));
+      return d.map((x) => x / Math.hypot(...d));
+    };
+    vertices.slice(1, -1).forEach((v, i) => {
+      const [back, on] = [unit(v, vertices[i]), unit(v, vertices[i + 2])];
+      for (let m = 0; m < 3; m++) force[3 * v + m] += form.pull[name] * (back[m] + on[m]);
+      tangent.set(v, unitOf(minus(on, back)));
+    });
+  }
+  // Along a cable the force does not count: the cable slides in its pocket until it is even.
+  for (const [v, t] of tangent) {
+    const part = dot([...force.subarray(3 * v, 3 * v + 3)], t);
+    for (let m = 0; m < 3; m++) force[3 * v + m] -= part * t[m];
+  }
   const held = new Set(form.fixed);
   const free = [...size.keys()].filter((v) => !held.has(v));
   const scale = free.reduce((s, v) => s + size[v], 0) / free.length;
@@ -52,6 +70,10 @@ function measureResidual(form: Pick<MadeForm, "xyz" | "tri" | "fixed">): { max: 
     max: Math.max(...free.map((v) => Math.hypot(...force.subarray(3 * v, 3 * v + 3)))) / scale,
     normalMax: Math.max(...free.map(along)) / scale,
   };
+}
+
+function unitOf(d: number[]): number[] {
+  return d.map((x) => x / Math.hypot(...d));
 }
 
 describe("the generator", () => {
@@ -102,10 +124,10 @@ describe.each(STARTER_FORMS)("starter $name", ({ name, head, make }) => {
     expect(read.points.flatMap((p) => p.vertices).sort((a, b) => a - b)).toEqual(made.fixed);
   });
 
-  it("is in balance as written: along the normal to 1e-8, within the surface to 1e-3", () => {
+  it("is in balance as written: along the normal to 1e-8 (1e-6 beside cables), within the surface to 1e-3", () => {
     const { xyz } = readObj(readFileSync(file, "utf8"));
     const residual = measureResidual({ ...made, xyz });
-    expect(residual.normalMax).toBeLessThan(1e-8);
+    expect(residual.normalMax).toBeLessThan(Object.keys(made.pull).length > 0 ? 1e-6 : 1e-8);
     expect(residual.max).toBeLessThan(1e-3);
   });
 
@@ -117,7 +139,7 @@ describe.each(STARTER_FORMS)("starter $name", ({ name, head, make }) => {
       const b = tri[h % 3 === 2 ? h - 2 : h + 1];
       return Math.hypot(xyz[3 * a] - xyz[3 * b], xyz[3 * a + 1] - xyz[3 * b + 1], xyz[3 * a + 2] - xyz[3 * b + 2]);
     });
-    expect(Math.max(...sides) / Math.min(...sides)).toBeLessThan(3);
+    expect(Math.max(...sides) / Math.min(...sides)).toBeLessThan(5);
   });
 
   it("has a job that reads and names only what takes effect", () => {
