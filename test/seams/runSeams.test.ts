@@ -101,6 +101,19 @@ describe("bands", () => {
     for (let i = 1; i < middle.length; i++) expect(middle[i][k]).toBeGreaterThan(middle[i - 1][k]);
   });
 
+  test("what cannot be laid as asked is laid automatically, and said", () => {
+    const gores = runSeams(square(7), makeJob({ layout: "gores" }), options(2.4));
+    expectSoundLayout(square(7), gores.output);
+    expect(gores.findings.map((f) => f.code)).toContain("seam-layout-fallback");
+    const one = runSeams(square(7), makeJob({ layout: "bands", from: "E2" }), options(2.4));
+    expect(one.output.choices[0].from === "E2" || one.output.choices[0].to === "E2").toBe(true);
+    const near = runSeams(square(7), makeJob({ layout: "bands", from: "E1", to: "E2" }), options(2.4));
+    expectSoundLayout(square(7), near.output);
+    const [told] = near.findings.filter((f) => f.code === "seam-layout-fallback");
+    expect(told).toMatchObject({ level: "caution", where: ["region 1", "seams.layout"] });
+    expect(told.text).toMatch(/from E1 to E2/);
+  });
+
   test("more strips, and widths measured by the flattening, change the layout", () => {
     const form = square(7);
     const three = runSeams(form, makeJob(), options(2.4)).output;
@@ -283,15 +296,28 @@ describe("invariants", () => {
       const other = listLengths(runSeams(renumber(form), makeJob(), options(2)).output);
       expect(other.length).toBe(lengths.length);
       other.forEach((l, i) => {
-        expect(Math.abs(l - lengths[i])).toBeLessThan(1e-3 * lengths[i]);
+        expect(Math.abs(l - lengths[i])).toBeLessThan(1e-6 * lengths[i]);
       });
       const moved = makeMoved(form, 1, [100, -50, 7]);
       listLengths(runSeams(moved, makeJob(), options(2)).output).forEach((l, i) => {
-        expect(Math.abs(l - lengths[i])).toBeLessThan(1e-3 * lengths[i]);
+        expect(Math.abs(l - lengths[i])).toBeLessThan(1e-6 * lengths[i]);
       });
       const grown = makeMoved(form, 3, [0, 0, 0]);
       const big = listLengths(runSeams(grown, makeJob(), options(6)).output);
       expect(big.length).toBe(lengths.length);
+    }
+  });
+
+  test("a form with its outer face down is laid out alike", () => {
+    for (const form of [makeForm(makeGrid(14, 12, hypar)), makeTent(48, 8, 6, 4, 3), makeTent(40, 8, 6, 4, 0)]) {
+      const tri = form.surface.tri.map((_, i, all) => all[3 * Math.floor(i / 3) + ((3 - (i % 3)) % 3)]);
+      const down = { ...form, surface: { xyz: form.surface.xyz, tri } };
+      const up = runSeams(form, makeJob(), options(2)).output;
+      const { output } = runSeams(down, makeJob(), options(2));
+      expectSoundLayout(down, output);
+      listLengths(output).forEach((l, i) => {
+        expect(Math.abs(l / listLengths(up)[i] - 1)).toBeLessThan(1e-3);
+      });
     }
   });
 

@@ -26,6 +26,8 @@ export interface RegionLimits {
   /** m, or null. */
   maxLength: number | null;
   count: number | "auto";
+  /** True for the only region of the form. */
+  alone: boolean;
   /** Strips on top of the fewest that fit. */
   more: number;
   /** Measured over estimated width, strip by strip of an earlier run; empty: 1. */
@@ -141,34 +143,46 @@ function compareKeys(a: Trial, b: Trial): number {
   return k < 0 ? 0 : a.key[k] - b.key[k];
 }
 
-/** The ways to lay strips that the job and the region's shape allow, and what had to be passed over. */
-function listCandidates(form: FoundForm, region: Region, job: Job): { list: Candidate[]; passed: string } {
+/** How the reason begins where the layout asked for lies on other regions. */
+const ELSEWHERE = "it does not touch";
+
+/** Ways to lay strips that are tried together; `failed` says why those before them did not do. */
+interface Stage {
+  list: Candidate[];
+  failed: string;
+}
+
+/** The ways to lay strips that the job and the region's shape allow: those asked for first, then those that suit the shape. */
+function listStages(form: FoundForm, region: Region, job: Job): Stage[] {
   const { layout, from, to } = job.seams;
-  let passed = "";
   if (region.outlines.length === 2) {
-    if (layout === "bands") passed = "bands cannot run across the opening in it, so it has gores round it";
-    return { list: listGores(form, region, from), passed };
+    const failed = layout === "bands" ? "bands cannot run across the opening in it, so it has gores round it" : "";
+    return [{ list: listGores(form, region, from), failed }];
   }
-  if (from !== null && to !== null && (layout === "bands" || layout === "gores")) {
+  const stages: Stage[] = [];
+  let failed = "";
+  const all = [...listSpineBands(form, region), ...listBands(form, region)];
+  if (from !== null && to !== null && layout !== "auto") {
     const asked = bandsBetween(
       form,
       region,
       (edge) => edge.id === from,
       (edge) => edge.id === to,
     );
-    if (asked) return { list: [{ ...asked, layout }], passed };
-    passed = `it does not touch both ${from} and ${to} in one run each`;
+    if (asked) stages.push({ list: [{ ...asked, layout: layout === "gores" ? "gores" : "bands" }], failed });
+    failed = asked
+      ? `no number of strips from ${from} to ${to} fits the cloth with seams clear of its edges`
+      : `${ELSEWHERE} both ${from} and ${to} in one run each`;
+  } else if (layout === "bands" && from !== null) {
+    const named = all.filter((c) => [c.from, c.to].some((name) => name.split(" + ").includes(from)));
+    if (named.length > 0) stages.push({ list: named, failed });
+    failed = `no strips that start or end on ${from} fit it`;
   }
   const sector = layout === "bands" ? null : findSector(form, region);
-  if (sector) return { list: [sector], passed };
-  const list = [...listSpineBands(form, region), ...listBands(form, region)];
-  if (layout === "bands" && from !== null) {
-    const names = (c: Candidate) => [c.from, c.to].some((name) => name.split(" + ").includes(from));
-    const named = list.filter(names);
-    if (named.length > 0) return { list: named, passed };
-  }
-  if (layout === "gores") passed ||= "it has no ring to start gores on";
-  return { list, passed };
+  if (sector) stages.push({ list: [sector], failed });
+  else if (layout === "gores") failed ||= "it has no ring to start gores on";
+  stages.push({ list: all, failed });
+  return stages;
 }
 
 /** Places the trials that may still be the best, in order; `spare` is the first that is at least something. */
@@ -205,14 +219,28 @@ function isBetter(a: readonly number[], b: readonly number[]): boolean {
   return k >= 0 && a[k] < b[k];
 }
 
-/** Lays out one region. */
+/**
+ * Lays out one region.
+ * @throws PlanError seam-none: no way fits the cloth with seams clear of the edges
+ */
 export function layoutRegion(form: FoundForm, region: Region, job: Job, limits: RegionLimits): RegionLayout {
-  const { list, passed } = listCandidates(form, region, job);
-  const trials = list.map((candidate) => tryCandidate(region, candidate, limits)).sort(compareKeys);
   const findings: Finding[] = [];
   const round = region.outlines.length === 2;
-  const { best, spare } = placeTrials(trials, limits, round);
-  const chosen = best ?? spare;
+  let trials: Trial[] = [];
+  let chosen: Placed | null = null;
+  let spare: Placed | null = null;
+  let passed = "";
+  for (const stage of listStages(form, region, job)) {
+    const next = stage.list.map((candidate) => tryCandidate(region, candidate, limits)).sort(compareKeys);
+    const placed = placeTrials(next, limits, round);
+    spare ??= placed.spare;
+    if (!placed.best) continue;
+    trials = next;
+    chosen = placed.best;
+    passed = stage.failed;
+    break;
+  }
+  chosen ??= spare;
   if (!chosen)
     throw new PlanError(
       "seam-none",
@@ -223,12 +251,12 @@ export function layoutRegion(form: FoundForm, region: Region, job: Job, limits: 
   if (passed)
     findings.push({
       code: "seam-layout-fallback",
-      level: "note",
+      level: limits.alone || !passed.startsWith(ELSEWHERE) ? "caution" : "note",
       station: "seams",
       where: [region.id, "seams.layout"],
       value: job.seams.layout,
       limit: null,
-      text: `${region.id} was laid out automatically: ${passed}.`,
+      text: `${region.id} was not laid out as asked: ${passed}.`,
       remedy: "Name edges that both border it, or give the seams one by one.",
       basis: "own argument",
     });
