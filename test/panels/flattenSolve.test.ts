@@ -12,7 +12,7 @@ function triangle(): FlattenProblem {
     nV: 3,
     tri,
     metric: buildErectedMetric(xyz, tri),
-    area: Float64Array.from([6]),
+    weight: Float64Array.from([6]),
     stiffness: buildStiffness(CLOTH),
     target: Float64Array.from([0.02, 0.01, 0]),
     shrink: new Float64Array(6).fill(1),

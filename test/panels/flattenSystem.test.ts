@@ -25,7 +25,7 @@ function saddle(): { problem: FlattenProblem; x: Float64Array<ArrayBuffer> } {
     nV,
     tri: surface.tri,
     metric: buildErectedMetric(surface.xyz, surface.tri),
-    area: measureAreas(surface),
+    weight: measureAreas(surface),
     stiffness: buildStiffness(CLOTH),
     target: new Float64Array(surface.tri.length).map((_, i) => [0.003, 0.004, 0.001][i % 3]),
     shrink,

@@ -44,7 +44,7 @@ test("cable sides are decompensated when asked; the component along them is take
   const options = { ...PLAIN, decompensation: { clamped: 1, ring: 1, cable: 0.8 } };
   const t = buildPanelTarget(strip, D, options);
   expect(t.decompensated.map((q) => q.side)).toEqual([0, 2, 3]);
-  const field = buildTargetField(strip, { ...t, decompensated: [{ side: 3, fade: 0.8 }] }, flat);
+  const { strain: field, share } = buildTargetField(strip, { ...t, decompensated: [{ side: 3, fade: 0.8 }] }, flat);
   for (let k = 0; k < field.length; k += 3) {
     const middle = [0, 1, 2].reduce((s, c) => s + strip.erected[3 * strip.tri[k + c]] / 3, 0);
     // Side 3 lies at x = 0 of the form and runs along the warp: only E_ww is taken back.
@@ -52,5 +52,7 @@ test("cable sides are decompensated when asked; the component along them is take
     expect(field[k]).toBeCloseTo(left * t.green.warp, 12);
     expect(field[k + 1]).toBeCloseTo(t.green.weft, 12);
     expect(field[k + 2]).toBeCloseTo(0, 12);
+    // Nothing taken back: whole weight; the less is left of the strain, the less it counts, down to a twentieth.
+    expect(share[k / 3]).toBeCloseTo(0.05 + 0.95 * left, 12);
   }
 });

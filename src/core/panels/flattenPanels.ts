@@ -4,6 +4,7 @@ import { PlanError, type StationContext, type StationResult } from "../problem.t
 import type { FlatPanel } from "../records/flatPanel.ts";
 import type { StripLayout } from "../records/stripLayout.ts";
 import { buildStiffness, type ClothStiffness } from "../structure/cloth.ts";
+import { measureAreas } from "../surface/measures.ts";
 import { checkFlatPanels, listBrokenChecks, listPanelFindings } from "./checkFlatPanels.ts";
 import { buildFlattenProblem, listDrafts, type PanelDraft } from "./flattenProblem.ts";
 import { FLATTEN_TOLERANCE, solveFlatten } from "./flattenSolve.ts";
@@ -12,7 +13,7 @@ import { buildRunDirections } from "./localStrip.ts";
 import { buildTargetField, type FlattenOptions } from "./panelTarget.ts";
 import { measurePanelStress } from "./stressFigures.ts";
 
-/** Enough to read directions of sides from. */
+/** Enough to read from where a fade reaches. */
 const ROUGH = { ...FLATTEN_TOLERANCE, energy: 1e-3, gap: 1e-5 };
 
 /**
@@ -71,12 +72,19 @@ function flattenStrips(
   let x = new Float64Array(2 * problem.nV);
   for (const d of drafts) x.set(buildFlattenStart(d.strip, d.target.turn, d.target.elastic), 2 * d.first);
   let result = { x, converged: true, gap: 0 };
-  // Directions of decompensated sides are read from the flat, so they are read again from the first answer.
+  // Where a fade reaches is read from flat cloth, so that is made first, its decompensated sides at their length already.
   const rounds = drafts.some((d) => d.target.decompensated.length > 0) ? 2 : 1;
   for (let round = 0; round < rounds; round++) {
     for (const d of drafts) {
       const own = x.subarray(2 * d.first, 2 * d.first + 2 * d.strip.surfaceVertex.length);
-      problem.target.set(buildTargetField(d.strip, d.target, own), 3 * d.firstTriangle);
+      const target = round === rounds - 1 ? d.target : { ...d.target, decompensated: [] };
+      const field = buildTargetField(d.strip, target, own);
+      problem.target.set(field.strain, 3 * d.firstTriangle);
+      const area = measureAreas({ xyz: d.strip.erected, tri: d.strip.tri });
+      problem.weight.set(
+        field.share.map((w, t) => w * area[t]),
+        d.firstTriangle,
+      );
     }
     const last = round === rounds - 1;
     result = solveFlatten(problem, x, last ? FLATTEN_TOLERANCE : ROUGH, (step) => {

@@ -4,7 +4,6 @@ import { PlanError } from "../problem.ts";
 import type { FlatPanel } from "../records/flatPanel.ts";
 import type { StripLayout } from "../records/stripLayout.ts";
 import { buildErectedMetric, type ClothStiffness } from "../structure/cloth.ts";
-import { measureAreas } from "../surface/measures.ts";
 import { buildLocalStrip, type LocalStrip } from "./localStrip.ts";
 import { buildPanelTarget, type FlattenOptions, type PanelTarget } from "./panelTarget.ts";
 
@@ -24,8 +23,8 @@ export interface AxisCondition {
 }
 
 /**
- * What is minimised over the flat points X of the relaxed cloth: Σ ½ area·(E − E0)ᵀD(E − E0), with the ties and axes as conditions.
- * @shape tri, metric and target 3*nT; area nT; shrink 2*nV; tie 4*nTies; tieLength nTies; pin one vertex a panel
+ * What is minimised over the flat points X of the relaxed cloth: Σ ½ weight·(E − E0)ᵀD(E − E0), with the ties and axes as conditions.
+ * @shape tri, metric and target 3*nT; weight nT; shrink 2*nV; tie 4*nTies; tieLength nTies; pin one vertex a panel
  * @units m, kN/m
  */
 export interface FlattenProblem {
@@ -33,8 +32,8 @@ export interface FlattenProblem {
   tri: Uint32Array<ArrayBuffer>;
   /** Squared lengths and dot product of the erected sides (buildErectedMetric). */
   metric: Float64Array<ArrayBuffer>;
-  /** Erected areas. */
-  area: Float64Array<ArrayBuffer>;
+  /** Erected area, less within the fade of a decompensated side, m2. */
+  weight: Float64Array<ArrayBuffer>;
   stiffness: ClothStiffness;
   /** Intended strain E0 of each triangle: E_ww, E_ff, 2E_wf. */
   target: Float64Array<ArrayBuffer>;
@@ -83,7 +82,7 @@ export function listDrafts(
 }
 
 /**
- * The problem of these strips together; the target field is left empty. Seams with panels in `others` keep those panels' lengths;
+ * The problem of these strips together; target and weight are left empty. Seams with panels in `others` keep those panels' lengths;
  * pieces of decompensated sides are cut as long as they are erected.
  * @throws PlanError seam-sides: a seam runs through a vertex that one of its strips does not have
  */
@@ -101,7 +100,7 @@ export function buildFlattenProblem(
     nV,
     tri: new Uint32Array(3 * nT),
     metric: new Float64Array(3 * nT),
-    area: new Float64Array(nT),
+    weight: new Float64Array(nT),
     stiffness,
     target: new Float64Array(3 * nT),
     shrink: new Float64Array(2 * nV),
@@ -116,7 +115,6 @@ export function buildFlattenProblem(
       3 * firstTriangle,
     );
     problem.metric.set(buildErectedMetric(strip.erected, strip.tri), 3 * firstTriangle);
-    problem.area.set(measureAreas({ xyz: strip.erected, tri: strip.tri }), firstTriangle);
     const shrink = [1 / (1 + target.permanent.warp), 1 / (1 + target.permanent.weft)];
     for (let i = 0; i < 2 * strip.surfaceVertex.length; i++) problem.shrink[2 * first + i] = shrink[i % 2];
     // The axis lies at the turn in the cut cloth.

@@ -77,7 +77,7 @@ export function solveFlatten(
   };
   if (!walk.state.upright) refuseStart(problem, start);
   let total = 0;
-  for (const a of problem.area) total += a;
+  for (const a of problem.weight) total += a;
   const floor = 0.5 * problem.stiffness.ww * total * tolerance.strain ** 2;
   const soft = { ...tolerance, energy: Math.max(SOFT_ENERGY, tolerance.energy), gap: Number.POSITIVE_INFINITY, floor };
   const stiff = { ...tolerance, floor };

@@ -65,7 +65,7 @@ export function buildFlattenSystem(problem: FlattenProblem): FlattenSystem {
 /** Energy and merit at the flat points x. */
 export function measureFlattenState(system: FlattenSystem, x: Float64Array<ArrayBuffer>): FlattenState {
   const { problem, stiff, multiplier } = system;
-  const { tri, metric, target, area } = problem;
+  const { tri, metric, target, weight } = problem;
   const { ww, wf, ff, g } = problem.stiffness;
   const e = new Float64Array(7);
   let energy = 0;
@@ -76,7 +76,7 @@ export function measureFlattenState(system: FlattenSystem, x: Float64Array<Array
     const a = e[0] - target[3 * t];
     const b = e[1] - target[3 * t + 1];
     const c = e[2] - target[3 * t + 2];
-    energy += 0.5 * area[t] * (ww * a * a + 2 * wf * a * b + ff * b * b + g * c * c);
+    energy += 0.5 * weight[t] * (ww * a * a + 2 * wf * a * b + ff * b * b + g * c * c);
   }
   let merit = energy;
   let gap = 0;
@@ -128,7 +128,7 @@ export function assembleFlattenInPlace(system: FlattenSystem, x: Float64Array<Ar
 
 function addCloth(system: FlattenSystem, x: Float64Array<ArrayBuffer>): void {
   const { problem, values, gradient, where } = system;
-  const { tri, metric, target, area } = problem;
+  const { tri, metric, target, weight } = problem;
   const { ww, wf, ff, g } = problem.stiffness;
   const e = new Float64Array(7);
   const b = new Float64Array(18);
@@ -140,17 +140,17 @@ function addCloth(system: FlattenSystem, x: Float64Array<ArrayBuffer>): void {
     const ew = e[0] - target[3 * t];
     const ef = e[1] - target[3 * t + 1];
     const es = e[2] - target[3 * t + 2];
-    const sw = area[t] * (ww * ew + wf * ef);
-    const sf = area[t] * (wf * ew + ff * ef);
-    const ss = area[t] * g * es;
+    const sw = weight[t] * (ww * ew + wf * ef);
+    const sf = weight[t] * (wf * ew + ff * ef);
+    const ss = weight[t] * g * es;
     let n = 0;
     for (let i = 0; i < 6; i++) {
       const b0 = b[i];
       const b1 = b[6 + i];
       const b2 = b[12 + i];
-      d[i] = area[t] * (ww * b0 + wf * b1);
-      d[6 + i] = area[t] * (wf * b0 + ff * b1);
-      d[12 + i] = area[t] * g * b2;
+      d[i] = weight[t] * (ww * b0 + wf * b1);
+      d[6 + i] = weight[t] * (wf * b0 + ff * b1);
+      d[12 + i] = weight[t] * g * b2;
       gradient[2 * tri[3 * t + (i >> 1)] + (i & 1)] += sw * b0 + sf * b1 + ss * b2;
       for (let j = 0; j <= i; j++) h[n++] = b0 * d[j] + b1 * d[6 + j] + b2 * d[12 + j];
     }

@@ -100,19 +100,25 @@ function listDecompensated(strip: LocalStrip, options: FlattenOptions): { side: 
   });
 }
 
+/** Share of its weight that cloth keeps right beside a decompensated side: what does not fit is left to the fade, not to the panel. */
+const FADE_WEIGHT = 0.05;
+
+/** @shape strain 3*nT: E_ww, E_ff, 2E_wf; share nT: of its weight, 1 but within a fade */
+export interface TargetField {
+  strain: Float64Array<ArrayBuffer>;
+  share: Float64Array<ArrayBuffer>;
+}
+
 /**
- * Intended strain of each triangle, E_ww, E_ff, 2E_wf: the panel's own, less the component along decompensated sides,
+ * Intended strain of each triangle: the panel's own, less the component along decompensated sides,
  * which fades with the distance in the flat as ½(1 + cos(π·distance/fade)).
  * Along such a side the cloth is cut as long as it is erected, so the relaxed cloth is longer by its permanent part.
- * @shape xy 2*n, flat points of the relaxed cloth, m -> 3*nT
+ * @shape xy 2*n, flat points of the relaxed cloth, m
  */
-export function buildTargetField(
-  strip: LocalStrip,
-  target: PanelTarget,
-  xy: Float64Array<ArrayBuffer>,
-): Float64Array<ArrayBuffer> {
+export function buildTargetField(strip: LocalStrip, target: PanelTarget, xy: Float64Array<ArrayBuffer>): TargetField {
   const { tri } = strip;
   const out = new Float64Array(tri.length);
+  const weights = new Float64Array(tri.length / 3).fill(1);
   for (let t = 0; t < tri.length; t += 3) {
     let { warp: ww, weft: ff } = target.green;
     let wf = 0;
@@ -125,7 +131,9 @@ export function buildTargetField(
       const length = Math.sqrt((x / (1 + target.permanent.warp)) ** 2 + (y / (1 + target.permanent.weft)) ** 2);
       const wanted = (length * length - 1) / 2;
       const now = x * x * ww + 2 * x * y * wf + y * y * ff;
-      const change = 0.5 * (1 + Math.cos((Math.PI * near.distance) / fade)) * (wanted - now);
+      const share = 0.5 * (1 + Math.cos((Math.PI * near.distance) / fade));
+      const change = share * (wanted - now);
+      weights[t / 3] *= 1 - (1 - FADE_WEIGHT) * share;
       ww += change * x * x;
       ff += change * y * y;
       wf += change * x * y;
@@ -134,7 +142,7 @@ export function buildTargetField(
     out[t + 1] = ff;
     out[t + 2] = 2 * wf;
   }
-  return out;
+  return { strain: out, share: weights };
 }
 
 /** Distance of (mx, my) from a polyline and the unit direction of its nearest piece. */
