@@ -294,6 +294,14 @@ describe("a matrix that is not positive definite", () => {
     expect(b[150]).toBeCloseTo(1e6, 3);
   });
 
+  test("the floor of the pivots is the caller's to set", () => {
+    // 2 × 2 with second pivot 1e-9 of its diagonal
+    const { pattern } = buildPattern(2, Uint32Array.of(0, 2), Int32Array.of(0, 1));
+    const values = Float64Array.of(1, 1, 1 + 1e-9);
+    expect(factorSymmetric(analyseSymmetric(pattern), values).ready).toBe(true);
+    expect(() => factorSymmetric(analyseSymmetric(pattern, { pivotFloor: 1e-8 }), values)).toThrow(/must exceed 1\.0/);
+  });
+
   test("values that are not numbers are refused", () => {
     const system = assemble(30, buildGridElements(5, 6, 1), buildRandom(6));
     system.values[7] = Number.NaN;

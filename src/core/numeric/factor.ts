@@ -49,6 +49,9 @@ export interface SymbolicFactor {
   work: number;
 }
 
+/** Places in the store are 32-bit numbers. */
+const MOST_ENTRIES = 2 ** 31 - 1;
+
 /** A factored matrix. Owns its storage; refactorInPlace overwrites it. */
 export interface NumericFactor {
   symbolic: SymbolicFactor;
@@ -63,7 +66,8 @@ export interface NumericFactor {
 
 /**
  * Order of elimination and structure of the factor of a pattern.
- * @throws PlanError matrix-pattern: a column without its diagonal first or with rows not ascending
+ * @throws PlanError matrix-pattern: a column without its diagonal first or with rows not ascending; matrix-memory: more than
+ *   2^31 - 1 entries
  */
 export function analyseSymmetric(pattern: SymmetricPattern, options: AnalyseOptions = {}): SymbolicFactor {
   checkPattern(pattern);
@@ -85,6 +89,7 @@ export function analyseSymmetric(pattern: SymmetricPattern, options: AnalyseOpti
     work += (w * w * w) / 6 + (w * w * r) / 2 + (w * r * (r + 1)) / 2;
   }
   const { trail, storeEntries } = placeTrails(supernodes, panelEntries);
+  if (storeEntries > MOST_ENTRIES) throw tooLarge(pattern.n, storeEntries);
   const rel = relateRows(supernodes);
   const into = placeEntries(pattern, supernodes, position, panel);
   const pivotFloor = options.pivotFloor ?? 1e-13;
@@ -105,12 +110,7 @@ export function factorSymmetric(symbolic: SymbolicFactor, values: Float64Array<A
   try {
     store = new Float64Array(symbolic.storeEntries);
   } catch {
-    throw new PlanError(
-      "matrix-memory",
-      `the factor of ${n} unknowns needs ${Math.round(symbolic.storeEntries / 131072)} MB, more than this engine gives: use a coarser mesh`,
-      [],
-      { unknowns: n, entries: symbolic.storeEntries },
-    );
+    throw tooLarge(n, symbolic.storeEntries);
   }
   const factor: NumericFactor = {
     symbolic,
@@ -258,6 +258,15 @@ function sweep({ symbolic, store, side }: NumericFactor, forward: Step, backward
     go(s);
     backward(store, place, side);
   }
+}
+
+function tooLarge(unknowns: number, entries: number): PlanError {
+  return new PlanError(
+    "matrix-memory",
+    `the factor of ${unknowns} unknowns needs ${Math.round(entries / 131072)} MB, more than this engine gives: use a coarser mesh`,
+    [],
+    { unknowns, entries },
+  );
 }
 
 function checkPattern({ n, colStart, rowIndex }: SymmetricPattern): void {
