@@ -31,6 +31,11 @@ function describePlan(facts: Facts, files: OutputFile[], folder: string): string
     `  To cut      ${f.panels} panels${f.pieces ? ` and ${f.pieces} pieces` : ""}, ${f.cutArea?.toFixed(1)} m2 with allowances`,
     `  To weld     ${f.seams} seams, ${f.seamLength?.toFixed(1)} m`,
     `  To lay out  ${f.rollLength?.toFixed(2)} m of cloth from ${f.rolls} roll${f.rolls === 1 ? "" : "s"} (${cloths.join("; ")}), ${(100 * (f.utilisation ?? 0)).toFixed(0)} % used`,
+    ...(f.adjusters && f.steps !== null
+      ? [
+          `  To pull     ${f.adjusters} adjusters in ${f.steps} steps; the greatest force on the way is ${(100 * (f.greatestShare ?? 0)).toFixed(0)} % of its limit`,
+        ]
+      : []),
     `  To trust    stress in the cloth within ${f.stressError?.toFixed(2)} kN/m (rms) of what is wanted; ${f.checks - f.checksFailed} of ${f.checks} checks hold`,
     `  To decide   ${f.stops} stops, ${f.cautions} cautions, ${f.notes} notes. ${stamp}`,
     ...(urgent === "" ? [] : [urgent]),

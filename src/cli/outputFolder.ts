@@ -132,7 +132,7 @@ export function writeOutputFolder(folder: string, files: OutputFile[]): void {
   const aside = join(dirname(target), `${basename(target)}.partial-${process.pid}`);
   const old = join(dirname(target), `${basename(target)}.old-${process.pid}`);
   try {
-    withFile(aside, () => {
+    withFile(folder, () => {
       mkdirSync(dirname(target), { recursive: true });
       rmSync(aside, { recursive: true, force: true });
       mkdirSync(aside);
