@@ -56,3 +56,16 @@ test("cable sides are decompensated when asked; the component along them is take
     expect(share[k / 3]).toBeCloseTo(0.05 + 0.95 * left, 12);
   }
 });
+
+test("with a permanent part the relaxed cloth beside the side is longer than the form by that part", () => {
+  const options: FlattenOptions = {
+    ...PLAIN,
+    compensation: { default: { warp: 0.01, weft: 0.03 } },
+    decompensation: { clamped: null, ring: null, cable: 100 },
+  };
+  const t = buildPanelTarget(strip, D, options);
+  // A fade of 100 m: the whole strip counts as beside its side along the warp. Cut as long as erected: relaxed = erected·(1 + permanent).
+  const { strain } = buildTargetField(strip, { ...t, decompensated: [{ side: 3, fade: 100 }] }, flat);
+  const wanted = ((1 + t.permanent.warp) ** -2 - 1) / 2;
+  for (let k = 0; k < strain.length; k += 3) expect(Math.abs(strain[k] - wanted)).toBeLessThan(1e-5);
+});
