@@ -1,4 +1,4 @@
-import { mkdirSync, writeFileSync } from "node:fs";
+import { mkdirSync, truncateSync, writeFileSync } from "node:fs";
 import { join } from "node:path";
 import { describe, expect, it } from "vitest";
 import { buildDoors, call, makeScratch, SQUARE, stopFinding } from "./fakePlan.ts";
@@ -56,6 +56,8 @@ describe("usage", () => {
 
 describe("input that cannot be read", () => {
   mkdirSync(at("folder"));
+  // Sparse: takes no room on the disk.
+  truncateSync(write("huge.json", ""), 257 * 1024 * 1024);
   const bad = (name: string, value: object) => write(name, JSON.stringify({ ...least, ...value }));
   it.each<[string, string, string]>([
     ["file-missing", at("none.json"), "there is no such file"],
@@ -74,6 +76,7 @@ describe("input that cannot be read", () => {
     ["job-format", write("facts.json", '{"format": "seamstay-facts"}'), "seamstay-job"],
     ["job-key-unknown", bad("key.json", { edges: { E1: { colour: 1 } } }), "edges.E1.colour"],
     ["mesh-kind", at("form.stl"), "OBJ"],
+    ["file-size", at("huge.json"), "257 MB is more than the 256 MB"],
     ["mesh-no-faces", write("points.obj", "v 0 0 0\n"), "no faces"],
     ["mesh-json", bad("inline.json", { mesh: { vertices: [[0, 0]], triangles: [[0, 0, 0]] } }), "mesh.vertices[0][2]"],
   ])("%s: %s", async (code, path, words) => {

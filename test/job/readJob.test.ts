@@ -76,6 +76,32 @@ describe("the full job", () => {
     expect(read).toMatchObject({ mesh: { file: "form.obj" }, unit: "m", up: "z", outside: "up" });
   });
 
+  it("resolves the rig: catalogue entries looked up, ends by number or anchor, nothing taken for granted", () => {
+    const { rig } = read.job;
+    expect(rig.defaults).toEqual([]);
+    expect(rig.adjusters).toMatchObject([
+      {
+        name: "T1",
+        anchor: "A1",
+        edge: null,
+        end: null,
+        turnbuckle: { id: "open-body-m20", perTurn: 5, capacity: null },
+      },
+      {
+        name: "T2",
+        anchor: null,
+        edge: "north",
+        end: "A2",
+        turnbuckle: { id: "job", shortest: 400, longest: 620, capacity: 60 },
+      },
+    ]);
+    expect(rig).toMatchObject({ stages: [0.1, 0.3, 0.6, 0.85, 1], temperature: 15, limit: 0.5, readingError: 0.05 });
+    expect(rig.stays).toEqual(buildFullJob().rig.stays);
+    const byNumber = structuredClone(buildFullJob()) as Loose;
+    byNumber.rig.adjusters[1].end = 1;
+    expect(readJob(byNumber, catalogues).job.rig.adjusters?.[1].end).toBe("last");
+  });
+
   it("says once of each key without effect that it has none", () => {
     const notes = read.findings.filter((f) => f.code === "job-key-without-effect");
     expect(notes.every((f) => f.level === "note")).toBe(true);
@@ -168,6 +194,10 @@ describe("the least job", () => {
         "nest.turn",
         "papers.sheet",
         "papers.units",
+        "rig.limit",
+        "rig.stages",
+        "rig.temperature",
+        "rig.reading.error",
       ]),
     );
     for (const note of notes) {
