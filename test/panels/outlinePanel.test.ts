@@ -1,11 +1,13 @@
 // Outlines against shapes worked by hand, and properties on random panels.
 import fc from "fast-check";
 import { describe, expect, it } from "vitest";
+import { buildRandom, drawInteger, type Random } from "../../src/core/numeric/random.ts";
 import { FAIRING_MM, offsetOutline } from "../../src/core/panels/offsetOutline.ts";
 import { outlinePanel, sideCurvature } from "../../src/core/panels/outlinePanel.ts";
 import type { PanelPlace } from "../../src/core/panels/placeMarks.ts";
 import { subtractRings, unionPositive } from "../../src/core/panels/polygonBooleans.ts";
-import type { PanelSide, Ring } from "../../src/core/records/flatPanel.ts";
+import { PlanError } from "../../src/core/problem.ts";
+import type { FlatPanel, PanelSide, Ring } from "../../src/core/records/flatPanel.ts";
 import type { Allowances } from "../../src/core/records/job.ts";
 import {
   isSimpleRing,
@@ -282,6 +284,84 @@ describe("cut outline, random panels", () => {
     const other = outlinePanel(moved, NOWHERE, ALLOW).output;
     expect(other.area.cut).toBeCloseTo(base.area.cut, 6);
     expect(other.cut.length).toBe(base.cut.length);
+  });
+});
+
+/** Panels no office would draw: stars with bowed sides of any kind, small against their allowances too. */
+function wildPanel(random: Random): { panel: FlatPanel; allow: Allowances; cutBack: number } | null {
+  const m = 3 + drawInteger(random, 5);
+  const size = 10 ** (2 + 2 * random());
+  const corners = Array.from({ length: m }, (_, k): [number, number] => {
+    const r = size * (0.15 + 0.85 * random());
+    return [r * Math.cos((2 * Math.PI * k) / m), r * Math.sin((2 * Math.PI * k) / m)];
+  });
+  const parts = corners.map((a, k): Part => {
+    const b = corners[(k + 1) % m];
+    const n = 1 + drawInteger(random, 6);
+    const bow = (random() - 0.5) * 0.3;
+    const kind = (["seam", "cable", "clamped", "free"] as const)[drawInteger(random, 4)];
+    const points = Array.from({ length: n }, (_, i): [number, number] => {
+      const s = i / n;
+      const w = 4 * s * (1 - s) * bow;
+      return [a[0] + s * (b[0] - a[0]) - w * (b[1] - a[1]), a[1] + s * (b[1] - a[1]) + w * (b[0] - a[0])];
+    });
+    return { kind, id: `s${k}`, points };
+  });
+  const allow = {
+    ...ALLOW,
+    seam: 10 + 60 * random(),
+    pocket: 20 + 100 * random(),
+    clamp: 100 * random(),
+    hem: 60 * random(),
+  };
+  const cutBack = random() < 0.5 ? 200 * random() : 0;
+  const panel = panelFrom(parts);
+  return isSimpleRing(panel.flat) && ringArea(panel.flat) > 0 ? { panel, allow, cutBack } : null;
+}
+
+describe("cut outline, wild panels", () => {
+  it("is simple and holds its marks, or is refused by name: 3000 of them", () => {
+    const random = buildRandom(4);
+    let cut = 0;
+    let empty = 0;
+    for (let t = 0; t < 3000; t++) {
+      const wild = wildPanel(random);
+      if (!wild) continue;
+      const place = { seams: [], anchors: [{ id: "A", vertex: 0, cutBack: wild.cutBack }] };
+      try {
+        const { output } = outlinePanel(wild.panel, place, wild.allow);
+        cut++;
+        expect(isSimpleRing(output.cut) && ringArea(output.cut) > 0, `panel ${t}`).toBe(true);
+        for (const mark of output.marks)
+          for (const q of mark.points ?? [])
+            expect(ringHolds(output.cut, ...q) || ringDistance(output.cut, ...q) < 0.1, `${mark.kind} of ${t}`).toBe(
+              true,
+            );
+      } catch (error) {
+        if (!(error instanceof PlanError)) throw error;
+        expect(error.code).toBe("outline-empty");
+        empty++;
+      }
+    }
+    expect(cut).toBeGreaterThan(2500);
+    expect(empty).toBeGreaterThan(0);
+  });
+
+  it("ends a set-back at its own corner where the next side runs nearly straight on", () => {
+    const turn = 0.25;
+    const far: [number, number] = [2000 + 2000 * Math.cos(turn), 2000 * Math.sin(turn)];
+    const panel = panelFrom([
+      { kind: "clamped", id: "E1", points: [[0, 0]] },
+      { kind: "seam", id: "S1", points: [[2000, 0]] },
+      { kind: "seam", id: "S2", points: [far] },
+      { kind: "seam", id: "S3", points: [[0, 3000]] },
+    ]);
+    const { output, checks } = outlinePanel(panel, NOWHERE, ALLOW);
+    expect(checks.every((c) => c.holds)).toBe(true);
+    // The seam keeps its allowance right from the corner: 20 mm outside, 60 mm along.
+    const [x, y] = [2000 + 60 * Math.cos(turn) + 19 * Math.sin(turn), 60 * Math.sin(turn) - 19 * Math.cos(turn)];
+    expect(ringHolds(output.cut, x, y)).toBe(true);
+    expect(ringHolds(output.cut, 1900, 45)).toBe(false);
   });
 });
 

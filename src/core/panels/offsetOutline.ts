@@ -3,7 +3,7 @@
 // the folded flap stays inside its own outline. Does not: choose distances, draw marks.
 // Source: own. A flap end mirrors, about the fold line, the cut line of its neighbour, and never flares past the square.
 import type { Ring } from "../records/flatPanel.ts";
-import { isSimpleRing, ringArea } from "../surface/ring.ts";
+import { isSimpleRing, pointSegmentSquared, ringArea } from "../surface/ring.ts";
 import { simplifyRing } from "../surface/simplifyRing.ts";
 import { subtractRings, unionPositive } from "./polygonBooleans.ts";
 
@@ -23,8 +23,8 @@ export interface SideOffset {
 const TIP = 2.5;
 /** Two cut lines may meet this many distances away from their corner. */
 const FAR = 20;
-/** Below this turn (radians) two sides run on into each other: a step, no mitre. */
-const STRAIGHT = 0.2;
+/** Below this turn (radians) sides with different distances run on into each other: a step, no mitre far from the corner. */
+const STRAIGHT = 0.5;
 /** A flap end is closed only at corners whose inner angle is below this (radians). */
 const CLOSED_BELOW = 2.6;
 /** Cut lines are simplified within this, mm. */
@@ -242,6 +242,34 @@ function setBackRings(net: Ring, side: SideOffset): Ring[] {
   });
 }
 
+/** Corners of a ring that touch its line elsewhere. */
+function touchingPoints(ring: Ring): Point[] {
+  const found: Point[] = [];
+  const n = ring.length / 2;
+  for (let i = 0; i < n; i++)
+    for (let j = 0; j < n; j++) {
+      const k = (j + 1) % n;
+      if (i === j || i === k) continue;
+      const end: Point = [ring[2 * k], ring[2 * k + 1]];
+      const off = pointSegmentSquared(ring[2 * i], ring[2 * i + 1], ring[2 * j], ring[2 * j + 1], end);
+      if (off < 4e-6) found.push([ring[2 * i], ring[2 * i + 1]]);
+    }
+  return found;
+}
+
+/** Where the line of an outline touches itself, a fifth of a millimetre of cloth is taken away, and the greatest part kept. */
+function partTouches(ring: Ring): Ring {
+  let out = ring;
+  for (let tries = 0; tries < 3 && out.length > 0 && !isSimpleRing(out); tries++) {
+    const nibbles = touchingPoints(out).map(([x, y]) => {
+      const [a, b, c, d] = [x - 0.1, y - 0.1, x + 0.1, y + 0.1];
+      return Float64Array.from([a, b, c, b, c, d, a, d]);
+    });
+    out = greatest(subtractRings([out], nibbles));
+  }
+  return out;
+}
+
 /** A many-sided ring round a circle, its flats no more than 0.1 mm outside. */
 function discRing(x: number, y: number, radius: number): Ring {
   const n = Math.max(16, Math.ceil(Math.PI / Math.acos(1 / (1 + 0.1 / radius))));
@@ -269,6 +297,7 @@ export function offsetOutline(
   const away = discs.filter((d) => d.radius > 0).map((d) => discRing(d.x, d.y, d.radius));
   for (const side of sides) if (side.distance < 0) away.push(...setBackRings(net, side));
   if (away.length > 0 && ring.length > 0) ring = greatest(subtractRings([ring], away));
+  ring = partTouches(ring);
   const fair = simplifyRing(ring, FAIRING_MM);
   return isSimpleRing(fair) && ringArea(fair) > 0 ? fair : ring;
 }

@@ -212,6 +212,7 @@ function sideName(panel: CutPanel, side: PanelSide, place: PanelPlace): PanelMar
 /** Warp arrow, panel name and face, where the cloth is widest. */
 function nameBlock(panel: CutPanel): PanelMark[] {
   const { x, y, room } = roomiestPoint(panel.cut);
+  if (room <= 0) return [];
   const h = Math.min(40, room / 5);
   const half = 3.5 * h;
   const yArrow = y - 0.7 * h;

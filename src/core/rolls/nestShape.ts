@@ -69,7 +69,7 @@ function thinRing(ring: PlaneRing): { ring: PlaneRing; slack: number } {
   if (ring.length / 2 <= MANY) return { ring, slack: 0 };
   const box = ringBox(ring);
   const size = Math.hypot(box.x1 - box.x0, box.y1 - box.y0);
-  for (let within = 1e-5 * size; within < COARSE * size; within *= 2) {
+  for (let within = 1e-5 * size; within < COARSE * size; within *= 3) {
     const thin = simplifyRing(ring, within);
     if (thin.length / 2 <= MANY) return { ring: thin, slack: within };
   }

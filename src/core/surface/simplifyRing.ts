@@ -2,10 +2,6 @@
 // Source: Douglas and Peucker, Algorithms for the reduction of the number of points, 1973, on the two halves of the ring.
 import type { PlaneRing } from "./ring.ts";
 
-type Point = [number, number];
-
-const gap = (p: Point, q: Point) => Math.hypot(q[0] - p[0], q[1] - p[1]);
-
 /** Two points that are true corners of a ring: the leftmost (lowest of them) and the one furthest from it. */
 function twoCorners(ring: PlaneRing): [number, number] {
   const n = ring.length / 2;
@@ -33,17 +29,20 @@ export function simplifyRing(ring: PlaneRing, within: number): PlaneRing {
   ];
   while (stack.length > 0) {
     const [a, b] = stack.pop() as number[];
-    const at = (i: number): Point => [ring[2 * (i % n)], ring[2 * (i % n) + 1]];
-    const p = at(a);
-    const q = at(b);
-    const length = gap(p, q);
-    const u: Point = [(q[0] - p[0]) / (length || 1), (q[1] - p[1]) / (length || 1)];
-    let worst = within;
+    const px = ring[2 * (a % n)];
+    const py = ring[2 * (a % n) + 1];
+    const dx = ring[2 * (b % n)] - px;
+    const dy = ring[2 * (b % n) + 1] - py;
+    const length = Math.hypot(dx, dy);
+    const ux = length > 0 ? dx / length : 0;
+    const uy = length > 0 ? dy / length : 0;
+    let worst = within * within;
     let split = -1;
     for (let i = a + 1; i < b; i++) {
-      const w: Point = [at(i)[0] - p[0], at(i)[1] - p[1]];
-      const s = Math.max(0, Math.min(length, w[0] * u[0] + w[1] * u[1]));
-      const off = gap(w, [s * u[0], s * u[1]]);
+      const wx = ring[2 * (i % n)] - px;
+      const wy = ring[2 * (i % n) + 1] - py;
+      const s = Math.max(0, Math.min(length, wx * ux + wy * uy));
+      const off = (wx - s * ux) ** 2 + (wy - s * uy) ** 2;
       if (off > worst) {
         worst = off;
         split = i;
