@@ -218,6 +218,12 @@ describe("against other programs and methods", () => {
       expect(measureKink(s, path)).toBeLessThan(1e-6);
     });
 
+  test("slanted saddle: a sleeve that flips wind round a vertex is unwound again (bug)", () => {
+    // Length by CGAL 5.5.1 Surface_mesh_shortest_path, run on this surface for this test; once 9.8928 came out.
+    const s = makeGrid(40, 20, (u, v) => [10 * u + 20 * v, 3 * v, 0.5 * u * v]);
+    expect(trace(s, vertexPoint(751), vertexPoint(305)).length).toBeCloseTo(9.88888037222, 9);
+  });
+
   test("hills: never longer than the finest graph path, and near it", () => {
     const s = makeHills(12);
     const adjacency = buildAdjacency(s);

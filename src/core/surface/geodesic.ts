@@ -4,9 +4,10 @@
 import { PlanError } from "../problem.ts";
 import type { Adjacency } from "./adjacency.ts";
 import { findShorterSleeve } from "./exactSearch.ts";
+import { createSleeveScratch } from "./funnel.ts";
 import { buildHoleCuts, type HoleCuts } from "./holeCuts.ts";
 import { measureDistance, pointAt, vertexAt } from "./measures.ts";
-import { createSleeveScratch, measureAngle, type SleeveField, shortenSleeve, touchesBoundary } from "./sleeve.ts";
+import { measureAngle, type SleeveField, shortenSleeve, touchesBoundary } from "./sleeve.ts";
 import { createSearchScratch, findSleeve, type SearchField } from "./sleeveSearch.ts";
 import type { Surface, SurfacePoint } from "./surface.ts";
 import { checkPoint, findTrianglesAt, isSamePoint, namePoint } from "./surfacePoint.ts";
