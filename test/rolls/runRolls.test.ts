@@ -325,6 +325,9 @@ describe("stopping", () => {
     const result = runRolls(pieces, [ROLL], OPTIONS, { cancelled: () => done > 2, onProgress: () => done++ });
     expect(result.output[0].placements.length).toBe(6);
     expect(result.findings.map((f) => [f.code, f.level, f.value])).toEqual([["nest-cut-short", "note", 3]]);
+    let asked = 0;
+    const first = runRolls(pieces, [ROLL], OPTIONS, { cancelled: () => asked++ > 0 });
+    expect(first.output[0].placements.length).toBe(6);
     expect(() => runRolls(pieces, [ROLL], OPTIONS, { cancelled: () => true })).toThrow(/before the first layout/);
   });
 

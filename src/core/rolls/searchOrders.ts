@@ -63,7 +63,7 @@ function memoryOf(steps: number): number {
   return Math.max(1, Math.min(40, Math.floor(steps / 25)));
 }
 
-/** The best layout found, compacted, with how many layouts were built. Null only where it was stopped within the first. */
+/** The best layout found, compacted, with how many layouts were built. Null only where it was stopped before the first. */
 export function searchOrders(task: NestTask, limits: SearchLimits): { layout: Layout; steps: number } | null {
   const random = buildRandom(limits.seed);
   const kind = (p: number) => task.shapes[p][0].key;
@@ -83,7 +83,8 @@ export function searchOrders(task: NestTask, limits: SearchLimits): { layout: La
     const genome: Genome = sorting || !now ? starts[steps % starts.length] : changeGenome(now.genome, random, kind);
     const slot = steps % Math.max(1, memory.length);
     const toBeat: LayoutCost | null = now ? worse(memory[slot], now.cost) : (best?.cost ?? null);
-    const layout = layPieces(task, genome.order, genome.rule, toBeat);
+    // A cap may cut the search short, never the first layout.
+    const layout = layPieces(best ? task : { ...task, stop: () => false }, genome.order, genome.rule, toBeat);
     if (layout && (!best || !isLess(best.cost, layout.cost))) {
       best = layout;
       bestOf = genome;
