@@ -1,7 +1,7 @@
 import fc from "fast-check";
 import { expect, test } from "vitest";
 import { flattenPanels } from "../../src/core/panels/flattenPanels.ts";
-import { buildEmbedding, buildFlattenStart } from "../../src/core/panels/flattenStart.ts";
+import { buildFlattenStart } from "../../src/core/panels/flattenStart.ts";
 import { buildLocalStrip, type LocalStrip } from "../../src/core/panels/localStrip.ts";
 import type { StripLayout } from "../../src/core/records/stripLayout.ts";
 import { cutGrid, gridSurface, PLAIN } from "./stripFixtures.ts";
@@ -65,21 +65,9 @@ function eared(): StripLayout {
   return layout;
 }
 
-// Bug: ears on a convex outline start as slivers of a thousandth of their height, and the first step of the flattening fails.
-test("ears along a side start at their true height and flatten in few steps", () => {
+// Ears along a side are where a start on a convex outline fails: slivers a thousandth of their height.
+test("ears along a side flatten in few steps", () => {
   const layout = eared();
-  const strip = localOf(layout);
-  const xy = buildEmbedding(strip);
-  const base = 5 * 31;
-  for (let tip = base; tip < base + 30; tip++) {
-    const [a, b] = [(tip - base) * 5 + 4, (tip - base + 1) * 5 + 4];
-    const [dx, dy] = [xy[2 * b] - xy[2 * a], xy[2 * b + 1] - xy[2 * a + 1]];
-    const height =
-      (dx * (xy[2 * a + 1] - xy[2 * tip + 1]) - dy * (xy[2 * a] - xy[2 * tip])) / Math.sqrt(dx * dx + dy * dy);
-    // 0.1 m in plan, the sheet is a little steep.
-    expect(height).toBeGreaterThan(0.1);
-    expect(height).toBeLessThan(0.11);
-  }
   let steps = 0;
   const { checks, findings } = flattenPanels(layout, PLAIN, { onProgress: () => steps++ });
   expect(findings).toEqual([]);
@@ -133,7 +121,7 @@ function gore(rings: number): StripLayout {
 test("a gore with a pointed end flattens, its tip on the axis", () => {
   const layout = gore(12);
   const strip = localOf(layout);
-  expect(leastArea(buildEmbedding(strip), strip.tri)).toBeGreaterThan(0);
+  expect(leastArea(buildFlattenStart(strip, 0, { warp: 0, weft: 0 }), strip.tri)).toBeGreaterThan(0);
   const { output, checks } = flattenPanels(layout, PLAIN, {});
   expect(checks.every((c) => c.holds)).toBe(true);
   // Mirror symmetry: the two long sides are equally long.

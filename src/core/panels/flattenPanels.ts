@@ -19,7 +19,7 @@ const ROUGH = { ...FLATTEN_TOLERANCE, energy: 1e-3, gap: 1e-5 };
 /**
  * All panels of a layout, flattened together.
  * @units flat in mm, compensated, warp along x, outer face up
- * @throws PlanError cloth-constants, compensation-range, strip-outline, strip-ends, strip-axis, flatten-start, cancelled
+ * @throws PlanError cloth-constants, compensation-range, strip-outline, strip-ends, strip-axis, panel-fold, flatten-start, cancelled
  */
 export function flattenPanels(
   layout: StripLayout,
