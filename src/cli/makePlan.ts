@@ -1,11 +1,12 @@
 // From what was read to facts and papers, with progress shown. Writes no files.
-import { PlanError, type Station, type StationContext } from "../core/problem.ts";
+import { capNest } from "../core/plan/capNest.ts";
+import { writeFactsJson } from "../core/plan/factsFile.ts";
+import type { PlanInput } from "../core/plan/readPlanInput.ts";
+import type { Station, StationContext } from "../core/problem.ts";
 import type { Facts } from "../core/records/facts.ts";
 import type { Job, MeshSource } from "../core/records/job.ts";
-import { capNest } from "./capNest.ts";
 import type { OutputFile } from "./outputFolder.ts";
 import { loadFonts } from "./packageFiles.ts";
-import type { PlanInput } from "./readInput.ts";
 import { openProgress, type Terminal } from "./terminal.ts";
 
 /** The two doors of core that the verbs go through; tests put their own in. */
@@ -52,22 +53,4 @@ export async function makePapers(facts: Facts, around: Surroundings): Promise<Ou
   const doors = await around.openDoors();
   const { files } = await doors.writePapers(facts, { fonts: loadFonts() });
   return [{ path: "facts.json", bytes: writeFactsJson(facts) }, ...files];
-}
-
-/**
- * The bytes of facts.json.
- * @throws PlanError facts-not-finite: JSON has no NaN, and a null would pass for "none"
- */
-export function writeFactsJson(facts: Facts): Uint8Array {
-  const text = JSON.stringify(facts, (key, value) => {
-    if (typeof value === "number" && !Number.isFinite(value)) {
-      throw new PlanError(
-        "facts-not-finite",
-        `the plan holds ${value} under ${JSON.stringify(key)}: a fault of this program; nothing was written`,
-        key,
-      );
-    }
-    return value;
-  });
-  return new TextEncoder().encode(`${text}\n`);
 }

@@ -1,5 +1,5 @@
 import { expect, it } from "vitest";
-import { capNest } from "../../src/cli/capNest.ts";
+import { capNest } from "../../src/core/plan/capNest.ts";
 
 it("lets the nesting run its seconds from its own first step, and stops nothing else", () => {
   let clock = 0;

@@ -1,5 +1,5 @@
 // The job's nest.seconds: a clock beside the plan, since the core has none.
-import type { Station } from "../core/problem.ts";
+import type { Station } from "../problem.ts";
 
 /**
  * Hooks for runPlan that end the nesting once its seconds are used up; its first layout is always built.
