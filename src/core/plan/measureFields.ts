@@ -1,0 +1,131 @@
+// What a view colours the surface by: stress of every triangle as patterned and as built, balance and curvature of every
+// vertex of the form. Worked out again from the facts alone; judges nothing.
+import { isCable, measureStations } from "../form/cablePull.ts";
+import { measureResidual, sumForces } from "../form/measureBalance.ts";
+import { measureMembraneForces } from "../form/membraneForces.ts";
+import type { Facts, FactsForm, Vec2 } from "../records/facts.ts";
+import type { FormEdge } from "../records/foundForm.ts";
+import { buildErectedMetric, buildStiffness, type ClothStiffness, measureTriangleStrain } from "../structure/cloth.ts";
+import type { Vec3 } from "../surface/surface.ts";
+
+/** Values to colour by; NaN where a place has none (a held vertex has no residual). */
+export interface SurfaceFields {
+  /** Of each triangle of each panel, panel by panel, kN/m; absent before the panels station. */
+  patterned?: { warp: Float32Array<ArrayBuffer>; weft: Float32Array<ArrayBuffer> };
+  /** Of each triangle of rig.cloth, kN/m. */
+  built?: { warp: Float32Array<ArrayBuffer>; weft: Float32Array<ArrayBuffer> };
+  /** Of each vertex of the form: share of the mean summed membrane force (facts.md, form.residual). */
+  residual: Float32Array<ArrayBuffer>;
+  /** Of each inner vertex of the form: Gaussian curvature, 1/m2; negative is a saddle. */
+  curvature: Float32Array<ArrayBuffer>;
+}
+
+/**
+ * Fields of a plan.
+ * @param warp direction the prestress is measured along, as the job gives it; null: the mean of both is taken
+ * @source facts.md "Strain and stress"; curvature: angle deficit over a third of the area around (Meyer et al. 2003, section 3.4)
+ */
+export function measureFields(facts: Facts, warp: Vec3 | null): SurfaceFields | null {
+  const { form, panels, rig } = facts;
+  if (form === undefined) return null;
+  const fields: SurfaceFields = { residual: measureFormResidual(form, warp), curvature: measureCurvature(form) };
+  if (panels) {
+    const parts = panels.map((p) =>
+      measureStress(p.erected.flat(), p.triangles.flat(), p.flat.flat(), p.permanent, stiffnessOf(facts, p.fabric)),
+    );
+    fields.patterned = { warp: join(parts.map((s) => s.warp)), weft: join(parts.map((s) => s.weft)) };
+  }
+  if (rig && panels) {
+    const byId = new Map(panels.map((p) => [p.id, p]));
+    const parts = rig.cloth.map((c) => {
+      const panel = byId.get(c.panel);
+      const none = { warp: 0, weft: 0 };
+      const erected = c.nodes.flatMap((n) => rig.nodes[n]);
+      return measureStress(
+        erected,
+        [0, 1, 2],
+        c.flat.flat(),
+        panel?.permanent ?? none,
+        stiffnessOf(facts, panel?.fabric ?? ""),
+      );
+    });
+    fields.built = { warp: join(parts.map((s) => s.warp)), weft: join(parts.map((s) => s.weft)) };
+  }
+  return fields;
+}
+
+function stiffnessOf(facts: Facts, fabric: string): ClothStiffness {
+  return buildStiffness(facts.fabrics[fabric] ?? Object.values(facts.fabrics)[0]);
+}
+
+function join(parts: Float32Array<ArrayBuffer>[]): Float32Array<ArrayBuffer> {
+  const out = new Float32Array(parts.reduce((n, p) => n + p.length, 0));
+  let at = 0;
+  for (const part of parts) {
+    out.set(part, at);
+    at += part.length;
+  }
+  return out;
+}
+
+/** Warp and weft stress of flat triangles (mm) pulled onto their places (m). @shape xyz 3*n, tri 3*nT, flat 2*n */
+function measureStress(
+  xyz: number[],
+  tri: number[],
+  flat: number[] | Vec2,
+  permanent: { warp: number; weft: number },
+  d: ClothStiffness,
+): { warp: Float32Array<ArrayBuffer>; weft: Float32Array<ArrayBuffer> } {
+  const corners = Uint32Array.from(tri);
+  const metric = buildErectedMetric(Float64Array.from(xyz), corners);
+  const xy = Float64Array.from(flat, (v, i) => (v / 1000) * (1 + (i % 2 === 0 ? permanent.warp : permanent.weft)));
+  const nT = corners.length / 3;
+  const out = { warp: new Float32Array(nT), weft: new Float32Array(nT) };
+  const e = new Float64Array(7);
+  for (let t = 0; t < nT; t++) {
+    measureTriangleStrain(metric, xy, corners, t, e);
+    out.warp[t] = d.ww * e[0] + d.wf * e[1];
+    out.weft[t] = d.wf * e[0] + d.ff * e[1];
+  }
+  return out;
+}
+
+function measureFormResidual(form: FactsForm, warp: Vec3 | null): Float32Array<ArrayBuffer> {
+  const surface = { xyz: Float64Array.from(form.vertices.flat()), tri: Uint32Array.from(form.triangles.flat()) };
+  const edges = form.edges.map((e): FormEdge => ({ ...e, loop: 0, forceFrom: "none" }));
+  const fixed = new Uint8Array(form.vertices.length);
+  for (const a of form.anchors) fixed[a.vertex] = 1;
+  for (const e of edges) if (e.kind === "clamped") for (const v of e.vertices) fixed[v] = 1;
+  const membrane = measureMembraneForces(surface, { ...form.stress, direction: warp });
+  const stations = edges.map((e) => (isCable(e) ? measureStations(surface.xyz, e.vertices) : null));
+  const { size } = measureResidual(surface, membrane, sumForces(membrane, edges, stations), fixed, stations);
+  let scale = 0;
+  let free = 0;
+  for (let v = 0; v < fixed.length; v++) {
+    if (fixed[v]) continue;
+    scale += membrane.size[v];
+    free++;
+  }
+  return Float32Array.from(size, (r, v) => (fixed[v] ? Number.NaN : (r * free) / scale));
+}
+
+function measureCurvature(form: FactsForm): Float32Array<ArrayBuffer> {
+  const { vertices, triangles } = form;
+  const deficit = new Float64Array(vertices.length).fill(2 * Math.PI);
+  const area = new Float64Array(vertices.length);
+  for (const t of triangles) {
+    for (let k = 0; k < 3; k++) {
+      const [o, a, b] = [vertices[t[k]], vertices[t[(k + 1) % 3]], vertices[t[(k + 2) % 3]]];
+      const u = [a[0] - o[0], a[1] - o[1], a[2] - o[2]];
+      const v = [b[0] - o[0], b[1] - o[1], b[2] - o[2]];
+      const c = [u[1] * v[2] - u[2] * v[1], u[2] * v[0] - u[0] * v[2], u[0] * v[1] - u[1] * v[0]];
+      const cross = Math.sqrt(c[0] ** 2 + c[1] ** 2 + c[2] ** 2);
+      deficit[t[k]] -= Math.atan2(cross, u[0] * v[0] + u[1] * v[1] + u[2] * v[2]);
+      area[t[k]] += cross / 6;
+    }
+  }
+  const out = Float32Array.from(deficit, (d, v) => d / area[v]);
+  for (const e of form.edges)
+    if (["cable", "clamped", "free"].includes(e.kind)) for (const v of e.vertices) out[v] = Number.NaN;
+  return out;
+}
