@@ -318,6 +318,29 @@ test("anchors: the job's names and order first, by vertex or place; a lone point
   expect(form.edges.map((e) => e.id)).toEqual(["arc_4", "arc_1", "arc_2", "arc_3"]);
 });
 
+test("anchors: the job may name a point of the mesh by its name alone (was refused as unknown)", () => {
+  const parts = buildArcSail(8, 5, 12);
+  parts.points = [
+    { name: "quay", vertices: [0] },
+    { name: "pier", vertices: [8] },
+    { name: "mast_north", vertices: [80] },
+    { name: "shed", vertices: [72] },
+  ];
+  const { output: form } = run(placeMesh(parts), {
+    anchors: [
+      { name: "mast_north", support: [6, 6, 4] },
+      { name: "pier", at: [-5, 5, 3] },
+    ],
+  });
+  // the job's order first; a name the job moves leaves the mesh's point of that name
+  expect(form.anchors.map((a) => [a.id, a.vertex])).toEqual([
+    ["mast_north", 80],
+    ["pier", 72],
+    ["quay", 0],
+    ["A1", 8],
+  ]);
+});
+
 test("lines: given link by link, with gaps, off the mesh, and inside the surface", () => {
   const n = 8;
   const parts = buildArcSail(n, 5, 12);

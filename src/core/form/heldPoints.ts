@@ -64,7 +64,7 @@ export function readHeldPoints(
   return { held, findings };
 }
 
-/** The vertex a decision of the job speaks of, -1 where it gives none. */
+/** The vertex a decision of the job speaks of: given, or that of the mesh's point of its name; -1 where there is none yet. */
 function findDecided(sound: SoundSurface, d: AnchorDecision, reach: number, held: Map<number, HeldPoint>): number {
   if (d.vertex !== undefined) {
     const n = sound.fromSource.length;
@@ -77,7 +77,10 @@ function findDecided(sound: SoundSurface, d: AnchorDecision, reach: number, held
       { vertex: d.vertex, vertices: n },
     );
   }
-  if (d.at === undefined) return -1;
+  if (d.at === undefined) {
+    for (const h of held.values()) if (h.name === d.name && !h.byJob) return h.vertex;
+    return -1;
+  }
   const near = findNearestVertex(sound.surface, d.at, (v) => held.has(v));
   if (near.vertex >= 0 && near.distance <= reach) return near.vertex;
   const any = findNearestVertex(sound.surface, d.at);
@@ -91,7 +94,7 @@ function findDecided(sound: SoundSurface, d: AnchorDecision, reach: number, held
 }
 
 /**
- * Adds the job's anchors that give a vertex or a position; they outrank the mesh's names and order.
+ * Adds the job's anchors that give a vertex, a position or the name of a point of the mesh; they outrank the mesh's names and order.
  * @throws PlanError anchor-unknown, anchor-double
  */
 export function addJobAnchorsInPlace(
