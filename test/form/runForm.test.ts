@@ -509,9 +509,3 @@ test("the same input gives the same output, byte for byte, and a stop is heard",
     expect.objectContaining({ code: "cancelled" }),
   );
 });
-
-test("settle is not silently ignored", () => {
-  expect(listCodes(run(placeMesh(readFixture("sound")), { settle: true }).findings, "caution")).toContain(
-    "form-settle",
-  );
-});

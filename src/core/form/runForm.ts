@@ -1,10 +1,11 @@
 // The form station: from a mesh as a program wrote it to a sound surface with named edges, anchors and its balance.
-// Settling is not built: the form is taken as it is and checked.
+// Where the job asks for it, the surface is settled before it is balanced.
 import { type Check, type Finding, PlanError, type StationContext, type StationResult } from "../problem.ts";
 import type { FormEdge, FoundForm } from "../records/foundForm.ts";
 import type { Job, MeshSource } from "../records/job.ts";
 import { buildAdjacency } from "../surface/adjacency.ts";
 import { measureArea } from "../surface/measures.ts";
+import type { Surface } from "../surface/surface.ts";
 import { buildLoops, buildTearFindings, findTears } from "./boundaryLoops.ts";
 import { balanceCablesInPlace } from "./cableForces.ts";
 import { isCable, measureStations } from "./cablePull.ts";
@@ -18,6 +19,8 @@ import { measureMembraneForces, type StressField } from "./membraneForces.ts";
 import { nameAnchors } from "./nameAnchors.ts";
 import { nameEdges } from "./nameEdges.ts";
 import { findStepMetres, isExplainedByRounding, measureRoundingReach } from "./roundingReach.ts";
+import { chooseForcesInPlace } from "./settleForces.ts";
+import { settleSurface } from "./settleSurface.ts";
 import { buildSoundSurface, type SoundSurface } from "./soundSurface.ts";
 
 /** The decisions of a job that concern the form. */
@@ -46,15 +49,6 @@ function chooseField(job: FormJob): { field: StressField; findings: Finding[] } 
         remedy: "give the warp direction in the job (warp)",
       }),
     );
-  if (job.settle)
-    findings.push(
-      buildFormFinding("caution", {
-        code: "form-settle",
-        where: "settle",
-        text: "settle is asked for, but the form is taken as it is and only checked: settling has no effect yet",
-        remedy: "bring the form into balance in the program it comes from, and read the residual here",
-      }),
-    );
   return { field: { warp, weft, direction: job.warp }, findings };
 }
 
@@ -70,6 +64,7 @@ function cutBoundary(
   sound: SoundSurface,
   source: MeshSource,
   held: ReturnType<typeof readHeldPoints>["held"],
+  rough: boolean,
 ): Skeleton {
   const adjacency = buildAdjacency(sound.surface);
   const loops = buildLoops(sound.surface, adjacency);
@@ -86,8 +81,16 @@ function cutBoundary(
       for (let i = 1; i < line.vertices.length; i++)
         lineOfSide.set(sideKey(line.vertices[i - 1], line.vertices[i]), line);
   const { xyz } = sound.surface;
+  // where a form is yet to settle a named line that bends sharply between fixed points is only drawn roughly
+  const findBends = (loop: readonly number[]) => {
+    if (!rough || loop.filter((v) => held.has(v)).length < 2) return findCorners(xyz, loop);
+    const lineAt = (i: number) => lineOfSide.get(sideKey(loop[i], loop[(i + 1) % loop.length]));
+    return findCorners(xyz, loop).filter(
+      (i) => lineAt(i) === undefined || lineAt(i) !== lineAt((i + loop.length - 1) % loop.length),
+    );
+  };
   const cut = loops.map((loop, i) =>
-    cutLoop(loop, i, { xyz, lineOfSide, held, corners: findCorners(xyz, loop), tear: tears.has(i) }),
+    cutLoop(loop, i, { xyz, lineOfSide, held, corners: findBends(loop), tear: tears.has(i) }),
   );
   return {
     loops,
@@ -99,7 +102,7 @@ function cutBoundary(
 }
 
 function reportResidual(
-  sound: SoundSurface,
+  { surface, toSource }: Pick<SoundSurface, "surface" | "toSource">,
   { residual, worst, size }: ResidualReport,
   step: number,
   reach: () => Float64Array<ArrayBuffer>,
@@ -114,8 +117,8 @@ function reportResidual(
   };
   if (holds) return { checks: [check], findings: [] };
   const percent = (r: number) => `${(100 * r).toPrecision(3)} %`;
-  const source = sound.toSource[worst];
-  const words = `residual up to ${percent(residual.max)} of the cloth's force at a vertex (rms ${percent(residual.rms)}, normal ${percent(residual.normalMax)}, limit ${percent(BALANCED)}), worst at vertex ${source} at ${describePlace(sound.surface.xyz, worst)}`;
+  const source = toSource[worst];
+  const words = `residual up to ${percent(residual.max)} of the cloth's force at a vertex (rms ${percent(residual.rms)}, normal ${percent(residual.normalMax)}, limit ${percent(BALANCED)}), worst at vertex ${source} at ${describePlace(surface.xyz, worst)}`;
   const bound = step > 0 ? reach() : null;
   const explained = bound !== null && isExplainedByRounding(size, bound);
   const rounded = `the mesh file's coordinates are rounded to ${1000 * step} mm`;
@@ -138,6 +141,27 @@ function reportResidual(
           "check prestress and cable forces against those the form was found with; the roof will move towards its own balance when it is pulled up",
       });
   return { checks: [check], findings: [finding] };
+}
+
+/** The surface that goes on: settled where the job asks for it. */
+function settle(
+  job: FormJob,
+  sound: SoundSurface,
+  form: { skeleton: Skeleton; edges: FormEdge[]; fixed: Uint8Array<ArrayBuffer>; torn: boolean },
+  context: StationContext,
+): { surface: Surface; findings: Finding[]; checks: Check[] } {
+  const { surface, toSource } = sound;
+  if (!job.settle || form.torn) return { surface, findings: [], checks: [] };
+  const { fixed, edges } = form;
+  const field: StressField = { ...job.prestress, direction: job.warp };
+  const mean = (field.warp + field.weft) / 2;
+  const findings = chooseForcesInPlace(surface.xyz, edges, measureMembraneForces(surface, field), fixed, mean);
+  const task = { surface, fixed, edges, loops: form.skeleton.loops, field, toSource };
+  const settled = settleSurface(task, {
+    ...context,
+    onProgress: (share, words) => context.onProgress?.(0.5 + 0.4 * share, words),
+  });
+  return { ...settled, findings: [...findings, ...settled.findings] };
 }
 
 /** Every boundary side belongs to exactly one edge; all coordinates and forces are finite. */
@@ -177,29 +201,38 @@ export function runForm(source: MeshSource, job: FormJob, context: StationContex
   step(0, "checking the mesh");
   const stress = chooseField(job);
   const sound = buildSoundSurface(source);
-  const { surface } = sound;
   step(0.4, "cutting the boundary into edges");
   const points = readHeldPoints(sound, source);
   addJobAnchorsInPlace(points.held, sound, job.anchors);
-  const skeleton = cutBoundary(sound, source, points.held);
+  const skeleton = cutBoundary(sound, source, points.held, job.settle);
   const taken = new Set([...points.held.values()].map((h) => h.name).filter((n) => n !== null));
-  const even = measureMembraneForces(surface, { warp: 1, weft: 1, direction: null });
-  const named = nameEdges({ xyz: surface.xyz, pull: even.force }, skeleton.runs, skeleton.inner, job.edges, taken);
+  const even = measureMembraneForces(sound.surface, { warp: 1, weft: 1, direction: null });
+  const named = nameEdges(
+    { xyz: sound.surface.xyz, pull: even.force },
+    skeleton.runs,
+    skeleton.inner,
+    job.edges,
+    taken,
+  );
   const edges: FormEdge[] = named.edges.map((n) => n.edge);
   const tears = buildTearFindings(
     sound,
     named.edges.filter((n) => n.tear).map(({ edge }) => ({ id: edge.id, loop: edge.vertices.slice(1) })),
   );
-  const anchorage = nameAnchors(surface, skeleton.anchorVertices, points.held, edges, job.anchors);
-  step(0.7, "balancing cloth and cables");
+  const anchorage = nameAnchors(sound.surface, skeleton.anchorVertices, points.held, edges, job.anchors);
+  step(0.5, job.settle ? "settling" : "balancing cloth and cables");
+  const settling = settle(job, sound, { skeleton, edges, fixed: anchorage.fixed, torn: tears.length > 0 }, context);
+  const { surface } = settling;
+  step(0.9, "balancing cloth and cables");
   const membrane = measureMembraneForces(surface, stress.field);
   const stations = edges.map((e) => (isCable(e) ? measureStations(surface.xyz, e.vertices) : null));
   const cableFindings = balanceCablesInPlace(edges, stations, membrane.force, anchorage.fixed);
   const total = sumForces(membrane, edges, stations);
   const report = measureResidual(surface, membrane, total, anchorage.fixed, stations);
   const { reactions, check } = measureReactionsInPlace(surface, total, edges, anchorage.anchors, stress.field);
-  const balance = reportResidual(sound, report, findStepMetres(source), () =>
-    measureRoundingReach(surface, edges, Math.max(job.prestress.warp, job.prestress.weft), findStepMetres(source)),
+  const grain = surface === sound.surface ? findStepMetres(source) : 0;
+  const balance = reportResidual({ surface, toSource: sound.toSource }, report, grain, () =>
+    measureRoundingReach(surface, edges, Math.max(job.prestress.warp, job.prestress.weft), grain),
   );
   const output: FoundForm = {
     surface,
@@ -223,9 +256,10 @@ export function runForm(source: MeshSource, job: FormJob, context: StationContex
       ...named.findings,
       ...anchorage.findings,
       ...stress.findings,
+      ...settling.findings,
       ...cableFindings,
       ...balance.findings,
     ],
-    checks: [...balance.checks, check, ...checkOutput(output)],
+    checks: [...settling.checks, ...balance.checks, check, ...checkOutput(output)],
   };
 }

@@ -15,8 +15,8 @@ export interface FormEdge {
   loop: number;
   /** Cable force, kN, tension positive; null for clamped and free edges. */
   force: number | null;
-  /** Where the force comes from. */
-  forceFrom: "job" | "balance" | "none";
+  /** Where the force comes from; sag: the usual sag, where a form was settled without any word on it. */
+  forceFrom: "job" | "balance" | "sag" | "none";
   /** Pull of the structure on a clamped edge: resultant (kN) and greatest per metre (kN/m); null otherwise. */
   reaction: { resultant: Vec3; greatest: number } | null;
 }
