@@ -1,0 +1,49 @@
+import { expect, test } from "vitest";
+import { PlanError } from "../../src/core/problem.ts";
+import { balanceHeads } from "../../src/core/rig/balanceHeads.ts";
+
+// Foot, head, sail corner, feet of two stays. Mast 4 m high, the sail pulls level with 10 kN along +x.
+const xyz = [0, 0, 0, 0, 0, 4, 3, 0, 4, -3, 1.5, 0, -3, -1.5, 0];
+const mast = { id: "M1", nodes: [0, 1] as [number, number] };
+const pull = { nodes: [2, 1] as [number, number], target: 10 };
+const stay = (name: string, foot: number, force: number | null = null) => ({ name, nodes: [1, foot], force });
+
+test("a mast with two stays: forces by hand", () => {
+  // 2·S·3/d = 10 along x, strut = 2·S·4/d, d² = 3² + 1.5² + 4²
+  const d = Math.hypot(3, 1.5, 4);
+  const { strut, stay: s } = balanceHeads(xyz, [pull], [mast], [stay("S1", 3), stay("S2", 4)]);
+  expect(s[0]).toBeCloseTo((10 * d) / 6, 9);
+  expect(s[1]).toBeCloseTo((10 * d) / 6, 9);
+  expect(strut[0]).toBeCloseTo(40 / 3, 9);
+});
+
+test("a stay whose force the job gives is taken as it is, its end order does not count", () => {
+  const d = Math.hypot(3, 1.5, 4);
+  const given = { name: "S1", nodes: [3, 1], force: (10 * d) / 6 };
+  const { strut, stay: s } = balanceHeads(xyz, [pull], [mast], [given, stay("S2", 4)]);
+  expect(s).toEqual([given.force, expect.closeTo((10 * d) / 6, 6)]);
+  expect(strut[0]).toBeCloseTo(40 / 3, 6);
+});
+
+test("stays on the side of the pull cannot hold the head: the error names the mast and the force left", () => {
+  const wrong = xyz.map((q, c) => (c === 9 || c === 12 ? 3 : q));
+  let caught: unknown;
+  try {
+    balanceHeads(wrong, [pull], [mast], [stay("S1", 3), stay("S2", 4)]);
+  } catch (error) {
+    caught = error;
+  }
+  expect(caught).toBeInstanceOf(PlanError);
+  expect((caught as PlanError).code).toBe("mast-balance");
+  expect((caught as PlanError).where).toEqual(["M1"]);
+  expect((caught as PlanError).message).toMatch(/M1.*kN/);
+});
+
+test("one stay across the pull leaves the head unheld", () => {
+  const aside = xyz.map((q, c) => (c === 10 ? 5 : q));
+  expect(() => balanceHeads(aside, [pull], [mast], [stay("S1", 3)])).toThrow(/M1/);
+});
+
+test("without masts nothing is balanced", () => {
+  expect(balanceHeads(xyz, [pull], [], [stay("S1", 3, 7), stay("S2", 4)])).toEqual({ strut: [], stay: [7, 0] });
+});
