@@ -1,5 +1,5 @@
 // Mesh coordinates into metres with z up, and whether the size can be a roof at all.
-import type { Finding } from "../problem.ts";
+import { type Finding, PlanError } from "../problem.ts";
 import type { MeshSource } from "../records/job.ts";
 import { buildFormFinding } from "./formFinding.ts";
 
@@ -9,12 +9,16 @@ const METRES: Record<MeshSource["unit"], number> = { m: 1, mm: 0.001, cm: 0.01, 
 /** Greatest extent of a membrane roof, m: outside is a stop. Common practice: none smaller or larger is known to the trade. */
 const EXTENT = { least: 0.5, most: 1500 };
 
+/** Distance from the origin beyond which a coordinate is an error of the file, m. No place on earth is further from another. */
+const FARTHEST = 1e8;
+
 /** Extent that makes a unit worth suggesting, m. */
 const LIKELY = { least: 2, most: 400 };
 
 /**
  * Coordinates in metres, z up; y-up (x, y, z) becomes (x, -z, y).
  * @shape 3*nV @units source.unit -> m
+ * @throws PlanError mesh-coordinate: one lies more than 1e8 m from the origin
  */
 export function convertToMetres(source: MeshSource): Float64Array<ArrayBuffer> {
   // mm and cm are divided, so that 8000 mm is 8 m to the last bit
@@ -22,6 +26,16 @@ export function convertToMetres(source: MeshSource): Float64Array<ArrayBuffer> {
   const factor = divide ? Math.round(1 / METRES[source.unit]) : METRES[source.unit];
   const out = new Float64Array(source.xyz.length);
   for (let i = 0; i < out.length; i++) out[i] = divide ? source.xyz[i] / factor : source.xyz[i] * factor;
+  const far = out.findIndex((c) => !(Math.abs(c) <= FARTHEST));
+  if (far >= 0) {
+    const vertex = Math.floor(far / 3);
+    throw new PlanError(
+      "mesh-coordinate",
+      `coordinate ${"xyz"[far % 3]} of vertex ${vertex} (counted from 0) is ${source.xyz[far]} ${source.unit}, more than ${FARTHEST} m from the origin; correct it, or export the mesh anew`,
+      `vertex ${vertex}`,
+      { vertex },
+    );
+  }
   if (source.up === "y")
     for (let i = 0; i < out.length; i += 3) {
       const y = out[i + 1];

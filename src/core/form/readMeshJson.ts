@@ -16,7 +16,10 @@ function readList(value: unknown, where: string, what: string): unknown[] {
 
 function readIndex(value: unknown, nV: number, where: string): number {
   if (typeof value !== "number" || !Number.isInteger(value) || value < 0 || value >= nV)
-    fail(where, `${JSON.stringify(value)} is no vertex index; whole numbers from 0 to ${nV - 1} are, correct it`);
+    fail(
+      where,
+      `${JSON.stringify(value) ?? "nothing"} is no vertex index; whole numbers from 0 to ${nV - 1} are, correct it`,
+    );
   return value;
 }
 
