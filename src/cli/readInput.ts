@@ -2,9 +2,10 @@
 import { readFileSync, statSync } from "node:fs";
 import { basename, dirname, resolve } from "node:path";
 import type { Catalogues } from "../core/job/catalogues.ts";
-import { leastJob } from "../core/job/readJob.ts";
+import { leastJob } from "../core/job/leastJob.ts";
 import { readJson } from "../core/job/readJson.ts";
-import { decodeText, type PlanInput, readPlanInput, titleOfMesh } from "../core/plan/readPlanInput.ts";
+import { decodeText, titleOfMesh } from "../core/plan/meshText.ts";
+import { type PlanInput, readPlanInput } from "../core/plan/readPlanInput.ts";
 import { type Finding, PlanError } from "../core/problem.ts";
 import { withFile } from "./fileErrors.ts";
 

@@ -1,7 +1,8 @@
 import { existsSync, readFileSync } from "node:fs";
 import fc from "fast-check";
 import { describe, expect, it } from "vitest";
-import { leastJob, readJob } from "../../src/core/job/readJob.ts";
+import { leastJob } from "../../src/core/job/leastJob.ts";
+import { readJob } from "../../src/core/job/readJob.ts";
 import { PlanError } from "../../src/core/problem.ts";
 import { catalogues } from "./catalogueFiles.ts";
 import { buildFullJob } from "./fullJob.ts";

@@ -1,5 +1,6 @@
 import { describe, expect, it } from "vitest";
-import { leastJob, readJob } from "../../src/core/job/readJob.ts";
+import { leastJob } from "../../src/core/job/leastJob.ts";
+import { readJob } from "../../src/core/job/readJob.ts";
 import { measureRevision, writeCanonicalJson } from "../../src/core/job/revision.ts";
 import { catalogues } from "./catalogueFiles.ts";
 

@@ -8,7 +8,7 @@ import { checkJobMeaning } from "./checkJobMeaning.ts";
 import { type DefaultLedger, JOB_DEFAULTS, noteDefault, takeDefault } from "./jobDefaults.ts";
 import { buildJobError, findJobProblems, unknownKey } from "./jobProblems.ts";
 import { type JobFile, jobSchema } from "./jobSchema.ts";
-import { JOB_VERSION, migrateJob } from "./jobVersions.ts";
+import { migrateJob } from "./jobVersions.ts";
 import { noteKeysWithoutEffect } from "./keysWithoutEffect.ts";
 import { checkUsableWidth, resolveCable, resolveFabric } from "./resolveEntries.ts";
 import { resolveRig } from "./resolveRig.ts";
@@ -50,11 +50,6 @@ export function readJob(value: unknown, catalogues: Catalogues): ReadJob {
   const mesh = given.file === undefined ? { inline: given } : { file: given.file };
   const job = resolveJob(file, catalogues, ledger);
   return { job, mesh, unit, up, outside, findings: [...noteKeysWithoutEffect(file), ...ledger.findings] };
-}
-
-/** The least job for a mesh file: nothing decided. A value for readJob, and what `revision` is measured on. */
-export function leastJob(meshFile: string, title: string): unknown {
-  return { format: "seamstay-job", version: JOB_VERSION, title, mesh: { file: meshFile } };
 }
 
 /** Names that JSON can carry and that would reach past the object they stand in. */
