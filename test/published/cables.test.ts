@@ -1,8 +1,16 @@
 // Published and closed-form cases of cable mechanics, each with its source.
 import { expect, test } from "vitest";
+import { readCatalogues } from "../../src/core/job/catalogues.ts";
+import { runPlan } from "../../src/core/plan/runPlan.ts";
 import { measureLink } from "../../src/core/structure/elements.ts";
 import { createEquilibriumSolver, measureInfluence, solveEquilibrium } from "../../src/core/structure/equilibrium.ts";
 import { buildStructure, type ClothElements } from "../../src/core/structure/structure.ts";
+import cables from "../../templates/cables.json";
+import cautions from "../../templates/cautions.json";
+import fabrics from "../../templates/fabrics.json";
+import turnbuckles from "../../templates/turnbuckles.json";
+import { buildGrid, listSides } from "../form/formMeshes.ts";
+import { makeJob } from "../madeJob.ts";
 
 const noCloth: ClothElements = {
   tri: new Uint32Array(0),
@@ -119,4 +127,43 @@ test("stay, stainless 1x19 d 16: 37.755 mm at 50 kN over 15 m, 6.357 kN for 20 K
   const warm = measureLink(fixed, xyz, new Float64Array([(15 / (1 + 50 / EA)) * (1 + 16e-6 * 20)]), 0).force;
   // EA·α·ΔT on the unstrained length; the strained stay differs by its own 0.25 %
   expect(Math.abs(before - warm - 6.357)).toBeLessThan(0.03);
+});
+
+test("T1, M20 turnbuckle with right- and left-hand ends: 7.551 turns are 37.755 mm (two pitches of 2.5 mm a turn, ISO 724)", () => {
+  const catalogue = readCatalogues({ fabrics, cables, turnbuckles, cautions });
+  const { perTurn } = catalogue.turnbuckles["open-body-m20"];
+  expect(Math.abs(7.551 * perTurn - 37.755)).toBeLessThan(1e-3);
+  expect(37.755 / perTurn).toBeCloseTo(7.551, 9);
+});
+
+test("T3, edge cable of 10 m chord and 1/10 sag in cloth of 2 kN/m: T = s·R = 26.000 kN, arc 10.26457 m (closed form)", () => {
+  // cloth between the arc and three straight clamped edges; the chain finds force and length of the cable by itself.
+  // a polygon falls short of its arc with the square of its sides: two meshes give the limit (Richardson)
+  const plan = (n: number) => {
+    const half = Math.atan(1 / 5) * 2;
+    const radius = 13;
+    const mesh = buildGrid(n, Math.round(n / 8), (u, v) => {
+      const a = half * (2 * u - 1);
+      const arc = radius * Math.cos(a) - radius * Math.cos(half);
+      const x = (1 - v) * (5 + radius * Math.sin(a)) + v * 10 * u;
+      return [x, (1 - v) * arc + v * 4, 3];
+    });
+    const [south, east, north, west] = listSides(n, Math.round(n / 8));
+    mesh.lines = [
+      { name: "arc", vertices: south },
+      { name: "frame", vertices: [...east, ...north.slice(1), ...west.slice(1)] },
+    ];
+    mesh.points = [{ name: "held", vertices: [...new Set([...east, ...north, ...west])] }];
+    const job = makeJob({ edges: { arc: { kind: "cable", force: null }, frame: { kind: "clamped" } } });
+    const facts = runPlan(job, { ...mesh, unit: "m", up: "z", outside: "up" }, { revision: "test" }, {});
+    const line = facts.cables?.find((c) => c.id === "arc");
+    if (!line) throw new Error("no cable along the arc");
+    return line;
+  };
+  const [coarse, fine] = [plan(64), plan(128)];
+  const limit = (q: "force" | "erectedLength") => fine[q] + (fine[q] - coarse[q]) / 3;
+  expect(Math.abs(limit("force") - 26)).toBeLessThan(1e-5);
+  expect(Math.abs(limit("erectedLength") - 10.26457)).toBeLessThan(1e-5);
+  // slack length by N = EA·(L − L0)/L0
+  expect(fine.slackLength).toBeCloseTo(fine.erectedLength / (1 + fine.force / fine.EA), 12);
 });
