@@ -71,7 +71,10 @@ export interface RigDecision {
   stages: number[];
   /** degC */
   temperature: number;
-  /** Share of the weakest of cable, turnbuckle, fitting and anchor that no step may pass. */
+  /**
+   * Share of a part's own capacity that it may carry at any step of the tensioning: a cable or stay of breaking force B may carry
+   * limit·B, a turnbuckle of capacity C limit·C. It holds for every member by itself; parts without a capacity are not judged.
+   */
   limit: number;
   /** Share by which a reading may be off. */
   readingError: number;
@@ -104,6 +107,8 @@ export interface FactsAdjuster {
   capacity: number | null;
   range: { shortest: number; longest: number };
   perTurn: number;
+  /** Nominal diameter of its thread, mm, where known. */
+  thread?: number;
   /** Anchor it stands at. */
   anchor: string;
   turnbuckle: string;
@@ -142,6 +147,10 @@ export interface FactsMove {
   expect: number;
   low: number;
   high: number;
+  /**
+   * Of all members, the one nearest what it may carry right after the step: its force, and share = force / (limit · its breaking
+   * force or capacity), so that 1 is the limit itself. Where no member has a capacity: the greatest force, share 0.
+   */
   greatest: { id: string; kN: number; share: number };
 }
 
@@ -150,14 +159,17 @@ export interface FactsStage {
   fraction: number;
   moves: FactsMove[];
   forces: Record<string, number>;
+  /** Where the near end of each adjuster stands at the end of the stage, by adjuster, m. */
+  corners?: Record<string, Vec3>;
 }
 
 export interface FactsTensioning {
   referenceTemperature: number;
   stages: FactsStage[];
   temperatureTable: { temperature: number; forces: Record<string, number> }[];
-  /** Share by which a reading may be off, and the share of the weakest part no step passes. */
+  /** Share by which a reading may be off. */
   readingError: number;
+  /** Share of a member's breaking force or capacity that it may carry at any step: RigDecision.limit. */
   limit: number;
   /** True where every input the schedule stands on was given by the job. */
   issuable: boolean;

@@ -4,7 +4,7 @@ import { PlanError } from "../problem.ts";
 import type { AdjusterDecision, Turnbuckle } from "../records/rig.ts";
 import { buildStiffness } from "../structure/cloth.ts";
 import { buildStructure, type Structure } from "../structure/structure.ts";
-import { balanceHeads } from "./balanceHeads.ts";
+import { balanceHeads, type HeadPull } from "./balanceHeads.ts";
 import type { RigInput } from "./rigInput.ts";
 import {
   holdClampedEdges,
@@ -155,9 +155,45 @@ function layCables(input: RigInput, list: LinkList): { cables: RigCable[]; atEnd
   return { cables, atEnds };
 }
 
+/** Masts between their places, and the heads they free: ends named by an anchor or adjuster, else the end `to`. */
+function placeStruts(input: RigInput, nodes: NodeList, placed: PlacedAdjuster[]) {
+  const heads: number[] = [];
+  const struts = input.rig.struts.map((s) => {
+    const ends: [number, number] = [
+      resolvePlace(input, nodes, placed, s.from, s.name),
+      resolvePlace(input, nodes, placed, s.to, s.name),
+    ];
+    const named = [s.from, s.to].map((place) => typeof place === "string");
+    if (!named[0] && !named[1]) named[1] = true;
+    ends.forEach((v, end) => {
+      if (!named[end] || heads.includes(v)) return;
+      heads.push(v);
+      nodes.held.fill(0, 3 * v, 3 * v + 3);
+    });
+    return { id: s.name, nodes: ends, EA: s.EA };
+  });
+  return { struts, heads };
+}
+
+/** What pulls at mast heads: adjusters whose far pin they are, and the form itself where a corner sits on the mast. */
+function listPulls(input: RigInput, nodes: NodeList, placed: PlacedAdjuster[]): HeadPull[] {
+  const { xyz } = nodes;
+  const adjusters = placed.map(({ nodes: [near, head], target }) => {
+    const d = [0, 1, 2].map((k) => xyz[3 * near + k] - xyz[3 * head + k]);
+    const l = Math.sqrt(d[0] ** 2 + d[1] ** 2 + d[2] ** 2);
+    return { head, force: d.map((q) => (q * target) / l) };
+  });
+  const taken = new Set(placed.map((a) => a.anchor));
+  const direct = input.form.reactions.flatMap((r) => {
+    const anchor = input.form.anchors.find((a) => a.id === r.anchor);
+    return anchor && !taken.has(anchor.id) ? [{ head: anchor.vertex, force: r.force }] : [];
+  });
+  return [...adjusters, ...direct];
+}
+
 /**
  * Builds the rig of a form.
- * @throws PlanError adjuster-anchor, adjuster-slack, adjuster-turnbuckle, rig-place, rig-cable, structure-link
+ * @throws PlanError adjuster-anchor, adjuster-slack, adjuster-end, mast-balance, rig-place, rig-cable, structure-link
  */
 export function buildRig(input: RigInput): Rig {
   const { form, layout } = input;
@@ -166,32 +202,27 @@ export function buildRig(input: RigInput): Rig {
   for (let v = 0; v < form.fixed.length; v++) if (form.fixed[v]) nodes.held.fill(1, 3 * v, 3 * v + 3);
   holdClampedEdges(input, nodes);
   const placed = placeAdjusters(input, nodes);
-  const struts = input.rig.struts.map((s) => {
-    const foot = resolvePlace(input, nodes, placed, s.from, s.name);
-    const head = resolvePlace(input, nodes, placed, s.to, s.name);
-    nodes.held.fill(0, 3 * head, 3 * head + 3);
-    return { id: s.name, nodes: [foot, head] as [number, number], EA: s.EA };
-  });
+  const { struts, heads } = placeStruts(input, nodes, placed);
   const stays = input.rig.stays.map((s) => ({
     ...s,
     nodes: [resolvePlace(input, nodes, placed, s.from, s.name), resolvePlace(input, nodes, placed, s.to, s.name)],
   }));
   const list: LinkList = { link: [], EA: [], strut: [], L0: [], xyz: nodes.xyz };
   const { cables, atEnds } = layCables(input, list);
-  const heads = balanceHeads(nodes.xyz, placed, struts, stays);
+  const forces = balanceHeads(nodes.xyz, heads, listPulls(input, nodes, placed), { struts, stays });
   stays.forEach((s, i) => {
-    const firstLink = addLink(list, s.nodes, s.EA, heads.stay[i]);
+    const firstLink = addLink(list, s.nodes, s.EA, forces.stay[i]);
     cables.push({
       id: s.name,
       edge: null,
       nodes: s.nodes,
       EA: s.EA,
-      force: heads.stay[i],
+      force: forces.stay[i],
       minBreakingForce: s.minBreakingForce,
       firstLink,
     });
   });
-  const built = struts.map((s, i) => ({ ...s, link: addLink(list, s.nodes, s.EA, -heads.strut[i], 1) }));
+  const built = struts.map((s, i) => ({ ...s, link: addLink(list, s.nodes, s.EA, -forces.strut[i], 1) }));
   const adjusters = [...placed, ...atEnds].map((a) => ({ ...a, link: addLink(list, a.nodes, a.EA, a.target) }));
   const { cloth, panelOf, cut } = gatherCloth(input);
   const structure = buildStructure({ xyz: new Float64Array(nodes.xyz), held: new Uint8Array(nodes.held) }, cloth, {

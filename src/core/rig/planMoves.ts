@@ -5,6 +5,7 @@ import type { FactsMove, FactsStage, RigDecision } from "../records/rig.ts";
 import { measureLink } from "../structure/elements.ts";
 import type { EquilibriumSolver } from "../structure/equilibrium.ts";
 import { vertexAt } from "../surface/measures.ts";
+import type { Vec3 } from "../surface/surface.ts";
 import type { Rig } from "./buildRig.ts";
 import { measureAdjusterInfluence, type RigState, readAdjusters, solveState } from "./solveLengths.ts";
 
@@ -75,7 +76,10 @@ export function roundLengths(rig: Rig, solver: EquilibriumSolver, state: RigStat
   return from.map((f, i) => f - count[i] * notch[i]);
 }
 
-/** The member nearest its limit in a state: force over limit, the limit being a share of the weakest part. */
+/**
+ * The member nearest what it may carry in a state; share = force / (limit · its breaking force or capacity), 1 at the limit.
+ * Each member is judged by its own capacity; those without one only where no member has any.
+ */
 export function findGreatest(rig: Rig, state: RigState, limit: number): FactsMove["greatest"] {
   let greatest = { id: "", kN: 0, share: 0 };
   const offer = (id: string, kN: number, capacity: number | null) => {
@@ -107,6 +111,12 @@ export function readForces(rig: Rig, state: RigState): Record<string, number> {
   for (const c of rig.cables) out[c.id] = measureCable(rig, state, c);
   for (const s of rig.struts) out[s.id] = measureLink(rig.structure, state.x, state.L0, s.link).force;
   return out;
+}
+
+/** Where the near end of each adjuster stands, by adjuster, m. */
+export function readCorners(rig: Rig, state: RigState): Record<string, Vec3> {
+  const surface = { xyz: state.x, tri: new Uint32Array(0) };
+  return Object.fromEntries(rig.adjusters.map((a) => [a.id, vertexAt(surface, a.nodes[0])]));
 }
 
 /** What a tape reads between the pins of an adjuster: its stretched length, or its own length where it hangs slack. */
@@ -169,7 +179,13 @@ export function playStage(
     }
   });
   return {
-    stage: { name: stage.name, fraction: stage.fraction, moves, forces: readForces(rig, stage.end) },
+    stage: {
+      name: stage.name,
+      fraction: stage.fraction,
+      moves,
+      forces: readForces(rig, stage.end),
+      corners: readCorners(rig, stage.end),
+    },
     states: after,
   };
 }

@@ -1,0 +1,109 @@
+// A sail with a guyed mast at each of its high corners, from the job to the played moves.
+import { beforeAll, expect, test } from "vitest";
+import { PlanError } from "../../src/core/problem.ts";
+import type { Job, RigJob } from "../../src/core/records/job.ts";
+import type { FactsRig } from "../../src/core/records/rig.ts";
+import { type RigResult, runRig } from "../../src/core/rig/runRig.ts";
+import type { Vec3 } from "../../src/core/surface/surface.ts";
+import { giveAdjusters, makeSmallSail, planInput } from "./madeRig.ts";
+import { buildAgain } from "./solveAgain.ts";
+
+const made = makeSmallSail([8, 6]);
+const heads: Record<string, Vec3> = { "corner-se": [5.697, -4.682, 4.622], "corner-nw": [-5.697, 4.682, 4.622] };
+
+/** Mast and two stays at each head; way: 1 puts the stays' feet behind the mast, -1 under the sail. */
+function guy(way: 1 | -1): Pick<RigJob, "struts" | "stays"> {
+  const places = Object.entries(heads);
+  const out = ([x, y]: Vec3) => [Math.sign(x), Math.sign(y)];
+  return {
+    struts: places.map(([corner, at], i) => {
+      const [a, b] = out(at);
+      return { name: `mast-${i + 1}`, from: [at[0] + 0.3 * a, at[1] + 0.3 * b, 0] as Vec3, to: corner, EA: 630000 };
+    }),
+    stays: places.flatMap(([corner, at], i) => {
+      const [a, b] = out(at);
+      return [
+        [3.5, 1.2],
+        [1.2, 3.5],
+      ].map(([dx, dy], k) => ({
+        name: `stay-${2 * i + k + 1}`,
+        from: corner,
+        to: [at[0] + way * a * dx, at[1] + way * b * dy, 0] as Vec3,
+        EA: 25000,
+        force: null,
+        minBreakingForce: 200,
+      }));
+    }),
+  };
+}
+
+const anchors: Job["anchors"] = Object.entries(heads).map(([name, support]) => ({ name, support }));
+const plan = (rig: Partial<RigJob>) => planInput(made, { anchors }, { adjusters: giveAdjusters(made), ...rig });
+
+let result: { output: RigResult; checks: { holds: boolean }[]; findings: { code: string; level: string }[] };
+let rig: FactsRig;
+
+beforeAll(() => {
+  result = runRig(plan(guy(1)).input, {});
+  if (!result.output.rig) throw new Error("no rig");
+  rig = result.output.rig;
+});
+
+test("the heads are free and in balance: residual below 1e-8 by a second method, masts pressed, stays taut", () => {
+  expect(result.checks.every((c) => c.holds)).toBe(true);
+  expect(result.findings.filter((f) => f.level === "stop")).toEqual([]);
+  for (const s of rig.struts) expect(rig.fixed).not.toContain(s.nodes[1]);
+  expect(buildAgain(rig, plan(guy(1)).input.fabric).measureResidual()).toBeLessThan(1e-8);
+  const forces = result.output.asBuilt?.forces ?? {};
+  for (const name of ["mast-1", "mast-2"]) expect(forces[name]).toBeLessThan(-20);
+  for (const name of ["stay-1", "stay-2", "stay-3", "stay-4"]) expect(forces[name]).toBeGreaterThan(10);
+});
+
+test("stays carry what balance asks, within the rounding of the moves", () => {
+  const forces = result.output.asBuilt?.forces ?? {};
+  for (const c of result.output.cables) expect(Math.abs(forces[c.id] / c.force - 1)).toBeLessThan(0.03);
+});
+
+test("adjusters reach their targets in every stage, heads and all", () => {
+  for (const stage of result.output.tensioning?.stages ?? [])
+    for (const a of rig.adjusters) expect(Math.abs(stage.forces[a.id] / a.target - stage.fraction)).toBeLessThan(0.1);
+});
+
+test("a mast named from its head instead of its foot is the same mast", () => {
+  const { struts, stays } = guy(1);
+  const turned = struts.map((s) => ({ ...s, from: s.to, to: s.from }));
+  const other = runRig(plan({ struts: turned, stays }).input, {}).output;
+  for (const [id, kN] of Object.entries(result.output.asBuilt?.forces ?? {}))
+    expect(other.asBuilt?.forces[id]).toBeCloseTo(kN, 5);
+});
+
+test("a corner that sits on its mast without an adjuster is held by it", () => {
+  const { struts, stays } = guy(1);
+  const place = made.corners.find((c) => c.name === "corner-nw")!.vertex;
+  const at = [0, 1, 2].map((k) => made.xyz[3 * place + k]);
+  const own = { ...struts[1], from: [at[0] - 0.2, at[1] + 0.2, 0] as Vec3 };
+  const adjusters = giveAdjusters(made).filter((a) => a.anchor !== "corner-nw");
+  const { output, checks } = runRig(plan({ adjusters, struts: [own], stays: stays.slice(2) }).input, {});
+  expect(checks.every((c) => c.holds)).toBe(true);
+  expect(output.rig?.fixed).not.toContain(place);
+  expect(output.asBuilt?.forces["mast-2"]).toBeLessThan(-20);
+});
+
+test("a mast whose stays lie under the sail cannot be balanced: the error names the masts", () => {
+  let caught: unknown;
+  try {
+    runRig(plan(guy(-1)).input, {});
+  } catch (error) {
+    caught = error;
+  }
+  expect(caught).toBeInstanceOf(PlanError);
+  expect((caught as PlanError).code).toBe("mast-balance");
+  expect((caught as PlanError).where).toEqual(["mast-1", "mast-2"]);
+});
+
+test("a mast or stay at a place the form has not is an error with both names", () => {
+  const { struts, stays } = guy(1);
+  expect(() => runRig(plan({ struts: [{ ...struts[0], to: "corner-x" }], stays }).input, {})).toThrow(
+    /mast-1.*"corner-x".*corner-sw/,
+  );
+});
