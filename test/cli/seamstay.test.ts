@@ -58,12 +58,10 @@ describe("the built command line", () => {
     expect(hash(join(scratch, `b-${name}`))).toEqual(hash(join(scratch, `a-${name}`)));
     const facts = JSON.parse(readFileSync(join(scratch, `a-${name}`, "facts.json"), "utf8"));
     expect(facts.job.revision).toMatch(/^[0-9A-F]{8}$/);
-    const { edges, residual } = facts.form;
-    expect(residual.normalMax).toBeLessThan(name === "market-hall" ? 1e-8 : 1e-6);
-    // The boat shed was made with these forces by a program that knows nothing of the form station.
-    const forces = edges.map((e: { force: number | null }) => e.force);
-    if (name === "boat-shed")
-      expect(forces.map((kN: number) => Math.round(1000 * kN))).toEqual([24000, 21000, 24000, 21000]);
+    expect(facts.form.residual.normalMax).toBeLessThan(name === "market-hall" ? 1e-8 : 1e-6);
+    // What the job gives is enough to issue a schedule, where there is one.
+    expect(facts.tensioning?.issuable ?? true).toBe(true);
+    expect(facts.rig === undefined).toBe(name === "market-hall");
   });
 
   it("stops after the station asked for", () => {

@@ -1,6 +1,6 @@
 // Which generator makes which starter's mesh.
 import type { MadeForm } from "./madeForm.ts";
-import { makeSaddle, makeSail } from "./makeForms.ts";
+import { makeCone, makeSaddle, makeSail } from "./makeForms.ts";
 
 export const STARTER_FORMS: { name: string; head: string; make: () => MadeForm }[] = [
   {
@@ -21,6 +21,28 @@ export const STARTER_FORMS: { name: string; head: string; make: () => MadeForm }
         ],
         [12, 10.5, 12, 10.5],
         [48, 40],
+      ),
+  },
+  {
+    name: "bandstand",
+    head: "Bandstand on the green: minimal surface from a ring of 3.6 m down to four edge cables of 25 kN at 2 kN/m",
+    make: () =>
+      makeCone(
+        { centre: [0, 0, 4.8], radius: 1.8 },
+        [
+          { name: "pier-sw", at: [-5, -5, 3] },
+          { name: "pier-se", at: [5, -5, 3] },
+          { name: "mast-ne", at: [5, 5, 3] },
+          { name: "pier-nw", at: [-5, 5, 3] },
+        ],
+        [
+          { name: "south", pull: 12.5 },
+          { name: "east", pull: 12.5 },
+          { name: "north", pull: 12.5 },
+          { name: "west", pull: 12.5 },
+        ],
+        [20, 22],
+        (-3 * Math.PI) / 4,
       ),
   },
 ];
