@@ -1,76 +1,45 @@
 import { spawnSync } from "node:child_process";
-import { existsSync, mkdtempSync, readFileSync, writeFileSync } from "node:fs";
-import { tmpdir } from "node:os";
-import { join } from "node:path";
 import fontkit from "@pdf-lib/fontkit";
 import { PDFDocument } from "pdf-lib";
 import { describe, expect, test } from "vitest";
-import { writePapers } from "../../src/core/papers/writePapers.ts";
+import { writeFindingSheets } from "../../src/core/papers/pdf/findingSheets.ts";
 import type { Facts } from "../../src/core/records/facts.ts";
 import { crowded } from "./crowdedFacts.ts";
+import { fonts, missing, papersOf, reason, saved, shared, sizeOf, textOf, wordsOf } from "./madePapers.ts";
 import { readCsv } from "./readCsv.ts";
 import { HOSTILE, sampleFacts } from "./sampleFacts.ts";
+import { withRig } from "./sampleRig.ts";
 
-const face = (name: string) => new Uint8Array(readFileSync(`node_modules/dejavu-fonts-ttf/ttf/${name}.ttf`));
-const fonts = { regular: face("DejaVuSans"), bold: face("DejaVuSans-Bold") };
-const has = (tool: string) => ["/usr/bin", "/usr/local/bin", "/bin"].some((d) => existsSync(join(d, tool)));
-const missing = ["qpdf", "pdftotext", "pdftoppm"].filter((t) => !has(t));
-const reason = missing.length > 0 ? ` (skipped: ${missing.join(", ")} not on this machine)` : "";
-const MM = 72 / 25.4;
 const SHEETS = { A4: [297, 210], A3: [420, 297], Letter: [279.4, 215.9], Tabloid: [431.8, 279.4] } as const;
 
-async function papersOf(facts: Facts): Promise<Map<string, Uint8Array>> {
-  const { files } = await writePapers(facts, { fonts });
-  expect(new Set(files.map((f) => f.path.toLowerCase())).size).toBe(files.length);
-  return new Map(files.map((f) => [f.path, f.bytes]));
-}
-
-function saved(bytes: Uint8Array): string {
-  const file = join(mkdtempSync(join(tmpdir(), "papers-")), "paper.pdf");
-  writeFileSync(file, bytes);
-  return file;
-}
-
-interface Word {
-  page: number;
-  text: string;
-  /** mm from the upper left */
-  x0: number;
-  y0: number;
-  x1: number;
-  y1: number;
-}
-
-/** Every word of a PDF with its box, by a reader that is not ours. */
-function wordsOf(bytes: Uint8Array): { words: Word[]; pages: number } {
-  const run = spawnSync("pdftotext", ["-bbox", saved(bytes), "-"], { encoding: "utf8", maxBuffer: 1 << 28 });
-  expect(run.status).toBe(0);
-  let page = 0;
-  const words: Word[] = [];
-  for (const m of run.stdout.matchAll(
-    /<page |<word xMin="([\d.-]+)" yMin="([\d.-]+)" xMax="([\d.-]+)" yMax="([\d.-]+)">([^<]*)</g,
-  )) {
-    if (m[0].startsWith("<page")) page++;
-    else {
-      const [x0, y0, x1, y1] = [m[1], m[2], m[3], m[4]].map((v) => Number(v) / MM) as [number, number, number, number];
-      words.push({ page, text: m[5]!, x0, y0, x1, y1 });
-    }
-  }
-  return { words, pages: page };
-}
+const plain = () => withRig(sampleFacts());
+const hostile = () =>
+  withRig(sampleFacts({ names: HOSTILE, sheet: "Letter", units: "imperial" }), { names: HOSTILE, issuable: true });
+const full = () => withRig(crowded(), { more: 26 });
 
 const SETS: Record<string, () => Facts> = {
-  "plain, A4": () => sampleFacts(),
-  "hostile names, Letter": () => sampleFacts({ names: HOSTILE, sheet: "Letter", units: "imperial" }),
-  "no stop, A3": () => sampleFacts({ stop: false, sheet: "A3" }),
-  "crowded, A4": crowded,
-  "crowded, Tabloid": () => ({ ...crowded(), job: { ...crowded().job, sheet: "Tabloid" } }),
+  "plain, A4": plain,
+  "hostile names, Letter, imperial": hostile,
+  "no stop, rig for issue, A3": () => withRig(sampleFacts({ stop: false, sheet: "A3" }), { issuable: true }),
+  "no stop, rig on defaults, A4": () => withRig(sampleFacts({ stop: false })),
+  "crowded, A4": full,
+  "crowded, Tabloid": () => ({ ...full(), job: { ...crowded().job, sheet: "Tabloid" } }),
 };
+
+const PDFS = ["panel-cards.pdf", "findings.pdf", "cables.pdf", "tensioning-schedule.pdf"];
+
+/** facts.md: an open stop stamps all but the findings; the rig's papers are stamped too while anything is a default. */
+function stamped(facts: Facts, name: string): boolean {
+  if (name === "findings.pdf") return false;
+  const stop = facts.findings.some((f) => f.level === "stop");
+  const rig = name === "cables.pdf" || name === "tensioning-schedule.pdf";
+  return stop || (rig && facts.tensioning?.issuable !== true);
+}
 
 describe("writePapers", () => {
   test("writes every paper under a safe path, and the same bytes twice", async () => {
-    for (const make of [() => sampleFacts({ names: HOSTILE }), () => sampleFacts({ date: "" })]) {
-      const first = await papersOf(make());
+    for (const make of [hostile, () => sampleFacts({ date: "" })]) {
+      const first = await shared(make);
       const second = await papersOf(make());
       expect([...second.keys()]).toEqual([...first.keys()]);
       for (const [path, bytes] of first) {
@@ -78,12 +47,14 @@ describe("writePapers", () => {
         expect(Buffer.compare(bytes, second.get(path)!), path).toBe(0);
       }
     }
-    const plain = await papersOf(sampleFacts());
-    expect([...plain.keys()].sort()).toEqual(
+    const rig = ["cables.csv", "tensioning.csv", "hardware.csv", "cables.pdf", "tensioning-schedule.pdf"];
+    const made = await shared(plain);
+    expect([...made.keys()].sort()).toEqual(
       [
         ...["R1", "R2"].flatMap((r) => [`rolls/${r}.dxf`, `rolls/${r}.svg`]),
         ...["P1", "P2", "P3"].flatMap((p) => [`panels/${p}.dxf`, `panels/${p}.svg`]),
         ...["rolls.csv", "panels.csv", "seams.csv", "panel-cards.pdf", "findings.pdf"],
+        ...rig,
       ].sort(),
     );
   });
@@ -92,13 +63,14 @@ describe("writePapers", () => {
     const { format, version, job, fabrics, checks, findings } = sampleFacts();
     expect([...(await papersOf({ format, version, job, fabrics, checks, findings })).keys()]).toEqual(["findings.pdf"]);
     const { rolls: _, pieces: __, ...noRolls } = sampleFacts();
+    // Clamped all round: no cables and no adjusters, so no paper of a rig.
     const names = [...(await papersOf(noRolls)).keys()];
     expect(names).toContain("panel-cards.pdf");
-    expect(names.some((n) => n.startsWith("rolls"))).toBe(false);
+    expect(names.some((n) => /^(rolls|cables|tensioning|hardware)/.test(n))).toBe(false);
   });
 
   test("facts are not changed", async () => {
-    const facts = sampleFacts({ names: HOSTILE });
+    const facts = hostile();
     const before = JSON.stringify(facts);
     await papersOf(facts);
     expect(JSON.stringify(facts)).toBe(before);
@@ -138,9 +110,9 @@ describe.skipIf(missing.length > 0)(`PDF sheets read by other programs${reason}`
     test(`${title}: sound files, every word inside its frame, none over another, none under 9 pt`, async () => {
       const facts = make();
       const [width, height] = SHEETS[facts.job.sheet];
-      const papers = await papersOf(facts);
+      const papers = await shared(make);
       const [outside, small, overlaps]: [string[], string[], string[]] = [[], [], []];
-      for (const name of ["panel-cards.pdf", "findings.pdf"]) {
+      for (const name of PDFS) {
         expect(spawnSync("qpdf", ["--check", saved(papers.get(name)!)]).status).toBe(0);
         const { words, pages } = wordsOf(papers.get(name)!);
         for (let page = 1; page <= pages; page++) {
@@ -148,8 +120,7 @@ describe.skipIf(missing.length > 0)(`PDF sheets read by other programs${reason}`
           for (const w of here) {
             const inside = w.x0 > 20 && w.x1 < width - 10 && w.y0 > 9.5 && w.y1 < height - 9.5;
             if (!inside) outside.push(`${name} sheet ${page}: "${w.text}" at ${w.x0.toFixed(1)}, ${w.y0.toFixed(1)}`);
-            // The box of a word is ascent and descent of its face: 1.164 of the size in DejaVu Sans.
-            if (((w.y1 - w.y0) * MM) / 1.164 < 8.95) small.push(w.text);
+            if (sizeOf(w) < 8.95) small.push(w.text);
           }
           // Letters stand within 0.15 … 0.82 of the height of the box; only those parts must be apart.
           const ink = here.map((w) => ({ ...w, y0: w.y0 + 0.2 * (w.y1 - w.y0), y1: w.y1 - 0.22 * (w.y1 - w.y0) }));
@@ -161,7 +132,8 @@ describe.skipIf(missing.length > 0)(`PDF sheets read by other programs${reason}`
             }
           });
           const text = here.map((w) => w.text).join(" ");
-          expect(text.includes("NOT FOR ISSUE")).toBe(facts.findings.some((f) => f.level === "stop"));
+          const head = here.filter((w) => w.y0 < 24).map((w) => w.text);
+          expect(head.join(" ").includes("NOT FOR ISSUE"), `${name} sheet ${page}`).toBe(stamped(facts, name));
           for (const field of [
             "Title",
             "Issue",
@@ -181,8 +153,8 @@ describe.skipIf(missing.length > 0)(`PDF sheets read by other programs${reason}`
   }
 
   test("a card holds what the welder measures", async () => {
-    const facts = sampleFacts();
-    const { words } = wordsOf((await papersOf(facts)).get("panel-cards.pdf")!);
+    const facts = plain();
+    const { words } = wordsOf((await shared(plain)).get("panel-cards.pdf")!);
     const card = words.filter((w) => w.page === 1).map((w) => w.text);
     const panel = facts.panels![0]!;
     for (const side of panel.sides) {
@@ -198,11 +170,8 @@ describe.skipIf(missing.length > 0)(`PDF sheets read by other programs${reason}`
   });
 
   test("the findings sheets hold every finding and check, and say what the plan does not do", async () => {
-    const facts = crowded();
-    const papers = await papersOf(facts);
-    const text = wordsOf(papers.get("findings.pdf")!)
-      .words.map((w) => w.text)
-      .join(" ");
+    const facts = full();
+    const text = textOf((await shared(full)).get("findings.pdf")!);
     for (const f of facts.findings) expect(text.replace(/ /g, "")).toContain(f.code);
     expect(text).toContain("does not design for wind, snow or ponding");
     expect(text).toContain("licensed engineer decide");
@@ -211,7 +180,7 @@ describe.skipIf(missing.length > 0)(`PDF sheets read by other programs${reason}`
 
   test("no date, no clock: the file says nothing of the day it was made", async () => {
     const info = (facts: Facts) =>
-      papersOf(facts).then((p) => spawnSync("pdfinfo", [saved(p.get("findings.pdf")!)], { encoding: "utf8" }).stdout);
+      writeFindingSheets(facts, fonts).then((b) => spawnSync("pdfinfo", [saved(b)], { encoding: "utf8" }).stdout);
     expect(await info(sampleFacts({ date: "" }))).not.toContain("CreationDate");
     expect(await info(sampleFacts({ date: "2026-03-02" }))).toMatch(/CreationDate:.*Mar +2.*2026/);
     expect(await info(sampleFacts())).toMatch(/Producer: +Seamstay\n/);

@@ -1,63 +1,184 @@
-// Standing words of the findings sheets: cautions before the work they belong to, and what this tool leaves to the engineer.
-// Signal words after ANSI Z535.6 (check-values 7.3), graded by the worst credible outcome; order: hazard, consequence, how to
-// avoid. The lift-off speed is computed from the cloth's own weight, 0.625 v² = m g (check-values 6.6).
-import type { Facts } from "../records/facts.ts";
-import { decimal } from "./decimal.ts";
+// Standing words of the sheets: cautions before the work they belong to, and what this tool leaves to the engineer. The one
+// source of both. All of it common practice, not taken from a code. Signal words after ANSI Z535.6 (check-values 7.3), graded by
+// the worst credible outcome; each caution says hazard, consequence, how to avoid, in that order.
+
+/** Papers a caution can stand on. */
+export type CautionPaper = "schedule" | "cables" | "hardware" | "rolls" | "panels" | "seams" | "findings";
 
 export interface Caution {
-  word: "DANGER" | "WARNING" | "CAUTION" | "NOTICE";
-  text: string;
+  id: string;
+  signal: "DANGER" | "WARNING" | "CAUTION" | "NOTICE";
+  papers: readonly CautionPaper[];
+  hazard: string;
+  consequence: string;
+  avoid: string;
 }
 
-const GRAVITY = 9.81;
-/** Dynamic pressure at 1 m/s, Pa: half of 1.25 kg/m3 (EN 1991-1-4 recommended value). */
-const PRESSURE = 0.625;
-
-/** Wind at which suction equal to its own weight lifts a loose cloth, m/s. @units mass in kg/m2 */
-export function liftOffSpeed(mass: number): number {
-  return Math.sqrt((mass * GRAVITY) / PRESSURE);
-}
-
-/** Cautions for whoever handles the cloth, the gravest first. */
-export function cautions(facts: Facts): Caution[] {
-  const used = [...new Set((facts.panels ?? []).map((p) => p.fabric))];
-  const speeds = used.flatMap((id) => {
-    const mass = facts.fabrics[id]?.mass;
-    return mass === undefined
-      ? []
-      : [`${id} (${decimal(mass, 2)} kg/m²) at about ${decimal(liftOffSpeed(mass), 1)} m/s`];
-  });
-  const lift = speeds.length > 0 ? ` By its own weight alone it lifts: ${speeds.join("; ")}, gusts included.` : "";
-  const total = (facts.panels ?? []).reduce((s, p) => s + (facts.fabrics[p.fabric]?.mass ?? 0) * p.area.cut, 0);
-  const weight =
-    total > 0 ? ` The panels together weigh about ${decimal(total, 0)} kg without cables, fittings and patches.` : "";
-  return [
-    {
-      word: "WARNING",
-      text: `A loose or half-tensioned membrane is a sail.${lift} It can throw people from platforms and pull them from the ground. Do not unfold it when the mean wind or the forecast gust is above the limit the engineer has set for this site; hold every corner before the cloth is let go; agree a storm state that can be reached within the hour.`,
-    },
-    {
-      word: "WARNING",
-      text: "Tensioned cables, straps and fittings can break or slip. They strike with deadly force along their line and below it. Keep everybody out of the line of pull and out from under the membrane while it is lifted or tensioned; close off the ground below; work from platforms, never on the cloth.",
-    },
-    {
-      word: "CAUTION",
-      text: `Folded cloth is heavy and slides.${weight} It can crush hands and feet and strain backs. Lift packs with slings and a spreader sized for the weight; wear gloves and shoes with caps; do not stand on folded cloth.`,
-    },
-    {
-      word: "CAUTION",
-      text: "Hot-air and high-frequency welders burn, and fumes of coated cloth irritate. Draw off fumes, keep hands off the nozzle and the electrode, follow the maker's instructions of machine and cloth.",
-    },
-    {
-      word: "NOTICE",
-      text: "Sharp folds, dragging and walking on the cloth damage coating and yarn; glass cloth must not be folded sharply at all. Roll it on tubes, keep the floor clean, mark only with the pen the cloth's maker allows.",
-    },
-    {
-      word: "NOTICE",
-      text: "A panel cut from another batch, turned over, or laid across the warp does not fit and cannot be mended. Check batch, face and warp arrow before the first cut of every roll, and the 1000 mm bar in every cut file.",
-    },
-  ];
-}
+/** All of them, the gravest first. */
+export const CAUTIONS: readonly Caution[] = [
+  {
+    id: "cable-release",
+    signal: "DANGER",
+    papers: ["schedule", "cables", "findings"],
+    hazard: "A cable or turnbuckle under tension that comes free whips along its own line.",
+    consequence: "It kills or maims whoever stands in that line.",
+    avoid:
+      "Stand beside the line, never in it or in the bight; nobody below. Secure the far end before loosening. Release tension stage by stage, never by cutting.",
+  },
+  {
+    id: "fall",
+    signal: "DANGER",
+    papers: ["schedule", "findings"],
+    hazard: "Work at height on edges, masts and cloth that gives way underfoot.",
+    consequence: "A fall kills.",
+    avoid:
+      "Work from a platform or clipped on to a point the engineer has named. Cloth, edge cables and clamp bars are no anchor points.",
+  },
+  {
+    id: "wind-lift",
+    signal: "DANGER",
+    papers: ["schedule", "findings"],
+    hazard: "Slack or half-tensioned cloth is a sail: it lifts and flogs; a free membrane already lifts in a breeze.",
+    consequence: "People are thrown, masts pulled over, the cloth torn.",
+    avoid:
+      "Unfold only as much as can be secured. Do not start, and stop and tie down, above the wind limit set by the engineer. Measure gusts at the height of the roof. Agree a storm state that can be reached within the hour.",
+  },
+  {
+    id: "suspended-load",
+    signal: "WARNING",
+    papers: ["schedule", "findings"],
+    hazard: "Folded cloth, masts and clamp bars hang over the work.",
+    consequence: "A dropped load can kill.",
+    avoid:
+      "Nobody under the load. Lift the cloth on its lifting points or a beam, never by a pocket or a corner plate alone.",
+  },
+  {
+    id: "order-of-steps",
+    signal: "WARNING",
+    papers: ["schedule"],
+    hazard:
+      "Forces on the way can be higher than the final ones: a cable pulled first may carry several times its final force.",
+    consequence: "Cable, fitting, anchor or mast can fail.",
+    avoid:
+      "Keep the order and the lengths of the steps. Read after every step. Stop when a reading lies outside its window and ask the engineer.",
+  },
+  {
+    id: "thread-engagement",
+    signal: "WARNING",
+    papers: ["schedule", "hardware"],
+    hazard: "A turnbuckle turned out too far holds by a few threads only.",
+    consequence: "It can pull apart without warning.",
+    avoid:
+      "Keep at least one thread diameter in the body at each end, seen in the sight hole. Lock both ends after the last move and mark them with paint.",
+  },
+  {
+    id: "reading-force",
+    signal: "WARNING",
+    papers: ["schedule"],
+    hazard:
+      "A frequency read in the wrong mode, or a length taken between the wrong points, gives a force that is a quarter or four times the real one.",
+    consequence: "The crew pulls on towards breaking.",
+    avoid:
+      "Read twice by two methods at the first stage. Use free spans only, never a cable in its pocket. Compare with the tape.",
+  },
+  {
+    id: "wet-surface",
+    signal: "WARNING",
+    papers: ["schedule"],
+    hazard: "Wet or dewy coated cloth is slippery; nothing shows where it is not held.",
+    consequence: "A slip ends in a fall.",
+    avoid: "Nobody walks on the cloth unless the engineer has released it, and then clipped on, in soft clean shoes.",
+  },
+  {
+    id: "cutting-table",
+    signal: "WARNING",
+    papers: ["rolls"],
+    hazard: "The cutting head starts without warning and the blade is bare.",
+    consequence: "Deep cuts, crushed hands.",
+    avoid:
+      "Hands off the table while it is live. Lock it out before clearing a jam or changing a blade. Wear cut-proof gloves when handling blades.",
+  },
+  {
+    id: "stamp",
+    signal: "WARNING",
+    papers: ["schedule", "cables", "hardware", "rolls", "panels", "seams", "findings"],
+    hazard: "A sheet of another revision looks like this one.",
+    consequence: "Parts of two designs meet in the air.",
+    avoid:
+      "Compare issue letter and revision on every sheet in hand with the findings sheet. Destroy superseded sheets. A sheet stamped NOT FOR ISSUE is not to be built from.",
+  },
+  {
+    id: "cold",
+    signal: "CAUTION",
+    papers: ["schedule", "rolls"],
+    hazard: "Coated cloth is stiff and brittle in the cold and cracks at folds.",
+    consequence: "Hands are caught by cloth that springs back; the coating leaks later.",
+    avoid:
+      "Do not unfold or pull below the temperature set by the engineer and the cloth's maker; one practitioner's rule is 10 degC.",
+  },
+  {
+    id: "heavy-pack",
+    signal: "CAUTION",
+    papers: ["findings", "schedule"],
+    hazard: "Folded cloth is heavy and slides.",
+    consequence: "It crushes hands and feet and strains backs.",
+    avoid:
+      "Lift packs with slings and a spreader sized for the weight; wear gloves and shoes with caps; do not stand on folded cloth.",
+  },
+  {
+    id: "welding",
+    signal: "CAUTION",
+    papers: ["findings", "panels"],
+    hazard: "Hot-air and high-frequency welders burn, and fumes of coated cloth irritate.",
+    consequence: "Burns, sore eyes and lungs.",
+    avoid:
+      "Draw off fumes, keep hands off the nozzle and the electrode, follow the maker's instructions of machine and cloth.",
+  },
+  {
+    id: "face-and-warp",
+    signal: "NOTICE",
+    papers: ["rolls", "panels", "findings"],
+    hazard:
+      "Outlines are drawn on the outer face with the warp along the roll. A roll laid face down mirrors every panel.",
+    consequence: "The whole roof is cut wrong and the cloth is lost.",
+    avoid:
+      "Check the face of the first roll against the mark on the sheet. Never mirror a panel, never turn one by anything but 180 degrees.",
+  },
+  {
+    id: "check-bar",
+    signal: "NOTICE",
+    papers: ["rolls", "panels"],
+    hazard: "Cut files carry no sure unit: a file read in inches or scaled by a printer looks the same.",
+    consequence: "Cloth is cut to the wrong size.",
+    avoid:
+      "Measure the 1000 mm bar on the table before the first cut. Check the lengths on the panel card before welding.",
+  },
+  {
+    id: "weld-release",
+    signal: "NOTICE",
+    papers: ["panels", "seams"],
+    hazard: "A weld that looks sound can peel.",
+    consequence: "A seam opens under load.",
+    avoid:
+      "Weld and peel the test piece for every batch, machine and shift before the first seam. Release no panel whose lengths differ from its card.",
+  },
+  {
+    id: "rest-before-cutting",
+    signal: "NOTICE",
+    papers: ["rolls"],
+    hazard: "Cloth fresh off the roll is still stretched and creeps back on the table.",
+    consequence: "Panels come out short.",
+    avoid: "Unroll, let it rest, then cut. Cut the panels of one surface from one batch, at one temperature.",
+  },
+  {
+    id: "glass-folds",
+    signal: "NOTICE",
+    papers: ["rolls", "panels", "schedule", "findings"],
+    hazard: "Glass cloth breaks where it is folded sharply, dragged or trodden on.",
+    consequence: "Yarns break unseen and the cloth tears at prestress.",
+    avoid: "Roll it on tubes or pad every fold. No dragging, no walking on folded cloth.",
+  },
+];
 
 /** What the plan does not hold and the engineer must supply or decide. */
 export const ENGINEER_SUPPLIES: readonly string[] = [

@@ -27,8 +27,8 @@ export function writeSvg(drawing: Drawing): string {
   const top = max[1] + MARGIN;
   const width = n3(max[0] - min[0] + 2 * MARGIN);
   const height = n3(max[1] - min[1] + 2 * MARGIN);
-  const X = (x: number) => n3(x - left);
-  const Y = (y: number) => n3(top - y);
+  const px = (x: number) => n3(x - left);
+  const py = (y: number) => n3(top - y);
   const lines = [
     '<?xml version="1.0" encoding="UTF-8"?>',
     `<svg xmlns="http://www.w3.org/2000/svg" width="${width}mm" height="${height}mm" viewBox="0 0 ${width} ${height}">`,
@@ -38,12 +38,12 @@ export function writeSvg(drawing: Drawing): string {
     lines.push(`<g id="${LAYER_NAMES[layer]}" fill="none" ${PENS[layer]}>`);
     for (const s of drawing.strokes) {
       if (s.layer !== layer) continue;
-      const points = s.points.map((p) => `${X(p[0])} ${Y(p[1])}`).join(" L ");
+      const points = s.points.map((p) => `${px(p[0])} ${py(p[1])}`).join(" L ");
       lines.push(`<path d="M ${points}${s.closed ? " Z" : ""}"/>`);
     }
     for (const l of drawing.labels) {
       if (l.layer !== layer) continue;
-      const turn = `translate(${X(l.at[0])} ${Y(l.at[1])}) rotate(${n3(-l.rotation)})`;
+      const turn = `translate(${px(l.at[0])} ${py(l.at[1])}) rotate(${n3(-l.rotation)})`;
       // Capitals of common sans faces stand about 0.72 of the size high: the size that gives the wanted height.
       const size = n3(l.height / 0.72);
       lines.push(

@@ -5,6 +5,8 @@ import type { Drawing } from "./drawing.ts";
 import { writeDxfR12 } from "./dxfR12.ts";
 import { fileNames } from "./fileNames.ts";
 import type { FontFiles } from "./pdf/book.ts";
+import { rigFacts } from "./rigReadings.ts";
+import { cableTable, hardwareTable, moveTable } from "./rigTables.ts";
 import { panelDrawing, rollDrawing } from "./rollDrawing.ts";
 import { writeSvg } from "./svg.ts";
 import { panelTable, rollTable, seamTable } from "./tables.ts";
@@ -55,11 +57,23 @@ export async function writePapers(facts: Facts, options: { fonts: FontFiles }): 
     texts.push(["panels.csv", panelTable(facts)]);
   }
   if (seams) texts.push(["seams.csv", seamTable(facts)]);
+  const rig = rigFacts(facts);
+  const cables = (facts.cables ?? []).length > 0;
+  if (cables) texts.push(["cables.csv", cableTable(facts)]);
+  if (rig) texts.push(["tensioning.csv", moveTable(rig)], ["hardware.csv", hardwareTable(rig)]);
   const encoder = new TextEncoder();
   const files = texts.map(([path, text]): PaperFile => ({ path, bytes: encoder.encode(text) }));
   if (panels && panels.length > 0) {
     const { writePanelCards } = await import("./pdf/panelCards.ts");
     files.push({ path: "panel-cards.pdf", bytes: await writePanelCards(facts, options.fonts) });
+  }
+  if (cables || rig) {
+    const { writeCableSheets } = await import("./pdf/cableSheets.ts");
+    files.push({ path: "cables.pdf", bytes: await writeCableSheets(facts, options.fonts) });
+  }
+  if (rig) {
+    const { writeTensioningSchedule } = await import("./pdf/tensioningSchedule.ts");
+    files.push({ path: "tensioning-schedule.pdf", bytes: await writeTensioningSchedule(rig, options.fonts) });
   }
   const { writeFindingSheets } = await import("./pdf/findingSheets.ts");
   files.push({ path: "findings.pdf", bytes: await writeFindingSheets(facts, options.fonts) });

@@ -25,6 +25,10 @@ export interface FactsJob {
   units: "metric" | "imperial";
   /** File name of the mesh. */
   mesh: string;
+  /** What the engineer of the site has set, as the job gives it: see papers/siteLimits.ts for the keys that are read. */
+  site?: Record<string, number | string | boolean>;
+  /** Issue letter this one takes the place of. */
+  supersedes?: string;
 }
 
 export interface FactsForm {

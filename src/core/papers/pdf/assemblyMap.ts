@@ -4,8 +4,8 @@ import { decimal } from "../decimal.ts";
 import { insidePoint, pointAlong } from "../flatGeometry.ts";
 import { placesOf, seamSide } from "../tables.ts";
 import { addSheet, type Book, drawParagraph, type Sheet } from "./book.ts";
-import { type LabelField, takePlaceInPlace } from "./labelField.ts";
-import { type BoxArea, drawBox, drawRun, drawText, fitText, SMALL, textWidth } from "./pen.ts";
+import { type LabelField, setNameInPlace } from "./labelField.ts";
+import { type BoxArea, drawBox, drawRun } from "./pen.ts";
 import { fitRoof, type RoofView } from "./roofView.ts";
 import { type Column, flowTableInPlace, flowTextInPlace, openFlow } from "./table.ts";
 
@@ -44,23 +44,6 @@ export function drawAssemblyMap(book: Book, view: RoofView): void {
   drawPieces(book);
 }
 
-function setName(book: Book, sheet: Sheet, field: LabelField, text: string, middles: Vec2[], bold: boolean): boolean {
-  const font = bold ? book.bold : book.regular;
-  const size = bold ? 11 : SMALL;
-  const shown = fitText(text, font, size, 40);
-  const width = textWidth(shown, font, size);
-  const height = (3.6 * size) / SMALL;
-  const at = takePlaceInPlace(field, { width, height }, middles);
-  if (!at) return false;
-  drawBox(
-    sheet.page,
-    { x: at[0] - width / 2 - 0.3, y: at[1] - height / 2, width: width + 0.6, height },
-    { width: 0, fill: 1, outline: false },
-  );
-  drawText(sheet.page, shown, { x: at[0], y: at[1] - 0.32 * height, size, font, align: "middle" });
-  return true;
-}
-
 function drawMap(book: Book, sheet: Sheet, view: RoofView, box: BoxArea): void {
   const inner = { x: box.x + 24, y: box.y + 8, width: box.width - 48, height: box.height - 16 };
   const place = fitRoof(view, inner);
@@ -74,13 +57,13 @@ function drawMap(book: Book, sheet: Sheet, view: RoofView, box: BoxArea): void {
     if (outline.length < 3) continue;
     const { at } = insidePoint(outline);
     const spots = [0, 4, -4, 8, -8].flatMap((dy) => [0, 8, -8, 16, -16].map((dx): Vec2 => [at[0] + dx, at[1] + dy]));
-    setName(book, sheet, field, p.id, spots, true);
+    setNameInPlace(book, sheet, field, p.id, spots, { bold: true, size: 11 });
   }
   for (const s of view.seams) {
     const run = s.run.map(place);
     const spots = [0.5, 0.4, 0.6, 0.3, 0.7, 0.2, 0.8, 0.12, 0.88].map((f) => pointAlong(run, f).at);
-    if (!setName(book, sheet, field, `${s.id}: ${s.upper} on top`, spots, false))
-      setName(book, sheet, field, s.id, spots, false);
+    if (!setNameInPlace(book, sheet, field, `${s.id}: ${s.upper} on top`, spots))
+      setNameInPlace(book, sheet, field, s.id, spots);
   }
   const middle: Vec2 = [inner.x + inner.width / 2, inner.y + inner.height / 2];
   for (const e of view.edges) {
@@ -88,18 +71,17 @@ function drawMap(book: Book, sheet: Sheet, view: RoofView, box: BoxArea): void {
     const spots = [0.5, 0.4, 0.6, 0.3, 0.7, 0.2, 0.8].flatMap((f) =>
       [4, 7, 11].map((r) => outward(pointAlong(run, f).at, middle, r)),
     );
-    setName(book, sheet, field, e.id, spots, false);
+    setNameInPlace(book, sheet, field, e.id, spots);
   }
   for (const a of view.anchors) {
     const p = place(a.at);
     drawBox(sheet.page, { x: p[0] - 0.7, y: p[1] - 0.7, width: 1.4, height: 1.4 }, { width: 0.1, fill: 0 });
-    setName(
+    setNameInPlace(
       book,
       sheet,
       field,
       a.id,
       [5, 7, 10, 14].map((r) => outward(p, middle, r)),
-      false,
     );
   }
 }

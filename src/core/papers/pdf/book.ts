@@ -4,9 +4,10 @@
 import fontkit from "@pdf-lib/fontkit";
 import { PDFDocument, type PDFFont, PDFHexString, PDFName, type PDFPage, PDFString } from "pdf-lib";
 import type { Facts, FactsJob } from "../../records/facts.ts";
+import { paperUnits } from "../paperUnits.ts";
 import { plainText } from "../plainText.ts";
-import { openStops, stampOf } from "../stamp.ts";
-import { drawBox, drawText, fitText, MM, SMALL, textWidth, wrapText } from "./pen.ts";
+import { holdReason, type PaperKind, stampOf } from "../stamp.ts";
+import { drawBox, drawText, fitText, MM, pitchOf, SMALL, textWidth, wrapText } from "./pen.ts";
 
 /** TTF bytes of the two faces every sheet is set in. */
 export interface FontFiles {
@@ -27,6 +28,8 @@ export interface Sheet {
 
 export interface Book {
   facts: Facts;
+  /** Which rule of issue its sheets stand under. */
+  kind: PaperKind;
   doc: PDFDocument;
   regular: PDFFont;
   bold: PDFFont;
@@ -48,7 +51,7 @@ const STAMP = 12.5;
 const HEAD = STAMP + 1.5;
 
 /** An empty book in the given faces. */
-export async function openBook(facts: Facts, fonts: FontFiles, title: string): Promise<Book> {
+export async function openBook(facts: Facts, fonts: FontFiles, title: string, kind: PaperKind): Promise<Book> {
   const doc = await PDFDocument.create({ updateMetadata: false });
   doc.registerFontkit(fontkit);
   // Without ligatures and kerning a line is as long as the sum of its letters, and reads back letter by letter.
@@ -68,7 +71,7 @@ export async function openBook(facts: Facts, fonts: FontFiles, title: string): P
   }
   doc.context.trailerInfo.Info = doc.context.register(doc.context.obj(info));
   doc.catalog.set(PDFName.of("Lang"), PDFString.of("en"));
-  return { facts, doc, regular, bold, sheets: [] };
+  return { facts, kind, doc, regular, bold, sheets: [] };
 }
 
 /** A new sheet with its frame, its heading and the stamp; the title block follows when the count of sheets is known. */
@@ -92,12 +95,11 @@ export function addSheet(book: Book, paper: string): Sheet {
   return sheet;
 }
 
-/** Framed, upper right, over nothing: NOT FOR ISSUE and which stops are open. Returns its width. */
+/** Framed, upper right, over nothing: NOT FOR ISSUE and why. Returns its width. */
 function drawStamp(book: Book, sheet: Sheet): number {
-  const stamp = stampOf(book.facts);
+  const stamp = stampOf(book.facts, book.kind);
   if (stamp === "") return 0;
-  const codes = openStops(book.facts);
-  const reason = fitText(`open stop: ${codes.join(", ")}`, book.regular, SMALL, 80);
+  const reason = fitText(holdReason(book.facts, book.kind), book.regular, SMALL, 80);
   const width = Math.max(textWidth(stamp, book.bold, 18), textWidth(reason, book.regular, SMALL)) + 6;
   const x = sheet.right - width;
   const y = sheet.top + 1.5;
@@ -117,8 +119,11 @@ interface Field {
 function titleRows(book: Book, sheet: Sheet, n: number): Field[][] {
   const { job } = book.facts;
   const given = (text: string) => plainText(text) || "not given";
-  const units =
-    job.units === "imperial" ? "metric (imperial papers are not written yet)" : "metric: mm flat, m on the form, kN";
+  const { words, temperature } = paperUnits(job);
+  const reference = book.facts.tensioning?.referenceTemperature;
+  const at = reference === undefined ? "not stated" : `${temperature.whole(reference)}`;
+  // The sheets for cloth stay metric: the cutting table and the tape on the welding floor are.
+  const units = job.units === "imperial" && book.kind === "cloth" ? "metric on the floor: mm, m, kN/m" : words;
   return [
     [
       { label: "Title", value: given(job.title), share: 0.36 },
@@ -132,7 +137,7 @@ function titleRows(book: Book, sheet: Sheet, n: number): Field[][] {
       { label: "Checked by", value: given(job.checkedBy), share: 0.17 },
       { label: "Date", value: given(job.date), share: 0.13 },
       { label: "Units", value: units, share: 0.35 },
-      { label: "Reference temperature", value: "not stated", share: 0.18 },
+      { label: "Reference temperature", value: at, share: 0.18 },
     ],
   ];
 }
@@ -161,13 +166,14 @@ export function drawParagraph(
   sheet: Sheet,
   text: string,
   y: number,
-  options: { bold?: boolean; width?: number } = {},
+  options: { bold?: boolean; width?: number; size?: number } = {},
 ): number {
   const font = options.bold ? book.bold : book.regular;
+  const size = options.size ?? SMALL;
   let at = y;
-  for (const line of wrapText(text, font, SMALL, options.width ?? sheet.right - sheet.left)) {
-    at -= 4.4;
-    drawText(sheet.page, line, { x: sheet.left, y: at + 1, size: SMALL, font });
+  for (const line of wrapText(text, font, size, options.width ?? sheet.right - sheet.left)) {
+    at -= pitchOf(size);
+    drawText(sheet.page, line, { x: sheet.left, y: at + 1, size, font });
   }
   return at;
 }

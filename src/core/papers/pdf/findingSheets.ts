@@ -2,10 +2,12 @@
 // written whatever the plan came to.
 import type { Check, Finding, FindingLevel } from "../../problem.ts";
 import type { Facts } from "../../records/facts.ts";
-import { cautions, ENGINEER_SUPPLIES } from "../cautionTexts.ts";
+import { cautionsOf } from "../cautions.ts";
+import { ENGINEER_SUPPLIES } from "../cautionTexts.ts";
 import { decimal } from "../decimal.ts";
-import { type Book, closeBook, type FontFiles, openBook } from "./book.ts";
-import { drawBox, drawText, MM, PITCH, SMALL, textWidth, wrapText } from "./pen.ts";
+import { closeBook, type FontFiles, openBook } from "./book.ts";
+import { flowCautionsInPlace } from "./cautionBlock.ts";
+import { drawText, MM, PITCH, SMALL, textWidth } from "./pen.ts";
 import {
   type Column,
   type Flow,
@@ -60,11 +62,12 @@ export function valueText(value: number | string | null): string {
 
 /** The bytes of findings.pdf. */
 export async function writeFindingSheets(facts: Facts, fonts: FontFiles): Promise<Uint8Array> {
-  const book = await openBook(facts, fonts, "findings");
+  const book = await openBook(facts, fonts, "findings", "findings");
   const flow = openFlow(book, "Findings");
   flowSummaryInPlace(flow, facts);
   for (const level of ["stop", "caution"] as const) flowFindingsInPlace(flow, facts, level);
-  flowCautionsInPlace(flow, book);
+  flowHeadingInPlace(flow, "Before the cloth is handled, lifted or tensioned");
+  flowCautionsInPlace(flow, cautionsOf("findings"));
   flowEngineerInPlace(flow);
   flowFindingsInPlace(flow, facts, "note");
   flowChecksInPlace(flow, facts.checks);
@@ -80,7 +83,7 @@ function flowSummaryInPlace(flow: Flow, facts: Facts): void {
   const held = facts.checks.filter((c) => c.holds).length;
   const line = `${count(of("stop"), "stop", "stops")}, ${count(of("caution"), "caution", "cautions")}, ${count(of("note"), "note", "notes")}; ${held} of ${count(facts.checks.length, "check", "checks")} held.`;
   flowTextInPlace(flow, line, { bold: true });
-  const ran = (["form", "seams", "panels", "rolls"] as const).filter((k) => facts[k] !== undefined);
+  const ran = (["form", "seams", "panels", "rolls", "rig"] as const).filter((k) => facts[k] !== undefined);
   const got = ran.length > 0 ? `Stations with a result: ${ran.join(", ")}.` : "No station came to a result.";
   flowTextInPlace(
     flow,
@@ -111,22 +114,6 @@ function flowFindingsInPlace(flow: Flow, facts: Facts, level: FindingLevel): voi
   flowHeadingInPlace(flow, HEADINGS[level]);
   if (found.length === 0) flowTextInPlace(flow, "None.");
   else flowTableInPlace(flow, FINDING_COLUMNS, found.map(findingRow));
-}
-
-/** Signal word in a frame, its text beside it, kept together. */
-function flowCautionsInPlace(flow: Flow, book: Book): void {
-  flowHeadingInPlace(flow, "Before the cloth is handled, lifted or tensioned");
-  const indent = 28;
-  for (const { word, text } of cautions(book.facts)) {
-    const lines = wrapText(text, book.regular, SMALL, flow.sheet.right - flow.sheet.left - indent);
-    needInPlace(flow, lines.length * PITCH + 3);
-    const { page, left } = flow.sheet;
-    const width = Math.max(24, textWidth(word, book.bold, SMALL) + 4);
-    drawBox(page, { x: left, y: flow.y - 6, width, height: 5.4 }, { width: 0.5 });
-    drawText(page, word, { x: left + width / 2, y: flow.y - 4.4, size: SMALL, font: book.bold, align: "middle" });
-    flowTextInPlace(flow, text, { indent });
-    flowGapInPlace(flow, lines.length === 1 ? 3 : 2);
-  }
 }
 
 function flowEngineerInPlace(flow: Flow): void {

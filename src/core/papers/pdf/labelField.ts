@@ -1,7 +1,8 @@
 // Finds a free place for each label of a figure: off the lines it must not cross, off the labels already set, inside the figure.
 // Greedy, in the order asked; what finds no place is told, never set over something else.
 import type { Vec2 } from "../../records/facts.ts";
-import type { BoxArea } from "./pen.ts";
+import type { Book, Sheet } from "./book.ts";
+import { type BoxArea, drawBox, drawText, fitText, SMALL, textWidth } from "./pen.ts";
 
 export interface LabelField {
   within: BoxArea;
@@ -65,4 +66,26 @@ export function takePlaceInPlace(
     return m;
   }
   return null;
+}
+
+/** Sets a name on white at the first free of the given middles; false where none is free. */
+export function setNameInPlace(
+  book: Book,
+  sheet: Sheet,
+  field: LabelField,
+  text: string,
+  middles: Iterable<Vec2>,
+  style: { bold?: boolean; size?: number; longest?: number } = {},
+): boolean {
+  const font = style.bold ? book.bold : book.regular;
+  const size = style.size ?? SMALL;
+  const shown = fitText(text, font, size, style.longest ?? 40);
+  const width = textWidth(shown, font, size);
+  const height = (3.6 * size) / SMALL;
+  const at = takePlaceInPlace(field, { width, height }, middles);
+  if (!at) return false;
+  const box = { x: at[0] - width / 2 - 0.3, y: at[1] - height / 2, width: width + 0.6, height };
+  drawBox(sheet.page, box, { width: 0, fill: 1, outline: false });
+  drawText(sheet.page, shown, { x: at[0], y: at[1] - 0.32 * height, size, font, align: "middle" });
+  return true;
 }

@@ -38,7 +38,7 @@ const CHECK_COLUMNS: readonly Column[] = [
 
 /** The bytes of panel-cards.pdf. */
 export async function writePanelCards(facts: Facts, fonts: FontFiles): Promise<Uint8Array> {
-  const book = await openBook(facts, fonts, "panel cards");
+  const book = await openBook(facts, fonts, "panel cards", "cloth");
   const view = viewRoof(facts);
   for (const panel of facts.panels ?? []) drawCard(book, view, panel);
   drawAssemblyMap(book, view);

@@ -26,6 +26,13 @@ export const MM = 72 / 25.4;
 export const SMALL = 9;
 /** Line pitch of the least size, mm. */
 export const PITCH = 4.4;
+/** Size of what is read at arm's length in gloves and rain, pt. */
+export const LARGE = 11;
+
+/** Line pitch of a size, mm. */
+export function pitchOf(size: number): number {
+  return (PITCH * size) / SMALL;
+}
 
 // Advance of each character at 1 pt, kept by face: asking the font for every beginning of every line takes seconds.
 const advances = new WeakMap<PDFFont, Map<string, number>>();
@@ -49,19 +56,31 @@ export function textWidth(text: string, font: PDFFont, size: number): number {
   return (sum * size) / MM;
 }
 
-/** The text, or its longest beginning with an ellipsis that fits. */
+/** A text with its middle left out; three fifths of the letters that stay are its end. */
+function cutMiddle(letters: string[], kept: number): string {
+  const tail = Math.ceil(0.6 * kept);
+  const end = tail === 0 ? "" : letters.slice(-tail).join("").trimStart();
+  return `${letters
+    .slice(0, kept - tail)
+    .join("")
+    .trimEnd()}…${end}`;
+}
+
+/**
+ * The text, or as much of its beginning and end as fits round an ellipsis: names differ at their ends, so more of the end stays.
+ */
 export function fitText(text: string, font: PDFFont, size: number, width: number): string {
   const plain = plainText(text);
   if (textWidth(plain, font, size) <= width) return plain;
   const letters = [...plain];
   let low = 0;
-  let high = letters.length;
+  let high = letters.length - 1;
   while (low < high) {
     const half = Math.ceil((low + high) / 2);
-    if (textWidth(`${letters.slice(0, half).join("").trimEnd()}…`, font, size) <= width) low = half;
+    if (textWidth(cutMiddle(letters, half), font, size) <= width) low = half;
     else high = half - 1;
   }
-  return `${letters.slice(0, low).join("").trimEnd()}…`;
+  return cutMiddle(letters, low);
 }
 
 /** Lines no longer than the width; a word that is longer is broken. At least one line. */

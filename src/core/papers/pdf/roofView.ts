@@ -10,6 +10,8 @@ export interface RoofView {
   seams: { id: string; upper: string; run: Vec2[] }[];
   edges: { id: string; run: Vec2[] }[];
   anchors: { id: string; at: Vec2 }[];
+  /** A place of the roof in the plane of the view. */
+  project: (p: Vec3) => Vec2;
 }
 
 /** Below this share of its true area in plan a roof is shown from outside. */
@@ -74,12 +76,13 @@ export function viewRoof(facts: Facts): RoofView {
     seams: (facts.seams ?? []).map((s) => ({ id: s.id, upper: s.upper, run: s.path.map(project) })),
     edges: (form?.edges ?? []).map((e) => ({ id: e.id, run: e.vertices.map(vertex) })),
     anchors: (form?.anchors ?? []).map((a) => ({ id: a.id, at: vertex(a.vertex) })),
+    project,
   };
 }
 
-/** Puts the roof into a box, evenly scaled and centred: m in, mm on the sheet out. */
-export function fitRoof(view: RoofView, box: BoxArea): (p: Vec2) => Vec2 {
-  const points = view.panels.flatMap((p) => p.outlines.flat());
+/** Puts the roof, and what else is to be seen, into a box, evenly scaled and centred: m in, mm on the sheet out. */
+export function fitRoof(view: RoofView, box: BoxArea, beside: readonly Vec2[] = []): (p: Vec2) => Vec2 {
+  const points = [...view.panels.flatMap((p) => p.outlines.flat()), ...beside];
   let [x0, y0, x1, y1] = [Infinity, Infinity, -Infinity, -Infinity];
   for (const [x, y] of points) {
     x0 = Math.min(x0, x);

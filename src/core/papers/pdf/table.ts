@@ -2,7 +2,7 @@
 // a sheet that moves down and turns the page.
 import type { PDFFont } from "pdf-lib";
 import { addSheet, type Book, type Sheet } from "./book.ts";
-import { drawBox, drawText, fitText, PITCH, SMALL, wrapText } from "./pen.ts";
+import { drawBox, drawText, fitText, pitchOf, SMALL, wrapText } from "./pen.ts";
 
 export interface Column {
   /** Lines of the head. */
@@ -12,6 +12,9 @@ export interface Column {
   align?: "start" | "end";
   bold?: boolean;
 }
+
+/** Text that wraps, or lines that are each set on their own and wrap where they must. */
+export type TableCell = string | readonly string[];
 
 export interface Flow {
   book: Book;
@@ -47,14 +50,23 @@ export function flowHeadingInPlace(flow: Flow, text: string): void {
   drawText(flow.sheet.page, line, { x: flow.sheet.left, y: flow.y + 1.5, size: 12, font: flow.book.bold });
 }
 
-/** A paragraph, line by line over sheets; `indent` sets all its lines in. */
-export function flowTextInPlace(flow: Flow, text: string, options: { bold?: boolean; indent?: number } = {}): void {
-  const font = options.bold ? flow.book.bold : flow.book.regular;
-  const indent = options.indent ?? 0;
-  for (const line of wrapText(text, font, SMALL, flow.sheet.right - flow.sheet.left - indent)) {
-    needInPlace(flow, PITCH);
-    flow.y -= PITCH;
-    drawText(flow.sheet.page, line, { x: flow.sheet.left + indent, y: flow.y + 1, size: SMALL, font });
+export interface TextStyle {
+  bold?: boolean;
+  /** All lines set in by so much, mm. */
+  indent?: number;
+  /** pt */
+  size?: number;
+}
+
+/** A paragraph, line by line over sheets. */
+export function flowTextInPlace(flow: Flow, text: string, style: TextStyle = {}): void {
+  const font = style.bold ? flow.book.bold : flow.book.regular;
+  const indent = style.indent ?? 0;
+  const size = style.size ?? SMALL;
+  for (const line of wrapText(text, font, size, flow.sheet.right - flow.sheet.left - indent)) {
+    needInPlace(flow, pitchOf(size));
+    flow.y -= pitchOf(size);
+    drawText(flow.sheet.page, line, { x: flow.sheet.left + indent, y: flow.y + 1, size, font });
   }
 }
 
@@ -84,19 +96,23 @@ interface Area {
   width: number;
   /** Top of the row. */
   y: number;
+  /** pt, the least size where not given */
+  size?: number;
 }
 
 function drawRow(sheet: Sheet, cells: string[][], columns: readonly Column[], fonts: PDFFont[], area: Area): number {
   const { x, width } = layOut(columns, area.left, area.width);
-  const height = Math.max(...cells.map((c) => c.length)) * PITCH + PAD;
+  const size = area.size ?? SMALL;
+  const pitch = pitchOf(size);
+  const height = Math.max(...cells.map((c) => c.length)) * pitch + PAD;
   cells.forEach((lines, k) => {
     drawBox(sheet.page, { x: x[k], y: area.y - height, width: width[k], height }, { width: 0.18 });
     lines.forEach((line, i) => {
       const right = columns[k].align === "end";
       drawText(sheet.page, line, {
         x: right ? x[k] + width[k] - PAD : x[k] + PAD,
-        y: area.y - PAD / 2 - PITCH * (i + 1) + 1.1,
-        size: SMALL,
+        y: area.y - PAD / 2 - pitch * (i + 1) + 0.25 * pitch,
+        size,
         font: fonts[k],
         align: right ? "end" : "start",
       });
@@ -106,13 +122,15 @@ function drawRow(sheet: Sheet, cells: string[][], columns: readonly Column[], fo
 }
 
 /** Height of a table whose cells take one line each, mm. */
-export function tableHeight(columns: readonly Column[], rows: number): number {
-  return Math.max(...columns.map((c) => c.head.length)) * PITCH + PAD + rows * (PITCH + PAD);
+export function tableHeight(columns: readonly Column[], rows: number, size = SMALL): number {
+  const pitch = pitchOf(size);
+  return Math.max(...columns.map((c) => c.head.length)) * pitch + PAD + rows * (pitch + PAD);
 }
 
 function drawHead(book: Book, sheet: Sheet, columns: readonly Column[], area: Area): number {
   const { width } = layOut(columns, area.left, area.width);
-  const cells = columns.map((c, k) => c.head.map((h) => fitText(h, book.bold, SMALL, width[k] - 2 * PAD)));
+  const size = area.size ?? SMALL;
+  const cells = columns.map((c, k) => c.head.map((h) => fitText(h, book.bold, size, width[k] - 2 * PAD)));
   return drawRow(
     sheet,
     cells,
@@ -131,33 +149,43 @@ export function drawTable(
   area: Area,
 ): number {
   const { width } = layOut(columns, area.left, area.width);
+  const size = area.size ?? SMALL;
   const fonts = columns.map((c) => (c.bold ? book.bold : book.regular));
   let y = area.y - drawHead(book, sheet, columns, area);
   for (const row of rows) {
-    const cells = row.map((text, k) => [fitText(text, fonts[k], SMALL, width[k] - 2 * PAD)]);
+    const cells = row.map((text, k) => [fitText(text, fonts[k], size, width[k] - 2 * PAD)]);
     y -= drawRow(sheet, cells, columns, fonts, { ...area, y });
   }
   return y;
 }
 
 /** A table over the whole width of the flow, cells wrapped, head repeated on every sheet; a row longer than a sheet is split. */
-export function flowTableInPlace(flow: Flow, columns: readonly Column[], rows: readonly string[][]): void {
+export function flowTableInPlace(
+  flow: Flow,
+  columns: readonly Column[],
+  rows: readonly (readonly TableCell[])[],
+  style: { size?: number } = {},
+): void {
   const { book } = flow;
+  const size = style.size ?? SMALL;
+  const pitch = pitchOf(size);
   const fonts = columns.map((c) => (c.bold ? book.bold : book.regular));
-  const areaNow = (): Area => ({ left: flow.sheet.left, width: flow.sheet.right - flow.sheet.left, y: flow.y });
-  const headHeight = tableHeight(columns, 0);
+  const areaNow = (): Area => ({ left: flow.sheet.left, width: flow.sheet.right - flow.sheet.left, y: flow.y, size });
+  const headHeight = tableHeight(columns, 0, size);
   const head = () => {
     flow.y -= drawHead(book, flow.sheet, columns, areaNow());
   };
-  needInPlace(flow, headHeight + 3 * PITCH);
+  needInPlace(flow, headHeight + 3 * pitch);
   head();
   for (const row of rows) {
     const { width } = layOut(columns, flow.sheet.left, flow.sheet.right - flow.sheet.left);
-    let cells = row.map((text, k) => wrapText(text, fonts[k], SMALL, width[k] - 2 * PAD));
+    let cells = row.map((cell, k) =>
+      [cell].flat().flatMap((text) => wrapText(text, fonts[k], size, width[k] - 2 * PAD)),
+    );
     for (;;) {
       const lines = Math.max(...cells.map((c) => c.length));
-      const fits = Math.floor((flow.y - flow.sheet.bottom - PAD) / PITCH);
-      const whole = Math.floor((flow.sheet.top - flow.sheet.bottom - headHeight - PAD) / PITCH);
+      const fits = Math.floor((flow.y - flow.sheet.bottom - PAD) / pitch);
+      const whole = Math.floor((flow.sheet.top - flow.sheet.bottom - headHeight - PAD) / pitch);
       if (lines > fits && (lines <= whole || fits < 3)) {
         needInPlace(flow, Infinity);
         head();
