@@ -250,17 +250,6 @@ describe("other ways to say it", () => {
     expect(job.fabric).toMatchObject({ id: "job", strength: null, rollWidth: 3000 });
   });
 
-  it("says of pocket strips that their cloth is not counted, and asks for no pocket then", () => {
-    const read = (allowances: object) => readJob({ ...leastJob("form.obj", "T"), allowances }, catalogues);
-    const strips = read({ pocketStrip: true });
-    expect(strips.job.allowances).toMatchObject({ pocketStrip: true, pocket: 100 });
-    expect(strips.findings.filter((f) => f.code === "job-pocket-strip")).toHaveLength(1);
-    expect(strips.findings.map((f) => f.where)).not.toContain("allowances.pocket");
-    const folded = read({ pocketStrip: false });
-    expect(folded.findings.map((f) => f.code)).not.toContain("job-pocket-strip");
-    expect(folded.findings.map((f) => f.where)).toContain("allowances.pocket");
-  });
-
   it("fills rolls from the cloth and numbers them", () => {
     const { job, findings } = readJob({ ...least, rolls: [{ length: 9000 }, { batch: "B" }] }, catalogues);
     expect(job.rolls?.map((r) => [r.id, r.width, r.selvedge, r.length, r.batch])).toEqual([

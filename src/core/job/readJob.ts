@@ -169,34 +169,14 @@ function resolveAllowances(file: JobFile, ledger: DefaultLedger): Job["allowance
   const d = JOB_DEFAULTS;
   const take = <T>(given: T | undefined, fallback: T, key: string, words: string): T =>
     takeDefault(ledger, given, fallback, `allowances.${key}`, words);
-  const strip = a.pocketStrip ?? d.pocketStrip;
-  if (strip) notePocketStrip(ledger);
   return {
     seam: take(a.seam, d.seam, "seam", `${d.seam} mm finished overlap`),
     seamOn: take(a.seamOn, d.seamOn, "seamOn", "half the overlap on both sides of a seam"),
-    // A pocket of its own strip is no part of the panel: its depth decides nothing here.
-    pocket: strip
-      ? (a.pocket ?? d.pocket)
-      : take(a.pocket, d.pocket, "pocket", `${d.pocket} mm beyond the fold of a cable pocket`),
-    pocketStrip: strip,
+    pocket: take(a.pocket, d.pocket, "pocket", `${d.pocket} mm beyond the fold of a cable pocket`),
+    pocketStrip: a.pocketStrip ?? d.pocketStrip,
     clamp: take(a.clamp, d.clamp, "clamp", `${d.clamp} mm set-back along clamped edges`),
     hem: take(a.hem, d.hem, "hem", `${d.hem} mm hem along free edges`),
   };
-}
-
-/** The strips are cloth that the plan does not count yet: whoever orders cloth must know. */
-function notePocketStrip(ledger: DefaultLedger): void {
-  ledger.findings.push({
-    code: "job-pocket-strip",
-    level: "note",
-    station: "job",
-    where: "allowances.pocketStrip",
-    value: null,
-    limit: null,
-    text: "allowances.pocketStrip: panels are cut along the cable's line; the pocket strips themselves are not drawn, nested or counted",
-    remedy: "make the strips up from the cable lengths of the cable list, and add their cloth to the order",
-    basis: "own argument",
-  });
 }
 
 function resolveRolls(file: JobFile, fabric: Job["fabric"], ledger: DefaultLedger): Job["rolls"] {
