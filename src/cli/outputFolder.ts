@@ -1,23 +1,22 @@
 // The output folder: written aside and put in place in one move, so that it is never half a plan. Files in it that are
 // not of the plan stay. Knows nothing of what the files say.
 import {
-  closeSync,
   cpSync,
   existsSync,
   lstatSync,
   mkdirSync,
-  openSync,
   readdirSync,
   readFileSync,
-  readSync,
   realpathSync,
   renameSync,
   rmSync,
   writeFileSync,
 } from "node:fs";
-import { basename, dirname, join, relative, resolve, sep } from "node:path";
+import { dirname, join, relative, resolve, sep } from "node:path";
 import { PlanError } from "../core/problem.ts";
 import { withFile } from "./fileErrors.ts";
+import { holdsPlan } from "./holdsPlan.ts";
+import { asideNames, clearLeftovers } from "./leftovers.ts";
 
 /** A file of the plan; the path is relative to the folder, with "/" between its parts. */
 export interface OutputFile {
@@ -57,20 +56,6 @@ export function checkOutputFolder(folder: string): string {
     );
   }
   return real;
-}
-
-/** Whether a folder's facts.json begins as one of ours. */
-function holdsPlan(folder: string): boolean {
-  const path = join(folder, "facts.json");
-  if (!existsSync(path)) return false;
-  const head = Buffer.alloc(200);
-  const file = withFile(path, () => openSync(path, "r"));
-  try {
-    const length = withFile(path, () => readSync(file, head));
-    return /^\s*\{\s*"format"\s*:\s*"seamstay-facts"/.test(head.toString("utf8", 0, length));
-  } finally {
-    closeSync(file);
-  }
 }
 
 /** Relative paths of everything below a folder; a folder is listed only where it is empty. */
@@ -118,23 +103,29 @@ function checkPaths(files: OutputFile[]): void {
   }
 }
 
+/** Where the folder stands, or will: through links, so that what is beside the real one is looked at. */
+function realFolder(folder: string): string {
+  const named = resolve(folder);
+  return withFile(named, () => (existsSync(named) ? realpathSync(named) : named));
+}
+
 /**
  * Writes all files of a plan as the whole content of the folder, beside files that are not of a plan.
  * Works in one go without a pause in which a signal could be handled: the caller holds signals off meanwhile.
+ * @returns what was done about leftovers of runs that were cut short, a line each
  * @throws PlanError as checkOutputFolder; out-clash, out-path, file-…; the folder is then as it was
  */
-export function writeOutputFolder(folder: string, files: OutputFile[]): void {
+export function writeOutputFolder(folder: string, files: OutputFile[]): string[] {
   checkPaths(files);
+  const cleared = clearLeftovers(realFolder(folder));
   const target = checkOutputFolder(folder);
   const earlier = existsSync(target);
   const foreign = earlier ? withFile(target, () => listForeign(target)) : [];
   refuseClash(folder, foreign, files);
-  const aside = join(dirname(target), `${basename(target)}.partial-${process.pid}`);
-  const old = join(dirname(target), `${basename(target)}.old-${process.pid}`);
+  const { aside, old } = asideNames(target);
   try {
     withFile(folder, () => {
       mkdirSync(dirname(target), { recursive: true });
-      rmSync(aside, { recursive: true, force: true });
       mkdirSync(aside);
     });
     const listed = { format: "seamstay-files", version: 1, files: files.map((f) => f.path) };
@@ -159,6 +150,7 @@ export function writeOutputFolder(folder: string, files: OutputFile[]): void {
     throw error;
   }
   withFile(old, () => rmSync(old, { recursive: true, force: true }));
+  return cleared;
 }
 
 /** Clears up after a failure, which is what must be told, whether or not this succeeds. */

@@ -27,7 +27,8 @@ export async function planInto(
   checkOutputFolder(folder);
   const facts = await makeFacts(readInput(jobPath, loadCatalogues()), around, options);
   const files = await makePapers(facts, around);
-  await holdSignals(() => writeOutputFolder(folder, files));
+  const cleared = await holdSignals(() => writeOutputFolder(folder, files));
+  if (!options.quiet) for (const line of cleared) around.terminal.err(line);
   return { facts, files };
 }
 

@@ -1,9 +1,10 @@
 // seamstay start TEMPLATE DIR: a starter job copied into a new folder.
 import { cpSync, existsSync, mkdirSync, readdirSync, renameSync, rmdirSync, rmSync, statSync } from "node:fs";
-import { basename, dirname, join, resolve } from "node:path";
+import { dirname, join, resolve } from "node:path";
 import { PlanError } from "../core/problem.ts";
 import { withFile } from "./fileErrors.ts";
 import { holdSignals } from "./holdSignals.ts";
+import { asideNames, clearLeftovers } from "./leftovers.ts";
 import { listStarters, starterFolder } from "./packageFiles.ts";
 import { parseOptions } from "./parseOptions.ts";
 import { type Terminal, usageError } from "./terminal.ts";
@@ -24,6 +25,7 @@ export async function startCommand(args: string[], terminal: Terminal): Promise<
   }
   if (folder === undefined) throw usageError("start wants DIR, the folder the starter is copied into");
   const target = resolve(folder);
+  for (const line of await holdSignals(() => clearLeftovers(target))) terminal.err(line);
   refuseTaken(folder, target);
   await holdSignals(() => copyWhole(starterFolder(name), folder, target));
   const job = join(folder, "job.json");
@@ -43,7 +45,7 @@ function refuseTaken(folder: string, target: string): void {
 
 /** Copies aside, then moves into place: the starter is there whole or not at all. */
 function copyWhole(source: string, folder: string, target: string): void {
-  const aside = join(dirname(target), `${basename(target)}.partial-${process.pid}`);
+  const { aside } = asideNames(target);
   try {
     withFile(folder, () => {
       mkdirSync(dirname(target), { recursive: true });
