@@ -99,12 +99,27 @@ function measureRing(
     return [0, 1, 2].map((k) => x[3 * a + k] + t * (x[3 * b + k] - x[3 * a + k])) as Vec3;
   });
   let length = 0;
+  const sum: Vec3 = [0, 0, 0];
   points.forEach((p, i) => {
     const q = points[(i + 1) % points.length];
-    length += Math.sqrt((p[0] - q[0]) ** 2 + (p[1] - q[1]) ** 2 + (p[2] - q[2]) ** 2);
+    const l = Math.sqrt((p[0] - q[0]) ** 2 + (p[1] - q[1]) ** 2 + (p[2] - q[2]) ** 2);
+    length += l;
+    for (let k = 0; k < 3; k++) sum[k] += (l * (p[k] + q[k])) / 2;
   });
-  const centre = [0, 1, 2].map((k) => points.reduce((s, p) => s + p[k], 0) / points.length) as Vec3;
-  return { length, centre };
+  return { length, centre: length > 0 ? (sum.map((c) => c / length) as Vec3) : points[0] };
+}
+
+/** Levels between the values, as many below as above each share; none within rounding of a value. */
+function chooseLevels(values: Float64Array<ArrayBuffer>): number[] {
+  const sorted = values.toSorted();
+  const levels = new Set<number>();
+  for (let i = 0; i < RINGS; i++) {
+    const at = Math.floor(((sorted.length - 1) * (i + 0.5)) / RINGS);
+    let next = at + 1;
+    while (next < sorted.length && sorted[next] - sorted[at] < 1e-9) next++;
+    if (next < sorted.length) levels.add((sorted[at] + sorted[next]) / 2);
+  }
+  return [...levels];
 }
 
 /**
@@ -123,14 +138,16 @@ export function findNeck(
   const nearest = findNearestGroup(start, groups, from);
   if (nearest < 0) return null;
   const inside = new Set(groups[nearest]);
-  if (fixed.every((held, v) => !held || inside.has(v))) return null;
-  const value = spreadValues(start, fixed, groups[nearest]);
+  // rings round the other groups are not asked for: the cloth counts as loose there, where the rim holds it
+  const others = new Set(groups.flatMap((g, i) => (i === nearest ? [] : g)));
+  const rim = fixed.map((held, v) => (held && !others.has(v) ? 1 : 0));
+  const reaches = (held: Uint8Array<ArrayBuffer>) => held.some((h, v) => h === 1 && !inside.has(v));
+  if (!reaches(fixed)) return null;
+  const value = spreadValues(start, reaches(rim) ? rim : fixed, groups[nearest]);
   const { twin } = buildAdjacency(start);
-  const free = Float64Array.from(value.filter((_, v) => !fixed[v])).sort();
+  const levels = chooseLevels(value.filter((_, v) => !fixed[v]));
   let best: Neck | null = null;
-  for (let i = 0; i < RINGS && free.length > 1; i++) {
-    const at = Math.floor(((free.length - 1) * (i + 0.5)) / RINGS);
-    const level = (free[at] + free[at + 1]) / 2;
+  for (const level of levels) {
     for (const ring of traceRings(start.tri, twin, value, level)) {
       const { length, centre } = measureRing(now, ring, value, level);
       if (best !== null && length >= 2 * Math.PI * best.radius) continue;

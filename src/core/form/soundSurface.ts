@@ -5,11 +5,13 @@ import type { MeshSource } from "../records/job.ts";
 import { measureAreas } from "../surface/measures.ts";
 import type { Surface } from "../surface/surface.ts";
 import { cleanTriangles } from "./cleanTriangles.ts";
+import { findSelfContact } from "./findSelfContact.ts";
 import { buildFormFinding, describePlace, describeVertex } from "./formFinding.ts";
 import { checkSize, convertToMetres, measureExtent } from "./meshSize.ts";
 import { type Orientation, orientTrianglesInPlace } from "./orientTriangles.ts";
 import { partPinches } from "./partPinches.ts";
 import { splitPolygons } from "./splitPolygons.ts";
+import { splitTees } from "./splitTees.ts";
 import { findWelds } from "./weldVertices.ts";
 
 /** Vertices closer than this share of the bounding box diagonal are one; triangles no higher than that have no area. */
@@ -186,7 +188,8 @@ export function buildSoundSurface(source: MeshSource): SoundSurface {
   const target = findWelds(x, tolerance);
   const welded = Array.from(target.keys()).filter((v) => target[v] !== v);
   const split = splitPolygons(x, source, target);
-  const { tri, flatAt, doubledAt } = cleanTriangles(x, split.tri, tolerance);
+  const { tri: clean, flatAt, doubledAt } = cleanTriangles(x, split.tri, tolerance);
+  const { tri, ...tees } = splitTees(x, clean, tolerance);
   if (tri.length === 0)
     throw new PlanError(
       "mesh-flat",
@@ -231,6 +234,12 @@ export function buildSoundSurface(source: MeshSource): SoundSurface {
         `${countWords(doubledAt.length, "triangle was", "triangles were")} given twice and went`,
       ],
       [
+        "mesh-tees",
+        // worst first
+        tees.at.length > 0 ? [tees.farthest.vertex, ...tees.at.slice(1)] : [],
+        `${countWords(tees.at.length, "vertex lies", "vertices lie")} on the side of a triangle (up to ${(1000 * tees.farthest.distance).toPrecision(2)} mm off it), which was split there`,
+      ],
+      [
         "mesh-loose-vertices",
         loose,
         `${countWords(loose.length, "vertex belongs", "vertices belong")} to no face and went`,
@@ -249,6 +258,7 @@ export function buildSoundSurface(source: MeshSource): SoundSurface {
     ),
     ...reportPieces({ xyz: x, tri }, orientation),
     ...findNeedles(surface, toSource),
+    ...findSelfContact(surface, toSource),
   ];
   return { surface, sourceXyz: x, fromSource, toSource, piece, nPieces: orientation.nPieces, diagonal, findings };
 }
