@@ -1,7 +1,9 @@
 // Marks on two panels that share a seam, and where marks may stand.
 import { describe, expect, it } from "vitest";
+import { clipLine } from "../../src/core/panels/clipLine.ts";
+import { chooseMatchPoints } from "../../src/core/panels/matchMarks.ts";
 import { outlinePanel } from "../../src/core/panels/outlinePanel.ts";
-import { chooseMatchPoints, clipLine, type PanelPlace } from "../../src/core/panels/placeMarks.ts";
+import type { PanelPlace } from "../../src/core/panels/panelPlace.ts";
 import type { CutPanel, PanelMark } from "../../src/core/records/flatPanel.ts";
 import type { Allowances } from "../../src/core/records/job.ts";
 import { ringDistance, ringHolds } from "../../src/core/surface/ring.ts";
@@ -73,8 +75,9 @@ describe("match marks", () => {
       if (m.text) name = m.text;
       ticks.set(name, (ticks.get(name) ?? 0) + 1);
       const [p, q] = m.points as [number, number][];
-      expect(ringDistance(lower.net, ...p)).toBeLessThan(1e-6);
-      expect(Math.hypot(q[0] - p[0], q[1] - p[1])).toBeCloseTo(20, 1);
+      // A mark stands at a point of the surface; the faired line passes it within 0.2 mm.
+      expect(ringDistance(lower.net, ...p)).toBeLessThan(0.2);
+      expect(Math.abs(Math.hypot(q[0] - p[0], q[1] - p[1]) - 20)).toBeLessThan(0.25);
       expect(q[1]).toBeGreaterThan(p[1]);
     }
     expect([...ticks.keys()].slice(0, 4)).toEqual(["S3.1", "S3.2", "S3.3", "S3.4"]);
@@ -138,7 +141,7 @@ describe("other marks", () => {
       "name: P1",
       "face: outer face up",
       "warp: warp",
-      "side-name: S3 to P2",
+      "side-name: S3 under P2",
       "side-name: E1",
       "corner: A7",
     ])

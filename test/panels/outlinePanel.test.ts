@@ -3,8 +3,8 @@ import fc from "fast-check";
 import { describe, expect, it } from "vitest";
 import { buildRandom, drawInteger, type Random } from "../../src/core/numeric/random.ts";
 import { FAIRING_MM, offsetOutline } from "../../src/core/panels/offsetOutline.ts";
-import { outlinePanel, sideCurvature } from "../../src/core/panels/outlinePanel.ts";
-import type { PanelPlace } from "../../src/core/panels/placeMarks.ts";
+import { outlinePanel } from "../../src/core/panels/outlinePanel.ts";
+import type { PanelPlace } from "../../src/core/panels/panelPlace.ts";
 import { subtractRings, unionPositive } from "../../src/core/panels/polygonBooleans.ts";
 import { PlanError } from "../../src/core/problem.ts";
 import type { FlatPanel, PanelSide, Ring } from "../../src/core/records/flatPanel.ts";
@@ -152,26 +152,29 @@ describe("cut outline by hand", () => {
     expect(output.area.cut * 1e6).toBeCloseTo(2040 * 820 + 1020 * 30 + 1020 * 60, 3);
   });
 
-  it("raises a caution with 2p/R where a pocket is folded on a curve", () => {
-    const R = 20_000;
-    const hollow = Array.from({ length: 41 }, (_, k): [number, number] => {
-      const a = -Math.PI / 2 - 0.1 + (0.2 * k) / 40;
-      return [R * Math.cos(a), -R * Math.sin(a) - R];
-    });
-    const [first, last] = [hollow[0], hollow[40]];
-    const panel = panelFrom([
-      { kind: "cable", id: "E1", points: hollow.slice(0, 40) },
-      { kind: "seam", id: "S1", points: [last] },
-      { kind: "seam", id: "S2", points: [[last[0], 1500]] },
-      { kind: "seam", id: "S3", points: [[first[0], 1500]] },
-    ]);
-    expect(sideCurvature(panel, panel.sides[0], 240) * R).toBeCloseTo(1, 3);
-    const { findings } = outlinePanel(panel, NOWHERE, ALLOW);
-    const caution = findings.find((f) => f.code === "pocket-curve");
-    expect(caution?.level).toBe("caution");
-    expect(caution?.value as number).toBeCloseTo((100 * 2 * 60) / R, 3);
-    expect(outlinePanel(panel, NOWHERE, { ...ALLOW, pocketStrip: true }).findings).toEqual([]);
-    expect(outlinePanel(panel, NOWHERE, { ...ALLOW, pocket: 45 }).findings).toEqual([]);
+  it("makes the pocket of a side that is too short to fold it a separate strip, and a hem there narrower", () => {
+    const short = (kind: "cable" | "free") =>
+      outlinePanel(
+        panelFrom([
+          { kind: "clamped", id: "E1", points: [[0, 0]] },
+          { kind, id: "E2", points: [[5000, 400]] },
+          { kind: "clamped", id: "E3", points: [[5000, 600]] },
+          { kind: "seam", id: "S1", points: [[0, 1000]] },
+        ]),
+        NOWHERE,
+        { ...ALLOW, clamp: 0, pocket: 100, hem: 100 },
+      );
+    const pocket = short("cable");
+    expect(pocket.findings.map((f) => [f.code, f.level, f.value])).toEqual([["flap-short", "note", 200]]);
+    expect(pocket.output.outlines[1].allowance).toBe(0);
+    expect(ringBox(pocket.output.cut).x1).toBeCloseTo(5000, 6);
+    const hem = short("free");
+    expect(hem.checks.every((c) => c.holds)).toBe(true);
+    const { allowance } = hem.output.outlines[1];
+    // A point in the middle is 100 mm from either end, and at 30 % of the side 60 mm: no hem of 100 mm folds there.
+    expect(allowance).toBeGreaterThan(40);
+    expect(allowance).toBeLessThan(60);
+    expect(ringBox(hem.output.cut).x1).toBeCloseTo(5000 + allowance, 6);
   });
 
   it("refuses open, clockwise and swallowed outlines by name", () => {

@@ -69,3 +69,15 @@ export function subtractRings(from: Ring[], away: Ring[]): Ring[] {
   const clip = away.map((r) => toPath(r, ox, oy));
   return toRings(Clipper.Difference(subject, clip, FillRule.NonZero), ox, oy);
 }
+
+/**
+ * What counter-clockwise rings have in common (non-zero rule).
+ * @units mm
+ * @throws PlanError outline-span: a point further than 67 m from the first
+ */
+export function intersectRings(a: Ring[], b: Ring[]): Ring[] {
+  const [ox, oy] = origin(a);
+  const subject = a.map((r) => toPath(r, ox, oy));
+  const clip = b.map((r) => toPath(r, ox, oy));
+  return toRings(Clipper.Intersect(subject, clip, FillRule.NonZero), ox, oy);
+}

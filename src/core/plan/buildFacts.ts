@@ -1,6 +1,6 @@
 // From the stations' records to the facts record: the one place where typed arrays become lists.
-import type { Facts, FactsForm, FactsPanel, FactsSeam, Vec2 } from "../records/facts.ts";
-import type { CutPanel, Ring } from "../records/flatPanel.ts";
+import type { Facts, FactsForm, FactsPanel, FactsPiece, FactsSeam, Vec2 } from "../records/facts.ts";
+import type { CutPanel, CutPiece, Ring } from "../records/flatPanel.ts";
 import type { FoundForm } from "../records/foundForm.ts";
 import type { Job } from "../records/job.ts";
 import type { StripLayout } from "../records/stripLayout.ts";
@@ -92,5 +92,11 @@ export function buildPanelFacts(p: CutPanel): FactsPanel {
     marks: p.marks,
     area: p.area,
     size: p.size,
+    control: p.control,
   };
+}
+
+/** The part of a piece that is no panel. */
+export function buildPieceFacts(p: CutPiece): FactsPiece {
+  return { ...p, cut: listPairs(p.cut) };
 }

@@ -1,5 +1,6 @@
 // The chain: job and mesh in, facts out. Calls the stations by name, in order, and can stop after any of them.
 import { runForm } from "../form/runForm.ts";
+import { buildPieces } from "../panels/cutPieces.ts";
 import type { Station, StationContext, StationResult } from "../problem.ts";
 import type { Facts } from "../records/facts.ts";
 import type { Job, MeshSource } from "../records/job.ts";
@@ -7,7 +8,7 @@ import type { StockRoll } from "../records/roll.ts";
 import { runRig } from "../rig/runRig.ts";
 import { runRolls } from "../rolls/runRolls.ts";
 import { runSeams } from "../seams/runSeams.ts";
-import { buildFormFacts, buildHead, buildPanelFacts, buildSeamFacts } from "./buildFacts.ts";
+import { buildFormFacts, buildHead, buildPanelFacts, buildPieceFacts, buildSeamFacts } from "./buildFacts.ts";
 import { buildRigInput } from "./buildRigInput.ts";
 import { firstOptions, fitPanels, measureRoom } from "./fitPanels.ts";
 
@@ -82,11 +83,12 @@ export function runPlan(job: Job, source: MeshSource, options: PlanOptions, cont
   facts.layouts = layout.choices;
   facts.seams = buildSeamFacts(layout, panels);
   facts.panels = panels.map(buildPanelFacts);
-  facts.pieces = [];
+  const others = take(buildPieces(panels, form, job));
+  facts.pieces = others.map(buildPieceFacts);
   if (options.until === "panels") return facts;
 
   options.onStation?.("rolls");
-  const pieces = panels.map((p) => ({ id: p.id, fabric: p.fabric, batch: p.batch, cut: p.cut }));
+  const pieces = [...panels, ...others].map((p) => ({ id: p.id, fabric: p.fabric, batch: p.batch, cut: p.cut }));
   const nested = take(runRolls(pieces, buildStock(job), job.nest, share("rolls", "rig")));
   facts.rolls = nested;
   if (options.until === "rolls") return facts;

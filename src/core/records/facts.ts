@@ -2,7 +2,7 @@
 import type { Check, Finding } from "../problem.ts";
 import type { Vec3 } from "../surface/surface.ts";
 import type { Fabric } from "./fabric.ts";
-import type { PanelMark, StressFigures } from "./flatPanel.ts";
+import type { ControlLengths, PanelMark, StressFigures } from "./flatPanel.ts";
 import type { EdgeKind, Residual } from "./foundForm.ts";
 import type { FactsAsBuilt, FactsCable, FactsRig, FactsTensioning } from "./rig.ts";
 import type { NestedRoll } from "./roll.ts";
@@ -90,6 +90,8 @@ export interface FactsPanel {
   marks: PanelMark[];
   area: { net: number; cut: number };
   size: { length: number; width: number };
+  /** Lengths to check with a tape. */
+  control?: ControlLengths;
 }
 
 /** Cloth that is no panel of the form. */

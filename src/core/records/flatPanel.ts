@@ -47,7 +47,7 @@ export type Ring = Float64Array<ArrayBuffer>;
 
 /** Something to draw on the cloth. Points in mm in the panel's own axes. */
 export interface PanelMark {
-  /** seam-line, fold-line, match, warp, name, face, side-name, station, corner */
+  /** seam-line, fold-line, slit, match, warp, name, face, side-name, station, corner */
   kind: string;
   points?: [number, number][];
   /** Middle of the text. */
@@ -59,6 +59,27 @@ export interface PanelMark {
   angle?: number;
 }
 
+/** Lengths to check with a tape, mm. */
+export interface ControlLengths {
+  /** One for each side: along its net line (the weld or fold), and straight between its corners. */
+  sides: { net: number; chord: number }[];
+  /** Between net corners; corner k is where side k begins. None at a pointed end. */
+  diagonals: { from: number; to: number; length: number }[];
+  /** Square to the axis, `at` mm from the middle of its first end: between the net lines, and between the cut lines. */
+  widths: { share: number; at: number; net: number; cut: number }[];
+}
+
+/** Cloth that is no panel of the form: its outline in its own axes, warp along x. */
+export interface CutPiece {
+  id: string;
+  kind: "patch" | "strip" | "cover" | "test";
+  /** Edge, anchor or batch it belongs to. */
+  for: string;
+  fabric: string;
+  batch: string | null;
+  cut: Ring;
+}
+
 /** A panel ready to be cut. */
 export interface CutPanel extends FlatPanel {
   net: Ring;
@@ -68,4 +89,5 @@ export interface CutPanel extends FlatPanel {
   marks: PanelMark[];
   area: { net: number; cut: number };
   size: { length: number; width: number };
+  control: ControlLengths;
 }
