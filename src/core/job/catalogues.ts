@@ -49,7 +49,7 @@ export interface Caution {
   id: string;
   signal: "DANGER" | "WARNING" | "CAUTION" | "NOTICE";
   /** Papers it stands on. */
-  papers: ("schedule" | "cables" | "hardware" | "rolls" | "panels" | "seams")[];
+  papers: ("schedule" | "cables" | "hardware" | "rolls" | "panels" | "seams" | "findings")[];
   hazard: string;
   consequence: string;
   avoid: string;
@@ -110,7 +110,7 @@ const turnbuckleRow = z.strictObject({
 const cautionRow = z.strictObject({
   id: words,
   signal: z.enum(["DANGER", "WARNING", "CAUTION", "NOTICE"]),
-  papers: z.array(z.enum(["schedule", "cables", "hardware", "rolls", "panels", "seams"])).min(1),
+  papers: z.array(z.enum(["schedule", "cables", "hardware", "rolls", "panels", "seams", "findings"])).min(1),
   hazard: words,
   consequence: words,
   avoid: words,

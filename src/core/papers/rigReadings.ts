@@ -88,7 +88,7 @@ export function cornerDistances(rig: RigFacts, stage: FactsStage): CornerDistanc
     const key = p < q ? `${p} ${q}` : `${q} ${p}`;
     if (p === q || seen.has(key)) return [];
     seen.add(key);
-    const [a, b] = p < q ? [ring[p], ring[q]] : [ring[q], ring[p]];
+    const [a, b] = ring[p].i < ring[q].i ? [ring[p], ring[q]] : [ring[q], ring[p]];
     const [u, v] = [stage.corners?.[a.id], stage.corners?.[b.id]];
     return [{ from: a.id, to: b.id, finished: gap(a.at, b.at), atStage: u && v ? gap(u, v) : null }];
   });

@@ -1,16 +1,25 @@
 // The plan a crew finds its adjusters on, and what each is set to before anything is hung.
 import type { Vec2 } from "../../records/facts.ts";
 import type { Vec3 } from "../../surface/surface.ts";
+import { cautionsNamed } from "../cautions.ts";
 import { insidePoint, pointAlong } from "../flatGeometry.ts";
 import { paperUnits } from "../paperUnits.ts";
 import { type RigFacts, startPins } from "../rigReadings.ts";
 import { travelOf } from "../rigTables.ts";
 import { addSheet, type Book, drawParagraph } from "./book.ts";
+import { flowCautionsInPlace } from "./cautionBlock.ts";
 import { type LabelField, setNameInPlace } from "./labelField.ts";
-import { drawRing, drawRun, LARGE } from "./pen.ts";
+import { type BoxArea, drawRing, drawRun, LARGE } from "./pen.ts";
 import { fitRoof, type RoofView } from "./roofView.ts";
 import { BODY } from "./scheduleCover.ts";
-import { type Column, flowGapInPlace, flowTableInPlace, flowTextInPlace, openFlow } from "./table.ts";
+import {
+  type Column,
+  flowGapInPlace,
+  flowHeadingInPlace,
+  flowTableInPlace,
+  flowTextInPlace,
+  openFlow,
+} from "./table.ts";
 
 const AWAY = [4, 7, 10, 14, 18, 24];
 
@@ -39,38 +48,51 @@ export function drawSchedulePlan(book: Book, rig: RigFacts, view: RoofView): voi
   const inner = { x: box.x + 34, y: box.y + 12, width: box.width - 68, height: box.height - 24 };
   const place = fitRoof(view, inner, [...pins.flatMap((p) => [p.near, p.far]), ...runs.flatMap((r) => r.run)]);
   const middle: Vec2 = [inner.x + inner.width / 2, inner.y + inner.height / 2];
-  const field: LabelField = {
-    within: box,
-    outlines: view.panels.flatMap((p) => p.outlines.map((o) => o.map(place))),
-    taken: [],
-  };
-  for (const o of field.outlines) drawRun(sheet.page, o, { width: 0.13, closed: true });
+  const outlines = view.panels.flatMap((p) => p.outlines.map((o) => o.map(place)));
+  const drawn = pins.map((p): [Vec2, Vec2] => [place(p.near), farEnd(place(p.near), place(p.far), middle)]);
+  // Names keep off the adjusters; those of the border keep off the roof too.
+  const inside: LabelField = { within: box, outlines: drawn, taken: drawn.map(([, end]) => around(end, 2)) };
+  const border: LabelField = { ...inside, outlines: [...drawn, ...outlines] };
+  for (const o of outlines) drawRun(sheet.page, o, { width: 0.13, closed: true });
   for (const e of view.edges) drawRun(sheet.page, e.run.map(place), { width: 0.4 });
   for (const r of runs) drawRun(sheet.page, r.run.map(place), { width: r.width, dash: [2, 1.4] });
-  for (const p of pins) {
-    // Seen from above a short adjuster would vanish: it is drawn at least 5 mm long, the ring at its far end.
-    const [near, far] = [place(p.near), place(p.far)];
-    const length = Math.hypot(far[0] - near[0], far[1] - near[1]);
-    const end = length > 5 ? far : beyond(near, length > 0.5 ? beyond(near, far, 1) : middle, 5);
+  pins.forEach((p, i) => {
+    const [near, end] = drawn[i];
     drawRun(sheet.page, [near, end], { width: 1.1 });
     drawRing(sheet.page, end, 1.3, { width: 0.4, fill: 1 });
     const spots = AWAY.flatMap((r) => [beyond(end, near, r + 3), beyond(end, middle, r + 3)]);
-    setNameInPlace(book, sheet, field, `${p.id}  (${p.anchor})`, spots, { bold: true, size: 14, longest: 60 });
-  }
+    setNameInPlace(book, sheet, border, `${p.id}  (${p.anchor})`, spots, { bold: true, size: 14, longest: 60 });
+  });
+  const kinds = new Map((rig.facts.form?.edges ?? []).map((e) => [e.id, e.kind]));
   for (const e of view.edges) {
     const run = e.run.map(place);
-    const spots = [0.5, 0.4, 0.6, 0.3, 0.7].flatMap((f) => AWAY.map((r) => beyond(pointAlong(run, f).at, middle, r)));
-    setNameInPlace(book, sheet, field, e.id, spots, { size: BODY, longest: 60 });
+    const within = ["belt", "ridge", "valley"].includes(kinds.get(e.id) ?? "");
+    const shares = [0.5, 0.4, 0.6, 0.3, 0.7];
+    const spots = within
+      ? shares.map((f) => pointAlong(run, f).at)
+      : shares.flatMap((f) => AWAY.map((r) => beyond(pointAlong(run, f).at, middle, r)));
+    setNameInPlace(book, sheet, within ? inside : border, e.id, spots, { size: BODY, longest: 60 });
   }
   for (const r of runs) {
     const run = r.run.map(place);
     const spots = [0.5, 0.35, 0.65].flatMap((f) => [0, ...AWAY].map((d) => beyond(pointAlong(run, f).at, middle, d)));
-    setNameInPlace(book, sheet, field, r.id, spots, { size: BODY, longest: 60 });
+    setNameInPlace(book, sheet, inside, r.id, spots, { size: BODY, longest: 60 });
   }
   for (const p of view.panels) {
     const outline = (p.outlines[0] ?? []).map(place);
-    if (outline.length > 2) setNameInPlace(book, sheet, field, p.id, [insidePoint(outline).at], { size: BODY });
+    if (outline.length > 2) setNameInPlace(book, sheet, inside, p.id, [insidePoint(outline).at], { size: BODY });
   }
+}
+
+/** Seen from above a short adjuster would vanish: it is drawn at least 5 mm long. */
+function farEnd(near: Vec2, far: Vec2, middle: Vec2): Vec2 {
+  const length = Math.hypot(far[0] - near[0], far[1] - near[1]);
+  if (length > 5) return far;
+  return length > 0.5 ? beyond(near, [2 * near[0] - far[0], 2 * near[1] - far[1]], 5) : beyond(near, middle, 5);
+}
+
+function around([x, y]: Vec2, r: number): BoxArea {
+  return { x: x - r, y: y - r, width: 2 * r, height: 2 * r };
 }
 
 /** What every adjuster is set to before the cloth is hung, and where it ends. */
@@ -109,5 +131,11 @@ export function flowStart(book: Book, rig: RigFacts): void {
     "Pin to pin is measured from the middle of one pin to the middle of the other, with the tape held tight along the turnbuckle. Under force it grows a little: the lengths in the steps are those a tape reads under the force of that step.",
   );
   const spent = rig.adjusters.filter((a) => travelOf(rig, a).leftIn < 0);
+  flowGapInPlace(flow, 3);
+  flowCautionsInPlace(flow, cautionsNamed("wind-lift", "suspended-load", "thread-engagement"), BODY);
+  flowHeadingInPlace(flow, "Then hang the cloth");
+  text(
+    "Cables in their pockets, every corner held by a line until it is pinned to its adjuster. Nothing is turned before all corners are pinned and the area below is clear.",
+  );
   if (spent.length > 0) text(`Out of reach at the finished state: ${spent.map((a) => a.id).join(", ")}.`);
 }

@@ -3,15 +3,15 @@
 import type { FactsMove, FactsStage } from "../../records/rig.ts";
 import { cautionsNamed } from "../cautions.ts";
 import { paperUnits } from "../paperUnits.ts";
-import { cornerDistances, holdReadings, jackStep, limitOf, type RigFacts, stopForce } from "../rigReadings.ts";
+import { jackStep, limitOf, type RigFacts, stopForce } from "../rigReadings.ts";
 import { turnsText } from "../turnbuckleWork.ts";
 import type { Book } from "./book.ts";
 import { flowCautionsInPlace } from "./cautionBlock.ts";
-import { drawBox, drawRun, drawText, LARGE, SMALL } from "./pen.ts";
+import { LARGE, SMALL } from "./pen.ts";
 import { BODY } from "./scheduleCover.ts";
+import { flowHoldInPlace } from "./scheduleHold.ts";
 import {
   type Column,
-  drawTable,
   type Flow,
   flowGapInPlace,
   flowHeadingInPlace,
@@ -20,7 +20,6 @@ import {
   needInPlace,
   openFlow,
   type TableCell,
-  tableHeight,
 } from "./table.ts";
 
 /** From this share of a limit on a step gets a warning of its own. */
@@ -36,16 +35,8 @@ export function flowStages(book: Book, rig: RigFacts): void {
       book,
       `Stage ${k + 1} of ${stages.length}: to ${percent(stage.fraction)} of the final forces`,
     );
-    const first = k === 0 ? cautionsNamed("cable-release", "wind-lift", "thread-engagement", "reading-force") : [];
-    flowCautionsInPlace(flow, k === 0 ? first : cautionsNamed("cable-release", "order-of-steps"), SMALL);
-    if (k === 0) {
-      flowHeadingInPlace(flow, "Hang the cloth");
-      flowTextInPlace(
-        flow,
-        "Cables in their pockets, every corner held by a line until it is pinned to its adjuster, every adjuster at its set length (sheet before this). Nothing is turned before all corners are pinned and the area below is clear.",
-        { size: BODY },
-      );
-    }
+    const own = k === 0 ? "reading-force" : "order-of-steps";
+    flowCautionsInPlace(flow, cautionsNamed("cable-release", own), SMALL);
     flowMovesInPlace(flow, rig, stage);
     flowHoldInPlace(flow, rig, stage, k);
   });
@@ -134,9 +125,11 @@ function flowMovesInPlace(flow: Flow, rig: RigFacts, stage: FactsStage): void {
   flowGapInPlace(flow, 1.5);
   const columns = moveColumns(rig);
   let rows: TableCell[][] = [];
+  let groups: number[] = [];
   const flush = () => {
-    if (rows.length > 0) flowTableInPlace(flow, columns, rows, { size: LARGE });
+    if (rows.length > 0) flowTableInPlace(flow, columns, rows, { size: LARGE, groups });
     rows = [];
+    groups = [];
   };
   for (const step of [...new Set(stage.moves.map((m) => m.step))]) {
     const moves = stage.moves.filter((m) => m.step === step);
@@ -150,6 +143,7 @@ function flowMovesInPlace(flow: Flow, rig: RigFacts, stage: FactsStage): void {
       flowGapInPlace(flow, 1.5);
     }
     rows.push(...moves.map((m) => moveRow(rig, m)));
+    groups.push(moves.length);
   }
   flush();
   if (stage.moves.length === 0) flowTextInPlace(flow, "No move: read and hold.", { size: LARGE, bold: true });
@@ -162,82 +156,4 @@ function openLimits(rig: RigFacts): string {
   if (open.length === 0) return "";
   const shown = open.length > 8 ? `${open.slice(0, 8).join(", ")} and ${open.length - 8} more` : open.join(", ");
   return `No limit is known for ${shown}: no step is checked against them.`;
-}
-
-const SIGN_HEIGHT = 24;
-
-/** Forces of all members and distances between corners, to be read, compared and signed before anyone goes on. */
-function flowHoldInPlace(flow: Flow, rig: RigFacts, stage: FactsStage, k: number): void {
-  const { force, span } = paperUnits(rig.facts.job);
-  const last = k === rig.tensioning.stages.length - 1;
-  const forceColumns: readonly Column[] = [
-    { head: ["", "Member"], width: 44, bold: true },
-    { head: ["Planned", force.unit], width: 25, align: "end", bold: true },
-    { head: ["Window", force.unit], width: 36, align: "end" },
-    { head: ["Read", force.unit], width: 25 },
-  ];
-  const forceRows = holdReadings(rig, stage).map((r) => [
-    r.id,
-    force.of(r.planned),
-    `${force.of(r.low)} – ${force.of(r.high)}`,
-    "",
-  ]);
-  const distances = cornerDistances(rig, stage);
-  const planned = distances.some((d) => d.atStage !== null);
-  const distanceColumns: readonly Column[] = [
-    { head: ["Between near", "pins of"], width: 44, bold: true },
-    ...(planned ? [{ head: ["Planned", span.unit], width: 26, align: "end" as const, bold: true }] : []),
-    { head: ["Finished", span.unit], width: 27, align: "end" },
-    { head: ["Measured", span.unit], width: 27 },
-  ];
-  const distanceRows = distances.map((d) => [
-    `${d.from} – ${d.to}`,
-    ...(planned ? [d.atStage === null ? "–" : span.of(d.atStage)] : []),
-    span.of(d.finished),
-    "",
-  ]);
-  const tables = Math.max(
-    tableHeight(forceColumns, forceRows.length, LARGE),
-    tableHeight(distanceColumns, distanceRows.length, LARGE),
-  );
-  const words = `Read all members after half an hour, compare with the window (temperature: see the table of temperatures), measure the corners. ${last ? "Lock both ends of every turnbuckle, mark them with paint." : "Nothing of the next stage is turned"}${last ? "" : " before this is signed."} A cable inside its pocket cannot be read: leave it blank, the adjusters decide.`;
-  const head = 22;
-  const whole = flow.sheet.top - flow.sheet.bottom;
-  const beside = head + tables + SIGN_HEIGHT <= whole;
-  if (beside) needInPlace(flow, head + tables + SIGN_HEIGHT);
-  flowHeadingInPlace(flow, `HOLD POINT ${k + 1}`);
-  flowTextInPlace(flow, words, { size: BODY });
-  flowGapInPlace(flow, 1.5);
-  if (beside) {
-    const width = flow.sheet.right - flow.sheet.left;
-    const area = { left: flow.sheet.left, width: 0.54 * width, y: flow.y, size: LARGE };
-    drawTable(flow.book, flow.sheet, forceColumns, forceRows, area);
-    const right = { ...area, left: flow.sheet.left + 0.56 * width, width: 0.44 * width };
-    if (distanceRows.length > 0) drawTable(flow.book, flow.sheet, distanceColumns, distanceRows, right);
-    flow.y -= tables;
-  } else {
-    flowTableInPlace(flow, forceColumns, forceRows, { size: LARGE });
-    flowGapInPlace(flow, 3);
-    if (distanceRows.length > 0) flowTableInPlace(flow, distanceColumns, distanceRows, { size: LARGE });
-  }
-  signInPlace(flow, last ? "Finished state accepted" : "Released for the next stage");
-}
-
-/** A framed row to sign. */
-function signInPlace(flow: Flow, what: string): void {
-  needInPlace(flow, SIGN_HEIGHT);
-  const { page, left, right } = flow.sheet;
-  const { regular, bold } = flow.book;
-  const top = flow.y - 3;
-  drawBox(page, { x: left, y: top - 18, width: right - left, height: 18 }, { width: 0.6 });
-  drawText(page, what, { x: left + 2, y: top - 6, size: LARGE, font: bold });
-  const fields = ["Wind", "Cloth temp.", "Time", "Name", "Signature"];
-  const width = (right - left - 4) / fields.length;
-  fields.forEach((field, i) => {
-    const x = left + 2 + i * width;
-    drawText(page, field, { x, y: top - 15, size: BODY, font: regular });
-    const line = (dx: number): [number, number] => [x + dx, top - 15.6];
-    drawRun(page, [line(24), line(width - 3)], { width: 0.2 });
-  });
-  flowGapInPlace(flow, SIGN_HEIGHT);
 }

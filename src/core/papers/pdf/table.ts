@@ -159,42 +159,80 @@ export function drawTable(
   return y;
 }
 
+export interface TableStyle {
+  /** pt */
+  size?: number;
+  /** Count of rows of each group that stays on one sheet where a sheet can hold it; every row alone where not given. */
+  groups?: readonly number[];
+}
+
 /** A table over the whole width of the flow, cells wrapped, head repeated on every sheet; a row longer than a sheet is split. */
 export function flowTableInPlace(
   flow: Flow,
   columns: readonly Column[],
   rows: readonly (readonly TableCell[])[],
-  style: { size?: number } = {},
+  style: TableStyle = {},
 ): void {
   const { book } = flow;
   const size = style.size ?? SMALL;
   const pitch = pitchOf(size);
   const fonts = columns.map((c) => (c.bold ? book.bold : book.regular));
-  const areaNow = (): Area => ({ left: flow.sheet.left, width: flow.sheet.right - flow.sheet.left, y: flow.y, size });
+  const total = flow.sheet.right - flow.sheet.left;
+  const { width } = layOut(columns, flow.sheet.left, total);
+  const areaNow = (): Area => ({ left: flow.sheet.left, width: total, y: flow.y, size });
   const headHeight = tableHeight(columns, 0, size);
-  const head = () => {
+  const linesOf = (row: readonly TableCell[]) =>
+    row.map((cell, k) => [cell].flat().flatMap((text) => wrapText(text, fonts[k], size, width[k] - 2 * PAD)));
+  const whole = flow.sheet.top - flow.sheet.bottom - headHeight;
+  const turn = () => {
+    needInPlace(flow, Infinity);
     flow.y -= drawHead(book, flow.sheet, columns, areaNow());
   };
   needInPlace(flow, headHeight + 3 * pitch);
-  head();
-  for (const row of rows) {
-    const { width } = layOut(columns, flow.sheet.left, flow.sheet.right - flow.sheet.left);
-    let cells = row.map((cell, k) =>
-      [cell].flat().flatMap((text) => wrapText(text, fonts[k], size, width[k] - 2 * PAD)),
-    );
-    for (;;) {
-      const lines = Math.max(...cells.map((c) => c.length));
-      const fits = Math.floor((flow.y - flow.sheet.bottom - PAD) / pitch);
-      const whole = Math.floor((flow.sheet.top - flow.sheet.bottom - headHeight - PAD) / pitch);
-      if (lines > fits && (lines <= whole || fits < 3)) {
-        needInPlace(flow, Infinity);
-        head();
-        continue;
+  flow.y -= drawHead(book, flow.sheet, columns, areaNow());
+  let next = 0;
+  for (const count of style.groups ?? rows.map(() => 1)) {
+    const group = rows.slice(next, next + count).map(linesOf);
+    next += count;
+    const height = group.reduce((sum, cells) => sum + Math.max(...cells.map((c) => c.length)) * pitch + PAD, 0);
+    if (height > flow.y - flow.sheet.bottom && height <= whole) turn();
+    for (let cells of group) {
+      while (cells.some((c) => c.length > 0)) {
+        const lines = Math.max(...cells.map((c) => c.length));
+        const fits = Math.floor((flow.y - flow.sheet.bottom - PAD) / pitch);
+        if (lines > fits && (lines * pitch + PAD <= whole || fits < 3)) {
+          turn();
+          continue;
+        }
+        const now = cells.map((c) => c.slice(0, fits));
+        flow.y -= drawRow(flow.sheet, now, columns, fonts, areaNow());
+        cells = cells.map((c) => c.slice(fits));
       }
-      const now = cells.map((c) => c.slice(0, fits));
-      flow.y -= drawRow(flow.sheet, now, columns, fonts, areaNow());
-      cells = cells.map((c) => c.slice(fits));
-      if (cells.every((c) => c.length === 0)) break;
     }
+  }
+}
+
+/** A table of one-line rows in two halves side by side, read down the left half first; over sheets where it is long. */
+export function flowHalvesInPlace(
+  flow: Flow,
+  columns: readonly Column[],
+  rows: readonly string[][],
+  style: { size?: number } = {},
+): void {
+  const size = style.size ?? SMALL;
+  const head = tableHeight(columns, 0, size);
+  const row = tableHeight(columns, 1, size) - head;
+  for (let left = rows; left.length > 0; ) {
+    needInPlace(flow, head + Math.min(3, left.length) * row);
+    const fits = Math.floor((flow.y - flow.sheet.bottom - head) / row);
+    const now = left.slice(0, 2 * fits);
+    const half = Math.ceil(now.length / 2);
+    const width = 0.49 * (flow.sheet.right - flow.sheet.left);
+    const area = { left: flow.sheet.left, width, y: flow.y, size };
+    drawTable(flow.book, flow.sheet, columns, now.slice(0, half), area);
+    const right = { ...area, left: flow.sheet.right - width };
+    if (now.length > half) drawTable(flow.book, flow.sheet, columns, now.slice(half), right);
+    flow.y -= head + half * row;
+    left = left.slice(2 * fits);
   }
 }
