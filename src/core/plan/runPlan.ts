@@ -1,7 +1,7 @@
 // The chain: job and mesh in, facts out. Calls the stations by name, in order, and can stop after any of them.
 import { runForm } from "../form/runForm.ts";
 import { buildPieces } from "../panels/cutPieces.ts";
-import type { Station, StationContext, StationResult } from "../problem.ts";
+import { type Finding, PlanError, type Station, type StationContext, type StationResult } from "../problem.ts";
 import type { Facts } from "../records/facts.ts";
 import type { Job, MeshSource } from "../records/job.ts";
 import type { StockRoll } from "../records/roll.ts";
@@ -44,12 +44,50 @@ function buildStock(job: Job): StockRoll[] {
   ];
 }
 
+/** An error that follows a stop, as a finding beside it: the stop says what to mend first. */
+function findFollowing(error: PlanError, station: Station): Finding {
+  return {
+    code: error.code,
+    level: "stop",
+    station,
+    where: error.where,
+    value: null,
+    limit: null,
+    text: `the plan ends here: ${error.message}`,
+    remedy: "see to the stops before this one first: it may follow from them",
+    basis: "own argument",
+  };
+}
+
 /**
- * Plans a job.
+ * Plans a job. Where a station cannot go on after an earlier one found a stop, the plan ends there and keeps that stop.
  * @throws PlanError of any station; a plan that can be finished but must not be issued holds a finding of level stop instead
  */
 export function runPlan(job: Job, source: MeshSource, options: PlanOptions, context: StationContext): Facts {
   const facts = buildHead(job, options.revision);
+  let at: Station = "form";
+  const onStation = (station: Station) => {
+    at = station;
+    options.onStation?.(station);
+  };
+  try {
+    runStationsInPlace(facts, job, source, { ...options, onStation }, context);
+  } catch (error) {
+    const stopped = facts.findings.some((f) => f.level === "stop");
+    if (!(error instanceof PlanError) || error.code === "cancelled" || !stopped) throw error;
+    facts.findings.push(findFollowing(error, at));
+  }
+  return facts;
+}
+
+/** Fills the facts station by station. */
+function runStationsInPlace(
+  facts: Facts,
+  job: Job,
+  source: MeshSource,
+  options: PlanOptions & { onStation: (station: Station) => void },
+  context: StationContext,
+): void {
   const share = (station: Station, next: Station): StationContext => ({
     ...context,
     onProgress: (s, words) => context.onProgress?.(begins[station] + s * (begins[next] - begins[station]), words),
@@ -59,24 +97,24 @@ export function runPlan(job: Job, source: MeshSource, options: PlanOptions, cont
     facts.checks.push(...result.checks);
     return result.output;
   };
-  options.onStation?.("form");
+  options.onStation("form");
   const form = take(runForm(source, job, share("form", "seams")));
   facts.form = buildFormFacts(form);
-  if (options.until === "form") return facts;
+  if (options.until === "form") return;
 
   if (options.until === "seams") {
-    options.onStation?.("seams");
+    options.onStation("seams");
     const layout = take(
       runSeams(form, job, firstOptions(measureRoom(job), job.allowances.seam / 1000), share("seams", "panels")),
     );
     facts.layouts = layout.choices;
     facts.seams = buildSeamFacts(layout, []);
-    return facts;
+    return;
   }
   const fitted = fitPanels(form, job, {
     seams: share("seams", "panels"),
     panels: share("panels", "rolls"),
-    onStation: (station) => options.onStation?.(station),
+    onStation: options.onStation,
   });
   const layout = take(fitted.seams);
   const panels = take(fitted.panels);
@@ -85,20 +123,19 @@ export function runPlan(job: Job, source: MeshSource, options: PlanOptions, cont
   facts.panels = panels.map(buildPanelFacts);
   const others = take(buildPieces(panels, form, job));
   facts.pieces = others.map(buildPieceFacts);
-  if (options.until === "panels") return facts;
+  if (options.until === "panels") return;
 
-  options.onStation?.("rolls");
+  options.onStation("rolls");
   const pieces = [...panels, ...others].map((p) => ({ id: p.id, fabric: p.fabric, batch: p.batch, cut: p.cut }));
   const nested = take(runRolls(pieces, buildStock(job), job.nest, share("rolls", "rig")));
   facts.rolls = nested;
-  if (options.until === "rolls") return facts;
+  if (options.until === "rolls") return;
 
-  options.onStation?.("rig");
+  options.onStation("rig");
   const rigInput = take(buildRigInput(job, { form, layout, panels, rolls: nested.map((r) => r.id) }));
   const rig = take(runRig(rigInput, share("rig", "papers")));
   facts.cables = rig.cables;
   if (rig.rig) facts.rig = rig.rig;
   if (rig.asBuilt) facts.asBuilt = rig.asBuilt;
   if (rig.tensioning) facts.tensioning = rig.tensioning;
-  return facts;
 }
