@@ -36,6 +36,7 @@ export async function runCommand(args: string[], around: Surroundings): Promise<
 }
 
 function hint(verb: string | undefined): string {
+  if (verb === undefined) return `\n${writeHelp()}`;
   const found = VERBS.find((v) => v.verb === verb);
   return found === undefined
     ? "  try: seamstay help"

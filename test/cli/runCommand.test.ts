@@ -41,7 +41,7 @@ describe("usage", () => {
     expect([exit, out]).toEqual([2, ""]);
     expect(err).toContain(words);
     expect(err).toContain("(usage)");
-    expect(err).toMatch(/usage: seamstay |try: seamstay help/);
+    expect(err).toMatch(args.length === 0 ? /First steps: seamstay start/ : /usage: seamstay |try: seamstay help/);
     expect(err).not.toContain(" at ");
   });
 
