@@ -1,14 +1,11 @@
 // Published and closed-form cases of cable mechanics, each with its source.
 import { expect, test } from "vitest";
-import { readCatalogues } from "../../src/core/job/catalogues.ts";
+import { loadCatalogues } from "../../src/cli/packageFiles.ts";
 import { runPlan } from "../../src/core/plan/runPlan.ts";
 import { measureLink } from "../../src/core/structure/elements.ts";
-import { createEquilibriumSolver, measureInfluence, solveEquilibrium } from "../../src/core/structure/equilibrium.ts";
+import { createEquilibriumSolver, solveEquilibrium } from "../../src/core/structure/equilibrium.ts";
+import { measureInfluence } from "../../src/core/structure/influence.ts";
 import { buildStructure, type ClothElements } from "../../src/core/structure/structure.ts";
-import cables from "../../templates/cables.json";
-import cautions from "../../templates/cautions.json";
-import fabrics from "../../templates/fabrics.json";
-import turnbuckles from "../../templates/turnbuckles.json";
 import { buildGrid, listSides } from "../form/formMeshes.ts";
 import { makeJob } from "../madeJob.ts";
 
@@ -130,8 +127,7 @@ test("stay, stainless 1x19 d 16: 37.755 mm at 50 kN over 15 m, 6.357 kN for 20 K
 });
 
 test("T1, M20 turnbuckle with right- and left-hand ends: 7.551 turns are 37.755 mm (two pitches of 2.5 mm a turn, ISO 724)", () => {
-  const catalogue = readCatalogues({ fabrics, cables, turnbuckles, cautions });
-  const { perTurn } = catalogue.turnbuckles["open-body-m20"];
+  const { perTurn } = loadCatalogues().turnbuckles["open-body-m20"];
   expect(Math.abs(7.551 * perTurn - 37.755)).toBeLessThan(1e-3);
   expect(37.755 / perTurn).toBeCloseTo(7.551, 9);
 });

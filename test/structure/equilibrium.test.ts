@@ -4,9 +4,9 @@ import { measureForces, measureLink } from "../../src/core/structure/elements.ts
 import {
   assembleTangentInPlace,
   createEquilibriumSolver,
-  measureInfluence,
   solveEquilibrium,
 } from "../../src/core/structure/equilibrium.ts";
+import { measureInfluence } from "../../src/core/structure/influence.ts";
 import { buildStructure, type ClothElements } from "../../src/core/structure/structure.ts";
 
 const noCloth: ClothElements = {

@@ -161,6 +161,21 @@ export interface FactsStage {
   forces: Record<string, number>;
   /** Where the near end of each adjuster stands at the end of the stage, by adjuster, m. */
   corners?: Record<string, Vec3>;
+  /** What every adjuster reads right after each step, moved or not, kN. */
+  readings?: { step: number; forces: Record<string, number> }[];
+}
+
+/** One way of going through the stages, played on the full structure. */
+export interface FactsWay {
+  /** chosen: this plan; clockwise: one by one round the roof to the same lengths; by-force: one by one, each until its own gauge shows the stage's force. */
+  way: "chosen" | "clockwise" | "by-force";
+  /** Member nearest its limit at any step of any stage. */
+  peak: { id: string; kN: number; share: number };
+  /** Visits to an adjuster, and steps (adjusters turned at once are one step). */
+  visits: number;
+  steps: number;
+  /** Greatest |force − target| / target when the last step is done. */
+  off: number;
 }
 
 export interface FactsTensioning {
@@ -171,6 +186,8 @@ export interface FactsTensioning {
   readingError: number;
   /** Share of a member's breaking force or capacity that it may carry at any step: RigDecision.limit. */
   limit: number;
+  /** The order chosen beside the plain ways, where the rig has tension modes enough for the order to matter. */
+  ways?: FactsWay[];
   /** True where every input the schedule stands on was given by the job. */
   issuable: boolean;
 }

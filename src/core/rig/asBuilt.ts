@@ -2,7 +2,7 @@
 import type { FactsAsBuilt } from "../records/rig.ts";
 import { buildTriangleRoom, measureTriangle } from "../structure/elements.ts";
 import type { Rig } from "./buildRig.ts";
-import { readForces } from "./planMoves.ts";
+import { readForces } from "./readState.ts";
 import type { RigState } from "./solveLengths.ts";
 
 /** As-built stress (kN/m, weighted by flat area), greatest way of a node from the form (m), forces (kN). */

@@ -4,8 +4,9 @@ import type { FactsAsBuilt, FactsMove, FactsStage } from "../records/rig.ts";
 import { measureLink } from "../structure/elements.ts";
 import { measureDistance } from "../surface/measures.ts";
 import type { Rig } from "./buildRig.ts";
+import { readAdjusters } from "./readState.ts";
 import type { RigInput } from "./rigInput.ts";
-import { type RigState, readAdjusters } from "./solveLengths.ts";
+import { countModes, type RigState } from "./solveLengths.ts";
 
 /** Share of the target an adjuster may miss before and after moves are rounded. */
 const exactLimit = 0.005;
@@ -214,7 +215,7 @@ function reviewPeaks(rig: Rig, stages: FactsStage[], limit: number): Finding[] {
 /** How many tension modes the adjusters have: forces say nothing of the weak ones. */
 function reviewModes(rig: Rig, singular: number[]): Finding[] {
   if (singular.length === 0) return [];
-  const strong = singular.filter((s) => s > 0.05 * singular[0]).length;
+  const strong = countModes(singular);
   if (strong === rig.adjusters.length) return [];
   return [
     {

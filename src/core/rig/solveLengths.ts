@@ -3,19 +3,13 @@
 // Source: influence matrix as in Kwan & Pellegrino 1993 (from memory), repeated Gauss–Newton with a regularising term; own.
 import { Matrix, SingularValueDecomposition } from "ml-matrix";
 import type { Check } from "../problem.ts";
-import { measureLink } from "../structure/elements.ts";
-import {
-  type EquilibriumSolver,
-  type EquilibriumState,
-  measureInfluence,
-  solveEquilibrium,
-} from "../structure/equilibrium.ts";
+import { type EquilibriumSolver, type EquilibriumState, solveEquilibrium } from "../structure/equilibrium.ts";
+import { measureInfluence } from "../structure/influence.ts";
 import type { Rig } from "./buildRig.ts";
+import { type Places, readAdjusters } from "./readState.ts";
 
 /** A state of the rig: positions, slack lengths of all links, and how far the solve came. */
-export interface RigState {
-  x: Float64Array<ArrayBuffer>;
-  L0: Float64Array<ArrayBuffer>;
+export interface RigState extends Places {
   equilibrium: EquilibriumState;
 }
 
@@ -31,29 +25,36 @@ export interface LengthOptions {
 /** Defaults of solveLengths: a tenth of the 0.5 % that the schedule promises before rounding. */
 export const lengthDefaults: LengthOptions = { tolerance: 5e-4, stride: 0.015, rounds: 40 };
 
-/** Forces of the adjusters in a state, kN. */
-export function readAdjusters(
-  rig: Rig,
-  state: { x: Float64Array<ArrayBuffer>; L0: Float64Array<ArrayBuffer> },
-): number[] {
-  return rig.adjusters.map((a) => measureLink(rig.structure, state.x, state.L0, a.link).force);
-}
-
-/** A state from slack lengths, starting near another one. slack: cloth hangs loose, so that its rest need not be found sharply. */
+/** A state from slack lengths, starting near another one. */
 export function solveState(
   rig: Rig,
   solver: EquilibriumSolver,
-  near: { x: Float64Array<ArrayBuffer>; L0: Float64Array<ArrayBuffer> },
-  options: { slack?: boolean; cancelled?: (() => boolean) | undefined } = {},
+  near: Places,
+  options: { cancelled?: (() => boolean) | undefined } = {},
 ): RigState {
   const least = Math.min(...rig.adjusters.map((a) => a.target), Infinity);
   const { cancelled } = options;
   const equilibrium = solveEquilibrium(solver, near.x, near.L0, {
-    floor: (options.slack ? 1e-4 : 1e-9) * least,
-    maxSteps: options.slack ? 40 : 80,
+    tolerance: 1e-9,
+    floor: 1e-9 * least,
     ...(cancelled ? { cancelled } : {}),
   });
   return { x: equilibrium.x, L0: near.L0, equilibrium };
+}
+
+/** The state with the adjusters at other slack lengths, m. */
+export function turnTo(
+  rig: Rig,
+  solver: EquilibriumSolver,
+  state: Places,
+  lengths: readonly number[],
+  options: { cancelled?: (() => boolean) | undefined } = {},
+): RigState {
+  const L0 = state.L0.slice();
+  rig.adjusters.forEach((a, i) => {
+    L0[a.link] = lengths[i];
+  });
+  return solveState(rig, solver, { x: state.x, L0 }, options);
 }
 
 /** Influence of adjusters on each other, kN per m of length ADDED. @shape n × n */
@@ -99,12 +100,12 @@ export function solveLengths(
     singular = svd.diagonal;
     if (!(singular[0] > 0)) {
       // everything slack: take in a little everywhere
-      state = turned(
+      state = turnTo(
         rig,
         solver,
         state,
-        links.map(() => -options.stride / 3),
-        options.cancelled,
+        links.map((k) => state.L0[k] - options.stride / 3),
+        options,
       );
       continue;
     }
@@ -118,30 +119,16 @@ export function solveLengths(
     const d = new SingularValueDecomposition(left, { autoTranspose: true }).solve(right).to1DArray();
     const longest = Math.max(...d.map(Math.abs));
     const share = longest > options.stride ? options.stride / longest : 1;
-    state = turned(
+    state = turnTo(
       rig,
       solver,
       state,
-      d.map((q) => q * share),
-      options.cancelled,
+      links.map((k, i) => state.L0[k] + share * d[i]),
+      options,
     );
     if (longest < 2e-4 || round % 4 === 3) softness /= 4;
   }
   return { ...(best ?? state), off: least, singular };
-}
-
-function turned(
-  rig: Rig,
-  solver: EquilibriumSolver,
-  state: RigState,
-  change: number[],
-  cancelled?: () => boolean,
-): RigState {
-  const L0 = state.L0.slice();
-  rig.adjusters.forEach((a, i) => {
-    L0[a.link] += change[i];
-  });
-  return solveState(rig, solver, { x: state.x, L0 }, { cancelled });
 }
 
 /** The check that forces hold before rounding. */
@@ -153,4 +140,9 @@ export function checkLengths(name: string, off: number): Check {
     limit: 0.005,
     holds: off <= 0.005,
   };
+}
+
+/** Tension modes that forces determine: singular values above 5 % of the greatest. */
+export function countModes(singular: readonly number[]): number {
+  return singular.filter((s) => s > 0.05 * singular[0]).length;
 }

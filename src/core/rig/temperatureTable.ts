@@ -1,8 +1,8 @@
 // Forces of the finished rig when everything is warmer or colder than the reference: anchors stay where they are.
 import type { FactsTensioning } from "../records/rig.ts";
-import { createEquilibriumSolver } from "../structure/equilibrium.ts";
+import type { EquilibriumSolver } from "../structure/equilibrium.ts";
 import type { Rig } from "./buildRig.ts";
-import { readForces } from "./planMoves.ts";
+import { readForces } from "./readState.ts";
 import { type RigState, solveState } from "./solveLengths.ts";
 
 /** Steps of the table from the reference temperature, K. */
@@ -18,6 +18,7 @@ export const steelExpansion = 12e-6;
  */
 export function buildTemperatureTable(
   rig: Rig,
+  solver: EquilibriumSolver,
   finished: RigState,
   alpha: { cables: number[]; cloth: number },
   reference: number,
@@ -39,7 +40,7 @@ export function buildTemperatureTable(
     const warm = { ...rig, structure };
     return {
       temperature: reference + step,
-      forces: readForces(warm, solveState(warm, createEquilibriumSolver(structure), { x: finished.x, L0 })),
+      forces: readForces(warm, solveState(warm, { ...solver, structure }, { x: finished.x, L0 })),
     };
   });
 }

@@ -5,17 +5,17 @@ import {
   analyseSymmetric,
   factorSymmetric,
   type NumericFactor,
-  refactorInPlace,
   type SymbolicFactor,
   solveInPlace,
+  tryRefactorInPlace,
 } from "../numeric/factor.ts";
 import { addElementInPlace, buildPattern, type ElementPattern } from "../numeric/pattern.ts";
 import { PlanError } from "../problem.ts";
 import {
   buildTriangleRoom,
+  type ForceState,
   fillLinkTangent,
   fillTriangleTangent,
-  measureEnergy,
   measureForces,
   measureLink,
   measureTriangle,
@@ -33,6 +33,8 @@ export interface EquilibriumSolver {
   factor: NumericFactor | null;
   /** Matrix values of the last assembly. */
   values: Float64Array<ArrayBuffer>;
+  /** The factor is unshifted and of a state near the last one, so that a step may be tried with it before a new one is made. */
+  near: boolean;
 }
 
 export interface EquilibriumOptions {
@@ -52,6 +54,8 @@ export const equilibriumDefaults: EquilibriumOptions = { tolerance: 1e-10, maxSt
 export interface EquilibriumState {
   x: Float64Array<ArrayBuffer>;
   steps: number;
+  /** Tangents factored. */
+  factors: number;
   /** As EquilibriumOptions.tolerance counts it. */
   residual: number;
   /** Largest element force, kN. */
@@ -91,6 +95,7 @@ export function createEquilibriumSolver(structure: Structure): EquilibriumSolver
     symbolic: analyseSymmetric(elements.pattern),
     factor: null,
     values: new Float64Array(elements.pattern.rowIndex.length),
+    near: false,
   };
 }
 
@@ -121,22 +126,22 @@ function largestDiagonal(solver: EquilibriumSolver): number {
   return most > 0 ? most : 1;
 }
 
-/** Factors solver.values, shifted where need be; returns the shift. first: shift to begin with. */
-function factorShifted(solver: EquilibriumSolver, first: number): number {
+/**
+ * Factors solver.values with a shift on the diagonal, raised until the matrix is positive definite; returns the shift.
+ * @throws PlanError equilibrium-tangent: entries that are not numbers
+ */
+export function factorShifted(solver: EquilibriumSolver, first: number): number {
   const { pattern } = solver.elements;
   const diagonal = largestDiagonal(solver);
   let shift = first;
   for (let tries = 0; tries < 40; tries++) {
     const values = shift > 0 ? solver.values.slice() : solver.values;
     if (shift > 0) for (let i = 0; i < pattern.n; i++) values[pattern.colStart[i]] += shift;
-    try {
-      if (solver.factor) refactorInPlace(solver.factor, values);
-      else solver.factor = factorSymmetric(solver.symbolic, values);
+    if (refactor(solver, values)) {
+      solver.near = shift === 0;
       return shift;
-    } catch (error) {
-      if (!(error instanceof PlanError) || error.code !== "not-positive-definite") throw error;
-      shift = shift > 0 ? 10 * shift : 1e-9 * diagonal;
     }
+    shift = shift > 0 ? 10 * shift : 1e-9 * diagonal;
   }
   throw new PlanError(
     "equilibrium-tangent",
@@ -144,6 +149,18 @@ function factorShifted(solver: EquilibriumSolver, first: number): number {
     [],
     { shift },
   );
+}
+
+/** False where the matrix is not positive definite. */
+function refactor(solver: EquilibriumSolver, values: Float64Array<ArrayBuffer>): boolean {
+  if (solver.factor) return tryRefactorInPlace(solver.factor, values) < 0;
+  try {
+    solver.factor = factorSymmetric(solver.symbolic, values);
+    return true;
+  } catch (error) {
+    if (!(error instanceof PlanError) || error.code !== "not-positive-definite") throw error;
+    return false;
+  }
 }
 
 function largestFree(force: Float64Array, unknown: Int32Array): number {
@@ -164,8 +181,65 @@ function moved(
   return y;
 }
 
+/** A step's direction, with what a line search asks of it. */
+interface Direction {
+  move: Float64Array<ArrayBuffer>;
+  /** Change of the energy along it, kJ; below 0. */
+  slope: number;
+  /** Longest way of a coordinate, m. */
+  longest: number;
+}
+
+function findDirection(solver: EquilibriumSolver, force: Float64Array): Direction {
+  const { unknown, n, factor } = solver;
+  const move = new Float64Array(n);
+  for (let c = 0; c < force.length; c++) if (unknown[c] >= 0) move[unknown[c]] = -force[c];
+  const down = move.slice();
+  solveInPlace(factor as NumericFactor, move);
+  let slope = 0;
+  let longest = 0;
+  for (let i = 0; i < n; i++) {
+    slope -= move[i] * down[i];
+    longest = Math.max(longest, Math.abs(move[i]));
+  }
+  return { move, slope, longest };
+}
+
+/** A state on the way: positions, forces, and the greatest out-of-balance force. */
+interface Iterate extends ForceState {
+  x: Float64Array<ArrayBuffer>;
+  most: number;
+}
+
+function measureIterate(solver: EquilibriumSolver, x: Float64Array<ArrayBuffer>, L0: Float64Array): Iterate {
+  const state = measureForces(solver.structure, x, L0);
+  return { x, ...state, most: largestFree(state.force, solver.unknown) };
+}
+
+/** Back-tracking along a direction; null where no share of it lowers the energy. */
+function search(
+  solver: EquilibriumSolver,
+  now: Iterate,
+  L0: Float64Array,
+  way: Direction,
+  limits: { stride: number; halvings: number },
+): { next: Iterate; halving: number; step: number } | null {
+  const { stride, halvings } = limits;
+  let step = way.longest > stride ? stride / way.longest : 1;
+  for (let halving = 0; halving <= halvings; halving++, step /= 2) {
+    const next = measureIterate(solver, moved(now.x, way.move, step, solver.unknown), L0);
+    const gain = next.energy - now.energy;
+    if (gain <= 1e-4 * step * way.slope) return { next, halving, step };
+    // near the end the energy is flat to rounding but the forces still improve
+    if (gain <= 1e-9 * Math.max(now.energy, now.scale * stride) && next.most < 0.9 * now.most)
+      return { next, halving, step };
+  }
+  return null;
+}
+
 /**
- * Positions in equilibrium from a start, for given slack lengths.
+ * Positions in equilibrium from a start, for given slack lengths. A factor at hand is used as long as every step with it leaves
+ * less than a quarter of the force (chord steps); then the tangent is factored anew.
  * @shape x 3*nN, L0 one for each link (m)
  * @throws PlanError equilibrium-tangent, cancelled; a solve that does not get there is returned with converged false
  */
@@ -176,62 +250,42 @@ export function solveEquilibrium(
   given: Partial<EquilibriumOptions> = {},
 ): EquilibriumState {
   const options = { ...equilibriumDefaults, ...given };
-  const { structure: s, unknown } = solver;
-  let x = start.slice();
   const stride = options.stride || 0.05 * measureSize(start);
-  let { force, scale } = measureForces(s, x, L0);
-  let energy = measureEnergy(s, x, L0);
-  const floor = Math.max(measureRounding(s, start, L0), options.floor);
+  let now = measureIterate(solver, start.slice(), L0);
+  const floor = Math.max(measureRounding(solver.structure, start, L0), options.floor);
   let shift = 0;
+  let factors = 0;
   for (let steps = 0; ; steps++) {
-    const residual = scale > 0 ? largestFree(force, unknown) / scale : 0;
-    const good = residual < options.tolerance || residual * scale < floor;
-    if (good || steps === options.maxSteps || solver.n === 0) return { x, steps, residual, scale, converged: good };
+    const { x, scale } = now;
+    const residual = scale > 0 ? now.most / scale : 0;
+    const good = residual < options.tolerance || now.most < floor;
+    const end = (converged: boolean) => ({ x, steps, factors, residual, scale, converged });
+    if (good || steps === options.maxSteps || solver.n === 0) return end(good);
     if (options.cancelled?.()) throw new PlanError("cancelled", "stopped on request");
+    if (solver.near) {
+      const chord = search(solver, now, L0, findDirection(solver, now.force), { stride, halvings: 0 });
+      solver.near = chord !== null && chord.step === 1 && chord.next.most < 0.25 * now.most;
+      if (chord) {
+        now = chord.next;
+        continue;
+      }
+    }
     assembleTangentInPlace(solver, x, L0);
     shift = factorShifted(solver, shift);
-    const move = new Float64Array(solver.n);
-    for (let c = 0; c < force.length; c++) if (unknown[c] >= 0) move[unknown[c]] = -force[c];
-    const down = move.slice();
-    solveInPlace(solver.factor as NumericFactor, move);
-    let slope = 0;
-    let longest = 0;
-    for (let i = 0; i < move.length; i++) {
-      slope -= move[i] * down[i];
-      longest = Math.max(longest, Math.abs(move[i]));
-    }
-    let step = longest > stride ? stride / longest : 1;
-    const was = largestFree(force, unknown);
-    let taken: Float64Array<ArrayBuffer> | null = null;
-    let halving = 0;
-    for (; halving < 30; halving++, step /= 2) {
-      const y = moved(x, move, step, unknown);
-      const e = measureEnergy(s, y, L0);
-      if (e <= energy + 1e-4 * step * slope) {
-        taken = y;
-        break;
-      }
-      // near the end the energy is flat to rounding but the forces still improve
-      if (
-        e - energy <= 1e-9 * Math.max(energy, scale * stride) &&
-        largestFree(measureForces(s, y, L0).force, unknown) < 0.9 * was
-      ) {
-        taken = y;
-        break;
-      }
-    }
-    if (!taken) {
+    factors++;
+    const found = search(solver, now, L0, findDirection(solver, now.force), { stride, halvings: 29 });
+    if (!found) {
       // a kink of the tension-only law: try again with a stronger tie
-      if (shift > 1e3) return { x, steps, residual, scale, converged: false };
+      solver.near = false;
+      if (shift > 1e3) return end(false);
       shift = Math.max(100 * shift, 1e-2);
       continue;
     }
+    solver.near &&= found.step === 1 && found.next.most < 0.25 * now.most;
     // many halvings: the quadratic model reaches too far (links going slack), so tie harder; none: let go again
-    if (halving > 2) shift = Math.max(10 * shift, 1e-6 * largestDiagonal(solver));
-    else if (halving === 0) shift = shift < 1e-8 * largestDiagonal(solver) ? 0 : shift / 10;
-    x = taken;
-    energy = measureEnergy(s, x, L0);
-    ({ force, scale } = measureForces(s, x, L0));
+    if (found.halving > 2) shift = Math.max(10 * shift, 1e-6 * largestDiagonal(solver));
+    else if (found.halving === 0) shift = shift < 1e-8 * largestDiagonal(solver) ? 0 : shift / 10;
+    now = found.next;
   }
 }
 
@@ -252,58 +306,4 @@ function measureSize(x: Float64Array): number {
     high[c % 3] = Math.max(high[c % 3], x[c]);
   }
   return Math.max(high[0] - low[0], high[1] - low[1], high[2] - low[2], 1e-9);
-}
-
-/**
- * Change of link forces for unit changes of slack lengths at an equilibrium: the influence matrix from the tangent.
- * @shape rows: links of `read`, columns: links of `turned`; out row-major
- * @units kN/m, per metre of slack length ADDED (an adjuster opened)
- * @source tangent of the equilibrium: K dx = −∂f/∂L0 dL0; own derivation
- */
-export function measureInfluence(
-  solver: EquilibriumSolver,
-  x: Float64Array<ArrayBuffer>,
-  L0: Float64Array<ArrayBuffer>,
-  turned: number[],
-  read: number[],
-): Float64Array<ArrayBuffer> {
-  const { structure: s, unknown, n } = solver;
-  assembleTangentInPlace(solver, x, L0);
-  factorShifted(solver, 0);
-  const right = new Float64Array(n * turned.length);
-  const states = new Map<number, ReturnType<typeof measureLink>>();
-  for (const k of new Set([...turned, ...read])) states.set(k, measureLink(s, x, L0, k));
-  const direct = (k: number) => {
-    const state = states.get(k);
-    return state && state.stiffness > 0 ? (-s.EA[k] * state.length) / (L0[k] * L0[k]) : 0;
-  };
-  const addTo = (k: number, column: number, value: number) => {
-    const u = states.get(k)?.u ?? [0, 0, 0];
-    for (let i = 0; i < 3; i++) {
-      const a = unknown[3 * s.link[2 * k] + i];
-      const b = unknown[3 * s.link[2 * k + 1] + i];
-      // f_a = −N u, f_b = +N u; right side = −∂f/∂L0
-      if (a >= 0) right[column * n + a] += value * u[i];
-      if (b >= 0) right[column * n + b] -= value * u[i];
-    }
-  };
-  turned.forEach((k, c) => {
-    addTo(k, c, direct(k));
-  });
-  solveInPlace(solver.factor as NumericFactor, right, turned.length);
-  const out = new Float64Array(read.length * turned.length);
-  read.forEach((k, r) => {
-    const state = states.get(k);
-    if (!state) return;
-    turned.forEach((t, c) => {
-      let stretch = 0;
-      for (let i = 0; i < 3; i++) {
-        const a = unknown[3 * s.link[2 * k] + i];
-        const b = unknown[3 * s.link[2 * k + 1] + i];
-        stretch += state.u[i] * ((b >= 0 ? right[c * n + b] : 0) - (a >= 0 ? right[c * n + a] : 0));
-      }
-      out[r * turned.length + c] = state.stiffness * stretch + (k === t ? direct(k) : 0);
-    });
-  });
-  return out;
 }

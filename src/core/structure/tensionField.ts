@@ -38,32 +38,34 @@ export function relaxStress(
   const angle = findWrinkle(d, s1, s2, s3);
   const n1 = Math.cos(angle);
   const n2 = Math.sin(angle);
-  const e = [n1 * n1, n2 * n2, 2 * n1 * n2];
-  const f = [-e[2], e[2], 2 * (n1 * n1 - n2 * n2)];
-  const de = [d.ww * e[0] + d.wf * e[1], d.wf * e[0] + d.ff * e[1], d.g * e[2]];
-  const df = [d.ww * f[0] + d.wf * f[1], d.wf * f[0] + d.ff * f[1], d.g * f[2]];
-  const ede = e[0] * de[0] + e[1] * de[1] + e[2] * de[2];
-  const beta = Math.max(-(e[0] * s1 + e[1] * s2 + e[2] * s3) / ede, 1e-300);
-  stress[0] = s1 + beta * de[0];
-  stress[1] = s2 + beta * de[1];
-  stress[2] = s3 + beta * de[2];
+  // e = n nᵀ as a strain, f its derivative by the angle; De and Df
+  const [e1, e2, e3] = [n1 * n1, n2 * n2, 2 * n1 * n2];
+  const f3 = 2 * (e1 - e2);
+  const de1 = d.ww * e1 + d.wf * e2;
+  const de2 = d.wf * e1 + d.ff * e2;
+  const de3 = d.g * e3;
+  const df1 = (d.wf - d.ww) * e3;
+  const df2 = (d.ff - d.wf) * e3;
+  const df3 = d.g * f3;
+  const ede = e1 * de1 + e2 * de2 + e3 * de3;
+  const beta = Math.max(-(e1 * s1 + e2 * s2 + e3 * s3) / ede, 1e-300);
+  stress[0] = s1 + beta * de1;
+  stress[1] = s2 + beta * de2;
+  stress[2] = s3 + beta * de3;
   // H = [[eDe, eDf], [eDf, fDf + e''·S/β]], e''·S = twice the stress along the wrinkle
-  const edf = e[0] * df[0] + e[1] * df[1] + e[2] * df[2];
+  const edf = e1 * df1 + e2 * df2 + e3 * df3;
   const along = Math.max(stress[0] + stress[1], 0);
-  const h22 = f[0] * df[0] + f[1] * df[1] + f[2] * df[2] + (2 * along) / beta;
+  const h22 = e3 * (df2 - df1) + f3 * df3 + (2 * along) / beta;
   const det = ede * h22 - edf * edf;
-  const [i11, i12, i22] = [h22 / det, -edf / det, ede / det];
-  const less = (p: number, q: number) =>
-    i11 * de[p] * de[q] + i12 * (de[p] * df[q] + df[p] * de[q]) + i22 * df[p] * df[q];
-  fillTangent(
-    tangent,
-    d.ww - less(0, 0),
-    d.wf - less(0, 1),
-    d.ff - less(1, 1),
-    -less(0, 2),
-    -less(1, 2),
-    d.g - less(2, 2),
-  );
+  const i11 = h22 / det;
+  const i12 = -edf / det;
+  const i22 = ede / det;
+  tangent[0] = d.ww - (i11 * de1 * de1 + 2 * i12 * de1 * df1 + i22 * df1 * df1);
+  tangent[1] = d.wf - (i11 * de1 * de2 + i12 * (de1 * df2 + df1 * de2) + i22 * df1 * df2);
+  tangent[2] = d.ff - (i11 * de2 * de2 + 2 * i12 * de2 * df2 + i22 * df2 * df2);
+  tangent[3] = -(i11 * de1 * de3 + i12 * (de1 * df3 + df1 * de3) + i22 * df1 * df3);
+  tangent[4] = -(i11 * de2 * de3 + i12 * (de2 * df3 + df2 * de3) + i22 * df2 * df3);
+  tangent[5] = d.g - (i11 * de3 * de3 + 2 * i12 * de3 * df3 + i22 * df3 * df3);
   return 1;
 }
 
@@ -84,41 +86,77 @@ function fillTangent(
   out[5] = k33;
 }
 
+/** Angles looked at first, and their normals. */
 const SCAN = 24;
+const scanned = Float64Array.from({ length: 2 * SCAN }, (_, i) => {
+  const angle = (Math.PI * (i >> 1)) / SCAN;
+  return i % 2 === 0 ? Math.cos(angle) : Math.sin(angle);
+});
+
+/** Slope of the relaxed energy over the wrinkle's angle, in sign: e'·(S + β D e). */
+function measureSlope(d: ClothStiffness, s1: number, s2: number, s3: number, angle: number): number {
+  const n1 = Math.cos(angle);
+  const n2 = Math.sin(angle);
+  const e1 = n1 * n1;
+  const e2 = n2 * n2;
+  const e3 = 2 * n1 * n2;
+  const d1 = d.ww * e1 + d.wf * e2;
+  const d2 = d.wf * e1 + d.ff * e2;
+  const d3 = d.g * e3;
+  const beta = -(e1 * s1 + e2 * s2 + e3 * s3) / (e1 * d1 + e2 * d2 + e3 * d3);
+  return e3 * (s2 - s1 + beta * (d2 - d1)) + 2 * (e1 - e2) * (s3 + beta * d3);
+}
 
 /** Angle of the wrinkle's normal n from the warp that relaxes most energy: the greatest (e·S)²/(eᵀDe) with e·S < 0. */
 function findWrinkle(d: ClothStiffness, s1: number, s2: number, s3: number): number {
-  // slope of the relaxed energy over the angle, in sign: e'·(S + β D e)
-  const slope = (angle: number): { gain: number; slope: number } => {
-    const n1 = Math.cos(angle);
-    const n2 = Math.sin(angle);
-    const e2 = 2 * n1 * n2;
-    const cos2 = n1 * n1 - n2 * n2;
-    const p = n1 * n1 * s1 + n2 * n2 * s2 + e2 * s3;
-    const d1 = d.ww * n1 * n1 + d.wf * n2 * n2;
-    const d2 = d.wf * n1 * n1 + d.ff * n2 * n2;
-    const d3 = d.g * e2;
-    const q = n1 * n1 * d1 + n2 * n2 * d2 + e2 * d3;
-    const beta = -p / q;
-    return {
-      gain: p < 0 ? (p * p) / q : -1,
-      slope: -e2 * (s1 + beta * d1) + e2 * (s2 + beta * d2) + 2 * cos2 * (s3 + beta * d3),
-    };
-  };
   let best = 0;
   let most = -1;
   for (let k = 0; k < SCAN; k++) {
-    const { gain } = slope((Math.PI * k) / SCAN);
+    const e1 = scanned[2 * k] * scanned[2 * k];
+    const e2 = scanned[2 * k + 1] * scanned[2 * k + 1];
+    const e3 = 2 * scanned[2 * k] * scanned[2 * k + 1];
+    const p = e1 * s1 + e2 * s2 + e3 * s3;
+    if (p >= 0) continue;
+    const gain = (p * p) / (d.ww * e1 * e1 + 2 * d.wf * e1 * e2 + d.ff * e2 * e2 + d.g * e3 * e3);
     if (gain > most) {
       most = gain;
       best = k;
     }
   }
+  // root of the slope between the neighbours: false position, the end that stays put halved (Illinois)
   let low = (Math.PI * (best - 1)) / SCAN;
   let high = (Math.PI * (best + 1)) / SCAN;
+  let atLow = measureSlope(d, s1, s2, s3, low);
+  let atHigh = measureSlope(d, s1, s2, s3, high);
+  if (!(atLow < 0 && atHigh > 0)) return bisectWrinkle(d, [s1, s2, s3], low, high);
+  let side = 0;
+  for (let i = 0; i < 60 && high - low > 1e-14; i++) {
+    const next = low + ((high - low) * atLow) / (atLow - atHigh);
+    if (next <= low || next >= high) break;
+    const at = measureSlope(d, s1, s2, s3, next);
+    if (at === 0) return next;
+    if (at < 0) {
+      low = next;
+      atLow = at;
+      if (side === -1) atHigh /= 2;
+      side = -1;
+    } else {
+      high = next;
+      atHigh = at;
+      if (side === 1) atLow /= 2;
+      side = 1;
+    }
+  }
+  return -atLow < atHigh ? low : high;
+}
+
+/** The same by halving, where the slope has no plain change of sign between the neighbours. */
+function bisectWrinkle(d: ClothStiffness, [s1, s2, s3]: [number, number, number], from: number, to: number): number {
+  let low = from;
+  let high = to;
   for (let i = 0; i < 50; i++) {
     const middle = (low + high) / 2;
-    if (slope(middle).slope > 0) high = middle;
+    if (measureSlope(d, s1, s2, s3, middle) > 0) high = middle;
     else low = middle;
   }
   return (low + high) / 2;
