@@ -199,7 +199,8 @@ export function balanceCablesInPlace(
       edge.force = solution.x[i];
       edge.forceFrom = "balance";
       found.set(asked[j], solution.x[i]);
-      spread.set(asked[j], pulled.includes(j) ? width[pulled.indexOf(j)] : 0);
+      edge.spread = pulled.includes(j) ? width[pulled.indexOf(j)] : 0;
+      spread.set(asked[j], edge.spread);
     });
   }
   return reportForces(

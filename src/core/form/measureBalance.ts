@@ -55,6 +55,7 @@ export function measureResidual(
   let max = 0;
   let square = 0;
   let normalMax = 0;
+  let tangentialMax = 0;
   let worst = -1;
   const size = new Float64Array(fixed.length);
   for (let v = 0; v < fixed.length; v++) {
@@ -65,18 +66,22 @@ export function measureResidual(
     const l = Math.sqrt(r[0] ** 2 + r[1] ** 2 + r[2] ** 2);
     square += l * l;
     size[v] = l;
-    normalMax = Math.max(
-      normalMax,
-      Math.abs(r[0] * normal[3 * v] + r[1] * normal[3 * v + 1] + r[2] * normal[3 * v + 2]),
-    );
+    const off = Math.abs(r[0] * normal[3 * v] + r[1] * normal[3 * v + 1] + r[2] * normal[3 * v + 2]);
+    normalMax = Math.max(normalMax, off);
+    tangentialMax = Math.max(tangentialMax, Math.sqrt(Math.max(0, l * l - off * off)));
     if (l < max || (worst >= 0 && l === max)) continue;
     max = l;
     worst = v;
   }
-  if (nFree === 0) return { residual: { max: 0, rms: 0, normalMax: 0 }, worst, size };
+  if (nFree === 0) return { residual: { max: 0, rms: 0, normalMax: 0, tangentialMax: 0 }, worst, size };
   scale /= nFree;
   return {
-    residual: { max: max / scale, rms: Math.sqrt(square / nFree) / scale, normalMax: normalMax / scale },
+    residual: {
+      max: max / scale,
+      rms: Math.sqrt(square / nFree) / scale,
+      normalMax: normalMax / scale,
+      tangentialMax: tangentialMax / scale,
+    },
     worst,
     size,
   };

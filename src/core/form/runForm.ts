@@ -15,6 +15,7 @@ import { buildFormFinding, describePlace } from "./formFinding.ts";
 import { addJobAnchorsInPlace, readHeldPoints } from "./heldPoints.ts";
 import { matchLines, type SurfaceLine } from "./matchLines.ts";
 import { measureReactionsInPlace, measureResidual, type ResidualReport, sumForces } from "./measureBalance.ts";
+import { measureRelief } from "./measureRelief.ts";
 import { measureMembraneForces, type StressField } from "./membraneForces.ts";
 import { nameAnchors } from "./nameAnchors.ts";
 import { nameEdges } from "./nameEdges.ts";
@@ -118,7 +119,7 @@ function reportResidual(
   if (holds) return { checks: [check], findings: [] };
   const percent = (r: number) => `${(100 * r).toPrecision(3)} %`;
   const source = toSource[worst];
-  const words = `residual up to ${percent(residual.max)} of the cloth's force at a vertex (rms ${percent(residual.rms)}, normal ${percent(residual.normalMax)}, limit ${percent(BALANCED)}), worst at vertex ${source} at ${describePlace(surface.xyz, worst)}`;
+  const words = `residual up to ${percent(residual.max)} of the cloth's force at a vertex (rms ${percent(residual.rms)}, across the cloth ${percent(residual.normalMax)}, within it ${percent(residual.tangentialMax ?? 0)}, limit ${percent(BALANCED)}), worst at vertex ${source} at ${describePlace(surface.xyz, worst)}`;
   const bound = step > 0 ? reach() : null;
   const explained = bound !== null && isExplainedByRounding(size, bound);
   const rounded = `the mesh file's coordinates are rounded to ${1000 * step} mm`;
@@ -234,6 +235,7 @@ export function runForm(source: MeshSource, job: FormJob, context: StationContex
   const balance = reportResidual({ surface, toSource: sound.toSource }, report, grain, () =>
     measureRoundingReach(surface, edges, Math.max(job.prestress.warp, job.prestress.weft), grain),
   );
+  const { relief, ...slopes } = measureRelief(surface, edges, anchorage.fixed, sound.toSource);
   const output: FoundForm = {
     surface,
     fixed: anchorage.fixed,
@@ -244,6 +246,7 @@ export function runForm(source: MeshSource, job: FormJob, context: StationContex
     residual: report.residual,
     area: measureArea(surface),
     reactions,
+    relief,
   };
   step(1, "form done");
   return {
@@ -259,7 +262,8 @@ export function runForm(source: MeshSource, job: FormJob, context: StationContex
       ...settling.findings,
       ...cableFindings,
       ...balance.findings,
+      ...slopes.findings,
     ],
-    checks: [...settling.checks, ...balance.checks, check, ...checkOutput(output)],
+    checks: [...settling.checks, ...balance.checks, check, ...slopes.checks, ...checkOutput(output)],
   };
 }

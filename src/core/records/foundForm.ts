@@ -17,6 +17,8 @@ export interface FormEdge {
   force: number | null;
   /** Where the force comes from; sag: the usual sag, where a form was settled without any word on it. */
   forceFrom: "job" | "balance" | "sag" | "none";
+  /** Standard spread of a force from best balance, kN. */
+  spread?: number;
   /** Pull of the structure on a clamped edge: resultant (kN) and greatest per metre (kN/m); null otherwise. */
   reaction: { resultant: Vec3; greatest: number } | null;
 }
@@ -34,6 +36,21 @@ export interface Residual {
   max: number;
   rms: number;
   normalMax: number;
+  /** Greatest part within the surface; along cables left out. */
+  tangentialMax?: number;
+}
+
+/** How curved and how steep the form is. */
+export interface FormRelief {
+  /** Gaussian curvature where cloth alone is curved, 1/m², and the vertices; null where there is no such vertex. */
+  curvature: { least: number; leastAt: number; greatest: number; greatestAt: number } | null;
+  /** Least slope against level, rad, and a vertex there. */
+  flattest: number;
+  flattestAt: number;
+  /** Share of the area that slopes less than 2 degrees. */
+  flatShare: number;
+  /** Places lower than the cloth all round. */
+  pits: number;
 }
 
 /** Output of the form station. */
@@ -53,4 +70,6 @@ export interface FoundForm {
   area: number;
   /** Pull of the structure on each anchor, kN. */
   reactions: { anchor: string; force: Vec3 }[];
+  /** The form station gives it; forms made up for a test need not. */
+  relief?: FormRelief;
 }
