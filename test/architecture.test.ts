@@ -39,6 +39,30 @@ function buildRules() {
       from: { path: "^src/core/job/" },
       to: { path: "^src/core/", pathNot: ["^src/core/(job|records|surface)/", "^src/core/problem\\.ts$"] },
     },
+    {
+      name: "doors do not know each other",
+      severity: "error",
+      from: { path: "^src/page/" },
+      to: { path: "^src/cli/" },
+    },
+    {
+      name: "three only in the solid view",
+      severity: "error",
+      from: { path: "^src/", pathNot: "^src/page/solid/" },
+      to: { path: "(^|/)three(/|$)" },
+    },
+    {
+      name: "react only in the page",
+      severity: "error",
+      from: { path: "^src/", pathNot: "^src/page/" },
+      to: { path: "(^|/)(react|react-dom|zustand|idb)(/|$)" },
+    },
+    {
+      name: "acts on the project are pure",
+      severity: "error",
+      from: { path: "^src/page/actions/" },
+      to: { pathNot: ["^src/page/actions/", "^src/page/store/project\\.ts$"] },
+    },
     { name: "tests are not shipped", severity: "error", from: { path: "^src/" }, to: { path: "^test/" } },
   ];
   order.forEach((layer, i) => {
@@ -68,13 +92,13 @@ test("imports run one way, and the check saw every file", async () => {
     } as never,
     {
       conditionNames: ["import"],
-      extensions: [".ts", ".js", ".json"],
+      extensions: [".ts", ".tsx", ".js", ".json"],
     } as never,
   );
   const output = result.output as ICruiseResult;
   const found = output.summary.violations.map((v) => `${v.rule.name}: ${v.from} -> ${v.to}`);
   expect(found).toEqual([]);
-  const files = readdirSync("src", { recursive: true, encoding: "utf8" }).filter((f) => f.endsWith(".ts"));
+  const files = readdirSync("src", { recursive: true, encoding: "utf8" }).filter((f) => /\.(ts|tsx|js|css)$/.test(f));
   const seen = output.modules.filter((m) => m.source.startsWith("src/")).length;
   expect(seen).toBe(files.length);
   expect(seen).toBeGreaterThan(40);

@@ -61,6 +61,11 @@ export function starterFolder(name: string): string {
   return join(root, "templates", name);
 }
 
+/** Where the built page lies. */
+export function pageFolder(): string {
+  return join(root, "dist", "page");
+}
+
 /** The two faces papers are lettered in. */
 export function loadFonts(): { regular: Uint8Array; bold: Uint8Array } {
   const require = createRequire(import.meta.url);

@@ -3,6 +3,7 @@ import { PlanError } from "../core/problem.ts";
 import { checkCommand } from "./checkCommand.ts";
 import { demoCommand } from "./demoCommand.ts";
 import type { Surroundings } from "./makePlan.ts";
+import { openCommand } from "./openCommand.ts";
 import { parseOptions } from "./parseOptions.ts";
 import { planCommand } from "./planCommand.ts";
 import { startCommand } from "./startCommand.ts";
@@ -52,6 +53,8 @@ async function dispatch(verb: string | undefined, rest: string[], around: Surrou
       return await checkCommand(rest, around);
     case "start":
       return await startCommand(rest, around.terminal);
+    case "open":
+      return await openCommand(rest, around.terminal);
     case "demo":
       return await demoCommand(rest, around);
     case "help":

@@ -29,6 +29,12 @@ export const VERBS: { verb: string; call: string; words: string; more: string[] 
     words: "plans a job without writing anything, and prints its checks and findings",
     more: [],
   },
+  {
+    verb: "open",
+    call: "open [JOB|FORM.obj] [--port N]",
+    words: "serves the page to this machine only, with a job in it where one is named, until Ctrl-C",
+    more: ["  --port N   the port to serve on, 4720 where none is given; 0 takes any free one"],
+  },
   { verb: "demo", call: "demo", words: "plans the starter jobs into ./out and says what came out", more: [] },
   { verb: "help", call: "help [VERB]", words: "this text, or more on one verb", more: [] },
 ];

@@ -1,0 +1,193 @@
+// The open job: head with its name and state, the spine with the leaves, the leaf itself.
+import { FormLeaf } from "./leaves/FormLeaf.tsx";
+import { PanelsLeaf } from "./leaves/PanelsLeaf.tsx";
+import { PapersLeaf } from "./leaves/PapersLeaf.tsx";
+import { RigLeaf } from "./leaves/RigLeaf.tsx";
+import { RollsLeaf } from "./leaves/RollsLeaf.tsx";
+import { SeamsLeaf } from "./leaves/SeamsLeaf.tsx";
+import { SiteLeaf } from "./leaves/SiteLeaf.tsx";
+import { countFindings } from "./parts/FindingList.tsx";
+import { jumpTo, leafOfFinding, leafOfPath } from "./parts/jump.ts";
+import { turnTheme } from "./parts/keys.ts";
+import { bookStore, LEAVES, type Leaf, redo, undo } from "./store/bookStore.ts";
+import { useBook } from "./store/useBook.ts";
+import { requestPlan, stopPlan } from "./worker/planner.ts";
+
+const PAGES: Record<Leaf, () => React.ReactNode> = {
+  form: FormLeaf,
+  seams: SeamsLeaf,
+  panels: PanelsLeaf,
+  rolls: RollsLeaf,
+  rig: RigLeaf,
+  papers: PapersLeaf,
+  site: SiteLeaf,
+};
+
+const NAMES: Record<Leaf, string> = {
+  form: "Form",
+  seams: "Seams",
+  panels: "Panels",
+  rolls: "Rolls",
+  rig: "Rig",
+  papers: "Papers",
+  site: "Site",
+};
+
+function Spine() {
+  const leaf = useBook((b) => b.leaf);
+  const findings = useBook((b) => b.facts?.findings);
+  return (
+    <nav className="spine" aria-label="Leaves">
+      <ol>
+        {LEAVES.map((l, i) => {
+          const told = countFindings(findings?.filter((f) => leafOfFinding(f) === l) ?? [], false);
+          return (
+            <li key={l}>
+              <button
+                type="button"
+                aria-current={l === leaf ? "page" : undefined}
+                onClick={() => bookStore.setState({ leaf: l })}
+              >
+                <span className="ordinal" aria-hidden="true">
+                  {i + 1}
+                </span>
+                <span className="word">{NAMES[l]}</span>
+                {told !== "" && <span className="told">{told}</span>}
+              </button>
+            </li>
+          );
+        })}
+      </ol>
+    </nav>
+  );
+}
+
+function PlanState() {
+  const status = useBook((b) => b.status);
+  const progress = useBook((b) => b.progress);
+  const project = useBook((b) => b.project);
+  const facts = useBook((b) => b.facts);
+  const findings = useBook((b) => b.facts?.findings);
+  if (status === "running") {
+    return (
+      <div className="state">
+        <progress max={1} value={progress.share} aria-label="Planning" />
+        <span className="doing">{progress.words || progress.station}</span>
+        <button type="button" onClick={stopPlan}>
+          Stop
+        </button>
+      </div>
+    );
+  }
+  const count = findings === undefined ? "" : countFindings(findings, true);
+  return (
+    <div className="state">
+      {facts !== null && status === "done" && <span>Planned, revision {facts.job.revision}</span>}
+      {status === "stopped" && <span>Stopped</span>}
+      {(status === "stopped" || status === "failed") && project !== null && (
+        <button type="button" onClick={() => requestPlan(project)}>
+          Plan again
+        </button>
+      )}
+      {count !== "" && (
+        <button type="button" onClick={() => bookStore.setState({ sheet: "findings" })}>
+          {count}
+        </button>
+      )}
+    </div>
+  );
+}
+
+function Head() {
+  const title = useBook((b) => b.project?.job.title);
+  const past = useBook((b) => b.past);
+  const future = useBook((b) => b.future);
+  const theme = useBook((b) => b.theme);
+  const kept = useBook((b) => b.kept);
+  const before = past.at(-1)?.words;
+  const next = future[0]?.words;
+  return (
+    <header className="head">
+      <button
+        type="button"
+        className="title"
+        onClick={() => bookStore.setState({ sheet: "jobs" })}
+        aria-label={`Jobs. Open now: ${title ?? ""}`}
+      >
+        <span className="brand">Seamstay</span> {title}
+      </button>
+      <PlanState />
+      <div className="acts">
+        <button
+          type="button"
+          onClick={undo}
+          disabled={before === undefined}
+          aria-label={before === undefined ? "Undo" : `Undo ${before}`}
+          title={before}
+        >
+          ↶ Undo
+        </button>
+        <button
+          type="button"
+          onClick={redo}
+          disabled={next === undefined}
+          aria-label={next === undefined ? "Redo" : `Redo ${next}`}
+          title={next}
+        >
+          ↷ Redo
+        </button>
+        <button type="button" onClick={turnTheme}>
+          {theme === "system" ? "as system" : theme}
+        </button>
+        <button type="button" onClick={() => bookStore.setState({ sheet: "keys" })}>
+          Keys
+        </button>
+        <span className="kept" role="status">
+          {kept === null ? "not kept yet" : `kept ${new Date(kept).toTimeString().slice(0, 5)}`}
+        </span>
+      </div>
+    </header>
+  );
+}
+
+function Fault() {
+  const fault = useBook((b) => b.fault);
+  if (fault === null) return null;
+  const place = fault.where.find((w) => leafOfPath(w) !== undefined);
+  return (
+    <div className="banner grave" role="alert">
+      <div>
+        <strong>Not planned.</strong>{" "}
+        {fault.message.split("\n").map((line) => (
+          <p key={line}>{line}</p>
+        ))}
+        <p className="basis">{fault.code}</p>
+      </div>
+      {place !== undefined && (
+        <button type="button" onClick={() => jumpTo(leafOfPath(place) ?? "form", place)}>
+          Show me
+        </button>
+      )}
+      <button type="button" onClick={undo}>
+        Undo
+      </button>
+    </div>
+  );
+}
+
+/** The book. */
+export function Book() {
+  const leaf = useBook((b) => b.leaf);
+  const status = useBook((b) => b.status);
+  const Page = PAGES[leaf];
+  return (
+    <div className="book">
+      <Head />
+      <Spine />
+      <main className={status === "running" ? "paper older" : "paper"} aria-busy={status === "running"}>
+        <Fault />
+        <Page key={leaf} />
+      </main>
+    </div>
+  );
+}

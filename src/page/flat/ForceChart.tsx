@@ -1,0 +1,75 @@
+// Forces through the sequence: a line for each adjuster, its limit dashed, told apart by dash and name, not by colour alone.
+import type { Facts } from "../../core/records/facts.ts";
+import { figure } from "../parts/figure.ts";
+import { useBook } from "../store/useBook.ts";
+import type { RigStep } from "./rigSteps.ts";
+
+const DASHES = ["", "6 3", "2 3", "9 3 2 3", "12 4", "4 2"];
+const W = 640;
+const H = 190;
+const LEFT = 44;
+const BOTTOM = 26;
+
+/** The chart; `at`: index of the step looked at. */
+export function ForceChart({ facts, steps, at }: { facts: Facts; steps: readonly RigStep[]; at: number }) {
+  const pointed = useBook((b) => b.pointed);
+  const chosen = useBook((b) => b.chosen);
+  const adjusters = (facts.rig?.adjusters ?? []).slice(0, 24);
+  const limit = facts.tensioning?.limit ?? 1;
+  const limits = adjusters.flatMap((a) => (a.capacity === null ? [] : [a.capacity * limit]));
+  const peak = Math.max(1e-9, ...steps.flatMap((s) => adjusters.map((a) => s.forces[a.id] ?? 0)));
+  const lowest = limits.length > 0 ? Math.min(...limits) : null;
+  const top = lowest !== null && lowest < 3 * peak ? Math.max(peak, lowest) * 1.08 : peak * 1.08;
+  const x = (i: number) => LEFT + ((W - LEFT - 60) * i) / Math.max(steps.length, 1);
+  const y = (kN: number) => 8 + (H - BOTTOM - 8) * (1 - kN / top);
+  return (
+    <svg
+      className="chart"
+      viewBox={`0 0 ${W} ${H}`}
+      role="img"
+      aria-label={`Force of each adjuster through ${steps.length} steps; greatest ${figure(peak, 1)} kN`}
+    >
+      {[0, 0.25, 0.5, 0.75, 1].map((s) => (
+        <g key={s}>
+          <line className="rule" x1={LEFT} x2={W - 60} y1={y(s * peak)} y2={y(s * peak)} />
+          <text x={LEFT - 6} y={y(s * peak) + 4} textAnchor="end">
+            {figure(s * peak, peak < 10 ? 1 : 0)}
+          </text>
+        </g>
+      ))}
+      <text x={4} y={H - 6}>
+        kN
+      </text>
+      {steps.map((s, i) => (
+        <g key={s.step}>
+          {s.hold && <line className="hold" x1={x(i + 1)} x2={x(i + 1)} y1={8} y2={H - BOTTOM} />}
+          <text x={x(i + 1)} y={H - 8} textAnchor="middle" className={i + 1 === at ? "now" : undefined}>
+            {s.step}
+          </text>
+        </g>
+      ))}
+      {lowest !== null && lowest <= top && (
+        <g>
+          <line className="limit" x1={LEFT} x2={W - 60} y1={y(lowest)} y2={y(lowest)} />
+          <text x={W - 56} y={y(lowest) + 4} className="limit">
+            limit {figure(lowest, 0)}
+          </text>
+        </g>
+      )}
+      {adjusters.map((a, k) => (
+        <g key={a.id} className={a.id === pointed || a.id === chosen ? "trace lit" : "trace"}>
+          <polyline
+            strokeDasharray={DASHES[k % DASHES.length]}
+            points={[`${x(0)},${y(0)}`, ...steps.map((s, i) => `${x(i + 1)},${y(s.forces[a.id] ?? 0)}`)].join(" ")}
+          />
+          {(k === 0 || a.id === chosen || a.id === pointed) && (
+            <text x={x(steps.length) + 6} y={y(steps.at(-1)?.forces[a.id] ?? 0) - 3 + 11 * (k % 2)}>
+              {a.id}
+            </text>
+          )}
+        </g>
+      ))}
+      <line className="cursor" x1={x(at)} x2={x(at)} y1={4} y2={H - BOTTOM} />
+    </svg>
+  );
+}

@@ -1,0 +1,111 @@
+// Flat panels as they are cut: outline, net line, marks, names. One scale for all; warp runs along x.
+import type { FactsPanel, Vec2 } from "../../core/records/facts.ts";
+import { bookStore } from "../store/bookStore.ts";
+import { useBook } from "../store/useBook.ts";
+
+const path = (points: readonly Vec2[], closed: boolean) =>
+  points.map(([x, y], i) => `${i === 0 ? "M" : "L"}${x.toFixed(1)} ${(-y).toFixed(1)}`).join("") + (closed ? "Z" : "");
+
+/** Middle of a run of points. */
+function middle(points: readonly Vec2[]): Vec2 {
+  return points[Math.floor(points.length / 2)] ?? [0, 0];
+}
+
+function sideLine(panel: FactsPanel, side: FactsPanel["sides"][number]): Vec2[] {
+  const { net } = panel;
+  const out: Vec2[] = [];
+  for (let k = side.netFrom; ; k = (k + 1) % net.length) {
+    out.push(net[k]);
+    if (k === side.netTo) break;
+  }
+  return out;
+}
+
+/** One panel in its own axes, mm, y up. `detail`: with marks and names of sides. */
+function PanelDrawing({ panel, size, detail }: { panel: FactsPanel; size: number; detail: boolean }) {
+  const pointed = useBook((b) => b.pointed);
+  return (
+    <>
+      <path className="cut" d={path(panel.cut, true)} />
+      {panel.sides.map((side) => (
+        <path
+          key={`${side.id} ${side.netFrom}`}
+          className={`side ${side.kind}${side.id === pointed ? " lit" : ""}`}
+          d={path(sideLine(panel, side), false)}
+        />
+      ))}
+      {detail &&
+        panel.marks.map((m, i) =>
+          m.points === undefined ? null : (
+            // biome-ignore lint/suspicious/noArrayIndexKey: marks have no names
+            <path key={i} className="pen" d={path(m.points, false)} />
+          ),
+        )}
+      {detail &&
+        panel.sides.map((side) => {
+          const [x, y] = middle(sideLine(panel, side));
+          return (
+            <text key={`${side.id} ${side.netFrom}`} x={x} y={-y} fontSize={size * 0.8} className="side-name">
+              {side.id}
+            </text>
+          );
+        })}
+    </>
+  );
+}
+
+function box(panel: FactsPanel): { x: number; y: number; w: number; h: number } {
+  const xs = panel.cut.map((p) => p[0]);
+  const ys = panel.cut.map((p) => p[1]);
+  const [x, y] = [Math.min(...xs), Math.min(...ys)];
+  return { x, y, w: Math.max(...xs) - x, h: Math.max(...ys) - y };
+}
+
+/** All panels under each other at one scale, or the chosen one alone. */
+export function PanelSheet({ panels, alone }: { panels: readonly FactsPanel[]; alone: string | null }) {
+  const pointed = useBook((b) => b.pointed);
+  const shown = alone === null ? panels : panels.filter((p) => p.id === alone);
+  const boxes = shown.map(box);
+  const gap = alone === null ? 350 : 100;
+  const width = Math.max(...boxes.map((b) => b.w)) + 2 * gap;
+  let y = gap;
+  const tops = boxes.map((b) => {
+    const top = y;
+    y += b.h + gap;
+    return top;
+  });
+  const size = Math.max(width, y) / 45;
+  return (
+    <svg className="sheet" viewBox={`0 0 ${width.toFixed(0)} ${y.toFixed(0)}`} role="group" aria-label="Flat panels">
+      {shown.map((p, i) => (
+        <g
+          key={p.id}
+          role="button"
+          tabIndex={0}
+          aria-label={`Panel ${p.id}, ${(p.size.length / 1000).toFixed(2)} by ${(p.size.width / 1000).toFixed(2)} metres`}
+          aria-pressed={alone === p.id}
+          className={p.id === pointed ? "panel lit" : "panel"}
+          transform={`translate(${gap - boxes[i].x} ${tops[i] + boxes[i].h + boxes[i].y})`}
+          onClick={() => bookStore.setState({ chosen: alone === p.id ? null : p.id })}
+          onKeyDown={(e) => {
+            if (e.key !== "Enter" && e.key !== " ") return;
+            e.preventDefault();
+            bookStore.setState({ chosen: alone === p.id ? null : p.id });
+          }}
+          onPointerEnter={() => bookStore.setState({ pointed: p.id })}
+          onPointerLeave={() => bookStore.setState({ pointed: null })}
+        >
+          <PanelDrawing panel={p} size={size} detail={alone !== null} />
+          <text
+            x={boxes[i].x + boxes[i].w / 2}
+            y={-(boxes[i].y + boxes[i].h / 2)}
+            fontSize={size * 1.5}
+            className="panel-name"
+          >
+            {p.id}
+          </text>
+        </g>
+      ))}
+    </svg>
+  );
+}

@@ -1,0 +1,203 @@
+// A roll with what lies on it, in rows like a text. Panels are moved with the pointer or the arrow keys and then stay pinned.
+import { useId, useRef, useState } from "react";
+import type { Facts, Vec2 } from "../../core/records/facts.ts";
+import type { NestedRoll, Placement } from "../../core/records/roll.ts";
+import { setPin } from "../actions/setPin.ts";
+import { act, bookStore } from "../store/bookStore.ts";
+import { useBook } from "../store/useBook.ts";
+import { type RollRow, rollRows } from "./rollRows.ts";
+
+interface Drag {
+  panel: string;
+  from: { x: number; y: number };
+  by: { x: number; y: number };
+}
+
+const GAP = 0.3;
+
+/** Cut outline of what is placed, on the roll, y downwards. */
+function outline(cut: readonly Vec2[], p: Placement, by: { x: number; y: number }): string {
+  const turn = p.rotation === 180 ? -1 : 1;
+  return `${cut.map(([x, y], i) => `${i === 0 ? "M" : "L"}${(turn * x + p.x + by.x).toFixed(1)} ${(turn * y + p.y + by.y).toFixed(1)}`).join("")}Z`;
+}
+
+function middleOf(cut: readonly Vec2[], p: Placement): Vec2 {
+  const turn = p.rotation === 180 ? -1 : 1;
+  const xs = cut.map((q) => q[0]);
+  const ys = cut.map((q) => q[1]);
+  const mid = (v: number[]) => (Math.min(...v) + Math.max(...v)) / 2;
+  return [turn * mid(xs) + p.x, turn * mid(ys) + p.y];
+}
+
+/** Pins a placed panel where it lies, moved by dx, dy mm. */
+function pin(roll: NestedRoll, p: Placement, dx: number, dy: number): void {
+  const place = {
+    roll: roll.id,
+    x: Math.round(10 * (p.x + dx)) / 10,
+    y: Math.round(10 * (p.y + dy)) / 10,
+    rotation: p.rotation,
+  };
+  act(setPin, { panel: p.panel, place }, `${p.panel} pinned`);
+}
+
+const STEPS: Record<string, [number, number]> = {
+  ArrowLeft: [-1, 0],
+  ArrowRight: [1, 0],
+  ArrowUp: [0, 1],
+  ArrowDown: [0, -1],
+};
+
+function PlacedPiece(props: {
+  roll: NestedRoll;
+  placement: Placement;
+  cut: readonly Vec2[];
+  row: RollRow;
+  clip: string;
+  drag: Drag | null;
+  onGrab: (e: React.PointerEvent, p: Placement) => void;
+  first: boolean;
+}) {
+  const { roll, placement: p, cut, row, clip, drag, onGrab, first } = props;
+  const pointed = useBook((b) => b.pointed);
+  const chosen = useBook((b) => b.chosen);
+  const pinned = useBook((b) => b.project?.job.nest?.pins?.some((q) => q.panel === p.panel) ?? false);
+  const by = drag?.panel === p.panel ? drag.by : { x: 0, y: 0 };
+  const [x, y] = middleOf(cut, p);
+  const lit = p.panel === pointed || p.panel === chosen;
+  return (
+    <g clipPath={`url(#${clip})`}>
+      <g
+        className={`placed${lit ? " lit" : ""}${pinned ? " pinned" : ""}`}
+        role="button"
+        tabIndex={first ? 0 : -1}
+        aria-label={`${p.panel} on ${roll.id} at ${(p.x / 1000).toFixed(2)} m${pinned ? ", pinned" : ""}. Arrow keys move it by 10 mm and pin it, Delete lets it go.`}
+        onPointerDown={(e) => onGrab(e, p)}
+        onPointerEnter={() => bookStore.setState({ pointed: p.panel })}
+        onPointerLeave={() => bookStore.setState({ pointed: null })}
+        onKeyDown={(e) => {
+          const step = STEPS[e.key];
+          if (e.key === "Delete") act(setPin, { panel: p.panel, place: null }, `${p.panel} let go`);
+          if (step === undefined) return;
+          e.preventDefault();
+          pin(roll, p, 10 * step[0], 10 * step[1]);
+        }}
+      >
+        <path d={outline(cut, p, by)} />
+        {x >= row.from && x < row.to && (
+          <text x={x + by.x} y={-(y + by.y)} transform="scale(1 -1)" fontSize={roll.width / 9} className="panel-name">
+            {p.panel}
+            {pinned ? " ⚲" : ""}
+          </text>
+        )}
+      </g>
+    </g>
+  );
+}
+
+/** Cloth of one row: selvedges, bed, flaws, where the used length ends. */
+function RowCloth({ roll, row, clip }: { roll: NestedRoll; row: RollRow; clip: string }) {
+  const edge = (roll.width - roll.usableWidth) / 2;
+  const length = Math.max(Math.min(row.to, roll.length) - row.from, 0);
+  return (
+    <>
+      <clipPath id={clip}>
+        <rect x={row.from} y={-edge - 0.1 * roll.width} width={row.to - row.from} height={1.2 * roll.width} />
+      </clipPath>
+      <rect className="selvedge" x={row.from} y={-edge} width={length} height={roll.width} />
+      <rect className="bed" x={row.from} y={0} width={length} height={roll.usableWidth} />
+      {roll.flaws.map((f) => (
+        <rect
+          key={`${f.x} ${f.y}`}
+          className="flaw"
+          clipPath={`url(#${clip})`}
+          x={f.x}
+          y={f.y}
+          width={f.length}
+          height={f.width}
+        />
+      ))}
+      <line
+        className="used"
+        x1={roll.used}
+        x2={roll.used}
+        y1={-edge}
+        y2={roll.width - edge}
+        clipPath={`url(#${clip})`}
+      />
+      <text
+        x={row.from}
+        y={-(1.03 * roll.width - edge)}
+        transform="scale(1 -1)"
+        fontSize={roll.width / 14}
+        className="metre"
+      >
+        {(row.from / 1000).toFixed(1)} m
+      </text>
+    </>
+  );
+}
+
+/** One roll. */
+export function RollSheet({ facts, roll, shape }: { facts: Facts; roll: NestedRoll; shape: number }) {
+  const svg = useRef<SVGSVGElement>(null);
+  const [drag, setDrag] = useState<Drag | null>(null);
+  const id = useId();
+  const rows = rollRows(roll.used, roll.width, shape);
+  const span = rows[0].to - rows[0].from;
+  const pitch = roll.width * (1 + GAP);
+  const cuts = new Map([...(facts.panels ?? []), ...(facts.pieces ?? [])].map((p) => [p.id, p.cut]));
+  const edge = (roll.width - roll.usableWidth) / 2;
+  const place = (e: { clientX: number; clientY: number }) => {
+    const matrix = svg.current?.getScreenCTM()?.inverse();
+    const p = new DOMPoint(e.clientX, e.clientY).matrixTransform(matrix);
+    return { x: p.x, y: -p.y };
+  };
+  const grab = (e: React.PointerEvent, p: Placement) => {
+    if (e.button !== 0) return;
+    svg.current?.setPointerCapture(e.pointerId);
+    setDrag({ panel: p.panel, from: place(e), by: { x: 0, y: 0 } });
+  };
+  const drop = () => {
+    const p = roll.placements.find((q) => q.panel === drag?.panel);
+    setDrag(null);
+    if (drag === null || p === undefined) return;
+    // Rows crossed on the way count as lengths of roll.
+    const jump = Math.round(drag.by.y / pitch);
+    const [dx, dy] = [drag.by.x - jump * span, drag.by.y - jump * pitch];
+    if (Math.hypot(dx, dy) > 5 || jump !== 0) pin(roll, p, dx, dy);
+    else bookStore.setState({ chosen: p.panel });
+  };
+  return (
+    <svg
+      ref={svg}
+      className="sheet roll"
+      viewBox={`${-0.02 * span} ${-0.14 * roll.width} ${1.04 * span} ${rows.length * pitch}`}
+      role="group"
+      aria-label={`Roll ${roll.id}, ${(roll.used / 1000).toFixed(2)} metres used`}
+      onPointerMove={(e) =>
+        drag && setDrag({ ...drag, by: { x: place(e).x - drag.from.x, y: place(e).y - drag.from.y } })
+      }
+      onPointerUp={drop}
+      onPointerCancel={() => setDrag(null)}
+    >
+      {rows.map((row, i) => (
+        <g key={row.from} transform={`translate(${-row.from} ${i * pitch + roll.width - edge}) scale(1 -1)`}>
+          <RowCloth roll={roll} row={row} clip={`${id}r${i}`} />
+          {roll.placements.map((p) => {
+            const cut = cuts.get(p.panel) ?? [];
+            const [middle] = middleOf(cut, p);
+            return (
+              <PlacedPiece
+                key={p.panel}
+                {...{ roll, placement: p, cut, row, drag }}
+                clip={`${id}r${i}`}
+                onGrab={grab}
+                first={middle >= row.from && middle < row.to}
+              />
+            );
+          })}
+        </g>
+      ))}
+    </svg>
+  );
+}

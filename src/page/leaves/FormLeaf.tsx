@@ -1,0 +1,184 @@
+// Form: is this surface in balance, at which forces?
+import { setEdge } from "../actions/setEdge.ts";
+import { setMeshWord } from "../actions/setMeshWord.ts";
+import { setPrestress } from "../actions/setPrestress.ts";
+import { setSettle } from "../actions/setSettle.ts";
+import { FieldPicker } from "../parts/FieldPicker.tsx";
+import { ChoiceField, NumberField, SwitchField } from "../parts/Fields.tsx";
+import { FigureTable } from "../parts/FigureTable.tsx";
+import { figure } from "../parts/figure.ts";
+import { Waiting } from "../parts/Waiting.tsx";
+import { LazySolid } from "../solid/LazySolid.tsx";
+import { act } from "../store/bookStore.ts";
+import { useBook } from "../store/useBook.ts";
+import { LeafFrame } from "./LeafFrame.tsx";
+
+const KINDS = [
+  { value: "", words: "as found" },
+  { value: "cable", words: "cable" },
+  { value: "clamped", words: "clamped" },
+  { value: "free", words: "free" },
+  { value: "ridge", words: "ridge cable" },
+  { value: "valley", words: "valley cable" },
+  { value: "belt", words: "belt" },
+] as const;
+
+function EdgeDecisions() {
+  const edges = useBook((b) => b.facts?.form?.edges);
+  const given = useBook((b) => b.project?.job.edges);
+  const chosen = useBook((b) => b.chosen);
+  if (edges === undefined) return null;
+  return (
+    <details className="group" open={edges.length <= 6 || edges.some((e) => e.id === chosen)}>
+      <summary>Edges ({edges.length})</summary>
+      {edges.map((e) => {
+        const own = given?.[e.id];
+        const named = `edges.${e.id}`;
+        return (
+          <fieldset key={e.id} className={e.id === chosen ? "edge lit" : "edge"} data-path={named}>
+            <legend>
+              {e.id} <span className="quiet">{figure(e.length, 2)} m</span>
+            </legend>
+            <ChoiceField
+              label="Kind"
+              path={`${named}.kind`}
+              given={own?.kind !== undefined}
+              value={own?.kind ?? ""}
+              choices={KINDS.map((k) => (k.value === "" ? { ...k, words: `as found: ${e.kind}` } : k))}
+              onChange={(v) =>
+                act(setEdge, { edge: e.id, key: "kind", value: v === "" ? undefined : v }, `kind of ${e.id}`)
+              }
+            />
+            {e.force !== null && (
+              <NumberField
+                label="Force"
+                path={`${named}.force`}
+                given={typeof own?.force === "number"}
+                value={own?.force ?? null}
+                none={`${figure(e.force, 2)} by balance`}
+                unit="kN"
+                onChange={(v) => act(setEdge, { edge: e.id, key: "force", value: v }, `force of ${e.id}`)}
+              />
+            )}
+          </fieldset>
+        );
+      })}
+    </details>
+  );
+}
+
+function FormDecisions() {
+  const job = useBook((b) => b.job);
+  const given = useBook((b) => b.project?.job);
+  if (given === undefined) return null;
+  const prestress = (way: "warp" | "weft") => (
+    <NumberField
+      label={way === "warp" ? "Prestress along the warp" : "Prestress along the weft"}
+      path={`prestress.${way}`}
+      given={given.prestress?.[way] !== undefined}
+      value={job?.prestress[way] ?? given.prestress?.[way] ?? null}
+      unit="kN/m"
+      onChange={(value) => act(setPrestress, { way, value }, `prestress ${way}`)}
+    />
+  );
+  return (
+    <>
+      {prestress("warp")}
+      {prestress("weft")}
+      <SwitchField
+        label="Settle the mesh into balance first"
+        path="settle"
+        given={given.settle !== undefined}
+        value={given.settle ?? false}
+        hint="off: the form is taken as it is and checked"
+        onChange={(value) => act(setSettle, { value: value ? true : undefined }, "settling")}
+      />
+      <ChoiceField
+        label="Unit of the mesh"
+        path="mesh.unit"
+        given={given.mesh.unit !== undefined}
+        value={given.mesh.unit ?? "m"}
+        choices={["m", "mm", "cm", "ft", "in"].map((u) => ({ value: u, words: u }))}
+        onChange={(value) => act(setMeshWord, { key: "unit", value }, "unit of the mesh")}
+      />
+      <ChoiceField
+        label="Axis that points up"
+        path="mesh.up"
+        given={given.mesh.up !== undefined}
+        value={given.mesh.up ?? "z"}
+        choices={["z", "y"].map((u) => ({ value: u, words: u }))}
+        onChange={(value) => act(setMeshWord, { key: "up", value }, "up axis of the mesh")}
+      />
+      <EdgeDecisions />
+    </>
+  );
+}
+
+/** The leaf. */
+export function FormLeaf() {
+  const facts = useBook((b) => b.facts);
+  const fields = useBook((b) => b.fields);
+  const field = useBook((b) => b.field);
+  const form = facts?.form;
+  const shown = field === "residual" || field === "curvature" ? field : "none";
+  const limit = facts?.checks.find((c) => c.station === "form" && c.text.startsWith("residual"));
+  const judged = limit ? `, ${limit.holds ? "within" : "beyond"} the ${figure(Number(limit.limit))} asked for` : "";
+  const answer =
+    form === undefined
+      ? "Not worked out yet."
+      : `${figure(form.area, 1)} m² on ${form.edges.length} edges; out of balance by ${figure(form.residual.max)} of the cloth’s own force at the worst point${judged}.`;
+  const cables = form?.edges.filter((e) => e.force !== null) ?? [];
+  return (
+    <LeafFrame
+      leaf="form"
+      station="form"
+      question="Is this surface in balance, and at which forces?"
+      answer={answer}
+      tools={<FieldPicker fields={["none", "residual", "curvature"]} value={shown} />}
+      stage={
+        facts && form ? (
+          <LazySolid
+            facts={facts}
+            fields={fields}
+            field={shown}
+            words={`The surface, ${figure(form.area, 1)} square metres.`}
+          />
+        ) : (
+          <Waiting what="The surface" />
+        )
+      }
+      figures={
+        form && (
+          <FigureTable
+            caption="Form"
+            rows={[
+              { what: "Area", value: figure(form.area, 2), unit: "m²" },
+              { what: "Triangles", value: String(form.triangles.length) },
+              {
+                what: "Out of balance, greatest",
+                value: figure(form.residual.max),
+                ...(limit
+                  ? { against: `limit ${figure(Number(limit.limit))} of the mean membrane force`, holds: limit.holds }
+                  : {}),
+              },
+              { what: "Out of balance, mean (rms)", value: figure(form.residual.rms) },
+              ...cables.slice(0, 12).map((e) => ({
+                what: `Cable ${e.id}`,
+                value: figure(e.force ?? 0, 2),
+                unit: "kN",
+                against: e.forceFrom === "job" ? "given by the job" : "best balance with the cloth",
+              })),
+              ...form.reactions.slice(0, 12).map((r) => ({
+                what: `Pull on ${r.anchor}`,
+                value: figure(Math.hypot(...r.force), 2),
+                unit: "kN",
+                against: `x ${figure(r.force[0], 2)}, y ${figure(r.force[1], 2)}, z ${figure(r.force[2], 2)}`,
+              })),
+            ]}
+          />
+        )
+      }
+      decisions={<FormDecisions />}
+    />
+  );
+}

@@ -1,0 +1,158 @@
+// One reading: at what, how much, by whom. Says at once whether a force lies in the window the schedule gives.
+import { useState } from "react";
+import { addReading } from "../actions/addReading.ts";
+import type { RigStep } from "../flat/rigSteps.ts";
+import { readNumber } from "../parts/Fields.tsx";
+import { figure } from "../parts/figure.ts";
+import { act } from "../store/bookStore.ts";
+import type { Reading } from "../store/project.ts";
+import { useBook } from "../store/useBook.ts";
+
+type Kind = "force" | "frequency" | "position";
+
+const ENTRIES: Record<Kind, { key: string; label: string; unit: string }[]> = {
+  force: [{ key: "force", label: "Force", unit: "kN" }],
+  frequency: [
+    { key: "frequency", label: "Frequency", unit: "Hz" },
+    { key: "freeLength", label: "Free length", unit: "m" },
+    { key: "mass", label: "Mass", unit: "kg/m" },
+  ],
+  position: [
+    { key: "x", label: "x", unit: "m" },
+    { key: "y", label: "y", unit: "m" },
+    { key: "z", label: "z", unit: "m" },
+  ],
+};
+
+const EMPTY = { force: "", frequency: "", freeLength: "", mass: "", x: "", y: "", z: "", temperature: "" };
+
+/** A reading from what was typed; a sentence where it is none. */
+function readEntry(kind: Kind, texts: typeof EMPTY, id: string, by: string): Reading | string {
+  if (id === "") return "Choose what was read.";
+  const read: Record<string, number | null> = {};
+  for (const [key, text] of Object.entries(texts)) {
+    const value = readNumber(text);
+    if (value === null) return `“${text}” is no number.`;
+    read[key] = value ?? null;
+  }
+  const missing = ENTRIES[kind].find((e) => read[e.key] === null);
+  if (missing !== undefined) return `${missing.label} is missing.`;
+  const negative = kind !== "position" && ENTRIES[kind].find((e) => (read[e.key] ?? 0) < 0);
+  if (negative) return `${negative.label} cannot be below 0.`;
+  const of = (key: string, wanted: Kind) => (kind === wanted ? (read[key] ?? null) : null);
+  const { x, y, z } = read;
+  return {
+    time: new Date().toISOString().slice(0, 19),
+    by,
+    id,
+    force: of("force", "force"),
+    frequency: of("frequency", "frequency"),
+    freeLength: of("freeLength", "frequency"),
+    massPerMetre: of("mass", "frequency"),
+    temperature: read.temperature ?? null,
+    at: kind === "position" ? [x ?? 0, y ?? 0, z ?? 0] : null,
+  };
+}
+
+/** What the schedule expects of an adjuster after a step, in words. */
+function Window({ step, id, text }: { step: RigStep | null; id: string; text: string }) {
+  const move = step?.moves.find((m) => m.adjuster === id);
+  const force = step?.forces[id];
+  if (force === undefined) return <p className="window">The schedule gives no force for this here.</p>;
+  const value = readNumber(text);
+  const verdict =
+    move === undefined || typeof value !== "number"
+      ? ""
+      : value < move.low
+        ? `low by ${figure(move.low - value, 1)} kN: do not go on, ask the engineer`
+        : value > move.high
+          ? `high by ${figure(value - move.high, 1)} kN: stop, ask the engineer`
+          : "inside the window";
+  return (
+    <p className="window" aria-live="polite">
+      {move === undefined
+        ? `Expected ${figure(force, 1)} kN`
+        : `Expected ${figure(move.expect, 1)} kN, window ${figure(move.low, 1)} to ${figure(move.high, 1)}`}
+      {verdict !== "" && <strong className={verdict.startsWith("inside") ? "fine" : "off"}> {verdict}</strong>}
+    </p>
+  );
+}
+
+function PlacePicker({ kind, id, onPick }: { kind: Kind; id: string; onPick: (id: string) => void }) {
+  const facts = useBook((b) => b.facts);
+  const rig = facts?.rig;
+  const ids =
+    kind === "position"
+      ? (facts?.form?.anchors ?? []).slice(0, 60).map((a) => a.id)
+      : [...(rig?.adjusters ?? []).map((a) => a.id), ...(facts?.cables ?? []).map((c) => c.id)];
+  return (
+    <fieldset className="picker big">
+      <legend>Read at</legend>
+      {ids.map((one) => (
+        <button type="button" key={one} aria-pressed={one === id} onClick={() => onPick(one)}>
+          {one}
+        </button>
+      ))}
+      {ids.length === 0 && <p className="hint">This plan has nothing to read a force at.</p>}
+    </fieldset>
+  );
+}
+
+/** The form. */
+export function ReadingEntry({ step }: { step: RigStep | null }) {
+  const [kind, setKind] = useState<Kind>("force");
+  const [id, setId] = useState("");
+  const [texts, setTexts] = useState(EMPTY);
+  const [by, setBy] = useState("");
+  const [fault, setFault] = useState("");
+  const submit = (e: React.FormEvent) => {
+    e.preventDefault();
+    const reading = readEntry(kind, texts, id, by.trim());
+    if (typeof reading === "string") return setFault(reading);
+    setFault("");
+    act(addReading, { reading }, `reading of ${id}`);
+    setTexts({ ...EMPTY, temperature: texts.temperature });
+  };
+  const entry = (key: keyof typeof EMPTY, label: string, unit: string) => (
+    <label key={key} className="large">
+      <span>{label}</span>
+      <input
+        inputMode="decimal"
+        autoComplete="off"
+        value={texts[key]}
+        onChange={(e) => setTexts({ ...texts, [key]: e.target.value })}
+      />
+      <span className="unit">{unit}</span>
+    </label>
+  );
+  return (
+    <form className="reading" onSubmit={submit} noValidate>
+      <fieldset className="picker big">
+        <legend>What was measured</legend>
+        {(["force", "frequency", "position"] as const).map((k) => (
+          <button type="button" key={k} aria-pressed={k === kind} onClick={() => setKind(k)}>
+            {k === "frequency" ? "frequency of a free span" : k}
+          </button>
+        ))}
+      </fieldset>
+      <PlacePicker kind={kind} id={id} onPick={setId} />
+      {kind === "force" && id !== "" && <Window step={step} id={id} text={texts.force} />}
+      <div className="entries">
+        {ENTRIES[kind].map((e) => entry(e.key as keyof typeof EMPTY, e.label, e.unit))}
+        {entry("temperature", "Temperature", "°C")}
+        <label className="large">
+          <span>Read by</span>
+          <input autoComplete="off" value={by} onChange={(e) => setBy(e.target.value)} />
+        </label>
+      </div>
+      {fault !== "" && (
+        <p className="fault" role="alert">
+          {fault}
+        </p>
+      )}
+      <button type="submit" className="main">
+        Write it into the log
+      </button>
+    </form>
+  );
+}

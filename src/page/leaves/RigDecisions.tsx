@@ -1,0 +1,109 @@
+// What can be decided about the pulling up: stages, limit, temperature, turnbuckles.
+import turnbuckles from "../../../templates/turnbuckles.json";
+import { setReadingError } from "../actions/setReadingError.ts";
+import { setRigFigure } from "../actions/setRigFigure.ts";
+import { setStages } from "../actions/setStages.ts";
+import { setTurnbuckle } from "../actions/setTurnbuckle.ts";
+import { ChoiceField, NumberField, readNumber, TextField } from "../parts/Fields.tsx";
+import { act, notify } from "../store/bookStore.ts";
+import { useBook } from "../store/useBook.ts";
+
+const percent = (shares: readonly number[]) => shares.map((s) => String(Number((100 * s).toPrecision(6)))).join(" ");
+
+/** Shares from a line such as "10 30 60 100"; null where a word is no number. */
+function readStages(text: string): number[] | null {
+  const read = text
+    .split(/[\s;]+/)
+    .filter((w) => w !== "")
+    .map(readNumber);
+  return read.every((n) => typeof n === "number") ? read.map((n) => Number((n / 100).toPrecision(12))) : null;
+}
+
+function Turnbuckles() {
+  const standing = useBook((b) => b.facts?.rig?.adjusters);
+  const given = useBook((b) => b.project?.job.rig?.adjusters);
+  if (standing === undefined) return null;
+  return (
+    <div className="group" data-path="rig.adjusters">
+      <h3>Adjusters</h3>
+      {standing.map((a) => {
+        const own = given?.find((g) => g.name === a.id)?.turnbuckle;
+        const inline = typeof own === "object";
+        const choices = turnbuckles.turnbuckles.map((t) => ({ value: t.id, words: t.name }));
+        return (
+          <ChoiceField
+            key={a.id}
+            label={`${a.id} at ${a.anchor}`}
+            path={`rig.adjusters.${a.id}`}
+            given={own !== undefined}
+            value={inline ? "own" : (own ?? "")}
+            choices={[
+              ...(inline ? [{ value: "own", words: `as the job gives it, ${own.shortest} to ${own.longest} mm` }] : []),
+              ...(own === undefined ? [{ value: "", words: `default: ${a.turnbuckle}` }] : []),
+              ...choices,
+            ]}
+            hint={
+              a.capacity === null ? "no capacity given: the schedule is not for issue" : `capacity ${a.capacity} kN`
+            }
+            onChange={(value) =>
+              value !== "own" &&
+              value !== "" &&
+              act(setTurnbuckle, { adjuster: a.id, value, standing }, `turnbuckle of ${a.id}`)
+            }
+          />
+        );
+      })}
+    </div>
+  );
+}
+
+/** The decisions of the leaf. */
+export function RigDecisions() {
+  const given = useBook((b) => b.project?.job.rig);
+  const rig = useBook((b) => b.job?.rig);
+  return (
+    <>
+      <TextField
+        label="Stages, % of the target"
+        path="rig.stages"
+        given={given?.stages !== undefined}
+        value={percent(given?.stages ?? rig?.stages ?? [])}
+        hint="rising, the last one 100"
+        onChange={(text) => {
+          const value = text === undefined ? undefined : readStages(text);
+          if (value === null)
+            notify("stages", `“${text}” are no stages: numbers with spaces between, such as 10 30 60 100`, true);
+          else act(setStages, { value }, "stages");
+        }}
+      />
+      <NumberField
+        label="No part beyond"
+        path="rig.limit"
+        given={given?.limit !== undefined}
+        value={given?.limit ?? rig?.limit ?? null}
+        factor={0.01}
+        unit="% of its capacity"
+        hint="the weakest of cable, turnbuckle, fitting, anchor"
+        onChange={(value) => act(setRigFigure, { key: "limit", value }, "limit of erection")}
+      />
+      <NumberField
+        label="Reference temperature"
+        path="rig.temperature"
+        given={given?.temperature !== undefined}
+        value={given?.temperature ?? rig?.temperature ?? null}
+        unit="°C"
+        onChange={(value) => act(setRigFigure, { key: "temperature", value }, "reference temperature")}
+      />
+      <NumberField
+        label="A reading may be off by"
+        path="rig.reading.error"
+        given={given?.reading?.error !== undefined}
+        value={given?.reading?.error ?? rig?.readingError ?? null}
+        factor={0.01}
+        unit="%"
+        onChange={(value) => act(setReadingError, { value }, "error of readings")}
+      />
+      <Turnbuckles />
+    </>
+  );
+}

@@ -1,0 +1,114 @@
+// Rolls: which cloth, and where on it?
+import type { NestedRoll } from "../../core/records/roll.ts";
+import { RollSheet } from "../flat/RollSheet.tsx";
+import { FigureTable } from "../parts/FigureTable.tsx";
+import { figure } from "../parts/figure.ts";
+import { Waiting } from "../parts/Waiting.tsx";
+import { bookStore } from "../store/bookStore.ts";
+import { useBook } from "../store/useBook.ts";
+import { LeafFrame } from "./LeafFrame.tsx";
+import { RollDecisions } from "./RollDecisions.tsx";
+
+function Fill({ rolls }: { rolls: readonly NestedRoll[] }) {
+  return (
+    <table className="things">
+      <caption>How full the rolls are</caption>
+      <thead>
+        <tr>
+          <th scope="col">Roll</th>
+          <th scope="col">Taken off, m</th>
+          <th scope="col">Used, %</th>
+        </tr>
+      </thead>
+      <tbody>
+        {rolls.map((r) => (
+          <tr key={r.id}>
+            <th scope="row">
+              <button type="button" className="place" onClick={() => bookStore.setState({ chosen: r.id })}>
+                {r.id}
+              </button>
+            </th>
+            <td>
+              {figure(r.used / 1000, 2)}
+              <span className="against">no less than {figure(r.lowerBound / 1000, 2)}</span>
+            </td>
+            <td>
+              <span className="meter" aria-hidden="true">
+                <span style={{ width: `${100 * r.utilisation}%` }} />
+              </span>
+              {figure(100 * r.utilisation, 1)}
+            </td>
+          </tr>
+        ))}
+      </tbody>
+    </table>
+  );
+}
+
+/** The leaf. */
+export function RollsLeaf() {
+  const facts = useBook((b) => b.facts);
+  const chosen = useBook((b) => b.chosen);
+  const rolls = facts?.rolls;
+  const shown = rolls?.find((r) => r.id === chosen || r.placements.some((p) => p.panel === chosen)) ?? rolls?.[0];
+  const used = rolls?.reduce((s, r) => s + r.used, 0) ?? 0;
+  const waste = rolls?.reduce((s, r) => s + (1 - r.utilisation) * r.used * r.width, 0) ?? 0;
+  return (
+    <LeafFrame
+      leaf="rolls"
+      station="rolls"
+      question="Which cloth, and where on it?"
+      answer={
+        rolls === undefined
+          ? "Not worked out yet."
+          : `${figure(used / 1000, 2)} m of cloth from ${rolls.length} ${rolls.length === 1 ? "roll" : "rolls"}; ${figure(waste / 1e6, 1)} m² is left over as offcut.`
+      }
+      tools={
+        rolls &&
+        rolls.length > 1 && (
+          <fieldset className="picker">
+            <legend>Roll</legend>
+            {rolls.map((r) => (
+              <button
+                type="button"
+                key={r.id}
+                aria-pressed={r === shown}
+                onClick={() => bookStore.setState({ chosen: r.id })}
+              >
+                {r.id}
+              </button>
+            ))}
+          </fieldset>
+        )
+      }
+      stage={facts && shown ? <RollSheet facts={facts} roll={shown} shape={0.72} /> : <Waiting what="The rolls" />}
+      figures={
+        rolls &&
+        shown && (
+          <>
+            <FigureTable
+              caption={`Roll ${shown.id}`}
+              rows={[
+                {
+                  what: "Width",
+                  value: figure(shown.width, 0),
+                  unit: "mm",
+                  against: `${figure(shown.usableWidth, 0)} mm between the selvedges`,
+                },
+                {
+                  what: "Taken off",
+                  value: figure(shown.used / 1000, 3),
+                  unit: "m",
+                  against: `of ${figure(shown.length / 1000, 1)} m on the roll`,
+                },
+                { what: "Between cuts", value: figure(shown.gap, 0), unit: "mm" },
+              ]}
+            />
+            <Fill rolls={rolls} />
+          </>
+        )
+      }
+      decisions={<RollDecisions />}
+    />
+  );
+}

@@ -1,0 +1,64 @@
+// Seams in one's own hands: each end slid along its edge, seams added, removed, evened.
+import { addSeam } from "../actions/addSeam.ts";
+import { evenSeams } from "../actions/evenSeams.ts";
+import { moveSeamEnd } from "../actions/moveSeamEnd.ts";
+import { removeSeam } from "../actions/removeSeam.ts";
+import { takeSeams } from "../actions/takeSeams.ts";
+import { NumberField } from "../parts/Fields.tsx";
+import { act } from "../store/bookStore.ts";
+import { findSeamEnds } from "../store/seamEnds.ts";
+import { useBook } from "../store/useBook.ts";
+
+/** The list of pairs, or the way to it. */
+export function SeamEnds() {
+  const facts = useBook((b) => b.facts);
+  const pairs = useBook((b) => b.project?.job.seams?.pairs);
+  if (pairs === undefined) {
+    return (
+      <button
+        type="button"
+        disabled={facts?.seams === undefined || facts.seams.length === 0}
+        onClick={() => facts && act(takeSeams, { pairs: findSeamEnds(facts) }, "seams taken in hand")}
+      >
+        Take these seams in hand
+      </button>
+    );
+  }
+  return (
+    <div className="group" data-path="seams.pairs">
+      <h3>Seams by hand</h3>
+      {pairs.map((pair, i) => (
+        // biome-ignore lint/suspicious/noArrayIndexKey: a pair has no name but its place
+        <fieldset key={i} className="edge">
+          <legend>Seam {i + 1}</legend>
+          {pair.map((p, k) => (
+            <NumberField
+              key={`${p.edge} ${k === 0 ? "a" : k}`}
+              label={`${k === 0 ? "Begins" : k === pair.length - 1 ? "Ends" : "Through"} on ${p.edge}`}
+              path={`seams.pairs[${i}][${k}].at`}
+              given
+              value={p.at}
+              factor={0.01}
+              unit="% along"
+              onChange={(v) =>
+                v !== undefined && act(moveSeamEnd, { seam: i, point: k, edge: p.edge, at: v }, `end of seam ${i + 1}`)
+              }
+            />
+          ))}
+          <button type="button" onClick={() => act(addSeam, { after: i }, "seam added")}>
+            Add one after
+          </button>
+          <button type="button" onClick={() => act(removeSeam, { seam: i }, `seam ${i + 1} removed`)}>
+            Remove
+          </button>
+        </fieldset>
+      ))}
+      <button type="button" disabled={pairs.length < 3} onClick={() => act(evenSeams, {}, "seams evened")}>
+        Even them out
+      </button>
+      <button type="button" onClick={() => act(takeSeams, { pairs: [] }, "seams given back to the plan")}>
+        Give back to the plan
+      </button>
+    </div>
+  );
+}

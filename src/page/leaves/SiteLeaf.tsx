@@ -1,0 +1,160 @@
+// Site: what does the roof say? Readings typed in on a tablet, with large targets; the log is kept and goes out as a file.
+
+import { removeReading } from "../actions/removeReading.ts";
+import { setSiteLimit } from "../actions/setSiteLimit.ts";
+import { listSteps } from "../flat/rigSteps.ts";
+import { writeReadings } from "../keep/readings.ts";
+import { saveFile } from "../keep/saveFiles.ts";
+import { CautionList } from "../parts/CautionList.tsx";
+import { NumberField, TextField } from "../parts/Fields.tsx";
+import { figure } from "../parts/figure.ts";
+import { act, bookStore } from "../store/bookStore.ts";
+import type { Reading } from "../store/project.ts";
+import { useBook } from "../store/useBook.ts";
+import { LeafFrame } from "./LeafFrame.tsx";
+import { ReadingEntry } from "./ReadingEntry.tsx";
+
+/** Limits the papers print, by the key they are read under. */
+const LIMITS = [
+  { key: "windMean", label: "Greatest mean wind (10 min)", unit: "m/s" },
+  { key: "windGust", label: "Greatest gust", unit: "m/s" },
+  { key: "temperatureLow", label: "Lowest temperature", unit: "°C" },
+  { key: "temperatureHigh", label: "Highest temperature", unit: "°C" },
+] as const;
+
+function SiteLimits() {
+  const site = useBook((b) => b.project?.job.papers?.site);
+  return (
+    <>
+      <p className="hint">
+        Set by the engineer of the site. What is left open is printed as “not given: do not start”.
+      </p>
+      {LIMITS.map(({ key, label, unit }) => (
+        <NumberField
+          key={key}
+          label={label}
+          path={`papers.site.${key}`}
+          given={site?.[key] !== undefined}
+          value={typeof site?.[key] === "number" ? site[key] : null}
+          none="not given: do not start"
+          unit={unit}
+          onChange={(value) => act(setSiteLimit, { key, value }, label.toLowerCase())}
+        />
+      ))}
+      <TextField
+        label="State that may be left overnight"
+        path="papers.site.overnight"
+        given={site?.overnight !== undefined}
+        value={String(site?.overnight ?? "")}
+        none="not given: do not start"
+        onChange={(value) => act(setSiteLimit, { key: "overnight", value }, "state overnight")}
+      />
+    </>
+  );
+}
+
+function whatWasRead(r: Reading): string {
+  if (r.force !== null) return `${figure(r.force, 1)} kN`;
+  if (r.frequency !== null)
+    return `${figure(r.frequency, 2)} Hz on ${figure(r.freeLength ?? 0, 3)} m of ${figure(r.massPerMetre ?? 0, 3)} kg/m`;
+  return r.at === null ? "" : `at ${r.at.map((v) => figure(v, 3)).join(", ")} m`;
+}
+
+function Log({ log }: { log: readonly Reading[] }) {
+  if (log.length === 0) return <p className="waiting">No readings yet. The log grows here, the latest first.</p>;
+  return (
+    <table className="things log">
+      <caption>Log, the latest first</caption>
+      <thead>
+        <tr>
+          <th scope="col">When</th>
+          <th scope="col">Who</th>
+          <th scope="col">What</th>
+          <th scope="col">Reading</th>
+          <th scope="col">°C</th>
+          <th scope="col">Slip?</th>
+        </tr>
+      </thead>
+      <tbody>
+        {log
+          .map((r, index) => ({ r, index }))
+          .reverse()
+          .map(({ r, index }) => (
+            <tr key={`${r.time} ${index}`}>
+              <td>{r.time.replace("T", " ").slice(0, 16)}</td>
+              <td>{r.by}</td>
+              <th scope="row">{r.id}</th>
+              <td>{whatWasRead(r)}</td>
+              <td>{r.temperature === null ? "" : figure(r.temperature, 0)}</td>
+              <td>
+                <button
+                  type="button"
+                  aria-label={`Strike the reading of ${r.id} of ${r.time}`}
+                  onClick={() => act(removeReading, { index }, "reading struck")}
+                >
+                  Strike
+                </button>
+              </td>
+            </tr>
+          ))}
+      </tbody>
+    </table>
+  );
+}
+
+/** The leaf. */
+export function SiteLeaf() {
+  const tensioning = useBook((b) => b.facts?.tensioning);
+  const stored = useBook((b) => b.project?.log);
+  const step = useBook((b) => b.step);
+  const log = stored ?? [];
+  const steps = tensioning ? listSteps(tensioning) : [];
+  const at = Math.min(step, steps.length);
+  const now = steps[at - 1] ?? null;
+  const go = (i: number) => bookStore.setState({ step: Math.min(Math.max(i, 0), steps.length) });
+  return (
+    <LeafFrame
+      leaf="site"
+      station="rig"
+      question="What does the roof say?"
+      answer={
+        log.length === 0 ? "No readings yet." : `${log.length} ${log.length === 1 ? "reading" : "readings"} in the log.`
+      }
+      tools={
+        <>
+          {steps.length > 0 && (
+            <fieldset className="picker big">
+              <legend>Step of the schedule</legend>
+              <button type="button" onClick={() => go(at - 1)} disabled={at === 0}>
+                ◂ back
+              </button>
+              <output>{now === null ? "before the first" : `${now.step} of ${steps.length}, ${now.stage}`}</output>
+              <button type="button" onClick={() => go(at + 1)} disabled={at === steps.length}>
+                on ▸
+              </button>
+            </fieldset>
+          )}
+          <button
+            type="button"
+            disabled={log.length === 0}
+            onClick={() => saveFile({ path: "readings.csv", bytes: writeReadings(log) })}
+          >
+            Save the log (CSV)
+          </button>
+        </>
+      }
+      stage={
+        <div className="readings">
+          <ReadingEntry step={now} />
+          <Log log={log} />
+        </div>
+      }
+      decisions={
+        <>
+          <CautionList paper="schedule" />
+          <SiteLimits />
+        </>
+      }
+    />
+  );
+}

@@ -1,0 +1,53 @@
+// Entry of the page: takes up what was open, plans whenever the job changes, keeps it.
+import { createRoot } from "react-dom/client";
+import type { JobFile } from "../core/job/jobSchema.ts";
+import { App } from "./App.tsx";
+import { tryOpen } from "./Desk.tsx";
+import { lastOpen, newId, openKept, openNew, startKeeping } from "./keep/keepBook.ts";
+import { goOffline } from "./keep/offline.ts";
+import { bookStore } from "./store/bookStore.ts";
+import { requestPlan } from "./worker/planner.ts";
+import "./style/ink.css";
+import "./style/book.css";
+import "./style/leaf.css";
+import "./style/parts.css";
+
+/** Quiet time before a changed job is planned, ms: a second thought within it costs no plan. */
+const QUIET = 250;
+
+/** What `seamstay open JOB` hands over; null where it named none. */
+async function fetchOpened(): Promise<{ name: string; job: JobFile; mesh: string | null } | null> {
+  try {
+    const response = await fetch("./opened.json");
+    return response.status === 200 ? await response.json() : null;
+  } catch {
+    return null;
+  }
+}
+
+async function takeUp(): Promise<void> {
+  const last = lastOpen();
+  if (last !== null && (await openKept(last).catch(() => false))) return;
+  const opened = await fetchOpened();
+  if (opened === null) return;
+  const bytes = opened.mesh === null ? null : new Uint8Array(await (await fetch("./opened-mesh")).arrayBuffer());
+  openNew({ id: newId(), job: opened.job, mesh: bytes === null ? null : { name: opened.mesh ?? "", bytes }, log: [] });
+}
+
+function planOnChange(): void {
+  let timer: ReturnType<typeof setTimeout> | undefined;
+  bookStore.subscribe((now, before) => {
+    const { project } = now;
+    if (project === null || (project.job === before.project?.job && project.mesh === before.project.mesh)) return;
+    clearTimeout(timer);
+    const fresh = project.id !== before.project?.id;
+    timer = setTimeout(() => requestPlan(project), fresh ? 0 : QUIET);
+  });
+}
+
+startKeeping();
+planOnChange();
+const root = document.getElementById("book");
+if (root !== null) createRoot(root).render(<App />);
+void tryOpen(takeUp);
+void goOffline();

@@ -1,0 +1,37 @@
+// The checks a station made: those that fail in full, those that hold folded away.
+import type { Station } from "../../core/problem.ts";
+import { useBook } from "../store/useBook.ts";
+import { figure } from "./figure.ts";
+
+/** Checks of one station, with value and limit. */
+export function CheckTable({ station }: { station: Station }) {
+  const checks = useBook((b) => b.facts?.checks);
+  const own = checks?.filter((c) => c.station === station) ?? [];
+  if (own.length === 0) return null;
+  const failed = own.filter((c) => !c.holds);
+  const show = (v: number | string) => (typeof v === "number" ? figure(v) : v);
+  const sorted = [...failed, ...own.filter((c) => c.holds)];
+  return (
+    <details className="checks" open={failed.length > 0}>
+      <summary>
+        {failed.length === 0 ? `All ${own.length} checks hold` : `${failed.length} of ${own.length} checks fail`}
+      </summary>
+      <table className="figures">
+        <tbody>
+          {sorted.map((c) => (
+            <tr key={c.text} className={c.holds ? undefined : "fails"}>
+              <th scope="row">
+                {c.text}
+                <span className="against">limit {show(c.limit)}</span>
+              </th>
+              <td>
+                {!c.holds && <span className="mark">fails </span>}
+                {show(c.value)}
+              </td>
+            </tr>
+          ))}
+        </tbody>
+      </table>
+    </details>
+  );
+}

@@ -1,0 +1,25 @@
+// A sheet laid over the book: keys, findings, jobs. Escape puts it away.
+import { useEffect, useRef } from "react";
+import { bookStore } from "../store/bookStore.ts";
+
+/** The sheet; focus goes into it and comes back. */
+export function Sheet({ title, children }: { title: string; children: React.ReactNode }) {
+  const dialog = useRef<HTMLDialogElement>(null);
+  useEffect(() => {
+    dialog.current?.showModal();
+  }, []);
+  const close = () => bookStore.setState({ sheet: "none" });
+  return (
+    <dialog ref={dialog} className="over" aria-label={title} onClose={close}>
+      <header>
+        <h2>{title}</h2>
+        <button type="button" onClick={close}>
+          Close
+        </button>
+      </header>
+      <div className="body" tabIndex={0} role="group" aria-label={title}>
+        {children}
+      </div>
+    </dialog>
+  );
+}

@@ -1,0 +1,59 @@
+// From a finding to what it speaks of: the leaf, the thing on it, the field that decides it.
+import type { Finding, Station } from "../../core/problem.ts";
+import { bookStore, type Leaf } from "../store/bookStore.ts";
+
+const OF_STATION: Record<Exclude<Station, "job">, Leaf> = {
+  form: "form",
+  seams: "seams",
+  panels: "panels",
+  rolls: "rolls",
+  rig: "rig",
+  papers: "papers",
+};
+const OF_KEY: Record<string, Leaf> = {
+  mesh: "form",
+  prestress: "form",
+  settle: "form",
+  edges: "form",
+  anchors: "form",
+  warp: "form",
+  survey: "site",
+  seams: "seams",
+  panels: "panels",
+  fabric: "panels",
+  compensation: "panels",
+  decompensation: "panels",
+  allowances: "panels",
+  rolls: "rolls",
+  nest: "rolls",
+  rig: "rig",
+  papers: "papers",
+  title: "papers",
+  issue: "papers",
+};
+
+/** Leaf that decides a place of the job. */
+export function leafOfPath(path: string): Leaf | undefined {
+  return OF_KEY[path.split(/[.[]/, 1)[0] ?? ""];
+}
+
+/** Leaf a finding belongs to. */
+export function leafOfFinding(finding: Pick<Finding, "station" | "where">): Leaf {
+  if (finding.station !== "job") return OF_STATION[finding.station];
+  return leafOfPath([finding.where].flat()[0] ?? "") ?? "form";
+}
+
+/** Opens the leaf, lights the thing, puts the cursor into its field where there is one. */
+export function jumpTo(leaf: Leaf, where: string): void {
+  bookStore.setState({ leaf, chosen: where === "" ? null : where, sheet: "none" });
+  requestAnimationFrame(() => {
+    const fields = [...document.querySelectorAll<HTMLElement>("[data-path]")];
+    const field =
+      fields.find((f) => f.dataset.path === where) ??
+      fields.find((f) => where !== "" && f.dataset.path?.startsWith(`${where}.`));
+    const entry = field?.querySelector<HTMLElement>("input, select, button");
+    const goal = entry ?? document.querySelector<HTMLElement>("main h1");
+    goal?.scrollIntoView({ block: "center" });
+    goal?.focus();
+  });
+}

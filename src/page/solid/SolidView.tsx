@@ -1,0 +1,169 @@
+// The surface, shaded and turnable, with its names and the legend of its colours. Mounts the scene and passes on what is chosen.
+import { useEffect, useMemo, useRef, useState } from "react";
+import type { Facts } from "../../core/records/facts.ts";
+import { colourOf, type Scale, scaleOf } from "../colour/scales.ts";
+import { bookStore, type FieldName } from "../store/bookStore.ts";
+import { useBook } from "../store/useBook.ts";
+import type { SentFields } from "../worker/messages.ts";
+import { buildModel, fieldValues, type Model } from "./buildModel.ts";
+import { Legend } from "./Legend.tsx";
+import { createScene, type Project, type SceneInk, type SceneView } from "./scene.ts";
+
+/** Inks of the theme, from the style sheet. */
+function readInk(element: Element): SceneInk {
+  const style = getComputedStyle(element);
+  const ink = (name: string) => style.getPropertyValue(name).trim();
+  return {
+    cloth: ink("--cloth"),
+    clothOther: ink("--cloth-other"),
+    lit: ink("--lit"),
+    lines: {
+      seam: ink("--seam"),
+      cable: ink("--cable"),
+      clamped: ink("--clamped"),
+      free: ink("--free"),
+      inner: ink("--cable"),
+      adjuster: ink("--adjuster"),
+      strut: ink("--clamped"),
+    },
+  };
+}
+
+function paintCorners(model: Model, scale: Scale | null): Float32Array | null {
+  if (scale === null || model.value.length === 0) return null;
+  const out = new Float32Array(3 * model.value.length);
+  for (let i = 0; i < model.value.length; i++) out.set(colourOf(scale, model.value[i]), 3 * i);
+  return out;
+}
+
+/** Moves the names to where their places are drawn; names in front of others win where two would overlap. */
+function placeLabels(box: HTMLElement | null, labels: Model["labels"], project: Project): void {
+  if (box === null) return;
+  const taken: [number, number][] = [];
+  labels.forEach(({ at }, i) => {
+    const element = box.children[i];
+    if (!(element instanceof HTMLElement)) return;
+    const { x, y } = project(at);
+    const free = taken.every(([u, v]) => Math.abs(u - x) > 46 || Math.abs(v - y) > 17);
+    element.hidden = !free;
+    if (!free) return;
+    taken.push([x, y]);
+    element.style.transform = `translate(-50%, -50%) translate(${x.toFixed(1)}px, ${y.toFixed(1)}px)`;
+  });
+}
+
+const KEYS: Record<string, (view: SceneView) => void> = {
+  ArrowLeft: (v) => v.turn(-0.12, 0),
+  ArrowRight: (v) => v.turn(0.12, 0),
+  ArrowUp: (v) => v.turn(0, 0.12),
+  ArrowDown: (v) => v.turn(0, -0.12),
+  "+": (v) => v.zoom(1.2),
+  "=": (v) => v.zoom(1.2),
+  "-": (v) => v.zoom(1 / 1.2),
+  "0": (v) => v.fit(),
+};
+
+/** Mounts the scene on the canvas and feeds it; returns it once it stands. */
+function useScene(model: Model | null, scale: Scale | null) {
+  const canvas = useRef<HTMLCanvasElement>(null);
+  const names = useRef<HTMLDivElement>(null);
+  const view = useRef<SceneView | null>(null);
+  const labels = useRef<Model["labels"]>([]);
+  const [broken, setBroken] = useState(false);
+  const pointed = useBook((b) => b.pointed);
+  const chosen = useBook((b) => b.chosen);
+  const theme = useBook((b) => b.theme);
+  useEffect(() => {
+    const element = canvas.current;
+    if (element === null) return;
+    let made: SceneView;
+    try {
+      made = createScene(element, readInk(element), (project) => placeLabels(names.current, labels.current, project));
+    } catch {
+      setBroken(true);
+      return;
+    }
+    view.current = made;
+    const watch = new ResizeObserver(() => made.resize());
+    watch.observe(element);
+    return () => {
+      watch.disconnect();
+      made.dispose();
+      view.current = null;
+    };
+  }, []);
+  useEffect(() => {
+    if (model === null || view.current === null) return;
+    labels.current = model.labels;
+    view.current.show(model, paintCorners(model, scale));
+  }, [model, scale]);
+  useEffect(() => view.current?.light([pointed, chosen]), [pointed, chosen]);
+  // biome-ignore lint/correctness/useExhaustiveDependencies: the inks are read from the sheet of the theme
+  useEffect(() => {
+    const apply = () => canvas.current && view.current?.ink(readInk(canvas.current));
+    requestAnimationFrame(apply);
+    const dark = matchMedia("(prefers-color-scheme: dark)");
+    dark.addEventListener("change", apply);
+    return () => dark.removeEventListener("change", apply);
+  }, [theme]);
+  return { canvas, names, view, broken };
+}
+
+function choose(id: string | null): void {
+  bookStore.setState({ chosen: id });
+}
+
+function point(id: string | null): void {
+  if (bookStore.getState().pointed !== id) bookStore.setState({ pointed: id });
+}
+
+/** The view; `words` says to those who do not see it what is drawn. */
+export function SolidView(props: { facts: Facts; fields: SentFields | null; field: FieldName; words: string }) {
+  const { facts, fields, field, words } = props;
+  const model = useMemo(() => buildModel(facts, fields, field), [facts, fields, field]);
+  const scale = useMemo(() => {
+    const values = fieldValues(fields, field);
+    return values === null ? null : scaleOf(field, values, facts.form?.stress ?? { warp: 1, weft: 1 });
+  }, [facts, fields, field]);
+  const { canvas, names, view, broken } = useScene(model, scale);
+  const pointed = useBook((b) => b.pointed);
+  const chosen = useBook((b) => b.chosen);
+  const place = (e: { nativeEvent: { offsetX: number; offsetY: number } }) =>
+    [e.nativeEvent.offsetX, e.nativeEvent.offsetY] as const;
+  return (
+    <div className="solid">
+      {/* biome-ignore lint/a11y/noInteractiveElementToNoninteractiveRole: turned by keys of its own */}
+      <canvas
+        ref={canvas}
+        tabIndex={0}
+        role="application"
+        aria-label={`${words} Turn with the arrow keys, + and − come closer and go back, 0 shows all.`}
+        onPointerMove={(e) => e.buttons === 0 && point(view.current?.pick(...place(e)) ?? null)}
+        onPointerLeave={() => point(null)}
+        onClick={(e) => choose(view.current?.pick(...place(e)) ?? null)}
+        onKeyDown={(e) => {
+          const key = KEYS[e.key];
+          if (key === undefined || view.current === null || e.ctrlKey || e.metaKey) return;
+          e.preventDefault();
+          e.stopPropagation();
+          key(view.current);
+        }}
+      />
+      <div className="names" ref={names} aria-hidden="true">
+        {model?.labels.map(({ id }, i) => (
+          // biome-ignore lint/suspicious/noArrayIndexKey: a place may carry the same name twice
+          <span key={`${id} ${i}`} className={id === pointed || id === chosen ? "name lit" : "name"}>
+            {id}
+          </span>
+        ))}
+      </div>
+      {scale !== null && <Legend scale={scale} />}
+      {broken && (
+        <p className="broken">
+          This browser draws no WebGL: the surface cannot be shown here. Figures, panels, rolls and papers are not
+          affected.
+        </p>
+      )}
+    </div>
+  );
+}

@@ -1,0 +1,289 @@
+// The one module that knows three: draws a model on a canvas, turns it, says what is under the pointer. Draws on demand only.
+import {
+  AmbientLight,
+  BufferAttribute,
+  BufferGeometry,
+  Color,
+  DirectionalLight,
+  DoubleSide,
+  Mesh,
+  MeshLambertMaterial,
+  OrthographicCamera,
+  Raycaster,
+  Scene,
+  Vector2,
+  Vector3,
+  WebGLRenderer,
+} from "three";
+import { OrbitControls } from "three/addons/controls/OrbitControls.js";
+import { LineMaterial } from "three/addons/lines/LineMaterial.js";
+import { LineSegments2 } from "three/addons/lines/LineSegments2.js";
+import { LineSegmentsGeometry } from "three/addons/lines/LineSegmentsGeometry.js";
+import type { Model, ModelLine } from "./buildModel.ts";
+
+/** Colours of a theme, as CSS writes them. */
+export interface SceneInk {
+  cloth: string;
+  clothOther: string;
+  lit: string;
+  lines: Record<ModelLine["kind"], string>;
+}
+
+export interface SceneView {
+  /** Puts a model in; `colours` 9*nT red, green, blue of each corner, or null for plain cloth. */
+  show: (model: Model, colours: Float32Array | null) => void;
+  light: (ids: readonly (string | null)[]) => void;
+  ink: (ink: SceneInk) => void;
+  fit: () => void;
+  /** Turns by angles (radians), moves closer by a factor. */
+  turn: (around: number, over: number) => void;
+  zoom: (factor: number) => void;
+  /** Id under a point of the canvas (CSS pixels), or null. */
+  pick: (x: number, y: number) => string | null;
+  /** The point of the surface under a point of the canvas, m, or null. */
+  touch: (x: number, y: number) => [number, number, number] | null;
+  resize: () => void;
+  dispose: () => void;
+}
+
+const WIDTHS: Record<ModelLine["kind"], number> = {
+  seam: 2,
+  cable: 4,
+  clamped: 5,
+  free: 2,
+  inner: 4,
+  adjuster: 5,
+  strut: 5,
+};
+
+interface Parts {
+  model: Model | null;
+  mesh: Mesh<BufferGeometry, MeshLambertMaterial> | null;
+  lines: { line: ModelLine; object: LineSegments2; material: LineMaterial }[];
+  colours: Float32Array | null;
+  ink: SceneInk;
+  lit: Set<string>;
+}
+
+function segmentsOf(line: ModelLine): Float32Array {
+  const { points } = line;
+  const out = new Float32Array(6 * Math.max(points.length - 1, 0));
+  for (let i = 1; i < points.length; i++) out.set([...points[i - 1], ...points[i]], 6 * (i - 1));
+  return out;
+}
+
+/** Colours of the corners: the field's, or cloth with every other panel a little darker; what is lit is mixed with the lit ink. */
+function paintInPlace(parts: Parts): void {
+  const { model, mesh, colours, ink, lit } = parts;
+  if (model === null || mesh === null) return;
+  const plain = [new Color(ink.cloth), new Color(ink.clothOther)];
+  const lamp = new Color(ink.lit);
+  const attribute = mesh.geometry.getAttribute("color") as BufferAttribute;
+  const out = attribute.array as Float32Array;
+  const one = new Color();
+  for (let t = 0; t < model.owner.length; t++) {
+    const isLit = lit.has(model.owners[model.owner[t]] ?? "") && model.owners.length > 1;
+    for (let c = 0; c < 3; c++) {
+      const at = 9 * t + 3 * c;
+      if (colours === null) one.copy(plain[model.owner[t] % 2] ?? lamp);
+      else one.setRGB(colours[at], colours[at + 1], colours[at + 2], "srgb");
+      if (isLit) one.lerp(lamp, 0.45);
+      out[at] = one.r;
+      out[at + 1] = one.g;
+      out[at + 2] = one.b;
+    }
+  }
+  attribute.needsUpdate = true;
+}
+
+function buildMesh(model: Model): Mesh<BufferGeometry, MeshLambertMaterial> {
+  const geometry = new BufferGeometry();
+  geometry.setAttribute("position", new BufferAttribute(model.position, 3));
+  geometry.setAttribute("normal", new BufferAttribute(model.normal, 3));
+  geometry.setAttribute("color", new BufferAttribute(new Float32Array(model.position.length), 3));
+  geometry.computeBoundingSphere();
+  const material = new MeshLambertMaterial({
+    vertexColors: true,
+    side: DoubleSide,
+    polygonOffset: true,
+    polygonOffsetFactor: 1,
+    polygonOffsetUnits: 1,
+  });
+  return new Mesh(geometry, material);
+}
+
+/** A view on a canvas. @throws Error where the browser draws no WebGL */
+export function createScene(canvas: HTMLCanvasElement, ink: SceneInk, onDraw: (project: Project) => void): SceneView {
+  const renderer = new WebGLRenderer({ canvas, antialias: true, alpha: true });
+  const scene = new Scene();
+  const camera = new OrthographicCamera(-1, 1, 1, -1, 0.01, 1000);
+  camera.up.set(0, 0, 1);
+  const controls = new OrbitControls(camera, canvas);
+  controls.enableDamping = false;
+  const sun = new DirectionalLight("#ffffff", 2.1);
+  scene.add(new AmbientLight("#ffffff", 1.25), sun);
+  const parts: Parts = { model: null, mesh: null, lines: [], colours: null, ink, lit: new Set() };
+  let asked = 0;
+  const drawNow = () => {
+    asked = 0;
+    sun.position.copy(camera.position).add(new Vector3(-3, -2, 8));
+    renderer.render(scene, camera);
+    onDraw(projector(camera, canvas));
+  };
+  const draw = () => {
+    if (asked === 0) asked = requestAnimationFrame(drawNow);
+  };
+  controls.addEventListener("change", draw);
+  const view = handleView({ canvas, camera, controls, renderer, scene, parts, draw });
+  return {
+    ...view,
+    dispose: () => {
+      cancelAnimationFrame(asked);
+      controls.dispose();
+      clearInPlace(scene, parts);
+      renderer.dispose();
+    },
+  };
+}
+
+/** Place of a point of the model on the canvas, CSS pixels, and its depth -1…1. */
+export type Project = (at: readonly number[]) => { x: number; y: number; depth: number };
+
+function projector(camera: OrthographicCamera, canvas: HTMLCanvasElement): Project {
+  return (at) => {
+    const p = new Vector3(at[0], at[1], at[2]).project(camera);
+    return { x: ((p.x + 1) / 2) * canvas.clientWidth, y: ((1 - p.y) / 2) * canvas.clientHeight, depth: p.z };
+  };
+}
+
+function clearInPlace(scene: Scene, parts: Parts): void {
+  if (parts.mesh !== null) {
+    scene.remove(parts.mesh);
+    parts.mesh.geometry.dispose();
+    parts.mesh.material.dispose();
+  }
+  for (const { object, material } of parts.lines) {
+    scene.remove(object);
+    object.geometry.dispose();
+    material.dispose();
+  }
+  parts.mesh = null;
+  parts.lines = [];
+}
+
+interface Stage {
+  canvas: HTMLCanvasElement;
+  camera: OrthographicCamera;
+  controls: OrbitControls;
+  renderer: WebGLRenderer;
+  scene: Scene;
+  parts: Parts;
+  draw: () => void;
+}
+
+function frameInPlace({ canvas, camera, renderer, parts }: Stage): void {
+  const [w, h] = [Math.max(canvas.clientWidth, 1), Math.max(canvas.clientHeight, 1)];
+  renderer.setPixelRatio(Math.min(devicePixelRatio, 2));
+  renderer.setSize(w, h, false);
+  const radius = parts.mesh?.geometry.boundingSphere?.radius ?? 1;
+  const half = radius * 1.08;
+  const aspect = w / h;
+  const [x, y] = aspect > 1 ? [half * aspect, half] : [half, half / aspect];
+  Object.assign(camera, { left: -x, right: x, top: y, bottom: -y, near: 0.01, far: 20 * radius });
+  camera.updateProjectionMatrix();
+  for (const { material } of parts.lines) material.resolution.set(w, h);
+}
+
+function fitInPlace(stage: Stage): void {
+  const { camera, controls, parts } = stage;
+  const sphere = parts.mesh?.geometry.boundingSphere;
+  if (!sphere) return;
+  camera.zoom = 1;
+  controls.target.copy(sphere.center);
+  camera.position.copy(sphere.center).add(new Vector3(-0.55, -1, 0.85).normalize().multiplyScalar(8 * sphere.radius));
+  frameInPlace(stage);
+  controls.update();
+  stage.draw();
+}
+
+function handleView(stage: Stage): Omit<SceneView, "dispose"> {
+  const { canvas, camera, controls, scene, parts, draw } = stage;
+  const ray = new Raycaster();
+  const hit = (x: number, y: number) => {
+    if (parts.mesh === null) return undefined;
+    ray.setFromCamera(new Vector2((2 * x) / canvas.clientWidth - 1, 1 - (2 * y) / canvas.clientHeight), camera);
+    return ray.intersectObject(parts.mesh)[0];
+  };
+  return {
+    show: (model, colours) => {
+      const first = parts.model === null;
+      clearInPlace(scene, parts);
+      Object.assign(parts, { model, colours, mesh: buildMesh(model) });
+      if (parts.mesh !== null) scene.add(parts.mesh);
+      parts.lines = model.lines
+        .filter((l) => l.points.length > 1)
+        .map((line) => {
+          const material = new LineMaterial({ color: parts.ink.lines[line.kind], linewidth: WIDTHS[line.kind] });
+          const object = new LineSegments2(new LineSegmentsGeometry().setPositions(segmentsOf(line)), material);
+          scene.add(object);
+          return { line, object, material };
+        });
+      paintInPlace(parts);
+      lightLinesInPlace(parts);
+      if (first) fitInPlace(stage);
+      else frameInPlace(stage);
+      draw();
+    },
+    light: (ids) => {
+      parts.lit = new Set(ids.filter((id) => id !== null));
+      paintInPlace(parts);
+      lightLinesInPlace(parts);
+      draw();
+    },
+    ink: (ink) => {
+      parts.ink = ink;
+      paintInPlace(parts);
+      lightLinesInPlace(parts);
+      draw();
+    },
+    fit: () => fitInPlace(stage),
+    turn: (around, over) => {
+      const arm = camera.position.clone().sub(controls.target);
+      const flat = Math.hypot(arm.x, arm.y);
+      const tilt = Math.min(Math.max(Math.atan2(arm.z, flat) + over, -1.55), 1.55);
+      const angle = Math.atan2(arm.y, arm.x) + around;
+      const r = arm.length();
+      arm.set(r * Math.cos(tilt) * Math.cos(angle), r * Math.cos(tilt) * Math.sin(angle), r * Math.sin(tilt));
+      camera.position.copy(controls.target).add(arm);
+      controls.update();
+      draw();
+    },
+    zoom: (factor) => {
+      camera.zoom = Math.min(Math.max(camera.zoom * factor, 0.2), 200);
+      camera.updateProjectionMatrix();
+      draw();
+    },
+    pick: (x, y) => {
+      const found = hit(x, y);
+      const index = found?.faceIndex ?? null;
+      const id = index === null ? null : (parts.model?.owners[parts.model.owner[index] ?? 0] ?? null);
+      return id === "" ? null : id;
+    },
+    touch: (x, y) => {
+      const p = hit(x, y)?.point;
+      return p === undefined ? null : [p.x, p.y, p.z];
+    },
+    resize: () => {
+      frameInPlace(stage);
+      draw();
+    },
+  };
+}
+
+function lightLinesInPlace(parts: Parts): void {
+  for (const { line, material } of parts.lines) {
+    const lit = parts.lit.has(line.id);
+    material.color.set(lit ? parts.ink.lit : parts.ink.lines[line.kind]);
+    material.linewidth = WIDTHS[line.kind] + (lit ? 3 : 0);
+  }
+}

@@ -1,0 +1,150 @@
+// The one store of the page, in three slices: project (undone by snapshots), result (the latest plan), look (not undone).
+// Knows no React and no worker.
+import { createStore } from "zustand/vanilla";
+import type { Station } from "../../core/problem.ts";
+import type { Facts } from "../../core/records/facts.ts";
+import type { Job } from "../../core/records/job.ts";
+import type { PlanFault, SentFields } from "../worker/messages.ts";
+import type { Project } from "./project.ts";
+
+export const LEAVES = ["form", "seams", "panels", "rolls", "rig", "papers", "site"] as const;
+export type Leaf = (typeof LEAVES)[number];
+/** What the surface is coloured by. */
+export type FieldName = "none" | "residual" | "curvature" | "warp" | "weft" | "builtWarp" | "builtWeft";
+export type Theme = "system" | "light" | "dark";
+
+export interface ProjectSlice {
+  project: Project | null;
+  past: { project: Project; words: string }[];
+  future: { project: Project; words: string }[];
+  /** Of the last edit. */
+  words: string;
+}
+
+export interface PaperFile {
+  path: string;
+  bytes: Uint8Array<ArrayBuffer>;
+}
+
+export interface ResultSlice {
+  status: "none" | "running" | "done" | "failed" | "stopped";
+  progress: { share: number; words: string; station: Station };
+  /** Every decision in place; of the last job that could be read. */
+  job: Job | null;
+  facts: Facts | null;
+  fields: SentFields | null;
+  /** The project the facts are of. */
+  planned: Project | null;
+  fault: PlanFault | null;
+  papers: { of: Facts; files: PaperFile[] } | null;
+  papersFault: PlanFault | null;
+  writing: boolean;
+}
+
+export interface LookSlice {
+  leaf: Leaf;
+  /** Id of what is chosen, and of what is under the pointer: edge, seam, panel, roll, cable, adjuster. */
+  chosen: string | null;
+  pointed: string | null;
+  field: FieldName;
+  /** Step of the tensioning that is looked at; 0 before the first. */
+  step: number;
+  sheet: "none" | "keys" | "findings" | "jobs";
+  theme: Theme;
+  /** Said once, until closed. */
+  notices: { id: string; text: string; grave: boolean }[];
+  /** When the job was last kept; null: not yet. */
+  kept: string | null;
+}
+
+export interface Book extends ProjectSlice, ResultSlice, LookSlice {}
+
+const NO_RESULT: ResultSlice = {
+  status: "none",
+  progress: { share: 0, words: "", station: "job" },
+  job: null,
+  facts: null,
+  fields: null,
+  planned: null,
+  fault: null,
+  papers: null,
+  papersFault: null,
+  writing: false,
+};
+
+export const bookStore = createStore<Book>(() => ({
+  project: null,
+  past: [],
+  future: [],
+  words: "",
+  ...NO_RESULT,
+  leaf: "form",
+  chosen: null,
+  pointed: null,
+  field: "none",
+  step: 0,
+  sheet: "none",
+  theme: "system",
+  notices: [],
+  kept: null,
+}));
+
+/** Puts another job on the desk: nothing of the former one stays. */
+export function openProject(project: Project, leaf: Leaf = "form"): void {
+  bookStore.setState({
+    project,
+    past: [],
+    future: [],
+    words: "",
+    ...NO_RESULT,
+    leaf,
+    chosen: null,
+    step: 0,
+    sheet: "none",
+    kept: null,
+  });
+}
+
+/** Puts the job away. */
+export function closeProject(): void {
+  bookStore.setState({ project: null, past: [], future: [], ...NO_RESULT, chosen: null, sheet: "none" });
+}
+
+/**
+ * Does one act on the project and remembers what was before.
+ * @param words what was done, as undo names it
+ */
+export function act<A>(action: (project: Project, args: A) => Project, args: A, words: string): void {
+  const { project, past } = bookStore.getState();
+  if (project === null) return;
+  const next = action(project, args);
+  if (next === project) return;
+  bookStore.setState({ project: next, past: [...past, { project, words }], future: [], words });
+}
+
+export function undo(): void {
+  const { project, past, future } = bookStore.getState();
+  const last = past.at(-1);
+  if (project === null || last === undefined) return;
+  bookStore.setState({
+    project: last.project,
+    past: past.slice(0, -1),
+    future: [{ project, words: last.words }, ...future],
+  });
+}
+
+export function redo(): void {
+  const { project, past, future } = bookStore.getState();
+  const [next, ...rest] = future;
+  if (project === null || next === undefined) return;
+  bookStore.setState({ project: next.project, past: [...past, { project, words: next.words }], future: rest });
+}
+
+/** Says something once; the same id replaces what it said before. */
+export function notify(id: string, text: string, grave = false): void {
+  bookStore.setState((s) => ({ notices: [...s.notices.filter((n) => n.id !== id), { id, text, grave }] }));
+}
+
+export function dismiss(id: string): void {
+  bookStore.setState((s) => ({ notices: s.notices.filter((n) => n.id !== id) }));
+}

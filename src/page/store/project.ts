@@ -1,0 +1,35 @@
+// What a person works on: a job as it stands in the file, its mesh, and the log of the site. Types only.
+import type { JobFile } from "../../core/job/jobSchema.ts";
+
+/** A mesh file beside the job; its bytes never change. */
+export interface MeshFile {
+  name: string;
+  bytes: Uint8Array<ArrayBuffer>;
+}
+
+/** One reading of the site log, as the readings file has it. */
+export interface Reading {
+  time: string;
+  by: string;
+  /** Adjuster, cable or anchor. */
+  id: string;
+  /** kN */
+  force: number | null;
+  /** Hz, m, kg/m: a plucked free span. */
+  frequency: number | null;
+  freeLength: number | null;
+  massPerMetre: number | null;
+  /** degC */
+  temperature: number | null;
+  /** m, a surveyed position. */
+  at: [number, number, number] | null;
+}
+
+/** One job with everything that can be undone. */
+export interface Project {
+  /** Name in the browser's store. */
+  id: string;
+  job: JobFile;
+  mesh: MeshFile | null;
+  log: Reading[];
+}

@@ -1,0 +1,129 @@
+// The worker: the very core the command line uses, behind messages. One request at a time; who wants to stop it ends it.
+
+import regularFace from "dejavu-fonts-ttf/ttf/DejaVuSans.ttf?url";
+import boldFace from "dejavu-fonts-ttf/ttf/DejaVuSans-Bold.ttf?url";
+import { config } from "zod";
+import cables from "../../../templates/cables.json";
+import cautions from "../../../templates/cautions.json";
+import fabrics from "../../../templates/fabrics.json";
+import turnbuckles from "../../../templates/turnbuckles.json";
+import { type Catalogues, readCatalogues } from "../../core/job/catalogues.ts";
+import { writePapers } from "../../core/papers/writePapers.ts";
+import { capNest } from "../../core/plan/capNest.ts";
+import { writeFactsJson } from "../../core/plan/factsFile.ts";
+import { measureFields } from "../../core/plan/measureFields.ts";
+import { readPlanInput } from "../../core/plan/readPlanInput.ts";
+import { runPlan } from "../../core/plan/runPlan.ts";
+import { PlanError, type Station } from "../../core/problem.ts";
+import type { Facts } from "../../core/records/facts.ts";
+import type { PlanFault, Reply, Request } from "./messages.ts";
+
+// The schema library may compile its checks into code; the page forbids that, so it must not even try.
+config({ jitless: true });
+
+/** Ticks a second that progress is told. */
+const TICKS = 10;
+
+let catalogues: Catalogues | null = null;
+let fonts: { regular: Uint8Array; bold: Uint8Array } | null = null;
+
+function post(reply: Reply, transfer: Transferable[] = []): void {
+  self.postMessage(reply, { transfer });
+}
+
+async function loadFonts(): Promise<{ regular: Uint8Array; bold: Uint8Array }> {
+  const load = async (url: string) => {
+    const response = await fetch(new URL(url, self.location.href));
+    if (!response.ok)
+      throw new PlanError(
+        "fonts-missing",
+        `the fonts of the papers cannot be read (${response.status}); load the page anew`,
+      );
+    return new Uint8Array(await response.arrayBuffer());
+  };
+  const [regular, bold] = await Promise.all([load(regularFace), load(boldFace)]);
+  return { regular, bold };
+}
+
+function plan(request: Extract<Request, { kind: "plan" }>): void {
+  const { run, given, mesh } = request;
+  catalogues ??= readCatalogues({ fabrics, cables, turnbuckles, cautions });
+  const input = readPlanInput({ value: given, findings: [] }, catalogues, (file) => {
+    if (mesh === null) {
+      throw new PlanError(
+        "mesh-missing",
+        `the job reads its mesh from ${file}, which is not here; drop that file onto the page too`,
+        "mesh.file",
+      );
+    }
+    return { bytes: mesh.bytes, name: mesh.name };
+  });
+  post({ kind: "read", run, job: input.job, revision: input.revision });
+  let station: Station = "job";
+  let told = Number.NEGATIVE_INFINITY;
+  const cap = capNest(input.job.nest.seconds, () => performance.now());
+  const tell = (share: number, words: string) => {
+    const now = performance.now();
+    if (now - told < 1000 / TICKS) return;
+    told = now;
+    post({ kind: "progress", run, share, words, station });
+  };
+  const onStation = (next: Station) => {
+    station = next;
+    cap.onStation(next);
+  };
+  const planned = runPlan(
+    input.job,
+    input.source,
+    { revision: input.revision, onStation },
+    { onProgress: tell, cancelled: cap.cancelled },
+  );
+  const facts: Facts = { ...planned, findings: [...input.findings, ...planned.findings] };
+  const fields = measureFields(facts, input.job.warp);
+  const buffers = [
+    fields?.residual,
+    fields?.curvature,
+    fields?.patterned?.warp,
+    fields?.patterned?.weft,
+    fields?.built?.warp,
+    fields?.built?.weft,
+  ];
+  post(
+    { kind: "planned", run, facts, fields },
+    buffers.flatMap((b) => (b === undefined ? [] : [b.buffer])),
+  );
+}
+
+async function papers(run: number, facts: Facts): Promise<void> {
+  fonts ??= await loadFonts();
+  const { files } = await writePapers(facts, { fonts });
+  const all = [{ path: "facts.json", bytes: writeFactsJson(facts) }, ...files].map(({ path, bytes }) => ({
+    path,
+    bytes: Uint8Array.from(bytes),
+  }));
+  post(
+    { kind: "papers", run, files: all },
+    all.map((f) => f.bytes.buffer),
+  );
+}
+
+/** An error as a record; one that is no PlanError is a fault of the program and says so. */
+function describe(error: unknown): PlanFault {
+  if (error instanceof PlanError) return { code: error.code, message: error.message, where: [error.where].flat() };
+  const words = error instanceof Error ? error.message : String(error);
+  return {
+    code: "fault",
+    message: `a fault of the program, not of the job: ${words}. Please report it with the job`,
+    where: [],
+  };
+}
+
+self.onmessage = async (event: MessageEvent<Request>) => {
+  const request = event.data;
+  try {
+    if (request.kind === "plan") plan(request);
+    else await papers(request.run, request.facts);
+  } catch (error) {
+    post({ kind: "failed", run: request.run, fault: describe(error) });
+  }
+};

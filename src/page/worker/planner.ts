@@ -1,0 +1,111 @@
+// Starts, ends and hears the worker. The newest request wins: a worker that still computes an older one is ended.
+import type { Facts } from "../../core/records/facts.ts";
+import { bookStore } from "../store/bookStore.ts";
+import type { Project } from "../store/project.ts";
+import type { PlanFault, Reply, Request } from "./messages.ts";
+
+let worker: Worker | null = null;
+let busy = false;
+let run = 0;
+/** Project or facts the running request is about. */
+let subject: { project: Project } | { facts: Facts } | null = null;
+
+function start(): Worker {
+  const fresh = new Worker(new URL("./planWorker.ts", import.meta.url), { type: "module", name: "seamstay-plan" });
+  fresh.onmessage = (event: MessageEvent<Reply>) => hear(event.data);
+  fresh.onerror = (event) => {
+    event.preventDefault();
+    if (worker !== fresh) return;
+    end();
+    fail({
+      code: "worker-broken",
+      message: `the computing worker broke down (${event.message || "no word why"}); your job is whole, plan again`,
+      where: [],
+    });
+  };
+  return fresh;
+}
+
+function end(): void {
+  worker?.terminate();
+  worker = null;
+  busy = false;
+}
+
+function send(request: Request): void {
+  if (busy) end();
+  worker ??= start();
+  busy = true;
+  worker.postMessage(request);
+}
+
+function hear(reply: Reply): void {
+  if (reply.run !== run) return;
+  const set = bookStore.setState;
+  switch (reply.kind) {
+    case "read":
+      set({ job: reply.job });
+      return;
+    case "progress":
+      set({ progress: { share: reply.share, words: reply.words, station: reply.station } });
+      return;
+    case "planned":
+      busy = false;
+      set({
+        status: "done",
+        facts: reply.facts,
+        fields: reply.fields,
+        planned: subject !== null && "project" in subject ? subject.project : null,
+        fault: null,
+        papers: null,
+        papersFault: null,
+      });
+      return;
+    case "papers":
+      busy = false;
+      if (subject !== null && "facts" in subject)
+        set({ papers: { of: subject.facts, files: reply.files }, writing: false });
+      return;
+    case "failed":
+      busy = false;
+      fail(reply.fault);
+  }
+}
+
+function fail(fault: PlanFault): void {
+  if (subject !== null && "facts" in subject) bookStore.setState({ writing: false, papersFault: fault });
+  else bookStore.setState({ status: "failed", fault });
+}
+
+/** Plans the project from the start. */
+export function requestPlan(project: Project): void {
+  run++;
+  subject = { project };
+  bookStore.setState({
+    status: "running",
+    fault: null,
+    writing: false,
+    progress: { share: 0, words: "reading the job", station: "job" },
+  });
+  send({ kind: "plan", run, given: project.job, mesh: project.mesh });
+}
+
+/** Writes the papers of a plan. */
+export function requestPapers(facts: Facts): void {
+  run++;
+  subject = { facts };
+  bookStore.setState({ writing: true, papersFault: null });
+  send({ kind: "papers", run, facts });
+}
+
+/** Stops what is computed; what was planned before stays. */
+export function stopPlan(): void {
+  if (!busy) return;
+  run++;
+  end();
+  const { facts } = bookStore.getState();
+  bookStore.setState({
+    status: facts === null || subject === null || "project" in subject ? "stopped" : "done",
+    writing: false,
+  });
+}
