@@ -9,7 +9,7 @@ import { buildCableLine } from "./cableSchedule.ts";
 import { playPlan } from "./playPlan.ts";
 import { findTargetMisses, reviewRig } from "./reviewRig.ts";
 import type { RigInput } from "./rigInput.ts";
-import { checkLengths, countModes, type RigState, solveLengths, solveState } from "./solveLengths.ts";
+import { checkLengths, countModes, measureModes, type RigState, solveLengths, solveState } from "./solveLengths.ts";
 import { solveStages } from "./solveStages.ts";
 import { buildTemperatureTable } from "./temperatureTable.ts";
 
@@ -63,8 +63,8 @@ export function runRig(input: RigInput, context: StationContext): StationResult<
   checks.push(checkLengths("finished", exact.off));
   const stages = solveStages(input, rig, solver, exact, { checks, context });
   const finished = stages[stages.length - 1].end;
-  const modes = countModes(exact.singular);
-  const played = playPlan(input.rig, rig, solver, stages, { modes, context });
+  const singular = measureModes(rig, stages[stages.length - 1].linear.influence);
+  const played = playPlan(input.rig, rig, solver, stages, { modes: countModes(singular), context });
   const written = played.stages;
   context.onProgress?.(0.92, "temperature table");
   const expansion = {
@@ -81,7 +81,7 @@ export function runRig(input: RigInput, context: StationContext): StationResult<
     issuable: input.rig.defaults.length === 0,
   };
   const asBuilt = measureAsBuilt(rig, finished);
-  const review = reviewRig(input, rig, { ...played, finished, asBuilt, singular: exact.singular });
+  const review = reviewRig(input, rig, { ...played, finished, asBuilt, singular });
   findings.push(...findTargetMisses(rig, exact), ...review.findings);
   checks.push(...review.checks);
   return { output: { cables: lines, rig: writeRig(rig, finished), asBuilt, tensioning }, findings, checks };

@@ -75,14 +75,13 @@ export function solveLengths(
   wanted: number[],
   reference: number[],
   given: Partial<LengthOptions> = {},
-): RigState & { off: number; singular: number[] } {
+): RigState & { off: number } {
   const options = { ...lengthDefaults, ...given };
   const n = rig.adjusters.length;
   const links = rig.adjusters.map((a) => a.link);
   const targets = rig.adjusters.map((a) => a.target);
   let state = start;
   let softness = 0.05;
-  let singular: number[] = [];
   let best: RigState | null = null;
   let least = Infinity;
   for (let round = 0; round < options.rounds; round++) {
@@ -97,8 +96,8 @@ export function solveLengths(
     const J = measureAdjusterInfluence(rig, solver, state);
     for (let i = 0; i < n; i++) for (let j = 0; j < n; j++) J.set(i, j, J.get(i, j) / targets[i]);
     const svd = new SingularValueDecomposition(J, { autoTranspose: true });
-    singular = svd.diagonal;
-    if (!(singular[0] > 0)) {
+    const strongest = svd.diagonal[0];
+    if (!(strongest > 0)) {
       // everything slack: take in a little everywhere
       state = turnTo(
         rig,
@@ -109,7 +108,7 @@ export function solveLengths(
       );
       continue;
     }
-    const mu = softness * singular[0];
+    const mu = softness * strongest;
     const home = links.map((k, i) => reference[i] - state.L0[k]);
     // (JᵀJ + μ²) d = Jᵀ miss + μ² home
     const left = J.transpose().mmul(J);
@@ -128,7 +127,7 @@ export function solveLengths(
     );
     if (longest < 2e-4 || round % 4 === 3) softness /= 4;
   }
-  return { ...(best ?? state), off: least, singular };
+  return { ...(best ?? state), off: least };
 }
 
 /** The check that forces hold before rounding. */
@@ -140,6 +139,17 @@ export function checkLengths(name: string, off: number): Check {
     limit: 0.005,
     holds: off <= 0.005,
   };
+}
+
+/**
+ * Singular values of the adjusters' influence on each other, greatest first: how strongly each tension mode shows in forces.
+ * @shape influence: rows of the adjusters first, n columns, kN per m @units kN/mm
+ */
+export function measureModes(rig: Rig, influence: ArrayLike<number>): number[] {
+  const n = rig.adjusters.length;
+  const J = new Matrix(n, n);
+  for (let i = 0; i < n; i++) for (let j = 0; j < n; j++) J.set(i, j, influence[i * n + j] / 1000);
+  return new SingularValueDecomposition(J, { autoTranspose: true }).diagonal;
 }
 
 /** Tension modes that forces determine: singular values above 5 % of the greatest. */
