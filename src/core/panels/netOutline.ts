@@ -10,8 +10,9 @@ import { listPoints, type Point } from "./sideLine.ts";
 const FAIR_MM = 0.2;
 /** … nor than this share of the panel's mean width, so that small panels keep their area. */
 const FAIR_SHARE = 2e-4;
-/** A faired side may be this much shorter than its points make it, mm. */
-const LOSS_MM = 0.1;
+/** A faired side may be this much shorter than its points make it, mm: sides of a seam, others. */
+const LOSS_SEAM_MM = 0.1;
+const LOSS_MM = 0.5;
 /** Points of the net closer than this are one, mm. */
 const SAME_MM = 1e-6;
 
@@ -57,14 +58,14 @@ function thinLines(lines: readonly Point[][], within: number): number[] {
 
 /**
  * Places kept by lines that run through the same points of the surface, both ends among them: within the tolerance, and no line
- * shorter than its points make it by more than a tenth of a millimetre.
+ * shorter than its points make it by more than `loss`.
  */
-export function fairLines(lines: readonly Point[][], within: number): number[] {
+export function fairLines(lines: readonly Point[][], within: number, loss: number): number[] {
   const all = Array.from(lines[0].keys());
   const whole = lines.map((line) => measureLength(line, all));
   for (let tolerance = within; tolerance > within / 100; tolerance /= 2) {
     const kept = thinLines(lines, tolerance);
-    if (lines.every((line, k) => whole[k] - measureLength(line, kept) <= LOSS_MM)) return kept;
+    if (lines.every((line, k) => whole[k] - measureLength(line, kept) <= loss)) return kept;
   }
   return all;
 }
@@ -101,7 +102,7 @@ export function keepSeamPoints(panels: readonly FlatPanel[]): Map<string, Readon
   const keep = new Map<string, ReadonlySet<number>>();
   for (const [id, { vertices, lines, within }] of found) {
     const same = lines.filter((line) => line.length === vertices.length);
-    keep.set(id, new Set(fairLines(same, within).map((i) => vertices[i])));
+    keep.set(id, new Set(fairLines(same, within, LOSS_SEAM_MM).map((i) => vertices[i])));
   }
   return keep;
 }
@@ -112,7 +113,9 @@ function keptVertices(panel: FlatPanel, side: PanelSide, place: PanelPlace, with
   const keep = side.kind === "seam" ? place.keep?.get(side.id) : undefined;
   const last = vertices.length - 1;
   if (keep !== undefined) return vertices.filter((v, i) => i === 0 || i === last || keep.has(panel.surfaceVertex[v]));
-  return fairLines([listPoints(panel, vertices)], within).map((i) => vertices[i]);
+  return fairLines([listPoints(panel, vertices)], within, side.kind === "seam" ? LOSS_SEAM_MM : LOSS_MM).map(
+    (i) => vertices[i],
+  );
 }
 
 /** The net ring and where each side lies in it. */
