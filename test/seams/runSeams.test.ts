@@ -114,18 +114,34 @@ describe("bands", () => {
     expect(told.text).toMatch(/from E1 to E2/);
   });
 
-  test("more strips, and widths measured by the flattening, change the layout", () => {
+  test("a number of strips for one way, and widths measured by the flattening, change the layout", () => {
     const form = square(7);
-    const three = runSeams(form, makeJob(), options(2.4)).output;
-    const four = runSeams(form, makeJob(), { ...options(2.4), moreStrips: { "region 1": 1 } }).output;
-    expect([three.strips.length, four.strips.length]).toEqual([3, 4]);
-    const wider = runSeams(form, makeJob(), { ...options(2.4), widthFactors: { "region 1": [1.1, 1, 1] } }).output;
+    const first = runSeams(form, makeJob(), options(2.4)).output;
+    const way = first.estimates?.[0].way ?? "";
+    const four = runSeams(form, makeJob(), { ...options(2.4), counts: { "region 1": { way, count: 4 } } }).output;
+    expect([first.strips.length, four.strips.length]).toEqual([3, 4]);
+    expect(four.estimates?.[0].way).toBe(way);
+    const factors = (factor: number[]) => ({ widthFactors: { [way]: { at: [1 / 6, 1 / 2, 5 / 6], factor } } });
+    const [from, to] = way.replace("region 1: ", "").split(" to ");
+    const job = makeJob({ layout: "bands", from, to });
+    const shifted = runSeams(form, job, { ...options(2.45), ...factors([1.02, 1, 1]) }).output;
+    expect(shifted.estimates?.[0].way).toBe(way);
+    expect(shifted.strips.length).toBe(3);
+    const at = shifted.seams.map(({ vertices: [v] }) => {
+      const [x, y] = [shifted.surface.xyz[3 * v], shifted.surface.xyz[3 * v + 1]];
+      return Math.min(x, y) < 1e-9 || Math.max(x, y) > 7 - 1e-9 ? Math.min(Math.max(x, 7 - x), Math.max(y, 7 - y)) : x;
+    });
+    // the strip that counts as wider is made narrower: its seam moves off the even third, 7/3 from its rim
+    expect(at.some((s) => Math.abs(s - 14 / 3) > 0.01)).toBe(true);
+    // where every way counts as too wide for three, there are four
+    const all = Object.fromEntries(
+      ["E1 to E3", "E2 to E4", "E3 to E1", "E4 to E2"].map((w) => [`region 1: ${w}`, { at: [0.5], factor: [1.1] }]),
+    );
+    const wider = runSeams(form, makeJob(), { ...options(2.4), widthFactors: all }).output;
     expectSoundLayout(form, wider);
     expect(wider.strips.length).toBe(4);
-    const shifted = runSeams(form, makeJob(), { ...options(2.45), widthFactors: { "region 1": [1.02, 1, 1] } }).output;
-    expect(shifted.strips.length).toBe(3);
-    const first = shifted.seams[0].vertices[0];
-    expect(Math.min(shifted.surface.xyz[3 * first], shifted.surface.xyz[3 * first + 1])).toBeLessThan(7 / 3);
+    // the estimate itself is told without the correction
+    expect(wider.estimates?.[0].strips.map((s) => s.width.toFixed(2))).toEqual(Array(4).fill("1.75"));
   });
 });
 
@@ -371,14 +387,65 @@ describe("invariants", () => {
   });
 });
 
-describe("refusals", () => {
-  test("a strip longer than the cloth is a stop with its panel", () => {
-    const { findings } = runSeams(square(7), makeJob(), { usableWidth: 2.4, maxLength: 5 });
-    const stops = findings.filter((f) => f.code === "strip-length");
-    expect(stops.map((f) => f.where)).toEqual(["P1", "P2", "P3"]);
-    expect(stops[0]).toMatchObject({ level: "stop", limit: 5 });
+describe("seams across", () => {
+  test.each([
+    [5, 2],
+    [3, 3],
+    [2.2, 4],
+  ])("strips of 7 m on cloth of %f m are %i pieces each, staggered between neighbours", (maxLength, n) => {
+    const form = square(7);
+    const { output, findings } = runSeams(form, makeJob(), { usableWidth: 2.4, maxLength });
+    expectSoundLayout(form, output);
+    expect(output.strips.length).toBe(3 * n);
+    expect(findings.filter((f) => f.level !== "note")).toEqual([]);
+    expect(output.choices[0].count).toBe(3);
+    expect(output.estimates?.[0].strips.map((s) => s.panels.length)).toEqual([n, n, n]);
+    // panels read along the first strip, then the next; pieces of one strip follow each other by whole seams
+    const [first] = output.estimates?.[0].strips ?? [];
+    expect(first.panels).toEqual(Array.from({ length: n }, (_, i) => `P${i + 1}`));
+    for (let i = 1; i < n; i++) {
+      const [a, b] = [first.panels[i - 1], first.panels[i]].map((id) => output.strips.find((s) => s.id === id));
+      const joint = output.seams.filter((s) => s.strips.includes(a?.id ?? "") && s.strips.includes(b?.id ?? ""));
+      expect(joint.length).toBe(1);
+      expect(new Set(joint[0].vertices)).toEqual(new Set(a?.to));
+      expect(new Set(b?.from)).toEqual(new Set(a?.to));
+    }
+    // T-joints: records of one seam along share its weld; seams across of neighbours end 0.15 m apart or in one point
+    const welds = new Set(output.seams.map((s) => s.weld));
+    expect(welds.size).toBe(2 + 3 * (n - 1));
+    for (const seam of output.seams) expect(seam.length).toBeGreaterThan(0.14);
+    for (const strip of output.strips) {
+      const places = strip.sides
+        .flatMap((s) => s.vertices)
+        .map((v) => [0, 1].map((k) => output.surface.xyz[3 * v + k]));
+      const extent = (k: number) => Math.max(...places.map((p) => p[k])) - Math.min(...places.map((p) => p[k]));
+      expect(Math.max(extent(0), extent(1))).toBeLessThan(maxLength + 0.3);
+    }
   });
 
+  test("gores, bands beside hollow edges and a domed sheet are cut across", () => {
+    const ring = makeForm(
+      makeRing(64, 20, (turn, row) => [(1 + 8 * row) * Math.cos(turn), (1 + 8 * row) * Math.sin(turn), 3 * (1 - row)]),
+    );
+    const hollow = makeForm(
+      makeGrid(28, 28, (u, v) => {
+        const x = 12 * (u - 0.5) * (1 - 0.5 * v * (1 - v));
+        const y = 9 * (v - 0.5) * (1 - 0.5 * u * (1 - u));
+        return [x, y, 0.06 * x * y];
+      }),
+    );
+    const dome = makeForm(makeGrid(24, 24, (u, v) => [12 * u, 12 * v, 12 * u * (1 - u) * v * (1 - v)]));
+    for (const form of [ring, hollow, dome])
+      for (const maxLength of [6, 4, 2.6]) {
+        const { output, findings } = runSeams(form, makeJob(), { usableWidth: 2, maxLength });
+        expectSoundLayout(form, output);
+        expect(findings.filter((f) => f.level === "stop")).toEqual([]);
+        expect(output.strips.length).toBeGreaterThan(output.choices[0].count);
+      }
+  });
+});
+
+describe("refusals", () => {
   test("unknown edges and no width", () => {
     const form = square(7);
     expect(() => runSeams(form, makeJob({ layout: "bands", from: "nowhere", to: "E1" }), options(2))).toThrow(

@@ -1,51 +1,23 @@
-// Seams and panels together: strips are laid out on estimated widths, flattened, and laid out again until the cut panels fit
-// the cloth. Ends with the best it found; a panel that is still too wide is left for the rolls station to name.
-
+// Seams and panels together: strips are laid out on estimated sizes, flattened, and laid out again until the cut panels fit the
+// cloth and share its width; then, where the stress as patterned is too far off, in narrower strips (easeStress.ts).
+// Ends with the best it found; a panel that is still too wide or too long is left for the rolls station to name. Source: own.
 import { runPanels } from "../panels/runPanels.ts";
-import type { StationContext, StationResult } from "../problem.ts";
+import type { StationContext } from "../problem.ts";
 import type { CutPanel } from "../records/flatPanel.ts";
 import type { FoundForm } from "../records/foundForm.ts";
 import type { Job } from "../records/job.ts";
-import type { StripLayout } from "../records/stripLayout.ts";
+import type { LayoutEstimate } from "../records/stripLayout.ts";
 import { runSeams, type SeamOptions } from "../seams/runSeams.ts";
+import { type ClothRoom, firstOptions, isTurned, measureExtent, measureRoom } from "./clothRoom.ts";
+import { easeStress } from "./easeStress.ts";
+import type { Fitted, RunBoth } from "./fitted.ts";
 
-/** Layouts tried before the last one stands. */
-const rounds = 6;
-
-/** Widths the cloth sets, m. */
-export interface ClothRoom {
-  /** Usable width of the narrowest roll, or the job's own limit if that is less. */
-  width: number;
-  /** Longest piece a roll takes; null: no limit. */
-  length: number | null;
-}
-
-/** The cloth's room: the narrowest of the job's rolls, or the fabric's full roll. */
-export function measureRoom(job: Job): ClothRoom {
-  const rolls = job.rolls ?? [
-    { width: job.fabric.rollWidth, selvedge: job.fabric.selvedge, length: job.fabric.rollLength, start: 0 },
-  ];
-  const width = Math.min(...rolls.map((r) => r.width - 2 * r.selvedge), job.seams.maxWidth ?? Infinity) / 1000;
-  const length = Math.min(Math.max(...rolls.map((r) => r.length - r.start)), job.seams.maxLength ?? Infinity) / 1000;
-  return { width, length: Number.isFinite(length) ? length : null };
-}
-
-/** Extent across the warp of a ring, m. */
-function measureBreadth(ring: ArrayLike<number>): number {
-  let low = Infinity;
-  let high = -Infinity;
-  for (let i = 1; i < ring.length; i += 2) {
-    low = Math.min(low, ring[i]);
-    high = Math.max(high, ring[i]);
-  }
-  return (high - low) / 1000;
-}
-
-/** What both stations made of one layout. */
-export interface Fitted {
-  seams: StationResult<StripLayout>;
-  panels: StationResult<CutPanel[]>;
-}
+/** Layouts tried for the sake of the width before the best one stands. */
+const ROUNDS = 6;
+/** Panels of one region whose widths differ by no more than this share are alike. own: 5 cm on a roll of 2.5 m. */
+const ALIKE = 0.02;
+/** A further layout for alike widths must take this share off the difference. */
+const GAIN = 0.2;
 
 /** Context of both stations; onStation is told which of them works. */
 export interface FitContext {
@@ -54,53 +26,118 @@ export interface FitContext {
   onStation: (station: "seams" | "panels") => void;
 }
 
-/** Lays out, flattens and outlines until every panel fits the room, or the count is the job's own. */
+interface Judged {
+  /** Panels too wide or too long for the cloth. */
+  misfits: number;
+  panels: number;
+  /** Greatest difference of cut widths within a region, as a share of the widest. */
+  spread: number;
+}
+
+/** Cut sizes of an estimate's strips, m: the widest and the longest of each strip's panels; null where the job turns one. */
+function measureStrips(estimate: LayoutEstimate, byId: ReadonlyMap<string, CutPanel>) {
+  return estimate.strips.map(({ panels }) => {
+    const own = panels.flatMap((id) => byId.get(id) ?? []);
+    if (own.length === 0 || own.some(isTurned)) return null;
+    const sizes = own.map((p) => measureExtent(p.cut));
+    return { width: Math.max(...sizes.map((s) => s.width)), length: Math.max(...sizes.map((s) => s.length)) };
+  });
+}
+
+function judge(fitted: Fitted, room: ClothRoom): Judged {
+  const panels = fitted.panels.output;
+  const byId = new Map(panels.map((p) => [p.id, p]));
+  let misfits = 0;
+  for (const p of panels) {
+    if (isTurned(p)) continue;
+    const { width, length } = measureExtent(p.cut);
+    if (width > room.width || (room.length !== null && length > room.length)) misfits++;
+  }
+  let spread = 0;
+  for (const estimate of fitted.seams.output.estimates ?? []) {
+    const widths = measureStrips(estimate, byId).flatMap((size) => (size ? [size.width] : []));
+    if (widths.length > 1) spread = Math.max(spread, 1 - Math.min(...widths) / Math.max(...widths));
+  }
+  return { misfits, panels: panels.length, spread };
+}
+
+function isBetter(a: Judged, b: Judged): boolean {
+  if (a.misfits !== b.misfits) return a.misfits < b.misfits;
+  if (a.panels !== b.panels) return a.panels < b.panels;
+  return a.spread < b.spread;
+}
+
+/**
+ * Options for the next round: measured sizes in place of estimated ones, allowances but one overlap counted as width.
+ * `press` makes the strips of a region that is still too wide count as so much wider.
+ */
+function correct(options: SeamOptions, fitted: Fitted, lap: number, press: (way: string) => number): SeamOptions {
+  const byId = new Map(fitted.panels.output.map((p) => [p.id, p]));
+  const widthFactors = { ...options.widthFactors };
+  const lengthFactors = { ...options.lengthFactors };
+  for (const estimate of fitted.seams.output.estimates ?? []) {
+    const { way, strips } = estimate;
+    const sizes = measureStrips(estimate, byId);
+    const factor = strips.map((strip, j) => {
+      const size = sizes[j];
+      return size ? (press(way) * Math.max(size.width - lap, 0.01)) / strip.width : 1;
+    });
+    widthFactors[way] = { at: strips.map((strip) => strip.at), factor };
+    const longer = strips.map((strip, j) => {
+      const size = sizes[j];
+      return size ? ((size.length - lap) * strip.panels.length) / strip.length : 1;
+    });
+    if (strips.some(({ panels }) => panels.length > 1)) lengthFactors[way] = Math.max(1, ...longer);
+  }
+  return { ...options, widthFactors, lengthFactors };
+}
+
+/** Ways whose panels are wider than the cloth, with the share by which they are. */
+function listWideWays(fitted: Fitted, room: ClothRoom): Map<string, number> {
+  const byId = new Map(fitted.panels.output.map((p) => [p.id, p]));
+  const out = new Map<string, number>();
+  for (const estimate of fitted.seams.output.estimates ?? []) {
+    const widths = measureStrips(estimate, byId).flatMap((size) => (size ? [size.width] : []));
+    const most = Math.max(0, ...widths) / room.width;
+    if (most > 1) out.set(estimate.way, most);
+  }
+  return out;
+}
+
+/** Lays out until every panel fits the room and the widths are alike. */
+function fitWidths(runBoth: RunBoth, room: ClothRoom, lap: number): { fitted: Fitted; options: SeamOptions } {
+  let options = firstOptions(room, lap);
+  let best: { fitted: Fitted; options: SeamOptions; judged: Judged } | null = null;
+  const wideBefore = new Map<string, number>();
+  for (let round = 0; round < ROUNDS; round++) {
+    const fitted = runBoth(options);
+    const judged = judge(fitted, room);
+    const before = best?.judged;
+    if (!best || isBetter(judged, best.judged)) best = { fitted, options, judged };
+    if ((fitted.seams.output.estimates ?? []).length === 0) break;
+    if (best.judged.misfits === 0) {
+      if (best.judged.spread <= ALIKE) break;
+      if (before && before.misfits === 0 && best.judged.spread > (1 - GAIN) * before.spread) break;
+    }
+    // A way that is too wide again although its widths were measured is pressed: its strips count as that much wider.
+    const wide = listWideWays(fitted, room);
+    for (const [way, most] of wide)
+      if (options.widthFactors?.[way]) wideBefore.set(way, 1.002 * most * (wideBefore.get(way) ?? 1));
+    options = correct(options, fitted, lap, (way) => wideBefore.get(way) ?? 1);
+  }
+  if (!best) throw new RangeError("no round was run");
+  return best;
+}
+
+/** Lays out, flattens and outlines until every panel fits the room, widths are alike and the stress error is in bounds. */
 export function fitPanels(form: FoundForm, job: Job, context: FitContext): Fitted {
-  const room = measureRoom(job);
-  let options: SeamOptions = firstOptions(room, job.allowances.seam / 1000);
-  let fitted: Fitted | null = null;
-  for (let round = 0; round < rounds; round++) {
+  const runBoth: RunBoth = (options) => {
     context.onStation("seams");
     const seams = runSeams(form, job, options, context.seams);
     context.onStation("panels");
     const panels = runPanels(seams.output, form, job, context.panels);
-    fitted = { seams, panels };
-    const wide = panels.output.filter((p) => measureBreadth(p.cut) > room.width);
-    if (wide.length === 0 || job.seams.count !== "auto" || job.seams.layout === "pairs") break;
-    options = tighten(options, fitted, { room, wide: new Set(wide.map((p) => p.id)), round });
-  }
-  return fitted as Fitted;
-}
-
-/** Options before anything is flat: the cloth's width less one finished overlap, since most strips have two seams. */
-export function firstOptions(room: ClothRoom, lap: number): SeamOptions {
-  return { usableWidth: Math.max(room.width - lap, 0.2 * room.width), maxLength: room.length };
-}
-
-/** Options for the next round: measured widths first, then one strip more wherever a panel is still too wide. */
-function tighten(
-  options: SeamOptions,
-  fitted: Fitted,
-  is: { room: ClothRoom; wide: Set<string>; round: number },
-): SeamOptions {
-  const byId = new Map(fitted.panels.output.map((p) => [p.id, p]));
-  const widthFactors: Record<string, number[]> = { ...options.widthFactors };
-  const moreStrips: Record<string, number> = { ...options.moreStrips };
-  let allowance = 0;
-  for (const p of fitted.panels.output) allowance = Math.max(allowance, measureBreadth(p.cut) - measureBreadth(p.net));
-  for (const choice of fitted.seams.output.choices) {
-    if (choice.widths.length !== choice.panels.length) continue;
-    widthFactors[choice.region] = choice.panels.map((id, i) => {
-      const panel = byId.get(id);
-      return panel ? measureBreadth(panel.net) / choice.widths[i] : 1;
-    });
-    if (is.round > 0 && choice.panels.some((id) => is.wide.has(id)))
-      moreStrips[choice.region] = (moreStrips[choice.region] ?? 0) + 1;
-  }
-  return {
-    ...options,
-    usableWidth: Math.max(is.room.width - allowance, 0.2 * is.room.width),
-    widthFactors,
-    moreStrips,
+    return { seams, panels };
   };
+  const { fitted, options } = fitWidths(runBoth, measureRoom(job), job.allowances.seam / 1000);
+  return job.seams.count === "auto" ? easeStress(fitted, options, runBoth) : fitted;
 }

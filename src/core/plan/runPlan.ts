@@ -10,7 +10,8 @@ import { runRolls } from "../rolls/runRolls.ts";
 import { runSeams } from "../seams/runSeams.ts";
 import { buildFormFacts, buildHead, buildPanelFacts, buildPieceFacts, buildSeamFacts } from "./buildFacts.ts";
 import { buildRigInput } from "./buildRigInput.ts";
-import { firstOptions, fitPanels, measureRoom } from "./fitPanels.ts";
+import { firstOptions, measureRoom } from "./clothRoom.ts";
+import { fitPanels } from "./fitPanels.ts";
 
 /** How a plan is asked for. */
 export interface PlanOptions {

@@ -49,10 +49,30 @@ export interface LayoutChoice {
   layout: "bands" | "gores" | "pairs" | "whole";
   from: string;
   to: string;
+  /** Strips side by side; panels may be more where strips are cut across. */
   count: number;
   why: string;
   /** Estimated flat width of each strip without allowances, m, in the order of `panels`; empty for pairs. */
   widths: number[];
+}
+
+/** What a strip was thought to be, so that the plan can correct the estimate by the flat cloth. */
+export interface StripEstimate {
+  /** Its panels from start to finish; more than one where it is cut across. */
+  panels: string[];
+  /** Share of the way across its region, at its middle. */
+  at: number;
+  /** Flat size before any correction, m. */
+  width: number;
+  length: number;
+}
+
+/** The estimates of one region. */
+export interface LayoutEstimate {
+  region: string;
+  /** Names the way its strips run: see wayKey. */
+  way: string;
+  strips: StripEstimate[];
 }
 
 /** Output of the seams station. */
@@ -62,4 +82,6 @@ export interface StripLayout {
   seams: Seam[];
   strips: Strip[];
   choices: LayoutChoice[];
+  /** One for each region that was laid out; none for seams given one by one. */
+  estimates?: LayoutEstimate[];
 }

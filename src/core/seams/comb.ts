@@ -20,9 +20,18 @@ export interface Comb {
   candidate: Candidate;
   teeth: { u: number; curve: Curve; line: SeamLine | null }[];
   lines: Map<string, SeamLine>;
-  /** Correction of the widths along u: measured over estimated, one for each strip of equal share. */
-  factors: readonly number[];
+  /** Correction of the widths along u. */
+  factors: WidthFactors;
 }
+
+/** Measured over estimated width at shares of the way across, in order; empty: no correction. */
+export interface WidthFactors {
+  at: readonly number[];
+  factor: readonly number[];
+}
+
+/** No correction. */
+export const NO_FACTORS: WidthFactors = { at: [], factor: [] };
 
 /** Arc lengths of share u on both ends. */
 export function endsAt(candidate: Candidate, u: number): SeamEnds {
@@ -55,7 +64,7 @@ function addTooth(comb: Comb, u: number, ends: SeamEnds = endsAt(comb.candidate,
 }
 
 /** A comb with n equal bays traced. */
-export function buildComb(region: Region, candidate: Candidate, n: number, factors: readonly number[]): Comb {
+export function buildComb(region: Region, candidate: Candidate, n: number, factors: WidthFactors): Comb {
   const comb: Comb = { region, candidate, teeth: [], lines: new Map(), factors };
   const rim = (chain: Chain) => ({ curve: sampleCurve(listChainPoints(region.surface, chain)), line: null });
   if (candidate.left && candidate.right)
@@ -111,12 +120,16 @@ export function sizeOfCurves(comb: Comb, curves: readonly Curve[], middle: numbe
   return { length: size.length, width: size.width * factorAt(comb.factors, middle) };
 }
 
-function factorAt(factors: readonly number[], u: number): number {
-  if (factors.length === 0) return 1;
-  const at = Math.min(factors.length - 1, Math.max(0, u * factors.length - 0.5));
-  const i = Math.min(factors.length - 1, Math.floor(at));
-  const j = Math.min(factors.length - 1, i + 1);
-  return factors[i] + (at - i) * (factors[j] - factors[i]);
+/** The correction at a share of the way across. */
+export function factorAt({ at, factor }: WidthFactors, u: number): number {
+  const last = at.length - 1;
+  if (last < 0) return 1;
+  if (u <= at[0]) return factor[0];
+  if (u >= at[last]) return factor[last];
+  let i = 1;
+  while (at[i] < u) i++;
+  const t = at[i] > at[i - 1] ? (u - at[i - 1]) / (at[i] - at[i - 1]) : 0;
+  return factor[i - 1] + t * (factor[i] - factor[i - 1]);
 }
 
 /** Shares that seams must keep to: the first no earlier than `first`, the last no later than `last`. */

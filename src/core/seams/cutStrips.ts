@@ -84,6 +84,7 @@ function markBorders(
   form: FoundForm,
   labels: Map<number, number>,
   plans: readonly RegionPlan[],
+  paths: readonly SeamPath[],
   cut: ReturnType<typeof cutSurface>,
 ) {
   const nV = form.surface.xyz.length / 3;
@@ -111,9 +112,13 @@ function markBorders(
     }
   }
   cut.pathVertices.forEach((run, path) => {
-    for (let i = 1; i < run.length; i++)
-      for (const key of [segmentKey(run[i - 1], run[i], nCut), segmentKey(run[i], run[i - 1], nCut)])
-        if (!marks.has(key)) marks.set(key, { edge: -1, path, end: 0 });
+    const { across } = paths[path];
+    for (let i = 1; i < run.length; i++) {
+      const forward = segmentKey(run[i - 1], run[i], nCut);
+      if (marks.has(forward)) continue;
+      marks.set(forward, { edge: -1, path, end: across?.left ?? 0 });
+      marks.set(segmentKey(run[i], run[i - 1], nCut), { edge: -1, path, end: across?.right ?? 0 });
+    }
   });
   return marks;
 }
@@ -170,7 +175,7 @@ function cutOnce(
   const { surface } = cut;
   const adjacency = buildAdjacency(surface);
   const nCut = adjacency.nV;
-  const byEnds = markBorders(form, labels, plans, cut);
+  const byEnds = markBorders(form, labels, plans, paths, cut);
   const cuts: [number, number][] = [];
   const keyOf = (h: number) => segmentKey(surface.tri[h], surface.tri[nextHalfedge(h)], nCut);
   for (let h = 0; h < surface.tri.length; h++)
@@ -191,12 +196,15 @@ function cutOnce(
     const loops = traceOutlineSides(surface, triangles, cuts, adjacency);
     if (loops.length !== 1) refuseRing(form, plans[region], loops.length);
     let place = plans[region].strips === 1 ? 0 : -1;
+    let told = place >= 0;
     for (const h of loops[0]) {
       const mark = byEnds.get(keyOf(h));
       if (!mark) continue;
       marks.set(h, mark);
-      if (mark.path < 0 || place >= 0) continue;
+      // a seam along its flank knows only the first panel of a strip that is cut across; a seam across knows better
+      if (mark.path < 0 || told || (place >= 0 && !paths[mark.path].across)) continue;
       const path = paths[mark.path];
+      told = path.across !== undefined;
       place = isAlong(cut.pathVertices[mark.path], surface.tri[h], surface.tri[nextHalfedge(h)])
         ? path.left
         : path.right;

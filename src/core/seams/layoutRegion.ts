@@ -14,7 +14,7 @@ import {
   orientCandidate,
 } from "./candidate.ts";
 import { measureChain } from "./chain.ts";
-import { buildComb, type Comb, countStrips, curveAt, sizeBetween, stepStrips } from "./comb.ts";
+import { buildComb, type Comb, countStrips, curveAt, sizeBetween, stepStrips, type WidthFactors } from "./comb.ts";
 import { MOST_STRIPS, type Placement, placeSeams } from "./placeSeams.ts";
 import type { Region } from "./region.ts";
 import { BAYS, type Curve } from "./stripWidth.ts";
@@ -28,10 +28,10 @@ export interface RegionLimits {
   count: number | "auto";
   /** True for the only region of the form. */
   alone: boolean;
-  /** Strips on top of the fewest that fit. */
-  more: number;
-  /** Measured over estimated width, strip by strip of an earlier run; empty: 1. */
-  factors: readonly number[];
+  /** Only this way is tried (see wayKey); null: all. */
+  way: string | null;
+  /** Measured over estimated width of a way, from an earlier run. */
+  factorsOf: (way: string) => WidthFactors;
   /** Arc lengths on a candidate's ends that carry seam ends already. */
   findMarks: (candidate: Candidate) => { start: number[]; finish: number[] };
 }
@@ -43,6 +43,11 @@ export interface RegionLayout {
   placement: Placement;
   why: string;
   findings: Finding[];
+}
+
+/** Names the way a candidate's strips run over its region. */
+export function wayKey(region: string, candidate: { from: string; to: string }): string {
+  return `${region}: ${candidate.from} to ${candidate.to}`;
 }
 
 /** Bays traced before a candidate is judged: across, and round a ring. own: the width between them is blended. */
@@ -103,7 +108,12 @@ function coarse(x: number): number {
 function tryCandidate(region: Region, raw: Candidate, limits: RegionLimits): Trial {
   const candidate = orientCandidate(region, raw);
   const round = candidate.left === null;
-  const comb = buildComb(region, candidate, round ? TRIAL_BAYS_ROUND : TRIAL_BAYS, limits.factors);
+  const comb = buildComb(
+    region,
+    candidate,
+    round ? TRIAL_BAYS_ROUND : TRIAL_BAYS,
+    limits.factorsOf(wayKey(region.id, candidate)),
+  );
   const open = { first: 0, last: 1 };
   const least = round ? 3 : 1;
   const count = limits.count === "auto" ? countStrips(comb, limits.usableWidth, least, open) : limits.count;
@@ -197,7 +207,6 @@ function placeTrials(trials: readonly Trial[], limits: RegionLimits, round: bool
       usableWidth: limits.usableWidth,
       count: limits.count === "auto" ? "auto" : Math.max(limits.count, round ? 2 : 1),
       least: round ? 3 : 1,
-      more: limits.more,
       marks: limits.findMarks(trial.candidate),
     });
     const { sizes, lines, hugging } = placement;
@@ -231,7 +240,8 @@ export function layoutRegion(form: FoundForm, region: Region, job: Job, limits: 
   let spare: Placed | null = null;
   let passed = "";
   for (const stage of listStages(form, region, job)) {
-    const next = stage.list.map((candidate) => tryCandidate(region, candidate, limits)).sort(compareKeys);
+    const list = stage.list.filter((c) => limits.way === null || wayKey(region.id, c) === limits.way);
+    const next = list.map((candidate) => tryCandidate(region, candidate, limits)).sort(compareKeys);
     const placed = placeTrials(next, limits, round);
     spare ??= placed.spare;
     if (!placed.best) continue;
@@ -286,7 +296,7 @@ function explainChoice(chosen: { trial: Trial; placement: Placement }, trials: T
   const n = placement.sizes.length;
   const widest = Math.max(...placement.sizes.map((size) => size.width));
   const width = `widest about ${widest.toFixed(2)} m of ${limits.usableWidth.toFixed(2)} m usable`;
-  const told = limits.count === "auto" ? "" : " as asked";
+  const told = limits.count === "auto" || limits.way !== null ? "" : " as asked";
   const head = n === 1 ? `one panel${told}, ${width}` : `${n} strips${told}, ${width}`;
   const others = trials.filter((other) => other !== trial);
   if (others.length === 0) return `${head}.`;
@@ -305,16 +315,18 @@ function explainChoice(chosen: { trial: Trial; placement: Placement }, trials: T
 }
 
 /** The choice in the words of the papers. */
-export function describeChoice(layout: RegionLayout, panels: string[]): LayoutChoice {
+export function describeChoice(layout: RegionLayout, panels: string[], pieces: readonly number[]): LayoutChoice {
   const { candidate, placement, region } = layout;
+  const parted = pieces.filter((n) => n > 1).length;
+  const told = parted === 0 ? "" : ` ${parted} of them cut across: ${panels.length} panels.`;
   return {
     region: region.id,
     panels,
     layout: panels.length === 1 ? "whole" : candidate.layout,
     from: candidate.from,
     to: candidate.to,
-    count: panels.length,
-    why: layout.why,
-    widths: placement.sizes.map((size) => size.width),
+    count: placement.sizes.length || panels.length,
+    why: layout.why + told,
+    widths: placement.sizes.flatMap((size, j) => Array.from({ length: pieces[j] }, () => size.width)),
   };
 }

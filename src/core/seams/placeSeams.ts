@@ -12,6 +12,7 @@ import {
   sizeOfCurves,
   stepStrips,
   traceTooth,
+  type WidthFactors,
 } from "./comb.ts";
 import { measureClearance, type SeamLine } from "./seamLine.ts";
 import type { StripSize } from "./stripWidth.ts";
@@ -23,8 +24,6 @@ export interface PlaceOptions {
   count: number | "auto";
   /** Fewest strips to be tried. */
   least: number;
-  /** Strips on top of the fewest that fit. */
-  more: number;
   /** Arc lengths on start and finish that already carry a seam's end from the other side. */
   marks: { start: number[]; finish: number[] };
 }
@@ -39,6 +38,8 @@ export interface Placement {
   hugging: number[];
   /** False where the strips do not fit the usable width whatever their number. */
   fits: boolean;
+  /** The correction that is in the sizes. */
+  factors: WidthFactors;
 }
 
 /** A seam end is drawn to a corner within this, m, and within SNAP_SHARE of a strip's end. own: shorter pieces of edge cannot be clamped or hemmed. */
@@ -242,9 +243,8 @@ export function placeSeams(comb: Comb, options: PlaceOptions): Placement {
       if (fits && better >= n) break;
       n = fits ? better : Math.max(n + 1, better);
     }
-    if (kept && options.more > 0) kept = settle(kept.sizes.length + options.more) ?? kept;
   }
-  if (!kept) return { shares: [0, 1], lines: [], sizes: [], hugging: [], fits: false };
+  if (!kept) return { shares: [0, 1], lines: [], sizes: [], hugging: [], fits: false, factors: comb.factors };
   return finishPlacement(comb, kept, options);
 }
 
@@ -265,5 +265,5 @@ function finishPlacement(comb: Comb, settled: Settled, options: PlaceOptions): P
   }
   if (comb.candidate.left === null) lines = [traceTooth(comb, endsAt(comb.candidate, 0)), ...lines];
   const hugging = lines.flatMap((line, j) => (line.clear ? [] : [j]));
-  return { shares, lines, sizes, hugging, fits: !wide(sizes) };
+  return { shares, lines, sizes, hugging, fits: !wide(sizes), factors: comb.factors };
 }

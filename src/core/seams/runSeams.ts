@@ -1,18 +1,21 @@
 // The seams station: lays seams over a found form and cuts it into strips. Pure; the widths it works with are estimates, so the
-// plan flattens and may call again with corrected widths (widthFactors) or more strips (moreStrips).
-// Not here: flattening, allowances, cross seams in a strip that is longer than the cloth (a stop says so).
+// plan flattens and may call again with corrected widths (widthFactors), lengths, or a number of strips (counts).
+// Not here: flattening, allowances.
 import { type Check, type Finding, PlanError, type StationContext, type StationResult } from "../problem.ts";
 import type { FoundForm } from "../records/foundForm.ts";
 import type { Job } from "../records/job.ts";
-import type { LayoutChoice, StripLayout } from "../records/stripLayout.ts";
+import type { LayoutChoice, LayoutEstimate, StripEstimate, StripLayout } from "../records/stripLayout.ts";
 import { buildAdjacency } from "../surface/adjacency.ts";
 import type { SurfacePoint } from "../surface/surface.ts";
 import type { Candidate } from "./candidate.ts";
 import { type Chain, findOnChain } from "./chain.ts";
 import { checkStrips } from "./checkStrips.ts";
+import { factorAt, NO_FACTORS, type WidthFactors } from "./comb.ts";
+import { type CrossPlan, layCrossSeams } from "./crossSeams.ts";
 import { cutStrips } from "./cutStrips.ts";
-import { describeChoice, layoutRegion, type RegionLayout } from "./layoutRegion.ts";
+import { describeChoice, layoutRegion, type RegionLayout, wayKey } from "./layoutRegion.ts";
 import { nameStrips } from "./nameStrips.ts";
+import { noteHugging, notePruned, noteSizes } from "./noteSeams.ts";
 import { openHoles } from "./openHoles.ts";
 import { findEdge, findInRegion, tracePairs } from "./pairs.ts";
 import { buildRegions, type Region, segmentKey } from "./region.ts";
@@ -24,14 +27,13 @@ export interface SeamOptions {
   usableWidth: number;
   /** m: greatest flat length of a strip; null: no limit. */
   maxLength: number | null;
-  /** By region ("region 1"): strips on top of the fewest that are thought to fit. */
-  moreStrips?: Record<string, number>;
-  /** By region: measured flat width over LayoutChoice.widths, strip by strip of an earlier run. */
-  widthFactors?: Record<string, number[]>;
+  /** By region ("region 1"): the way its strips must run and their number, in place of the fewest that fit. */
+  counts?: Record<string, { way: string; count: number }>;
+  /** By way (see wayKey): measured flat width over StripEstimate.width of an earlier run. */
+  widthFactors?: Record<string, WidthFactors>;
+  /** By way: measured flat length of its longest piece over what was thought. */
+  lengthFactors?: Record<string, number>;
 }
-
-/** Strips narrower than this are a caution, m. own: two weld overlaps of 40 mm and a hand between. */
-const NARROW = 0.15;
 
 function tagEnds(form: FoundForm, region: Region, candidate: Candidate): Map<number, 1 | 2> {
   const nV = form.surface.xyz.length / 3;
@@ -48,20 +50,39 @@ function tagEnds(form: FoundForm, region: Region, candidate: Candidate): Map<num
   return endOf;
 }
 
-/** Seam lines of a laid-out region with the strips to their left and right. */
-function listPaths(layout: RegionLayout, r: number): SeamPath[] {
+/** Panels before each strip of a region. */
+function countBefore(pieces: readonly number[]): number[] {
+  let sum = 0;
+  return pieces.map((n) => {
+    sum += n;
+    return sum - n;
+  });
+}
+
+/** Seam lines of a laid-out region with the panels to their left and right, seams along the strips first. */
+function listPaths(layout: RegionLayout, cross: CrossPlan, r: number): SeamPath[] {
   const { candidate, placement, region } = layout;
   const round = candidate.left === null;
   const n = placement.sizes.length;
+  const first = countBefore(cross.pieces);
   // With the outline run forward along the start, more u lies to the right of the way from start to finish.
   const rightIsNext = !candidate.start.reversed;
-  return placement.lines.flatMap((line, j) => {
+  const along = placement.lines.flatMap((line, j): SeamPath[] => {
     if (placement.hugging.includes(j)) return [];
-    const before = round ? (j + n - 1) % n : j;
-    const after = round ? j : j + 1;
+    const before = first[round ? (j + n - 1) % n : j];
+    const after = first[round ? j : j + 1];
     const [left, right] = rightIsNext ? [before, after] : [after, before];
     return [{ region: r, line, weld: `${region.id}, seam ${j + 1}`, left, right }];
   });
+  // A seam across runs the way of growing u: the finish lies to its left where the next strip lies to the right.
+  const across = cross.seams.map(({ line, strip, piece }): SeamPath => {
+    const near = first[strip] + piece;
+    const weld = `${region.id}, strip ${strip + 1}, seam across ${piece + 1}`;
+    return rightIsNext
+      ? { region: r, line, weld, left: near + 1, right: near, across: { left: 1, right: 2 } }
+      : { region: r, line, weld, left: near, right: near + 1, across: { left: 2, right: 1 } };
+  });
+  return [...along, ...across];
 }
 
 /** Form places that carry a seam's end already, as arc lengths on a candidate's ends. */
@@ -90,75 +111,16 @@ function checkNames(form: FoundForm, job: Job) {
     );
 }
 
-function noteHugging(layout: RegionLayout): Finding[] {
-  return layout.placement.hugging.map((j) => ({
-    code: "seam-hugs-edge",
-    level: "stop" as const,
-    station: "seams" as const,
-    where: [layout.region.id, `seam ${j + 1}`],
-    value: null,
-    limit: null,
-    text: `Seam ${j + 1} of ${layout.region.id} from ${layout.candidate.from} to ${layout.candidate.to} runs along the edge of the cloth or touches it between its ends; it was left out.`,
-    remedy: "Lay the strips between two other edges, ask for another count, or give the seams one by one.",
-    basis: "own argument",
-  }));
-}
-
-function noteSizes(layout: RegionLayout, panels: readonly string[], options: SeamOptions): Finding[] {
-  const findings: Finding[] = [];
-  const { sizes } = layout.placement;
-  if (sizes.length !== panels.length) return findings;
-  sizes.forEach((size, j) => {
-    const base = { station: "seams" as const, where: panels[j] };
-    if (options.maxLength !== null && size.length > options.maxLength)
-      findings.push({
-        ...base,
-        code: "strip-length",
-        level: "stop",
-        value: size.length,
-        limit: options.maxLength,
-        text: `${panels[j]} is about ${size.length.toFixed(2)} m long; the cloth gives ${options.maxLength.toFixed(2)} m.`,
-        remedy: "Lay the strips the other way, give a seam across (pairs), or take a longer roll.",
-        basis: "job: seams.maxLength or the roll's length",
-      });
-    if (size.width > options.usableWidth * 1.0005)
-      findings.push({
-        ...base,
-        code: "strip-width",
-        level: "caution",
-        value: size.width,
-        limit: options.usableWidth,
-        text: `${panels[j]} is about ${size.width.toFixed(3)} m wide before flattening; ${options.usableWidth.toFixed(3)} m can be used.`,
-        remedy: "Ask for more strips, or leave the count to the tool.",
-        basis: "estimate; the flat panel decides",
-      });
-    if (size.width < NARROW)
-      findings.push({
-        ...base,
-        code: "strip-narrow",
-        level: "caution",
-        value: size.width,
-        limit: NARROW,
-        text: `${panels[j]} is only about ${size.width.toFixed(3)} m wide.`,
-        remedy: "Ask for fewer strips or lay them between other edges.",
-        basis: "own argument: room for two weld overlaps",
-      });
+/** Strips of a region with their panels; none where seams fell out and the panels are others. */
+function listEstimates(layout: RegionLayout, cross: CrossPlan, panels: readonly string[]): StripEstimate[] {
+  const { sizes, shares, factors } = layout.placement;
+  const first = countBefore(cross.pieces);
+  if (panels.length !== cross.pieces.reduce((sum, n) => sum + n, 0)) return [];
+  return sizes.map((size, j) => {
+    const at = (shares[j] + shares[j + 1]) / 2;
+    const own = panels.slice(first[j], first[j] + cross.pieces[j]);
+    return { panels: own, at, width: size.width / factorAt(factors, at), length: size.length };
   });
-  return findings;
-}
-
-function notePruned(pruned: readonly string[]): Finding[] {
-  return pruned.map((id) => ({
-    code: "seam-cable-open",
-    level: "caution" as const,
-    station: "seams" as const,
-    where: id,
-    value: null,
-    limit: null,
-    text: `${id} ends inside the cloth and divides nothing: that part of it is no border between panels.`,
-    remedy: "Lead the cable on to an edge or another cable, or lay a seam along its line.",
-    basis: "own argument",
-  }));
 }
 
 /** The form with its regions, those of several rings opened by seams from ring to ring. */
@@ -169,6 +131,15 @@ function prepareRegions(found: FoundForm, job: Job) {
   if (!form) return { form: found, adjacency, ...parted };
   const after = buildAdjacency(form.surface);
   return { form, adjacency: after, ...buildRegions(form, after), pruned: parted.pruned };
+}
+
+/** Correction of a way; one that was never measured is taken to be like those of its region that were. */
+function findFactors(all: Record<string, WidthFactors>, region: string, way: string): WidthFactors {
+  if (all[way]) return all[way];
+  const known = Object.keys(all).filter((key) => key.startsWith(`${region}: `));
+  if (known.length === 0) return NO_FACTORS;
+  const factor = known.flatMap((key) => all[key].factor);
+  return { at: [0.5], factor: [factor.reduce((sum, f) => sum + f, 0) / factor.length] };
 }
 
 /** Lays out all regions one after another; seams that meet on one cable are drawn together. */
@@ -186,10 +157,10 @@ function layoutAll(
     const layout = layoutRegion(form, region, job, {
       usableWidth: options.usableWidth,
       maxLength: options.maxLength,
-      count: job.seams.count,
+      count: options.counts?.[region.id]?.count ?? job.seams.count,
       alone: regions.length === 1,
-      more: options.moreStrips?.[region.id] ?? 0,
-      factors: options.widthFactors?.[region.id] ?? [],
+      way: options.counts?.[region.id]?.way ?? null,
+      factorsOf: (way) => findFactors(options.widthFactors ?? {}, region.id, way),
       findMarks: (candidate) => findMarks(form, region, placed, candidate),
     });
     for (const line of layout.placement.lines)
@@ -219,8 +190,8 @@ function layoutPairs(form: FoundForm, job: Job, options: SeamOptions, regions: r
       maxLength: null,
       count: 1,
       alone: regions.length === 1,
-      more: 0,
-      factors: [],
+      way: null,
+      factorsOf: () => NO_FACTORS,
       findMarks: () => ({ start: [], finish: [] }),
     });
     return { region, strips: 1, endOf: tagEnds(form, region, one.candidate) };
@@ -254,24 +225,31 @@ export function runSeams(
   const given = job.seams.layout === "pairs" ? layoutPairs(form, job, options, regions) : null;
   const layouts = given ? [] : layoutAll(form, job, options, regions, context);
   findings.push(...(given?.findings ?? []), ...layouts.flatMap((l) => [...l.findings, ...noteHugging(l)]));
+  const crosses = layouts.map((layout) => {
+    const factor = options.lengthFactors?.[wayKey(layout.region.id, layout.candidate)] ?? 1;
+    return layCrossSeams(layout, options.maxLength === null ? null : options.maxLength / factor);
+  });
   const plans: RegionPlan[] =
     given?.plans ??
-    layouts.map((layout) => ({
+    layouts.map((layout, r) => ({
       region: layout.region,
-      strips: layout.placement.hugging.length > 0 ? null : layout.placement.sizes.length,
+      strips: layout.placement.hugging.length > 0 ? null : crosses[r].pieces.reduce((sum, n) => sum + n, 0),
       endOf: tagEnds(form, layout.region, layout.candidate),
     }));
-  const paths = given?.paths ?? layouts.flatMap(listPaths);
+  const paths = given?.paths ?? layouts.flatMap((layout, r) => listPaths(layout, crosses[r], r));
   context.onProgress?.(regions.length / (regions.length + 1), "cutting");
   const cut = cutStrips(form, adjacency, labels, plans, paths);
   const named = nameStrips(form, job, plans, cut);
   findings.push(...cut.findings, ...named.findings);
-  layouts.forEach((layout, r) => {
-    findings.push(...noteSizes(layout, named.byRegion[r], options));
+  const estimates = layouts.flatMap((layout, r): LayoutEstimate[] => {
+    const strips = listEstimates(layout, crosses[r], named.byRegion[r]);
+    findings.push(...noteSizes(strips, layout.placement.sizes, options));
+    if (strips.length === 0) return [];
+    return [{ region: layout.region.id, way: wayKey(layout.region.id, layout.candidate), strips }];
   });
   const choices = plans.map((plan, r): LayoutChoice => {
     const panels = named.byRegion[r];
-    if (layouts[r]) return describeChoice(layouts[r], panels);
+    if (layouts[r]) return describeChoice(layouts[r], panels, crosses[r].pieces);
     return {
       region: plan.region.id,
       panels,
@@ -283,7 +261,7 @@ export function runSeams(
       widths: [],
     };
   });
-  const output: StripLayout = { surface: cut.surface, seams: named.seams, strips: named.strips, choices };
+  const output: StripLayout = { surface: cut.surface, seams: named.seams, strips: named.strips, choices, estimates };
   const checks: Check[] = checkStrips(found, output);
   const broken = checks.filter((check) => !check.holds);
   for (const check of broken)

@@ -9,16 +9,18 @@ export interface SeamPath {
   line: SeamLine;
   /** Lines of one continuous weld share it. */
   weld: string;
-  /** Strips of its region to the left and to the right of its way, in the region's order; -1 where that is not known beforehand. */
+  /** Panels of its region to the left and to the right of its way, in the region's order; -1 where that is not known beforehand. */
   left: number;
   right: number;
+  /** A seam across: the end (1 from, 2 to) that it is to the panel on its left and on its right. */
+  across?: { left: 1 | 2; right: 1 | 2 };
 }
 
 /** A region and its outline's part in its strips. */
 export interface RegionPlan {
   region: Region;
-  /** Strips expected, or null where the seams were given one by one. */
+  /** Panels expected, or null where the seams were given one by one. */
   strips: number | null;
-  /** End of the strip (1 from, 2 to) of each outline segment, by directed form key; others are flanks. */
+  /** End of the panel (1 from, 2 to) of each outline segment, by directed form key; others are flanks. */
   endOf: Map<number, 1 | 2>;
 }

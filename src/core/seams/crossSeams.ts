@@ -1,0 +1,137 @@
+// Seams across strips that are longer than the cloth: each runs from one flank of its strip to the other at one share of both,
+// ends on crossings that the flank has anyway, and keeps off its neighbours' where there is room. Not here: cutting. Source: own.
+import { measureDistance, pointAt } from "../surface/measures.ts";
+import type { Surface, SurfacePoint } from "../surface/surface.ts";
+import type { Chain } from "./chain.ts";
+import type { RegionLayout } from "./layoutRegion.ts";
+import { type SeamLine, traceSeam } from "./seamLine.ts";
+
+/** A seam across one strip. */
+export interface CrossSeam {
+  /** From the flank before the strip to the one after it. */
+  line: SeamLine;
+  /** Strip (index) of its region. */
+  strip: number;
+  /** Pieces before it, counted from the start. */
+  piece: number;
+}
+
+/** Seams across of a region. */
+export interface CrossPlan {
+  seams: CrossSeam[];
+  /** Pieces of each strip. */
+  pieces: number[];
+}
+
+/** Neighbours' seams across keep this distance where the cloth allows, m. own: no place where four cloths meet lies within a weld's reach. */
+const STAGGER = 0.6;
+/** Below this distance they are led to one point instead, m. own: a shorter piece of seam cannot be welded by itself. */
+const TOGETHER = 0.15;
+/** A flank may end a seam only this share of a mesh side away from a vertex, or in it. */
+const KEEP_OFF = 0.05;
+
+/** A flank of strips: places with arc lengths. */
+interface Flank {
+  points: readonly SurfacePoint[];
+  arc: number[];
+  /** Arc lengths of seams that end on it already. */
+  taken: number[];
+}
+
+function buildFlank(surface: Surface, points: readonly SurfacePoint[]): Flank {
+  const arc = [0];
+  for (let i = 1; i < points.length; i++)
+    arc.push(arc[i - 1] + measureDistance(pointAt(surface, points[i - 1]), pointAt(surface, points[i])));
+  return { points, arc, taken: [] };
+}
+
+function chainPoints(chain: Chain): SurfacePoint[] {
+  return chain.vertices.map((v) => ({ a: v, b: v, t: 0 }));
+}
+
+/** Flanks of a region's strips in order; round a ring the first stands again at the end. */
+function listFlanks(layout: RegionLayout): Flank[] {
+  const { region, candidate, placement } = layout;
+  const lines = placement.lines.map((line) => buildFlank(region.surface, line.points));
+  if (!candidate.left || !candidate.right) return [...lines, lines[0]];
+  const rim = (chain: Chain) => buildFlank(region.surface, chainPoints(chain));
+  return [rim(candidate.left), ...lines, rim(candidate.right)];
+}
+
+/** The flank's own place nearest to arc length s that may end a seam; -1 where it has none between its ends. */
+function findPlace(flank: Flank, s: number): number {
+  const { points, arc, taken } = flank;
+  const goal = taken.find((t) => Math.abs(t - s) < TOGETHER) ?? s;
+  let best = -1;
+  for (let i = 1; i < points.length - 1; i++) {
+    const { a, b, t } = points[i];
+    if (a !== b && (t < KEEP_OFF || t > 1 - KEEP_OFF)) continue;
+    if (best < 0 || Math.abs(arc[i] - goal) < Math.abs(arc[best] - goal)) best = i;
+  }
+  return best;
+}
+
+/** Arc length of a share of a flank; a flank of one point has only that. */
+function endOn(flank: Flank, share: number): { point: SurfacePoint; at: number } | null {
+  if (flank.points.length === 1) return { point: flank.points[0], at: 0 };
+  const i = findPlace(flank, share * flank.arc[flank.arc.length - 1]);
+  return i < 0 ? null : { point: flank.points[i], at: flank.arc[i] };
+}
+
+/** Shares at which a strip of this length is parted into n pieces no longer than most, moved by `shift` m. */
+function shareOut(length: number, n: number, shift: number): number[] {
+  return Array.from({ length: n - 1 }, (_, k) => (k + 1) / n + shift / length);
+}
+
+/** Seams of one strip, or null where one would leave it. */
+function crossStrip(
+  layout: RegionLayout,
+  flanks: Flank[],
+  strip: number,
+  shares: readonly number[],
+): CrossSeam[] | null {
+  const [before, after] = [flanks[strip], flanks[strip + 1]];
+  const seams: CrossSeam[] = [];
+  const ends: [number, number][] = [];
+  for (const [k, share] of shares.entries()) {
+    const p = endOn(before, share);
+    const q = endOn(after, share);
+    if (!p || !q) return null;
+    const last = ends[ends.length - 1];
+    if (last && (p.at <= last[0] || q.at <= last[1])) return null;
+    const line = traceSeam(layout.region, p.point, q.point);
+    if (!line.clear) return null;
+    ends.push([p.at, q.at]);
+    seams.push({ line, strip, piece: k });
+  }
+  for (const [p, q] of ends) {
+    before.taken.push(p);
+    after.taken.push(q);
+  }
+  return seams;
+}
+
+/**
+ * Seams across for all strips of a region that are longer than `maxLength`, each strip in the fewest pieces.
+ * A strip that cannot be parted so is left whole.
+ * @units m
+ */
+export function layCrossSeams(layout: RegionLayout, maxLength: number | null): CrossPlan {
+  const { sizes, hugging } = layout.placement;
+  const plan: CrossPlan = { seams: [], pieces: sizes.map(() => 1) };
+  if (maxLength === null || hugging.length > 0 || sizes.every((size) => size.length <= maxLength)) return plan;
+  const flanks = listFlanks(layout);
+  sizes.forEach((size, j) => {
+    if (size.length <= maxLength) return;
+    const n = Math.ceil(size.length / maxLength - 1e-9);
+    const room = maxLength - size.length / n;
+    const shift = room < TOGETHER ? 0 : ((j % 2 === 0 ? 1 : -1) * Math.min(STAGGER, room)) / 2;
+    const seams =
+      crossStrip(layout, flanks, j, shareOut(size.length, n, shift)) ??
+      crossStrip(layout, flanks, j, shareOut(size.length, n, 0));
+    if (!seams) return;
+    plan.seams.push(...seams);
+    plan.pieces[j] = n;
+  });
+  return plan;
+}
