@@ -69,6 +69,9 @@ const COLLAPSED = { height: 2e-3, share: 0.05 };
 /** Passes without a smaller residual after which the steps do not shrink. */
 const PATIENCE = 80;
 
+/** A step under unequal stress far from balance is shortened when it leaves the form this much further out. */
+const STRAYED = 2;
+
 /** Halvings of a step that gains energy. */
 const HALVINGS = 8;
 
@@ -77,7 +80,7 @@ const OVERSHOT = 0.5;
 const DAMPING = 0.7;
 const LEAST_SHARE = 0.3;
 
-/** A form that is this near at the last pass and still coming nearer is slow, not lost. */
+/** A form that is this near when the passes end is slow, not lost. */
 const SLOW = 1e-3;
 
 interface Iteration extends SettleInput {
@@ -217,10 +220,28 @@ function dampInPlace(it: Iteration, kept: Float64Array<ArrayBuffer>): void {
   if (turned > OVERSHOT * square) it.share = Math.max(LEAST_SHARE, DAMPING * it.share);
 }
 
-/** Next state while far from balance: all of every vertex moves. */
+/**
+ * Next state while far from balance: all of every vertex moves. Where the stress is unequal it shapes the form, and the equal
+ * one spreads the vertices within it: unequal stress would drive them along without end.
+ */
 function takeFarStep(it: Iteration, now: Surface): Surface {
-  const to = stepForceDensity(it.system, now, measureState(it, now, true));
-  return shortenStep(now, { xyz: to, tri: now.tri }, 1, gains(it, now));
+  const even = measureState(it, now, true);
+  if (it.even) {
+    const to = stepForceDensity(it.system, now, even);
+    return shortenStep(now, { xyz: to, tri: now.tri }, 1, gains(it, now));
+  }
+  const { fixed, cables, system } = it;
+  const unequal = measureState(it, now, false);
+  const { force: spread } = measureSettleBalance(now, fixed, cables, system.lines, even);
+  const { force, keepInPlace } = measureSettleBalance(now, fixed, cables, system.lines, unequal);
+  const load = spread.map((f, i) => f - force[i]);
+  const across = load.slice();
+  const kept = force.slice();
+  keepInPlace(across);
+  keepInPlace(kept);
+  for (let i = 0; i < load.length; i++) load[i] -= across[i];
+  const to = stepForceDensity(system, now, unequal, load);
+  return shortenStep(now, { xyz: to, tri: now.tri }, 1, strays(it, kept, STRAYED));
 }
 
 /** Next state near balance: forces within the surface and along cables are held by the opposite load. */
@@ -234,7 +255,19 @@ function takeNearStep(it: Iteration, now: Surface): Surface {
   const move = stepForceDensity(it.system, now, densities, load).map((value, i) => value - now.xyz[i]);
   balance.keepInPlace(move);
   const to = { xyz: now.xyz.map((value, i) => value + move[i]), tri: now.tri };
-  return shortenStep(now, to, it.share, it.even ? gains(it, now) : () => false);
+  return shortenStep(now, to, it.share, it.even ? gains(it, now) : strays(it, kept, 1));
+}
+
+/** Whether a state is `times` further out of balance than the one before. */
+function strays(it: Iteration, before: Float64Array<ArrayBuffer>, times: number): (next: Surface) => boolean {
+  const size = (f: Float64Array<ArrayBuffer>) => f.reduce((s, c) => s + c * c, 0);
+  const bound = times * times * size(before);
+  return (next) => {
+    const balance = measureSettleBalance(next, it.fixed, it.cables, it.system.lines, measureState(it, next, it.even));
+    const kept = balance.force.slice();
+    balance.keepInPlace(kept);
+    return size(kept) > bound;
+  };
 }
 
 /** Whether a state has more energy than the one before, beyond rounding. */
@@ -264,12 +297,11 @@ export function settleForm(input: SettleInput, options: SettleOptions, context: 
   const it = buildIteration(input);
   const { surface: first, fixed } = input;
   const limit = (options.tolerance * measureMeanSide(first)) / measureDiagonal(first);
-  const measure = (s: Surface, even: boolean) =>
-    measureSettleBalance(s, fixed, it.cables, it.system.lines, measureState(it, s, even));
+  const measure = (s: Surface) =>
+    measureSettleBalance(s, fixed, it.cables, it.system.lines, measureState(it, s, it.even));
   let state = first;
-  let balance = measure(state, it.even);
+  let balance = measure(state);
   const start = balance.across;
-  // an unequal stress has no say before the form is near the equal one
   let near = start < NEAR;
   let shapes = measureShapes(state);
   let best = start;
@@ -281,23 +313,19 @@ export function settleForm(input: SettleInput, options: SettleOptions, context: 
   try {
     while (balance.across > limit) {
       if (context.cancelled?.()) throw new PlanError("cancelled", "settling was stopped", "form");
-      if (passes === options.maxPasses) return finish(balance.across < SLOW && since < 5 ? "slow" : "stalled");
+      if (passes === options.maxPasses) return finish(balance.across < SLOW ? "slow" : "stalled");
       if (passes === 0 && start > FOLDED) {
         state = spreadFolds(it, state);
         shapes = measureShapes(state);
       } else state = near ? takeNearStep(it, state) : takeFarStep(it, state);
       passes++;
       const collapse = findCollapse(state, shapes);
-      balance = measure(state, it.even || !near);
+      balance = measure(state);
       if (collapse >= 0) return finish("collapsed", collapse);
       since = balance.across < best ? 0 : since + 1;
       best = Math.min(best, balance.across);
-      if (since === PATIENCE) return finish("stalled");
-      if (!near && balance.across < NEAR) {
-        near = true;
-        if (!it.even) balance = measure(state, false);
-        best = balance.across;
-      }
+      if (since === PATIENCE) return finish(balance.across < SLOW ? "slow" : "stalled");
+      near ||= balance.across < NEAR;
       context.onProgress?.(Math.min(1, passes / options.maxPasses), `settling, pass ${passes}`);
     }
   } catch (error) {

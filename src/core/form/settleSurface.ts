@@ -196,7 +196,7 @@ export function settleSurface(
         where: "settle",
         value: settled.residual,
         limit: settled.limit,
-        text: `settling came to ${percent(settled.residual)} of the cloth's force in ${settled.passes} passes and was still coming nearer; the form is soft, near one that does not exist`,
+        text: `settling came to ${percent(settled.residual)} of the cloth's force in ${settled.passes} passes and not to the limit; the form is soft, near one that does not exist`,
         remedy: "settle the form once more from here, or give it more force or a larger ring",
       }),
     );
