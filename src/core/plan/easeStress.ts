@@ -113,16 +113,25 @@ function advanceInPlace(state: RegionState): number {
   return state.chosen;
 }
 
-/** Lays regions out of bounds in narrower strips, and says what was done and tried. */
-export function easeStress(base: Fitted, options: SeamOptions, runBoth: RunBoth): Fitted {
+/** Strips made narrower, what was asked of the seams station for them, and the words on it for the findings. */
+export interface Eased {
+  fitted: Fitted;
+  options: SeamOptions;
+  tell: (fitted: Fitted) => Fitted;
+}
+
+/** Lays regions out of bounds in narrower strips. */
+export function easeStress(base: Fitted, options: SeamOptions, runBoth: RunBoth): Eased {
   const states = openStates(base);
-  if (states.length === 0) return base;
+  if (states.length === 0) return { fitted: base, options, tell: (f) => f };
   let fitted = base;
+  let asked = options;
   let made = states.map((s) => s.tries[0].count).join();
   const runWith = (counts: readonly number[]) => {
     if (counts.join() === made) return;
     const forced = Object.fromEntries(states.map((s, i) => [s.region, { way: s.way, count: counts[i] }]));
-    fitted = runBoth({ ...options, counts: forced });
+    asked = { ...options, counts: forced };
+    fitted = runBoth(asked);
     made = counts.join();
   };
   for (let round = 0; round < ROUNDS && states.some((s) => s.chosen === null); round++) {
@@ -148,14 +157,16 @@ export function easeStress(base: Fitted, options: SeamOptions, runBoth: RunBoth)
   final.forEach((count, i) => {
     if (!Number.isFinite(count)) final[i] = states[i].tries[0].count;
   });
-  if (final.every((count, i) => count === states[i].tries[0].count)) fitted = base;
-  else runWith(final);
-  return tellStress(fitted, states, final);
+  if (final.every((count, i) => count === states[i].tries[0].count)) {
+    fitted = base;
+    asked = options;
+  } else runWith(final);
+  return { fitted, options: asked, tell: (f) => tellStress(f, states, final) };
 }
 
 /** The result with a word on every region that was tried in narrower strips. */
 function tellStress(fitted: Fitted, states: readonly RegionState[], final: readonly number[]): Fitted {
-  const percent = (error: number) => `${(100 * MOST_RMS * error).toFixed(0)} %`;
+  const percent = (error: number) => `${(100 * MOST_RMS * error).toFixed(1).replace(/\.0$/, "")} %`;
   const { seams } = fitted;
   const findings = [...seams.findings];
   const words = new Map<string, string>();

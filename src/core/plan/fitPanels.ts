@@ -9,7 +9,7 @@ import type { Job } from "../records/job.ts";
 import type { LayoutEstimate } from "../records/stripLayout.ts";
 import { runSeams, type SeamOptions } from "../seams/runSeams.ts";
 import { type ClothRoom, firstOptions, isTurned, measureExtent, measureRoom } from "./clothRoom.ts";
-import { easeStress } from "./easeStress.ts";
+import { easeStress, measureStressExcess } from "./easeStress.ts";
 import type { Fitted, RunBoth } from "./fitted.ts";
 
 /** Layouts tried for the sake of the width before the best one stands. */
@@ -138,6 +138,20 @@ export function fitPanels(form: FoundForm, job: Job, context: FitContext): Fitte
     const panels = runPanels(seams.output, form, job, context.panels);
     return { seams, panels };
   };
-  const { fitted, options } = fitWidths(runBoth, measureRoom(job), job.allowances.seam / 1000);
-  return job.seams.count === "auto" ? easeStress(fitted, options, runBoth) : fitted;
+  const room = measureRoom(job);
+  const lap = job.allowances.seam / 1000;
+  const { fitted, options } = fitWidths(runBoth, room, lap);
+  if (job.seams.count !== "auto") return fitted;
+  const eased = easeStress(fitted, options, runBoth);
+  if (eased.fitted === fitted || judge(eased.fitted, room).spread <= ALIKE) return eased.tell(eased.fitted);
+  const again = runBoth(correct(eased.options, eased.fitted, lap, () => 1));
+  const better =
+    isBetter(judge(again, room), judge(eased.fitted, room)) &&
+    worstStress(again) <= Math.max(1, worstStress(eased.fitted));
+  return eased.tell(better ? again : eased.fitted);
+}
+
+/** Stress error of the worst panel over what is let pass. */
+function worstStress(fitted: Fitted): number {
+  return Math.max(0, ...fitted.panels.output.map(measureStressExcess));
 }
