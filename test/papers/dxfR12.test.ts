@@ -1,5 +1,5 @@
 import { spawnSync } from "node:child_process";
-import { existsSync, mkdtempSync, writeFileSync } from "node:fs";
+import { mkdtempSync, writeFileSync } from "node:fs";
 import { tmpdir } from "node:os";
 import { join } from "node:path";
 import DxfParser from "dxf-parser";
@@ -7,41 +7,9 @@ import { describe, expect, test } from "vitest";
 import { addLabelInPlace, addStrokeInPlace, emptyDrawing } from "../../src/core/papers/drawing.ts";
 import { writeDxfR12 } from "../../src/core/papers/dxfR12.ts";
 import { rollDrawing } from "../../src/core/papers/rollDrawing.ts";
-import type { Facts, Vec2 } from "../../src/core/records/facts.ts";
-import { entitiesOf, readTags } from "./readDxf.ts";
+import type { Vec2 } from "../../src/core/records/facts.ts";
+import { apart, entitiesOf, hasEzdxf, PYTHON, placedCuts, readTags } from "./readDxf.ts";
 import { HOSTILE, sampleFacts } from "./sampleFacts.ts";
-
-const PYTHON = "/usr/bin/python3";
-const hasEzdxf = existsSync(PYTHON) && spawnSync(PYTHON, ["-c", "import ezdxf"]).status === 0;
-
-function placedCuts(facts: Facts, roll: number): Vec2[][] {
-  return facts.rolls![roll]!.placements.map((p) => {
-    const cut = facts.panels!.find((q) => q.id === p.panel)?.cut ?? facts.pieces!.find((q) => q.id === p.panel)!.cut;
-    const s = p.rotation === 180 ? -1 : 1;
-    return cut.map(([x, y]): Vec2 => [p.x + s * x, p.y + s * y]);
-  });
-}
-
-/** Greatest distance from each point of a to the closed outline b, and back. */
-function apart(a: Vec2[], b: Vec2[]): number {
-  const oneWay = (from: Vec2[], to: Vec2[]) =>
-    Math.max(
-      ...from.map((p) =>
-        Math.min(
-          ...to.map((q, i) => {
-            const r = to[(i + 1) % to.length]!;
-            const l2 = (r[0] - q[0]) ** 2 + (r[1] - q[1]) ** 2;
-            const t =
-              l2 === 0
-                ? 0
-                : Math.min(1, Math.max(0, ((p[0] - q[0]) * (r[0] - q[0]) + (p[1] - q[1]) * (r[1] - q[1])) / l2));
-            return Math.hypot(p[0] - q[0] - t * (r[0] - q[0]), p[1] - q[1] - t * (r[1] - q[1]));
-          }),
-        ),
-      ),
-    );
-  return Math.max(oneWay(a, b), oneWay(b, a));
-}
 
 describe("a roll as DXF R12", () => {
   for (const [title, options] of [

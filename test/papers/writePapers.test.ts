@@ -26,7 +26,14 @@ const SETS: Record<string, () => Facts> = {
   "crowded, Tabloid": () => ({ ...full(), job: { ...crowded().job, sheet: "Tabloid" } }),
 };
 
-const PDFS = ["panel-cards.pdf", "findings.pdf", "cables.pdf", "tensioning-schedule.pdf"];
+const PDFS = [
+  "panel-cards.pdf",
+  "roll-sheets.pdf",
+  "cables.pdf",
+  "tensioning-schedule.pdf",
+  "findings.pdf",
+  "index.pdf",
+];
 
 /** facts.md: an open stop stamps all but the findings; the rig's papers are stamped too while anything is a default. */
 function stamped(facts: Facts, name: string): boolean {
@@ -43,7 +50,7 @@ describe("writePapers", () => {
       const second = await papersOf(make());
       expect([...second.keys()]).toEqual([...first.keys()]);
       for (const [path, bytes] of first) {
-        expect(path).toMatch(/^([a-z]+\/)?[A-Za-z0-9][A-Za-z0-9._-]*$/);
+        expect(path).toMatch(/^([a-z]+\/(dxf2000\/)?)?[A-Za-z0-9][A-Za-z0-9._-]*$/);
         expect(Buffer.compare(bytes, second.get(path)!), path).toBe(0);
       }
     }
@@ -51,9 +58,9 @@ describe("writePapers", () => {
     const made = await shared(plain);
     expect([...made.keys()].sort()).toEqual(
       [
-        ...["R1", "R2"].flatMap((r) => [`rolls/${r}.dxf`, `rolls/${r}.svg`]),
-        ...["P1", "P2", "P3"].flatMap((p) => [`panels/${p}.dxf`, `panels/${p}.svg`]),
-        ...["rolls.csv", "panels.csv", "seams.csv", "panel-cards.pdf", "findings.pdf"],
+        ...["R1", "R2"].flatMap((r) => [`rolls/${r}.dxf`, `rolls/${r}.svg`, `rolls/dxf2000/${r}.dxf`]),
+        ...["P1", "P2", "P3"].flatMap((p) => [`panels/${p}.dxf`, `panels/${p}.svg`, `panels/dxf2000/${p}.dxf`]),
+        ...["rolls.csv", "panels.csv", "seams.csv", "roll-sheets.pdf", "panel-cards.pdf", "findings.pdf", "index.pdf"],
         ...rig,
       ].sort(),
     );
@@ -61,7 +68,10 @@ describe("writePapers", () => {
 
   test("a plan that stopped early still gets its findings sheets", async () => {
     const { format, version, job, fabrics, checks, findings } = sampleFacts();
-    expect([...(await papersOf({ format, version, job, fabrics, checks, findings })).keys()]).toEqual(["findings.pdf"]);
+    expect([...(await papersOf({ format, version, job, fabrics, checks, findings })).keys()]).toEqual([
+      "findings.pdf",
+      "index.pdf",
+    ]);
     const { rolls: _, pieces: __, ...noRolls } = sampleFacts();
     // Clamped all round: no cables and no adjusters, so no paper of a rig.
     const names = [...(await papersOf(noRolls)).keys()];

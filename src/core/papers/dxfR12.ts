@@ -1,49 +1,23 @@
 // Cut files as DXF R12: the oldest dialect in use, read by every table. Closed POLYLINE with the flag instead of a repeated
 // point, TEXT, four layers; no handles, no unit field (R12 has none: hence the bar in the drawing). ASCII only.
 // Source: published DXF reference, HEADER, TABLES, POLYLINE, VERTEX, TEXT pages; what R12 allows: check-values 8.1.
-import { decimal } from "./decimal.ts";
-import { type Drawing, extents, LAYER_NAMES, LAYERS, type Label, type Layer, type Stroke } from "./drawing.ts";
+import { type Drawing, LAYER_NAMES, LAYERS, type Label, type Stroke } from "./drawing.ts";
+import {
+  COLOURS,
+  dxfText,
+  joinTags,
+  type Tags,
+  tagInPlace as tag,
+  tagExtentsInPlace,
+  tagNumber,
+  tagPointInPlace as tagPoint,
+} from "./dxfTags.ts";
 
-const DECIMALS = 3;
 const STYLE = "STANDARD";
-/** R12 readers take 255 characters a line. */
-const LONGEST_TEXT = 250;
-/** Colour numbers of the standard index: 8 grey, 5 blue, 3 green, 1 red. */
-const COLOURS: Readonly<Record<Layer, number>> = { bed: 8, mark: 5, text: 3, cut: 1 };
-
-type Tags = string[];
-
-function tag(tags: Tags, ...pairs: (string | number)[]): void {
-  for (let i = 0; i < pairs.length; i += 2) tags.push(String(pairs[i]), String(pairs[i + 1]));
-}
-
-function tagPoint(tags: Tags, code: number, x: number, y: number): void {
-  tag(tags, code, decimal(x, DECIMALS), code + 10, decimal(y, DECIMALS), code + 20, decimal(0, DECIMALS));
-}
-
-/**
- * Text for a TEXT entity: beyond ASCII as \\U+XXXX, beyond the basic plane as "?"; the two sequences that readers take for
- * commands (%% and ^) broken up.
- */
-function dxfText(text: string): string {
-  let out = "";
-  for (const c of text.replace(/%%/g, "% %").replace(/\^/g, "^ ")) {
-    const code = c.codePointAt(0) ?? 0;
-    const ascii = code >= 0x20 && code < 0x7f;
-    const next = ascii ? c : code > 0xffff ? "?" : `\\U+${code.toString(16).toUpperCase().padStart(4, "0")}`;
-    if (out.length + next.length > LONGEST_TEXT) break;
-    out += next;
-  }
-  return out;
-}
 
 function tagHeader(tags: Tags, drawing: Drawing): void {
-  const { min, max } = extents(drawing);
   tag(tags, 0, "SECTION", 2, "HEADER", 9, "$ACADVER", 1, "AC1009", 9, "$DWGCODEPAGE", 3, "ANSI_1252");
-  tag(tags, 9, "$EXTMIN");
-  tagPoint(tags, 10, min[0], min[1]);
-  tag(tags, 9, "$EXTMAX");
-  tagPoint(tags, 10, max[0], max[1]);
+  tagExtentsInPlace(tags, drawing);
   tag(tags, 0, "ENDSEC");
 }
 
@@ -76,7 +50,7 @@ function tagStroke(tags: Tags, stroke: Stroke): void {
 function tagLabel(tags: Tags, label: Label): void {
   tag(tags, 0, "TEXT", 8, LAYER_NAMES[label.layer]);
   tagPoint(tags, 10, label.at[0], label.at[1]);
-  tag(tags, 40, decimal(label.height, DECIMALS), 1, dxfText(label.text), 50, decimal(label.rotation, DECIMALS));
+  tag(tags, 40, tagNumber(label.height), 1, dxfText(label.text), 50, tagNumber(label.rotation));
   tag(tags, 7, STYLE, 72, { start: 0, middle: 1, end: 2 }[label.anchor]);
   // 73 = 2: the second point is at half the height, whatever reader sets the text.
   tagPoint(tags, 11, label.at[0], label.at[1]);
@@ -94,5 +68,5 @@ export function writeDxfR12(drawing: Drawing): string {
     for (const l of drawing.labels) if (l.layer === layer) tagLabel(tags, l);
   }
   tag(tags, 0, "ENDSEC", 0, "EOF");
-  return `${tags.join("\r\n")}\r\n`;
+  return joinTags(tags);
 }

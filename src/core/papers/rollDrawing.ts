@@ -1,7 +1,6 @@
 // The drawing of one roll as it goes to the table: the bed with what must not be cut, every placed piece, and a bar that
 // shows in which unit the file was read. Also the drawing of one panel alone.
 
-import { PlanError } from "../problem.ts";
 import type { Facts, FactsPanel, Vec2 } from "../records/facts.ts";
 import type { NestedRoll } from "../records/roll.ts";
 import { AT_HOME, addPanelInPlace, addPieceInPlace } from "./clothDrawing.ts";
@@ -15,7 +14,7 @@ import {
   withoutRepeats,
 } from "./drawing.ts";
 import { boxOf } from "./flatGeometry.ts";
-import { plainText } from "./plainText.ts";
+import { placedInOrder } from "./placedCloth.ts";
 import { stampOf } from "./stamp.ts";
 import { addSymbolInPlace, scaleBar } from "./symbols.ts";
 
@@ -29,7 +28,7 @@ const STAMP_HEIGHT = 140;
  * of everything drawn is the outer corner of the cloth: x = 0, y = −selvedge.
  * @throws PlanError "papers-unknown-piece" for a placement of cloth that the facts do not hold
  */
-export function rollDrawing(facts: Facts, roll: NestedRoll): Drawing {
+export function rollDrawing(facts: Facts, roll: NestedRoll, words: readonly string[] = []): Drawing {
   const drawing = emptyDrawing(`Roll ${roll.id}`);
   const selvedge = (roll.width - roll.usableWidth) / 2;
   const end = Math.max(roll.used, 1);
@@ -46,18 +45,14 @@ export function rollDrawing(facts: Facts, roll: NestedRoll): Drawing {
     addLineInPlace(drawing, [flaw.x, far[1]], [far[0], flaw.y]);
     addNoteInPlace(drawing, "FLAW", [flaw.x, far[1] + 20], 20);
   }
-  // Work runs from the start of the roll to its end; ties by id, so that two runs of one job cut alike.
-  const order = roll.placements
-    .map((p) => ({ p, ...clothOf(facts, p.panel, roll.id) }))
-    .map((e) => ({ ...e, start: leastX(e.panel?.cut ?? e.piece?.cut ?? [], e.p.rotation) + e.p.x }))
-    .sort((a, b) => a.start - b.start || (a.p.panel < b.p.panel ? -1 : a.p.panel > b.p.panel ? 1 : 0));
-  for (const { p, panel, piece } of order) {
+  for (const { p, panel, piece } of placedInOrder(facts, roll)) {
     if (panel) addPanelInPlace(drawing, panel, p);
     else if (piece) addPieceInPlace(drawing, piece, p);
   }
   const notes = [
     `ROLL ${roll.id}  FABRIC ${roll.fabric}  BATCH ${roll.batch ?? "not given"}  OUTER FACE UP`,
     `WIDTH ${decimal(roll.width, 0)}  USABLE ${decimal(roll.usableWidth, 0)}  USED LENGTH ${decimal(roll.used, 0)}  PIECES ${roll.placements.length}`,
+    ...words,
   ];
   addNotesInPlace(drawing, facts, notes, [0, roll.width - selvedge + 100]);
   return withoutRepeats(drawing);
@@ -73,24 +68,6 @@ export function panelDrawing(facts: Facts, panel: FactsPanel): Drawing {
   ];
   addNotesInPlace(drawing, facts, notes, [box.min[0], box.max[1] + 100]);
   return withoutRepeats(drawing);
-}
-
-function clothOf(facts: Facts, id: string, roll: string) {
-  const panel = facts.panels?.find((p) => p.id === id);
-  const piece = facts.pieces?.find((p) => p.id === id);
-  if (!panel && !piece) {
-    throw new PlanError(
-      "papers-unknown-piece",
-      `Roll ${plainText(roll)} places ${plainText(id)}, but the plan holds no panel or piece of that name. Nest the job again.`,
-      [roll, id],
-    );
-  }
-  return { panel, piece };
-}
-
-function leastX(cut: readonly Vec2[], rotation: 0 | 180): number {
-  const box = boxOf(cut);
-  return rotation === 180 ? -box.max[0] : box.min[0];
 }
 
 function addLineInPlace(drawing: Drawing, a: Vec2, b: Vec2): void {

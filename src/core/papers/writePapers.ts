@@ -1,10 +1,14 @@
-// Every paper of a plan, from its facts alone: cut files for each roll and panel, lists, panel cards, findings. Reads no clock, no
-// file, no network; the fonts are handed in. The PDF library is loaded only when a paper is really written.
+// Every paper of a plan, from its facts alone: cut files for each roll and panel, lists, cards, papers of the rig, findings, an
+// index, all in one zip where asked. Reads no clock, no file, no network; the fonts are handed in. PDF and zip libraries are loaded
+// only when such a paper is really written.
 import type { Facts } from "../records/facts.ts";
+import { DEFAULT_PAPERS, type PaperChoice } from "./choosePapers.ts";
 import type { Drawing } from "./drawing.ts";
+import { writeDxf2000 } from "./dxf2000.ts";
 import { writeDxfR12 } from "./dxfR12.ts";
 import { fileNames } from "./fileNames.ts";
 import type { FontFiles } from "./pdf/book.ts";
+import { tableBites } from "./placedCloth.ts";
 import { rigFacts } from "./rigReadings.ts";
 import { cableTable, hardwareTable, moveTable } from "./rigTables.ts";
 import { panelDrawing, rollDrawing } from "./rollDrawing.ts";
@@ -17,65 +21,103 @@ export interface PaperFile {
   bytes: Uint8Array;
 }
 
-function cutFiles(folder: string, ids: readonly string[], drawingOf: (i: number) => Drawing): [string, string][] {
-  return fileNames(ids).flatMap((name, i): [string, string][] => {
+type Wants = (choice: PaperChoice) => boolean;
+
+/** A cut file in every dialect that is wanted. */
+function cutFiles(
+  folder: string,
+  ids: readonly string[],
+  drawingOf: (i: number) => Drawing,
+  wants: Wants,
+): PaperFile[] {
+  if (!wants("cut-files") && !wants("dxf2000")) return [];
+  const encoder = new TextEncoder();
+  return fileNames(ids).flatMap((name, i) => {
     const drawing = drawingOf(i);
-    return [
-      [`${folder}/${name}.dxf`, writeDxfR12(drawing)],
-      [`${folder}/${name}.svg`, writeSvg(drawing)],
-    ];
+    const texts: [string, string][] = [];
+    if (wants("cut-files")) {
+      texts.push([`${folder}/${name}.dxf`, writeDxfR12(drawing)], [`${folder}/${name}.svg`, writeSvg(drawing)]);
+    }
+    if (wants("dxf2000")) texts.push([`${folder}/dxf2000/${name}.dxf`, writeDxf2000(drawing)]);
+    return texts.map(([path, text]): PaperFile => ({ path, bytes: encoder.encode(text) }));
   });
 }
 
+function allCutFiles(facts: Facts, wants: Wants): PaperFile[] {
+  const rolls = facts.rolls ?? [];
+  const panels = facts.panels ?? [];
+  const bites = rolls.flatMap((roll) => tableBites(facts, roll).map((b, k) => ({ ...b, id: `${roll.id}-${k + 1}` })));
+  const ids = (list: readonly { id: string }[]) => list.map((e) => e.id);
+  return [
+    ...cutFiles("rolls", ids(rolls), (i) => rollDrawing(facts, rolls[i]), wants),
+    ...cutFiles("bites", ids(bites), (i) => rollDrawing(facts, bites[i].roll, bites[i].words), wants),
+    ...cutFiles("panels", ids(panels), (i) => panelDrawing(facts, panels[i]), wants),
+  ];
+}
+
+function lists(facts: Facts): PaperFile[] {
+  const texts: [string, string][] = [];
+  const rig = rigFacts(facts);
+  if (facts.rolls) texts.push(["rolls.csv", rollTable(facts)]);
+  if (facts.panels) texts.push(["panels.csv", panelTable(facts)]);
+  if (facts.seams) texts.push(["seams.csv", seamTable(facts)]);
+  if ((facts.cables ?? []).length > 0) texts.push(["cables.csv", cableTable(facts)]);
+  if (rig) texts.push(["tensioning.csv", moveTable(rig)], ["hardware.csv", hardwareTable(rig)]);
+  const encoder = new TextEncoder();
+  return texts.map(([path, text]) => ({ path, bytes: encoder.encode(text) }));
+}
+
+async function sheets(facts: Facts, fonts: FontFiles, wants: Wants): Promise<PaperFile[]> {
+  const files: PaperFile[] = [];
+  const rig = rigFacts(facts);
+  if (wants("roll-sheets") && (facts.rolls ?? []).length > 0) {
+    const { writeRollSheets } = await import("./pdf/rollSheets.ts");
+    files.push({ path: "roll-sheets.pdf", bytes: await writeRollSheets(facts, fonts) });
+  }
+  if (wants("panel-cards") && (facts.panels ?? []).length > 0) {
+    const { writePanelCards } = await import("./pdf/panelCards.ts");
+    files.push({ path: "panel-cards.pdf", bytes: await writePanelCards(facts, fonts) });
+  }
+  if (wants("rig") && ((facts.cables ?? []).length > 0 || rig)) {
+    const { writeCableSheets } = await import("./pdf/cableSheets.ts");
+    files.push({ path: "cables.pdf", bytes: await writeCableSheets(facts, fonts) });
+  }
+  if (wants("rig") && rig) {
+    const { writeTensioningSchedule } = await import("./pdf/tensioningSchedule.ts");
+    files.push({ path: "tensioning-schedule.pdf", bytes: await writeTensioningSchedule(rig, fonts) });
+  }
+  if (wants("findings")) {
+    const { writeFindingSheets } = await import("./pdf/findingSheets.ts");
+    files.push({ path: "findings.pdf", bytes: await writeFindingSheets(facts, fonts) });
+  }
+  return files;
+}
+
 /**
- * The papers that the facts allow: a plan that stopped early still gets its findings sheets, a plan without rolls its panels.
- * Equal facts give equal bytes. facts.json itself is the caller's.
+ * The papers that are asked for and that the facts allow: a plan that stopped early still gets its findings sheets, a plan without
+ * rolls its panels, one clamped all round no paper of a rig. Equal facts give equal bytes. facts.json itself is the caller's.
  * @throws PlanError papers-number, papers-outline: the facts hold what cannot be drawn; papers-unknown-piece: a roll places
  *   cloth that is not there
  */
-export async function writePapers(facts: Facts, options: { fonts: FontFiles }): Promise<{ files: PaperFile[] }> {
-  const texts: [string, string][] = [];
-  const { rolls, panels, seams } = facts;
-  if (rolls) {
-    texts.push(
-      ...cutFiles(
-        "rolls",
-        rolls.map((r) => r.id),
-        (i) => rollDrawing(facts, rolls[i]),
-      ),
-    );
-    texts.push(["rolls.csv", rollTable(facts)]);
+export async function writePapers(
+  facts: Facts,
+  options: { fonts: FontFiles; papers?: readonly PaperChoice[] },
+): Promise<{ files: PaperFile[] }> {
+  const chosen = new Set(options.papers ?? DEFAULT_PAPERS);
+  const wants: Wants = (choice) => chosen.has(choice);
+  const files = [
+    ...allCutFiles(facts, wants),
+    ...(wants("lists") ? lists(facts) : []),
+    ...(await sheets(facts, options.fonts, wants)),
+  ];
+  if (wants("index")) {
+    const { writeIndexSheet } = await import("./pdf/indexSheet.ts");
+    const paths = files.map((f) => f.path);
+    files.push({ path: "index.pdf", bytes: await writeIndexSheet(facts, options.fonts, paths) });
   }
-  if (panels) {
-    texts.push(
-      ...cutFiles(
-        "panels",
-        panels.map((p) => p.id),
-        (i) => panelDrawing(facts, panels[i]),
-      ),
-    );
-    texts.push(["panels.csv", panelTable(facts)]);
+  if (wants("bundle")) {
+    const { writeBundle } = await import("./bundle.ts");
+    files.push({ path: "papers.zip", bytes: writeBundle(files, facts.job.date) });
   }
-  if (seams) texts.push(["seams.csv", seamTable(facts)]);
-  const rig = rigFacts(facts);
-  const cables = (facts.cables ?? []).length > 0;
-  if (cables) texts.push(["cables.csv", cableTable(facts)]);
-  if (rig) texts.push(["tensioning.csv", moveTable(rig)], ["hardware.csv", hardwareTable(rig)]);
-  const encoder = new TextEncoder();
-  const files = texts.map(([path, text]): PaperFile => ({ path, bytes: encoder.encode(text) }));
-  if (panels && panels.length > 0) {
-    const { writePanelCards } = await import("./pdf/panelCards.ts");
-    files.push({ path: "panel-cards.pdf", bytes: await writePanelCards(facts, options.fonts) });
-  }
-  if (cables || rig) {
-    const { writeCableSheets } = await import("./pdf/cableSheets.ts");
-    files.push({ path: "cables.pdf", bytes: await writeCableSheets(facts, options.fonts) });
-  }
-  if (rig) {
-    const { writeTensioningSchedule } = await import("./pdf/tensioningSchedule.ts");
-    files.push({ path: "tensioning-schedule.pdf", bytes: await writeTensioningSchedule(rig, options.fonts) });
-  }
-  const { writeFindingSheets } = await import("./pdf/findingSheets.ts");
-  files.push({ path: "findings.pdf", bytes: await writeFindingSheets(facts, options.fonts) });
   return { files };
 }

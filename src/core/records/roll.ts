@@ -55,4 +55,6 @@ export interface NestedRoll {
   /** cut area / (used × width) */
   utilisation: number;
   lowerBound: number;
+  /** Length the cutting table takes at once, mm; none where the whole roll can be laid out. */
+  bite?: number | null;
 }

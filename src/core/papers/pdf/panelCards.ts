@@ -1,14 +1,27 @@
 // Panel cards: one panel a card, everything a welder needs to check it before it is joined, on paper that is filled in by hand.
 // Then the assembly map and the seam schedule. Numbers come from the facts; nothing is judged here.
-import type { Facts, FactsPanel } from "../../records/facts.ts";
+import type { Facts, FactsPanel, Vec2 } from "../../records/facts.ts";
 import { decimal } from "../decimal.ts";
 import { boxOf } from "../flatGeometry.ts";
 import { measurePanel, type PanelMeasures } from "../panelMeasures.ts";
 import { massOf, placesOf } from "../tables.ts";
 import { drawAssemblyMap } from "./assemblyMap.ts";
+import { flowAssemblyOrder } from "./assemblyOrder.ts";
 import { addSheet, type Book, closeBook, type FontFiles, openBook, type Sheet } from "./book.ts";
 import { cardScale, drawPanelFigure, sideMeets } from "./panelFigure.ts";
-import { type BoxArea, drawBox, drawRun, drawText, fitText, PITCH, SMALL, wrapText } from "./pen.ts";
+import {
+  type BoxArea,
+  drawBox,
+  drawRun,
+  drawStencil,
+  drawText,
+  fitText,
+  keepStencil,
+  PITCH,
+  SMALL,
+  type Stencil,
+  wrapText,
+} from "./pen.ts";
 import { fitRoof, type RoofView, viewRoof } from "./roofView.ts";
 import { type Column, drawTable, tableHeight } from "./table.ts";
 
@@ -17,16 +30,16 @@ const FOOT = 27;
 const LEAST_FIGURE = 52;
 
 const SIDE_COLUMNS: readonly Column[] = [
-  { head: ["No."], width: 10 },
-  { head: ["Seam", "or edge"], width: 20 },
-  { head: ["Meets"], width: 27 },
+  { head: ["No."], width: 9 },
+  { head: ["Seam", "or edge"], width: 28 },
+  { head: ["Meets"], width: 26 },
   { head: ["Net,", "mm"], width: 15, align: "end", bold: true },
   { head: ["Edge,", "mm"], width: 15, align: "end" },
-  { head: ["Chord,", "mm"], width: 16, align: "end" },
-  { head: ["On the", "form, m"], width: 18, align: "end" },
+  { head: ["Chord,", "mm"], width: 15, align: "end" },
+  { head: ["On the", "form, m"], width: 17, align: "end" },
   { head: ["Allow-", "ance, mm"], width: 23, align: "end" },
-  { head: ["Lap"], width: 15 },
-  { head: ["Tape,", "mm"], width: 20 },
+  { head: ["Lap"], width: 14 },
+  { head: ["Tape,", "mm"], width: 17 },
 ];
 
 const CHECK_COLUMNS: readonly Column[] = [
@@ -36,12 +49,20 @@ const CHECK_COLUMNS: readonly Column[] = [
   { head: ["Tape,", "mm"], width: 22 },
 ];
 
+/** The roof for the key plans, kept at the first card. */
+interface Roof {
+  view: RoofView;
+  plan: KeyPlan | null;
+}
+
 /** The bytes of panel-cards.pdf. */
 export async function writePanelCards(facts: Facts, fonts: FontFiles): Promise<Uint8Array> {
   const book = await openBook(facts, fonts, "panel cards", "cloth");
   const view = viewRoof(facts);
-  for (const panel of facts.panels ?? []) drawCard(book, view, panel);
+  const roof: Roof = { view, plan: null };
+  for (const panel of facts.panels ?? []) drawCard(book, roof, panel);
   drawAssemblyMap(book, view);
+  flowAssemblyOrder(book);
   return closeBook(book);
 }
 
@@ -126,7 +147,7 @@ function headLines(book: Book, texts: readonly string[], width: number): string[
   );
 }
 
-function drawCard(book: Book, view: RoofView, panel: FactsPanel): void {
+function drawCard(book: Book, roof: Roof, panel: FactsPanel): void {
   const { facts } = book;
   const sheet = addSheet(book, `Panel card ${panel.id}`);
   const measures = measurePanel(panel);
@@ -154,7 +175,7 @@ function drawCard(book: Book, view: RoofView, panel: FactsPanel): void {
   const top = box.y - 2;
   drawTable(book, sheet, SIDE_COLUMNS, rows.slice(0, shown), { left: sheet.left, width: width * 0.685, y: top });
   drawTable(book, sheet, CHECK_COLUMNS, checks, { left: sheet.left + width * 0.7, width: width * 0.3, y: top });
-  drawFoot(book, sheet, view, panel);
+  drawFoot(book, sheet, roof, panel);
   drawMoreSides(book, panel, rows.slice(shown));
 }
 
@@ -172,7 +193,7 @@ function drawMoreSides(book: Book, panel: FactsPanel, rows: string[][]): void {
 }
 
 /** Boxes to tick, the weld trial of the day, and where the panel sits in the roof. */
-function drawFoot(book: Book, sheet: Sheet, view: RoofView, panel: FactsPanel): void {
+function drawFoot(book: Book, sheet: Sheet, roof: Roof, panel: FactsPanel): void {
   const { page } = sheet;
   const width = sheet.right - sheet.left;
   const top = sheet.bottom + FOOT - 2;
@@ -198,23 +219,37 @@ function drawFoot(book: Book, sheet: Sheet, view: RoofView, panel: FactsPanel): 
   ["Machine", "Settings", "Pull test", "By, date"].forEach((what, i) => {
     line(what, x, top - 9 - 5 * i, sheet.left + width * 0.66);
   });
-  const box = { x: sheet.left + width * 0.69, y: sheet.bottom, width: width * 0.31, height: FOOT - 2 };
-  drawKeyPlan(book, sheet, view, panel, box);
+  roof.plan ??= keepKeyPlan(book, roof.view, sheet);
+  drawKeyPlan(book, sheet, roof.view, panel, roof.plan);
 }
 
-function drawKeyPlan(book: Book, sheet: Sheet, view: RoofView, panel: FactsPanel, box: BoxArea): void {
-  drawText(sheet.page, `Key plan, ${view.name}`, {
-    x: box.x,
-    y: box.y + box.height - 4,
-    size: SMALL,
-    font: book.regular,
-  });
+/** The roof drawn once for all cards, at a place of its own on each. */
+interface KeyPlan {
+  box: BoxArea;
+  place: (p: Vec2) => Vec2;
+  lines: Stencil;
+}
+
+/** Sheets of a book are all alike, so the plan stands on the same place of every card. */
+function keepKeyPlan(book: Book, view: RoofView, sheet: Sheet): KeyPlan {
+  const width = sheet.right - sheet.left;
+  const box = { x: sheet.left + width * 0.69, y: sheet.bottom, width: width * 0.31, height: FOOT - 2 };
   const place = fitRoof(view, { x: box.x + 2, y: box.y + 1, width: box.width - 4, height: box.height - 7 });
-  for (const p of view.panels) {
-    for (const outline of p.outlines) {
-      const filled = p.id === panel.id ? { fill: 0.55 } : {};
-      drawRun(sheet.page, outline.map(place), { width: 0.15, closed: true, ...filled });
-    }
+  const lines = keepStencil(book.doc, box, [
+    ...view.panels.flatMap((p) =>
+      p.outlines.map((o) => ({ points: o.map(place), options: { width: 0.15, closed: true } })),
+    ),
+    ...view.seams.map((s) => ({ points: s.run.map(place), options: { width: 0.35 } })),
+  ]);
+  return { box, place, lines };
+}
+
+function drawKeyPlan(book: Book, sheet: Sheet, view: RoofView, panel: FactsPanel, plan: KeyPlan): void {
+  const { box, place } = plan;
+  const title = { x: box.x, y: box.y + box.height - 4, size: SMALL, font: book.regular };
+  drawText(sheet.page, `Key plan, ${view.name}`, title);
+  for (const outline of view.panels.find((p) => p.id === panel.id)?.outlines ?? []) {
+    drawRun(sheet.page, outline.map(place), { width: 0.15, closed: true, fill: 0.55 });
   }
-  for (const s of view.seams) drawRun(sheet.page, s.run.map(place), { width: 0.35 });
+  drawStencil(sheet.page, plan.lines);
 }

@@ -12,7 +12,7 @@ const SCALES = [1, 2, 5, 10, 20, 25, 50, 75, 100, 125, 200, 250, 500, 1000];
 const MARGIN_X = 22;
 const MARGIN_Y = 7;
 const LABEL_HEIGHT = 3.6;
-const LONGEST_LABEL = 44;
+const LONGEST_LABEL = 58;
 const MANY_SIDES = 6;
 
 /** Greatest round scale, as 1:n, at which the panel and its labels fit the box. */

@@ -1,22 +1,20 @@
 // The few strokes all sheets are made of: text, lines, boxes, in mm; and how long a text is, how it wraps, how it is shortened.
 import {
-  closePath,
+  clip,
   degrees,
-  fill,
-  fillAndStroke,
-  lineTo,
-  moveTo,
+  drawObject,
+  endPath,
+  type PDFDocument,
   type PDFFont,
-  type PDFOperator,
+  PDFOperator,
+  type PDFOperatorNames,
   type PDFPage,
+  type PDFRef,
   popGraphicsState,
   pushGraphicsState,
-  setDashPattern,
-  setFillingGrayscaleColor,
-  setLineWidth,
-  setStrokingGrayscaleColor,
-  stroke,
+  rectangle,
 } from "pdf-lib";
+import { PlanError } from "../../problem.ts";
 import type { Vec2 } from "../../records/facts.ts";
 import { plainText } from "../plainText.ts";
 
@@ -148,26 +146,79 @@ export interface LineOptions {
   outline?: boolean;
 }
 
+/** Points nearer than this to the one before are not drawn, mm: an eye does not see them, a file feels them. */
+const NEAR = 0.06;
+
+function short(value: number): string {
+  // Two decimals of a point are 0.004 mm; trailing zeros and "-0" say nothing.
+  return String(Math.round(value * MM * 100) / 100 + 0);
+}
+
+/** The strokes of a run as they stand in a page: one string, because a run of objects takes a hundred times the room. */
+function runText(points: readonly Vec2[], options: LineOptions): string {
+  const words = ["q", short(options.width), "w 0 G"];
+  words.push(`[${(options.dash ?? []).map(short).join(" ")}] 0 d`);
+  if (options.fill !== undefined) words.push(`${options.fill} g`);
+  let last: Vec2 | null = null;
+  points.forEach((p, i) => {
+    const ends = i === 0 || i === points.length - 1;
+    if (!ends && last && Math.abs(p[0] - last[0]) + Math.abs(p[1] - last[1]) < NEAR) return;
+    words.push(`${short(p[0])} ${short(p[1])} ${last ? "l" : "m"}`);
+    last = p;
+  });
+  if (options.closed) words.push("h");
+  words.push(options.fill === undefined ? "S" : options.outline === false ? "f" : "B");
+  words.push("Q");
+  return words.join(" ");
+}
+
+function checkRun(points: readonly Vec2[]): void {
+  const wrong = points.find((p) => !Number.isFinite(p[0]) || !Number.isFinite(p[1]));
+  if (wrong === undefined) return;
+  throw new PlanError(
+    "papers-number",
+    `a sheet: the point (${wrong[0]}, ${wrong[1]}) cannot be drawn; plan again`,
+    "papers",
+  );
+}
+
 /** A run of straight pieces. */
 export function drawRun(page: PDFPage, points: readonly Vec2[], options: LineOptions): void {
   if (points.length < 2) return;
-  const operators: PDFOperator[] = [
-    pushGraphicsState(),
-    setLineWidth(options.width * MM),
-    setStrokingGrayscaleColor(0),
-    setDashPattern(
-      (options.dash ?? []).map((d) => d * MM),
-      0,
-    ),
-  ];
-  if (options.fill !== undefined) operators.push(setFillingGrayscaleColor(options.fill));
-  points.forEach(([x, y], i) => {
-    operators.push(i === 0 ? moveTo(x * MM, y * MM) : lineTo(x * MM, y * MM));
+  checkRun(points);
+  page.pushOperators(PDFOperator.of(runText(points, options) as PDFOperatorNames));
+}
+
+/** Runs kept once in the document and shown on any number of its pages. */
+export interface Stencil {
+  ref: PDFRef;
+  name: string;
+}
+
+/** Keeps runs for many pages. */
+export function keepStencil(
+  doc: PDFDocument,
+  box: BoxArea,
+  runs: readonly { points: readonly Vec2[]; options: LineOptions }[],
+): Stencil {
+  for (const r of runs) checkRun(r.points);
+  const { x, y, width, height } = box;
+  const text = runs
+    .filter((r) => r.points.length > 1)
+    .map((r) => runText(r.points, r.options))
+    .join("\n");
+  const stream = doc.context.flateStream(text, {
+    Type: "XObject",
+    Subtype: "Form",
+    BBox: [x * MM, y * MM, (x + width) * MM, (y + height) * MM],
   });
-  if (options.closed) operators.push(closePath());
-  operators.push(options.fill === undefined ? stroke() : options.outline === false ? fill() : fillAndStroke());
-  operators.push(popGraphicsState());
-  page.pushOperators(...operators);
+  return { ref: doc.context.register(stream), name: "Stencil" };
+}
+
+/** Shows what was kept. */
+export function drawStencil(page: PDFPage, stencil: Stencil): void {
+  const key = page.node.newXObject(stencil.name, stencil.ref);
+  page.pushOperators(pushGraphicsState(), drawObject(key), popGraphicsState());
 }
 
 /** A ring, drawn as a polygon of 24 sides. */
@@ -196,4 +247,12 @@ export function drawBox(page: PDFPage, box: BoxArea, options: LineOptions): void
     [x, y + height],
   ];
   drawRun(page, corners, { ...options, closed: true });
+}
+
+/** Whatever is drawn shows only inside the rectangle. */
+export function drawClipped(page: PDFPage, box: BoxArea, draw: () => void): void {
+  const { x, y, width, height } = box;
+  page.pushOperators(pushGraphicsState(), rectangle(x * MM, y * MM, width * MM, height * MM), clip(), endPath());
+  draw();
+  page.pushOperators(popGraphicsState());
 }
