@@ -83,9 +83,19 @@ function nameAdjuster(anchor: string, taken: Set<string>): string {
   return name;
 }
 
-function findEnd(form: FoundForm, edge: string, end: string | null, name: string): "first" | "last" {
-  if (end === "first" || end === "last") return end;
+/** End of a cable edge, or of a stay, at which an adjuster sits. */
+function findEnd(form: FoundForm, job: Job, edge: string, end: string | null, name: string): "first" | "last" {
+  const stay = job.rig.stays.find((s) => s.name === edge);
   const run = form.edges.find((e) => e.id === edge);
+  if (!stay && run?.force == null)
+    throw new PlanError(
+      "adjuster-edge",
+      `adjuster ${name} sits in "${edge}", which is no cable edge and no stay; there are ${[...form.edges.filter((e) => e.force !== null).map((e) => e.id), ...job.rig.stays.map((s) => s.name)].join(", ") || "none"}`,
+      name,
+    );
+  if (end === "first" || end === "last") return end;
+  if (stay && end !== null && stay.from === end) return "first";
+  if (stay && end !== null && stay.to === end) return "last";
   const anchor = form.anchors.find((a) => a.id === end);
   if (run && anchor && run.vertices[0] === anchor.vertex) return "first";
   if (run && anchor && run.vertices[run.vertices.length - 1] === anchor.vertex) return "last";
@@ -154,7 +164,7 @@ function settleAdjusters(
       name: a.name,
       anchor: a.anchor,
       edge: a.edge,
-      end: a.edge === null ? null : findEnd(form, a.edge, a.end, a.name),
+      end: a.edge === null ? null : findEnd(form, job, a.edge, a.end, a.name),
       turnbuckle: a.turnbuckle ?? job.rig.defaultTurnbuckle,
       EA: a.EA ?? adjusterEA,
     };
@@ -175,7 +185,7 @@ function checkNamesFree(job: Job, taken: Set<string>): void {
 
 /**
  * Input of the rig station, with notes on all that was taken for granted.
- * @throws PlanError rig-name, adjuster-end
+ * @throws PlanError rig-name, adjuster-edge, adjuster-end
  */
 export function buildRigInput(
   job: Job,

@@ -4,9 +4,11 @@ import { PlanError } from "../problem.ts";
 import type { AdjusterDecision, Turnbuckle } from "../records/rig.ts";
 import { buildStiffness } from "../structure/cloth.ts";
 import { buildStructure, type Structure } from "../structure/structure.ts";
+import type { Vec3 } from "../surface/surface.ts";
 import { balanceHeads, type HeadPull } from "./balanceHeads.ts";
 import type { RigInput } from "./rigInput.ts";
 import {
+  addNode,
   holdClampedEdges,
   type NodeList,
   type PlacedAdjuster,
@@ -155,6 +157,39 @@ function layCables(input: RigInput, list: LinkList): { cables: RigCable[]; atEnd
   return { cables, atEnds };
 }
 
+/** Length of a turnbuckle with its fork at the end of a stay, m (common practice); at most half the stay. */
+const stayEnd = 1;
+
+/** Where an adjuster sits at a stay's end, the stay ends at a new node and the adjuster bridges the rest. */
+function fitStay(
+  input: RigInput,
+  nodes: NodeList,
+  stay: { name: string; nodes: number[] },
+  force: number,
+): { nodes: number[]; adjusters: PlacedAdjuster[] } {
+  const run = stay.nodes.slice();
+  const adjusters: PlacedAdjuster[] = [];
+  const at = (v: number) => [0, 1, 2].map((k) => nodes.xyz[3 * v + k]);
+  for (const a of input.rig.adjusters.filter((q) => q.edge === stay.name)) {
+    if (!(force > 0))
+      throw new PlanError(
+        "adjuster-slack",
+        `adjuster ${a.name} sits in ${stay.name}, which carries no force at the finished state: give the stay a force or take the adjuster away`,
+        a.name,
+      );
+    const end = a.end === "first" ? 0 : 1;
+    const far = stay.nodes[end];
+    const [p, q] = [at(far), at(stay.nodes[1 - end])];
+    const length = Math.sqrt((q[0] - p[0]) ** 2 + (q[1] - p[1]) ** 2 + (q[2] - p[2]) ** 2);
+    const pins = Math.min(stayEnd, length / 2.5);
+    const near = addNode(nodes, p.map((c, k) => c + ((q[k] - c) * pins) / length) as Vec3, false);
+    run[end] = near;
+    const turnbuckle = settleTurnbuckle(a.turnbuckle, pins);
+    adjusters.push({ id: a.name, anchor: stay.name, nodes: [near, far], EA: a.EA, target: force, turnbuckle });
+  }
+  return { nodes: run, adjusters };
+}
+
 /** Masts between their places, and the heads they free: ends named by an anchor or adjuster, else the end `to`. */
 function placeStruts(input: RigInput, nodes: NodeList, placed: PlacedAdjuster[]) {
   const heads: number[] = [];
@@ -211,16 +246,12 @@ export function buildRig(input: RigInput): Rig {
   const { cables, atEnds } = layCables(input, list);
   const forces = balanceHeads(nodes.xyz, heads, listPulls(input, nodes, placed), { struts, stays });
   stays.forEach((s, i) => {
-    const firstLink = addLink(list, s.nodes, s.EA, forces.stay[i]);
-    cables.push({
-      id: s.name,
-      edge: null,
-      nodes: s.nodes,
-      EA: s.EA,
-      force: forces.stay[i],
-      minBreakingForce: s.minBreakingForce,
-      firstLink,
-    });
+    const force = forces.stay[i];
+    const ends = fitStay(input, nodes, s, force);
+    const firstLink = addLink(list, ends.nodes, s.EA, force);
+    const { name, EA, minBreakingForce } = s;
+    cables.push({ id: name, edge: null, nodes: ends.nodes, EA, force, minBreakingForce, firstLink });
+    atEnds.push(...ends.adjusters);
   });
   const built = struts.map((s, i) => ({ ...s, link: addLink(list, s.nodes, s.EA, -forces.strut[i], 1) }));
   const adjusters = [...placed, ...atEnds].map((a) => ({ ...a, link: addLink(list, a.nodes, a.EA, a.target) }));

@@ -25,8 +25,12 @@ export function measureNotch(rig: Rig, i: number): number {
   return rig.adjusters[i].turnbuckle.perTurn / partsOfTurn / 1000;
 }
 
+/** Furthest a rounded length may lie from the wanted one, in notches: beyond it the corners wander. */
+const furthest = 1.5;
+
 /**
- * Lengths nearest the wanted ones that whole notches from `from` reach, chosen so that the adjusters' forces stay nearest.
+ * Lengths near the wanted ones that whole notches from `from` reach, chosen so that the adjusters' forces stay nearest: single
+ * notches and pairs of notches are tried until none helps.
  * @shape one for each adjuster, m; influence: rows of the adjusters first, n columns, kN per m added
  */
 export function roundLengths(
@@ -38,34 +42,49 @@ export function roundLengths(
   const n = rig.adjusters.length;
   const notch = rig.adjusters.map((_, i) => measureNotch(rig, i));
   const count = wanted.map((w, i) => Math.round((from[i] - w) / notch[i]));
-  const miss = (counts: number[]) => {
-    let worst = 0;
-    for (let i = 0; i < n; i++) {
-      let df = 0;
-      for (let j = 0; j < n; j++) df += influence[i * n + j] * (from[j] - counts[j] * notch[j] - wanted[j]);
-      worst = Math.max(worst, Math.abs(df) / rig.adjusters[i].target);
-    }
-    return worst;
-  };
-  let best = miss(count);
+  // force missed at each adjuster over its target, kept up to date notch by notch
+  const miss = rig.adjusters.map((a, i) => {
+    let df = 0;
+    for (let j = 0; j < n; j++) df += influence[i * n + j] * (from[j] - count[j] * notch[j] - wanted[j]);
+    return df / a.target;
+  });
+  const steps = singlesAndPairs(n);
+  const change = (step: readonly [number, number][], i: number) =>
+    step.reduce((sum, [j, way]) => sum - (influence[i * n + j] * way * notch[j]) / rig.adjusters[i].target, 0);
+  let best = Math.max(...miss.map(Math.abs));
   for (let better = true; better; ) {
     better = false;
-    for (let i = 0; i < n; i++) {
-      for (const way of [1, -1]) {
-        const trial = count.slice();
-        trial[i] += way;
-        // never further than one notch from the wanted length
-        if (Math.abs(from[i] - trial[i] * notch[i] - wanted[i]) > notch[i]) continue;
-        const value = miss(trial);
-        if (value < best - 1e-12) {
-          best = value;
-          count[i] = trial[i];
-          better = true;
-        }
-      }
+    for (const step of steps) {
+      const far = step.some(
+        ([j, way]) => Math.abs(from[j] - (count[j] + way) * notch[j] - wanted[j]) > furthest * notch[j],
+      );
+      if (far) continue;
+      let worst = 0;
+      for (let i = 0; i < n && worst < best; i++) worst = Math.max(worst, Math.abs(miss[i] + change(step, i)));
+      if (worst >= best - 1e-9) continue;
+      for (let i = 0; i < n; i++) miss[i] += change(step, i);
+      for (const [j, way] of step) count[j] += way;
+      best = worst;
+      better = true;
     }
   }
   return from.map((f, i) => f - count[i] * notch[i]);
+}
+
+/** One notch at one of n adjusters, and one at each of two. */
+function singlesAndPairs(n: number): [number, number][][] {
+  const ways = [1, -1];
+  const out: [number, number][][] = [];
+  for (let i = 0; i < n; i++) for (const p of ways) out.push([[i, p]]);
+  for (let i = 0; i < n; i++)
+    for (let j = i + 1; j < n; j++)
+      for (const p of ways)
+        for (const q of ways)
+          out.push([
+            [i, p],
+            [j, q],
+          ]);
+  return out;
 }
 
 /** A state to first order: influence of the adjusters on every member at its most pulled link, adjusters first. */

@@ -10,7 +10,7 @@ import { countModes, type RigState } from "./solveLengths.ts";
 
 /** Share of the target an adjuster may miss before and after moves are rounded. */
 const exactLimit = 0.005;
-const roundedLimit = 0.03;
+export const roundedLimit = 0.03;
 
 /** Adjusters whose target cannot be had by any lengths, as stops. */
 export function findTargetMisses(rig: Rig, exact: RigState & { off: number }): Finding[] {

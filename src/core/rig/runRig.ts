@@ -7,7 +7,8 @@ import { measureAsBuilt } from "./asBuilt.ts";
 import { buildRig, type Rig } from "./buildRig.ts";
 import { buildCableLine } from "./cableSchedule.ts";
 import { playPlan } from "./playPlan.ts";
-import { findTargetMisses, reviewRig } from "./reviewRig.ts";
+import { findTargetMisses, reviewRig, roundedLimit } from "./reviewRig.ts";
+import { reviewLean, reviewNotches, reviewRest } from "./reviewSteps.ts";
 import type { RigInput } from "./rigInput.ts";
 import { checkLengths, countModes, measureModes, type RigState, solveLengths, solveState } from "./solveLengths.ts";
 import { solveStages } from "./solveStages.ts";
@@ -65,7 +66,6 @@ export function runRig(input: RigInput, context: StationContext): StationResult<
   const finished = stages[stages.length - 1].end;
   const singular = measureModes(rig, stages[stages.length - 1].linear.influence);
   const played = playPlan(input.rig, rig, solver, stages, { modes: countModes(singular), context });
-  const written = played.stages;
   context.onProgress?.(0.92, "temperature table");
   const expansion = {
     cables: rig.cables.map((c) => (c.edge === null ? undefined : input.cables[c.edge])?.type.alpha ?? 12e-6),
@@ -73,7 +73,7 @@ export function runRig(input: RigInput, context: StationContext): StationResult<
   };
   const tensioning: FactsTensioning = {
     referenceTemperature: input.rig.temperature,
-    stages: written,
+    stages: played.stages,
     temperatureTable: buildTemperatureTable(rig, solver, finished, expansion, input.rig.temperature),
     readingError: input.rig.readingError,
     limit: input.rig.limit,
@@ -81,9 +81,18 @@ export function runRig(input: RigInput, context: StationContext): StationResult<
     issuable: input.rig.defaults.length === 0,
   };
   const asBuilt = measureAsBuilt(rig, finished);
-  const review = reviewRig(input, rig, { ...played, finished, asBuilt, singular });
-  findings.push(...findTargetMisses(rig, exact), ...review.findings);
-  checks.push(...review.checks);
+  const review = reviewRig(input, rig, { stages: played.stages, finished, asBuilt, singular });
+  const rest = reviewRest([exact, ...stages.map((stage) => stage.end), ...played.states]);
+  const { influence } = stages[stages.length - 1].linear;
+  const laterStates = played.states.slice(stages[0].begin === null ? 1 : 0);
+  findings.push(
+    ...findTargetMisses(rig, exact),
+    ...rest.findings,
+    ...review.findings,
+    ...reviewLean(rig, finished, laterStates),
+    ...reviewNotches(rig, finished, influence, roundedLimit),
+  );
+  checks.push(...rest.checks, ...review.checks);
   return { output: { cables: lines, rig: writeRig(rig, finished), asBuilt, tensioning }, findings, checks };
 }
 

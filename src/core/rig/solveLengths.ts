@@ -25,17 +25,22 @@ export interface LengthOptions {
 /** Defaults of solveLengths: a tenth of the 0.5 % that the schedule promises before rounding. */
 export const lengthDefaults: LengthOptions = { tolerance: 5e-4, stride: 0.015, rounds: 40 };
 
+/** How sharply a state is solved: out-of-balance over the largest force. Readings are kept to 1e-3 of a force at best. */
+export const restLimit = { onTheWay: 1e-6, finished: 1e-9 };
+
+/** What a state's solve is given beside where it starts. */
+export interface StateOptions {
+  /** The finished state, which all figures hang on. */
+  sharp?: boolean;
+  cancelled?: (() => boolean) | undefined;
+}
+
 /** A state from slack lengths, starting near another one. */
-export function solveState(
-  rig: Rig,
-  solver: EquilibriumSolver,
-  near: Places,
-  options: { cancelled?: (() => boolean) | undefined } = {},
-): RigState {
+export function solveState(rig: Rig, solver: EquilibriumSolver, near: Places, options: StateOptions = {}): RigState {
   const least = Math.min(...rig.adjusters.map((a) => a.target), Infinity);
   const { cancelled } = options;
   const equilibrium = solveEquilibrium(solver, near.x, near.L0, {
-    tolerance: 1e-9,
+    tolerance: options.sharp ? restLimit.finished : restLimit.onTheWay,
     floor: 1e-9 * least,
     ...(cancelled ? { cancelled } : {}),
   });
@@ -48,7 +53,7 @@ export function turnTo(
   solver: EquilibriumSolver,
   state: Places,
   lengths: readonly number[],
-  options: { cancelled?: (() => boolean) | undefined } = {},
+  options: StateOptions = {},
 ): RigState {
   const L0 = state.L0.slice();
   rig.adjusters.forEach((a, i) => {

@@ -2,7 +2,7 @@
 import type { Check, StationContext } from "../problem.ts";
 import type { EquilibriumSolver } from "../structure/equilibrium.ts";
 import type { Rig } from "./buildRig.ts";
-import { linearise, readMembers, roundLengths, type Stage } from "./planMoves.ts";
+import { linearise, measureNotch, readMembers, roundLengths, type Stage } from "./planMoves.ts";
 import { listMembers } from "./readState.ts";
 import type { RigInput } from "./rigInput.ts";
 import { checkLengths, type RigState, solveLengths, turnTo } from "./solveLengths.ts";
@@ -15,13 +15,29 @@ export function nameStage(fraction: number): string {
   return `${Math.round(1000 * fraction) / 10} %`;
 }
 
-/** Lengths to hang the cloth at: let out beyond the first stage, to the whole millimetre a tape sets, never past the longest. */
-function hangingLengths(rig: Rig, firstStage: RigState): number[] {
-  return rig.adjusters.map((a) => {
+/** Whole millimetres among which a hanging length is chosen. */
+const hangingChoices = 6;
+
+/**
+ * Lengths to hang the cloth at: let out beyond the first stage, to the whole millimetre a tape sets, never past the longest; of
+ * the next few millimetres the one from which whole notches come nearest the finished length.
+ */
+function hangingLengths(rig: Rig, firstStage: RigState, finished: RigState): number[] {
+  return rig.adjusters.map((a, i) => {
     const end = firstStage.L0[a.link];
     const longest = a.turnbuckle.longest / 1000;
-    const wish = Math.ceil(1000 * (end + hangingSlack)) / 1000;
-    return Math.max(Math.min(wish, longest), end);
+    const notch = measureNotch(rig, i);
+    const least = Math.ceil(1000 * (end + hangingSlack));
+    let best = least / 1000;
+    let nearest = Infinity;
+    for (let mm = least; mm < least + hangingChoices; mm++) {
+      const notches = (mm / 1000 - finished.L0[a.link]) / notch;
+      const off = Math.abs(notches - Math.round(notches));
+      if (off > nearest - 1e-6 || mm / 1000 > longest) continue;
+      best = mm / 1000;
+      nearest = off;
+    }
+    return Math.max(Math.min(best, longest), end);
   });
 }
 
@@ -55,12 +71,12 @@ export function solveStages(
     ends[k] = { state: near, influence: linearise(rig, solver, near) };
   }
   const members = listMembers(rig);
-  let from = hangingLengths(rig, ends[0].state);
+  let from = hangingLengths(rig, ends[0].state, exact);
   let begin: RigState | null = null;
   return ends.map(({ state, influence }, k) => {
     const wanted = rig.adjusters.map((a) => state.L0[a.link]);
     const to = roundLengths(rig, influence, wanted, from);
-    const end = turnTo(rig, solver, state, to, context);
+    const end = turnTo(rig, solver, state, to, { ...context, sharp: fractions[k] === 1 });
     const linear = { from, to, members, forces: readMembers(rig, end), influence };
     const stage = { name: nameStage(fractions[k]), fraction: fractions[k], from, begin, end, linear };
     from = to;
