@@ -5,6 +5,7 @@ import type { FlatPanel } from "../records/flatPanel.ts";
 import type { StripLayout } from "../records/stripLayout.ts";
 import { buildStiffness, type ClothStiffness } from "../structure/cloth.ts";
 import { measureAreas } from "../surface/measures.ts";
+import { checkBeyondFade } from "./beyondFade.ts";
 import { checkFlatPanels, listBrokenChecks, listPanelFindings } from "./checkFlatPanels.ts";
 import { buildFlattenProblem, listDrafts, type PanelDraft } from "./flattenProblem.ts";
 import { FLATTEN_TOLERANCE, solveFlatten } from "./flattenSolve.ts";
@@ -42,7 +43,12 @@ export function flattenPanels(
     });
   }
   const checks = checkFlatPanels(panels, layout);
-  return { output: panels, findings: [...listBrokenChecks(checks, panels), ...findings], checks };
+  const fade = checkBeyondFade(panels, buildStiffness(options.fabric));
+  return {
+    output: panels,
+    findings: [...listBrokenChecks(checks, panels), ...findings, ...fade.findings],
+    checks: [...checks, ...fade.checks],
+  };
 }
 
 /**
