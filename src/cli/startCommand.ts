@@ -1,6 +1,6 @@
 // seamstay start TEMPLATE DIR: a starter job copied into a new folder.
 import { cpSync, existsSync, mkdirSync, readdirSync, renameSync, rmdirSync, rmSync, statSync } from "node:fs";
-import { dirname, join, resolve } from "node:path";
+import { basename, dirname, join, resolve } from "node:path";
 import { PlanError } from "../core/problem.ts";
 import { withFile } from "./fileErrors.ts";
 import { holdSignals } from "./holdSignals.ts";
@@ -8,6 +8,9 @@ import { asideNames, clearLeftovers } from "./leftovers.ts";
 import { listStarters, starterFolder } from "./packageFiles.ts";
 import { parseOptions } from "./parseOptions.ts";
 import { type Terminal, usageError } from "./terminal.ts";
+
+/** A picture of a starter's papers, for those who have not planned it yet: no part of a job. */
+const PICTURE = "papers.png";
 
 /** The verb; without arguments it lists the starters. @returns exit status 0 */
 export async function startCommand(args: string[], terminal: Terminal): Promise<number> {
@@ -49,7 +52,7 @@ function copyWhole(source: string, folder: string, target: string): void {
   try {
     withFile(folder, () => {
       mkdirSync(dirname(target), { recursive: true });
-      cpSync(source, aside, { recursive: true, errorOnExist: true });
+      cpSync(source, aside, { recursive: true, errorOnExist: true, filter: (path) => basename(path) !== PICTURE });
       if (existsSync(target)) rmdirSync(target);
       renameSync(aside, target);
     });
