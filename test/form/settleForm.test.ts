@@ -1,7 +1,8 @@
 import fc from "fast-check";
 import { expect, test } from "vitest";
 import type { SettleCable } from "../../src/core/form/settleBalance.ts";
-import { type SettleInput, settleDefaults, settleForm } from "../../src/core/form/settleForm.ts";
+import { settleDefaults, settleForm } from "../../src/core/form/settleForm.ts";
+import type { SettleInput } from "../../src/core/form/settleState.ts";
 import { buildRandom } from "../../src/core/numeric/random.ts";
 import { measureArea } from "../../src/core/surface/measures.ts";
 import { buildArcSail, buildGrid, listSides, mapPlaces, renumber } from "./formMeshes.ts";

@@ -9,7 +9,8 @@ import { findNeck, type Neck } from "./findNeck.ts";
 import { buildFormFinding, describePlace } from "./formFinding.ts";
 import type { StressField } from "./membraneForces.ts";
 import { measureChord } from "./settleForces.ts";
-import { type Settled, type SettleInput, settleDefaults, settleForm } from "./settleForm.ts";
+import { type Settled, settleDefaults, settleForm } from "./settleForm.ts";
+import type { SettleInput } from "./settleState.ts";
 
 /** The form that settles; forces of the cables in place. */
 export interface SettleTask {

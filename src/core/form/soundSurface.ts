@@ -187,6 +187,8 @@ export function buildSoundSurface(source: MeshSource): SoundSurface {
   const tolerance = WELD * diagonal;
   const target = findWelds(x, tolerance);
   const welded = Array.from(target.keys()).filter((v) => target[v] !== v);
+  const gap = (v: number) => Math.sqrt([0, 1, 2].reduce((s, k) => s + (x[3 * v + k] - x[3 * target[v] + k]) ** 2, 0));
+  const farthest = welded.reduce((w, v) => Math.max(w, gap(v)), 0);
   const split = splitPolygons(x, source, target);
   const { tri: clean, flatAt, doubledAt } = cleanTriangles(x, split.tri, tolerance);
   const { tri, ...tees } = splitTees(x, clean, tolerance);
@@ -221,7 +223,7 @@ export function buildSoundSurface(source: MeshSource): SoundSurface {
       [
         "mesh-welded",
         welded,
-        `${countWords(welded.length, "vertex lies", "vertices lie")} on another ${within} and became one with it`,
+        `${countWords(welded.length, "vertex lies", "vertices lie")} on another ${within}, ${(1000 * farthest).toPrecision(2)} mm at most, and became one with it`,
       ],
       [
         "mesh-flat-triangles",
