@@ -34,6 +34,21 @@ export const HOSTILE: Record<string, string> = {
     'Boat shed\r\n"bay 2" <Ø Ł β → &> and a title so long that it does not fit any title block of any sheet that is not A0',
 };
 
+/** More of them: right to left, 300 letters, nothing at all, two that differ in case, letters no face has. */
+export const STRANGE: Record<string, string> = {
+  P1: "לוח אחד",
+  P2: "panel ".repeat(50),
+  P3: "",
+  S1: "seam",
+  S2: "SEAM",
+  E1: "قماش \u202egnp.exe",
+  R1: "roll",
+  R2: "ROLL",
+  T1: "張力",
+  T2: "t".repeat(300),
+  title: "\u0000\u202e\ufeff",
+};
+
 const point = (u: number, t: number): Vec3 => {
   const x = u * (4 - 0.4 * (1 - t * t));
   const y = t * (2.7 - 0.5 * (1 - u * u));

@@ -7,7 +7,7 @@ import type { Facts } from "../../src/core/records/facts.ts";
 import { crowded } from "./crowdedFacts.ts";
 import { fonts, missing, papersOf, reason, saved, shared, sizeOf, textOf, wordsOf } from "./madePapers.ts";
 import { readCsv } from "./readCsv.ts";
-import { HOSTILE, sampleFacts } from "./sampleFacts.ts";
+import { HOSTILE, STRANGE, sampleFacts } from "./sampleFacts.ts";
 import { withRig } from "./sampleRig.ts";
 
 const SHEETS = { A4: [297, 210], A3: [420, 297], Letter: [279.4, 215.9], Tabloid: [431.8, 279.4] } as const;
@@ -20,6 +20,8 @@ const full = () => withRig(crowded(), { more: 26 });
 const SETS: Record<string, () => Facts> = {
   "plain, A4": plain,
   "hostile names, Letter, imperial": hostile,
+  "names right to left, of 300 letters, empty, equal but for case, A4": () =>
+    withRig(sampleFacts({ names: STRANGE }), { names: STRANGE }),
   "no stop, rig for issue, A3": () => withRig(sampleFacts({ stop: false, sheet: "A3" }), { issuable: true }),
   "no stop, rig on defaults, A4": () => withRig(sampleFacts({ stop: false })),
   "crowded, A4": full,
@@ -60,7 +62,16 @@ describe("writePapers", () => {
       [
         ...["R1", "R2"].flatMap((r) => [`rolls/${r}.dxf`, `rolls/${r}.svg`, `rolls/dxf2000/${r}.dxf`]),
         ...["P1", "P2", "P3"].flatMap((p) => [`panels/${p}.dxf`, `panels/${p}.svg`, `panels/dxf2000/${p}.dxf`]),
-        ...["rolls.csv", "panels.csv", "seams.csv", "roll-sheets.pdf", "panel-cards.pdf", "findings.pdf", "index.pdf"],
+        ...[
+          "rolls.csv",
+          "panels.csv",
+          "seams.csv",
+          "control-lengths.csv",
+          "roll-sheets.pdf",
+          "panel-cards.pdf",
+          "findings.pdf",
+          "index.pdf",
+        ],
         ...rig,
       ].sort(),
     );
@@ -90,7 +101,7 @@ describe("writePapers", () => {
     for (const stop of [true, false]) {
       const facts = sampleFacts({ names: HOSTILE, stop });
       const papers = await papersOf(facts);
-      for (const name of ["rolls.csv", "panels.csv", "seams.csv"]) {
+      for (const name of ["rolls.csv", "panels.csv", "seams.csv", "control-lengths.csv"]) {
         const [head, ...rows] = readCsv(new TextDecoder("utf-8", { fatal: true }).decode(papers.get(name)!));
         const status = head!.indexOf("status");
         for (const row of rows) {
@@ -103,6 +114,12 @@ describe("writePapers", () => {
           expect(Number(rows[0]![length])).toBeCloseTo(facts.panels![0]!.size.length, 1);
           expect(rows[3]![head!.indexOf("roll")]).toBe(HOSTILE.R2);
           expect(Number(rows[0]![head!.indexOf("mass_kg")])).toBeCloseTo(1.05 * facts.panels![0]!.area.cut, 1);
+        }
+        if (name === "control-lengths.csv") {
+          const sides = rows.filter((r) => r[0] === HOSTILE.P1 && r[1] === "side");
+          expect(sides.map((r) => Number(r[4]).toFixed(1))).toEqual(
+            facts.panels![0]!.sides.map((s) => s.lengthFlat.toFixed(1)),
+          );
         }
         if (name === "seams.csv") {
           const of = (column: string) => Number(rows[0]![head!.indexOf(column)]);

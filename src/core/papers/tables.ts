@@ -2,6 +2,7 @@
 // because rows are copied out of lists and travel alone.
 import type { Facts, FactsPanel, FactsSeam } from "../records/facts.ts";
 import { type Cell, numberCell, writeCsv } from "./csv.ts";
+import { measurePanel } from "./panelMeasures.ts";
 import { stampOf } from "./stamp.ts";
 
 const TAIL = ["issue", "revision", "status"];
@@ -83,6 +84,25 @@ export function panelTable(facts: Facts): string {
     ...tailOf(facts),
   ]);
   return writeCsv(header, [...panels, ...pieces]);
+}
+
+/** control-lengths.csv: what is measured on a panel before it is joined; net line, cut edge, straight between cut corners. */
+export function controlTable(facts: Facts): string {
+  const header = ["panel", "what", "name", "of", "net_mm", "cut_mm", "cut_chord_mm", ...TAIL];
+  const mm = (value: number | null): Cell => (value === null ? null : numberCell(value, 1));
+  const rows = (facts.panels ?? []).flatMap((panel) => {
+    const measures = measurePanel(panel);
+    const lines: Cell[][] = panel.sides.map((s, i) => {
+      const { edge, chord } = measures.sides[i];
+      return ["side", `${i + 1}`, s.id, numberCell(s.lengthFlat, 1), mm(edge), mm(chord)];
+    });
+    for (const d of measures.diagonals)
+      lines.push(["diagonal", `${d.from.name} to ${d.to.name}`, null, mm(d.length), mm(d.cutLength), null]);
+    for (const w of measures.widths)
+      lines.push(["width", w.name, `at ${w.station.toFixed(0)} mm`, mm(w.netWidth), mm(w.cutWidth), null]);
+    return lines.map((line) => [panel.id, ...line, ...tailOf(facts)]);
+  });
+  return writeCsv(header, rows);
 }
 
 /** What a panel weighs as cut, kg, or null where the fabric's mass is not known. */

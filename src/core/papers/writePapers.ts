@@ -13,7 +13,7 @@ import { rigFacts } from "./rigReadings.ts";
 import { cableTable, hardwareTable, moveTable } from "./rigTables.ts";
 import { panelDrawing, rollDrawing } from "./rollDrawing.ts";
 import { writeSvg } from "./svg.ts";
-import { panelTable, rollTable, seamTable } from "./tables.ts";
+import { controlTable, panelTable, rollTable, seamTable } from "./tables.ts";
 
 export interface PaperFile {
   /** Relative to the folder of the plan, with forward slashes. */
@@ -59,7 +59,7 @@ function lists(facts: Facts): PaperFile[] {
   const texts: [string, string][] = [];
   const rig = rigFacts(facts);
   if (facts.rolls) texts.push(["rolls.csv", rollTable(facts)]);
-  if (facts.panels) texts.push(["panels.csv", panelTable(facts)]);
+  if (facts.panels) texts.push(["panels.csv", panelTable(facts)], ["control-lengths.csv", controlTable(facts)]);
   if (facts.seams) texts.push(["seams.csv", seamTable(facts)]);
   if ((facts.cables ?? []).length > 0) texts.push(["cables.csv", cableTable(facts)]);
   if (rig) texts.push(["tensioning.csv", moveTable(rig)], ["hardware.csv", hardwareTable(rig)]);

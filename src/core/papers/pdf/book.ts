@@ -50,6 +50,11 @@ const ROW = 10.5;
 const STAMP = 12.5;
 const HEAD = STAMP + 1.5;
 
+/** The facts with metric sheets, for papers whose numbers are not converted. */
+export function asMetric(facts: Facts): Facts {
+  return { ...facts, job: { ...facts.job, units: "metric" } };
+}
+
 /** An empty book in the given faces. */
 export async function openBook(facts: Facts, fonts: FontFiles, title: string, kind: PaperKind): Promise<Book> {
   const doc = await PDFDocument.create({ updateMetadata: false });
@@ -122,8 +127,6 @@ function titleRows(book: Book, sheet: Sheet, n: number): Field[][] {
   const { words, temperature } = paperUnits(job);
   const reference = book.facts.tensioning?.referenceTemperature;
   const at = reference === undefined ? "not stated" : `${temperature.whole(reference)}`;
-  // The sheets for cloth stay metric: the cutting table and the tape on the welding floor are.
-  const units = job.units === "imperial" && book.kind === "cloth" ? "metric on the floor: mm, m, kN/m" : words;
   return [
     [
       { label: "Title", value: given(job.title), share: 0.36 },
@@ -138,7 +141,7 @@ function titleRows(book: Book, sheet: Sheet, n: number): Field[][] {
       { label: "Drawn by", value: given(job.drawnBy), share: 0.17 },
       { label: "Checked by", value: given(job.checkedBy), share: 0.17 },
       { label: "Date", value: given(job.date), share: 0.13 },
-      { label: "Units", value: units, share: 0.35 },
+      { label: "Units", value: words, share: 0.35 },
       { label: "Reference temperature", value: at, share: 0.18 },
     ],
   ];

@@ -5,7 +5,7 @@ import type { Facts } from "../../records/facts.ts";
 import { cautionsOf } from "../cautions.ts";
 import { ENGINEER_SUPPLIES } from "../cautionTexts.ts";
 import { decimal } from "../decimal.ts";
-import { closeBook, type FontFiles, openBook } from "./book.ts";
+import { asMetric, closeBook, type FontFiles, openBook } from "./book.ts";
 import { flowCautionsInPlace } from "./cautionBlock.ts";
 import { drawText, MM, PITCH, SMALL, textWidth } from "./pen.ts";
 import {
@@ -62,7 +62,8 @@ export function valueText(value: number | string | null): string {
 
 /** The bytes of findings.pdf. */
 export async function writeFindingSheets(facts: Facts, fonts: FontFiles): Promise<Uint8Array> {
-  const book = await openBook(facts, fonts, "findings", "findings");
+  // Findings speak in the units the stations judge in.
+  const book = await openBook(asMetric(facts), fonts, "findings", "findings");
   const flow = openFlow(book, "Findings");
   flowSummaryInPlace(flow, facts);
   for (const level of ["stop", "caution"] as const) flowFindingsInPlace(flow, facts, level);

@@ -64,8 +64,8 @@ const ENTRIES: readonly Entry[] = [
     kind: "cloth",
   },
   {
-    path: /^(?:rolls|panels|seams)\.csv$/,
-    name: "rolls, panels, seams .csv",
+    path: /^(?:rolls|panels|seams|control-lengths)\.csv$/,
+    name: "rolls, panels, seams, control-lengths .csv",
     what: "Lists of cloth and seams, metric",
     who: "office",
     kind: "cloth",

@@ -7,7 +7,7 @@ import { measurePanel, type PanelMeasures } from "../panelMeasures.ts";
 import { massOf, placesOf } from "../tables.ts";
 import { drawAssemblyMap } from "./assemblyMap.ts";
 import { flowAssemblyOrder } from "./assemblyOrder.ts";
-import { addSheet, type Book, closeBook, type FontFiles, openBook, type Sheet } from "./book.ts";
+import { addSheet, asMetric, type Book, closeBook, type FontFiles, openBook, type Sheet } from "./book.ts";
 import { cardScale, drawPanelFigure, sideMeets } from "./panelFigure.ts";
 import {
   type BoxArea,
@@ -57,7 +57,8 @@ interface Roof {
 
 /** The bytes of panel-cards.pdf. */
 export async function writePanelCards(facts: Facts, fonts: FontFiles): Promise<Uint8Array> {
-  const book = await openBook(facts, fonts, "panel cards", "cloth");
+  // The welding floor measures what the table has cut, and that is in millimetres.
+  const book = await openBook(asMetric(facts), fonts, "panel cards", "cloth");
   const view = viewRoof(facts);
   const roof: Roof = { view, plan: null };
   for (const panel of facts.panels ?? []) drawCard(book, roof, panel);
