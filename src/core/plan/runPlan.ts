@@ -139,4 +139,5 @@ function runStationsInPlace(
   if (rig.rig) facts.rig = rig.rig;
   if (rig.asBuilt) facts.asBuilt = rig.asBuilt;
   if (rig.tensioning) facts.tensioning = rig.tensioning;
+  if (rig.sensitivity) facts.sensitivity = rig.sensitivity;
 }

@@ -4,7 +4,7 @@ import type { Vec3 } from "../surface/surface.ts";
 import type { Fabric } from "./fabric.ts";
 import type { ControlLengths, PanelMark, StressFigures } from "./flatPanel.ts";
 import type { EdgeKind, Residual } from "./foundForm.ts";
-import type { FactsAsBuilt, FactsCable, FactsRig, FactsTensioning } from "./rig.ts";
+import type { FactsAsBuilt, FactsCable, FactsRig, FactsSensitivity, FactsTensioning } from "./rig.ts";
 import type { NestedRoll } from "./roll.ts";
 import type { LayoutChoice } from "./stripLayout.ts";
 
@@ -120,6 +120,8 @@ export interface Facts {
   rig?: FactsRig;
   asBuilt?: FactsAsBuilt;
   tensioning?: FactsTensioning;
+  /** What errors of making and setting out do to the final forces. */
+  sensitivity?: FactsSensitivity[];
   checks: Check[];
   findings: Finding[];
 }

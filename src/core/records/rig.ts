@@ -178,6 +178,22 @@ export interface FactsWay {
   off: number;
 }
 
+/** What one error does to the final forces, to first order. */
+export interface FactsSensitivity {
+  /** cable-length: that cable too long; anchor: the far pin of that adjuster nearer the sail; compensation: all cloth cut smaller. */
+  what: "cable-length" | "anchor" | "compensation";
+  id: string;
+  /** Size of the error. */
+  change: number;
+  unit: "mm" | "%";
+  /** Change of the force of each adjuster and cable, kN. */
+  forces: Record<string, number>;
+  /** Member it changes most, as a share of that member's force. */
+  greatest: { id: string; share: number };
+  /** Error at which that member is a tenth off, in the same unit; null where nothing changes. */
+  tolerance: number | null;
+}
+
 export interface FactsTensioning {
   referenceTemperature: number;
   stages: FactsStage[];

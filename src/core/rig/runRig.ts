@@ -1,8 +1,7 @@
 // The rig station: cables, the finished state in balance, stages, moves, temperature. Does not read readings back (site).
 import type { Check, Finding, StationContext, StationResult } from "../problem.ts";
-import type { FactsAsBuilt, FactsCable, FactsRig, FactsTensioning } from "../records/rig.ts";
+import type { FactsAsBuilt, FactsCable, FactsRig, FactsSensitivity, FactsTensioning } from "../records/rig.ts";
 import { measureLink } from "../structure/elements.ts";
-import { createEquilibriumSolver } from "../structure/equilibrium.ts";
 import { measureAsBuilt } from "./asBuilt.ts";
 import { buildRig, type Rig } from "./buildRig.ts";
 import { buildCableLine } from "./cableSchedule.ts";
@@ -10,8 +9,9 @@ import { playPlan } from "./playPlan.ts";
 import { findTargetMisses, reviewRig, roundedLimit } from "./reviewRig.ts";
 import { reviewLean, reviewNotches, reviewRest } from "./reviewSteps.ts";
 import type { RigInput } from "./rigInput.ts";
-import { checkLengths, countModes, measureModes, type RigState, solveLengths, solveState } from "./solveLengths.ts";
-import { solveStages } from "./solveStages.ts";
+import { measureSensitivity } from "./sensitivity.ts";
+import { countModes, type RigState } from "./solveLengths.ts";
+import { solveRig } from "./solveRig.ts";
 import { buildTemperatureTable } from "./temperatureTable.ts";
 
 /** Output of the rig station; without adjusters only the cables. */
@@ -20,6 +20,7 @@ export interface RigResult {
   rig: FactsRig | null;
   asBuilt: FactsAsBuilt | null;
   tensioning: FactsTensioning | null;
+  sensitivity: FactsSensitivity[] | null;
 }
 
 /**
@@ -52,25 +53,17 @@ export function runRig(input: RigInput, context: StationContext): StationResult<
       remedy: "name adjusters in the job where turnbuckles or jacks stand",
       basis: "rules of the job file",
     });
-    return { output: { cables: lines, rig: null, asBuilt: null, tensioning: null }, findings, checks };
+    return {
+      output: { cables: lines, rig: null, asBuilt: null, tensioning: null, sensitivity: null },
+      findings,
+      checks,
+    };
   }
-  const solver = createEquilibriumSolver(rig.structure);
-  const cancelled = context.cancelled ? { cancelled: context.cancelled } : {};
-  context.onProgress?.(0.05, "finished state");
-  const first = solveState(rig, solver, { x: rig.structure.xyz, L0: rig.L0 }, context);
-  const targets = rig.adjusters.map((a) => a.target);
-  const geometry = rig.adjusters.map((a) => rig.L0[a.link]);
-  const exact = solveLengths(rig, solver, first, targets, geometry, cancelled);
-  checks.push(checkLengths("finished", exact.off));
-  const stages = solveStages(input, rig, solver, exact, { checks, context });
-  const finished = stages[stages.length - 1].end;
-  const singular = measureModes(rig, stages[stages.length - 1].linear.influence);
+  const solved = solveRig(input, rig, context);
+  checks.push(...solved.checks);
+  const { solver, exact, stages, finished, singular, expansion } = solved;
   const played = playPlan(input.rig, rig, solver, stages, { modes: countModes(singular), context });
   context.onProgress?.(0.92, "temperature table");
-  const expansion = {
-    cables: rig.cables.map((c) => (c.edge === null ? undefined : input.cables[c.edge])?.type.alpha ?? 12e-6),
-    cloth: input.fabric.alpha,
-  };
   const tensioning: FactsTensioning = {
     referenceTemperature: input.rig.temperature,
     stages: played.stages,
@@ -93,7 +86,10 @@ export function runRig(input: RigInput, context: StationContext): StationResult<
     ...reviewNotches(rig, finished, influence, roundedLimit),
   );
   checks.push(...rest.checks, ...review.checks);
-  return { output: { cables: lines, rig: writeRig(rig, finished), asBuilt, tensioning }, findings, checks };
+  context.onProgress?.(0.97, "sensitivity");
+  const sensitivity = measureSensitivity(rig, solver, finished);
+  const output = { cables: lines, rig: writeRig(rig, finished), asBuilt, tensioning, sensitivity };
+  return { output, findings, checks };
 }
 
 function writeRig(rig: Rig, finished: RigState): FactsRig {

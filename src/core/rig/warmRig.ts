@@ -1,0 +1,38 @@
+// The rig at another temperature: free strain on slack lengths and flat shapes. Anchors stay where they are.
+import type { Structure } from "../structure/structure.ts";
+import type { Rig } from "./buildRig.ts";
+
+/** Expansion of adjusters and masts, carbon steel, 1/K (EN 1993-1-11:2006 3.3, from memory). */
+export const steelExpansion = 12e-6;
+
+/** 1/K of every cable in the order of rig.cables, and of the cloth. */
+export interface Expansion {
+  cables: number[];
+  cloth: number;
+}
+
+/** Slack lengths at a temperature `step` K above the reference, m. */
+export function warmLengths(
+  rig: Rig,
+  lengths: Float64Array,
+  expansion: Expansion,
+  step: number,
+): Float64Array<ArrayBuffer> {
+  const L0 = Float64Array.from(lengths);
+  for (const a of rig.adjusters) L0[a.link] *= 1 + steelExpansion * step;
+  for (const s of rig.struts) L0[s.link] *= 1 + steelExpansion * step;
+  rig.cables.forEach((c, k) => {
+    for (let i = 0; i + 1 < c.nodes.length; i++) L0[c.firstLink + i] *= 1 + expansion.cables[k] * step;
+  });
+  return L0;
+}
+
+/** The structure with its cloth grown by a share both ways: warmer, or cut larger. */
+export function growCloth(structure: Structure, share: { warp: number; weft: number }): Structure {
+  const { warp, weft } = share;
+  return {
+    ...structure,
+    shape: structure.shape.map((g, i) => g / (1 + (i % 2 === 0 ? warp : weft))),
+    area: structure.area.map((a) => a * (1 + warp) * (1 + weft)),
+  };
+}
