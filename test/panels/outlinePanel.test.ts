@@ -350,6 +350,26 @@ describe("cut outline, wild panels", () => {
     expect(empty).toBeGreaterThan(0);
   });
 
+  it("frees a clamped line where the flap of its neighbour lies against it in a hollow corner", () => {
+    const { output, checks } = outlinePanel(
+      panelFrom([
+        { kind: "clamped", id: "E1", points: [[0, 0]] },
+        { kind: "cable", id: "E2", points: [[2000, 0]] },
+        { kind: "seam", id: "S1", points: [[3000, -1000]] },
+        { kind: "seam", id: "S2", points: [[4000, 2000]] },
+        { kind: "clamped", id: "E3", points: [[0, 2000]] },
+      ]),
+      NOWHERE,
+      { ...ALLOW, clamp: 0, pocket: 100 },
+    );
+    expect(checks.every((c) => c.holds)).toBe(true);
+    expect(isSimpleRing(output.cut)).toBe(true);
+    // By hand: the flap reaches back over the clamped line to x = 2000 - 100·√2; its line is free all the way to the corner.
+    for (let x = 1700; x < 1999; x += 10) expect(ringDistance(output.cut, x, 0), `at ${x}`).toBeLessThan(1e-6);
+    expect(ringHolds(output.cut, 1990, -20)).toBe(true);
+    expect(ringHolds(output.cut, 1950, -5)).toBe(false);
+  });
+
   it("ends a set-back at its own corner where the next side runs nearly straight on", () => {
     const turn = 0.25;
     const far: [number, number] = [2000 + 2000 * Math.cos(turn), 2000 * Math.sin(turn)];

@@ -60,7 +60,7 @@ export function cutGrid(
     upper: `P${k + 1}`,
     length: measurePath(surface.xyz, column(i)),
   }));
-  return { surface, seams, strips, choices: [] };
+  return { surface, seams, strips, choices: [], estimates: [] };
 }
 
 export function measurePath(xyz: ArrayLike<number>, path: number[], size = 3): number {

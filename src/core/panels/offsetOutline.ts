@@ -3,7 +3,7 @@
 // the folded flap stays inside its own outline. Does not: choose distances, draw marks.
 // Source: own. A flap end mirrors, about the fold line, the cut line of its neighbour, and never flares past the square.
 import type { Ring } from "../records/flatPanel.ts";
-import { isSimpleRing, pointSegmentSquared, ringArea } from "../surface/ring.ts";
+import { isSimpleRing, pointSegmentSquared, ringArea, ringHolds } from "../surface/ring.ts";
 import { simplifyRing } from "../surface/simplifyRing.ts";
 import { subtractRings, unionPositive } from "./polygonBooleans.ts";
 
@@ -27,6 +27,9 @@ const FAR = 20;
 const STRAIGHT = 0.5;
 /** A flap end is closed only at corners whose inner angle is below this (radians). */
 const CLOSED_BELOW = 2.6;
+/** Width of a slot that frees a line from another side's flap, and the steps it is looked for in, mm. */
+const SLOT = 10;
+const SLOT_STEP = 10;
 /** Cut lines are simplified within this, mm. */
 export const FAIRING_MM = 0.05;
 
@@ -242,6 +245,34 @@ function setBackRings(net: Ring, side: SideOffset): Ring[] {
   });
 }
 
+/**
+ * Slots along a side that bears no cloth beyond its line, where another side's flap has come to lie against it in a hollow:
+ * the line must be free to be cut and clamped.
+ */
+function slotRings(net: Ring, side: SideOffset, ring: Ring): Ring[] {
+  const line = sidePoints(net, side);
+  const slots: Ring[] = [];
+  line.slice(1).forEach((q, i) => {
+    const p = line[i];
+    const t = unit(p, q);
+    const out: Point = [t[1], -t[0]];
+    const steps = Math.ceil(gap(p, q) / SLOT_STEP);
+    for (let k = 0; k < steps; k++) {
+      const [a, b] = [k, k + 1].map((m) => add(p, t, (m * gap(p, q)) / steps));
+      const middle = add(add(a, t, gap(a, b) / 2), out, 2);
+      if (!ringHolds(ring, middle[0], middle[1])) continue;
+      slots.push(Float64Array.from([...a, ...add(a, out, SLOT), ...add(b, out, SLOT), ...b]));
+    }
+  });
+  return slots.map((r) => (ringArea(r) > 0 ? r : turnRing(r)));
+}
+
+/** The same ring the other way round. */
+function turnRing(ring: Ring): Ring {
+  const n = ring.length;
+  return ring.map((_, i) => ring[n - 2 - i + 2 * (i & 1)]);
+}
+
 /** Corners of a ring that touch its line elsewhere. */
 function touchingPoints(ring: Ring): Point[] {
   const found: Point[] = [];
@@ -296,6 +327,7 @@ export function offsetOutline(
   if (!isSimpleRing(ring) || ringArea(ring) <= 0) ring = greatest(unionPositive([ring]));
   const away = discs.filter((d) => d.radius > 0).map((d) => discRing(d.x, d.y, d.radius));
   for (const side of sides) if (side.distance < 0) away.push(...setBackRings(net, side));
+  for (const side of sides) if (side.distance === 0) away.push(...slotRings(net, side, ring));
   if (away.length > 0 && ring.length > 0) ring = greatest(subtractRings([ring], away));
   ring = partTouches(ring);
   const fair = simplifyRing(ring, FAIRING_MM);

@@ -13,6 +13,8 @@ import { placeMarks } from "./placeMarks.ts";
 import { buildSideLine, listPoints, middlePoints } from "./sideLine.ts";
 import { isFolded } from "./slitFlaps.ts";
 
+/** How often flaps that do not fold are made narrower: one that gives way makes its neighbours' ends longer. */
+const SHORT_ROUNDS = 3;
 /** The cut line must lie at its allowance within this, mm. */
 const ALLOWANCE_MM = 1;
 
@@ -131,19 +133,16 @@ function chooseOutline(
   place: PanelPlace,
 ): { cut: Ring; allowances: number[]; misses: number[] } {
   const allowances = [...wanted];
-  let cut = cutOutline(panel, net, allowances, place);
-  let misses = measureMisses(panel, cut, allowances);
-  let short = false;
-  panel.sides.forEach((side, k) => {
-    if (misses[k] >= -ALLOWANCE_MM || !isFolded(side)) return;
-    allowances[k] = side.kind === "cable" ? 0 : Math.max(0, 0.8 * (allowances[k] + misses[k]));
-    short = true;
-  });
-  if (short) {
-    cut = cutOutline(panel, net, allowances, place);
-    misses = measureMisses(panel, cut, allowances);
+  for (let round = 0; ; round++) {
+    const cut = cutOutline(panel, net, allowances, place);
+    const misses = measureMisses(panel, cut, allowances);
+    const short = [...panel.sides.keys()].filter(
+      (k) => misses[k] < -ALLOWANCE_MM && isFolded(panel.sides[k]) && allowances[k] > 0,
+    );
+    if (short.length === 0 || round === SHORT_ROUNDS) return { cut, allowances, misses };
+    for (const k of short)
+      allowances[k] = panel.sides[k].kind === "cable" ? 0 : Math.max(0, 0.8 * (allowances[k] + misses[k]));
   }
-  return { cut, allowances, misses };
 }
 
 /**
