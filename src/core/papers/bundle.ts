@@ -1,6 +1,6 @@
 // All papers of a plan in one zip. No clock: every entry carries the job's date, or the first day a zip can hold.
 import { type Zippable, zipSync } from "fflate";
-import type { PaperFile } from "./writePapers.ts";
+import type { PaperFile } from "./paperFile.ts";
 
 /** Entries of a zip hold years from 1980 to 2099. */
 const EARLIEST = "1980-01-01";

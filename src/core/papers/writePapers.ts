@@ -7,6 +7,7 @@ import type { Drawing } from "./drawing.ts";
 import { writeDxf2000 } from "./dxf2000.ts";
 import { writeDxfR12 } from "./dxfR12.ts";
 import { fileNames } from "./fileNames.ts";
+import type { PaperFile } from "./paperFile.ts";
 import type { FontFiles } from "./pdf/book.ts";
 import { tableBites } from "./placedCloth.ts";
 import { rigFacts } from "./rigReadings.ts";
@@ -14,12 +15,6 @@ import { cableTable, hardwareTable, moveTable } from "./rigTables.ts";
 import { panelDrawing, rollDrawing } from "./rollDrawing.ts";
 import { writeSvg } from "./svg.ts";
 import { controlTable, panelTable, rollTable, seamTable } from "./tables.ts";
-
-export interface PaperFile {
-  /** Relative to the folder of the plan, with forward slashes. */
-  path: string;
-  bytes: Uint8Array;
-}
 
 type Wants = (choice: PaperChoice) => boolean;
 

@@ -15,12 +15,12 @@ const SEAM_COLUMNS: readonly Column[] = [
   { head: ["Panel on", "top"], width: 28, bold: true },
   { head: ["Panel", "below"], width: 28 },
   { head: ["On the", "form, m"], width: 20, align: "end" },
-  { head: ["Flat, top", "panel, mm"], width: 24, align: "end" },
-  { head: ["Flat, panel", "below, mm"], width: 24, align: "end" },
-  { head: ["Difference,", "mm"], width: 24, align: "end" },
-  { head: ["Allowance,", "on top / below, mm"], width: 36, align: "end" },
+  { head: ["Flat,", "on top,", "mm"], width: 24, align: "end" },
+  { head: ["Flat,", "below,", "mm"], width: 24, align: "end" },
+  { head: ["Differ-", "ence,", "mm"], width: 24, align: "end" },
+  { head: ["Allowance,", "top / below,", "mm"], width: 34, align: "end" },
   { head: ["Cable"], width: 18 },
-  { head: ["Welded by, date"], width: 36 },
+  { head: ["Welded by,", "date"], width: 36 },
 ];
 
 const PIECE_COLUMNS: readonly Column[] = [

@@ -47,7 +47,7 @@ export function flowAssemblyOrder(book: Book): void {
     { head: ["Length,", span.unit], width: 24, align: "end" },
     { head: ["Panels in", "the piece"], width: 24, align: "end" },
     { head: ["It weighs", "about"], width: 30, align: "end" },
-    { head: ["Welded by, date"], width: 36 },
+    { head: ["Welded by,", "date"], width: 36 },
   ];
   const rows = steps.map((s, i) => [
     `${i + 1}`,

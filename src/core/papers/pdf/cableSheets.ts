@@ -41,15 +41,15 @@ function flowCables(book: Book): void {
   const { force, stiffness, span, temperature } = paperUnits(facts.job);
   const columns: readonly Column[] = [
     { head: ["Cable"], width: 34, bold: true },
-    { head: ["Type"], width: 42 },
-    { head: ["EA,", stiffness.unit], width: 21, align: "end" },
+    { head: ["Type"], width: 36 },
+    { head: ["EA,", stiffness.unit], width: 19, align: "end" },
     { head: ["Force,", force.unit], width: 20, align: "end" },
-    { head: ["Erected,", span.unit], width: 26, align: "end" },
-    { head: ["Slack,", span.unit], width: 26, align: "end" },
-    { head: ["CUT to,", span.unit], width: 26, align: "end", bold: true },
-    { head: ["Mark at", `${force.unit}, ${temperature.unit}`], width: 30, align: "end" },
-    { head: ["Breaking,", force.unit], width: 25, align: "end" },
-    { head: ["Used"], width: 19, align: "end" },
+    { head: ["Erected,", span.unit], width: 33, align: "end" },
+    { head: ["Slack,", span.unit], width: 33, align: "end" },
+    { head: ["CUT to,", span.unit], width: 34, align: "end", bold: true },
+    { head: ["Mark at", `${force.unit}, ${temperature.unit}`], width: 28, align: "end" },
+    { head: ["Breaking,", force.unit], width: 28, align: "end" },
+    { head: ["Used"], width: 18, align: "end" },
   ];
   const rows = (facts.cables ?? []).map((c) => [
     c.id,
@@ -119,11 +119,11 @@ function flowHardware(book: Book, rig: RigFacts): void {
   const { force, pins, travel } = paperUnits(rig.facts.job);
   const columns: readonly Column[] = [
     { head: ["Adjuster"], width: 30, bold: true },
-    { head: ["Anchor"], width: 30 },
-    { head: ["Turnbuckle"], width: 40 },
+    { head: ["Anchor"], width: 26 },
+    { head: ["Turnbuckle"], width: 36 },
     { head: ["A turn,", travel.unit], width: 24, align: "end" },
     { head: ["Range, pin to", `pin, ${pins.unit}`], width: 40, align: "end" },
-    { head: ["Finished,", pins.unit], width: 26, align: "end", bold: true },
+    { head: ["Finished,", pins.unit], width: 30, align: "end", bold: true },
     { head: ["Travel", `used, ${travel.unit}`], width: 28, align: "end" },
     { head: ["Left, in /", `out, ${travel.unit}`], width: 36, align: "end" },
     { head: ["Force,", force.unit], width: 22, align: "end" },

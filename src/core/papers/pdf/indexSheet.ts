@@ -44,7 +44,7 @@ const ENTRIES: readonly Entry[] = [
   },
   {
     path: /\/dxf2000\//,
-    name: "…/dxf2000/",
+    name: "dxf2000/ in each",
     what: "The same cut files as DXF 2000",
     who: "cutting table",
     kind: "cloth",

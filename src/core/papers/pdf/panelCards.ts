@@ -30,16 +30,16 @@ const FOOT = 27;
 const LEAST_FIGURE = 52;
 
 const SIDE_COLUMNS: readonly Column[] = [
-  { head: ["No."], width: 9 },
-  { head: ["Seam", "or edge"], width: 28 },
-  { head: ["Meets"], width: 26 },
+  { head: ["No."], width: 10 },
+  { head: ["Seam", "or edge"], width: 26 },
+  { head: ["Meets"], width: 27 },
   { head: ["Net,", "mm"], width: 15, align: "end", bold: true },
   { head: ["Edge,", "mm"], width: 15, align: "end" },
-  { head: ["Chord,", "mm"], width: 15, align: "end" },
-  { head: ["On the", "form, m"], width: 17, align: "end" },
-  { head: ["Allow-", "ance, mm"], width: 23, align: "end" },
+  { head: ["Chord,", "mm"], width: 16.5, align: "end" },
+  { head: ["On the", "form, m"], width: 18, align: "end" },
+  { head: ["Allow-", "ance, mm"], width: 24, align: "end" },
   { head: ["Lap"], width: 14 },
-  { head: ["Tape,", "mm"], width: 17 },
+  { head: ["Tape,", "mm"], width: 13.5 },
 ];
 
 const CHECK_COLUMNS: readonly Column[] = [
@@ -174,8 +174,8 @@ function drawCard(book: Book, roof: Roof, panel: FactsPanel): void {
   });
   drawPanelFigure({ book, sheet, panel, measures, box, scale });
   const top = box.y - 2;
-  drawTable(book, sheet, SIDE_COLUMNS, rows.slice(0, shown), { left: sheet.left, width: width * 0.685, y: top });
-  drawTable(book, sheet, CHECK_COLUMNS, checks, { left: sheet.left + width * 0.7, width: width * 0.3, y: top });
+  drawTable(book, sheet, SIDE_COLUMNS, rows.slice(0, shown), { left: sheet.left, width: width * 0.7, y: top });
+  drawTable(book, sheet, CHECK_COLUMNS, checks, { left: sheet.left + width * 0.71, width: width * 0.29, y: top });
   drawFoot(book, sheet, roof, panel);
   drawMoreSides(book, panel, rows.slice(shown));
 }

@@ -118,13 +118,13 @@ function pieceTable(book: Book, cloth: readonly PlacedCloth[]): { columns: reado
   const columns: readonly Column[] = [
     { head: ["No."], width: 14, bold: true },
     { head: ["Piece"], width: 44, bold: true },
-    { head: ["What"], width: 40 },
-    { head: ["From,", flat.unit], width: 24, align: "end" },
-    { head: ["To,", flat.unit], width: 24, align: "end" },
+    { head: ["What"], width: 32 },
+    { head: ["From,", flat.unit], width: 35, align: "end" },
+    { head: ["To,", flat.unit], width: 35, align: "end" },
     { head: ["Turned"], width: 20, align: "end" },
     { head: ["Cut area,", area.unit], width: 24, align: "end" },
-    { head: ["Cut"], width: 18 },
-    { head: ["Marked"], width: 18 },
+    { head: ["Cut"], width: 15 },
+    { head: ["Marked"], width: 22 },
     { head: ["By, date"], width: 30 },
   ];
   const rows = cloth.map((c, n) => [
@@ -159,12 +159,12 @@ function flowClothList(book: Book): void {
     { head: ["Roll"], width: 36, bold: true },
     { head: ["Fabric"], width: 46 },
     { head: ["Batch"], width: 34 },
-    { head: ["Width,", flat.unit], width: 26, align: "end" },
-    { head: ["Used,", span.unit], width: 28, align: "end", bold: true },
-    { head: ["On the roll,", span.unit], width: 28, align: "end" },
-    { head: ["Pieces"], width: 18, align: "end" },
+    { head: ["Width,", flat.unit], width: 33, align: "end" },
+    { head: ["Used,", span.unit], width: 36, align: "end", bold: true },
+    { head: ["On the roll,", span.unit], width: 36, align: "end" },
+    { head: ["Pieces"], width: 22, align: "end" },
     { head: ["Cloth", "used"], width: 20, align: "end" },
-    { head: ["Given out, date"], width: 36 },
+    { head: ["Given out"], width: 36 },
   ];
   const rows = rolls.map((r) => [
     r.id,

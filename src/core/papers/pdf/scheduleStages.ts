@@ -49,15 +49,15 @@ function percent(share: number): string {
 function moveColumns(rig: RigFacts): Column[] {
   const { pins, force } = paperUnits(rig.facts.job);
   return [
-    { head: ["", "Step"], width: 14, bold: true },
+    { head: ["", "Step"], width: 17, bold: true },
     { head: ["", "Adjuster"], width: 26, bold: true },
     { head: ["", "Way"], width: 31, bold: true },
     { head: ["Turn by", "travel"], width: 36, bold: true },
-    { head: ["Pins, by tape", pins.unit], width: 36 },
+    { head: ["Pins, by tape", pins.unit], width: 41 },
     { head: ["Gauge", force.unit], width: 19, align: "end", bold: true },
     { head: ["Window", force.unit], width: 34, align: "end" },
     { head: ["STOP at first", "of the two"], width: 36, bold: true },
-    { head: ["Nearest", "its limit"], width: 36 },
+    { head: ["Nearest", "its limit"], width: 34 },
   ];
 }
 
