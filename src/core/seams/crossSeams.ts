@@ -30,6 +30,12 @@ const TOGETHER = 0.15;
 /** A flank may end a seam only this share of a mesh side away from a vertex, or in it. */
 const KEEP_OFF = 0.05;
 
+/** Places this far from where a seam across should end are tried, m; beside being square to the strip, being there counts this much. */
+const REACH = 0.6;
+const ASIDE = 0.25;
+/** Pairs of places traced at most for one seam. */
+const TRIES = 6;
+
 /** A flank of strips: places with arc lengths. */
 interface Flank {
   points: readonly SurfacePoint[];
@@ -58,24 +64,37 @@ function listFlanks(layout: RegionLayout): Flank[] {
   return [rim(candidate.left), ...lines, rim(candidate.right)];
 }
 
-/** The flank's own place nearest to arc length s that may end a seam; -1 where it has none between its ends. */
-function findPlace(flank: Flank, s: number): number {
-  const { points, arc, taken } = flank;
-  const goal = taken.find((t) => Math.abs(t - s) < TOGETHER) ?? s;
-  let best = -1;
-  for (let i = 1; i < points.length - 1; i++) {
-    const { a, b, t } = points[i];
-    if (a !== b && (t < KEEP_OFF || t > 1 - KEEP_OFF)) continue;
-    if (best < 0 || Math.abs(arc[i] - goal) < Math.abs(arc[best] - goal)) best = i;
-  }
-  return best;
+/** A place on a flank that may end a seam. */
+interface Stop {
+  point: SurfacePoint;
+  at: number;
+  share: number;
 }
 
-/** Arc length of a share of a flank; a flank of one point has only that. */
-function endOn(flank: Flank, share: number): { point: SurfacePoint; at: number } | null {
-  if (flank.points.length === 1) return { point: flank.points[0], at: 0 };
-  const i = findPlace(flank, share * flank.arc[flank.arc.length - 1]);
-  return i < 0 ? null : { point: flank.points[i], at: flank.arc[i] };
+/** The flank's own places within reach of a share of it: clear of vertices, of the seam across before, and of others' ends or on them. */
+function listStops(flank: Flank, share: number, after: number): Stop[] {
+  const { points, arc, taken } = flank;
+  const total = arc[arc.length - 1];
+  if (points.length === 1) return [{ point: points[0], at: 0, share }];
+  const stops: Stop[] = [];
+  for (let i = 1; i < points.length - 1; i++) {
+    const { a, b, t } = points[i];
+    const at = arc[i];
+    if (Math.abs(at - share * total) > REACH || at < after + TOGETHER || at < TOGETHER || at > total - TOGETHER)
+      continue;
+    if (a !== b && (t < KEEP_OFF || t > 1 - KEEP_OFF)) continue;
+    if (taken.some((s) => s !== at && Math.abs(s - at) < TOGETHER)) continue;
+    stops.push({ point: points[i], at, share: at / total });
+  }
+  return stops;
+}
+
+/** Pairs of places for a seam at a share of both flanks, the squarest and nearest first. */
+function pairStops(before: readonly Stop[], after: readonly Stop[], share: number): [Stop, Stop][] {
+  const cost = ([p, q]: [Stop, Stop]) =>
+    Math.abs(p.share - q.share) + ASIDE * (Math.abs(p.share - share) + Math.abs(q.share - share));
+  const pairs = before.flatMap((p) => after.map((q): [Stop, Stop] => [p, q]));
+  return pairs.sort((x, y) => cost(x) - cost(y)).slice(0, TRIES);
 }
 
 /** Shares at which a strip of this length is parted into n pieces no longer than most, moved by `shift` m. */
@@ -83,7 +102,7 @@ function shareOut(length: number, n: number, shift: number): number[] {
   return Array.from({ length: n - 1 }, (_, k) => (k + 1) / n + shift / length);
 }
 
-/** Seams of one strip, or null where one would leave it. */
+/** Seams of one strip, or null where one finds no place or would leave the strip. */
 function crossStrip(
   layout: RegionLayout,
   flanks: Flank[],
@@ -94,15 +113,18 @@ function crossStrip(
   const seams: CrossSeam[] = [];
   const ends: [number, number][] = [];
   for (const [k, share] of shares.entries()) {
-    const p = endOn(before, share);
-    const q = endOn(after, share);
-    if (!p || !q) return null;
-    const last = ends[ends.length - 1];
-    if (last && (p.at <= last[0] || q.at <= last[1])) return null;
-    const line = traceSeam(layout.region, p.point, q.point);
-    if (!line.clear) return null;
-    ends.push([p.at, q.at]);
-    seams.push({ line, strip, piece: k });
+    const last = ends[ends.length - 1] ?? [0, 0];
+    const pairs = pairStops(listStops(before, share, last[0]), listStops(after, share, last[1]), share);
+    let laid = false;
+    for (const [p, q] of pairs) {
+      const line = traceSeam(layout.region, p.point, q.point);
+      if (!line.clear) continue;
+      ends.push([p.at, q.at]);
+      seams.push({ line, strip, piece: k });
+      laid = true;
+      break;
+    }
+    if (!laid) return null;
   }
   for (const [p, q] of ends) {
     before.taken.push(p);
