@@ -3,21 +3,12 @@
 // the folded flap stays inside its own outline. Does not: choose distances, draw marks.
 // Source: own. A flap end mirrors, about the fold line, the cut line of its neighbour, and never flares past the square.
 import type { Ring } from "../records/flatPanel.ts";
-import { isSimpleRing, pointSegmentSquared, ringArea, ringHolds } from "../surface/ring.ts";
+import { isSimpleRing, pointSegmentSquared, ringArea } from "../surface/ring.ts";
 import { simplifyRing } from "../surface/simplifyRing.ts";
+import { discRing, setBackRings, slotRings } from "./clearRings.ts";
 import { subtractRings, unionPositive } from "./polygonBooleans.ts";
-
-type Point = [number, number];
-
-/** A run of the net ring from point `from` on to point `to` (equal: all the way round) and how far its cut line lies outside. */
-export interface SideOffset {
-  from: number;
-  to: number;
-  /** mm, negative inward. */
-  distance: number;
-  /** True for a flap that is folded back along the net line. */
-  fold: boolean;
-}
+import type { Point } from "./sideLine.ts";
+import { add, cross, dot, gap, type SideOffset, sidePoints, unit } from "./sideOffset.ts";
 
 /** A tip reaches at most this many distances from its corner. */
 const TIP = 2.5;
@@ -27,9 +18,6 @@ const FAR = 20;
 const STRAIGHT = 0.5;
 /** A flap end is closed only at corners whose inner angle is below this (radians). */
 const CLOSED_BELOW = 2.6;
-/** Width of a slot that frees a line from another side's flap, and the steps it is looked for in, mm. */
-const SLOT = 10;
-const SLOT_STEP = 10;
 /** Cut lines are simplified within this, mm. */
 export const FAIRING_MM = 0.05;
 
@@ -48,25 +36,6 @@ interface Arm {
 interface Trim {
   at: number;
   point: Point;
-}
-
-const add = (p: Point, u: Point, s: number): Point => [p[0] + s * u[0], p[1] + s * u[1]];
-const dot = (u: Point, v: Point) => u[0] * v[0] + u[1] * v[1];
-const cross = (u: Point, v: Point) => u[0] * v[1] - u[1] * v[0];
-const gap = (p: Point, q: Point) => Math.hypot(q[0] - p[0], q[1] - p[1]);
-function unit(p: Point, q: Point): Point {
-  const length = gap(p, q) || 1;
-  return [(q[0] - p[0]) / length, (q[1] - p[1]) / length];
-}
-
-/** Net points of a side, both ends included. */
-function sidePoints(net: Ring, side: SideOffset): Point[] {
-  const n = net.length / 2;
-  const count = ((side.to - side.from + n - 1) % n) + 1;
-  return Array.from({ length: count + 1 }, (_, k): Point => {
-    const i = (side.from + k) % n;
-    return [net[2 * i], net[2 * i + 1]];
-  });
 }
 
 /** The line moved to its right by d: mitred at inner points, two points where the turn is too sharp for that. */
@@ -234,45 +203,6 @@ function greatest(rings: Ring[]): Ring {
   return best;
 }
 
-/** The cloth a set-back takes away, segment by segment, a hair less deep than the set-back so that its line stands. */
-function setBackRings(net: Ring, side: SideOffset): Ring[] {
-  const line = sidePoints(net, side);
-  const depth = side.distance + 0.01;
-  return line.slice(1).map((q, i) => {
-    const t = unit(line[i], q);
-    const [a, b] = [add(line[i], [t[1], -t[0]], depth), add(q, [t[1], -t[0]], depth)];
-    return Float64Array.from([...line[i], ...a, ...b, ...q].reverse().map((_, k, all) => all[k ^ 1]));
-  });
-}
-
-/**
- * Slots along a side that bears no cloth beyond its line, where another side's flap has come to lie against it in a hollow:
- * the line must be free to be cut and clamped.
- */
-function slotRings(net: Ring, side: SideOffset, ring: Ring): Ring[] {
-  const line = sidePoints(net, side);
-  const slots: Ring[] = [];
-  line.slice(1).forEach((q, i) => {
-    const p = line[i];
-    const t = unit(p, q);
-    const out: Point = [t[1], -t[0]];
-    const steps = Math.ceil(gap(p, q) / SLOT_STEP);
-    for (let k = 0; k < steps; k++) {
-      const [a, b] = [k, k + 1].map((m) => add(p, t, (m * gap(p, q)) / steps));
-      const middle = add(add(a, t, gap(a, b) / 2), out, 2);
-      if (!ringHolds(ring, middle[0], middle[1])) continue;
-      slots.push(Float64Array.from([...a, ...add(a, out, SLOT), ...add(b, out, SLOT), ...b]));
-    }
-  });
-  return slots.map((r) => (ringArea(r) > 0 ? r : turnRing(r)));
-}
-
-/** The same ring the other way round. */
-function turnRing(ring: Ring): Ring {
-  const n = ring.length;
-  return ring.map((_, i) => ring[n - 2 - i + 2 * (i & 1)]);
-}
-
 /** Corners of a ring that touch its line elsewhere. */
 function touchingPoints(ring: Ring): Point[] {
   const found: Point[] = [];
@@ -299,18 +229,6 @@ function partTouches(ring: Ring): Ring {
     out = greatest(subtractRings([out], nibbles));
   }
   return out;
-}
-
-/** A many-sided ring round a circle, its flats no more than 0.1 mm outside. */
-function discRing(x: number, y: number, radius: number): Ring {
-  const n = Math.max(16, Math.ceil(Math.PI / Math.acos(1 / (1 + 0.1 / radius))));
-  const r = radius / Math.cos(Math.PI / n);
-  const ring = new Float64Array(2 * n);
-  for (let k = 0; k < n; k++) {
-    ring[2 * k] = x + r * Math.cos((2 * Math.PI * k) / n);
-    ring[2 * k + 1] = y + r * Math.sin((2 * Math.PI * k) / n);
-  }
-  return ring;
 }
 
 /**
