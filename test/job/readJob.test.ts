@@ -73,6 +73,7 @@ describe("the full job", () => {
       checkedBy: "M. N.",
       sheet: "A3",
       units: "imperial",
+      site: { windMean: 6, windGust: 9, temperatureLeast: 5, setBy: "the engineer" },
     });
     expect(read).toMatchObject({ mesh: { file: "form.obj" }, unit: "m", up: "z", outside: "up" });
   });
@@ -107,7 +108,7 @@ describe("the full job", () => {
     const notes = read.findings.filter((f) => f.code === "job-key-without-effect");
     expect(notes.every((f) => f.level === "note")).toBe(true);
     const where = notes.flatMap((f) => f.where);
-    for (const key of ["rig.struts[0].pinned", "survey", "papers.site", "papers.units"]) {
+    for (const key of ["rig.struts[0].pinned", "survey"]) {
       expect(where.filter((w) => w === key)).toEqual([key]);
     }
   });
@@ -159,7 +160,7 @@ describe("the least job", () => {
       allowances: { seam: 40, seamOn: "both", pocket: 100, pocketStrip: false, clamp: 0, hem: 40 },
       rolls: null,
       nest: { steps: 200, seconds: null, seed: 1, gap: 10, turn: true, bite: null, pins: [] },
-      papers: { date: "", drawnBy: "", checkedBy: "", sheet: "A4", units: "metric" },
+      papers: { date: "", drawnBy: "", checkedBy: "", sheet: "A4", units: "metric", site: null },
     });
     expect(read).toMatchObject({ mesh: { file: "form.obj" }, unit: "m", up: "z", outside: "up" });
   });

@@ -199,7 +199,7 @@ export function makeJob(seams: Partial<SeamDecision> = {}): Job {
       },
       defaultTurnbuckle: {} as never,
     },
-    papers: { date: "", drawnBy: "", checkedBy: "", sheet: "A4", units: "metric" },
+    papers: { date: "", drawnBy: "", checkedBy: "", sheet: "A4", units: "metric", site: null },
   };
 }
 

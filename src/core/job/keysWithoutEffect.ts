@@ -3,20 +3,15 @@
 import type { Finding } from "../problem.ts";
 import { writePath } from "./jobProblems.ts";
 
-/** "*" stands for any name or number. `plain`: the value that asks for nothing, so that nothing need be said. */
-const KEYS: { path: string[]; plain?: unknown }[] = [
-  { path: ["papers", "units"], plain: "metric" },
-  { path: ["papers", "site"] },
-  { path: ["rig", "struts", "*", "pinned"] },
-  { path: ["survey"] },
-];
+/** "*" stands for any name or number. */
+const KEYS: string[][] = [["rig", "struts", "*", "pinned"], ["survey"]];
 
 /** One note for each such key that the job gives. */
 export function noteKeysWithoutEffect(job: unknown): Finding[] {
-  return KEYS.flatMap(({ path, plain }): Finding[] => {
-    const found = findPaths(job, path, []).filter((f) => f.value !== plain);
+  return KEYS.flatMap((path): Finding[] => {
+    const found = findPaths(job, path, []);
     if (found.length === 0) return [];
-    const where = found.map((f) => writePath(f.path));
+    const where = found.map(writePath);
     return [
       {
         code: "job-key-without-effect",
@@ -33,10 +28,11 @@ export function noteKeysWithoutEffect(job: unknown): Finding[] {
   });
 }
 
-function findPaths(value: unknown, path: string[], before: PropertyKey[]): { path: PropertyKey[]; value: unknown }[] {
-  if (path.length === 0) return [{ path: before, value }];
+/** Paths in a value that fit the pattern. */
+function findPaths(value: unknown, pattern: string[], before: PropertyKey[]): PropertyKey[][] {
+  if (pattern.length === 0) return [before];
   if (value === null || typeof value !== "object") return [];
-  const [step, ...rest] = path;
+  const [step, ...rest] = pattern;
   if (step !== "*") {
     if (!Object.hasOwn(value, step)) return [];
     return findPaths((value as Record<string, unknown>)[step], rest, [...before, step]);

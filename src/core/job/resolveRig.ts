@@ -28,8 +28,8 @@ function resolveTurnbuckle(given: FileAdjuster["turnbuckle"], catalogues: Catalo
 }
 
 function readTurnbuckle(id: string, catalogues: Catalogues): Turnbuckle {
-  const { perTurn, shortest, longest, capacity, status } = catalogues.turnbuckles[id];
-  return { id, perTurn, shortest, longest, capacity, status };
+  const { perTurn, shortest, longest, capacity, thread, status } = catalogues.turnbuckles[id];
+  return { id, perTurn, shortest, longest, capacity, thread, status };
 }
 
 /** The rig as the job gives it; names and places are checked against the form later. */

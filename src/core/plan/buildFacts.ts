@@ -21,11 +21,11 @@ function listPath(surface: Surface, vertices: readonly number[]): Vec3[] {
 
 /** Head of the file: what stands in every title block. */
 export function buildHead(job: Job, revision: string): Facts {
-  const { date, drawnBy, checkedBy, sheet, units } = job.papers;
+  const { site, ...papers } = job.papers;
   return {
     format: "seamstay-facts",
     version: 1,
-    job: { title: job.title, issue: job.issue, revision, date, drawnBy, checkedBy, sheet, units, mesh: job.meshName },
+    job: { title: job.title, issue: job.issue, revision, ...papers, mesh: job.meshName, ...(site ? { site } : {}) },
     fabrics: { [job.fabric.id]: job.fabric },
     checks: [],
     findings: [],

@@ -106,6 +106,8 @@ export interface PapersDecision {
   checkedBy: string;
   sheet: "A4" | "A3" | "Letter" | "Tabloid";
   units: "metric" | "imperial";
+  /** What the engineer of the site has set; null: nothing. */
+  site: Record<string, number | string | boolean> | null;
 }
 
 /** The rig as the job gives it: null where it leaves a thing to the rules. */

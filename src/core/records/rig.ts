@@ -12,6 +12,8 @@ export interface Turnbuckle {
   longest: number;
   /** kN, null where not given */
   capacity: number | null;
+  /** Nominal diameter of its thread, mm, where known. */
+  thread?: number;
   status: Record<string, ValueStatus>;
 }
 

@@ -125,6 +125,7 @@ function writeRig(rig: Rig, finished: RigState): FactsRig {
       capacity: a.turnbuckle.capacity,
       range: { shortest: a.turnbuckle.shortest / 1000, longest: a.turnbuckle.longest / 1000 },
       perTurn: a.turnbuckle.perTurn,
+      ...(a.turnbuckle.thread === undefined ? {} : { thread: a.turnbuckle.thread }),
       anchor: a.anchor,
       turnbuckle: a.turnbuckle.id,
     })),
