@@ -1,6 +1,7 @@
 // From the arguments to the verb, and from whatever goes wrong to one block of text and an exit status.
 import { PlanError } from "../core/problem.ts";
 import { checkCommand } from "./checkCommand.ts";
+import { correctCommand } from "./correctCommand.ts";
 import { demoCommand } from "./demoCommand.ts";
 import type { Surroundings } from "./makePlan.ts";
 import { openCommand } from "./openCommand.ts";
@@ -51,6 +52,8 @@ async function dispatch(verb: string | undefined, rest: string[], around: Surrou
       return await planCommand(rest, around);
     case "check":
       return await checkCommand(rest, around);
+    case "correct":
+      return await correctCommand(rest, around);
     case "start":
       return await startCommand(rest, around.terminal);
     case "open":

@@ -30,6 +30,17 @@ export const VERBS: { verb: string; call: string; words: string; more: string[] 
     more: [],
   },
   {
+    verb: "correct",
+    call: "correct JOB --readings FILE.csv [--stage PERCENT] [--out DIR] [--json] [--quiet]",
+    words: "says what to turn after forces and places have been read on site",
+    more: [
+      "  FILE.csv    time,by,id,force_kN,frequency_Hz,free_length_m,mass_kg_m,temperature_C,x,y,z; one row a reading:",
+      "              a force, or a frequency with free length and mass, or the place of an anchor or corner",
+      "  --stage N   read at the end of that stage, in per cent; the finished roof where it is left out",
+      "  --out DIR   keeps readings and correction there under the next free number; nothing is overwritten",
+    ],
+  },
+  {
     verb: "open",
     call: "open [JOB|FORM.obj] [--port N]",
     words: "serves the page to this machine only, with a job in it where one is named, until Ctrl-C",

@@ -209,3 +209,46 @@ export interface FactsTensioning {
   /** True where every input the schedule stands on was given by the job. */
   issuable: boolean;
 }
+
+/** One row of the crew's readings: a force, or what a force follows from, or a place. */
+export interface Reading {
+  /** Line of the file, the header is 1. */
+  row: number;
+  time: string;
+  by: string;
+  /** Adjuster, cable, stay, anchor or corner. */
+  id: string;
+  /** degC; null: as the plan's reference */
+  temperature: number | null;
+  /** kN */
+  force: number | null;
+  /** First natural frequency (Hz) of a free span (m) with its mass (kg/m). */
+  vibration: { frequency: number; length: number; mass: number } | null;
+  /** m */
+  at: Vec3 | null;
+}
+
+/** One turn the crew makes to set right what was read. */
+export interface CorrectionMove {
+  step: number;
+  adjuster: string;
+  /** mm, positive shortens */
+  travel: number;
+  turns: number;
+  /** What its gauge will read right after, kN, with its window. */
+  expect: number;
+  low: number;
+  high: number;
+  greatest: FactsMove["greatest"];
+}
+
+/** What readings say of the roof, and what to do. */
+export interface Correction {
+  /** Stage whose end the readings are held against. */
+  stage: string;
+  /** The state that fits the readings best: how far each adjuster is from its planned length, mm (positive longer), how sure that is (one standard deviation, mm), and its force, kN. */
+  fitted: { adjuster: string; off: number; sure: number; force: number }[];
+  moves: CorrectionMove[];
+  /** After the moves: forces of adjusters, cables and masts, kN, and where the corners stand, m. */
+  forecast: { forces: Record<string, number>; corners: Record<string, Vec3> };
+}

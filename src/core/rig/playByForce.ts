@@ -50,7 +50,7 @@ export function playByForce(
 }
 
 /** Turns one adjuster by whole notches until its own force is within half a notch of what is wanted. */
-function turnUntil(
+export function turnUntil(
   rig: Rig,
   solver: EquilibriumSolver,
   start: RigState,
