@@ -6,9 +6,10 @@ import type { StationContext } from "../problem.ts";
 import type { CutPanel } from "../records/flatPanel.ts";
 import type { FoundForm } from "../records/foundForm.ts";
 import type { Job } from "../records/job.ts";
-import type { LayoutEstimate } from "../records/stripLayout.ts";
+import type { LayoutEstimate, LayoutRow } from "../records/stripLayout.ts";
 import { runSeams, type SeamOptions } from "../seams/runSeams.ts";
 import { type ClothRoom, firstOptions, isTurned, measureExtent, measureRoom } from "./clothRoom.ts";
+import { joinRows, measureRows } from "./compareLayouts.ts";
 import { easeStress, measureStressExcess } from "./easeStress.ts";
 import type { Fitted, RunBoth } from "./fitted.ts";
 
@@ -129,15 +130,8 @@ function fitWidths(runBoth: RunBoth, room: ClothRoom, lap: number): { fitted: Fi
   return best;
 }
 
-/** Lays out, flattens and outlines until every panel fits the room, widths are alike and the stress error is in bounds. */
-export function fitPanels(form: FoundForm, job: Job, context: FitContext): Fitted {
-  const runBoth: RunBoth = (options) => {
-    context.onStation("seams");
-    const seams = runSeams(form, job, options, context.seams);
-    context.onStation("panels");
-    const panels = runPanels(seams.output, form, job, context.panels);
-    return { seams, panels };
-  };
+/** Fits as fitPanels does, without the table. */
+function fitAll(runBoth: RunBoth, job: Job): Fitted {
   const room = measureRoom(job);
   const lap = job.allowances.seam / 1000;
   const { fitted, options } = fitWidths(runBoth, room, lap);
@@ -149,6 +143,24 @@ export function fitPanels(form: FoundForm, job: Job, context: FitContext): Fitte
     isBetter(judge(again, room), judge(eased.fitted, room)) &&
     worstStress(again) <= Math.max(1, worstStress(eased.fitted));
   return eased.tell(better ? again : eased.fitted);
+}
+
+/** Lays out, flattens and outlines until every panel fits the room, widths are alike and the stress error is in bounds. */
+export function fitPanels(form: FoundForm, job: Job, context: FitContext): Fitted {
+  const measured: LayoutRow[] = [];
+  let weighed: LayoutRow[] = [];
+  const runBoth: RunBoth = (options) => {
+    context.onStation("seams");
+    const seams = runSeams(form, job, options, context.seams);
+    context.onStation("panels");
+    const panels = runPanels(seams.output, form, job, context.panels);
+    if (weighed.length === 0) weighed = seams.output.compared ?? [];
+    measured.push(...measureRows({ seams, panels }));
+    return { seams, panels };
+  };
+  const fitted = fitAll(runBoth, job);
+  const compared = joinRows(measureRows(fitted), measured, weighed);
+  return { ...fitted, seams: { ...fitted.seams, output: { ...fitted.seams.output, compared } } };
 }
 
 /** Stress error of the worst panel over what is let pass. */

@@ -109,6 +109,7 @@ function runStationsInPlace(
       runSeams(form, job, firstOptions(measureRoom(job), job.allowances.seam / 1000), share("seams", "panels")),
     );
     facts.layouts = layout.choices;
+    facts.compared = layout.compared ?? [];
     facts.seams = buildSeamFacts(layout, []);
     return;
   }
@@ -120,6 +121,7 @@ function runStationsInPlace(
   const layout = take(fitted.seams);
   const panels = take(fitted.panels);
   facts.layouts = layout.choices;
+  facts.compared = layout.compared ?? [];
   facts.seams = buildSeamFacts(layout, panels);
   facts.panels = panels.map(buildPanelFacts);
   const others = take(buildPieces(panels, form, job));

@@ -6,7 +6,7 @@ import type { ControlLengths, PanelMark, StressFigures } from "./flatPanel.ts";
 import type { EdgeKind, Residual } from "./foundForm.ts";
 import type { FactsAsBuilt, FactsCable, FactsRig, FactsSensitivity, FactsTensioning } from "./rig.ts";
 import type { NestedRoll } from "./roll.ts";
-import type { LayoutChoice } from "./stripLayout.ts";
+import type { LayoutChoice, LayoutRow } from "./stripLayout.ts";
 
 /** Point in the flat, mm. */
 export type Vec2 = [number, number];
@@ -112,6 +112,8 @@ export interface Facts {
   fabrics: Record<string, Fabric>;
   form?: FactsForm;
   layouts?: LayoutChoice[];
+  /** Layouts weighed against the one taken. */
+  compared?: LayoutRow[];
   seams?: FactsSeam[];
   panels?: FactsPanel[];
   pieces?: FactsPiece[];

@@ -75,6 +75,30 @@ export interface LayoutEstimate {
   strips: StripEstimate[];
 }
 
+/** One line of the table in which layouts of a region are compared. */
+export interface LayoutRow {
+  region: string;
+  layout: "bands" | "gores";
+  from: string;
+  to: string;
+  /** Strips side by side, and panels they are cut into. */
+  strips: number;
+  panels: number;
+  /** Metres of seam inside the region. */
+  seams: number;
+  /** Least cloth, m2: cut area where measured, else area of the region and of the seams' laps. */
+  cloth: number;
+  /** Flat width of the narrowest and widest strip, m; without allowances. */
+  least: number;
+  greatest: number;
+  /** Greatest rms stress error of a panel as a share of its target; estimated from curvature and width unless measured (0.8 to 2 times what comes out). */
+  stressError: number;
+  /** True where the layout was cut and flattened. */
+  measured: boolean;
+  /** True for the one the plan stands on. */
+  taken: boolean;
+}
+
 /** Output of the seams station. */
 export interface StripLayout {
   /** The form's surface with all seam crossings inserted: its first vertices are the form's own, same indices. */
@@ -84,4 +108,6 @@ export interface StripLayout {
   choices: LayoutChoice[];
   /** One for each region that was laid out; none for seams given one by one. */
   estimates?: LayoutEstimate[];
+  /** Ways that were weighed against each other, estimates. */
+  compared?: LayoutRow[];
 }

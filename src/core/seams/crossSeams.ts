@@ -3,8 +3,8 @@
 import { measureDistance, pointAt } from "../surface/measures.ts";
 import type { Surface, SurfacePoint } from "../surface/surface.ts";
 import type { Chain } from "./chain.ts";
-import type { RegionLayout } from "./layoutRegion.ts";
 import { type SeamLine, traceSeam } from "./seamLine.ts";
+import type { RegionLayout } from "./trial.ts";
 
 /** A seam across one strip. */
 export interface CrossSeam {

@@ -2,7 +2,6 @@
 import { type Finding, PlanError } from "../problem.ts";
 import type { FoundForm } from "../records/foundForm.ts";
 import type { Job } from "../records/job.ts";
-import type { LayoutChoice } from "../records/stripLayout.ts";
 import { measureDistance, vertexAt } from "../surface/measures.ts";
 import {
   bandsBetween,
@@ -14,10 +13,12 @@ import {
   orientCandidate,
 } from "./candidate.ts";
 import { measureChain } from "./chain.ts";
-import { buildComb, type Comb, countStrips, curveAt, sizeBetween, stepStrips, type WidthFactors } from "./comb.ts";
+import { buildComb, countStrips, curveAt, sizeBetween, stepStrips, type WidthFactors } from "./comb.ts";
 import { MOST_STRIPS, type Placement, placeSeams } from "./placeSeams.ts";
 import type { Region } from "./region.ts";
 import { BAYS, type Curve } from "./stripWidth.ts";
+import { compareTrials, explainChoice, measureLines } from "./tellLayout.ts";
+import type { RegionLayout, Trial } from "./trial.ts";
 
 /** What the layout must respect, resolved for one region. */
 export interface RegionLimits {
@@ -36,15 +37,6 @@ export interface RegionLimits {
   findMarks: (candidate: Candidate) => { start: number[]; finish: number[] };
 }
 
-/** A region laid out. */
-export interface RegionLayout {
-  region: Region;
-  candidate: Candidate;
-  placement: Placement;
-  why: string;
-  findings: Finding[];
-}
-
 /** Names the way a candidate's strips run over its region. */
 export function wayKey(region: string, candidate: { from: string; to: string }): string {
   return `${region}: ${candidate.from} to ${candidate.to}`;
@@ -59,18 +51,6 @@ const MOST_PLACED = 4;
 const DOUBT = 1.5;
 /** A rim longer than its chord by this share is bent. */
 const BENT = 1.002;
-
-interface Trial {
-  candidate: Candidate;
-  comb: Comb;
-  count: number;
-  /** Least count it may turn out to need. */
-  hope: number;
-  metres: number;
-  key: number[];
-  /** Strips it took, where it was placed in full. */
-  placed?: number;
-}
 
 interface Placed {
   trial: Trial;
@@ -135,6 +115,7 @@ function tryCandidate(region: Region, raw: Candidate, limits: RegionLimits): Tri
     count,
     hope: hasBentRim(region, candidate) ? Math.floor(count / DOUBT) : count,
     metres,
+    sizes,
     key: [
       Number(tooLong),
       Number(hugs),
@@ -211,9 +192,9 @@ function placeTrials(trials: readonly Trial[], limits: RegionLimits, round: bool
     });
     const { sizes, lines, hugging } = placement;
     if (sizes.length === 0) continue;
-    trial.placed = sizes.length;
+    trial.placed = placement;
     const widths = sizes.map((size) => size.width);
-    const metres = lines.reduce((sum, line) => sum + line.length, 0);
+    const metres = measureLines(lines);
     const uneven = Math.round(50 * (1 - Math.min(...widths) / Math.max(...widths)));
     const placed: Placed = { trial, placement, rank: [sizes.length, coarse(metres), uneven] };
     spare ??= placed;
@@ -288,45 +269,6 @@ export function layoutRegion(form: FoundForm, region: Region, job: Job, limits: 
     placement: chosen.placement,
     why: explainChoice(chosen, trials, limits),
     findings,
-  };
-}
-
-function explainChoice(chosen: { trial: Trial; placement: Placement }, trials: Trial[], limits: RegionLimits): string {
-  const { placement, trial } = chosen;
-  const n = placement.sizes.length;
-  const widest = Math.max(...placement.sizes.map((size) => size.width));
-  const width = `widest about ${widest.toFixed(2)} m of ${limits.usableWidth.toFixed(2)} m usable`;
-  const told = limits.count === "auto" || limits.way !== null ? "" : " as asked";
-  const head = n === 1 ? `one panel${told}, ${width}` : `${n} strips${told}, ${width}`;
-  const others = trials.filter((other) => other !== trial);
-  if (others.length === 0) return `${head}.`;
-  const countOf = (other: Trial) => other.placed ?? other.count;
-  const more = others.filter((other) => countOf(other) > n).length;
-  const metres = others.filter((other) => countOf(other) <= n && other.metres > 1.02 * trial.metres).length;
-  const words: string[] = [];
-  if (more > 0) words.push(`${more} other ${more === 1 ? "way needs" : "ways need"} more strips`);
-  if (metres > 0) words.push(`${metres} more metres of seam`);
-  const rest = others.length - more - metres;
-  if (rest > 0)
-    words.push(
-      `${rest} ${rest === 1 ? "is" : "are"} alike in both, or ${rest === 1 ? "runs" : "run"} too near an edge`,
-    );
-  return `${head}; of ${trials.length} ways: ${words.join(", ")}.`;
-}
-
-/** The choice in the words of the papers. */
-export function describeChoice(layout: RegionLayout, panels: string[], pieces: readonly number[]): LayoutChoice {
-  const { candidate, placement, region } = layout;
-  const parted = pieces.filter((n) => n > 1).length;
-  const told = parted === 0 ? "" : ` ${parted} of them cut across: ${panels.length} panels.`;
-  return {
-    region: region.id,
-    panels,
-    layout: panels.length === 1 ? "whole" : candidate.layout,
-    from: candidate.from,
-    to: candidate.to,
-    count: placement.sizes.length || panels.length,
-    why: layout.why + told,
-    widths: placement.sizes.flatMap((size, j) => Array.from({ length: pieces[j] }, () => size.width)),
+    compared: compareTrials(region, chosen.trial, trials, job),
   };
 }

@@ -1,8 +1,8 @@
 // What is said about a layout of seams: strips that run along an edge, are too long, too wide or very narrow, cables that end in the cloth.
 import type { Finding } from "../problem.ts";
 import type { StripEstimate } from "../records/stripLayout.ts";
-import type { RegionLayout } from "./layoutRegion.ts";
 import type { StripSize } from "./stripWidth.ts";
+import type { RegionLayout } from "./trial.ts";
 
 /** Strips narrower than this are a caution, m. own: two weld overlaps of 40 mm and a hand between. */
 const NARROW = 0.15;

@@ -13,13 +13,15 @@ import { checkStrips } from "./checkStrips.ts";
 import { factorAt, NO_FACTORS, type WidthFactors } from "./comb.ts";
 import { type CrossPlan, layCrossSeams } from "./crossSeams.ts";
 import { cutStrips } from "./cutStrips.ts";
-import { describeChoice, layoutRegion, type RegionLayout, wayKey } from "./layoutRegion.ts";
+import { layoutRegion, wayKey } from "./layoutRegion.ts";
 import { nameStrips } from "./nameStrips.ts";
 import { noteHugging, notePruned, noteSizes } from "./noteSeams.ts";
 import { openHoles } from "./openHoles.ts";
 import { findEdge, findInRegion, tracePairs } from "./pairs.ts";
 import { buildRegions, type Region, segmentKey } from "./region.ts";
 import type { RegionPlan, SeamPath } from "./seamPath.ts";
+import { describeChoice } from "./tellLayout.ts";
+import type { RegionLayout } from "./trial.ts";
 
 /** What the plan asks of the layout beside the job. */
 export interface SeamOptions {
@@ -247,6 +249,9 @@ export function runSeams(
     if (strips.length === 0) return [];
     return [{ region: layout.region.id, way: wayKey(layout.region.id, layout.candidate), strips }];
   });
+  const compared = layouts.flatMap((layout, r) =>
+    layout.compared.map((row) => (row.taken ? { ...row, panels: named.byRegion[r].length } : row)),
+  );
   const choices = plans.map((plan, r): LayoutChoice => {
     const panels = named.byRegion[r];
     if (layouts[r]) return describeChoice(layouts[r], panels, crosses[r].pieces);
@@ -261,7 +266,14 @@ export function runSeams(
       widths: [],
     };
   });
-  const output: StripLayout = { surface: cut.surface, seams: named.seams, strips: named.strips, choices, estimates };
+  const output: StripLayout = {
+    surface: cut.surface,
+    seams: named.seams,
+    strips: named.strips,
+    choices,
+    estimates,
+    compared,
+  };
   const checks: Check[] = checkStrips(found, output);
   const broken = checks.filter((check) => !check.holds);
   for (const check of broken)

@@ -1,0 +1,105 @@
+// Layouts beside each other in one table: panels, metres of seam, cloth, widths, stress error. Measured where a layout was cut and
+// flattened, estimated where it was only weighed.
+import { runPanels } from "../panels/runPanels.ts";
+import { PlanError, type StationContext } from "../problem.ts";
+import type { FoundForm } from "../records/foundForm.ts";
+import type { Job, SeamDecision } from "../records/job.ts";
+import type { LayoutRow } from "../records/stripLayout.ts";
+import { runSeams } from "../seams/runSeams.ts";
+import { firstOptions, measureExtent, measureRoom } from "./clothRoom.ts";
+import type { Fitted } from "./fitted.ts";
+
+/** Rows of a layout that was cut and flattened, region by region; none for seams given one by one. */
+export function measureRows(fitted: Fitted): LayoutRow[] {
+  const { choices, estimates, seams } = fitted.seams.output;
+  const byId = new Map(fitted.panels.output.map((p) => [p.id, p]));
+  return (estimates ?? []).flatMap((estimate): LayoutRow[] => {
+    const choice = choices.find((c) => c.region === estimate.region);
+    const ids = new Set(estimate.strips.flatMap((strip) => strip.panels));
+    const panels = [...ids].flatMap((id) => byId.get(id) ?? []);
+    if (!choice || panels.length === 0) return [];
+    const widths = panels.map((p) => measureExtent(p.net).width);
+    const errors = panels.map((p) =>
+      Math.max(...(["warp", "weft"] as const).map((way) => p.stress[way].rmsError / Math.max(p.target[way], 1e-9))),
+    );
+    const own = seams.filter((seam) => seam.cable === null && seam.strips.every((id) => ids.has(id)));
+    return [
+      {
+        region: estimate.region,
+        layout: choice.layout === "gores" ? "gores" : "bands",
+        from: choice.from,
+        to: choice.to,
+        strips: estimate.strips.length,
+        panels: panels.length,
+        seams: own.reduce((sum, seam) => sum + seam.length, 0),
+        cloth: panels.reduce((sum, p) => sum + p.area.cut, 0),
+        least: Math.min(...widths),
+        greatest: Math.max(...widths),
+        stressError: Math.max(...errors),
+        measured: true,
+        taken: false,
+      },
+    ];
+  });
+}
+
+const isOneWay = (a: LayoutRow, b: LayoutRow) => a.region === b.region && a.from === b.from && a.to === b.to;
+
+/**
+ * The table of a plan: for each region the layout taken, then the others that were cut and flattened on the way, then the ways
+ * that were only weighed. Of two rows with one way and number of panels the last stands.
+ */
+export function joinRows(
+  taken: readonly LayoutRow[],
+  measured: readonly LayoutRow[],
+  estimated: readonly LayoutRow[],
+): LayoutRow[] {
+  return taken.flatMap((row) => {
+    const rows: LayoutRow[] = [{ ...row, taken: true }];
+    for (const other of [...measured].reverse())
+      if (other.region === row.region && !rows.some((r) => isOneWay(r, other) && r.panels === other.panels))
+        rows.push(other);
+    // what the edges' allowances and the cut outline add is the same for every way, and known from the one that was cut
+    const base = estimated.find((other) => isOneWay(other, row));
+    const edges = base ? row.cloth - base.cloth : 0;
+    for (const other of estimated)
+      if (other.region === row.region && !rows.some((r) => isOneWay(r, other)))
+        rows.push({ ...other, cloth: other.cloth + edges, taken: false });
+    return rows;
+  });
+}
+
+/** One layout that is asked for, and what came of it: rows, or why it cannot be laid. */
+export interface ComparedLayout {
+  asked: Partial<SeamDecision>;
+  rows: LayoutRow[];
+  refused: string | null;
+}
+
+/**
+ * Each of several layouts cut and flattened, in their order: the job with other decisions on its seams. One pass each, widths not
+ * evened out on measured ones, so a plan of the same layout may differ by a per cent or two.
+ * @throws PlanError cancelled
+ */
+export function compareLayouts(
+  form: FoundForm,
+  job: Job,
+  asks: readonly Partial<SeamDecision>[],
+  context: StationContext = {},
+): ComparedLayout[] {
+  return asks.map((asked, i): ComparedLayout => {
+    const other: Job = { ...job, seams: { ...job.seams, ...asked } };
+    const part: StationContext = {
+      ...context,
+      onProgress: (share, words) => context.onProgress?.((i + share) / asks.length, words),
+    };
+    try {
+      const seams = runSeams(form, other, firstOptions(measureRoom(other), other.allowances.seam / 1000), part);
+      const panels = runPanels(seams.output, form, other, part);
+      return { asked, rows: measureRows({ seams, panels }), refused: null };
+    } catch (error) {
+      if (!(error instanceof PlanError) || error.code === "cancelled") throw error;
+      return { asked, rows: [], refused: error.message };
+    }
+  });
+}
