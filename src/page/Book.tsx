@@ -112,7 +112,7 @@ function Head() {
         type="button"
         className="title"
         onClick={() => bookStore.setState({ sheet: "jobs" })}
-        aria-label={`Jobs. Open now: ${title ?? ""}`}
+        aria-label={`Seamstay ${title ?? ""}, open the list of jobs`}
       >
         <span className="brand">Seamstay</span> {title}
       </button>

@@ -32,7 +32,7 @@ export function RigPlan({
   const pointed = useBook((b) => b.pointed);
   const chosen = useBook((b) => b.chosen);
   const { x, y, w, h, size } = boundsOf(form, rig);
-  const pad = 4.2 * size;
+  const pad = 5.4 * size;
   const moving = new Set(step?.moves.map((m) => m.adjuster));
   const lit = (id: string) => id === pointed || id === chosen;
   const middle = [x + w / 2, y + h / 2];
@@ -69,7 +69,7 @@ export function RigPlan({
             role="button"
             tabIndex={0}
             className={`adjuster${moving.has(a.id) ? " moving" : ""}${lit(a.id) ? " lit" : ""}`}
-            aria-label={`Adjuster ${a.id}${force === undefined ? "" : `, ${figure(force, 1)} kilonewton`}${moving.has(a.id) ? ", moves in this step" : ""}`}
+            aria-label={`${a.id} ${force === undefined ? "slack" : `${figure(force, 1)} kN`}, adjuster${moving.has(a.id) ? " that moves in this step" : ""}`}
             onClick={() => bookStore.setState({ chosen: a.id })}
             onKeyDown={(e) => e.key === "Enter" && bookStore.setState({ chosen: a.id })}
             onPointerEnter={() => bookStore.setState({ pointed: a.id })}
@@ -77,13 +77,13 @@ export function RigPlan({
           >
             <polyline points={line([p, q])} />
             <circle cx={out[0]} cy={-out[1]} r={0.45 * size} />
-            <text x={out[0] + (d[0] / l) * 2.1 * size} y={-(out[1] + (d[1] / l) * 1.5 * size)} fontSize={1.15 * size}>
+            <text x={out[0] + (d[0] / l) * 3.2 * size} y={-(out[1] + (d[1] / l) * 2 * size)} fontSize={1.15 * size}>
               {a.id}
-            </text>
+            </text>{" "}
             <text
               className="force"
-              x={out[0] + (d[0] / l) * 2.1 * size}
-              y={-(out[1] + (d[1] / l) * 1.5 * size) + 1.25 * size}
+              x={out[0] + (d[0] / l) * 3.2 * size}
+              y={-(out[1] + (d[1] / l) * 2 * size) + 1.25 * size}
               fontSize={size}
             >
               {force === undefined ? "slack" : `${figure(force, 1)} kN`}

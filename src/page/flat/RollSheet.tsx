@@ -5,6 +5,7 @@ import type { NestedRoll, Placement } from "../../core/records/roll.ts";
 import { setPin } from "../actions/setPin.ts";
 import { act, bookStore } from "../store/bookStore.ts";
 import { useBook } from "../store/useBook.ts";
+import { pinPlace } from "./pinPlace.ts";
 import { type RollRow, rollRows } from "./rollRows.ts";
 
 interface Drag {
@@ -29,15 +30,15 @@ function middleOf(cut: readonly Vec2[], p: Placement): Vec2 {
   return [turn * mid(xs) + p.x, turn * mid(ys) + p.y];
 }
 
+/** Height and length of a cut, whichever is less, mm. */
+function sizeOf(cut: readonly Vec2[]): number {
+  const reach = (k: 0 | 1) => Math.max(...cut.map((q) => q[k])) - Math.min(...cut.map((q) => q[k]));
+  return Math.min(reach(0), reach(1));
+}
+
 /** Pins a placed panel where it lies, moved by dx, dy mm. */
-function pin(roll: NestedRoll, p: Placement, dx: number, dy: number): void {
-  const place = {
-    roll: roll.id,
-    x: Math.round(10 * (p.x + dx)) / 10,
-    y: Math.round(10 * (p.y + dy)) / 10,
-    rotation: p.rotation,
-  };
-  act(setPin, { panel: p.panel, place }, `${p.panel} pinned`);
+function pin(roll: NestedRoll, p: Placement, cut: readonly Vec2[], by: { dx: number; dy: number }): void {
+  act(setPin, { panel: p.panel, place: pinPlace(roll, p, cut, by) }, `${p.panel} pinned`);
 }
 
 const STEPS: Record<string, [number, number]> = {
@@ -79,12 +80,18 @@ function PlacedPiece(props: {
           if (e.key === "Delete") act(setPin, { panel: p.panel, place: null }, `${p.panel} let go`);
           if (step === undefined) return;
           e.preventDefault();
-          pin(roll, p, 10 * step[0], 10 * step[1]);
+          pin(roll, p, cut, { dx: 10 * step[0], dy: 10 * step[1] });
         }}
       >
         <path d={outline(cut, p, by)} />
         {x >= row.from && x < row.to && (
-          <text x={x + by.x} y={-(y + by.y)} transform="scale(1 -1)" fontSize={roll.width / 9} className="panel-name">
+          <text
+            x={x + by.x}
+            y={-(y + by.y)}
+            transform="scale(1 -1)"
+            fontSize={Math.min(roll.width / 9, sizeOf(cut) / 3)}
+            className="panel-name"
+          >
             {p.panel}
             {pinned ? " ⚲" : ""}
           </text>
@@ -164,7 +171,7 @@ export function RollSheet({ facts, roll, shape }: { facts: Facts; roll: NestedRo
     // Rows crossed on the way count as lengths of roll.
     const jump = Math.round(drag.by.y / pitch);
     const [dx, dy] = [drag.by.x - jump * span, drag.by.y - jump * pitch];
-    if (Math.hypot(dx, dy) > 5 || jump !== 0) pin(roll, p, dx, dy);
+    if (Math.hypot(dx, dy) > 5 || jump !== 0) pin(roll, p, cuts.get(p.panel) ?? [], { dx, dy });
     else bookStore.setState({ chosen: p.panel });
   };
   return (

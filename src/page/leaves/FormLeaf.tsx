@@ -55,7 +55,8 @@ function EdgeDecisions() {
                 path={`${named}.force`}
                 given={typeof own?.force === "number"}
                 value={own?.force ?? null}
-                none={`${figure(e.force, 2)} by balance`}
+                none={figure(e.force, 2)}
+                hint={typeof own?.force === "number" ? undefined : "by best balance with the cloth"}
                 unit="kN"
                 onChange={(v) => act(setEdge, { edge: e.id, key: "force", value: v }, `force of ${e.id}`)}
               />

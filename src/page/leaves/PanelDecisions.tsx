@@ -46,7 +46,8 @@ function Compensation() {
       given={given !== undefined}
       value={given?.[way] ?? null}
       factor={0.01}
-      none={found === undefined ? "from stiffness" : `${(100 * found[way]).toFixed(3)} from stiffness`}
+      none={found === undefined ? "" : (100 * found[way]).toFixed(3)}
+      hint={given === undefined ? "what the stiffness gives at prestress" : undefined}
       unit="%"
       onChange={(v) =>
         act(

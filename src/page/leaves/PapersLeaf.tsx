@@ -30,8 +30,15 @@ const whatIs = (path: string) => WHAT.find(([kind]) => kind.test(path))?.[1] ?? 
 const sizeOf = (n: number) =>
   n < 1024 ? `${n} B` : n < 1024 * 1024 ? `${(n / 1024).toFixed(0)} kB` : `${(n / 1024 / 1024).toFixed(1)} MB`;
 
+/** A drawing for the table has hairlines; on a screen they are drawn a pixel wide. Only for looking at. */
+function thicken(file: PaperFile): PaperFile {
+  const style = "<style>path{vector-effect:non-scaling-stroke;stroke-width:1.3px}</style>";
+  const text = new TextDecoder().decode(file.bytes).replace("</title>", `</title>${style}`);
+  return { path: file.path, bytes: new TextEncoder().encode(text) };
+}
+
 function Preview({ file }: { file: PaperFile | undefined }) {
-  const url = useMemo(() => (file?.path.endsWith(".svg") ? URL.createObjectURL(blobOf(file)) : null), [file]);
+  const url = useMemo(() => (file?.path.endsWith(".svg") ? URL.createObjectURL(blobOf(thicken(file))) : null), [file]);
   useEffect(
     () => () => {
       if (url !== null) URL.revokeObjectURL(url);
@@ -39,7 +46,12 @@ function Preview({ file }: { file: PaperFile | undefined }) {
     [url],
   );
   if (file === undefined) return <p className="waiting">Choose a paper from the list to look at it.</p>;
-  if (url !== null) return <img className="preview" src={url} alt={`Drawing ${file.path}`} />;
+  if (url !== null)
+    return (
+      <div className="preview roomy" tabIndex={0} role="group" aria-label={`Drawing ${file.path}`}>
+        <img src={url} alt={`Drawing ${file.path}`} />
+      </div>
+    );
   if (/\.csv$/.test(file.path)) {
     const rows = new TextDecoder()
       .decode(file.bytes)
@@ -169,7 +181,7 @@ export function PapersLeaf() {
   }, [status, facts, files, writing, fault]);
   const stops = facts?.findings.filter((f) => f.level === "stop").length ?? 0;
   const stem = `${fileStem(facts?.job.title ?? "")}-${facts?.job.revision ?? ""}`;
-  const shownFile = files?.find((f) => f.path === shown) ?? files?.find((f) => /^rolls\/.*\.svg$/.test(f.path));
+  const shownFile = files?.find((f) => f.path === shown) ?? files?.find((f) => /^panels\/.*\.svg$/.test(f.path));
   return (
     <LeafFrame
       leaf="papers"

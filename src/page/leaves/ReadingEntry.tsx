@@ -119,6 +119,7 @@ export function ReadingEntry({ step }: { step: RigStep | null }) {
       <input
         inputMode="decimal"
         autoComplete="off"
+        aria-label={`${label}, ${unit}`}
         value={texts[key]}
         onChange={(e) => setTexts({ ...texts, [key]: e.target.value })}
       />

@@ -1,4 +1,5 @@
 // Rig: how is it pulled up?
+import { useEffect, useRef } from "react";
 import { ForceChart } from "../flat/ForceChart.tsx";
 import { RigPlan } from "../flat/RigPlan.tsx";
 import { listSteps, type RigStep } from "../flat/rigSteps.ts";
@@ -14,13 +15,19 @@ import { LeafFrame } from "./LeafFrame.tsx";
 import { RigDecisions } from "./RigDecisions.tsx";
 
 function Strip({ steps, at }: { steps: readonly RigStep[]; at: number }) {
+  const list = useRef<HTMLOListElement>(null);
+  useEffect(() => {
+    const one = list.current?.children[at - 1];
+    if (one instanceof HTMLElement && list.current)
+      list.current.scrollLeft = one.offsetLeft - list.current.offsetLeft - 140;
+  }, [at]);
   const go = (i: number) => bookStore.setState({ step: Math.min(Math.max(i, 0), steps.length) });
   return (
     <div className="strip">
       <button type="button" onClick={() => go(at - 1)} disabled={at === 0}>
         ◂ Step back
       </button>
-      <ol>
+      <ol ref={list}>
         {steps.map((s, i) => (
           <li key={s.step} className={s.hold ? "hold" : undefined}>
             <button type="button" aria-current={at === i + 1 ? "step" : undefined} onClick={() => go(i + 1)}>

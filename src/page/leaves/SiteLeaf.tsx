@@ -36,7 +36,7 @@ function SiteLimits() {
           path={`papers.site.${key}`}
           given={site?.[key] !== undefined}
           value={typeof site?.[key] === "number" ? site[key] : null}
-          none="not given: do not start"
+          none="not given"
           unit={unit}
           onChange={(value) => act(setSiteLimit, { key, value }, label.toLowerCase())}
         />
@@ -46,7 +46,7 @@ function SiteLimits() {
         path="papers.site.overnight"
         given={site?.overnight !== undefined}
         value={String(site?.overnight ?? "")}
-        none="not given: do not start"
+        none="not given"
         onChange={(value) => act(setSiteLimit, { key: "overnight", value }, "state overnight")}
       />
     </>

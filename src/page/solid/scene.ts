@@ -63,6 +63,8 @@ interface Parts {
   colours: Float32Array | null;
   ink: SceneInk;
   lit: Set<string>;
+  /** Half width and height of the model as first seen, m. */
+  reach: [number, number];
 }
 
 function segmentsOf(line: ModelLine): Float32Array {
@@ -106,8 +108,8 @@ function buildMesh(model: Model): Mesh<BufferGeometry, MeshLambertMaterial> {
     vertexColors: true,
     side: DoubleSide,
     polygonOffset: true,
-    polygonOffsetFactor: 1,
-    polygonOffsetUnits: 1,
+    polygonOffsetFactor: 3,
+    polygonOffsetUnits: 3,
   });
   return new Mesh(geometry, material);
 }
@@ -122,7 +124,7 @@ export function createScene(canvas: HTMLCanvasElement, ink: SceneInk, onDraw: (p
   controls.enableDamping = false;
   const sun = new DirectionalLight("#ffffff", 2.1);
   scene.add(new AmbientLight("#ffffff", 1.25), sun);
-  const parts: Parts = { model: null, mesh: null, lines: [], colours: null, ink, lit: new Set() };
+  const parts: Parts = { model: null, mesh: null, lines: [], colours: null, ink, lit: new Set(), reach: [1, 1] };
   let asked = 0;
   const drawNow = () => {
     asked = 0;
@@ -181,15 +183,41 @@ interface Stage {
   draw: () => void;
 }
 
-function frameInPlace({ canvas, camera, renderer, parts }: Stage): void {
+/** Half width and half height that hold the model as the camera sees it, about the point it looks at. */
+function measureReach({ camera, controls, parts }: Stage): [number, number] {
+  const { model } = parts;
+  if (model === null) return [1, 1];
+  const right = new Vector3().setFromMatrixColumn(camera.matrixWorld, 0);
+  const above = new Vector3().setFromMatrixColumn(camera.matrixWorld, 1);
+  const at = new Vector3();
+  let [x, y] = [1e-6, 1e-6];
+  const take = (a: number, b: number, c: number) => {
+    at.set(a, b, c).sub(controls.target);
+    x = Math.max(x, Math.abs(at.dot(right)));
+    y = Math.max(y, Math.abs(at.dot(above)));
+  };
+  const { position } = model;
+  for (let i = 0; i < position.length; i += 3) take(position[i], position[i + 1], position[i + 2]);
+  for (const { points } of model.lines) for (const [a, b, c] of points) take(a, b, c);
+  return [x, y];
+}
+
+function frameInPlace(stage: Stage): void {
+  const { canvas, camera, renderer, parts } = stage;
   const [w, h] = [Math.max(canvas.clientWidth, 1), Math.max(canvas.clientHeight, 1)];
   renderer.setPixelRatio(Math.min(devicePixelRatio, 2));
   renderer.setSize(w, h, false);
   const radius = parts.mesh?.geometry.boundingSphere?.radius ?? 1;
-  const half = radius * 1.08;
-  const aspect = w / h;
-  const [x, y] = aspect > 1 ? [half * aspect, half] : [half, half / aspect];
-  Object.assign(camera, { left: -x, right: x, top: y, bottom: -y, near: 0.01, far: 20 * radius });
+  const [halfWide, halfHigh] = parts.reach;
+  const half = 1.12 * Math.max(halfHigh, (halfWide * h) / w);
+  Object.assign(camera, {
+    left: (-half * w) / h,
+    right: (half * w) / h,
+    top: half,
+    bottom: -half,
+    near: 0.01,
+    far: 30 * radius,
+  });
   camera.updateProjectionMatrix();
   for (const { material } of parts.lines) material.resolution.set(w, h);
 }
@@ -201,6 +229,9 @@ function fitInPlace(stage: Stage): void {
   camera.zoom = 1;
   controls.target.copy(sphere.center);
   camera.position.copy(sphere.center).add(new Vector3(-0.55, -1, 0.85).normalize().multiplyScalar(8 * sphere.radius));
+  camera.lookAt(sphere.center);
+  camera.updateMatrixWorld();
+  parts.reach = measureReach(stage);
   frameInPlace(stage);
   controls.update();
   stage.draw();
