@@ -8,6 +8,7 @@ import { add, gap, type SideOffset, sidePoints, unit } from "./sideOffset.ts";
 /** Width of a slot that frees a line from another side's flap, and the steps it is looked for in, mm. */
 const SLOT = 10;
 const SLOT_STEP = 10;
+
 /** The cloth a set-back takes away, segment by segment, a hair less deep than the set-back so that its line stands. */
 export function setBackRings(net: Ring, side: SideOffset): Ring[] {
   const line = sidePoints(net, side);

@@ -97,7 +97,7 @@ export function listFoldFindings(panels: readonly CutPanel[]): Finding[] {
         `edge ${id}: the ${edge.width.toFixed(0)} mm flap is folded on a radius down to ${radius.toFixed(2)} m, so its rim is up to ` +
         `${(100 * edge.shortage).toFixed(2)} % out of length (${100 * FLAP_SHORTAGE} % folds flat); ` +
         (edge.slits > 0
-          ? `${edge.slits} slits are drawn, each taking up about ${GAPE_MM} mm`
+          ? `${edge.slits === 1 ? "1 slit is" : `${edge.slits} slits are`} drawn, each taking up about ${GAPE_MM} mm`
           : "too short a run for a slit"),
       remedy: tight
         ? "Make the pocket of a separate strip (allowances.pocketStrip), or narrower."
