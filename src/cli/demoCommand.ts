@@ -6,7 +6,7 @@ import type { OutputFile } from "./outputFolder.ts";
 import { listStarters, starterFolder } from "./packageFiles.ts";
 import { parseOptions } from "./parseOptions.ts";
 import { planInto } from "./planCommand.ts";
-import { measurePlan, writeUrgent } from "./summary.ts";
+import { measurePlan, plural, writeUrgent } from "./summary.ts";
 
 /** The verb. @returns exit status 0, or 1 where a plan holds a stop */
 export async function demoCommand(args: string[], around: Surroundings): Promise<number> {
@@ -21,6 +21,17 @@ export async function demoCommand(args: string[], around: Surroundings): Promise
   return exit;
 }
 
+const KINDS: Record<string, string> = {
+  patch: "corner patches",
+  strip: "pocket strips",
+  cover: "cover strips",
+  test: "weld tests",
+};
+
+function listKinds(facts: Facts): string {
+  return [...new Set((facts.pieces ?? []).map((p) => KINDS[p.kind]))].join(", ");
+}
+
 /** What a fabricator gets, and where to look first. */
 function describePlan(facts: Facts, files: OutputFile[], folder: string): string[] {
   const f = measurePlan(facts);
@@ -28,25 +39,39 @@ function describePlan(facts: Facts, files: OutputFile[], folder: string): string
   const urgent = writeUrgent(facts.findings);
   const stamp = f.stops > 0 ? "The papers are stamped NOT FOR ISSUE." : "Nothing stops the papers from being issued.";
   return [
-    `  To cut      ${f.panels} panels${f.pieces ? ` and ${f.pieces} pieces` : ""}, ${f.cutArea?.toFixed(1)} m2 with allowances`,
-    `  To weld     ${f.seams} seams, ${f.seamLength?.toFixed(1)} m`,
-    `  To lay out  ${f.rollLength?.toFixed(2)} m of cloth from ${f.rolls} roll${f.rolls === 1 ? "" : "s"} (${cloths.join("; ")}), ${(100 * (f.utilisation ?? 0)).toFixed(0)} % used`,
+    `  To cut      ${plural(f.panels ?? 0, "panel")}${f.pieces ? ` and ${plural(f.pieces, "other piece")} (${listKinds(facts)})` : ""}, ${f.cutArea?.toFixed(1)} m2 with allowances`,
+    `  To weld     ${plural(f.seams ?? 0, "seam")}, ${f.seamLength?.toFixed(1)} m`,
+    `  To lay out  ${f.rollLength?.toFixed(2)} m of cloth from ${plural(f.rolls ?? 0, "roll")} (${cloths.join("; ")}), ${(100 * (f.utilisation ?? 0)).toFixed(0)} % used`,
     ...(f.adjusters && f.steps !== null
       ? [
-          `  To pull     ${f.adjusters} adjusters in ${f.steps} steps; the greatest force on the way is ${(100 * (f.greatestShare ?? 0)).toFixed(0)} % of its limit`,
+          `  To pull     ${plural(f.adjusters, "adjuster")} in ${plural(f.steps, "step")}; the greatest force on the way is ${(100 * (f.greatestShare ?? 0)).toFixed(0)} % of its limit`,
         ]
       : []),
     `  To trust    stress in the cloth within ${f.stressError?.toFixed(2)} kN/m (rms) of what is wanted; ${f.checks - f.checksFailed} of ${f.checks} checks hold`,
-    `  To decide   ${f.stops} stops, ${f.cautions} cautions, ${f.notes} notes. ${stamp}`,
+    `  To decide   ${plural(f.stops, "stop")}, ${plural(f.cautions, "caution")}, ${plural(f.notes, "note")}. ${stamp}`,
     ...(urgent === "" ? [] : [urgent]),
-    `  ${files.length} files in ${folder}. Look first at ${listFirst(files, folder).join(", then ")}.`,
+    ...listFirst(files, folder),
+    `  ${files.length} files in ${folder}; the rest are cut files, lists, and facts.json with every number.`,
   ];
 }
 
-/** One file of each kind that a person opens first: findings, a roll to cut, a panel card. */
+/** The papers a person opens first, each with what it is for; the cut file itself where there is no sheet of the roll. */
+const FIRST: [kind: RegExp, words: string][] = [
+  [/^findings\.pdf$/, "what was checked, what is open"],
+  [/^roll-sheets\.pdf$|^rolls\/[^/]*\.dxf$/, "what lies where on the roll"],
+  [/^panel-cards\.pdf$/, "lengths to tape and marks, panel by panel"],
+  [/^tensioning-schedule\.pdf$/, "what the crew turns, and what the gauge reads"],
+];
+
 function listFirst(files: OutputFile[], folder: string): string[] {
-  const first = [/finding.*\.pdf$/i, /roll.*\.(pdf|svg|dxf)$/i, /panel.*\.(pdf|svg|dxf)$/i]
-    .map((kind) => files.find((f) => kind.test(f.path))?.path)
-    .filter((path) => path !== undefined);
-  return (first.length > 0 ? first : ["facts.json"]).map((path) => join(folder, path));
+  const first = FIRST.flatMap(([kind, words]) => {
+    const found = files.map((f) => f.path).filter((path) => kind.test(path));
+    // A sheet before the file for the table.
+    const path = found.find((name) => name.endsWith(".pdf")) ?? found[0];
+    return path === undefined ? [] : [{ path: join(folder, path), words }];
+  });
+  const width = Math.max(0, ...first.map((f) => f.path.length));
+  return first.map(
+    ({ path, words }, i) => `  ${(i === 0 ? "To open" : "").padEnd(11)} ${path.padEnd(width)}  ${words}`,
+  );
 }

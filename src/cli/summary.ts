@@ -69,7 +69,8 @@ export function measurePlan(facts: Facts): PlanFigures {
   };
 }
 
-const plural = (n: number, word: string) => `${n} ${word}${n === 1 ? "" : "s"}`;
+/** A number and its noun. */
+export const plural = (n: number, word: string) => `${n} ${word}${n === 1 ? "" : "s"}`;
 
 /** A few lines on what was planned. */
 export function writeSummary(facts: Facts, figures: PlanFigures): string {

@@ -12,9 +12,8 @@ it("plans every starter into ./out and says where to look first", async () => {
     const { exit, out } = await call(["demo"]);
     expect(exit).toBe(0);
     for (const { name } of listStarters()) {
-      expect(out).toContain(
-        `Look first at ${join("out", name, "findings.pdf")}, then ${join("out", name, "rolls/R1.dxf")}`,
-      );
+      expect(out).toContain(`To open     ${join("out", name, "findings.pdf")}`);
+      expect(out).toContain(`            ${join("out", name, "rolls/R1.dxf")}  what lies where on the roll`);
       expect(existsSync(join(scratch, "out", name, "facts.json"))).toBe(true);
     }
     // Two rolls of 3 m: 10 m and 5 m used.
