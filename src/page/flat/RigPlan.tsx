@@ -69,7 +69,7 @@ export function RigPlan({
             role="button"
             tabIndex={0}
             className={`adjuster${moving.has(a.id) ? " moving" : ""}${lit(a.id) ? " lit" : ""}`}
-            aria-label={`${a.id} ${force === undefined ? "slack" : `${figure(force, 1)} kN`}, adjuster${moving.has(a.id) ? " that moves in this step" : ""}`}
+            aria-label={`${a.id} ${force === undefined ? "not pulled yet" : `${figure(force, 1)} kN`}, adjuster${moving.has(a.id) ? " that moves in this step" : ""}`}
             onClick={() => bookStore.setState({ chosen: a.id })}
             onKeyDown={(e) => e.key === "Enter" && bookStore.setState({ chosen: a.id })}
             onPointerEnter={() => bookStore.setState({ pointed: a.id })}
@@ -86,7 +86,7 @@ export function RigPlan({
               y={-(out[1] + (d[1] / l) * 2 * size) + 1.25 * size}
               fontSize={size}
             >
-              {force === undefined ? "slack" : `${figure(force, 1)} kN`}
+              {force === undefined ? "not pulled yet" : `${figure(force, 1)} kN`}
             </text>
           </g>
         );

@@ -30,10 +30,11 @@ function middleOf(cut: readonly Vec2[], p: Placement): Vec2 {
   return [turn * mid(xs) + p.x, turn * mid(ys) + p.y];
 }
 
-/** Height and length of a cut, whichever is less, mm. */
-function sizeOf(cut: readonly Vec2[]): number {
+/** Height of a name that stays within its piece, mm; 0 where it would be too small to read. */
+function letterHeight(cut: readonly Vec2[], name: string, roll: NestedRoll): number {
   const reach = (k: 0 | 1) => Math.max(...cut.map((q) => q[k])) - Math.min(...cut.map((q) => q[k]));
-  return Math.min(reach(0), reach(1));
+  const height = Math.min(roll.width / 9, reach(1) / 2, reach(0) / (0.7 * name.length));
+  return height < roll.width / 32 ? 0 : height;
 }
 
 /** Pins a placed panel where it lies, moved by dx, dy mm. */
@@ -65,6 +66,7 @@ function PlacedPiece(props: {
   const by = drag?.panel === p.panel ? drag.by : { x: 0, y: 0 };
   const [x, y] = middleOf(cut, p);
   const lit = p.panel === pointed || p.panel === chosen;
+  const letters = letterHeight(cut, p.panel, roll);
   return (
     <g clipPath={`url(#${clip})`}>
       <g
@@ -83,15 +85,10 @@ function PlacedPiece(props: {
           pin(roll, p, cut, { dx: 10 * step[0], dy: 10 * step[1] });
         }}
       >
+        <title>{p.panel}</title>
         <path d={outline(cut, p, by)} />
-        {x >= row.from && x < row.to && (
-          <text
-            x={x + by.x}
-            y={-(y + by.y)}
-            transform="scale(1 -1)"
-            fontSize={Math.min(roll.width / 9, sizeOf(cut) / 3)}
-            className="panel-name"
-          >
+        {letters > 0 && x >= row.from && x < row.to && (
+          <text x={x + by.x} y={-(y + by.y)} transform="scale(1 -1)" fontSize={letters} className="panel-name">
             {p.panel}
             {pinned ? " ⚲" : ""}
           </text>

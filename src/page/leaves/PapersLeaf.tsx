@@ -48,7 +48,12 @@ function Preview({ file }: { file: PaperFile | undefined }) {
   if (file === undefined) return <p className="waiting">Choose a paper from the list to look at it.</p>;
   if (url !== null)
     return (
-      <div className="preview roomy" tabIndex={0} role="group" aria-label={`Drawing ${file.path}`}>
+      <div
+        className={file.path.startsWith("rolls/") ? "preview roomy" : "preview"}
+        tabIndex={0}
+        role="group"
+        aria-label={`Drawing ${file.path}`}
+      >
         <img src={url} alt={`Drawing ${file.path}`} />
       </div>
     );

@@ -183,23 +183,30 @@ interface Stage {
   draw: () => void;
 }
 
-/** Half width and half height that hold the model as the camera sees it, about the point it looks at. */
-function measureReach({ camera, controls, parts }: Stage): [number, number] {
+/** Moves the point looked at to the middle of what the camera sees, and gives half its width and height. */
+function centreInPlace({ camera, controls, parts }: Stage): [number, number] {
   const { model } = parts;
   if (model === null) return [1, 1];
   const right = new Vector3().setFromMatrixColumn(camera.matrixWorld, 0);
   const above = new Vector3().setFromMatrixColumn(camera.matrixWorld, 1);
   const at = new Vector3();
-  let [x, y] = [1e-6, 1e-6];
+  const x = [Number.POSITIVE_INFINITY, Number.NEGATIVE_INFINITY];
+  const y = [Number.POSITIVE_INFINITY, Number.NEGATIVE_INFINITY];
   const take = (a: number, b: number, c: number) => {
     at.set(a, b, c).sub(controls.target);
-    x = Math.max(x, Math.abs(at.dot(right)));
-    y = Math.max(y, Math.abs(at.dot(above)));
+    const [u, v] = [at.dot(right), at.dot(above)];
+    if (u < x[0]) x[0] = u;
+    if (u > x[1]) x[1] = u;
+    if (v < y[0]) y[0] = v;
+    if (v > y[1]) y[1] = v;
   };
   const { position } = model;
   for (let i = 0; i < position.length; i += 3) take(position[i], position[i + 1], position[i + 2]);
   for (const { points } of model.lines) for (const [a, b, c] of points) take(a, b, c);
-  return [x, y];
+  const shift = right.multiplyScalar((x[0] + x[1]) / 2).add(above.multiplyScalar((y[0] + y[1]) / 2));
+  controls.target.add(shift);
+  camera.position.add(shift);
+  return [(x[1] - x[0]) / 2, (y[1] - y[0]) / 2];
 }
 
 function frameInPlace(stage: Stage): void {
@@ -231,7 +238,7 @@ function fitInPlace(stage: Stage): void {
   camera.position.copy(sphere.center).add(new Vector3(-0.55, -1, 0.85).normalize().multiplyScalar(8 * sphere.radius));
   camera.lookAt(sphere.center);
   camera.updateMatrixWorld();
-  parts.reach = measureReach(stage);
+  parts.reach = centreInPlace(stage);
   frameInPlace(stage);
   controls.update();
   stage.draw();
