@@ -199,6 +199,7 @@ export function makeJob(seams: Partial<SeamDecision> = {}): Job {
       },
       defaultTurnbuckle: {} as never,
     },
+    survey: [],
     papers: { date: "", drawnBy: "", checkedBy: "", sheet: "A4", units: "metric", site: null },
   };
 }

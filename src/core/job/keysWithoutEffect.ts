@@ -4,7 +4,7 @@ import type { Finding } from "../problem.ts";
 import { writePath } from "./jobProblems.ts";
 
 /** "*" stands for any name or number. */
-const KEYS: string[][] = [["rig", "struts", "*", "pinned"], ["survey"]];
+const KEYS: string[][] = [["rig", "struts", "*", "pinned"]];
 
 /** One note for each such key that the job gives. */
 export function noteKeysWithoutEffect(job: unknown): Finding[] {

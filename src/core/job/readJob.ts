@@ -121,6 +121,7 @@ function resolveJob(file: JobFile, catalogues: Catalogues, ledger: DefaultLedger
     rolls: resolveRolls(file, fabric, ledger),
     nest: resolveNest(file, ledger),
     rig: resolveRig(file, catalogues, ledger),
+    survey: file.survey ?? [],
     papers: {
       date: papers.date ?? "",
       drawnBy: papers.drawnBy ?? "",

@@ -8,6 +8,7 @@ import type { AdjusterDecision, CableType } from "../records/rig.ts";
 import type { StripLayout } from "../records/stripLayout.ts";
 import type { RigInput } from "../rig/rigInput.ts";
 import type { Vec3 } from "../surface/surface.ts";
+import { tellSurvey } from "./tellSurvey.ts";
 
 /** Stiffness of an adjuster where none is given: a steel rod of 245 mm2 (M20 stress area) at 210 kN/mm2, kN. */
 const adjusterEA = 51450;
@@ -202,6 +203,8 @@ export function buildRigInput(
   checkNamesFree(job, taken);
   const supports: Record<string, Vec3> = Object.create(null);
   for (const a of job.anchors) if (a.support) supports[a.name] = a.support;
+  const survey: Record<string, Vec3> = Object.create(null);
+  for (const s of job.survey) survey[s.anchor] = s.at;
   const cables: RigInput["cables"] = Object.create(null);
   for (const edge of form.edges) if (edge.force !== null) cables[edge.id] = settleCable(edge, job, notes);
   const adjusters = settleAdjusters(form, job, supports, taken, notes);
@@ -223,6 +226,7 @@ export function buildRigInput(
         `${s.name}: its EA or breaking force is not given; EA ${s.EA ?? job.rig.defaultCable.EA} kN is computed with`,
         "write the stay's EA and breaking force",
       );
+  notes.findings.push(...tellSurvey({ form, supports }, job, adjusters));
   const { stages, temperature, limit, readingError } = job.rig;
   const whole = stages[stages.length - 1] === 1 ? stages : [...stages.filter((s) => s < 1), 1];
   return {
@@ -233,6 +237,7 @@ export function buildRigInput(
       fabric: job.fabric,
       cables,
       supports,
+      survey,
       rig: { adjusters, struts, stays, stages: whole, temperature, limit, readingError, defaults: notes.defaults },
     },
     findings: notes.findings,

@@ -168,5 +168,7 @@ export interface Job {
   rolls: RollDecision[] | null;
   nest: NestDecision;
   rig: RigJob;
+  /** Where the pins really are, m: at an anchor with an adjuster its far pin, at any other the anchor itself. */
+  survey: { anchor: string; at: Vec3 }[];
   papers: PapersDecision;
 }

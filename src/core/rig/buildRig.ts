@@ -226,6 +226,15 @@ function listPulls(input: RigInput, nodes: NodeList, placed: PlacedAdjuster[]): 
   return [...adjusters, ...direct];
 }
 
+/** Anchors without an adjuster stand where they were surveyed; lengths are cut as drawn, so they are moved last. */
+function moveAnchorsInPlace(input: RigInput, nodes: NodeList, placed: readonly PlacedAdjuster[]): void {
+  for (const [id, at] of Object.entries(input.survey)) {
+    const anchor = input.form.anchors.find((a) => a.id === id);
+    if (!anchor || placed.some((a) => a.anchor === id)) continue;
+    for (let k = 0; k < 3; k++) nodes.xyz[3 * anchor.vertex + k] = at[k];
+  }
+}
+
 /**
  * Builds the rig of a form.
  * @throws PlanError adjuster-anchor, adjuster-slack, adjuster-end, mast-balance, rig-place, rig-cable, structure-link
@@ -255,6 +264,7 @@ export function buildRig(input: RigInput): Rig {
   });
   const built = struts.map((s, i) => ({ ...s, link: addLink(list, s.nodes, s.EA, -forces.strut[i], 1) }));
   const adjusters = [...placed, ...atEnds].map((a) => ({ ...a, link: addLink(list, a.nodes, a.EA, a.target) }));
+  moveAnchorsInPlace(input, nodes, placed);
   const { cloth, panelOf, cut } = gatherCloth(input);
   const structure = buildStructure({ xyz: new Float64Array(nodes.xyz), held: new Uint8Array(nodes.held) }, cloth, {
     link: new Uint32Array(list.link),

@@ -16,5 +16,7 @@ export interface RigInput {
   cables: Record<string, { type: CableType; prestretched: boolean }>;
   /** Far pin of an anchor, where the job gives it, by anchor id. */
   supports: Record<string, Vec3>;
+  /** Where pins were surveyed, by anchor id: far pins of adjusters, else the anchors themselves. */
+  survey: Record<string, Vec3>;
   rig: RigDecision;
 }

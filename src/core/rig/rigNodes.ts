@@ -49,6 +49,14 @@ export function holdClampedEdges(input: RigInput, nodes: NodeList): void {
   }
 }
 
+/** Far pin of an adjuster as drawn: the job's support, else outward along the pull, 1.0 m pin to pin. */
+export function drawPin(input: Pick<RigInput, "supports">, anchor: string, at: Vec3, pull: Vec3): Vec3 {
+  const given = input.supports[anchor];
+  if (given) return given;
+  const l = Math.sqrt(pull[0] ** 2 + pull[1] ** 2 + pull[2] ** 2);
+  return [at[0] - pull[0] / l, at[1] - pull[1] / l, at[2] - pull[2] / l];
+}
+
 /** Adjusters with their far pins; frees the anchors they stand at. */
 export function placeAdjusters(input: RigInput, nodes: NodeList): PlacedAdjuster[] {
   const pulls = readPulls(input.form);
@@ -71,12 +79,7 @@ export function placeAdjusters(input: RigInput, nodes: NodeList): PlacedAdjuster
         a.name,
       );
     const at = vertexAt({ xyz: new Float64Array(nodes.xyz), tri: new Uint32Array(0) }, anchor.vertex);
-    // outward along the pull, 1.0 m pin to pin, unless the far pin is given
-    const pin: Vec3 = input.supports[anchor.id] ?? [
-      at[0] - pull[0] / target,
-      at[1] - pull[1] / target,
-      at[2] - pull[2] / target,
-    ];
+    const pin = input.survey[anchor.id] ?? drawPin(input, anchor.id, at, pull);
     nodes.held.fill(0, 3 * anchor.vertex, 3 * anchor.vertex + 3);
     const far = findNode(nodes, pin, input.layout.surface.xyz.length / 3) ?? addNode(nodes, pin, true);
     out.push({
