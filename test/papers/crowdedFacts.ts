@@ -1,6 +1,8 @@
 // The sample with more of everything, to see what overflows: many sides, odd shapes and sizes, two dozen findings of many words.
+
 import type { Facts, FactsPanel, Vec2 } from "../../src/core/records/facts.ts";
 import { HOSTILE, sampleFacts } from "./sampleFacts.ts";
+import { withControl } from "./withControl.ts";
 
 const longText =
   "A caution of many words that does not end where one would wish it to end, with 12.5 kN/m, and on and on. ".repeat(6);
@@ -53,6 +55,7 @@ export function crowded(): Facts {
     };
   };
   facts.panels!.push(gore("tiny", 300, 40), gore("huge", 61234.5, 2900), gore("tall", 900, 9000));
+  facts.panels = facts.panels!.map(withControl);
   for (let i = 0; i < 24; i++) {
     facts.findings.push({
       code: `code-number-${i}`,

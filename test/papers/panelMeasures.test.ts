@@ -2,12 +2,13 @@ import { describe, expect, test } from "vitest";
 import { measurePanel } from "../../src/core/papers/panelMeasures.ts";
 import type { FactsPanel, Vec2 } from "../../src/core/records/facts.ts";
 import { sampleFacts } from "./sampleFacts.ts";
+import { withControl } from "./withControl.ts";
 
 /** A four-sided panel with the given corners, ends left and right, cut 30 mm outside on all sides of a rectangle. */
 function quad(corners: [Vec2, Vec2, Vec2, Vec2]): FactsPanel {
   const [a, b, c, d] = corners;
   const side = { kind: "free" as const, lengthErected: 1, lengthFlat: 1, allowance: 30 };
-  return {
+  return withControl({
     ...sampleFacts().panels![0]!,
     flat: corners,
     net: corners,
@@ -25,7 +26,7 @@ function quad(corners: [Vec2, Vec2, Vec2, Vec2]): FactsPanel {
       netFrom: k,
       netTo: (k + 1) % 4,
     })),
-  };
+  });
 }
 
 describe("measurePanel", () => {
@@ -39,8 +40,8 @@ describe("measurePanel", () => {
       ]),
     );
     expect(m.diagonals.map((d) => [d.from.name, d.to.name, d.length])).toEqual([
-      ["C1", "C3", 5000],
       ["C4", "C2", 5000],
+      ["C1", "C3", 5000],
     ]);
     expect(m.widths.map((w) => w.station)).toEqual([1000, 2000, 3000]);
     for (const w of m.widths) {
@@ -63,9 +64,9 @@ describe("measurePanel", () => {
     const turned = corners.map(([x, y]): Vec2 => [0.6 * x - 0.8 * y + 77, 0.8 * x + 0.6 * y - 5]) as typeof corners;
     const [m, t] = [measurePanel(quad(corners)), measurePanel(quad(turned))];
     // Widths of a trapezium run straight from 3000 to 2000.
-    expect(m.widths.map((w) => Math.round(w.netWidth! * 1e6) / 1e6)).toEqual([2750, 2500, 2250]);
+    expect(m.widths.map((w) => Math.round(w.netWidth * 1e6) / 1e6)).toEqual([2750, 2500, 2250]);
     t.widths.forEach((w, i) => {
-      expect(w.netWidth).toBeCloseTo(m.widths[i]!.netWidth!, 6);
+      expect(w.netWidth).toBeCloseTo(m.widths[i]!.netWidth, 6);
       expect(w.station).toBeCloseTo(m.widths[i]!.station, 6);
     });
     t.diagonals.forEach((d, i) => {
@@ -110,9 +111,16 @@ describe("measurePanel", () => {
       axis: { from: [0], to: [1, 2], turn: 0 },
       sides: base.sides.slice(0, 3).map((s, k) => ({ ...s, vertices: [k, (k + 1) % 3], netTo: (k + 1) % 3 })),
     };
-    const m = measurePanel(triangle);
+    const m = measurePanel(withControl(triangle));
     expect(m.diagonals).toEqual([]);
     expect(m.start).toBe("corner C1");
-    expect(m.widths.map((w) => Math.round(w.netWidth!))).toEqual([500, 1000, 1500]);
+    expect(m.widths.map((w) => Math.round(w.netWidth))).toEqual([500, 1000, 1500]);
+  });
+
+  test("facts without control lengths give no diagonal and no width, sides all the same", () => {
+    const { control: _, ...bare } = sampleFacts().panels![0]!;
+    const m = measurePanel(bare);
+    expect([m.diagonals, m.widths, m.start]).toEqual([[], [], ""]);
+    expect(m.sides).toEqual(measurePanel(sampleFacts().panels![0]!).sides);
   });
 });

@@ -5,6 +5,7 @@ import type { Facts, FactsPanel, FactsSeam, FactsSide, Vec2 } from "../../src/co
 import type { PanelMark } from "../../src/core/records/flatPanel.ts";
 import type { NestedRoll } from "../../src/core/records/roll.ts";
 import type { Vec3 } from "../../src/core/surface/surface.ts";
+import { withControl } from "./withControl.ts";
 
 const NU = 24;
 const NV = 3;
@@ -275,7 +276,7 @@ const FINDINGS: Finding[] = [
 export function sampleFacts(options: SampleOptions = {}): Facts {
   const names = options.names ?? {};
   const name = (id: string) => names[id] ?? id;
-  const panels = [0, 1, 2].map((k) => samplePanel(k, name));
+  const panels = [0, 1, 2].map((k) => withControl(samplePanel(k, name)));
   const patch: Vec2[] = [
     [0, 0],
     [420, 0],

@@ -52,7 +52,9 @@ export function addPanelInPlace(drawing: Drawing, panel: FactsPanel, lie: Lie): 
 
 /** Draws the cut outline of a patch, strip, cover or test piece with its name and what it belongs to. */
 export function addPieceInPlace(drawing: Drawing, piece: FactsPiece, lie: Lie): void {
-  addNameInPlace(drawing, piece.for === "" ? piece.id : `${piece.id} for ${piece.for}`, piece.cut, lie);
+  // What the name says already is not said again: the letters can be larger.
+  const told = piece.id.includes(piece.for);
+  addNameInPlace(drawing, told ? piece.id : `${piece.id} for ${piece.for}`, piece.cut, lie);
   addStrokeInPlace(drawing, { layer: "cut", points: piece.cut.map((p) => placed(p, lie)), closed: true });
 }
 

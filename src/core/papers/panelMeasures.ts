@@ -1,7 +1,8 @@
-// What a welder checks with a tape before a panel is joined: corners, diagonals, widths at the quarter points, all from the
-// panel's own flat outline. Where cloth is set back its net corner lies off the cloth: what a tape can reach is measured between
-// the corners of the cut line. Does not judge: the tolerance is the office's.
+// What a welder checks with a tape before a panel is joined: the control lengths the panels station has measured, with the names
+// the cards give them, and what a tape can reach where cloth is set back and the net corner lies off it: lengths between the
+// corners of the cut line. Does not judge: the tolerance is the office's.
 import type { FactsPanel, Vec2 } from "../records/facts.ts";
+import type { ControlLengths } from "../records/flatPanel.ts";
 import { chordAcross, distance } from "./flatGeometry.ts";
 
 export interface Corner {
@@ -27,10 +28,10 @@ export interface Width {
   name: string;
   /** mm from the middle of the first end, along the axis. */
   station: number;
-  /** Across the net line: its two ends and their distance, mm; null where the line misses it. */
+  /** Where the figure shows it: its two ends on the net line; null where the line misses it. */
   net: [Vec2, Vec2] | null;
-  netWidth: number | null;
-  cutWidth: number | null;
+  netWidth: number;
+  cutWidth: number;
 }
 
 /** What can be measured on the cloth along a side, mm; null where the cut line has no corner at an end. */
@@ -102,17 +103,20 @@ function mean(points: Vec2[]): Vec2 {
   return [points.reduce((s, p) => s + p[0], 0) / n, points.reduce((s, p) => s + p[1], 0) / n];
 }
 
-/** The corners nearest to the outermost points of one end, left and right of the axis; one corner where the end is pointed. */
-function endCorners(panel: FactsPanel, corners: Corner[], end: number[], across: Vec2): [Corner, Corner] {
-  const points = end.map((v) => panel.flat[v]);
-  const height = (p: Vec2) => p[0] * across[0] + p[1] * across[1];
-  const sorted = [...points].sort((a, b) => height(a) - height(b));
-  const nearest = (p: Vec2) =>
-    corners.reduce((best, c) => (distance(c.at, p) < distance(best.at, p) ? c : best), corners[0]);
-  return [nearest(sorted[0]), nearest(sorted[sorted.length - 1])];
+/** Where the widths are shown on the figure: square to the axis, from the middle of its first end. */
+function placeWidths(panel: FactsPanel, widths: ControlLengths["widths"]): Width[] {
+  const from = mean(panel.axis.from.map((v) => panel.flat[v]));
+  const to = mean(panel.axis.to.map((v) => panel.flat[v]));
+  const length = distance(from, to);
+  const along: Vec2 = [(to[0] - from[0]) / length, (to[1] - from[1]) / length];
+  return widths.map((w): Width => {
+    const p: Vec2 = [from[0] + w.at * along[0], from[1] + w.at * along[1]];
+    const net = chordAcross(panel.net, p, [-along[1], along[0]]);
+    return { name: `W${Math.round(4 * w.share)}`, station: w.at, net, netWidth: w.net, cutWidth: w.cut };
+  });
 }
 
-/** Corners, straight lengths of sides, both diagonals and the widths at the quarter points. @units mm */
+/** Corners, lengths on the cloth, and the panel's control lengths by name (none where the facts have none). @units mm */
 export function measurePanel(panel: FactsPanel): PanelMeasures {
   const corners = panel.sides.map(
     (s, i): Corner => ({
@@ -122,42 +126,13 @@ export function measurePanel(panel: FactsPanel): PanelMeasures {
     }),
   );
   const sides = corners.map((c, i) => measureSide(panel.cut, c.cut, corners[(i + 1) % corners.length].cut));
-  if (corners.length === 0 || panel.axis.from.length === 0 || panel.axis.to.length === 0) {
-    return { corners, sides, diagonals: [], widths: [], start: "" };
-  }
-  const from = mean(panel.axis.from.map((v) => panel.flat[v]));
-  const to = mean(panel.axis.to.map((v) => panel.flat[v]));
-  const length = distance(from, to);
-  if (!(length > 0)) return { corners, sides, diagonals: [], widths: [], start: "" };
-  const along: Vec2 = [(to[0] - from[0]) / length, (to[1] - from[1]) / length];
-  const across: Vec2 = [-along[1], along[0]];
-  const [a, b] = endCorners(panel, corners, panel.axis.from, across);
-  const [c, d] = endCorners(panel, corners, panel.axis.to, across);
-  // A pointed end has one corner: its diagonals are sides already listed.
-  const pairs: [Corner, Corner][] =
-    a === b || c === d
-      ? []
-      : [
-          [a, d],
-          [b, c],
-        ];
-  const diagonals = pairs.map(([p, q]) => ({
-    from: p,
-    to: q,
-    length: distance(p.at, q.at),
-    cutLength: p.cut < 0 || q.cut < 0 || p.cut === q.cut ? null : distance(panel.cut[p.cut], panel.cut[q.cut]),
-  }));
-  const widths = [1, 2, 3].map((k): Width => {
-    const p: Vec2 = [from[0] + (length * k * along[0]) / 4, from[1] + (length * k * along[1]) / 4];
-    const net = chordAcross(panel.net, p, across);
-    const cut = chordAcross(panel.cut, p, across);
-    return {
-      name: `W${k}`,
-      station: (length * k) / 4,
-      net,
-      netWidth: net && distance(net[0], net[1]),
-      cutWidth: cut && distance(cut[0], cut[1]),
-    };
+  const control = panel.control ?? { diagonals: [], widths: [] };
+  const diagonals = control.diagonals.map((d): Diagonal => {
+    const [from, to] = [corners[d.from], corners[d.to]];
+    const onCloth = from.cut >= 0 && to.cut >= 0 && from.cut !== to.cut;
+    const cutLength = onCloth ? distance(panel.cut[from.cut], panel.cut[to.cut]) : null;
+    return { from, to, length: d.length, cutLength };
   });
-  return { corners, sides, diagonals, widths, start: startOf(panel) };
+  const widths = placeWidths(panel, control.widths);
+  return { corners, sides, diagonals, widths, start: widths.length > 0 ? startOf(panel) : "" };
 }

@@ -1,11 +1,13 @@
 // The lists of the rig for store, crew and engineer: moves, cables, hardware. Metric whatever the sheets are; every row carries
 // issue, revision and status, because rows are copied out of lists and travel alone.
+
 import type { Facts, FactsJob } from "../records/facts.ts";
 import type { FactsAdjuster, FactsCable } from "../records/rig.ts";
 import { type Cell, numberCell, writeCsv } from "./csv.ts";
 import { allMoves, type RigFacts, startPins, stopForce } from "./rigReadings.ts";
 import { stampOf } from "./stamp.ts";
 import { turnsText } from "./turnbuckleWork.ts";
+import { typeText } from "./typeText.ts";
 
 const TAIL = ["reference_temperature_degC", "issue", "revision", "status"];
 
@@ -64,7 +66,7 @@ export function cableTable(facts: Facts): string {
   const rows = (facts.cables ?? []).map((c): Cell[] => [
     c.id,
     c.edge,
-    c.type,
+    typeText(c.type),
     numberCell(c.EA, 0),
     numberCell(c.force, 2),
     numberCell(c.erectedLength, 4),
@@ -105,7 +107,7 @@ export function hardwareTable(rig: RigFacts): string {
     return [
       a.id,
       a.anchor,
-      a.turnbuckle,
+      typeText(a.turnbuckle),
       maybe(a.thread, 1),
       numberCell(a.perTurn, 2),
       numberCell(a.range.shortest * 1000, 1),

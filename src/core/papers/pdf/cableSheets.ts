@@ -1,11 +1,13 @@
 // The cable schedule and the hardware list as sheets: what is ordered, marked and hung. No size is chosen here; terminals are not
 // deducted, because the job does not know them.
+
 import type { Facts } from "../../records/facts.ts";
 import { cautionsOf } from "../cautions.ts";
 import { decimal } from "../decimal.ts";
 import { paperUnits } from "../paperUnits.ts";
 import { limitOf, type RigFacts, rigFacts } from "../rigReadings.ts";
 import { cableStart, travelOf } from "../rigTables.ts";
+import { typeText } from "../typeText.ts";
 import { type Book, closeBook, type FontFiles, openBook } from "./book.ts";
 import { flowCautionsInPlace } from "./cautionBlock.ts";
 import {
@@ -53,7 +55,7 @@ function flowCables(book: Book): void {
   ];
   const rows = (facts.cables ?? []).map((c) => [
     c.id,
-    c.type,
+    typeText(c.type),
     stiffness.of(c.EA),
     force.of(c.force),
     span.of(c.erectedLength),
@@ -136,7 +138,7 @@ function flowHardware(book: Book, rig: RigFacts): void {
     return [
       a.id,
       a.anchor,
-      a.turnbuckle,
+      typeText(a.turnbuckle),
       travel.of(a.perTurn),
       `${pins.of(a.range.shortest)} – ${pins.of(a.range.longest)}`,
       pins.of(a.pinLength),

@@ -109,8 +109,8 @@ function checkRows(measures: PanelMeasures): string[][] {
   ]);
   const widths = measures.widths.map((w) => [
     `${w.name} at ${decimal(w.station, 0)}`,
-    reach(w.netWidth),
-    reach(w.cutWidth),
+    decimal(w.netWidth, 0),
+    decimal(w.cutWidth, 0),
     "",
   ]);
   return [...diagonals, ...widths, ["Tolerance ±", "", "", ""]];

@@ -1,4 +1,5 @@
-// Roll sheets: each roll as it is laid, its pieces numbered in the order of cutting, a list to tick; then the cloth list for the store.
+// Roll sheets: the cloth list for the store and the cautions, which are read before the first cut; then each roll as it is laid, its
+// pieces numbered in the order of cutting, a list to tick.
 import type { Facts, Vec2 } from "../../records/facts.ts";
 import type { NestedRoll } from "../../records/roll.ts";
 import { cautionsOf } from "../cautions.ts";
@@ -32,8 +33,8 @@ const BELOW = 0.45;
 /** The bytes of roll-sheets.pdf. */
 export async function writeRollSheets(facts: Facts, fonts: FontFiles): Promise<Uint8Array> {
   const book = await openBook(facts, fonts, "roll sheets", "cloth");
-  for (const roll of facts.rolls ?? []) drawRoll(book, roll);
   flowClothList(book);
+  for (const roll of facts.rolls ?? []) drawRoll(book, roll);
   return closeBook(book);
 }
 
@@ -115,12 +116,14 @@ function drawRows(book: Book, sheet: Sheet, roll: NestedRoll, cloth: readonly Pl
 
 function pieceTable(book: Book, cloth: readonly PlacedCloth[]): { columns: readonly Column[]; rows: string[][] } {
   const { flat, area } = paperUnits(book.facts.job);
+  // Feet, inches and sixteenths take more than millimetres; what is left goes to the words.
+  const place = book.facts.job.units === "imperial" ? 35 : 26;
   const columns: readonly Column[] = [
     { head: ["No."], width: 14, bold: true },
-    { head: ["Piece"], width: 44, bold: true },
-    { head: ["What"], width: 32 },
-    { head: ["From,", flat.unit], width: 35, align: "end" },
-    { head: ["To,", flat.unit], width: 35, align: "end" },
+    { head: ["Piece"], width: 46, bold: true },
+    { head: ["What"], width: 100 - 2 * place },
+    { head: ["From,", flat.unit], width: place, align: "end" },
+    { head: ["To,", flat.unit], width: place, align: "end" },
     { head: ["Turned"], width: 20, align: "end" },
     { head: ["Cut area,", area.unit], width: 24, align: "end" },
     { head: ["Cut"], width: 15 },

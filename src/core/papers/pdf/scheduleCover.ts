@@ -1,11 +1,13 @@
 // First sheets of the tensioning schedule: what it is and is not, why it may not be issued, who and what must be there, the limits
 // of the day, how heavy each turnbuckle is to turn, and the cautions that hold from the first step to the last.
+
 import { cautionsOf } from "../cautions.ts";
 import { paperUnits } from "../paperUnits.ts";
 import { allMoves, jackStep, limitOf, type RigFacts } from "../rigReadings.ts";
 import { siteLimits } from "../siteLimits.ts";
 import { holdReason } from "../stamp.ts";
 import { bodyTorque, HAND_TORQUE, THREAD_FRICTION, threadOf } from "../turnbuckleWork.ts";
+import { typeText } from "../typeText.ts";
 import type { Book } from "./book.ts";
 import { flowCautionsInPlace } from "./cautionBlock.ts";
 import { drawBox, LARGE } from "./pen.ts";
@@ -18,6 +20,7 @@ import {
   flowTextInPlace,
   needInPlace,
   openFlow,
+  tableHeight,
 } from "./table.ts";
 
 /** Size of running text, pt. */
@@ -34,8 +37,11 @@ export function flowCover(book: Book, rig: RigFacts): void {
   const flow = openFlow(book, "Tensioning schedule");
   flowScopeInPlace(flow, rig);
   flowGearInPlace(flow, rig);
-  flowHeadingInPlace(flow, "Limits for the day");
   const rows = siteLimits(rig.facts.job).map((l) => [l.what, l.value, ""]);
+  // Signed off as one: never half on a sheet where a whole one holds it.
+  const whole = tableHeight(LIMIT_COLUMNS, rows.length, LARGE) + 9;
+  if (whole < flow.sheet.top - flow.sheet.bottom) needInPlace(flow, whole);
+  flowHeadingInPlace(flow, "Limits for the day");
   flowTableInPlace(flow, LIMIT_COLUMNS, rows, { size: LARGE });
   flowTorqueInPlace(flow, rig);
   flowHeadingInPlace(flow, "Cautions from the first step to the last");
@@ -123,7 +129,7 @@ function flowTorqueInPlace(flow: Flow, rig: RigFacts): void {
     const size = thread ? `M${thread.diameter}${thread.assumed ? " assumed" : ""}` : "thread not known";
     return [
       a.id,
-      `${size}: ${a.turnbuckle}`,
+      `${size}: ${typeText(a.turnbuckle)}`,
       force.of(most),
       limit === null ? "not given" : force.of(limit),
       thread ? torque.of(bodyTorque(most, thread, THREAD_FRICTION)) : "–",
