@@ -1,8 +1,12 @@
 // Seams given one by one: legs, welds, ends of strips that no layout names, and what is refused.
 import { describe, expect, test } from "vitest";
 import type { EdgePlace } from "../../src/core/records/job.ts";
+import { noteSeamEnds } from "../../src/core/seams/noteEnds.ts";
 import { findEdge } from "../../src/core/seams/pairs.ts";
+import { buildRegions } from "../../src/core/seams/region.ts";
 import { runSeams } from "../../src/core/seams/runSeams.ts";
+import { traceSeam } from "../../src/core/seams/seamLine.ts";
+import { buildAdjacency } from "../../src/core/surface/adjacency.ts";
 import { expectSoundLayout } from "./judgeLayout.ts";
 import { makeForm, makeGrid, makeJob, makeRing } from "./madeForms.ts";
 
@@ -201,5 +205,51 @@ describe("refused", () => {
     ];
     expect(() => runSeams(ring, pairs([one]), options)).toThrow(/joins itself/);
     expect(() => findEdge(ring, "nowhere", "seams.from")).toThrow(/seams.from names edge "nowhere"/);
+  });
+});
+
+describe("flagged", () => {
+  const codesOf = (form: ReturnType<typeof square>, list: EdgePlace[][]) =>
+    runSeams(form, pairs(list), options)
+      .findings.filter((f) => f.level !== "note")
+      .map((f) => f.code);
+
+  test("an end that leaves its edge at 4 degrees, but not one at 6", () => {
+    // from the corner of a square of 6 m: the slope is 6 tan(angle) on the side across
+    const at = (degrees: number) => Math.tan((degrees * Math.PI) / 180);
+    const seam = (degrees: number): EdgePlace[][] => [
+      [
+        { edge: a, at: 0 },
+        { edge: b, at: at(degrees) },
+      ],
+    ];
+    expect(codesOf(square(), seam(4))).toContain("seam-shallow");
+    expect(codesOf(square(), seam(6))).not.toContain("seam-shallow");
+    const told = runSeams(square(), pairs(seam(4)), options).findings.find((f) => f.code === "seam-shallow");
+    expect(Number(told?.value)).toBeCloseTo(4, 6);
+  });
+
+  test("a seam 100 mm beside an edge, but not one 200 mm beside it", () => {
+    const beside = (metres: number): EdgePlace[][] => [
+      [
+        { edge: d, at: 1 - metres / 6 },
+        { edge: b, at: metres / 6 },
+      ],
+    ];
+    expect(codesOf(square(), beside(0.1))).toEqual(["seam-near-edge"]);
+    expect(codesOf(square(), beside(0.2))).toEqual([]);
+  });
+
+  test("a seam from one rim of a tube to the other, half a turn on, may go either way round; a quarter turn on it may not", () => {
+    const form = makeForm(makeRing(32, 8, (turn, row) => [2 * Math.cos(turn), 2 * Math.sin(turn), 6 * row]));
+    const adjacency = buildAdjacency(form.surface);
+    const { regions } = buildRegions(form, adjacency);
+    const codes = (steps: number) => {
+      const line = traceSeam(regions[0], { a: 0, b: 0, t: 0 }, { a: 8 * 32 + steps, b: 8 * 32 + steps, t: 0 });
+      const path = { region: 0, line, weld: "seams.pairs[0]", left: -1, right: -1 };
+      return noteSeamEnds(regions, [path], true).map((f) => f.code);
+    };
+    expect(codes(16)).toEqual(["seam-two-ways"]);
+    expect(codes(8)).toEqual([]);
   });
 });

@@ -5,7 +5,7 @@ import type { StripSize } from "./stripWidth.ts";
 import type { RegionLayout } from "./trial.ts";
 
 /** Strips narrower than this are a caution, m. own: two weld overlaps of 40 mm and a hand between. */
-const NARROW = 0.15;
+export const NARROW = 0.15;
 
 /** Seams left out because they hug an edge. */
 export function noteHugging(layout: RegionLayout): Finding[] {

@@ -15,6 +15,7 @@ import { type CrossPlan, layCrossSeams } from "./crossSeams.ts";
 import { cutStrips } from "./cutStrips.ts";
 import { layoutRegion, wayKey } from "./layoutRegion.ts";
 import { nameStrips } from "./nameStrips.ts";
+import { noteSeamEnds } from "./noteEnds.ts";
 import { noteHugging, notePruned, noteSizes } from "./noteSeams.ts";
 import { openHoles } from "./openHoles.ts";
 import { findEdge, findInRegion, tracePairs } from "./pairs.ts";
@@ -239,6 +240,7 @@ export function runSeams(
       endOf: tagEnds(form, layout.region, layout.candidate),
     }));
   const paths = given?.paths ?? layouts.flatMap((layout, r) => listPaths(layout, crosses[r], r));
+  findings.push(...noteSeamEnds(regions, paths, given !== null));
   context.onProgress?.(regions.length / (regions.length + 1), "cutting");
   const cut = cutStrips(form, adjacency, labels, plans, paths);
   const named = nameStrips(form, job, plans, cut);

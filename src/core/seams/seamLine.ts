@@ -16,12 +16,20 @@ export interface SeamLine {
   length: number;
   /** False where it runs along the outline or touches it between its ends. */
   clear: boolean;
+  /** False where another way round a hole is as short. */
+  unique: boolean;
 }
 
 /** The geodesic between two places of a region; two ends in one place give a line of no length that is not clear. */
 export function traceSeam(region: Region, from: SurfacePoint, to: SurfacePoint): SeamLine {
   if (isSamePoint(from, to))
-    return { points: [from, to], curve: sampleCurve([pointAt(region.surface, from)]), length: 0, clear: false };
+    return {
+      points: [from, to],
+      curve: sampleCurve([pointAt(region.surface, from)]),
+      length: 0,
+      clear: false,
+      unique: true,
+    };
   const path = traceGeodesic(region.surface, region.adjacency, from, to, { solver: region.solver });
   const places = path.points.map((p) => pointAt(region.surface, p));
   return {
@@ -29,6 +37,7 @@ export function traceSeam(region: Region, from: SurfacePoint, to: SurfacePoint):
     curve: sampleCurve(places),
     length: measurePathLength(places),
     clear: !path.touchesBoundary,
+    unique: path.unique,
   };
 }
 
