@@ -100,11 +100,11 @@ describe("looks of the page", { timeout: 2 * PATIENCE }, () => {
     await page.getByRole("dialog", { name: "Keys" }).waitFor();
     expect(await judge(page)).toEqual([]);
     await page.keyboard.press("Escape");
-    await page.getByRole("dialog").waitFor({ state: "detached" });
+    await page.locator("dialog").waitFor({ state: "detached" });
     await page.keyboard.press("f");
     expect(await judge(page)).toEqual([]);
     await page.keyboard.press("Escape");
-    await page.getByRole("dialog").waitFor({ state: "detached" });
+    await page.locator("dialog").waitFor({ state: "detached" });
     await page.keyboard.press("1");
     const view = page.getByRole("application");
     await view.focus();
@@ -128,7 +128,7 @@ describe("looks of the page", { timeout: 2 * PATIENCE }, () => {
     expect(text).not.toContain("85 %");
   });
 
-  it("Site: a reading is held against the window of its step", async () => {
+  it("Site: a reading is held against the window of its step, and corrections come of it", async () => {
     const { page } = desk;
     await turnTo(page, "Site");
     await page.getByRole("button", { name: "on ▸" }).click();
@@ -139,7 +139,11 @@ describe("looks of the page", { timeout: 2 * PATIENCE }, () => {
     await page.getByText(/high by .* stop, ask the engineer/).waitFor();
     await page.getByRole("button", { name: "Write it into the log" }).click();
     await page.getByText("1 reading in the log.").waitFor();
-    await page.keyboard.press("Escape");
+    await page.getByRole("button", { name: /^Work out corrections/ }).click();
+    const result = page.getByRole("table", { name: "What the readings say, and the forecast" });
+    await result.waitFor({ timeout: PATIENCE });
+    expect(await result.getByRole("row").count()).toBe(5);
+    expect(await judge(page)).toEqual([]);
     expect(desk.faults).toEqual([]);
   });
 });

@@ -11,6 +11,7 @@ import { figure } from "../parts/figure.ts";
 import { act, bookStore } from "../store/bookStore.ts";
 import type { Reading } from "../store/project.ts";
 import { useBook } from "../store/useBook.ts";
+import { Corrections } from "./Corrections.tsx";
 import { LeafFrame } from "./LeafFrame.tsx";
 import { ReadingEntry } from "./ReadingEntry.tsx";
 
@@ -111,6 +112,7 @@ export function SiteLeaf() {
   const steps = tensioning ? listSteps(tensioning) : [];
   const at = Math.min(step, steps.length);
   const now = steps[at - 1] ?? null;
+  const stage = tensioning?.stages.find((s) => s.moves.some((m) => m.step === now?.step));
   const go = (i: number) => bookStore.setState({ step: Math.min(Math.max(i, 0), steps.length) });
   return (
     <LeafFrame
@@ -146,6 +148,12 @@ export function SiteLeaf() {
       stage={
         <div className="readings">
           <ReadingEntry step={now} />
+          {steps.length > 0 && (
+            <Corrections
+              percent={stage === undefined ? null : 100 * stage.fraction}
+              stage={stage?.name ?? "the finished roof"}
+            />
+          )}
           <Log log={log} />
         </div>
       }

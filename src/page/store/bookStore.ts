@@ -1,6 +1,7 @@
 // The one store of the page, in three slices: project (undone by snapshots), result (the latest plan), look (not undone).
 // Knows no React and no worker.
 import { createStore } from "zustand/vanilla";
+import type { CorrectedPlan } from "../../core/plan/correctPlan.ts";
 import type { Station } from "../../core/problem.ts";
 import type { Facts } from "../../core/records/facts.ts";
 import type { Job } from "../../core/records/job.ts";
@@ -39,6 +40,10 @@ export interface ResultSlice {
   papers: { of: Facts; files: PaperFile[] } | null;
   papersFault: PlanFault | null;
   writing: boolean;
+  /** What to turn after the readings, and the project they are of. */
+  corrected: { of: Project; plan: CorrectedPlan } | null;
+  correcting: boolean;
+  correctFault: PlanFault | null;
 }
 
 export interface LookSlice {
@@ -70,6 +75,9 @@ const NO_RESULT: ResultSlice = {
   papers: null,
   papersFault: null,
   writing: false,
+  corrected: null,
+  correcting: false,
+  correctFault: null,
 };
 
 export const bookStore = createStore<Book>(() => ({

@@ -10,9 +10,10 @@ import turnbuckles from "../../../templates/turnbuckles.json";
 import { type Catalogues, readCatalogues } from "../../core/job/catalogues.ts";
 import { writePapers } from "../../core/papers/writePapers.ts";
 import { capNest } from "../../core/plan/capNest.ts";
+import { correctPlan } from "../../core/plan/correctPlan.ts";
 import { writeFactsJson } from "../../core/plan/factsFile.ts";
 import { measureFields } from "../../core/plan/measureFields.ts";
-import { readPlanInput } from "../../core/plan/readPlanInput.ts";
+import { type PlanInput, readPlanInput } from "../../core/plan/readPlanInput.ts";
 import { runPlan } from "../../core/plan/runPlan.ts";
 import { PlanError, type Station } from "../../core/problem.ts";
 import type { Facts } from "../../core/records/facts.ts";
@@ -45,10 +46,10 @@ async function loadFonts(): Promise<{ regular: Uint8Array; bold: Uint8Array }> {
   return { regular, bold };
 }
 
-function plan(request: Extract<Request, { kind: "plan" }>): void {
-  const { run, given, mesh } = request;
+function read(request: Extract<Request, { kind: "plan" | "correct" }>): PlanInput {
+  const { given, mesh } = request;
   catalogues ??= readCatalogues({ fabrics, cables, turnbuckles, cautions });
-  const input = readPlanInput({ value: given, findings: [] }, catalogues, (file) => {
+  return readPlanInput({ value: given, findings: [] }, catalogues, (file) => {
     if (mesh === null) {
       throw new PlanError(
         "mesh-missing",
@@ -58,16 +59,33 @@ function plan(request: Extract<Request, { kind: "plan" }>): void {
     }
     return { bytes: mesh.bytes, name: mesh.name };
   });
-  post({ kind: "read", run, job: input.job, revision: input.revision });
-  let station: Station = "job";
+}
+
+/** Tells progress, a few times a second. */
+function createTeller(run: number, stationOf: () => Station): (share: number, words: string) => void {
   let told = Number.NEGATIVE_INFINITY;
-  const cap = capNest(input.job.nest.seconds, () => performance.now());
-  const tell = (share: number, words: string) => {
+  return (share, words) => {
     const now = performance.now();
     if (now - told < 1000 / TICKS) return;
     told = now;
-    post({ kind: "progress", run, share, words, station });
+    post({ kind: "progress", run, share, words, station: stationOf() });
   };
+}
+
+function correct(request: Extract<Request, { kind: "correct" }>): void {
+  const { run, text, percent } = request;
+  const { job, source } = read(request);
+  const corrected = correctPlan(job, source, { text, percent }, { onProgress: createTeller(run, () => "rig") });
+  post({ kind: "corrected", run, corrected });
+}
+
+function plan(request: Extract<Request, { kind: "plan" }>): void {
+  const { run } = request;
+  const input = read(request);
+  post({ kind: "read", run, job: input.job, revision: input.revision });
+  let station: Station = "job";
+  const cap = capNest(input.job.nest.seconds, () => performance.now());
+  const tell = createTeller(run, () => station);
   const onStation = (next: Station) => {
     station = next;
     cap.onStation(next);
@@ -122,6 +140,7 @@ self.onmessage = async (event: MessageEvent<Request>) => {
   const request = event.data;
   try {
     if (request.kind === "plan") plan(request);
+    else if (request.kind === "correct") correct(request);
     else await papers(request.run, request.facts);
   } catch (error) {
     post({ kind: "failed", run: request.run, fault: describe(error) });

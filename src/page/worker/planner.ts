@@ -1,5 +1,6 @@
 // Starts, ends and hears the worker. The newest request wins: a worker that still computes an older one is ended.
 import type { Facts } from "../../core/records/facts.ts";
+import { writeReadings } from "../keep/readings.ts";
 import { bookStore } from "../store/bookStore.ts";
 import type { Project } from "../store/project.ts";
 import type { PlanFault, Reply, Request } from "./messages.ts";
@@ -8,7 +9,7 @@ let worker: Worker | null = null;
 let busy = false;
 let run = 0;
 /** Project or facts the running request is about. */
-let subject: { project: Project } | { facts: Facts } | null = null;
+let subject: { project: Project } | { facts: Facts } | { readingsOf: Project } | null = null;
 
 function start(): Worker {
   const fresh = new Worker(new URL("./planWorker.ts", import.meta.url), { type: "module", name: "seamstay-plan" });
@@ -66,6 +67,12 @@ function hear(reply: Reply): void {
       if (subject !== null && "facts" in subject)
         set({ papers: { of: subject.facts, files: reply.files }, writing: false });
       return;
+    case "corrected":
+      busy = false;
+      if (subject !== null && "readingsOf" in subject) {
+        set({ corrected: { of: subject.readingsOf, plan: reply.corrected }, correcting: false, correctFault: null });
+      }
+      return;
     case "failed":
       busy = false;
       fail(reply.fault);
@@ -74,6 +81,7 @@ function hear(reply: Reply): void {
 
 function fail(fault: PlanFault): void {
   if (subject !== null && "facts" in subject) bookStore.setState({ writing: false, papersFault: fault });
+  else if (subject !== null && "readingsOf" in subject) bookStore.setState({ correcting: false, correctFault: fault });
   else bookStore.setState({ status: "failed", fault });
 }
 
@@ -85,6 +93,7 @@ export function requestPlan(project: Project): void {
     status: "running",
     fault: null,
     writing: false,
+    correcting: false,
     progress: { share: 0, words: "reading the job", station: "job" },
   });
   send({ kind: "plan", run, given: project.job, mesh: project.mesh });
@@ -98,14 +107,20 @@ export function requestPapers(facts: Facts): void {
   send({ kind: "papers", run, facts });
 }
 
+/** Works out what to turn after the readings of the log. @param percent stage at whose end was read; null: the finished roof */
+export function requestCorrection(project: Project, percent: number | null): void {
+  run++;
+  subject = { readingsOf: project };
+  bookStore.setState({ correcting: true, correctFault: null, corrected: null });
+  const text = new TextDecoder().decode(writeReadings(project.log));
+  send({ kind: "correct", run, given: project.job, mesh: project.mesh, text, percent });
+}
+
 /** Stops what is computed; what was planned before stays. */
 export function stopPlan(): void {
   if (!busy) return;
   run++;
   end();
-  const { facts } = bookStore.getState();
-  bookStore.setState({
-    status: facts === null || subject === null || "project" in subject ? "stopped" : "done",
-    writing: false,
-  });
+  const planning = subject !== null && "project" in subject;
+  bookStore.setState({ writing: false, correcting: false, ...(planning ? { status: "stopped" } : {}) });
 }
