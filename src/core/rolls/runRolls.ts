@@ -168,7 +168,7 @@ export function runRolls(
   const filled = found.layout.beds
     .map((bed, i) => ({ bed, roll: offers[i].roll }))
     .filter(({ bed }) => bed.laid.length > 0);
-  const rolls = filled.map(({ bed, roll }) => recordRoll(bed, roll, fit));
+  const rolls = filled.map(({ bed, roll }) => ({ ...recordRoll(bed, roll, fit), bite: options.bite }));
   const byId = new Map(fit.map((p) => [p.id, p]));
   const output = closeNumbering(rolls, offers, options.pins.length > 0);
   output.forEach((roll, i) => {
