@@ -1,6 +1,6 @@
 // The panels station: strips flattened together, then outlined and marked one by one.
 import type { Check, Finding, StationContext, StationResult } from "../problem.ts";
-import type { CutPanel } from "../records/flatPanel.ts";
+import type { CutPanel, FlatPanel } from "../records/flatPanel.ts";
 import type { FoundForm } from "../records/foundForm.ts";
 import type { Job } from "../records/job.ts";
 import type { StripLayout } from "../records/stripLayout.ts";
@@ -8,7 +8,36 @@ import { flattenPanels } from "./flattenPanels.ts";
 import { keepSeamPoints } from "./netOutline.ts";
 import { outlinePanel } from "./outlinePanel.ts";
 import type { PanelPlace } from "./panelPlace.ts";
+import type { FlattenOptions } from "./panelTarget.ts";
 import { listFoldFindings } from "./slitFlaps.ts";
+
+/** What the job decides on flattening. */
+export function buildFlattenOptions(form: FoundForm, job: Job): FlattenOptions {
+  const rings = form.edges
+    .filter((e) => e.kind === "clamped" && e.vertices[0] === e.vertices[e.vertices.length - 1])
+    .map((e) => e.id);
+  return {
+    fabric: job.fabric,
+    prestress: job.prestress,
+    panels: job.panels,
+    compensation: job.compensation,
+    decompensation: job.decompensation,
+    rings,
+  };
+}
+
+/** The roof round the panels; `flat` are those whose seams are faired alike. */
+export function buildPanelPlace(
+  flat: readonly FlatPanel[],
+  roof: { seams: StripLayout["seams"]; form: FoundForm; job: Job },
+): PanelPlace {
+  const cutBack = new Map(roof.job.anchors.map((a) => [a.name, a.cutBack ?? 0]));
+  return {
+    keep: keepSeamPoints(flat),
+    seams: roof.seams,
+    anchors: roof.form.anchors.map((a) => ({ id: a.id, vertex: a.vertex, cutBack: cutBack.get(a.id) ?? 0 })),
+  };
+}
 
 /**
  * Panels ready to be cut, in the order of the strips.
@@ -21,26 +50,11 @@ export function runPanels(
   job: Job,
   context: StationContext,
 ): StationResult<CutPanel[]> {
-  const rings = form.edges
-    .filter((e) => e.kind === "clamped" && e.vertices[0] === e.vertices[e.vertices.length - 1])
-    .map((e) => e.id);
-  const options = {
-    fabric: job.fabric,
-    prestress: job.prestress,
-    panels: job.panels,
-    compensation: job.compensation,
-    decompensation: job.decompensation,
-    rings,
-  };
+  const options = buildFlattenOptions(form, job);
   const flat = flattenPanels(layout, options, context);
   const findings: Finding[] = [...flat.findings];
   const checks: Check[] = [...flat.checks];
-  const cutBack = new Map(job.anchors.map((a) => [a.name, a.cutBack ?? 0]));
-  const place: PanelPlace = {
-    keep: keepSeamPoints(flat.output),
-    seams: layout.seams,
-    anchors: form.anchors.map((a) => ({ id: a.id, vertex: a.vertex, cutBack: cutBack.get(a.id) ?? 0 })),
-  };
+  const place = buildPanelPlace(flat.output, { seams: layout.seams, form, job });
   const output = flat.output.map((panel) => {
     const outlined = outlinePanel(panel, place, job.allowances);
     findings.push(...outlined.findings);

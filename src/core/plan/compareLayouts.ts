@@ -94,9 +94,10 @@ export function compareLayouts(
       onProgress: (share, words) => context.onProgress?.((i + share) / asks.length, words),
     };
     try {
-      const seams = runSeams(form, other, firstOptions(measureRoom(other), other.allowances.seam / 1000), part);
+      const options = firstOptions(measureRoom(other), other.allowances.seam / 1000);
+      const seams = runSeams(form, other, options, part);
       const panels = runPanels(seams.output, form, other, part);
-      return { asked, rows: measureRows({ seams, panels }), refused: null };
+      return { asked, rows: measureRows({ seams, panels, options }), refused: null };
     } catch (error) {
       if (!(error instanceof PlanError) || error.code === "cancelled") throw error;
       return { asked, rows: [], refused: error.message };

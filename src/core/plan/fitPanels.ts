@@ -155,8 +155,9 @@ export function fitPanels(form: FoundForm, job: Job, context: FitContext): Fitte
     context.onStation("panels");
     const panels = runPanels(seams.output, form, job, context.panels);
     if (weighed.length === 0) weighed = seams.output.compared ?? [];
-    measured.push(...measureRows({ seams, panels }));
-    return { seams, panels };
+    const fitted = { seams, panels, options };
+    measured.push(...measureRows(fitted));
+    return fitted;
   };
   const fitted = fitAll(runBoth, job);
   const compared = joinRows(measureRows(fitted), measured, weighed);

@@ -8,6 +8,8 @@ import type { SeamOptions } from "../seams/runSeams.ts";
 export interface Fitted {
   seams: StationResult<StripLayout>;
   panels: StationResult<CutPanel[]>;
+  /** What the seams station was asked. */
+  options: SeamOptions;
 }
 
 /** Runs both stations once. */

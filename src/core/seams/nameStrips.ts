@@ -17,6 +17,8 @@ export interface NamedStrips {
   seams: Seam[];
   /** Ids of the strips of each region, in order. */
   byRegion: string[][];
+  /** Id of the weld of each group of seam paths (SeamPath.weld). */
+  weldOf: ReadonlyMap<string, string>;
   findings: Finding[];
 }
 
@@ -165,5 +167,5 @@ export function nameStrips(form: FoundForm, job: Job, plans: readonly RegionPlan
     return { id: stripId(s), triangles: cut.strips[s].triangles, sides: named, from: ends[s].from, to: ends[s].to };
   });
   const byRegion = plans.map((_, r) => order.filter((s) => cut.strips[s].region === r).map(stripId));
-  return { strips, seams, byRegion, findings: noteLevel(level) };
+  return { strips, seams, byRegion, weldOf, findings: noteLevel(level) };
 }

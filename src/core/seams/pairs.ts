@@ -32,7 +32,7 @@ export function findEdge(form: FoundForm, id: string, where: string): FormEdge {
 }
 
 /** The place on the form's surface at share `at` of an edge's arc length. */
-function placeOnEdge(form: FoundForm, edge: FormEdge, at: number): SurfacePoint {
+export function placeOnEdge(form: FoundForm, edge: FormEdge, at: number): SurfacePoint {
   const length: number[] = [0];
   for (let i = 1; i < edge.vertices.length; i++)
     length.push(

@@ -5,7 +5,7 @@ import { type Check, type Finding, PlanError, type StationContext, type StationR
 import type { FoundForm } from "../records/foundForm.ts";
 import type { Job } from "../records/job.ts";
 import type { LayoutChoice, LayoutEstimate, StripEstimate, StripLayout } from "../records/stripLayout.ts";
-import { buildAdjacency } from "../surface/adjacency.ts";
+import { type Adjacency, buildAdjacency } from "../surface/adjacency.ts";
 import type { SurfacePoint } from "../surface/surface.ts";
 import type { Candidate } from "./candidate.ts";
 import { type Chain, findOnChain } from "./chain.ts";
@@ -202,19 +202,23 @@ function layoutPairs(form: FoundForm, job: Job, options: SeamOptions, regions: r
   return { paths, plans, findings };
 }
 
-/**
- * Lays seams over a form and cuts it into strips.
- * @units m
- * @throws PlanError seam-edge-name, seam-cable-path, seam-open-boundary, seam-closed-surface, seam-holes, seam-none, seam-panel-ring,
- *   seam-panel-count, seam-panel-self, seam-sides, seam-width, cancelled
- * @source own; geodesics and cutting as in surface/geodesic.ts and surface/cut.ts
- */
-export function runSeams(
-  found: FoundForm,
-  job: Job,
-  options: SeamOptions,
-  context: StationContext = {},
-): StationResult<StripLayout> {
+/** Seams laid, nothing cut. */
+export interface LaidSeams {
+  /** The form, or its working copy with openings opened. */
+  form: FoundForm;
+  adjacency: Adjacency;
+  regions: Region[];
+  labels: Map<number, number>;
+  /** None for seams given one by one. */
+  layouts: RegionLayout[];
+  crosses: CrossPlan[];
+  plans: RegionPlan[];
+  paths: SeamPath[];
+  findings: Finding[];
+}
+
+/** The first half of runSeams: where all seams run. @throws PlanError as runSeams */
+export function laySeams(found: FoundForm, job: Job, options: SeamOptions, context: StationContext): LaidSeams {
   if (!(options.usableWidth > 0))
     throw new PlanError(
       "seam-width",
@@ -241,6 +245,24 @@ export function runSeams(
     }));
   const paths = given?.paths ?? layouts.flatMap((layout, r) => listPaths(layout, crosses[r], r));
   findings.push(...noteSeamEnds(regions, paths, given !== null));
+  return { form, adjacency, regions, labels, layouts, crosses, plans, paths, findings };
+}
+
+/**
+ * Lays seams over a form and cuts it into strips.
+ * @units m
+ * @throws PlanError seam-edge-name, seam-cable-path, seam-open-boundary, seam-closed-surface, seam-holes, seam-none, seam-panel-ring,
+ *   seam-panel-count, seam-panel-self, seam-sides, seam-width, cancelled
+ * @source own; geodesics and cutting as in surface/geodesic.ts and surface/cut.ts
+ */
+export function runSeams(
+  found: FoundForm,
+  job: Job,
+  options: SeamOptions,
+  context: StationContext = {},
+): StationResult<StripLayout> {
+  const laid = laySeams(found, job, options, context);
+  const { form, adjacency, regions, labels, layouts, crosses, plans, paths, findings } = laid;
   context.onProgress?.(regions.length / (regions.length + 1), "cutting");
   const cut = cutStrips(form, adjacency, labels, plans, paths);
   const named = nameStrips(form, job, plans, cut);
