@@ -6,12 +6,13 @@ import type { NestDecision } from "../records/job.ts";
 import type { NestedRoll, NestPiece, Placement, StockRoll } from "../records/roll.ts";
 import { type Bed, type BedSize, bedReach, type LaidShape } from "./bed.ts";
 import { checkComplete, checkRoll } from "./checkRolls.ts";
-import { layPieces, type NestTask } from "./layPieces.ts";
+import { type Layout, layPieces, type NestTask } from "./layPieces.ts";
 import { layPins } from "./layPins.ts";
 import { boundLength } from "./lowerBound.ts";
 import { buildShape, clothArea, placementOf } from "./nestShape.ts";
 import { type OfferedRoll, offerRolls } from "./offerRolls.ts";
 import { searchOrders } from "./searchOrders.ts";
+import { shortenLayout } from "./shortenLayout.ts";
 import { sortPieces, stopFinding, suits, usableWidth } from "./sortPieces.ts";
 
 /** Columns across which the raster resolves the roll's width, and the mean piece's length at least. */
@@ -117,6 +118,15 @@ function shortage(left: number[], pieces: NestPiece[], task: NestTask, stock: St
   });
 }
 
+/** Cloth and density of a layout, in words. */
+function wordsOf(layout: Layout): string {
+  const filled = layout.beds.filter((b) => b.laid.length > 0);
+  const metres = filled.reduce((sum, b) => sum + bedReach(b), 0) / 1000;
+  const cloth = filled.reduce((sum, b) => sum + bedReach(b) * b.width, 0);
+  const area = filled.flatMap((b) => b.laid).reduce((sum, p) => sum + clothArea(p.shape.ring), 0);
+  return `${metres.toFixed(2)} m, ${((100 * area) / cloth).toFixed(1)} % of the usable cloth`;
+}
+
 /** Ids of copies run on without a hole where no pin names one. */
 function closeNumbering(rolls: NestedRoll[], offers: OfferedRoll[], pinned: boolean): NestedRoll[] {
   if (pinned) return rolls;
@@ -151,23 +161,25 @@ export function runRolls(
     return told;
   };
   const task = { ...buildTask(fit, offers, pins, options), stop };
-  const found = searchOrders(task, {
-    steps: options.steps,
-    seed: options.seed,
-    ...(context.onProgress ? { onProgress: context.onProgress } : {}),
-  });
+  const { steps, seed } = options;
+  let done = 0;
+  const tell = (count: number, layout: Layout | null) => {
+    done = count;
+    context.onProgress?.(count / (2 * steps), `nest ${count} of ${2 * steps}${layout ? `: ${wordsOf(layout)}` : ""}`);
+  };
+  const found = searchOrders(task, { steps, seed, onStep: tell });
   if (!found) throw new PlanError("cancelled", "Nesting was stopped before the first layout was built.", "rolls");
+  const best = shortenLayout(found.layout, task, { steps, seed, onStep: (k, layout) => tell(steps + k, layout) });
+  if (!told) tell(2 * steps, best);
   if (told)
     findings.push({
-      ...stopFinding("nest-cut-short", "nest", found.steps, options.steps, {
-        text: `Nesting was stopped after ${found.steps} of ${options.steps} layouts: this is the best of them.`,
+      ...stopFinding("nest-cut-short", "nest", done, 2 * steps, {
+        text: `Nesting was stopped after ${done} of ${2 * steps} layouts tried: this is the best of them.`,
         remedy: "Run again without the cap for the layout the steps alone would give.",
       }),
       level: "note",
     });
-  const filled = found.layout.beds
-    .map((bed, i) => ({ bed, roll: offers[i].roll }))
-    .filter(({ bed }) => bed.laid.length > 0);
+  const filled = best.beds.map((bed, i) => ({ bed, roll: offers[i].roll })).filter(({ bed }) => bed.laid.length > 0);
   const rolls = filled.map(({ bed, roll }) => ({ ...recordRoll(bed, roll, fit), bite: options.bite }));
   const byId = new Map(fit.map((p) => [p.id, p]));
   const output = closeNumbering(rolls, offers, options.pins.length > 0);
@@ -176,7 +188,7 @@ export function runRolls(
     checks.push(...verdict.checks);
     findings.push(...verdict.findings);
   });
-  findings.push(...shortage(found.layout.left, fit, task, stock));
+  findings.push(...shortage(best.left, fit, task, stock));
   checks.push(checkComplete(output, pieces));
   return { output, findings, checks };
 }

@@ -15,7 +15,7 @@ export interface SearchLimits {
   /** Layouts built. */
   steps: number;
   seed: number;
-  onProgress?: (share: number, words: string) => void;
+  onStep?: (done: number, best: Layout | null) => void;
 }
 
 const RULES: TurnRule[] = ["least x", "least end", "least y"];
@@ -93,7 +93,7 @@ export function searchOrders(task: NestTask, limits: SearchLimits): { layout: La
       if (layout && toBeat && !isLess(toBeat, layout.cost)) now = { cost: layout.cost, genome };
       memory[slot] = now.cost;
     }
-    limits.onProgress?.((steps + 1) / limits.steps, `nest ${steps + 1} of ${limits.steps}`);
+    limits.onStep?.(steps + 1, best);
   }
   if (!best) return null;
   compactInPlace(best, task.areas, 12);

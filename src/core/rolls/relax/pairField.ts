@@ -1,0 +1,230 @@
+// How deep two shapes overlap at a given shift: zero means apart by the gap, exactly; else the least push that parts the worst
+// pair of their convex parts, or how far free cloth lies where that is more. Tabled by cells, so that a look-up costs a few
+// half-planes whatever the shapes. Does not: search. Source: Minkowski sums of convex parts by support values (textbook);
+// own table: a signed distance changes no faster than its place, so far half-planes cannot matter inside a cell.
+import type { PlaneRing } from "../../surface/ring.ts";
+
+/** Between neighbouring half-planes of a sum grown by a gap, so that round corners cost little, radians. */
+const FAN = Math.PI / 12;
+/** Directions closer than this are one, radians. */
+const ONE = 1e-9;
+
+/** The shifts at which one shape overlaps another. */
+export interface PairField {
+  /** Cells along each axis. */
+  cells: number;
+  x0: number;
+  x1: number;
+  y0: number;
+  y1: number;
+  /** Cells in a unit of length. */
+  perX: number;
+  perY: number;
+  /** First entry of each cell in `list`. */
+  start: Int32Array<ArrayBuffer>;
+  /** A cell's sums: how many half-planes each, then their places in `planes`. */
+  list: Int32Array<ArrayBuffer>;
+  /** Normal and offset of each half-plane. */
+  planes: Float64Array<ArrayBuffer>;
+  /** Distance to free cloth at the cells' corners; empty where one sum says it all. */
+  deep: Float64Array<ArrayBuffer>;
+  /** Half-plane that was nearest at the last look-up, −1 where the shapes were apart. */
+  nearest: number;
+}
+
+function support(ring: PlaneRing, nx: number, ny: number): number {
+  let best = -Infinity;
+  for (let i = 0; i < ring.length; i += 2) {
+    const v = nx * ring[i] + ny * ring[i + 1];
+    if (v > best) best = v;
+  }
+  return best;
+}
+
+/** Directions of the outward normals of two convex rings, the first turned about; filled up where a gap rounds the corners. */
+function normalsOf(a: PlaneRing, b: PlaneRing, gap: number): number[] {
+  const angles: number[] = [];
+  const add = (ring: PlaneRing, sign: number) => {
+    for (let i = 0, j = ring.length - 2; i < ring.length; j = i, i += 2)
+      angles.push(Math.atan2(sign * (ring[j] - ring[i]), sign * (ring[i + 1] - ring[j + 1])));
+  };
+  add(a, -1);
+  add(b, 1);
+  angles.sort((p, q) => p - q);
+  const kept = angles.filter((v, i) => i === 0 || v - angles[i - 1] > ONE);
+  if (gap <= 0) return kept;
+  const full: number[] = [];
+  kept.forEach((v, i) => {
+    const next = i + 1 < kept.length ? kept[i + 1] : kept[0] + 2 * Math.PI;
+    const steps = Math.max(1, Math.ceil((next - v) / FAN));
+    for (let k = 0; k < steps; k++) full.push(v + ((next - v) * k) / steps);
+  });
+  return full;
+}
+
+interface Sums {
+  planes: number[];
+  /** First half-plane of each sum. */
+  first: number[];
+  box: [number, number, number, number];
+}
+
+function buildSums(a: PlaneRing[], b: PlaneRing[], gap: number): Sums {
+  const sums: Sums = { planes: [], first: [0], box: [Infinity, -Infinity, Infinity, -Infinity] };
+  for (const p of a)
+    for (const q of b) {
+      const reach = (nx: number, ny: number) => support(p, -nx, -ny) + support(q, nx, ny) + gap;
+      for (const angle of normalsOf(p, q, gap)) {
+        const [nx, ny] = [Math.cos(angle), Math.sin(angle)];
+        sums.planes.push(nx, ny, reach(nx, ny));
+      }
+      sums.first.push(sums.planes.length / 3);
+      const { box } = sums;
+      sums.box = [
+        Math.min(box[0], -reach(-1, 0)),
+        Math.max(box[1], reach(1, 0)),
+        Math.min(box[2], -reach(0, -1)),
+        Math.max(box[3], reach(0, 1)),
+      ];
+    }
+  return sums;
+}
+
+/** Signed distances of a place to the half-planes and, the greatest of each, to the sums: negative inside. */
+function measureAt(sums: Sums, x: number, y: number, each: Float64Array, most: Float64Array): void {
+  const { planes, first } = sums;
+  for (let s = 0; s + 1 < first.length; s++) {
+    let worst = -Infinity;
+    for (let e = first[s]; e < first[s + 1]; e++) {
+      const v = planes[3 * e] * x + planes[3 * e + 1] * y - planes[3 * e + 2];
+      each[e] = v;
+      if (v > worst) worst = v;
+    }
+    most[s] = worst;
+  }
+}
+
+/** Distance from each covered corner of the cells to free cloth, by steps between corners (chamfer, G. Borgefors, 1986). */
+function deepCorners(sums: Sums, n: number, stepX: number, stepY: number): Float64Array<ArrayBuffer> {
+  // One row and column of free corners round about.
+  const m = n + 3;
+  const each = new Float64Array(sums.planes.length / 3);
+  const most = new Float64Array(sums.first.length - 1);
+  const far = new Float64Array(m * m);
+  for (let j = 1; j < n; j++)
+    for (let i = 1; i < n; i++) {
+      measureAt(sums, sums.box[0] + i * stepX, sums.box[2] + j * stepY, each, most);
+      let least = Infinity;
+      for (const v of most) if (v < least) least = v;
+      if (least < 0) far[(j + 1) * m + i + 1] = Infinity;
+    }
+  const slant = Math.hypot(stepX, stepY);
+  const sweep = (sign: number) => {
+    for (let q = m + 1; q < m * m - m - 1; q++) {
+      const k = sign > 0 ? q : m * m - 1 - q;
+      const near = Math.min(far[k - sign * m - 1], far[k - sign * m + 1]) + slant;
+      far[k] = Math.min(far[k], far[k - sign] + stepX, far[k - sign * m] + stepY, near);
+    }
+  };
+  sweep(1);
+  sweep(-1);
+  const deep = new Float64Array((n + 1) ** 2);
+  // The nearest free place lies up to a cell nearer than the nearest free corner.
+  for (let j = 0; j <= n; j++)
+    for (let i = 0; i <= n; i++) deep[j * (n + 1) + i] = Math.max(0, far[(j + 1) * m + i + 1] - slant);
+  return deep;
+}
+
+/** Whether free cloth lies cells away all round: there it and the one deepest sum say enough. */
+function isDeep(deep: Float64Array, n: number, cell: number): boolean {
+  if (deep.length === 0) return false;
+  const o = Math.floor(cell / n) * (n + 1) + (cell % n);
+  return Math.min(deep[o], deep[o + 1], deep[o + n + 1], deep[o + n + 2]) > 0;
+}
+
+/** The field of shape a against shape b, from their convex parts. @param mostCells cells along an axis at most */
+export function buildPairField(a: PlaneRing[], b: PlaneRing[], gap: number, mostCells: number): PairField {
+  const sums = buildSums(a, b, gap);
+  const nE = sums.planes.length / 3;
+  const n = Math.max(6, Math.min(mostCells, Math.ceil(2 * Math.sqrt(nE))));
+  const [x0, x1, y0, y1] = sums.box;
+  const stepX = (x1 - x0) / n;
+  const stepY = (y1 - y0) / n;
+  // Corners of a cell lie this far from its middle; a hair more for rounding.
+  const r = (Math.hypot(stepX, stepY) / 2) * (1 + 1e-9);
+  const each = new Float64Array(nE);
+  const most = new Float64Array(sums.first.length - 1);
+  const start = new Int32Array(n * n + 1);
+  const list: number[] = [];
+  const deep = most.length > 1 ? deepCorners(sums, n, stepX, stepY) : new Float64Array(0);
+  for (let cell = 0; cell < n * n; cell++) {
+    measureAt(sums, x0 + ((cell % n) + 0.5) * stepX, y0 + (Math.floor(cell / n) + 0.5) * stepY, each, most);
+    let least = Infinity;
+    for (const v of most) if (v < least) least = v;
+    const reach = isDeep(deep, n, cell) ? 0 : 2 * r;
+    for (let s = 0; s < most.length; s++) {
+      if (most[s] >= r || most[s] > least + reach) continue;
+      const at = list.push(0) - 1;
+      for (let e = sums.first[s]; e < sums.first[s + 1]; e++) if (each[e] + r >= most[s] - r) list.push(3 * e);
+      list[at] = list.length - at - 1;
+    }
+    start[cell + 1] = list.length;
+  }
+  return {
+    cells: n,
+    x0,
+    x1,
+    y0,
+    y1,
+    perX: n / (x1 - x0),
+    perY: n / (y1 - y0),
+    start,
+    list: Int32Array.from(list),
+    planes: Float64Array.from(sums.planes),
+    deep,
+    nearest: -1,
+  };
+}
+
+/** Depth of overlap at a shift of the first shape against the second. */
+export function fieldDepth(f: PairField, dx: number, dy: number): number {
+  f.nearest = -1;
+  if (dx <= f.x0 || dx >= f.x1 || dy <= f.y0 || dy >= f.y1) return 0;
+  const n = f.cells;
+  const u = (dx - f.x0) * f.perX;
+  const v = (dy - f.y0) * f.perY;
+  let i = u | 0;
+  let j = v | 0;
+  if (i >= n) i = n - 1;
+  if (j >= n) j = n - 1;
+  const { list, planes, start } = f;
+  let deepest = 0;
+  for (let k = start[j * n + i], end = start[j * n + i + 1]; k < end; ) {
+    const last = k + list[k];
+    let most = -Infinity;
+    let at = -1;
+    for (k++; k <= last; k++) {
+      const e = list[k];
+      const d = planes[e] * dx + planes[e + 1] * dy - planes[e + 2];
+      if (d > most) {
+        most = d;
+        at = e;
+        if (d >= 0) break;
+      }
+    }
+    k = last + 1;
+    if (-most > deepest) {
+      deepest = -most;
+      f.nearest = at;
+    }
+  }
+  if (deepest === 0 || f.deep.length === 0) return deepest;
+  const s = u - i;
+  const t = v - j;
+  const o = j * (n + 1) + i;
+  const g = f.deep;
+  const low = g[o] + s * (g[o + 1] - g[o]);
+  const high = g[o + n + 1] + s * (g[o + n + 2] - g[o + n + 1]);
+  const deep = low + t * (high - low);
+  return Math.max(deep, deepest);
+}

@@ -1,0 +1,122 @@
+// One filled roll made shorter by the relaxed search, in shares that may run side by side. What it finds is slid together
+// exactly and taken only where it needs less cloth. Same seed and steps: same layout, whoever works the shares.
+import { type Bed, bedReach, type LaidShape, layInPlace, openBed } from "../bed.ts";
+import { compactInPlace, type NestTask } from "../layPieces.ts";
+import { boundLength } from "../lowerBound.ts";
+import type { NestShape } from "../nestShape.ts";
+import type { StripState, StripTask } from "./strip.ts";
+import { buildStripShape } from "./stripShapes.ts";
+import { type ShareOrder, workShare } from "./workShare.ts";
+
+/** Works orders side by side; null for one that was lost. */
+export type WorkShares = (orders: ShareOrder[], stop: () => boolean) => (StripState | null)[];
+
+/** Shares of each round, whatever the number of threads, so that the layout does not depend on it. */
+const SHARES = 2;
+/** After each round the shares go on from the best of them: at most so many, of so many steps a piece at least. */
+const ROUNDS = 8;
+const ROUND_LEAST = 4;
+/** The overlap in all that counts as none, as a share of the least piece's size. */
+const NONE = 1e-7;
+const NEAR = 1.001;
+
+interface Framed {
+  task: StripTask;
+  from: StripState;
+  laid: LaidShape[];
+  shapes: NestShape[];
+}
+
+/** The bed as a strip: what may move first, pins and flaws after it. */
+function frameBed(bed: Bed, nest: NestTask): Framed {
+  const shapes: NestShape[] = [];
+  const known = new Map<string, number>();
+  const place = (shape: NestShape) => {
+    const at = known.get(shape.key) ?? shapes.push(shape) - 1;
+    known.set(shape.key, at);
+    return at;
+  };
+  const kinds = new Map<string, number[]>();
+  const choicesOf = (p: LaidShape) => {
+    const key = nest.shapes[p.piece][0].key;
+    const own = kinds.get(key) ?? nest.shapes[p.piece].filter((s) => s.height <= bed.width).map(place);
+    kinds.set(key, own);
+    return own;
+  };
+  const loose = bed.laid.filter((p) => !p.pinned);
+  const held = [...bed.laid.filter((p) => p.pinned), ...bed.flawShapes];
+  const laid = [...loose, ...held];
+  // A flaw's key says nothing of its size.
+  const shapeOf = laid.map((p) => (p.piece < 0 ? shapes.push(p.shape) - 1 : place(p.shape)));
+  const choices = laid.map((p, i) => (p.pinned ? [shapeOf[i]] : choicesOf(p)));
+  const built = shapes.map(buildStripShape);
+  const areas = loose.map((p) => nest.areas[p.piece]);
+  const slack = Math.max(...built.map((s) => s.slack + s.over));
+  return {
+    laid,
+    shapes,
+    task: {
+      shapes: built,
+      choices,
+      movable: loose.length,
+      width: bed.width,
+      start: bed.start,
+      gap: bed.gap,
+      reach: bed.gap + 2 * slack,
+      size: Math.sqrt(areas.reduce((sum, a) => sum + a, 0) / areas.length),
+      none: NONE * Math.sqrt(Math.min(...areas)),
+    },
+    from: {
+      length: bedReach(bed),
+      x: Float64Array.from(laid, (p) => p.x),
+      y: Float64Array.from(laid, (p) => p.y),
+      shape: Int32Array.from(shapeOf),
+    },
+  };
+}
+
+/** A bed laid as a state has it, slid together. */
+function bedFrom(bed: Bed, framed: Framed, state: StripState, areas: number[]): Bed {
+  const fresh = openBed(bed);
+  framed.laid.forEach((p, i) => {
+    if (p.piece < 0) return;
+    layInPlace(fresh, { ...p, shape: framed.shapes[state.shape[i]], x: state.x[i], y: state.y[i] });
+  });
+  compactInPlace({ beds: [fresh], left: [], cost: { left: 0, cloth: 0, reach: 0 } }, areas, 12);
+  return fresh;
+}
+
+/**
+ * The bed made shorter, or the bed itself where no shorter layout was found.
+ * @param limits steps in all, shared out
+ */
+export function relaxBed(
+  bed: Bed,
+  nest: NestTask,
+  limits: { steps: number; seed: number; onStep: (done: number) => void },
+  work: WorkShares = (orders, stop) => orders.map((o) => workShare(o, stop)),
+): Bed {
+  const loose = bed.laid.filter((p) => !p.pinned).length;
+  const rings = bed.laid.map((p) => p.shape.ring);
+  // No layout is shorter than its bound or its pins; one that meets it to a thousandth is good enough.
+  const bound = NEAR * boundLength(rings, bed.width, bed.gap, bed.start);
+  const fixed = Math.max(bound, ...bed.laid.filter((p) => p.pinned).map((p) => p.x + p.shape.length));
+  if (loose === 0 || limits.steps < 1 || fixed >= bedReach(bed)) return bed;
+  const framed = frameBed(bed, nest);
+  // Few steps are not worth sharing.
+  const shares = limits.steps >= SHARES * ROUND_LEAST * loose ? SHARES : 1;
+  const each = Math.ceil(limits.steps / shares);
+  const rounds = Math.max(1, Math.min(ROUNDS, Math.floor(each / (ROUND_LEAST * loose))));
+  let best = framed.from;
+  for (let round = 0; round < rounds && !nest.stop(); round++) {
+    const done = Math.floor((each * round) / rounds);
+    const steps = Math.floor((each * (round + 1)) / rounds) - done;
+    const order = { kind: "shorten strip" as const, task: framed.task, from: best, fixed, done, steps, of: each };
+    const orders = Array.from({ length: shares }, (_, k) => ({ ...order, seed: limits.seed + k }));
+    for (const state of work(orders, nest.stop)) if (state && state.length < best.length) best = state;
+    limits.onStep(shares * (done + steps));
+  }
+  if (best === framed.from) return bed;
+  const shorter = bedFrom(bed, framed, best, nest.areas);
+  return bedReach(shorter) < bedReach(bed) ? shorter : bed;
+}
