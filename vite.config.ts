@@ -10,7 +10,7 @@ export default defineConfig({
     sourcemap: true,
     minify: false,
     rollupOptions: {
-      input: { seamstay: "src/cli/seamstay.ts", bench: "test/bench/bench.ts" },
+      input: { seamstay: "src/cli/seamstay.ts", bench: "test/bench/bench.ts", packWorker: "test/bench/packWorker.ts" },
       output: { entryFileNames: "[name].js", chunkFileNames: "chunks/[name].js" },
     },
   },

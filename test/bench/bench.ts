@@ -18,11 +18,12 @@ const CASES: Record<string, { call: string; least: number; run: (args: string[])
   pack: {
     call: "pack INSTANCE.json SECONDS SEED OUT.json",
     least: 4,
-    run: ([instance, seconds, seed, out]) => {
+    run: async ([instance, seconds, seed, out]) => {
       const read: PackInstance = JSON.parse(readFileSync(instance, "utf8"));
       const span = Number(seconds);
       if (!(span > 0)) throw new UsageError(`SECONDS ${seconds} is not above 0`);
-      const { result, ...figures } = benchPack(read, span, readCount(seed, "SEED", 0), () => performance.now());
+      const file = new URL("./packWorker.js", import.meta.url);
+      const { result, ...figures } = await benchPack(read, span, readCount(seed, "SEED", 0), file);
       writeFileSync(out, `${JSON.stringify(result)}\n`);
       return { name: read.name, ...figures };
     },
@@ -77,7 +78,7 @@ function benchPlan(path: string): { stations: Partial<Record<Station, number>>; 
   return { stations, totalMs: performance.now() - begin };
 }
 
-function runBench([name, ...args]: string[]): number {
+async function runBench([name, ...args]: string[]): Promise<number> {
   const found = name === undefined ? undefined : CASES[name];
   if (found === undefined || args.length !== found.least) {
     const calls = Object.values(CASES).map((c) => `  bench ${c.call}`);
@@ -87,7 +88,7 @@ function runBench([name, ...args]: string[]): number {
     return 2;
   }
   try {
-    process.stdout.write(`${JSON.stringify(found.run(args))}\n`);
+    process.stdout.write(`${JSON.stringify(await found.run(args))}\n`);
     return 0;
   } catch (error) {
     process.stderr.write(`bench ${name}: ${error instanceof Error ? error.message : String(error)}\n`);
@@ -95,4 +96,4 @@ function runBench([name, ...args]: string[]): number {
   }
 }
 
-process.exitCode = runBench(process.argv.slice(2));
+process.exitCode = await runBench(process.argv.slice(2));

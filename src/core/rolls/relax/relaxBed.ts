@@ -4,6 +4,7 @@ import { type Bed, bedReach, type LaidShape, layInPlace, openBed } from "../bed.
 import { compactInPlace, type NestTask } from "../layPieces.ts";
 import { boundLength } from "../lowerBound.ts";
 import type { NestShape } from "../nestShape.ts";
+import { openSearch, type StripSearch } from "./shortenStrip.ts";
 import type { StripState, StripTask } from "./strip.ts";
 import { buildStripShape } from "./stripShapes.ts";
 import { type ShareOrder, workShare } from "./workShare.ts";
@@ -20,7 +21,8 @@ const ROUND_LEAST = 4;
 const NONE = 1e-7;
 const NEAR = 1.001;
 
-interface Framed {
+/** A bed seen as a strip. */
+export interface Framed {
   task: StripTask;
   from: StripState;
   laid: LaidShape[];
@@ -84,6 +86,13 @@ function bedFrom(bed: Bed, framed: Framed, state: StripState, areas: number[]): 
   });
   compactInPlace({ beds: [fresh], left: [], cost: { left: 0, cloth: 0, reach: 0 } }, areas, 12);
   return fresh;
+}
+
+/** A search on one bed that the caller drives by a clock of its own, and the way back to a bed. */
+export function openSearchOf(bed: Bed, nest: NestTask, seed: number, fixed: number) {
+  const framed = frameBed(bed, nest);
+  const search: StripSearch = openSearch(framed.task, framed.from, seed, fixed);
+  return { search, framed, bedOf: (from: Framed, state: StripState) => bedFrom(bed, from, state, nest.areas) };
 }
 
 /**
