@@ -131,6 +131,8 @@ describe("keeping", { timeout: PATIENCE }, () => {
     await page.getByLabel("Choose files").setInputFiles([mesh]);
     await planned(page);
     await page.getByRole("button", { name: /open the list of jobs/ }).click();
+    // the list is read from the store, so it may come a moment after the desk
+    await page.getByRole("button", { name: "Ticket booth", exact: true }).waitFor({ timeout: PATIENCE });
     expect(await page.getByRole("button", { name: "Ticket booth", exact: true }).count()).toBe(1);
     await context.close();
   });
