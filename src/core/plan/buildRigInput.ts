@@ -206,7 +206,12 @@ export function buildRigInput(
   const survey: Record<string, Vec3> = Object.create(null);
   for (const s of job.survey) survey[s.anchor] = s.at;
   const cables: RigInput["cables"] = Object.create(null);
-  for (const edge of form.edges) if (edge.force !== null) cables[edge.id] = settleCable(edge, job, notes);
+  for (const edge of form.edges) {
+    if (edge.force === null) continue;
+    cables[edge.id] = settleCable(edge, job, notes);
+    // a force taken from a usual sag is nobody's word: no schedule is issued on it
+    if (edge.forceFrom === "sag") notes.defaults.push(`edges.${edge.id}.force`);
+  }
   const adjusters = settleAdjusters(form, job, supports, taken, notes);
   const struts = job.rig.struts.map((s) => ({ ...s, EA: s.EA ?? strutEA }));
   for (const s of job.rig.struts)
