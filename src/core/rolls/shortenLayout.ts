@@ -15,10 +15,10 @@ export interface ShortenLimits {
 /** Rounds of sliding after a piece was moved to another roll. */
 const ROUNDS = 6;
 
-/** The bed without one of its pieces. */
-function bedWithout(bed: Bed, out: LaidShape): Bed {
+/** The bed without one of its pieces; told by its number, since beds hold copies. */
+function bedWithout(bed: Bed, piece: number): Bed {
   const fresh = openBed(bed);
-  for (const p of bed.laid) if (p !== out) layInPlace(fresh, { ...p });
+  for (const p of bed.laid) if (p.piece !== piece) layInPlace(fresh, { ...p });
   return fresh;
 }
 
@@ -49,7 +49,7 @@ function movePieces(layout: Layout, task: NestTask): Layout {
         if (to === from || p.pinned || !task.offers[to].takes(p.piece) || best.beds[to].laid.length === 0) continue;
         const into = bedWith(best.beds[to], p.piece, task);
         if (!into) continue;
-        const beds = best.beds.map((b, i) => (i === to ? into : i === from ? bedWithout(b, p) : b));
+        const beds = best.beds.map((b, i) => (i === to ? into : i === from ? bedWithout(b, p.piece) : b));
         const trial: Layout = { beds, left: best.left, cost: measureLayout(beds, best.left, task.areas) };
         if (!isLess(trial.cost, best.cost)) continue;
         best = trial;
