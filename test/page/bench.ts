@@ -118,3 +118,12 @@ export async function enter(page: Page, label: string | RegExp, text: string): P
   await field.fill(text);
   await field.press("Enter");
 }
+
+/** Waits until the focus is in the place of a decision; it goes there after the leaf is drawn. */
+export async function focused(page: Page, path: string): Promise<void> {
+  await page.waitForFunction(
+    (wanted) => document.activeElement?.closest("[data-path]")?.getAttribute("data-path") === wanted,
+    path,
+    { timeout: PATIENCE },
+  );
+}

@@ -1,6 +1,6 @@
 // Every leaf: a decision is changed and its effect seen. One job, walked as a person walks it.
 import { afterAll, beforeAll, describe, expect, it } from "vitest";
-import { type Bench, type Desk, enter, PATIENCE, planned, plannedAnew, setUp, turnTo } from "./bench.ts";
+import { type Bench, type Desk, enter, focused, PATIENCE, planned, plannedAnew, setUp, turnTo } from "./bench.ts";
 import { smallFiles } from "./smallForm.ts";
 
 let bench: Bench;
@@ -160,9 +160,7 @@ describe("leaves", { timeout: PATIENCE }, () => {
     const fault = page.getByRole("alert");
     await fault.getByText(/rolls\[0\]\.width: 20000 mm is above the most allowed/).waitFor();
     await fault.getByRole("button", { name: "Show me" }).click();
-    expect(await page.evaluate(() => document.activeElement?.closest("[data-path]")?.getAttribute("data-path"))).toBe(
-      "rolls[0].width",
-    );
+    await focused(page, "rolls[0].width");
     await fault.getByRole("button", { name: "Undo" }).click();
     await planned(page);
   });
@@ -173,9 +171,7 @@ describe("leaves", { timeout: PATIENCE }, () => {
     await page.getByRole("button", { name: /notes?$/ }).click();
     await page.getByRole("dialog", { name: "Findings" }).getByRole("button", { name: "papers.sheet" }).click();
     await page.getByRole("heading", { name: "What leaves the office?" }).waitFor();
-    expect(await page.evaluate(() => document.activeElement?.closest("[data-path]")?.getAttribute("data-path"))).toBe(
-      "papers.sheet",
-    );
+    await focused(page, "papers.sheet");
   });
 
   it("nothing went wrong on the way", () => {
