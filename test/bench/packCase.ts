@@ -101,7 +101,7 @@ export function workPackShare(share: PackShare, port: MessagePort): { result: Pa
     tryShorter(search, part, ended);
     for (let m = receiveMessageOnPort(port); m; m = receiveMessageOnPort(port)) {
       const other = m.message as StripState;
-      if (part > SETTINGS.explore || other.length < search.best.length * (1 - AHEAD)) adoptState(search, other);
+      if (part > SETTINGS.settle || other.length < search.best.length * (1 - AHEAD)) adoptState(search, other);
     }
     if (search.best.length < told.length && spent() > told.at + EXCHANGE) {
       told = { at: spent(), length: search.best.length };

@@ -1,6 +1,7 @@
 // Nests worked by hand, and properties on random pieces with a brute-force judge of its own.
 import fc from "fast-check";
 import { describe, expect, it } from "vitest";
+import { buildRandom } from "../../src/core/numeric/random.ts";
 import type { PlanError } from "../../src/core/problem.ts";
 import type { NestDecision } from "../../src/core/records/job.ts";
 import type { NestedRoll, NestPiece, StockRoll } from "../../src/core/records/roll.ts";
@@ -230,6 +231,84 @@ describe("stock", () => {
   });
 });
 
+describe("which rolls", () => {
+  it("opens the roll that spends least cloth, and leaves a remnant that is of use", () => {
+    // 4 boxes of 1000 × 900: on the wide roll (2000) 2 abreast, 4 m²; on the narrow one (950) 3.8 m², and less waste.
+    const rolls = [
+      { ...ROLL, id: "wide", length: 30_000 },
+      { ...ROLL, id: "narrow", width: 950, length: 30_000 },
+    ];
+    const pieces = ["a", "b", "c", "d"].map((id) => box(id, 1000, 900));
+    const { output } = runRolls(pieces, rolls, OPTIONS);
+    expect(output.map((r) => [r.id, Math.round(r.used), Math.round(r.remnant!)])).toEqual([["narrow", 4000, 26_000]]);
+    // A roll of 5.5 m would be left with 1.5 m × 2 m of scrap; the roll of 4 m is used up.
+    const short = [
+      { ...ROLL, id: "long", length: 5500 },
+      { ...ROLL, id: "short", length: 4000 },
+    ];
+    const wide = ["a", "b", "c", "d"].map((id) => box(id, 1000, 1900));
+    expect(runRolls(wide, short, OPTIONS).output.map((r) => [r.id, r.remnant])).toEqual([["short", 0]]);
+  });
+
+  it("proposes another split between batches where that saves cloth, and keeps the job's own", () => {
+    const rolls = ["b1", "b2"].map((batch) => ({ ...ROLL, id: batch, batch, length: 20_000 }));
+    const pieces = [box("a", 3000, 1000, "b1"), box("b", 3000, 1000, "b2")];
+    const { output, findings } = runRolls(pieces, rolls, OPTIONS);
+    expect(output.map((r) => r.placements.map((p) => p.panel))).toEqual([["a"], ["b"]]);
+    expect(findings.map((f) => [f.code, f.level])).toEqual([["batch-split", "note"]]);
+    expect(findings[0].value).toBeCloseTo(6, 6);
+    const alike = pieces.map((p) => ({ ...p, batch: "b1" }));
+    expect(runRolls(alike, rolls, OPTIONS).findings).toEqual([]);
+  });
+
+  it("lays 200 panels on 12 rolls of three batches with six flaws, none on a flaw or a foreign batch", () => {
+    const draw = buildRandom(11);
+    const pieces = Array.from({ length: 200 }, (_, k) => {
+      const [length, width, bow] = [1500 + 2500 * draw(), 250 + 500 * draw(), 40 + 120 * draw()];
+      const side = (y: number) => [0, 0.25, 0.5, 0.75, 1].map((t) => [t * length, y + 4 * bow * t * (1 - t)]);
+      return piece(`p${k}`, [...side(0), ...side(width).reverse()].flat(), `b${k % 3}`);
+    });
+    const rolls = Array.from({ length: 12 }, (_, k) => ({
+      ...ROLL,
+      id: `R${k}`,
+      batch: `b${k % 3}`,
+      width: k % 2 === 0 ? 2500 : 3000,
+      length: 30_000,
+      flaws: k < 6 ? [{ x: 4000 + 700 * k, y: 300 * k, length: 400, width: 500 }] : [],
+    }));
+    const { output, findings, checks } = runRolls(pieces, rolls, { ...OPTIONS, steps: 6, gap: 10 });
+    expect(findings.filter((f) => f.level === "stop")).toEqual([]);
+    expect(checks.filter((c) => !c.holds)).toEqual([]);
+    expect(output.reduce((sum, r) => sum + r.placements.length, 0)).toBe(200);
+    for (const roll of output)
+      for (const p of roll.placements) expect(`b${Number(p.panel.slice(1)) % 3}`).toBe(roll.batch);
+  });
+});
+
+describe("shuffled, renamed, scaled", () => {
+  it("lie as densely within noise, whatever the order and the names", () => {
+    const draw = buildRandom(5);
+    const points = Array.from({ length: 12 }, () => [
+      0,
+      0,
+      900 * draw() + 300,
+      0,
+      700 * draw() + 200,
+      300 + 500 * draw(),
+    ]);
+    const used = (list: NestPiece[], scale = 1) =>
+      runRolls(
+        list.map((p) => ({ ...p, cut: p.cut.map((v) => v * scale) })),
+        [{ ...ROLL, width: 1500 * scale, length: 50_000 * scale }],
+        { ...OPTIONS, steps: 60 },
+      ).output[0].used / scale;
+    const plain = points.map((p, k) => piece(`p${k}`, p));
+    const other = points.map((p, k) => piece(`q${99 - k}`, p)).reverse();
+    expect(Math.abs(used(other) / used(plain) - 1)).toBeLessThan(0.06);
+    expect(Math.abs(used(plain, 0.01) / used(plain) - 1)).toBeLessThan(0.06);
+  });
+});
+
 describe("pins", () => {
   it("are kept exactly, the rest goes round them", () => {
     const pieces = [box("a", 1000, 900), box("b", 1000, 900), box("c", 700, 2000)];
@@ -240,6 +319,7 @@ describe("pins", () => {
       x: 2345.678,
       y: 1950,
       rotation: 180,
+      order: 3,
     });
     judge(output, pieces, 5);
   });

@@ -38,6 +38,8 @@ export interface Placement {
   rotation: 0 | 180;
   x: number;
   y: number;
+  /** Place in the roll's cutting order, from 1. */
+  order?: number;
 }
 
 /** A roll with what lies on it; x along the roll, y = 0 the inner edge of the selvedge, outer face up. mm */
@@ -57,4 +59,8 @@ export interface NestedRoll {
   lowerBound: number;
   /** Length the cutting table takes at once, mm; none where the whole roll can be laid out. */
   bite?: number | null;
+  /** Places along the roll fed to the table's beginning, one bite after the other; none without a bite. */
+  feeds?: number[];
+  /** What is left beyond the used length, mm. */
+  remnant?: number;
 }

@@ -65,6 +65,11 @@ function onFlaws(lying: Lying[], roll: NestedRoll): string[] {
   return [...bad];
 }
 
+/** How far the used length lies above its bound, in words. */
+function gapWords(roll: NestedRoll): string {
+  return `${((100 * (roll.used - roll.lowerBound)) / Math.max(roll.lowerBound, 1e-9)).toFixed(1)} %`;
+}
+
 /** Checks of one filled roll; a check that fails is a stop as well. */
 export function checkRoll(
   roll: NestedRoll,
@@ -113,7 +118,7 @@ export function checkRoll(
     checks: [
       check("least distance between cuts, mm", apart, roll.gap, gapHolds),
       check("pieces off the cloth, on flaws or on another cloth", off.length, 0, inside),
-      check("used length against its lower bound, mm", roll.used, roll.lowerBound, bound),
+      check(`used length, ${gapWords(roll)} over its lower bound, mm`, roll.used, roll.lowerBound, bound),
     ],
     findings,
   };

@@ -44,7 +44,7 @@ export interface Layout {
   cost: LayoutCost;
 }
 
-/** First what could not be laid (area), then cloth used (length × width), then the mean reach of the pieces. */
+/** First what could not be laid (area), then cloth spent (length × width, remnants of no use too), then the mean reach of the pieces. */
 export interface LayoutCost {
   left: number;
   cloth: number;
@@ -84,12 +84,18 @@ function bestOn(bed: Bed, piece: number, task: NestTask, rule: TurnRule): LaidSh
   return best;
 }
 
+/** Length of a roll that is gone: what is used, and a remnant too short to be useful (common practice: shorter than wide). */
+function spentLength(bed: Bed): number {
+  const used = bedReach(bed);
+  return used > 0 && bed.length - used < bed.width ? bed.length : used;
+}
+
 /** Cost of what lies so far. */
 export function measureLayout(beds: Bed[], left: number[], areas: number[]): LayoutCost {
   const laid = beds.flatMap((b) => b.laid);
   return {
     left: left.reduce((sum, p) => sum + areas[p], 0),
-    cloth: beds.reduce((sum, b) => sum + bedReach(b) * b.width, 0),
+    cloth: beds.reduce((sum, b) => sum + spentLength(b) * b.width, 0),
     reach: laid.reduce((sum, p) => sum + p.x + p.shape.length, 0) / Math.max(1, laid.length),
   };
 }

@@ -6,6 +6,7 @@ import type { NestDecision } from "../records/job.ts";
 import type { NestedRoll, NestPiece, Placement, StockRoll } from "../records/roll.ts";
 import { type Bed, type BedSize, bedReach, type LaidShape } from "./bed.ts";
 import { checkComplete, checkRoll } from "./checkRolls.ts";
+import { cutOrder } from "./cutOrder.ts";
 import { type Layout, layPieces, type NestTask } from "./layPieces.ts";
 import { layPins } from "./layPins.ts";
 import { boundLength } from "./lowerBound.ts";
@@ -14,6 +15,7 @@ import { type OfferedRoll, offerRolls } from "./offerRolls.ts";
 import { searchOrders } from "./searchOrders.ts";
 import { shortenLayout } from "./shortenLayout.ts";
 import { sortPieces, stopFinding, suits, usableWidth } from "./sortPieces.ts";
+import { proposeBatches } from "./splitBatches.ts";
 
 /** Columns across which the raster resolves the roll's width, and the mean piece's length at least. */
 const COLUMNS_A_WIDTH = 128;
@@ -65,12 +67,17 @@ function buildTask(
 }
 
 /** A filled bed as the record of its roll. */
-function recordRoll(bed: Bed, roll: StockRoll, pieces: NestPiece[]): NestedRoll {
+function recordRoll(bed: Bed, roll: StockRoll, pieces: NestPiece[], bite: number | null): NestedRoll {
+  const { order, feeds } = cutOrder(
+    bed.laid.map((p) => ({ id: pieces[p.piece].id, x0: p.x, x1: p.x + p.shape.length, y0: p.y })),
+    bite,
+  );
   const placements = bed.laid.map(
     (p): Placement => ({
       panel: pieces[p.piece].id,
       rotation: p.shape.rotation === 180 ? 180 : 0,
       ...placementOf(p.shape, p.x, p.y),
+      order: order.indexOf(pieces[p.piece].id) + 1,
     }),
   );
   const cuts = bed.laid.map((p) => pieces[p.piece].cut);
@@ -90,6 +97,9 @@ function recordRoll(bed: Bed, roll: StockRoll, pieces: NestPiece[]): NestedRoll 
     utilisation: area / (used * roll.width),
     // A perfect tiling meets its bound to the last bits; only those are taken back here.
     lowerBound: Math.min(boundLength(cuts, usableWidth(roll), bed.gap, roll.start), used * (1 + 1e-9)),
+    remnant: Math.max(0, roll.length - used),
+    bite,
+    feeds,
   };
 }
 
@@ -180,7 +190,7 @@ export function runRolls(
       level: "note",
     });
   const filled = best.beds.map((bed, i) => ({ bed, roll: offers[i].roll })).filter(({ bed }) => bed.laid.length > 0);
-  const rolls = filled.map(({ bed, roll }) => ({ ...recordRoll(bed, roll, fit), bite: options.bite }));
+  const rolls = filled.map(({ bed, roll }) => recordRoll(bed, roll, fit, options.bite));
   const byId = new Map(fit.map((p) => [p.id, p]));
   const output = closeNumbering(rolls, offers, options.pins.length > 0);
   output.forEach((roll, i) => {
@@ -188,6 +198,7 @@ export function runRolls(
     checks.push(...verdict.checks);
     findings.push(...verdict.findings);
   });
+  findings.push(...proposeBatches(best, task, offers, fit, options));
   findings.push(...shortage(best.left, fit, task, stock));
   checks.push(checkComplete(output, pieces));
   return { output, findings, checks };

@@ -38,10 +38,40 @@ function sortedOrders(task: NestTask): number[][] {
 interface Genome {
   order: number[];
   rule: TurnRule;
+  /** Rolls in the order in which they are filled. */
+  rolls: number[];
+}
+
+/** Orders of rolls worth trying: as listed, and where they differ narrow, wide, short or long ones first. */
+function rollOrders(task: NestTask): number[][] {
+  const sizes = task.offers.map((o) => o.size);
+  const listed = sizes.map((_, i) => i);
+  const alike = sizes.every((s) => s.width === sizes[0].width && s.length === sizes[0].length && s.flaws.length === 0);
+  if (alike) return [listed];
+  const by = (key: (i: number) => number) => [...listed].sort((a, b) => key(a) - key(b) || a - b);
+  return [
+    listed,
+    by((i) => sizes[i].width),
+    by((i) => -sizes[i].width),
+    by((i) => sizes[i].length),
+    by((i) => -sizes[i].length),
+  ];
+}
+
+/** The layout of a genome, its beds in the order of the offers. */
+function layGenome(task: NestTask, genome: Genome, beat: LayoutCost | null): Layout | null {
+  const offers = genome.rolls.map((i) => task.offers[i]);
+  const layout = layPieces({ ...task, offers }, genome.order, genome.rule, beat);
+  if (!layout) return null;
+  const beds: Layout["beds"] = [];
+  genome.rolls.forEach((i, k) => {
+    beds[i] = layout.beds[k];
+  });
+  return { ...layout, beds };
 }
 
 /** A changed copy: places swapped or a piece moved, near or far, never two alike; now and then another rule. */
-function changeGenome(genome: Genome, random: Random, kind: (p: number) => string): Genome {
+function changeGenome(genome: Genome, random: Random, kind: (p: number) => string, sorted: boolean): Genome {
   const order = [...genome.order];
   const n = order.length;
   for (let tries = 0; tries < 20; tries++) {
@@ -53,7 +83,13 @@ function changeGenome(genome: Genome, random: Random, kind: (p: number) => strin
     else order.splice(j, 0, ...order.splice(i, 1));
     if (random() < 0.7) break;
   }
-  return { order, rule: random() < 0.05 ? RULES[drawInteger(random, RULES.length)] : genome.rule };
+  const rule = random() < 0.05 ? RULES[drawInteger(random, RULES.length)] : genome.rule;
+  if (sorted || random() > 0.1) return { order, rule, rolls: genome.rolls };
+  const rolls = [...genome.rolls];
+  const a = drawInteger(random, rolls.length);
+  const b = drawInteger(random, rolls.length);
+  [rolls[a], rolls[b]] = [rolls[b], rolls[a]];
+  return { order, rule, rolls };
 }
 
 const worse = (a: LayoutCost, b: LayoutCost) => (isLess(a, b) ? b : a);
@@ -67,7 +103,10 @@ function memoryOf(steps: number): number {
 export function searchOrders(task: NestTask, limits: SearchLimits): { layout: Layout; steps: number } | null {
   const random = buildRandom(limits.seed);
   const kind = (p: number) => task.shapes[p][0].key;
-  const starts = sortedOrders(task).flatMap((order) => RULES.map((rule): Genome => ({ order, rule })));
+  const rolls = rollOrders(task);
+  const starts = sortedOrders(task)
+    .flatMap((order) => RULES.map((rule) => ({ order, rule })))
+    .map((g, k): Genome => ({ ...g, rolls: rolls[k % rolls.length] }));
   let best: Layout | null = null;
   let bestOf: Genome = starts[0];
   let now: { cost: LayoutCost; genome: Genome } | null = null;
@@ -80,11 +119,12 @@ export function searchOrders(task: NestTask, limits: SearchLimits): { layout: La
       now = { cost: best.cost, genome: bestOf };
       memory = new Array(memoryOf(limits.steps)).fill(best.cost);
     }
-    const genome: Genome = sorting || !now ? starts[steps % starts.length] : changeGenome(now.genome, random, kind);
+    const genome: Genome =
+      sorting || !now ? starts[steps % starts.length] : changeGenome(now.genome, random, kind, rolls.length === 1);
     const slot = steps % Math.max(1, memory.length);
     const toBeat: LayoutCost | null = now ? worse(memory[slot], now.cost) : (best?.cost ?? null);
     // A cap may cut the search short, never the first layout.
-    const layout = layPieces(best ? task : { ...task, stop: () => false }, genome.order, genome.rule, toBeat);
+    const layout = layGenome(best ? task : { ...task, stop: () => false }, genome, toBeat);
     if (layout && (!best || !isLess(best.cost, layout.cost))) {
       best = layout;
       bestOf = genome;

@@ -20,28 +20,44 @@ export interface StripSearch {
   strip: Strip;
   random: Random;
   best: StripState;
+  /** The layout now worked on: valid, at times longer than the best. */
+  now: StripState;
   /** Layouts that could not be parted at the length now tried, least overlap first. */
   failed: { state: StripState; overlap: number }[];
+  /** Share of the length now cut off at once: halved where it keeps failing. */
+  cut: number;
+  /** Least cuts tried since one succeeded. */
+  idle: number;
   /** Pieces by the size of their boxes, greatest first. */
   large: number[];
-  /** Share of the length now cut off when exploring: halved where it keeps failing. */
-  cut: number;
   /** Reach of what cannot move, and of the longest piece: no strip is shorter. */
   fixed: number;
 }
 
 export const SETTINGS = {
-  /** Share of the work that looks for new structure; the rest makes the best one denser. */
-  explore: 0.7,
-  /** Share of the length cut off when exploring, and at the beginning and end of the fine part. */
+  /** Shares of the length cut off: at first, and at least. */
   cut: 0.005,
-  failures: 8,
-  fineFrom: 0.002,
-  fineTo: 0.0001,
+  cutLeast: 0.0003,
+  /** Failures at one length before the cut is halved. */
+  failures: 6,
+  /** Fine cuts lie between these shares. */
+  fineMost: 0.002,
+  fineLeast: 0.0001,
+  /** Failures of least cuts before the layout is disturbed: so many, and so many a piece. */
+  stall: 20,
+  stallPiece: 0.6,
+  /** One in so many attempts at least cuts is a slice instead. */
+  slices: 4,
+  /** Length given back to a layout that is disturbed; one that grew longer than the best by more than `drop` is left. */
+  ease: 0.005,
+  drop: 0.006,
+  /** Share of the work after which the best is no longer disturbed. */
+  settle: 0.85,
+  /** Swaps of a disturbance at most. */
+  swaps: 3,
 };
-/** Failures at one length before the cut is halved, and the least cut. */
+/** Rounding. */
 const HAIR = 1e-9;
-const LEAST_CUT = 0.0003;
 /** Passes without a gain: of few pieces few, since they have few ways to lie. */
 const PASSES = 60;
 const PASSES_LEAST = 6;
@@ -68,22 +84,24 @@ export function openSearch(task: StripTask, from: StripState, seed: number, fixe
   // Nor is a strip shorter than its longest piece, lain the shortest way.
   const long = task.choices.map((own) => task.start + Math.min(...own.map((s) => task.shapes[s].length)));
   const least = Math.max(fixed, ...long.slice(0, task.movable));
-  return {
-    strip,
-    random: buildRandom(seed),
-    best: copyState(strip),
-    failed: [],
-    large,
-    cut: SETTINGS.cut,
-    fixed: least,
-  };
+  const best = copyState(strip);
+  const { cut } = SETTINGS;
+  return { strip, random: buildRandom(seed), best, now: best, failed: [], cut, idle: 0, large, fixed: least };
 }
 
 /** Takes over a better layout found elsewhere. */
 export function adoptState(search: StripSearch, state: StripState): void {
   if (state.length >= search.best.length) return;
   search.best = state;
+  begin(search, state);
+}
+
+/** Goes on from a layout. */
+function begin(search: StripSearch, state: StripState): void {
+  search.now = state;
   search.failed = [];
+  search.cut = SETTINGS.cut;
+  search.idle = 0;
 }
 
 /** Sets the strip's end; what lies beyond is drawn in. */
@@ -128,46 +146,63 @@ function drawFailed(search: StripSearch): void {
   disturbInPlace(search);
 }
 
-/** Takes the strip as the new best if it is one. */
-function keepBest(search: StripSearch): boolean {
-  const length = Math.max(reachOf(search.strip), search.fixed);
-  if (length >= search.best.length) return false;
-  search.strip.length = length;
-  search.best = copyState(search.strip);
+/** Takes the strip, where nothing overlaps, as the layout to go on from. Returns whether it is the best. */
+function keepLayout(search: StripSearch): boolean {
+  const { strip } = search;
+  strip.length = Math.max(reachOf(strip), search.fixed);
+  search.now = copyState(strip);
   search.failed = [];
+  search.idle = 0;
+  if (search.now.length >= search.best.length) return false;
+  search.best = search.now;
   return true;
 }
 
 function tryCoarse(search: StripSearch, stop: () => boolean): boolean {
   const { strip } = search;
-  const length = Math.max(search.fixed, search.best.length * (1 - search.cut));
   if (search.failed.length > 0) drawFailed(search);
   else {
-    setState(strip, search.best);
-    cutInPlace(strip, length);
+    setState(strip, search.now);
+    cutInPlace(strip, Math.max(search.fixed, search.now.length * (1 - search.cut)));
   }
-  if (separate(strip, { passes: passesFor(strip), strikes: 3 }, search.random, stop)) return keepBest(search);
+  if (separate(strip, { passes: passesFor(strip), strikes: 3 }, search.random, stop)) return keepLayout(search);
   search.failed.push({ state: copyState(strip), overlap: measureOverlap(strip) });
   search.failed.sort((a, b) => a.overlap - b.overlap);
-  if (search.failed.length >= SETTINGS.failures && search.cut > LEAST_CUT) {
-    search.cut /= 2;
+  if (search.failed.length >= SETTINGS.failures && search.cut > SETTINGS.cutLeast) {
+    search.cut = Math.max(SETTINGS.cutLeast, search.cut / 2);
     search.failed = [];
   }
   return false;
 }
 
 /** Cuts a narrow slice out somewhere: all beyond it moves up. */
-function tryFine(search: StripSearch, share: number, stop: () => boolean): boolean {
-  const { strip, random, best } = search;
-  setState(strip, best);
-  const slice = best.length * (SETTINGS.fineTo + (SETTINGS.fineFrom - SETTINGS.fineTo) * (1 - share));
-  const at = random() * best.length;
+function tryFine(search: StripSearch, stop: () => boolean): boolean {
+  const { strip, random, now } = search;
+  setState(strip, now);
+  const { fineMost, fineLeast } = SETTINGS;
+  const slice = now.length * fineMost * (fineLeast / fineMost) ** random();
+  const at = random() * now.length;
   const { start, movable } = strip.task;
   for (let i = 0; i < movable; i++)
     if (strip.x[i] + strip.x1[i] > 2 * at)
       putPiece(strip, i, strip.shape[i], Math.max(start, strip.x[i] - slice), strip.y[i]);
-  cutInPlace(strip, Math.max(search.fixed, best.length - slice));
-  return separate(strip, { passes: passesFor(strip) / 2, strikes: 1 }, random, stop) && keepBest(search);
+  cutInPlace(strip, Math.max(search.fixed, now.length - slice));
+  return separate(strip, { passes: passesFor(strip) / 2, strikes: 1 }, random, stop) && keepLayout(search);
+}
+
+/** Swaps pieces of the layout with a little more room, and goes on from there; from the best where it strayed too far. */
+function disturb(search: StripSearch, stop: () => boolean): void {
+  const { strip, random, best } = search;
+  const from = search.now.length > best.length * (1 + SETTINGS.drop) ? best : search.now;
+  setState(strip, from);
+  strip.length = from.length * (1 + SETTINGS.ease);
+  for (let k = drawInteger(random, SETTINGS.swaps); k >= 0; k--) disturbInPlace(search);
+  if (!separate(strip, { passes: passesFor(strip), strikes: 2 }, random, stop)) {
+    begin(search, best);
+    return;
+  }
+  begin(search, best);
+  keepLayout(search);
 }
 
 /** Whether no shorter strip is to be had. */
@@ -180,6 +215,14 @@ export function isDone(search: StripSearch): boolean {
  * @returns whether the best layout became shorter
  */
 export function tryShorter(search: StripSearch, share: number, stop: () => boolean): boolean {
-  if (share < SETTINGS.explore) return tryCoarse(search, stop);
-  return tryFine(search, (share - SETTINGS.explore) / (1 - SETTINGS.explore), stop);
+  const settling = share >= SETTINGS.settle;
+  if (settling && search.now !== search.best) begin(search, search.best);
+  const least = search.cut <= SETTINGS.cutLeast;
+  if (least) search.idle++;
+  if (!settling && search.idle > SETTINGS.stall + SETTINGS.stallPiece * search.strip.task.movable) {
+    const before = search.best;
+    disturb(search, stop);
+    return search.best !== before;
+  }
+  return settling || (least && search.idle % SETTINGS.slices === 0) ? tryFine(search, stop) : tryCoarse(search, stop);
 }
