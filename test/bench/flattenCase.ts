@@ -1,7 +1,7 @@
 // `bench flatten STRIP.obj`: a bare strip flattened as one panel of an isotropic cloth without prestress, and the time it takes, warm.
-import { flattenPanels } from "../../src/core/panels/flattenPanels.ts";
-import type { FlattenOptions } from "../../src/core/panels/panelTarget.ts";
-import { buildRelaxedFlat } from "../../src/core/panels/stressFigures.ts";
+import { flattenPanels } from "../../src/core/panels/flatten/flattenPanels.ts";
+import type { FlattenOptions } from "../../src/core/panels/flatten/panelTarget.ts";
+import { buildRelaxedFlat } from "../../src/core/panels/proof/stressFigures.ts";
 import type { FlatPanel } from "../../src/core/records/flatPanel.ts";
 import type { StripLayout } from "../../src/core/records/stripLayout.ts";
 import { buildErectedMetric, measureTriangleStrain } from "../../src/core/structure/cloth.ts";

@@ -1,5 +1,5 @@
 // A made panel with its control lengths, measured as the panels station does.
-import { measureControl } from "../../src/core/panels/controlLengths.ts";
+import { measureControl } from "../../src/core/panels/outline/controlLengths.ts";
 import type { FactsPanel } from "../../src/core/records/facts.ts";
 import type { CutPanel } from "../../src/core/records/flatPanel.ts";
 

@@ -1,6 +1,6 @@
 // Published and recomputed values for the cloth law and for what curvature costs a flat strip.
 import { expect, test } from "vitest";
-import { flattenPanels } from "../../src/core/panels/flattenPanels.ts";
+import { flattenPanels } from "../../src/core/panels/flatten/flattenPanels.ts";
 import { buildStiffness, measureTargetStrain } from "../../src/core/structure/cloth.ts";
 import { cutGrid, gridSurface, measurePath, PLAIN } from "../panels/stripFixtures.ts";
 

@@ -1,7 +1,7 @@
 // A strip on constant negative curvature: edge over centre length is cosh(sqrt(-K) h), about K w²/8. Values: check-values.md 4.2 and
 // 10 (T11), status C: recomputed there from the closed form. Through the project's own seams and flattening stations.
 import { expect, test } from "vitest";
-import { flattenPanels } from "../../src/core/panels/flattenPanels.ts";
+import { flattenPanels } from "../../src/core/panels/flatten/flattenPanels.ts";
 import type { FlatPanel } from "../../src/core/records/flatPanel.ts";
 import { runSeams } from "../../src/core/seams/runSeams.ts";
 import { makeForm, makeGrid, makeJob } from "../seams/madeForms.ts";

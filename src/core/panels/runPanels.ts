@@ -4,12 +4,12 @@ import type { CutPanel, FlatPanel } from "../records/flatPanel.ts";
 import type { FoundForm } from "../records/foundForm.ts";
 import type { Job } from "../records/job.ts";
 import type { StripLayout } from "../records/stripLayout.ts";
-import { flattenPanels } from "./flattenPanels.ts";
-import { keepSeamPoints } from "./netOutline.ts";
-import { outlinePanel } from "./outlinePanel.ts";
-import type { PanelPlace } from "./panelPlace.ts";
-import type { FlattenOptions } from "./panelTarget.ts";
-import { listFoldFindings } from "./slitFlaps.ts";
+import { flattenPanels } from "./flatten/flattenPanels.ts";
+import type { FlattenOptions } from "./flatten/panelTarget.ts";
+import { listFoldFindings } from "./marks/slitFlaps.ts";
+import { keepSeamPoints } from "./outline/netOutline.ts";
+import { outlinePanel } from "./outline/outlinePanel.ts";
+import type { PanelPlace } from "./outline/panelPlace.ts";
 
 /** What the job decides on flattening. */
 export function buildFlattenOptions(form: FoundForm, job: Job): FlattenOptions {

@@ -1,7 +1,7 @@
 // A seam end that is dragged: the panels on both sides of the seam cut, flattened and outlined again while all other panels stay as
 // they are, their seams held as long as they are. When it is let go the whole roof is due (fitPanels or runPlan on the new job).
-import { reflattenPanels } from "../panels/flattenPanels.ts";
-import { outlinePanel } from "../panels/outlinePanel.ts";
+import { reflattenPanels } from "../panels/flatten/flattenPanels.ts";
+import { outlinePanel } from "../panels/outline/outlinePanel.ts";
 import { buildFlattenOptions, buildPanelPlace } from "../panels/runPanels.ts";
 import type { CutPanel } from "../records/flatPanel.ts";
 import type { FoundForm } from "../records/foundForm.ts";

@@ -1,6 +1,6 @@
 // The chain: job and mesh in, facts out. Calls the stations by name, in order, and can stop after any of them.
 import { runForm } from "../form/runForm.ts";
-import { buildPieces } from "../panels/cutPieces.ts";
+import { buildPieces } from "../panels/pieces/cutPieces.ts";
 import { type Finding, PlanError, type Station, type StationContext, type StationResult } from "../problem.ts";
 import type { Facts } from "../records/facts.ts";
 import type { Job, MeshSource } from "../records/job.ts";
