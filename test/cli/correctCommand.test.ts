@@ -5,7 +5,7 @@ import { fileURLToPath } from "node:url";
 import { expect, test } from "vitest";
 import { correctCommand } from "../../src/cli/correctCommand.ts";
 import type { Surroundings } from "../../src/cli/makePlan.ts";
-import { readingColumns } from "../../src/core/rig/readReadings.ts";
+import { readingColumns } from "../../src/core/rig/correct/readReadings.ts";
 
 const job = fileURLToPath(new URL("../../templates/boat-shed/job.json", import.meta.url));
 

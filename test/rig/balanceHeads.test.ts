@@ -1,6 +1,6 @@
 import { expect, test } from "vitest";
 import { PlanError } from "../../src/core/problem.ts";
-import { balanceHeads } from "../../src/core/rig/balanceHeads.ts";
+import { balanceHeads } from "../../src/core/rig/build/balanceHeads.ts";
 
 // Foot, head, sail corner, feet of two stays. Mast 4 m high, the sail pulls level with 10 kN along +x.
 const xyz = [0, 0, 0, 0, 0, 4, 3, 0, 4, -3, 1.5, 0, -3, -1.5, 0];

@@ -1,13 +1,13 @@
 import { expect, test } from "vitest";
 import { buildRandom } from "../../src/core/numeric/random.ts";
 import type { Reading } from "../../src/core/records/rig.ts";
-import { buildRig, type Rig } from "../../src/core/rig/buildRig.ts";
-import { correctSolved } from "../../src/core/rig/correctRig.ts";
-import { turnUntil } from "../../src/core/rig/playByForce.ts";
-import { readAdjusters } from "../../src/core/rig/readState.ts";
+import { buildRig, type Rig } from "../../src/core/rig/build/buildRig.ts";
+import { correctSolved } from "../../src/core/rig/correct/correctRig.ts";
+import { turnUntil } from "../../src/core/rig/moves/playByForce.ts";
 import type { RigInput } from "../../src/core/rig/rigInput.ts";
-import { countModes, type RigState, turnTo } from "../../src/core/rig/solveLengths.ts";
-import { type SolvedRig, solveRig } from "../../src/core/rig/solveRig.ts";
+import { readAdjusters } from "../../src/core/rig/stages/readState.ts";
+import { countModes, type RigState, turnTo } from "../../src/core/rig/stages/solveLengths.ts";
+import { type SolvedRig, solveRig } from "../../src/core/rig/stages/solveRig.ts";
 import { giveAdjusters, makeSmallSail, planInput } from "./madeRig.ts";
 import { makeRandomRig } from "./randomRigs.ts";
 

@@ -1,15 +1,15 @@
 import { expect, test } from "vitest";
-import { buildRig, type Rig } from "../../src/core/rig/buildRig.ts";
+import { buildRig, type Rig } from "../../src/core/rig/build/buildRig.ts";
 import {
   chooseOrder,
   foretellPeak,
   type LinearStage,
   orderClockwise,
   pairAdjusters,
-} from "../../src/core/rig/chooseOrder.ts";
-import { linearise, measureNotch, roundLengths } from "../../src/core/rig/planMoves.ts";
-import { readAdjusters } from "../../src/core/rig/readState.ts";
-import { measureAdjusterInfluence, solveState } from "../../src/core/rig/solveLengths.ts";
+} from "../../src/core/rig/moves/chooseOrder.ts";
+import { linearise, measureNotch, roundLengths } from "../../src/core/rig/moves/planMoves.ts";
+import { readAdjusters } from "../../src/core/rig/stages/readState.ts";
+import { measureAdjusterInfluence, solveState } from "../../src/core/rig/stages/solveLengths.ts";
 import { createEquilibriumSolver } from "../../src/core/structure/equilibrium.ts";
 import { giveAdjusters, makeSmallSail, planInput } from "./madeRig.ts";
 

@@ -1,5 +1,5 @@
 import { expect, test } from "vitest";
-import { measureVibrationForce, readingColumns, readReadings } from "../../src/core/rig/readReadings.ts";
+import { measureVibrationForce, readingColumns, readReadings } from "../../src/core/rig/correct/readReadings.ts";
 
 const head = readingColumns.join(",");
 

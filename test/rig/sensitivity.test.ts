@@ -1,9 +1,9 @@
 import { expect, test } from "vitest";
-import { buildRig } from "../../src/core/rig/buildRig.ts";
-import { listMembers, readForces } from "../../src/core/rig/readState.ts";
-import { measureSensitivity } from "../../src/core/rig/sensitivity.ts";
-import { solveState } from "../../src/core/rig/solveLengths.ts";
-import { growCloth } from "../../src/core/rig/warmRig.ts";
+import { buildRig } from "../../src/core/rig/build/buildRig.ts";
+import { measureSensitivity } from "../../src/core/rig/otherwise/sensitivity.ts";
+import { growCloth } from "../../src/core/rig/otherwise/warmRig.ts";
+import { listMembers, readForces } from "../../src/core/rig/stages/readState.ts";
+import { solveState } from "../../src/core/rig/stages/solveLengths.ts";
 import { createEquilibriumSolver } from "../../src/core/structure/equilibrium.ts";
 import { measureResponse } from "../../src/core/structure/influence.ts";
 import { giveAdjusters, makeSmallSail, planInput } from "./madeRig.ts";

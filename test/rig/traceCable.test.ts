@@ -2,7 +2,7 @@ import { expect, test } from "vitest";
 import { PlanError } from "../../src/core/problem.ts";
 import type { FormEdge } from "../../src/core/records/foundForm.ts";
 import type { StripLayout } from "../../src/core/records/stripLayout.ts";
-import { traceCable } from "../../src/core/rig/traceCable.ts";
+import { traceCable } from "../../src/core/rig/cables/traceCable.ts";
 
 const edge = (vertices: number[], kind: FormEdge["kind"] = "cable"): FormEdge => ({
   id: "E1",

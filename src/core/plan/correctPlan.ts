@@ -3,8 +3,8 @@ import { runForm } from "../form/runForm.ts";
 import type { Finding, StationContext } from "../problem.ts";
 import type { Job, MeshSource } from "../records/job.ts";
 import type { Correction } from "../records/rig.ts";
-import { correctRig } from "../rig/correctRig.ts";
-import { readReadings } from "../rig/readReadings.ts";
+import { correctRig } from "../rig/correct/correctRig.ts";
+import { readReadings } from "../rig/correct/readReadings.ts";
 import { buildRigInput } from "./buildRigInput.ts";
 import { fitPanels } from "./fitPanels.ts";
 

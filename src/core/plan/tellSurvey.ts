@@ -3,7 +3,7 @@ import { type Finding, PlanError } from "../problem.ts";
 import type { FoundForm } from "../records/foundForm.ts";
 import type { Job } from "../records/job.ts";
 import type { AdjusterDecision } from "../records/rig.ts";
-import { drawPin } from "../rig/rigNodes.ts";
+import { drawPin } from "../rig/build/rigNodes.ts";
 import { measureDistance, vertexAt } from "../surface/measures.ts";
 import type { Vec3 } from "../surface/surface.ts";
 

@@ -2,17 +2,17 @@
 import type { Check, Finding, StationContext, StationResult } from "../problem.ts";
 import type { FactsAsBuilt, FactsCable, FactsRig, FactsSensitivity, FactsTensioning } from "../records/rig.ts";
 import { measureLink } from "../structure/elements.ts";
-import { measureAsBuilt } from "./asBuilt.ts";
-import { buildRig, type Rig } from "./buildRig.ts";
-import { buildCableLine } from "./cableSchedule.ts";
-import { playPlan } from "./playPlan.ts";
-import { findTargetMisses, reviewRig, roundedLimit } from "./reviewRig.ts";
-import { reviewLean, reviewNotches, reviewRest } from "./reviewSteps.ts";
+import { buildRig, type Rig } from "./build/buildRig.ts";
+import { buildCableLine } from "./cables/cableSchedule.ts";
+import { playPlan } from "./moves/playPlan.ts";
+import { measureSensitivity } from "./otherwise/sensitivity.ts";
+import { buildTemperatureTable } from "./otherwise/temperatureTable.ts";
+import { measureAsBuilt } from "./review/asBuilt.ts";
+import { findTargetMisses, reviewRig, roundedLimit } from "./review/reviewRig.ts";
+import { reviewLean, reviewNotches, reviewRest } from "./review/reviewSteps.ts";
 import type { RigInput } from "./rigInput.ts";
-import { measureSensitivity } from "./sensitivity.ts";
-import { countModes, type RigState } from "./solveLengths.ts";
-import { solveRig } from "./solveRig.ts";
-import { buildTemperatureTable } from "./temperatureTable.ts";
+import { countModes, type RigState } from "./stages/solveLengths.ts";
+import { solveRig } from "./stages/solveRig.ts";
 
 /** Output of the rig station; without adjusters only the cables. */
 export interface RigResult {

@@ -1,9 +1,9 @@
 // What a gauge, a tape and a survey read in a state of the rig.
-import type { FactsMove } from "../records/rig.ts";
-import { measureLink } from "../structure/elements.ts";
-import { vertexAt } from "../surface/measures.ts";
-import type { Vec3 } from "../surface/surface.ts";
-import type { Rig, RigCable } from "./buildRig.ts";
+import type { FactsMove } from "../../records/rig.ts";
+import { measureLink } from "../../structure/elements.ts";
+import { vertexAt } from "../../surface/measures.ts";
+import type { Vec3 } from "../../surface/surface.ts";
+import type { Rig, RigCable } from "../build/buildRig.ts";
 
 /** Positions and slack lengths: all that readings depend on. */
 export interface Places {

@@ -1,12 +1,12 @@
 // What errors of making and setting out do to the final forces, to first order, and how fine each must be for forces to stay
 // within a tenth. Source: tangent at the finished state; own. Errors as usual on site (common practice): 5 mm, 10 mm, 0.2 %.
-import type { FactsSensitivity } from "../records/rig.ts";
-import { measureLink } from "../structure/elements.ts";
-import type { EquilibriumSolver } from "../structure/equilibrium.ts";
-import { measureChange, measureResponse, type Otherwise } from "../structure/influence.ts";
-import type { Rig } from "./buildRig.ts";
-import { findTautest, listMembers } from "./readState.ts";
-import type { RigState } from "./solveLengths.ts";
+import type { FactsSensitivity } from "../../records/rig.ts";
+import { measureLink } from "../../structure/elements.ts";
+import type { EquilibriumSolver } from "../../structure/equilibrium.ts";
+import { measureChange, measureResponse, type Otherwise } from "../../structure/influence.ts";
+import type { Rig } from "../build/buildRig.ts";
+import { findTautest, listMembers } from "../stages/readState.ts";
+import type { RigState } from "../stages/solveLengths.ts";
 import { growCloth } from "./warmRig.ts";
 
 /** Errors looked at: a cable too long and an anchor out of place, m; cloth cut too small, share. */

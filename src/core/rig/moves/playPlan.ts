@@ -1,13 +1,13 @@
 // All stages played in the order chosen, and beside it in the plain ways, where the rig has modes enough for order to matter.
-import type { StationContext } from "../problem.ts";
-import type { FactsStage, FactsWay, RigDecision } from "../records/rig.ts";
-import type { EquilibriumSolver } from "../structure/equilibrium.ts";
-import type { Rig } from "./buildRig.ts";
+import type { StationContext } from "../../problem.ts";
+import type { FactsStage, FactsWay, RigDecision } from "../../records/rig.ts";
+import type { EquilibriumSolver } from "../../structure/equilibrium.ts";
+import type { Rig } from "../build/buildRig.ts";
+import { pickHigher, readAdjusters } from "../stages/readState.ts";
+import type { RigState } from "../stages/solveLengths.ts";
 import { chooseOrder, orderClockwise } from "./chooseOrder.ts";
 import { type PlayedStage, playStage, type Stage } from "./planMoves.ts";
 import { playByForce } from "./playByForce.ts";
-import { pickHigher, readAdjusters } from "./readState.ts";
-import type { RigState } from "./solveLengths.ts";
 
 /** Strong tension modes from which on the order of the visits matters and is compared. */
 export const modesThatMatter = 3;

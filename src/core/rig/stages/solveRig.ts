@@ -1,12 +1,12 @@
 // The rig solved: finished state, stages with their lengths, tension modes. Plays no moves.
-import type { Check, StationContext } from "../problem.ts";
-import { createEquilibriumSolver, type EquilibriumSolver } from "../structure/equilibrium.ts";
-import type { Rig } from "./buildRig.ts";
-import type { Stage } from "./planMoves.ts";
-import type { RigInput } from "./rigInput.ts";
+import type { Check, StationContext } from "../../problem.ts";
+import { createEquilibriumSolver, type EquilibriumSolver } from "../../structure/equilibrium.ts";
+import type { Rig } from "../build/buildRig.ts";
+import type { Stage } from "../moves/planMoves.ts";
+import type { Expansion } from "../otherwise/warmRig.ts";
+import type { RigInput } from "../rigInput.ts";
 import { checkLengths, measureModes, type RigState, solveLengths, solveState } from "./solveLengths.ts";
 import { solveStages } from "./solveStages.ts";
-import type { Expansion } from "./warmRig.ts";
 
 /** A rig with its states. */
 export interface SolvedRig {

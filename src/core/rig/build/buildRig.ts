@@ -1,12 +1,13 @@
 // The structure the tensioning is worked out on: all cloth with its flat panels, cables, masts, stays and adjusters.
 // Leaves out what structure.ts leaves out. Nodes 0 … nV-1 are those of the cut surface, then pins, mast heads and feet.
-import { PlanError } from "../problem.ts";
-import type { AdjusterDecision, Turnbuckle } from "../records/rig.ts";
-import { buildStiffness } from "../structure/cloth.ts";
-import { buildStructure, type Structure } from "../structure/structure.ts";
-import type { Vec3 } from "../surface/surface.ts";
+import { PlanError } from "../../problem.ts";
+import type { AdjusterDecision, Turnbuckle } from "../../records/rig.ts";
+import { buildStiffness } from "../../structure/cloth.ts";
+import { buildStructure, type Structure } from "../../structure/structure.ts";
+import type { Vec3 } from "../../surface/surface.ts";
+import { traceCable } from "../cables/traceCable.ts";
+import type { RigInput } from "../rigInput.ts";
 import { balanceHeads, type HeadPull } from "./balanceHeads.ts";
-import type { RigInput } from "./rigInput.ts";
 import {
   addNode,
   holdClampedEdges,
@@ -16,7 +17,6 @@ import {
   resolvePlace,
   settleTurnbuckle,
 } from "./rigNodes.ts";
-import { traceCable } from "./traceCable.ts";
 
 /** A cable or stay: a run of links that share one EA. */
 export interface RigCable {

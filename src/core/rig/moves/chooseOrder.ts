@@ -3,9 +3,9 @@
 // afterwards. Never turns more than two adjusters at once. Source: superposition of influence columns in the order of the moves
 // (Kwan and Pellegrino 1993, from memory).
 
-import { vertexAt } from "../surface/measures.ts";
-import type { Rig } from "./buildRig.ts";
-import { type Member, pickGreatest } from "./readState.ts";
+import { vertexAt } from "../../surface/measures.ts";
+import type { Rig } from "../build/buildRig.ts";
+import { type Member, pickGreatest } from "../stages/readState.ts";
 
 /** A stage to first order: forces of the members at its end, and what a metre added at each adjuster does to them. */
 export interface LinearStage {

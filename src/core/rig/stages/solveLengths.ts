@@ -2,10 +2,10 @@
 // mode: forces set what they determine, the other modes are held at a reference geometry (Tikhonov).
 // Source: influence matrix as in Kwan & Pellegrino 1993 (from memory), repeated Gauss–Newton with a regularising term; own.
 import { Matrix, SingularValueDecomposition } from "ml-matrix";
-import type { Check } from "../problem.ts";
-import { type EquilibriumSolver, type EquilibriumState, solveEquilibrium } from "../structure/equilibrium.ts";
-import { measureInfluence } from "../structure/influence.ts";
-import type { Rig } from "./buildRig.ts";
+import type { Check } from "../../problem.ts";
+import { type EquilibriumSolver, type EquilibriumState, solveEquilibrium } from "../../structure/equilibrium.ts";
+import { measureInfluence } from "../../structure/influence.ts";
+import type { Rig } from "../build/buildRig.ts";
 import { type Places, readAdjusters } from "./readState.ts";
 
 /** A state of the rig: positions, slack lengths of all links, and how far the solve came. */

@@ -1,11 +1,11 @@
 // Readings against the rig: which member or corner each one speaks of, and which cannot be used.
-import { type Finding, PlanError } from "../problem.ts";
-import type { Reading } from "../records/rig.ts";
-import type { Vec3 } from "../surface/surface.ts";
-import type { Rig } from "./buildRig.ts";
+import { type Finding, PlanError } from "../../problem.ts";
+import type { Reading } from "../../records/rig.ts";
+import type { Vec3 } from "../../surface/surface.ts";
+import type { Rig } from "../build/buildRig.ts";
+import type { RigInput } from "../rigInput.ts";
+import { listMembers, type Member } from "../stages/readState.ts";
 import { measureVibrationForce } from "./readReadings.ts";
-import { listMembers, type Member } from "./readState.ts";
-import type { RigInput } from "./rigInput.ts";
 
 /** Readings as the fit takes them. */
 export interface SortedReadings {

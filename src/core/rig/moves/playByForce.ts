@@ -1,13 +1,13 @@
 // The way of a crew without a schedule: one adjuster after the other round the roof, each turned until its own gauge shows the
 // stage's force, and round again at the end until all hold. Worked out to be compared with; nobody is told to do it.
-import type { StationContext } from "../problem.ts";
-import type { FactsWay, RigDecision } from "../records/rig.ts";
-import type { EquilibriumSolver } from "../structure/equilibrium.ts";
-import type { Rig } from "./buildRig.ts";
+import type { StationContext } from "../../problem.ts";
+import type { FactsWay, RigDecision } from "../../records/rig.ts";
+import type { EquilibriumSolver } from "../../structure/equilibrium.ts";
+import type { Rig } from "../build/buildRig.ts";
+import { findGreatest, pickHigher, readAdjusters } from "../stages/readState.ts";
+import { measureAdjusterInfluence, type RigState, turnTo } from "../stages/solveLengths.ts";
 import { orderClockwise } from "./chooseOrder.ts";
 import { measureNotch, type Stage } from "./planMoves.ts";
-import { findGreatest, pickHigher, readAdjusters } from "./readState.ts";
-import { measureAdjusterInfluence, type RigState, turnTo } from "./solveLengths.ts";
 
 /** Rounds after the last stage before the crew would give up. */
 const mostRounds = 10;

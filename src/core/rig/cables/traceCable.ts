@@ -1,7 +1,7 @@
 // The vertices of a cable on the cut surface: an edge of the form with the seam ends that were inserted in it.
-import { PlanError } from "../problem.ts";
-import type { FormEdge } from "../records/foundForm.ts";
-import type { StripLayout } from "../records/stripLayout.ts";
+import { PlanError } from "../../problem.ts";
+import type { FormEdge } from "../../records/foundForm.ts";
+import type { StripLayout } from "../../records/stripLayout.ts";
 
 /**
  * Vertices of the cut surface along an edge of the form, from its first vertex; a closed edge repeats its first.

@@ -1,10 +1,10 @@
 // Nodes of the rig: those of the cut surface, far pins, mast heads and feet; and the adjusters that free an anchor.
-import { PlanError } from "../problem.ts";
-import type { FoundForm } from "../records/foundForm.ts";
-import type { RigPlace, Turnbuckle } from "../records/rig.ts";
-import { measureDistance, vertexAt } from "../surface/measures.ts";
-import type { Vec3 } from "../surface/surface.ts";
-import type { RigInput } from "./rigInput.ts";
+import { PlanError } from "../../problem.ts";
+import type { FoundForm } from "../../records/foundForm.ts";
+import type { RigPlace, Turnbuckle } from "../../records/rig.ts";
+import { measureDistance, vertexAt } from "../../surface/measures.ts";
+import type { Vec3 } from "../../surface/surface.ts";
+import type { RigInput } from "../rigInput.ts";
 
 /** An adjuster with its two nodes, before it is a link. */
 export interface PlacedAdjuster {

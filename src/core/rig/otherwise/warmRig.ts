@@ -1,6 +1,6 @@
 // The rig at another temperature: free strain on slack lengths and flat shapes. Anchors stay where they are.
-import type { Structure } from "../structure/structure.ts";
-import type { Rig } from "./buildRig.ts";
+import type { Structure } from "../../structure/structure.ts";
+import type { Rig } from "../build/buildRig.ts";
 
 /** Expansion of adjusters and masts, carbon steel, 1/K (EN 1993-1-11:2006 3.3, from memory). */
 export const steelExpansion = 12e-6;

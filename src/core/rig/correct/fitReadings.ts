@@ -2,12 +2,12 @@
 // by its error; lengths are believed to lie near the plan, so that what readings do not tell stays as planned.
 // Source: maximum of the posterior by Gauss–Newton, own; modes a roof hung from corners does not show in forces are told by places.
 import { Matrix, solve } from "ml-matrix";
-import { measureLink } from "../structure/elements.ts";
-import type { EquilibriumSolver } from "../structure/equilibrium.ts";
-import { measureResponse } from "../structure/influence.ts";
-import type { Rig } from "./buildRig.ts";
-import { findTautest } from "./readState.ts";
-import { type RigState, turnTo } from "./solveLengths.ts";
+import { measureLink } from "../../structure/elements.ts";
+import type { EquilibriumSolver } from "../../structure/equilibrium.ts";
+import { measureResponse } from "../../structure/influence.ts";
+import type { Rig } from "../build/buildRig.ts";
+import { findTautest } from "../stages/readState.ts";
+import { type RigState, turnTo } from "../stages/solveLengths.ts";
 import type { SortedReadings } from "./sortReadings.ts";
 
 /** How well things are known: one standard deviation. */

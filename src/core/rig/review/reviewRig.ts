@@ -1,12 +1,12 @@
 // What a person must know of the rig: targets missed, limits passed, travel too short, slack members, poor balance.
-import type { Check, Finding } from "../problem.ts";
-import type { FactsAsBuilt, FactsMove, FactsStage } from "../records/rig.ts";
-import { measureLink } from "../structure/elements.ts";
-import { measureDistance } from "../surface/measures.ts";
-import type { Rig } from "./buildRig.ts";
-import { readAdjusters } from "./readState.ts";
-import type { RigInput } from "./rigInput.ts";
-import { countModes, type RigState } from "./solveLengths.ts";
+import type { Check, Finding } from "../../problem.ts";
+import type { FactsAsBuilt, FactsMove, FactsStage } from "../../records/rig.ts";
+import { measureLink } from "../../structure/elements.ts";
+import { measureDistance } from "../../surface/measures.ts";
+import type { Rig } from "../build/buildRig.ts";
+import type { RigInput } from "../rigInput.ts";
+import { readAdjusters } from "../stages/readState.ts";
+import { countModes, type RigState } from "../stages/solveLengths.ts";
 
 /** Share of the target an adjuster may miss before and after moves are rounded. */
 const exactLimit = 0.005;

@@ -1,10 +1,10 @@
 // The stages: lengths that give each share of the targets, rounded to whole notches from the hanging lengths on, and solved again.
-import type { Check, StationContext } from "../problem.ts";
-import type { EquilibriumSolver } from "../structure/equilibrium.ts";
-import type { Rig } from "./buildRig.ts";
-import { linearise, measureNotch, readMembers, roundLengths, type Stage } from "./planMoves.ts";
+import type { Check, StationContext } from "../../problem.ts";
+import type { EquilibriumSolver } from "../../structure/equilibrium.ts";
+import type { Rig } from "../build/buildRig.ts";
+import { linearise, measureNotch, readMembers, roundLengths, type Stage } from "../moves/planMoves.ts";
+import type { RigInput } from "../rigInput.ts";
 import { listMembers } from "./readState.ts";
-import type { RigInput } from "./rigInput.ts";
 import { checkLengths, type RigState, solveLengths, turnTo } from "./solveLengths.ts";
 
 /** Way an adjuster is let out beyond its first stage so that the cloth can be hung slack, m (common practice). */

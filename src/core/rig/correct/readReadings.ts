@@ -1,6 +1,6 @@
 // The crew's readings: CSV with a header, one row a reading. Says which row is wrong and why. Keeps nothing and changes nothing.
-import { PlanError } from "../problem.ts";
-import type { Reading } from "../records/rig.ts";
+import { PlanError } from "../../problem.ts";
+import type { Reading } from "../../records/rig.ts";
 
 /** Columns as the job's contract names them. */
 export const readingColumns = [

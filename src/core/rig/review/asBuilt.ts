@@ -1,9 +1,9 @@
 // What the assembled roof really carries at its finished state, beside what was intended.
-import type { FactsAsBuilt } from "../records/rig.ts";
-import { buildTriangleRoom, measureTriangle } from "../structure/elements.ts";
-import type { Rig } from "./buildRig.ts";
-import { readForces } from "./readState.ts";
-import type { RigState } from "./solveLengths.ts";
+import type { FactsAsBuilt } from "../../records/rig.ts";
+import { buildTriangleRoom, measureTriangle } from "../../structure/elements.ts";
+import type { Rig } from "../build/buildRig.ts";
+import { readForces } from "../stages/readState.ts";
+import type { RigState } from "../stages/solveLengths.ts";
 
 /** As-built stress (kN/m, weighted by flat area), greatest way of a node from the form (m), forces (kN). */
 export function measureAsBuilt(rig: Rig, state: RigState): FactsAsBuilt {

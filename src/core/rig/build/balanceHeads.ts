@@ -1,6 +1,6 @@
 // Forces of masts and stays that balance the pulls at mast heads: what the job leaves open is found by non-negative least squares.
-import { solveNonNegative } from "../numeric/leastSquares.ts";
-import { PlanError } from "../problem.ts";
+import { solveNonNegative } from "../../numeric/leastSquares.ts";
+import { PlanError } from "../../problem.ts";
 
 /** Pull of the sail on a head, kN. */
 export interface HeadPull {

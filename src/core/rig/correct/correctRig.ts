@@ -1,18 +1,18 @@
 // From what the crew read to the turns that set it right: the state fitted to the readings, the fewest and smallest moves, each
 // played on the full structure, and a word on what the readings cannot tell or cannot all mean.
-import { type Finding, PlanError, type StationContext } from "../problem.ts";
-import type { Correction, CorrectionMove, Reading } from "../records/rig.ts";
-import { measureResponse } from "../structure/influence.ts";
-import { buildRig, type Rig } from "./buildRig.ts";
+import { type Finding, PlanError, type StationContext } from "../../problem.ts";
+import type { Correction, CorrectionMove, Reading } from "../../records/rig.ts";
+import { measureResponse } from "../../structure/influence.ts";
+import { buildRig, type Rig } from "../build/buildRig.ts";
+import { measureNotch, type Stage } from "../moves/planMoves.ts";
+import { growCloth, warmLengths } from "../otherwise/warmRig.ts";
+import type { RigInput } from "../rigInput.ts";
+import { findGreatest, readAdjusters, readCorners, readForces } from "../stages/readState.ts";
+import { type RigState, turnTo } from "../stages/solveLengths.ts";
+import { type SolvedRig, solveRig } from "../stages/solveRig.ts";
 import { chooseMoves } from "./chooseMoves.ts";
 import { fitReadings, type ReadingFit, type ReadingTrust, trustDefaults } from "./fitReadings.ts";
-import { measureNotch, type Stage } from "./planMoves.ts";
-import { findGreatest, readAdjusters, readCorners, readForces } from "./readState.ts";
-import type { RigInput } from "./rigInput.ts";
-import { type RigState, turnTo } from "./solveLengths.ts";
-import { type SolvedRig, solveRig } from "./solveRig.ts";
 import { type SortedReadings, sortReadings } from "./sortReadings.ts";
-import { growCloth, warmLengths } from "./warmRig.ts";
 
 /**
  * Windows that hold a roof: forces within a tenth, corners within 5 mm (site habit). Moves aim at part of them, for error; what

@@ -1,10 +1,10 @@
 // What a person must know of the states on the way: solves that did not come to rest, masts that lean, turnbuckles too coarse.
-import type { Check, Finding } from "../problem.ts";
-import { measureDistance, vertexAt } from "../surface/measures.ts";
-import type { Rig } from "./buildRig.ts";
-import { measureNotch } from "./planMoves.ts";
-import { readAdjusters } from "./readState.ts";
-import type { RigState } from "./solveLengths.ts";
+import type { Check, Finding } from "../../problem.ts";
+import { measureDistance, vertexAt } from "../../surface/measures.ts";
+import type { Rig } from "../build/buildRig.ts";
+import { measureNotch } from "../moves/planMoves.ts";
+import { readAdjusters } from "../stages/readState.ts";
+import type { RigState } from "../stages/solveLengths.ts";
 
 /** Way of a mast's head from its finished place, over the mast's length, that asks for a word with the engineer (own default). */
 export const leanLimit = 0.01;

@@ -1,11 +1,10 @@
 // From stage lengths to moves a hand can make: travel rounded to sixths of a turn, every step played on the full structure so
 // that the reading right after it is known.
-import type { FactsMove, FactsStage, RigDecision } from "../records/rig.ts";
-import { measureLink } from "../structure/elements.ts";
-import type { EquilibriumSolver } from "../structure/equilibrium.ts";
-import { measureInfluence } from "../structure/influence.ts";
-import type { Rig } from "./buildRig.ts";
-import type { LinearStage } from "./chooseOrder.ts";
+import type { FactsMove, FactsStage, RigDecision } from "../../records/rig.ts";
+import { measureLink } from "../../structure/elements.ts";
+import type { EquilibriumSolver } from "../../structure/equilibrium.ts";
+import { measureInfluence } from "../../structure/influence.ts";
+import type { Rig } from "../build/buildRig.ts";
 import {
   findGreatest,
   findTautest,
@@ -14,8 +13,9 @@ import {
   readAdjusters,
   readCorners,
   readForces,
-} from "./readState.ts";
-import { type RigState, solveState } from "./solveLengths.ts";
+} from "../stages/readState.ts";
+import { type RigState, solveState } from "../stages/solveLengths.ts";
+import type { LinearStage } from "./chooseOrder.ts";
 
 /** Parts of a full turn that a hand can set: the flats of a hexagonal body. */
 export const partsOfTurn = 6;

@@ -1,9 +1,9 @@
 // The cable list: forces, erected, slack and cut lengths, marks and stations. No size is ever chosen here.
 // Leaves out what terminals take off: the job does not know them, and the paper says so.
-import type { CableType, FactsCable } from "../records/rig.ts";
-import type { StripLayout } from "../records/stripLayout.ts";
-import { measureDistance, vertexAt } from "../surface/measures.ts";
-import type { RigCable } from "./buildRig.ts";
+import type { CableType, FactsCable } from "../../records/rig.ts";
+import type { StripLayout } from "../../records/stripLayout.ts";
+import { measureDistance, vertexAt } from "../../surface/measures.ts";
+import type { RigCable } from "../build/buildRig.ts";
 
 /** Share a cable that was not prestretched may grow for good: rope with steel core, normal load (trade note, read second hand). */
 export const permanentStretch = 0.0025;

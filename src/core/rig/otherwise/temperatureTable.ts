@@ -1,9 +1,9 @@
 // Forces of the finished rig when everything is warmer or colder than the reference: anchors stay where they are.
-import type { FactsTensioning } from "../records/rig.ts";
-import type { EquilibriumSolver } from "../structure/equilibrium.ts";
-import type { Rig } from "./buildRig.ts";
-import { readForces } from "./readState.ts";
-import { type RigState, solveState } from "./solveLengths.ts";
+import type { FactsTensioning } from "../../records/rig.ts";
+import type { EquilibriumSolver } from "../../structure/equilibrium.ts";
+import type { Rig } from "../build/buildRig.ts";
+import { readForces } from "../stages/readState.ts";
+import { type RigState, solveState } from "../stages/solveLengths.ts";
 import { type Expansion, growCloth, warmLengths } from "./warmRig.ts";
 
 /** Steps of the table from the reference temperature, K. */
