@@ -22,8 +22,8 @@ function buildRules() {
         pathNot: [
           "^src/core/(job|plan|papers|records)/",
           "^src/core/problem\\.ts$",
-          "^src/core/form/readObj\\.ts$",
-          "^src/core/form/readMeshJson\\.ts$",
+          "^src/core/form/reading/readObj\\.ts$",
+          "^src/core/form/reading/readMeshJson\\.ts$",
         ],
       },
     },

@@ -2,7 +2,7 @@
 import { readFileSync, writeFileSync } from "node:fs";
 import { loadCatalogues } from "../../src/cli/packageFiles.ts";
 import { readInput } from "../../src/cli/readInput.ts";
-import { buildSoundSurface, type SoundSurface } from "../../src/core/form/soundSurface.ts";
+import { buildSoundSurface, type SoundSurface } from "../../src/core/form/repair/soundSurface.ts";
 import { runPlan } from "../../src/core/plan/runPlan.ts";
 import type { Station } from "../../src/core/problem.ts";
 import { benchFlatten } from "./flattenCase.ts";

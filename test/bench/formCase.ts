@@ -4,7 +4,7 @@ import {
   buildForceDensitySystem,
   measureIsotropicDensities,
   stepForceDensity,
-} from "../../src/core/form/naturalForceDensity.ts";
+} from "../../src/core/form/settle/naturalForceDensity.ts";
 import type { Surface } from "../../src/core/surface/surface.ts";
 
 /** The saddle mesh of the peer; every quad split along the same diagonal, bumped up from the bilinear patch. */

@@ -1,5 +1,5 @@
 // A job with nothing decided, for the form tests; and how to look at what came back.
-import type { MeshParts } from "../../src/core/form/readObj.ts";
+import type { MeshParts } from "../../src/core/form/reading/readObj.ts";
 import type { FormJob } from "../../src/core/form/runForm.ts";
 import type { Finding } from "../../src/core/problem.ts";
 import type { MeshSource } from "../../src/core/records/job.ts";

@@ -1,6 +1,6 @@
 // Meshes with closed-form answers for the form tests, and the same mesh renumbered, moved or in another unit.
 import { readFileSync } from "node:fs";
-import { type MeshParts, readObj } from "../../src/core/form/readObj.ts";
+import { type MeshParts, readObj } from "../../src/core/form/reading/readObj.ts";
 import { buildRandom } from "../../src/core/numeric/random.ts";
 
 /** A mesh of test/fixtures/meshes. */

@@ -1,7 +1,7 @@
 import { existsSync, readFileSync } from "node:fs";
 import fc from "fast-check";
 import { expect, test } from "vitest";
-import { readObj } from "../../src/core/form/readObj.ts";
+import { readObj } from "../../src/core/form/reading/readObj.ts";
 import { type FormJob, runForm } from "../../src/core/form/runForm.ts";
 import type { FoundForm } from "../../src/core/records/foundForm.ts";
 import type { MeshSource } from "../../src/core/records/job.ts";

@@ -1,7 +1,7 @@
 // One form written in many ways: numbers, places, units and diagonals change, areas, forces and findings stay.
 import fc from "fast-check";
 import { expect, test } from "vitest";
-import type { MeshParts } from "../../src/core/form/readObj.ts";
+import type { MeshParts } from "../../src/core/form/reading/readObj.ts";
 import { type FormJob, runForm } from "../../src/core/form/runForm.ts";
 import type { MeshSource } from "../../src/core/records/job.ts";
 import { buildJob, listCodes, placeMesh } from "./formJob.ts";

@@ -7,7 +7,7 @@ import {
   measureDensities,
   measureIsotropicDensities,
   stepForceDensity,
-} from "../../src/core/form/naturalForceDensity.ts";
+} from "../../src/core/form/settle/naturalForceDensity.ts";
 import { measureArea } from "../../src/core/surface/measures.ts";
 import type { Surface } from "../../src/core/surface/surface.ts";
 

@@ -2,9 +2,9 @@
 // means recomputed there from the closed form. A mesh inscribed in a smooth surface is smaller by about (side/radius)²/8.
 import { existsSync, readFileSync } from "node:fs";
 import { describe, expect, test } from "vitest";
-import { readObj } from "../../src/core/form/readObj.ts";
+import { readObj } from "../../src/core/form/reading/readObj.ts";
 import { runForm } from "../../src/core/form/runForm.ts";
-import { type Settled, settleDefaults, settleForm } from "../../src/core/form/settleForm.ts";
+import { type Settled, settleDefaults, settleForm } from "../../src/core/form/settle/settleForm.ts";
 import { measureArea } from "../../src/core/surface/measures.ts";
 import type { Surface } from "../../src/core/surface/surface.ts";
 import { buildJob, placeMesh } from "../form/formJob.ts";

@@ -1,6 +1,6 @@
 import { readFileSync, writeFileSync } from "node:fs";
 import { describe, expect, it } from "vitest";
-import { readObj } from "../../src/core/form/readObj.ts";
+import { readObj } from "../../src/core/form/reading/readObj.ts";
 import { runForm } from "../../src/core/form/runForm.ts";
 import { readJob } from "../../src/core/job/readJob.ts";
 import { catalogues, readTemplate } from "../job/catalogueFiles.ts";

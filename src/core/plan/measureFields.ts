@@ -1,8 +1,8 @@
 // What a view colours the surface by: stress of every triangle as patterned and as built, balance and curvature of every
 // vertex of the form. Worked out again from the facts alone; judges nothing.
-import { isCable, measureStations } from "../form/cablePull.ts";
-import { measureResidual, sumForces } from "../form/measureBalance.ts";
-import { measureMembraneForces } from "../form/membraneForces.ts";
+import { isCable, measureStations } from "../form/balance/cablePull.ts";
+import { measureResidual, sumForces } from "../form/balance/measureBalance.ts";
+import { measureMembraneForces } from "../form/balance/membraneForces.ts";
 import type { Facts, FactsForm, Vec2 } from "../records/facts.ts";
 import type { FormEdge } from "../records/foundForm.ts";
 import { buildErectedMetric, buildStiffness, type ClothStiffness, measureTriangleStrain } from "../structure/cloth.ts";

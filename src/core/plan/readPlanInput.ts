@@ -1,7 +1,7 @@
 // From bytes and a parsed job to what the plan starts from: the job, its mesh, its revision, what was noted on the way.
 // Finds no files: where the mesh lies is the caller's business.
-import { readMeshJson } from "../form/readMeshJson.ts";
-import { createObjReader, type MeshParts } from "../form/readObj.ts";
+import { readMeshJson } from "../form/reading/readMeshJson.ts";
+import { createObjReader, type MeshParts } from "../form/reading/readObj.ts";
 import type { Catalogues } from "../job/catalogues.ts";
 import { readJob } from "../job/readJob.ts";
 import { measureRevision } from "../job/revision.ts";

@@ -2,7 +2,7 @@
 // formulas of facts.md ("Strain and stress") with a code of its own. Needs ../shared, skipped where absent.
 import { existsSync, readFileSync } from "node:fs";
 import { expect, test } from "vitest";
-import { createObjReader } from "../../../src/core/form/readObj.ts";
+import { createObjReader } from "../../../src/core/form/reading/readObj.ts";
 import { runForm } from "../../../src/core/form/runForm.ts";
 import { runPanels } from "../../../src/core/panels/runPanels.ts";
 import type { CutPanel } from "../../../src/core/records/flatPanel.ts";
