@@ -2,9 +2,9 @@ import { unzipSync } from "fflate";
 import { expect, test } from "vitest";
 import { choosePapers, DEFAULT_PAPERS, PAPER_CHOICES } from "../../src/core/papers/choosePapers.ts";
 import { writePapers } from "../../src/core/papers/writePapers.ts";
-import { fonts } from "./madePapers.ts";
-import { sampleFacts } from "./sampleFacts.ts";
-import { withRig } from "./sampleRig.ts";
+import { fonts } from "./made/madePapers.ts";
+import { sampleFacts } from "./made/sampleFacts.ts";
+import { withRig } from "./made/sampleRig.ts";
 
 test("words of a list name groups, in one order, each once; all is everything", () => {
   expect(choosePapers(" rig, Roll-Sheets,rig ")).toEqual(["roll-sheets", "rig"]);

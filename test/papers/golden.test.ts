@@ -1,11 +1,11 @@
 // Small drawings kept as files: what a reader sees of a change in the writers is the difference of two short files.
 import { existsSync, readFileSync, writeFileSync } from "node:fs";
 import { expect, test } from "vitest";
-import { writeDxfR12 } from "../../src/core/papers/dxfR12.ts";
-import { rollDrawing } from "../../src/core/papers/rollDrawing.ts";
-import { writeSvg } from "../../src/core/papers/svg.ts";
+import { writeDxfR12 } from "../../src/core/papers/cutFiles/dxfR12.ts";
+import { writeSvg } from "../../src/core/papers/cutFiles/svg.ts";
+import { rollDrawing } from "../../src/core/papers/drawing/rollDrawing.ts";
 import type { Facts } from "../../src/core/records/facts.ts";
-import { sampleFacts } from "./sampleFacts.ts";
+import { sampleFacts } from "./made/sampleFacts.ts";
 
 /** One roll with two patches, the second turned round. */
 function smallFacts(): Facts {

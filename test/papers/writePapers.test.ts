@@ -4,11 +4,11 @@ import { PDFDocument } from "pdf-lib";
 import { describe, expect, test } from "vitest";
 import { writeFindingSheets } from "../../src/core/papers/pdf/findingSheets.ts";
 import type { Facts } from "../../src/core/records/facts.ts";
-import { crowded } from "./crowdedFacts.ts";
-import { fonts, missing, papersOf, reason, saved, shared, sizeOf, textOf, wordsOf } from "./madePapers.ts";
-import { readCsv } from "./readCsv.ts";
-import { HOSTILE, STRANGE, sampleFacts } from "./sampleFacts.ts";
-import { withRig } from "./sampleRig.ts";
+import { crowded } from "./made/crowdedFacts.ts";
+import { fonts, missing, papersOf, reason, saved, shared, sizeOf, textOf, wordsOf } from "./made/madePapers.ts";
+import { HOSTILE, STRANGE, sampleFacts } from "./made/sampleFacts.ts";
+import { withRig } from "./made/sampleRig.ts";
+import { readCsv } from "./tables/readCsv.ts";
 
 const SHEETS = { A4: [297, 210], A3: [420, 297], Letter: [279.4, 215.9], Tabloid: [431.8, 279.4] } as const;
 

@@ -3,18 +3,18 @@
 // only when such a paper is really written.
 import type { Facts } from "../records/facts.ts";
 import { DEFAULT_PAPERS, type PaperChoice } from "./choosePapers.ts";
-import type { Drawing } from "./drawing.ts";
-import { writeDxf2000 } from "./dxf2000.ts";
-import { writeDxfR12 } from "./dxfR12.ts";
+import { writeDxf2000 } from "./cutFiles/dxf2000.ts";
+import { writeDxfR12 } from "./cutFiles/dxfR12.ts";
+import { writeSvg } from "./cutFiles/svg.ts";
+import type { Drawing } from "./drawing/drawing.ts";
+import { tableBites } from "./drawing/placedCloth.ts";
+import { panelDrawing, rollDrawing } from "./drawing/rollDrawing.ts";
 import { fileNames } from "./fileNames.ts";
 import type { PaperFile } from "./paperFile.ts";
-import type { FontFiles } from "./pdf/book.ts";
-import { tableBites } from "./placedCloth.ts";
-import { rigFacts } from "./rigReadings.ts";
-import { cableTable, hardwareTable, moveTable } from "./rigTables.ts";
-import { panelDrawing, rollDrawing } from "./rollDrawing.ts";
-import { writeSvg } from "./svg.ts";
-import { controlTable, panelTable, rollTable, seamTable } from "./tables.ts";
+import type { FontFiles } from "./pdf/layout/book.ts";
+import { controlTable, panelTable, rollTable, seamTable } from "./tables/clothTables.ts";
+import { rigFacts } from "./tables/rigReadings.ts";
+import { cableTable, hardwareTable, moveTable } from "./tables/rigTables.ts";
 
 type Wants = (choice: PaperChoice) => boolean;
 
@@ -66,19 +66,19 @@ async function sheets(facts: Facts, fonts: FontFiles, wants: Wants): Promise<Pap
   const files: PaperFile[] = [];
   const rig = rigFacts(facts);
   if (wants("roll-sheets") && (facts.rolls ?? []).length > 0) {
-    const { writeRollSheets } = await import("./pdf/rollSheets.ts");
+    const { writeRollSheets } = await import("./pdf/cloth/rollSheets.ts");
     files.push({ path: "roll-sheets.pdf", bytes: await writeRollSheets(facts, fonts) });
   }
   if (wants("panel-cards") && (facts.panels ?? []).length > 0) {
-    const { writePanelCards } = await import("./pdf/panelCards.ts");
+    const { writePanelCards } = await import("./pdf/cloth/panelCards.ts");
     files.push({ path: "panel-cards.pdf", bytes: await writePanelCards(facts, fonts) });
   }
   if (wants("rig") && ((facts.cables ?? []).length > 0 || rig)) {
-    const { writeCableSheets } = await import("./pdf/cableSheets.ts");
+    const { writeCableSheets } = await import("./pdf/rig/cableSheets.ts");
     files.push({ path: "cables.pdf", bytes: await writeCableSheets(facts, fonts) });
   }
   if (wants("rig") && rig) {
-    const { writeTensioningSchedule } = await import("./pdf/tensioningSchedule.ts");
+    const { writeTensioningSchedule } = await import("./pdf/rig/tensioningSchedule.ts");
     files.push({ path: "tensioning-schedule.pdf", bytes: await writeTensioningSchedule(rig, fonts) });
   }
   if (wants("findings")) {

@@ -2,12 +2,12 @@
 // written whatever the plan came to.
 import type { Check, Finding, FindingLevel } from "../../problem.ts";
 import type { Facts } from "../../records/facts.ts";
-import { cautionsOf } from "../cautions.ts";
-import { ENGINEER_SUPPLIES } from "../cautionTexts.ts";
-import { decimal } from "../decimal.ts";
-import { asMetric, closeBook, type FontFiles, openBook } from "./book.ts";
-import { flowCautionsInPlace } from "./cautionBlock.ts";
-import { drawText, MM, PITCH, SMALL, textWidth } from "./pen.ts";
+import { cautionsOf } from "../words/cautions.ts";
+import { ENGINEER_SUPPLIES } from "../words/cautionTexts.ts";
+import { decimal } from "../words/decimal.ts";
+import { asMetric, closeBook, type FontFiles, openBook } from "./layout/book.ts";
+import { flowCautionsInPlace } from "./layout/cautionBlock.ts";
+import { drawText, MM, PITCH, SMALL, textWidth } from "./layout/pen.ts";
 import {
   type Column,
   type Flow,
@@ -17,7 +17,7 @@ import {
   flowTextInPlace,
   needInPlace,
   openFlow,
-} from "./table.ts";
+} from "./layout/table.ts";
 
 const FINDING_COLUMNS: readonly Column[] = [
   { head: ["Code", "and station"], width: 42, bold: true },

@@ -1,8 +1,8 @@
 // The index sheet: which papers belong to this issue, what each is, for whom, and which of them may be built from.
 import type { Facts } from "../../records/facts.ts";
-import { holdReason, type PaperKind, stampOf } from "../stamp.ts";
-import { closeBook, type FontFiles, openBook } from "./book.ts";
-import { type Column, flowGapInPlace, flowTableInPlace, flowTextInPlace, openFlow } from "./table.ts";
+import { holdReason, type PaperKind, stampOf } from "../words/stamp.ts";
+import { closeBook, type FontFiles, openBook } from "./layout/book.ts";
+import { type Column, flowGapInPlace, flowTableInPlace, flowTextInPlace, openFlow } from "./layout/table.ts";
 
 interface Entry {
   /** Paths it stands for. */

@@ -1,0 +1,89 @@
+// After the map: the order of welding with what each piece weighs, what is lifted, and how the roof is folded so that it unfolds in the
+// order in which its corners are wanted.
+import type { Facts } from "../../../records/facts.ts";
+import { allMoves, rigFacts } from "../../tables/rigReadings.ts";
+import { orderWelds } from "../../tables/weldOrder.ts";
+import { cautionsNamed } from "../../words/cautions.ts";
+import { paperUnits } from "../../words/paperUnits.ts";
+import type { Book } from "../layout/book.ts";
+import { flowCautionsInPlace } from "../layout/cautionBlock.ts";
+import {
+  type Column,
+  flowGapInPlace,
+  flowHeadingInPlace,
+  flowTableInPlace,
+  flowTextInPlace,
+  openFlow,
+} from "../layout/table.ts";
+
+const LISTED = 12;
+
+function listed(names: readonly string[]): string {
+  return names.length > LISTED
+    ? `${names.slice(0, LISTED).join(", ")} and ${names.length - LISTED} more`
+    : names.join(", ");
+}
+
+/** Corners in the order they are moved, where there is a rig; else the anchors as the plan lists them. */
+function cornersOf(facts: Facts): string[] {
+  const rig = rigFacts(facts);
+  if (!rig) return (facts.form?.anchors ?? []).filter((a) => a.isolated).map((a) => a.id);
+  const order = [...new Set(allMoves(rig.tensioning).map((m) => m.adjuster))];
+  return order.map((id) => `${rig.adjusters.find((a) => a.id === id)?.anchor ?? "?"} (${id})`);
+}
+
+/** Order of welding, weights, folding. */
+export function flowAssemblyOrder(book: Book): void {
+  const { facts } = book;
+  const { span, mass } = paperUnits(facts.job);
+  const { steps, pieces } = orderWelds(facts);
+  const weight = (kg: number | null) => (kg === null ? "not known" : mass.whole(kg));
+  const flow = openFlow(book, "Order of welding, weights, folding");
+  const columns: readonly Column[] = [
+    { head: ["Order"], width: 16, bold: true },
+    { head: ["Weld"], width: 34, bold: true },
+    { head: ["Seams"], width: 40 },
+    { head: ["Joins panels"], width: 64 },
+    { head: ["Length,", span.unit], width: 24, align: "end" },
+    { head: ["Panels in", "the piece"], width: 24, align: "end" },
+    { head: ["It weighs", "about"], width: 30, align: "end" },
+    { head: ["Welded by,", "date"], width: 36 },
+  ];
+  const rows = steps.map((s, i) => [
+    `${i + 1}`,
+    s.weld,
+    listed(s.seams),
+    `${listed(s.panels)}${s.closes ? " (closes a ring)" : ""}`,
+    span.of(s.length),
+    `${s.joined}`,
+    weight(s.mass),
+    "",
+  ]);
+  if (rows.length > 0) {
+    const words =
+      "Always the weld next whose joined piece is lightest, so that little is dragged: a proposal, the floor may choose another. Weights are cloth as cut, without patches, cables and fittings.";
+    flowTextInPlace(flow, words);
+    flowGapInPlace(flow, 1.5);
+    flowTableInPlace(flow, columns, rows);
+  }
+  flowHeadingInPlace(flow, "To be lifted");
+  pieces.forEach((p, i) => {
+    flowTextInPlace(
+      flow,
+      `Piece ${i + 1} of ${pieces.length}: ${p.panels.length} panels, about ${weight(p.mass)} of cloth: ${listed(p.panels)}.`,
+    );
+  });
+  flowHeadingInPlace(
+    flow,
+    "Folding and unfolding (common practice; settle it with the crew before the bundle is made)",
+  );
+  const corners = cornersOf(facts);
+  const order =
+    corners.length > 0 ? ` Corners leave the bundle in this order, the first on top: ${listed(corners)}.` : "";
+  flowTextInPlace(
+    flow,
+    `Outer face inward. Zigzag across the strips from both long sides to the middle, then from both ends, each fold padded; every corner with its name on a tag that shows.${order} Draw on the bundle which way it unfolds and which corner of the site it is laid to.`,
+  );
+  flowGapInPlace(flow, 3);
+  flowCautionsInPlace(flow, cautionsNamed("suspended-load", "heavy-pack", "glass-folds"));
+}

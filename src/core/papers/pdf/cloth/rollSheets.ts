@@ -1,0 +1,196 @@
+// Roll sheets: the cloth list for the store and the cautions, which are read before the first cut; then each roll as it is laid, its
+// pieces numbered in the order of cutting, a list to tick.
+import type { Facts, Vec2 } from "../../../records/facts.ts";
+import type { NestedRoll } from "../../../records/roll.ts";
+import { insidePoint } from "../../drawing/flatGeometry.ts";
+import { type PlacedCloth, placedInOrder, tableBites } from "../../drawing/placedCloth.ts";
+import { cautionsOf } from "../../words/cautions.ts";
+import { decimal } from "../../words/decimal.ts";
+import { paperUnits } from "../../words/paperUnits.ts";
+import { addSheet, type Book, closeBook, drawParagraph, type FontFiles, openBook, type Sheet } from "../layout/book.ts";
+import { flowCautionsInPlace } from "../layout/cautionBlock.ts";
+import { type LabelField, setNameInPlace } from "../layout/labelField.ts";
+import { type BoxArea, drawBox, drawClipped, drawRun, drawText, SMALL } from "../layout/pen.ts";
+import {
+  type Column,
+  drawTable,
+  type Flow,
+  flowGapInPlace,
+  flowTableInPlace,
+  flowTextInPlace,
+  openFlow,
+  tableHeight,
+} from "../layout/table.ts";
+
+/** Most rows a long roll is broken into, and the gap between them, mm. */
+const MOST_ROWS = 6;
+const ROW_GAP = 9;
+/** Size of tables, pt. */
+const TABLE = 10;
+/** Share of the sheet a list of pieces may take under the figure. */
+const BELOW = 0.45;
+
+/** The bytes of roll-sheets.pdf. */
+export async function writeRollSheets(facts: Facts, fonts: FontFiles): Promise<Uint8Array> {
+  const book = await openBook(facts, fonts, "roll sheets", "cloth");
+  flowClothList(book);
+  for (const roll of facts.rolls ?? []) drawRoll(book, roll);
+  return closeBook(book);
+}
+
+function drawRoll(book: Book, roll: NestedRoll): void {
+  const { facts } = book;
+  const { flat } = paperUnits(facts.job);
+  const sheet = addSheet(book, `Roll ${roll.id}`);
+  const cloth = placedInOrder(facts, roll);
+  const bites = tableBites(facts, roll);
+  const table =
+    bites.length > 0 ? ` Cut in ${bites.length} table lengths of ${flat.whole(roll.bite ?? 0)} at most.` : "";
+  const words = [
+    `Fabric ${roll.fabric}, batch ${roll.batch ?? "not given"}. Width ${flat.whole(roll.width)}, usable ${flat.whole(roll.usableWidth)}, used ${flat.whole(roll.used)} of ${flat.whole(roll.length)}: ${decimal(100 * roll.utilisation, 0)} % of the cloth used. ${cloth.length} pieces, at least ${flat.whole(roll.gap)} apart.${table}`,
+    "OUTER FACE UP, warp along the roll, start of the roll at the left. Numbers in the order of cutting. Crossed: flaw. The cut file rules, this figure does not: no measure is taken from it.",
+  ];
+  let y = sheet.top;
+  for (const text of words) y = drawParagraph(book, sheet, text, y);
+  // A short list of pieces stands below the figure, a long one on sheets of its own.
+  const list = pieceTable(book, cloth);
+  const height = tableHeight(list.columns, list.rows.length, TABLE);
+  const below = height < BELOW * (y - sheet.bottom) ? height + 3 : 0;
+  const width = sheet.right - sheet.left;
+  const box = { x: sheet.left, y: sheet.bottom + below, width, height: y - sheet.bottom - below - 3 };
+  drawRows(book, sheet, roll, cloth, box);
+  if (below > 0) {
+    drawTable(book, sheet, list.columns, list.rows, { left: sheet.left, width, y: sheet.bottom + height, size: TABLE });
+  } else {
+    const flow = openFlow(book, `Roll ${roll.id}: pieces in the order of cutting`);
+    flowTableInPlace(flow, list.columns, list.rows, { size: TABLE });
+  }
+}
+
+/** The roll in as many rows as give the greatest scale. */
+function drawRows(book: Book, sheet: Sheet, roll: NestedRoll, cloth: readonly PlacedCloth[], box: BoxArea): void {
+  const used = Math.max(roll.used, 1);
+  const scaleOf = (n: number) => Math.min((n * box.width) / used, (box.height / n - ROW_GAP) / roll.width);
+  let rows = 1;
+  for (let n = 2; n <= MOST_ROWS; n++) if (scaleOf(n) > scaleOf(rows)) rows = n;
+  const scale = scaleOf(rows);
+  const length = used / rows;
+  const selvedge = (roll.width - roll.usableWidth) / 2;
+  const { flat } = paperUnits(book.facts.job);
+  for (let k = 0; k < rows; k++) {
+    const from = k * length;
+    const base = box.y + box.height - (k + 1) * (scale * roll.width + ROW_GAP) + 4;
+    const place = ([x, y]: Vec2): Vec2 => [box.x + scale * (x - from), base + scale * (y + selvedge)];
+    const frame = { x: box.x, y: base, width: scale * length, height: scale * roll.width };
+    drawBox(sheet.page, frame, { width: 0.3 });
+    const marks: [number, "start" | "end"][] = [
+      [from, "start"],
+      [from + length, "end"],
+    ];
+    for (const [x, align] of marks) {
+      const at = { x: align === "start" ? frame.x : frame.x + frame.width, y: base - 4 };
+      drawText(sheet.page, flat.whole(x), { ...at, size: SMALL, font: book.regular, align });
+    }
+    const here = cloth.map((c, n) => ({ ...c, n })).filter((c) => c.end > from && c.start < from + length);
+    drawClipped(sheet.page, frame, () => {
+      for (const flaw of roll.flaws) {
+        const [a, b] = [place([flaw.x, flaw.y]), place([flaw.x + flaw.length, flaw.y + flaw.width])];
+        drawBox(sheet.page, { x: a[0], y: a[1], width: b[0] - a[0], height: b[1] - a[1] }, { width: 0.25 });
+        drawRun(sheet.page, [a, b], { width: 0.25 });
+      }
+      for (const c of here) drawRun(sheet.page, c.cut.map(place), { width: 0.3, closed: true });
+    });
+    const field: LabelField = { within: frame, outlines: [], taken: [] };
+    for (const c of here) {
+      const middle = insidePoint(c.cut).at;
+      // A piece cut by the end of a row is named where its middle lies.
+      if (middle[0] < from || middle[0] >= from + length) continue;
+      const at = place(middle);
+      const spots = [0, 10, -10, 20, -20, 32, -32].map((d): Vec2 => [at[0] + d, at[1]]);
+      const own = { ...field, outlines: [c.cut.map(place)] };
+      if (!setNameInPlace(book, sheet, own, `${c.n + 1}: ${c.p.panel}`, spots))
+        setNameInPlace(book, sheet, { ...field, outlines: [] }, `${c.n + 1}`, spots);
+    }
+  }
+}
+
+function pieceTable(book: Book, cloth: readonly PlacedCloth[]): { columns: readonly Column[]; rows: string[][] } {
+  const { flat, area } = paperUnits(book.facts.job);
+  // Feet, inches and sixteenths take more than millimetres; what is left goes to the words.
+  const place = book.facts.job.units === "imperial" ? 35 : 26;
+  const columns: readonly Column[] = [
+    { head: ["No."], width: 14, bold: true },
+    { head: ["Piece"], width: 46, bold: true },
+    { head: ["What"], width: 100 - 2 * place },
+    { head: ["From,", flat.unit], width: place, align: "end" },
+    { head: ["To,", flat.unit], width: place, align: "end" },
+    { head: ["Turned"], width: 20, align: "end" },
+    { head: ["Cut area,", area.unit], width: 24, align: "end" },
+    { head: ["Cut"], width: 15 },
+    { head: ["Marked"], width: 22 },
+    { head: ["By, date"], width: 30 },
+  ];
+  const rows = cloth.map((c, n) => [
+    `${n + 1}`,
+    c.p.panel,
+    c.panel ? "panel" : `${c.piece?.kind ?? ""} for ${c.piece?.for ?? ""}`,
+    flat.of(c.start),
+    flat.of(c.end),
+    `${c.p.rotation}°`,
+    area.of(Math.abs(ringArea(c.cut)) / 1e6),
+    "",
+    "",
+    "",
+  ]);
+  return { columns, rows };
+}
+
+function ringArea(ring: readonly Vec2[]): number {
+  return ring.reduce((sum, p, i) => {
+    const q = ring[(i + 1) % ring.length];
+    return sum + (p[0] * q[1] - q[0] * p[1]) / 2;
+  }, 0);
+}
+
+/** What the store lays out: every roll, then what each fabric comes to. */
+function flowClothList(book: Book): void {
+  const { facts } = book;
+  const { span, flat, area, mass } = paperUnits(facts.job);
+  const rolls = facts.rolls ?? [];
+  const flow: Flow = openFlow(book, "Cloth list");
+  const columns: readonly Column[] = [
+    { head: ["Roll"], width: 36, bold: true },
+    { head: ["Fabric"], width: 46 },
+    { head: ["Batch"], width: 34 },
+    { head: ["Width,", flat.unit], width: 33, align: "end" },
+    { head: ["Used,", span.unit], width: 36, align: "end", bold: true },
+    { head: ["On the roll,", span.unit], width: 36, align: "end" },
+    { head: ["Pieces"], width: 22, align: "end" },
+    { head: ["Cloth", "used"], width: 20, align: "end" },
+    { head: ["Given out"], width: 36 },
+  ];
+  const rows = rolls.map((r) => [
+    r.id,
+    r.fabric,
+    r.batch ?? "not given",
+    flat.of(r.width),
+    span.of(r.used / 1000),
+    span.of(r.length / 1000),
+    `${r.placements.length}`,
+    `${decimal(100 * r.utilisation, 0)} %`,
+    "",
+  ]);
+  flowTableInPlace(flow, columns, rows, { size: TABLE });
+  flowGapInPlace(flow, 4);
+  for (const fabric of [...new Set(rolls.map((r) => r.fabric))]) {
+    const own = rolls.filter((r) => r.fabric === fabric);
+    const cloth = own.reduce((s, r) => s + r.used * r.width, 0) / 1e6;
+    const weight = facts.fabrics[fabric]?.mass;
+    const length = own.reduce((s, r) => s + r.used, 0) / 1000;
+    const kilos = weight === undefined ? "" : `, ${mass.whole(weight * cloth)}`;
+    const words = `${fabric}: ${span.whole(length)} of cloth, ${area.whole(cloth)}${kilos}, from ${own.length} ${own.length === 1 ? "roll" : "rolls"}. Leader, trim at the start, test pieces and waste of the table come on top.`;
+    flowTextInPlace(flow, words, { size: TABLE });
+  }
+  flowGapInPlace(flow, 4);
+  flowCautionsInPlace(flow, cautionsOf("rolls"));
+}

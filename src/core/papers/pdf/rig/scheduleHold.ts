@@ -1,0 +1,112 @@
+// The hold point at the end of a stage: forces of all members and distances between corners, read, compared and signed before
+// anyone goes on.
+import type { FactsStage } from "../../../records/rig.ts";
+import { cornerDistances, holdReadings, type RigFacts } from "../../tables/rigReadings.ts";
+import { paperUnits } from "../../words/paperUnits.ts";
+import { drawBox, drawRun, drawText, LARGE } from "../layout/pen.ts";
+import {
+  type Column,
+  drawTable,
+  type Flow,
+  flowGapInPlace,
+  flowHalvesInPlace,
+  flowHeadingInPlace,
+  flowTextInPlace,
+  needInPlace,
+  tableHeight,
+} from "../layout/table.ts";
+import { BODY } from "./scheduleCover.ts";
+
+const SIGN_HEIGHT = 24;
+/** Heading and words, mm. */
+const HEAD = 22;
+
+interface Table {
+  columns: readonly Column[];
+  rows: string[][];
+}
+
+function forceTable(rig: RigFacts, stage: FactsStage): Table {
+  const { force } = paperUnits(rig.facts.job);
+  const columns: Column[] = [
+    { head: ["", "Member"], width: 44, bold: true },
+    { head: ["Planned", force.unit], width: 25, align: "end", bold: true },
+    { head: ["Window", force.unit], width: 36, align: "end" },
+    { head: ["Read", force.unit], width: 25 },
+  ];
+  const rows = holdReadings(rig, stage).map((r) => [
+    r.id,
+    force.of(r.planned),
+    `${force.of(r.low)} – ${force.of(r.high)}`,
+    "",
+  ]);
+  return { columns, rows };
+}
+
+function cornerTable(rig: RigFacts, stage: FactsStage): Table {
+  const { span } = paperUnits(rig.facts.job);
+  const distances = cornerDistances(rig, stage);
+  const planned = distances.some((d) => d.atStage !== null);
+  const columns: Column[] = [
+    { head: ["Between near", "pins of"], width: 44, bold: true },
+    ...(planned ? [{ head: ["Planned", span.unit], width: 27, align: "end" as const, bold: true }] : []),
+    { head: ["Finished", span.unit], width: 27, align: "end" },
+    { head: ["Measured", span.unit], width: 27 },
+  ];
+  const rows = distances.map((d) => [
+    `${d.from} – ${d.to}`,
+    ...(planned ? [d.atStage === null ? "–" : span.of(d.atStage)] : []),
+    span.of(d.finished),
+    "",
+  ]);
+  return { columns, rows };
+}
+
+/** The hold point of stage k: tables side by side where a sheet holds them so, else each in two halves. */
+export function flowHoldInPlace(flow: Flow, rig: RigFacts, stage: FactsStage, k: number): void {
+  const last = k === rig.tensioning.stages.length - 1;
+  const forces = forceTable(rig, stage);
+  const corners = cornerTable(rig, stage);
+  const heights = [forces, corners].map((t) => tableHeight(t.columns, t.rows.length, LARGE));
+  const halves = [forces, corners].map((t) => tableHeight(t.columns, Math.ceil(t.rows.length / 2), LARGE));
+  const whole = flow.sheet.top - flow.sheet.bottom;
+  const beside = HEAD + Math.max(...heights) + SIGN_HEIGHT <= whole;
+  const wanted = HEAD + (beside ? Math.max(...heights) : halves[0] + halves[1] + 3) + SIGN_HEIGHT;
+  if (wanted > flow.y - flow.sheet.bottom) needInPlace(flow, Infinity);
+  const words = `Read all members after half an hour, compare with the window (temperature: see the table of temperatures), measure the corners. ${last ? "Lock both ends of every turnbuckle, mark them with paint." : "Nothing of the next stage is turned before this is signed."} A cable inside its pocket cannot be read: leave it blank, the adjusters decide.`;
+  flowHeadingInPlace(flow, `HOLD POINT ${k + 1}`);
+  flowTextInPlace(flow, words, { size: BODY });
+  flowGapInPlace(flow, 1.5);
+  if (beside) {
+    const width = flow.sheet.right - flow.sheet.left;
+    const area = { left: flow.sheet.left, width: 0.54 * width, y: flow.y, size: LARGE };
+    drawTable(flow.book, flow.sheet, forces.columns, forces.rows, area);
+    const right = { ...area, left: flow.sheet.left + 0.56 * width, width: 0.44 * width };
+    if (corners.rows.length > 0) drawTable(flow.book, flow.sheet, corners.columns, corners.rows, right);
+    flow.y -= Math.max(...heights);
+  } else {
+    flowHalvesInPlace(flow, forces.columns, forces.rows, { size: LARGE });
+    flowGapInPlace(flow, 3);
+    flowHalvesInPlace(flow, corners.columns, corners.rows, { size: LARGE });
+  }
+  signInPlace(flow, last ? "Finished state accepted" : "Released for the next stage");
+}
+
+/** A framed row to sign. */
+function signInPlace(flow: Flow, what: string): void {
+  needInPlace(flow, SIGN_HEIGHT);
+  const { page, left, right } = flow.sheet;
+  const { regular, bold } = flow.book;
+  const top = flow.y - 3;
+  drawBox(page, { x: left, y: top - 18, width: right - left, height: 18 }, { width: 0.6 });
+  drawText(page, what, { x: left + 2, y: top - 6, size: LARGE, font: bold });
+  const fields = ["Wind", "Cloth temp.", "Time", "Name", "Signature"];
+  const width = (right - left - 4) / fields.length;
+  fields.forEach((field, i) => {
+    const x = left + 2 + i * width;
+    drawText(page, field, { x, y: top - 15, size: BODY, font: regular });
+    const line = (dx: number): [number, number] => [x + dx, top - 15.6];
+    drawRun(page, [line(24), line(width - 3)], { width: 0.2 });
+  });
+  flowGapInPlace(flow, SIGN_HEIGHT);
+}

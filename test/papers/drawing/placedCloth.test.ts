@@ -1,0 +1,56 @@
+import { expect, test } from "vitest";
+import { placedInOrder, tableBites } from "../../../src/core/papers/drawing/placedCloth.ts";
+import { rollDrawing } from "../../../src/core/papers/drawing/rollDrawing.ts";
+import type { Facts, Vec2 } from "../../../src/core/records/facts.ts";
+import { sampleFacts } from "../made/sampleFacts.ts";
+
+const square: Vec2[] = [
+  [0, 0],
+  [1000, 0],
+  [1000, 500],
+  [0, 500],
+];
+
+/** A roll of squares at the given places along it. */
+function facts(starts: number[], bite: number | null): Facts {
+  const sample = sampleFacts({ stop: false });
+  const pieces = starts.map((_, i) => ({ ...sample.pieces![0]!, id: `C${i + 1}`, cut: square }));
+  const placements = starts.map((x, i) => ({ panel: `C${i + 1}`, rotation: 0 as const, x, y: 600 * (i % 2) }));
+  const flaws = [{ x: 2900, y: 0, length: 300, width: 50 }];
+  return {
+    ...sample,
+    pieces,
+    rolls: [{ ...sample.rolls![0]!, used: Math.max(...starts) + 1000, placements, flaws, bite }],
+  };
+}
+
+test("every piece is cut in just one table length, whole, in the order of the roll", () => {
+  const f = facts([20, 500, 1100, 1700, 2200, 3000], 2000);
+  const roll = f.rolls![0]!;
+  const bites = tableBites(f, roll);
+  const named = bites.map((b) => b.roll.placements.map((p) => p.panel));
+  expect(named).toEqual([
+    ["C1", "C2"],
+    ["C3", "C4"],
+    ["C5", "C6"],
+  ]);
+  for (const b of bites) {
+    for (const c of placedInOrder(f, b.roll)) {
+      expect(c.start).toBeGreaterThanOrEqual(0);
+      expect(c.end).toBeLessThanOrEqual(2000);
+    }
+  }
+  // The second begins 10 mm before its first piece; the flaw from 2900 to 3200 lies 1810 mm on.
+  expect(bites[1]!.words[0]).toContain("TABLE LENGTH 2 OF 3: X = 0 IS 1090 MM");
+  expect(bites[1]!.roll.flaws[0]!.x).toBeCloseTo(1810, 9);
+  const drawn = rollDrawing(f, bites[1]!.roll, bites[1]!.words);
+  expect(drawn.strokes.filter((s) => s.layer === "cut")).toHaveLength(2);
+  expect(drawn.labels.some((l) => l.text.startsWith("TABLE LENGTH 2"))).toBe(true);
+});
+
+test("no bite, or one the roll fits in, needs no table lengths; a piece too long gets one of its own", () => {
+  expect(tableBites(facts([0, 1100], null), facts([0, 1100], null).rolls![0]!)).toEqual([]);
+  expect(tableBites(facts([0, 1100], 5000), facts([0, 1100], 5000).rolls![0]!)).toEqual([]);
+  const f = facts([0, 1100], 800);
+  expect(tableBites(f, f.rolls![0]!).map((b) => b.roll.placements.length)).toEqual([1, 1]);
+});
