@@ -5,6 +5,7 @@ import { readInput } from "../../src/cli/readInput.ts";
 import { buildSoundSurface, type SoundSurface } from "../../src/core/form/repair/soundSurface.ts";
 import { runPlan } from "../../src/core/plan/runPlan.ts";
 import type { Station } from "../../src/core/problem.ts";
+import { benchDrag } from "./dragCase.ts";
 import { benchFlatten } from "./flattenCase.ts";
 import { benchForm } from "./formCase.ts";
 import { benchGeodesic } from "./geodesicCase.ts";
@@ -12,6 +13,7 @@ import { benchPack, type PackInstance } from "./packCase.ts";
 
 const CASES: Record<string, { call: string; least: number; run: (args: string[]) => unknown }> = {
   plan: { call: "plan JOB|FORM.obj", least: 1, run: ([job]) => benchPlan(job) },
+  drag: { call: "drag JOB|FORM.obj", least: 1, run: ([job]) => benchDragged(job) },
   flatten: { call: "flatten STRIP.obj", least: 1, run: ([strip]) => benchFlatten(readSurface(strip).surface) },
   form: { call: "form N", least: 1, run: ([n]) => benchForm(readCount(n, "N")) },
   geodesic: { call: "geodesic MESH.obj PAIRS.txt", least: 2, run: ([mesh, pairs]) => benchPairs(mesh, pairs) },
@@ -76,6 +78,11 @@ function benchPlan(path: string): { stations: Partial<Record<Station, number>>; 
   runPlan(job, source, { revision, onStation: close }, {});
   close(null);
   return { stations, totalMs: performance.now() - begin };
+}
+
+function benchDragged(path: string): unknown {
+  const { job, source } = readInput(path, loadCatalogues());
+  return benchDrag(job, source);
 }
 
 async function runBench([name, ...args]: string[]): Promise<number> {

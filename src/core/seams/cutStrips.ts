@@ -2,7 +2,7 @@
 // strip's outline belongs to. Sides, ends and names are made of it in stripSides.ts and nameStrips.ts.
 import { type Finding, PlanError } from "../problem.ts";
 import type { FoundForm } from "../records/foundForm.ts";
-import { type Adjacency, buildAdjacency, nextHalfedge } from "../surface/adjacency.ts";
+import { type Adjacency, nextHalfedge } from "../surface/adjacency.ts";
 import { cutSurface } from "../surface/cut.ts";
 import { partSurface, traceOutlineSides } from "../surface/pieces.ts";
 import type { Surface, SurfacePoint } from "../surface/surface.ts";
@@ -172,8 +172,7 @@ function cutOnce(
   snap: number,
 ): CutForm {
   const { cut, paths, findings } = cutPaths(form, before, plans, all, snap);
-  const { surface } = cut;
-  const adjacency = buildAdjacency(surface);
+  const { surface, adjacency } = cut;
   const nCut = adjacency.nV;
   const byEnds = markBorders(form, labels, plans, paths, cut);
   const cuts: [number, number][] = [];

@@ -41,12 +41,12 @@ export function buildAdjacency(surface: Surface): Adjacency {
   const fan = new Uint32Array(3 * nT);
   for (let h = 0; h < 3 * nT; h++) fan[fill[tri[h]]++] = h;
   const twin = new Int32Array(3 * nT).fill(-1);
-  for (let h = 0; h < 3 * nT; h++) {
-    const a = tri[h];
-    const b = tri[nextHalfedge(h)];
+  const tip = Uint32Array.from(fan, (h) => tri[nextHalfedge(h)]);
+  for (let a = 0; a < nV; a++) {
     for (let i = fanStart[a]; i < fanStart[a + 1]; i++) {
-      const o = fan[i];
-      if (o !== h && tri[nextHalfedge(o)] === b) {
+      const b = tip[i];
+      for (let j = i + 1; j < fanStart[a + 1]; j++) {
+        if (tip[j] !== b) continue;
         throw new PlanError(
           "surface-edge",
           `side ${a}–${b} occurs twice in the same direction: more than two triangles meet there, or two are wound differently; run the mesh checks of the form station first`,
@@ -54,10 +54,12 @@ export function buildAdjacency(surface: Surface): Adjacency {
           { a, b },
         );
       }
-    }
-    for (let i = fanStart[b]; i < fanStart[b + 1]; i++) {
-      const o = fan[i];
-      if (tri[nextHalfedge(o)] === a) twin[h] = o;
+      if (b < a) continue;
+      for (let j = fanStart[b]; j < fanStart[b + 1]; j++) {
+        if (tip[j] !== a) continue;
+        twin[fan[i]] = fan[j];
+        twin[fan[j]] = fan[i];
+      }
     }
   }
   return { nV, nT, twin, fanStart, fan };

@@ -24,6 +24,8 @@ export interface CutOptions {
 export interface CutSurface {
   /** First vertices as before, then the inserted ones in the order in which the paths meet them. */
   surface: Surface;
+  /** Of the cut surface. */
+  adjacency: Adjacency;
   /** Vertices of the cut surface along each path; each two in a row are joined by an edge. */
   pathVertices: number[][];
   /** Triangle of the surface before for each new triangle. */
@@ -205,7 +207,8 @@ export function cutSurface(
     for (let i = start; i < out.length; i += 3) parent.push(t);
   }
   const cut: Surface = { xyz, tri: new Uint32Array(out) };
-  const crossing = findPathCrossing(cut, buildAdjacency(cut), pathVertices);
+  const after = buildAdjacency(cut);
+  const crossing = findPathCrossing(cut, after, pathVertices);
   if (crossing) refuseCrossing(crossing.first, crossing.second, vertexAt(cut, crossing.vertex));
-  return { surface: cut, pathVertices, parent: new Uint32Array(parent), vertexPlace: splits.places };
+  return { surface: cut, adjacency: after, pathVertices, parent: new Uint32Array(parent), vertexPlace: splits.places };
 }

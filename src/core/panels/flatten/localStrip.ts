@@ -87,27 +87,34 @@ function refuseOutline(strip: Strip, why: string): never {
  */
 export function buildRunDirections(strip: LocalStrip): Float64Array<ArrayBuffer> {
   const { erected: x, tri } = strip;
-  const pieces = listRunPieces(strip);
+  const pieces = Float64Array.from(listRunPieces(strip));
   const out = new Float64Array(tri.length);
-  const m = [0, 0, 0];
-  const sum = [0, 0, 0];
   for (let t = 0; t < tri.length; t += 3) {
-    for (let k = 0; k < 3; k++) {
-      m[k] = (x[3 * tri[t] + k] + x[3 * tri[t + 1] + k] + x[3 * tri[t + 2] + k]) / 3;
-      sum[k] = 0;
-    }
+    const [a, b, c] = [3 * tri[t], 3 * tri[t + 1], 3 * tri[t + 2]];
+    const mx = (x[a] + x[b] + x[c]) / 3;
+    const my = (x[a + 1] + x[b + 1] + x[c + 1]) / 3;
+    const mz = (x[a + 2] + x[b + 2] + x[c + 2]) / 3;
+    let [sx, sy, sz] = [0, 0, 0];
     for (let i = 0; i < pieces.length; i += 6) {
-      const d = (pieces[i] - m[0]) ** 2 + (pieces[i + 1] - m[1]) ** 2 + (pieces[i + 2] - m[2]) ** 2;
-      for (let k = 0; k < 3; k++) sum[k] += pieces[i + 3 + k] / (d * d);
+      const [dx, dy, dz] = [pieces[i] - mx, pieces[i + 1] - my, pieces[i + 2] - mz];
+      const d = dx * dx + dy * dy + dz * dz;
+      const w = d * d;
+      sx += pieces[i + 3] / w;
+      sy += pieces[i + 4] / w;
+      sz += pieces[i + 5] / w;
     }
-    const p = [0, 1, 2].map((k) => x[3 * tri[t + 1] + k] - x[3 * tri[t] + k]);
-    const q = [0, 1, 2].map((k) => x[3 * tri[t + 2] + k] - x[3 * tri[t] + k]);
-    const n = [p[1] * q[2] - p[2] * q[1], p[2] * q[0] - p[0] * q[2], p[0] * q[1] - p[1] * q[0]];
-    const nn = n[0] ** 2 + n[1] ** 2 + n[2] ** 2;
-    const off = (sum[0] * n[0] + sum[1] * n[1] + sum[2] * n[2]) / nn;
-    for (let k = 0; k < 3; k++) sum[k] -= off * n[k];
-    const length = Math.sqrt(sum[0] ** 2 + sum[1] ** 2 + sum[2] ** 2);
-    if (length > 0) for (let k = 0; k < 3; k++) out[t + k] = sum[k] / length;
+    const [px, py, pz] = [x[b] - x[a], x[b + 1] - x[a + 1], x[b + 2] - x[a + 2]];
+    const [qx, qy, qz] = [x[c] - x[a], x[c + 1] - x[a + 1], x[c + 2] - x[a + 2]];
+    const [nx, ny, nz] = [py * qz - pz * qy, pz * qx - px * qz, px * qy - py * qx];
+    const off = (sx * nx + sy * ny + sz * nz) / (nx ** 2 + ny ** 2 + nz ** 2);
+    sx -= off * nx;
+    sy -= off * ny;
+    sz -= off * nz;
+    const length = Math.sqrt(sx ** 2 + sy ** 2 + sz ** 2);
+    if (!(length > 0)) continue;
+    out[t] = sx / length;
+    out[t + 1] = sy / length;
+    out[t + 2] = sz / length;
   }
   return out;
 }
