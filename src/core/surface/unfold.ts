@@ -62,14 +62,21 @@ function checkDisc(adjacency: Adjacency, loops: number[][]): void {
   );
 }
 
-/** Lays triangle after triangle in the plane, breadth first from the one amid the strip; every vertex keeps its first place. */
-function layHingeByHinge(
-  tri: Uint32Array,
-  adjacency: Adjacency,
-  unfolding: Unfolding,
-  first: number,
-): Float64Array<ArrayBuffer> {
+/** A layout hinge by hinge. @shape xy 2*nV; turn 2*nT: cosine and sine of each triangle's turn from its own shape (side 0→1 along +x) */
+interface Hinged {
+  xy: Float64Array<ArrayBuffer>;
+  turn: Float64Array<ArrayBuffer>;
+}
+
+/**
+ * Lays triangle after triangle in the plane, breadth first from the one amid the strip; every vertex keeps its first place. A
+ * triangle's turn follows from its neighbour's and the hinge alone, never from places that curvature has shifted: on a short
+ * side between two shifted places it would be any.
+ */
+function layHingeByHinge(tri: Uint32Array, adjacency: Adjacency, unfolding: Unfolding, first: number): Hinged {
+  const { length, apexX, apexY } = unfolding;
   const xy = new Float64Array(2 * adjacency.nV);
+  const turn = new Float64Array(2 * adjacency.nT);
   const placed = new Uint8Array(adjacency.nV);
   const seen = new Uint8Array(adjacency.nT);
   const place = (v: number, x: number, y: number) => {
@@ -78,28 +85,41 @@ function layHingeByHinge(
     xy[2 * v] = x;
     xy[2 * v + 1] = y;
   };
+  // Unit direction of half-edge h of a triangle in its own shape.
+  const direct = (h: number): [number, number] => {
+    const h0 = h - (h % 3);
+    const [l, px, py] = [length[h0], apexX[h0], apexY[h0]];
+    if (h === h0) return [1, 0];
+    return h === h0 + 1 ? [(px - l) / length[h], py / length[h]] : [-px / length[h], -py / length[h]];
+  };
   const h0 = 3 * first;
   place(tri[h0], 0, 0);
-  place(tri[h0 + 1], unfolding.length[h0], 0);
-  place(tri[h0 + 2], unfolding.apexX[h0], unfolding.apexY[h0]);
+  place(tri[h0 + 1], length[h0], 0);
+  place(tri[h0 + 2], apexX[h0], apexY[h0]);
+  turn[2 * first] = 1;
   seen[first] = 1;
   const queue = [first];
   for (let q = 0; q < queue.length; q++)
     for (let h = 3 * queue[q]; h < 3 * queue[q] + 3; h++) {
       const g = adjacency.twin[h];
-      if (g < 0 || seen[Math.floor(g / 3)]) continue;
-      seen[Math.floor(g / 3)] = 1;
-      queue.push(Math.floor(g / 3));
+      const t = Math.floor(g / 3);
+      if (g < 0 || seen[t]) continue;
+      seen[t] = 1;
+      queue.push(t);
+      const [c, s] = [turn[2 * queue[q]], turn[2 * queue[q] + 1]];
+      const [dx, dy] = direct(h);
+      // The hinge runs the other way in the neighbour.
+      const ux = s * dy - c * dx;
+      const uy = -s * dx - c * dy;
+      const [ex, ey] = direct(g);
+      turn[2 * t] = ux * ex + uy * ey;
+      turn[2 * t + 1] = uy * ex - ux * ey;
       const a = 2 * tri[g];
-      const b = 2 * tri[nextHalfedge(g)];
-      const l = Math.sqrt((xy[b] - xy[a]) ** 2 + (xy[b + 1] - xy[a + 1]) ** 2);
-      const ux = (xy[b] - xy[a]) / l;
-      const uy = (xy[b + 1] - xy[a + 1]) / l;
-      const px = unfolding.apexX[g];
-      const py = unfolding.apexY[g];
+      const px = apexX[g];
+      const py = apexY[g];
       place(tri[previousHalfedge(g)], xy[a] + px * ux - py * uy, xy[a + 1] + px * uy + py * ux);
     }
-  return xy;
+  return { xy, turn };
 }
 
 /** A triangle amid the strip: the last one reached when peeling from the boundary inwards. */
@@ -146,15 +166,10 @@ function measureWeights(unfolding: Unfolding): Float64Array<ArrayBuffer> {
 
 /**
  * As-rigid-as-possible relaxation: every triangle asks for its own shape turned to fit best, the sparse factor finds the layout
- * nearest to all of them; repeated. Vertex `held` stays.
+ * nearest to all of them; repeated. The first turns are those of the hinges. Vertex `held` stays.
  */
-function relaxRigid(
-  tri: Uint32Array,
-  unfolding: Unfolding,
-  start: Float64Array<ArrayBuffer>,
-  held: number,
-): Float64Array<ArrayBuffer> {
-  const n = start.length / 2;
+function relaxRigid(tri: Uint32Array, unfolding: Unfolding, start: Hinged, held: number): Float64Array<ArrayBuffer> {
+  const n = start.xy.length / 2;
   const nT = tri.length / 3;
   const { length, apexX, apexY } = unfolding;
   const weight = measureWeights(unfolding);
@@ -172,7 +187,7 @@ function relaxRigid(
     addElementInPlace(values, where, t, entry);
   }
   const factor = factorSymmetric(analyseSymmetric(where.pattern), values);
-  const xy = start.slice();
+  const xy = start.xy.slice();
   const side = new Float64Array(2 * (n - 1));
   let energy = Number.POSITIVE_INFINITY;
   for (let round = 0; round < MOST_ROUNDS; round++) {
@@ -194,8 +209,8 @@ function relaxRigid(
         im += weight[h0 + k] * (ex[k] * uy - ey[k] * ux);
       }
       const r = Math.sqrt(re * re + im * im) || 1;
-      const c = re / r;
-      const s = im / r;
+      const c = round === 0 ? start.turn[2 * t] : re / r;
+      const s = round === 0 ? start.turn[2 * t + 1] : im / r;
       for (let k = 0; k < 3; k++) {
         const a = tri[h0 + k];
         const b = tri[h0 + ((k + 1) % 3)];
@@ -245,7 +260,7 @@ export function unfoldSurface(
   const unfolding = buildUnfolding(surface);
   const first = findMiddle(adjacency);
   const hinged = layHingeByHinge(tri, adjacency, unfolding, first);
-  if (measureStrain(tri, unfolding, hinged) <= EXACT_STRAIN) return hinged;
+  if (measureStrain(tri, unfolding, hinged.xy) <= EXACT_STRAIN) return hinged.xy;
   // The rounds are quick but slow to straighten a long strip; the barrier's Newton steps do that.
   let start = relaxRigid(tri, unfolding, hinged, tri[3 * first]);
   if (!(measureLeastAreaShare(tri, unfolding, start) > LEAST_AREA_SHARE))
