@@ -62,22 +62,31 @@ function benchPairs(meshPath: string, pairsPath: string): unknown {
   return benchGeodesic(surface, pairs);
 }
 
-/** Milliseconds a station takes, summed where it is run more than once, and of the whole chain; one cold run. */
-function benchPlan(path: string): { stations: Partial<Record<Station, number>>; totalMs: number } {
+/** Milliseconds a station takes, summed where it is run more than once (`runs`), its processor time, and the whole chain; cold. */
+function benchPlan(path: string): unknown {
   const { job, source, revision } = readInput(path, loadCatalogues());
   const stations: Partial<Record<Station, number>> = {};
+  const runs: Partial<Record<Station, number>> = {};
+  const cpu: Partial<Record<Station, number>> = {};
   const begin = performance.now();
   let open: Station | null = null;
   let since = begin;
+  let used = process.cpuUsage();
   const close = (next: Station | null) => {
     const now = performance.now();
-    if (open !== null) stations[open] = (stations[open] ?? 0) + now - since;
+    if (open !== null) {
+      stations[open] = (stations[open] ?? 0) + now - since;
+      runs[open] = (runs[open] ?? 0) + 1;
+      const { user, system } = process.cpuUsage(used);
+      cpu[open] = (cpu[open] ?? 0) + (user + system) / 1000;
+    }
+    used = process.cpuUsage();
     open = next;
     since = now;
   };
   runPlan(job, source, { revision, onStation: close }, {});
   close(null);
-  return { stations, totalMs: performance.now() - begin };
+  return { stations, cpu, runs, totalMs: performance.now() - begin };
 }
 
 function benchDragged(path: string): unknown {
