@@ -93,7 +93,7 @@ export function workPackShare(share: PackShare, port: MessagePort): { result: Pa
   const found = searchOrders({ ...task, stop: () => spent() > orders }, { steps: Number.MAX_SAFE_INTEGER, seed });
   if (!found || found.layout.left.length > 0) throw new Error(`${instance.name}: no layout within ${seconds} s`);
   const [bed] = found.layout.beds;
-  const { search, framed, bedOf } = openSearchOf(bed, task, seed, 0);
+  const { search, bedOf } = openSearchOf(bed, task, seed, 0);
   let told = { at: spent(), length: search.best.length };
   let tries = 0;
   for (; !ended() && tries < 1e9; tries++) {
@@ -116,7 +116,7 @@ export function workPackShare(share: PackShare, port: MessagePort): { result: Pa
       ...placementOf(p.shape, p.x, p.y),
     })),
   });
-  const best = bedOf(framed, search.best);
+  const best = bedOf(search.best);
   const result = pack(best.laid, bedReach(best));
   return { result: isValid(instance, result) ? result : pack(bed.laid, bedReach(bed)), tries };
 }

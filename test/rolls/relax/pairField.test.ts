@@ -97,6 +97,30 @@ describe("pair fields", () => {
     expect(near).toBeGreaterThan(200);
   });
 
+  it("see a prong deep in the crook of a U, where one sum only just ends (bug: taken for free cloth)", () => {
+    const prongs = Float64Array.from([0, 2, 6, 2, 6, 0, 7, 0, 11, 4, 11, 6, 8, 6, 8, 3, 2, 3, 2, 6, 0, 6]);
+    const u = Float64Array.from([0, 0, 2, 0, 2, 3, 12, 3, 12, 0, 14, 0, 14, 5, 0, 5]);
+    const [x, y] = [42.67118538300968 - 40.64586841651726, 32.47242933373607 - 35];
+    expect(ringGap({ ring: prongs, x, y }, { ring: u, x: 0, y: 0 }, 1, 1e-6)).toBe(-1);
+    for (const cells of [8, 12, 16, 24, 32, 48]) {
+      const field = buildPairField(convexParts(prongs), convexParts(u), 0, cells);
+      expect(fieldDepth(field, x, y)).toBeGreaterThan(0.4);
+      expect(fieldDepth(field, x, y)).toBeLessThan(2);
+    }
+  });
+
+  it("leave the one place free at which a prong fits its slot exactly", () => {
+    const prong = Float64Array.from([0, 0, 2, 0, 2, 5, 0, 5]);
+    const slot = Float64Array.from([0, 0, 10, 0, 10, 8, 6, 8, 6, 3, 4, 3, 4, 8, 0, 8]);
+    for (const cells of [8, 13, 16, 32]) {
+      // A touch of 1e-9 is taken off, as the strip does.
+      const field = buildPairField(convexParts(prong), convexParts(slot), -1e-9, cells);
+      for (const y of [3, 4.1, 6, 7.7]) expect(fieldDepth(field, 4, y)).toBe(0);
+      for (const y of [3, 4.1, 6, 7.7]) expect(fieldDepth(field, 4.3, y)).toBeCloseTo(0.3, 6);
+      expect(fieldDepth(field, 4, 2.9)).toBeCloseTo(0.1, 6);
+    }
+  });
+
   it("give the least push for two boxes", () => {
     const box = [Float64Array.from([0, 0, 10, 0, 10, 4, 0, 4])];
     const field = buildPairField(box, box, 0, 24);

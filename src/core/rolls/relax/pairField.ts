@@ -1,7 +1,8 @@
-// How deep two shapes overlap at a given shift: zero means apart by the gap, exactly; else the least push that parts the worst
-// pair of their convex parts, or how far free cloth lies where that is more. Tabled by cells, so that a look-up costs a few
-// half-planes whatever the shapes. Does not: search. Source: Minkowski sums of convex parts by support values (textbook);
-// own table: a signed distance changes no faster than its place, so far half-planes cannot matter inside a cell.
+// How deep two shapes overlap at a given shift: zero means apart by the gap, exactly; else the least push that parts the deepest
+// pair of their convex parts, or nearly how far free cloth lies where that is more. Tabled by cells, so that a look-up costs a
+// few half-planes whatever the shapes. Does not: search. Source: Minkowski sums of convex parts by support values (textbook);
+// own table: a signed distance changes no faster than its place, so far half-planes cannot matter inside a cell, and a mean
+// of the distances at a cell's corners is wrong by half its diagonal at most.
 import type { PlaneRing } from "../../surface/ring.ts";
 
 /** Between neighbouring half-planes of a sum grown by a gap, so that round corners cost little, radians. */
@@ -26,9 +27,9 @@ export interface PairField {
   list: Int32Array<ArrayBuffer>;
   /** Normal and offset of each half-plane. */
   planes: Float64Array<ArrayBuffer>;
-  /** Distance to free cloth at the cells' corners; empty where one sum says it all. */
+  /** Distance to free cloth at the cells' corners less half a cell's diagonal; empty where one sum says it all. */
   deep: Float64Array<ArrayBuffer>;
-  /** Half-plane that was nearest at the last look-up, −1 where the shapes were apart. */
+  /** Half-plane that was nearest at the last look-up, −1 where the shapes were apart or free cloth is far. */
   nearest: number;
 }
 
@@ -104,38 +105,96 @@ function measureAt(sums: Sums, x: number, y: number, each: Float64Array, most: F
   }
 }
 
-/** Distance from each covered corner of the cells to free cloth, by steps between corners (chamfer, G. Borgefors, 1986). */
+/** Ends of the side that half-plane e of a sum contributes, null where it is cut off by its neighbours. */
+function sideOf(sums: Sums, s: number, e: number): [number, number, number, number] | null {
+  const { planes, first } = sums;
+  const [nx, ny, c] = [planes[3 * e], planes[3 * e + 1], planes[3 * e + 2]];
+  // Along the side from the foot of its normal.
+  let [from, to] = [-Infinity, Infinity];
+  for (let k = first[s]; k < first[s + 1]; k++) {
+    if (k === e) continue;
+    const [mx, my, d] = [planes[3 * k], planes[3 * k + 1], planes[3 * k + 2]];
+    const rate = my * nx - mx * ny;
+    const room = d - c * (mx * nx + my * ny);
+    if (Math.abs(rate) < ONE) continue;
+    if (rate > 0) to = Math.min(to, room / rate);
+    else from = Math.max(from, room / rate);
+  }
+  if (!(from < to)) return null;
+  return [c * nx - from * ny, c * ny + from * nx, c * nx - to * ny, c * ny + to * nx];
+}
+
+/** Shares of a side that lie outside all other sums. */
+function openShares(sums: Sums, own: number, side: [number, number, number, number]): [number, number][] {
+  const { planes, first } = sums;
+  const [x, y, ux, uy] = [side[0], side[1], side[2] - side[0], side[3] - side[1]];
+  let open: [number, number][] = [[0, 1]];
+  for (let s = 0; s + 1 < first.length && open.length > 0; s++) {
+    if (s === own) continue;
+    let [from, to] = [0, 1];
+    for (let k = first[s]; k < first[s + 1] && from < to; k++) {
+      const at = planes[3 * k] * x + planes[3 * k + 1] * y - planes[3 * k + 2];
+      const rate = planes[3 * k] * ux + planes[3 * k + 1] * uy;
+      if (rate > 0) to = Math.min(to, -at / rate);
+      else if (rate < 0) from = Math.max(from, -at / rate);
+      else if (at >= 0) to = -1;
+    }
+    if (from >= to) continue;
+    const left: [number, number][] = [];
+    for (const [p, q] of open) {
+      if (p < Math.min(q, from)) left.push([p, Math.min(q, from)]);
+      if (Math.max(p, to) < q) left.push([Math.max(p, to), q]);
+    }
+    open = left;
+  }
+  return open;
+}
+
+/** Sides of the sums that border on free cloth: x, y of both ends, one after the other. */
+function openSides(sums: Sums): Float64Array<ArrayBuffer> {
+  const out: number[] = [];
+  for (let s = 0; s + 1 < sums.first.length; s++)
+    for (let e = sums.first[s]; e < sums.first[s + 1]; e++) {
+      const side = sideOf(sums, s, e);
+      if (!side) continue;
+      const [x, y, ux, uy] = [side[0], side[1], side[2] - side[0], side[3] - side[1]];
+      for (const [p, q] of openShares(sums, s, side)) out.push(x + p * ux, y + p * uy, x + q * ux, y + q * uy);
+    }
+  return Float64Array.from(out);
+}
+
+/** Distance from a place to the nearest of some sides. */
+function sideDistance(sides: Float64Array, x: number, y: number): number {
+  let best = Infinity;
+  for (let i = 0; i < sides.length; i += 4) {
+    const [px, py] = [x - sides[i], y - sides[i + 1]];
+    const [ux, uy] = [sides[i + 2] - sides[i], sides[i + 3] - sides[i + 1]];
+    const t = Math.max(0, Math.min(1, (px * ux + py * uy) / (ux * ux + uy * uy || 1)));
+    const d = (px - t * ux) ** 2 + (py - t * uy) ** 2;
+    if (d < best) best = d;
+  }
+  return Math.sqrt(best);
+}
+
+/** At each corner of the cells the distance to free cloth less half a cell's diagonal. */
 function deepCorners(sums: Sums, n: number, stepX: number, stepY: number): Float64Array<ArrayBuffer> {
-  // One row and column of free corners round about.
-  const m = n + 3;
   const each = new Float64Array(sums.planes.length / 3);
   const most = new Float64Array(sums.first.length - 1);
-  const far = new Float64Array(m * m);
-  for (let j = 1; j < n; j++)
-    for (let i = 1; i < n; i++) {
-      measureAt(sums, sums.box[0] + i * stepX, sums.box[2] + j * stepY, each, most);
-      let least = Infinity;
-      for (const v of most) if (v < least) least = v;
-      if (least < 0) far[(j + 1) * m + i + 1] = Infinity;
-    }
-  const slant = Math.hypot(stepX, stepY);
-  const sweep = (sign: number) => {
-    for (let q = m + 1; q < m * m - m - 1; q++) {
-      const k = sign > 0 ? q : m * m - 1 - q;
-      const near = Math.min(far[k - sign * m - 1], far[k - sign * m + 1]) + slant;
-      far[k] = Math.min(far[k], far[k - sign] + stepX, far[k - sign * m] + stepY, near);
-    }
-  };
-  sweep(1);
-  sweep(-1);
+  const sides = openSides(sums);
+  const half = (Math.hypot(stepX, stepY) / 2) * (1 + 1e-9);
   const deep = new Float64Array((n + 1) ** 2);
-  // The nearest free place lies up to a cell nearer than the nearest free corner.
   for (let j = 0; j <= n; j++)
-    for (let i = 0; i <= n; i++) deep[j * (n + 1) + i] = Math.max(0, far[(j + 1) * m + i + 1] - slant);
+    for (let i = 0; i <= n; i++) {
+      const x = sums.box[0] + i * stepX;
+      const y = sums.box[2] + j * stepY;
+      measureAt(sums, x, y, each, most);
+      const covered = most.some((v) => v < 0);
+      deep[j * (n + 1) + i] = (covered ? sideDistance(sides, x, y) : 0) - half;
+    }
   return deep;
 }
 
-/** Whether free cloth lies cells away all round: there it and the one deepest sum say enough. */
+/** Whether free cloth lies away all round a cell: how far says enough. */
 function isDeep(deep: Float64Array, n: number, cell: number): boolean {
   if (deep.length === 0) return false;
   const o = Math.floor(cell / n) * (n + 1) + (cell % n);
@@ -161,9 +220,9 @@ export function buildPairField(a: PlaneRing[], b: PlaneRing[], gap: number, most
     measureAt(sums, x0 + ((cell % n) + 0.5) * stepX, y0 + (Math.floor(cell / n) + 0.5) * stepY, each, most);
     let least = Infinity;
     for (const v of most) if (v < least) least = v;
-    const reach = isDeep(deep, n, cell) ? 0 : 2 * r;
-    for (let s = 0; s < most.length; s++) {
-      if (most[s] >= r || most[s] > least + reach) continue;
+    const listed = isDeep(deep, n, cell) ? 0 : most.length;
+    for (let s = 0; s < listed; s++) {
+      if (most[s] >= r || most[s] > least + 2 * r) continue;
       const at = list.push(0) - 1;
       for (let e = sums.first[s]; e < sums.first[s + 1]; e++) if (each[e] + r >= most[s] - r) list.push(3 * e);
       list[at] = list.length - at - 1;
@@ -199,7 +258,9 @@ export function fieldDepth(f: PairField, dx: number, dy: number): number {
   if (j >= n) j = n - 1;
   const { list, planes, start } = f;
   let deepest = 0;
-  for (let k = start[j * n + i], end = start[j * n + i + 1]; k < end; ) {
+  const first = start[j * n + i];
+  const end = start[j * n + i + 1];
+  for (let k = first; k < end; ) {
     const last = k + list[k];
     let most = -Infinity;
     let at = -1;
@@ -218,7 +279,8 @@ export function fieldDepth(f: PairField, dx: number, dy: number): number {
       f.nearest = at;
     }
   }
-  if (deepest === 0 || f.deep.length === 0) return deepest;
+  // Where a list says apart, so do the corners: their mean is never more than the distance to free cloth.
+  if (f.deep.length === 0 || (deepest === 0 && end > first)) return deepest;
   const s = u - i;
   const t = v - j;
   const o = j * (n + 1) + i;
@@ -226,5 +288,9 @@ export function fieldDepth(f: PairField, dx: number, dy: number): number {
   const low = g[o] + s * (g[o + 1] - g[o]);
   const high = g[o + n + 1] + s * (g[o + n + 2] - g[o + n + 1]);
   const deep = low + t * (high - low);
-  return Math.max(deep, deepest);
+  if (deep > deepest) {
+    deepest = deep;
+    f.nearest = -1;
+  }
+  return deepest;
 }

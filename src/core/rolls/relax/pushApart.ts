@@ -22,7 +22,8 @@ function partPair(strip: Strip, i: number, j: number): number {
   const [a, b] = turned ? [j, i] : [i, j];
   const field = fieldOf(strip, strip.shape[a], strip.shape[b]);
   const depth = fieldDepth(field, x[a] - x[b], y[a] - y[b]);
-  if (depth <= 0) return 0;
+  // Too deep to know the way out.
+  if (depth <= 0 || field.nearest < 0) return depth;
   const nx = field.planes[field.nearest];
   const ny = field.planes[field.nearest + 1];
   const { movable, none } = strip.task;

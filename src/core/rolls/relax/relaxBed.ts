@@ -4,6 +4,7 @@ import { type Bed, bedReach, type LaidShape, layInPlace, openBed } from "../bed.
 import { compactInPlace, type NestTask } from "../layPieces.ts";
 import { boundLength } from "../lowerBound.ts";
 import type { NestShape } from "../nestShape.ts";
+import { ringGap } from "../ringGap.ts";
 import { openSearch, type StripSearch } from "./shortenStrip.ts";
 import type { StripState, StripTask } from "./strip.ts";
 import { buildStripShape } from "./stripShapes.ts";
@@ -20,6 +21,8 @@ const ROUND_LEAST = 4;
 /** The overlap in all that counts as none, as a share of the least piece's size. */
 const NONE = 1e-7;
 const NEAR = 1.001;
+/** The exact judge counts as touching what overlaps by so many times as much. */
+const TOUCH = 10;
 
 /** A bed seen as a strip. */
 export interface Framed {
@@ -77,22 +80,46 @@ function frameBed(bed: Bed, nest: NestTask): Framed {
   };
 }
 
-/** A bed laid as a state has it, slid together. */
-function bedFrom(bed: Bed, framed: Framed, state: StripState, areas: number[]): Bed {
-  const fresh = openBed(bed);
-  framed.laid.forEach((p, i) => {
-    if (p.piece < 0) return;
-    layInPlace(fresh, { ...p, shape: framed.shapes[state.shape[i]], x: state.x[i], y: state.y[i] });
+/** Whether no two things on the bed lie nearer than the gap or overlap, by exact distances. */
+function isApart(bed: Bed, touch: number): boolean {
+  const all = [...bed.laid, ...bed.flawShapes].map((p) => ({ ...p, ring: p.shape.ring }));
+  all.sort((a, b) => a.x - b.x);
+  return all.every((a, i) => {
+    for (let j = i + 1; j < all.length; j++) {
+      const b = all[j];
+      const gap = bed.gap + a.shape.slack + b.shape.slack;
+      if (b.x >= a.x + a.shape.length + gap) break;
+      // Flaws may overlap one another.
+      if (a.piece < 0 && b.piece < 0) continue;
+      if (ringGap(a, b, gap + touch, touch) < Math.max(0, gap - touch)) return false;
+    }
+    return true;
   });
-  compactInPlace({ beds: [fresh], left: [], cost: { left: 0, cloth: 0, reach: 0 } }, areas, 12);
-  return fresh;
+}
+
+/** The bed laid as a state has it, slid together where that keeps all apart; null where the exact judge finds an overlap. */
+function bedFrom(bed: Bed, framed: Framed, state: StripState, areas: number[]): Bed | null {
+  const lay = () => {
+    const fresh = openBed(bed);
+    framed.laid.forEach((p, i) => {
+      if (p.piece < 0) return;
+      layInPlace(fresh, { ...p, shape: framed.shapes[state.shape[i]], x: state.x[i], y: state.y[i] });
+    });
+    return fresh;
+  };
+  const touch = TOUCH * framed.task.none;
+  const slid = lay();
+  compactInPlace({ beds: [slid], left: [], cost: { left: 0, cloth: 0, reach: 0 } }, areas, 12);
+  if (isApart(slid, touch)) return slid;
+  const plain = lay();
+  return isApart(plain, touch) ? plain : null;
 }
 
 /** A search on one bed that the caller drives by a clock of its own, and the way back to a bed. */
 export function openSearchOf(bed: Bed, nest: NestTask, seed: number, fixed: number) {
   const framed = frameBed(bed, nest);
   const search: StripSearch = openSearch(framed.task, framed.from, seed, fixed);
-  return { search, framed, bedOf: (from: Framed, state: StripState) => bedFrom(bed, from, state, nest.areas) };
+  return { search, bedOf: (state: StripState) => bedFrom(bed, framed, state, nest.areas) ?? bed };
 }
 
 /**
@@ -127,5 +154,5 @@ export function relaxBed(
   }
   if (best === framed.from) return bed;
   const shorter = bedFrom(bed, framed, best, nest.areas);
-  return bedReach(shorter) < bedReach(bed) ? shorter : bed;
+  return shorter && bedReach(shorter) < bedReach(bed) ? shorter : bed;
 }

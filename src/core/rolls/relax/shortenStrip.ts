@@ -1,7 +1,8 @@
-// Shortens a strip attempt by attempt: cut a little off, take the overlap out; where that fails, disturb a failed layout and
-// try again; at the end smaller and smaller cuts from the best. The best layout is valid at any moment.
-// Source: the outer loop of the relaxed family (packing.md section 3, points 1-3); disturbing by swapping two large pieces and
-// drawing from failed layouts by their overlap after arXiv 2509.13329 (2025); steps and shares own, by trial.
+// Shortens a strip attempt by attempt. At first it explores: a share is cut off and the overlap taken out; where that fails, a
+// failed layout is drawn, likelier one of little overlap, two large pieces are swapped and it is tried again at the same
+// length. At the end it compacts: ever thinner slices are cut out of the best. The best layout is valid at any moment.
+// Source: the outer loop of the relaxed family (packing.md section 3, points 1-3); failed layouts drawn by their overlap and
+// the two phases after arXiv 2509.13329 (2025); steps and shares own, by trial.
 import { buildRandom, drawInteger, type Random } from "../../numeric/random.ts";
 import { separate } from "./separate.ts";
 import {
@@ -20,13 +21,11 @@ export interface StripSearch {
   strip: Strip;
   random: Random;
   best: StripState;
-  /** The layout now worked on: valid, at times longer than the best. */
-  now: StripState;
   /** Layouts that could not be parted at the length now tried, least overlap first. */
   failed: { state: StripState; overlap: number }[];
-  /** Share of the length now cut off at once: halved where it keeps failing. */
+  /** Share of the length to be cut off next. */
   cut: number;
-  /** Least cuts tried since one succeeded. */
+  /** Failures at the length now tried. */
   idle: number;
   /** Pieces by the size of their boxes, greatest first. */
   large: number[];
@@ -35,35 +34,25 @@ export interface StripSearch {
 }
 
 export const SETTINGS = {
-  /** Shares of the length cut off: at first, and at least. */
-  cut: 0.005,
-  cutLeast: 0.0003,
-  /** Failures at one length before the cut is halved. */
-  failures: 6,
-  /** Fine cuts lie between these shares. */
-  fineMost: 0.002,
-  fineLeast: 0.0001,
-  /** Failures of least cuts before the layout is disturbed: so many, and so many a piece. */
-  stall: 20,
-  stallPiece: 0.6,
-  /** One in so many attempts at least cuts is a slice instead. */
-  slices: 4,
-  /** Length given back to a layout that is disturbed; one that grew longer than the best by more than `drop` is left. */
-  ease: 0.005,
-  drop: 0.006,
-  /** Share of the work after which the best is no longer disturbed. */
-  settle: 0.85,
-  /** Swaps of a disturbance at most. */
-  swaps: 3,
+  /** Shares of the length cut off while exploring: at first, and at least. */
+  cut: 0.01,
+  cutLeast: 0.001,
+  /** Passes without a gain, and how often they are begun again: while exploring, while compacting. */
+  explore: { passes: 100, strikes: 2 },
+  compact: { passes: 50, strikes: 2 },
+  /** Failures kept to go on from; after so many a longer strip is tried. */
+  pool: 24,
+  patience: 3,
+  /** Slices lie between these shares of the length. */
+  fineMost: 0.0005,
+  fineLeast: 0.00001,
+  /** Share of the work after which the best is compacted. */
+  settle: 0.8,
+  /** Pieces that may be swapped, as a share of all. */
+  large: 0.6,
 };
 /** Rounding. */
 const HAIR = 1e-9;
-/** Passes without a gain: of few pieces few, since they have few ways to lie. */
-const PASSES = 60;
-const PASSES_LEAST = 6;
-const passesFor = (strip: Strip) => Math.min(PASSES, PASSES_LEAST + strip.task.movable);
-/** Pieces that may be swapped, as a share of all. */
-const LARGE = 0.6;
 
 /** Greatest x of what counts as lying on the strip. */
 function reachOf(strip: Strip): number {
@@ -80,27 +69,19 @@ export function openSearch(task: StripTask, from: StripState, seed: number, fixe
     return length * height;
   };
   const order = Array.from({ length: task.movable }, (_, i) => i).sort((a, b) => box(b) - box(a) || a - b);
-  const large = order.slice(0, Math.max(2, Math.ceil(LARGE * order.length)));
+  const large = order.slice(0, Math.max(2, Math.ceil(SETTINGS.large * order.length)));
   // Nor is a strip shorter than its longest piece, lain the shortest way.
   const long = task.choices.map((own) => task.start + Math.min(...own.map((s) => task.shapes[s].length)));
   const least = Math.max(fixed, ...long.slice(0, task.movable));
   const best = copyState(strip);
-  const { cut } = SETTINGS;
-  return { strip, random: buildRandom(seed), best, now: best, failed: [], cut, idle: 0, large, fixed: least };
+  return { strip, random: buildRandom(seed), best, failed: [], cut: SETTINGS.cut, idle: 0, large, fixed: least };
 }
 
 /** Takes over a better layout found elsewhere. */
 export function adoptState(search: StripSearch, state: StripState): void {
   if (state.length >= search.best.length) return;
   search.best = state;
-  begin(search, state);
-}
-
-/** Goes on from a layout. */
-function begin(search: StripSearch, state: StripState): void {
-  search.now = state;
   search.failed = [];
-  search.cut = SETTINGS.cut;
   search.idle = 0;
 }
 
@@ -112,6 +93,17 @@ function cutInPlace(strip: Strip, length: number): void {
     const most = length - strip.task.shapes[s].length;
     if (strip.x[i] > most) putPiece(strip, i, s, Math.max(strip.task.start, most), strip.y[i]);
   }
+}
+
+/** Cuts a slice out somewhere: all beyond it moves up. */
+function sliceInPlace(strip: Strip, length: number, random: Random): void {
+  const at = random() * strip.length;
+  const slice = strip.length - length;
+  const { start, movable } = strip.task;
+  for (let i = 0; i < movable; i++)
+    if (strip.x[i] + strip.x1[i] > 2 * at)
+      putPiece(strip, i, strip.shape[i], Math.max(start, strip.x[i] - slice), strip.y[i]);
+  cutInPlace(strip, length);
 }
 
 function putMiddle(strip: Strip, i: number, x: number, y: number): void {
@@ -146,63 +138,44 @@ function drawFailed(search: StripSearch): void {
   disturbInPlace(search);
 }
 
-/** Takes the strip, where nothing overlaps, as the layout to go on from. Returns whether it is the best. */
+/** Takes the strip, where nothing overlaps, where it is the shortest so far. */
 function keepLayout(search: StripSearch): boolean {
   const { strip } = search;
   strip.length = Math.max(reachOf(strip), search.fixed);
-  search.now = copyState(strip);
+  if (strip.length >= search.best.length) return false;
+  search.best = copyState(strip);
   search.failed = [];
   search.idle = 0;
-  if (search.now.length >= search.best.length) return false;
-  search.best = search.now;
   return true;
 }
 
-function tryCoarse(search: StripSearch, stop: () => boolean): boolean {
-  const { strip } = search;
-  if (search.failed.length > 0) drawFailed(search);
-  else {
-    setState(strip, search.now);
-    cutInPlace(strip, Math.max(search.fixed, search.now.length * (1 - search.cut)));
+function explore(search: StripSearch, stop: () => boolean): boolean {
+  const { strip, best, failed, random } = search;
+  const length = Math.max(search.fixed, best.length * (1 - search.cut));
+  if (failed.length > 0) drawFailed(search);
+  else setState(strip, best);
+  if (strip.length > length) sliceInPlace(strip, length, random);
+  strip.length = length;
+  if (separate(strip, SETTINGS.explore, random, stop)) {
+    if (failed.length === 0) search.cut = Math.min(SETTINGS.cut, search.cut * 1.2);
+    return keepLayout(search);
   }
-  if (separate(strip, { passes: passesFor(strip), strikes: 3 }, search.random, stop)) return keepLayout(search);
-  search.failed.push({ state: copyState(strip), overlap: measureOverlap(strip) });
-  search.failed.sort((a, b) => a.overlap - b.overlap);
-  if (search.failed.length >= SETTINGS.failures && search.cut > SETTINGS.cutLeast) {
-    search.cut = Math.max(SETTINGS.cutLeast, search.cut / 2);
-    search.failed = [];
-  }
+  failed.push({ state: copyState(strip), overlap: measureOverlap(strip) });
+  failed.sort((a, b) => a.overlap - b.overlap);
+  if (failed.length > SETTINGS.pool) failed.pop();
+  search.idle++;
+  if (search.idle % SETTINGS.patience === 0) search.cut = Math.max(SETTINGS.cutLeast, search.cut / 2);
   return false;
 }
 
-/** Cuts a narrow slice out somewhere: all beyond it moves up. */
-function tryFine(search: StripSearch, stop: () => boolean): boolean {
-  const { strip, random, now } = search;
-  setState(strip, now);
-  const { fineMost, fineLeast } = SETTINGS;
-  const slice = now.length * fineMost * (fineLeast / fineMost) ** random();
-  const at = random() * now.length;
-  const { start, movable } = strip.task;
-  for (let i = 0; i < movable; i++)
-    if (strip.x[i] + strip.x1[i] > 2 * at)
-      putPiece(strip, i, strip.shape[i], Math.max(start, strip.x[i] - slice), strip.y[i]);
-  cutInPlace(strip, Math.max(search.fixed, now.length - slice));
-  return separate(strip, { passes: passesFor(strip) / 2, strikes: 1 }, random, stop) && keepLayout(search);
-}
-
-/** Swaps pieces of the layout with a little more room, and goes on from there; from the best where it strayed too far. */
-function disturb(search: StripSearch, stop: () => boolean): void {
+/** Cuts a narrow slice out somewhere: narrower the more of the work is done. */
+function compact(search: StripSearch, share: number, stop: () => boolean): boolean {
   const { strip, random, best } = search;
-  const from = search.now.length > best.length * (1 + SETTINGS.drop) ? best : search.now;
-  setState(strip, from);
-  strip.length = from.length * (1 + SETTINGS.ease);
-  for (let k = drawInteger(random, SETTINGS.swaps); k >= 0; k--) disturbInPlace(search);
-  if (!separate(strip, { passes: passesFor(strip), strikes: 2 }, random, stop)) {
-    begin(search, best);
-    return;
-  }
-  begin(search, best);
-  keepLayout(search);
+  setState(strip, best);
+  const { fineMost, fineLeast, settle } = SETTINGS;
+  const slice = best.length * fineMost * (fineLeast / fineMost) ** Math.min(1, (share - settle) / (1 - settle));
+  sliceInPlace(strip, Math.max(search.fixed, best.length - slice), random);
+  return separate(strip, SETTINGS.compact, random, stop) && keepLayout(search);
 }
 
 /** Whether no shorter strip is to be had. */
@@ -215,14 +188,5 @@ export function isDone(search: StripSearch): boolean {
  * @returns whether the best layout became shorter
  */
 export function tryShorter(search: StripSearch, share: number, stop: () => boolean): boolean {
-  const settling = share >= SETTINGS.settle;
-  if (settling && search.now !== search.best) begin(search, search.best);
-  const least = search.cut <= SETTINGS.cutLeast;
-  if (least) search.idle++;
-  if (!settling && search.idle > SETTINGS.stall + SETTINGS.stallPiece * search.strip.task.movable) {
-    const before = search.best;
-    disturb(search, stop);
-    return search.best !== before;
-  }
-  return settling || (least && search.idle % SETTINGS.slices === 0) ? tryFine(search, stop) : tryCoarse(search, stop);
+  return share < SETTINGS.settle ? explore(search, stop) : compact(search, share, stop);
 }
