@@ -37,7 +37,9 @@ export const VERBS: { verb: string; call: string; words: string; more: string[] 
       "  FILE.csv    time,by,id,force_kN,frequency_Hz,free_length_m,mass_kg_m,temperature_C,x,y,z; one row a reading:",
       "              a force, or a frequency with free length and mass, or the place of an anchor or corner",
       "  --stage N   read at the end of that stage, in per cent; the finished roof where it is left out",
-      "  --out DIR   keeps readings and correction there under the next free number; nothing is overwritten",
+      "  --out DIR   keeps readings and correction there, in place of the folder readings beside the job, under the next",
+      "              free number; nothing is overwritten. Sets kept there of the same plan and stage are built on: the turns",
+      "              told after them are taken as made",
     ],
   },
   {

@@ -5,6 +5,7 @@ import { readInput } from "../../src/cli/readInput.ts";
 import { buildSoundSurface, type SoundSurface } from "../../src/core/form/repair/soundSurface.ts";
 import { runPlan } from "../../src/core/plan/runPlan.ts";
 import type { Station } from "../../src/core/problem.ts";
+import { benchCorrect } from "./correctCase.ts";
 import { benchDrag } from "./dragCase.ts";
 import { benchFlatten } from "./flattenCase.ts";
 import { benchForm } from "./formCase.ts";
@@ -17,6 +18,7 @@ const CASES: Record<string, { call: string; least: number; run: (args: string[])
   flatten: { call: "flatten STRIP.obj", least: 1, run: ([strip]) => benchFlatten(readSurface(strip).surface) },
   form: { call: "form N", least: 1, run: ([n]) => benchForm(readCount(n, "N")) },
   geodesic: { call: "geodesic MESH.obj PAIRS.txt", least: 2, run: ([mesh, pairs]) => benchPairs(mesh, pairs) },
+  correct: { call: "correct STATES", least: 1, run: ([n]) => benchCorrect(readCount(n, "STATES")) },
   pack: {
     call: "pack INSTANCE.json SECONDS SEED OUT.json",
     least: 4,

@@ -44,12 +44,19 @@ function buildFan(corners: Vec3[], m: number): MadeForm {
 }
 
 /** What makes a rig more than a sail hung from its corners. */
-export type RigKind = "corners" | "mast" | "cable-ends";
+export type RigKind = "corners" | "mast" | "cable-ends" | "mast-ends";
+
+/** Kinds of the first thirty: a third is more than a sail hung from its corners, and most of that has several tension modes. */
+function pickKind(seed: number): RigKind {
+  if (seed % 3 !== 0) return "corners";
+  if (seed % 2 === 1) return "cable-ends";
+  return seed % 12 === 0 ? "mast" : "mast-ends";
+}
 
 /** Rig number `seed`: its input, as the chain makes it. */
 export function makeRandomRig(
   seed: number,
-  kind: RigKind = seed % 3 !== 0 ? "corners" : seed % 2 === 0 ? "mast" : "cable-ends",
+  kind: RigKind = pickKind(seed),
 ): { input: RigInput; findings: Finding[]; kind: RigKind; corners: number } {
   const random = buildRandom(seed);
   const draw = (low: number, high: number) => low + (high - low) * random();
@@ -73,27 +80,33 @@ export function makeRandomRig(
   const free = { ...turnbuckle, shortest: 100, longest: 3000 };
   const rig: Partial<RigJob> = { adjusters: giveAdjusters(made, free) };
   const anchors: Job["anchors"] = [];
+  const atEnd = (name: string, edge: string) => ({
+    name,
+    anchor: null,
+    edge,
+    end: "first" as const,
+    turnbuckle: free,
+    EA: 60000,
+  });
   if (kind === "mast") Object.assign(rig, guyCorner(corners, 1, anchors, random));
-  if (kind === "cable-ends")
-    rig.adjusters = made.lines.map((line, k) => ({
-      name: `T${k + 1}`,
-      anchor: null,
-      edge: line.name,
-      end: "first",
-      turnbuckle: free,
-      EA: 60000,
-    }));
+  if (kind === "cable-ends" || kind === "mast-ends")
+    rig.adjusters = made.lines.map((line, k) => atEnd(`T${k + 1}`, line.name));
+  if (kind === "mast-ends") {
+    // the corner sits on the mast's head; its stays have turnbuckles at their feet
+    Object.assign(rig, guyCorner(corners, 1, null, random));
+    for (const s of rig.stays ?? []) rig.adjusters?.push({ ...atEnd(`${s.name}-foot`, s.name), end: "last" });
+  }
   const { input, findings } = planInput(made, { settle: true, edges, anchors }, rig);
   return { input, findings, kind, corners: n };
 }
 
-/** A mast that leans a little outward under a high corner's far pin, with two stays behind it. */
-function guyCorner(corners: Vec3[], k: number, anchors: Job["anchors"], random: () => number) {
+/** A mast that leans a little outward under a high corner's far pin (without anchors: under the corner itself), two stays behind it. */
+function guyCorner(corners: Vec3[], k: number, anchors: Job["anchors"] | null, random: () => number) {
   const [x, y, z] = corners[k];
   const r = Math.hypot(x, y);
   const [ux, uy] = [x / r, y / r];
-  const head: Vec3 = [x + ux, y + uy, z + 0.15];
-  anchors.push({ name: `corner-${k + 1}`, support: head });
+  const head: Vec3 = anchors ? [x + ux, y + uy, z + 0.15] : [x, y, z];
+  anchors?.push({ name: `corner-${k + 1}`, support: head });
   const behind = (out: number, side: number): Vec3 => [
     head[0] + out * ux - side * uy,
     head[1] + out * uy + side * ux,

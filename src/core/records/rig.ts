@@ -173,6 +173,8 @@ export interface FactsWay {
   way: "chosen" | "clockwise" | "by-force";
   /** Member nearest its limit at any step of any stage. */
   peak: { id: string; kN: number; share: number };
+  /** The same member's like when the last step is done: no way can have a lower peak than what it ends with. */
+  end: { id: string; kN: number; share: number };
   /** Visits to an adjuster, and steps (adjusters turned at once are one step). */
   visits: number;
   steps: number;

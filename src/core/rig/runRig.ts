@@ -41,6 +41,8 @@ export function runRig(input: RigInput, context: StationContext): StationResult<
       input.rig.temperature,
     );
   });
+  const without = { rig: null, asBuilt: null, tensioning: null, sensitivity: null };
+  if (rig.stops.length > 0) return { output: { cables: lines, ...without }, findings: rig.stops, checks };
   if (rig.adjusters.length === 0) {
     findings.push({
       code: "rig-none",
@@ -53,11 +55,7 @@ export function runRig(input: RigInput, context: StationContext): StationResult<
       remedy: "name adjusters in the job where turnbuckles or jacks stand",
       basis: "rules of the job file",
     });
-    return {
-      output: { cables: lines, rig: null, asBuilt: null, tensioning: null, sensitivity: null },
-      findings,
-      checks,
-    };
+    return { output: { cables: lines, ...without }, findings, checks };
   }
   const solved = solveRig(input, rig, context);
   checks.push(...solved.checks);

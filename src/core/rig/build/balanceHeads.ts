@@ -1,6 +1,6 @@
 // Forces of masts and stays that balance the pulls at mast heads: what the job leaves open is found by non-negative least squares.
 import { solveNonNegative } from "../../numeric/leastSquares.ts";
-import { PlanError } from "../../problem.ts";
+import type { Finding } from "../../problem.ts";
 
 /** Pull of the sail on a head, kN. */
 export interface HeadPull {
@@ -19,22 +19,22 @@ interface HeadStay {
   force: number | null;
 }
 
-/** Share of the greatest pull that may stay unbalanced at a head before it is an error. */
+/** Share of the greatest pull that may stay unbalanced at a head before the rig is stopped. */
 export const unbalancedLimit = 0.01;
 
 /**
  * Compression of struts and tension of stays, kN, both positive.
  * @shape xyz 3*nN; heads: nodes that are free and must balance; results in the order of struts and stays
- * @throws PlanError mast-balance: the stays cannot hold a head, with the force that is left
+ * @returns unbalanced: a stop where the stays cannot hold a head, with the force that is left
  */
 export function balanceHeads(
   xyz: ArrayLike<number>,
   heads: readonly number[],
   pulls: readonly HeadPull[],
   members: { struts: readonly HeadStrut[]; stays: readonly HeadStay[] },
-): { strut: number[]; stay: number[] } {
+): { strut: number[]; stay: number[]; unbalanced: Finding | null } {
   const { struts, stays } = members;
-  if (heads.length === 0) return { strut: struts.map(() => 0), stay: stays.map((s) => s.force ?? 0) };
+  if (heads.length === 0) return { strut: struts.map(() => 0), stay: stays.map((s) => s.force ?? 0), unbalanced: null };
   const open = stays.map((s, i) => (s.force === null ? i : -1)).filter((i) => i >= 0);
   const nX = struts.length + open.length;
   const A = Array.from({ length: 3 * heads.length }, () => new Array<number>(nX).fill(0));
@@ -78,20 +78,19 @@ export function balanceHeads(
     });
   }
   const x = solveNonNegative(A, b).x;
-  checkBalance(A, b, x, { most, struts });
   const stay = stays.map((s) => s.force ?? 0);
   open.forEach((i, c) => {
     stay[i] = x[struts.length + c];
   });
-  return { strut: struts.map((_, c) => x[c]), stay };
+  return { strut: struts.map((_, c) => x[c]), stay, unbalanced: findUnbalanced(A, b, x, { most, struts }) };
 }
 
-function checkBalance(
+function findUnbalanced(
   A: number[][],
   b: number[],
   x: ArrayLike<number>,
   about: { most: number; struts: readonly HeadStrut[] },
-): void {
+): Finding | null {
   let left = 0;
   for (let r = 0; r < b.length; r++) {
     let sum = -b[r];
@@ -99,12 +98,17 @@ function checkBalance(
     left = Math.max(left, Math.abs(sum));
   }
   const limit = unbalancedLimit * about.most;
-  if (left <= limit) return;
+  if (left <= limit) return null;
   const names = about.struts.map((s) => s.id);
-  throw new PlanError(
-    "mast-balance",
-    `mast ${names.join(", ")}: its stays cannot hold the head; ${left.toFixed(2)} kN stay unbalanced, the limit is ${limit.toFixed(2)} kN (1 % of the greatest pull). Move the stays' feet so that they lie against the pull, or give the mast another head`,
-    names,
-    { left },
-  );
+  return {
+    code: "mast-balance",
+    level: "stop",
+    station: "rig",
+    where: names,
+    value: left,
+    limit,
+    text: `mast ${names.join(", ")}: its stays cannot hold the head; ${left.toFixed(2)} kN stay unbalanced, the limit is ${limit.toFixed(2)} kN (1 % of the greatest pull). The rig is not worked out; the cloth can be cut`,
+    remedy: "move the stays' feet so that they lie against the pull, or give the mast another head",
+    basis: "balance of forces at the head; 1 % is our own default",
+  };
 }

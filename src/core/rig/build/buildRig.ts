@@ -1,6 +1,6 @@
 // The structure the tensioning is worked out on: all cloth with its flat panels, cables, masts, stays and adjusters.
 // Leaves out what structure.ts leaves out. Nodes 0 … nV-1 are those of the cut surface, then pins, mast heads and feet.
-import { PlanError } from "../../problem.ts";
+import { type Finding, PlanError } from "../../problem.ts";
 import type { AdjusterDecision, Turnbuckle } from "../../records/rig.ts";
 import { buildStiffness } from "../../structure/cloth.ts";
 import { buildStructure, type Structure } from "../../structure/structure.ts";
@@ -59,6 +59,8 @@ export interface Rig {
   /** Panel of every cloth triangle, and its corners in that panel's cut cloth, mm. */
   panelOf: string[];
   flat: [number, number][][];
+  /** Stops that leave the rig without a finished state: it must not be solved. */
+  stops: Finding[];
 }
 
 /** Flat cloth of all panels, relaxed (permanent strain put back), m. */
@@ -237,7 +239,7 @@ function moveAnchorsInPlace(input: RigInput, nodes: NodeList, placed: readonly P
 
 /**
  * Builds the rig of a form.
- * @throws PlanError adjuster-anchor, adjuster-slack, adjuster-end, mast-balance, rig-place, rig-cable, structure-link
+ * @throws PlanError adjuster-anchor, adjuster-slack, adjuster-end, rig-place, rig-cable, structure-link
  */
 export function buildRig(input: RigInput): Rig {
   const { form, layout } = input;
@@ -271,5 +273,14 @@ export function buildRig(input: RigInput): Rig {
     EA: new Float64Array(list.EA),
     strut: new Uint8Array(list.strut),
   });
-  return { structure, cables, struts: built, adjusters, L0: new Float64Array(list.L0), panelOf, flat: cut };
+  return {
+    structure,
+    cables,
+    struts: built,
+    adjusters,
+    L0: new Float64Array(list.L0),
+    panelOf,
+    flat: cut,
+    stops: forces.unbalanced ? [forces.unbalanced] : [],
+  };
 }

@@ -12,8 +12,8 @@ export interface Goal {
   forceShare: number;
   /** How far corners may stay off, m. */
   cornerWay: number;
-  /** Times these windows below which nothing is turned at all: noise would turn adjusters to and fro. */
-  patience: number;
+  /** Up to where forces (share of the wanted one, by adjuster) and corners (m) are let be: noise would turn adjusters to and fro. */
+  patience: { force: readonly number[]; corner: number };
   /** n × n kN/m and 3n × n m/m, per metre added. */
   influence: ArrayLike<number>;
   moves: ArrayLike<number>;
@@ -91,6 +91,15 @@ const pairs = (p: number, q: number) => [
 
 /** Greatest share of its window that a force or corner stays off. */
 function measureWorst(goal: Goal, left: readonly number[]): number {
+  return measureOff(
+    goal,
+    left,
+    goal.off.map(() => goal.forceShare),
+    goal.cornerWay,
+  );
+}
+
+function measureOff(goal: Goal, left: readonly number[], forceShare: readonly number[], cornerWay: number): number {
   const n = left.length;
   let worst = 0;
   for (let i = 0; i < n; i++) {
@@ -100,8 +109,8 @@ function measureWorst(goal: Goal, left: readonly number[]): number {
       df += goal.influence[i * n + j] * left[j];
       for (let k = 0; k < 3; k++) way[k] += goal.moves[(3 * i + k) * n + j] * left[j];
     }
-    worst = Math.max(worst, Math.abs(df) / (goal.forceShare * goal.forces[i]));
-    worst = Math.max(worst, Math.sqrt(way[0] ** 2 + way[1] ** 2 + way[2] ** 2) / goal.cornerWay);
+    worst = Math.max(worst, Math.abs(df) / (forceShare[i] * goal.forces[i]));
+    worst = Math.max(worst, Math.sqrt(way[0] ** 2 + way[1] ** 2 + way[2] ** 2) / cornerWay);
   }
   return worst;
 }
@@ -124,7 +133,7 @@ export function chooseMoves(goal: Goal): number[] {
         : worst <= 1 && (size < best.size || (size === best.size && travel < best.travel - 1e-9));
     if (better) best = { left, worst, size, travel };
   };
-  if (best.worst > goal.patience) {
+  if (measureOff(goal, goal.off, goal.patience.force, goal.patience.corner) > 1) {
     if (n <= mostTried)
       for (let bits = 1; bits < 2 ** n; bits++) offer(goal.off.flatMap((_, i) => ((bits >> i) & 1 ? [i] : [])));
     else growSets(goal, n, offer);

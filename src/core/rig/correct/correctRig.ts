@@ -11,14 +11,27 @@ import { findGreatest, readAdjusters, readCorners, readForces } from "../stages/
 import { type RigState, turnTo } from "../stages/solveLengths.ts";
 import { type SolvedRig, solveRig } from "../stages/solveRig.ts";
 import { chooseMoves } from "./chooseMoves.ts";
-import { fitReadings, type ReadingFit, type ReadingTrust, trustDefaults } from "./fitReadings.ts";
+import {
+  believePlan,
+  believeTurned,
+  fitReadings,
+  type LengthBelief,
+  type ReadingFit,
+  type ReadingTrust,
+  trustDefaults,
+} from "./fitReadings.ts";
 import { type SortedReadings, sortReadings } from "./sortReadings.ts";
 
 /**
- * Windows that hold a roof: forces within a tenth, corners within 5 mm (site habit). Moves aim at part of them, for error; what
- * stays within a larger part is let be.
+ * Windows that hold a roof: forces within a tenth, corners within 5 mm (site habit). Moves aim at a fifth of them, for error.
  */
-export const correctionWindows = { force: 0.1, corner: 0.005, aim: 0.2, patience: 0.7 };
+export const correctionWindows = { force: 0.1, corner: 0.005, aim: 0.2 };
+
+/**
+ * What is let be: a force that lies three deviations of its fit inside its window, but never less than a quarter of it; a corner
+ * within three fifths of its own. Nearer the middle noise alone would turn adjusters to and fro.
+ */
+const patience = { deviations: 3, least: 0.25, corner: 0.6 };
 
 /** Misfit in deviations from which on a reading is taken out as contradicting the others. */
 const contradicts = 4;
@@ -26,42 +39,64 @@ const contradicts = 4;
 /** Deviation of a length from which on readings are said not to tell it, m. */
 const untold = 0.006;
 
+/** How finely a hand makes the turns it is told, m: ten degrees of a body with 4 mm a turn (own default). */
+const turnError = 1e-4;
+
+/** Readings taken before these, held against the same stage, and what was turned after them, mm by adjuster, positive shortens. */
+export interface EarlierRound {
+  readings: readonly Reading[];
+  travel: Record<string, number>;
+}
+
 /** A correction with what must be known beside it. */
 export interface CorrectedRig {
   correction: Correction;
   findings: Finding[];
 }
 
+/** What the crew read. */
+export interface SiteReadings {
+  readings: readonly Reading[];
+  /** Sets read before at the same stage, oldest first. */
+  earlier?: readonly EarlierRound[];
+  /** The stage at whose end was read, in per cent of the targets; null: the finished roof. */
+  percent?: number | null;
+}
+
 /**
- * Works out the correction. percent: the stage at whose end was read, in per cent of the targets; null: the finished roof.
- * @throws PlanError as buildRig; reading-unknown; correct-stage; correct-none: the form has no adjuster
+ * Works out the correction.
+ * @throws PlanError as buildRig; reading-unknown; correct-stage; correct-none: the form has no adjuster; correct-stopped: the rig cannot be worked out
  */
-export function correctRig(
-  input: RigInput,
-  readings: readonly Reading[],
-  percent: number | null,
-  context: StationContext,
-): CorrectedRig {
+export function correctRig(input: RigInput, read: SiteReadings, context: StationContext): CorrectedRig {
   const rig = buildRig(input);
   if (rig.adjusters.length === 0)
     throw new PlanError("correct-none", "the form has no adjuster, so there is nothing to set right by turning", []);
+  const [stop] = rig.stops;
+  if (stop) throw new PlanError("correct-stopped", `the plan has no rig to correct: ${stop.text}`, stop.where);
   const solved = solveRig(input, rig, context);
-  return correctSolved(input, rig, solved, readings, percent);
+  return correctSolved(input, rig, solved, read);
 }
 
 /** The same for a rig that is solved already. */
-export function correctSolved(
-  input: RigInput,
-  rig: Rig,
-  solved: SolvedRig,
-  readings: readonly Reading[],
-  percent: number | null = null,
-): CorrectedRig {
-  const sorted = sortReadings(input, rig, readings);
-  const stage = findStage(solved, percent);
-  const { model, planned, solver } = standAs(rig, solved, stage.end, sorted, input.rig.temperature);
+export function correctSolved(input: RigInput, rig: Rig, solved: SolvedRig, read: SiteReadings): CorrectedRig {
+  const stage = findStage(solved, read.percent ?? null);
   const trust: ReadingTrust = { ...trustDefaults, force: Math.max(input.rig.readingError, 1e-3) };
-  const { fit, doubted } = fitWithoutDoubted(model, solver, planned, sorted, trust);
+  const fitRound = (readings: readonly Reading[], belief: LengthBelief) => {
+    const sorted = sortReadings(input, rig, readings);
+    const stood = standAs(rig, solved, stage.end, sorted, input.rig.temperature);
+    return { sorted, ...stood, ...fitWithoutDoubted(stood.model, stood.solver, stood.planned, sorted, trust, belief) };
+  };
+  const plan = believePlan(rig, trust);
+  let belief = plan;
+  for (const { readings, travel } of read.earlier ?? []) {
+    const turned = rig.adjusters.map((a) => -(travel[a.id] ?? 0) / 1000);
+    belief = believeTurned(fitRound(readings, belief).fit, turned, turnError);
+  }
+  const together = fitRound(read.readings, belief);
+  const alone = belief !== plan && seemsOtherwise(together) ? fitRound(read.readings, plan) : null;
+  // where these readings agree among themselves, it is the earlier ones that no longer hold
+  const otherwise = alone !== null && alone.doubted.length === 0;
+  const { sorted, model, planned, solver, fit, doubted } = otherwise ? alone : together;
   const links = rig.adjusters.map((a) => a.link);
   const nodes = rig.adjusters.map((a) => a.nodes[0]);
   const response = measureResponse(solver, planned.x, planned.L0, links, { links, nodes });
@@ -72,7 +107,13 @@ export function correctSolved(
     bias: readAdjusters(model, planned).map((f, i) => f - wanted[i]),
     forceShare: correctionWindows.aim * correctionWindows.force,
     cornerWay: correctionWindows.aim * correctionWindows.corner,
-    patience: correctionWindows.patience / correctionWindows.aim,
+    patience: {
+      force: wanted.map((kN, i) => {
+        const { force } = correctionWindows;
+        return Math.max(force - (patience.deviations * fit.sureForce[i]) / kN, patience.least * force);
+      }),
+      corner: patience.corner * correctionWindows.corner,
+    },
     influence: response.forces,
     moves: response.moves,
     notch: rig.adjusters.map((_, i) => measureNotch(rig, i)),
@@ -81,6 +122,7 @@ export function correctSolved(
   const findings = [
     ...sorted.findings,
     ...doubted,
+    ...(otherwise ? [dropEarlier(together.fit.strain)] : []),
     ...findUntold(rig, fit),
     ...findImpossible(rig, fit, change, played.moves),
   ];
@@ -92,6 +134,29 @@ export function correctSolved(
   }));
   const forecast = { forces: readForces(model, played.end), corners: readCorners(model, played.end) };
   return { correction: { stage: stage.name, fitted, moves: played.moves, forecast }, findings };
+}
+
+/** Squared deviations of n lengths from what was believed, beyond which they are not as believed: four deviations of their sum. */
+function strainLimit(n: number): number {
+  return n + 4 * Math.sqrt(2 * n);
+}
+
+function seemsOtherwise({ fit, doubted }: { fit: ReadingFit; doubted: Finding[] }): boolean {
+  return doubted.length > 0 || fit.strain > strainLimit(fit.off.length);
+}
+
+function dropEarlier(strain: number): Finding {
+  return {
+    code: "reading-earlier",
+    level: "caution",
+    station: "rig",
+    where: [],
+    value: strain,
+    limit: null,
+    text: "what is read now does not follow from the earlier readings and the turns told after them: an adjuster was turned otherwise than told, or the roof has settled. The earlier readings are left out",
+    remedy: "compare the pin lengths with the log, and keep to the turns told from here on",
+    basis: "own argument: squared deviations of the lengths from what the earlier readings told",
+  };
 }
 
 /** The stage named by its share of the targets in per cent, or the last. @throws PlanError correct-stage */
@@ -143,11 +208,12 @@ function fitWithoutDoubted(
   planned: RigState,
   readings: SortedReadings,
   trust: ReadingTrust,
+  belief: LengthBelief,
 ): { fit: ReadingFit; doubted: Finding[] } {
   let kept = readings;
   const doubted: Finding[] = [];
   for (let round = 0; ; round++) {
-    const fit = fitReadings(rig, solver, planned, kept, trust);
+    const fit = fitReadings(rig, solver, planned, kept, trust, belief);
     const worst = fit.misfit.reduce((a, b) => (b.times > a.times ? b : a), { row: 0, id: "", times: 0 });
     if (worst.times < contradicts || round === 2) return { fit, doubted };
     kept = {

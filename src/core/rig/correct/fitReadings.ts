@@ -4,7 +4,7 @@
 import { Matrix, solve } from "ml-matrix";
 import { measureLink } from "../../structure/elements.ts";
 import type { EquilibriumSolver } from "../../structure/equilibrium.ts";
-import { measureResponse } from "../../structure/influence.ts";
+import { measureInfluence, measureResponse } from "../../structure/influence.ts";
 import type { Rig } from "../build/buildRig.ts";
 import { findTautest } from "../stages/readState.ts";
 import { type RigState, turnTo } from "../stages/solveLengths.ts";
@@ -23,12 +23,26 @@ export interface ReadingTrust {
 /** Survey to 3 mm, adjusters within a centimetre (common practice). */
 export const trustDefaults = { place: 0.003, length: 0.01 };
 
+/** What is known of the lengths before a set of readings: where each adjuster is believed to be, and how firmly. */
+export interface LengthBelief {
+  /** Length over the plan, m. */
+  off: number[];
+  /** Inverse of the covariance, 1/m2. @shape n × n */
+  H: Matrix;
+}
+
 /** A fitted state. */
 export interface ReadingFit {
   state: RigState;
   /** Length over the plan of each adjuster, m, and its standard deviation. */
   off: number[];
   sure: number[];
+  /** Inverse of the covariance of the lengths, with all readings, 1/m2. @shape n × n */
+  H: Matrix;
+  /** Standard deviation of each adjuster's force as fitted, kN. */
+  sureForce: number[];
+  /** How far the lengths lie from what was believed before, squared deviations summed; about n where all is as believed. */
+  strain: number;
   /** Misfit of each reading over its own deviation: forces, then corners (the longest way). */
   misfit: { row: number; id: string; times: number }[];
 }
@@ -42,6 +56,23 @@ interface System {
   cost: number;
 }
 
+/** What the plan alone says of the lengths. */
+export function believePlan(rig: Rig, trust: ReadingTrust): LengthBelief {
+  const n = rig.adjusters.length;
+  return { off: new Array(n).fill(0), H: Matrix.eye(n).mul(1 / trust.length ** 2) };
+}
+
+/** What a fit says of the lengths after turns that were told, m added; each is set to `turnError`, m. */
+export function believeTurned(
+  fit: Pick<ReadingFit, "off" | "H">,
+  turns: readonly number[],
+  turnError: number,
+): LengthBelief {
+  const n = fit.off.length;
+  const spread = solve(fit.H, Matrix.eye(n)).add(Matrix.eye(n).mul(turnError ** 2));
+  return { off: fit.off.map((q, i) => q + turns[i]), H: solve(spread, Matrix.eye(n)) };
+}
+
 /**
  * Fits lengths to readings, from the planned state.
  * @shape planned: the state the readings are held against; out: one number an adjuster
@@ -52,6 +83,7 @@ export function fitReadings(
   planned: RigState,
   readings: SortedReadings,
   trust: ReadingTrust,
+  belief: LengthBelief = believePlan(rig, trust),
 ): ReadingFit {
   const n = rig.adjusters.length;
   const links = rig.adjusters.map((a) => a.link);
@@ -67,15 +99,17 @@ export function fitReadings(
     const places = readings.corners.map((c) => [0, 1, 2].map((k) => (state.x[3 * c.node + k] - c.at[k]) / trust.place));
     const off = links.map((k, i) => state.L0[k] - home[i]);
     const sum = (values: number[]) => values.reduce((s, q) => s + q * q, 0);
-    const cost = sum(rows.map((r) => r.miss)) + sum(places.flat()) + sum(off.map((q) => q / trust.length));
-    return { rows, places, off, cost };
+    const from = off.map((q, i) => q - belief.off[i]);
+    const pull = belief.H.mmul(Matrix.columnVector(from)).to1DArray();
+    const strain = pull.reduce((s, q, i) => s + q * from[i], 0);
+    const cost = sum(rows.map((r) => r.miss)) + sum(places.flat()) + strain;
+    return { rows, places, off, pull, strain, cost };
   };
   const assemble = (state: RigState, at: ReturnType<typeof measure>): System => {
     const nodes = readings.corners.map((c) => c.node);
     const r = measureResponse(solver, state.x, state.L0, links, { links: at.rows.map((q) => q.link), nodes });
-    const H = Matrix.zeros(n, n);
-    const g = at.off.map((q) => q / trust.length ** 2);
-    for (let i = 0; i < n; i++) H.set(i, i, 1 / trust.length ** 2);
+    const H = belief.H.clone();
+    const g = at.pull.slice();
     const add = (row: (j: number) => number, miss: number) => {
       for (let i = 0; i < n; i++) {
         g[i] += row(i) * miss;
@@ -114,10 +148,17 @@ export function fitReadings(
     if (!taken) break;
   }
   const spread = solve(system.H, Matrix.eye(n));
+  const own = measureInfluence(solver, state.x, state.L0, links, links);
+  const J = Matrix.from1DArray(n, n, own);
+  const forceSpread = J.mmul(spread).mmul(J.transpose());
+  const roots = (m: Matrix) => at.off.map((_, i) => Math.sqrt(Math.max(m.get(i, i), 0)));
   return {
     state,
     off: at.off,
-    sure: at.off.map((_, i) => Math.sqrt(Math.max(spread.get(i, i), 0))),
+    sure: roots(spread),
+    H: system.H,
+    sureForce: roots(forceSpread),
+    strain: at.strain,
     misfit: [
       ...at.rows.map((q, m) => ({
         row: readings.forces[m].row,

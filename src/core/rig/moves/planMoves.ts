@@ -28,16 +28,21 @@ export function measureNotch(rig: Rig, i: number): number {
 /** Furthest a rounded length may lie from the wanted one, in notches: beyond it the corners wander. */
 const furthest = 1.5;
 
+/** Turns up to this length may be spared, m. */
+const spared = 0.006;
+
 /**
  * Lengths near the wanted ones that whole notches from `from` reach, chosen so that the adjusters' forces stay nearest: single
- * notches and pairs of notches are tried until none helps.
- * @shape one for each adjuster, m; influence: rows of the adjusters first, n columns, kN per m added
+ * notches, pairs and threes of notches are tried until none helps.
+ * @shape one for each adjuster, m; influence: rows of the adjusters first, n columns, kN per m added; allowed: share of a target by
+ *   which forces may be off so that an adjuster that would move little need not be visited
  */
 export function roundLengths(
   rig: Rig,
   influence: ArrayLike<number>,
   wanted: readonly number[],
   from: readonly number[],
+  allowed = 0,
 ): number[] {
   const n = rig.adjusters.length;
   const notch = rig.adjusters.map((_, i) => measureNotch(rig, i));
@@ -48,7 +53,7 @@ export function roundLengths(
     for (let j = 0; j < n; j++) df += influence[i * n + j] * (from[j] - count[j] * notch[j] - wanted[j]);
     return df / a.target;
   });
-  const steps = singlesAndPairs(n);
+  const steps = listSteps(n);
   const change = (step: readonly [number, number][], i: number) =>
     step.reduce((sum, [j, way]) => sum - (influence[i * n + j] * way * notch[j]) / rig.adjusters[i].target, 0);
   let best = Math.max(...miss.map(Math.abs));
@@ -68,23 +73,38 @@ export function roundLengths(
       better = true;
     }
   }
+  // an adjuster that the stage can do without is not visited: the smallest turns are looked at first
+  const order = count.map((_, i) => i).sort((p, q) => Math.abs(count[p]) - Math.abs(count[q]) || p - q);
+  for (const j of order) {
+    if (count[j] === 0 || Math.abs(from[j] - wanted[j]) > spared) continue;
+    const back = -count[j] * notch[j];
+    const without = miss.map((m, i) => m - (influence[i * n + j] * back) / rig.adjusters[i].target);
+    const worst = Math.max(...without.map(Math.abs));
+    if (worst > Math.max(best, allowed)) continue;
+    without.forEach((m, i) => {
+      miss[i] = m;
+    });
+    count[j] = 0;
+  }
   return from.map((f, i) => f - count[i] * notch[i]);
 }
 
-/** One notch at one of n adjusters, and one at each of two. */
-function singlesAndPairs(n: number): [number, number][][] {
-  const ways = [1, -1];
+/** Adjusters up to which three are turned against each other too. */
+const triedByThree = 10;
+
+/** One notch at one of n adjusters, one at each of two, and where there are few one at each of three. */
+function listSteps(n: number): [number, number][][] {
   const out: [number, number][][] = [];
-  for (let i = 0; i < n; i++) for (const p of ways) out.push([[i, p]]);
-  for (let i = 0; i < n; i++)
-    for (let j = i + 1; j < n; j++)
-      for (const p of ways)
-        for (const q of ways)
-          out.push([
-            [i, p],
-            [j, q],
-          ]);
-  return out;
+  const grow = (step: [number, number][], from: number, most: number) => {
+    for (let i = from; i < n; i++)
+      for (const way of [1, -1]) {
+        const longer: [number, number][] = [...step, [i, way]];
+        out.push(longer);
+        if (longer.length < most) grow(longer, i + 1, most);
+      }
+  };
+  grow([], 0, n <= triedByThree ? 3 : 2);
+  return out.sort((p, q) => p.length - q.length);
 }
 
 /** A state to first order: influence of the adjusters on every member at its most pulled link, adjusters first. */

@@ -46,7 +46,8 @@ export function playByForce(
   };
   for (const stage of stages.slice(first ? 1 : 0)) goRound(stage.fraction);
   for (let round = 0; round < mostRounds && measureOff() > goodEnough; round++) goRound(1);
-  return { way: "by-force", peak, visits, steps, off: measureOff() };
+  const end = findGreatest(rig, state, decision.limit);
+  return { way: "by-force", peak, end, visits, steps, off: measureOff() };
 }
 
 /** Turns one adjuster by whole notches until its own force is within half a notch of what is wanted. */

@@ -19,8 +19,8 @@ export interface PlayedPlan {
   ways: FactsWay[] | null;
 }
 
-/** Share by which a way's peak may be passed and still count as no higher: what whole notches leave. */
-const notchShare = 0.01;
+/** Share by which a way's peak may be passed and still count as no higher: less than any gauge shows. */
+const alike = 1e-3;
 
 /** Plays the stages in the best order found; modes: strong tension modes of the rig. */
 export function playPlan(
@@ -54,7 +54,7 @@ export function playPlan(
     playByForce(decision, rig, solver, stages, context),
   ];
   // first order may have been wrong: then the plain order it is
-  if (measureHeight(ways[0]) > (1 + notchShare) * measureHeight(ways[1]))
+  if (measureHeight(ways[0]) > (1 + alike) * measureHeight(ways[1]))
     return gather(plain, [{ ...ways[1], way: "chosen" }, ways[1], ways[2]]);
   return gather(chosen, ways);
 }
@@ -73,6 +73,7 @@ function describeWay(way: FactsWay["way"], rig: Rig, played: PlayedStage[], end:
   return {
     way,
     peak: moves.map((m) => m.greatest).reduce(pickHigher),
+    end: moves[moves.length - 1].greatest,
     visits: moves.length,
     steps: played.reduce((sum, p) => sum + p.states.length, 0),
     off: Math.max(...forces.map((f, i) => Math.abs(f / rig.adjusters[i].target - 1))),

@@ -23,7 +23,13 @@ export interface LengthOptions {
 }
 
 /** Defaults of solveLengths: a tenth of the 0.5 % that the schedule promises before rounding. */
-export const lengthDefaults: LengthOptions = { tolerance: 5e-4, stride: 0.015, rounds: 40 };
+export const lengthDefaults: LengthOptions = { tolerance: 5e-4, stride: 0.015, rounds: 60 };
+
+/** Rounds without getting nearer before the stride is cut. */
+const idleRounds = 6;
+
+/** Stride below which a solve that no longer comes nearer is given up, m. */
+const shortest = 1e-4;
 
 /** How sharply a state is solved: out-of-balance over the largest force. Readings are kept to 1e-3 of a force at best. */
 export const restLimit = { onTheWay: 1e-6, finished: 1e-9 };
@@ -87,17 +93,28 @@ export function solveLengths(
   const targets = rig.adjusters.map((a) => a.target);
   let state = start;
   let softness = 0.05;
+  let { stride } = options;
+  let longest = stride;
+  let idle = 0;
   let best: RigState | null = null;
   let least = Infinity;
   for (let round = 0; round < options.rounds; round++) {
     const forces = readAdjusters(rig, state);
     const miss = forces.map((f, i) => (wanted[i] - f) / targets[i]);
     const off = Math.max(...miss.map(Math.abs));
-    if (off < least && state.equilibrium.converged) {
+    const better = off < least && state.equilibrium.converged;
+    if (better) {
       least = off;
       best = state;
     }
     if (off < options.tolerance) break;
+    idle = better ? 0 : idle + 1;
+    if (best && idle >= idleRounds) {
+      // first order reaches too far (cloth or links going slack on the way): back to the best and on with half the stride
+      state = best;
+      stride = Math.min(stride, longest) / 2;
+      if (stride < shortest) break;
+    }
     const J = measureAdjusterInfluence(rig, solver, state);
     for (let i = 0; i < n; i++) for (let j = 0; j < n; j++) J.set(i, j, J.get(i, j) / targets[i]);
     const svd = new SingularValueDecomposition(J, { autoTranspose: true });
@@ -121,8 +138,9 @@ export function solveLengths(
     const right = J.transpose().mmul(Matrix.columnVector(miss));
     for (let i = 0; i < n; i++) right.set(i, 0, right.get(i, 0) + mu * mu * home[i]);
     const d = new SingularValueDecomposition(left, { autoTranspose: true }).solve(right).to1DArray();
-    const longest = Math.max(...d.map(Math.abs));
-    const share = longest > options.stride ? options.stride / longest : 1;
+    longest = Math.max(...d.map(Math.abs));
+    const share = longest > stride ? stride / longest : 1;
+    longest *= share;
     state = turnTo(
       rig,
       solver,

@@ -75,7 +75,8 @@ export function solveStages(
   let begin: RigState | null = null;
   return ends.map(({ state, influence }, k) => {
     const wanted = rig.adjusters.map((a) => state.L0[a.link]);
-    const to = roundLengths(rig, influence, wanted, from);
+    // on the way what lies within the gauge's window need not be visited
+    const to = roundLengths(rig, influence, wanted, from, fractions[k] === 1 ? 0 : input.rig.readingError);
     const end = turnTo(rig, solver, state, to, { ...context, sharp: fractions[k] === 1 });
     const linear = { from, to, members, forces: readMembers(rig, end), influence };
     const stage = { name: nameStage(fractions[k]), fraction: fractions[k], from, begin, end, linear };
