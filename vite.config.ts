@@ -10,7 +10,12 @@ export default defineConfig({
     sourcemap: true,
     minify: false,
     rollupOptions: {
-      input: { seamstay: "src/cli/seamstay.ts", bench: "test/bench/bench.ts", packWorker: "test/bench/packWorker.ts" },
+      input: {
+        seamstay: "src/cli/seamstay.ts",
+        bench: "test/bench/bench.ts",
+        packWorker: "test/bench/packWorker.ts",
+        "chunks/slideCase": "test/page/slideCase.ts",
+      },
       output: { entryFileNames: "[name].js", chunkFileNames: "chunks/[name].js" },
     },
   },

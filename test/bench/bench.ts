@@ -15,6 +15,13 @@ import { benchPack, type PackInstance } from "./packCase.ts";
 const CASES: Record<string, { call: string; least: number; run: (args: string[]) => unknown }> = {
   plan: { call: "plan JOB|FORM.obj", least: 1, run: ([job]) => benchPlan(job) },
   drag: { call: "drag JOB|FORM.obj", least: 1, run: ([job]) => benchDragged(job) },
+  slide: {
+    call: "slide JOB.json MESH.obj",
+    least: 2,
+    // the page's bench brings a browser with it, so it is a file of its own
+    run: async ([job, mesh]) =>
+      (await import(new URL("./chunks/slideCase.js", import.meta.url).href)).benchSlide(job, mesh),
+  },
   flatten: { call: "flatten STRIP.obj", least: 1, run: ([strip]) => benchFlatten(readSurface(strip).surface) },
   form: { call: "form N", least: 1, run: ([n]) => benchForm(readCount(n, "N")) },
   geodesic: { call: "geodesic MESH.obj PAIRS.txt", least: 2, run: ([mesh, pairs]) => benchPairs(mesh, pairs) },

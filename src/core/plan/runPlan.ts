@@ -11,6 +11,7 @@ import { runSeams } from "../seams/runSeams.ts";
 import { buildFormFacts, buildHead, buildPanelFacts, buildPieceFacts, buildSeamFacts } from "./buildFacts.ts";
 import { buildRigInput } from "./buildRigInput.ts";
 import { firstOptions, measureRoom } from "./clothRoom.ts";
+import type { MadeRoof } from "./dragSeam.ts";
 import { fitPanels } from "./fitPanels.ts";
 
 /** How a plan is asked for. */
@@ -21,6 +22,8 @@ export interface PlanOptions {
   revision: string;
   /** Told when a station begins; for timing by the caller. */
   onStation?: (station: Station) => void;
+  /** Handed what dragging a seam needs, once the panels are made. */
+  onRoof?: (roof: MadeRoof) => void;
 }
 
 /** Share of the progress bar at which each station begins. */
@@ -118,6 +121,7 @@ function runStationsInPlace(
     panels: share("panels", "rolls"),
     onStation: options.onStation,
   });
+  options.onRoof?.({ form, job, fitted });
   const layout = take(fitted.seams);
   const panels = take(fitted.panels);
   facts.layouts = layout.choices;

@@ -2,11 +2,11 @@
 import type { Project } from "../store/project.ts";
 import { placeInJob } from "./placeInJob.ts";
 
-/** The act; `point`: index along the seam. Shares are kept to a tenth of a thousandth. */
+/** The act; `point`: index along the seam. Shares are kept to a millionth. */
 export function moveSeamEnd(
   project: Project,
   args: { seam: number; point: number; edge: string; at: number },
 ): Project {
-  const at = Math.min(Math.max(Math.round(args.at * 1e4) / 1e4, 0), 1);
+  const at = Math.min(Math.max(Math.round(args.at * 1e6) / 1e6, 0), 1);
   return placeInJob(project, ["seams", "pairs", args.seam, args.point], { edge: args.edge, at });
 }

@@ -1,4 +1,5 @@
 // Flat panels as they are cut: outline, net line, marks, names. One scale for all; warp runs along x.
+import type { SeenPanel } from "../../core/plan/dragSeam.ts";
 import type { FactsPanel, Vec2 } from "../../core/records/facts.ts";
 import { bookStore } from "../store/bookStore.ts";
 import { useBook } from "../store/useBook.ts";
@@ -11,7 +12,7 @@ function middle(points: readonly Vec2[]): Vec2 {
   return points[Math.floor(points.length / 2)] ?? [0, 0];
 }
 
-function sideLine(panel: FactsPanel, side: FactsPanel["sides"][number]): Vec2[] {
+function sideLine(panel: SeenPanel, side: SeenPanel["sides"][number]): Vec2[] {
   const { net } = panel;
   const out: Vec2[] = [];
   for (let k = side.netFrom; ; k = (k + 1) % net.length) {
@@ -22,7 +23,7 @@ function sideLine(panel: FactsPanel, side: FactsPanel["sides"][number]): Vec2[] 
 }
 
 /** One panel in its own axes, mm, y up. `detail`: with marks and names of sides. */
-function PanelDrawing({ panel, size, detail }: { panel: FactsPanel; size: number; detail: boolean }) {
+export function PanelDrawing({ panel, size, detail }: { panel: SeenPanel; size: number; detail: boolean }) {
   const pointed = useBook((b) => b.pointed);
   return (
     <>
@@ -54,7 +55,8 @@ function PanelDrawing({ panel, size, detail }: { panel: FactsPanel; size: number
   );
 }
 
-function box(panel: FactsPanel): { x: number; y: number; w: number; h: number } {
+/** Where the cut cloth lies in its own axes, mm. */
+export function boxOf(panel: SeenPanel): { x: number; y: number; w: number; h: number } {
   const xs = panel.cut.map((p) => p[0]);
   const ys = panel.cut.map((p) => p[1]);
   const [x, y] = [Math.min(...xs), Math.min(...ys)];
@@ -65,7 +67,7 @@ function box(panel: FactsPanel): { x: number; y: number; w: number; h: number } 
 export function PanelSheet({ panels, alone }: { panels: readonly FactsPanel[]; alone: string | null }) {
   const pointed = useBook((b) => b.pointed);
   const shown = alone === null ? panels : panels.filter((p) => p.id === alone);
-  const boxes = shown.map(box);
+  const boxes = shown.map(boxOf);
   const gap = alone === null ? 350 : 100;
   const width = Math.max(...boxes.map((b) => b.w)) + 2 * gap;
   let y = gap;

@@ -1,6 +1,7 @@
 // Seams in one's own hands: each end slid along its edge, seams added, removed, evened.
 import { addSeam } from "../actions/addSeam.ts";
 import { evenSeams } from "../actions/evenSeams.ts";
+import { layPairs } from "../actions/layPairs.ts";
 import { moveSeamEnd } from "../actions/moveSeamEnd.ts";
 import { removeSeam } from "../actions/removeSeam.ts";
 import { takeSeams } from "../actions/takeSeams.ts";
@@ -18,7 +19,9 @@ export function SeamEnds() {
       <button
         type="button"
         disabled={facts?.seams === undefined || facts.seams.length === 0}
-        onClick={() => facts && act(takeSeams, { pairs: findSeamEnds(facts) }, "seams taken in hand")}
+        onClick={() =>
+          facts && act(layPairs, { pairs: findSeamEnds(facts).map((e) => e.places) }, "seams taken in hand")
+        }
       >
         Take these seams in hand
       </button>
@@ -37,7 +40,7 @@ export function SeamEnds() {
               label={`${k === 0 ? "Begins" : k === pair.length - 1 ? "Ends" : "Through"} on ${p.edge}`}
               path={`seams.pairs[${i}][${k}].at`}
               given
-              value={p.at}
+              value={Math.round(1e4 * p.at) / 1e4}
               factor={0.01}
               unit="% along"
               onChange={(v) =>

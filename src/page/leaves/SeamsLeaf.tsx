@@ -1,5 +1,6 @@
 // Seams: where do they run?
 import { setLayout } from "../actions/setLayout.ts";
+import { PairSheet } from "../flat/PairSheet.tsx";
 import { ChoiceField, NumberField } from "../parts/Fields.tsx";
 import { FigureTable } from "../parts/FigureTable.tsx";
 import { figure } from "../parts/figure.ts";
@@ -156,7 +157,16 @@ export function SeamsLeaf() {
       answer={answer}
       stage={
         facts && seams ? (
-          <LazySolid facts={facts} fields={fields} field="none" words={`The surface with ${seams.length} seams.`} />
+          <div className="withpair">
+            <LazySolid
+              facts={facts}
+              fields={fields}
+              field="none"
+              words={`The surface with ${seams.length} seams.`}
+              grips
+            />
+            <PairSheet />
+          </div>
         ) : (
           <Waiting what="The seams" />
         )

@@ -53,6 +53,10 @@ export const KEY_SHEET: Key[] = [
   { keys: "Escape", words: "let go of what is chosen; put a sheet away" },
   { keys: "Tab, Enter", words: "from field to field; take what was typed" },
   { keys: "Arrow keys on the surface", words: "turn it; + and − come closer and go back, 0 shows all" },
+  {
+    keys: "Arrow keys on a seam's end",
+    words: "slide it by 10 mm, with Shift by 100; Enter lets go, Escape puts it back",
+  },
   { keys: "Arrow keys on a roll", words: "move a panel by 10 mm and pin it; Delete lets it go" },
   { keys: "?", words: "this sheet" },
 ];

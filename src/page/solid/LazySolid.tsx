@@ -7,7 +7,13 @@ import type { SentFields } from "../worker/messages.ts";
 const SolidView = lazy(async () => ({ default: (await import("./SolidView.tsx")).SolidView }));
 
 /** As SolidView. */
-export function LazySolid(props: { facts: Facts; fields: SentFields | null; field: FieldName; words: string }) {
+export function LazySolid(props: {
+  facts: Facts;
+  fields: SentFields | null;
+  field: FieldName;
+  words: string;
+  grips?: boolean;
+}) {
   return (
     <Suspense fallback={<p className="waiting">Drawing the surface…</p>}>
       <SolidView {...props} />

@@ -1,11 +1,12 @@
 // The surface, shaded and turnable, with its names and the legend of its colours. Mounts the scene and passes on what is chosen.
-import { useEffect, useMemo, useRef, useState } from "react";
+import { useCallback, useEffect, useMemo, useRef, useState } from "react";
 import type { Facts } from "../../core/records/facts.ts";
 import { colourOf, type Scale, scaleOf } from "../colour/scales.ts";
 import { bookStore, type FieldName } from "../store/bookStore.ts";
 import { useBook } from "../store/useBook.ts";
 import type { SentFields } from "../worker/messages.ts";
 import { buildModel, fieldValues, type Model } from "./buildModel.ts";
+import { Grips } from "./Grips.tsx";
 import { Legend } from "./Legend.tsx";
 import { createScene, type Project, type SceneInk, type SceneView } from "./scene.ts";
 
@@ -69,6 +70,7 @@ function useScene(model: Model | null, scale: Scale | null) {
   const names = useRef<HTMLDivElement>(null);
   const view = useRef<SceneView | null>(null);
   const labels = useRef<Model["labels"]>([]);
+  const putGrips = useRef<((project: Project) => void) | null>(null);
   const [broken, setBroken] = useState(false);
   const pointed = useBook((b) => b.pointed);
   const chosen = useBook((b) => b.chosen);
@@ -78,7 +80,10 @@ function useScene(model: Model | null, scale: Scale | null) {
     if (element === null) return;
     let made: SceneView;
     try {
-      made = createScene(element, readInk(element), (project) => placeLabels(names.current, labels.current, project));
+      made = createScene(element, readInk(element), (project) => {
+        placeLabels(names.current, labels.current, project);
+        putGrips.current?.(project);
+      });
     } catch {
       setBroken(true);
       return;
@@ -97,7 +102,11 @@ function useScene(model: Model | null, scale: Scale | null) {
     labels.current = model.labels;
     view.current.show(model, paintCorners(model, scale));
   }, [model, scale]);
-  useEffect(() => view.current?.light([pointed, chosen]), [pointed, chosen]);
+  // while a seam's end is slid the surface is not drawn again: without a graphics card that would block the page
+  const held = useBook((b) => b.hand !== null && b.hand.laid === null);
+  useEffect(() => {
+    if (!held) view.current?.light([pointed, chosen]);
+  }, [pointed, chosen, held]);
   // biome-ignore lint/correctness/useExhaustiveDependencies: the inks are read from the sheet of the theme
   useEffect(() => {
     const apply = () => canvas.current && view.current?.ink(readInk(canvas.current));
@@ -106,7 +115,11 @@ function useScene(model: Model | null, scale: Scale | null) {
     dark.addEventListener("change", apply);
     return () => dark.removeEventListener("change", apply);
   }, [theme]);
-  return { canvas, names, view, broken };
+  const hookGrips = useCallback((put: ((project: Project) => void) | null) => {
+    putGrips.current = put;
+  }, []);
+  const project = useCallback(() => view.current?.project ?? null, []);
+  return { canvas, names, view, broken, hookGrips, project };
 }
 
 function choose(id: string | null): void {
@@ -117,15 +130,21 @@ function point(id: string | null): void {
   if (bookStore.getState().pointed !== id) bookStore.setState({ pointed: id });
 }
 
-/** The view; `words` says to those who do not see it what is drawn. */
-export function SolidView(props: { facts: Facts; fields: SentFields | null; field: FieldName; words: string }) {
-  const { facts, fields, field, words } = props;
+/** The view; `words` says to those who do not see it what is drawn; `grips`: the ends of the seams can be slid. */
+export function SolidView(props: {
+  facts: Facts;
+  fields: SentFields | null;
+  field: FieldName;
+  words: string;
+  grips?: boolean;
+}) {
+  const { facts, fields, field, words, grips = false } = props;
   const model = useMemo(() => buildModel(facts, fields, field), [facts, fields, field]);
   const scale = useMemo(() => {
     const values = fieldValues(fields, field);
     return values === null ? null : scaleOf(field, values, facts.form?.stress ?? { warp: 1, weft: 1 });
   }, [facts, fields, field]);
-  const { canvas, names, view, broken } = useScene(model, scale);
+  const { canvas, names, view, broken, hookGrips, project } = useScene(model, scale);
   const pointed = useBook((b) => b.pointed);
   const chosen = useBook((b) => b.chosen);
   const place = (e: { nativeEvent: { offsetX: number; offsetY: number } }) =>
@@ -157,6 +176,7 @@ export function SolidView(props: { facts: Facts; fields: SentFields | null; fiel
           </span>
         ))}
       </div>
+      {grips && facts.form && !broken && <Grips form={facts.form} project={project} hook={hookGrips} />}
       {scale !== null && <Legend scale={scale} />}
       {broken && (
         <p className="broken">

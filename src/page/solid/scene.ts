@@ -40,8 +40,7 @@ export interface SceneView {
   zoom: (factor: number) => void;
   /** Id under a point of the canvas (CSS pixels), or null. */
   pick: (x: number, y: number) => string | null;
-  /** The point of the surface under a point of the canvas, m, or null. */
-  touch: (x: number, y: number) => [number, number, number] | null;
+  project: Project;
   resize: () => void;
   dispose: () => void;
 }
@@ -124,7 +123,16 @@ export function createScene(canvas: HTMLCanvasElement, ink: SceneInk, onDraw: (p
   controls.enableDamping = false;
   const sun = new DirectionalLight("#ffffff", 2.1);
   scene.add(new AmbientLight("#ffffff", 1.25), sun);
-  const parts: Parts = { model: null, mesh: null, lines: [], colours: null, ink, lit: new Set(), reach: [1, 1] };
+  const parts: Parts = {
+    model: null,
+    mesh: null,
+    lines: [],
+    colours: null,
+    ink,
+    lit: new Set(),
+
+    reach: [1, 1],
+  };
   let asked = 0;
   const drawNow = () => {
     asked = 0;
@@ -307,10 +315,7 @@ function handleView(stage: Stage): Omit<SceneView, "dispose"> {
       const id = index === null ? null : (parts.model?.owners[parts.model.owner[index] ?? 0] ?? null);
       return id === "" ? null : id;
     },
-    touch: (x, y) => {
-      const p = hit(x, y)?.point;
-      return p === undefined ? null : [p.x, p.y, p.z];
-    },
+    project: projector(camera, canvas),
     resize: () => {
       frameInPlace(stage);
       draw();

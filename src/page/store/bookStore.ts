@@ -6,6 +6,7 @@ import type { Station } from "../../core/problem.ts";
 import type { Facts } from "../../core/records/facts.ts";
 import type { Job } from "../../core/records/job.ts";
 import type { PlanFault, SentFields } from "../worker/messages.ts";
+import type { Grips, Hand, Tied } from "./hand.ts";
 import type { Project } from "./project.ts";
 
 export const LEAVES = ["form", "seams", "panels", "rolls", "rig", "papers", "site"] as const;
@@ -44,6 +45,10 @@ export interface ResultSlice {
   corrected: { of: Project; plan: CorrectedPlan } | null;
   correcting: boolean;
   correctFault: PlanFault | null;
+  /** Welds whose ends can be slid; the one in hand; the roof tied again after it, while its plan is worked out. */
+  grips: Grips | null;
+  hand: Hand | null;
+  tied: Tied | null;
 }
 
 export interface LookSlice {
@@ -78,6 +83,9 @@ const NO_RESULT: ResultSlice = {
   corrected: null,
   correcting: false,
   correctFault: null,
+  grips: null,
+  hand: null,
+  tied: null,
 };
 
 export const bookStore = createStore<Book>(() => ({

@@ -28,38 +28,50 @@ function placeOn(
   return { at: best.along / (along || 1), distance: best.distance };
 }
 
-/** Nearest place on any edge of the form. */
-export function nearestPlace(
-  form: FactsForm,
-  p: readonly number[],
-  kinds = ["cable", "clamped", "free", "ridge", "valley", "belt"],
-): EdgePlace | null {
-  let found: EdgePlace | null = null;
-  let least = Number.POSITIVE_INFINITY;
+/** The place at a share of an edge, m. */
+export function pointOnEdge(form: FactsForm, place: EdgePlace): number[] | null {
+  const edge = form.edges.find((e) => e.id === place.edge);
+  if (edge === undefined) return null;
+  const points = edge.vertices.map((v) => form.vertices[v]);
+  const arc = [0];
+  for (let i = 1; i < points.length; i++)
+    arc.push(arc[i - 1] + Math.hypot(...points[i].map((x, k) => x - points[i - 1][k])));
+  const s = place.at * (arc.at(-1) ?? 0);
+  let i = 1;
+  while (i < points.length - 1 && arc[i] < s) i++;
+  const t = Math.min(Math.max((s - arc[i - 1]) / (arc[i] - arc[i - 1] || 1), 0), 1);
+  return points[i - 1].map((x, k) => x + t * (points[i][k] - x));
+}
+
+/** Nearest place on any edge of the form, and its distance. */
+function nearestPlace(form: FactsForm, p: readonly number[]): { place: EdgePlace; distance: number } | null {
+  let found: { place: EdgePlace; distance: number } | null = null;
   for (const edge of form.edges) {
-    if (!kinds.includes(edge.kind)) continue;
     const { at, distance } = placeOn(form, edge, p);
-    if (distance >= least) continue;
-    least = distance;
-    found = { edge: edge.id, at };
+    if (found === null || distance < found.distance) found = { place: { edge: edge.id, at }, distance };
   }
   return found;
 }
 
-/** One pair for each weld, in the plan's order; seams on inner cables are no pairs, they follow their cable. */
-export function findSeamEnds(facts: Facts): EdgePlace[][] {
+/** Ends farther than this from every edge lie within the cloth, m. */
+const ON_EDGE = 1e-3;
+
+/**
+ * The two ends of each weld, in the plan's order. Seams on inner cables are no pairs, they follow their cable; seams across strips
+ * end within the cloth and come of the strips' length.
+ */
+export function findSeamEnds(facts: Facts): { weld: string; places: EdgePlace[] }[] {
   const { form, seams } = facts;
   if (form === undefined || seams === undefined) return [];
   const welds = new Map<string, readonly number[][][]>();
   for (const s of seams) if (s.cable === null) welds.set(s.weld, [...(welds.get(s.weld) ?? []), s.path]);
   const same = (a: readonly number[] | undefined, b: readonly number[] | undefined) =>
     a?.every((x, k) => x === b?.[k]) === true;
-  return [...welds.values()].flatMap((paths) => {
+  return [...welds].flatMap(([weld, paths]) => {
     const ends = paths.flatMap((p) => [p[0], p.at(-1)]);
     const open = ends.filter((e) => ends.filter((o) => same(o, e)).length === 1);
-    const places = open.slice(0, 2).map((e) => nearestPlace(form, e ?? []));
-    const [a, b] = places;
-    const round = (p: EdgePlace): EdgePlace => ({ edge: p.edge, at: Math.round(p.at * 1e4) / 1e4 });
-    return a && b ? [[round(a), round(b)]] : [];
+    const [a, b] = open.slice(0, 2).map((e) => nearestPlace(form, e ?? []));
+    if (!a || !b || a.distance > ON_EDGE || b.distance > ON_EDGE) return [];
+    return [{ weld, places: [a.place, b.place] }];
   });
 }

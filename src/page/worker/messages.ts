@@ -1,9 +1,10 @@
 // What the page and its worker say to each other. Types only.
 import type { CorrectedPlan } from "../../core/plan/correctPlan.ts";
+import type { Grip, MadeRoof, SeenPanel } from "../../core/plan/dragSeam.ts";
 import type { SurfaceFields } from "../../core/plan/measureFields.ts";
 import type { Station } from "../../core/problem.ts";
-import type { Facts } from "../../core/records/facts.ts";
-import type { Job } from "../../core/records/job.ts";
+import type { Facts, FactsSeam } from "../../core/records/facts.ts";
+import type { EdgePlace, Job } from "../../core/records/job.ts";
 
 export type SentFields = SurfaceFields;
 
@@ -15,7 +16,14 @@ export interface PlanFault {
 }
 
 export type Request =
-  | { kind: "plan"; run: number; given: unknown; mesh: { name: string; bytes: Uint8Array<ArrayBuffer> } | null }
+  | {
+      kind: "plan";
+      run: number;
+      given: unknown;
+      mesh: { name: string; bytes: Uint8Array<ArrayBuffer> } | null;
+      /** Takes the roof once its panels are made, for who drags its seams. */
+      roofs: MessagePort;
+    }
   | { kind: "papers"; run: number; facts: Facts }
   | {
       kind: "correct";
@@ -34,3 +42,26 @@ export type Reply =
   | { kind: "papers"; run: number; files: { path: string; bytes: Uint8Array<ArrayBuffer> }[] }
   | { kind: "corrected"; run: number; corrected: CorrectedPlan }
   | { kind: "failed"; run: number; fault: PlanFault };
+
+/** Two places that a seam runs between. */
+export type SeamPlaces = [EdgePlace, EdgePlace];
+
+/** A made roof on its way from the plan's worker to the one that drags. */
+export interface SentRoof {
+  run: number;
+  roof: MadeRoof;
+}
+
+export type DragRequest =
+  /** Where roofs come from, from now on. */
+  | { kind: "listen"; roofs: MessagePort }
+  | { kind: "drag"; run: number; weld: string; to: SeamPlaces }
+  | { kind: "tie"; run: number; next: number; pairs: EdgePlace[][] };
+
+export type DragReply =
+  /** Welds that can be dragged; none where the roof cannot be taken up so. */
+  | { kind: "grips"; run: number; grips: Grip[] }
+  | { kind: "dragged"; run: number; weld: string; to: SeamPlaces; path: number[][]; panels: SeenPanel[]; ms: number }
+  | { kind: "refused"; run: number; weld: string; to: SeamPlaces; fault: PlanFault }
+  | { kind: "tied"; run: number; seams: FactsSeam[]; panels: SeenPanel[]; ms: number }
+  | { kind: "untied"; run: number; fault: PlanFault };

@@ -17,7 +17,8 @@ import { type PlanInput, readPlanInput } from "../../core/plan/readPlanInput.ts"
 import { runPlan } from "../../core/plan/runPlan.ts";
 import { PlanError, type Station } from "../../core/problem.ts";
 import type { Facts } from "../../core/records/facts.ts";
-import type { PlanFault, Reply, Request } from "./messages.ts";
+import { describeFault } from "./describeFault.ts";
+import type { Reply, Request, SentRoof } from "./messages.ts";
 
 // The schema library may compile its checks into code; the page forbids that, so it must not even try.
 config({ jitless: true });
@@ -93,7 +94,11 @@ function plan(request: Extract<Request, { kind: "plan" }>): void {
   const planned = runPlan(
     input.job,
     input.source,
-    { revision: input.revision, onStation },
+    {
+      revision: input.revision,
+      onStation,
+      onRoof: (roof) => request.roofs.postMessage({ run, roof } satisfies SentRoof),
+    },
     { onProgress: tell, cancelled: cap.cancelled },
   );
   const facts: Facts = { ...planned, findings: [...input.findings, ...planned.findings] };
@@ -125,17 +130,6 @@ async function papers(run: number, facts: Facts): Promise<void> {
   );
 }
 
-/** An error as a record; one that is no PlanError is a fault of the program and says so. */
-function describe(error: unknown): PlanFault {
-  if (error instanceof PlanError) return { code: error.code, message: error.message, where: [error.where].flat() };
-  const words = error instanceof Error ? error.message : String(error);
-  return {
-    code: "fault",
-    message: `a fault of the program, not of the job: ${words}. Please report it with the job`,
-    where: [],
-  };
-}
-
 self.onmessage = async (event: MessageEvent<Request>) => {
   const request = event.data;
   try {
@@ -143,6 +137,6 @@ self.onmessage = async (event: MessageEvent<Request>) => {
     else if (request.kind === "correct") correct(request);
     else await papers(request.run, request.facts);
   } catch (error) {
-    post({ kind: "failed", run: request.run, fault: describe(error) });
+    post({ kind: "failed", run: request.run, fault: describeFault(error) });
   }
 };

@@ -2,7 +2,9 @@
 import type { Facts } from "../../core/records/facts.ts";
 import { writeReadings } from "../keep/readings.ts";
 import { bookStore } from "../store/bookStore.ts";
+import { type Hand, isSameWork } from "../store/hand.ts";
 import type { Project } from "../store/project.ts";
+import { openRoofs } from "./dragger.ts";
 import type { PlanFault, Reply, Request } from "./messages.ts";
 
 let worker: Worker | null = null;
@@ -33,11 +35,11 @@ function end(): void {
   busy = false;
 }
 
-function send(request: Request): void {
+function send(request: Request, transfer: Transferable[] = []): void {
   if (busy) end();
   worker ??= start();
   busy = true;
-  worker.postMessage(request);
+  worker.postMessage(request, transfer);
 }
 
 function hear(reply: Reply): void {
@@ -60,6 +62,8 @@ function hear(reply: Reply): void {
         fault: null,
         papers: null,
         papersFault: null,
+        tied: null,
+        hand: handAfter(subject),
       });
       return;
     case "papers":
@@ -79,6 +83,12 @@ function hear(reply: Reply): void {
   }
 }
 
+/** A hand that was let go has nothing more to show once its own plan stands. */
+function handAfter(of: typeof subject): Hand | null {
+  const { hand } = bookStore.getState();
+  return of !== null && "project" in of && isSameWork(hand?.laid, of.project) ? null : hand;
+}
+
 function fail(fault: PlanFault): void {
   if (subject !== null && "facts" in subject) bookStore.setState({ writing: false, papersFault: fault });
   else if (subject !== null && "readingsOf" in subject) bookStore.setState({ correcting: false, correctFault: fault });
@@ -96,7 +106,8 @@ export function requestPlan(project: Project): void {
     correcting: false,
     progress: { share: 0, words: "reading the job", station: "job" },
   });
-  send({ kind: "plan", run, given: project.job, mesh: project.mesh });
+  const roofs = openRoofs(run, project);
+  send({ kind: "plan", run, given: project.job, mesh: project.mesh, roofs }, [roofs]);
 }
 
 /** Writes the papers of a plan. */

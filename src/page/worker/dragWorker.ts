@@ -1,0 +1,71 @@
+// The worker that redraws a dragged seam's panels while the plan's worker goes on with rolls and rig. Roofs come to it from there
+// by a port of its own, so that they never pass through the page.
+import {
+  dragSeamInPlace,
+  listGrips,
+  type MadeRoof,
+  openDrag,
+  type SeamDrag,
+  seeDragged,
+  seeRoof,
+  tieRoof,
+} from "../../core/plan/dragSeam.ts";
+import { PlanError } from "../../core/problem.ts";
+import { describeFault } from "./describeFault.ts";
+import type { DragReply, DragRequest, SentRoof } from "./messages.ts";
+
+let run = -1;
+let roof: MadeRoof | null = null;
+let drag: SeamDrag | null = null;
+let port: MessagePort | null = null;
+
+function post(reply: DragReply): void {
+  self.postMessage(reply);
+}
+
+/** Takes a roof up and tells what can be dragged on it. One whose seams cannot be opened has nothing to drag. */
+function takeUp(next: SentRoof): void {
+  run = next.run;
+  roof = next.roof;
+  drag = null;
+  try {
+    drag = openDrag(roof.form, roof.job, roof.fitted);
+  } catch (error) {
+    if (!(error instanceof PlanError)) throw error;
+  }
+  post({ kind: "grips", run, grips: drag === null ? [] : listGrips(drag) });
+}
+
+function redraw(request: Extract<DragRequest, { kind: "drag" }>): void {
+  const { weld, to } = request;
+  if (request.run !== run || drag === null) return;
+  const begin = performance.now();
+  try {
+    const seen = seeDragged(dragSeamInPlace(drag, weld, to), weld);
+    post({ kind: "dragged", run, weld, to, ...seen, ms: performance.now() - begin });
+  } catch (error) {
+    post({ kind: "refused", run, weld, to, fault: describeFault(error) });
+  }
+}
+
+function tie({ run: of, next, pairs }: Extract<DragRequest, { kind: "tie" }>): void {
+  if (of !== run || roof === null) return;
+  const begin = performance.now();
+  try {
+    const tied = tieRoof(roof, pairs);
+    post({ kind: "tied", run: next, ...seeRoof(tied), ms: performance.now() - begin });
+    takeUp({ run: next, roof: tied });
+  } catch (error) {
+    post({ kind: "untied", run: next, fault: describeFault(error) });
+  }
+}
+
+self.onmessage = ({ data: request }: MessageEvent<DragRequest>) => {
+  if (request.kind === "drag") redraw(request);
+  else if (request.kind === "tie") tie(request);
+  else {
+    port?.close();
+    port = request.roofs;
+    port.onmessage = ({ data }: MessageEvent<SentRoof>) => takeUp(data);
+  }
+};

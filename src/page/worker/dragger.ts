@@ -1,0 +1,185 @@
+// Sliding a seam's end: starts and hears the worker that redraws. One place is asked for at a time and the newest wins; places that
+// were passed meanwhile are never asked for.
+import type { Grip } from "../../core/plan/dragSeam.ts";
+import type { EdgePlace } from "../../core/records/job.ts";
+import { layPairs } from "../actions/layPairs.ts";
+import { act, bookStore, notify } from "../store/bookStore.ts";
+import { type Hand, isSameWork } from "../store/hand.ts";
+import type { Project } from "../store/project.ts";
+import { findSeamEnds } from "../store/seamEnds.ts";
+import type { DragReply, DragRequest, SeamPlaces } from "./messages.ts";
+
+let worker: Worker | null = null;
+/** Where the newest plan's roof will come from, until the worker listens there. */
+let waiting: MessagePort | null = null;
+/** Places this near each other on an edge are one, share of it. */
+const SAME = 2e-5;
+
+const projects = new Map<number, Project>();
+/** Run of the roof the grips are of. */
+let run = 0;
+/** Runs of roofs tied here count downwards, those of plans upwards. */
+let tiedRuns = 0;
+let asked = false;
+let leaving = false;
+let next: Extract<DragRequest, { kind: "drag" }> | null = null;
+
+function send(request: DragRequest, transfer: Transferable[] = []): void {
+  worker?.postMessage(request, transfer);
+}
+
+function listen(): void {
+  if (worker === null || waiting === null) return;
+  send({ kind: "listen", roofs: waiting }, [waiting]);
+  waiting = null;
+}
+
+/** A port for the plan's worker to send the roof of this run to. */
+export function openRoofs(of: number, project: Project): MessagePort {
+  const { port1, port2 } = new MessageChannel();
+  projects.set(of, project);
+  for (const old of projects.keys()) if (old > 0 && old < of - 1 && old !== run) projects.delete(old);
+  waiting?.close();
+  waiting = port2;
+  listen();
+  return port1;
+}
+
+/** From now on seams can be taken in hand; called when they are looked at. */
+export function watchSeams(): void {
+  if (worker === null) {
+    worker = new Worker(new URL("./dragWorker.ts", import.meta.url), { type: "module", name: "seamstay-drag" });
+    worker.onmessage = (event: MessageEvent<DragReply>) => hear(event.data);
+    worker.onerror = (event) => {
+      event.preventDefault();
+      worker?.terminate();
+      worker = null;
+      asked = false;
+      bookStore.setState({ grips: null, hand: null });
+      notify("drag", "Sliding seams broke down; the job is whole. Plan again, or type where the seam ends.", true);
+    };
+  }
+  listen();
+}
+
+function changeHand(change: Partial<Hand>): void {
+  bookStore.setState((s) => ({ hand: s.hand === null ? null : { ...s.hand, ...change } }));
+}
+
+function hear(reply: DragReply): void {
+  const project = projects.get(reply.run);
+  if (reply.kind === "grips") {
+    run = reply.run;
+    if (project === undefined) return;
+    bookStore.setState({ grips: { of: project, welds: reply.grips } });
+    followHand(project, reply.grips);
+  } else if (reply.kind === "tied") {
+    if (project !== undefined)
+      bookStore.setState({ tied: { of: project, seams: reply.seams, panels: reply.panels, ms: reply.ms } });
+  } else if (reply.kind === "untied") projects.delete(reply.run);
+  else {
+    asked = false;
+    const { hand } = bookStore.getState();
+    if (hand?.weld === reply.weld && hand.laid === null) {
+      if (reply.kind === "dragged")
+        changeHand({ drawn: reply.to, path: reply.path, panels: reply.panels, fault: null });
+      else changeHand({ fault: reply.fault.message });
+    }
+    askNext();
+    const now = bookStore.getState().hand;
+    if (leaving && !asked && now !== null && now.laid === null) lay(now);
+  }
+}
+
+/** A roof that was made anew may name its welds otherwise: the one in hand is known by its places. */
+function followHand(project: Project, welds: readonly Grip[]): void {
+  const { hand, chosen } = bookStore.getState();
+  if (hand === null || !isSameWork(hand.laid, project)) return;
+  const same = welds.find(({ ends }) =>
+    ends.every((p, k) => p.edge === hand.to[k].edge && Math.abs(p.at - hand.to[k].at) < SAME),
+  );
+  if (same === undefined || same.weld === hand.weld) return;
+  bookStore.setState({ chosen: chosen === hand.weld ? same.weld : chosen, hand: { ...hand, weld: same.weld } });
+}
+
+function askNext(): void {
+  if (asked || next === null) return;
+  asked = true;
+  send(next);
+  next = null;
+}
+
+/** Takes the end of a weld in hand. */
+export function takeEnd(weld: string, end: 0 | 1): void {
+  const { grips, hand, project } = bookStore.getState();
+  const ends = grips?.welds.find((g) => g.weld === weld)?.ends;
+  if (ends === undefined || !isSameWork(grips?.of, project)) return;
+  if (hand !== null && hand.laid === null && hand.weld === weld && hand.end === end) return;
+  if (hand !== null && hand.laid === null) putBack();
+  bookStore.setState({
+    chosen: weld,
+    hand: { weld, end, from: ends, to: ends, drawn: ends, path: null, panels: [], fault: null, laid: null },
+  });
+  slideEnd(ends[end]);
+}
+
+/** Slides the end in hand to a place. */
+export function slideEnd(place: SeamPlaces[0]): void {
+  const { hand } = bookStore.getState();
+  if (hand === null || hand.laid !== null) return;
+  const to: SeamPlaces = hand.end === 0 ? [place, hand.to[1]] : [hand.to[0], place];
+  changeHand({ to });
+  next = { kind: "drag", run, weld: hand.weld, to };
+  askNext();
+}
+
+/** Puts the end in hand back where it was. */
+export function putBack(): void {
+  next = null;
+  leaving = false;
+  bookStore.setState({ hand: null });
+}
+
+/** Lets go: once the newest place is drawn the seam lies there, or where it last could, and the whole roof is tied again. */
+export function letGo(): void {
+  const { hand } = bookStore.getState();
+  if (hand === null || hand.laid !== null) return;
+  leaving = true;
+  if (!asked && next === null) lay(hand);
+}
+
+/** All seams one by one with this one between two other places: in their own numbers where the job gives them so already. */
+function listPairs(hand: Hand, to: SeamPlaces): EdgePlace[][] {
+  const { grips, facts, project } = bookStore.getState();
+  const own = grips?.welds.find((g) => g.weld === hand.weld);
+  const given = project?.job.seams?.pairs;
+  if (given !== undefined && typeof own?.pair === "number") {
+    const at = own.pair;
+    return given.map((pair, i) => (i === at ? [to[0], ...pair.slice(1, -1), to[1]] : pair));
+  }
+  if (facts === null) return [];
+  return findSeamEnds(facts).map(({ weld, places }) =>
+    weld === hand.weld ? to : (grips?.welds.find((g) => g.weld === weld)?.ends ?? places),
+  );
+}
+
+function lay(hand: Hand): void {
+  leaving = false;
+  const { grips, project } = bookStore.getState();
+  const to = hand.fault === null ? hand.to : hand.drawn;
+  const { from, end, weld } = hand;
+  if (!isSameWork(grips?.of, project) || (to[end].edge === from[end].edge && to[end].at === from[end].at)) {
+    bookStore.setState({ hand: null });
+    return;
+  }
+  act(layPairs, { pairs: listPairs(hand, to) }, `end of ${weld}`);
+  const after = bookStore.getState().project;
+  const pairs = after?.job.seams?.pairs;
+  if (after === null || after === project || pairs === undefined) {
+    bookStore.setState({ hand: null });
+    return;
+  }
+  changeHand({ to, laid: after, fault: null });
+  projects.set(--tiedRuns, after);
+  send({ kind: "tie", run, next: tiedRuns, pairs });
+}

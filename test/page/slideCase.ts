@@ -1,0 +1,99 @@
+// `bench slide JOB.json MESH.obj`: a seam's end slid on the real page in Chromium, move by move: from the pointer's move to the panels
+// redrawn on the screen, the longest time the page was blocked meanwhile, and from letting go to the whole roof tied again.
+import { readFileSync } from "node:fs";
+import { basename } from "node:path";
+import { PATIENCE, setUp, turnTo } from "./bench.ts";
+
+const MOVES = 25;
+/** Way of one move, as a share of the way to the next seam. */
+const STEP = 0.02;
+
+/** In the page: what is drawn and when, and what blocks. Kept as text since this file is also read without a browser's types. */
+const WATCH = `(() => {
+  const seen = { shown: 0, moved: 0, long: [], gaps: [], last: performance.now() };
+  window.seen = seen;
+  new PerformanceObserver((list) => { for (const e of list.getEntries()) seen.long.push(e.duration); }).observe({ entryTypes: ["longtask"] });
+  addEventListener("pointermove", () => { seen.moved = performance.now(); }, true);
+  new MutationObserver((all) => {
+    if (all.some((m) => m.target.nodeName === "path" || m.addedNodes.length > 0)) seen.shown = performance.now();
+  }).observe(document.querySelector(".beside"), { subtree: true, childList: true, attributes: true, attributeFilter: ["d"] });
+  const tick = () => { const now = performance.now(); seen.gaps.push(now - seen.last); seen.last = now; requestAnimationFrame(tick); };
+  requestAnimationFrame(tick);
+})()`;
+
+const medianOf = (all: readonly number[]) => [...all].sort((a, b) => a - b)[all.length >> 1];
+
+interface Seen {
+  shown: number;
+  moved: number;
+  long: number[];
+  gaps: number[];
+}
+
+/** Times in ms, of the clock. */
+export async function benchSlide(jobPath: string, meshPath: string) {
+  const bench = await setUp("bench-slide");
+  try {
+    const { page } = await bench.open();
+    page.setDefaultTimeout(300_000);
+    const job = { ...JSON.parse(readFileSync(jobPath, "utf8")), nest: { steps: 5 } };
+    job.mesh.file = basename(meshPath);
+    await page.getByLabel("Choose files").setInputFiles([
+      { name: "job.json", mimeType: "application/json", buffer: Buffer.from(JSON.stringify(job)) },
+      { name: job.mesh.file, mimeType: "text/plain", buffer: readFileSync(meshPath) },
+    ]);
+    await page.getByText(/^Planned, revision/).waitFor({ timeout: 300_000 });
+    await turnTo(page, "Seams");
+    const grips = page.getByRole("slider");
+    await grips.first().waitFor();
+    const middle = 2 * Math.floor((await grips.count()) / 4);
+    const [a, b] = await Promise.all([middle, middle + 2].map((i) => grips.nth(i).boundingBox()));
+    if (a === null || b === null) throw new Error("no grips");
+    const [x, y] = [a.x + a.width / 2, a.y + a.height / 2];
+    await page.evaluate(WATCH);
+    const seen = () => page.evaluate<Seen>("({ ...window.seen })");
+    const drawnAfter = async (moved: number) => {
+      const end = Date.now() + PATIENCE;
+      while (Date.now() < end) {
+        const now = await seen();
+        if (now.shown > moved) return now;
+        await page.waitForTimeout(5);
+      }
+      throw new Error(`nothing was redrawn; the page says: ${await page.locator(".beside").innerText()}`);
+    };
+    await page.mouse.move(x, y);
+    await page.mouse.down();
+    await drawnAfter(0);
+    await page.waitForTimeout(500);
+    await page.evaluate("(window.seen.long.length = 0, window.seen.gaps.length = 0)");
+    const times: number[] = [];
+    for (let k = 1; k <= MOVES; k++) {
+      const share = STEP * (k < 14 ? k : 26 - k);
+      const before = (await seen()).moved;
+      await page.mouse.move(x + share * (b.x - a.x), y + share * (b.y - a.y));
+      await page.waitForFunction(`window.seen.moved > ${before}`);
+      const now = await drawnAfter((await seen()).moved);
+      times.push(now.shown - now.moved);
+    }
+    const during = await seen();
+    const begin = await page.evaluate<number>("performance.now()");
+    await page.mouse.up();
+    await page
+      .getByText(/The whole roof is tied again/)
+      .waitFor({ timeout: PATIENCE })
+      .catch(async () => {
+        throw new Error(`the roof was not tied; the page says: ${await page.locator(".beside").innerText()}`);
+      });
+    const tie = (await page.evaluate<number>("performance.now()")) - begin;
+    return {
+      redraw: medianOf(times),
+      worst: Math.max(...times),
+      longestTask: Math.max(0, ...during.long),
+      longestFrame: Math.max(...during.gaps),
+      medianFrame: medianOf(during.gaps),
+      tie,
+    };
+  } finally {
+    await bench.close();
+  }
+}
