@@ -176,6 +176,7 @@ export function makeJob(seams: Partial<SeamDecision> = {}): Job {
     panels: {},
     compensation: {},
     decompensation: { clamped: null, ring: null, cable: null },
+    proof: { mean: 0.05, rms: 0.25, moved: null, force: 0.1, slack: 0.02 },
     allowances: { seam: 40, seamOn: "both", pocket: 100, pocketStrip: false, clamp: 0, hem: 40 },
     rolls: null,
     nest: { steps: 1, seconds: null, seed: 1, gap: 10, turn: true, bite: null, pins: [] },

@@ -20,6 +20,7 @@ export const JOB_DEFAULTS = {
   steps: 200,
   seed: 1,
   turn: true,
+  proof: { mean: 0.05, rms: 0.25, moved: null, force: 0.1, slack: 0.02 },
   sheet: "A4",
   units: "metric",
 } as const;

@@ -197,6 +197,15 @@ const rig = z.strictObject({
     .optional(),
 });
 
+const share = (most: number) => num(0, most, { above: true, remedy: "a share: 5 % is 0.05" }).optional();
+const proof = z.strictObject({
+  mean: share(1),
+  rms: share(2),
+  moved: mmAbove(1e5).nullable().optional(),
+  force: share(1),
+  slack: share(1),
+});
+
 const papers = z.strictObject({
   date: line(40).optional(),
   drawnBy: line(80).optional(),
@@ -249,6 +258,7 @@ export const jobSchema = z.strictObject({
   nest: nest.optional(),
   rig: rig.optional(),
   survey: z.array(z.strictObject({ anchor: name, at: point })).optional(),
+  proof: proof.optional(),
   papers: papers.optional(),
 });
 

@@ -122,6 +122,7 @@ function resolveJob(file: JobFile, catalogues: Catalogues, ledger: DefaultLedger
     nest: resolveNest(file, ledger),
     rig: resolveRig(file, catalogues, ledger),
     survey: file.survey ?? [],
+    proof: resolveProof(file, ledger),
     papers: {
       date: papers.date ?? "",
       drawnBy: papers.drawnBy ?? "",
@@ -164,6 +165,15 @@ function resolveSeams(file: JobFile, ledger: DefaultLedger): Job["seams"] {
     maxWidth: takeDefault(ledger, given.maxWidth, null, "seams.maxWidth", "the usable width of the roll"),
     maxLength: takeDefault(ledger, given.maxLength, null, "seams.maxLength", "no limit but the length of the roll"),
   };
+}
+
+function resolveProof(file: JobFile, ledger: DefaultLedger): Job["proof"] {
+  const d = JOB_DEFAULTS.proof;
+  if (file.proof === undefined) {
+    const words = `the assembled roof may be off by ${100 * d.mean} % in its mean stress, ${100 * d.rms} % (rms) in a panel, ${100 * d.force} % in a force, with ${100 * d.slack} % of it slack`;
+    noteDefault(ledger, "proof", null, words);
+  }
+  return { ...d, ...leaveOut(file.proof ?? {}) };
 }
 
 function resolveAllowances(file: JobFile, ledger: DefaultLedger): Job["allowances"] {

@@ -243,6 +243,7 @@ export function buildRigInput(
       cables,
       supports,
       survey,
+      proof: job.proof,
       rig: { adjusters, struts, stays, stages: whole, temperature, limit, readingError, defaults: notes.defaults },
     },
     findings: notes.findings,

@@ -2,7 +2,7 @@
 import type { Vec3 } from "../surface/surface.ts";
 import type { Fabric, ValueStatus } from "./fabric.ts";
 import type { EdgeKind } from "./foundForm.ts";
-import type { RigPlace, Turnbuckle } from "./rig.ts";
+import type { ProofLimits, RigPlace, Turnbuckle } from "./rig.ts";
 import type { Flaw } from "./roll.ts";
 
 /** A mesh as a program wrote it, before any check: polygons of any size, names kept, its own unit and axis. */
@@ -170,5 +170,7 @@ export interface Job {
   rig: RigJob;
   /** Where the pins really are, m: at an anchor with an adjuster its far pin, at any other the anchor itself. */
   survey: { anchor: string; at: Vec3 }[];
+  /** How far the assembled roof may be from what was intended. */
+  proof: ProofLimits;
   papers: PapersDecision;
 }

@@ -1,6 +1,7 @@
 // What the rig station takes from the job and hands on: cables, adjusters, masts, the tensioning. Types only.
 import type { Vec3 } from "../surface/surface.ts";
 import type { ValueStatus } from "./fabric.ts";
+import type { StressFigures } from "./flatPanel.ts";
 
 /** A turnbuckle or jack as the catalogue or the job gives it; lengths pin to pin. */
 export interface Turnbuckle {
@@ -125,11 +126,32 @@ export interface FactsRig {
   adjusters: FactsAdjuster[];
 }
 
+/** How far the assembled roof may be from what was intended. */
+export interface ProofLimits {
+  /** Mean stress of the whole roof, share off the intended one. */
+  mean: number;
+  /** Root mean square stress error of a panel, share of the intended stress. */
+  rms: number;
+  /** Greatest way of a point from the form, mm; null: a share of the roof's size (reviewBuilt.ts). */
+  moved: number | null;
+  /** Force of a cable or adjuster, share off the intended one. */
+  force: number;
+  /** Share of the cloth that is not taut. */
+  slack: number;
+}
+
 export interface FactsAsBuilt {
   displacementMax: number;
   forces: Record<string, number>;
-  stress: { warp: { min: number; mean: number; max: number }; weft: { min: number; mean: number; max: number } };
+  /** rmsError: against the intended stress, weighted by flat area. */
+  stress: { warp: StressFigures; weft: StressFigures };
   compressedShare: number;
+  /** What each figure is compared with. */
+  intended: { stress: { warp: number; weft: number }; forces: Record<string, number> };
+  /** Limits it was judged by; moved in m. */
+  limits: ProofLimits & { moved: number };
+  /** Greatest of the two rms errors of each panel as a share of the intended stress, by panel. */
+  panels: Record<string, number>;
 }
 
 /** One move of one adjuster; moves of one step are made together and read after all of them. */

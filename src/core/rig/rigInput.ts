@@ -2,7 +2,7 @@
 import type { Fabric } from "../records/fabric.ts";
 import type { FlatPanel } from "../records/flatPanel.ts";
 import type { FoundForm } from "../records/foundForm.ts";
-import type { CableType, RigDecision } from "../records/rig.ts";
+import type { CableType, ProofLimits, RigDecision } from "../records/rig.ts";
 import type { StripLayout } from "../records/stripLayout.ts";
 import type { Vec3 } from "../surface/surface.ts";
 
@@ -19,4 +19,6 @@ export interface RigInput {
   /** Where pins were surveyed, by anchor id: far pins of adjusters, else the anchors themselves. */
   survey: Record<string, Vec3>;
   rig: RigDecision;
+  /** Limits for the assembled roof. */
+  proof: ProofLimits;
 }

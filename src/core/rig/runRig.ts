@@ -2,19 +2,21 @@
 import type { Check, Finding, StationContext, StationResult } from "../problem.ts";
 import type { FactsAsBuilt, FactsCable, FactsRig, FactsSensitivity, FactsTensioning } from "../records/rig.ts";
 import { measureLink } from "../structure/elements.ts";
+import { createEquilibriumSolver } from "../structure/equilibrium.ts";
 import { buildRig, type Rig } from "./build/buildRig.ts";
 import { buildCableLine } from "./cables/cableSchedule.ts";
 import { playPlan } from "./moves/playPlan.ts";
 import { measureSensitivity } from "./otherwise/sensitivity.ts";
 import { buildTemperatureTable } from "./otherwise/temperatureTable.ts";
 import { measureAsBuilt } from "./review/asBuilt.ts";
+import { reviewBuilt } from "./review/reviewBuilt.ts";
 import { findTargetMisses, reviewRig, roundedLimit } from "./review/reviewRig.ts";
 import { reviewLean, reviewNotches, reviewRest } from "./review/reviewSteps.ts";
 import type { RigInput } from "./rigInput.ts";
-import { countModes, type RigState } from "./stages/solveLengths.ts";
+import { countModes, type RigState, solveState } from "./stages/solveLengths.ts";
 import { solveRig } from "./stages/solveRig.ts";
 
-/** Output of the rig station; without adjusters only the cables. */
+/** Output of the rig station; without adjusters only the cables and the roof as built. */
 export interface RigResult {
   cables: FactsCable[];
   rig: FactsRig | null;
@@ -55,7 +57,10 @@ export function runRig(input: RigInput, context: StationContext): StationResult<
       remedy: "name adjusters in the job where turnbuckles or jacks stand",
       basis: "rules of the job file",
     });
-    return { output: { cables: lines, ...without }, findings, checks };
+    const proof = proveHeld(input, rig, context);
+    findings.push(...proof.findings);
+    checks.push(...proof.checks);
+    return { output: { cables: lines, ...without, asBuilt: proof.output }, findings, checks };
   }
   const solved = solveRig(input, rig, context);
   checks.push(...solved.checks);
@@ -71,23 +76,42 @@ export function runRig(input: RigInput, context: StationContext): StationResult<
     ...(played.ways ? { ways: played.ways } : {}),
     issuable: input.rig.defaults.length === 0,
   };
-  const asBuilt = measureAsBuilt(rig, finished);
-  const review = reviewRig(input, rig, { stages: played.stages, finished, asBuilt, singular });
+  const asBuilt = measureAsBuilt(rig, finished, input);
+  const built = reviewBuilt(asBuilt);
+  const review = reviewRig(input, rig, { stages: played.stages, finished, singular });
   const rest = reviewRest([exact, ...stages.map((stage) => stage.end), ...played.states]);
   const { influence } = stages[stages.length - 1].linear;
   const laterStates = played.states.slice(stages[0].begin === null ? 1 : 0);
   findings.push(
     ...findTargetMisses(rig, exact),
     ...rest.findings,
+    ...built.findings,
     ...review.findings,
     ...reviewLean(rig, finished, laterStates),
     ...reviewNotches(rig, finished, influence, roundedLimit),
   );
-  checks.push(...rest.checks, ...review.checks);
+  checks.push(...rest.checks, ...built.checks, ...review.checks);
   context.onProgress?.(0.97, "sensitivity");
   const sensitivity = measureSensitivity(rig, solver, finished);
   const output = { cables: lines, rig: writeRig(rig, finished), asBuilt, tensioning, sensitivity };
   return { output, findings, checks };
+}
+
+/** The proof of a roof that nothing is turned on: panels and cables as they are cut, its points held as the form holds them. */
+function proveHeld(input: RigInput, rig: Rig, context: StationContext): StationResult<FactsAsBuilt | null> {
+  // A form that nothing holds has no place of its own.
+  if (!rig.structure.held.includes(1)) return { output: null, findings: [], checks: [] };
+  context.onProgress?.(0.3, "assembled roof in balance");
+  const solver = createEquilibriumSolver(rig.structure);
+  const state = solveState(rig, solver, { x: rig.structure.xyz, L0: rig.L0 }, { sharp: true, ...context });
+  const output = measureAsBuilt(rig, state, input);
+  const built = reviewBuilt(output);
+  const rest = reviewRest([state]);
+  return {
+    output,
+    findings: [...rest.findings, ...built.findings],
+    checks: [...rest.checks, ...built.checks],
+  };
 }
 
 function writeRig(rig: Rig, finished: RigState): FactsRig {

@@ -3,6 +3,7 @@ import { useEffect, useRef } from "react";
 import { ForceChart } from "../flat/ForceChart.tsx";
 import { RigPlan } from "../flat/RigPlan.tsx";
 import { listSteps, type RigStep } from "../flat/rigSteps.ts";
+import { listBuiltRows } from "../parts/builtRows.ts";
 import { CautionList } from "../parts/CautionList.tsx";
 import { FieldPicker } from "../parts/FieldPicker.tsx";
 import { FigureTable } from "../parts/FigureTable.tsx";
@@ -92,9 +93,7 @@ function RigFigures() {
               },
             ]
           : []),
-        ...(asBuilt
-          ? [{ what: "Greatest displacement as built", value: figure(1000 * asBuilt.displacementMax, 1), unit: "mm" }]
-          : []),
+        ...(asBuilt ? listBuiltRows(asBuilt) : []),
         ...(rig?.adjusters ?? []).slice(0, 16).map((a) => ({
           what: `${a.id} target`,
           value: figure(a.target, 1),
@@ -133,7 +132,7 @@ export function RigLeaf() {
       answer={
         steps.length === 0
           ? facts?.cables
-            ? "No adjuster stands on this form: it is clamped all round and carries no schedule."
+            ? "No adjuster stands on this form: it is held all round and carries no schedule; how it stands once assembled is told beside."
             : "Not worked out yet."
           : `${rig?.adjusters.length ?? 0} adjusters in ${steps.length} steps; on the way no part passes ${figure(100 * greatest, 0)} % of its limit.`
       }

@@ -1,6 +1,6 @@
-// What a person must know of the rig: targets missed, limits passed, travel too short, slack members, poor balance.
+// What a person must know of the rig: targets missed, limits passed, travel too short, slack members, poor balance of forces.
 import type { Check, Finding } from "../../problem.ts";
-import type { FactsAsBuilt, FactsMove, FactsStage } from "../../records/rig.ts";
+import type { FactsMove, FactsStage } from "../../records/rig.ts";
 import { measureLink } from "../../structure/elements.ts";
 import { measureDistance } from "../../surface/measures.ts";
 import type { Rig } from "../build/buildRig.ts";
@@ -39,7 +39,7 @@ export function findTargetMisses(rig: Rig, exact: RigState & { off: number }): F
 export function reviewRig(
   input: RigInput,
   rig: Rig,
-  plan: { stages: FactsStage[]; finished: RigState; asBuilt: FactsAsBuilt; singular: number[] },
+  plan: { stages: FactsStage[]; finished: RigState; singular: number[] },
 ): { findings: Finding[]; checks: Check[] } {
   const findings: Finding[] = [];
   const checks: Check[] = [];
@@ -59,14 +59,6 @@ export function reviewRig(
     limit: 1e-8,
     holds: plan.finished.equilibrium.residual < 1e-8,
   });
-  checks.push({
-    station: "rig",
-    text: "finished state: share of the cloth that is not taut",
-    value: plan.asBuilt.compressedShare,
-    limit: 0.02,
-    holds: plan.asBuilt.compressedShare <= 0.02,
-  });
-  if (plan.asBuilt.compressedShare > 0.02) findings.push(slackCloth(plan.asBuilt.compressedShare));
   findings.push(
     ...reviewReach(rig, plan.stages, plan.finished),
     ...reviewPeaks(rig, plan.stages, input.rig.limit),
@@ -76,20 +68,6 @@ export function reviewRig(
   for (const a of rig.adjusters) if (a.turnbuckle.capacity === null) findings.push(noCapacity(a.id, "turnbuckle"));
   for (const c of rig.cables) if (c.minBreakingForce === null) findings.push(noCapacity(c.id, "cable"));
   return { findings, checks };
-}
-
-function slackCloth(share: number): Finding {
-  return {
-    code: "cloth-slack",
-    level: "caution",
-    station: "rig",
-    where: [],
-    value: share,
-    limit: 0.02,
-    text: `${(100 * share).toFixed(1)} % of the cloth is not taut at the finished state`,
-    remedy: "use narrower strips, check the compensation and the balance of the form",
-    basis: "own argument: slack cloth flutters and wears",
-  };
 }
 
 function noCapacity(id: string, what: string): Finding {

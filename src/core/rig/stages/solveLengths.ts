@@ -47,7 +47,7 @@ export function solveState(rig: Rig, solver: EquilibriumSolver, near: Places, op
   const { cancelled } = options;
   const equilibrium = solveEquilibrium(solver, near.x, near.L0, {
     tolerance: options.sharp ? restLimit.finished : restLimit.onTheWay,
-    floor: 1e-9 * least,
+    floor: Number.isFinite(least) ? 1e-9 * least : 0,
     ...(cancelled ? { cancelled } : {}),
   });
   return { x: equilibrium.x, L0: near.L0, equilibrium };
