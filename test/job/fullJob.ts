@@ -93,6 +93,7 @@ export function buildFullJob() {
       reading: { error: 0.05 },
     },
     survey: [{ anchor: "A1", at: [0.01, 0, 0] }],
+    proof: { mean: 0.04, rms: 0.2, moved: 25, force: 0.08, slack: 0.01 },
     papers: {
       date: "2031-04-02",
       drawnBy: "K. L.",

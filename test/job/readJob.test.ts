@@ -65,6 +65,7 @@ describe("the full job", () => {
     expect(job.nest).toEqual(buildFullJob().nest);
     expect(job.decompensation).toEqual({ clamped: 0.6, ring: 0.5, cable: null });
     expect(job.compensation).toEqual(buildFullJob().compensation);
+    expect(job.proof).toEqual(buildFullJob().proof);
     expect(job.panels).toEqual(buildFullJob().panels);
     expect(job.anchors).toEqual(buildFullJob().anchors);
     expect(job.papers).toEqual({

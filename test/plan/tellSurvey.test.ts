@@ -48,7 +48,10 @@ test("an anchor without an adjuster stands where it was surveyed, and the adjust
   output.rig?.nodes[node].forEach((q, k) => {
     expect(q).toBeCloseTo(at[k], 12);
   });
-  expect(checks.filter((c) => !c.holds)).toEqual([]);
+  // The proof of the roof as built tells what the corner out of place does to it; the sequence itself holds.
+  const off = checks.filter((c) => !c.holds).map((c) => c.text);
+  expect(off.filter((text) => !text.startsWith("assembled roof"))).toEqual([]);
+  expect(off.join()).toMatch(/greatest way of a point/);
 });
 
 test("a clamped edge out of place is a caution: no turnbuckle takes it up", () => {
