@@ -39,9 +39,9 @@ export async function makeFacts(
   const progress = openProgress(around.terminal, options.quiet);
   try {
     const { until } = options;
-    const { onStation, cancelled } = capNest(input.job.nest.seconds, () => performance.now());
+    const { onStation, cancelled, elapsed } = capNest(input.job.nest.seconds, () => performance.now());
     const settings = { revision: input.revision, onStation, ...(until === undefined ? {} : { until }) };
-    const facts = doors.runPlan(input.job, input.source, settings, { onProgress: progress.show, cancelled });
+    const facts = doors.runPlan(input.job, input.source, settings, { onProgress: progress.show, cancelled, elapsed });
     return { ...facts, findings: [...input.findings, ...facts.findings] };
   } finally {
     progress.end();

@@ -58,10 +58,14 @@ export class PlanError extends Error {
 
 /** What every station is given beside its input and options. */
 export interface StationContext {
-  /** Called with a share 0…1 of the station's work and a short line of words. */
-  onProgress?: (share: number, words: string) => void;
+  /** Called with a share 0…1 of the station's work, a short line of words, and figures by name where it has some. */
+  onProgress?: (share: number, words: string, figures?: Readonly<Record<string, number>>) => void;
   /** Polled by long work; a station that sees true throws PlanError "cancelled". */
   cancelled?: () => boolean;
+  /** Seconds the station has been at work, by the caller's clock; for words only, never for what is decided. */
+  elapsed?: () => number;
+  /** Works orders side by side where the caller has threads, null for one that was lost; orders and results are plain records. */
+  workShares?: (orders: unknown[], stop: () => boolean) => unknown[];
 }
 
 /** What every station hands back. */

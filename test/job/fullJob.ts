@@ -69,6 +69,8 @@ export function buildFullJob() {
         batch: "LOT 3",
         start: 300,
         flaws: [{ x: 12000, y: 300, length: 200, width: 100 }],
+        outerFace: "up",
+        price: 14.5,
       },
     ],
     nest: {
@@ -78,6 +80,9 @@ export function buildFullJob() {
       gap: 12,
       turn: false,
       bite: 9000,
+      pastBite: "feed",
+      price: 12,
+      currency: "EUR",
       pins: [{ panel: "P1", roll: "R7", x: 500, y: 10, rotation: 180 }],
     },
     rig: {

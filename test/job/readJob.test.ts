@@ -261,6 +261,29 @@ describe("other ways to say it", () => {
     expect(findings.map((f) => f.where)).toContain("rolls[1].length");
   });
 
+  it("measures flaws from either end, and turns them over with a roll that shows its inner face", () => {
+    const flaw = { x: 800, y: 100, length: 50, width: 200 };
+    const roll = { width: 2500, selvedge: 20, length: 30_000 };
+    const flaws = (more: object, from?: string) =>
+      readJob(
+        { ...(leastJob("form.obj", "Bay") as object), rolls: [{ ...roll, ...more, flaws: [{ ...flaw, from }] }] },
+        catalogues,
+      ).job.rolls?.[0].flaws;
+    expect(flaws({})).toEqual([flaw]);
+    expect(flaws({}, "end")).toEqual([{ ...flaw, x: 29_150 }]);
+    // 2460 mm usable, 100 from one edge and 200 wide: 2160 from the other.
+    expect(flaws({ outerFace: "down" }, "end")).toEqual([{ ...flaw, x: 29_150, y: 2160 }]);
+  });
+
+  it("leaves no cut without a gap unless edges may be shared", () => {
+    const gap = (nest: object) => readJob({ ...(leastJob("form.obj", "Bay") as object), nest }, catalogues);
+    expect(gap({}).job.nest.gap).toBe(10);
+    expect(gap({ gap: 0 }).job.nest.gap).toBe(1);
+    expect(gap({ gap: 0 }).findings.find((f) => f.where === "nest.gap")?.text).toMatch(/not shared/);
+    expect(gap({ sharedEdges: true }).job.nest.gap).toBe(0);
+    expect(gap({ gap: 4, sharedEdges: true }).job.nest.gap).toBe(4);
+  });
+
   it("keeps names that objects carry by nature as plain names", () => {
     const { job } = readJob({ ...least, edges: { constructor: { kind: "free" } } }, catalogues);
     expect(job.edges.constructor).toEqual({ kind: "free" });

@@ -111,7 +111,15 @@ const strainRemedy = "a strain, not per cent: 1.2 % is 0.012";
 const strain = num(-0.05, 0.2, { remedy: strainRemedy });
 const fade = num(0, 50, { unit: "m", above: true }).nullable().optional();
 
-const flaw = z.strictObject({ x: mm(1e7), y: mm(10_000), length: mmAbove(1e7), width: mmAbove(10_000) });
+const flaw = z.strictObject({
+  x: mm(1e7),
+  y: mm(10_000),
+  length: mmAbove(1e7),
+  width: mmAbove(10_000),
+  from: z.enum(["start", "end"]).optional(),
+});
+/** Money a square metre of cloth, counted over all its width. */
+const price = num(0, 1e6, { unit: "a m2" });
 const roll = z.strictObject({
   id: name.optional(),
   width: num(100, 10_000, { unit: "mm" }).optional(),
@@ -120,6 +128,8 @@ const roll = z.strictObject({
   batch: name.nullable().optional(),
   start: mm(1e5).optional(),
   flaws: z.array(flaw).max(10_000).optional(),
+  outerFace: z.enum(["up", "down"]).optional(),
+  price: price.nullable().optional(),
 });
 
 const nest = z.strictObject({
@@ -129,6 +139,10 @@ const nest = z.strictObject({
   gap: mm(200).optional(),
   turn: z.boolean().optional(),
   bite: mmAbove(1e6).nullable().optional(),
+  pastBite: z.enum(["refuse", "feed"]).optional(),
+  sharedEdges: z.boolean().optional(),
+  price: price.nullable().optional(),
+  currency: name.nullable().optional(),
   pins: z
     .array(
       z.strictObject({

@@ -206,11 +206,48 @@ function resolveRolls(file: JobFile, fabric: Job["fabric"], ledger: DefaultLedge
       length: take(roll.length, fabric.rollLength, "length", `${fabric.rollLength} mm, of the fabric`),
       batch: roll.batch ?? null,
       start: roll.start ?? 0,
-      flaws: roll.flaws ?? [],
+      flaws: [],
+      outerFace: take<"up" | "down">(
+        roll.outerFace,
+        "up",
+        "outerFace",
+        "the outer face is up as the roll comes off; flaws are noted so",
+      ),
+      price: roll.price ?? file.nest?.price ?? null,
     };
     checkUsableWidth(`rolls[${i}]`, read.width, read.selvedge);
-    return read;
+    return { ...read, flaws: (roll.flaws ?? []).map((f) => placeFlaw(f, read)) };
   });
+}
+
+/** Between cuts that may not be shared the knife needs this, mm (common practice: a blade's own width). */
+const KNIFE = 1;
+
+/** The gap between cuts: none only where edges may be shared. */
+function resolveGap(given: NonNullable<JobFile["nest"]>, ledger: DefaultLedger): number {
+  const shared = given.sharedEdges === true;
+  const fallback = shared ? 0 : JOB_DEFAULTS.gap;
+  if (given.gap === undefined || shared || given.gap >= KNIFE)
+    return takeDefault(ledger, given.gap, fallback, "nest.gap", `${fallback} mm between cuts`);
+  const words = `${KNIFE} mm between cuts in place of ${given.gap}: edges are not shared unless nest.sharedEdges is true`;
+  return takeDefault(ledger, undefined, KNIFE, "nest.gap", words);
+}
+
+type GivenFlaw = NonNullable<NonNullable<JobFile["rolls"]>[number]["flaws"]>[number];
+
+/** A flaw as it lies once the outer face is up, from the roll's start: turning a roll over along its length swaps its edges. */
+function placeFlaw(
+  flaw: GivenFlaw,
+  roll: { width: number; selvedge: number; length: number; outerFace: "up" | "down" },
+): { x: number; y: number; length: number; width: number } {
+  const { x, y, length, width, from } = flaw;
+  const usable = roll.width - 2 * roll.selvedge;
+  return {
+    x: from === "end" ? roll.length - x - length : x,
+    y: roll.outerFace === "down" ? usable - y - width : y,
+    length,
+    width,
+  };
 }
 
 function resolveNest(file: JobFile, ledger: DefaultLedger): Job["nest"] {
@@ -222,9 +259,12 @@ function resolveNest(file: JobFile, ledger: DefaultLedger): Job["nest"] {
     steps: take(n.steps, d.steps, "steps", `${d.steps} steps`),
     seconds: n.seconds ?? null,
     seed: take(n.seed, d.seed, "seed", `seed ${d.seed}`),
-    gap: take(n.gap, d.gap, "gap", `${d.gap} mm between cuts`),
+    gap: resolveGap(n, ledger),
     turn: take<boolean>(n.turn, d.turn, "turn", "panels may lie turned by 180 degrees"),
     bite: n.bite ?? null,
+    pastBite: n.pastBite ?? "refuse",
+    price: n.price ?? null,
+    currency: n.currency ?? null,
     pins: n.pins ?? [],
   };
 }

@@ -8,14 +8,19 @@ import type { Station } from "../problem.ts";
 export function capNest(seconds: number | null, now: () => number) {
   let station: Station | null = null;
   let since: number | null = null;
+  const spent = () => {
+    since ??= now();
+    return (now() - since) / 1000;
+  };
   return {
     onStation: (next: Station) => {
       station = next;
     },
     cancelled: () => {
       if (station !== "rolls" || seconds === null) return false;
-      since ??= now();
-      return now() - since > 1000 * seconds;
+      return spent() > seconds;
     },
+    /** Seconds of nesting so far. */
+    elapsed: () => (station === "rolls" ? spent() : 0),
   };
 }

@@ -6,6 +6,7 @@ import type { Facts } from "../records/facts.ts";
 import type { Job, MeshSource } from "../records/job.ts";
 import type { StockRoll } from "../records/roll.ts";
 import { runRig } from "../rig/runRig.ts";
+import { totalCloth } from "../rolls/rollFigures.ts";
 import { runRolls } from "../rolls/runRolls.ts";
 import { runSeams } from "../seams/runSeams.ts";
 import { buildFormFacts, buildHead, buildPanelFacts, buildPieceFacts, buildSeamFacts } from "./buildFacts.ts";
@@ -94,7 +95,8 @@ function runStationsInPlace(
 ): void {
   const share = (station: Station, next: Station): StationContext => ({
     ...context,
-    onProgress: (s, words) => context.onProgress?.(begins[station] + s * (begins[next] - begins[station]), words),
+    onProgress: (s, words, figures) =>
+      context.onProgress?.(begins[station] + s * (begins[next] - begins[station]), words, figures),
   });
   const take = <T>(result: StationResult<T>): T => {
     facts.findings.push(...result.findings);
@@ -134,8 +136,10 @@ function runStationsInPlace(
 
   options.onStation("rolls");
   const pieces = [...panels, ...others].map((p) => ({ id: p.id, fabric: p.fabric, batch: p.batch, cut: p.cut }));
-  const nested = take(runRolls(pieces, buildStock(job), job.nest, share("rolls", "rig")));
+  const stock = buildStock(job);
+  const nested = take(runRolls(pieces, stock, job.nest, share("rolls", "rig")));
   facts.rolls = nested;
+  facts.cloth = totalCloth(nested, pieces, stock, job.nest.gap);
   if (options.until === "rolls") return;
 
   options.onStation("rig");

@@ -5,7 +5,7 @@ import type { Fabric } from "./fabric.ts";
 import type { ControlLengths, PanelMark, StressFigures } from "./flatPanel.ts";
 import type { EdgeKind, Residual } from "./foundForm.ts";
 import type { FactsAsBuilt, FactsCable, FactsRig, FactsSensitivity, FactsTensioning } from "./rig.ts";
-import type { NestedRoll } from "./roll.ts";
+import type { ClothTotal, NestedRoll } from "./roll.ts";
 import type { LayoutChoice, LayoutRow } from "./stripLayout.ts";
 
 /** Point in the flat, mm. */
@@ -118,6 +118,8 @@ export interface Facts {
   panels?: FactsPanel[];
   pieces?: FactsPiece[];
   rolls?: NestedRoll[];
+  /** All rolls together. */
+  cloth?: ClothTotal;
   cables?: FactsCable[];
   rig?: FactsRig;
   asBuilt?: FactsAsBuilt;

@@ -87,7 +87,11 @@ export interface RollDecision {
   length: number;
   batch: string | null;
   start: number;
+  /** From the roll's start, outer face up. */
   flaws: Flaw[];
+  outerFace: "up" | "down";
+  /** Money a m2; null: not given. */
+  price: number | null;
 }
 
 export interface NestDecision {
@@ -97,6 +101,11 @@ export interface NestDecision {
   gap: number;
   turn: boolean;
   bite: number | null;
+  /** What becomes of a piece longer than the bite: a stop, or it is fed on at marks. Left out: refused. */
+  pastBite?: "refuse" | "feed";
+  /** Money a m2 of cloth that has no price of its own, and what the money is called. */
+  price?: number | null;
+  currency?: string | null;
   pins: { panel: string; roll: string; x: number; y: number; rotation: 0 | 180 }[];
 }
 

@@ -28,6 +28,10 @@ export interface StockRoll {
   /** Trim at the start. */
   start: number;
   flaws: Flaw[];
+  /** Which face the roll shows as it comes off; left out: the outer one. */
+  outerFace?: "up" | "down";
+  /** Money a m2 of cloth over all its width; none: not given. */
+  price?: number | null;
   /** True for a roll that is taken for granted, not listed in the job: as many as needed. */
   assumed: boolean;
 }
@@ -63,4 +67,26 @@ export interface NestedRoll {
   feeds?: number[];
   /** What is left beyond the used length, mm. */
   remnant?: number;
+  /** Trim at the start, mm, which the used length counts in. */
+  start?: number;
+  /** "down": the roll shows its inner face as it comes off and is turned over along its length; places and flaws are those after it. */
+  outerFace?: "up" | "down";
+  /** Money of the used cloth over all its width, remnant left out; null: no price is given. */
+  cost?: number | null;
+  currency?: string | null;
+}
+
+/** What all rolls of a plan come to. */
+export interface ClothTotal {
+  /** Used length of all rolls, m, and the length below which no nest on the widest of them can come. */
+  used: number;
+  bound: number;
+  /** Cloth taken off over all its width, and the cut area on it, m2. */
+  taken: number;
+  area: number;
+  /** area / taken */
+  utilisation: number;
+  /** Money of the cloth taken off; null where a roll has no price. */
+  cost: number | null;
+  currency: string | null;
 }

@@ -21,6 +21,8 @@ export interface BedSize {
   length: number;
   /** Usable width. */
   width: number;
+  /** Width over all, which is what cloth is counted and paid by; left out: the usable one. */
+  overall?: number;
   gap: number;
   /** Width of a column. */
   dx: number;

@@ -48,6 +48,8 @@ export interface Layout {
 export interface LayoutCost {
   left: number;
   cloth: number;
+  /** Cloth taken off the rolls alone, remnants left out. */
+  used: number;
   reach: number;
 }
 
@@ -56,6 +58,11 @@ export function isLess(a: LayoutCost, b: LayoutCost): boolean {
   if (a.left !== b.left) return a.left < b.left;
   if (Math.abs(a.cloth - b.cloth) > 1e-9 * b.cloth) return a.cloth < b.cloth;
   return a.reach < b.reach * (1 - 1e-12);
+}
+
+/** Whether a layout takes no more cloth off the rolls than another that lays as much. */
+export function takesNoMore(a: LayoutCost, than: LayoutCost): boolean {
+  return a.left < than.left || a.used <= than.used * (1 + 1e-9);
 }
 
 /** How rotations of one piece are weighed against each other. */
@@ -90,44 +97,68 @@ function spentLength(bed: Bed): number {
   return used > 0 && bed.length - used < bed.width ? bed.length : used;
 }
 
+/** Width by which a roll's cloth is counted. */
+const countedWidth = (bed: Bed) => bed.overall ?? bed.width;
+
 /** Cost of what lies so far. */
 export function measureLayout(beds: Bed[], left: number[], areas: number[]): LayoutCost {
   const laid = beds.flatMap((b) => b.laid);
   return {
     left: left.reduce((sum, p) => sum + areas[p], 0),
-    cloth: beds.reduce((sum, b) => sum + spentLength(b) * b.width, 0),
+    cloth: beds.reduce((sum, b) => sum + spentLength(b) * countedWidth(b), 0),
+    used: beds.reduce((sum, b) => sum + bedReach(b) * countedWidth(b), 0),
     reach: laid.reduce((sum, p) => sum + p.x + p.shape.length, 0) / Math.max(1, laid.length),
   };
 }
 
-/**
- * Lays the pieces in this order, each on the first roll that has room, at the least x, then least y.
- * @returns null where the layout grew past the cost to beat, or was told to stop
- */
-export function layPieces(task: NestTask, order: number[], rule: TurnRule, beat: LayoutCost | null): Layout | null {
-  const beds = task.offers.map((offer) => {
+/** What decides a layout, beside the task. */
+export interface LayRecipe {
+  order: readonly number[];
+  rule: TurnRule;
+  /** Rolls on which something lies already; left out: empty ones with their pins. */
+  begun?: Bed[];
+}
+
+/** The rolls on offer, with nothing on them but their pins. */
+export function openBeds(task: NestTask): Bed[] {
+  return task.offers.map((offer) => {
     const bed = openBed(offer.size);
     for (const pin of offer.pins) layInPlace(bed, pin);
     return bed;
   });
+}
+
+/** Lays a piece on the first roll that has room; false where none has. */
+function layOne(beds: Bed[], piece: number, task: NestTask, rule: TurnRule): boolean {
+  for (let b = 0; b < beds.length; b++) {
+    if (!task.offers[b].takes(piece)) continue;
+    const laid = bestOn(beds[b], piece, task, rule);
+    if (!laid) continue;
+    layInPlace(beds[b], laid);
+    return true;
+  }
+  return false;
+}
+
+/**
+ * Lays the pieces in order, each on the first roll that has room, at the least x, then least y.
+ * @returns null where the layout grew past the cost to beat, or was told to stop
+ */
+export function layPieces(task: NestTask, recipe: LayRecipe, beat: LayoutCost | null): Layout | null {
+  const { order, rule } = recipe;
+  const beds = recipe.begun ?? openBeds(task);
   const left: number[] = [];
   let leftArea = 0;
   for (const piece of order) {
     if (task.stop()) return null;
-    let laid: LaidShape | null = null;
-    for (let b = 0; b < beds.length && !laid; b++) {
-      if (!task.offers[b].takes(piece)) continue;
-      laid = bestOn(beds[b], piece, task, rule);
-      if (laid) layInPlace(beds[b], laid);
-    }
-    if (!laid) {
+    if (!layOne(beds, piece, task, rule)) {
       left.push(piece);
       leftArea += task.areas[piece];
     }
     if (!beat) continue;
     if (leftArea > beat.left) return null;
     if (leftArea < beat.left) continue;
-    const cloth = beds.reduce((sum, b) => sum + bedReach(b) * b.width, 0);
+    const cloth = beds.reduce((sum, b) => sum + bedReach(b) * countedWidth(b), 0);
     if (cloth > beat.cloth * (1 + 1e-9)) return null;
   }
   return { beds, left, cost: measureLayout(beds, left, task.areas) };

@@ -1,6 +1,6 @@
 // A piece as the nest sees it in one rotation: its ring with the box at 0, 0, thinned outward-safe where it has very many
 // points, and its grown columns. Does not: place. Source: own.
-import { type PlaneRing, ringArea, ringBox } from "../surface/ring.ts";
+import { isSimpleRing, type PlaneRing, ringArea, ringBox } from "../surface/ring.ts";
 import { simplifyRing } from "../surface/simplifyRing.ts";
 import { buildColumns, type Columns } from "./columns.ts";
 import { risingOrders } from "./slideRoom.ts";
@@ -24,7 +24,8 @@ export interface NestShape {
 
 /** Rings with more points than this are thinned before they are searched with. */
 const MANY = 320;
-/** Thinning gives up beyond this share of the size and takes the hull. */
+/** Shares of the size that thinning begins with, and gives up beyond. */
+const FINE = 3e-6;
 const COARSE = 2e-3;
 
 /** cos and sin of whole degrees, quarter turns exact. */
@@ -64,16 +65,24 @@ export function hullRing(ring: PlaneRing): PlaneRing {
   return Float64Array.from([...half(points), ...half(points.reverse())].flat());
 }
 
-/** A ring with at most about MANY points, and how far the true one may lie from it. */
-function thinRing(ring: PlaneRing): { ring: PlaneRing; slack: number } {
+/** A ring with at most MANY points, and how far the true one may lie from it; null where that takes more than COARSE. */
+function thinWithin(ring: PlaneRing, size: number): { ring: PlaneRing; slack: number } | null {
   if (ring.length / 2 <= MANY) return { ring, slack: 0 };
+  for (let within = FINE * size; within < COARSE * size; within *= 3) {
+    const thin = simplifyRing(ring, within);
+    if (thin.length / 2 <= MANY && isSimpleRing(thin)) return { ring: thin, slack: within };
+  }
+  return null;
+}
+
+/** The ring with few points; of one too ragged for that, its hull, which is thinned with ease. */
+function thinRing(ring: PlaneRing): { ring: PlaneRing; slack: number } {
   const box = ringBox(ring);
   const size = Math.hypot(box.x1 - box.x0, box.y1 - box.y0);
-  for (let within = 1e-5 * size; within < COARSE * size; within *= 3) {
-    const thin = simplifyRing(ring, within);
-    if (thin.length / 2 <= MANY) return { ring: thin, slack: within };
-  }
-  return { ring: hullRing(ring), slack: 0 };
+  const thin = thinWithin(ring, size);
+  if (thin) return thin;
+  const hull = hullRing(ring);
+  return thinWithin(hull, size) ?? { ring: hull, slack: 0 };
 }
 
 /** A piece in one rotation. */

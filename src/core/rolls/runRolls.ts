@@ -3,15 +3,15 @@
 // Does not: cut, draw, or know where pieces come from. Source: own (constructive nest with exact slides).
 import { type Check, type Finding, PlanError, type StationContext, type StationResult } from "../problem.ts";
 import type { NestDecision } from "../records/job.ts";
-import type { NestedRoll, NestPiece, Placement, StockRoll } from "../records/roll.ts";
+import type { NestedRoll, NestPiece, StockRoll } from "../records/roll.ts";
 import { type Bed, type BedSize, bedReach, type LaidShape } from "./bed.ts";
 import { checkComplete, checkRoll } from "./checkRolls.ts";
-import { cutOrder } from "./cutOrder.ts";
-import { type Layout, layPieces, type NestTask } from "./layPieces.ts";
+import { isLess, type Layout, layPieces, type NestTask, takesNoMore } from "./layPieces.ts";
 import { layPins } from "./layPins.ts";
-import { boundLength } from "./lowerBound.ts";
-import { buildShape, clothArea, placementOf } from "./nestShape.ts";
+import { buildShape, clothArea } from "./nestShape.ts";
 import { type OfferedRoll, offerRolls } from "./offerRolls.ts";
+import type { WorkShares } from "./relax/relaxBed.ts";
+import { boundAll, measureDensity, recordRoll } from "./rollFigures.ts";
 import { searchOrders } from "./searchOrders.ts";
 import { shortenLayout } from "./shortenLayout.ts";
 import { sortPieces, stopFinding, suits, usableWidth } from "./sortPieces.ts";
@@ -26,6 +26,7 @@ function bedSize(roll: StockRoll, gap: number, dx: number, slack: number): BedSi
     start: roll.start,
     length: roll.length,
     width: usableWidth(roll),
+    overall: roll.width,
     gap,
     dx,
     snap: 0,
@@ -66,43 +67,6 @@ function buildTask(
   };
 }
 
-/** A filled bed as the record of its roll. */
-function recordRoll(bed: Bed, roll: StockRoll, pieces: NestPiece[], bite: number | null): NestedRoll {
-  const { order, feeds } = cutOrder(
-    bed.laid.map((p) => ({ id: pieces[p.piece].id, x0: p.x, x1: p.x + p.shape.length, y0: p.y })),
-    bite,
-  );
-  const placements = bed.laid.map(
-    (p): Placement => ({
-      panel: pieces[p.piece].id,
-      rotation: p.shape.rotation === 180 ? 180 : 0,
-      ...placementOf(p.shape, p.x, p.y),
-      order: order.indexOf(pieces[p.piece].id) + 1,
-    }),
-  );
-  const cuts = bed.laid.map((p) => pieces[p.piece].cut);
-  const used = bedReach(bed);
-  const area = cuts.reduce((sum, c) => sum + clothArea(c), 0);
-  return {
-    id: roll.id,
-    fabric: roll.fabric,
-    batch: roll.batch,
-    width: roll.width,
-    usableWidth: usableWidth(roll),
-    length: roll.length,
-    used,
-    gap: bed.gap,
-    flaws: roll.flaws,
-    placements: placements.sort((a, b) => (a.panel < b.panel ? -1 : a.panel > b.panel ? 1 : 0)),
-    utilisation: area / (used * roll.width),
-    // A perfect tiling meets its bound to the last bits; only those are taken back here.
-    lowerBound: Math.min(boundLength(cuts, usableWidth(roll), bed.gap, roll.start), used * (1 + 1e-9)),
-    remnant: Math.max(0, roll.length - used),
-    bite,
-    feeds,
-  };
-}
-
 /** How much more cloth is needed for what is left over, nested on an endless roll of its widest kind. */
 function shortage(left: number[], pieces: NestPiece[], task: NestTask, stock: StockRoll[]): Finding[] {
   const kinds = new Map<string, number[]>();
@@ -118,7 +82,7 @@ function shortage(left: number[], pieces: NestPiece[], task: NestTask, stock: St
     const size = { ...bedSize(roll, gap, dx, slack), length: Infinity, start: 0, flaws: [] };
     const one = { ...task, stop: () => false, offers: [{ size, takes: () => true, pins: [] }] };
     const order = [...group].sort((a, b) => task.areas[b] - task.areas[a] || a - b);
-    const metres = bedReach((layPieces(one, order, "least x", null) as { beds: Bed[] }).beds[0]) / 1000;
+    const metres = bedReach((layPieces(one, { order, rule: "least x" }, null) as { beds: Bed[] }).beds[0]) / 1000;
     const names = group.map((p) => pieces[p].id);
     const cloth = `${piece.fabric}${piece.batch === null ? "" : `, batch ${piece.batch}`}`;
     return stopFinding("roll-short", names, metres, null, {
@@ -128,21 +92,32 @@ function shortage(left: number[], pieces: NestPiece[], task: NestTask, stock: St
   });
 }
 
-/** Cloth and density of a layout, in words. */
-function wordsOf(layout: Layout): string {
-  const filled = layout.beds.filter((b) => b.laid.length > 0);
-  const metres = filled.reduce((sum, b) => sum + bedReach(b), 0) / 1000;
-  const cloth = filled.reduce((sum, b) => sum + bedReach(b) * b.width, 0);
-  const area = filled.flatMap((b) => b.laid).reduce((sum, p) => sum + clothArea(p.shape.ring), 0);
-  return `${metres.toFixed(2)} m, ${((100 * area) / cloth).toFixed(1)} % of the usable cloth`;
-}
-
 /** Ids of copies run on without a hole where no pin names one. */
 function closeNumbering(rolls: NestedRoll[], offers: OfferedRoll[], pinned: boolean): NestedRoll[] {
   if (pinned) return rolls;
   const fresh = offers.filter((o) => o.roll.assumed).map((o) => o.roll.id);
   let next = 0;
   return rolls.map((r) => (fresh.includes(r.id) ? { ...r, id: fresh[next++] } : r));
+}
+
+/**
+ * The best layout of a search, which takes no more cloth than the constructive nest whenever it is stopped.
+ * @throws PlanError cancelled: told to stop before the first layout was built
+ */
+function nestBest(
+  task: NestTask,
+  { steps, seed }: NestDecision,
+  tell: (done: number, layout: Layout | null) => void,
+  work: WorkShares | undefined,
+): Layout {
+  const limits = { steps: 0, seed, onStep: () => {}, ...(work ? { work } : {}) };
+  const first = searchOrders(task, { steps: 1, seed });
+  if (!first) throw new PlanError("cancelled", "Nesting was stopped before the first layout was built.", "rolls");
+  const nest = shortenLayout(first.layout, task, limits);
+  const found = searchOrders(task, { steps, seed, onStep: tell })?.layout ?? nest;
+  const start = isLess(found.cost, nest.cost) ? found : nest;
+  const best = shortenLayout(start, task, { ...limits, steps, onStep: (k, layout) => tell(steps + k, layout) });
+  return takesNoMore(best.cost, nest.cost) ? best : nest;
 }
 
 /**
@@ -171,15 +146,22 @@ export function runRolls(
     return told;
   };
   const task = { ...buildTask(fit, offers, pins, options), stop };
-  const { steps, seed } = options;
+  const { steps } = options;
+  const bound = boundAll(fit, stock, options.gap);
   let done = 0;
   const tell = (count: number, layout: Layout | null) => {
+    if (told) return;
     done = count;
-    context.onProgress?.(count / (2 * steps), `nest ${count} of ${2 * steps}${layout ? `: ${wordsOf(layout)}` : ""}`);
+    const words = `nest ${count} of ${2 * steps}`;
+    if (!layout) return context.onProgress?.(count / (2 * steps), words);
+    const seconds = context.elapsed?.();
+    const figures = { ...measureDensity(layout), bound, ...(seconds === undefined ? {} : { elapsed: seconds }) };
+    const { length, density } = figures;
+    const clock = seconds === undefined ? "" : `, ${seconds.toFixed(0)} s`;
+    const line = `${words}: ${length.toFixed(2)} m, ${(100 * density).toFixed(1)} % full, at least ${bound.toFixed(2)} m${clock}`;
+    context.onProgress?.(count / (2 * steps), line, figures);
   };
-  const found = searchOrders(task, { steps, seed, onStep: tell });
-  if (!found) throw new PlanError("cancelled", "Nesting was stopped before the first layout was built.", "rolls");
-  const best = shortenLayout(found.layout, task, { steps, seed, onStep: (k, layout) => tell(steps + k, layout) });
+  const best = nestBest(task, options, tell, context.workShares as WorkShares | undefined);
   if (!told) tell(2 * steps, best);
   if (told)
     findings.push({
@@ -190,7 +172,7 @@ export function runRolls(
       level: "note",
     });
   const filled = best.beds.map((bed, i) => ({ bed, roll: offers[i].roll })).filter(({ bed }) => bed.laid.length > 0);
-  const rolls = filled.map(({ bed, roll }) => recordRoll(bed, roll, fit, options.bite));
+  const rolls = filled.map(({ bed, roll }) => recordRoll(bed, roll, fit, options));
   const byId = new Map(fit.map((p) => [p.id, p]));
   const output = closeNumbering(rolls, offers, options.pins.length > 0);
   output.forEach((roll, i) => {

@@ -10,6 +10,7 @@ import {
   type NestTask,
   type TurnRule,
 } from "./layPieces.ts";
+import { layStacks, type StackRule } from "./layStacks.ts";
 
 export interface SearchLimits {
   /** Layouts built. */
@@ -38,9 +39,14 @@ function sortedOrders(task: NestTask): number[][] {
 interface Genome {
   order: number[];
   rule: TurnRule;
+  /** How stacks are built; null: piece by piece. */
+  stacks: StackRule | null;
   /** Rolls in the order in which they are filled. */
   rolls: number[];
 }
+
+/** Stacks worth trying: ends flush, and staggered by a quarter or half a length. */
+const STACKS: StackRule[] = [{ shifts: [0] }, { shifts: [0, 0.25, -0.25] }, { shifts: [0, 0.5, -0.5] }];
 
 /** Orders of rolls worth trying: as listed, and where they differ narrow, wide, short or long ones first. */
 function rollOrders(task: NestTask): number[][] {
@@ -61,7 +67,9 @@ function rollOrders(task: NestTask): number[][] {
 /** The layout of a genome, its beds in the order of the offers. */
 function layGenome(task: NestTask, genome: Genome, beat: LayoutCost | null): Layout | null {
   const offers = genome.rolls.map((i) => task.offers[i]);
-  const layout = layPieces({ ...task, offers }, genome.order, genome.rule, beat);
+  const { order, rule, stacks } = genome;
+  const own = { ...task, offers };
+  const layout = stacks ? layStacks(own, order, stacks, beat) : layPieces(own, { order, rule }, beat);
   if (!layout) return null;
   const beds: Layout["beds"] = [];
   genome.rolls.forEach((i, k) => {
@@ -84,12 +92,12 @@ function changeGenome(genome: Genome, random: Random, kind: (p: number) => strin
     if (random() < 0.7) break;
   }
   const rule = random() < 0.05 ? RULES[drawInteger(random, RULES.length)] : genome.rule;
-  if (sorted || random() > 0.1) return { order, rule, rolls: genome.rolls };
+  if (sorted || random() > 0.1) return { ...genome, order, rule };
   const rolls = [...genome.rolls];
   const a = drawInteger(random, rolls.length);
   const b = drawInteger(random, rolls.length);
   [rolls[a], rolls[b]] = [rolls[b], rolls[a]];
-  return { order, rule, rolls };
+  return { ...genome, order, rule, rolls };
 }
 
 const worse = (a: LayoutCost, b: LayoutCost) => (isLess(a, b) ? b : a);
@@ -104,9 +112,12 @@ export function searchOrders(task: NestTask, limits: SearchLimits): { layout: La
   const random = buildRandom(limits.seed);
   const kind = (p: number) => task.shapes[p][0].key;
   const rolls = rollOrders(task);
-  const starts = sortedOrders(task)
-    .flatMap((order) => RULES.map((rule) => ({ order, rule })))
-    .map((g, k): Genome => ({ ...g, rolls: rolls[k % rolls.length] }));
+  const orders = sortedOrders(task);
+  const single = orders.flatMap((order) => RULES.map((rule) => ({ order, rule, stacks: null })));
+  const stacked = orders.slice(0, 3).flatMap((order) => STACKS.map((stacks) => ({ order, rule: RULES[0], stacks })));
+  const starts = [...single.slice(0, 3), ...stacked, ...single.slice(3)].map(
+    (g, k): Genome => ({ ...g, rolls: rolls[k % rolls.length] }),
+  );
   let best: Layout | null = null;
   let bestOf: Genome = starts[0];
   let now: { cost: LayoutCost; genome: Genome } | null = null;

@@ -1,8 +1,8 @@
 // A layout made to need less cloth after its orders were tried: each roll by the relaxed search, then pieces of the roll that
 // holds least moved into the free cloth of others. Never more cloth than it began with. Source: own.
 import { type Bed, bedReach, findPlace, type LaidShape, layInPlace, openBed, settle } from "./bed.ts";
-import { compactInPlace, isLess, type Layout, measureLayout, type NestTask } from "./layPieces.ts";
-import { relaxBed, type WorkShares } from "./relax/relaxBed.ts";
+import { compactInPlace, isLess, type Layout, measureLayout, type NestTask, takesNoMore } from "./layPieces.ts";
+import { relaxBeds, type WorkShares } from "./relax/relaxBed.ts";
 
 export interface ShortenLimits {
   /** Attempts over all rolls. */
@@ -51,7 +51,7 @@ function movePieces(layout: Layout, task: NestTask): Layout {
         if (!into) continue;
         const beds = best.beds.map((b, i) => (i === to ? into : i === from ? bedWithout(b, p.piece) : b));
         const trial: Layout = { beds, left: best.left, cost: measureLayout(beds, best.left, task.areas) };
-        if (!isLess(trial.cost, best.cost)) continue;
+        if (!isLess(trial.cost, best.cost) || !takesNoMore(trial.cost, layout.cost)) continue;
         best = trial;
         break;
       }
@@ -59,18 +59,18 @@ function movePieces(layout: Layout, task: NestTask): Layout {
   return best;
 }
 
-/** The layout, or one of less cloth. */
+/** The layout, or one of less cloth; no more cloth is taken off the rolls than it took. */
 export function shortenLayout(layout: Layout, task: NestTask, limits: ShortenLimits): Layout {
   const loose = layout.beds.map((b) => b.laid.filter((p) => !p.pinned).length);
   const all = loose.reduce((sum, n) => sum + n, 0);
+  const shares = layout.beds.map((bed, i) => ({
+    bed,
+    steps: Math.round((limits.steps * loose[i]) / Math.max(1, all)),
+  }));
+  const { seed, onStep, work } = limits;
+  const onRound = (done: number) => onStep(Math.min(limits.steps, done), layout);
   let best = layout;
-  let done = 0;
-  layout.beds.forEach((_, i) => {
-    const steps = Math.round((limits.steps * loose[i]) / Math.max(1, all));
-    const before = done;
-    const onStep = (k: number) => limits.onStep(Math.min(limits.steps, before + k), best);
-    const bed = relaxBed(best.beds[i], task, { steps, seed: limits.seed, onStep }, limits.work);
-    done += steps;
+  relaxBeds(shares, task, { seed, onRound }, work).forEach((bed, i) => {
     if (bed === best.beds[i]) return;
     const beds = best.beds.map((b, k) => (k === i ? bed : b));
     const trial = { beds, left: best.left, cost: measureLayout(beds, best.left, task.areas) };
@@ -78,5 +78,5 @@ export function shortenLayout(layout: Layout, task: NestTask, limits: ShortenLim
   });
   const moved = best.beds.filter((b) => b.laid.length > 0).length > 1 ? movePieces(best, task) : best;
   if (moved !== best) compactInPlace(moved, task.areas, 12);
-  return isLess(moved.cost, best.cost) ? moved : best;
+  return isLess(moved.cost, best.cost) && takesNoMore(moved.cost, best.cost) ? moved : best;
 }

@@ -99,7 +99,7 @@ function plan(request: Extract<Request, { kind: "plan" }>): void {
       onStation,
       onRoof: (roof) => request.roofs.postMessage({ run, roof } satisfies SentRoof),
     },
-    { onProgress: tell, cancelled: cap.cancelled },
+    { onProgress: tell, cancelled: cap.cancelled, elapsed: cap.elapsed },
   );
   const facts: Facts = { ...planned, findings: [...input.findings, ...planned.findings] };
   const fields = measureFields(facts, input.job.warp);

@@ -1,9 +1,9 @@
 // The relaxed search by itself: known optima, and the same layout for the same seed whoever works the shares.
 import { describe, expect, it } from "vitest";
-import { bedReach } from "../../../src/core/rolls/bed.ts";
+import { type Bed, bedReach } from "../../../src/core/rolls/bed.ts";
 import { layPieces, type NestTask } from "../../../src/core/rolls/layPieces.ts";
 import { buildShape, clothArea } from "../../../src/core/rolls/nestShape.ts";
-import { relaxBed } from "../../../src/core/rolls/relax/relaxBed.ts";
+import { relaxBeds, type WorkShares } from "../../../src/core/rolls/relax/relaxBed.ts";
 import { openSearch, tryShorter } from "../../../src/core/rolls/relax/shortenStrip.ts";
 import { copyState, measureOverlap, setState } from "../../../src/core/rolls/relax/strip.ts";
 import { type ShareOrder, workShare } from "../../../src/core/rolls/relax/workShare.ts";
@@ -24,17 +24,21 @@ function trianglesTask(count: number, flaws: { x: number; y: number; length: num
   };
 }
 
+/** One bed relaxed. */
+const relaxBed = (bed: Bed, task: NestTask, limits: { steps: number; seed: number }, work?: WorkShares) =>
+  relaxBeds([{ bed, steps: limits.steps }], task, { seed: limits.seed, onRound: () => {} }, work)[0];
+
 /** A poor start: one triangle after the other, none turned. */
 function poorBed(task: NestTask) {
   const straight = { ...task, shapes: task.shapes.map((s) => [s[0]]), store: new Map() };
-  return layPieces(straight, task.loose, "least x", null)!.beds[0];
+  return layPieces(straight, { order: task.loose, rule: "least x" }, null)!.beds[0];
 }
 
 describe("relaxBed", () => {
   it("finds turned pairs from a start without any", () => {
     const task = trianglesTask(8);
     const bed = poorBed(task);
-    const better = relaxBed(bed, task, { steps: 300, seed: 1, onStep: () => {} });
+    const better = relaxBed(bed, task, { steps: 300, seed: 1 });
     expect(bedReach(better)).toBeLessThan(0.9 * bedReach(bed));
     expect(bedReach(better)).toBeGreaterThanOrEqual(2000 - 1e-3);
     expect(better.laid.length).toBe(8);
@@ -42,25 +46,25 @@ describe("relaxBed", () => {
 
   it("gives the same layout for the same seed, and never a longer one; a lost share costs its work only", () => {
     const task = trianglesTask(6, [{ x: 500, y: 300, length: 200, width: 200 }]);
-    const run = (work?: (orders: ShareOrder[]) => ReturnType<typeof workShare>[] | null[]) => {
-      const bed = relaxBed(poorBed(task), task, { steps: 120, seed: 4, onStep: () => {} }, work as never);
+    const run = (work?: WorkShares) => {
+      const bed = relaxBed(poorBed(task), task, { steps: 120, seed: 4 }, work);
       return JSON.stringify(bed.laid.map((p) => [p.piece, p.shape.rotation, p.x, p.y]));
     };
     // Orders cross threads as copies.
     const copied = (orders: ShareOrder[]) => orders.map((o) => workShare(structuredClone(o), () => false));
     expect(run(copied)).toBe(run());
     const lost = (orders: ShareOrder[]) => orders.map((o, k) => (k === 1 ? null : workShare(o, () => false)));
-    const bed = relaxBed(poorBed(task), task, { steps: 120, seed: 4, onStep: () => {} }, lost);
+    const bed = relaxBed(poorBed(task), task, { steps: 120, seed: 4 }, lost);
     expect(bed.laid.length).toBe(6);
     expect(bedReach(bed)).toBeLessThanOrEqual(bedReach(poorBed(task)));
-    const none = relaxBed(poorBed(task), task, { steps: 120, seed: 4, onStep: () => {} }, (o) => o.map(() => null));
+    const none = relaxBed(poorBed(task), task, { steps: 120, seed: 4 }, (o) => o.map(() => null));
     expect(bedReach(none)).toBe(bedReach(poorBed(task)));
   });
 
   it("holds a valid layout at any moment it is stopped at", () => {
     const task = trianglesTask(6);
     let order: ShareOrder | null = null;
-    relaxBed(poorBed(task), task, { steps: 60, seed: 2, onStep: () => {} }, (orders) => {
+    relaxBed(poorBed(task), task, { steps: 60, seed: 2 }, (orders) => {
       order ??= orders[0];
       return orders.map(() => null);
     });

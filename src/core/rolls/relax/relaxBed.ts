@@ -18,6 +18,8 @@ const SHARES = 2;
 /** After each round the shares go on from the best of them: at most so many, of so many steps a piece at least. */
 const ROUNDS = 8;
 const ROUND_LEAST = 4;
+/** Fewer steps in all are none: the constructive nest stays as it is. */
+const LEAST_STEPS = 2;
 /** The overlap in all that counts as none, as a share of the least piece's size. */
 const NONE = 1e-7;
 const NEAR = 1.001;
@@ -109,7 +111,7 @@ function bedFrom(bed: Bed, framed: Framed, state: StripState, areas: number[]): 
   };
   const touch = TOUCH * framed.task.none;
   const slid = lay();
-  compactInPlace({ beds: [slid], left: [], cost: { left: 0, cloth: 0, reach: 0 } }, areas, 12);
+  compactInPlace({ beds: [slid], left: [], cost: { left: 0, cloth: 0, used: 0, reach: 0 } }, areas, 12);
   if (isApart(slid, touch)) return slid;
   const plain = lay();
   return isApart(plain, touch) ? plain : null;
@@ -122,22 +124,20 @@ export function openSearchOf(bed: Bed, nest: NestTask, seed: number, fixed: numb
   return { search, bedOf: (state: StripState) => bedFrom(bed, framed, state, nest.areas) ?? bed };
 }
 
+/** Asks for orders to be worked, is given the states found; ends with the bed. */
+export type Relaxing = Generator<{ orders: ShareOrder[]; done: number }, Bed, (StripState | null)[]>;
+
 /**
- * The bed made shorter, or the bed itself where no shorter layout was found.
- * @param limits steps in all, shared out
+ * Makes a bed shorter round by round; the bed itself where no shorter layout was found.
+ * @param limits steps in all, shared out; each round is asked for with the steps done before it
  */
-export function relaxBed(
-  bed: Bed,
-  nest: NestTask,
-  limits: { steps: number; seed: number; onStep: (done: number) => void },
-  work: WorkShares = (orders, stop) => orders.map((o) => workShare(o, stop)),
-): Bed {
+export function* relaxRounds(bed: Bed, nest: NestTask, limits: { steps: number; seed: number }): Relaxing {
   const loose = bed.laid.filter((p) => !p.pinned).length;
   const rings = bed.laid.map((p) => p.shape.ring);
   // No layout is shorter than its bound or its pins; one that meets it to a thousandth is good enough.
   const bound = NEAR * boundLength(rings, bed.width, bed.gap, bed.start);
   const fixed = Math.max(bound, ...bed.laid.filter((p) => p.pinned).map((p) => p.x + p.shape.length));
-  if (loose === 0 || limits.steps < 1 || fixed >= bedReach(bed)) return bed;
+  if (loose === 0 || limits.steps < LEAST_STEPS || fixed >= bedReach(bed)) return bed;
   const framed = frameBed(bed, nest);
   // Few steps are not worth sharing.
   const shares = limits.steps >= SHARES * ROUND_LEAST * loose ? SHARES : 1;
@@ -149,10 +149,47 @@ export function relaxBed(
     const steps = Math.floor((each * (round + 1)) / rounds) - done;
     const order = { kind: "shorten strip" as const, task: framed.task, from: best, fixed, done, steps, of: each };
     const orders = Array.from({ length: shares }, (_, k) => ({ ...order, seed: limits.seed + k }));
-    for (const state of work(orders, nest.stop)) if (state && state.length < best.length) best = state;
-    limits.onStep(shares * (done + steps));
+    const states = yield { orders, done: shares * done };
+    for (const state of states) if (state && state.length < best.length) best = state;
   }
   if (best === framed.from) return bed;
   const shorter = bedFrom(bed, framed, best, nest.areas);
   return shorter && bedReach(shorter) < bedReach(bed) ? shorter : bed;
+}
+
+const workAll: WorkShares = (orders, stop) => orders.map((o) => workShare(o, stop));
+
+/** Beds made shorter side by side, all that a round asks for worked at once. */
+export function relaxBeds(
+  tasks: { bed: Bed; steps: number }[],
+  nest: NestTask,
+  limits: { seed: number; onRound: (done: number) => void },
+  work: WorkShares = workAll,
+): Bed[] {
+  const { seed, onRound } = limits;
+  const beds = tasks.map((t) => t.bed);
+  const done = tasks.map(() => 0);
+  let open = tasks.map(({ bed, steps }, k) => {
+    const rounds = relaxRounds(bed, nest, { steps, seed });
+    return { k, rounds, asked: rounds.next() };
+  });
+  for (;;) {
+    for (const { k, asked } of open)
+      if (asked.done) beds[k] = asked.value;
+      else done[k] = asked.value.done;
+    open = open.filter((o) => {
+      if (o.asked.done) done[o.k] = tasks[o.k].steps;
+      return !o.asked.done;
+    });
+    onRound(done.reduce((sum, d) => sum + d, 0));
+    if (open.length === 0) return beds;
+    const orders = open.map((o) => (o.asked.done ? [] : o.asked.value.orders));
+    const states = work(orders.flat(), nest.stop);
+    let next = 0;
+    open.forEach((o, i) => {
+      const own = states.slice(next, next + orders[i].length);
+      next += orders[i].length;
+      o.asked = o.rounds.next(own);
+    });
+  }
 }
