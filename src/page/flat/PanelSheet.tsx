@@ -39,7 +39,7 @@ export function PanelDrawing({ panel, size, detail }: { panel: SeenPanel; size: 
         panel.marks.map((m, i) =>
           m.points === undefined ? null : (
             // biome-ignore lint/suspicious/noArrayIndexKey: marks have no names
-            <path key={i} className="pen" d={path(m.points, false)} />
+            <path key={i} className={m.kind === "slit" ? "slit" : "pen"} d={path(m.points, false)} />
           ),
         )}
       {detail &&

@@ -63,16 +63,29 @@ describe("slits", () => {
     },
   );
 
-  it("are said in one note an edge, with 2p/R; a caution where slits stand too close", () => {
+  it("are said in one note an edge, with 2p/R", () => {
     const R = 6000;
     const [note, ...rest] = listFoldFindings([outlined(onCircle(R, 0.7)), { ...outlined(onCircle(R, 0.7)), id: "P2" }]);
     expect(rest).toEqual([]);
     expect([note.code, note.level, note.where]).toEqual(["pocket-curve", "note", ["E1", "P1", "P2"]]);
     expect(note.value as number).toBeCloseTo((100 * 2 * 60) / R, 2);
     expect(note.text).toContain("16 slits");
-    const [tight] = listFoldFindings([outlined(onCircle(550, 2))]);
-    expect(tight.level).toBe("caution");
-    expect(tight.value as number).toBeGreaterThan(20);
+  });
+
+  it("are not cut where they would stand too close: the hem is as narrow as its bend asks, a pocket a strip", () => {
+    const R = 550;
+    const free = onCircle(R, 2);
+    free.sides[0].kind = "free";
+    const hem = outlinePanel(free, NOWHERE, { ...ALLOW, hem: 60 });
+    const [width] = hem.output.outlines.map((o) => o.allowance);
+    // 2p/R = 20 % at p = 55 mm; tried in steps of a fifth.
+    expect(width).toBeCloseTo(0.8 * 60, 9);
+    expect(hem.findings.map((f) => [f.code, f.level])).toContainEqual(["flap-tight", "note"]);
+    expect(hem.findings.find((f) => f.code === "flap-tight")?.text).toMatch(/radius down to 0\.55 m.*22 %/);
+    const pocket = outlinePanel(onCircle(R, 2), NOWHERE, ALLOW);
+    expect(pocket.output.outlines[0].allowance).toBe(0);
+    expect(slitsOf(pocket.output)).toEqual([]);
+    expect(outlined(onCircle(650, 2)).outlines[0].allowance).toBe(60);
   });
 
   it("are none where the flap folds flat, on straight sides, or where the pocket is a separate strip", () => {

@@ -81,7 +81,7 @@ describe("pocket strips", () => {
     );
     const { output, findings } = buildPieces([cut(short, job)], form, job);
     expect(output.filter((p) => p.kind === "strip").map((p) => [p.for, ringBox(p.cut).x1])).toEqual([["E2", 200]]);
-    expect(findings.find((f) => f.code === "piece-strip")?.text).toContain("too short to fold");
+    expect(findings.find((f) => f.code === "piece-strip")?.text).toContain("too short or too tightly bent to fold");
   });
 });
 

@@ -11,7 +11,7 @@ export const FLAP_SHORTAGE = 0.005;
 /** What one slit takes up at the rim, mm. */
 const GAPE_MM = 10;
 /** A flap with this share out of length is no flap any more: slits would stand closer than a third of its width. */
-const FLAP_LIMIT = 0.2;
+export const FLAP_LIMIT = 0.2;
 /** A slit keeps this share of the flap's width away from the fold line. */
 const SLIT_FOOT = 0.2;
 
@@ -26,6 +26,11 @@ function measureSideBends(panel: FlatPanel, side: PanelSide, width: number): Flo
 /** Greatest bend of a side in the flat, 1/mm, left or right. */
 export function sideCurvature(panel: FlatPanel, side: PanelSide, reach: number): number {
   return measureBends(listPoints(panel, side.vertices), reach).reduce((most, b) => Math.max(most, Math.abs(b)), 0);
+}
+
+/** Share of its length by which the rim of a flap of this width is out, at the side's tightest bend: 2p/R. */
+export function measureShortage(panel: FlatPanel, side: PanelSide, width: number): number {
+  return 2 * width * sideCurvature(panel, side, 4 * width);
 }
 
 /**
@@ -68,14 +73,14 @@ export function slitMarks(panel: CutPanel, side: PanelSide, allowance: number): 
   return marks;
 }
 
-/** What must be known of flaps folded on curves, one finding an edge; a caution where slits no longer help. */
+/** What must be known of flaps folded on curves, one finding an edge. Flaps too tight for slits are not cut (outlinePanel.ts). */
 export function listFoldFindings(panels: readonly CutPanel[]): Finding[] {
   const edges = new Map<string, { panels: string[]; width: number; shortage: number; slits: number }>();
   for (const panel of panels)
     panel.sides.forEach((side, k) => {
       const width = panel.outlines[k].allowance;
       if (width <= 0 || !isFolded(side)) return;
-      const shortage = 2 * width * sideCurvature(panel, side, 4 * width);
+      const shortage = measureShortage(panel, side, width);
       if (shortage <= FLAP_SHORTAGE) return;
       const edge = edges.get(side.id) ?? { panels: [], width, shortage: 0, slits: 0 };
       edge.panels.push(panel.id);
@@ -85,23 +90,20 @@ export function listFoldFindings(panels: readonly CutPanel[]): Finding[] {
     });
   return [...edges].map(([id, edge]): Finding => {
     const radius = (2 * edge.width) / edge.shortage / 1000;
-    const tight = edge.shortage > FLAP_LIMIT;
     return {
       code: "pocket-curve",
-      level: tight ? "caution" : "note",
+      level: "note",
       station: "panels",
       where: [id, ...new Set(edge.panels)],
       value: 100 * edge.shortage,
-      limit: 100 * (tight ? FLAP_LIMIT : FLAP_SHORTAGE),
+      limit: 100 * FLAP_SHORTAGE,
       text:
         `edge ${id}: the ${edge.width.toFixed(0)} mm flap is folded on a radius down to ${radius.toFixed(2)} m, so its rim is up to ` +
         `${(100 * edge.shortage).toFixed(2)} % out of length (${100 * FLAP_SHORTAGE} % folds flat); ` +
         (edge.slits > 0
-          ? `${edge.slits === 1 ? "1 slit is" : `${edge.slits} slits are`} drawn, each taking up about ${GAPE_MM} mm`
+          ? `${edge.slits === 1 ? "1 slit is" : `${edge.slits} slits are`} cut, each taking up about ${GAPE_MM} mm`
           : "too short a run for a slit"),
-      remedy: tight
-        ? "Make the pocket of a separate strip (allowances.pocketStrip), or narrower."
-        : "Slit where drawn before folding; a pocket of separate strips needs none (allowances.pocketStrip).",
+      remedy: "Slits are cut with the outline; a pocket of separate strips needs none (allowances.pocketStrip).",
       basis: "own argument",
     };
   });

@@ -6,7 +6,7 @@ import type { CutPanel, FlatPanel, PanelSide, Ring } from "../../records/flatPan
 import type { Allowances } from "../../records/job.ts";
 import { isSimpleRing, ringArea, ringBox, ringDistance } from "../../surface/ring.ts";
 import { placeMarks } from "../marks/placeMarks.ts";
-import { isFolded } from "../marks/slitFlaps.ts";
+import { FLAP_LIMIT, isFolded, measureShortage } from "../marks/slitFlaps.ts";
 import { measureControl } from "./controlLengths.ts";
 import { buildNetOutline, type NetOutline } from "./netOutline.ts";
 import { offsetOutline } from "./offsetOutline.ts";
@@ -87,13 +87,26 @@ function checkRings(panel: FlatPanel, net: Ring, cut: Ring): { checks: Check[]; 
   return { checks: [{ station: "panels", text, value: holds ? 1 : 0, limit: 1, holds }], findings };
 }
 
-/** Flaps that are not cut as asked, because their side is too short. */
+/** Flaps that are not cut as asked, because their side is too short or too tightly bent. */
 function listShortFlaps(panel: CutPanel, wanted: readonly number[]): Finding[] {
   return panel.sides.flatMap((side, k) => {
     const { allowance } = panel.outlines[k];
     if (allowance === wanted[k]) return [];
     const instead =
       side.kind === "cable" ? "its pocket is a separate strip" : `it is cut ${allowance.toFixed(0)} mm wide`;
+    const shortage = measureShortage(panel, side, wanted[k]);
+    if (shortage > FLAP_LIMIT) {
+      const radius = (2 * wanted[k]) / shortage / 1000;
+      return [
+        {
+          ...finding("flap-tight", "note", [panel.id, side.id], 100 * shortage, 100 * FLAP_LIMIT),
+          text:
+            `Side ${side.id} of panel ${panel.id} is bent on a radius down to ${radius.toFixed(2)} m: the rim of a flap of ${wanted[k]} mm ` +
+            `would be ${(100 * shortage).toFixed(0)} % out of length, more than slits take up (${100 * FLAP_LIMIT} %): ${instead}.`,
+          remedy: "Give a narrower flap, or let the edge be found with less sag.",
+        },
+      ];
+    }
     return [
       {
         ...finding("flap-short", "note", [panel.id, side.id], side.lengthFlat, wanted[k]),
@@ -122,9 +135,17 @@ function cutOutline(panel: FlatPanel, net: NetOutline, allowances: readonly numb
   return offsetOutline(net.net, offsets, discs);
 }
 
+/** Width of a flap that its side's bend lets it fold with slits: a pocket all of it or none, a hem as much as goes. */
+function foldableWidth(panel: FlatPanel, side: PanelSide, wanted: number): number {
+  if (wanted <= 0 || !isFolded(side)) return wanted;
+  let width = wanted;
+  while (width > 1 && measureShortage(panel, side, width) > FLAP_LIMIT) width = side.kind === "cable" ? 0 : 0.8 * width;
+  return width > 1 ? width : 0;
+}
+
 /**
- * Cut outline and the allowances it has. A flap that its side is too short to fold is not cut: a pocket there becomes a separate
- * strip (cutPieces.ts), a hem as narrow as its side lets it be.
+ * Cut outline and the allowances it has. A flap that its side is too short or too tightly bent to fold is not cut: a pocket there
+ * becomes a separate strip (cutPieces.ts), a hem as narrow as its side lets it be.
  */
 function chooseOutline(
   panel: FlatPanel,
@@ -132,7 +153,7 @@ function chooseOutline(
   wanted: readonly number[],
   place: PanelPlace,
 ): { cut: Ring; allowances: number[]; misses: number[] } {
-  const allowances = [...wanted];
+  const allowances = wanted.map((width, k) => foldableWidth(panel, panel.sides[k], width));
   for (let round = 0; ; round++) {
     const cut = cutOutline(panel, net, allowances, place);
     const misses = measureMisses(panel, cut, allowances);

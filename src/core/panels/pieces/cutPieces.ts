@@ -85,7 +85,9 @@ function buildStrips(
         parts,
         `edge ${id}: ${edge.length.toFixed(0)} mm of its pocket are a separate strip, ${parts} ${parts === 1 ? "part" : "parts"} of ` +
           `${(edge.length / parts).toFixed(0)} x ${(2 * pocket).toFixed(0)} mm, folded in the middle, butted end to end` +
-          (job.allowances.pocketStrip ? "" : "; the sides there are too short to fold a flap of this width"),
+          (job.allowances.pocketStrip
+            ? ""
+            : "; the sides there are too short or too tightly bent to fold a flap of this width"),
         "Give allowances.pocketStrip and allowances.pocket to have it otherwise.",
       ),
     );

@@ -30,7 +30,9 @@ export function placed(point: Vec2, lie: Lie): Vec2 {
 export function addPanelInPlace(drawing: Drawing, panel: FactsPanel, lie: Lie): void {
   for (const mark of panel.marks) {
     if (mark.points && mark.points.length > 1) {
-      addStrokeInPlace(drawing, { layer: "mark", points: mark.points.map((p) => placed(p, lie)), closed: false });
+      // A slit is cut, before the outline that it opens into; everything else is the pen's.
+      const layer = mark.kind === "slit" ? "cut" : "mark";
+      addStrokeInPlace(drawing, { layer, points: mark.points.map((p) => placed(p, lie)), closed: false });
     }
     if (!mark.at) continue;
     if (mark.text === undefined) {
