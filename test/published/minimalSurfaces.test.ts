@@ -65,9 +65,12 @@ describe("Schwarz D patch over the skew quad of the unit cube (5.1, C, finite el
     [64, 1.279369],
   ])("n = %d", (n, area) => {
     const { surface } = settlePatch(n, (x, y) => [x, y, x + y - 2 * x * y], 0.4);
-    // the published areas are least within the surface too; vertices here keep their places in it, which costs a
-    // fifth of what the mesh itself is off at most
-    expect(Math.abs(measureArea(surface) - area)).toBeLessThan(0.2 * (area - 1.279262));
+    // where vertices lie within the surface is free. Least areas found by L-BFGS (scipy, sharing no code): heights alone
+    // 1.286417 and 1.281057 at n = 8 and 16, all three coordinates 1.284848 and 1.280609. So that freedom is 0.23 and 0.26 of what
+    // the mesh itself is off; nothing on this mesh lies below the second pair
+    const found = measureArea(surface);
+    expect(Math.abs(found - area)).toBeLessThan(0.15 * (area - 1.279262));
+    if (n <= 16) expect(found).toBeGreaterThan(n === 8 ? 1.2848 : 1.2806);
   });
 
   test("areas tend to the limit 1.279262 with the square of the side", () => {
@@ -144,7 +147,7 @@ test("helicoid, R = 1, pitch 1, one turn (5.1, C): area 3.383045 within 0.2 %", 
 describe("surfaces that do not exist end in a stop that names the neck, within 200 passes (5.1: limit 1.3254868; T8)", () => {
   const passes = (text: string) => Number(/after (\d+) passes/.exec(text)?.[1]);
 
-  test.each([1.33, 1.4, 1.5])("two rings at %d R", (h) => {
+  test.each([1.327, 1.33, 1.4, 1.5])("two rings at %d R", (h) => {
     const parts = buildRings(48, 24, h);
     const { output: form, findings } = runForm(placeMesh(parts), buildJob({ settle: true }), {});
     const stops = findings.filter((f) => f.level === "stop");
@@ -183,15 +186,21 @@ describe("surfaces that do not exist end in a stop that names the neck, within 2
       { name: "corner", vertices: corners },
       { name: "ring", vertices: Array.from({ length: n }, (_, i) => 32 * n + i) },
     ];
-    for (const [parts, edges] of [
-      [cone(5), {}],
-      [hung, { default: { force: 60 } }],
+    const even = { warp: 2, weft: 2 };
+    for (const [parts, edges, prestress, warp] of [
+      [cone(5), {}, even, null],
+      [hung, { default: { force: 60 } }, even, null],
+      // even more stress up the cloth holds only a little less than 5 m; along one side it holds less
+      [cone(5), {}, { warp: 4, weft: 2 }, [0, 0, 1]],
+      [hung, { default: { force: 90 } }, { warp: 4, weft: 2 }, [0, 0, 1]],
+      [hung, { default: { force: 90 } }, { warp: 4, weft: 2 }, [1, 0, 0]],
     ] as const) {
-      const { findings } = runForm(placeMesh(parts), buildJob({ settle: true, edges }), {});
+      const job = buildJob({ settle: true, edges, prestress, warp: warp && [...warp] });
+      const { findings } = runForm(placeMesh(parts), job, {});
       const [stop, ...more] = findings.filter((f) => f.level === "stop");
       expect([stop.code, more.length]).toEqual(["settle-neck", 0]);
       expect(passes(stop.text)).toBeLessThanOrEqual(200);
-      expect(stop.value).toBeLessThan(0.4);
+      expect(stop.value).toBeLessThan(0.5);
       // on the axis, between square and ring
       const place = /neck at \((.*), (.*), (.*)\) m, radius/.exec(stop.text)?.slice(1).map(Number) ?? [];
       expect(Math.hypot(place[0], place[1])).toBeLessThan(0.05);
@@ -200,6 +209,49 @@ describe("surfaces that do not exist end in a stop that names the neck, within 2
     }
     const low = runForm(placeMesh(cone(2)), buildJob({ settle: true }), {});
     expect(low.findings.filter((f) => f.level !== "note")).toEqual([]);
+  });
+});
+
+// Stress 4 up the cloth and 2 round it: across a surface of revolution r·r'' = ½(1 + r'²), so 1 + r'² = r/c and the height from the
+// neck c to r is 2√(c(r - c)). Between rings of 0.8 and 7 m the greatest height is the maximum over c of
+// 2(√(c(7 - c)) + √(c(0.8 - c))) = 4.73 m (own, closed form).
+describe("a cone with twice the stress up as round, ring 0.8 m in a ring of 7 m: it exists up to 4.73 m", () => {
+  const settleCone = (h: number) => {
+    const parts = buildGrid(
+      64,
+      48,
+      (u, v) => {
+        const r = 7 * (1 - v) + 0.8 * v;
+        return [r * Math.cos(2 * Math.PI * u), r * Math.sin(2 * Math.PI * u), h * v];
+      },
+      true,
+    );
+    return runForm(placeMesh(parts), buildJob({ settle: true, prestress: { warp: 4, weft: 2 }, warp: [0, 0, 1] }), {});
+  };
+
+  test("3 m: heights within 5 mm of the closed form", () => {
+    const { output: form, findings } = settleCone(3);
+    expect(findings.filter((f) => f.level === "stop" || f.code === "settle-slow")).toEqual([]);
+    const height = (c: number, r: number) => 2 * Math.sqrt(c * (r - c));
+    // √(c(7 - c)) - √(c(0.8 - c)) = 1.5 by halving
+    let [low, high] = [1e-3, 0.8];
+    for (let i = 0; i < 60; i++) {
+      const c = (low + high) / 2;
+      if (height(c, 7) - height(c, 0.8) < 3) low = c;
+      else high = c;
+    }
+    const { xyz } = form.surface;
+    let off = 0;
+    for (let v = 0; v < xyz.length; v += 3)
+      off = Math.max(off, Math.abs(height(low, 7) - height(low, Math.hypot(xyz[v], xyz[v + 1])) - xyz[v + 2]));
+    expect(off).toBeLessThan(0.005);
+  });
+
+  test("4.6 m settles, 4.8 m ends in the neck within 200 passes", () => {
+    expect(settleCone(4.6).findings.filter((f) => f.level === "stop" || f.code === "settle-slow")).toEqual([]);
+    const [stop] = settleCone(4.8).findings.filter((f) => f.level === "stop");
+    expect(stop.code).toBe("settle-neck");
+    expect(Number(/after (\d+) passes/.exec(stop.text)?.[1])).toBeLessThanOrEqual(200);
   });
 });
 

@@ -43,6 +43,9 @@ export interface Settled {
 /** Out-of-balance force above which all of a vertex moves. */
 const NEAR = 1e-3;
 
+/** Out-of-balance force above which a form that was near has left balance again, as one does that does not exist. */
+const LEFT = 2e-2;
+
 /** Start that is folded rather than rough: its sides are first spread by equal force densities. */
 const FOLDED = 1;
 
@@ -52,8 +55,9 @@ const COLLAPSED = { height: 2e-3, share: 0.05 };
 /** Passes without a smaller residual after which the steps do not shrink. */
 const PATIENCE = 80;
 
-/** A form that is this near when the passes end is slow, not lost. */
+/** A form that is this near when the passes end, and no further out than GROWN times its best, is slow, not lost. */
 const SLOW = 1e-3;
+const GROWN = 2;
 
 /** Height over longest side of each triangle. */
 function measureShapes(surface: Surface): Float64Array<ArrayBuffer> {
@@ -105,10 +109,12 @@ export function settleForm(input: SettleInput, options: SettleOptions, context: 
   const finish = (end: SettleEnd, worst = balance.worst): Settled => {
     return { surface: state, end, passes, start, residual: balance.across, whole: balance.whole, limit, worst };
   };
+  // just past the last form that exists a state comes near balance, creeps by and leaves again
+  const isSlow = () => balance.across < SLOW && balance.across <= GROWN * best;
   try {
     while (balance.across > limit) {
       if (context.cancelled?.()) throw new PlanError("cancelled", "settling was stopped", "form");
-      if (passes === options.maxPasses) return finish(balance.across < SLOW ? "slow" : "stalled");
+      if (passes === options.maxPasses) return finish(isSlow() ? "slow" : "stalled");
       if (passes === 0 && start > FOLDED) {
         state = spreadFolds(it, state);
         shapes = measureShapes(state);
@@ -119,8 +125,8 @@ export function settleForm(input: SettleInput, options: SettleOptions, context: 
       if (collapse >= 0) return finish("collapsed", collapse);
       since = balance.across < best ? 0 : since + 1;
       best = Math.min(best, balance.across);
-      if (since === PATIENCE) return finish(balance.across < SLOW ? "slow" : "stalled");
-      near ||= balance.across < NEAR;
+      if (since === PATIENCE) return finish(isSlow() ? "slow" : "stalled");
+      near = balance.across < (near ? LEFT : NEAR);
       context.onProgress?.(Math.min(1, passes / options.maxPasses), `settling, pass ${passes}`);
     }
   } catch (error) {

@@ -64,7 +64,7 @@ export function takeNearStep(it: Iteration, now: Surface): Surface {
   const move = stepForceDensity(it.system, now, densities, load).map((value, i) => value - now.xyz[i]);
   balance.keepInPlace(move);
   const to = { xyz: now.xyz.map((value, i) => value + move[i]), tri: now.tri };
-  return shortenStep(now, to, it.share, it.even ? gains(it, now) : strays(it, kept, 1));
+  return shortenStep(now, to, it.share, it.even ? gains(it, now) : strays(it, kept, STRAYED));
 }
 
 /** Whether a state is `times` further out of balance than the one before. */
