@@ -199,6 +199,27 @@ describe.skipIf(missing.length > 0)(`PDF sheets read by other programs${reason}`
     expect(card.join(" ")).toMatch(/Scale 1:(10|20|25|50|75|100),/);
   });
 
+  test("an imperial card holds the same lengths in feet, inches and sixteenths, to half a sixteenth", async () => {
+    const make = SETS["plain, Letter, imperial"]!;
+    const facts = make();
+    const text = textOf((await shared(make)).get("panel-cards.pdf")!, 1);
+    const told = [...text.matchAll(/(?:(\d+)' )?(?:(\d+) )?(?:(\d+)\/(\d+)|(\d+))"/g)].map(
+      ([, feet, inch, a, b, whole]) =>
+        25.4 * (12 * Number(feet ?? 0) + Number(inch ?? 0) + (b ? Number(a) / Number(b) : Number(whole))),
+    );
+    const panel = facts.panels![0]!;
+    const { diagonals, widths } = panel.control!;
+    const lengths = [
+      ...panel.sides.flatMap((s) => [s.lengthFlat, 1000 * s.lengthErected]),
+      ...diagonals.map((d) => d.length),
+      ...widths.flatMap((w) => [w.at, w.net, w.cut]),
+    ];
+    expect(lengths.length).toBeGreaterThan(12);
+    for (const mm of lengths)
+      expect(Math.min(...told.map((t) => Math.abs(t - mm)))).toBeLessThanOrEqual(25.4 / 32 + 1e-6);
+    expect(text).not.toMatch(/\d mm|\d m²|\d kg/);
+  });
+
   test("the findings sheets hold every finding and check, and say what the plan does not do", async () => {
     const facts = full();
     const text = textOf((await shared(full)).get("findings.pdf")!);

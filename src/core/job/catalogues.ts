@@ -53,6 +53,8 @@ export interface Caution {
   hazard: string;
   consequence: string;
   avoid: string;
+  /** Only where cloth of this material is used, or of one that is not known. */
+  cloth?: Fabric["material"];
   status: ValueStatus;
 }
 
@@ -74,6 +76,7 @@ const fabricRow = z.strictObject({
   id: words,
   name: words,
   use: words,
+  material: z.enum(["polyester", "glass", "other"]),
   Ew: positive,
   Ef: positive,
   nuWf: valued(z.number().min(0)),
@@ -114,6 +117,7 @@ const cautionRow = z.strictObject({
   hazard: words,
   consequence: words,
   avoid: words,
+  cloth: z.enum(["polyester", "glass", "other"]).optional(),
   status,
 });
 const catalogueFiles = z.strictObject({
@@ -214,6 +218,7 @@ function toFabric(row: z.infer<typeof fabricRow>): CatalogueFabric {
     rollLength: row.rollLength.value,
     mass: row.mass.value,
     strength: row.strength.value,
+    material: row.material,
     status: origins.status,
   };
   return { name: row.name, use: row.use, fabric, source: origins.source };

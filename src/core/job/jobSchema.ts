@@ -93,6 +93,7 @@ const fabric = z.strictObject({
   selvedge: mm(500).optional(),
   rollLength: num(1000, 1e7, { unit: "mm" }).optional(),
   mass: num(0, 20, { unit: "kg/m2", above: true }).optional(),
+  material: z.enum(["polyester", "glass", "other"]).optional(),
   strength: z.strictObject({ warp: perMetre(5000), weft: perMetre(5000) }).optional(),
 });
 
@@ -158,6 +159,7 @@ const nest = z.strictObject({
 });
 
 const turnbuckle = z.strictObject({
+  thread: num(3, 200, { unit: "mm", remedy: "the nominal diameter: 24 for M24" }).optional(),
   perTurn: mmAbove(100),
   shortest: mmAbove(10_000),
   longest: mmAbove(10_000),
@@ -224,6 +226,7 @@ const papers = z.strictObject({
   date: line(40).optional(),
   drawnBy: line(80).optional(),
   checkedBy: line(80).optional(),
+  supersedes: line(12, 1).optional(),
   sheet: z.enum(["A4", "A3", "Letter", "Tabloid"]).optional(),
   units: z.enum(["metric", "imperial"]).optional(),
   site: names(z.union([z.number(), line(400), z.boolean()])).optional(),

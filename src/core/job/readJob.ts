@@ -127,6 +127,7 @@ function resolveJob(file: JobFile, catalogues: Catalogues, ledger: DefaultLedger
       date: papers.date ?? "",
       drawnBy: papers.drawnBy ?? "",
       checkedBy: papers.checkedBy ?? "",
+      ...(papers.supersedes === undefined ? {} : { supersedes: papers.supersedes }),
       sheet: take(papers.sheet, d.sheet, "papers.sheet", d.sheet),
       units: take(papers.units, d.units, "papers.units", d.units),
       site: papers.site ? copyNames(papers.site, (value) => value) : null,

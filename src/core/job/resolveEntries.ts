@@ -32,9 +32,12 @@ export function resolveFabric(given: JobFile["fabric"], catalogues: Catalogues, 
     );
   }
   const base = (named ?? catalogues.fabrics[catalogues.defaultFabric]).fabric;
+  const { material = named?.fabric.material } = given;
+  const { material: _, ...numbers } = base;
   const fabric: Fabric = {
-    ...base,
+    ...numbers,
     ...(named === undefined ? { strength: null } : {}),
+    ...(material === undefined ? {} : { material }),
     id: given.id ?? "job",
     status: { ...base.status },
   };

@@ -23,8 +23,9 @@ type FileAdjuster = NonNullable<NonNullable<JobFile["rig"]>["adjusters"]>[number
 function resolveTurnbuckle(given: FileAdjuster["turnbuckle"], catalogues: Catalogues): Turnbuckle | null {
   if (given === undefined) return null;
   if (typeof given === "string") return readTurnbuckle(given, catalogues);
-  const { perTurn, shortest, longest, capacity } = given;
-  return { id: "job", perTurn, shortest, longest, capacity: capacity ?? null, status: {} };
+  const { perTurn, shortest, longest, capacity, thread } = given;
+  const known = thread === undefined ? {} : { thread };
+  return { id: "job", perTurn, shortest, longest, capacity: capacity ?? null, ...known, status: {} };
 }
 
 function readTurnbuckle(id: string, catalogues: Catalogues): Turnbuckle {

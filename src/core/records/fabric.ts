@@ -28,4 +28,6 @@ export interface Fabric {
   strength: { warp: number; weft: number } | null;
   /** Status of each value, by field name. */
   status: Record<string, ValueStatus>;
+  /** What its yarns are, where known: glass breaks where it is folded. */
+  material?: "polyester" | "glass" | "other";
 }

@@ -113,6 +113,8 @@ export interface PapersDecision {
   date: string;
   drawnBy: string;
   checkedBy: string;
+  /** Issue letter this one takes the place of. */
+  supersedes?: string;
   sheet: "A4" | "A3" | "Letter" | "Tabloid";
   units: "metric" | "imperial";
   /** What the engineer of the site has set; null: nothing. */

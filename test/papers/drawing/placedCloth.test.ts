@@ -2,6 +2,7 @@ import { expect, test } from "vitest";
 import { placedInOrder, tableBites } from "../../../src/core/papers/drawing/placedCloth.ts";
 import { rollDrawing } from "../../../src/core/papers/drawing/rollDrawing.ts";
 import type { Facts, Vec2 } from "../../../src/core/records/facts.ts";
+import { cutOrder } from "../../../src/core/rolls/cutOrder.ts";
 import { sampleFacts } from "../made/sampleFacts.ts";
 
 const square: Vec2[] = [
@@ -40,9 +41,9 @@ test("every piece is cut in just one table length, whole, in the order of the ro
       expect(c.end).toBeLessThanOrEqual(2000);
     }
   }
-  // The second begins 10 mm before its first piece; the flaw from 2900 to 3200 lies 1810 mm on.
-  expect(bites[1]!.words[0]).toContain("TABLE LENGTH 2 OF 3: X = 0 IS 1090 MM");
-  expect(bites[1]!.roll.flaws[0]!.x).toBeCloseTo(1810, 9);
+  // The second begins at its first piece; the flaw from 2900 to 3200 lies 1800 mm on.
+  expect(bites[1]!.words[0]).toContain("TABLE LENGTH 2 OF 3: X = 0 IS 1100 MM");
+  expect(bites[1]!.roll.flaws[0]!.x).toBeCloseTo(1800, 9);
   const drawn = rollDrawing(f, bites[1]!.roll, bites[1]!.words);
   expect(drawn.strokes.filter((s) => s.layer === "cut")).toHaveLength(2);
   expect(drawn.labels.some((l) => l.text.startsWith("TABLE LENGTH 2"))).toBe(true);
@@ -53,4 +54,28 @@ test("no bite, or one the roll fits in, needs no table lengths; a piece too long
   expect(tableBites(facts([0, 1100], 5000), facts([0, 1100], 5000).rolls![0]!)).toEqual([]);
   const f = facts([0, 1100], 800);
   expect(tableBites(f, f.rolls![0]!).map((b) => b.roll.placements.length)).toEqual([1, 1]);
+});
+
+test("table lengths, their starts and the order within them are those of the roll's record, in the cut file too", () => {
+  const starts = [20, 700, 350, 1100, 1900, 2300, 3000, 2600];
+  for (const bite of [1200, 2000, 900]) {
+    const f = facts(starts, bite);
+    const roll = f.rolls![0]!;
+    const { order, feeds } = cutOrder(
+      roll.placements.map((p) => ({ id: p.panel, x0: p.x, x1: p.x + 1000, y0: p.y })),
+      bite,
+    );
+    for (const p of roll.placements) p.order = order.indexOf(p.panel) + 1;
+    roll.feeds = feeds;
+    expect(placedInOrder(f, roll).map((c) => c.p.panel)).toEqual(order);
+    const bites = tableBites(f, roll);
+    expect(bites.flatMap((b) => placedInOrder(f, b.roll).map((c) => c.p.panel))).toEqual(order);
+    // A piece longer than the table is fed on within one file.
+    if (bite >= 1000) expect(bites.map((b) => b.from)).toEqual(feeds);
+    else for (const b of bites) expect(feeds).toContain(b.from);
+    const names = rollDrawing(f, roll)
+      .labels.filter((l) => l.layer === "text")
+      .map((l) => l.text.split(" ")[0]);
+    expect(names).toEqual(order);
+  }
 });

@@ -1,8 +1,11 @@
 // One piece of cloth on the drawing: its cut outline and what the pen writes on it, where it lies. The same for panels, patches
 // and strips, on a roll or alone. Where a mark stands, how high and at which angle is the panels station's decision.
-import type { FactsPanel, FactsPiece, Vec2 } from "../../records/facts.ts";
+import type { Facts, FactsPanel, FactsPiece, Vec2 } from "../../records/facts.ts";
+import { decimal } from "../words/decimal.ts";
 import { addLabelInPlace, addStrokeInPlace, type Drawing, textLength } from "./drawing.ts";
 import { boxOf, insidePoint } from "./flatGeometry.ts";
+import { penTexts, READ_AT_ARMS_LENGTH } from "./penTexts.ts";
+import { type StripPlace, stripPlace } from "./stripPlace.ts";
 import { addSymbolInPlace, cross } from "./symbols.ts";
 
 /** Where the piece lies: R(rotation)·point + (x, y). */
@@ -15,9 +18,8 @@ export interface Lie {
 /** A piece in its own axes. */
 export const AT_HOME: Lie = { rotation: 0, x: 0, y: 0 };
 
-// Lettering on cut pieces at least 10 mm high (common practice); a small patch takes what fits.
+// A small patch takes what fits.
 const NAME_HEIGHT = 40;
-const MARK_HEIGHT = 10;
 const LEAST_HEIGHT = 4;
 const CROSS = 10;
 
@@ -34,18 +36,16 @@ export function addPanelInPlace(drawing: Drawing, panel: FactsPanel, lie: Lie): 
       const layer = mark.kind === "slit" ? "cut" : "mark";
       addStrokeInPlace(drawing, { layer, points: mark.points.map((p) => placed(p, lie)), closed: false });
     }
-    if (!mark.at) continue;
-    if (mark.text === undefined) {
-      addSymbolInPlace(drawing, cross(CROSS), "mark", placed(mark.at, lie), 0);
-      continue;
-    }
+    if (mark.at && mark.text === undefined) addSymbolInPlace(drawing, cross(CROSS), "mark", placed(mark.at, lie), 0);
+  }
+  for (const { at, height, angle, text } of penTexts(panel)) {
     addLabelInPlace(drawing, {
       layer: "text",
-      at: placed(mark.at, lie),
-      height: mark.height ?? MARK_HEIGHT,
-      rotation: (mark.angle ?? 0) + lie.rotation,
+      at: placed(at, lie),
+      height,
+      rotation: angle + lie.rotation,
       anchor: "middle",
-      text: mark.text,
+      text,
     });
   }
   if (!panel.marks.some((m) => m.kind === "name")) addNameInPlace(drawing, panel.id, panel.cut, lie);
@@ -53,11 +53,42 @@ export function addPanelInPlace(drawing: Drawing, panel: FactsPanel, lie: Lie): 
 }
 
 /** Draws the cut outline of a patch, strip, cover or test piece with its name and what it belongs to. */
-export function addPieceInPlace(drawing: Drawing, piece: FactsPiece, lie: Lie): void {
+export function addPieceInPlace(drawing: Drawing, facts: Facts, piece: FactsPiece, lie: Lie): void {
   // What the name says already is not said again: the letters can be larger.
   const told = piece.id.includes(piece.for);
-  addNameInPlace(drawing, told ? piece.id : `${piece.id} for ${piece.for}`, piece.cut, lie);
+  const name = told ? piece.id : `${piece.id} for ${piece.for}`;
+  const place = stripPlace(facts, piece);
+  if (place) addStripInPlace(drawing, piece, name, place, lie);
+  else addNameInPlace(drawing, name, piece.cut, lie);
   addStrokeInPlace(drawing, { layer: "cut", points: piece.cut.map((p) => placed(p, lie)), closed: true });
+}
+
+/** A pocket strip: its fold, its name above it, below it where it lies along its edge and which end is which. */
+function addStripInPlace(drawing: Drawing, piece: FactsPiece, name: string, place: StripPlace, lie: Lie): void {
+  const { min, max } = boxOf(piece.cut);
+  const [length, width] = [max[0] - min[0], max[1] - min[1]];
+  const middle = (min[1] + max[1]) / 2;
+  const fold: Vec2[] = [
+    [min[0], middle],
+    [max[0], middle],
+  ];
+  addStrokeInPlace(drawing, { layer: "mark", points: fold.map((p) => placed(p, lie)), closed: false });
+  const mm = (value: number) => decimal(value, 0);
+  const lies = `<- ${place.start} END: ${mm(place.from)} to ${mm(place.to)} mm, LENGTH ${mm(length)} mm, PART ${place.part} OF ${place.parts}`;
+  const inset = Math.min(20, 0.05 * length);
+  const write = (text: string, y: number, most: number) => {
+    const fitting = (most * (length - 2 * inset)) / textLength(text, most);
+    addLabelInPlace(drawing, {
+      layer: "text",
+      at: placed([min[0] + inset, y], lie),
+      height: Math.max(LEAST_HEIGHT, Math.min(most, fitting, 0.3 * width)),
+      rotation: lie.rotation,
+      anchor: "start",
+      text,
+    });
+  };
+  write(name, middle + width / 4, NAME_HEIGHT);
+  write(lies, middle - width / 4, READ_AT_ARMS_LENGTH);
 }
 
 /** Writes a name where the outline leaves most room: unnamed cloth is lost cloth. */

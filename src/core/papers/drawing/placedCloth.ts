@@ -18,7 +18,7 @@ export interface PlacedCloth {
 }
 
 /**
- * The cloth on a roll from its start to its end; ties by id, so that two runs of one job cut alike.
+ * The cloth on a roll in its cutting order; where the record has none, from the start of the roll to its end, ties by id.
  * @throws PlanError "papers-unknown-piece" for a placement of cloth that the facts do not hold
  */
 export function placedInOrder(facts: Facts, roll: NestedRoll): PlacedCloth[] {
@@ -38,21 +38,29 @@ export function placedInOrder(facts: Facts, roll: NestedRoll): PlacedCloth[] {
       const box = boxOf(cut);
       return { p, panel, piece, cut, start: box.min[0], end: box.max[0] };
     })
-    .sort((a, b) => a.start - b.start || (a.p.panel < b.p.panel ? -1 : a.p.panel > b.p.panel ? 1 : 0));
+    .sort(
+      (a, b) =>
+        (a.p.order ?? 0) - (b.p.order ?? 0) ||
+        a.start - b.start ||
+        (a.p.panel < b.p.panel ? -1 : a.p.panel > b.p.panel ? 1 : 0),
+    );
 }
 
 export interface TableBite {
   /** The part of the roll, as a roll of its own: x = 0 where it begins. */
   roll: NestedRoll;
+  /** Where it begins on the whole roll, mm: the cloth is fed on to there. */
+  from: number;
   words: string[];
 }
 
-/** Room at the start of a bite, mm: the knife needs cloth round it. */
-const LEAD = 10;
+/** An end this near the table's edge still lies on it, mm. */
+const HAIR = 1e-6;
 
 /**
- * The roll in lengths the table takes at once: each begins at the first piece not yet cut and holds every piece that ends within
- * it. A piece longer than the table gets a length of its own, the findings tell of it. [] where the table takes the whole roll.
+ * The roll in lengths the table takes at once, as the roll's record feeds it: each begins at the first piece not yet cut and holds
+ * every piece that ends within it. A piece longer than the table is fed on along its length, the findings tell of it. [] where the
+ * table takes the whole roll.
  */
 export function tableBites(facts: Facts, roll: NestedRoll): TableBite[] {
   const bite = roll.bite ?? Infinity;
@@ -60,8 +68,8 @@ export function tableBites(facts: Facts, roll: NestedRoll): TableBite[] {
   const parts: { from: number; cloth: PlacedCloth[] }[] = [];
   let left = placedInOrder(facts, roll);
   while (left.length > 0) {
-    const from = Math.max(0, left[0].start - LEAD);
-    const within = left.filter((c, i) => i === 0 || c.end <= from + bite);
+    const from = Math.min(...left.map((c) => c.start));
+    const within = left.filter((c) => c.start === from || c.end <= from + bite + HAIR);
     parts.push({ from, cloth: within });
     left = left.filter((c) => !within.includes(c));
   }
@@ -75,6 +83,6 @@ export function tableBites(facts: Facts, roll: NestedRoll): TableBite[] {
     const words = [
       `TABLE LENGTH ${k + 1} OF ${parts.length}: X = 0 IS ${Math.round(from)} MM FROM THE START OF THE ROLL. CUT IN THIS ORDER.`,
     ];
-    return { roll: { ...roll, used, placements, flaws }, words };
+    return { roll: { ...roll, used, placements, flaws }, from, words };
   });
 }

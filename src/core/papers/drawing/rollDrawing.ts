@@ -47,7 +47,7 @@ export function rollDrawing(facts: Facts, roll: NestedRoll, words: readonly stri
   }
   for (const { p, panel, piece } of placedInOrder(facts, roll)) {
     if (panel) addPanelInPlace(drawing, panel, p);
-    else if (piece) addPieceInPlace(drawing, piece, p);
+    else if (piece) addPieceInPlace(drawing, facts, piece, p);
   }
   const notes = [
     `ROLL ${roll.id}  FABRIC ${roll.fabric}  BATCH ${roll.batch ?? "not given"}  OUTER FACE UP`,
@@ -96,13 +96,18 @@ function addNotesInPlace(drawing: Drawing, facts: Facts, notes: readonly string[
   addSymbolInPlace(drawing, scaleBar(BAR), "bed", corner, 0);
   const unit = `UNITS MM: this bar is ${BAR} mm long. If it is not, do not cut.`;
   addNoteInPlace(drawing, unit, [x, y + 60], NOTE_HEIGHT);
-  const sheet = `${job.title}  ISSUE ${job.issue}  REVISION ${job.revision}  DATE ${job.date || "not given"}`;
-  [...notes, sheet].forEach((text, i) => {
+  const before = job.supersedes ? `  SUPERSEDES ${job.supersedes}` : "";
+  const given = (text: string) => text || "not given";
+  const sheet = [
+    `${job.title}  ISSUE ${job.issue}${before}  REVISION ${job.revision}  DATE ${given(job.date)}`,
+    `DRAWN BY ${given(job.drawnBy)}  CHECKED BY ${given(job.checkedBy)}`,
+  ];
+  [...notes, ...sheet].forEach((text, i) => {
     addNoteInPlace(drawing, text, [x, y + 60 + NOTE_PITCH * (i + 1)], NOTE_HEIGHT);
   });
   const stamp = stampOf(facts);
   if (stamp === "") return;
-  const at: Vec2 = [x, y + 60 + NOTE_PITCH * (notes.length + 2) + 40];
+  const at: Vec2 = [x, y + 60 + NOTE_PITCH * (notes.length + 1 + sheet.length) + 40];
   addNoteInPlace(drawing, stamp, at, STAMP_HEIGHT);
   const length = textLength(stamp, STAMP_HEIGHT);
   addBoxInPlace(drawing, [at[0] - 30, at[1] - 40], [at[0] + length + 30, at[1] + STAMP_HEIGHT + 40]);

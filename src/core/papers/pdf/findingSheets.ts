@@ -1,11 +1,13 @@
 // The findings sheets: what is open, what was checked against what, what the engineer must supply. The one paper that is
 // written whatever the plan came to.
-import type { Check, Finding, FindingLevel } from "../../problem.ts";
+import type { FindingLevel } from "../../problem.ts";
 import type { Facts } from "../../records/facts.ts";
+import { type LikeFindings, likeFindings } from "../tables/likeFindings.ts";
 import { cautionsOf } from "../words/cautions.ts";
 import { ENGINEER_SUPPLIES } from "../words/cautionTexts.ts";
 import { decimal } from "../words/decimal.ts";
-import { asMetric, closeBook, type FontFiles, openBook } from "./layout/book.ts";
+import { unitsInText } from "../words/paperUnits.ts";
+import { closeBook, type FontFiles, openBook } from "./layout/book.ts";
 import { flowCautionsInPlace } from "./layout/cautionBlock.ts";
 import { drawText, MM, PITCH, SMALL, textWidth } from "./layout/pen.ts";
 import {
@@ -62,16 +64,15 @@ export function valueText(value: number | string | null): string {
 
 /** The bytes of findings.pdf. */
 export async function writeFindingSheets(facts: Facts, fonts: FontFiles): Promise<Uint8Array> {
-  // Findings speak in the units the stations judge in.
-  const book = await openBook(asMetric(facts), fonts, "findings", "findings");
+  const book = await openBook(facts, fonts, "findings", "findings");
   const flow = openFlow(book, "Findings");
   flowSummaryInPlace(flow, facts);
   for (const level of ["stop", "caution"] as const) flowFindingsInPlace(flow, facts, level);
   flowHeadingInPlace(flow, "Before the cloth is handled, lifted or tensioned");
-  flowCautionsInPlace(flow, cautionsOf("findings"));
+  flowCautionsInPlace(flow, cautionsOf(facts, "findings"));
   flowEngineerInPlace(flow);
   flowFindingsInPlace(flow, facts, "note");
-  flowChecksInPlace(flow, facts.checks);
+  flowChecksInPlace(flow, facts);
   return closeBook(book);
 }
 
@@ -84,6 +85,11 @@ function flowSummaryInPlace(flow: Flow, facts: Facts): void {
   const held = facts.checks.filter((c) => c.holds).length;
   const line = `${count(of("stop"), "stop", "stops")}, ${count(of("caution"), "caution", "cautions")}, ${count(of("note"), "note", "notes")}; ${held} of ${count(facts.checks.length, "check", "checks")} held.`;
   flowTextInPlace(flow, line, { bold: true });
+  if (facts.job.units === "imperial") {
+    const words =
+      "The stations judge in metric, and so do the columns Value and Limit; in sentences the imperial value follows in brackets.";
+    flowTextInPlace(flow, words);
+  }
   const ran = (["form", "seams", "panels", "rolls", "rig"] as const).filter((k) => facts[k] !== undefined);
   const got = ran.length > 0 ? `Stations with a result: ${ran.join(", ")}.` : "No station came to a result.";
   flowTextInPlace(
@@ -98,14 +104,18 @@ function placesText(places: readonly string[]): string {
   return places.length > PLACES ? `${shown} and ${places.length - PLACES} more` : shown;
 }
 
-function findingRow(f: Finding): string[] {
+function findingRow(facts: Facts, { worst: f, all }: LikeFindings): string[] {
+  const told = all.length > 1 && all.some((g) => typeof g.value === "number" && g.value !== f.value);
+  // Of several alike every place is named, with its own value where they differ.
+  const places = all.flatMap((g) => [g.where].flat().map((w) => (told ? `${w} (${valueText(g.value)})` : w)));
+  const alike = all.length === 1 ? "" : told ? `The worst of ${all.length} alike: ` : `One of ${all.length} alike: `;
   return [
     `${f.code} (${f.station})`,
-    placesText([f.where].flat()),
-    f.text,
+    placesText(places),
+    `${alike}${unitsInText(facts.job, f.text)}`,
     valueText(f.value),
     valueText(f.limit),
-    f.remedy,
+    unitsInText(facts.job, f.remedy),
     f.basis,
   ];
 }
@@ -114,7 +124,12 @@ function flowFindingsInPlace(flow: Flow, facts: Facts, level: FindingLevel): voi
   const found = facts.findings.filter((f) => f.level === level);
   flowHeadingInPlace(flow, HEADINGS[level]);
   if (found.length === 0) flowTextInPlace(flow, "None.");
-  else flowTableInPlace(flow, FINDING_COLUMNS, found.map(findingRow));
+  else
+    flowTableInPlace(
+      flow,
+      FINDING_COLUMNS,
+      likeFindings(found).map((group) => findingRow(facts, group)),
+    );
 }
 
 function flowEngineerInPlace(flow: Flow): void {
@@ -146,7 +161,8 @@ function flowEngineerInPlace(flow: Flow): void {
   flowGapInPlace(flow, 3);
 }
 
-function flowChecksInPlace(flow: Flow, checks: readonly Check[]): void {
+function flowChecksInPlace(flow: Flow, facts: Facts): void {
+  const { checks } = facts;
   flowHeadingInPlace(flow, "Checks made");
   if (checks.length === 0) {
     flowTextInPlace(flow, "None.");
@@ -154,6 +170,12 @@ function flowChecksInPlace(flow: Flow, checks: readonly Check[]): void {
   }
   // What did not hold comes first; the order is otherwise the plan's.
   const ordered = [...checks.filter((c) => !c.holds), ...checks.filter((c) => c.holds)];
-  const rows = ordered.map((c) => [c.station, c.text, valueText(c.value), valueText(c.limit), c.holds ? "yes" : "NO"]);
+  const rows = ordered.map((c) => [
+    c.station,
+    unitsInText(facts.job, c.text),
+    valueText(c.value),
+    valueText(c.limit),
+    c.holds ? "yes" : "NO",
+  ]);
   flowTableInPlace(flow, CHECK_COLUMNS, rows);
 }

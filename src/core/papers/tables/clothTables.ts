@@ -1,7 +1,9 @@
 // The lists for office and store: rolls, panels with all other cloth, seams. Every row carries issue, revision and status,
 // because rows are copied out of lists and travel alone.
-import type { Facts, FactsPanel, FactsSeam } from "../../records/facts.ts";
+import type { Facts, FactsPanel, FactsPiece, FactsSeam } from "../../records/facts.ts";
+import { boxOf } from "../drawing/flatGeometry.ts";
 import { measurePanel } from "../drawing/panelMeasures.ts";
+import { decimal } from "../words/decimal.ts";
 import { stampOf } from "../words/stamp.ts";
 import { type Cell, numberCell, writeCsv } from "./csv.ts";
 
@@ -20,7 +22,7 @@ export function placesOf(facts: Facts) {
 /** rolls.csv */
 export function rollTable(facts: Facts): string {
   const header = ["roll", "fabric", "batch", "width_mm", "usable_width_mm", "length_mm", "used_mm", "pieces"];
-  header.push("gap_mm", "utilisation_percent", "lower_bound_mm", "flaws", ...TAIL);
+  header.push("gap_mm", "utilisation_percent", "lower_bound_mm", "remnant_mm", "table_feeds_at_mm", "flaws", ...TAIL);
   const rows = (facts.rolls ?? []).map((r): Cell[] => [
     r.id,
     r.fabric,
@@ -33,6 +35,8 @@ export function rollTable(facts: Facts): string {
     numberCell(r.gap, 1),
     numberCell(r.utilisation * 100, 2),
     numberCell(r.lowerBound, 1),
+    r.remnant === undefined ? null : numberCell(r.remnant, 0),
+    (r.feeds ?? []).map((f) => decimal(f, 0)).join("; "),
     numberCell(r.flaws.length, 0),
     ...tailOf(facts),
   ]);
@@ -41,14 +45,17 @@ export function rollTable(facts: Facts): string {
 
 /** panels.csv: panels first, then patches, strips, covers and test pieces. */
 export function panelTable(facts: Facts): string {
-  const header = ["panel", "kind", "for", "fabric", "batch", "roll", "x_mm", "y_mm", "rotation_deg"];
+  const header = ["panel", "kind", "for", "fabric", "batch", "roll", "x_mm", "y_mm", "rotation_deg", "cutting_order"];
   header.push("length_mm", "width_mm", "net_area_m2", "cut_area_m2", "mass_kg");
   header.push("compensation_warp_percent", "compensation_weft_percent", "stress_warp_mean_kN_per_m");
   header.push("stress_weft_mean_kN_per_m", "compressed_area_percent", ...TAIL);
   const places = placesOf(facts);
+  const order = (n: number | undefined): Cell => (n === undefined ? null : numberCell(n, 0));
   const lie = (id: string): Cell[] => {
     const p = places.get(id);
-    return p ? [p.roll, numberCell(p.x, 1), numberCell(p.y, 1), numberCell(p.rotation, 0)] : [null, null, null, null];
+    return p
+      ? [p.roll, numberCell(p.x, 1), numberCell(p.y, 1), numberCell(p.rotation, 0), order(p.order)]
+      : [null, null, null, null, null];
   };
   const panels = (facts.panels ?? []).map((p): Cell[] => {
     const mass = massOf(facts, p);
@@ -72,7 +79,11 @@ export function panelTable(facts: Facts): string {
       ...tailOf(facts),
     ];
   });
-  const empty = new Array<Cell>(header.length - 9 - TAIL.length).fill(null);
+  const empty = new Array<Cell>(header.length - 12 - TAIL.length).fill(null);
+  const size = (piece: FactsPiece): Cell[] => {
+    const { min, max } = boxOf(piece.cut);
+    return [numberCell(max[0] - min[0], 1), numberCell(max[1] - min[1], 1)];
+  };
   const pieces = (facts.pieces ?? []).map((p): Cell[] => [
     p.id,
     p.kind,
@@ -80,6 +91,7 @@ export function panelTable(facts: Facts): string {
     p.fabric,
     p.batch,
     ...lie(p.id),
+    ...size(p),
     ...empty,
     ...tailOf(facts),
   ]);

@@ -2,7 +2,8 @@
 // issue, revision and status, because rows are copied out of lists and travel alone.
 
 import type { Facts, FactsJob } from "../../records/facts.ts";
-import type { FactsAdjuster, FactsCable } from "../../records/rig.ts";
+import type { FactsAdjuster } from "../../records/rig.ts";
+import { edgeStart } from "../drawing/stripPlace.ts";
 import { stampOf } from "../words/stamp.ts";
 import { typeText } from "../words/typeText.ts";
 import { type Cell, numberCell, writeCsv } from "./csv.ts";
@@ -51,13 +52,6 @@ export function moveTable(rig: RigFacts): string {
   return writeCsv(header, rows);
 }
 
-/** The anchor or end a cable's stations are counted from. */
-export function cableStart(facts: Facts, cable: FactsCable): string {
-  const edge = facts.form?.edges.find((e) => e.id === cable.edge);
-  const anchor = facts.form?.anchors.find((a) => a.vertex === edge?.vertices[0]);
-  return anchor?.id ?? "its first end";
-}
-
 /** cables.csv: one row a cable; stations as "seam at metres", counted along the erected cable. */
 export function cableTable(facts: Facts): string {
   const header = ["cable", "edge", "type", "EA_kN", "force_kN", "erected_length_m", "slack_length_m", "cut_length_m"];
@@ -77,7 +71,7 @@ export function cableTable(facts: Facts): string {
     numberCell(c.markAt.temperature, 1),
     maybe(c.minBreakingForce, 1),
     maybe(c.utilisation === null ? null : 100 * c.utilisation, 1),
-    c.stations.length > 0 ? cableStart(facts, c) : null,
+    c.stations.length > 0 ? edgeStart(facts, c.edge) : null,
     c.stations.map((s) => `${s.for} at ${s.at.toFixed(4)}`).join("; "),
     ...tailOf(facts),
   ]);

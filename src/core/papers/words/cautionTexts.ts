@@ -2,7 +2,9 @@
 // stand in templates/cautions.json, the one source of page and papers, and are built in. All common practice, not taken from a
 // code. Signal words after ANSI Z535.6 (check-values 7.3), graded by the worst credible outcome; each caution says hazard,
 // consequence, how to avoid, in that order.
+
 import file from "../../../../templates/cautions.json";
+import type { Fabric } from "../../records/fabric.ts";
 
 /** Papers a caution can stand on. */
 export type CautionPaper = "schedule" | "cables" | "hardware" | "rolls" | "panels" | "seams" | "findings";
@@ -14,6 +16,8 @@ export interface Caution {
   hazard: string;
   consequence: string;
   avoid: string;
+  /** Only where cloth of this material is used, or of one that is not known. */
+  cloth?: Fabric["material"];
 }
 
 /** All of them, the gravest first. */

@@ -18,12 +18,29 @@ export function clothMass(facts: Facts): number {
   return (facts.panels ?? []).reduce((s, p) => s + (facts.fabrics[p.fabric]?.mass ?? 0) * p.area.cut, 0);
 }
 
+/** Ids of the cloths in use: those of the panels, before there are panels all of them. */
+function clothsUsed(facts: Facts): string[] {
+  const used = [...new Set((facts.panels ?? []).map((p) => p.fabric))];
+  return used.length > 0 ? used : Object.keys(facts.fabrics);
+}
+
+/** Whether a caution concerns this job: one of a material stands where that is used, or where nobody said what the cloth is. */
+function concerns(facts: Facts, caution: Caution): boolean {
+  if (caution.cloth === undefined) return true;
+  return clothsUsed(facts).some((id) => (facts.fabrics[id]?.material ?? caution.cloth) === caution.cloth);
+}
+
 /** What the job adds to the hazard. */
-function computed(facts: Facts, id: string): string {
+function computed(facts: Facts, caution: Caution): string {
+  const { id } = caution;
   const { speed, mass } = paperUnits(facts.job);
+  if (caution.cloth !== undefined) {
+    const unknown = clothsUsed(facts).filter((cloth) => facts.fabrics[cloth]?.material === undefined);
+    if (unknown.length > 0)
+      return ` The job does not say what ${unknown.map(plainText).join(", ")} is made of: taken as ${caution.cloth}.`;
+  }
   if (id === "wind-lift") {
-    const used = [...new Set((facts.panels ?? []).map((p) => p.fabric))];
-    const speeds = used.flatMap((fabric) => {
+    const speeds = clothsUsed(facts).flatMap((fabric) => {
       const weight = facts.fabrics[fabric]?.mass;
       return weight === undefined ? [] : [`${plainText(fabric)} at about ${speed.whole(liftOffSpeed(weight))}`];
     });
@@ -36,15 +53,15 @@ function computed(facts: Facts, id: string): string {
 
 /** Hazard, consequence, how to avoid, as one paragraph. */
 export function cautionText(facts: Facts, caution: Caution): string {
-  return `${caution.hazard}${computed(facts, caution.id)} ${caution.consequence} ${caution.avoid}`;
+  return `${caution.hazard}${computed(facts, caution)} ${caution.consequence} ${caution.avoid}`;
 }
 
-/** Cautions of a paper, the gravest first. */
-export function cautionsOf(paper: CautionPaper): Caution[] {
-  return CAUTIONS.filter((c) => c.papers.includes(paper));
+/** Cautions of a paper that concern this job, the gravest first. */
+export function cautionsOf(facts: Facts, paper: CautionPaper): Caution[] {
+  return CAUTIONS.filter((c) => c.papers.includes(paper) && concerns(facts, c));
 }
 
-/** Cautions by name, in the order asked. */
-export function cautionsNamed(...ids: string[]): Caution[] {
-  return ids.flatMap((id) => CAUTIONS.filter((c) => c.id === id));
+/** Cautions by name that concern this job, in the order asked. */
+export function cautionsNamed(facts: Facts, ...ids: string[]): Caution[] {
+  return ids.flatMap((id) => CAUTIONS.filter((c) => c.id === id && concerns(facts, c)));
 }

@@ -23,6 +23,8 @@ export interface PaperUnits {
   flat: Measure;
   /** mm in: the way a screw makes. */
   travel: Measure;
+  /** mm in: what two lengths differ by, finer than a tape shows. */
+  fine: Measure;
   /** kN in. */
   force: Measure;
   /** kN in: stiffness. */
@@ -84,6 +86,7 @@ const METRIC: PaperUnits = {
   pins: measure("mm", (value) => decimal(Math.round(value * 2000) / 2, 1)),
   flat: plain("mm", 0),
   travel: plain("mm", 1),
+  fine: plain("mm", 2),
   force: plain("kN", 1),
   stiffness: plain("kN", 0),
   lineForce: plain("kN/m", 2),
@@ -100,6 +103,7 @@ const IMPERIAL: PaperUnits = {
   pins: tape(1000),
   flat: tape(1),
   travel: plain("in", 2, 1 / INCH),
+  fine: plain("in", 3, 1 / INCH),
   force: plain("kip", 2, 1 / KIP),
   stiffness: plain("kip", 0, 1 / KIP),
   lineForce: plain("lbf/ft", 0, (1000 / KIP) * 0.3048),
@@ -109,6 +113,49 @@ const IMPERIAL: PaperUnits = {
   temperature: measure("°F", (value) => decimal(value * 1.8 + 32, 0)),
   speed: plain("mph", 0, 1 / MILE_PER_HOUR),
 };
+
+/** What a unit in running text is turned into, with its factor; temperatures have their own rule. */
+const IN_TEXT: Readonly<Record<string, readonly [string, number]>> = {
+  mm: ["in", 1 / INCH],
+  m: ["ft", 1 / 0.3048],
+  m2: ["ft²", 1 / SQUARE_FOOT],
+  "m²": ["ft²", 1 / SQUARE_FOOT],
+  "m/s": ["mph", 1 / MILE_PER_HOUR],
+  kN: ["kip", 1 / KIP],
+  "kN/m": ["lbf/ft", (1000 / KIP) * 0.3048],
+  kg: ["lb", 1 / POUND],
+  "kg/m2": ["lb/ft²", SQUARE_FOOT / POUND],
+};
+const NUMBER = String.raw`[-−]?\d+(?:\.\d+)?`;
+const QUANTITY = new RegExp(
+  String.raw`(?<![\w.])(${NUMBER})(?:( to | and | or | x | × |/)(${NUMBER}))?[ \u00a0](mm|m2|m²|m/s|m|kN/m|kN|kg/m2|kg|°C|degC)(?![\w²/·])`,
+  "g",
+);
+
+function inText(number: string, unit: string): string {
+  const value = Number(number.replace("−", "-"));
+  if (unit === "°C" || unit === "degC") return decimal(value * 1.8 + 32, 0);
+  const converted = value * IN_TEXT[unit][1];
+  // As many figures as were given, three at least.
+  const figures = Math.max(3, number.replace(/^[-−0.]+|\./g, "").length);
+  return String(Number(converted.toPrecision(Math.min(figures, 12))));
+}
+
+/**
+ * A sentence of a station as it stands on the sheets of the job. Stations judge in metric: an imperial sheet keeps what they said and
+ * adds the imperial value of every quantity behind it, "3.2 mm [0.126 in]".
+ */
+export function unitsInText(job: FactsJob, text: string): string {
+  if (job.units !== "imperial") return text;
+  return text.replace(
+    QUANTITY,
+    (whole, first: string, between: string | undefined, second: string | undefined, unit: string) => {
+      const name = unit === "°C" || unit === "degC" ? "°F" : IN_TEXT[unit][0];
+      const rest = second === undefined ? "" : `${between}${inText(second, unit)}`;
+      return `${whole} [${inText(first, unit)}${rest}${BOUND}${name}]`;
+    },
+  );
+}
 
 /** The measures of a job's sheets. */
 export function paperUnits(job: FactsJob): PaperUnits {

@@ -1,37 +1,33 @@
 // The whole roof on one sheet with the names of panels, seams, edges and corners, then the seam schedule and the other cloth.
-import type { Facts, Vec2 } from "../../../records/facts.ts";
-import { insidePoint, pointAlong } from "../../drawing/flatGeometry.ts";
+import type { Facts, FactsJob, Vec2 } from "../../../records/facts.ts";
+import { boxOf, insidePoint, pointAlong } from "../../drawing/flatGeometry.ts";
+import { stripPlace } from "../../drawing/stripPlace.ts";
 import { placesOf, seamSide } from "../../tables/clothTables.ts";
 import { decimal } from "../../words/decimal.ts";
+import { paperUnits } from "../../words/paperUnits.ts";
 import { addSheet, type Book, drawParagraph, type Sheet } from "../layout/book.ts";
 import { type LabelField, setNameInPlace } from "../layout/labelField.ts";
 import { type BoxArea, drawBox, drawRun } from "../layout/pen.ts";
 import { fitRoof, type RoofView } from "../layout/roofView.ts";
 import { type Column, flowTableInPlace, flowTextInPlace, openFlow } from "../layout/table.ts";
 
-const SEAM_COLUMNS: readonly Column[] = [
-  { head: ["Seam"], width: 20 },
-  { head: ["Weld"], width: 20 },
-  { head: ["Panel on", "top"], width: 28, bold: true },
-  { head: ["Panel", "below"], width: 28 },
-  { head: ["On the", "form, m"], width: 20, align: "end" },
-  { head: ["Flat,", "on top,", "mm"], width: 24, align: "end" },
-  { head: ["Flat,", "below,", "mm"], width: 24, align: "end" },
-  { head: ["Differ-", "ence,", "mm"], width: 24, align: "end" },
-  { head: ["Allowance,", "top / below,", "mm"], width: 34, align: "end" },
-  { head: ["Cable"], width: 18 },
-  { head: ["Welded by,", "date"], width: 36 },
-];
-
-const PIECE_COLUMNS: readonly Column[] = [
-  { head: ["Piece"], width: 30 },
-  { head: ["Kind"], width: 25 },
-  { head: ["For"], width: 30 },
-  { head: ["Fabric"], width: 30 },
-  { head: ["Batch"], width: 25 },
-  { head: ["Roll"], width: 30 },
-  { head: ["Done by, date"], width: 50 },
-];
+function seamColumns(job: FactsJob): readonly Column[] {
+  const { span, flat, fine } = paperUnits(job);
+  const wide = job.units === "imperial" ? 29 : 0;
+  return [
+    { head: ["Seam"], width: 20 },
+    { head: ["Weld"], width: 20 },
+    { head: ["Panel on", "top"], width: 25, bold: true },
+    { head: ["Panel", "below"], width: 25 },
+    { head: ["On the", `form, ${span.unit}`], width: wide || 20, align: "end" },
+    { head: ["Flat,", "on top,", flat.unit], width: wide || 24, align: "end" },
+    { head: ["Flat,", "below,", flat.unit], width: wide || 24, align: "end" },
+    { head: ["Differ-", "ence,", fine.unit], width: 20, align: "end" },
+    { head: ["Allowance,", "top / below,", flat.unit], width: 38, align: "end" },
+    { head: ["Cable"], width: 18 },
+    { head: ["Welded by,", "date"], width: 30 },
+  ];
+}
 
 /** Adds the map, the seam schedule and the list of other cloth to the book. */
 export function drawAssemblyMap(book: Book, view: RoofView): void {
@@ -93,31 +89,38 @@ function outward(p: Vec2, middle: Vec2, reach: number): Vec2 {
 }
 
 function seamRows(facts: Facts): string[][] {
+  const { span, flat, fine } = paperUnits(facts.job);
   return (facts.seams ?? []).map((s) => {
     const sides = [seamSide(facts, s, 0), seamSide(facts, s, 1)];
     const [top, below] = sides[0].panel === s.upper ? sides : [sides[1], sides[0]];
-    const mm = (v: number | null, digits: number) => (v === null ? "" : decimal(v, digits));
+    const length = (v: number | null) => (v === null ? "" : flatTenths(facts.job, v));
+    const short = (v: number | null) => (v === null ? "" : flat.of(v));
     return [
       s.id,
       s.weld,
       top.panel,
       below.panel,
-      decimal(s.length, 3),
-      mm(top.flat, 1),
-      mm(below.flat, 1),
-      top.flat === null || below.flat === null ? "" : decimal(Math.abs(top.flat - below.flat), 2),
-      `${mm(top.allowance, 0)} / ${mm(below.allowance, 0)}`,
+      span.of(s.length),
+      length(top.flat),
+      length(below.flat),
+      top.flat === null || below.flat === null ? "" : fine.of(Math.abs(top.flat - below.flat)),
+      `${short(top.allowance)} / ${short(below.allowance)}`,
       s.cable ?? "",
       "",
     ];
   });
 }
 
+/** Two sides that are to be equal are told to the tenth of a millimetre. */
+function flatTenths(job: FactsJob, mm: number): string {
+  return job.units === "imperial" ? paperUnits(job).flat.of(mm) : decimal(mm, 1);
+}
+
 function drawSchedule(book: Book): void {
   const rows = seamRows(book.facts);
   if (rows.length === 0) return;
   const flow = openFlow(book, "Seam schedule");
-  flowTableInPlace(flow, SEAM_COLUMNS, rows);
+  flowTableInPlace(flow, seamColumns(book.facts.job), rows);
   flow.y -= 2;
   const words =
     "Seams with the same weld are one continuous weld. Join match mark to match mark, the same number on both panels; never stretch one side to meet the other. The lengths are along the net line.";
@@ -125,17 +128,34 @@ function drawSchedule(book: Book): void {
 }
 
 function drawPieces(book: Book): void {
-  const pieces = book.facts.pieces ?? [];
+  const { facts } = book;
+  const pieces = facts.pieces ?? [];
   if (pieces.length === 0) return;
-  const places = placesOf(book.facts);
-  const rows = pieces.map((p) => [
-    p.id,
-    p.kind,
-    p.for,
-    p.fabric,
-    p.batch ?? "not given",
-    places.get(p.id)?.roll ?? "none",
-    "",
-  ]);
-  flowTableInPlace(openFlow(book, "Patches, strips, covers and test pieces"), PIECE_COLUMNS, rows);
+  const { flat } = paperUnits(facts.job);
+  const columns: readonly Column[] = [
+    { head: ["Piece"], width: 34 },
+    { head: ["Kind, for"], width: 34 },
+    { head: ["Fabric, batch"], width: 32 },
+    { head: ["Roll"], width: 20 },
+    { head: ["Length,", flat.unit], width: 25, align: "end" },
+    { head: ["Width,", flat.unit], width: 23, align: "end" },
+    { head: ["Lies along its edge,", flat.unit], width: 58 },
+    { head: ["Done by, date"], width: 34 },
+  ];
+  const places = placesOf(facts);
+  const rows = pieces.map((p) => {
+    const { min, max } = boxOf(p.cut);
+    const strip = stripPlace(facts, p);
+    return [
+      p.id,
+      `${p.kind}, ${p.for}`,
+      `${p.fabric}, ${p.batch ?? "not given"}`,
+      places.get(p.id)?.roll ?? "none",
+      flat.of(max[0] - min[0]),
+      flat.of(max[1] - min[1]),
+      strip ? `${flat.of(strip.from)} to ${flat.of(strip.to)} from ${strip.start}` : "",
+      "",
+    ];
+  });
+  flowTableInPlace(openFlow(book, "Patches, strips, covers and test pieces"), columns, rows);
 }

@@ -85,5 +85,5 @@ export function flowAssemblyOrder(book: Book): void {
     `Outer face inward. Zigzag across the strips from both long sides to the middle, then from both ends, each fold padded; every corner with its name on a tag that shows.${order} Draw on the bundle which way it unfolds and which corner of the site it is laid to.`,
   );
   flowGapInPlace(flow, 3);
-  flowCautionsInPlace(flow, cautionsNamed("suspended-load", "heavy-pack", "glass-folds"));
+  flowCautionsInPlace(flow, cautionsNamed(facts, "suspended-load", "heavy-pack", "glass-folds"));
 }

@@ -1,11 +1,12 @@
 // Panel cards: one panel a card, everything a welder needs to check it before it is joined, on paper that is filled in by hand.
 // Then the assembly map and the seam schedule. Numbers come from the facts; nothing is judged here.
-import type { Facts, FactsPanel, Vec2 } from "../../../records/facts.ts";
+import type { Facts, FactsJob, FactsPanel, Vec2 } from "../../../records/facts.ts";
 import { boxOf } from "../../drawing/flatGeometry.ts";
 import { measurePanel, type PanelMeasures } from "../../drawing/panelMeasures.ts";
 import { massOf, placesOf } from "../../tables/clothTables.ts";
 import { decimal } from "../../words/decimal.ts";
-import { addSheet, asMetric, type Book, closeBook, type FontFiles, openBook, type Sheet } from "../layout/book.ts";
+import { paperUnits } from "../../words/paperUnits.ts";
+import { addSheet, type Book, closeBook, type FontFiles, openBook, type Sheet } from "../layout/book.ts";
 import {
   type BoxArea,
   drawBox,
@@ -20,34 +21,47 @@ import {
   wrapText,
 } from "../layout/pen.ts";
 import { fitRoof, type RoofView, viewRoof } from "../layout/roofView.ts";
-import { type Column, drawTable, tableHeight } from "../layout/table.ts";
+import { type Column, drawHalves, drawTable, tableHeight } from "../layout/table.ts";
 import { drawAssemblyMap } from "./assemblyMap.ts";
 import { flowAssemblyOrder } from "./assemblyOrder.ts";
-import { cardScale, drawPanelFigure, sideMeets } from "./panelFigure.ts";
+import { cardScale, drawPanelFigure, figureHeight, sideMeets } from "./panelFigure.ts";
 
 const FOOT = 27;
-/** The figure never gets less of the sheet's height than this, mm; more sides go to a second sheet. */
+/** The figure never gets less of the sheet's height than this, mm, if it needs it; more sides go to a second sheet. */
 const LEAST_FIGURE = 52;
 
-const SIDE_COLUMNS: readonly Column[] = [
-  { head: ["No."], width: 10 },
-  { head: ["Seam", "or edge"], width: 26 },
-  { head: ["Meets"], width: 27 },
-  { head: ["Net,", "mm"], width: 15, align: "end", bold: true },
-  { head: ["Edge,", "mm"], width: 15, align: "end" },
-  { head: ["Chord,", "mm"], width: 16.5, align: "end" },
-  { head: ["On the", "form, m"], width: 18, align: "end" },
-  { head: ["Allow-", "ance, mm"], width: 24, align: "end" },
-  { head: ["Lap"], width: 14 },
-  { head: ["Tape,", "mm"], width: 13.5 },
-];
+/** Feet, inches and sixteenths take more room than millimetres: the columns of lengths are wider then. */
+function sideColumns(job: FactsJob): readonly Column[] {
+  const { flat, span } = paperUnits(job);
+  const wide = isImperial(job) ? 25 : 0;
+  return [
+    { head: ["No."], width: 10 },
+    { head: ["Seam", "or edge"], width: 26 },
+    { head: ["Meets"], width: 27 },
+    { head: ["Net,", flat.unit], width: wide || 15, align: "end", bold: true },
+    { head: ["Edge,", flat.unit], width: wide || 15, align: "end" },
+    { head: ["Chord,", flat.unit], width: wide || 16.5, align: "end" },
+    { head: ["On the", `form, ${span.unit}`], width: wide || 18, align: "end" },
+    { head: ["Allow-", `ance, ${flat.unit}`], width: wide ? 30 : 24, align: "end" },
+    { head: ["Lap"], width: wide ? 17 : 14 },
+    { head: ["Tape,", flat.unit], width: wide || 13.5 },
+  ];
+}
 
-const CHECK_COLUMNS: readonly Column[] = [
-  { head: ["Diagonals,", "widths"], width: 33 },
-  { head: ["Net,", "mm"], width: 17, align: "end", bold: true },
-  { head: ["Cut,", "mm"], width: 17, align: "end" },
-  { head: ["Tape,", "mm"], width: 22 },
-];
+function checkColumns(job: FactsJob): readonly Column[] {
+  const { flat } = paperUnits(job);
+  const wide = isImperial(job) ? 25 : 0;
+  return [
+    { head: ["Diagonals,", "widths"], width: wide ? 41 : 33 },
+    { head: ["Net,", flat.unit], width: wide || 17, align: "end", bold: true },
+    { head: ["Cut,", flat.unit], width: wide || 17, align: "end" },
+    { head: ["Tape,", flat.unit], width: 22 },
+  ];
+}
+
+function isImperial(job: FactsJob): boolean {
+  return job.units === "imperial";
+}
 
 /** The roof for the key plans, kept at the first card. */
 interface Roof {
@@ -57,8 +71,7 @@ interface Roof {
 
 /** The bytes of panel-cards.pdf. */
 export async function writePanelCards(facts: Facts, fonts: FontFiles): Promise<Uint8Array> {
-  // The welding floor measures what the table has cut, and that is in millimetres.
-  const book = await openBook(asMetric(facts), fonts, "panel cards", "cloth");
+  const book = await openBook(facts, fonts, "panel cards", "cloth");
   const view = viewRoof(facts);
   const roof: Roof = { view, plan: null };
   for (const panel of facts.panels ?? []) drawCard(book, roof, panel);
@@ -76,41 +89,45 @@ function lapOf(facts: Facts, panel: FactsPanel, index: number): string {
 }
 
 /** A set-back reads as such: cloth ends before the line. */
-function allowanceText(mm: number): string {
-  return mm < 0 ? `set back ${decimal(-mm, 0)}` : decimal(mm, 0);
+function allowanceText(job: FactsJob, mm: number): string {
+  const { flat } = paperUnits(job);
+  return mm < 0 ? `set back ${flat.of(-mm)}` : flat.of(mm);
 }
 
 /** A length that a tape can reach, or a dash. */
-function reach(length: number | null): string {
-  return length === null ? "–" : decimal(length, 0);
+function reach(job: FactsJob, length: number | null): string {
+  return length === null ? "–" : paperUnits(job).flat.of(length);
 }
 
 function sideRows(facts: Facts, panel: FactsPanel, measures: PanelMeasures): string[][] {
+  const { job } = facts;
+  const { flat, span } = paperUnits(job);
   return panel.sides.map((s, i) => [
     `${i + 1}`,
     s.id,
     sideMeets(facts, panel, i),
-    decimal(s.lengthFlat, 0),
-    reach(measures.sides[i].edge),
-    reach(measures.sides[i].chord),
-    decimal(s.lengthErected, 3),
-    allowanceText(s.allowance),
+    flat.of(s.lengthFlat),
+    reach(job, measures.sides[i].edge),
+    reach(job, measures.sides[i].chord),
+    span.of(s.lengthErected),
+    allowanceText(job, s.allowance),
     lapOf(facts, panel, i),
     "",
   ]);
 }
 
-function checkRows(measures: PanelMeasures): string[][] {
+function checkRows(job: FactsJob, measures: PanelMeasures): string[][] {
+  const { flat } = paperUnits(job);
   const diagonals = measures.diagonals.map((d) => [
     `${d.from.name} to ${d.to.name}`,
-    decimal(d.length, 0),
-    reach(d.cutLength),
+    flat.of(d.length),
+    reach(job, d.cutLength),
     "",
   ]);
   const widths = measures.widths.map((w) => [
-    `${w.name} at ${decimal(w.station, 0)}`,
-    decimal(w.netWidth, 0),
-    decimal(w.cutWidth, 0),
+    `${w.name} at ${flat.of(w.station)}`,
+    flat.of(w.netWidth),
+    flat.of(w.cutWidth),
     "",
   ]);
   return [...diagonals, ...widths, ["Tolerance ±", "", "", ""]];
@@ -118,23 +135,24 @@ function checkRows(measures: PanelMeasures): string[][] {
 
 /** Words above the figure, each a paragraph. */
 function headTexts(facts: Facts, panel: FactsPanel, measures: PanelMeasures, scale: number): string[] {
+  const { flat, span, area, mass: weights } = paperUnits(facts.job);
   const place = placesOf(facts).get(panel.id);
   const mass = massOf(facts, panel);
   const cut = boxOf(panel.cut);
   const [start, end] = place?.rotation === 180 ? [-cut.max[0], -cut.min[0]] : [cut.min[0], cut.max[0]];
   const lie = place
-    ? `roll ${place.roll} from ${decimal(place.x + start, 0)} to ${decimal(place.x + end, 0)} mm, turned ${place.rotation}°`
+    ? `roll ${place.roll} from ${flat.of(place.x + start)} to ${flat.whole(place.x + end)}, turned ${place.rotation}°`
     : "not yet on a roll";
   const percent = (e: number) => `${decimal(100 * e, 2)} %`;
   const back = panel.decompensated.map(
-    (d) => `along side ${d.side + 1} (${panel.sides[d.side]?.id ?? "?"}), fading over ${decimal(d.fade, 2)} m`,
+    (d) => `along side ${d.side + 1} (${panel.sides[d.side]?.id ?? "?"}), fading over ${span.whole(d.fade)}`,
   );
   const found = facts.findings.filter((f) => [f.where].flat().includes(panel.id));
   const codes = [...new Set(found.map((f) => `${f.code} (${f.level})`))];
-  const weight = mass === null ? "" : `, ${decimal(mass, 1)} kg`;
-  const stations = measures.start === "" ? "" : ` Widths: mm from ${measures.start}.`;
+  const weight = mass === null ? "" : `, ${weights.whole(mass)}`;
+  const stations = measures.start === "" ? "" : ` Widths: from ${measures.start}.`;
   return [
-    `Scale 1:${scale}, outer face up, warp along the arrow. Fabric ${panel.fabric}, batch ${panel.batch ?? "not given"}, ${lie}. Cut area ${decimal(panel.area.cut, 2)} m²${weight}.`,
+    `Scale 1:${scale}, outer face up, warp along the arrow. Fabric ${panel.fabric}, batch ${panel.batch ?? "not given"}, ${lie}. Cut area ${area.whole(panel.area.cut)}${weight}.`,
     `Thick: cut. Dashed: net. Ticks: match marks. Side n begins at Cn. Edge, chord: along and straight between ringed cut corners.${stations}`,
     `The flat is compensated (warp ${percent(panel.compensation.warp)}, weft ${percent(panel.compensation.weft)}${back.length > 0 ? `; taken back ${back.join("; ")}` : ""}): do not compensate again.`,
     ...(codes.length > 0 ? [`See the findings sheets for this panel: ${codes.join(", ")}.`] : []),
@@ -152,19 +170,25 @@ function drawCard(book: Book, roof: Roof, panel: FactsPanel): void {
   const { facts } = book;
   const sheet = addSheet(book, `Panel card ${panel.id}`);
   const measures = measurePanel(panel);
-  const rows = sideRows(facts, panel, measures);
-  const checks = checkRows(measures);
+  const sides: CardTable = { columns: sideColumns(facts.job), rows: sideRows(facts, panel, measures) };
+  const checks: CardTable = { columns: checkColumns(facts.job), rows: checkRows(facts.job, measures) };
+  // Feet and inches find no room beside each other: the checks then stand in two halves below the sides.
+  const below = isImperial(facts.job);
   const width = sheet.right - sheet.left;
   let lines = headLines(book, headTexts(facts, panel, measures, 1000), width);
   const headBottom = sheet.top - lines.length * PITCH - 1;
+  const checkHeight = tableHeight(checks.columns, below ? Math.ceil(checks.rows.length / 2) : checks.rows.length);
   const figureOf = (count: number): BoxArea => {
-    const tables = Math.max(tableHeight(SIDE_COLUMNS, count), tableHeight(CHECK_COLUMNS, checks.length));
+    const sideHeight = tableHeight(sides.columns, count);
+    const tables = below ? sideHeight + 2 + checkHeight : Math.max(sideHeight, checkHeight);
     const y = sheet.bottom + FOOT + tables + 2;
     return { x: sheet.left, y, width, height: Math.max(headBottom - y, LEAST_FIGURE / 2) };
   };
-  let shown = rows.length;
+  // All sides on one card are worth a smaller figure.
+  const least = Math.min(below ? 0.7 * LEAST_FIGURE : LEAST_FIGURE, figureHeight(panel, width));
+  let shown = sides.rows.length;
   // The table beside it is as high anyway: fewer rows than its rows would gain nothing.
-  while (shown > checks.length && figureOf(shown).height < LEAST_FIGURE) shown--;
+  while (shown > (below ? 1 : checks.rows.length) && figureOf(shown).height < least) shown--;
   const box = figureOf(shown);
   const scale = cardScale(panel, box);
   // The words with the true scale are never longer than with the widest number.
@@ -174,21 +198,31 @@ function drawCard(book: Book, roof: Roof, panel: FactsPanel): void {
   });
   drawPanelFigure({ book, sheet, panel, measures, box, scale });
   const top = box.y - 2;
-  drawTable(book, sheet, SIDE_COLUMNS, rows.slice(0, shown), { left: sheet.left, width: width * 0.7, y: top });
-  drawTable(book, sheet, CHECK_COLUMNS, checks, { left: sheet.left + width * 0.71, width: width * 0.29, y: top });
+  const area = { left: sheet.left, width: below ? width : width * 0.7, y: top };
+  const under = drawTable(book, sheet, sides.columns, sides.rows.slice(0, shown), area) - 2;
+  if (below) drawHalves(book, sheet, checks.columns, checks.rows, under);
+  else {
+    const right = { left: sheet.left + width * 0.71, width: width * 0.29, y: top };
+    drawTable(book, sheet, checks.columns, checks.rows, right);
+  }
   drawFoot(book, sheet, roof, panel);
-  drawMoreSides(book, panel, rows.slice(shown));
+  drawMoreSides(book, panel, sides.columns, sides.rows.slice(shown));
+}
+
+interface CardTable {
+  columns: readonly Column[];
+  rows: string[][];
 }
 
 /** Sides that found no room on the card. */
-function drawMoreSides(book: Book, panel: FactsPanel, rows: string[][]): void {
+function drawMoreSides(book: Book, panel: FactsPanel, columns: readonly Column[], rows: string[][]): void {
   let left = rows;
   while (left.length > 0) {
     const sheet = addSheet(book, `Panel card ${panel.id}, more sides`);
     let fits = left.length;
-    while (tableHeight(SIDE_COLUMNS, fits) > sheet.top - sheet.bottom) fits--;
+    while (tableHeight(columns, fits) > sheet.top - sheet.bottom) fits--;
     const area = { left: sheet.left, width: sheet.right - sheet.left, y: sheet.top };
-    drawTable(book, sheet, SIDE_COLUMNS, left.slice(0, fits), area);
+    drawTable(book, sheet, columns, left.slice(0, fits), area);
     left = left.slice(fits);
   }
 }

@@ -25,6 +25,12 @@ export function cardScale(panel: FactsPanel, box: BoxArea): number {
   return SCALES.find((s) => s >= need) ?? Math.ceil(need / 1000) * 1000;
 }
 
+/** Height of the figure where the width of the sheet alone sets its scale, mm. */
+export function figureHeight(panel: FactsPanel, width: number): number {
+  const cut = boxOf(panel.cut);
+  return (cut.max[1] - cut.min[1]) / cardScale(panel, { x: 0, y: 0, width, height: Infinity }) + 2 * MARGIN_Y;
+}
+
 interface Figure {
   book: Book;
   sheet: Sheet;
@@ -77,7 +83,7 @@ export function drawPanelFigure({ book, sheet, panel, measures, box, scale }: Pa
   drawCorners(figure, measures);
   drawMatchMarks(figure);
   drawWidthNames(figure, measures);
-  drawNameBlock(figure);
+  drawNameBlock(figure, measures);
 }
 
 /** Sets a label on a white ground at the first free middle; tells whether it found one. */
@@ -85,14 +91,16 @@ function setLabel(
   figure: Figure,
   text: string,
   middles: Iterable<Vec2>,
-  options: { bold?: boolean; size?: number } = {},
+  options: { bold?: boolean; size?: number; off?: Vec2[][] } = {},
 ): Vec2 | null {
   const font = options.bold ? figure.book.bold : figure.book.regular;
   const size = options.size ?? SMALL;
   const shown = fitText(text, font, size, LONGEST_LABEL);
   const height = (LABEL_HEIGHT * size) / SMALL;
   const width = textWidth(shown, font, size);
-  const at = takePlaceInPlace(figure.field, { width, height }, middles);
+  const { off = [] } = options;
+  const field = { ...figure.field, outlines: [...figure.field.outlines, ...off] };
+  const at = takePlaceInPlace(field, { width, height }, middles);
   if (!at) return null;
   const ground = { x: at[0] - width / 2 - 0.3, y: at[1] - height / 2, width: width + 0.6, height };
   drawBox(figure.sheet.page, ground, { width: 0, fill: 1, outline: false });
@@ -101,15 +109,20 @@ function setLabel(
 }
 
 /** Name, face and warp arrow where the cloth is roomiest, off the middle where the width line runs. */
-function drawNameBlock(figure: Figure): void {
+function drawNameBlock(figure: Figure, measures: PanelMeasures): void {
   const { panel, place, sheet, book } = figure;
   const box = boxOf(panel.net);
   const { at } = insidePoint(panel.cut);
   const middleY = at[1];
-  const spots = [0.375, 0.625, 0.5, 0.3, 0.7].map(
-    (f): Vec2 => place([box.min[0] + f * (box.max[0] - box.min[0]), middleY]),
+  const spots = [0.375, 0.625, 0.5, 0.3, 0.7, 0.45, 0.55, 0.2, 0.8, 0.12, 0.88].flatMap((f) =>
+    [0, 0.1, -0.1, 0.2, -0.2].map(
+      (g): Vec2 => place([box.min[0] + f * (box.max[0] - box.min[0]), middleY + g * (box.max[1] - box.min[1])]),
+    ),
   );
-  setLabel(figure, panel.id, [...spots, place(at)], { bold: true, size: 14 });
+  // Off the width lines where there is such a place: letters on a dashed line are hard to tell.
+  const off = measures.widths.flatMap((w) => (w.net ? [w.net.map(place)] : []));
+  const style = { bold: true, size: 14 };
+  if (!setLabel(figure, panel.id, spots, { ...style, off })) setLabel(figure, panel.id, [...spots, place(at)], style);
   const arrow = { width: 24, height: 5.5 };
   const beside = [0.625, 0.375, 0.55, 0.7, 0.3, 0.2, 0.8].flatMap((f) =>
     [0, 0.2, -0.2].map(

@@ -3,7 +3,7 @@
 import type { Facts, Vec2 } from "../../../records/facts.ts";
 import type { NestedRoll } from "../../../records/roll.ts";
 import { insidePoint } from "../../drawing/flatGeometry.ts";
-import { type PlacedCloth, placedInOrder, tableBites } from "../../drawing/placedCloth.ts";
+import { type PlacedCloth, placedInOrder, type TableBite, tableBites } from "../../drawing/placedCloth.ts";
 import { cautionsOf } from "../../words/cautions.ts";
 import { decimal } from "../../words/decimal.ts";
 import { paperUnits } from "../../words/paperUnits.ts";
@@ -44,16 +44,20 @@ function drawRoll(book: Book, roll: NestedRoll): void {
   const sheet = addSheet(book, `Roll ${roll.id}`);
   const cloth = placedInOrder(facts, roll);
   const bites = tableBites(facts, roll);
+  const feeds = (roll.feeds ?? bites.map((b) => b.from)).map((x) => flat.of(x)).join(", ");
   const table =
-    bites.length > 0 ? ` Cut in ${bites.length} table lengths of ${flat.whole(roll.bite ?? 0)} at most.` : "";
+    bites.length > 0
+      ? ` Cut in ${bites.length} table lengths of ${flat.whole(roll.bite ?? 0)} at most: fed on until the table begins at ${feeds} ${flat.unit} from the start of the roll.`
+      : "";
+  const left = roll.remnant === undefined ? "" : ` Left on the roll: ${flat.whole(roll.remnant)}.`;
   const words = [
-    `Fabric ${roll.fabric}, batch ${roll.batch ?? "not given"}. Width ${flat.whole(roll.width)}, usable ${flat.whole(roll.usableWidth)}, used ${flat.whole(roll.used)} of ${flat.whole(roll.length)}: ${decimal(100 * roll.utilisation, 0)} % of the cloth used. ${cloth.length} pieces, at least ${flat.whole(roll.gap)} apart.${table}`,
+    `Fabric ${roll.fabric}, batch ${roll.batch ?? "not given"}. Width ${flat.whole(roll.width)}, usable ${flat.whole(roll.usableWidth)}, used ${flat.whole(roll.used)} of ${flat.whole(roll.length)}: ${decimal(100 * roll.utilisation, 0)} % of the cloth used.${left} ${cloth.length} pieces, at least ${flat.whole(roll.gap)} apart.${table}`,
     "OUTER FACE UP, warp along the roll, start of the roll at the left. Numbers in the order of cutting. Crossed: flaw. The cut file rules, this figure does not: no measure is taken from it.",
   ];
   let y = sheet.top;
   for (const text of words) y = drawParagraph(book, sheet, text, y);
   // A short list of pieces stands below the figure, a long one on sheets of its own.
-  const list = pieceTable(book, cloth);
+  const list = pieceTable(book, cloth, bites);
   const height = tableHeight(list.columns, list.rows.length, TABLE);
   const below = height < BELOW * (y - sheet.bottom) ? height + 3 : 0;
   const width = sheet.right - sheet.left;
@@ -114,12 +118,17 @@ function drawRows(book: Book, sheet: Sheet, roll: NestedRoll, cloth: readonly Pl
   }
 }
 
-function pieceTable(book: Book, cloth: readonly PlacedCloth[]): { columns: readonly Column[]; rows: string[][] } {
+function pieceTable(
+  book: Book,
+  cloth: readonly PlacedCloth[],
+  bites: readonly TableBite[],
+): { columns: readonly Column[]; rows: string[][] } {
   const { flat, area } = paperUnits(book.facts.job);
   // Feet, inches and sixteenths take more than millimetres; what is left goes to the words.
   const place = book.facts.job.units === "imperial" ? 35 : 26;
   const columns: readonly Column[] = [
     { head: ["No."], width: 14, bold: true },
+    ...(bites.length > 0 ? [{ head: ["Table", "length"], width: 17 }] : []),
     { head: ["Piece"], width: 46, bold: true },
     { head: ["What"], width: 100 - 2 * place },
     { head: ["From,", flat.unit], width: place, align: "end" },
@@ -130,8 +139,10 @@ function pieceTable(book: Book, cloth: readonly PlacedCloth[]): { columns: reado
     { head: ["Marked"], width: 22 },
     { head: ["By, date"], width: 30 },
   ];
+  const biteOf = (id: string) => bites.findIndex((b) => b.roll.placements.some((p) => p.panel === id)) + 1;
   const rows = cloth.map((c, n) => [
     `${n + 1}`,
+    ...(bites.length > 0 ? [`${biteOf(c.p.panel)}`] : []),
     c.p.panel,
     c.panel ? "panel" : `${c.piece?.kind ?? ""} for ${c.piece?.for ?? ""}`,
     flat.of(c.start),
@@ -165,6 +176,7 @@ function flowClothList(book: Book): void {
     { head: ["Width,", flat.unit], width: 33, align: "end" },
     { head: ["Used,", span.unit], width: 36, align: "end", bold: true },
     { head: ["On the roll,", span.unit], width: 36, align: "end" },
+    { head: ["Left over,", span.unit], width: 34, align: "end" },
     { head: ["Pieces"], width: 22, align: "end" },
     { head: ["Cloth", "used"], width: 20, align: "end" },
     { head: ["Given out"], width: 36 },
@@ -176,6 +188,7 @@ function flowClothList(book: Book): void {
     flat.of(r.width),
     span.of(r.used / 1000),
     span.of(r.length / 1000),
+    span.of((r.remnant ?? Math.max(0, r.length - r.used)) / 1000),
     `${r.placements.length}`,
     `${decimal(100 * r.utilisation, 0)} %`,
     "",
@@ -192,5 +205,5 @@ function flowClothList(book: Book): void {
     flowTextInPlace(flow, words, { size: TABLE });
   }
   flowGapInPlace(flow, 4);
-  flowCautionsInPlace(flow, cautionsOf("rolls"));
+  flowCautionsInPlace(flow, cautionsOf(facts, "rolls"));
 }

@@ -50,11 +50,6 @@ const ROW = 10.5;
 const STAMP = 12.5;
 const HEAD = STAMP + 1.5;
 
-/** The facts with metric sheets, for papers whose numbers are not converted. */
-export function asMetric(facts: Facts): Facts {
-  return { ...facts, job: { ...facts.job, units: "metric" } };
-}
-
 /** An empty book in the given faces. */
 export async function openBook(facts: Facts, fonts: FontFiles, title: string, kind: PaperKind): Promise<Book> {
   const doc = await PDFDocument.create({ updateMetadata: false });

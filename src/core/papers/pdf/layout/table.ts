@@ -212,7 +212,24 @@ export function flowTableInPlace(
   }
 }
 
-/** A table of one-line rows in two halves side by side, read down the left half first; over sheets where it is long. */
+/** A table of one-line rows in two halves side by side over the whole width, read down the left half first; returns the y below. */
+export function drawHalves(
+  book: Book,
+  sheet: Sheet,
+  columns: readonly Column[],
+  rows: readonly string[][],
+  y: number,
+  size = SMALL,
+): number {
+  const half = Math.ceil(rows.length / 2);
+  const width = 0.49 * (sheet.right - sheet.left);
+  const area = { left: sheet.left, width, y, size };
+  drawTable(book, sheet, columns, rows.slice(0, half), area);
+  if (rows.length > half) drawTable(book, sheet, columns, rows.slice(half), { ...area, left: sheet.right - width });
+  return y - tableHeight(columns, half, size);
+}
+
+/** Such halves in the flow, over sheets where they are long. */
 export function flowHalvesInPlace(
   flow: Flow,
   columns: readonly Column[],
@@ -226,13 +243,7 @@ export function flowHalvesInPlace(
     needInPlace(flow, head + Math.min(3, left.length) * row);
     const fits = Math.floor((flow.y - flow.sheet.bottom - head) / row);
     const now = left.slice(0, 2 * fits);
-    const half = Math.ceil(now.length / 2);
-    const width = 0.49 * (flow.sheet.right - flow.sheet.left);
-    const area = { left: flow.sheet.left, width, y: flow.y, size };
-    drawTable(flow.book, flow.sheet, columns, now.slice(0, half), area);
-    const right = { ...area, left: flow.sheet.right - width };
-    if (now.length > half) drawTable(flow.book, flow.sheet, columns, now.slice(half), right);
-    flow.y -= head + half * row;
+    flow.y = drawHalves(flow.book, flow.sheet, columns, now, flow.y, size);
     left = left.slice(2 * fits);
   }
 }

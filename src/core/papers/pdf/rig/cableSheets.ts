@@ -2,8 +2,9 @@
 // deducted, because the job does not know them.
 
 import type { Facts } from "../../../records/facts.ts";
+import { edgeStart } from "../../drawing/stripPlace.ts";
 import { limitOf, type RigFacts, rigFacts } from "../../tables/rigReadings.ts";
-import { cableStart, travelOf } from "../../tables/rigTables.ts";
+import { travelOf } from "../../tables/rigTables.ts";
 import { cautionsOf } from "../../words/cautions.ts";
 import { decimal } from "../../words/decimal.ts";
 import { paperUnits } from "../../words/paperUnits.ts";
@@ -83,7 +84,7 @@ function flowCables(book: Book): void {
     "Used: force at prestress over the breaking force given. It is no design: the engineer sizes cables and fittings from design forces.",
   );
   flowGapInPlace(flow, 3);
-  flowCautionsInPlace(flow, cautionsOf("cables"));
+  flowCautionsInPlace(flow, cautionsOf(facts, "cables"));
 }
 
 function flowStations(book: Book): void {
@@ -92,7 +93,7 @@ function flowStations(book: Book): void {
   const rows = (facts.cables ?? []).flatMap((c) =>
     c.stations.map((s) => [
       c.id,
-      cableStart(facts, c),
+      edgeStart(facts, c.edge),
       s.for,
       span.of(s.at),
       span.of((s.at * c.slackLength) / c.erectedLength),
@@ -176,5 +177,5 @@ function flowHardware(book: Book, rig: RigFacts): void {
     flowTableInPlace(flow, head, lines, { size: SIZE });
   }
   flowHeadingInPlace(flow, "Caution");
-  flowCautionsInPlace(flow, cautionsOf("hardware"));
+  flowCautionsInPlace(flow, cautionsOf(rig.facts, "hardware"));
 }

@@ -45,7 +45,7 @@ export function flowCover(book: Book, rig: RigFacts): void {
   flowTableInPlace(flow, LIMIT_COLUMNS, rows, { size: LARGE });
   flowTorqueInPlace(flow, rig);
   flowHeadingInPlace(flow, "Cautions from the first step to the last");
-  flowCautionsInPlace(flow, cautionsOf("schedule"), BODY);
+  flowCautionsInPlace(flow, cautionsOf(rig.facts, "schedule"), BODY);
 }
 
 function flowScopeInPlace(flow: Flow, rig: RigFacts): void {

@@ -132,7 +132,7 @@ export function flowStart(book: Book, rig: RigFacts): void {
   );
   const spent = rig.adjusters.filter((a) => travelOf(rig, a).leftIn < 0);
   flowGapInPlace(flow, 3);
-  flowCautionsInPlace(flow, cautionsNamed("wind-lift", "suspended-load", "thread-engagement"), BODY);
+  flowCautionsInPlace(flow, cautionsNamed(book.facts, "wind-lift", "suspended-load", "thread-engagement"), BODY);
   flowHeadingInPlace(flow, "Then hang the cloth");
   text(
     "Cables in their pockets, every corner held by a line until it is pinned to its adjuster. Nothing is turned before all corners are pinned and the area below is clear.",

@@ -36,7 +36,7 @@ export function flowStages(book: Book, rig: RigFacts): void {
       `Stage ${k + 1} of ${stages.length}: to ${percent(stage.fraction)} of the final forces`,
     );
     const own = k === 0 ? "reading-force" : "order-of-steps";
-    flowCautionsInPlace(flow, cautionsNamed("cable-release", own), SMALL);
+    flowCautionsInPlace(flow, cautionsNamed(book.facts, "cable-release", own), SMALL);
     flowMovesInPlace(flow, rig, stage);
     flowHoldInPlace(flow, rig, stage, k);
   });
