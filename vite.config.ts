@@ -12,6 +12,7 @@ export default defineConfig({
     rollupOptions: {
       input: {
         seamstay: "src/cli/seamstay.ts",
+        nestWorker: "src/cli/nestWorker.ts",
         bench: "test/bench/bench.ts",
         packWorker: "test/bench/packWorker.ts",
         "chunks/slideCase": "test/page/slideCase.ts",

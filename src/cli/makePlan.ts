@@ -5,6 +5,7 @@ import type { PlanInput } from "../core/plan/readPlanInput.ts";
 import type { Station, StationContext } from "../core/problem.ts";
 import type { Facts } from "../core/records/facts.ts";
 import type { Job, MeshSource } from "../core/records/job.ts";
+import { openNestThreads } from "./nestThreads.ts";
 import type { OutputFile } from "./outputFolder.ts";
 import { loadFonts } from "./packageFiles.ts";
 import { openProgress, type Terminal } from "./terminal.ts";
@@ -37,13 +38,21 @@ export async function makeFacts(
 ): Promise<Facts> {
   const doors = await around.openDoors();
   const progress = openProgress(around.terminal, options.quiet);
+  const threads = openNestThreads();
   try {
     const { until } = options;
     const { onStation, cancelled, elapsed } = capNest(input.job.nest.seconds, () => performance.now());
+    const { workShares } = threads;
     const settings = { revision: input.revision, onStation, ...(until === undefined ? {} : { until }) };
-    const facts = doors.runPlan(input.job, input.source, settings, { onProgress: progress.show, cancelled, elapsed });
+    const facts = doors.runPlan(input.job, input.source, settings, {
+      onProgress: progress.show,
+      cancelled,
+      elapsed,
+      workShares,
+    });
     return { ...facts, findings: [...input.findings, ...facts.findings] };
   } finally {
+    threads.close();
     progress.end();
   }
 }

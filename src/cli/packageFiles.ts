@@ -36,6 +36,11 @@ function findPackageRoot(): string {
 
 const root = findPackageRoot();
 
+/** Where a file of the package lies, by its path in it. */
+export function findPackageFile(path: string): string {
+  return join(root, path);
+}
+
 function readTemplateJson(name: string): unknown {
   const path = join(root, "templates", name);
   return JSON.parse(withFile(path, () => readFileSync(path, "utf8")));
