@@ -2,6 +2,7 @@
 import { execFileSync } from "node:child_process";
 import { mkdirSync } from "node:fs";
 import { join } from "node:path";
+import axe from "axe-core";
 import { type Browser, type BrowserContext, type BrowserContextOptions, chromium, type Page } from "playwright-core";
 import { build } from "vite";
 import { type OpenedJob, servePage } from "../../src/cli/pageServer.ts";
@@ -126,4 +127,14 @@ export async function focused(page: Page, path: string): Promise<void> {
     path,
     { timeout: PATIENCE },
   );
+}
+
+/** Violations axe finds, one line each. */
+export async function judge(page: Page): Promise<string[]> {
+  await page.evaluate(axe.source);
+  const found = await page.evaluate(async () => {
+    const { violations } = await (globalThis as unknown as { axe: typeof import("axe-core") }).axe.run();
+    return violations.flatMap((v) => v.nodes.map((n) => `${v.id}: ${n.target.join(" ")}: ${n.failureSummary ?? ""}`));
+  });
+  return found;
 }

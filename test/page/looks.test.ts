@@ -1,8 +1,7 @@
 // How it looks and is reached: axe on every leaf in light and dark, both sizes without sideways scrolling, keys alone.
-import axe from "axe-core";
 import type { Page } from "playwright-core";
 import { afterAll, beforeAll, describe, expect, it } from "vitest";
-import { type Bench, type Desk, enter, PATIENCE, planned, plannedAnew, setUp, turnTo } from "./bench.ts";
+import { type Bench, type Desk, enter, judge, PATIENCE, planned, plannedAnew, setUp, turnTo } from "./bench.ts";
 
 const LEAVES = ["Form", "Seams", "Panels", "Rolls", "Rig", "Papers", "Site"];
 let bench: Bench;
@@ -13,16 +12,6 @@ beforeAll(async () => {
   desk = await bench.open();
 }, PATIENCE);
 afterAll(() => bench.close());
-
-/** Violations axe finds, one line each. */
-async function judge(page: Page): Promise<string[]> {
-  await page.evaluate(axe.source);
-  const found = await page.evaluate(async () => {
-    const { violations } = await (globalThis as unknown as { axe: typeof import("axe-core") }).axe.run();
-    return violations.flatMap((v) => v.nodes.map((n) => `${v.id}: ${n.target.join(" ")}: ${n.failureSummary ?? ""}`));
-  });
-  return found;
-}
 
 const sideways = (page: Page) =>
   page.evaluate(() =>

@@ -1,7 +1,7 @@
 // A seam's end slid along its edge: with the mouse, a finger and the keys; its panels redrawn, the roof tied again, undone.
 import type { Page } from "playwright-core";
 import { afterAll, beforeAll, describe, expect, it } from "vitest";
-import { type Bench, type Desk, enter, PATIENCE, planned, plannedAnew, setUp, turnTo } from "./bench.ts";
+import { type Bench, type Desk, enter, judge, PATIENCE, planned, plannedAnew, setUp, turnTo } from "./bench.ts";
 import { smallFiles } from "./smallForm.ts";
 
 let bench: Bench;
@@ -148,6 +148,28 @@ describe("a seam's end", { timeout: PATIENCE }, () => {
       .waitFor();
     expect(await metres(page, 2)).toBeCloseTo(was, 3);
     expect(await planned(page)).toBe(before);
+  });
+
+  it("layouts side by side: each with figures and a drawing, one is taken and says why", async () => {
+    const { page } = desk;
+    const before = await planned(page);
+    await page.getByRole("button", { name: "Compare layouts" }).click();
+    const cards = page.getByRole("list", { name: "Layouts side by side" }).getByRole("listitem");
+    await page.getByText("Being worked out").last().waitFor({ state: "detached" });
+    expect(await cards.count()).toBeGreaterThan(2);
+    expect(await cards.first().innerText()).toContain("As it stands");
+    const other = cards.filter({ has: page.getByRole("button", { name: /^Take \d strips/ }) }).first();
+    const wanted = Number(/(\d+) strips/.exec(await other.innerText())?.[1]);
+    expect(await other.locator("path.weld").count()).toBe(wanted - 1);
+    expect(await judge(page)).toEqual([]);
+    await other.getByRole("button").click();
+    await plannedAnew(page, before);
+    await page.getByText(new RegExp(`between ${wanted} panels`)).waitFor();
+    expect(await page.getByLabel("Why this layout").inputValue()).toMatch(/compared: .* panels, .* m of seam/);
+    await page.getByText(/Taken because: /).waitFor();
+    await enter(page, "Number of strips", "4");
+    await page.getByText(/between 4 panels/).waitFor({ timeout: PATIENCE });
+    expect(await page.getByLabel("Why this layout").count()).toBe(0);
   });
 
   it("nothing went wrong on the way", () => {

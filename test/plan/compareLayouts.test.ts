@@ -1,7 +1,9 @@
 // The table of layouts: what is measured is what was cut, estimates come near it, refusals are told.
 import { expect, test } from "vitest";
+import { measureExtent } from "../../src/core/plan/clothRoom.ts";
 import { compareLayouts } from "../../src/core/plan/compareLayouts.ts";
 import { fitPanels } from "../../src/core/plan/fitPanels.ts";
+import { listAsks } from "../../src/core/plan/listAsks.ts";
 import { runSeams } from "../../src/core/seams/runSeams.ts";
 import { makeForm, makeGrid, makeJob, makeTent } from "../seams/madeForms.ts";
 
@@ -67,4 +69,32 @@ test("a roof of several regions has rows for each", () => {
   const { seams } = fitPanels(makeTent(48, 10, 6, 3, 4), makeJob(), { seams: {}, panels: {}, onStation: () => {} });
   const rows = seams.output.compared ?? [];
   expect(rows.filter((r) => r.taken).map((r) => r.region)).toEqual([1, 2, 3, 4].map((n) => `region ${n}`));
+});
+
+test("what is worth comparing: the plan's own choice, the other ways, one strip more and one fewer; each can be laid", () => {
+  const form = saddle();
+  const job = makeJob();
+  const { seams } = fitPanels(form, job, { seams: {}, panels: {}, onStation: () => {} });
+  const rows = seams.output.compared ?? [];
+  const asks = listAsks(job, rows);
+  expect(asks[0]).toEqual({ layout: "auto", from: null, to: null, count: "auto", pairs: [] });
+  expect(asks.map((a) => a.count)).toContain(rows[0].strips + 1);
+  expect(asks.map((a) => a.count)).toContain(rows[0].strips - 1);
+  expect(new Set(asks.map((a) => JSON.stringify(a))).size).toBe(asks.length);
+  for (const { asked, rows: own, lines, refused } of compareLayouts(form, job, asks)) {
+    expect(refused).toBeNull();
+    if (typeof asked.count === "number") expect(own[0].strips).toBe(asked.count);
+    if (asked.from) expect([own[0].from, own[0].to].sort()).toEqual([asked.from, asked.to].sort());
+    expect(lines.length).toBe(own[0].strips - 1);
+  }
+});
+
+test("a least width the job states is kept where strips are narrowed for the stress, and told where it is not", () => {
+  const form = makeForm(makeGrid(36, 36, (u, v) => [14 * (u - 0.5), 14 * (v - 0.5), 10 * (u - 0.5) * (v - 0.5)]));
+  const lay = (job: ReturnType<typeof makeJob>) => fitPanels(form, job, { seams: {}, panels: {}, onStation: () => {} });
+  const least = (minWidth: number) =>
+    Math.min(...lay(makeJob({ minWidth })).panels.output.map((p) => 1000 * measureExtent(p.net).width));
+  expect(least(1800)).toBeGreaterThan(1800);
+  const told = lay(makeJob({ minWidth: 1800, count: 12 })).seams.findings.filter((f) => f.code === "strip-narrow");
+  expect(told).toMatchObject([{ level: "caution", limit: 1800, basis: "job: seams.minWidth" }]);
 });

@@ -105,7 +105,9 @@ const seams = z.strictObject({
   count: z.union([whole(1, 1000), z.literal("auto")]).optional(),
   pairs: z.array(z.array(place).min(2).max(50)).min(1).max(1000).optional(),
   maxWidth: num(50, 10_000, { unit: "mm" }).optional(),
+  minWidth: num(50, 10_000, { unit: "mm" }).optional(),
   maxLength: num(100, 1e6, { unit: "mm" }).optional(),
+  why: line(400, 1).optional(),
 });
 
 const strainRemedy = "a strain, not per cent: 1.2 % is 0.012";

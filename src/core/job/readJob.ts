@@ -164,6 +164,8 @@ function resolveSeams(file: JobFile, ledger: DefaultLedger): Job["seams"] {
         : takeDefault<number | "auto">(ledger, given.count, "auto", "seams.count", words),
     pairs: given.pairs ?? [],
     maxWidth: takeDefault(ledger, given.maxWidth, null, "seams.maxWidth", "the usable width of the roll"),
+    ...(given.minWidth === undefined ? {} : { minWidth: given.minWidth }),
+    ...(given.why === undefined ? {} : { why: given.why }),
     maxLength: takeDefault(ledger, given.maxLength, null, "seams.maxLength", "no limit but the length of the roll"),
   };
 }

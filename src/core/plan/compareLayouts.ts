@@ -6,6 +6,8 @@ import type { FoundForm } from "../records/foundForm.ts";
 import type { Job, SeamDecision } from "../records/job.ts";
 import type { LayoutRow } from "../records/stripLayout.ts";
 import { runSeams } from "../seams/runSeams.ts";
+import { vertexAt } from "../surface/measures.ts";
+import type { Vec3 } from "../surface/surface.ts";
 import { firstOptions, measureExtent, measureRoom } from "./clothRoom.ts";
 import type { Fitted } from "./fitted.ts";
 
@@ -73,7 +75,37 @@ export function joinRows(
 export interface ComparedLayout {
   asked: Partial<SeamDecision>;
   rows: LayoutRow[];
+  /** The ways that were weighed for it, as estimates, its own first. */
+  ways: LayoutRow[];
+  /** Its seams over the form, for a drawing in miniature, m. */
+  lines: Vec3[][];
   refused: string | null;
+}
+
+/** One layout cut and flattened: see compareLayouts. @throws PlanError cancelled */
+export function measureLayout(
+  form: FoundForm,
+  job: Job,
+  asked: Partial<SeamDecision>,
+  context: StationContext = {},
+): ComparedLayout {
+  const other: Job = { ...job, seams: { ...job.seams, ...asked } };
+  try {
+    const options = firstOptions(measureRoom(other), other.allowances.seam / 1000);
+    const seams = runSeams(form, other, options, context);
+    const panels = runPanels(seams.output, form, other, context);
+    const { surface, seams: lines } = seams.output;
+    return {
+      asked,
+      rows: measureRows({ seams, panels, options }),
+      ways: seams.output.compared ?? [],
+      lines: lines.map((seam) => seam.vertices.map((v) => vertexAt(surface, v))),
+      refused: null,
+    };
+  } catch (error) {
+    if (!(error instanceof PlanError) || error.code === "cancelled") throw error;
+    return { asked, rows: [], ways: [], lines: [], refused: error.message };
+  }
 }
 
 /**
@@ -87,20 +119,10 @@ export function compareLayouts(
   asks: readonly Partial<SeamDecision>[],
   context: StationContext = {},
 ): ComparedLayout[] {
-  return asks.map((asked, i): ComparedLayout => {
-    const other: Job = { ...job, seams: { ...job.seams, ...asked } };
-    const part: StationContext = {
+  return asks.map((asked, i) =>
+    measureLayout(form, job, asked, {
       ...context,
       onProgress: (share, words) => context.onProgress?.((i + share) / asks.length, words),
-    };
-    try {
-      const options = firstOptions(measureRoom(other), other.allowances.seam / 1000);
-      const seams = runSeams(form, other, options, part);
-      const panels = runPanels(seams.output, form, other, part);
-      return { asked, rows: measureRows({ seams, panels, options }), refused: null };
-    } catch (error) {
-      if (!(error instanceof PlanError) || error.code === "cancelled") throw error;
-      return { asked, rows: [], refused: error.message };
-    }
-  });
+    }),
+  );
 }

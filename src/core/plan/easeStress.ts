@@ -11,8 +11,8 @@ import type { Fitted, RunBoth } from "./fitted.ts";
 /** Stress error of a panel that is let pass: rms as a share of the target, and share of the area compressed (issue of seams and panels, 7). */
 const MOST_RMS = 0.25;
 const MOST_COMPRESSED = 0.02;
-/** No strip is made narrower than this for the sake of the stress, m. own: below it seams and their double cloth rule the stiffness. */
-export const LEAST_WIDTH = 0.75;
+/** No strip is made narrower than this for the sake of the stress where the job states no least width, m. own: below it seams and their double cloth rule the stiffness. */
+const LEAST_WIDTH = 0.75;
 /** Layouts tried at most. */
 const ROUNDS = 6;
 /** Power of the width that the error is taken to grow with at first, and the least that makes narrower strips worth it. */
@@ -88,13 +88,13 @@ function settleBad(tries: readonly Try[], most: number): { stands: number } | { 
   return { stands: there && there.error <= WORTH * first.error ? twice : first.count };
 }
 
-function openStates(fitted: Fitted): RegionState[] {
+function openStates(fitted: Fitted, least: number): RegionState[] {
   return (fitted.seams.output.estimates ?? []).flatMap((estimate): RegionState[] => {
     const error = worstOf(estimate, fitted);
     const count = estimate.strips.length;
     if (error <= 1) return [];
     const widths = listPanels(estimate, fitted).map((p) => measureExtent(p.net).width);
-    const most = Math.max(count, Math.floor((count * Math.max(...widths)) / LEAST_WIDTH));
+    const most = Math.max(count, Math.floor((count * Math.max(...widths)) / least));
     return [{ region: estimate.region, way: estimate.way, tries: [{ count, error }], most, chosen: null }];
   });
 }
@@ -120,9 +120,10 @@ export interface Eased {
   tell: (fitted: Fitted) => Fitted;
 }
 
-/** Lays regions out of bounds in narrower strips. */
-export function easeStress(base: Fitted, options: SeamOptions, runBoth: RunBoth): Eased {
-  const states = openStates(base);
+/** Lays regions out of bounds in narrower strips; `minWidth` is the least the job states, mm. */
+export function easeStress(base: Fitted, options: SeamOptions, runBoth: RunBoth, minWidth: number | null): Eased {
+  const least = minWidth === null ? LEAST_WIDTH : minWidth / 1000;
+  const states = openStates(base, least);
   if (states.length === 0) return { fitted: base, options, tell: (f) => f };
   let fitted = base;
   let asked = options;
@@ -161,11 +162,11 @@ export function easeStress(base: Fitted, options: SeamOptions, runBoth: RunBoth)
     fitted = base;
     asked = options;
   } else runWith(final);
-  return { fitted, options: asked, tell: (f) => tellStress(f, states, final) };
+  return { fitted, options: asked, tell: (f) => tellStress(f, states, final, least) };
 }
 
 /** The result with a word on every region that was tried in narrower strips. */
-function tellStress(fitted: Fitted, states: readonly RegionState[], final: readonly number[]): Fitted {
+function tellStress(fitted: Fitted, states: readonly RegionState[], final: readonly number[], least: number): Fitted {
   const percent = (error: number) => `${(100 * MOST_RMS * error).toFixed(1).replace(/\.0$/, "")} %`;
   const { seams } = fitted;
   const findings = [...seams.findings];
@@ -190,7 +191,7 @@ function tellStress(fitted: Fitted, states: readonly RegionState[], final: reado
       limit: MOST_RMS,
       text: held
         ? `${s.region} has ${stands.count} strips in place of the ${first.count} that fit the cloth: the stress as patterned of its worst panel would be off by ${percent(first.error)} of the intended one, ${percent(1)} is let pass (tried: ${tried}).`
-        : `${s.region}: the stress as patterned of its worst panel is off by ${percent(stands.error)} of the intended one, ${percent(1)} is let pass. Narrower strips were tried (${tried}) down to ${LEAST_WIDTH} m; ${stands.count} stand.`,
+        : `${s.region}: the stress as patterned of its worst panel is off by ${percent(stands.error)} of the intended one, ${percent(1)} is let pass. Narrower strips were tried (${tried}) down to ${least} m; ${stands.count} stand.`,
       remedy: held
         ? "None needed; give seams.count to have another number."
         : "Lay the strips along the weaker curvature, give more prestress or a cloth that is less stiff, or accept the error and say so.",

@@ -2,7 +2,7 @@
 // cloth and share its width; then, where the stress as patterned is too far off, in narrower strips (easeStress.ts).
 // Ends with the best it found; a panel that is still too wide or too long is left for the rolls station to name. Source: own.
 import { runPanels } from "../panels/runPanels.ts";
-import type { StationContext } from "../problem.ts";
+import type { Finding, StationContext } from "../problem.ts";
 import type { CutPanel } from "../records/flatPanel.ts";
 import type { FoundForm } from "../records/foundForm.ts";
 import type { Job } from "../records/job.ts";
@@ -136,7 +136,7 @@ function fitAll(runBoth: RunBoth, job: Job): Fitted {
   const lap = job.allowances.seam / 1000;
   const { fitted, options } = fitWidths(runBoth, room, lap);
   if (job.seams.count !== "auto") return fitted;
-  const eased = easeStress(fitted, options, runBoth);
+  const eased = easeStress(fitted, options, runBoth, job.seams.minWidth ?? null);
   if (eased.fitted === fitted || judge(eased.fitted, room).spread <= ALIKE) return eased.tell(eased.fitted);
   const again = runBoth(correct(eased.options, eased.fitted, lap, () => 1));
   const better =
@@ -160,8 +160,32 @@ export function fitPanels(form: FoundForm, job: Job, context: FitContext): Fitte
     return fitted;
   };
   const fitted = fitAll(runBoth, job);
+  const narrow = noteNarrow(fitted, job.seams.minWidth ?? null);
   const compared = joinRows(measureRows(fitted), measured, weighed);
-  return { ...fitted, seams: { ...fitted.seams, output: { ...fitted.seams.output, compared } } };
+  const findings = [...fitted.seams.findings, ...narrow];
+  return { ...fitted, seams: { ...fitted.seams, findings, output: { ...fitted.seams.output, compared } } };
+}
+
+/** Panels narrower than the job allows. */
+function noteNarrow(fitted: Fitted, minWidth: number | null): Finding[] {
+  if (minWidth === null) return [];
+  const sizes = fitted.panels.output.map((p) => ({ id: p.id, width: 1000 * measureExtent(p.net).width }));
+  const narrow = sizes.filter(({ width }) => width < minWidth);
+  if (narrow.length === 0) return [];
+  const least = Math.min(...narrow.map(({ width }) => width));
+  return [
+    {
+      code: "strip-narrow",
+      level: "caution",
+      station: "seams",
+      where: narrow.map(({ id }) => id),
+      value: least,
+      limit: minWidth,
+      text: `${narrow.map(({ id, width }) => `${id} (${width.toFixed(0)} mm)`).join(", ")}: narrower than the ${minWidth} mm the job asks for.`,
+      remedy: "Ask for fewer strips, slide the seams beside it, or allow narrower panels (seams.minWidth).",
+      basis: "job: seams.minWidth",
+    },
+  ];
 }
 
 /** Stress error of the worst panel over what is let pass. */

@@ -64,6 +64,10 @@ export interface SeamDecision {
   pairs: EdgePlace[][];
   /** mm, flat width with allowances; null: the roll's usable width */
   maxWidth: number | null;
+  /** mm, flat width without allowances that no panel should fall below; null: 750 where strips are narrowed for the stress. An addition to job.md. */
+  minWidth?: number | null;
+  /** Why this layout was taken among those compared, in the office's words; an addition to job.md. */
+  why?: string | null;
   /** mm; null: no limit but the roll's length */
   maxLength: number | null;
 }

@@ -278,7 +278,11 @@ export function runSeams(
   );
   const choices = plans.map((plan, r): LayoutChoice => {
     const panels = named.byRegion[r];
-    if (layouts[r]) return describeChoice(layouts[r], panels, crosses[r].pieces);
+    const told = job.seams.why ? ` Taken because: ${job.seams.why}` : "";
+    if (layouts[r]) {
+      const choice = describeChoice(layouts[r], panels, crosses[r].pieces);
+      return { ...choice, why: choice.why + told };
+    }
     return {
       region: plan.region.id,
       panels,
@@ -286,7 +290,7 @@ export function runSeams(
       from: "",
       to: "",
       count: panels.length,
-      why: "as asked, seam by seam.",
+      why: `as asked, seam by seam.${told}`,
       widths: [],
     };
   });

@@ -10,6 +10,6 @@ export function takeSeams(project: Project, args: { pairs: Pairs }): Project {
     const without = placeInJob(project, ["seams", "pairs"], undefined);
     return without.job.seams?.layout === "pairs" ? placeInJob(without, ["seams", "layout"], undefined) : without;
   }
-  const { from: _from, to: _to, count: _count, ...rest } = project.job.seams ?? {};
+  const { from: _from, to: _to, count: _count, why: _why, ...rest } = project.job.seams ?? {};
   return placeInJob(project, ["seams"], { ...rest, layout: "pairs", pairs: args.pairs });
 }

@@ -13,7 +13,8 @@ const NONE: SeenPanel[] = [];
 function usePair(): { weld: string | null; panels: readonly SeenPanel[] } {
   const hand = useBook((b) => b.hand);
   const chosen = useBook((b) => b.chosen);
-  const tied = useBook((b) => (isSameWork(b.tied?.of, b.project) ? b.tied : null));
+  // once the plan of a tied roof stands, it says the same and more
+  const tied = useBook((b) => (isSameWork(b.tied?.of, b.project) && !isSameWork(b.planned, b.project) ? b.tied : null));
   const facts = useBook((b) => b.facts);
   const seams = tied?.seams ?? facts?.seams ?? [];
   const all = tied?.panels ?? facts?.panels ?? NONE;

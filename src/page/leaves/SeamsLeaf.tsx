@@ -1,13 +1,17 @@
 // Seams: where do they run?
+import { useEffect } from "react";
 import { setLayout } from "../actions/setLayout.ts";
 import { PairSheet } from "../flat/PairSheet.tsx";
-import { ChoiceField, NumberField } from "../parts/Fields.tsx";
+import { ChoiceField, NumberField, TextField } from "../parts/Fields.tsx";
 import { FigureTable } from "../parts/FigureTable.tsx";
 import { figure } from "../parts/figure.ts";
 import { Waiting } from "../parts/Waiting.tsx";
 import { LazySolid } from "../solid/LazySolid.tsx";
 import { act, bookStore } from "../store/bookStore.ts";
+import { isSameWork } from "../store/hand.ts";
 import { useBook } from "../store/useBook.ts";
+import { watchSeams, weighLayouts } from "../worker/dragger.ts";
+import { LayoutCards } from "./LayoutCards.tsx";
 import { LeafFrame } from "./LeafFrame.tsx";
 import { SeamEnds } from "./SeamEnds.tsx";
 
@@ -83,6 +87,16 @@ function SeamDecisions() {
         onChange={(value) => act(setLayout, { key: "maxWidth", value }, "widest strip")}
       />
       <NumberField
+        label="Narrowest panel"
+        path="seams.minWidth"
+        given={given?.minWidth !== undefined}
+        value={given?.minWidth ?? null}
+        none="not stated"
+        unit="mm"
+        hint="flat, without allowances"
+        onChange={(value) => act(setLayout, { key: "minWidth", value }, "narrowest panel")}
+      />
+      <NumberField
         label="Longest panel"
         path="seams.maxLength"
         given={given?.maxLength !== undefined}
@@ -91,6 +105,15 @@ function SeamDecisions() {
         unit="mm"
         onChange={(value) => act(setLayout, { key: "maxLength", value }, "longest panel")}
       />
+      {given?.why !== undefined && (
+        <TextField
+          label="Why this layout"
+          path="seams.why"
+          given
+          value={given.why}
+          onChange={(value) => act(setLayout, { key: "why", value: value || undefined }, "why this layout")}
+        />
+      )}
       <SeamEnds />
     </>
   );
@@ -139,10 +162,28 @@ function SeamTable() {
   );
 }
 
+/** Puts other layouts beside the one that stands, and away again. */
+function CompareButton() {
+  const ready = useBook((b) => isSameWork(b.grips?.of, b.project) && b.facts?.seams !== undefined);
+  const comparing = useBook((b) => isSameWork(b.weighed?.of, b.project));
+  return (
+    <button
+      type="button"
+      aria-pressed={comparing}
+      disabled={!ready}
+      onClick={() => (comparing ? bookStore.setState({ weighed: null }) : weighLayouts())}
+    >
+      {comparing ? "Back to the surface" : "Compare layouts"}
+    </button>
+  );
+}
+
 /** The leaf. */
 export function SeamsLeaf() {
+  useEffect(watchSeams, []);
   const facts = useBook((b) => b.facts);
   const fields = useBook((b) => b.fields);
+  const comparing = useBook((b) => isSameWork(b.weighed?.of, b.project));
   const { seams, layouts, panels } = facts ?? {};
   const total = seams?.reduce((sum, s) => sum + s.length, 0) ?? 0;
   const answer =
@@ -155,8 +196,11 @@ export function SeamsLeaf() {
       station="seams"
       question="Where do the seams run?"
       answer={answer}
+      tools={<CompareButton />}
       stage={
-        facts && seams ? (
+        facts && seams && comparing ? (
+          <LayoutCards />
+        ) : facts && seams ? (
           <div className="withpair">
             <LazySolid
               facts={facts}

@@ -5,7 +5,7 @@ import { bookStore } from "../store/bookStore.ts";
 import { isSameWork } from "../store/hand.ts";
 import { type EdgePlace, pointOnEdge } from "../store/seamEnds.ts";
 import { useBook } from "../store/useBook.ts";
-import { letGo, putBack, slideEnd, takeEnd, watchSeams } from "../worker/dragger.ts";
+import { letGo, putBack, slideEnd, takeEnd } from "../worker/dragger.ts";
 import type { Project } from "./scene.ts";
 
 /** How far an arrow key slides an end, m; ten times as far with Shift. */
@@ -129,7 +129,6 @@ export function Grips(props: {
   const grips = useGrips();
   const line = useRef<SVGPolylineElement>(null);
   const path = useBook((b) => b.hand?.path ?? null);
-  useEffect(watchSeams, []);
   useEffect(() => {
     const put = (to: Project) => {
       grips.forEach(({ place }, i) => {

@@ -6,7 +6,7 @@ import type { Station } from "../../core/problem.ts";
 import type { Facts } from "../../core/records/facts.ts";
 import type { Job } from "../../core/records/job.ts";
 import type { PlanFault, SentFields } from "../worker/messages.ts";
-import type { Grips, Hand, Tied } from "./hand.ts";
+import type { Grips, Hand, Tied, Weighed } from "./hand.ts";
 import type { Project } from "./project.ts";
 
 export const LEAVES = ["form", "seams", "panels", "rolls", "rig", "papers", "site"] as const;
@@ -49,6 +49,8 @@ export interface ResultSlice {
   grips: Grips | null;
   hand: Hand | null;
   tied: Tied | null;
+  /** Layouts compared side by side; null: not asked for. */
+  weighed: Weighed | null;
 }
 
 export interface LookSlice {
@@ -86,6 +88,7 @@ const NO_RESULT: ResultSlice = {
   grips: null,
   hand: null,
   tied: null,
+  weighed: null,
 };
 
 export const bookStore = createStore<Book>(() => ({

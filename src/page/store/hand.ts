@@ -1,6 +1,8 @@
 // A seam's end in hand: what the store knows of it while it is slid along its edge.
+import type { ComparedLayout } from "../../core/plan/compareLayouts.ts";
 import type { Grip, SeenPanel } from "../../core/plan/dragSeam.ts";
 import type { FactsSeam } from "../../core/records/facts.ts";
+import type { SeamDecision } from "../../core/records/job.ts";
 import type { SeamPlaces } from "../worker/messages.ts";
 import type { Project } from "./project.ts";
 
@@ -25,6 +27,13 @@ export interface Hand {
   fault: string | null;
   /** Let go, and the project it made. */
   laid: Project | null;
+}
+
+/** Layouts side by side: those asked for, and those worked out so far, in that order. */
+export interface Weighed {
+  of: Project;
+  asks: Partial<SeamDecision>[];
+  done: ComparedLayout[];
 }
 
 /** The whole roof tied again, before its plan is there. */

@@ -1,5 +1,6 @@
 // The worker that redraws a dragged seam's panels while the plan's worker goes on with rolls and rig. Roofs come to it from there
 // by a port of its own, so that they never pass through the page.
+import { measureLayout } from "../../core/plan/compareLayouts.ts";
 import {
   dragSeamInPlace,
   listGrips,
@@ -48,6 +49,20 @@ function redraw(request: Extract<DragRequest, { kind: "drag" }>): void {
   }
 }
 
+/** Another layout on its own; a fault of the program is told as a refusal, so that the next one is still weighed. */
+function weigh({ run: of, asked }: Extract<DragRequest, { kind: "weigh" }>): void {
+  if (of !== run || roof === null) return;
+  try {
+    post({ kind: "weighed", run, layout: measureLayout(roof.form, roof.job, asked) });
+  } catch (error) {
+    post({
+      kind: "weighed",
+      run,
+      layout: { asked, rows: [], ways: [], lines: [], refused: describeFault(error).message },
+    });
+  }
+}
+
 function tie({ run: of, next, pairs }: Extract<DragRequest, { kind: "tie" }>): void {
   if (of !== run || roof === null) return;
   const begin = performance.now();
@@ -63,6 +78,7 @@ function tie({ run: of, next, pairs }: Extract<DragRequest, { kind: "tie" }>): v
 self.onmessage = ({ data: request }: MessageEvent<DragRequest>) => {
   if (request.kind === "drag") redraw(request);
   else if (request.kind === "tie") tie(request);
+  else if (request.kind === "weigh") weigh(request);
   else {
     port?.close();
     port = request.roofs;

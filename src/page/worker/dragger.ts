@@ -1,6 +1,7 @@
 // Sliding a seam's end: starts and hears the worker that redraws. One place is asked for at a time and the newest wins; places that
 // were passed meanwhile are never asked for.
 import type { Grip } from "../../core/plan/dragSeam.ts";
+import { listAsks } from "../../core/plan/listAsks.ts";
 import type { EdgePlace } from "../../core/records/job.ts";
 import { layPairs } from "../actions/layPairs.ts";
 import { act, bookStore, notify } from "../store/bookStore.ts";
@@ -76,6 +77,16 @@ function hear(reply: DragReply): void {
   } else if (reply.kind === "tied") {
     if (project !== undefined)
       bookStore.setState({ tied: { of: project, seams: reply.seams, panels: reply.panels, ms: reply.ms } });
+  } else if (reply.kind === "weighed") {
+    const { weighed } = bookStore.getState();
+    if (weighed === null || !isSameWork(weighed.of, project)) return;
+    const { facts, job } = bookStore.getState();
+    const done = [...weighed.done, reply.layout];
+    // seams given one by one were weighed against nothing: what the plan would take by itself says which ways there are
+    const fresh = done.length === 1 && job !== null && (facts?.compared ?? []).length === 0;
+    const asks = fresh ? listAsks(job, reply.layout.ways) : weighed.asks;
+    bookStore.setState({ weighed: { ...weighed, asks, done } });
+    weighNext();
   } else if (reply.kind === "untied") projects.delete(reply.run);
   else {
     asked = false;
@@ -109,6 +120,20 @@ function askNext(): void {
   next = null;
 }
 
+/** Has layouts worked out beside the one that stands, one after another; slid seams go first. */
+export function weighLayouts(): void {
+  const { grips, project, job, facts } = bookStore.getState();
+  if (grips === null || project === null || job === null || !isSameWork(grips.of, project)) return;
+  bookStore.setState({ weighed: { of: project, asks: listAsks(job, facts?.compared ?? []), done: [] } });
+  weighNext();
+}
+
+function weighNext(): void {
+  const { weighed } = bookStore.getState();
+  const asked = weighed?.asks[weighed.done.length];
+  if (asked !== undefined) send({ kind: "weigh", run, asked });
+}
+
 /** Takes the end of a weld in hand. */
 export function takeEnd(weld: string, end: 0 | 1): void {
   const { grips, hand, project } = bookStore.getState();
@@ -118,6 +143,7 @@ export function takeEnd(weld: string, end: 0 | 1): void {
   if (hand !== null && hand.laid === null) putBack();
   bookStore.setState({
     chosen: weld,
+    tied: null,
     hand: { weld, end, from: ends, to: ends, drawn: ends, path: null, panels: [], fault: null, laid: null },
   });
   slideEnd(ends[end]);

@@ -1,10 +1,11 @@
 // What the page and its worker say to each other. Types only.
+import type { ComparedLayout } from "../../core/plan/compareLayouts.ts";
 import type { CorrectedPlan } from "../../core/plan/correctPlan.ts";
 import type { Grip, MadeRoof, SeenPanel } from "../../core/plan/dragSeam.ts";
 import type { SurfaceFields } from "../../core/plan/measureFields.ts";
 import type { Station } from "../../core/problem.ts";
 import type { Facts, FactsSeam } from "../../core/records/facts.ts";
-import type { EdgePlace, Job } from "../../core/records/job.ts";
+import type { EdgePlace, Job, SeamDecision } from "../../core/records/job.ts";
 
 export type SentFields = SurfaceFields;
 
@@ -56,6 +57,8 @@ export type DragRequest =
   /** Where roofs come from, from now on. */
   | { kind: "listen"; roofs: MessagePort }
   | { kind: "drag"; run: number; weld: string; to: SeamPlaces }
+  /** Cuts and flattens one other layout of the roof's form. */
+  | { kind: "weigh"; run: number; asked: Partial<SeamDecision> }
   | { kind: "tie"; run: number; next: number; pairs: EdgePlace[][] };
 
 export type DragReply =
@@ -64,4 +67,5 @@ export type DragReply =
   | { kind: "dragged"; run: number; weld: string; to: SeamPlaces; path: number[][]; panels: SeenPanel[]; ms: number }
   | { kind: "refused"; run: number; weld: string; to: SeamPlaces; fault: PlanFault }
   | { kind: "tied"; run: number; seams: FactsSeam[]; panels: SeenPanel[]; ms: number }
+  | { kind: "weighed"; run: number; layout: ComparedLayout }
   | { kind: "untied"; run: number; fault: PlanFault };

@@ -62,7 +62,6 @@ function hear(reply: Reply): void {
         fault: null,
         papers: null,
         papersFault: null,
-        tied: null,
         hand: handAfter(subject),
       });
       return;
