@@ -20,8 +20,9 @@ export function measureRoom(job: Job): ClothRoom {
     { width: job.fabric.rollWidth, selvedge: job.fabric.selvedge, length: job.fabric.rollLength, start: 0 },
   ];
   const width = Math.min(...rolls.map((r) => r.width - 2 * r.selvedge), job.seams.maxWidth ?? Infinity) / 1000;
+  const bite = job.nest.pastBite === "feed" ? Infinity : (job.nest.bite ?? Infinity);
   const longest = Math.max(...rolls.map((r) => r.length - r.start));
-  const length = Math.min(longest, job.seams.maxLength ?? Infinity, job.nest.bite ?? Infinity) / 1000;
+  const length = Math.min(longest, job.seams.maxLength ?? Infinity, bite) / 1000;
   return { width, length: Number.isFinite(length) ? length : null };
 }
 

@@ -38,7 +38,9 @@ function outlineFault(piece: NestPiece): string | null {
   return isSimpleRing(piece.cut) ? null : "crosses or touches itself";
 }
 
-function faultOf(piece: NestPiece, stock: StockRoll[], bite: number | null): Finding | null {
+type Table = Pick<NestDecision, "bite" | "pastBite">;
+
+function faultOf(piece: NestPiece, stock: StockRoll[], { bite, pastBite }: Table): Finding | null {
   const fault = outlineFault(piece);
   if (fault)
     return stopFinding("piece-outline", piece.id, null, null, {
@@ -65,10 +67,19 @@ function faultOf(piece: NestPiece, stock: StockRoll[], bite: number | null): Fin
       text: `${piece.id} is ${mm(size.length)} long with allowances, longer than any roll it fits across (${mm(longest)} after trim).`,
       remedy: "Divide the strip with a cross seam (seams.maxLength), or take a longer roll.",
     });
+  if (bite !== null && size.length > bite + 1e-6 && pastBite === "feed")
+    return {
+      ...stopFinding("roll-feed", piece.id, size.length, bite, {
+        text: `${piece.id} is ${mm(size.length)} long, more than the cutting table takes at once (${mm(bite)}): it is cut in ${Math.ceil(size.length / bite - 1e-9)} feeds.`,
+        remedy: "Set the cloth to the feed marks each time it is fed on, and measure the panel before it is joined.",
+      }),
+      level: "note",
+    };
   if (bite !== null && size.length > bite + 1e-6)
     return stopFinding("roll-bite", piece.id, size.length, bite, {
       text: `${piece.id} is ${mm(size.length)} long, more than the cutting table takes at once (${mm(bite)}).`,
-      remedy: "Divide the strip with a cross seam (seams.maxLength), or cut on a longer table.",
+      remedy:
+        "Divide the strip with a cross seam (seams.maxLength), cut on a longer table, or let it be fed on (nest.pastBite).",
     });
   return null;
 }
@@ -77,14 +88,14 @@ function faultOf(piece: NestPiece, stock: StockRoll[], bite: number | null): Fin
 export function sortPieces(
   pieces: NestPiece[],
   stock: StockRoll[],
-  options: Pick<NestDecision, "bite">,
+  table: Table,
 ): { fit: NestPiece[]; findings: Finding[] } {
   const fit: NestPiece[] = [];
   const findings: Finding[] = [];
   for (const piece of pieces) {
-    const fault = faultOf(piece, stock, options.bite);
+    const fault = faultOf(piece, stock, table);
     if (fault) findings.push(fault);
-    if (!fault || fault.code === "roll-bite") fit.push(piece);
+    if (!fault || fault.code === "roll-bite" || fault.code === "roll-feed") fit.push(piece);
   }
   return { fit, findings };
 }

@@ -1,5 +1,5 @@
 // Rolls: which cloth, and where on it?
-import type { NestedRoll } from "../../core/records/roll.ts";
+import type { ClothTotal, NestedRoll } from "../../core/records/roll.ts";
 import { RollSheet } from "../flat/RollSheet.tsx";
 import { FigureTable } from "../parts/FigureTable.tsx";
 import { figure } from "../parts/figure.ts";
@@ -42,6 +42,27 @@ function Fill({ rolls }: { rolls: readonly NestedRoll[] }) {
         ))}
       </tbody>
     </table>
+  );
+}
+
+/** All rolls together, against what no nest can do without. */
+function Total({ cloth }: { cloth: ClothTotal }) {
+  return (
+    <FigureTable
+      caption="All rolls"
+      rows={[
+        {
+          what: "Taken off",
+          value: figure(cloth.used, 2),
+          unit: "m",
+          against: `no nest on the widest roll needs less than ${figure(cloth.bound, 2)} m`,
+        },
+        { what: "Used", value: figure(100 * cloth.utilisation, 1), unit: "%" },
+        ...(cloth.cost === null
+          ? []
+          : [{ what: "Cost of the cloth", value: figure(cloth.cost, 2), unit: cloth.currency ?? "" }]),
+      ]}
+    />
   );
 }
 
@@ -101,10 +122,15 @@ export function RollsLeaf() {
                   unit: "m",
                   against: `of ${figure(shown.length / 1000, 1)} m on the roll`,
                 },
+                { what: "Left on the roll", value: figure((shown.remnant ?? 0) / 1000, 2), unit: "m" },
+                ...(typeof shown.cost === "number"
+                  ? [{ what: "Cost of the cloth", value: figure(shown.cost, 2), unit: shown.currency ?? "" }]
+                  : []),
                 { what: "Between cuts", value: figure(shown.gap, 0), unit: "mm" },
               ]}
             />
             <Fill rolls={rolls} />
+            {facts?.cloth && <Total cloth={facts.cloth} />}
           </>
         )
       }

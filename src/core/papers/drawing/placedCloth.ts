@@ -83,6 +83,9 @@ export function tableBites(facts: Facts, roll: NestedRoll): TableBite[] {
     const words = [
       `TABLE LENGTH ${k + 1} OF ${parts.length}: X = 0 IS ${Math.round(from)} MM FROM THE START OF THE ROLL. CUT IN THIS ORDER.`,
     ];
-    return { roll: { ...roll, used, placements, flaws }, from, words };
+    const long = used > bite + HAIR;
+    if (long) words.push("LONGER THAN THE TABLE: CUT UP TO A FEED MARK, FEED ON TO IT, CUT ON FROM THERE.");
+    const feeds = (roll.feeds ?? []).map((x) => x - from).filter((x) => long && x > HAIR && x < used);
+    return { roll: { ...roll, used, placements, flaws, feeds }, from, words };
   });
 }

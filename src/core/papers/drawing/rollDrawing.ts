@@ -22,6 +22,8 @@ const BAR = 1000;
 const NOTE_HEIGHT = 40;
 const NOTE_PITCH = 80;
 const STAMP_HEIGHT = 140;
+/** Least length of a feed mark, mm. */
+const FEED_MARK = 30;
 
 /**
  * The roll with all that lies on it, as it lies, from the start of the roll to the end of the used length. The lower left corner
@@ -45,6 +47,7 @@ export function rollDrawing(facts: Facts, roll: NestedRoll, words: readonly stri
     addLineInPlace(drawing, [flaw.x, far[1]], [far[0], flaw.y]);
     addNoteInPlace(drawing, "FLAW", [flaw.x, far[1] + 20], 20);
   }
+  addFeedsInPlace(drawing, roll, selvedge);
   for (const { p, panel, piece } of placedInOrder(facts, roll)) {
     if (panel) addPanelInPlace(drawing, panel, p);
     else if (piece) addPieceInPlace(drawing, facts, piece, p);
@@ -52,6 +55,9 @@ export function rollDrawing(facts: Facts, roll: NestedRoll, words: readonly stri
   const notes = [
     `ROLL ${roll.id}  FABRIC ${roll.fabric}  BATCH ${roll.batch ?? "not given"}  OUTER FACE UP`,
     `WIDTH ${decimal(roll.width, 0)}  USABLE ${decimal(roll.usableWidth, 0)}  USED LENGTH ${decimal(roll.used, 0)}  PIECES ${roll.placements.length}`,
+    ...(roll.outerFace === "down"
+      ? ["INNER FACE UP AS IT COMES OFF THE ROLL: TURN THE CLOTH OVER LENGTHWISE FIRST"]
+      : []),
     ...words,
   ];
   addNotesInPlace(drawing, facts, notes, [0, roll.width - selvedge + 100]);
@@ -68,6 +74,17 @@ export function panelDrawing(facts: Facts, panel: FactsPanel): Drawing {
   ];
   addNotesInPlace(drawing, facts, notes, [box.min[0], box.max[1] + 100]);
   return withoutRepeats(drawing);
+}
+
+/** Where the cloth is fed on: a stroke on either selvedge, drawn past the edge where there is none. */
+function addFeedsInPlace(drawing: Drawing, roll: NestedRoll, selvedge: number): void {
+  const reach = Math.max(selvedge, FEED_MARK);
+  (roll.feeds ?? []).forEach((x, k) => {
+    if (x <= 0 || x >= roll.used) return;
+    addLineInPlace(drawing, [x, -reach], [x, 0]);
+    addLineInPlace(drawing, [x, roll.usableWidth], [x, roll.usableWidth + reach]);
+    addNoteInPlace(drawing, `FEED ${k + 1}`, [x + 10, roll.usableWidth + reach + 5], 20);
+  });
 }
 
 function addLineInPlace(drawing: Drawing, a: Vec2, b: Vec2): void {

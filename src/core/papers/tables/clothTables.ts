@@ -22,7 +22,17 @@ export function placesOf(facts: Facts) {
 /** rolls.csv */
 export function rollTable(facts: Facts): string {
   const header = ["roll", "fabric", "batch", "width_mm", "usable_width_mm", "length_mm", "used_mm", "pieces"];
-  header.push("gap_mm", "utilisation_percent", "lower_bound_mm", "remnant_mm", "table_feeds_at_mm", "flaws", ...TAIL);
+  header.push(
+    "gap_mm",
+    "utilisation_percent",
+    "lower_bound_mm",
+    "remnant_mm",
+    "table_feeds_at_mm",
+    "flaws",
+    "cost",
+    "currency",
+    ...TAIL,
+  );
   const rows = (facts.rolls ?? []).map((r): Cell[] => [
     r.id,
     r.fabric,
@@ -38,6 +48,8 @@ export function rollTable(facts: Facts): string {
     r.remnant === undefined ? null : numberCell(r.remnant, 0),
     (r.feeds ?? []).map((f) => decimal(f, 0)).join("; "),
     numberCell(r.flaws.length, 0),
+    typeof r.cost === "number" ? numberCell(r.cost, 2) : null,
+    r.currency ?? null,
     ...tailOf(facts),
   ]);
   return writeCsv(header, rows);

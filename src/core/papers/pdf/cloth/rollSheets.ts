@@ -49,10 +49,13 @@ function drawRoll(book: Book, roll: NestedRoll): void {
     bites.length > 0
       ? ` Cut in ${bites.length} table lengths of ${flat.whole(roll.bite ?? 0)} at most: fed on until the table begins at ${feeds} ${flat.unit} from the start of the roll.`
       : "";
+  const over = (100 * (roll.used - roll.lowerBound)) / Math.max(roll.lowerBound, 1e-9);
+  const bound = ` No nest of these pieces needs less than ${flat.whole(roll.lowerBound)} of it (${decimal(over, 1)} % over).`;
+  const turned = roll.outerFace === "down" ? "This roll shows its inner face: turn the cloth over lengthwise. " : "";
   const left = roll.remnant === undefined ? "" : ` Left on the roll: ${flat.whole(roll.remnant)}.`;
   const words = [
-    `Fabric ${roll.fabric}, batch ${roll.batch ?? "not given"}. Width ${flat.whole(roll.width)}, usable ${flat.whole(roll.usableWidth)}, used ${flat.whole(roll.used)} of ${flat.whole(roll.length)}: ${decimal(100 * roll.utilisation, 0)} % of the cloth used.${left} ${cloth.length} pieces, at least ${flat.whole(roll.gap)} apart.${table}`,
-    "OUTER FACE UP, warp along the roll, start of the roll at the left. Numbers in the order of cutting. Crossed: flaw. The cut file rules, this figure does not: no measure is taken from it.",
+    `Fabric ${roll.fabric}, batch ${roll.batch ?? "not given"}. Width ${flat.whole(roll.width)}, usable ${flat.whole(roll.usableWidth)}, used ${flat.whole(roll.used)} of ${flat.whole(roll.length)}: ${decimal(100 * roll.utilisation, 0)} % of the cloth used.${bound}${left}${moneyWords(roll.cost, roll.currency)} ${cloth.length} pieces, at least ${flat.whole(roll.gap)} apart.${table}`,
+    `${turned}OUTER FACE UP, warp along the roll, start of the roll at the left. Numbers in the order of cutting. Crossed: flaw. The cut file rules, this figure does not: no measure is taken from it.`,
   ];
   let y = sheet.top;
   for (const text of words) y = drawParagraph(book, sheet, text, y);
@@ -163,6 +166,21 @@ function ringArea(ring: readonly Vec2[]): number {
   }, 0);
 }
 
+/** What cloth costs, where a price is given. */
+function moneyWords(cost: number | null | undefined, currency: string | null | undefined): string {
+  if (cost === null || cost === undefined) return "";
+  return ` Its cloth costs ${decimal(cost, 2)}${currency ? ` ${currency}` : ""}.`;
+}
+
+/** All rolls together, against what no nest can do without. */
+function totalWords(facts: Facts): string {
+  const { cloth } = facts;
+  if (!cloth || !(cloth.bound > 0)) return "";
+  const { span, area } = paperUnits(facts.job);
+  const over = decimal(100 * (cloth.used / cloth.bound - 1), 1);
+  return `All rolls: ${area.of(cloth.area)} ${area.unit} of pieces on ${area.of(cloth.taken)} ${area.unit} of cloth, ${decimal(100 * cloth.utilisation, 1)} % used; ${span.of(cloth.used)} ${span.unit} taken off, and no nest on the widest roll needs less than ${span.of(cloth.bound)} ${span.unit} (${over} % over).${moneyWords(cloth.cost, cloth.currency)}`;
+}
+
 /** What the store lays out: every roll, then what each fabric comes to. */
 function flowClothList(book: Book): void {
   const { facts } = book;
@@ -204,6 +222,8 @@ function flowClothList(book: Book): void {
     const words = `${fabric}: ${span.whole(length)} of cloth, ${area.whole(cloth)}${kilos}, from ${own.length} ${own.length === 1 ? "roll" : "rolls"}. Leader, trim at the start, test pieces and waste of the table come on top.`;
     flowTextInPlace(flow, words, { size: TABLE });
   }
+  const total = totalWords(facts);
+  if (total !== "") flowTextInPlace(flow, total, { size: TABLE });
   flowGapInPlace(flow, 4);
   flowCautionsInPlace(flow, cautionsOf(facts, "rolls"));
 }
