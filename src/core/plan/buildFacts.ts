@@ -1,7 +1,7 @@
 // From the stations' records to the facts record: the one place where typed arrays become lists.
-import type { Facts, FactsForm, FactsPanel, FactsPiece, FactsSeam, Vec2 } from "../records/facts.ts";
+import type { Facts, FactsForm, FactsPanel, FactsPiece, FactsRelief, FactsSeam, Vec2 } from "../records/facts.ts";
 import type { CutPanel, CutPiece, Ring } from "../records/flatPanel.ts";
-import type { FoundForm } from "../records/foundForm.ts";
+import type { FormRelief, FoundForm } from "../records/foundForm.ts";
 import type { Job } from "../records/job.ts";
 import type { StripLayout } from "../records/stripLayout.ts";
 import { measurePathLength, vertexAt } from "../surface/measures.ts";
@@ -46,11 +46,30 @@ export function buildFormFacts(form: FoundForm): FactsForm {
       reaction: e.reaction,
       forceFrom: e.forceFrom,
       length: measurePathLength(listPath(form.surface, e.vertices)),
+      ...(e.spread === undefined ? {} : { spread: e.spread }),
     })),
     anchors: form.anchors,
     residual: form.residual,
     area: form.area,
     reactions: form.reactions,
+    ...(form.relief ? { relief: buildReliefFacts(form.relief) } : {}),
+  };
+}
+
+/** Difference in length between a strip's edges and its middle that the strip width is told for. Common practice. */
+const EDGE_SHARE = 0.005;
+
+/** Curvature and slope. @source strip width w = √(8e/|K|): check-values.md 4.2 */
+function buildReliefFacts({ curvature, flattest, flattestAt, flatShare, pits }: FormRelief): FactsRelief {
+  const most = curvature ? Math.max(Math.abs(curvature.least), Math.abs(curvature.greatest)) : 0;
+  const width = Math.sqrt((8 * EDGE_SHARE) / most);
+  return {
+    curvature,
+    // beyond a kilometre it is rounding that curves
+    stripWidth: width < 1000 ? width : null,
+    slope: { least: (180 * flattest) / Math.PI, leastAt: flattestAt },
+    flatShare,
+    pits,
   };
 }
 

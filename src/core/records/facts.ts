@@ -43,11 +43,27 @@ export interface FactsForm {
     reaction: { resultant: Vec3; greatest: number } | null;
     forceFrom: string;
     length: number;
+    /** Standard spread of a force from best balance, kN. */
+    spread?: number;
   }[];
   anchors: { id: string; vertex: number; isolated: boolean }[];
   residual: Residual;
   area: number;
   reactions: { anchor: string; force: Vec3 }[];
+  relief?: FactsRelief;
+}
+
+/** How curved and how steep the form is; places are vertices of the form. */
+export interface FactsRelief {
+  /** Gaussian curvature by angle defect, 1/m²; null where cloth alone is nowhere curved. */
+  curvature: { least: number; leastAt: number; greatest: number; greatestAt: number } | null;
+  /** Width of a strip whose edges are 0.5 % longer or shorter than its middle at the greatest |curvature|, m; null where flat. */
+  stripWidth: number | null;
+  /** Least slope against level, degrees, and where. */
+  slope: { least: number; leastAt: number };
+  /** Share of the area that slopes less than 2 degrees. */
+  flatShare: number;
+  pits: number;
 }
 
 export interface FactsSeam {

@@ -1,11 +1,12 @@
 // Form: is this surface in balance, at which forces?
+import type { Facts } from "../../core/records/facts.ts";
 import { setEdge } from "../actions/setEdge.ts";
 import { setMeshWord } from "../actions/setMeshWord.ts";
 import { setPrestress } from "../actions/setPrestress.ts";
 import { setSettle } from "../actions/setSettle.ts";
 import { FieldPicker } from "../parts/FieldPicker.tsx";
 import { ChoiceField, NumberField, SwitchField } from "../parts/Fields.tsx";
-import { FigureTable } from "../parts/FigureTable.tsx";
+import { type FigureRow, FigureTable } from "../parts/FigureTable.tsx";
 import { figure } from "../parts/figure.ts";
 import { Waiting } from "../parts/Waiting.tsx";
 import { LazySolid } from "../solid/LazySolid.tsx";
@@ -115,6 +116,37 @@ function FormDecisions() {
   );
 }
 
+type Form = NonNullable<Facts["form"]>;
+
+function tellForce({ forceFrom, spread }: Form["edges"][number]): string {
+  if (forceFrom === "job") return "given by the job";
+  if (forceFrom === "sag") return "usual sag, nobody says the force";
+  return `best balance with the cloth${spread === undefined ? "" : `, ± ${figure(spread, 2)} kN`}`;
+}
+
+/** Curvature, which says how narrow strips must be, and slope, by which water runs off. */
+function reliefRows(relief: Form["relief"]): FigureRow[] {
+  if (relief === undefined) return [];
+  const { curvature, stripWidth, slope, flatShare } = relief;
+  const rows: FigureRow[] = [];
+  if (curvature)
+    rows.push({
+      what: "Gaussian curvature",
+      value: `${figure(curvature.least)} to ${figure(curvature.greatest)}`,
+      unit: "1/m²",
+      ...(stripWidth === null
+        ? {}
+        : { against: `a strip ${figure(stripWidth, 2)} m wide has edges 0.5 % off its middle` }),
+    });
+  rows.push({
+    what: "Least slope",
+    value: figure(slope.least, 1),
+    unit: "°",
+    against: `${figure(100 * flatShare, 1)} % of the cloth below 2°`,
+  });
+  return rows;
+}
+
 /** The leaf. */
 export function FormLeaf() {
   const facts = useBook((b) => b.facts);
@@ -162,12 +194,17 @@ export function FormLeaf() {
                   ? { against: `limit ${figure(Number(limit.limit))} of the mean membrane force`, holds: limit.holds }
                   : {}),
               },
+              { what: "… across the cloth", value: figure(form.residual.normalMax) },
+              ...(form.residual.tangentialMax === undefined
+                ? []
+                : [{ what: "… within the cloth", value: figure(form.residual.tangentialMax) }]),
               { what: "Out of balance, mean (rms)", value: figure(form.residual.rms) },
+              ...reliefRows(form.relief),
               ...cables.slice(0, 12).map((e) => ({
                 what: `Cable ${e.id}`,
                 value: figure(e.force ?? 0, 2),
                 unit: "kN",
-                against: e.forceFrom === "job" ? "given by the job" : "best balance with the cloth",
+                against: tellForce(e),
               })),
               ...form.reactions.slice(0, 12).map((r) => ({
                 what: `Pull on ${r.anchor}`,

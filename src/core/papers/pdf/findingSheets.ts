@@ -96,6 +96,33 @@ function flowSummaryInPlace(flow: Flow, facts: Facts): void {
     flow,
     `${got} Mesh ${facts.job.mesh}. The plan is made for prestress; it does not design for wind, snow or ponding. Cautions for the work stand below, before anything is handled.`,
   );
+  if (facts.form) flowTextInPlace(flow, describeForm(facts.form));
+}
+
+/** Balance, forces and relief of the form in plain words. */
+function describeForm(form: NonNullable<Facts["form"]>): string {
+  const percent = (r: number) => `${decimal(100 * r, 2)} %`;
+  const { residual, relief, edges } = form;
+  const within = residual.tangentialMax === undefined ? "" : `, within it ${percent(residual.tangentialMax)}`;
+  const found = edges.flatMap((e) =>
+    e.forceFrom === "balance" && e.force !== null
+      ? [`${e.id} ${decimal(e.force, 2)} kN${e.spread === undefined ? "" : ` ± ${decimal(e.spread, 2)}`}`]
+      : [],
+  );
+  const shown = found.length > PLACES ? [...found.slice(0, PLACES), `${found.length - PLACES} more`] : found;
+  const lines = [
+    `Out of balance at most ${percent(residual.max)} of the cloth's force at a vertex: across the cloth ${percent(residual.normalMax)}${within}; rms ${percent(residual.rms)}.`,
+  ];
+  if (shown.length > 0) lines.push(`Cable forces from best balance, with their spread: ${shown.join(", ")}.`);
+  if (relief) {
+    const { curvature, stripWidth, slope } = relief;
+    if (curvature)
+      lines.push(
+        `Gaussian curvature ${decimal(curvature.least, 4)} to ${decimal(curvature.greatest, 4)} 1/m²${stripWidth === null ? "" : `: a strip ${decimal(stripWidth, 2)} m wide there has edges 0.5 % off its middle`}.`,
+      );
+    lines.push(`Least slope ${decimal(slope.least, 1)}°, ${percent(relief.flatShare)} of the cloth below 2°.`);
+  }
+  return `Form: ${lines.join(" ")}`;
 }
 
 /** Places by name; of a long list the first ones and how many more, facts.json holds them all. */
