@@ -55,11 +55,12 @@ export function buildFullJob() {
       ],
       maxWidth: 2400,
       maxLength: 15000,
+      doubleCloth: true,
     },
     panels: { P1: { batch: "LOT 3", warp: 5 } },
     compensation: { default: { warp: 0.004, weft: 0.011 }, "LOT 3": { warp: 0.005, weft: 0.012 } },
     decompensation: { clamped: 0.6, ring: 0.5, cable: null },
-    allowances: { seam: 50, seamOn: "one", pocket: 120, pocketStrip: true, clamp: 30, hem: 60 },
+    allowances: { seam: 50, seamOn: "one", pocket: 120, pocketStrip: true, cover: 200, clamp: 30, hem: 60 },
     rolls: [
       {
         id: "R7",

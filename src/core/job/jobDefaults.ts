@@ -14,6 +14,8 @@ export const JOB_DEFAULTS = {
   seamOn: "both",
   pocket: 100,
   pocketStrip: false,
+  cover: 0,
+  doubleCloth: false,
   clamp: 0,
   hem: 40,
   gap: 10,

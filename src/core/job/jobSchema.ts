@@ -108,6 +108,7 @@ const seams = z.strictObject({
   minWidth: num(50, 10_000, { unit: "mm" }).optional(),
   maxLength: num(100, 1e6, { unit: "mm" }).optional(),
   why: line(400, 1).optional(),
+  doubleCloth: z.boolean().optional(),
 });
 
 const strainRemedy = "a strain, not per cent: 1.2 % is 0.012";
@@ -269,6 +270,7 @@ export const jobSchema = z.strictObject({
       seamOn: z.enum(["both", "one"]).optional(),
       pocket: mm(1000).optional(),
       pocketStrip: z.boolean().optional(),
+      cover: mm(2000).optional(),
       clamp: mm(2000, "a set-back, which takes cloth away: 0 or more").optional(),
       hem: mm(1000).optional(),
     })

@@ -167,6 +167,7 @@ function resolveSeams(file: JobFile, ledger: DefaultLedger): Job["seams"] {
     ...(given.minWidth === undefined ? {} : { minWidth: given.minWidth }),
     ...(given.why === undefined ? {} : { why: given.why }),
     maxLength: takeDefault(ledger, given.maxLength, null, "seams.maxLength", "no limit but the length of the roll"),
+    doubleCloth: given.doubleCloth ?? JOB_DEFAULTS.doubleCloth,
   };
 }
 
@@ -189,6 +190,7 @@ function resolveAllowances(file: JobFile, ledger: DefaultLedger): Job["allowance
     seamOn: take(a.seamOn, d.seamOn, "seamOn", "half the overlap on both sides of a seam"),
     pocket: take(a.pocket, d.pocket, "pocket", `${d.pocket} mm beyond the fold of a cable pocket`),
     pocketStrip: a.pocketStrip ?? d.pocketStrip,
+    cover: a.cover ?? d.cover,
     clamp: take(a.clamp, d.clamp, "clamp", `${d.clamp} mm set-back along clamped edges`),
     hem: take(a.hem, d.hem, "hem", `${d.hem} mm hem along free edges`),
   };

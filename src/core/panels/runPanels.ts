@@ -10,6 +10,7 @@ import { listFoldFindings } from "./marks/slitFlaps.ts";
 import { keepSeamPoints } from "./outline/netOutline.ts";
 import { outlinePanel } from "./outline/outlinePanel.ts";
 import type { PanelPlace } from "./outline/panelPlace.ts";
+import { noteCompensation, noteLaps } from "./proof/compensationNotes.ts";
 
 /** What the job decides on flattening. */
 export function buildFlattenOptions(form: FoundForm, job: Job): FlattenOptions {
@@ -23,6 +24,7 @@ export function buildFlattenOptions(form: FoundForm, job: Job): FlattenOptions {
     compensation: job.compensation,
     decompensation: job.decompensation,
     rings,
+    lap: job.seams.doubleCloth ? { overlap: job.allowances.seam / 1000, on: job.allowances.seamOn } : null,
   };
 }
 
@@ -61,6 +63,7 @@ export function runPanels(
     checks.push(...outlined.checks);
     return outlined.output;
   });
-  findings.push(...listFoldFindings(output));
+  findings.push(...listFoldFindings(output), ...noteCompensation(output));
+  if (options.lap) findings.push(noteLaps(output, options.lap.overlap));
   return { output, findings, checks };
 }

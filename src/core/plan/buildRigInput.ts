@@ -1,5 +1,6 @@
 // From the job's words on cables and rig to what the rig station takes: defaults by the rules of the job file, each one noted,
 // names checked against the form. Picks no size: a default cable or turnbuckle is there to compute with, not to order.
+import { buildFlattenOptions } from "../panels/runPanels.ts";
 import { type Finding, PlanError, type StationResult } from "../problem.ts";
 import type { FlatPanel } from "../records/flatPanel.ts";
 import type { FormEdge, FoundForm } from "../records/foundForm.ts";
@@ -243,6 +244,7 @@ export function buildRigInput(
       cables,
       supports,
       survey,
+      lap: buildFlattenOptions(form, job).lap ?? null,
       proof: job.proof,
       rig: { adjusters, struts, stays, stages: whole, temperature, limit, readingError, defaults: notes.defaults },
     },

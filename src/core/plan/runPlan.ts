@@ -130,7 +130,7 @@ function runStationsInPlace(
   facts.compared = layout.compared ?? [];
   facts.seams = buildSeamFacts(layout, panels);
   facts.panels = panels.map(buildPanelFacts);
-  const others = take(buildPieces(panels, form, job));
+  const others = take(buildPieces(panels, { form, seams: layout.seams }, job));
   facts.pieces = others.map(buildPieceFacts);
   if (options.until === "panels") return;
 

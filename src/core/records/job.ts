@@ -70,6 +70,8 @@ export interface SeamDecision {
   why?: string | null;
   /** mm; null: no limit but the roll's length */
   maxLength: number | null;
+  /** The cloth is counted double where seams lap. */
+  doubleCloth: boolean;
 }
 
 /** mm */
@@ -79,6 +81,8 @@ export interface Allowances {
   seamOn: "both" | "one";
   pocket: number;
   pocketStrip: boolean;
+  /** Width of a strip laid over every cable between panels; 0: none. */
+  cover: number;
   /** Set-back, positive takes cloth away. */
   clamp: number;
   hem: number;

@@ -120,7 +120,8 @@ export interface FactsAdjuster {
 export interface FactsRig {
   nodes: Vec3[];
   fixed: number[];
-  cloth: { nodes: Vec3; flat: [number, number][]; panel: string }[];
+  /** layers: of cloth in the mean, where seams lap and their second layer is counted; 1 where left out. */
+  cloth: { nodes: Vec3; flat: [number, number][]; panel: string; layers?: number }[];
   cables: { id: string; nodes: number[]; EA: number; slackLengths: number[] }[];
   struts: { id: string; nodes: [number, number]; EA: number; slackLength: number }[];
   adjusters: FactsAdjuster[];

@@ -19,6 +19,8 @@ export interface RigInput {
   /** Where pins were surveyed, by anchor id: far pins of adjusters, else the anchors themselves. */
   survey: Record<string, Vec3>;
   rig: RigDecision;
+  /** Overlap (m) of seams whose second layer of cloth carries too; null: one layer everywhere. */
+  lap: { overlap: number; on: "both" | "one" } | null;
   /** Limits for the assembled roof. */
   proof: ProofLimits;
 }

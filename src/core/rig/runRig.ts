@@ -129,6 +129,7 @@ function writeRig(rig: Rig, finished: RigState): FactsRig {
       nodes: [s.tri[3 * t], s.tri[3 * t + 1], s.tri[3 * t + 2]],
       flat: rig.flat[t],
       panel,
+      ...(s.layers[t] === 1 ? {} : { layers: s.layers[t] }),
     })),
     cables: rig.cables.map((c) => ({
       id: c.id,

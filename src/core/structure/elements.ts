@@ -98,7 +98,7 @@ export interface ForceState {
 
 /** Internal less outer force at every node, the largest element force, and the energy whose gradient the forces are. */
 export function measureForces(s: Structure, x: Float64Array, L0: Float64Array): ForceState {
-  const { tri, shape, area, load } = s;
+  const { tri, shape, area, layers, load } = s;
   const force = new Float64Array(x.length);
   const room = buildTriangleRoom();
   const { F, stress } = room;
@@ -112,7 +112,7 @@ export function measureForces(s: Structure, x: Float64Array, L0: Float64Array): 
   for (let t = 0; t < area.length; t++) {
     if (measureTriangle(s, x, t, room) === 2) continue;
     const d = s.laws[s.law[t]];
-    const a = area[t];
+    const a = area[t] * layers[t];
     const s1 = stress[0];
     const s2 = stress[1];
     const s3 = stress[2];
@@ -162,7 +162,7 @@ export function measureForces(s: Structure, x: Float64Array, L0: Float64Array): 
 export function fillTriangleTangent(s: Structure, t: number, room: TriangleRoom, out: Float64Array): void {
   const { F, stress, tangent: C } = room;
   const { shape } = s;
-  const area = s.area[t];
+  const area = s.area[t] * s.layers[t];
   for (let a = 0; a < 3; a++) {
     const aw = area * shape[6 * t + 2 * a];
     const af = area * shape[6 * t + 2 * a + 1];

@@ -1,11 +1,11 @@
 // Cloth, cables, adjusters and struts as one assembly of elements: what equilibrium is solved on. Types and building only.
-// Leaves out: sliding of a cable in its pocket, doubled cloth at seams and patches, self-weight, bending.
+// Leaves out: sliding of a cable in its pocket, doubled cloth at patches, self-weight, bending.
 import { PlanError } from "../problem.ts";
 import type { ClothStiffness } from "./cloth.ts";
 
 /**
  * @shape xyz 3*nN; held 3*nN (1: that coordinate is fixed in space); load 3*nN: outer force on the nodes; tri 3*m; shape 6*m: gradient of the three corner functions in the cloth's
- *   own axes, (g0w, g0f, g1w, g1f, g2w, g2f); area m: flat area; law m: index into laws; link 2*k; EA k; strut k (1: carries
+ *   own axes, (g0w, g0f, g1w, g1f, g2w, g2f); area m: flat area; layers m: layers of cloth in the mean (1, more where seams lap); law m: index into laws; link 2*k; EA k; strut k (1: carries
  *   compression too)
  * @units m, m2, kN; flat shapes are those of the relaxed cloth (permanent strain put back)
  */
@@ -16,6 +16,7 @@ export interface Structure {
   tri: Uint32Array<ArrayBuffer>;
   shape: Float64Array<ArrayBuffer>;
   area: Float64Array<ArrayBuffer>;
+  layers: Float64Array<ArrayBuffer>;
   law: Uint16Array<ArrayBuffer>;
   laws: ClothStiffness[];
   link: Uint32Array<ArrayBuffer>;
@@ -29,6 +30,8 @@ export interface ClothElements {
   flat: Float64Array<ArrayBuffer>;
   law: Uint16Array<ArrayBuffer>;
   laws: ClothStiffness[];
+  /** Layers of cloth; left out: one everywhere. */
+  layers?: Float64Array<ArrayBuffer>;
 }
 
 /** The links' part. */
@@ -88,6 +91,7 @@ export function buildStructure(nodes: Nodes, cloth: ClothElements, links: LinkEl
     tri: cloth.tri,
     shape,
     area,
+    layers: cloth.layers ?? new Float64Array(m).fill(1),
     law: cloth.law,
     laws: cloth.laws,
     ...links,

@@ -9,7 +9,7 @@ import type { Allowances } from "../../../src/core/records/job.ts";
 import { ringDistance, ringHolds } from "../../../src/core/surface/ring.ts";
 import { panelFrom } from "../panelFrom.ts";
 
-const ALLOW: Allowances = { seam: 40, seamOn: "both", pocket: 60, pocketStrip: false, clamp: 50, hem: 30 };
+const ALLOW: Allowances = { seam: 40, seamOn: "both", pocket: 60, pocketStrip: false, cover: 0, clamp: 50, hem: 30 };
 const N = 90;
 
 /** Two panels either side of a wavy seam of 9 m; seam vertices 0…N on the surface, uneven steps. */

@@ -10,7 +10,7 @@ import type { Allowances } from "../../../src/core/records/job.ts";
 import { ringDistance, ringHolds } from "../../../src/core/surface/ring.ts";
 import { panelFrom } from "../panelFrom.ts";
 
-const ALLOW: Allowances = { seam: 40, seamOn: "both", pocket: 60, pocketStrip: false, clamp: 50, hem: 30 };
+const ALLOW: Allowances = { seam: 40, seamOn: "both", pocket: 60, pocketStrip: false, cover: 0, clamp: 50, hem: 30 };
 const NOWHERE: PanelPlace = { seams: [], anchors: [] };
 const N = 80;
 

@@ -8,7 +8,7 @@ import type { Allowances } from "../../../src/core/records/job.ts";
 import { ringBox, ringHolds } from "../../../src/core/surface/ring.ts";
 import { type Part, panelFrom } from "../panelFrom.ts";
 
-const ALLOW: Allowances = { seam: 40, seamOn: "both", pocket: 60, pocketStrip: false, clamp: 0, hem: 30 };
+const ALLOW: Allowances = { seam: 40, seamOn: "both", pocket: 60, pocketStrip: false, cover: 0, clamp: 0, hem: 30 };
 const other = await import("clipper2-ts");
 
 /** Corners of a text, in hundredths of a millimetre. */

@@ -5,7 +5,7 @@ import { outlinePanel } from "../../../src/core/panels/outline/outlinePanel.ts";
 import type { Allowances } from "../../../src/core/records/job.ts";
 import { type Part, panelFrom } from "../panelFrom.ts";
 
-const ALLOW: Allowances = { seam: 40, seamOn: "both", pocket: 60, pocketStrip: false, clamp: 50, hem: 30 };
+const ALLOW: Allowances = { seam: 40, seamOn: "both", pocket: 60, pocketStrip: false, cover: 0, clamp: 50, hem: 30 };
 const cutOf = (parts: Part[], from: number[], to: number[]) => {
   const panel = panelFrom(parts);
   return outlinePanel({ ...panel, axis: { from, to, turn: 0 } }, { seams: [], anchors: [] }, ALLOW).output;

@@ -8,7 +8,7 @@ import type { Allowances } from "../../../src/core/records/job.ts";
 import { isSimpleRing, ringArea, ringDistance, ringHolds } from "../../../src/core/surface/ring.ts";
 import { type Part, panelFrom } from "../panelFrom.ts";
 
-const ALLOW: Allowances = { seam: 40, seamOn: "both", pocket: 100, pocketStrip: false, clamp: 50, hem: 40 };
+const ALLOW: Allowances = { seam: 40, seamOn: "both", pocket: 100, pocketStrip: false, cover: 0, clamp: 50, hem: 40 };
 const NOWHERE: PanelPlace = { seams: [], anchors: [] };
 
 /** Greatest way, mm, by which a flap folded over its straight net line sticks out of the cut outline. */

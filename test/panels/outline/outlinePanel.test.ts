@@ -20,7 +20,7 @@ import {
 import { simplifyRing } from "../../../src/core/surface/simplifyRing.ts";
 import { type Part, panelFrom } from "../panelFrom.ts";
 
-const ALLOW: Allowances = { seam: 40, seamOn: "both", pocket: 60, pocketStrip: false, clamp: 50, hem: 30 };
+const ALLOW: Allowances = { seam: 40, seamOn: "both", pocket: 60, pocketStrip: false, cover: 0, clamp: 50, hem: 30 };
 
 const NOWHERE: PanelPlace = { seams: [], anchors: [] };
 const close = (ring: Ring) => Array.from({ length: ring.length / 2 }, (_, i) => [ring[2 * i], ring[2 * i + 1]]);

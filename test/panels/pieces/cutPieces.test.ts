@@ -21,6 +21,8 @@ const form = {
   anchors: [{ id: "A1", vertex: 0, isolated: true }],
 } as unknown as FoundForm;
 
+const roof = { form, seams: [] };
+
 function cut(parts: Part[], job: Job, id = "P1"): CutPanel {
   return outlinePanel(panelFrom(parts, id), { seams: [], anchors: [] }, job.allowances).output;
 }
@@ -34,14 +36,14 @@ const OBLONG: Part[] = [
 describe("pocket strips", () => {
   it("are none where the pocket is folded from the panel", () => {
     const job = jobOf({});
-    const { output } = buildPieces([cut(OBLONG, job)], form, job);
+    const { output } = buildPieces([cut(OBLONG, job)], roof, job);
     expect(output.map((p) => p.kind)).toEqual(["test"]);
   });
 
   it("are twice the pocket wide, together as long as the edge, no longer than 3 m", () => {
     const job = jobOf({ pocketStrip: true });
     const panels = [cut(OBLONG, job), { ...cut(OBLONG, job, "P2"), batch: "B" }];
-    const strips = buildPieces(panels, form, job).output.filter((p) => p.kind === "strip");
+    const strips = buildPieces(panels, roof, job).output.filter((p) => p.kind === "strip");
     expect(strips.map((p) => p.id)).toEqual([1, 2, 3, 4, 5].map((k) => `E1-strip-${k}`));
     for (const p of strips) {
       expect(ringBox(p.cut)).toEqual({ x0: 0, y0: 0, x1: 14_000 / 5, y1: 160 });
@@ -67,7 +69,7 @@ describe("pocket strips", () => {
       ],
       job,
     );
-    const strips = buildPieces([panel], form, job).output.filter((p) => p.kind === "strip");
+    const strips = buildPieces([panel], roof, job).output.filter((p) => p.kind === "strip");
     // 80 mm times 1 rad: 80 mm in steps of 10.
     expect(strips.length).toBe(8);
     expect(ringBox(strips[0].cut).x1).toBeCloseTo(panel.sides[0].lengthFlat / 8, 6);
@@ -79,16 +81,45 @@ describe("pocket strips", () => {
       (p): Part =>
         p.id === "E1" ? { ...p, kind: "clamped" } : p.id === "E2" ? { ...p, kind: "cable", points: [[7000, 1800]] } : p,
     );
-    const { output, findings } = buildPieces([cut(short, job)], form, job);
+    const { output, findings } = buildPieces([cut(short, job)], roof, job);
     expect(output.filter((p) => p.kind === "strip").map((p) => [p.for, ringBox(p.cut).x1])).toEqual([["E2", 200]]);
     expect(findings.find((f) => f.code === "piece-strip")?.text).toContain("too short or too tightly bent to fold");
+  });
+});
+
+describe("cover strips", () => {
+  const seams = [
+    { id: "S1", cable: "ridge-1" },
+    { id: "S2", cable: null },
+  ];
+  const two: Part[] = [
+    { kind: "clamped", id: "E1", points: [[0, 0]] },
+    { kind: "seam", id: "S2", points: [[7000, 0]] },
+    { kind: "clamped", id: "E2", points: [[7000, 2000]] },
+    { kind: "seam", id: "S1", points: [[0, 2000]] },
+  ];
+  it("are laid over the cables between panels where the job asks, as long as the joint, no longer than 3 m", () => {
+    const job = jobOf({ cover: 240 });
+    const { output, findings } = buildPieces([cut(two, job), cut(two, job, "P2")], { form, seams }, job);
+    const covers = output.filter((p) => p.kind === "cover");
+    expect(covers.map((p) => [p.id, p.for])).toEqual([["ridge-1-cover-1", "ridge-1"]]);
+    expect(ringBox(covers[0].cut)).toEqual({ x0: 0, y0: 0, x1: 2000, y1: 240 });
+    expect(findings.find((f) => f.code === "piece-cover")?.text).toContain("2000 mm over it, 1 part of 2000 x 240 mm");
+  });
+  it("are none by default, and none without an inner cable, which is said", () => {
+    const none = jobOf({});
+    expect(buildPieces([cut(two, none)], { form, seams }, none).output.some((p) => p.kind === "cover")).toBe(false);
+    const job = jobOf({ cover: 240 });
+    const { output, findings } = buildPieces([cut(two, job)], roof, job);
+    expect(output.some((p) => p.kind === "cover")).toBe(false);
+    expect(findings.find((f) => f.code === "piece-cover")?.text).toContain("no ridge, valley or belt");
   });
 });
 
 describe("corner patches", () => {
   it("cover the panel's corner from the set-back to 400 mm further, nothing where no set-back is asked", () => {
     const job = jobOf({}, [{ name: "A1", cutBack: 200 }]);
-    const [patch] = buildPieces([cut(OBLONG, job)], form, job).output.filter((p) => p.kind === "patch");
+    const [patch] = buildPieces([cut(OBLONG, job)], roof, job).output.filter((p) => p.kind === "patch");
     expect([patch.id, patch.for]).toEqual(["A1-patch-P1", "A1"]);
     // A quarter of a ring, its circles drawn with 48 sides.
     const sides = (48 / 2) * Math.sin((2 * Math.PI) / 48);
@@ -97,7 +128,7 @@ describe("corner patches", () => {
     expect(ringHolds(patch.cut, 300, 300)).toBe(true);
     expect(ringHolds(patch.cut, 100, 100)).toBe(false);
     const none = jobOf({}, [{ name: "A1" }]);
-    expect(buildPieces([cut(OBLONG, none)], form, none).output.some((p) => p.kind === "patch")).toBe(false);
+    expect(buildPieces([cut(OBLONG, none)], roof, none).output.some((p) => p.kind === "patch")).toBe(false);
   });
 });
 
@@ -111,7 +142,7 @@ describe("weld tests", () => {
       { ...p, id: "P3", batch: "B1" },
       { ...p, id: "P4", batch: "B2" },
     ];
-    const { output } = buildPieces(panels, form, job);
+    const { output } = buildPieces(panels, roof, job);
     expect(output.filter((q) => q.kind === "test").map((q) => [q.for, q.batch])).toEqual([
       [p.fabric, null],
       ["B1", "B1"],
@@ -126,6 +157,6 @@ describe("weld tests", () => {
       OBLONG.map((p) => (p.kind === "seam" ? { ...p, kind: "clamped" as const } : p)),
       job,
     );
-    expect(buildPieces([whole], form, job)).toEqual({ output: [], findings: [], checks: [] });
+    expect(buildPieces([whole], roof, job)).toEqual({ output: [], findings: [], checks: [] });
   });
 });

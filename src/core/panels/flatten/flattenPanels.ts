@@ -4,6 +4,7 @@ import { PlanError, type StationContext, type StationResult } from "../../proble
 import type { FlatPanel } from "../../records/flatPanel.ts";
 import type { StripLayout } from "../../records/stripLayout.ts";
 import { buildStiffness, type ClothStiffness } from "../../structure/cloth.ts";
+import { listLapLines, measureLapShares } from "../../structure/lapShares.ts";
 import { measureAreas } from "../../surface/measures.ts";
 import { checkBeyondFade } from "../proof/beyondFade.ts";
 import { checkFlatPanels, listBrokenChecks, listPanelFindings } from "../proof/checkFlatPanels.ts";
@@ -85,10 +86,15 @@ function flattenStrips(
       const own = x.subarray(2 * d.first, 2 * d.first + 2 * d.strip.surfaceVertex.length);
       const target = round === rounds - 1 ? d.target : { ...d.target, decompensated: [] };
       const field = buildTargetField(d.strip, target, own);
-      problem.target.set(field.strain, 3 * d.firstTriangle);
       const area = measureAreas({ xyz: d.strip.erected, tri: d.strip.tri });
+      // Two layers carry the intended force at half the strain, and are twice as stiff.
+      const laps = lapOf(d, layout, options);
+      problem.target.set(
+        field.strain.map((e, i) => e / (1 + laps[Math.floor(i / 3)])),
+        3 * d.firstTriangle,
+      );
       problem.weight.set(
-        field.share.map((w, t) => w * area[t]),
+        field.share.map((w, t) => w * area[t] * (1 + laps[t])),
         d.firstTriangle,
       );
     }
@@ -106,6 +112,12 @@ function flattenStrips(
     converged: result.converged,
     gap: result.gap,
   };
+}
+
+/** Share of each triangle under a second layer of cloth, none where the job counts one. @shape nT */
+function lapOf({ strip }: PanelDraft, layout: StripLayout, { lap }: FlattenOptions): Float64Array<ArrayBuffer> {
+  const surface = { xyz: strip.erected, tri: strip.tri };
+  return measureLapShares(surface, lap ? listLapLines(layout, strip.id, strip.sides, lap) : []);
 }
 
 /** The panel record of a draft: cut cloth in mm, its lowest point on both axes at 0. */

@@ -25,6 +25,8 @@ export interface FlattenOptions {
   decompensation: { clamped: number | null; ring: number | null; cable: number | null };
   /** Ids of clamped edges that close on themselves. */
   rings: readonly string[];
+  /** The overlap (m) of seams whose second layer carries too; left out or null: one layer everywhere. */
+  lap?: { overlap: number; on: "both" | "one" } | null;
 }
 
 /** What one panel is meant to carry. */

@@ -3,6 +3,7 @@
 import { type Finding, PlanError } from "../../problem.ts";
 import type { AdjusterDecision, Turnbuckle } from "../../records/rig.ts";
 import { buildStiffness } from "../../structure/cloth.ts";
+import { listLapLines, measureLapShares } from "../../structure/lapShares.ts";
 import { buildStructure, type Structure } from "../../structure/structure.ts";
 import type { Vec3 } from "../../surface/surface.ts";
 import { traceCable } from "../cables/traceCable.ts";
@@ -69,7 +70,10 @@ function gatherCloth(input: RigInput) {
   const flat: number[] = [];
   const panelOf: string[] = [];
   const cut: [number, number][][] = [];
+  const layers: number[] = [];
   for (const p of input.panels) {
+    const lines = input.lap ? listLapLines(input.layout, p.id, p.sides, input.lap) : [];
+    for (const share of measureLapShares({ xyz: p.erected, tri: p.tri }, lines)) layers.push(1 + share);
     const scale = [(1 + p.permanent.warp) / 1000, (1 + p.permanent.weft) / 1000];
     for (let h = 0; h < p.tri.length; h++) {
       const v = p.tri[h];
@@ -87,6 +91,7 @@ function gatherCloth(input: RigInput) {
     flat: new Float64Array(flat),
     law: new Uint16Array(tri.length / 3),
     laws: [buildStiffness(input.fabric)],
+    layers: new Float64Array(layers),
   };
   return { cloth, panelOf, cut };
 }

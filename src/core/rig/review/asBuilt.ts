@@ -50,7 +50,8 @@ export function measureAsBuilt(rig: Rig, state: Places, input: Pick<RigInput, "f
     panel.area += a;
     WAYS.forEach((way, k) => {
       const f = figures[k];
-      const stress = room.stress[k];
+      // What both layers carry together where seams lap.
+      const stress = s.layers[t] * room.stress[k];
       f.min = Math.min(f.min, stress);
       f.max = Math.max(f.max, stress);
       f.mean += a * stress;

@@ -134,6 +134,14 @@ function checkRows(job: FactsJob, measures: PanelMeasures): string[][] {
 }
 
 /** Words above the figure, each a paragraph. */
+/** A compensation in words: what it makes of a metre, and how much of it does not spring back. */
+function tellTaken(panel: FactsPanel, way: "warp" | "weft"): string {
+  const e = panel.compensation[way];
+  const permanent = panel.permanent[way];
+  const kept = Math.abs(permanent) > 1e-9 ? `, ${decimal(100 * permanent, 2)} % of it permanent` : "";
+  return `${way} ${decimal(100 * e, 2)} %: 1000 mm cut ${decimal(1000 / (1 + e), 2)} mm${kept}`;
+}
+
 function headTexts(facts: Facts, panel: FactsPanel, measures: PanelMeasures, scale: number): string[] {
   const { flat, span, area, mass: weights } = paperUnits(facts.job);
   const place = placesOf(facts).get(panel.id);
@@ -143,7 +151,6 @@ function headTexts(facts: Facts, panel: FactsPanel, measures: PanelMeasures, sca
   const lie = place
     ? `roll ${place.roll} from ${flat.of(place.x + start)} to ${flat.whole(place.x + end)}, turned ${place.rotation}°`
     : "not yet on a roll";
-  const percent = (e: number) => `${decimal(100 * e, 2)} %`;
   const back = panel.decompensated.map(
     (d) => `along side ${d.side + 1} (${panel.sides[d.side]?.id ?? "?"}), fading over ${span.whole(d.fade)}`,
   );
@@ -154,7 +161,7 @@ function headTexts(facts: Facts, panel: FactsPanel, measures: PanelMeasures, sca
   return [
     `Scale 1:${scale}, outer face up, warp along the arrow. Fabric ${panel.fabric}, batch ${panel.batch ?? "not given"}, ${lie}. Cut area ${area.whole(panel.area.cut)}${weight}.`,
     `Thick: cut. Dashed: net. Ticks: match marks. Side n begins at Cn. Edge, chord: along and straight between ringed cut corners.${stations}`,
-    `The flat is compensated (warp ${percent(panel.compensation.warp)}, weft ${percent(panel.compensation.weft)}${back.length > 0 ? `; taken back ${back.join("; ")}` : ""}): do not compensate again.`,
+    `The flat is compensated (${(["warp", "weft"] as const).map((way) => tellTaken(panel, way)).join(", ")}${back.length > 0 ? `; taken back ${back.join("; ")}` : ""}): do not compensate again.`,
     ...(codes.length > 0 ? [`See the findings sheets for this panel: ${codes.join(", ")}.`] : []),
   ];
 }
