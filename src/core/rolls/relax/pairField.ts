@@ -29,8 +29,6 @@ export interface PairField {
   planes: Float64Array<ArrayBuffer>;
   /** Distance to free cloth at the cells' corners less half a cell's diagonal; empty where one sum says it all. */
   deep: Float64Array<ArrayBuffer>;
-  /** Half-plane that was nearest at the last look-up, −1 where the shapes were apart or free cloth is far. */
-  nearest: number;
 }
 
 function support(ring: PlaneRing, nx: number, ny: number): number {
@@ -241,13 +239,11 @@ export function buildPairField(a: PlaneRing[], b: PlaneRing[], gap: number, most
     list: Int32Array.from(list),
     planes: Float64Array.from(sums.planes),
     deep,
-    nearest: -1,
   };
 }
 
 /** Depth of overlap at a shift of the first shape against the second. */
 export function fieldDepth(f: PairField, dx: number, dy: number): number {
-  f.nearest = -1;
   if (dx <= f.x0 || dx >= f.x1 || dy <= f.y0 || dy >= f.y1) return 0;
   const n = f.cells;
   const u = (dx - f.x0) * f.perX;
@@ -263,21 +259,16 @@ export function fieldDepth(f: PairField, dx: number, dy: number): number {
   for (let k = first; k < end; ) {
     const last = k + list[k];
     let most = -Infinity;
-    let at = -1;
     for (k++; k <= last; k++) {
       const e = list[k];
       const d = planes[e] * dx + planes[e + 1] * dy - planes[e + 2];
       if (d > most) {
         most = d;
-        at = e;
         if (d >= 0) break;
       }
     }
     k = last + 1;
-    if (-most > deepest) {
-      deepest = -most;
-      f.nearest = at;
-    }
+    if (-most > deepest) deepest = -most;
   }
   // Where a list says apart, so do the corners: their mean is never more than the distance to free cloth.
   if (f.deep.length === 0 || (deepest === 0 && end > first)) return deepest;
@@ -288,9 +279,5 @@ export function fieldDepth(f: PairField, dx: number, dy: number): number {
   const low = g[o] + s * (g[o + 1] - g[o]);
   const high = g[o + n + 1] + s * (g[o + n + 2] - g[o + n + 1]);
   const deep = low + t * (high - low);
-  if (deep > deepest) {
-    deepest = deep;
-    f.nearest = -1;
-  }
-  return deepest;
+  return Math.max(deep, deepest);
 }

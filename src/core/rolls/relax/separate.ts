@@ -1,9 +1,8 @@
 // Takes the overlap out of a strip: pieces that overlap are moved one by one to cheaper places, pairs that stay in conflict
-// grow dearer; small overlaps are pushed apart all together. Does not: shorten the strip (shortenStrip.ts).
+// grow dearer. Does not: shorten the strip (shortenStrip.ts).
 // Source: guided local search (Egeblad et al. 2007; S. Umetani et al., ITOR 16, 2009); settings own, by trial.
 import { drawInteger, type Random } from "../../numeric/random.ts";
 import { movePiece } from "./movePiece.ts";
-import { pushApart } from "./pushApart.ts";
 import { copyState, measureOverlap, type Strip, type StripState, setState, visitOverlaps } from "./strip.ts";
 
 /** How long to try. */
@@ -14,17 +13,14 @@ export interface Patience {
   strikes: number;
 }
 
-/** Weights of the worst pair grow by this, of the least by the lower; pairs apart sink back towards 1. */
-const GROW = 1.6;
+/** Weights of the worst pair grow by this, of the least by the lower; pairs apart sink back towards their least. */
+const GROW = 2;
 const GROW_LEAST = 1.2;
 const SINK = 0.95;
-/** Pushing all apart is tried once the overlap left is below this share of a piece's size. */
-const PUSH_BELOW = 0.05;
-const PUSH_ROUNDS = 40;
 /** A gain below this share does not count as one. */
 const GAIN = 0.02;
 
-/** Weights of pairs in conflict grow, the others sink back to 1. Returns the overlap. */
+/** Weights of pairs in conflict grow, the others sink back. Returns the overlap. */
 function reweighInPlace(strip: Strip, depth: Float64Array): number {
   const { n, weight } = strip;
   let most = 0;
@@ -40,7 +36,7 @@ function reweighInPlace(strip: Strip, depth: Float64Array): number {
       const k = i * n + j;
       const d = depth[k];
       const by = GROW_LEAST + (GROW - GROW_LEAST) * (d / most);
-      const w = d > 0 ? weight[k] * by : Math.max(1, weight[k] * SINK);
+      const w = d > 0 ? weight[k] * by : Math.max(strip.least[k], weight[k] * SINK);
       weight[k] = w;
       weight[j * n + i] = w;
     }
@@ -63,22 +59,10 @@ function drawOrder(strip: Strip, random: Random): number[] {
   return order;
 }
 
-/** Moves each overlapping piece once, then pushes where little is left. Returns the overlap. */
-function passInPlace(strip: Strip, least: number, depth: Float64Array, random: Random): number {
-  for (const i of drawOrder(strip, random)) movePiece(strip, i, random);
-  const total = reweighInPlace(strip, depth);
-  const { none, size } = strip.task;
-  if (total <= none || total > PUSH_BELOW * size || total > 1.5 * least) return total;
-  const kept = copyState(strip);
-  if (pushApart(strip, PUSH_ROUNDS)) return measureOverlap(strip);
-  setState(strip, kept);
-  return total;
-}
-
 /** True once nothing overlaps; else the strip is left at the least overlap found. */
 export function separate(strip: Strip, patience: Patience, random: Random, stop: () => boolean): boolean {
   const { none } = strip.task;
-  strip.weight.fill(1);
+  strip.weight.set(strip.least);
   const depth = new Float64Array(strip.n ** 2);
   let best: StripState = copyState(strip);
   let least = measureOverlap(strip);
@@ -89,7 +73,8 @@ export function separate(strip: Strip, patience: Patience, random: Random, stop:
         setState(strip, best);
         return false;
       }
-      const total = passInPlace(strip, least, depth, random);
+      for (const i of drawOrder(strip, random)) movePiece(strip, i, random);
+      const total = reweighInPlace(strip, depth);
       if (total >= least) continue;
       if (total < (1 - GAIN) * least) idle = -1;
       least = total;

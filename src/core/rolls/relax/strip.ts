@@ -44,8 +44,12 @@ export interface Strip {
   /** Far ends of the pieces' boxes. */
   x1: Float64Array<ArrayBuffer>;
   y1: Float64Array<ArrayBuffer>;
-  /** Weight of each pair, both ways. */
+  /** Weight of each pair, both ways, and its least: pairs of large pieces weigh more, so that small ones give way. */
   weight: Float64Array<ArrayBuffer>;
+  least: Float64Array<ArrayBuffer>;
+  /** The pieces a price is made of: the first `nearCount`. */
+  near: Int32Array<ArrayBuffer>;
+  nearCount: number;
   fields: (PairField | null)[];
   /** Places priced so far. */
   priced: number;
@@ -60,7 +64,7 @@ export interface StripState {
 }
 
 /** Cells of a field times shapes: fields of many shapes are coarser, since each is looked up less often. */
-const CELLS = 800;
+const CELLS = 1200;
 /** Fields already built, by the task they belong to: only time depends on it. */
 const BUILT = new WeakMap<StripTask, (PairField | null)[]>();
 
@@ -70,6 +74,13 @@ function fieldsFor(task: StripTask): (PairField | null)[] {
   const fields = new Array<PairField | null>(task.shapes.length ** 2).fill(null);
   BUILT.set(task, fields);
   return fields;
+}
+
+/** Least weight of each pair: the mean size of its boxes, of a mean piece 1. */
+function leastWeights(task: StripTask): Float64Array<ArrayBuffer> {
+  const n = task.choices.length;
+  const sizes = task.choices.map(([s]) => Math.sqrt(task.shapes[s].length * task.shapes[s].height) / task.size);
+  return Float64Array.from({ length: n * n }, (_, k) => Math.sqrt(sizes[Math.floor(k / n)] * sizes[k % n]));
 }
 
 /** A strip with its pieces where a state has them. */
@@ -84,7 +95,10 @@ export function openStrip(task: StripTask, state: StripState): Strip {
     shape: new Int32Array(n),
     x1: new Float64Array(n),
     y1: new Float64Array(n),
-    weight: new Float64Array(n * n).fill(1),
+    weight: leastWeights(task),
+    least: leastWeights(task),
+    near: new Int32Array(n),
+    nearCount: 0,
     fields: fieldsFor(task),
     priced: 0,
   };
@@ -120,7 +134,7 @@ export function fieldOf(strip: Strip, a: number, b: number): PairField {
   if (field === null) {
     const { shapes, gap, none } = strip.task;
     const apart = gap + shapes[a].slack + shapes[b].slack - none / 8;
-    const cells = Math.max(12, Math.min(32, Math.floor(CELLS / shapes.length)));
+    const cells = Math.max(12, Math.min(40, Math.floor(CELLS / shapes.length)));
     field = buildPairField(shapes[a].parts, shapes[b].parts, apart, cells);
     strip.fields[slot] = field;
   }
@@ -135,21 +149,42 @@ export function depthAgainst(strip: Strip, s: number, j: number, x: number, y: n
     : fieldDepth(fieldOf(strip, t, s), strip.x[j] - x, strip.y[j] - y);
 }
 
-/** Weighted price of piece i as shape s at x, y; given up once it passes the bound. */
+/** Takes all pieces but i into the prices to come. */
+export function gatherAll(strip: Strip, i: number): void {
+  let count = 0;
+  for (let j = 0; j < strip.n; j++) if (j !== i) strip.near[count++] = j;
+  strip.nearCount = count;
+}
+
+/** Takes into the prices to come what piece i as shape s can meet within `margin` of x, y. */
+export function gatherNear(strip: Strip, i: number, s: number, at: { x: number; y: number }, margin: number): void {
+  const { n, near, x, y, x1, y1 } = strip;
+  const { length, height } = strip.task.shapes[s];
+  const more = strip.task.reach + margin;
+  const [left, right] = [at.x - more, at.x + length + more];
+  const [low, high] = [at.y - more, at.y + height + more];
+  let count = 0;
+  for (let j = 0; j < n; j++)
+    if (x[j] < right && x1[j] > left && y[j] < high && y1[j] > low && j !== i) near[count++] = j;
+  strip.nearCount = count;
+}
+
+/** Weighted price of piece i as shape s at x, y against the pieces gathered; given up once it passes the bound. */
 // Six parameters: called a million times a second, a record of options would be built each time.
 export function pricePlace(strip: Strip, i: number, s: number, x: number, y: number, bound: number): number {
-  const { n, x: px, y: py, x1, y1, weight } = strip;
+  const { near, nearCount, x: px, y: py, x1, y1, weight } = strip;
   const { reach } = strip.task;
   const shape = strip.task.shapes[s];
   const left = x - reach;
   const right = x + shape.length + reach;
   const low = y - reach;
   const high = y + shape.height + reach;
-  const row = i * n;
+  const row = i * strip.n;
   let price = 0;
   strip.priced++;
-  for (let j = 0; j < n; j++) {
-    if (px[j] >= right || x1[j] <= left || py[j] >= high || y1[j] <= low || j === i) continue;
+  for (let k = 0; k < nearCount; k++) {
+    const j = near[k];
+    if (px[j] >= right || x1[j] <= left || py[j] >= high || y1[j] <= low) continue;
     const d = depthAgainst(strip, s, j, x, y);
     if (d > 0) {
       price += weight[row + j] * d;
