@@ -1,7 +1,7 @@
-// Moves one piece of a strip to the cheapest place found: random places near and far in every rotation, the best few of them
+// Moves one piece of a strip to the cheapest place found: random places near, far and in touch with others, the best few of them
 // refined by coordinate descent. Does not: choose the piece. Source: own settings of common practice (packing.md, 6).
 import { drawInteger, type Random } from "../../numeric/random.ts";
-import { gatherAll, gatherNear, pricePlace, putPiece, type Strip } from "./strip.ts";
+import { fieldOf, gatherAll, gatherNear, pricePlace, putPiece, type Strip } from "./strip.ts";
 
 interface Place {
   s: number;
@@ -10,8 +10,8 @@ interface Place {
   price: number;
 }
 
-/** Random places tried near the piece and anywhere. */
-export const SAMPLES = { near: 12, far: 24, keep: 3 };
+/** Random places tried near the piece, anywhere, and in touch with another piece. */
+export const SAMPLES = { near: 12, far: 12, touch: 24, keep: 3 };
 /** Places nearer than this share of the piece are one. */
 const SAME = 0.1;
 /** Steps of the descent, shares of the piece's lesser extent: of each kept place from, to; then of the best down to. */
@@ -84,6 +84,23 @@ function tryPlace(strip: Strip, i: number, s: number, at: { x: number; y: number
   if (price < bound) keepPlace(strip, top, { s, x, y, price });
 }
 
+/** A place at which shape s touches another piece, often at a corner; null where it does not lie on the strip. */
+function touchingPlace(strip: Strip, i: number, s: number, random: Random): { x: number; y: number } | null {
+  const j = drawInteger(random, strip.n - 1);
+  const other = j < i ? j : j + 1;
+  const t = strip.shape[other];
+  const { sides } = s <= t ? fieldOf(strip, s, t) : fieldOf(strip, t, s);
+  if (sides.length === 0) return null;
+  const k = 4 * drawInteger(random, sides.length / 4);
+  const share = Math.max(0, 2 * random() - 1);
+  const sign = s <= t ? 1 : -1;
+  const x = strip.x[other] + sign * (sides[k] + share * (sides[k + 2] - sides[k]));
+  const y = strip.y[other] + sign * (sides[k + 1] + share * (sides[k + 3] - sides[k + 1]));
+  const { shapes, start, width } = strip.task;
+  const inside = x >= start && x + shapes[s].length <= strip.length && y >= 0 && y + shapes[s].height <= width;
+  return inside ? { x, y } : null;
+}
+
 /** Whether shape s fits between the start and the end of the strip. */
 function fits(strip: Strip, s: number): boolean {
   const { shapes, start, width } = strip.task;
@@ -113,6 +130,11 @@ export function movePiece(strip: Strip, i: number, random: Random): boolean {
     const x = start + random() * (strip.length - shapes[s].length - start);
     const y = random() * (width - shapes[s].height);
     tryPlace(strip, i, s, { x, y }, top);
+  }
+  for (let k = 0; k < SAMPLES.touch && own.length > 0; k++) {
+    const s = own[drawInteger(random, own.length)];
+    const at = touchingPlace(strip, i, s, random);
+    if (at) tryPlace(strip, i, s, at, top);
   }
   const small = Math.min(old.length, old.height);
   let best = top[0];

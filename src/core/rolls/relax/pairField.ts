@@ -29,6 +29,8 @@ export interface PairField {
   planes: Float64Array<ArrayBuffer>;
   /** Distance to free cloth at the cells' corners less half a cell's diagonal; empty where one sum says it all. */
   deep: Float64Array<ArrayBuffer>;
+  /** Shifts at which the shapes touch: both ends of each side on free cloth, x, y. */
+  sides: Float64Array<ArrayBuffer>;
 }
 
 function support(ring: PlaneRing, nx: number, ny: number): number {
@@ -175,10 +177,15 @@ function sideDistance(sides: Float64Array, x: number, y: number): number {
 }
 
 /** At each corner of the cells the distance to free cloth less half a cell's diagonal. */
-function deepCorners(sums: Sums, n: number, stepX: number, stepY: number): Float64Array<ArrayBuffer> {
+function deepCorners(
+  sums: Sums,
+  sides: Float64Array,
+  n: number,
+  stepX: number,
+  stepY: number,
+): Float64Array<ArrayBuffer> {
   const each = new Float64Array(sums.planes.length / 3);
   const most = new Float64Array(sums.first.length - 1);
-  const sides = openSides(sums);
   const half = (Math.hypot(stepX, stepY) / 2) * (1 + 1e-9);
   const deep = new Float64Array((n + 1) ** 2);
   for (let j = 0; j <= n; j++)
@@ -213,7 +220,8 @@ export function buildPairField(a: PlaneRing[], b: PlaneRing[], gap: number, most
   const most = new Float64Array(sums.first.length - 1);
   const start = new Int32Array(n * n + 1);
   const list: number[] = [];
-  const deep = most.length > 1 ? deepCorners(sums, n, stepX, stepY) : new Float64Array(0);
+  const sides = openSides(sums);
+  const deep = most.length > 1 ? deepCorners(sums, sides, n, stepX, stepY) : new Float64Array(0);
   for (let cell = 0; cell < n * n; cell++) {
     measureAt(sums, x0 + ((cell % n) + 0.5) * stepX, y0 + (Math.floor(cell / n) + 0.5) * stepY, each, most);
     let least = Infinity;
@@ -239,6 +247,7 @@ export function buildPairField(a: PlaneRing[], b: PlaneRing[], gap: number, most
     list: Int32Array.from(list),
     planes: Float64Array.from(sums.planes),
     deep,
+    sides,
   };
 }
 
