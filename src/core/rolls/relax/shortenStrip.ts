@@ -47,7 +47,7 @@ export const SETTINGS = {
   fineMost: 0.0005,
   fineLeast: 0.00001,
   /** Share of the work after which the best is compacted. */
-  settle: 0.8,
+  settle: 0.5,
   /** Pieces that may be swapped, as a share of all. */
   large: 0.6,
 };
