@@ -2,7 +2,6 @@ import { expect, test } from "vitest";
 import { runRig } from "../../src/core/rig/runRig.ts";
 import type { Vec3 } from "../../src/core/surface/surface.ts";
 import { giveAdjusters, makeSmallSail, offset, planInput } from "../rig/madeRig.ts";
-import { makeSaddle } from "../templates/makeForms.ts";
 
 const made = makeSmallSail([6, 4]);
 const adjusters = giveAdjusters(made);
@@ -52,19 +51,6 @@ test("an anchor without an adjuster stands where it was surveyed, and the adjust
   const off = checks.filter((c) => !c.holds).map((c) => c.text);
   expect(off.filter((text) => !text.startsWith("assembled roof"))).toEqual([]);
   expect(off.join()).toMatch(/greatest way of a point/);
-});
-
-test("a clamped edge out of place is a caution: no turnbuckle takes it up", () => {
-  const saddle = makeSaddle([6, 4], [2, 3, 2, 3], [6, 4]);
-  const edges = { default: { kind: "clamped" as const } };
-  const { form } = planInput(saddle, { edges });
-  const anchor = form.anchors[0];
-  const v = 3 * anchor.vertex;
-  const at = offset(form.surface.xyz.subarray(v, v + 3), [1, 0, 0], 0.01);
-  const { findings } = planInput(saddle, { edges, survey: [{ anchor: anchor.id, at }] });
-  expect(findings.filter((f) => f.code === "survey-clamped").map((f) => [f.level, f.where])).toEqual([
-    ["caution", anchor.id],
-  ]);
 });
 
 test("an unknown anchor, and a place of another unit, are errors with the name", () => {

@@ -1,6 +1,7 @@
 // Small rigs for tests, taken through the chain as a plan takes them: form, seams, panels, rig input.
-import { runForm } from "../../src/core/form/runForm.ts";
+
 import { buildRigInput } from "../../src/core/plan/buildRigInput.ts";
+import { runBuiltForm } from "../../src/core/plan/builtForm.ts";
 import { fitPanels } from "../../src/core/plan/fitPanels.ts";
 import type { Finding } from "../../src/core/problem.ts";
 import type { FoundForm } from "../../src/core/records/foundForm.ts";
@@ -86,15 +87,17 @@ export function planInput(
 ): { job: Job; form: FoundForm; input: RigInput; findings: Finding[] } {
   const plain = makeJob({ edges: giveForces(made), ...changes });
   const job = { ...plain, rig: { ...plain.rig, ...rig } };
-  const form = runForm(placeForm(made), job, {}).output;
+  const built = runBuiltForm(placeForm(made), job, {});
+  const { form, shifts } = built.output;
   const fitted = fitPanels(form, job, { seams: {}, panels: {}, onStation: () => {} });
-  const built = buildRigInput(job, {
+  const settled = buildRigInput(job, {
     form,
+    shifts,
     layout: fitted.seams.output,
     panels: fitted.panels.output,
     rolls: ["R1"],
   });
-  return { job, form, input: built.output, findings: built.findings };
+  return { job, form, input: settled.output, findings: settled.findings };
 }
 
 /** A point seen from another, along a direction. */

@@ -202,6 +202,7 @@ export function makeJob(seams: Partial<SeamDecision> = {}): Job {
       defaultTurnbuckle: {} as never,
     },
     survey: [],
+    clothCut: false,
     papers: { date: "", drawnBy: "", checkedBy: "", sheet: "A4", units: "metric", site: null },
   };
 }

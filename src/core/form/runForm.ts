@@ -149,10 +149,12 @@ function settle(
   job: FormJob,
   sound: SoundSurface,
   form: { skeleton: Skeleton; edges: FormEdge[]; fixed: Uint8Array<ArrayBuffer>; torn: boolean },
+  built: Float64Array<ArrayBuffer> | null,
   context: StationContext,
 ): { surface: Surface; findings: Finding[]; checks: Check[] } {
-  const { surface, toSource } = sound;
-  if (!job.settle || form.torn) return { surface, findings: [], checks: [] };
+  const { toSource } = sound;
+  const surface = built ? { ...sound.surface, xyz: built } : sound.surface;
+  if (!(job.settle || built) || form.torn) return { surface, findings: [], checks: [] };
   const { fixed, edges } = form;
   const field: StressField = { ...job.prestress, direction: job.warp };
   const mean = (field.warp + field.weft) / 2;
@@ -190,11 +192,18 @@ function checkOutput(form: FoundForm): Check[] {
 
 /**
  * The found form of a mesh: repaired, named, balanced; every repair and default is a finding.
+ * @shape built: where the sound surface's vertices stand once its held edges are where they were surveyed, 3*nV; then it is settled
+ *   from there whatever the job says
  * @units metres, kN; reactions are the pull of the structure on what holds it
  * @throws PlanError mesh-flat, mesh-closed, mesh-three-way-edge, mesh-one-sided, anchor-unknown, anchor-double, edge-unknown,
  *   edge-kind, form-prestress, cancelled
  */
-export function runForm(source: MeshSource, job: FormJob, context: StationContext): StationResult<FoundForm> {
+export function runForm(
+  source: MeshSource,
+  job: FormJob,
+  context: StationContext,
+  built: Float64Array<ArrayBuffer> | null = null,
+): StationResult<FoundForm> {
   const step = (share: number, words: string) => {
     if (context.cancelled?.()) throw new PlanError("cancelled", "the form station was stopped", "form");
     context.onProgress?.(share, words);
@@ -222,7 +231,8 @@ export function runForm(source: MeshSource, job: FormJob, context: StationContex
   );
   const anchorage = nameAnchors(sound.surface, skeleton.anchorVertices, points.held, edges, job.anchors);
   step(0.5, job.settle ? "settling" : "balancing cloth and cables");
-  const settling = settle(job, sound, { skeleton, edges, fixed: anchorage.fixed, torn: tears.length > 0 }, context);
+  const found = { skeleton, edges, fixed: anchorage.fixed, torn: tears.length > 0 };
+  const settling = settle(job, sound, found, built, context);
   const { surface } = settling;
   step(0.9, "balancing cloth and cables");
   const membrane = measureMembraneForces(surface, stress.field);

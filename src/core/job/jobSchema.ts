@@ -69,6 +69,14 @@ const cable = z.strictObject({
   alpha: alpha.optional(),
 });
 
+/** How a cable or stay is made: what end fittings take off and carry, growth for good, spacing of clamps. */
+const cableMaking = {
+  terminals: z.tuple([mm(5000), mm(5000)]).optional(),
+  stretch: num(0, 0.03, { remedy: "a share of the length that stays for good: 0.25 % is 0.0025" }).optional(),
+  fitting: kN.optional(),
+  clamps: num(20, 1e5, { unit: "mm" }).optional(),
+};
+
 const edge = z.strictObject({
   kind: z.enum(["cable", "clamped", "free", "ridge", "valley", "belt"]).optional(),
   force: num(0, 1e5, {
@@ -80,6 +88,7 @@ const edge = z.strictObject({
     .optional(),
   cable: z.union([name, cable]).optional(),
   prestretched: z.boolean().optional(),
+  ...cableMaking,
 });
 
 const fabric = z.strictObject({
@@ -167,6 +176,8 @@ const turnbuckle = z.strictObject({
   shortest: mmAbove(10_000),
   longest: mmAbove(10_000),
   capacity: kN.optional(),
+  ends: z.enum(["both", "single"]).optional(),
+  engagement: mm(1000).optional(),
 });
 const rig = z.strictObject({
   adjusters: z
@@ -178,6 +189,8 @@ const rig = z.strictObject({
         end: z.union([name, z.literal(0), z.literal(1)]).optional(),
         turnbuckle: z.union([name, turnbuckle]).optional(),
         EA: num(0, 1e8, { unit: "kN", above: true }).optional(),
+        fitting: kN.optional(),
+        anchorCapacity: kN.optional(),
       }),
     )
     .optional(),
@@ -201,6 +214,7 @@ const rig = z.strictObject({
         EA: num(0, 1e8, { unit: "kN", above: true }).optional(),
         force: num(0, 1e5, { unit: "kN" }).nullable().optional(),
         minBreakingForce: kN.optional(),
+        ...cableMaking,
       }),
     )
     .optional(),
@@ -224,6 +238,11 @@ const proof = z.strictObject({
   force: share(1),
   slack: share(1),
 });
+
+const survey = z.union([
+  z.strictObject({ anchor: name, at: point }),
+  z.strictObject({ edge: name, along: num(0, 1, { remedy: "a share of the edge's length" }), at: point }),
+]);
 
 const papers = z.strictObject({
   date: line(40).optional(),
@@ -278,7 +297,8 @@ export const jobSchema = z.strictObject({
   rolls: z.array(roll).min(1).max(10_000).optional(),
   nest: nest.optional(),
   rig: rig.optional(),
-  survey: z.array(z.strictObject({ anchor: name, at: point })).optional(),
+  survey: z.array(survey).optional(),
+  clothCut: z.boolean().optional(),
   proof: proof.optional(),
   papers: papers.optional(),
 });

@@ -11,7 +11,7 @@ import { type JobFile, jobSchema } from "./jobSchema.ts";
 import { migrateJob } from "./jobVersions.ts";
 import { noteKeysWithoutEffect } from "./keysWithoutEffect.ts";
 import { checkUsableWidth, resolveCable, resolveFabric } from "./resolveEntries.ts";
-import { resolveRig } from "./resolveRig.ts";
+import { resolveMaking, resolveRig } from "./resolveRig.ts";
 
 /** A job as read, where its mesh is, and what was taken for granted. */
 export interface ReadJob {
@@ -81,11 +81,13 @@ function resolveJob(file: JobFile, catalogues: Catalogues, ledger: DefaultLedger
   const edges: Job["edges"] = Object.create(null);
   for (const [name, e] of Object.entries(file.edges ?? {})) {
     const { cable, kind, force, prestretched } = e;
+    const making = resolveMaking(e);
     edges[name] = {
       ...(kind === undefined ? {} : { kind }),
       ...(force === undefined ? {} : { force }),
       ...(prestretched === undefined ? {} : { prestretched }),
       ...(cable === undefined ? {} : { cable: resolveCable(cable, catalogues) }),
+      ...(making ? { making } : {}),
     };
   }
   if (file.compensation === undefined) {
@@ -123,6 +125,7 @@ function resolveJob(file: JobFile, catalogues: Catalogues, ledger: DefaultLedger
     rig: resolveRig(file, catalogues, ledger),
     survey: file.survey ?? [],
     proof: resolveProof(file, ledger),
+    clothCut: file.clothCut ?? false,
     papers: {
       date: papers.date ?? "",
       drawnBy: papers.drawnBy ?? "",

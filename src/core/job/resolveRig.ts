@@ -1,6 +1,6 @@
 // The rig's part of a job: catalogue entries looked up, defaults in place, and a list of what was not the job's own word.
 import type { RigJob } from "../records/job.ts";
-import type { Turnbuckle } from "../records/rig.ts";
+import type { CableMaking, Turnbuckle } from "../records/rig.ts";
 import type { Catalogues } from "./catalogues.ts";
 import { type DefaultLedger, noteDefault, takeDefault } from "./jobDefaults.ts";
 import type { JobFile } from "./jobSchema.ts";
@@ -23,14 +23,33 @@ type FileAdjuster = NonNullable<NonNullable<JobFile["rig"]>["adjusters"]>[number
 function resolveTurnbuckle(given: FileAdjuster["turnbuckle"], catalogues: Catalogues): Turnbuckle | null {
   if (given === undefined) return null;
   if (typeof given === "string") return readTurnbuckle(given, catalogues);
-  const { perTurn, shortest, longest, capacity, thread } = given;
-  const known = thread === undefined ? {} : { thread };
-  return { id: "job", perTurn, shortest, longest, capacity: capacity ?? null, ...known, status: {} };
+  const { perTurn, shortest, longest, capacity, ...rest } = given;
+  return { id: "job", perTurn, shortest, longest, capacity: capacity ?? null, ...leaveOut(rest), status: {} };
 }
 
 function readTurnbuckle(id: string, catalogues: Catalogues): Turnbuckle {
   const { perTurn, shortest, longest, capacity, thread, status } = catalogues.turnbuckles[id];
-  return { id, perTurn, shortest, longest, capacity, thread, status };
+  // at its longest a catalogue body holds one diameter of thread at each end: that is how its longest is meant
+  const both = { ends: "both" as const, engagement: thread };
+  return { id, perTurn, shortest, longest, capacity, thread, ...both, status };
+}
+
+/** Keys that are not given are left out. */
+function leaveOut<T extends object>(record: T): { [K in keyof T]: Exclude<T[K], undefined> } {
+  return Object.fromEntries(Object.entries(record).filter(([, v]) => v !== undefined)) as {
+    [K in keyof T]: Exclude<T[K], undefined>;
+  };
+}
+
+/** How a cable or stay is made, or null where the job says nothing of it. */
+export function resolveMaking(
+  given: {
+    [K in keyof CableMaking]?: CableMaking[K] | undefined;
+  },
+): CableMaking | null {
+  const { terminals, stretch, fitting, clamps } = given;
+  const making: CableMaking = leaveOut({ terminals, stretch, fitting, clamps });
+  return Object.keys(making).length > 0 ? making : null;
 }
 
 /** The rig as the job gives it; names and places are checked against the form later. */
@@ -57,6 +76,7 @@ export function resolveRig(file: JobFile, catalogues: Catalogues, ledger: Defaul
         end: a.end === undefined ? null : a.end === 0 ? "first" : a.end === 1 ? "last" : a.end,
         turnbuckle: resolveTurnbuckle(a.turnbuckle, catalogues),
         EA: a.EA ?? null,
+        ...leaveOut({ fitting: a.fitting, anchorCapacity: a.anchorCapacity }),
       })) ?? null,
     struts: (rig.struts ?? []).map((s) => ({ name: s.name, from: s.from, to: s.to, EA: s.EA ?? null })),
     stays: (rig.stays ?? []).map((s) => ({
@@ -66,6 +86,7 @@ export function resolveRig(file: JobFile, catalogues: Catalogues, ledger: Defaul
       EA: s.EA ?? null,
       force: s.force ?? null,
       minBreakingForce: s.minBreakingForce ?? null,
+      ...leaveOut({ making: resolveMaking(s) ?? undefined }),
     })),
     stages: rig.stages ?? [...d.stages],
     temperature: takeDefault<number>(ledger, temperature, d.temperature, "rig.temperature", `${d.temperature} degC`),

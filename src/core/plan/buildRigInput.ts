@@ -5,7 +5,7 @@ import { type Finding, PlanError, type StationResult } from "../problem.ts";
 import type { FlatPanel } from "../records/flatPanel.ts";
 import type { FormEdge, FoundForm } from "../records/foundForm.ts";
 import type { Job } from "../records/job.ts";
-import type { AdjusterDecision, CableType } from "../records/rig.ts";
+import type { AdjusterDecision } from "../records/rig.ts";
 import type { StripLayout } from "../records/stripLayout.ts";
 import type { RigInput } from "../rig/rigInput.ts";
 import type { Vec3 } from "../surface/surface.ts";
@@ -37,10 +37,10 @@ function noteDefault(notes: Notes, where: string, text: string, remedy: string):
 }
 
 /** Cable of one edge; EA and breaking force must be the job's own numbers before a schedule may be issued. */
-function settleCable(edge: FormEdge, job: Job, notes: Notes): { type: CableType; prestretched: boolean } {
+function settleCable(edge: FormEdge, job: Job, notes: Notes): RigInput["cables"][string] {
   const decision = { ...job.edges.default, ...job.edges[edge.id] };
   const fallback = job.rig.defaultCable;
-  const prestretched = decision.prestretched ?? true;
+  const made = { prestretched: decision.prestretched ?? true, ...(decision.making ? { making: decision.making } : {}) };
   const given = decision.cable;
   const alpha = given?.alpha ?? fallback.alpha ?? 12e-6;
   if (!given) {
@@ -50,7 +50,7 @@ function settleCable(edge: FormEdge, job: Job, notes: Notes): { type: CableType;
       `${edge.id}: no cable is given; ${fallback.id} with EA ${fallback.EA} kN is computed with`,
       `write edges.${edge.id}.cable with its EA and breaking force`,
     );
-    return { type: { ...fallback, EA: fallback.EA ?? 1, alpha }, prestretched };
+    return { type: { ...fallback, EA: fallback.EA ?? 1, alpha }, ...made };
   }
   if (given.EA === null) {
     notes.defaults.push(`edges.${edge.id}.cable.EA`);
@@ -74,7 +74,7 @@ function settleCable(edge: FormEdge, job: Job, notes: Notes): { type: CableType;
     );
   }
   if (given.minBreakingForce === null) notes.defaults.push(`edges.${edge.id}.cable.minBreakingForce`);
-  return { type: { ...given, EA: given.EA ?? fallback.EA ?? 1, alpha, status: {} }, prestretched };
+  return { type: { ...given, EA: given.EA ?? fallback.EA ?? 1, alpha, status: {} }, ...made };
 }
 
 /** A name for an adjuster at an anchor that nothing else in the file has. */
@@ -169,6 +169,8 @@ function settleAdjusters(
       end: a.edge === null ? null : findEnd(form, job, a.edge, a.end, a.name),
       turnbuckle: a.turnbuckle ?? job.rig.defaultTurnbuckle,
       EA: a.EA ?? adjusterEA,
+      ...("fitting" in a && a.fitting !== undefined ? { fitting: a.fitting } : {}),
+      ...("anchorCapacity" in a && a.anchorCapacity !== undefined ? { anchorCapacity: a.anchorCapacity } : {}),
     };
   });
 }
@@ -191,7 +193,7 @@ function checkNamesFree(job: Job, taken: Set<string>): void {
  */
 export function buildRigInput(
   job: Job,
-  parts: { form: FoundForm; layout: StripLayout; panels: FlatPanel[]; rolls: string[] },
+  parts: { form: FoundForm; shifts?: RigInput["shifts"]; layout: StripLayout; panels: FlatPanel[]; rolls: string[] },
 ): StationResult<RigInput> {
   const { form, layout, panels } = parts;
   const notes: Notes = { findings: [], defaults: [...job.rig.defaults] };
@@ -204,8 +206,10 @@ export function buildRigInput(
   checkNamesFree(job, taken);
   const supports: Record<string, Vec3> = Object.create(null);
   for (const a of job.anchors) if (a.support) supports[a.name] = a.support;
+  const cutBacks: Record<string, number> = Object.create(null);
+  for (const a of job.anchors) if (a.cutBack !== undefined) cutBacks[a.name] = a.cutBack;
   const survey: Record<string, Vec3> = Object.create(null);
-  for (const s of job.survey) survey[s.anchor] = s.at;
+  for (const s of job.survey) if (s.anchor !== undefined) survey[s.anchor] = s.at;
   const cables: RigInput["cables"] = Object.create(null);
   for (const edge of form.edges) {
     if (edge.force === null) continue;
@@ -243,9 +247,11 @@ export function buildRigInput(
       fabric: job.fabric,
       cables,
       supports,
+      cutBacks,
       survey,
       lap: buildFlattenOptions(form, job).lap ?? null,
       proof: job.proof,
+      shifts: parts.shifts ?? {},
       rig: { adjusters, struts, stays, stages: whole, temperature, limit, readingError, defaults: notes.defaults },
     },
     findings: notes.findings,

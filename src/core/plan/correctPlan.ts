@@ -1,11 +1,11 @@
 // The chain as far as the rig, then the crew's readings held against it.
-import { runForm } from "../form/runForm.ts";
 import type { Finding, StationContext } from "../problem.ts";
 import type { Job, MeshSource } from "../records/job.ts";
 import type { Correction, Reading } from "../records/rig.ts";
 import { correctRig, type EarlierRound } from "../rig/correct/correctRig.ts";
 import { readReadings } from "../rig/correct/readReadings.ts";
 import { buildRigInput } from "./buildRigInput.ts";
+import { runBuiltForm } from "./builtForm.ts";
 import { fitPanels } from "./fitPanels.ts";
 
 /** A correction with the findings it stands on. */
@@ -57,10 +57,10 @@ export function correctPlan(
   context: StationContext,
 ): CorrectedPlan {
   const { now, earlier } = partRounds(readings.text, readings.kept ?? []);
-  const form = runForm(source, job, context).output;
+  const { form, shifts } = runBuiltForm(source, job, context).output;
   const fitted = fitPanels(form, job, { seams: context, panels: context, onStation: () => {} });
   const rolls = (job.rolls ?? []).map((r) => r.id);
   const layout = fitted.seams.output;
-  const input = buildRigInput(job, { form, layout, panels: fitted.panels.output, rolls }).output;
+  const input = buildRigInput(job, { form, shifts, layout, panels: fitted.panels.output, rolls }).output;
   return correctRig(input, { readings: now, earlier, percent: readings.percent }, context);
 }

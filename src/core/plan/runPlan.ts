@@ -1,5 +1,4 @@
 // The chain: job and mesh in, facts out. Calls the stations by name, in order, and can stop after any of them.
-import { runForm } from "../form/runForm.ts";
 import { buildPieces } from "../panels/pieces/cutPieces.ts";
 import { type Finding, PlanError, type Station, type StationContext, type StationResult } from "../problem.ts";
 import type { Facts } from "../records/facts.ts";
@@ -11,6 +10,7 @@ import { runRolls } from "../rolls/runRolls.ts";
 import { runSeams } from "../seams/runSeams.ts";
 import { buildFormFacts, buildHead, buildPanelFacts, buildPieceFacts, buildSeamFacts } from "./buildFacts.ts";
 import { buildRigInput } from "./buildRigInput.ts";
+import { runBuiltForm } from "./builtForm.ts";
 import { firstOptions, measureRoom } from "./clothRoom.ts";
 import type { MadeRoof } from "./dragSeam.ts";
 import { fitPanels } from "./fitPanels.ts";
@@ -104,7 +104,7 @@ function runStationsInPlace(
     return result.output;
   };
   options.onStation("form");
-  const form = take(runForm(source, job, share("form", "seams")));
+  const { form, shifts } = take(runBuiltForm(source, job, share("form", "seams")));
   facts.form = buildFormFacts(form);
   if (options.until === "form") return;
 
@@ -143,7 +143,7 @@ function runStationsInPlace(
   if (options.until === "rolls") return;
 
   options.onStation("rig");
-  const rigInput = take(buildRigInput(job, { form, layout, panels, rolls: nested.map((r) => r.id) }));
+  const rigInput = take(buildRigInput(job, { form, shifts, layout, panels, rolls: nested.map((r) => r.id) }));
   const rig = take(runRig(rigInput, share("rig", "papers")));
   facts.cables = rig.cables;
   if (rig.rig) facts.rig = rig.rig;

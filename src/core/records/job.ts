@@ -2,7 +2,7 @@
 import type { Vec3 } from "../surface/surface.ts";
 import type { Fabric, ValueStatus } from "./fabric.ts";
 import type { EdgeKind } from "./foundForm.ts";
-import type { ProofLimits, RigPlace, Turnbuckle } from "./rig.ts";
+import type { CableMaking, ProofLimits, RigPlace, Turnbuckle } from "./rig.ts";
 import type { Flaw } from "./roll.ts";
 
 /** A mesh as a program wrote it, before any check: polygons of any size, names kept, its own unit and axis. */
@@ -40,6 +40,7 @@ export interface EdgeDecision {
   force?: number | null;
   cable?: CableSpec;
   prestretched?: boolean;
+  making?: CableMaking;
 }
 
 export interface AnchorDecision {
@@ -141,6 +142,9 @@ export interface RigJob {
         end: string | null;
         turnbuckle: Turnbuckle | null;
         EA: number | null;
+        /** kN; left out: not given */
+        fitting?: number;
+        anchorCapacity?: number;
       }[]
     | null;
   struts: { name: string; from: RigPlace; to: RigPlace; EA: number | null }[];
@@ -151,6 +155,7 @@ export interface RigJob {
     EA: number | null;
     force: number | null;
     minBreakingForce: number | null;
+    making?: CableMaking;
   }[];
   stages: number[];
   /** degC */
@@ -162,6 +167,14 @@ export interface RigJob {
   defaultCable: CableSpec & { status: Record<string, ValueStatus> };
   defaultTurnbuckle: Turnbuckle;
 }
+
+/**
+ * Where a point really is, m: at an anchor with an adjuster its far pin, at any other the anchor itself; or a point of a clamped
+ * edge, `along` its length as a share of the whole.
+ */
+export type SurveyPoint =
+  | { anchor: string; edge?: undefined; at: Vec3 }
+  | { anchor?: undefined; edge: string; along: number; at: Vec3 };
 
 /** Everything a plan needs but the mesh itself. */
 export interface Job {
@@ -187,8 +200,9 @@ export interface Job {
   rolls: RollDecision[] | null;
   nest: NestDecision;
   rig: RigJob;
-  /** Where the pins really are, m: at an anchor with an adjuster its far pin, at any other the anchor itself. */
-  survey: { anchor: string; at: Vec3 }[];
+  survey: SurveyPoint[];
+  /** The cloth is cut already: a survey of clamped edges no longer changes the panels. */
+  clothCut: boolean;
   /** How far the assembled roof may be from what was intended. */
   proof: ProofLimits;
   papers: PapersDecision;

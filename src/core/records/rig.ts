@@ -15,6 +15,10 @@ export interface Turnbuckle {
   capacity: number | null;
   /** Nominal diameter of its thread, mm, where known. */
   thread?: number;
+  /** both: right- and left-hand ends, turned together by the body; single: one thread. */
+  ends?: "both" | "single";
+  /** Thread in the body at each threaded end at its longest, mm, where known. */
+  engagement?: number;
   status: Record<string, ValueStatus>;
 }
 
@@ -34,6 +38,18 @@ export interface CableType {
   status: Record<string, ValueStatus>;
 }
 
+/** How a cable or stay is made, as far as the job says. */
+export interface CableMaking {
+  /** What the end fittings take off at the first and the last end, system point to rope's end, mm. */
+  terminals?: [number, number];
+  /** Share of its length it grows for good; without it the usual allowance where it is not prestretched. */
+  stretch?: number;
+  /** Capacity of its end fittings, kN. */
+  fitting?: number;
+  /** Spacing of the clamps that hold it to the cloth, mm. */
+  clamps?: number;
+}
+
 /** A place of the rig: an anchor's or node's name, or coordinates in m. */
 export type RigPlace = string | Vec3;
 
@@ -46,6 +62,9 @@ export interface AdjusterDecision {
   turnbuckle: Turnbuckle;
   /** kN */
   EA: number;
+  /** Capacity of its fittings and of its anchor, kN; left out: not given. */
+  fitting?: number;
+  anchorCapacity?: number;
 }
 
 export interface StrutDecision {
@@ -63,6 +82,7 @@ export interface StayDecision {
   /** kN; null: what balance asks */
   force: number | null;
   minBreakingForce: number | null;
+  making?: CableMaking;
 }
 
 /** The job's word on the rig, defaults in place. */
@@ -94,8 +114,14 @@ export interface FactsCable {
   erectedLength: number;
   slackLength: number;
   cutLength: number;
+  /** What end fittings took off the cut length at its first and last end, m; left out: nothing was deducted. */
+  terminals?: [number, number];
+  /** Share it is cut shorter for its growth for good; 0: prestretched. */
+  stretch?: number;
   markAt: { force: number; temperature: number };
   minBreakingForce: number | null;
+  /** Capacity of its end fittings, kN, where given. */
+  fitting?: number;
   utilisation: number | null;
   stations: { at: number; for: string }[];
 }
@@ -112,6 +138,10 @@ export interface FactsAdjuster {
   perTurn: number;
   /** Nominal diameter of its thread, mm, where known. */
   thread?: number;
+  ends?: "both" | "single";
+  engagement?: number;
+  /** The part whose capacity is the least: that is `capacity`. */
+  weakest?: "turnbuckle" | "fitting" | "anchor";
   /** Anchor it stands at. */
   anchor: string;
   turnbuckle: string;
@@ -186,6 +216,8 @@ export interface FactsStage {
   forces: Record<string, number>;
   /** Where the near end of each adjuster stands at the end of the stage, by adjuster, m. */
   corners?: Record<string, Vec3>;
+  /** Travel left at the end of the stage by adjuster, and the thread still in the body at each threaded end where known. mm */
+  travel?: Record<string, { toShorten: number; toLengthen: number; engaged: number | null }>;
   /** What every adjuster reads right after each step, moved or not, kN. */
   readings?: { step: number; forces: Record<string, number> }[];
 }

@@ -11,6 +11,7 @@ import { buildTemperatureTable } from "./otherwise/temperatureTable.ts";
 import { measureAsBuilt } from "./review/asBuilt.ts";
 import { reviewBuilt } from "./review/reviewBuilt.ts";
 import { findTargetMisses, reviewRig, roundedLimit } from "./review/reviewRig.ts";
+import { reviewShift } from "./review/reviewShift.ts";
 import { reviewLean, reviewNotches, reviewRest } from "./review/reviewSteps.ts";
 import type { RigInput } from "./rigInput.ts";
 import { countModes, type RigState, solveState } from "./stages/solveLengths.ts";
@@ -35,13 +36,7 @@ export function runRig(input: RigInput, context: StationContext): StationResult<
   const checks: Check[] = [];
   const lines = rig.cables.map((c) => {
     const spec = c.edge === null ? undefined : input.cables[c.edge];
-    return buildCableLine(
-      c,
-      input.layout,
-      rig.structure.xyz,
-      { type: spec?.type ?? null, prestretched: spec?.prestretched ?? true },
-      input.rig.temperature,
-    );
+    return buildCableLine(input, c, { type: spec?.type ?? null, prestretched: spec?.prestretched ?? true });
   });
   const without = { rig: null, asBuilt: null, tensioning: null, sensitivity: null };
   if (rig.stops.length > 0) return { output: { cables: lines, ...without }, findings: rig.stops, checks };
@@ -87,6 +82,7 @@ export function runRig(input: RigInput, context: StationContext): StationResult<
     ...rest.findings,
     ...built.findings,
     ...review.findings,
+    ...reviewShift(input, asBuilt),
     ...reviewLean(rig, finished, laterStates),
     ...reviewNotches(rig, finished, influence, roundedLimit),
   );
@@ -109,7 +105,7 @@ function proveHeld(input: RigInput, rig: Rig, context: StationContext): StationR
   const rest = reviewRest([state]);
   return {
     output,
-    findings: [...rest.findings, ...built.findings],
+    findings: [...rest.findings, ...built.findings, ...reviewShift(input, output)],
     checks: [...rest.checks, ...built.checks],
   };
 }
@@ -145,10 +141,13 @@ function writeRig(rig: Rig, finished: RigState): FactsRig {
       slackLength: finished.L0[a.link],
       pinLength: measureLink(s, finished.x, finished.L0, a.link).length,
       target: a.target,
-      capacity: a.turnbuckle.capacity,
+      capacity: a.capacity,
+      ...(a.weakest ? { weakest: a.weakest } : {}),
       range: { shortest: a.turnbuckle.shortest / 1000, longest: a.turnbuckle.longest / 1000 },
       perTurn: a.turnbuckle.perTurn,
       ...(a.turnbuckle.thread === undefined ? {} : { thread: a.turnbuckle.thread }),
+      ...(a.turnbuckle.ends === undefined ? {} : { ends: a.turnbuckle.ends }),
+      ...(a.turnbuckle.engagement === undefined ? {} : { engagement: a.turnbuckle.engagement }),
       anchor: a.anchor,
       turnbuckle: a.turnbuckle.id,
     })),

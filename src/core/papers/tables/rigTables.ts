@@ -66,7 +66,7 @@ export function cableTable(facts: Facts): string {
     numberCell(c.erectedLength, 4),
     numberCell(c.slackLength, 4),
     numberCell(c.cutLength, 4),
-    "no",
+    c.terminals ? `${c.terminals.map((t) => `${(1000 * t).toFixed(0)} mm`).join(" and ")}` : "no",
     numberCell(c.markAt.force, 2),
     numberCell(c.markAt.temperature, 1),
     maybe(c.minBreakingForce, 1),

@@ -1,7 +1,7 @@
 // The structure the tensioning is worked out on: all cloth with its flat panels, cables, masts, stays and adjusters.
 // Leaves out what structure.ts leaves out. Nodes 0 … nV-1 are those of the cut surface, then pins, mast heads and feet.
 import { type Finding, PlanError } from "../../problem.ts";
-import type { AdjusterDecision, Turnbuckle } from "../../records/rig.ts";
+import type { AdjusterDecision, CableMaking, Turnbuckle } from "../../records/rig.ts";
 import { buildStiffness } from "../../structure/cloth.ts";
 import { listLapLines, measureLapShares } from "../../structure/lapShares.ts";
 import { buildStructure, type Structure } from "../../structure/structure.ts";
@@ -9,6 +9,7 @@ import type { Vec3 } from "../../surface/surface.ts";
 import { traceCable } from "../cables/traceCable.ts";
 import type { RigInput } from "../rigInput.ts";
 import { balanceHeads, type HeadPull } from "./balanceHeads.ts";
+import { moveClampedInPlace } from "./edgeShift.ts";
 import {
   addNode,
   holdClampedEdges,
@@ -28,6 +29,11 @@ export interface RigCable {
   /** Intended force, kN. */
   force: number;
   minBreakingForce: number | null;
+  /** What it may be held to, kN: the least of breaking force and end fittings; null where the job gives neither. */
+  capacity: number | null;
+  making: CableMaking;
+  /** Length as drawn, m. */
+  erected: number;
   firstLink: number;
 }
 
@@ -40,6 +46,9 @@ export interface RigAdjuster {
   EA: number;
   target: number;
   turnbuckle: Turnbuckle;
+  /** Least capacity of turnbuckle, fittings and anchor, kN, and whose it is; null where the job gives none. */
+  capacity: number | null;
+  weakest: "turnbuckle" | "fitting" | "anchor" | null;
   link: number;
 }
 
@@ -105,6 +114,10 @@ interface LinkList {
   xyz: readonly number[];
 }
 
+function measureGap(xyz: readonly number[], a: number, b: number): number {
+  return Math.sqrt([0, 1, 2].reduce((sum, k) => sum + (xyz[3 * b + k] - xyz[3 * a + k]) ** 2, 0));
+}
+
 /** Appends a link whose slack length gives it the force where its nodes are; returns its number. */
 function addLink(list: LinkList, nodes: readonly number[], EA: number, force: number, strut = 0): number {
   const [a, b] = [3 * nodes[0], 3 * nodes[1]];
@@ -117,6 +130,28 @@ function addLink(list: LinkList, nodes: readonly number[], EA: number, force: nu
   return list.EA.length - 1;
 }
 
+function takeLeast(a: number | null, b: number | undefined): number | null {
+  if (b === undefined) return a;
+  return a === null ? b : Math.min(a, b);
+}
+
+/** The part of an adjuster that carries least. */
+function findWeakest(
+  turnbuckle: Turnbuckle,
+  decision: Pick<AdjusterDecision, "fitting" | "anchorCapacity"> | undefined,
+): Pick<RigAdjuster, "capacity" | "weakest"> {
+  const parts = [
+    ["turnbuckle", turnbuckle.capacity],
+    ["fitting", decision?.fitting],
+    ["anchor", decision?.anchorCapacity],
+  ] as const;
+  let least: Pick<RigAdjuster, "capacity" | "weakest"> = { capacity: null, weakest: null };
+  for (const [weakest, capacity] of parts)
+    if (capacity !== null && capacity !== undefined && (least.capacity === null || capacity < least.capacity))
+      least = { capacity, weakest };
+  return least;
+}
+
 /** Cables along edges; where an adjuster sits at a cable's end, the link there is the adjuster's. */
 function layCables(input: RigInput, list: LinkList): { cables: RigCable[]; atEnds: PlacedAdjuster[] } {
   const cables: RigCable[] = [];
@@ -125,6 +160,7 @@ function layCables(input: RigInput, list: LinkList): { cables: RigCable[]; atEnd
     const cable = input.cables[edge.id];
     if (!cable || edge.force === null) continue;
     const force = edge.force;
+    const making = cable.making ?? {};
     const whole = traceCable(input.layout, edge);
     const ends = input.rig.adjusters.filter((a) => a.edge === edge.id);
     const first = ends.find((a) => a.end === "first");
@@ -150,6 +186,7 @@ function layCables(input: RigInput, list: LinkList): { cables: RigCable[]; atEnd
     if (first) put(first, whole[1], whole[0]);
     if (last) put(last, whole[whole.length - 2], whole[whole.length - 1]);
     const firstLink = list.EA.length;
+    const erected = nodes.slice(1).reduce((sum, v, i) => sum + measureGap(list.xyz, nodes[i], v), 0);
     for (let i = 1; i < nodes.length; i++) addLink(list, [nodes[i - 1], nodes[i]], cable.type.EA, force);
     cables.push({
       id: edge.id,
@@ -158,6 +195,9 @@ function layCables(input: RigInput, list: LinkList): { cables: RigCable[]; atEnd
       EA: cable.type.EA,
       force,
       minBreakingForce: cable.type.minBreakingForce,
+      capacity: takeLeast(cable.type.minBreakingForce, making.fitting),
+      making,
+      erected,
       firstLink,
     });
   }
@@ -237,7 +277,7 @@ function listPulls(input: RigInput, nodes: NodeList, placed: PlacedAdjuster[]): 
 function moveAnchorsInPlace(input: RigInput, nodes: NodeList, placed: readonly PlacedAdjuster[]): void {
   for (const [id, at] of Object.entries(input.survey)) {
     const anchor = input.form.anchors.find((a) => a.id === id);
-    if (!anchor || placed.some((a) => a.anchor === id)) continue;
+    if (!anchor?.isolated || placed.some((a) => a.anchor === id)) continue;
     for (let k = 0; k < 3; k++) nodes.xyz[3 * anchor.vertex + k] = at[k];
   }
 }
@@ -265,13 +305,20 @@ export function buildRig(input: RigInput): Rig {
     const force = forces.stay[i];
     const ends = fitStay(input, nodes, s, force);
     const firstLink = addLink(list, ends.nodes, s.EA, force);
-    const { name, EA, minBreakingForce } = s;
-    cables.push({ id: name, edge: null, nodes: ends.nodes, EA, force, minBreakingForce, firstLink });
+    const { name, EA, minBreakingForce, making = {} } = s;
+    const capacity = takeLeast(minBreakingForce, making.fitting);
+    const erected = measureGap(nodes.xyz, ends.nodes[0], ends.nodes[1]);
+    const limits = { minBreakingForce, capacity };
+    cables.push({ id: name, edge: null, nodes: ends.nodes, EA, force, ...limits, making, erected, firstLink });
     atEnds.push(...ends.adjusters);
   });
   const built = struts.map((s, i) => ({ ...s, link: addLink(list, s.nodes, s.EA, -forces.strut[i], 1) }));
-  const adjusters = [...placed, ...atEnds].map((a) => ({ ...a, link: addLink(list, a.nodes, a.EA, a.target) }));
+  const adjusters = [...placed, ...atEnds].map((a) => {
+    const decision = input.rig.adjusters.find((d) => d.name === a.id);
+    return { ...a, ...findWeakest(a.turnbuckle, decision), link: addLink(list, a.nodes, a.EA, a.target) };
+  });
   moveAnchorsInPlace(input, nodes, placed);
+  moveClampedInPlace(input, nodes);
   const { cloth, panelOf, cut } = gatherCloth(input);
   const structure = buildStructure({ xyz: new Float64Array(nodes.xyz), held: new Uint8Array(nodes.held) }, cloth, {
     link: new Uint32Array(list.link),

@@ -1,6 +1,7 @@
 // The fewest and smallest turns that bring forces and corners back: every set of adjusters is tried, small sets first, with the
 // best turns of that set to first order at the goal. Forces and corners may stay off by part of their windows.
 import { Matrix, solve } from "ml-matrix";
+import { listSteps, type NotchStep, triedByThree } from "../moves/notchSteps.ts";
 
 /** What must come back, to first order at the goal. */
 export interface Goal {
@@ -61,33 +62,25 @@ function settleSet(goal: Goal, set: readonly number[]): number[] {
   return left;
 }
 
-/** Single notches and pairs of notches within the set, as long as what stays off falls. */
-function refineInPlace(goal: Goal, set: readonly number[], left: number[]): void {
+/** Single notches, pairs and (most) threes of them within the set, as long as what stays off falls. */
+function refineInPlace(goal: Goal, set: readonly number[], left: number[], most = 2): void {
   let worst = measureWorst(goal, left);
-  const steps = set.flatMap((p) => [[p, 1, p, 0], [p, -1, p, 0], ...set.flatMap((q) => (q > p ? pairs(p, q) : []))]);
+  const steps = listSteps(set.length, most);
+  const turn = (step: NotchStep, sign: number) => {
+    for (const [k, way] of step) left[set[k]] += sign * way * goal.notch[set[k]];
+  };
   for (let better = true; better; ) {
     better = false;
-    for (const [p, a, q, b] of steps) {
-      left[p] += a * goal.notch[p];
-      left[q] += b * goal.notch[q];
+    for (const step of steps) {
+      turn(step, 1);
       const now = measureWorst(goal, left);
       if (now < worst - 1e-9) {
         worst = now;
         better = true;
-      } else {
-        left[p] -= a * goal.notch[p];
-        left[q] -= b * goal.notch[q];
-      }
+      } else turn(step, -1);
     }
   }
 }
-
-const pairs = (p: number, q: number) => [
-  [p, 1, q, 1],
-  [p, 1, q, -1],
-  [p, -1, q, 1],
-  [p, -1, q, -1],
-];
 
 /** Greatest share of its window that a force or corner stays off. */
 function measureWorst(goal: Goal, left: readonly number[]): number {
@@ -138,6 +131,14 @@ export function chooseMoves(goal: Goal): number[] {
       for (let bits = 1; bits < 2 ** n; bits++) offer(goal.off.flatMap((_, i) => ((bits >> i) & 1 ? [i] : [])));
     else growSets(goal, n, offer);
   }
+  // where whole notches leave more than is aimed at, all adjusters are tried against each other
+  if (best.worst > 1 && best.size > 0 && n <= triedByThree)
+    refineInPlace(
+      goal,
+      goal.off.map((_, i) => i),
+      best.left,
+      3,
+    );
   return best.left.map((l, i) => l - goal.off[i]);
 }
 

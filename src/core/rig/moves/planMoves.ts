@@ -10,12 +10,14 @@ import {
   findTautest,
   listMembers,
   measurePins,
+  measureTravel,
   readAdjusters,
   readCorners,
   readForces,
 } from "../stages/readState.ts";
 import { type RigState, solveState } from "../stages/solveLengths.ts";
 import type { LinearStage } from "./chooseOrder.ts";
+import { listSteps, type NotchStep, triedByThree } from "./notchSteps.ts";
 
 /** Parts of a full turn that a hand can set: the flats of a hexagonal body. */
 export const partsOfTurn = 6;
@@ -53,8 +55,8 @@ export function roundLengths(
     for (let j = 0; j < n; j++) df += influence[i * n + j] * (from[j] - count[j] * notch[j] - wanted[j]);
     return df / a.target;
   });
-  const steps = listSteps(n);
-  const change = (step: readonly [number, number][], i: number) =>
+  const steps = listSteps(n, n <= triedByThree ? 3 : 2);
+  const change = (step: NotchStep, i: number) =>
     step.reduce((sum, [j, way]) => sum - (influence[i * n + j] * way * notch[j]) / rig.adjusters[i].target, 0);
   let best = Math.max(...miss.map(Math.abs));
   for (let better = true; better; ) {
@@ -87,24 +89,6 @@ export function roundLengths(
     count[j] = 0;
   }
   return from.map((f, i) => f - count[i] * notch[i]);
-}
-
-/** Adjusters up to which three are turned against each other too. */
-const triedByThree = 10;
-
-/** One notch at one of n adjusters, one at each of two, and where there are few one at each of three. */
-function listSteps(n: number): [number, number][][] {
-  const out: [number, number][][] = [];
-  const grow = (step: [number, number][], from: number, most: number) => {
-    for (let i = from; i < n; i++)
-      for (const way of [1, -1]) {
-        const longer: [number, number][] = [...step, [i, way]];
-        out.push(longer);
-        if (longer.length < most) grow(longer, i + 1, most);
-      }
-  };
-  grow([], 0, n <= triedByThree ? 3 : 2);
-  return out.sort((p, q) => p.length - q.length);
 }
 
 /** A state to first order: influence of the adjusters on every member at its most pulled link, adjusters first. */
@@ -196,6 +180,7 @@ export function playStage(
       moves,
       forces: readForces(rig, stage.end),
       corners: readCorners(rig, stage.end),
+      travel: Object.fromEntries(rig.adjusters.map((a, i) => [a.id, measureTravel(rig, stage.end, i)])),
       readings,
     },
     states: after,

@@ -5,12 +5,15 @@ import { measureLink } from "../../structure/elements.ts";
 import { measureDistance } from "../../surface/measures.ts";
 import type { Rig } from "../build/buildRig.ts";
 import type { RigInput } from "../rigInput.ts";
-import { readAdjusters } from "../stages/readState.ts";
+import { measureEngaged, readAdjusters } from "../stages/readState.ts";
 import { countModes, type RigState } from "../stages/solveLengths.ts";
 
 /** Share of the target an adjuster may miss before and after moves are rounded. */
 const exactLimit = 0.005;
 export const roundedLimit = 0.03;
+
+/** Share of its force below which a member counts as slack. */
+const slackShare = 0.01;
 
 /** Adjusters whose target cannot be had by any lengths, as stops. */
 export function findTargetMisses(rig: Rig, exact: RigState & { off: number }): Finding[] {
@@ -61,12 +64,14 @@ export function reviewRig(
   });
   findings.push(
     ...reviewReach(rig, plan.stages, plan.finished),
+    ...reviewThreads(rig, plan.stages),
     ...reviewPeaks(rig, plan.stages, input.rig.limit),
+    ...reviewSlackMembers(rig, plan.stages),
     ...reviewModes(rig, plan.singular),
     ...reviewDirections(input, rig),
   );
-  for (const a of rig.adjusters) if (a.turnbuckle.capacity === null) findings.push(noCapacity(a.id, "turnbuckle"));
-  for (const c of rig.cables) if (c.minBreakingForce === null) findings.push(noCapacity(c.id, "cable"));
+  for (const a of rig.adjusters) if (a.capacity === null) findings.push(noCapacity(a.id, "turnbuckle"));
+  for (const c of rig.cables) if (c.capacity === null) findings.push(noCapacity(c.id, "cable"));
   return { findings, checks };
 }
 
@@ -142,6 +147,30 @@ function reviewReach(rig: Rig, stages: FactsStage[], finished: RigState): Findin
   return findings;
 }
 
+/** Threads: at every length of the sequence at least one diameter of thread in the body at each threaded end. */
+function reviewThreads(rig: Rig, stages: FactsStage[]): Finding[] {
+  return rig.adjusters.flatMap((a): Finding[] => {
+    const { thread } = a.turnbuckle;
+    const moves = stages.flatMap((s) => s.moves).filter((m) => m.adjuster === a.id);
+    const longest = 1000 * Math.max(...moves.flatMap((m) => [m.pinFrom, m.pinTo]), 0);
+    const engaged = measureEngaged(a.turnbuckle, longest);
+    if (thread === undefined || engaged === null || moves.length === 0 || engaged >= thread - 0.5) return [];
+    return [
+      {
+        code: "thread-short",
+        level: "stop",
+        station: "rig",
+        where: a.id,
+        value: engaged,
+        limit: thread,
+        text: `${a.id}: let out to ${longest.toFixed(0)} mm pin to pin only ${engaged.toFixed(0)} mm of its thread hold at each end; one diameter is ${thread.toFixed(0)} mm`,
+        remedy: "hang the cloth with temporary links, or take a longer turnbuckle or link there",
+        basis: "at least one diameter of thread in the body (common practice)",
+      },
+    ];
+  });
+}
+
 /** Peaks: no member past its limit at any step, none of the adjusters slack after the first stage. */
 function reviewPeaks(rig: Rig, stages: FactsStage[], limit: number): Finding[] {
   const findings: Finding[] = [];
@@ -155,7 +184,7 @@ function reviewPeaks(rig: Rig, stages: FactsStage[], limit: number): Finding[] {
       where: worst.greatest.id,
       value: worst.greatest.kN,
       limit: worst.greatest.kN / worst.greatest.share,
-      text: `${worst.greatest.id} carries ${worst.greatest.kN.toFixed(1)} kN after step ${worst.step}; its limit is ${(worst.greatest.kN / worst.greatest.share).toFixed(1)} kN (${(100 * limit).toFixed(0)} % of the weakest part)`,
+      text: `${worst.greatest.id} carries ${worst.greatest.kN.toFixed(1)} kN after step ${worst.step}; its limit is ${(worst.greatest.kN / worst.greatest.share).toFixed(1)} kN (${(100 * limit).toFixed(0)} % of its weakest part, ${nameWeakest(rig, worst.greatest.id)})`,
       remedy: "take stronger parts or a lower prestress; the engineer decides",
       basis: "limit as given in the job",
     });
@@ -172,22 +201,61 @@ function reviewPeaks(rig: Rig, stages: FactsStage[], limit: number): Finding[] {
       basis: "limit as given in the job",
     });
   }
-  for (const s of stages.slice(1)) {
-    for (const a of rig.adjusters)
-      if (s.forces[a.id] < 0.01 * a.target)
+  for (const s of stages.slice(1))
+    for (const a of rig.adjusters) {
+      const slack = s.readings?.find((r) => r.forces[a.id] < slackShare * a.target);
+      if (slack)
         findings.push({
           code: "adjuster-slack",
           level: "caution",
           station: "rig",
           where: a.id,
-          value: s.forces[a.id],
-          limit: 0.01 * a.target,
-          text: `${a.id} is slack at the end of stage ${s.name}`,
+          value: slack.forces[a.id],
+          limit: slackShare * a.target,
+          text: `${a.id} is slack after step ${slack.step}, in stage ${s.name}`,
           remedy: "check its target and the order of the moves",
           basis: "own argument",
         });
-  }
+    }
   return findings;
+}
+
+/** Whose capacity a member's limit is. */
+function nameWeakest(rig: Rig, id: string): string {
+  const adjuster = rig.adjusters.find((a) => a.id === id);
+  if (adjuster) return adjuster.weakest ?? "none given";
+  const cable = rig.cables.find((c) => c.id === id);
+  return cable && cable.capacity !== cable.minBreakingForce ? "its end fitting" : "the rope";
+}
+
+/** Cables and stays that carry nothing: in the stages after the first, or at the end. */
+function reviewSlackMembers(rig: Rig, stages: FactsStage[]): Finding[] {
+  return rig.cables.flatMap((c): Finding[] => {
+    const slack = stages.slice(1).filter((s) => s.forces[c.id] < slackShare * Math.max(c.force, least(rig)));
+    if (slack.length === 0) return [];
+    const finished = slack.includes(stages[stages.length - 1]);
+    const names = slack.map((s) => s.name).join(", ");
+    return [
+      {
+        code: "stay-slack",
+        level: "caution",
+        station: "rig",
+        where: c.id,
+        value: slack[0].forces[c.id],
+        limit: null,
+        text: `${c.id} hangs slack at the end of stage${slack.length > 1 ? "s" : ""} ${names}${finished ? ": at the finished state the others hold without it" : ""}`,
+        remedy: finished
+          ? "give it a force of its own (rig.stays), or leave it out: a slack rope whips in wind and wears at its ends"
+          : "tie it back so that it cannot whip, and look at its ends before it takes load",
+        basis: "own argument",
+      },
+    ];
+  });
+}
+
+/** Smallest target of the rig, kN: what little means here. */
+function least(rig: Rig): number {
+  return Math.min(...rig.adjusters.map((a) => a.target));
 }
 
 /** How many tension modes the adjusters have: forces say nothing of the weak ones. */

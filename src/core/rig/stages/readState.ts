@@ -1,5 +1,5 @@
 // What a gauge, a tape and a survey read in a state of the rig.
-import type { FactsMove } from "../../records/rig.ts";
+import type { FactsMove, Turnbuckle } from "../../records/rig.ts";
 import { measureLink } from "../../structure/elements.ts";
 import { vertexAt } from "../../surface/measures.ts";
 import type { Vec3 } from "../../surface/surface.ts";
@@ -24,12 +24,12 @@ export interface Member {
 /** All members that carry a capacity or might: adjusters first, then cables and stays, in the rig's order. */
 export function listMembers(rig: Rig): Member[] {
   return [
-    ...rig.adjusters.map((a) => ({ id: a.id, firstLink: a.link, links: 1, capacity: a.turnbuckle.capacity })),
+    ...rig.adjusters.map((a) => ({ id: a.id, firstLink: a.link, links: 1, capacity: a.capacity })),
     ...rig.cables.map((c) => ({
       id: c.id,
       firstLink: c.firstLink,
       links: c.nodes.length - 1,
-      capacity: c.minBreakingForce,
+      capacity: c.capacity,
     })),
   ];
 }
@@ -82,6 +82,24 @@ export function measurePins(rig: Rig, state: Places, i: number): number {
   const a = rig.adjusters[i];
   const link = measureLink(rig.structure, state.x, state.L0, a.link);
   return link.force > 0 ? link.length : state.L0[a.link];
+}
+
+/** Thread in the body at each threaded end of a turnbuckle this long pin to pin, mm; null where the job does not say. */
+export function measureEngaged(t: Turnbuckle, pins: number): number | null {
+  if (t.engagement === undefined) return null;
+  const out = t.longest - pins;
+  return t.engagement + (t.ends === "single" ? out : out / 2);
+}
+
+/** What adjuster i has left to turn in a state, and how much of its thread holds. @units mm */
+export function measureTravel(rig: Rig, state: Places, i: number) {
+  const { turnbuckle } = rig.adjusters[i];
+  const pins = 1000 * measurePins(rig, state, i);
+  return {
+    toShorten: pins - turnbuckle.shortest,
+    toLengthen: turnbuckle.longest - pins,
+    engaged: measureEngaged(turnbuckle, pins),
+  };
 }
 
 /**

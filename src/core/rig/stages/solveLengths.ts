@@ -43,7 +43,7 @@ export interface StateOptions {
 
 /** A state from slack lengths, starting near another one. */
 export function solveState(rig: Rig, solver: EquilibriumSolver, near: Places, options: StateOptions = {}): RigState {
-  const least = Math.min(...rig.adjusters.map((a) => a.target), Infinity);
+  const least = rig.adjusters.length === 0 ? 0 : Math.min(...rig.adjusters.map((a) => a.target));
   const { cancelled } = options;
   const equilibrium = solveEquilibrium(solver, near.x, near.L0, {
     tolerance: options.sharp ? restLimit.finished : restLimit.onTheWay,

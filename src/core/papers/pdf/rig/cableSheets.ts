@@ -70,10 +70,22 @@ function flowCables(book: Book): void {
   flowTableInPlace(flow, columns, rows, { size: SIZE });
   flowGapInPlace(flow, 2);
   const text = (words: string, bold = false) => flowTextInPlace(flow, words, { bold });
-  text("Terminals are NOT deducted: lengths run from system point to system point of the structure.", true);
-  text(
-    "The maker of the cable takes off what sockets, forks, thimbles and plates need at both ends, and for an edge that ends in an adjuster what the adjuster is long.",
-  );
+  const cables = book.facts.cables ?? [];
+  const bare = cables.filter((c) => !c.terminals).map((c) => c.id);
+  if (bare.length > 0) {
+    text(
+      `Terminals are NOT deducted${bare.length < cables.length ? ` for ${bare.join(", ")}` : ""}: lengths run from system point to system point of the structure.`,
+      true,
+    );
+    text(
+      "The maker of the cable takes off what sockets, forks, thimbles and plates need at both ends, and for an edge that ends in an adjuster what the adjuster is long.",
+    );
+  }
+  for (const c of cables)
+    if (c.terminals) {
+      const [first, last] = c.terminals.map((t) => span.of(t));
+      text(`${c.id}: cut with ${first} and ${last} ${span.unit} taken off for its terminals, as the job gives them.`);
+    }
   text(
     "EA belongs to the metallic area of the rope as the job or the catalogue states it; a modulus of the full circle must not be put with it. A cable of another EA has another slack length: plan again before it is bought.",
   );
@@ -112,7 +124,7 @@ function flowStations(book: Book): void {
   const flow = openFlow(book, "Stations on the cables");
   flowTextInPlace(
     flow,
-    "Where seams meet the cable, along it from the end named. Tape and paint, no notch, no clamp on the strand.",
+    "Where seams, plates and clamps meet the cable, along it from the end named. Tape and paint, no notch, no clamp on the strand.",
   );
   flowGapInPlace(flow, 2);
   flowTableInPlace(flow, columns, rows, { size: SIZE });
