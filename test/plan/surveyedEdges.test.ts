@@ -49,7 +49,7 @@ test("on the saddle the same 10 mm do nearly as much; without a survey nothing i
   expect(Math.max(...off)).toBeLessThan(0.25);
   const plain = runRig(planInput(saddle, { edges, warp, clothCut: true }).input, {});
   expect(plain.findings.map((f) => f.code)).not.toContain("survey-stress");
-  expect(Math.abs(plain.output.asBuilt!.stress.warp.mean - 2)).toBeLessThan(0.05);
+  expect(Math.abs(plain.output.asBuilt!.stress.warp.mean - 2)).toBeLessThan(0.1);
 });
 
 test("before cutting the panels follow the surveyed edge: form on it, panels longer by the way, stress as intended", () => {
