@@ -139,7 +139,7 @@ function tellTaken(panel: FactsPanel, way: "warp" | "weft"): string {
   const e = panel.compensation[way];
   const permanent = panel.permanent[way];
   const kept = Math.abs(permanent) > 1e-9 ? `, ${decimal(100 * permanent, 2)} % of it permanent` : "";
-  return `${way} ${decimal(100 * e, 2)} %: 1000 mm cut ${decimal(1000 / (1 + e), 2)} mm${kept}`;
+  return `${way} ${decimal(100 * e, 2)} %: 1000 on the form are cut ${decimal(1000 / (1 + e), 2)}${kept}`;
 }
 
 function headTexts(facts: Facts, panel: FactsPanel, measures: PanelMeasures, scale: number): string[] {
