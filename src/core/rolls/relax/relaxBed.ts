@@ -50,9 +50,11 @@ function frameBed(bed: Bed, nest: NestTask): Framed {
     kinds.set(key, own);
     return own;
   };
-  const loose = bed.laid.filter((p) => !p.pinned);
+  // By piece, whatever the layout: threads that began from other layouts hand states to each other.
+  const loose = bed.laid.filter((p) => !p.pinned).sort((a, b) => a.piece - b.piece);
   const held = [...bed.laid.filter((p) => p.pinned), ...bed.flawShapes];
   const laid = [...loose, ...held];
+  for (const p of loose) choicesOf(p);
   // A flaw's key says nothing of its size.
   const shapeOf = laid.map((p) => (p.piece < 0 ? shapes.push(p.shape) - 1 : place(p.shape)));
   const choices = laid.map((p, i) => (p.pinned ? [shapeOf[i]] : choicesOf(p)));
