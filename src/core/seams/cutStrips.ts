@@ -4,7 +4,7 @@ import { type Finding, PlanError } from "../problem.ts";
 import type { FoundForm } from "../records/foundForm.ts";
 import { type Adjacency, nextHalfedge } from "../surface/adjacency.ts";
 import { cutSurface } from "../surface/cut.ts";
-import { partSurface, traceOutlineSides } from "../surface/pieces.ts";
+import { markCuts, partSurface, traceOutlineSides } from "../surface/pieces.ts";
 import type { Surface, SurfacePoint } from "../surface/surface.ts";
 import { segmentKey } from "./region.ts";
 import type { RegionPlan, SeamPath } from "./seamPath.ts";
@@ -190,9 +190,10 @@ function cutOnce(
     members[s].push(t);
   });
   const marks = new Map<number, BorderMark>();
+  const cutMarks = markCuts(surface, adjacency, cuts);
   const strips = members.map((triangles): RawStrip => {
     const region = regionOf[cut.parent[triangles[0]]];
-    const loops = traceOutlineSides(surface, triangles, cuts, adjacency);
+    const loops = traceOutlineSides(surface, triangles, cutMarks, adjacency);
     if (loops.length !== 1) refuseRing(form, plans[region], loops.length);
     let place = plans[region].strips === 1 ? 0 : -1;
     let told = place >= 0;

@@ -41,7 +41,8 @@ export function buildAdjacency(surface: Surface): Adjacency {
   const fan = new Uint32Array(3 * nT);
   for (let h = 0; h < 3 * nT; h++) fan[fill[tri[h]]++] = h;
   const twin = new Int32Array(3 * nT).fill(-1);
-  const tip = Uint32Array.from(fan, (h) => tri[nextHalfedge(h)]);
+  const tip = new Uint32Array(3 * nT);
+  for (let i = 0; i < 3 * nT; i++) tip[i] = tri[nextHalfedge(fan[i])];
   for (let a = 0; a < nV; a++) {
     for (let i = fanStart[a]; i < fanStart[a + 1]; i++) {
       const b = tip[i];

@@ -6,8 +6,12 @@ import type { Surface } from "./surface.ts";
 /** Two vertices joined by a mesh edge that is cut; both directions are meant. */
 export type CutEdge = readonly [number, number];
 
-/** Marks half-edges on cut edges. */
-function markCuts(surface: Surface, adjacency: Adjacency, cutEdges: readonly CutEdge[]): Uint8Array<ArrayBuffer> {
+/** Marks half-edges on cut edges. @shape 3*nT @throws PlanError cut-edge */
+export function markCuts(
+  surface: Surface,
+  adjacency: Adjacency,
+  cutEdges: readonly CutEdge[],
+): Uint8Array<ArrayBuffer> {
   const { fan, fanStart } = adjacency;
   const cut = new Uint8Array(surface.tri.length);
   for (const [a, b] of cutEdges) {
@@ -87,15 +91,17 @@ function followBorder(adjacency: Adjacency, border: Uint8Array, h: number): numb
 /**
  * Outline of a set of triangles: loops of half-edges, counter-clockwise seen on the outer face (the piece to the left), each from
  * its smallest half-edge, loops in that order. Where the piece touches itself the loop turns so that it stays in the piece.
+ * Cuts are edges, or marks of half-edges (markCuts) where many pieces are traced.
  * @throws PlanError cut-edge
  */
 export function traceOutlineSides(
   surface: Surface,
   triangles: readonly number[],
-  cutEdges: readonly CutEdge[] = [],
+  cutEdges: readonly CutEdge[] | Uint8Array = [],
   adjacency: Adjacency = buildAdjacency(surface),
 ): number[][] {
-  const border = markBorder(surface, adjacency, triangles, markCuts(surface, adjacency, cutEdges));
+  const cut = cutEdges instanceof Uint8Array ? cutEdges : markCuts(surface, adjacency, cutEdges);
+  const border = markBorder(surface, adjacency, triangles, cut);
   const seen = new Uint8Array(border.length);
   const loops: number[][] = [];
   for (const t of [...triangles].sort((a, b) => a - b))

@@ -10,11 +10,13 @@ import { checkBeyondFade } from "../proof/beyondFade.ts";
 import { checkFlatPanels, listBrokenChecks, listPanelFindings } from "../proof/checkFlatPanels.ts";
 import { measurePanelStress } from "../proof/stressFigures.ts";
 import { buildFlattenProblem, listDrafts, type PanelDraft } from "./flattenProblem.ts";
-import { FLATTEN_TOLERANCE, solveFlatten } from "./flattenSolve.ts";
+import { FLATTEN_TOLERANCE, type FlattenTolerance, solveFlatten } from "./flattenSolve.ts";
 import { buildFlattenStart } from "./flattenStart.ts";
 import { buildRunDirections } from "./localStrip.ts";
 import { buildTargetField, type FlattenOptions } from "./panelTarget.ts";
 
+/** Enough to see a panel while its seam is dragged: 1 µm on a side, the stress to five figures. */
+const SEEN = { ...FLATTEN_TOLERANCE, energy: 1e-6, gap: 1e-6 };
 /** Enough to read from where a fade reaches. */
 const ROUGH = { ...FLATTEN_TOLERANCE, energy: 1e-3, gap: 1e-5 };
 
@@ -28,7 +30,7 @@ export function flattenPanels(
   options: FlattenOptions,
   context: StationContext,
 ): StationResult<FlatPanel[]> {
-  const { panels, converged, gap } = flattenStrips(layout, options, [], context);
+  const { panels, converged, gap } = flattenStrips(layout, options, [], FLATTEN_TOLERANCE, context);
   const findings = listPanelFindings(panels);
   if (!converged) {
     findings.unshift({
@@ -63,13 +65,14 @@ export function reflattenPanels(
   others: readonly FlatPanel[],
   context: StationContext,
 ): FlatPanel[] {
-  return flattenStrips(layout, options, others, context).panels;
+  return flattenStrips(layout, options, others, SEEN, context).panels;
 }
 
 function flattenStrips(
   layout: StripLayout,
   options: FlattenOptions,
   others: readonly FlatPanel[],
+  tolerance: FlattenTolerance,
   context: StationContext,
 ): { panels: FlatPanel[]; converged: boolean; gap: number } {
   const stiffness = buildStiffness(options.fabric);
@@ -99,7 +102,7 @@ function flattenStrips(
       );
     }
     const last = round === rounds - 1;
-    result = solveFlatten(problem, x, last ? FLATTEN_TOLERANCE : ROUGH, (step) => {
+    result = solveFlatten(problem, x, last ? tolerance : ROUGH, (step) => {
       if (context.cancelled?.())
         throw new PlanError("cancelled", "stopped on request while the panels were flattened", "panels");
       const share = (round + step / (step + 6)) / rounds;
