@@ -11,6 +11,7 @@ import { benchFlatten } from "./flattenCase.ts";
 import { benchForm } from "./formCase.ts";
 import { benchGeodesic } from "./geodesicCase.ts";
 import { benchPack, type PackInstance } from "./packCase.ts";
+import { benchStock } from "./stockCase.ts";
 
 const CASES: Record<string, { call: string; least: number; run: (args: string[]) => unknown }> = {
   plan: { call: "plan JOB|FORM.obj", least: 1, run: ([job]) => benchPlan(job) },
@@ -26,6 +27,11 @@ const CASES: Record<string, { call: string; least: number; run: (args: string[])
   form: { call: "form N", least: 1, run: ([n]) => benchForm(readCount(n, "N")) },
   geodesic: { call: "geodesic MESH.obj PAIRS.txt", least: 2, run: ([mesh, pairs]) => benchPairs(mesh, pairs) },
   correct: { call: "correct STATES", least: 1, run: ([n]) => benchCorrect(readCount(n, "STATES")) },
+  stock: {
+    call: "stock PANELS SEED",
+    least: 2,
+    run: ([panels, seed]) => benchStock(readCount(panels, "PANELS"), readCount(seed, "SEED", 0)),
+  },
   pack: {
     call: "pack INSTANCE.json SECONDS SEED OUT.json",
     least: 4,

@@ -5,8 +5,10 @@ import { buildRandom } from "../../src/core/numeric/random.ts";
 import type { PlanError } from "../../src/core/problem.ts";
 import type { NestDecision } from "../../src/core/records/job.ts";
 import type { NestedRoll, NestPiece, StockRoll } from "../../src/core/records/roll.ts";
+import { totalCloth } from "../../src/core/rolls/rollFigures.ts";
 import { runRolls } from "../../src/core/rolls/runRolls.ts";
 import { isSimpleRing, ringArea } from "../../src/core/surface/ring.ts";
+import { drawStock } from "../bench/stockCase.ts";
 
 const OPTIONS: NestDecision = { steps: 40, seconds: null, seed: 1, gap: 0, turn: true, bite: null, pins: [] };
 const ROLL: StockRoll = {
@@ -262,26 +264,56 @@ describe("which rolls", () => {
   });
 
   it("lays 200 panels on 12 rolls of three batches with six flaws, none on a flaw or a foreign batch", () => {
-    const draw = buildRandom(11);
-    const pieces = Array.from({ length: 200 }, (_, k) => {
-      const [length, width, bow] = [1500 + 2500 * draw(), 250 + 500 * draw(), 40 + 120 * draw()];
-      const side = (y: number) => [0, 0.25, 0.5, 0.75, 1].map((t) => [t * length, y + 4 * bow * t * (1 - t)]);
-      return piece(`p${k}`, [...side(0), ...side(width).reverse()].flat(), `b${k % 3}`);
-    });
-    const rolls = Array.from({ length: 12 }, (_, k) => ({
-      ...ROLL,
-      id: `R${k}`,
-      batch: `b${k % 3}`,
-      width: k % 2 === 0 ? 2500 : 3000,
-      length: 30_000,
-      flaws: k < 6 ? [{ x: 4000 + 700 * k, y: 300 * k, length: 400, width: 500 }] : [],
-    }));
-    const { output, findings, checks } = runRolls(pieces, rolls, { ...OPTIONS, steps: 6, gap: 10 });
+    const { pieces, stock } = drawStock(200, 11);
+    const { output, findings, checks } = runRolls(pieces, stock, { ...OPTIONS, steps: 3, gap: 10 });
     expect(findings.filter((f) => f.level === "stop")).toEqual([]);
     expect(checks.filter((c) => !c.holds)).toEqual([]);
     expect(output.reduce((sum, r) => sum + r.placements.length, 0)).toBe(200);
     for (const roll of output)
       for (const p of roll.placements) expect(`b${Number(p.panel.slice(1)) % 3}`).toBe(roll.batch);
+  });
+});
+
+describe("cloth and money", () => {
+  it("are counted a roll and in all, over the width that is paid for", () => {
+    const rolls = [
+      { ...ROLL, id: "A", selvedge: 50, length: 1000, price: 20 },
+      { ...ROLL, id: "B", length: 2200, start: 200 },
+    ];
+    const pieces = ["a", "b", "c"].map((id) => box(id, 900, 1900));
+    const { output } = runRolls(pieces, rolls, { ...OPTIONS, price: 10, currency: "EUR" });
+    // 0.9 m × 2 m × 20 on A; 200 of trim and 2 × 900 on B, at the price of the nest.
+    expect(output.map((r) => [r.id, r.cost, r.currency])).toEqual([
+      ["A", 36, "EUR"],
+      ["B", 40, "EUR"],
+    ]);
+    const total = totalCloth(output, pieces, rolls, 0);
+    expect(total.cost).toBeCloseTo(76, 9);
+    expect(total.used).toBeCloseTo(2.9, 9);
+    expect(total.taken).toBeCloseTo(5.8, 9);
+    expect(total.utilisation).toBeCloseTo((3 * 0.9 * 1.9) / 5.8, 9);
+    // No two chords of 1900 lie abreast on 2000: 2.7 m, whatever the rolls.
+    expect(total.bound).toBeCloseTo(2.7, 6);
+    expect(runRolls(pieces, [ROLL], OPTIONS).output[0].cost).toBeUndefined();
+  });
+
+  it("a piece longer than the table is refused, or fed on with a note, as the job says", () => {
+    const list = [box("long", 5000, 400), box("short", 900, 400)];
+    const run = (pastBite?: "refuse" | "feed") =>
+      runRolls(list, [ROLL], { ...OPTIONS, bite: 2000, ...(pastBite ? { pastBite } : {}) });
+    for (const way of [undefined, "refuse"] as const)
+      expect(run(way).findings.map((f) => [f.code, f.level])).toEqual([["roll-bite", "stop"]]);
+    const fed = run("feed");
+    expect(fed.findings.map((f) => [f.code, f.level])).toEqual([["roll-feed", "note"]]);
+    expect(fed.findings[0].text).toMatch(/3 feeds/);
+    expect(fed.output[0].feeds).toEqual([0, 2000, 4000]);
+  });
+
+  it("small pieces go into what the large ones leave", () => {
+    const large = Array.from({ length: 3 }, (_, k) => box(`p${k}`, 3000, 1500));
+    const small = Array.from({ length: 12 }, (_, k) => box(`s${k}`, 400, 240));
+    const used = (list: NestPiece[]) => runRolls(list, [ROLL], { ...OPTIONS, gap: 10 }).output[0].used;
+    expect(used([...small, ...large])).toBeCloseTo(used(large), 6);
   });
 });
 
@@ -391,6 +423,30 @@ describe("hard input", () => {
     expect(checks.every((c) => c.holds)).toBe(true);
   });
 
+  it("ends on slivers, comets and pieces of every wrong size with a result or a finding for each", () => {
+    const pieces = [
+      piece("sliver", [0, 0, 3000, 0, 3000, 2, 0, 2]),
+      piece("needle", [0, 0, 2000, 1, 0, 2]),
+      piece("dust", [0, 0, 0.5, 0, 0.5, 0.5]),
+      piece(
+        "run",
+        Array.from({ length: 200 }, (_, k) => [10 * k, 0])
+          .flat()
+          .concat([1990, 300, 0, 300]),
+      ),
+      box("wide", 100, 2000.1),
+      box("long", 50_000.1, 100),
+      box("just", 50_000, 60),
+    ];
+    const { output, findings, checks } = runRolls(pieces, [ROLL], { ...OPTIONS, gap: 5, steps: 10 });
+    expect(findings.map((f) => [f.code, f.where])).toEqual([
+      ["roll-width", "wide"],
+      ["roll-length", "long"],
+    ]);
+    expect(output[0].placements.map((p) => p.panel)).toEqual(["dust", "just", "needle", "run", "sliver"]);
+    for (const c of checks.slice(0, -1)) expect(c.holds, c.text).toBe(true);
+  });
+
   it("takes a clockwise outline", () => {
     const { output } = runRolls([piece("a", [0, 0, 0, 500, 700, 500, 700, 0])], [ROLL], OPTIONS);
     expect(output[0].used).toBeCloseTo(700, 6);
@@ -416,6 +472,42 @@ describe("stopping", () => {
     runRolls(pieces, [ROLL], OPTIONS, { onProgress: (share) => shares.push(share) });
     expect(shares[shares.length - 1]).toBe(1);
     expect([...shares].sort((a, b) => a - b)).toEqual(shares);
+  });
+
+  it("leaves a valid layout at 200 moments, none of more cloth than the constructive nest", () => {
+    const run = (cancelled?: () => boolean) =>
+      runRolls(pieces, [ROLL], { ...OPTIONS, gap: 7, steps: 20 }, cancelled ? { cancelled } : {});
+    const cloth = (r: ReturnType<typeof run>) => r.output.reduce((sum, o) => sum + o.used * o.width, 0);
+    let polls = 0;
+    const whole = run(() => ++polls < 0);
+    const constructive = cloth(runRolls(pieces, [ROLL], { ...OPTIONS, gap: 7, steps: 1 }));
+    expect(cloth(whole)).toBeLessThanOrEqual(constructive);
+    const draw = buildRandom(9);
+    for (let k = 0; k < 200; k++) {
+      const end = 1 + Math.floor(polls * draw() ** 2);
+      let asked = 0;
+      const { output, checks } = run(() => asked++ >= end);
+      expect(checks.filter((c) => !c.holds)).toEqual([]);
+      expect(output[0].placements.length).toBe(6);
+      expect(output.reduce((sum, o) => sum + o.used * o.width, 0)).toBeLessThanOrEqual(constructive);
+    }
+  });
+
+  it("tells length, density, bound and the caller's seconds on the way", () => {
+    const told: Record<string, number>[] = [];
+    runRolls(pieces, [ROLL], OPTIONS, {
+      elapsed: () => 12,
+      onProgress: (_, words, figures) => {
+        if (figures) told.push({ ...figures });
+        expect(words).toMatch(/^nest \d+ of 80: [\d.]+ m, [\d.]+ % full, at least [\d.]+ m, 12 s$/);
+      },
+    });
+    for (const f of told) {
+      expect(f.length).toBeGreaterThanOrEqual(f.bound);
+      expect(f.density).toBeLessThanOrEqual(1);
+      expect(f.elapsed).toBe(12);
+    }
+    expect(told.length).toBeGreaterThan(40);
   });
 
   it("gives the same layout for the same seed, and never a worse one for more steps", () => {

@@ -26,7 +26,8 @@ export function cutOrder(pieces: CutPiece[], bite: number | null): { order: stri
   let left = rising;
   while (left.length > 0) {
     const at = Math.min(...left.map((p) => p.x0));
-    feeds.push(at);
+    // A piece longer than the bite may begin where the table lies already.
+    if (at !== feeds.at(-1)) feeds.push(at);
     const fits = left.filter((p) => p.x1 <= at + bite + HAIR);
     // Nothing ends on the table: the piece that begins here is longer than the bite.
     const first = left.find((p) => p.x0 === at) as CutPiece;
