@@ -185,7 +185,7 @@ describe.skipIf(missing.length > 0)(`PDF sheets read by other programs${reason}`
   test("a card holds what the welder measures", async () => {
     const facts = plain();
     const { words } = wordsOf((await shared(plain)).get("panel-cards.pdf")!);
-    const card = words.filter((w) => w.page === 1).map((w) => w.text);
+    const card = words.filter((w) => w.page === 2).map((w) => w.text);
     const panel = facts.panels![0]!;
     for (const side of panel.sides) {
       expect(card).toContain(side.id);
@@ -202,7 +202,7 @@ describe.skipIf(missing.length > 0)(`PDF sheets read by other programs${reason}`
   test("an imperial card holds the same lengths in feet, inches and sixteenths, to half a sixteenth", async () => {
     const make = SETS["plain, Letter, imperial"]!;
     const facts = make();
-    const text = textOf((await shared(make)).get("panel-cards.pdf")!, 1);
+    const text = textOf((await shared(make)).get("panel-cards.pdf")!, 2);
     const told = [...text.matchAll(/(?:(\d+)' )?(?:(\d+) )?(?:(\d+)\/(\d+)|(\d+))"/g)].map(
       ([, feet, inch, a, b, whole]) =>
         25.4 * (12 * Number(feet ?? 0) + Number(inch ?? 0) + (b ? Number(a) / Number(b) : Number(whole))),

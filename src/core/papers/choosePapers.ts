@@ -5,6 +5,7 @@ import { PlanError } from "../problem.ts";
 export type PaperChoice =
   | "cut-files"
   | "dxf2000"
+  | "arcs"
   | "roll-sheets"
   | "panel-cards"
   | "lists"
@@ -17,6 +18,7 @@ export type PaperChoice =
 export const PAPER_CHOICES: Readonly<Record<PaperChoice, string>> = {
   "cut-files": "DXF R12 and SVG per roll, table length and panel",
   dxf2000: "the same cut files as DXF 2000",
+  arcs: "the same with arcs for curves, within 0.1 mm, beside the straight ones",
   "roll-sheets": "roll sheets and cloth list (PDF)",
   "panel-cards": "panel cards, assembly map, seam schedule (PDF)",
   lists: "rolls, panels, seams, cables, moves, hardware (CSV)",
@@ -26,9 +28,9 @@ export const PAPER_CHOICES: Readonly<Record<PaperChoice, string>> = {
   bundle: "all of the above that are asked for, in one zip",
 };
 
-/** What is written when nothing is said: everything but the zip. */
+/** What is written when nothing is said: everything but arcs, which not every table runs, and the zip. */
 export const DEFAULT_PAPERS: readonly PaperChoice[] = (Object.keys(PAPER_CHOICES) as PaperChoice[]).filter(
-  (c) => c !== "bundle",
+  (c) => c !== "bundle" && c !== "arcs",
 );
 
 /**

@@ -6,6 +6,7 @@ import { DEFAULT_PAPERS, type PaperChoice } from "./choosePapers.ts";
 import { writeDxf2000 } from "./cutFiles/dxf2000.ts";
 import { writeDxfR12 } from "./cutFiles/dxfR12.ts";
 import { writeSvg } from "./cutFiles/svg.ts";
+import { withArcs } from "./drawing/arcs.ts";
 import type { Drawing } from "./drawing/drawing.ts";
 import { tableBites } from "./drawing/placedCloth.ts";
 import { panelDrawing, rollDrawing } from "./drawing/rollDrawing.ts";
@@ -25,7 +26,7 @@ function cutFiles(
   drawingOf: (i: number) => Drawing,
   wants: Wants,
 ): PaperFile[] {
-  if (!wants("cut-files") && !wants("dxf2000")) return [];
+  if (!wants("cut-files") && !wants("dxf2000") && !wants("arcs")) return [];
   const encoder = new TextEncoder();
   return fileNames(ids).flatMap((name, i) => {
     const drawing = drawingOf(i);
@@ -34,6 +35,11 @@ function cutFiles(
       texts.push([`${folder}/${name}.dxf`, writeDxfR12(drawing)], [`${folder}/${name}.svg`, writeSvg(drawing)]);
     }
     if (wants("dxf2000")) texts.push([`${folder}/dxf2000/${name}.dxf`, writeDxf2000(drawing)]);
+    if (wants("arcs")) {
+      const curved = withArcs(drawing);
+      texts.push([`${folder}/arcs/${name}.dxf`, writeDxfR12(curved)], [`${folder}/arcs/${name}.svg`, writeSvg(curved)]);
+      if (wants("dxf2000")) texts.push([`${folder}/arcs/dxf2000/${name}.dxf`, writeDxf2000(curved)]);
+    }
     return texts.map(([path, text]): PaperFile => ({ path, bytes: encoder.encode(text) }));
   });
 }

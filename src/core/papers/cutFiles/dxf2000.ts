@@ -93,7 +93,10 @@ function tagEntity(file: File, kind: string, owner: string, layer: string, subcl
 function tagStroke(file: File, owner: string, stroke: Stroke, layer: string): void {
   tagEntity(file, "LWPOLYLINE", owner, layer, "AcDbPolyline");
   tag(file.tags, 90, stroke.points.length, 70, stroke.closed ? 1 : 0, 43, "0.0");
-  for (const [x, y] of stroke.points) tag(file.tags, 10, tagNumber(x), 20, tagNumber(y));
+  stroke.points.forEach(([x, y], i) => {
+    tag(file.tags, 10, tagNumber(x), 20, tagNumber(y));
+    if (stroke.bulges?.[i]) tag(file.tags, 42, dxf.tagBulge(stroke.bulges[i]));
+  });
 }
 
 function tagLabel(file: File, owner: string, label: Label, layer: string): void {

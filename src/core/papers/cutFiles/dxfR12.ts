@@ -25,10 +25,11 @@ function tagStroke(tags: dxf.Tags, stroke: Stroke, layer: string): void {
   tag(tags, 0, "POLYLINE", 8, layer, 66, 1);
   tagPoint(tags, 10, 0, 0);
   tag(tags, 70, stroke.closed ? 1 : 0);
-  for (const [x, y] of stroke.points) {
+  stroke.points.forEach(([x, y], i) => {
     tag(tags, 0, "VERTEX", 8, layer);
     tagPoint(tags, 10, x, y);
-  }
+    if (stroke.bulges?.[i]) tag(tags, 42, dxf.tagBulge(stroke.bulges[i]));
+  });
   tag(tags, 0, "SEQEND", 8, layer);
 }
 

@@ -17,6 +17,11 @@ export function tagNumber(value: number): string {
   return decimal(value, DECIMALS);
 }
 
+/** The bulge of an arc as it stands in the file: a length times it must hold to the thousandth. */
+export function tagBulge(value: number): string {
+  return decimal(value, 9);
+}
+
 /** Code and value, in pairs. */
 export function tagInPlace(tags: Tags, ...pairs: (string | number)[]): void {
   for (let i = 0; i < pairs.length; i += 2) tags.push(String(pairs[i]), String(pairs[i + 1]));

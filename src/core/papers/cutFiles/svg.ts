@@ -2,7 +2,9 @@
 // reader whatever pixel it believes in. One group a layer; y is flipped here and nowhere else.
 // Source: SVG recommendation, units and viewport chapters (check-values 8.2).
 
-import { type Drawing, extents, LAYER_NAMES, LAYERS, type Layer } from "../drawing/drawing.ts";
+import type { Vec2 } from "../../records/facts.ts";
+import { arcRadius } from "../drawing/bulge.ts";
+import { type Drawing, extents, LAYER_NAMES, LAYERS, type Layer, type Stroke } from "../drawing/drawing.ts";
 import { decimal } from "../words/decimal.ts";
 
 const MARGIN = 20;
@@ -20,6 +22,24 @@ function escaped(text: string): string {
 }
 
 const n3 = (value: number) => decimal(value, 3);
+
+/** Straight pieces and arcs; with y down a counter-clockwise arc runs against the positive angle. */
+function pathText(stroke: Stroke, at: (p: Vec2) => string): string {
+  const { points, bulges, closed } = stroke;
+  const pieces = points.map((p, i) => {
+    if (i === 0) return `M ${at(p)}`;
+    return pieceText(points[i - 1], p, bulges?.[i - 1] ?? 0, at);
+  });
+  const last = points.length - 1;
+  if (closed && bulges?.[last]) pieces.push(pieceText(points[last], points[0], bulges[last], at));
+  return `${pieces.join(" ")}${closed ? " Z" : ""}`;
+}
+
+function pieceText(a: Vec2, b: Vec2, bulge: number, at: (p: Vec2) => string): string {
+  if (bulge === 0) return `L ${at(b)}`;
+  const r = n3(arcRadius(a, b, bulge));
+  return `A ${r} ${r} 0 0 ${bulge > 0 ? 0 : 1} ${at(b)}`;
+}
 
 /** The drawing as an SVG file. */
 export function writeSvg(drawing: Drawing): string {
@@ -39,8 +59,7 @@ export function writeSvg(drawing: Drawing): string {
     lines.push(`<g id="${LAYER_NAMES[layer]}" fill="none" ${PENS[layer]}>`);
     for (const s of drawing.strokes) {
       if (s.layer !== layer) continue;
-      const points = s.points.map((p) => `${px(p[0])} ${py(p[1])}`).join(" L ");
-      lines.push(`<path d="M ${points}${s.closed ? " Z" : ""}"/>`);
+      lines.push(`<path d="${pathText(s, (p) => `${px(p[0])} ${py(p[1])}`)}"/>`);
     }
     for (const l of drawing.labels) {
       if (l.layer !== layer) continue;

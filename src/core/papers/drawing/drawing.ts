@@ -3,6 +3,7 @@
 import { PlanError } from "../../problem.ts";
 import type { Vec2 } from "../../records/facts.ts";
 import { plainText } from "../words/plainText.ts";
+import { arcReaches } from "./bulge.ts";
 
 /** bed: for orientation, never to be worked; mark and text: pen; cut: knife. */
 export type Layer = "bed" | "mark" | "text" | "cut";
@@ -18,11 +19,13 @@ export const LAYER_NAMES: Readonly<Record<Layer, string>> = {
   cut: "CUT",
 };
 
-/** An open or closed run of straight pieces; a closed one does not repeat its first point. */
+/** An open or closed run of straight pieces, or of arcs; a closed one does not repeat its first point. */
 export interface Stroke {
   layer: Layer;
   points: Vec2[];
   closed: boolean;
+  /** Where pieces are arcs: for each point the tangent of a quarter of the angle of the piece from it, 0 straight, above 0 counter-clockwise. */
+  bulges?: number[];
 }
 
 /** Text around or from `at`, half its height above and below it. */
@@ -168,7 +171,13 @@ export function extents(drawing: Drawing): { min: Vec2; max: Vec2 } {
     max[0] = Math.max(max[0], x);
     max[1] = Math.max(max[1], y);
   };
-  for (const s of drawing.strokes) for (const p of s.points) take(p[0], p[1]);
+  for (const s of drawing.strokes) {
+    s.points.forEach((p, i) => {
+      take(p[0], p[1]);
+      const next = s.points[(i + 1) % s.points.length];
+      for (const q of arcReaches(p, next, s.bulges?.[i] ?? 0)) take(q[0], q[1]);
+    });
+  }
   for (const l of drawing.labels) for (const p of labelCorners(l)) take(p[0], p[1]);
   return min[0] <= max[0] ? { min, max } : { min: [0, 0], max: [0, 0] };
 }

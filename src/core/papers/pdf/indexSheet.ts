@@ -43,7 +43,14 @@ const ENTRIES: readonly Entry[] = [
     kind: "cloth",
   },
   {
-    path: /\/dxf2000\//,
+    path: /\/arcs\//,
+    name: "arcs/ in each",
+    what: "The same with arcs for curves, within 0.1 mm: either these or the straight ones",
+    who: "cutting table",
+    kind: "cloth",
+  },
+  {
+    path: /^[a-z]+\/dxf2000\//,
     name: "dxf2000/ in each",
     what: "The same cut files as DXF 2000",
     who: "cutting table",

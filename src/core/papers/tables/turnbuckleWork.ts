@@ -59,6 +59,12 @@ export function threadOf(adjuster: FactsAdjuster): { diameter: number; pitch: nu
   return { diameter: fitting.includes(named) ? named : Math.max(...fitting), pitch, assumed: true };
 }
 
+/** The thread in words: "M24", "M24 assumed", or that nothing is known of it. */
+export function threadText(adjuster: FactsAdjuster): string {
+  const thread = threadOf(adjuster);
+  return thread ? `M${thread.diameter}${thread.assumed ? " assumed" : ""}` : "thread not known";
+}
+
 /**
  * Torque at the body of a turnbuckle with right- and left-hand ends, kN·m: 2·F·(d2/2)·tan(φ + ρ').
  * @shape force kN; thread diameter and pitch mm

@@ -1,5 +1,5 @@
 // The whole roof on one sheet with the names of panels, seams, edges and corners, then the seam schedule and the other cloth.
-import type { Facts, FactsJob, Vec2 } from "../../../records/facts.ts";
+import type { Facts, FactsJob, FactsPiece, Vec2 } from "../../../records/facts.ts";
 import { boxOf, insidePoint, pointAlong } from "../../drawing/flatGeometry.ts";
 import { stripPlace } from "../../drawing/stripPlace.ts";
 import { placesOf, seamSide } from "../../tables/clothTables.ts";
@@ -9,7 +9,7 @@ import { addSheet, type Book, drawParagraph, type Sheet } from "../layout/book.t
 import { type LabelField, setNameInPlace } from "../layout/labelField.ts";
 import { type BoxArea, drawBox, drawRun } from "../layout/pen.ts";
 import { fitRoof, type RoofView } from "../layout/roofView.ts";
-import { type Column, flowTableInPlace, flowTextInPlace, openFlow } from "../layout/table.ts";
+import { type Column, flowGapInPlace, flowTableInPlace, flowTextInPlace, openFlow } from "../layout/table.ts";
 
 function seamColumns(job: FactsJob): readonly Column[] {
   const { span, flat, fine } = paperUnits(job);
@@ -132,10 +132,12 @@ function drawPieces(book: Book): void {
   const pieces = facts.pieces ?? [];
   if (pieces.length === 0) return;
   const { flat } = paperUnits(facts.job);
+  const clothOf = (p: FactsPiece) => `${p.fabric}, ${p.batch ?? "not given"}`;
+  const one = new Set(pieces.map(clothOf)).size === 1;
   const columns: readonly Column[] = [
     { head: ["Piece"], width: 34 },
     { head: ["Kind, for"], width: 34 },
-    { head: ["Fabric, batch"], width: 32 },
+    ...(one ? [] : [{ head: ["Fabric, batch"], width: 32 }]),
     { head: ["Roll"], width: 20 },
     { head: ["Length,", flat.unit], width: 25, align: "end" },
     { head: ["Width,", flat.unit], width: 23, align: "end" },
@@ -149,7 +151,7 @@ function drawPieces(book: Book): void {
     return [
       p.id,
       `${p.kind}, ${p.for}`,
-      `${p.fabric}, ${p.batch ?? "not given"}`,
+      ...(one ? [] : [clothOf(p)]),
       places.get(p.id)?.roll ?? "none",
       flat.of(max[0] - min[0]),
       flat.of(max[1] - min[1]),
@@ -157,5 +159,8 @@ function drawPieces(book: Book): void {
       "",
     ];
   });
-  flowTableInPlace(openFlow(book, "Patches, strips, covers and test pieces"), columns, rows);
+  const flow = openFlow(book, "Patches, strips, covers and test pieces");
+  if (one) flowTextInPlace(flow, `All of fabric ${pieces[0].fabric}, batch ${pieces[0].batch ?? "not given"}.`);
+  flowGapInPlace(flow, 1.5);
+  flowTableInPlace(flow, columns, rows);
 }

@@ -25,6 +25,7 @@ import { type Column, drawHalves, drawTable, tableHeight } from "../layout/table
 import { drawAssemblyMap } from "./assemblyMap.ts";
 import { flowAssemblyOrder } from "./assemblyOrder.ts";
 import { cardScale, drawPanelFigure, figureHeight, sideMeets } from "./panelFigure.ts";
+import { flowWeldingFirst } from "./weldingFirst.ts";
 
 const FOOT = 27;
 /** The figure never gets less of the sheet's height than this, mm, if it needs it; more sides go to a second sheet. */
@@ -72,6 +73,7 @@ interface Roof {
 /** The bytes of panel-cards.pdf. */
 export async function writePanelCards(facts: Facts, fonts: FontFiles): Promise<Uint8Array> {
   const book = await openBook(facts, fonts, "panel cards", "cloth");
+  flowWeldingFirst(book);
   const view = viewRoof(facts);
   const roof: Roof = { view, plan: null };
   for (const panel of facts.panels ?? []) drawCard(book, roof, panel);

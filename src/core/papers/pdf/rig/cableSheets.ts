@@ -5,6 +5,7 @@ import type { Facts } from "../../../records/facts.ts";
 import { edgeStart } from "../../drawing/stripPlace.ts";
 import { limitOf, type RigFacts, rigFacts } from "../../tables/rigReadings.ts";
 import { travelOf } from "../../tables/rigTables.ts";
+import { threadText } from "../../tables/turnbuckleWork.ts";
 import { cautionsOf } from "../../words/cautions.ts";
 import { decimal } from "../../words/decimal.ts";
 import { paperUnits } from "../../words/paperUnits.ts";
@@ -135,7 +136,7 @@ function flowHardware(book: Book, rig: RigFacts): void {
   const columns: readonly Column[] = [
     { head: ["Adjuster"], width: 30, bold: true },
     { head: ["Anchor"], width: 26 },
-    { head: ["Turnbuckle"], width: 36 },
+    { head: ["Thread,", "turnbuckle"], width: 38 },
     { head: ["A turn,", travel.unit], width: 24, align: "end" },
     { head: ["Range, pin to", `pin, ${pins.unit}`], width: 40, align: "end" },
     { head: ["Finished,", pins.unit], width: 30, align: "end", bold: true },
@@ -151,7 +152,7 @@ function flowHardware(book: Book, rig: RigFacts): void {
     return [
       a.id,
       a.anchor,
-      typeText(a.turnbuckle),
+      `${threadText(a)}: ${typeText(a.turnbuckle)}`,
       travel.of(a.perTurn),
       `${pins.of(a.range.shortest)} – ${pins.of(a.range.longest)}`,
       pins.of(a.pinLength),

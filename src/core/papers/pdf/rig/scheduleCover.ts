@@ -2,7 +2,7 @@
 // of the day, how heavy each turnbuckle is to turn, and the cautions that hold from the first step to the last.
 
 import { allMoves, jackStep, limitOf, type RigFacts } from "../../tables/rigReadings.ts";
-import { bodyTorque, HAND_TORQUE, THREAD_FRICTION, threadOf } from "../../tables/turnbuckleWork.ts";
+import { bodyTorque, HAND_TORQUE, THREAD_FRICTION, threadOf, threadText } from "../../tables/turnbuckleWork.ts";
 import { cautionsOf } from "../../words/cautions.ts";
 import { paperUnits } from "../../words/paperUnits.ts";
 import { siteLimits } from "../../words/siteLimits.ts";
@@ -113,27 +113,31 @@ function flowTorqueInPlace(flow: Flow, rig: RigFacts): void {
   const columns: readonly Column[] = [
     { head: ["Adjuster"], width: 34, bold: true },
     { head: ["Thread, turnbuckle"], width: 62 },
-    { head: ["Greatest", `${force.unit}`], width: 28, align: "end" },
+    { head: ["When", `turned, ${force.unit}`], width: 30, align: "end" },
     { head: ["Limit", `${force.unit}`], width: 30, align: "end" },
     { head: ["Torque at body", `${torque.unit}, about`], width: 44, align: "end" },
     { head: ["How it is turned"], width: 62, bold: true },
   ];
   const rows = rig.adjusters.map((a) => {
-    const most = Math.max(
-      ...allMoves(rig.tensioning).flatMap((m) => (m.adjuster === a.id ? [m.expect] : [])),
-      a.target,
-    );
+    // What it bears when it is turned here; others that follow may bring it higher, then later corrections are heavier.
+    const most = Math.max(0, ...allMoves(rig.tensioning).flatMap((m) => (m.adjuster === a.id ? [m.expect] : [])));
     const limit = limitOf(rig, a.id);
     const thread = threadOf(a);
     const step = jackStep(rig, a);
-    const size = thread ? `M${thread.diameter}${thread.assumed ? " assumed" : ""}` : "thread not known";
+    const later = thread !== null && bodyTorque(a.target, thread, THREAD_FRICTION) > HAND_TORQUE;
     return [
       a.id,
-      `${size}: ${typeText(a.turnbuckle)}`,
+      `${threadText(a)}: ${typeText(a.turnbuckle)}`,
       force.of(most),
       limit === null ? "not given" : force.of(limit),
       thread ? torque.of(bodyTorque(most, thread, THREAD_FRICTION)) : "–",
-      step === null ? (thread ? "by hand" : "try; jack at hand") : `JACK from step ${step} on`,
+      step === null
+        ? thread
+          ? later
+            ? "by hand; JACK to correct later"
+            : "by hand"
+          : "try; jack at hand"
+        : `JACK from step ${step} on`,
     ];
   });
   flowHeadingInPlace(flow, "How heavy the turnbuckles turn");
@@ -141,6 +145,6 @@ function flowTorqueInPlace(flow: Flow, rig: RigFacts): void {
   flowGapInPlace(flow, 1.5);
   flowTextInPlace(
     flow,
-    `Estimate from force, thread and a friction of ${THREAD_FRICTION} (0.10 greased to 0.20 dry; common practice), both ends turned by the body; a thread not given is taken by the name of the turnbuckle or as the thickest coarse one of its pitch. A hand gives about ${torque.whole(HAND_TORQUE)} at half a metre (common practice). Above that the load is taken over by the jack, the body turned free, the load set down again. Limit: ${Number((100 * rig.tensioning.limit).toPrecision(3))} % of what the turnbuckle bears.`,
+    `Estimate from force, thread and a friction of ${THREAD_FRICTION} (0.10 greased to 0.20 dry; common practice), both ends turned by the body; a thread not given is taken by the name of the turnbuckle or as the thickest coarse one of its pitch. A hand gives about ${torque.whole(HAND_TORQUE)} at half a metre (common practice). Above that, at the finished force too, the load is taken over by the jack, the body turned free, the load set down again. Limit: ${Number((100 * rig.tensioning.limit).toPrecision(3))} % of what the turnbuckle bears.`,
   );
 }
