@@ -104,6 +104,7 @@ function Head() {
   const future = useBook((b) => b.future);
   const theme = useBook((b) => b.theme);
   const kept = useBook((b) => b.kept);
+  const keeping = useBook((b) => b.keeping);
   const before = past.at(-1)?.words;
   const next = future[0]?.words;
   return (
@@ -143,7 +144,7 @@ function Head() {
           Keys
         </button>
         <span className="kept" role="status">
-          {kept === null ? "not kept yet" : `kept ${new Date(kept).toTimeString().slice(0, 5)}`}
+          {keeping ? "keeping…" : kept === null ? "not kept" : `kept ${new Date(kept).toTimeString().slice(0, 5)}`}
         </span>
       </div>
     </header>
@@ -178,13 +179,13 @@ function Fault() {
 /** The book. */
 export function Book() {
   const leaf = useBook((b) => b.leaf);
-  const status = useBook((b) => b.status);
+  const running = useBook((b) => b.status === "running");
   const Page = PAGES[leaf];
   return (
     <div className="book">
       <Head />
       <Spine />
-      <main className={status === "running" ? "paper older" : "paper"} aria-busy={status === "running"}>
+      <main className="paper" aria-busy={running}>
         <Fault />
         <Page key={leaf} />
       </main>

@@ -1,7 +1,7 @@
 // The desk before a job is open: drop a form, begin with a starter, go on with a job that is kept here.
 import { useEffect, useState } from "react";
 import { deleteJob, type KeptJob, listJobs } from "./keep/jobStore.ts";
-import { openKept, openNew } from "./keep/keepBook.ts";
+import { explainFault, openKept, openNew } from "./keep/keepBook.ts";
 import { loadFiles, readFiles } from "./keep/openFiles.ts";
 import { openStarter, STARTERS } from "./keep/starters.ts";
 import { bookStore, notify } from "./store/bookStore.ts";
@@ -12,7 +12,8 @@ export async function tryOpen(open: () => Promise<void>): Promise<void> {
     await open();
     bookStore.setState((s) => ({ notices: s.notices.filter((n) => n.id !== "open") }));
   } catch (error) {
-    notify("open", error instanceof Error ? error.message : String(error), true);
+    const words = error instanceof Error ? error.message : String(error);
+    notify("open", error instanceof DOMException ? explainFault(error) : words, true);
   }
 }
 
@@ -34,7 +35,7 @@ export function JobList() {
   const read = () => {
     listJobs()
       .then(setJobs)
-      .catch(() => setFault("This browser keeps no jobs here (a private window, or storage is switched off)."));
+      .catch((error: unknown) => setFault(explainFault(error)));
   };
   useEffect(read, []);
   if (fault !== "") return <p className="hint">{fault}</p>;

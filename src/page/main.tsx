@@ -10,7 +10,10 @@ import { requestPlan } from "./worker/planner.ts";
 import "./style/ink.css";
 import "./style/book.css";
 import "./style/leaf.css";
+import "./style/fields.css";
 import "./style/parts.css";
+import "./style/drawings.css";
+import "./style/site.css";
 
 /** Quiet time before a changed job is planned, ms: a second thought within it costs no plan. */
 const QUIET = 250;
@@ -27,7 +30,7 @@ async function fetchOpened(): Promise<{ name: string; job: JobFile; mesh: string
 
 async function takeUp(): Promise<void> {
   const last = lastOpen();
-  if (last !== null && (await openKept(last).catch(() => false))) return;
+  if (last !== null && (await openKept(last.id, last.leaf))) return;
   const opened = await fetchOpened();
   if (opened === null) return;
   const bytes = opened.mesh === null ? null : new Uint8Array(await (await fetch("./opened-mesh")).arrayBuffer());

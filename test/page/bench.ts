@@ -1,9 +1,18 @@
 // The bench the page is tried on: built here, served by the very server of the command line, opened in Chromium.
+// Whatever is read after an act is polled: on a busy machine the page may answer a moment later.
 import { execFileSync } from "node:child_process";
-import { mkdirSync } from "node:fs";
+import { createHash } from "node:crypto";
+import { existsSync, mkdirSync, readdirSync, readFileSync, renameSync, rmSync } from "node:fs";
 import { join } from "node:path";
 import axe from "axe-core";
-import { type Browser, type BrowserContext, type BrowserContextOptions, chromium, type Page } from "playwright-core";
+import {
+  type Browser,
+  type BrowserContext,
+  type BrowserContextOptions,
+  chromium,
+  type Locator,
+  type Page,
+} from "playwright-core";
 import { build } from "vite";
 import { type OpenedJob, servePage } from "../../src/cli/pageServer.ts";
 
@@ -18,11 +27,19 @@ const ARGS = [
   "--no-first-run",
 ];
 
-/** A plan on a busy machine, ms. */
-export const PATIENCE = 60_000;
+/** What one wait may take on a busy machine, ms; nothing is ever waited for that long where all is well. */
+export const PATIENCE = 120_000;
+
+/** How a poll waits. */
+export const SOON = { timeout: PATIENCE };
+
+/** What a whole test may take. */
+export const LONG = 4 * PATIENCE;
 
 export interface Bench {
   url: string;
+  /** The built page. */
+  folder: string;
   browser: Browser;
   /** A page of a context of its own, on the desk; every request, error and refusal of the policy is written down. */
   open: (options?: BrowserContextOptions) => Promise<Desk>;
@@ -40,16 +57,41 @@ function findChromium(): string {
   return execFileSync("bash", ["-c", `command -v "\${SEAMSTAY_CHROMIUM:-chromium}"`], { encoding: "utf8" }).trim();
 }
 
-/** Builds the page into a folder of this run. */
-export async function buildPage(name: string): Promise<string> {
-  const outDir = join(import.meta.dirname, "../../out", `test-page-${name}`);
-  mkdirSync(outDir, { recursive: true });
+const ROOT = join(import.meta.dirname, "../..");
+
+/** Hash of everything the page is built from. */
+function hashSources(): string {
+  const hash = createHash("sha256");
+  for (const top of ["src/page", "src/core", "templates"]) {
+    const entries = readdirSync(join(ROOT, top), { recursive: true, withFileTypes: true }).filter((e) => e.isFile());
+    for (const path of entries.map((e) => join(e.parentPath, e.name)).sort())
+      hash.update(path.slice(ROOT.length)).update("\0").update(readFileSync(path));
+  }
+  hash.update(readFileSync(join(ROOT, "package-lock.json")));
+  return hash.digest("hex").slice(0, 16);
+}
+
+/** Builds the page, once for all test files that want the same sources. @returns its folder */
+export async function buildPage(): Promise<string> {
+  const out = join(ROOT, "out");
+  const done = join(out, `page-${hashSources()}`);
+  if (existsSync(done)) return done;
+  mkdirSync(out, { recursive: true });
+  for (const old of readdirSync(out).filter((n) => n.startsWith("page-") && !n.endsWith(".part")))
+    rmSync(join(out, old), { recursive: true, force: true });
+  const part = `${done}-${process.pid}.part`;
   await build({
-    configFile: join(import.meta.dirname, "../../src/page/vite.config.ts"),
+    configFile: join(ROOT, "src/page/vite.config.ts"),
     logLevel: "error",
-    build: { outDir, emptyOutDir: true },
+    build: { outDir: part, emptyOutDir: true },
   });
-  return outDir;
+  try {
+    renameSync(part, done);
+  } catch {
+    // another test file was quicker
+    rmSync(part, { recursive: true, force: true });
+  }
+  return done;
 }
 
 /** Watches a page: what it asks for, what goes wrong in it. */
@@ -62,18 +104,19 @@ export function watch(page: Page, desk: Pick<Desk, "requests" | "faults">): void
 }
 
 /** The bench, with a job handed over where one is given. */
-export async function setUp(name: string, opened: OpenedJob | null = null): Promise<Bench> {
-  const folder = await buildPage(name);
+export async function setUp(opened: OpenedJob | null = null): Promise<Bench> {
+  const folder = await buildPage();
   const { server, port } = await servePage(folder, 0, opened);
   const browser = await chromium.launch({ executablePath: findChromium(), args: ARGS });
   const url = `http://127.0.0.1:${port}/`;
   return {
     url,
+    folder,
     browser,
     open: async (options = {}) => {
       const context = await browser.newContext({ viewport: { width: 1440, height: 900 }, ...options });
       const page = await context.newPage();
-      page.setDefaultTimeout(15_000);
+      page.setDefaultTimeout(PATIENCE);
       const desk: Desk = { page, context, requests: [], faults: [] };
       watch(page, desk);
       await page.goto(url);
@@ -115,9 +158,24 @@ export async function turnTo(page: Page, leaf: string): Promise<void> {
 
 /** Types into a field by its label and leaves it. */
 export async function enter(page: Page, label: string | RegExp, text: string): Promise<void> {
-  const field = page.getByLabel(label).and(page.locator("input")).first();
+  const field = fieldOf(page, label);
   await field.fill(text);
   await field.press("Enter");
+}
+
+/** The first entry of a label. */
+export function fieldOf(page: Page, label: string | RegExp): Locator {
+  return page.getByLabel(label).and(page.locator("input, select")).first();
+}
+
+/** Waits until a field shows a text. */
+export async function shows(page: Page, label: string | RegExp, text: string): Promise<void> {
+  const field = fieldOf(page, label);
+  const end = Date.now() + PATIENCE;
+  while ((await field.inputValue()) !== text) {
+    if (Date.now() > end) throw new Error(`${label} shows ${await field.inputValue()}, not ${text}`);
+    await page.waitForTimeout(50);
+  }
 }
 
 /** Waits until the focus is in the place of a decision; it goes there after the leaf is drawn. */
@@ -137,4 +195,12 @@ export async function judge(page: Page): Promise<string[]> {
     return violations.flatMap((v) => v.nodes.map((n) => `${v.id}: ${n.target.join(" ")}: ${n.failureSummary ?? ""}`));
   });
   return found;
+}
+
+/** Waits until everything on the desk is kept. */
+export async function kept(page: Page): Promise<void> {
+  await page
+    .getByText(/^kept \d/)
+    .first()
+    .waitFor();
 }

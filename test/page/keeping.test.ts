@@ -1,13 +1,33 @@
-// Nothing is lost: reload, a worker that breaks, two tabs, a full store, no line, a job of a newer program.
+// Nothing is lost: reload, undo after it, a worker that breaks, two tabs, a full store, a private window, no line, jobs of
+// older and newer programs, an update.
+import { cpSync, mkdtempSync, readFileSync, writeFileSync } from "node:fs";
+import { tmpdir } from "node:os";
+import { join } from "node:path";
+import type { Page } from "playwright-core";
 import { afterAll, beforeAll, describe, expect, it } from "vitest";
-import { type Bench, type Desk, enter, PATIENCE, planned, plannedAnew, setUp, turnTo, watch } from "./bench.ts";
-import { SMALL_JOB, smallFiles } from "./smallForm.ts";
+import { servePage } from "../../src/cli/pageServer.ts";
+import {
+  type Bench,
+  type Desk,
+  enter,
+  kept,
+  LONG,
+  PATIENCE,
+  planned,
+  plannedAnew,
+  SOON,
+  setUp,
+  shows,
+  turnTo,
+  watch,
+} from "./bench.ts";
+import { SMALL_JOB, smallFiles, smallForm } from "./smallForm.ts";
 
 let bench: Bench;
 beforeAll(async () => {
-  bench = await setUp("keeping");
-}, PATIENCE);
-afterAll(() => bench.close());
+  bench = await setUp();
+}, LONG);
+afterAll(() => bench?.close());
 
 async function openSmall(): Promise<Desk & { revision: string }> {
   const desk = await bench.open();
@@ -15,27 +35,71 @@ async function openSmall(): Promise<Desk & { revision: string }> {
   return { ...desk, revision: await planned(desk.page) };
 }
 
-const kept = (desk: Desk) => desk.page.getByText(/^kept /).waitFor();
+/** Puts jobs into the store of the browser as a program of store version 1 kept them. */
+async function keepAsBefore(page: Page, jobs: Record<string, object>): Promise<void> {
+  await page.evaluate(
+    ({ jobs, mesh }) =>
+      new Promise<void>((resolve, reject) => {
+        const open = indexedDB.open("seamstay", 1);
+        open.onupgradeneeded = () => {
+          open.result.createObjectStore("jobs", { keyPath: "id" });
+          open.result.createObjectStore("meshes");
+        };
+        open.onerror = () => reject(open.error);
+        open.onsuccess = () => {
+          const db = open.result;
+          const tx = db.transaction(["jobs", "meshes"], "readwrite");
+          for (const [id, job] of Object.entries(jobs)) {
+            const kept = { id, savedAt: "2026-01-02T03:04:05Z", count: 3, log: [], leaf: "rolls", mesh: id };
+            tx.objectStore("jobs").put({ ...kept, title: `Kept as ${id}`, job });
+            tx.objectStore("meshes").put({ name: "booth.obj", bytes: new TextEncoder().encode(mesh) }, id);
+          }
+          tx.oncomplete = () => {
+            db.close();
+            resolve();
+          };
+        };
+      }),
+    { jobs, mesh: smallForm() },
+  );
+}
 
-describe("keeping", { timeout: PATIENCE }, () => {
-  it("is there again after a reload, on the leaf it was on, with its mesh and its edits", async () => {
-    const desk = await openSmall();
-    const { page } = desk;
+describe("keeping", { timeout: LONG }, () => {
+  it("is there again after a reload, on the leaf it was on, with its mesh and edits, undone and done again", async () => {
+    const { page, context, revision: first } = await openSmall();
     await turnTo(page, "Rolls");
     await enter(page, "Gap between cuts", "25");
-    const revision = await plannedAnew(page, desk.revision);
-    await kept(desk);
-    await page.waitForTimeout(600);
+    const second = await plannedAnew(page, first);
+    await enter(page, "Gap between cuts", "30");
+    await plannedAnew(page, second);
+    await page.getByRole("button", { name: "Undo gap between cuts" }).click();
+    await plannedAnew(page, "");
+    await shows(page, "Gap between cuts", "25");
+    await kept(page);
+    await turnTo(page, "Panels");
     await page.reload();
-    expect(await planned(page)).toBe(revision);
-    await page.getByRole("heading", { name: "Which cloth, and where on it?" }).waitFor();
-    expect(await page.getByLabel("Gap between cuts").inputValue()).toBe("25");
-    await desk.context.close();
+    await page.getByRole("heading", { name: "What is cut, and what stress will it take?" }).waitFor();
+    expect(await planned(page)).toBe(second);
+    await turnTo(page, "Rolls");
+    await shows(page, "Gap between cuts", "25");
+    await page.getByRole("button", { name: "Redo gap between cuts" }).click();
+    await shows(page, "Gap between cuts", "30");
+    await page.getByRole("button", { name: "Undo gap between cuts" }).click();
+    await page.getByRole("button", { name: "Undo gap between cuts" }).click();
+    await page.getByRole("button", { name: "Undo", exact: true }).and(page.locator(":disabled")).waitFor();
+    await kept(page);
+    await page.reload();
+    expect(await planned(page)).toBe(first);
+    await page.getByRole("button", { name: "Redo gap between cuts" }).click();
+    await shows(page, "Gap between cuts", "25");
+    await context.close();
   });
 
   it("says that the worker broke, and plans again with a new one", async () => {
     const { page, context, revision } = await openSmall();
-    await page.workers()[0].evaluate(() => {
+    const planner = () => page.workers().find((w) => w.url().includes("planWorker"));
+    await expect.poll(planner, SOON).toBeDefined();
+    await planner()?.evaluate(() => {
       setTimeout(() => {
         throw new Error("out of luck");
       }, 0);
@@ -51,7 +115,7 @@ describe("keeping", { timeout: PATIENCE }, () => {
 
   it("notices two tabs, and keeps both their works", async () => {
     const one = await openSmall();
-    await kept(one);
+    await kept(one.page);
     const page = await one.context.newPage();
     watch(page, one);
     await page.goto(bench.url);
@@ -65,6 +129,8 @@ describe("keeping", { timeout: PATIENCE }, () => {
     await turnTo(page, "Papers");
     await enter(page, "Drawn by", "second");
     await page.getByText(/goes on as “Ticket booth \(copy\)”/).waitFor();
+    await kept(page);
+    await kept(one.page);
     for (const [name, by] of [
       ["Ticket booth (copy)", "second"],
       ["Ticket booth", "first"],
@@ -73,7 +139,8 @@ describe("keeping", { timeout: PATIENCE }, () => {
       await third.goto(bench.url);
       await third.getByRole("button", { name, exact: true }).click();
       await turnTo(third, "Papers");
-      expect(await third.getByLabel("Drawn by").inputValue()).toBe(by);
+      await shows(third, "Drawn by", by);
+      await third.close();
     }
     expect(one.faults).toEqual([]);
     await one.context.close();
@@ -81,6 +148,7 @@ describe("keeping", { timeout: PATIENCE }, () => {
 
   it("says when the store is full, and when there is none", async () => {
     const { page, context } = await openSmall();
+    await turnTo(page, "Papers");
     for (const [fault, words] of [
       ["QuotaExceededError", /store is full: this job is not being kept/],
       ["InvalidStateError", /keeps nothing here \(a private window/],
@@ -90,27 +158,121 @@ describe("keeping", { timeout: PATIENCE }, () => {
           throw new DOMException("no", name);
         };
       }, fault);
-      await turnTo(page, "Papers");
       await enter(page, "Drawn by", fault);
       await page.getByRole("alert").getByText(words).waitFor();
     }
-    await page.getByText("not kept yet").waitFor();
+    await page.getByText("not kept", { exact: true }).waitFor();
+    await context.close();
+  });
+
+  it("works where a private window lets nothing be kept, and says so", async () => {
+    const { page, context, faults } = await bench.open();
+    await page.addInitScript(() => {
+      const refuse = () => {
+        throw new DOMException("refused", "SecurityError");
+      };
+      IDBFactory.prototype.open = refuse;
+      Object.defineProperty(window, "sessionStorage", { get: refuse });
+    });
+    await page.reload();
+    await page.getByText(/keeps nothing here \(a private window/).waitFor();
+    await page.getByLabel("Choose files").setInputFiles(smallFiles());
+    await planned(page);
+    await page
+      .getByRole("alert")
+      .getByText(/keeps nothing here \(a private window/)
+      .waitFor();
+    expect(faults).toEqual([]);
     await context.close();
   });
 
   it("works without a line, down to the papers", async () => {
     const { page, context, faults } = await bench.open();
-    await page.evaluate(async () => {
-      await navigator.serviceWorker.ready;
-      while (navigator.serviceWorker.controller === null) await new Promise((r) => setTimeout(r, 50));
-    });
+    await page.evaluate(() => navigator.serviceWorker.ready);
+    await page.waitForFunction(() => navigator.serviceWorker.controller !== null, undefined, SOON);
     await context.setOffline(true);
     await page.reload();
     await page.getByLabel("Choose files").setInputFiles(smallFiles());
     await planned(page);
     await turnTo(page, "Papers");
-    await page.getByText(/files, revision/).waitFor({ timeout: PATIENCE });
+    await page.getByText(/files, revision/).waitFor();
     expect(faults.filter((f) => !f.includes("ERR_INTERNET_DISCONNECTED"))).toEqual([]);
+    await context.close();
+  });
+
+  it("takes an update over when it is asked to, keeps the job, and leaves nothing of the old version behind", async () => {
+    const next = mkdtempSync(join(tmpdir(), "seamstay-next-"));
+    cpSync(bench.folder, next, { recursive: true });
+    const script = readFileSync(join(next, "service-worker.js"), "utf8");
+    writeFileSync(join(next, "service-worker.js"), script.replace(/const VERSION = "\w+"/, 'const VERSION = "next"'));
+    let served = await servePage(bench.folder, 0, null);
+    const { page, context, faults } = await bench.open();
+    try {
+      await page.goto(`http://127.0.0.1:${served.port}/`);
+      await page.getByLabel("Choose files").setInputFiles(smallFiles());
+      const revision = await planned(page);
+      await kept(page);
+      await page.waitForFunction(() => navigator.serviceWorker.controller !== null, undefined, SOON);
+      const names = () => page.evaluate(async () => (await caches.keys()).sort());
+      const before = await names();
+      expect(before).toHaveLength(1);
+      served.server.closeAllConnections();
+      await new Promise((done) => served.server.close(done));
+      served = await servePage(next, served.port, null);
+      await page.evaluate(async () => void (await (await navigator.serviceWorker.ready).update()));
+      const news = page.getByText("A newer Seamstay is ready.");
+      await news.waitFor();
+      // The old version goes on until the user says so.
+      expect(await names()).toContain(before[0]);
+      await page.getByRole("button", { name: "Take it over" }).click();
+      await news.waitFor({ state: "detached" });
+      expect(await planned(page)).toBe(revision);
+      await expect.poll(names, SOON).toEqual(["seamstay-next"]);
+      expect(faults).toEqual([]);
+    } finally {
+      await context.close();
+      served.server.closeAllConnections();
+      served.server.close();
+    }
+  });
+
+  it("opens what an older program kept, and says what a newer one kept", async () => {
+    const context = await bench.browser.newContext();
+    const page = await context.newPage();
+    page.setDefaultTimeout(PATIENCE);
+    // A place of the same origin that does not open the store itself.
+    await page.goto(`${bench.url}nothing`);
+    await keepAsBefore(page, { old: SMALL_JOB, new: { ...SMALL_JOB, version: 99 } });
+    await page.goto(bench.url);
+    await page.getByRole("button", { name: "Kept as new", exact: true }).click();
+    await page
+      .getByRole("alert")
+      .getByText(/version 99 of the job file is newer than this program/)
+      .waitFor();
+    await page.getByRole("button", { name: "Kept as old", exact: true }).click();
+    await planned(page);
+    await page.getByRole("heading", { name: "Which cloth, and where on it?" }).waitFor();
+    await enter(page, "Gap between cuts", "25");
+    await kept(page);
+    await page.reload();
+    await shows(page, "Gap between cuts", "25");
+    await page.getByRole("button", { name: "Undo gap between cuts" }).waitFor();
+    await page.goto(`${bench.url}nothing`);
+    await page.evaluate(
+      () =>
+        new Promise<void>((resolve) => {
+          const open = indexedDB.open("seamstay", 99);
+          open.onsuccess = () => {
+            open.result.close();
+            resolve();
+          };
+        }),
+    );
+    await page.goto(bench.url);
+    await page
+      .getByText(/A newer Seamstay has kept jobs in this browser/)
+      .first()
+      .waitFor();
     await context.close();
   });
 
@@ -130,10 +292,10 @@ describe("keeping", { timeout: PATIENCE }, () => {
     await page.getByRole("button", { name: /open the list of jobs/ }).click();
     await page.getByLabel("Choose files").setInputFiles([mesh]);
     await planned(page);
+    await kept(page);
     await page.getByRole("button", { name: /open the list of jobs/ }).click();
-    // the list is read from the store, so it may come a moment after the desk
-    await page.getByRole("button", { name: "Ticket booth", exact: true }).waitFor({ timeout: PATIENCE });
-    expect(await page.getByRole("button", { name: "Ticket booth", exact: true }).count()).toBe(1);
+    const listed = page.getByRole("button", { name: "Ticket booth", exact: true });
+    await expect.poll(() => listed.count(), SOON).toBe(1);
     await context.close();
   });
 });

@@ -1,7 +1,19 @@
 // A seam's end slid along its edge: with the mouse, a finger and the keys; its panels redrawn, the roof tied again, undone.
 import type { Page } from "playwright-core";
 import { afterAll, beforeAll, describe, expect, it } from "vitest";
-import { type Bench, type Desk, enter, judge, PATIENCE, planned, plannedAnew, setUp, turnTo } from "./bench.ts";
+import {
+  type Bench,
+  type Desk,
+  enter,
+  judge,
+  LONG,
+  PATIENCE,
+  planned,
+  plannedAnew,
+  SOON,
+  setUp,
+  turnTo,
+} from "./bench.ts";
 import { smallFiles } from "./smallForm.ts";
 
 let bench: Bench;
@@ -9,7 +21,7 @@ let desk: Desk;
 let revision = "";
 
 beforeAll(async () => {
-  bench = await setUp("slide");
+  bench = await setUp();
   desk = await bench.open({ hasTouch: true });
   await desk.page.getByLabel("Choose files").setInputFiles(smallFiles());
   await planned(desk.page);
@@ -17,8 +29,8 @@ beforeAll(async () => {
   await enter(desk.page, "Number of strips", "4");
   await desk.page.getByText(/between 4 panels/).waitFor({ timeout: PATIENCE });
   revision = await planned(desk.page);
-}, PATIENCE);
-afterAll(() => bench.close());
+}, LONG);
+afterAll(() => bench?.close());
 
 const grips = (page: Page) => page.getByRole("slider");
 const beside = (page: Page) => page.getByRole("complementary", { name: "Panels of the seam" });
@@ -57,11 +69,11 @@ async function aside(page: Page, i: number, share: number): Promise<[number, num
   return [x + share * (u - x), y + share * (v - y)];
 }
 
-describe("a seam's end", { timeout: PATIENCE }, () => {
+describe("a seam's end", { timeout: LONG }, () => {
   it("two grips for each seam, each on an edge", async () => {
     const { page } = desk;
     await grips(page).nth(5).waitFor();
-    expect(await grips(page).count()).toBe(6);
+    await expect.poll(() => grips(page).count(), SOON).toBe(6);
     for (let i = 0; i < 6; i++)
       expect(await grips(page).nth(i).getAttribute("aria-label")).toMatch(/^S\d, end on (south|north|east|west)$/);
   });
@@ -76,12 +88,12 @@ describe("a seam's end", { timeout: PATIENCE }, () => {
     const first = await redrawn(page, []);
     await page.mouse.move(...to, { steps: 5 });
     await redrawn(page, first);
-    expect(Math.abs((await metres(page, 2)) - was)).toBeGreaterThan(0.1);
+    await expect.poll(async () => Math.abs((await metres(page, 2)) - was), SOON).toBeGreaterThan(0.1);
     await page.mouse.up();
     await page.getByText(/The whole roof is tied again/).waitFor();
     const tied = await metres(page, 2);
     const next = await plannedAnew(page, revision);
-    expect(Math.abs((await metres(page, 2)) - tied)).toBeLessThan(0.002);
+    await expect.poll(async () => Math.abs((await metres(page, 2)) - tied), SOON).toBeLessThan(0.002);
     const now = await Promise.all([0, 1, 3, 4, 5].map((i) => metres(page, i)));
     now.forEach((m, i) => {
       expect(Math.abs(m - others[i])).toBeLessThan(0.002);
@@ -107,7 +119,7 @@ describe("a seam's end", { timeout: PATIENCE }, () => {
     await redrawn(page, []);
     await touch("touchEnd");
     const next = await plannedAnew(page, revision);
-    expect(Math.abs((await metres(page, 2)) - was)).toBeGreaterThan(0.1);
+    await expect.poll(async () => Math.abs((await metres(page, 2)) - was), SOON).toBeGreaterThan(0.1);
     await page.keyboard.press("Control+z");
     await plannedAnew(page, next);
   });
@@ -118,15 +130,15 @@ describe("a seam's end", { timeout: PATIENCE }, () => {
     const was = await metres(page, 4);
     await grips(page).nth(4).focus();
     await page.keyboard.press("ArrowRight");
-    expect(await metres(page, 4)).toBeCloseTo(was + 0.01, 3);
+    await expect.poll(() => metres(page, 4), SOON).toBeCloseTo(was + 0.01, 3);
     await page.keyboard.press("Escape");
-    expect(await metres(page, 4)).toBeCloseTo(was, 3);
+    await expect.poll(() => metres(page, 4), SOON).toBeCloseTo(was, 3);
     await page.keyboard.press("Shift+ArrowLeft");
     await page.keyboard.press("ArrowLeft");
     await page.keyboard.press("Enter");
     await page.getByText(/The whole roof is tied again/).waitFor();
     await plannedAnew(page, revision);
-    expect(await metres(page, 4)).toBeCloseTo(was - 0.11, 2);
+    await expect.poll(() => metres(page, 4), SOON).toBeCloseTo(was - 0.11, 2);
     await page.getByText("Seams by hand").waitFor();
   });
 
@@ -146,7 +158,7 @@ describe("a seam's end", { timeout: PATIENCE }, () => {
     await beside(page)
       .getByText(/Slide a seam's end/)
       .waitFor();
-    expect(await metres(page, 2)).toBeCloseTo(was, 3);
+    await expect.poll(() => metres(page, 2), SOON).toBeCloseTo(was, 3);
     expect(await planned(page)).toBe(before);
   });
 
@@ -156,20 +168,22 @@ describe("a seam's end", { timeout: PATIENCE }, () => {
     await page.getByRole("button", { name: "Compare layouts" }).click();
     const cards = page.getByRole("list", { name: "Layouts side by side" }).getByRole("listitem");
     await page.getByText("Being worked out").last().waitFor({ state: "detached" });
-    expect(await cards.count()).toBeGreaterThan(2);
-    expect(await cards.first().innerText()).toContain("As it stands");
+    await expect.poll(() => cards.count(), SOON).toBeGreaterThan(2);
+    await cards.first().getByText("As it stands").waitFor();
     const other = cards.filter({ has: page.getByRole("button", { name: /^Take \d strips/ }) }).first();
     const wanted = Number(/(\d+) strips/.exec(await other.innerText())?.[1]);
-    expect(await other.locator("path.weld").count()).toBe(wanted - 1);
+    await expect.poll(() => other.locator("path.weld").count(), SOON).toBe(wanted - 1);
     expect(await judge(page)).toEqual([]);
     await other.getByRole("button").click();
     await plannedAnew(page, before);
     await page.getByText(new RegExp(`between ${wanted} panels`)).waitFor();
-    expect(await page.getByLabel("Why this layout").inputValue()).toMatch(/compared: .* panels, .* m of seam/);
+    await expect
+      .poll(() => page.getByLabel("Why this layout").inputValue(), SOON)
+      .toMatch(/compared: .* panels, .* m of seam/);
     await page.getByText(/Taken because: /).waitFor();
     await enter(page, "Number of strips", String(wanted + 1));
     await page.getByText(new RegExp(`between ${wanted + 1} panels`)).waitFor({ timeout: PATIENCE });
-    expect(await page.getByLabel("Why this layout").count()).toBe(0);
+    await expect.poll(() => page.getByLabel("Why this layout").count(), SOON).toBe(0);
   });
 
   it("nothing went wrong on the way", () => {

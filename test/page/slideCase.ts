@@ -32,7 +32,7 @@ interface Seen {
 
 /** Times in ms, of the clock. */
 export async function benchSlide(jobPath: string, meshPath: string) {
-  const bench = await setUp("bench-slide");
+  const bench = await setUp();
   try {
     const { page } = await bench.open();
     page.setDefaultTimeout(300_000);

@@ -25,6 +25,8 @@ export interface PlanOptions {
   onStation?: (station: Station) => void;
   /** Handed what dragging a seam needs, once the panels are made. */
   onRoof?: (roof: MadeRoof) => void;
+  /** Told the facts so far when the work of a station stands in them; they grow on afterwards. */
+  onFacts?: (station: Station, facts: Facts) => void;
 }
 
 /** Share of the progress bar at which each station begins. */
@@ -106,6 +108,7 @@ function runStationsInPlace(
   options.onStation("form");
   const { form, shifts } = take(runBuiltForm(source, job, share("form", "seams")));
   facts.form = buildFormFacts(form);
+  options.onFacts?.("form", facts);
   if (options.until === "form") return;
 
   if (options.until === "seams") {
@@ -132,6 +135,7 @@ function runStationsInPlace(
   facts.panels = panels.map(buildPanelFacts);
   const others = take(buildPieces(panels, { form, seams: layout.seams }, job));
   facts.pieces = others.map(buildPieceFacts);
+  options.onFacts?.("panels", facts);
   if (options.until === "panels") return;
 
   options.onStation("rolls");
@@ -140,6 +144,7 @@ function runStationsInPlace(
   const nested = take(runRolls(pieces, stock, job.nest, share("rolls", "rig")));
   facts.rolls = nested;
   facts.cloth = totalCloth(nested, pieces, stock, job.nest.gap);
+  options.onFacts?.("rolls", facts);
   if (options.until === "rolls") return;
 
   options.onStation("rig");

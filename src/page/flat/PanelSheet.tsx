@@ -33,6 +33,8 @@ export function PanelDrawing({ panel, size, detail }: { panel: SeenPanel; size: 
           key={`${side.id} ${side.netFrom}`}
           className={`side ${side.kind}${side.id === pointed ? " lit" : ""}`}
           d={path(sideLine(panel, side), false)}
+          onPointerEnter={() => bookStore.setState({ pointed: side.id })}
+          onPointerLeave={() => bookStore.setState({ pointed: panel.id })}
         />
       ))}
       {detail &&

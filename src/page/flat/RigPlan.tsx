@@ -17,6 +17,8 @@ function boundsOf(form: FactsForm, rig: FactsRig): { x: number; y: number; w: nu
 
 const line = (points: readonly number[][]) => points.map((p) => `${p[0].toFixed(3)},${(-p[1]).toFixed(3)}`).join(" ");
 
+const point = (id: string | null) => bookStore.setState({ pointed: id });
+
 /** The plan. */
 export function RigPlan({
   form,
@@ -47,11 +49,19 @@ export function RigPlan({
         <polyline
           key={e.id}
           className={`side ${e.kind}${lit(e.id) ? " lit" : ""}`}
+          onPointerEnter={() => point(e.id)}
+          onPointerLeave={() => point(null)}
           points={line(e.vertices.map((v) => form.vertices[v]))}
         />
       ))}
       {facts.seams?.map((s) => (
-        <polyline key={s.id} className="side seam" points={line(s.path)} />
+        <polyline
+          key={s.id}
+          className={`side seam${lit(s.id) ? " lit" : ""}`}
+          points={line(s.path)}
+          onPointerEnter={() => point(s.id)}
+          onPointerLeave={() => point(null)}
+        />
       ))}
       {rig.struts.map((s) => (
         <polyline key={s.id} className="strut" points={line(s.nodes.map((n) => rig.nodes[n]))} />
@@ -72,8 +82,8 @@ export function RigPlan({
             aria-label={`${a.id} ${force === undefined ? "not pulled yet" : `${figure(force, 1)} kN`}, adjuster${moving.has(a.id) ? " that moves in this step" : ""}`}
             onClick={() => bookStore.setState({ chosen: a.id })}
             onKeyDown={(e) => e.key === "Enter" && bookStore.setState({ chosen: a.id })}
-            onPointerEnter={() => bookStore.setState({ pointed: a.id })}
-            onPointerLeave={() => bookStore.setState({ pointed: null })}
+            onPointerEnter={() => point(a.id)}
+            onPointerLeave={() => point(null)}
           >
             <polyline points={line([p, q])} />
             <circle cx={out[0]} cy={-out[1]} r={0.45 * size} />

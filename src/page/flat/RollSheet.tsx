@@ -2,7 +2,7 @@
 import { useId, useRef, useState } from "react";
 import type { Facts, Vec2 } from "../../core/records/facts.ts";
 import type { NestedRoll, Placement } from "../../core/records/roll.ts";
-import { setPin } from "../actions/setPin.ts";
+import { setPin } from "../actions/rolls/setPin.ts";
 import { act, bookStore } from "../store/bookStore.ts";
 import { useBook } from "../store/useBook.ts";
 import { pinPlace } from "./pinPlace.ts";

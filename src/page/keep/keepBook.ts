@@ -1,14 +1,20 @@
 // Saves the job as it goes, and says when that fails. Another tab on the same job is noticed; where both have changed it,
 // this tab's work goes on as a copy, so neither is lost.
-import { bookStore, notify, openProject } from "../store/bookStore.ts";
+import { bookStore, dismiss, LEAVES, type Leaf, notify, openProject } from "../store/bookStore.ts";
 import type { Project } from "../store/project.ts";
 import { loadJob, saveJob } from "./jobStore.ts";
+import { type Line, lineOf, readLine, renameLine } from "./timeline.ts";
 
 /** Quiet time before an edit is written, ms. */
 const QUIET = 400;
 
-let saved: Project | null = null;
-let count = 0;
+/** What is known of the open job in the store: its line as it was kept last, and the count it stands at. */
+interface Shelved {
+  line: Line | null;
+  count: number;
+}
+
+let shelved: Shelved = { line: null, count: 0 };
 let timer: ReturnType<typeof setTimeout> | undefined;
 let writing: Promise<void> = Promise.resolve();
 const self = crypto.randomUUID();
@@ -19,62 +25,101 @@ export function newId(): string {
   return crypto.randomUUID();
 }
 
-/** Opens a kept job. @returns whether it was there */
-export async function openKept(id: string): Promise<boolean> {
+/**
+ * Opens a kept job with all that can be undone.
+ * @param leaf to open it on; left out: where it was kept
+ * @returns whether it was there
+ */
+export async function openKept(id: string, leaf?: Leaf): Promise<boolean> {
+  flush();
+  await writing;
   const found = await loadJob(id);
   if (found === null) return false;
-  await writing;
-  saved = found.project;
-  count = found.count;
-  openProject(found.project, found.leaf);
+  shelved = { line: found.whole ? found.line : null, count: found.count };
+  openProject(readLine(found.line), leaf ?? found.leaf);
   rememberOpen(id);
   return true;
 }
 
 /** Opens a job that is not kept yet; it will be. */
 export function openNew(project: Project): void {
-  saved = null;
-  count = 0;
-  openProject(project);
+  flush();
+  shelved = { line: null, count: 0 };
+  openProject({ project, past: [], future: [] });
   rememberOpen(project.id);
 }
 
-/** Which job this tab has open; survives a reload of this tab only. */
-export function lastOpen(): string | null {
-  return sessionStorage.getItem("seamstay-open");
+/** Which job this tab has open, and on which leaf; survives a reload of this tab only. */
+export function lastOpen(): { id: string; leaf: Leaf } | null {
+  const [id, leaf] = (readSession() ?? "").split(" ");
+  return id === "" ? null : { id, leaf: LEAVES.find((l) => l === leaf) ?? "form" };
 }
 
-export function rememberOpen(id: string | null): void {
-  if (id === null) sessionStorage.removeItem("seamstay-open");
-  else {
-    sessionStorage.setItem("seamstay-open", id);
-    channel.postMessage({ kind: "open", id, from: self });
+/** A browser that keeps nothing refuses even this; the page works without. */
+function readSession(): string | null {
+  try {
+    return sessionStorage.getItem("seamstay-open");
+  } catch {
+    return null;
   }
 }
 
-async function write(): Promise<void> {
+function noteOpen(): void {
   const { project, leaf } = bookStore.getState();
-  if (project === null || project === saved) return;
   try {
-    const next = await saveJob(project, leaf, count, new Date().toISOString());
-    if (next === null) return forkCopy(project);
-    saved = project;
-    count = next;
-    bookStore.setState({ kept: new Date().toISOString() });
-    bookStore.setState((s) => ({ notices: s.notices.filter((n) => n.id !== "keep") }));
+    if (project !== null) sessionStorage.setItem("seamstay-open", `${project.id} ${leaf}`);
+  } catch {
+    // see readSession
+  }
+}
+
+function rememberOpen(id: string): void {
+  noteOpen();
+  channel.postMessage({ kind: "open", id, from: self });
+}
+
+/** Writes what is not kept yet, now. */
+function flush(): void {
+  clearTimeout(timer);
+  const { project, past, future, leaf } = bookStore.getState();
+  if (project === null) return;
+  const shelf = shelved;
+  writing = writing.then(() => write(shelf, lineOf({ project, past, future }), leaf));
+}
+
+async function write(shelf: Shelved, line: Line, leaf: Leaf): Promise<void> {
+  const { project } = line.states[line.at];
+  const open = () => shelf === shelved;
+  // What was changed while this was written is kept in its own turn.
+  const settle = () => bookStore.setState((s) => ({ keeping: open() ? s.project !== project : s.keeping }));
+  if (project === shelf.line?.states[shelf.line.at].project) return settle();
+  const now = new Date().toISOString();
+  try {
+    const next = await saveJob(line, shelf.line, leaf, shelf.count, now);
+    if (next === null) return open() ? forkCopy() : void (await saveJob(asCopy(line), null, leaf, 0, now));
+    Object.assign(shelf, { line, count: next });
+    settle();
+    if (open()) bookStore.setState({ kept: now });
+    dismiss("keep");
     channel.postMessage({ kind: "saved", id: project.id, from: self });
   } catch (error) {
-    bookStore.setState({ kept: null });
-    notify("keep", explain(error), true);
+    if (open()) bookStore.setState({ kept: null, keeping: false });
+    notify("keep", explainFault(error), true);
   }
+}
+
+function asCopy(line: Line): Line {
+  return renameLine(line, newId(), (p) => ({ ...p, job: { ...p.job, title: `${p.job.title} (copy)` } }));
 }
 
 /** The other tab's version stays under the old name, this one goes on under a new one. */
-function forkCopy(project: Project): void {
-  const copy: Project = { ...project, id: newId(), job: { ...project.job, title: `${project.job.title} (copy)` } };
-  count = 0;
-  saved = null;
-  bookStore.setState({ project: copy, planned: null });
+function forkCopy(): void {
+  const { project, past, future } = bookStore.getState();
+  if (project === null) return;
+  const forked = asCopy(lineOf({ project, past, future }));
+  const { project: copy } = readLine(forked);
+  shelved = { line: null, count: 0 };
+  bookStore.setState({ ...readLine(forked), planned: null });
   rememberOpen(copy.id);
   notify(
     "tabs",
@@ -83,10 +128,14 @@ function forkCopy(project: Project): void {
   );
 }
 
-function explain(error: unknown): string {
+/** Why nothing is kept, and what to do. */
+export function explainFault(error: unknown): string {
   const name = error instanceof DOMException ? error.name : "";
   if (name === "QuotaExceededError") {
     return "The browser's store is full: this job is not being kept. Save it as a file now, then delete jobs from the list.";
+  }
+  if (name === "VersionError") {
+    return "A newer Seamstay has kept jobs in this browser, so this older one leaves its store alone: this job is not being kept. Take the newer one over, or save the job as a file before you close the page.";
   }
   if (name === "InvalidStateError" || name === "SecurityError" || name === "UnknownError") {
     return "This browser keeps nothing here (a private window, or storage is switched off). Save the job as a file before you close the page.";
@@ -97,14 +146,12 @@ function explain(error: unknown): string {
 /** Begins to keep whatever is opened, and to listen for other tabs. */
 export function startKeeping(): void {
   bookStore.subscribe((now, before) => {
+    if (now.leaf !== before.leaf) noteOpen();
     if (now.project === null || now.project === before.project) return;
     clearTimeout(timer);
+    bookStore.setState({ keeping: true });
     timer = setTimeout(flush, QUIET);
   });
-  const flush = () => {
-    clearTimeout(timer);
-    writing = writing.then(write);
-  };
   addEventListener("pagehide", flush);
   document.addEventListener("visibilitychange", () => {
     if (document.visibilityState === "hidden") flush();

@@ -73,7 +73,12 @@ function isJob(file: LoadedFile): boolean {
   return new TextDecoder().decode(file.bytes.subarray(0, 400)).includes("seamstay-job");
 }
 
+/** The readings that count and those that were struck, in the order they were taken. */
 function readLog(files: readonly LoadedFile[]): Reading[] {
-  const csv = files.find((f) => /readings.*\.csv$/i.test(f.name));
-  return csv === undefined ? [] : readReadings(decodeText(csv.bytes, csv.name));
+  const csvs = files.filter((f) => /readings.*\.csv$/i.test(f.name));
+  const log = csvs.flatMap((csv) => {
+    const struck = /struck\.csv$/i.test(csv.name);
+    return readReadings(decodeText(csv.bytes, csv.name)).map((r) => (struck ? { ...r, struck: true as const } : r));
+  });
+  return log.sort((a, b) => (a.time < b.time ? -1 : a.time > b.time ? 1 : 0));
 }

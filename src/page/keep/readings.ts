@@ -12,23 +12,25 @@ function cell(value: string | number | null): string {
   return /[",\r\n]/.test(safe) ? `"${safe.replaceAll('"', '""')}"` : safe;
 }
 
-/** Bytes of readings.csv. */
-export function writeReadings(log: readonly Reading[]): Uint8Array<ArrayBuffer> {
-  const rows = log.map((r) =>
-    [
-      r.time,
-      r.by,
-      r.id,
-      r.force,
-      r.frequency,
-      r.freeLength,
-      r.massPerMetre,
-      r.temperature,
-      ...(r.at ?? [null, null, null]),
-    ]
-      .map(cell)
-      .join(","),
-  );
+/** Bytes of readings.csv: the readings that count, or those that were struck. */
+export function writeReadings(log: readonly Reading[], struck = false): Uint8Array<ArrayBuffer> {
+  const rows = log
+    .filter((r) => (r.struck ?? false) === struck)
+    .map((r) =>
+      [
+        r.time,
+        r.by,
+        r.id,
+        r.force,
+        r.frequency,
+        r.freeLength,
+        r.massPerMetre,
+        r.temperature,
+        ...(r.at ?? [null, null, null]),
+      ]
+        .map(cell)
+        .join(","),
+    );
   return new TextEncoder().encode(`${[HEAD, ...rows].join("\r\n")}\r\n`);
 }
 

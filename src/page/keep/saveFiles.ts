@@ -1,5 +1,5 @@
 // Files out of the page: single ones, and several as one zip with a fixed stamp, so that equal content is an equal file.
-import type { Project } from "../store/project.ts";
+import type { Project, Reading } from "../store/project.ts";
 import { writeReadings } from "./readings.ts";
 
 export interface SavedFile {
@@ -55,6 +55,12 @@ export async function packJob(project: Project): Promise<SavedFile> {
   return await zipFiles(`${fileStem(job.title)}.zip`, [
     { path: "job.json", bytes: text },
     ...(mesh === null ? [] : [{ path: mesh.name, bytes: mesh.bytes }]),
-    ...(log.length === 0 ? [] : [{ path: "readings.csv", bytes: writeReadings(log) }]),
+    ...logFiles(log),
   ]);
+}
+
+/** The log as files: what counts as the command line reads it, and what was struck beside it. */
+export function logFiles(log: readonly Reading[]): SavedFile[] {
+  const struck = log.some((r) => r.struck) ? [{ path: "readings-struck.csv", bytes: writeReadings(log, true) }] : [];
+  return log.length === 0 ? [] : [{ path: "readings.csv", bytes: writeReadings(log) }, ...struck];
 }

@@ -87,7 +87,7 @@ export function Corrections({ percent, stage }: { percent: number | null; stage:
   const correcting = useBook((b) => b.correcting);
   const fault = useBook((b) => b.correctFault);
   const words = useBook((b) => b.progress.words);
-  if (project === null || project.log.length === 0) return null;
+  if (project === null || project.log.every((r) => r.struck)) return null;
   return (
     <section className="corrections" aria-label="Corrections">
       {correcting ? (

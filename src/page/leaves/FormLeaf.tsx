@@ -1,9 +1,8 @@
 // Form: is this surface in balance, at which forces?
 import type { Facts } from "../../core/records/facts.ts";
-import { setEdge } from "../actions/setEdge.ts";
-import { setMeshWord } from "../actions/setMeshWord.ts";
-import { setPrestress } from "../actions/setPrestress.ts";
-import { setSettle } from "../actions/setSettle.ts";
+import { setMeshWord } from "../actions/form/setMeshWord.ts";
+import { setPrestress } from "../actions/form/setPrestress.ts";
+import { setSettle } from "../actions/form/setSettle.ts";
 import { FieldPicker } from "../parts/FieldPicker.tsx";
 import { ChoiceField, NumberField, SwitchField } from "../parts/Fields.tsx";
 import { type FigureRow, FigureTable } from "../parts/FigureTable.tsx";
@@ -12,62 +11,10 @@ import { Waiting } from "../parts/Waiting.tsx";
 import { LazySolid } from "../solid/LazySolid.tsx";
 import { act } from "../store/bookStore.ts";
 import { useBook } from "../store/useBook.ts";
+import { useShownFacts, useShownFields } from "../store/useShown.ts";
+import { AnchorDecisions } from "./AnchorDecisions.tsx";
+import { EdgeDecisions } from "./EdgeDecisions.tsx";
 import { LeafFrame } from "./LeafFrame.tsx";
-
-const KINDS = [
-  { value: "", words: "as found" },
-  { value: "cable", words: "cable" },
-  { value: "clamped", words: "clamped" },
-  { value: "free", words: "free" },
-  { value: "ridge", words: "ridge cable" },
-  { value: "valley", words: "valley cable" },
-  { value: "belt", words: "belt" },
-] as const;
-
-function EdgeDecisions() {
-  const edges = useBook((b) => b.facts?.form?.edges);
-  const given = useBook((b) => b.project?.job.edges);
-  const chosen = useBook((b) => b.chosen);
-  if (edges === undefined) return null;
-  return (
-    <details className="group" open={edges.length <= 6 || edges.some((e) => e.id === chosen)}>
-      <summary>Edges ({edges.length})</summary>
-      {edges.map((e) => {
-        const own = given?.[e.id];
-        const named = `edges.${e.id}`;
-        return (
-          <fieldset key={e.id} className={e.id === chosen ? "edge lit" : "edge"} data-path={named}>
-            <legend>
-              {e.id} <span className="quiet">{figure(e.length, 2)} m</span>
-            </legend>
-            <ChoiceField
-              label="Kind"
-              path={`${named}.kind`}
-              given={own?.kind !== undefined}
-              value={own?.kind ?? ""}
-              choices={KINDS.map((k) => (k.value === "" ? { ...k, words: `as found: ${e.kind}` } : k))}
-              onChange={(v) =>
-                act(setEdge, { edge: e.id, key: "kind", value: v === "" ? undefined : v }, `kind of ${e.id}`)
-              }
-            />
-            {e.force !== null && (
-              <NumberField
-                label="Force"
-                path={`${named}.force`}
-                given={typeof own?.force === "number"}
-                value={own?.force ?? null}
-                none={figure(e.force, 2)}
-                hint={typeof own?.force === "number" ? undefined : "by best balance with the cloth"}
-                unit="kN"
-                onChange={(v) => act(setEdge, { edge: e.id, key: "force", value: v }, `force of ${e.id}`)}
-              />
-            )}
-          </fieldset>
-        );
-      })}
-    </details>
-  );
-}
 
 function FormDecisions() {
   const job = useBook((b) => b.job);
@@ -112,6 +59,7 @@ function FormDecisions() {
         onChange={(value) => act(setMeshWord, { key: "up", value }, "up axis of the mesh")}
       />
       <EdgeDecisions />
+      <AnchorDecisions />
     </>
   );
 }
@@ -149,8 +97,8 @@ function reliefRows(relief: Form["relief"]): FigureRow[] {
 
 /** The leaf. */
 export function FormLeaf() {
-  const facts = useBook((b) => b.facts);
-  const fields = useBook((b) => b.fields);
+  const facts = useShownFacts("form");
+  const fields = useShownFields("form");
   const field = useBook((b) => b.field);
   const form = facts?.form;
   const shown = field === "residual" || field === "curvature" ? field : "none";
@@ -201,12 +149,14 @@ export function FormLeaf() {
               { what: "Out of balance, mean (rms)", value: figure(form.residual.rms) },
               ...reliefRows(form.relief),
               ...cables.slice(0, 12).map((e) => ({
+                id: e.id,
                 what: `Cable ${e.id}`,
                 value: figure(e.force ?? 0, 2),
                 unit: "kN",
                 against: tellForce(e),
               })),
               ...form.reactions.slice(0, 12).map((r) => ({
+                id: r.anchor,
                 what: `Pull on ${r.anchor}`,
                 value: figure(Math.hypot(...r.force), 2),
                 unit: "kN",

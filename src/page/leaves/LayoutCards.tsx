@@ -2,7 +2,7 @@
 import type { ComparedLayout } from "../../core/plan/compareLayouts.ts";
 import type { FactsForm } from "../../core/records/facts.ts";
 import type { SeamDecision } from "../../core/records/job.ts";
-import { takeLayout } from "../actions/takeLayout.ts";
+import { takeLayout } from "../actions/seams/takeLayout.ts";
 import { figure } from "../parts/figure.ts";
 import { act, bookStore } from "../store/bookStore.ts";
 import { isSameWork } from "../store/hand.ts";

@@ -5,6 +5,7 @@ import { FindingList } from "../parts/FindingList.tsx";
 import { leafOfFinding } from "../parts/jump.ts";
 import type { Leaf } from "../store/bookStore.ts";
 import { useBook } from "../store/useBook.ts";
+import { isOlder, useShownFacts } from "../store/useShown.ts";
 
 /** A leaf; `stage` is left out until the plan has come that far. */
 export function LeafFrame(props: {
@@ -18,13 +19,18 @@ export function LeafFrame(props: {
   figures?: React.ReactNode;
   decisions: React.ReactNode;
 }) {
-  const findings = useBook((b) => b.facts?.findings);
+  const facts = useShownFacts(props.leaf);
+  const older = useBook(isOlder);
+  const findings = facts?.findings;
   const own = findings?.filter((f) => leafOfFinding(f) === props.leaf && f.level !== "note") ?? [];
   return (
     <div className={`leaf leaf-${props.leaf}`}>
       <header className="ask">
         <h1 tabIndex={-1}>{props.question}</h1>
-        <p className="answer">{props.answer}</p>
+        <p className="answer">
+          {props.answer}
+          {older && <span className="quiet"> This is still the plan before the last change.</span>}
+        </p>
       </header>
       <section className="stage" aria-label="The thing itself">
         {props.tools !== undefined && <div className="tools">{props.tools}</div>}
@@ -41,7 +47,7 @@ export function LeafFrame(props: {
           <div className="card">
             <h2>Figures</h2>
             {props.figures}
-            <CheckTable station={props.station} />
+            <CheckTable checks={facts?.checks.filter((c) => c.station === props.station) ?? []} />
           </div>
         )}
         <div className="card decisions">

@@ -1,13 +1,12 @@
 // What can be decided about cloth and panels: the cloth, compensation, allowances, the warp of one panel.
-import fabrics from "../../../templates/fabrics.json";
-import { setAllowance } from "../actions/setAllowance.ts";
-import { setCompensation } from "../actions/setCompensation.ts";
-import { setDecompensation } from "../actions/setDecompensation.ts";
-import { setFabric } from "../actions/setFabric.ts";
-import { setPanel } from "../actions/setPanel.ts";
-import { ChoiceField, NumberField, SwitchField } from "../parts/Fields.tsx";
+import { setAllowance } from "../actions/panels/setAllowance.ts";
+import { setCompensation } from "../actions/panels/setCompensation.ts";
+import { setDecompensation } from "../actions/panels/setDecompensation.ts";
+import { setPanel } from "../actions/panels/setPanel.ts";
+import { ChoiceField, NumberField, SwitchField, TextField } from "../parts/Fields.tsx";
 import { act } from "../store/bookStore.ts";
 import { useBook } from "../store/useBook.ts";
+import { ClothDecisions } from "./ClothDecisions.tsx";
 
 const LENGTHS = [
   { key: "seam", label: "Overlap of a seam", hint: "finished" },
@@ -16,25 +15,11 @@ const LENGTHS = [
   { key: "hem", label: "Hem at free edges", hint: undefined },
 ] as const;
 
-function Cloth() {
-  const fabric = useBook((b) => b.project?.job.fabric);
-  const job = useBook((b) => b.job);
-  const inline = typeof fabric === "object";
-  const choices = fabrics.fabrics.map((f) => ({ value: f.id, words: f.name }));
-  return (
-    <ChoiceField
-      label="Cloth"
-      path="fabric"
-      given={fabric !== undefined}
-      value={inline ? "" : (fabric ?? fabrics.default)}
-      choices={
-        inline ? [{ value: "", words: `as the job gives it (${job?.fabric.id ?? "job"})` }, ...choices] : choices
-      }
-      hint={job === null ? undefined : `Ew ${job.fabric.Ew}, Ef ${job.fabric.Ef} kN/m; roll ${job.fabric.rollWidth} mm`}
-      onChange={(value) => value !== "" && act(setFabric, { value }, "cloth")}
-    />
-  );
-}
+const FADES = [
+  { key: "clamped", label: "clamped edges" },
+  { key: "ring", label: "rings" },
+  { key: "cable", label: "cables" },
+] as const;
 
 function Compensation() {
   const given = useBook((b) => b.project?.job.compensation?.default);
@@ -71,17 +56,27 @@ function OnePanel() {
   const panels = useBook((b) => b.facts?.panels);
   const given = useBook((b) => b.project?.job.panels);
   const panel = panels?.find((p) => p.id === chosen);
-  if (panel === undefined) return <p className="hint">Choose a panel to turn its warp.</p>;
+  if (panel === undefined) return <p className="hint">Choose a panel to turn its warp or give it a batch.</p>;
   return (
-    <NumberField
-      label={`Warp of ${panel.id} turned by`}
-      path={`panels.${panel.id}.warp`}
-      given={given?.[panel.id]?.warp !== undefined}
-      value={given?.[panel.id]?.warp ?? null}
-      none="0"
-      unit="degrees"
-      onChange={(value) => act(setPanel, { panel: panel.id, key: "warp", value }, `warp of ${panel.id}`)}
-    />
+    <>
+      <NumberField
+        label={`Warp of ${panel.id} turned by`}
+        path={`panels.${panel.id}.warp`}
+        given={given?.[panel.id]?.warp !== undefined}
+        value={given?.[panel.id]?.warp ?? null}
+        none="0"
+        unit="degrees"
+        onChange={(value) => act(setPanel, { panel: panel.id, key: "warp", value }, `warp of ${panel.id}`)}
+      />
+      <TextField
+        label={`Batch of ${panel.id}`}
+        path={`panels.${panel.id}.batch`}
+        given={given?.[panel.id]?.batch !== undefined}
+        value={given?.[panel.id]?.batch ?? ""}
+        none="any"
+        onChange={(value) => act(setPanel, { panel: panel.id, key: "batch", value }, `batch of ${panel.id}`)}
+      />
+    </>
   );
 }
 
@@ -92,7 +87,7 @@ export function PanelDecisions() {
   if (given === undefined) return null;
   return (
     <>
-      <Cloth />
+      <ClothDecisions />
       <Compensation />
       {LENGTHS.map(({ key, label, hint }) => (
         <NumberField
@@ -126,15 +121,18 @@ export function PanelDecisions() {
           act(setAllowance, { key: "pocketStrip", value: value ? true : undefined }, "pocket strips")
         }
       />
-      <NumberField
-        label="Compensation taken back along clamped edges over"
-        path="decompensation.clamped"
-        given={given.decompensation?.clamped !== undefined}
-        value={given.decompensation?.clamped ?? null}
-        none="not taken back"
-        unit="m"
-        onChange={(value) => act(setDecompensation, { key: "clamped", value }, "compensation taken back")}
-      />
+      {FADES.map(({ key, label }) => (
+        <NumberField
+          key={key}
+          label={`Compensation taken back along ${label} over`}
+          path={`decompensation.${key}`}
+          given={typeof given.decompensation?.[key] === "number"}
+          value={given.decompensation?.[key] ?? null}
+          none="not taken back"
+          unit="m"
+          onChange={(value) => act(setDecompensation, { key, value }, `compensation taken back along ${label}`)}
+        />
+      ))}
       <OnePanel />
     </>
   );

@@ -8,6 +8,7 @@ import { Waiting } from "../parts/Waiting.tsx";
 import { LazySolid } from "../solid/LazySolid.tsx";
 import { bookStore } from "../store/bookStore.ts";
 import { useBook } from "../store/useBook.ts";
+import { useShownFacts, useShownFields } from "../store/useShown.ts";
 import { LeafFrame } from "./LeafFrame.tsx";
 import { PanelDecisions } from "./PanelDecisions.tsx";
 
@@ -102,8 +103,8 @@ function PanelFigures({ panels }: { panels: readonly FactsPanel[] }) {
 
 /** The leaf. */
 export function PanelsLeaf() {
-  const facts = useBook((b) => b.facts);
-  const fields = useBook((b) => b.fields);
+  const facts = useShownFacts("panels");
+  const fields = useShownFields("panels");
   const field = useBook((b) => b.field);
   const chosen = useBook((b) => b.chosen);
   const panels = facts?.panels;

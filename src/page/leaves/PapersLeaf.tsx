@@ -1,7 +1,7 @@
 // Papers: what leaves the office?
 import { useEffect, useMemo, useState } from "react";
-import { setHead } from "../actions/setHead.ts";
-import { setPapers } from "../actions/setPapers.ts";
+import { setHead } from "../actions/papers/setHead.ts";
+import { setPapers } from "../actions/papers/setPapers.ts";
 import { blobOf, fileStem, packJob, saveFile, zipFiles } from "../keep/saveFiles.ts";
 import { ChoiceField, TextField } from "../parts/Fields.tsx";
 import { FigureTable } from "../parts/FigureTable.tsx";

@@ -1,12 +1,11 @@
 // What can be decided about the pulling up: stages, limit, temperature, turnbuckles.
-import turnbuckles from "../../../templates/turnbuckles.json";
-import { setReadingError } from "../actions/setReadingError.ts";
-import { setRigFigure } from "../actions/setRigFigure.ts";
-import { setStages } from "../actions/setStages.ts";
-import { setTurnbuckle } from "../actions/setTurnbuckle.ts";
-import { ChoiceField, NumberField, readNumber, TextField } from "../parts/Fields.tsx";
+import { setReadingError } from "../actions/rig/setReadingError.ts";
+import { setRigFigure } from "../actions/rig/setRigFigure.ts";
+import { setStages } from "../actions/rig/setStages.ts";
+import { NumberField, readNumber, TextField } from "../parts/Fields.tsx";
 import { act, notify } from "../store/bookStore.ts";
 import { useBook } from "../store/useBook.ts";
+import { AdjusterDecisions } from "./AdjusterDecisions.tsx";
 
 const percent = (shares: readonly number[]) => shares.map((s) => String(Number((100 * s).toPrecision(6)))).join(" ");
 
@@ -17,44 +16,6 @@ function readStages(text: string): number[] | null {
     .filter((w) => w !== "")
     .map(readNumber);
   return read.every((n) => typeof n === "number") ? read.map((n) => Number((n / 100).toPrecision(12))) : null;
-}
-
-function Turnbuckles() {
-  const standing = useBook((b) => b.facts?.rig?.adjusters);
-  const given = useBook((b) => b.project?.job.rig?.adjusters);
-  if (standing === undefined) return null;
-  return (
-    <div className="group" data-path="rig.adjusters">
-      <h3>Adjusters</h3>
-      {standing.map((a) => {
-        const own = given?.find((g) => g.name === a.id)?.turnbuckle;
-        const inline = typeof own === "object";
-        const choices = turnbuckles.turnbuckles.map((t) => ({ value: t.id, words: t.name }));
-        return (
-          <ChoiceField
-            key={a.id}
-            label={`${a.id} at ${a.anchor}`}
-            path={`rig.adjusters.${a.id}`}
-            given={own !== undefined}
-            value={inline ? "own" : (own ?? "")}
-            choices={[
-              ...(inline ? [{ value: "own", words: `as the job gives it, ${own.shortest} to ${own.longest} mm` }] : []),
-              ...(own === undefined ? [{ value: "", words: `default: ${a.turnbuckle}` }] : []),
-              ...choices,
-            ]}
-            hint={
-              a.capacity === null ? "no capacity given: the schedule is not for issue" : `capacity ${a.capacity} kN`
-            }
-            onChange={(value) =>
-              value !== "own" &&
-              value !== "" &&
-              act(setTurnbuckle, { adjuster: a.id, value, standing }, `turnbuckle of ${a.id}`)
-            }
-          />
-        );
-      })}
-    </div>
-  );
 }
 
 /** The decisions of the leaf. */
@@ -103,7 +64,7 @@ export function RigDecisions() {
         unit="%"
         onChange={(value) => act(setReadingError, { value }, "error of readings")}
       />
-      <Turnbuckles />
+      <AdjusterDecisions />
     </>
   );
 }

@@ -3,6 +3,7 @@ import { useEffect, useRef } from "react";
 import { ForceChart } from "../flat/ForceChart.tsx";
 import { RigPlan } from "../flat/RigPlan.tsx";
 import { listSteps, type RigStep } from "../flat/rigSteps.ts";
+import { SensitivityBars } from "../flat/SensitivityBars.tsx";
 import { listBuiltRows } from "../parts/builtRows.ts";
 import { CautionList } from "../parts/CautionList.tsx";
 import { FieldPicker } from "../parts/FieldPicker.tsx";
@@ -95,12 +96,14 @@ function RigFigures() {
           : []),
         ...(asBuilt ? listBuiltRows(asBuilt) : []),
         ...(rig?.adjusters ?? []).slice(0, 16).map((a) => ({
+          id: a.id,
           what: `${a.id} target`,
           value: figure(a.target, 1),
           unit: "kN",
           against: a.capacity === null ? "no capacity given" : `capacity ${figure(a.capacity, 0)} kN`,
         })),
         ...(cables ?? []).slice(0, 16).map((c) => ({
+          id: c.id,
           what: `Cable ${c.id}, cut to`,
           value: figure(c.cutLength, 3),
           unit: "m",
@@ -156,6 +159,7 @@ export function RigLeaf() {
           <>
             <CautionList paper="schedule" />
             <RigFigures />
+            {facts.sensitivity && facts.sensitivity.length > 0 && <SensitivityBars sensitivity={facts.sensitivity} />}
           </>
         )
       }

@@ -1,10 +1,10 @@
 // What can be decided about rolls and nesting.
-import { addRoll } from "../actions/addRoll.ts";
-import { removeRoll } from "../actions/removeRoll.ts";
-import { setNest } from "../actions/setNest.ts";
-import { setPin } from "../actions/setPin.ts";
-import { setRoll } from "../actions/setRoll.ts";
-import { NumberField, SwitchField } from "../parts/Fields.tsx";
+import { addRoll } from "../actions/rolls/addRoll.ts";
+import { removeRoll } from "../actions/rolls/removeRoll.ts";
+import { setNest } from "../actions/rolls/setNest.ts";
+import { setPin } from "../actions/rolls/setPin.ts";
+import { setRoll } from "../actions/rolls/setRoll.ts";
+import { NumberField, SwitchField, TextField } from "../parts/Fields.tsx";
 import { act } from "../store/bookStore.ts";
 import { useBook } from "../store/useBook.ts";
 
@@ -45,6 +45,14 @@ function Stock() {
               }
             />
           ))}
+          <TextField
+            label="Batch"
+            path={`rolls[${index}].batch`}
+            given={typeof roll.batch === "string"}
+            value={roll.batch ?? ""}
+            none="none"
+            onChange={(value) => act(setRoll, { index, key: "batch", value }, `batch of ${roll.id ?? index + 1}`)}
+          />
           <button type="button" onClick={() => act(removeRoll, { index }, `roll ${roll.id ?? index + 1} removed`)}>
             Remove roll
           </button>

@@ -6,6 +6,7 @@ import { figure } from "../parts/figure.ts";
 import { Waiting } from "../parts/Waiting.tsx";
 import { bookStore } from "../store/bookStore.ts";
 import { useBook } from "../store/useBook.ts";
+import { useShownFacts } from "../store/useShown.ts";
 import { LeafFrame } from "./LeafFrame.tsx";
 import { RollDecisions } from "./RollDecisions.tsx";
 
@@ -68,7 +69,7 @@ function Total({ cloth }: { cloth: ClothTotal }) {
 
 /** The leaf. */
 export function RollsLeaf() {
-  const facts = useBook((b) => b.facts);
+  const facts = useShownFacts("rolls");
   const chosen = useBook((b) => b.chosen);
   const rolls = facts?.rolls;
   const shown = rolls?.find((r) => r.id === chosen || r.placements.some((p) => p.panel === chosen)) ?? rolls?.[0];

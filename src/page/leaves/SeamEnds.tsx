@@ -1,10 +1,10 @@
 // Seams in one's own hands: each end slid along its edge, seams added, removed, evened.
-import { addSeam } from "../actions/addSeam.ts";
-import { evenSeams } from "../actions/evenSeams.ts";
-import { layPairs } from "../actions/layPairs.ts";
-import { moveSeamEnd } from "../actions/moveSeamEnd.ts";
-import { removeSeam } from "../actions/removeSeam.ts";
-import { takeSeams } from "../actions/takeSeams.ts";
+import { addSeam } from "../actions/seams/addSeam.ts";
+import { evenSeams } from "../actions/seams/evenSeams.ts";
+import { layPairs } from "../actions/seams/layPairs.ts";
+import { moveSeamEnd } from "../actions/seams/moveSeamEnd.ts";
+import { removeSeam } from "../actions/seams/removeSeam.ts";
+import { takeSeams } from "../actions/seams/takeSeams.ts";
 import { NumberField } from "../parts/Fields.tsx";
 import { act } from "../store/bookStore.ts";
 import { findSeamEnds } from "../store/seamEnds.ts";

@@ -1,6 +1,6 @@
 // Seams: where do they run?
 import { useEffect } from "react";
-import { setLayout } from "../actions/setLayout.ts";
+import { setLayout } from "../actions/seams/setLayout.ts";
 import { PairSheet } from "../flat/PairSheet.tsx";
 import { ChoiceField, NumberField, TextField } from "../parts/Fields.tsx";
 import { FigureTable } from "../parts/FigureTable.tsx";
@@ -10,6 +10,7 @@ import { LazySolid } from "../solid/LazySolid.tsx";
 import { act, bookStore } from "../store/bookStore.ts";
 import { isSameWork } from "../store/hand.ts";
 import { useBook } from "../store/useBook.ts";
+import { useShownFacts, useShownFields } from "../store/useShown.ts";
 import { watchSeams, weighLayouts } from "../worker/dragger.ts";
 import { LayoutCards } from "./LayoutCards.tsx";
 import { LeafFrame } from "./LeafFrame.tsx";
@@ -120,7 +121,7 @@ function SeamDecisions() {
 }
 
 function SeamTable() {
-  const seams = useBook((b) => b.facts?.seams);
+  const seams = useShownFacts("seams")?.seams;
   const pointed = useBook((b) => b.pointed);
   const chosen = useBook((b) => b.chosen);
   if (seams === undefined || seams.length === 0) return null;
@@ -181,8 +182,8 @@ function CompareButton() {
 /** The leaf. */
 export function SeamsLeaf() {
   useEffect(watchSeams, []);
-  const facts = useBook((b) => b.facts);
-  const fields = useBook((b) => b.fields);
+  const facts = useShownFacts("seams");
+  const fields = useShownFields("seams");
   const comparing = useBook((b) => isSameWork(b.weighed?.of, b.project));
   const { seams, layouts, panels } = facts ?? {};
   const total = seams?.reduce((sum, s) => sum + s.length, 0) ?? 0;

@@ -1,10 +1,9 @@
 // Site: what does the roof say? Readings typed in on a tablet, with large targets; the log is kept and goes out as a file.
 
-import { removeReading } from "../actions/removeReading.ts";
-import { setSiteLimit } from "../actions/setSiteLimit.ts";
+import { setSiteLimit } from "../actions/site/setSiteLimit.ts";
+import { strikeReading } from "../actions/site/strikeReading.ts";
 import { listSteps } from "../flat/rigSteps.ts";
-import { writeReadings } from "../keep/readings.ts";
-import { saveFile } from "../keep/saveFiles.ts";
+import { logFiles, saveFile } from "../keep/saveFiles.ts";
 import { CautionList } from "../parts/CautionList.tsx";
 import { NumberField, TextField } from "../parts/Fields.tsx";
 import { figure } from "../parts/figure.ts";
@@ -81,7 +80,7 @@ function Log({ log }: { log: readonly Reading[] }) {
           .map((r, index) => ({ r, index }))
           .reverse()
           .map(({ r, index }) => (
-            <tr key={`${r.time} ${index}`}>
+            <tr key={`${r.time} ${index}`} className={r.struck ? "struck" : undefined}>
               <td>{r.time.replace("T", " ").slice(0, 16)}</td>
               <td>{r.by}</td>
               <th scope="row">{r.id}</th>
@@ -90,10 +89,10 @@ function Log({ log }: { log: readonly Reading[] }) {
               <td>
                 <button
                   type="button"
-                  aria-label={`Strike the reading of ${r.id} of ${r.time}`}
-                  onClick={() => act(removeReading, { index }, "reading struck")}
+                  aria-label={`${r.struck ? "Count again" : "Strike"} the reading of ${r.id} of ${r.time}`}
+                  onClick={() => act(strikeReading, { index }, r.struck ? "reading counted again" : "reading struck")}
                 >
-                  Strike
+                  {r.struck ? "Count again" : "Strike"}
                 </button>
               </td>
             </tr>
@@ -109,6 +108,7 @@ export function SiteLeaf() {
   const stored = useBook((b) => b.project?.log);
   const step = useBook((b) => b.step);
   const log = stored ?? [];
+  const struck = log.filter((r) => r.struck).length;
   const steps = tensioning ? listSteps(tensioning) : [];
   const at = Math.min(step, steps.length);
   const now = steps[at - 1] ?? null;
@@ -120,7 +120,9 @@ export function SiteLeaf() {
       station="rig"
       question="What does the roof say?"
       answer={
-        log.length === 0 ? "No readings yet." : `${log.length} ${log.length === 1 ? "reading" : "readings"} in the log.`
+        log.length === 0
+          ? "No readings yet."
+          : `${log.length} ${log.length === 1 ? "reading" : "readings"} in the log${struck === 0 ? "" : `, ${struck} of them struck`}.`
       }
       tools={
         <>
@@ -136,11 +138,7 @@ export function SiteLeaf() {
               </button>
             </fieldset>
           )}
-          <button
-            type="button"
-            disabled={log.length === 0}
-            onClick={() => saveFile({ path: "readings.csv", bytes: writeReadings(log) })}
-          >
+          <button type="button" disabled={log.length === 0} onClick={() => logFiles(log).forEach(saveFile)}>
             Save the log (CSV)
           </button>
         </>

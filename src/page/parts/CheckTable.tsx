@@ -1,12 +1,9 @@
 // The checks a station made: those that fail in full, those that hold folded away.
-import type { Station } from "../../core/problem.ts";
-import { useBook } from "../store/useBook.ts";
+import type { Check } from "../../core/problem.ts";
 import { figure } from "./figure.ts";
 
 /** Checks of one station, with value and limit. */
-export function CheckTable({ station }: { station: Station }) {
-  const checks = useBook((b) => b.facts?.checks);
-  const own = checks?.filter((c) => c.station === station) ?? [];
+export function CheckTable({ checks: own }: { checks: readonly Check[] }) {
   if (own.length === 0) return null;
   const failed = own.filter((c) => !c.holds);
   const show = (v: number | string) => (typeof v === "number" ? figure(v) : v);

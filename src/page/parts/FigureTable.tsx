@@ -1,4 +1,6 @@
-// Figures of a leaf: what, how much, held against what.
+// Figures of a leaf: what, how much, held against what. A row that speaks of a thing lights it up in the drawings.
+import { bookStore } from "../store/bookStore.ts";
+import { useBook } from "../store/useBook.ts";
 
 export interface FigureRow {
   what: string;
@@ -8,16 +10,30 @@ export interface FigureRow {
   against?: string;
   /** Whether it holds; left out where nothing is judged. */
   holds?: boolean;
+  /** The edge, anchor, cable, adjuster it speaks of. */
+  id?: string;
 }
 
 /** A two-column table of figures with what they are held against underneath. */
 export function FigureTable({ caption, rows }: { caption: string; rows: readonly FigureRow[] }) {
+  const pointed = useBook((b) => b.pointed);
+  const chosen = useBook((b) => b.chosen);
+  const point = (id: string | undefined) => id !== undefined && bookStore.setState({ pointed: id });
+  const look = (r: FigureRow) => {
+    if (r.holds === false) return "fails";
+    return r.id !== undefined && (r.id === pointed || r.id === chosen) ? "lit" : undefined;
+  };
   return (
     <table className="figures">
       <caption>{caption}</caption>
       <tbody>
         {rows.map((r) => (
-          <tr key={r.what} className={r.holds === false ? "fails" : undefined}>
+          <tr
+            key={r.what}
+            className={look(r)}
+            onPointerEnter={() => point(r.id)}
+            onPointerLeave={() => r.id !== undefined && bookStore.setState({ pointed: null })}
+          >
             <th scope="row">
               {r.what}
               {r.against !== undefined && <span className="against">{r.against}</span>}

@@ -19,8 +19,6 @@ export interface ProjectSlice {
   project: Project | null;
   past: { project: Project; words: string }[];
   future: { project: Project; words: string }[];
-  /** Of the last edit. */
-  words: string;
 }
 
 export interface PaperFile {
@@ -35,6 +33,8 @@ export interface ResultSlice {
   job: Job | null;
   facts: Facts | null;
   fields: SentFields | null;
+  /** What a plan under way has worked out: everything up to and with `station`. */
+  soFar: { station: Station; facts: Facts; fields: SentFields | null } | null;
   /** The project the facts are of. */
   planned: Project | null;
   fault: PlanFault | null;
@@ -67,6 +67,8 @@ export interface LookSlice {
   notices: { id: string; text: string; grave: boolean }[];
   /** When the job was last kept; null: not yet. */
   kept: string | null;
+  /** Whether there is something that is not kept yet and will be in a moment. */
+  keeping: boolean;
 }
 
 export interface Book extends ProjectSlice, ResultSlice, LookSlice {}
@@ -77,6 +79,7 @@ const NO_RESULT: ResultSlice = {
   job: null,
   facts: null,
   fields: null,
+  soFar: null,
   planned: null,
   fault: null,
   papers: null,
@@ -95,7 +98,6 @@ export const bookStore = createStore<Book>(() => ({
   project: null,
   past: [],
   future: [],
-  words: "",
   ...NO_RESULT,
   leaf: "form",
   chosen: null,
@@ -106,27 +108,21 @@ export const bookStore = createStore<Book>(() => ({
   theme: "system",
   notices: [],
   kept: null,
+  keeping: false,
 }));
 
-/** Puts another job on the desk: nothing of the former one stays. */
-export function openProject(project: Project, leaf: Leaf = "form"): void {
+/** Puts another job on the desk, with what can be undone and done again of it: nothing of the former one stays. */
+export function openProject(line: ProjectSlice, leaf: Leaf = "form"): void {
   bookStore.setState({
-    project,
-    past: [],
-    future: [],
-    words: "",
+    ...line,
     ...NO_RESULT,
     leaf,
     chosen: null,
     step: 0,
     sheet: "none",
     kept: null,
+    keeping: false,
   });
-}
-
-/** Puts the job away. */
-export function closeProject(): void {
-  bookStore.setState({ project: null, past: [], future: [], ...NO_RESULT, chosen: null, sheet: "none" });
 }
 
 /**
@@ -138,7 +134,7 @@ export function act<A>(action: (project: Project, args: A) => Project, args: A, 
   if (project === null) return;
   const next = action(project, args);
   if (next === project) return;
-  bookStore.setState({ project: next, past: [...past, { project, words }], future: [], words });
+  bookStore.setState({ project: next, past: [...past, { project, words }], future: [] });
 }
 
 export function undo(): void {

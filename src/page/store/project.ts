@@ -23,6 +23,8 @@ export interface Reading {
   temperature: number | null;
   /** m, a surveyed position. */
   at: [number, number, number] | null;
+  /** Taken back, but kept to be read. */
+  struck?: true;
 }
 
 /** One job with everything that can be undone. */

@@ -3,7 +3,7 @@
 import type { Grip } from "../../core/plan/dragSeam.ts";
 import { listAsks } from "../../core/plan/listAsks.ts";
 import type { EdgePlace } from "../../core/records/job.ts";
-import { layPairs } from "../actions/layPairs.ts";
+import { layPairs } from "../actions/seams/layPairs.ts";
 import { act, bookStore, notify } from "../store/bookStore.ts";
 import { type Hand, isSameWork } from "../store/hand.ts";
 import type { Project } from "../store/project.ts";

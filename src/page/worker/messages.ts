@@ -39,6 +39,8 @@ export type Request =
 export type Reply =
   | { kind: "read"; run: number; job: Job; revision: string }
   | { kind: "progress"; run: number; share: number; words: string; station: Station }
+  /** Facts as far as the plan has come: the work of `station` stands in them. */
+  | { kind: "soFar"; run: number; station: Station; facts: Facts; fields: SurfaceFields | null }
   | { kind: "planned"; run: number; facts: Facts; fields: SurfaceFields | null }
   | { kind: "papers"; run: number; files: { path: string; bytes: Uint8Array<ArrayBuffer> }[] }
   | { kind: "corrected"; run: number; corrected: CorrectedPlan }

@@ -12,7 +12,7 @@ import { writePapers } from "../../core/papers/writePapers.ts";
 import { capNest } from "../../core/plan/capNest.ts";
 import { correctPlan } from "../../core/plan/correctPlan.ts";
 import { writeFactsJson } from "../../core/plan/factsFile.ts";
-import { measureFields } from "../../core/plan/measureFields.ts";
+import { measureFields, type SurfaceFields } from "../../core/plan/measureFields.ts";
 import { type PlanInput, readPlanInput } from "../../core/plan/readPlanInput.ts";
 import { runPlan } from "../../core/plan/runPlan.ts";
 import { PlanError, type Station } from "../../core/problem.ts";
@@ -91,29 +91,33 @@ function plan(request: Extract<Request, { kind: "plan" }>): void {
     station = next;
     cap.onStation(next);
   };
+  const complete = (facts: Facts): Facts => ({ ...facts, findings: [...input.findings, ...facts.findings] });
+  const onFacts = (done: Station, soFar: Facts) => {
+    const facts = complete(soFar);
+    const fields = measureFields(facts, input.job.warp);
+    post({ kind: "soFar", run, station: done, facts, fields }, buffersOf(fields));
+  };
   const planned = runPlan(
     input.job,
     input.source,
     {
       revision: input.revision,
       onStation,
+      onFacts,
       onRoof: (roof) => request.roofs.postMessage({ run, roof } satisfies SentRoof),
     },
     { onProgress: tell, cancelled: cap.cancelled, elapsed: cap.elapsed },
   );
-  const facts: Facts = { ...planned, findings: [...input.findings, ...planned.findings] };
+  const facts = complete(planned);
   const fields = measureFields(facts, input.job.warp);
-  const buffers = [
-    fields?.residual,
-    fields?.curvature,
-    fields?.patterned?.warp,
-    fields?.patterned?.weft,
-    fields?.built?.warp,
-    fields?.built?.weft,
-  ];
-  post(
-    { kind: "planned", run, facts, fields },
-    buffers.flatMap((b) => (b === undefined ? [] : [b.buffer])),
+  post({ kind: "planned", run, facts, fields }, buffersOf(fields));
+}
+
+/** Fields are handed over, not copied. */
+function buffersOf(fields: SurfaceFields | null): ArrayBuffer[] {
+  const { residual, curvature, patterned, built } = fields ?? {};
+  return [residual, curvature, patterned?.warp, patterned?.weft, built?.warp, built?.weft].flatMap((b) =>
+    b === undefined ? [] : [b.buffer],
   );
 }
 

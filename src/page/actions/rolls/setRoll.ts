@@ -1,0 +1,11 @@
+// One figure of a roll in store, mm.
+import type { Project } from "../../store/project.ts";
+import { placeInJob } from "../placeInJob.ts";
+
+/** The act. */
+export function setRoll(
+  project: Project,
+  args: { index: number; key: "id" | "width" | "selvedge" | "length" | "batch"; value: string | number | undefined },
+): Project {
+  return placeInJob(project, ["rolls", args.index, args.key], args.value);
+}

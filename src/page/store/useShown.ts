@@ -1,0 +1,39 @@
+// What a leaf shows of the plan: the part of a plan under way that has come as far as the leaf, else the latest whole plan.
+import type { Station } from "../../core/problem.ts";
+import type { Facts } from "../../core/records/facts.ts";
+import type { SentFields } from "../worker/messages.ts";
+import type { Book, Leaf } from "./bookStore.ts";
+import { useBook } from "./useBook.ts";
+
+/** Seams stand in the facts together with the panels: both are fitted to each other. */
+const OF_LEAF: Record<Leaf, Station> = {
+  form: "form",
+  seams: "panels",
+  panels: "panels",
+  rolls: "rolls",
+  rig: "papers",
+  papers: "papers",
+  site: "papers",
+};
+const ORDER: Station[] = ["job", "form", "seams", "panels", "rolls", "rig", "papers"];
+
+/** The part of a plan under way that shows all of a leaf, or null. */
+function partFor(book: Book, leaf: Leaf): Book["soFar"] {
+  const { soFar } = book;
+  return soFar !== null && ORDER.indexOf(soFar.station) >= ORDER.indexOf(OF_LEAF[leaf]) ? soFar : null;
+}
+
+/** Facts for a leaf. */
+export function useShownFacts(leaf: Leaf): Facts | null {
+  return useBook((b) => (partFor(b, leaf) ?? b).facts);
+}
+
+/** Fields of those facts. */
+export function useShownFields(leaf: Leaf): SentFields | null {
+  return useBook((b) => (partFor(b, leaf) ?? b).fields);
+}
+
+/** Whether a leaf shows an older plan while a new one is under way. */
+export function isOlder(book: Book): boolean {
+  return book.status === "running" && book.facts !== null && partFor(book, book.leaf) === null;
+}
