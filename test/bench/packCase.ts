@@ -117,8 +117,10 @@ export function workPackShare(share: PackShare, port: MessagePort): { result: Pa
     })),
   });
   const best = bedOf(search.best);
-  const result = pack(best.laid, bedReach(best));
-  return { result: isValid(instance, result) ? result : pack(bed.laid, bedReach(bed)), tries };
+  const result = best ? pack(best.laid, bedReach(best)) : null;
+  if (result && isValid(instance, result)) return { result, tries };
+  process.stderr.write(`${instance.name}: the best layout does not stand before the judge; the start counts\n`);
+  return { result: pack(bed.laid, bedReach(bed)), tries };
 }
 
 /** Best layout found within `seconds` by one thread a core, its density in percent and the attempts made. */

@@ -3,7 +3,7 @@ import { describe, expect, it } from "vitest";
 import { type Bed, bedReach } from "../../../src/core/rolls/bed.ts";
 import { layPieces, type NestTask } from "../../../src/core/rolls/layPieces.ts";
 import { buildShape, clothArea } from "../../../src/core/rolls/nestShape.ts";
-import { relaxBeds, type WorkShares } from "../../../src/core/rolls/relax/relaxBed.ts";
+import { openSearchOf, relaxBeds, type WorkShares } from "../../../src/core/rolls/relax/relaxBed.ts";
 import { openSearch, tryShorter } from "../../../src/core/rolls/relax/shortenStrip.ts";
 import { copyState, measureOverlap, setState } from "../../../src/core/rolls/relax/strip.ts";
 import { type ShareOrder, workShare } from "../../../src/core/rolls/relax/workShare.ts";
@@ -59,6 +59,27 @@ describe("relaxBed", () => {
     expect(bedReach(bed)).toBeLessThanOrEqual(bedReach(poorBed(task)));
     const none = relaxBed(poorBed(task), task, { steps: 120, seed: 4 }, (o) => o.map(() => null));
     expect(bedReach(none)).toBe(bedReach(poorBed(task)));
+  });
+
+  it("reads a state found from another start with its own pieces and turns", () => {
+    const rings = [TRIANGLE, TRIANGLE.map((v) => v / 2), Float64Array.from([0, 0, 700, 0, 700, 300, 0, 300])];
+    const shapes = rings.map((ring, k) => [0, 180].map((r) => buildShape(ring, r, `k${k}`)));
+    const kinds = [0, 1, 2, 0, 1, 2];
+    const task: NestTask = {
+      ...trianglesTask(6),
+      shapes: kinds.map((k) => shapes[k]),
+      areas: kinds.map((k) => clothArea(rings[k])),
+    };
+    const bedOfOrder = (order: number[]) => layPieces(task, { order, rule: "least x" }, null)!.beds[0];
+    const [one, other] = [bedOfOrder([0, 1, 2, 3, 4, 5]), bedOfOrder([5, 4, 1, 2, 0, 3])];
+    expect(one.laid.map((p) => p.piece)).not.toEqual(other.laid.map((p) => p.piece));
+    const { search } = openSearchOf(one, task, 1, 0);
+    const read = openSearchOf(other, task, 2, 0).bedOf(search.best)!;
+    const places = (laid: Bed["laid"]) =>
+      [...laid]
+        .sort((a, b) => a.piece - b.piece)
+        .map((p) => [p.piece, p.shape.key, Math.round(p.x * 1e3), Math.round(p.y * 1e3)]);
+    expect(places(read.laid)).toEqual(places(one.laid));
   });
 
   it("holds a valid layout at any moment it is stopped at", () => {

@@ -123,7 +123,7 @@ function bedFrom(bed: Bed, framed: Framed, state: StripState, areas: number[]): 
 export function openSearchOf(bed: Bed, nest: NestTask, seed: number, fixed: number) {
   const framed = frameBed(bed, nest);
   const search: StripSearch = openSearch(framed.task, framed.from, seed, fixed);
-  return { search, bedOf: (state: StripState) => bedFrom(bed, framed, state, nest.areas) ?? bed };
+  return { search, bedOf: (state: StripState) => bedFrom(bed, framed, state, nest.areas) };
 }
 
 /** Asks for orders to be worked, is given the states found; ends with the bed. */
