@@ -1,6 +1,6 @@
 // `npm run -s bench -- NAME …`: one measured case, one JSON object on stdout. Times are this machine's; no test asserts them.
 import { readFileSync, writeFileSync } from "node:fs";
-import { loadCatalogues } from "../../src/cli/packageFiles.ts";
+import { loadCatalogues, loadFonts } from "../../src/cli/packageFiles.ts";
 import { readInput } from "../../src/cli/readInput.ts";
 import { buildSoundSurface, type SoundSurface } from "../../src/core/form/repair/soundSurface.ts";
 import { runPlan } from "../../src/core/plan/runPlan.ts";
@@ -11,6 +11,7 @@ import { benchFlatten } from "./flattenCase.ts";
 import { benchForm } from "./formCase.ts";
 import { benchGeodesic } from "./geodesicCase.ts";
 import { benchPack, type PackInstance } from "./packCase.ts";
+import { benchPapers } from "./papersCase.ts";
 import { benchStock } from "./stockCase.ts";
 
 const CASES: Record<string, { call: string; least: number; run: (args: string[]) => unknown }> = {
@@ -27,6 +28,11 @@ const CASES: Record<string, { call: string; least: number; run: (args: string[])
   form: { call: "form N", least: 1, run: ([n]) => benchForm(readCount(n, "N")) },
   geodesic: { call: "geodesic MESH.obj PAIRS.txt", least: 2, run: ([mesh, pairs]) => benchPairs(mesh, pairs) },
   correct: { call: "correct STATES", least: 1, run: ([n]) => benchCorrect(readCount(n, "STATES")) },
+  papers: {
+    call: "papers PANELS",
+    least: 1,
+    run: ([panels]) => benchPapers(readCount(panels, "PANELS"), loadFonts()),
+  },
   stock: {
     call: "stock PANELS SEED",
     least: 2,

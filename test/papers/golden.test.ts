@@ -1,42 +1,74 @@
-// Small drawings kept as files: what a reader sees of a change in the writers is the difference of two short files.
+// Small drawings kept as files: what a reader sees of a change in the writers is the difference of two short files, or two pictures.
 import { existsSync, readFileSync, writeFileSync } from "node:fs";
 import { expect, test } from "vitest";
 import { writeDxfR12 } from "../../src/core/papers/cutFiles/dxfR12.ts";
 import { writeSvg } from "../../src/core/papers/cutFiles/svg.ts";
-import { rollDrawing } from "../../src/core/papers/drawing/rollDrawing.ts";
-import type { Facts } from "../../src/core/records/facts.ts";
-import { sampleFacts } from "./made/sampleFacts.ts";
+import { withArcs } from "../../src/core/papers/drawing/arcs.ts";
+import type { Drawing } from "../../src/core/papers/drawing/drawing.ts";
+import { panelDrawing, rollDrawing } from "../../src/core/papers/drawing/rollDrawing.ts";
+import type { Facts, Vec2 } from "../../src/core/records/facts.ts";
+import type { Placement } from "../../src/core/records/roll.ts";
+import { HOSTILE, sampleFacts } from "./made/sampleFacts.ts";
+
+/** One roll with what is given on it. */
+function rollOf(facts: Facts, placements: Placement[]): Drawing {
+  const roll = { ...facts.rolls![0]!, used: 900, flaws: [], placements };
+  return rollDrawing(facts, roll);
+}
 
 /** One roll with two patches, the second turned round. */
-function smallFacts(): Facts {
+function patches(): Drawing {
   const facts = sampleFacts({ stop: false });
   const patch = facts.pieces![0]!;
   facts.pieces = [patch, { ...patch, id: "C2", for: "A2" }];
-  facts.rolls = [
-    {
-      ...facts.rolls![0]!,
-      used: 900,
-      flaws: [],
-      placements: [
-        { panel: "C1", rotation: 0, x: 10, y: 10 },
-        { panel: "C2", rotation: 180, x: 880, y: 440 },
-      ],
-    },
-  ];
-  return facts;
+  return rollOf(facts, [
+    { panel: "C1", rotation: 0, x: 10, y: 10 },
+    { panel: "C2", rotation: 180, x: 880, y: 440 },
+  ]);
 }
 
-for (const [ending, write] of [
-  ["dxf", writeDxfR12],
-  ["svg", writeSvg],
+/** Pocket strips with where they lie, one turned round, under an open stop. */
+function strips(): Drawing {
+  const facts = sampleFacts();
+  const cut: Vec2[] = [
+    [0, 0],
+    [860, 0],
+    [860, 200],
+    [0, 200],
+  ];
+  facts.pieces = [1, 2].map((n) => ({ ...facts.pieces![0]!, id: `E1-strip-${n}`, kind: "strip", for: "E1", cut }));
+  facts.job.supersedes = "P1";
+  return rollOf(facts, [
+    { panel: "E1-strip-1", rotation: 0, x: 10, y: 10 },
+    { panel: "E1-strip-2", rotation: 180, x: 880, y: 450 },
+  ]);
+}
+
+/** A whole panel with its marks, its names such as nobody hopes for. */
+function hostilePanel(): Drawing {
+  const facts = sampleFacts({ names: HOSTILE, stop: false });
+  return panelDrawing(facts, facts.panels![0]!);
+}
+
+/** A panel with arcs for curves. */
+function arcs(): Drawing {
+  const facts = sampleFacts({ stop: false });
+  return withArcs(panelDrawing(facts, facts.panels![2]!));
+}
+
+for (const [name, ending, write, make] of [
+  ["patches", "dxf", writeDxfR12, patches],
+  ["patches", "svg", writeSvg, patches],
+  ["strips", "svg", writeSvg, strips],
+  ["hostile-panel", "svg", writeSvg, hostilePanel],
+  ["arcs", "svg", writeSvg, arcs],
 ] as const) {
-  test(`the roll of two patches is written as test/golden/patches.${ending} has it`, () => {
-    const facts = smallFacts();
-    const text = write(rollDrawing(facts, facts.rolls![0]!));
-    const kept = `test/golden/patches.${ending}`;
+  test(`the drawing of ${name} is written as test/golden/${name}.${ending} has it`, () => {
+    const text = write(make());
+    const kept = `test/golden/${name}.${ending}`;
     const golden = existsSync(kept) ? readFileSync(kept, "utf8") : "";
     // A changed drawing is laid beside the kept one to be looked at; it becomes the kept one by hand.
-    if (text !== golden && !process.env.CI) writeFileSync(`test/golden/patches-changed.${ending}`, text);
-    expect(text === golden, `${kept} differs: compare it with patches-changed.${ending}`).toBe(true);
+    if (text !== golden && !process.env.CI) writeFileSync(`test/golden/${name}-changed.${ending}`, text);
+    expect(text === golden, `${kept} differs: compare it with ${name}-changed.${ending}`).toBe(true);
   });
 }

@@ -3,9 +3,22 @@ import fontkit from "@pdf-lib/fontkit";
 import { PDFDocument } from "pdf-lib";
 import { describe, expect, test } from "vitest";
 import { writeFindingSheets } from "../../src/core/papers/pdf/findingSheets.ts";
+import { writePapers } from "../../src/core/papers/writePapers.ts";
 import type { Facts } from "../../src/core/records/facts.ts";
 import { crowded } from "./made/crowdedFacts.ts";
-import { fonts, missing, papersOf, reason, saved, shared, sizeOf, textOf, wordsOf } from "./made/madePapers.ts";
+import {
+  fonts,
+  missing,
+  papersOf,
+  reason,
+  saved,
+  shared,
+  sizeOf,
+  textOf,
+  type Word,
+  wordsOf,
+} from "./made/madePapers.ts";
+import { manyPanels } from "./made/manyPanels.ts";
 import { HOSTILE, STRANGE, sampleFacts } from "./made/sampleFacts.ts";
 import { withRig } from "./made/sampleRig.ts";
 import { readCsv } from "./tables/readCsv.ts";
@@ -43,6 +56,26 @@ function stamped(facts: Facts, name: string): boolean {
   const stop = facts.findings.some((f) => f.level === "stop");
   const rig = name === "cables.pdf" || name === "tensioning-schedule.pdf";
   return stop || (rig && facts.tensioning?.issuable !== true);
+}
+
+/** Words of one sheet that leave its frame, are under 9 pt, or lie over another, from their boxes. */
+function layoutFaults(here: readonly Word[], width: number, height: number, where: string) {
+  const [outside, small, overlaps]: [string[], string[], string[]] = [[], [], []];
+  for (const w of here) {
+    const inside = w.x0 > 20 && w.x1 < width - 10 && w.y0 > 9.5 && w.y1 < height - 9.5;
+    if (!inside) outside.push(`${where}: "${w.text}" at ${w.x0.toFixed(1)}, ${w.y0.toFixed(1)}`);
+    if (sizeOf(w) < 8.95) small.push(w.text);
+  }
+  // Letters stand within 0.15 … 0.82 of the height of the box; only those parts must be apart.
+  const ink = here.map((w) => ({ ...w, y0: w.y0 + 0.2 * (w.y1 - w.y0), y1: w.y1 - 0.22 * (w.y1 - w.y0) }));
+  ink.sort((a, b) => a.x0 - b.x0);
+  ink.forEach((a, i) => {
+    for (const b of ink.slice(i + 1)) {
+      if (b.x0 >= a.x1 - 0.05) break;
+      if (a.y0 < b.y1 && b.y0 < a.y1) overlaps.push(`${where}: "${a.text}" over "${b.text}"`);
+    }
+  });
+  return { outside, small, overlaps };
 }
 
 describe("writePapers", () => {
@@ -144,20 +177,10 @@ describe.skipIf(missing.length > 0)(`PDF sheets read by other programs${reason}`
         const { words, pages } = wordsOf(papers.get(name)!);
         for (let page = 1; page <= pages; page++) {
           const here = words.filter((w) => w.page === page);
-          for (const w of here) {
-            const inside = w.x0 > 20 && w.x1 < width - 10 && w.y0 > 9.5 && w.y1 < height - 9.5;
-            if (!inside) outside.push(`${name} sheet ${page}: "${w.text}" at ${w.x0.toFixed(1)}, ${w.y0.toFixed(1)}`);
-            if (sizeOf(w) < 8.95) small.push(w.text);
-          }
-          // Letters stand within 0.15 … 0.82 of the height of the box; only those parts must be apart.
-          const ink = here.map((w) => ({ ...w, y0: w.y0 + 0.2 * (w.y1 - w.y0), y1: w.y1 - 0.22 * (w.y1 - w.y0) }));
-          ink.sort((a, b) => a.x0 - b.x0);
-          ink.forEach((a, i) => {
-            for (const b of ink.slice(i + 1)) {
-              if (b.x0 >= a.x1 - 0.05) break;
-              if (a.y0 < b.y1 && b.y0 < a.y1) overlaps.push(`${name} sheet ${page}: "${a.text}" over "${b.text}"`);
-            }
-          });
+          const faults = layoutFaults(here, width, height, `${name} sheet ${page}`);
+          outside.push(...faults.outside);
+          small.push(...faults.small);
+          overlaps.push(...faults.overlaps);
           // Short names: then nothing is shortened, no head and above all no number.
           const cut = here.filter((w) => w.text.includes("…") && w.y0 > 24 && w.y1 < height - 31);
           if (title.startsWith("plain")) expect(cut, `${name} sheet ${page}`).toEqual([]);
@@ -181,6 +204,24 @@ describe.skipIf(missing.length > 0)(`PDF sheets read by other programs${reason}`
       expect({ outside, small, overlaps }).toEqual({ outside: [], small: [], overlaps: [] });
     });
   }
+
+  test("120 panels with names of 60 letters: no word of cards, map, schedules and roll sheets leaves its frame or lies over another", {
+    timeout: 240_000,
+  }, async () => {
+    const facts = manyPanels(120);
+    const { files } = await writePapers(facts, { fonts, papers: ["panel-cards", "roll-sheets"] });
+    expect(files.map((f) => f.path)).toEqual(["roll-sheets.pdf", "panel-cards.pdf"]);
+    for (const { path, bytes } of files) {
+      const { words, pages } = wordsOf(bytes);
+      expect(pages).toBeGreaterThan(path.startsWith("panel") ? 120 : 40);
+      for (let page = 1; page <= pages; page++) {
+        const here = words.filter((w) => w.page === page);
+        const [width, height] = SHEETS[facts.job.sheet];
+        const none = { outside: [], small: [], overlaps: [] };
+        expect(layoutFaults(here, width, height, `${path} sheet ${page}`)).toEqual(none);
+      }
+    }
+  });
 
   test("a card holds what the welder measures", async () => {
     const facts = plain();
