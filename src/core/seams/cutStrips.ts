@@ -43,8 +43,10 @@ export interface CutForm {
   findings: Finding[];
 }
 
-/** Shares of an edge within which a crossing is moved to its end: 2 mm on a side of half a metre; the smaller one where the larger pinches a narrow strip. */
+/** Shares of an edge within which a crossing is moved to its end; the smaller one where the larger pinches a narrow strip. */
 const SNAPS = [0.004, 0.0005];
+/** … but no further than this, m: a crossing moved by more makes a jog in the seam that fairing (0.2 mm) must keep. */
+const SNAP_REACH = 1.5e-4;
 
 function formPoints(plans: readonly RegionPlan[], path: SeamPath): SurfacePoint[] {
   const of = plans[path.region].region.formVertex;
@@ -58,7 +60,7 @@ function cutPaths(form: FoundForm, adjacency: Adjacency, plans: readonly RegionP
   for (;;) {
     try {
       const points = paths.map((path) => formPoints(plans, path));
-      return { cut: cutSurface(form.surface, points, { adjacency, snap }), paths, findings };
+      return { cut: cutSurface(form.surface, points, { adjacency, snap, reach: SNAP_REACH }), paths, findings };
     } catch (error) {
       if (!(error instanceof PlanError) || error.code !== "seam-crossing" || paths.length === 0) throw error;
       const { first, second, x, y, z } = error.facts;

@@ -16,6 +16,8 @@ const SAME_SHARE = 1e-6;
 export interface CutOptions {
   /** A crossing within this share of an edge's end is moved to the vertex there, 0…0.4; 0.01 unless said. */
   snap?: number;
+  /** … and no further than this, m; any way unless said. */
+  reach?: number;
   /** Adjacency of the surface, where the caller has it. */
   adjacency?: Adjacency;
 }
@@ -171,7 +173,8 @@ export function cutSurface(
   options: CutOptions = {},
 ): CutSurface {
   const adjacency = options.adjacency ?? buildAdjacency(surface);
-  const snap = Math.min(0.4, Math.max(0, options.snap ?? 0.01));
+  const share = Math.min(0.4, Math.max(0, options.snap ?? 0.01));
+  const snap = { share, reach: options.reach ?? Number.POSITIVE_INFINITY };
   const { nV, nT, twin } = adjacency;
   const { tri } = surface;
   const onBoundary = new Uint8Array(nV);

@@ -2,6 +2,7 @@
 // round a vertex taken out. Where a place is moved depends on the edge alone, so that paths that share it keep sharing it.
 import { PlanError } from "../problem.ts";
 import type { Adjacency } from "./adjacency.ts";
+import { measureDistance, vertexAt } from "./measures.ts";
 import type { Surface, SurfacePoint } from "./surface.ts";
 import { checkPoint, findHalfedge, findTrianglesAt, namePoint, normalizePoint } from "./surfacePoint.ts";
 
@@ -22,18 +23,25 @@ export function findCommonTriangle(surface: Surface, adjacency: Adjacency, p: Su
   );
 }
 
+/** A crossing is moved to an edge's end within this share of the edge and within this reach, m. */
+export interface Snap {
+  share: number;
+  reach: number;
+}
+
 function snapPoint(
   surface: Surface,
   adjacency: Adjacency,
   onBoundary: Uint8Array,
   p: SurfacePoint,
-  snap: number,
+  snap: Snap,
 ): SurfacePoint {
   if (p.a === p.b) return p;
   const end = p.t < 0.5 ? p.a : p.b;
   const h = findHalfedge(surface, adjacency, p.a, p.b);
-  const share = onBoundary[end] && adjacency.twin[h] >= 0 ? snap * BOUNDARY_PART : snap;
-  return normalizePoint(p, share);
+  const share = onBoundary[end] && adjacency.twin[h] >= 0 ? snap.share * BOUNDARY_PART : snap.share;
+  const length = measureDistance(vertexAt(surface, p.a), vertexAt(surface, p.b));
+  return normalizePoint(p, Math.min(share, snap.reach / length));
 }
 
 const isSame = (p: SurfacePoint, q: SurfacePoint) => p.a === q.a && p.b === q.b && p.t === q.t;
@@ -65,7 +73,7 @@ export function preparePath(
   adjacency: Adjacency,
   onBoundary: Uint8Array,
   path: readonly SurfacePoint[],
-  snap: number,
+  snap: Snap,
 ): SurfacePoint[] {
   const raw = path.map((p) => checkPoint(surface, adjacency, p));
   for (let i = 1; i < raw.length; i++) findCommonTriangle(surface, adjacency, raw[i - 1], raw[i]);
@@ -90,9 +98,9 @@ export function preparePath(
   if (points.length < 2)
     throw new PlanError(
       "seam-point",
-      `a path from ${raw.length ? namePoint(raw[0]) : "nowhere"} is shorter than the snap share ${snap} of its edge: choose ends farther apart`,
+      `a path from ${raw.length ? namePoint(raw[0]) : "nowhere"} is shorter than the snap share ${snap.share} of its edge: choose ends farther apart`,
       raw.length ? namePoint(raw[0]) : [],
-      { places: raw.length, snap },
+      { places: raw.length, snap: snap.share },
     );
   return points;
 }
