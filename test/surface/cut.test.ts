@@ -236,3 +236,28 @@ describe("refusals", () => {
     expect(codeOf(() => cutSurface(s, [[vertexPoint(0), { a: 0, b: 30, t: 0.5 }]]))).toBe("surface-point");
   });
 });
+
+test("reach: a crossing is moved to a corner no further than that, however long the edge (bug: jogs of 0.5 mm in seams)", () => {
+  // Two triangles on a square of 1 m; the path crosses the diagonal 3 mm from its end.
+  const square: Surface = {
+    xyz: Float64Array.from([0, 0, 0, 1, 0, 0, 1, 1, 0, 0, 1, 0]),
+    tri: Uint32Array.from([0, 1, 2, 0, 2, 3]),
+  };
+  const path: SurfacePoint[] = [
+    { a: 0, b: 1, t: 0.3 },
+    { a: 0, b: 2, t: 0.3 },
+    { a: 0, b: 3, t: 0.3 },
+  ];
+  const inserted = (t: number, reach?: number) => {
+    const places = path.map((p, i) => (i === 0 ? { ...p, t } : p));
+    const cut = cutSurface(
+      square,
+      places.length ? [places] : [],
+      reach === undefined ? { snap: 0.004 } : { snap: 0.004, reach },
+    );
+    return cut.pathVertices[0].map((v) => [...vertexAt(cut.surface, v)][0]);
+  };
+  expect(inserted(0.003)[0]).toBe(0);
+  expect(inserted(0.003, 1.5e-4)[0]).toBeCloseTo(0.003, 12);
+  expect(inserted(0.0001, 1.5e-4)[0]).toBe(0);
+});
