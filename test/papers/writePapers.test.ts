@@ -270,6 +270,16 @@ describe.skipIf(missing.length > 0)(`PDF sheets read by other programs${reason}`
     expect(text.split("CAUTION").length).toBeGreaterThan(1);
   });
 
+  test("letters no face has are shown as ? and told in a note; those it has stay", async () => {
+    const make = SETS["names right to left, of 300 letters, empty, equal but for case, A4"]!;
+    const facts = make();
+    const written = async (f: Facts) => textOf(await writeFindingSheets(f, fonts)).replace(/ /g, "");
+    expect(facts.rig!.adjusters.some((a) => a.id === STRANGE.T1)).toBe(true);
+    expect(await written(facts)).toContain("papers-letters");
+    expect(await written(facts)).toContain("??");
+    expect(await written(sampleFacts({ names: HOSTILE }))).not.toContain("papers-letters");
+  });
+
   test("no date, no clock: the file says nothing of the day it was made", async () => {
     const info = (facts: Facts) =>
       writeFindingSheets(facts, fonts).then((b) => spawnSync("pdfinfo", [saved(b)], { encoding: "utf8" }).stdout);

@@ -35,6 +35,25 @@ export function pitchOf(size: number): number {
 // Advance of each character at 1 pt, kept by face: asking the font for every beginning of every line takes seconds.
 const advances = new WeakMap<PDFFont, Map<string, number>>();
 
+// Code points a face can draw, kept by face.
+const drawable = new WeakMap<PDFFont, Set<number>>();
+
+/** Letters of a text that a face has not, each once. */
+export function lettersMissing(text: string, font: PDFFont): string[] {
+  let known = drawable.get(font);
+  if (!known) {
+    known = new Set(font.getCharacterSet());
+    drawable.set(font, known);
+  }
+  const has = known;
+  return [...new Set(plainText(text))].filter((letter) => !has.has(letter.codePointAt(0) ?? 0));
+}
+
+/** The text as a face can draw it: "?" for a letter it has not, where an empty box would look like a mark to be ticked. */
+function drawnText(text: string, font: PDFFont): string {
+  return lettersMissing(text, font).reduce((t, letter) => t.replaceAll(letter, "?"), text);
+}
+
 /** Width of a text in mm; the faces are set without ligatures and kerning, so it is the sum of its characters. */
 export function textWidth(text: string, font: PDFFont, size: number): number {
   let known = advances.get(font);
@@ -46,7 +65,7 @@ export function textWidth(text: string, font: PDFFont, size: number): number {
   for (const letter of text) {
     let advance = known.get(letter);
     if (advance === undefined) {
-      advance = font.widthOfTextAtSize(letter, 1);
+      advance = font.widthOfTextAtSize(drawnText(letter, font) || letter, 1);
       known.set(letter, advance);
     }
     sum += advance;
@@ -125,7 +144,7 @@ export function drawText(page: PDFPage, text: string, options: TextOptions): voi
   if (plain === "") return;
   const width = textWidth(plain, options.font, options.size);
   const shift = options.align === "middle" ? width / 2 : options.align === "end" ? width : 0;
-  page.drawText(plain, {
+  page.drawText(drawnText(plain, options.font), {
     x: (options.x - shift) * MM,
     y: options.y * MM,
     size: options.size,
