@@ -187,6 +187,7 @@ export function makeJob(seams: Partial<SeamDecision> = {}): Job {
       stays: [],
       stages: [1],
       temperature: 20,
+      frameAlpha: 0,
       limit: 0.5,
       readingError: 0.03,
       defaults: [],

@@ -224,6 +224,7 @@ const rig = z.strictObject({
     .max(50)
     .optional(),
   temperature: num(-60, 80, { unit: "degC" }).optional(),
+  frameAlpha: alpha.optional(),
   limit: num(0, 1, { above: true, remedy: "a share of the weakest part's capacity" }).optional(),
   reading: z
     .strictObject({ error: num(0, 0.5, { remedy: "a share of the reading: 5 % is 0.05" }).optional() })

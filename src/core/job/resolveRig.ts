@@ -90,6 +90,7 @@ export function resolveRig(file: JobFile, catalogues: Catalogues, ledger: Defaul
     })),
     stages: rig.stages ?? [...d.stages],
     temperature: takeDefault<number>(ledger, temperature, d.temperature, "rig.temperature", `${d.temperature} degC`),
+    frameAlpha: rig.frameAlpha ?? 0,
     limit: rig.limit ?? d.limit,
     readingError: takeDefault<number>(
       ledger,

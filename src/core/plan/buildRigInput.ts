@@ -237,7 +237,8 @@ export function buildRigInput(
         "write the stay's EA and breaking force",
       );
   notes.findings.push(...tellSurvey({ form, supports }, job, adjusters));
-  const { stages, temperature, limit, readingError } = job.rig;
+  const { stages, temperature, frameAlpha, limit, readingError } = job.rig;
+  const settings = { temperature, frameAlpha, limit, readingError };
   const whole = stages[stages.length - 1] === 1 ? stages : [...stages.filter((s) => s < 1), 1];
   return {
     output: {
@@ -252,7 +253,7 @@ export function buildRigInput(
       lap: buildFlattenOptions(form, job).lap ?? null,
       proof: job.proof,
       shifts: parts.shifts ?? {},
-      rig: { adjusters, struts, stays, stages: whole, temperature, limit, readingError, defaults: notes.defaults },
+      rig: { adjusters, struts, stays, stages: whole, ...settings, defaults: notes.defaults },
     },
     findings: notes.findings,
     checks: [],

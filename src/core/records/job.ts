@@ -160,6 +160,8 @@ export interface RigJob {
   stages: number[];
   /** degC */
   temperature: number;
+  /** 1/K of the frame the anchors move with; 0: they stay where they are. */
+  frameAlpha: number;
   limit: number;
   readingError: number;
   /** Paths of what is not the job's own word. */

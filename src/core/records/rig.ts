@@ -94,6 +94,8 @@ export interface RigDecision {
   stages: number[];
   /** degC */
   temperature: number;
+  /** 1/K of the frame that carries the anchors and moves them as it warms; 0: they stay where they are. */
+  frameAlpha: number;
   /**
    * Share of a part's own capacity that it may carry at any step of the tensioning: a cable or stay of breaking force B may carry
    * limit·B, a turnbuckle of capacity C limit·C. It holds for every member by itself; parts without a capacity are not judged.
@@ -256,6 +258,8 @@ export interface FactsSensitivity {
 export interface FactsTensioning {
   referenceTemperature: number;
   stages: FactsStage[];
+  /** 1/K of the frame the anchors move with in the table below; 0: they stay where they are. */
+  frameAlpha?: number;
   temperatureTable: { temperature: number; forces: Record<string, number> }[];
   /** Share by which a reading may be off. */
   readingError: number;

@@ -65,6 +65,7 @@ export function runRig(input: RigInput, context: StationContext): StationResult<
   const tensioning: FactsTensioning = {
     referenceTemperature: input.rig.temperature,
     stages: played.stages,
+    frameAlpha: input.rig.frameAlpha,
     temperatureTable: buildTemperatureTable(rig, solver, finished, expansion, input.rig.temperature),
     readingError: input.rig.readingError,
     limit: input.rig.limit,

@@ -5,7 +5,7 @@ import type { Correction, CorrectionMove, Reading } from "../../records/rig.ts";
 import { measureResponse } from "../../structure/influence.ts";
 import { buildRig, type Rig } from "../build/buildRig.ts";
 import { measureNotch, type Stage } from "../moves/planMoves.ts";
-import { growCloth, warmLengths } from "../otherwise/warmRig.ts";
+import { growCloth, warmAnchors, warmLengths } from "../otherwise/warmRig.ts";
 import type { RigInput } from "../rigInput.ts";
 import { findGreatest, readAdjusters, readCorners, readForces } from "../stages/readState.ts";
 import { type RigState, turnTo } from "../stages/solveLengths.ts";
@@ -189,7 +189,7 @@ function standAs(rig: Rig, solved: SolvedRig, end: RigState, sorted: SortedReadi
   const structure = growCloth(rig.structure, { warp: growth, weft: growth });
   const model = { ...rig, structure };
   const solver = { ...solved.solver, structure, near: false };
-  const x = end.x.slice();
+  const x = warmAnchors(rig, end.x, solved.expansion, step);
   for (const a of sorted.anchors) x.set(a.at, 3 * a.node);
   const L0 = warmLengths(rig, end.L0, solved.expansion, step);
   const planned = turnTo(

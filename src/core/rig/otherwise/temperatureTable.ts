@@ -1,10 +1,10 @@
-// Forces of the finished rig when everything is warmer or colder than the reference: anchors stay where they are.
+// Forces of the finished rig when everything is warmer or colder than the reference: anchors stay, or move with their frame.
 import type { FactsTensioning } from "../../records/rig.ts";
 import type { EquilibriumSolver } from "../../structure/equilibrium.ts";
 import type { Rig } from "../build/buildRig.ts";
 import { readForces } from "../stages/readState.ts";
 import { type RigState, solveState } from "../stages/solveLengths.ts";
-import { type Expansion, growCloth, warmLengths } from "./warmRig.ts";
+import { type Expansion, growCloth, warmAnchors, warmLengths } from "./warmRig.ts";
 
 /** Steps of the table from the reference temperature, K. */
 export const temperatureSteps = [-20, -10, 0, 10, 20];
@@ -27,7 +27,10 @@ export function buildTemperatureTable(
     const warm = { ...rig, structure };
     return {
       temperature: reference + step,
-      forces: readForces(warm, solveState(warm, { ...solver, structure }, { x: finished.x, L0 })),
+      forces: readForces(
+        warm,
+        solveState(warm, { ...solver, structure }, { x: warmAnchors(rig, finished.x, expansion, step), L0 }),
+      ),
     };
   });
 }

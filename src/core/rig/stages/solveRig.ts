@@ -40,6 +40,7 @@ export function solveRig(input: RigInput, rig: Rig, context: StationContext): So
   const expansion = {
     cables: rig.cables.map((c) => (c.edge === null ? undefined : input.cables[c.edge])?.type.alpha ?? 12e-6),
     cloth: input.fabric.alpha,
+    frame: input.rig.frameAlpha,
   };
   const singular = measureModes(rig, last.linear.influence);
   return { solver, exact, stages, finished: last.end, singular, expansion, checks };
