@@ -33,8 +33,8 @@ export interface ResultSlice {
   job: Job | null;
   facts: Facts | null;
   fields: SentFields | null;
-  /** What a plan under way has worked out: everything up to and with `station`. */
-  soFar: { station: Station; facts: Facts; fields: SentFields | null } | null;
+  /** What a plan under way has worked out, by the station it goes up to; each leaf is drawn once from the part that shows it. */
+  soFar: Partial<Record<Station, { facts: Facts; fields: SentFields | null }>>;
   /** The project the facts are of. */
   planned: Project | null;
   fault: PlanFault | null;
@@ -79,7 +79,7 @@ const NO_RESULT: ResultSlice = {
   job: null,
   facts: null,
   fields: null,
-  soFar: null,
+  soFar: {},
   planned: null,
   fault: null,
   papers: null,

@@ -15,12 +15,10 @@ const OF_LEAF: Record<Leaf, Station> = {
   papers: "papers",
   site: "papers",
 };
-const ORDER: Station[] = ["job", "form", "seams", "panels", "rolls", "rig", "papers"];
 
 /** The part of a plan under way that shows all of a leaf, or null. */
-function partFor(book: Book, leaf: Leaf): Book["soFar"] {
-  const { soFar } = book;
-  return soFar !== null && ORDER.indexOf(soFar.station) >= ORDER.indexOf(OF_LEAF[leaf]) ? soFar : null;
+function partFor(book: Book, leaf: Leaf): { facts: Facts; fields: SentFields | null } | null {
+  return book.soFar[OF_LEAF[leaf]] ?? null;
 }
 
 /** Facts for a leaf. */

@@ -53,14 +53,14 @@ function hear(reply: Reply): void {
       set({ progress: { share: reply.share, words: reply.words, station: reply.station } });
       return;
     case "soFar":
-      set({ soFar: { station: reply.station, facts: reply.facts, fields: reply.fields } });
+      set((b) => ({ soFar: { ...b.soFar, [reply.station]: { facts: reply.facts, fields: reply.fields } } }));
       if (reply.station !== "form") set({ tied: null });
       return;
     case "planned":
       busy = false;
       set({
         status: "done",
-        soFar: null,
+        soFar: {},
         facts: reply.facts,
         fields: reply.fields,
         planned: subject !== null && "project" in subject ? subject.project : null,
@@ -105,7 +105,7 @@ export function requestPlan(project: Project): void {
   subject = { project };
   bookStore.setState({
     status: "running",
-    soFar: null,
+    soFar: {},
     fault: null,
     writing: false,
     correcting: false,
