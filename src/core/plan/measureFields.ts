@@ -98,7 +98,15 @@ function measureFormResidual(form: FactsForm, warp: Vec3 | null): Float32Array<A
   for (const e of edges) if (e.kind === "clamped") for (const v of e.vertices) fixed[v] = 1;
   const membrane = measureMembraneForces(surface, { ...form.stress, direction: warp });
   const stations = edges.map((e) => (isCable(e) ? measureStations(surface.xyz, e.vertices) : null));
-  const { size } = measureResidual(surface, membrane, sumForces(membrane, edges, stations), fixed, stations);
+  const { size } = measureResidual(
+    surface,
+    membrane,
+    sumForces(membrane, edges, stations),
+    fixed,
+    edges,
+    stations,
+    false,
+  );
   let scale = 0;
   let free = 0;
   for (let v = 0; v < fixed.length; v++) {

@@ -107,7 +107,7 @@ export function FormLeaf() {
   const answer =
     form === undefined
       ? "Not worked out yet."
-      : `${figure(form.area, 1)} m² on ${form.edges.length} edges; out of balance by ${figure(form.residual.max)} of the cloth’s own force at the worst point${judged}.`;
+      : `${figure(form.area, 1)} m² on ${form.edges.length} edges; out of balance by ${figure(limit ? Number(limit.value) : form.residual.max)} of the cloth’s own force at the worst point${judged}.`;
   const cables = form?.edges.filter((e) => e.force !== null) ?? [];
   return (
     <LeafFrame

@@ -31,14 +31,25 @@ export function sumForces(
 /** Residual with what is needed to speak of it. */
 export interface ResidualReport {
   residual: Residual;
-  /** Vertex where it is greatest, -1 where nothing is free. */
+  /** Vertex where what is judged is greatest, -1 where nothing is free. */
   worst: number;
-  /** Residual force at each vertex, 0 where held. @shape nV @units kN */
+  /** What the balance is judged by: as residual.max, but under equal stress without the part within plain cloth. */
+  judged: number;
+  /** Residual force that is judged at each vertex, 0 where held. @shape nV @units kN */
   size: Float64Array<ArrayBuffer>;
 }
 
+/** Vertices of cloth alone: on no edge of the form, on no cable. @shape nV */
+function findPlainCloth(nV: number, edges: readonly FormEdge[]): Uint8Array<ArrayBuffer> {
+  const out = new Uint8Array(nV).fill(1);
+  for (const edge of edges) for (const v of edge.vertices) out[v] = 0;
+  return out;
+}
+
 /**
- * Residual as facts.md defines it.
+ * Residual as facts.md defines it, and what of it is judged. Equal stress pulls a smooth surface nowhere along itself, so what
+ * is left within the cloth there tells of the mesh alone (its vertices may slide within the surface); beside a cable, and
+ * where warp and weft differ, it tells of the form.
  * @source facts.md, form.residual
  */
 export function measureResidual(
@@ -46,8 +57,11 @@ export function measureResidual(
   membrane: MembraneForces,
   total: Float64Array<ArrayBuffer>,
   fixed: Uint8Array<ArrayBuffer>,
+  edges: readonly FormEdge[],
   stations: Stations,
+  even: boolean,
 ): ResidualReport {
+  const plain = even ? findPlainCloth(fixed.length, edges) : new Uint8Array(fixed.length);
   const along = collectAlong(stations.filter((s) => s !== null));
   const normal = measureVertexNormals(surface);
   let nFree = 0;
@@ -57,6 +71,7 @@ export function measureResidual(
   let normalMax = 0;
   let tangentialMax = 0;
   let worst = -1;
+  let judged = 0;
   const size = new Float64Array(fixed.length);
   for (let v = 0; v < fixed.length; v++) {
     if (fixed[v]) continue;
@@ -65,15 +80,16 @@ export function measureResidual(
     const r = removeAlong([total[3 * v], total[3 * v + 1], total[3 * v + 2]], along.get(v) ?? []);
     const l = Math.sqrt(r[0] ** 2 + r[1] ** 2 + r[2] ** 2);
     square += l * l;
-    size[v] = l;
     const off = Math.abs(r[0] * normal[3 * v] + r[1] * normal[3 * v + 1] + r[2] * normal[3 * v + 2]);
     normalMax = Math.max(normalMax, off);
     tangentialMax = Math.max(tangentialMax, Math.sqrt(Math.max(0, l * l - off * off)));
-    if (l < max || (worst >= 0 && l === max)) continue;
-    max = l;
+    max = Math.max(max, l);
+    size[v] = plain[v] ? off : l;
+    if (size[v] < judged || (worst >= 0 && size[v] === judged)) continue;
+    judged = size[v];
     worst = v;
   }
-  if (nFree === 0) return { residual: { max: 0, rms: 0, normalMax: 0, tangentialMax: 0 }, worst, size };
+  if (nFree === 0) return { residual: { max: 0, rms: 0, normalMax: 0, tangentialMax: 0 }, worst, judged, size };
   scale /= nFree;
   return {
     residual: {
@@ -83,6 +99,7 @@ export function measureResidual(
       tangentialMax: tangentialMax / scale,
     },
     worst,
+    judged: judged / scale,
     size,
   };
 }
