@@ -2,8 +2,11 @@
 import { expect, test } from "vitest";
 import { runForm } from "../../src/core/form/runForm.ts";
 import { buildFormFacts } from "../../src/core/plan/buildFacts.ts";
+import { runPlan } from "../../src/core/plan/runPlan.ts";
+import type { Job } from "../../src/core/records/job.ts";
 import { buildJob, placeMesh } from "../form/formJob.ts";
 import { buildArcSail, buildGrid, listSides, mapPlaces } from "../form/formMeshes.ts";
+import { makeJob } from "../madeJob.ts";
 
 test("facts of the form: residual parted, spread of forces, curvature, strip width and slope of a hypar in closed form", () => {
   const c = 0.1;
@@ -36,4 +39,23 @@ test("spread: none to speak of on an exact sail, some where coordinates are roun
   expect(exact.relief?.stripWidth).toBeNull();
   const rough = facts(mapPlaces(sail, (...p) => p.map((x) => Math.round(50 * x) / 50)));
   for (const e of rough.edges) expect(e.spread).toBeGreaterThan(1e-3);
+});
+
+test("stress asked of the form (prestress.from): panels are those of a job that gives it as numbers, facts carry it", () => {
+  const n = 12;
+  const parts = buildGrid(n, n, (u, v) => [6 * u, 6 * v, 2 * (u + v - 2 * u * v)]);
+  parts.points = [{ name: "rim", vertices: [...new Set(listSides(n, n).flat())] }];
+  const warp: [number, number, number] = [1, 1, 0];
+  const settled = runForm(placeMesh(parts), buildJob({ settle: true, prestress: { warp: 3, weft: 1 }, warp }), {});
+  const source = placeMesh({ ...parts, xyz: settled.output.surface.xyz });
+  const plan = (prestress: Job["prestress"]) =>
+    runPlan(makeJob({ prestress, warp }), source, { until: "panels", revision: "r" }, {});
+  const asked = plan({ warp: 2, weft: 2, from: "balance" });
+  const stress = asked.form?.stress ?? { warp: 0, weft: 0 };
+  expect(stress.warp).toBeCloseTo(3, 1);
+  expect(asked.form?.stressSpread?.weft).toBeGreaterThan(0);
+  const given = plan(stress);
+  expect(asked.panels?.length).toBeGreaterThan(0);
+  expect(asked.panels).toEqual(given.panels);
+  expect(asked.panels).not.toEqual(plan({ warp: 2, weft: 2 }).panels);
 });

@@ -8,6 +8,7 @@ import { measureArea } from "../surface/measures.ts";
 import type { Surface } from "../surface/surface.ts";
 import { balanceCablesInPlace } from "./balance/cableForces.ts";
 import { isCable, measureStations } from "./balance/cablePull.ts";
+import { balanceStress } from "./balance/clothStress.ts";
 import { measureReactionsInPlace, measureResidual, type ResidualReport, sumForces } from "./balance/measureBalance.ts";
 import { measureMembraneForces, type StressField } from "./balance/membraneForces.ts";
 import { findStepMetres, isExplainedByRounding, measureRoundingReach } from "./balance/roundingReach.ts";
@@ -31,7 +32,14 @@ export type FormJob = Pick<Job, "prestress" | "warp" | "settle" | "edges" | "anc
 const BALANCED = 0.01;
 
 function chooseField(job: FormJob): { field: StressField; findings: Finding[] } {
-  const { warp, weft } = job.prestress;
+  const { warp, weft, from } = job.prestress;
+  if (from === "balance" && job.settle)
+    throw new PlanError(
+      "form-prestress",
+      "prestress.from asks the form for the stress it was found with, settle moves the form to the stress of the job: take one of the two out of the job",
+      "prestress.from",
+      { from, settle: "true" },
+    );
   if (!(warp > 0 && weft > 0))
     throw new PlanError(
       "form-prestress",
@@ -246,24 +254,33 @@ export function runForm(
   const settling = settle(job, sound, found, built, context);
   const { surface } = settling;
   step(0.9, "balancing cloth and cables");
-  const membrane = measureMembraneForces(surface, stress.field);
   const stations = edges.map((e) => (isCable(e) ? measureStations(surface.xyz, e.vertices) : null));
+  const sought =
+    job.prestress.from === "balance"
+      ? balanceStress({ surface, edges, fixed: anchorage.fixed }, stations, stress.field)
+      : { stress: null, findings: [] };
+  const field: StressField = sought.stress
+    ? { ...stress.field, warp: sought.stress.warp, weft: sought.stress.weft }
+    : stress.field;
+  const membrane = measureMembraneForces(surface, field);
   const cableFindings = balanceCablesInPlace(edges, stations, membrane.force, anchorage.fixed);
   const total = sumForces(membrane, edges, stations);
-  const { warp, weft, direction } = stress.field;
-  const isEven = direction === null || warp === weft;
+  const { warp, weft, direction } = field;
+  // stresses closer than the limit pull the cloth along itself by less than the limit
+  const isEven = direction === null || Math.abs(warp - weft) <= (BALANCED * (warp + weft)) / 2;
   const report = measureResidual(surface, membrane, total, anchorage.fixed, edges, stations, isEven);
-  const { reactions, check } = measureReactionsInPlace(surface, total, edges, anchorage.anchors, stress.field);
+  const { reactions, check } = measureReactionsInPlace(surface, total, edges, anchorage.anchors, field);
   const grain = surface === sound.surface ? findStepMetres(source) : 0;
   const balance = reportResidual({ surface, toSource: sound.toSource }, report, grain, () =>
-    measureRoundingReach(surface, edges, Math.max(job.prestress.warp, job.prestress.weft), grain),
+    measureRoundingReach(surface, edges, Math.max(warp, weft), grain),
   );
   const { relief, ...slopes } = measureRelief(surface, edges, anchorage.fixed, sound.toSource);
   const output: FoundForm = {
     surface,
     fixed: anchorage.fixed,
     loops: skeleton.loops,
-    stress: { warp: job.prestress.warp, weft: job.prestress.weft },
+    stress: { warp, weft },
+    ...(sought.stress ? { stressSpread: sought.stress.spread } : {}),
     edges,
     anchors: anchorage.anchors,
     residual: report.residual,
@@ -283,6 +300,7 @@ export function runForm(
       ...anchorage.findings,
       ...stress.findings,
       ...settling.findings,
+      ...sought.findings,
       ...cableFindings,
       ...balance.findings,
       ...slopes.findings,

@@ -262,7 +262,13 @@ export const jobSchema = z.strictObject({
   title: line(200, 1),
   issue: line(12, 1).optional(),
   mesh,
-  prestress: z.strictObject({ warp: perMetre(200).optional(), weft: perMetre(200).optional() }).optional(),
+  prestress: z
+    .strictObject({
+      warp: perMetre(200).optional(),
+      weft: perMetre(200).optional(),
+      from: z.literal("balance").optional(),
+    })
+    .optional(),
   warp: point.optional(),
   settle: z.boolean().optional(),
   fabric: z.union([name, fabric]).optional(),

@@ -105,6 +105,7 @@ function resolveJob(file: JobFile, catalogues: Catalogues, ledger: DefaultLedger
     prestress: {
       warp: take(prestress.warp, d.prestress, "prestress.warp", `${d.prestress.toFixed(1)} kN/m`),
       weft: take(prestress.weft, d.prestress, "prestress.weft", `${d.prestress.toFixed(1)} kN/m`),
+      ...(prestress.from === undefined ? {} : { from: prestress.from }),
     },
     warp: take(file.warp ?? undefined, null, "warp", "the warp runs along the strips"),
     settle: take(file.settle, false, "settle", "the form is taken as it is and checked"),

@@ -38,6 +38,7 @@ export function buildFormFacts(form: FoundForm): FactsForm {
     vertices: listTriples(form.surface.xyz),
     triangles: listTriples(form.surface.tri),
     stress: form.stress,
+    ...(form.stressSpread ? { stressSpread: form.stressSpread } : {}),
     edges: form.edges.map((e) => ({
       id: e.id,
       kind: e.kind,

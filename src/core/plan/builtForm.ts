@@ -47,6 +47,11 @@ export function runBuiltForm(source: MeshSource, job: Job, context: StationConte
   // cables keep the forces the drawn form gave them
   const edges = Object.assign(Object.create(null), job.edges) as Job["edges"];
   for (const { id, force } of drawn.output.edges) if (force !== null) edges[id] = { ...edges[id], force };
-  const moved = runForm(source, { ...job, edges }, context, moveEdges(drawn.output, shifts));
-  return { ...moved, output: { form: moved.output, shifts: {} }, findings: [...moved.findings, told] };
+  // so does the cloth, where the drawn form was asked for its stress
+  const prestress = { ...drawn.output.stress };
+  const moved = runForm(source, { ...job, edges, prestress }, context, moveEdges(drawn.output, shifts));
+  const { stressSpread } = drawn.output;
+  const form = stressSpread ? { ...moved.output, stressSpread } : moved.output;
+  const said = drawn.findings.filter((f) => f.code.startsWith("cloth-stress"));
+  return { ...moved, output: { form, shifts: {} }, findings: [...said, ...moved.findings, told] };
 }

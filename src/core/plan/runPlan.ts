@@ -90,7 +90,7 @@ export function runPlan(job: Job, source: MeshSource, options: PlanOptions, cont
 /** Fills the facts station by station. */
 function runStationsInPlace(
   facts: Facts,
-  job: Job,
+  asked: Job,
   source: MeshSource,
   options: PlanOptions & { onStation: (station: Station) => void },
   context: StationContext,
@@ -106,9 +106,11 @@ function runStationsInPlace(
     return result.output;
   };
   options.onStation("form");
-  const { form, shifts } = take(runBuiltForm(source, job, share("form", "seams")));
+  const { form, shifts } = take(runBuiltForm(source, asked, share("form", "seams")));
   facts.form = buildFormFacts(form);
   options.onFacts?.("form", facts);
+  // from here on the stress the form was found to have is the intended one
+  const job: Job = asked.prestress.from ? { ...asked, prestress: { ...form.stress } } : asked;
   if (options.until === "form") return;
 
   if (options.until === "seams") {

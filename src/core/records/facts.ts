@@ -35,6 +35,8 @@ export interface FactsForm {
   vertices: Vec3[];
   triangles: Vec3[];
   stress: { warp: number; weft: number };
+  /** Where the stress was found from best balance, kN/m. */
+  stressSpread?: { warp: number; weft: number };
   edges: {
     id: string;
     kind: EdgeKind;

@@ -62,6 +62,8 @@ export interface FoundForm {
   loops: number[][];
   /** Intended prestress, kN/m. */
   stress: { warp: number; weft: number };
+  /** Standard spread of the stress where it was found from best balance (prestress.from), kN/m. */
+  stressSpread?: { warp: number; weft: number };
   /** Boundary edges loop by loop, then inner cables. Together the boundary edges cover every loop exactly once. */
   edges: FormEdge[];
   anchors: FormAnchor[];

@@ -184,7 +184,8 @@ export interface Job {
   issue: string;
   /** File name of the mesh as the job names it, or "inline". */
   meshName: string;
-  prestress: { warp: number; weft: number };
+  /** kN/m; from "balance": the form is asked for it, and what it says takes the place of the numbers. */
+  prestress: { warp: number; weft: number; from?: "balance" };
   /** Warp direction before seams exist; null: along the strips. */
   warp: Vec3 | null;
   settle: boolean;

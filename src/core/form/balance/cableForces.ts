@@ -15,7 +15,7 @@ const FIELDS = 4;
 const LEAST_TURN = 0.01;
 
 /** Spread of a force over the force above which a caution is given. */
-const LOOSE = 0.05;
+export const LOOSE = 0.05;
 
 /** A force at or below this share of the greatest one is slack. */
 const SLACK = 1e-6;
@@ -46,7 +46,7 @@ interface System {
 }
 
 /** Weighted residuals: rows·T + (sum without unknowns) = 0. */
-function buildSystem(
+export function buildSystem(
   stations: Stations,
   unknown: readonly number[],
   known: Float64Array<ArrayBuffer>,
@@ -83,7 +83,7 @@ function buildSystem(
 }
 
 /** Columns that turn too little to be found by balance, alone or beside the others. */
-function findOpen(rows: readonly Float64Array<ArrayBuffer>[], n: number): number[] {
+export function findOpen(rows: readonly Float64Array<ArrayBuffer>[], n: number): number[] {
   if (rows.length < n) return Array.from({ length: n }, (_, j) => j);
   const columns = Array.from({ length: n }, (_, j) => Float64Array.from(rows, (r) => r[j]));
   const dot = (a: Float64Array<ArrayBuffer>, b: Float64Array<ArrayBuffer>) => a.reduce((s, x, i) => s + x * b[i], 0);
@@ -101,7 +101,7 @@ function findOpen(rows: readonly Float64Array<ArrayBuffer>[], n: number): number
 }
 
 /** Standard spread of each unknown from the misfit, kN. */
-function measureSpread(
+export function measureSpread(
   rows: readonly Float64Array<ArrayBuffer>[],
   columns: readonly number[],
   misfit: number,
