@@ -22,8 +22,8 @@ export default defineConfig({
   },
   test: {
     include: ["test/**/*.test.ts"],
-    testTimeout: 60_000,
-    hookTimeout: 60_000,
+    testTimeout: 120_000,
+    hookTimeout: 120_000,
     reporters: ["default", ["json", { outputFile: "out/test-results.json" }]],
   },
 } as Parameters<typeof defineConfig>[0]);

@@ -61,5 +61,6 @@ test("without masts nothing is balanced", () => {
   expect(balanceHeads(xyz, [], [pull], { struts: [], stays: [stay("S1", 3, 7), stay("S2", 4)] })).toEqual({
     strut: [],
     stay: [7, 0],
+    unbalanced: null,
   });
 });
