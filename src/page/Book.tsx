@@ -138,7 +138,7 @@ function Head() {
           ↷ Redo
         </button>
         <button type="button" onClick={turnTheme}>
-          {theme === "system" ? "as system" : theme}
+          Colours: {theme === "system" ? "as the system" : theme}
         </button>
         <button type="button" onClick={() => bookStore.setState({ sheet: "keys" })}>
           Keys

@@ -4,7 +4,7 @@ import { addReading } from "../actions/site/addReading.ts";
 import type { RigStep } from "../flat/rigSteps.ts";
 import { readNumber } from "../parts/Fields.tsx";
 import { figure } from "../parts/figure.ts";
-import { act } from "../store/bookStore.ts";
+import { act, bookStore } from "../store/bookStore.ts";
 import type { Reading } from "../store/project.ts";
 import { useBook } from "../store/useBook.ts";
 
@@ -100,7 +100,11 @@ function PlacePicker({ kind, id, onPick }: { kind: Kind; id: string; onPick: (id
 
 /** The form. */
 export function ReadingEntry({ step }: { step: RigStep | null }) {
-  const [kind, setKind] = useState<Kind>("force");
+  // A roof without adjusters and cables has places to survey, no forces to read.
+  const [kind, setKind] = useState<Kind>(() => {
+    const { facts } = bookStore.getState();
+    return (facts?.rig?.adjusters.length ?? 0) + (facts?.cables?.length ?? 0) > 0 ? "force" : "position";
+  });
   const [id, setId] = useState("");
   const [texts, setTexts] = useState(EMPTY);
   const [by, setBy] = useState("");

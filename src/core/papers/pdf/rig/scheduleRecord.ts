@@ -62,9 +62,14 @@ export function flowTemperature(book: Book, rig: RigFacts): void {
   ];
   const ids = Object.keys(table[0].forces);
   const rows = ids.map((id) => [id, ...table.map((r) => (r.forces[id] === undefined ? "–" : force.of(r.forces[id])))]);
+  const alpha = rig.tensioning.frameAlpha ?? 0;
+  const anchors =
+    alpha === 0
+      ? "anchors where they are"
+      : `anchors moving with their frame (${(1e6 * alpha).toFixed(1)}e-6 a K, as the job says)`;
   flowTextInPlace(
     flow,
-    "Cloth, cables and adjusters at one temperature, anchors where they are. Between two columns take the share that lies between. Moves stay as they are, in travel and pins; the forces to read shift. While the roof is taut the difference to the reference column is about the same in amount at earlier stages too (own argument: same stiffness), less while it is slack. Whether a window moves with it, the engineer says.",
+    `Cloth, cables and adjusters at one temperature, ${anchors}. Between two columns take the share that lies between. Moves stay as they are, in travel and pins; the forces to read shift. While the roof is taut the difference to the reference column is about the same in amount at earlier stages too (own argument: same stiffness), less while it is slack. Whether a window moves with it, the engineer says.`,
     { size: BODY },
   );
   flowGapInPlace(flow, 2);
