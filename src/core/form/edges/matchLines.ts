@@ -5,7 +5,7 @@ import type { MeshSource } from "../../records/job.ts";
 import type { Adjacency } from "../../surface/adjacency.ts";
 import { nextHalfedge, previousHalfedge } from "../../surface/adjacency.ts";
 import { buildFormFinding, describeVertex } from "../formFinding.ts";
-import type { SoundSurface } from "../repair/soundSurface.ts";
+import { type SoundSurface, WELD } from "../repair/soundSurface.ts";
 import { findNearestVertex, measureMeanSide } from "./nearestVertex.ts";
 
 /** A polyline on the surface: consecutive vertices share a side. A closed one repeats its first vertex. */
@@ -98,15 +98,20 @@ function addLinkInPlace(links: Links, a: number, b: number): void {
   links.count++;
 }
 
-/** The point of a line that lies farthest off the surface. */
+/** A point of a line that lies off the surface's vertices. */
 interface Astray {
   source: number;
   distance: number;
 }
 
-/** Surface vertices of a line's points, or the point farthest off where one is beyond reach. */
-function snapLine(sound: SoundSurface, vertices: readonly number[], reach: number): number[] | Astray {
+/** Surface vertices of a line's points with the points that were moved onto them, or the point farthest off where one is beyond reach. */
+function snapLine(
+  sound: SoundSurface,
+  vertices: readonly number[],
+  reach: number,
+): { path: number[]; moved: Astray[] } | Astray {
   const out: number[] = [];
+  const moved: Astray[] = [];
   let off: Astray | null = null;
   for (const source of vertices) {
     let v = sound.fromSource[source];
@@ -114,10 +119,11 @@ function snapLine(sound: SoundSurface, vertices: readonly number[], reach: numbe
       const near = findNearestVertex(sound.surface, sound.sourceXyz.subarray(3 * source, 3 * source + 3));
       if (near.distance > reach && near.distance > (off?.distance ?? 0)) off = { source, distance: near.distance };
       v = near.vertex;
+      moved.push({ source, distance: near.distance });
     }
     if (out[out.length - 1] !== v) out.push(v);
   }
-  return off ?? out;
+  return off ?? { path: out, moved };
 }
 
 /** Paths of a set of links, parted at branches and where boundary and inside meet. */
@@ -172,6 +178,23 @@ function reportAstray(sound: SoundSurface, name: string, off: Astray, side: numb
   });
 }
 
+/** Points of lines that were moved by more than the file's rounding, all lines together. */
+function reportSnapped(sound: SoundSurface, moved: ReadonlyMap<number, [string, number]>, reach: number): Finding[] {
+  const order = [...moved].sort(([, [, a]], [, [, b]]) => b - a);
+  if (order.length === 0) return [];
+  const [source, [name, distance]] = order[0];
+  return [
+    buildFormFinding("note", {
+      code: "mesh-line-snapped",
+      where: [name, `vertex ${source}`],
+      value: order.length,
+      limit: reach,
+      text: `${order.length} ${order.length === 1 ? "point of a line lies" : "points of lines lie"} beside the mesh and moved to the nearest vertex, by up to ${(1000 * distance).toPrecision(2)} mm (limit ${(1000 * reach).toPrecision(2)} mm), worst on line ${name} at ${describeVertex(sound.sourceXyz, source)}`,
+      remedy: "nothing to do if the line runs along these vertices; else draw it through vertices of the surface",
+    }),
+  ];
+}
+
 /**
  * The file's lines as paths of the surface.
  * @shape onBoundary: whether the side between two vertices is on the boundary
@@ -185,13 +208,16 @@ export function matchLines(
   const findings: Finding[] = [];
   const groups = new Map<string | null, Links>();
   const side = measureMeanSide(sound.surface);
+  const moved = new Map<number, [string, number]>();
+  const exact = WELD * sound.diagonal;
   for (const line of lines) {
     const label = line.name ?? "without a name";
-    const snapped = snapLine(sound, line.vertices, SNAP * side);
-    if (!Array.isArray(snapped)) {
-      findings.push(reportAstray(sound, label, snapped, side));
+    const found = snapLine(sound, line.vertices, SNAP * side);
+    if (!("path" in found)) {
+      findings.push(reportAstray(sound, label, found, side));
       continue;
     }
+    const snapped = found.path;
     const ways = snapped.slice(1).map((b, i) => {
       const a = snapped[i];
       if (findNeighbours(sound.surface.tri, adjacency, a).includes(b)) return [a, b];
@@ -212,9 +238,11 @@ export function matchLines(
     }
     const links = groups.get(line.name) ?? { name: line.name, next: new Map(), count: 0 };
     groups.set(line.name, links);
+    for (const { source, distance } of found.moved) if (distance > exact) moved.set(source, [label, distance]);
     for (const way of ways as number[][])
       for (let i = 1; i < way.length; i++) addLinkInPlace(links, way[i - 1], way[i]);
   }
+  findings.push(...reportSnapped(sound, moved, SNAP * side));
   const sides = (adjacency.twin.length + adjacency.twin.reduce((n, t) => n + (t < 0 ? 1 : 0), 0)) / 2;
   const wire = groups.get(null);
   if (wire && wire.count > WIREFRAME * sides) {

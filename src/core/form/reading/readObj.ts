@@ -166,10 +166,17 @@ function readName(s: ObjState): string | null {
   return name === "" || name === "default" ? null : name;
 }
 
+/** Small letter of a statement that is read, 0 of any other. Capitals mean the same; fo is the old word for f. */
+function readKeyword(s: ObjState, stop: number): number {
+  const letter = s.text.charCodeAt(s.at) | 32;
+  if (stop - s.at === 1) return letter;
+  return stop - s.at === 2 && letter === 102 && (s.text.charCodeAt(s.at + 1) | 32) === 111 ? letter : 0;
+}
+
 function readStatement(s: ObjState): void {
   if (skipBlanks(s)) {
     const stop = findWordEnd(s);
-    const word = stop - s.at === 1 ? s.text.charCodeAt(s.at) : 0;
+    const word = readKeyword(s, stop);
     s.at = word === 0 ? s.at : stop;
     if (word === 118) readVertex(s);
     else if (word === 102) readFace(s);
@@ -251,6 +258,7 @@ export function createObjReader(): ObjReader {
   };
   pushIndexInPlace(s.faceStart, 0);
   let rest = "";
+  let started = false;
   const readTo = (text: string, end: number) => {
     s.text = text;
     s.at = 0;
@@ -260,7 +268,10 @@ export function createObjReader(): ObjReader {
   };
   return {
     push(chunk) {
-      const text = rest === "" ? chunk : rest + chunk;
+      // a byte order mark is no column of the first line
+      const own = !started && chunk.charCodeAt(0) === 0xfeff ? chunk.slice(1) : chunk;
+      started ||= chunk !== "";
+      const text = rest === "" ? own : rest + own;
       const end = findLastStatement(text);
       readTo(text, end);
       rest = text.slice(end);

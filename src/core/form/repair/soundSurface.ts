@@ -15,7 +15,7 @@ import { splitTees } from "./splitTees.ts";
 import { findWelds } from "./weldVertices.ts";
 
 /** Vertices closer than this share of the bounding box diagonal are one; triangles no higher than that have no area. */
-const WELD = 1e-6;
+export const WELD = 1e-6;
 
 /** Height over longest side below which a triangle is called a needle. */
 const NEEDLE = 0.01;
@@ -45,17 +45,17 @@ function countWords(n: number, one: string, many: string): string {
 function reportRepairs(
   x: Float64Array<ArrayBuffer>,
   tolerance: number,
-  found: [string, number[], string][],
+  found: [string, number[], string, number?][],
 ): Finding[] {
   return found
     .filter(([, at]) => at.length > 0)
-    .map(([code, at, text]) =>
+    .map(([code, at, text, worst]) =>
       buildFormFinding("note", {
         code,
-        where: `vertex ${at[0]}`,
+        where: `vertex ${worst ?? at[0]}`,
         value: at.length,
         limit: tolerance,
-        text: `${text}, first ${describeVertex(x, at[0])} (vertices counted from 0)`,
+        text: `${text}, ${worst === undefined ? "first" : "worst at"} ${describeVertex(x, worst ?? at[0])} (vertices counted from 0)`,
         remedy: "nothing to do if this is meant; else correct the mesh and import it again",
       }),
     );
@@ -188,7 +188,7 @@ export function buildSoundSurface(source: MeshSource): SoundSurface {
   const target = findWelds(x, tolerance);
   const welded = Array.from(target.keys()).filter((v) => target[v] !== v);
   const gap = (v: number) => Math.sqrt([0, 1, 2].reduce((s, k) => s + (x[3 * v + k] - x[3 * target[v] + k]) ** 2, 0));
-  const farthest = welded.reduce((w, v) => Math.max(w, gap(v)), 0);
+  const farthest = welded.reduce((w, v) => (gap(v) > gap(w) ? v : w), welded[0] ?? 0);
   const split = splitPolygons(x, source, target);
   const { tri: clean, flatAt, doubledAt } = cleanTriangles(x, split.tri, tolerance);
   const { tri, ...tees } = splitTees(x, clean, tolerance);
@@ -216,6 +216,7 @@ export function buildSoundSurface(source: MeshSource): SoundSurface {
   });
   const toSource = kept.map((v) => (v < nSource ? v : parted.copyOf[v - nSource]));
   const within = `within ${(1000 * tolerance).toPrecision(2)} mm (a millionth of the form's diagonal)`;
+  const doubled = [...split.doubled, ...doubledAt];
   const vanished = split.vanished.map((f) => source.faceVertex[source.faceStart[f]]);
   const findings = [
     ...checkSize(extent, source.unit),
@@ -223,7 +224,8 @@ export function buildSoundSurface(source: MeshSource): SoundSurface {
       [
         "mesh-welded",
         welded,
-        `${countWords(welded.length, "vertex lies", "vertices lie")} on another ${within}, ${(1000 * farthest).toPrecision(2)} mm at most, and became one with it`,
+        `${countWords(welded.length, "vertex lies", "vertices lie")} on another ${within}, ${(1000 * gap(farthest)).toPrecision(2)} mm at most, and became one with it`,
+        farthest,
       ],
       [
         "mesh-flat-triangles",
@@ -232,14 +234,14 @@ export function buildSoundSurface(source: MeshSource): SoundSurface {
       ],
       [
         "mesh-double-triangles",
-        doubledAt,
-        `${countWords(doubledAt.length, "triangle was", "triangles were")} given twice and went`,
+        doubled,
+        `${countWords(doubled.length, "triangle was", "triangles were")} given twice and went`,
       ],
       [
         "mesh-tees",
-        // worst first
-        tees.at.length > 0 ? [tees.farthest.vertex, ...tees.at.slice(1)] : [],
+        tees.at,
         `${countWords(tees.at.length, "vertex lies", "vertices lie")} on the side of a triangle (up to ${(1000 * tees.farthest.distance).toPrecision(2)} mm off it), which was split there`,
+        tees.farthest.vertex,
       ],
       [
         "mesh-loose-vertices",

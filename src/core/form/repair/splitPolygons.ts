@@ -141,22 +141,40 @@ function splitRing(x: Float64Array<ArrayBuffer>, ring: number[]): number[] {
   return ring.length <= MOST_TRIED ? splitFlattest(x, ring) : cutEars(x, ring);
 }
 
+/** Remembers rings by their least corner; true where a ring of the same corners, from wherever counted, came before. */
+function createRingMemory(): (ring: number[]) => boolean {
+  const known = new Map<number, number[][]>();
+  return (ring) => {
+    const least = ring.reduce((m, v) => Math.min(m, v));
+    const near = known.get(least);
+    const alike = near?.filter((r) => r.length === ring.length) ?? [];
+    const corners = new Set(alike.length > 0 ? ring : []);
+    if (alike.some((r) => r.every((v) => corners.has(v)))) return true;
+    if (near) near.push(ring);
+    else known.set(least, [ring]);
+    return false;
+  };
+}
+
 /**
  * Triangles of a mesh whose vertices are welded; corners that fell together are taken once, faces left with fewer than
- * three corners vanish.
- * @shape target nV (vertex each is welded to) -> tri 3*nT, face nT (polygon it comes from)
+ * three corners vanish. A larger polygon given twice is split once: the copy might be split another way and close the cloth.
+ * @shape target nV (vertex each is welded to) -> tri 3*nT, face nT (polygon it comes from), doubled (a corner for each
+ * triangle not made again)
  */
 export function splitPolygons(
   x: Float64Array<ArrayBuffer>,
   source: Pick<MeshSource, "faceStart" | "faceVertex">,
   target: Uint32Array<ArrayBuffer>,
-): { tri: Uint32Array<ArrayBuffer>; face: Uint32Array<ArrayBuffer>; vanished: number[] } {
+): { tri: Uint32Array<ArrayBuffer>; face: Uint32Array<ArrayBuffer>; vanished: number[]; doubled: number[] } {
   const { faceStart, faceVertex } = source;
   const nF = faceStart.length - 1;
   const room = Math.max(0, faceVertex.length - 2 * nF);
   const tri = new Uint32Array(3 * room);
   const face = new Uint32Array(room);
   const vanished: number[] = [];
+  const doubled: number[] = [];
+  const isKnown = createRingMemory();
   let n = 0;
   for (let f = 0; f < nF; f++) {
     const first = faceStart[f];
@@ -182,11 +200,15 @@ export function splitPolygons(
       vanished.push(f);
       continue;
     }
+    if (ring.length > 3 && isKnown(ring)) {
+      for (let i = 2; i < ring.length; i++) doubled.push(ring[i]);
+      continue;
+    }
     const parts = splitRing(x, ring);
     for (let i = 0; i < parts.length; i += 3) {
       tri.set(parts.slice(i, i + 3), 3 * n);
       face[n++] = f;
     }
   }
-  return { tri: tri.slice(0, 3 * n), face: face.slice(0, n), vanished };
+  return { tri: tri.slice(0, 3 * n), face: face.slice(0, n), vanished, doubled };
 }
