@@ -178,6 +178,28 @@ describe.skipIf(missing.length > 0)(`schedule as another reader finds it${reason
     for (const w of words) expect(sizeOf(w), w.text).toBeGreaterThan(10.9);
   });
 
+  test("every word in the row of a move is set in 11 pt or more, and nothing on any sheet in less than 9 pt", async () => {
+    const { words } = wordsOf(await sheets);
+    const ways = words.filter((w) => w.text === "SHORTEN" || w.text === "LENGTHEN");
+    expect(ways).toHaveLength(moves.length);
+    for (const way of ways) {
+      // Two lines a row: the second begins 5.4 mm below the first.
+      const row = words.filter((w) => w.page === way.page && w.y0 > way.y0 - 1 && w.y0 < way.y0 + 6);
+      expect(row.length).toBeGreaterThan(12);
+      for (const w of row) expect(sizeOf(w), w.text).toBeGreaterThan(10.9);
+    }
+    for (const w of words) expect(sizeOf(w), w.text).toBeGreaterThan(8.9);
+  });
+
+  test("the window of a pressed member reads from – to without a dash among its minus signs", async () => {
+    const bytes = await sheets;
+    const text = pages(bytes, "Stage 1 of 3")
+      .map((p) => textOf(bytes, p))
+      .join(" ");
+    expect(text).toContain("-3.3 to -1.1");
+    expect(text).toContain("Minus: pressed");
+  });
+
   test("the cover says what it is not, what must be there, and which limits nobody gave", async () => {
     const bytes = await sheets;
     const cover = [1, 2].map((p) => textOf(bytes, p)).join(" ");

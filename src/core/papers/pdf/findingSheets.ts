@@ -133,7 +133,8 @@ function flowSummaryInPlace(flow: Flow, facts: Facts): void {
 
 /** Balance, forces and relief of the form in plain words. */
 function describeForm(form: NonNullable<Facts["form"]>): string {
-  const percent = (r: number) => `${decimal(100 * r, 2)} %`;
+  // Two decimals are enough to read; what they would show as nothing is not nothing.
+  const percent = (r: number) => (r > 0 && r < 5e-5 ? "under 0.01 %" : `${decimal(100 * r, 2)} %`);
   const { residual, relief, edges } = form;
   const within = residual.tangentialMax === undefined ? "" : `, within it ${percent(residual.tangentialMax)}`;
   const found = edges.flatMap((e) =>
@@ -157,20 +158,30 @@ function describeForm(form: NonNullable<Facts["form"]>): string {
   return `Form: ${lines.join(" ")}`;
 }
 
-/** Places by name; of a long list the first ones and how many more, facts.json holds them all. */
-function placesText(places: readonly string[]): string {
-  const shown = places.slice(0, PLACES).join(", ");
-  return places.length > PLACES ? `${shown} and ${places.length - PLACES} more` : shown;
+/**
+ * Places by name, those of one finding together, with its value behind them where values differ; of a long list the first ones and
+ * how many more, facts.json holds them all.
+ */
+function placesText(all: readonly Finding[], told: boolean): string {
+  const shown: string[] = [];
+  let left = PLACES;
+  let more = 0;
+  for (const { where, value } of all) {
+    const names = [where].flat();
+    const first = names.slice(0, left);
+    left -= first.length;
+    more += names.length - first.length;
+    if (first.length > 0) shown.push(`${first.join(", ")}${told ? ` (${valueText(value)})` : ""}`);
+  }
+  return `${shown.join(told ? "; " : ", ")}${more > 0 ? ` and ${more} more` : ""}`;
 }
 
 function findingRow(facts: Facts, { worst: f, all }: LikeFindings): string[] {
   const told = all.length > 1 && all.some((g) => typeof g.value === "number" && g.value !== f.value);
-  // Of several alike every place is named, with its own value where they differ.
-  const places = all.flatMap((g) => [g.where].flat().map((w) => (told ? `${w} (${valueText(g.value)})` : w)));
   const alike = all.length === 1 ? "" : told ? `The worst of ${all.length} alike: ` : `One of ${all.length} alike: `;
   return [
     `${f.code} (${f.station})`,
-    placesText(places),
+    placesText(all, told),
     `${alike}${unitsInText(facts.job, f.text)}`,
     valueText(f.value),
     valueText(f.limit),

@@ -19,7 +19,7 @@ import { BODY } from "./scheduleCover.ts";
 
 const SIGN_HEIGHT = 24;
 /** Heading and words, mm. */
-const HEAD = 22;
+const HEAD = 25;
 
 interface Table {
   columns: readonly Column[];
@@ -37,7 +37,8 @@ function forceTable(rig: RigFacts, stage: FactsStage): Table {
   const rows = holdReadings(rig, stage).map((r) => [
     r.id,
     force.of(r.planned),
-    `${force.of(r.low)} – ${force.of(r.high)}`,
+    // A dash between numbers below nothing reads as a third minus.
+    `${force.of(r.low)} ${r.low < 0 ? "to" : "–"} ${force.of(r.high)}`,
     "",
   ]);
   return { columns, rows };
@@ -73,7 +74,8 @@ export function flowHoldInPlace(flow: Flow, rig: RigFacts, stage: FactsStage, k:
   const beside = HEAD + Math.max(...heights) + SIGN_HEIGHT <= whole;
   const wanted = HEAD + (beside ? Math.max(...heights) : halves[0] + halves[1] + 3) + SIGN_HEIGHT;
   if (wanted > flow.y - flow.sheet.bottom) needInPlace(flow, Infinity);
-  const words = `Read all members after half an hour, compare with the window (temperature: see the table of temperatures), measure the corners. ${last ? "Lock both ends of every turnbuckle, mark them with paint." : "Nothing of the next stage is turned before this is signed."} A cable inside its pocket cannot be read: leave it blank, the adjusters decide.`;
+  const pressed = holdReadings(rig, stage).some((r) => r.planned < 0);
+  const words = `Read all members after half an hour, compare with the window (temperature: see the table of temperatures), measure the corners. ${last ? "Lock both ends of every turnbuckle, mark them with paint." : "Nothing of the next stage is turned before this is signed."} A cable inside its pocket cannot be read: leave it blank, the adjusters decide.${pressed ? " Minus: pressed, as a mast is." : ""}`;
   flowHeadingInPlace(flow, `HOLD POINT ${k + 1}`);
   flowTextInPlace(flow, words, { size: BODY });
   flowGapInPlace(flow, 1.5);

@@ -120,7 +120,7 @@ function flowMovesInPlace(flow: Flow, rig: RigFacts, stage: FactsStage): void {
   const together = stage.moves.some((m, i) => i > 0 && m.step === stage.moves[i - 1].step);
   const { temperature } = paperUnits(rig.facts.job);
   const at = `${temperature.whole(rig.tensioning.referenceTemperature)}`;
-  const words = `One step after the other. ${together ? "Adjusters with the same step number are moved together, never more than one turn apart, and read after all of them. " : ""}Stop at the force OR the pin length in the column STOP, whichever comes first. Forces hold at ${at}: see the table of temperatures. ${openLimits(rig)}`;
+  const words = `One step after the other. ${together ? "Adjusters with the same step number are moved together, never more than one turn apart, and read after all of them. " : ""}Stop at the force OR the pin length in the column STOP, whichever comes first. Pins by tape are under force, which lengthens them a little. Forces hold at ${at}: see the table of temperatures. ${openLimits(rig)}`;
   flowTextInPlace(flow, words, { size: BODY });
   flowGapInPlace(flow, 1.5);
   const columns = moveColumns(rig);
