@@ -95,6 +95,19 @@ describe("keeping", { timeout: LONG }, () => {
     await context.close();
   });
 
+  it("keeps what was taken back at once, before it was kept, to be done again", async () => {
+    const { page, context } = await openSmall();
+    await turnTo(page, "Rolls");
+    await kept(page);
+    await enter(page, "Gap between cuts", "30");
+    await page.getByRole("button", { name: "Undo gap between cuts" }).press("Enter");
+    await kept(page);
+    await page.reload();
+    await page.getByRole("button", { name: "Redo gap between cuts" }).click();
+    await shows(page, "Gap between cuts", "30");
+    await context.close();
+  });
+
   it("says that the worker broke, and plans again with a new one", async () => {
     const { page, context, revision } = await openSmall();
     const planner = () => page.workers().find((w) => w.url().includes("planWorker"));

@@ -3,7 +3,7 @@
 import { bookStore, dismiss, LEAVES, type Leaf, notify, openProject } from "../store/bookStore.ts";
 import type { Project } from "../store/project.ts";
 import { loadJob, saveJob } from "./jobStore.ts";
-import { type Line, lineOf, readLine, renameLine } from "./timeline.ts";
+import { isSameLine, type Line, lineOf, readLine, renameLine } from "./timeline.ts";
 
 /** Quiet time before an edit is written, ms. */
 const QUIET = 400;
@@ -92,7 +92,8 @@ async function write(shelf: Shelved, line: Line, leaf: Leaf): Promise<void> {
   const open = () => shelf === shelved;
   // What was changed while this was written is kept in its own turn.
   const settle = () => bookStore.setState((s) => ({ keeping: open() ? s.project !== project : s.keeping }));
-  if (project === shelf.line?.states[shelf.line.at].project) return settle();
+  // The whole line: an edit taken back at once stands at the state kept before, but can be done again.
+  if (shelf.line !== null && isSameLine(line, shelf.line)) return settle();
   const now = new Date().toISOString();
   try {
     const next = await saveJob(line, shelf.line, leaf, shelf.count, now);

@@ -33,3 +33,12 @@ export function renameLine(line: Line, id: string, change: (project: Project) =>
   }));
   return { states, at: line.at };
 }
+
+/** Whether two lines hold the same states and stand at the same one. */
+export function isSameLine(a: Line, b: Line): boolean {
+  return (
+    a.at === b.at &&
+    a.states.length === b.states.length &&
+    a.states.every(({ project }, i) => project === b.states[i].project)
+  );
+}
