@@ -146,17 +146,19 @@ test("bent polygons fold no more than the best way found by trying all of them, 
   );
 });
 
-test("a polygon of a hundred corners is cut by ears, areas add up", () => {
-  const points = Array.from({ length: 100 }, (_, i) => {
+test.each([100, 6000])("a star of %i corners is cut by ears, none against the others, areas add up", (count) => {
+  const points = Array.from({ length: count }, (_, i) => {
     const r = i % 2 === 0 ? 3 : 1.5;
-    return [r * Math.cos((Math.PI * i) / 50), r * Math.sin((Math.PI * i) / 50), 0];
+    return [r * Math.cos((2 * Math.PI * i) / count), r * Math.sin((2 * Math.PI * i) / count), 0];
   });
   const { tri } = one(points);
   let sum = 0;
   for (let t = 0; t < tri.length; t += 3) {
     const [a, b, c] = [points[tri[t]], points[tri[t + 1]], points[tri[t + 2]]];
-    sum += ((b[0] - a[0]) * (c[1] - a[1]) - (b[1] - a[1]) * (c[0] - a[0])) / 2;
+    const area = ((b[0] - a[0]) * (c[1] - a[1]) - (b[1] - a[1]) * (c[0] - a[0])) / 2;
+    expect(area).toBeGreaterThanOrEqual(-1e-12);
+    sum += area;
   }
-  expect(tri.length).toBe(98 * 3);
-  expect(sum).toBeCloseTo(50 * 3 * 1.5 * Math.sin(Math.PI / 50), 9);
+  expect(tri.length).toBe((count - 2) * 3);
+  expect(sum).toBeCloseTo((count / 2) * 3 * 1.5 * Math.sin((2 * Math.PI) / count), 9);
 });

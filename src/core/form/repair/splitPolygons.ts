@@ -38,12 +38,6 @@ function splitQuad(x: Float64Array<ArrayBuffer>, q: number[]): number[] {
   return first ? [a, b, c, a, c, d] : [b, c, d, b, d, a];
 }
 
-/** Whether p lies in triangle abc or on its rim, seen along n. */
-function holds(x: Float64Array<ArrayBuffer>, n: Three, abc: Three, p: number): boolean {
-  const [a, b, c] = abc;
-  return dot(cross(x, a, b, p), n) >= 0 && dot(cross(x, b, c, p), n) >= 0 && dot(cross(x, c, a, p), n) >= 0;
-}
-
 /** Roundness of a triangle: area over the sum of squared sides, negative where it is wound against n. */
 function measureEar(x: Float64Array<ArrayBuffer>, n: Three, [a, b, c]: Three): number {
   const l = distance(x, a, b) ** 2 + distance(x, b, c) ** 2 + distance(x, c, a) ** 2;
@@ -111,26 +105,67 @@ function splitFlattest(x: Float64Array<ArrayBuffer>, ring: readonly number[]): n
   return out;
 }
 
-function cutEars(x: Float64Array<ArrayBuffer>, polygon: number[]): number[] {
-  const out: number[] = [];
-  const ring = polygon.slice();
+/** Two directions square to n, right-handed with it; the least part of n decides which. */
+function spanPlane(n: Three): [Three, Three] {
+  const least = [0, 1, 2].reduce((m, k) => (Math.abs(n[k]) < Math.abs(n[m]) ? k : m), 0);
+  const e = [0, 1, 2].map((k) => (k === least ? 1 : 0) - n[least] * n[k]);
+  const l = Math.hypot(...e) || 1;
+  const u: Three = [e[0] / l, e[1] / l, e[2] / l];
+  return [u, [n[1] * u[2] - n[2] * u[1], n[2] * u[0] - n[0] * u[2], n[0] * u[1] - n[1] * u[0]]];
+}
+
+/**
+ * Cuts the roundest ear again and again. What a corner is worth is kept until a side of its triangle changes; a corner whose
+ * triangle holds another waits until that one is cut off.
+ */
+function cutEars(x: Float64Array<ArrayBuffer>, ring: readonly number[]): number[] {
+  const count = ring.length;
   const n = measureRingNormal(x, ring);
-  while (ring.length > 3) {
-    let best = -1;
-    let bestEar = -Infinity;
-    for (let i = 0; i < ring.length; i++) {
-      const abc: Three = [ring[(i + ring.length - 1) % ring.length], ring[i], ring[(i + 1) % ring.length]];
-      const ear = measureEar(x, n, abc);
-      if (ear <= bestEar * (1 + 1e-9) || ear <= 0 || ring.some((p) => !abc.includes(p) && holds(x, n, abc, p)))
-        continue;
-      best = i;
-      bestEar = ear;
+  const [px, py] = spanPlane(n).map((e) =>
+    Float64Array.from(ring, (v) => dot([x[3 * v], x[3 * v + 1], x[3 * v + 2]], e)),
+  );
+  const left = (a: number, b: number, c: number) =>
+    (px[b] - px[a]) * (py[c] - py[a]) - (py[b] - py[a]) * (px[c] - px[a]) >= 0;
+  const before = Int32Array.from(ring, (_, i) => (i + count - 1) % count);
+  const after = Int32Array.from(ring, (_, i) => (i + 1) % count);
+  const measure = (i: number) => {
+    // in single precision, so that alike ears stay alike when the mesh is turned
+    const ear = Math.fround(measureEar(x, n, [ring[before[i]], ring[i], ring[after[i]]]));
+    return Math.max(ear, 0);
+  };
+  const worth = Float32Array.from(ring, (_, i) => measure(i));
+  const waits = new Map<number, number[]>();
+  const out: number[] = [];
+  let start = 0;
+  /** A corner in the triangle at i or on its rim, -1 for none. */
+  const findInside = (i: number): number => {
+    const [a, c] = [before[i], after[i]];
+    for (let p = after[c]; p !== a; p = after[p])
+      if (left(a, i, p) && left(i, c, p) && left(c, a, p) && ![a, i, c].some((q) => ring[q] === ring[p])) return p;
+    return -1;
+  };
+  const findBest = (): number => {
+    for (;;) {
+      let best = start;
+      for (let i = after[start]; i !== start; i = after[i]) if (worth[i] > worth[best]) best = i;
+      if (worth[best] === 0) return start;
+      const inside = findInside(best);
+      if (inside < 0) return best;
+      worth[best] = 0;
+      waits.set(inside, [...(waits.get(inside) ?? []), best]);
     }
-    const i = Math.max(best, 0);
-    out.push(ring[(i + ring.length - 1) % ring.length], ring[i], ring[(i + 1) % ring.length]);
-    ring.splice(i, 1);
+  };
+  for (let left = count; left > 3; left--) {
+    const i = findBest();
+    const [a, c] = [before[i], after[i]];
+    out.push(ring[a], ring[i], ring[c]);
+    after[a] = c;
+    before[c] = a;
+    if (i === start) start = c;
+    before[i] = -1;
+    for (const w of [a, c, ...(waits.get(i) ?? [])]) if (before[w] >= 0) worth[w] = measure(w);
   }
-  out.push(...ring);
+  out.push(ring[before[start]], ring[start], ring[after[start]]);
   return out;
 }
 
