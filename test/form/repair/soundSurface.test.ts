@@ -83,6 +83,15 @@ test("loose, double and flat things go, each with a note", () => {
   });
 });
 
+test("points of a line or a held point beside the surface are not called loose: they are told where they are matched", () => {
+  const n = sound.surface.xyz.length / 3;
+  const xyz = Float64Array.from([...readFixture("sound").xyz, 1, 1, 9, 2, 2, 9, 3, 3, 9, 4, 4, 9]);
+  const lines = [{ name: "mast", vertices: [n, n + 1] }];
+  const points = [{ name: "foot", vertices: [n + 2] }];
+  const s = buildSoundSurface(placeMesh({ ...readFixture("sound"), xyz, lines, points }));
+  expect(s.findings.map((f) => [f.code, f.value])).toEqual([["mesh-loose-vertices", 1]]);
+});
+
 test("a triangle without area between two others goes without opening a crack", () => {
   // vertex 4 lies on the side 0–2 of the lower triangle; the flat triangle 0, 2, 4 closes the gap
   const xyz = Float64Array.from([0, 0, 0, 2, -2, 0, 4, 0, 0, 2, 2, 0, 2, 0, 0]);

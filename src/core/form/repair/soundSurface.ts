@@ -176,6 +176,12 @@ function compact(
   return { surface: { xyz, tri: tri.map((v) => index[v]) }, kept, index };
 }
 
+/** Vertices nothing uses. Points of lines and held points off the surface are told where they are matched with it. */
+function findLoose(source: MeshSource, target: Uint32Array<ArrayBuffer>, index: Int32Array<ArrayBuffer>): number[] {
+  const named = new Set([...source.lines, ...source.points].flatMap((l) => l.vertices.map((v) => target[v])));
+  return Array.from(target.keys()).filter((v) => target[v] === v && index[v] < 0 && !named.has(v));
+}
+
 /**
  * The surface of a mesh: metres, z up, triangles, each vertex once, wound one way, outer face as asked.
  * @throws PlanError mesh-flat (no triangle has area), mesh-three-way-edge, mesh-one-sided
@@ -209,7 +215,7 @@ export function buildSoundSurface(source: MeshSource): SoundSurface {
   const { surface, kept, index } = compact(wide, parted.tri);
   const fromSource = new Int32Array(nSource);
   for (let v = 0; v < nSource; v++) fromSource[v] = index[target[v]];
-  const loose = Array.from(target.keys()).filter((v) => target[v] === v && index[v] < 0);
+  const loose = findLoose(source, target, index);
   const piece = new Int32Array(kept.length);
   surface.tri.forEach((v, h) => {
     piece[v] = orientation.piece[Math.floor(h / 3)];
@@ -246,7 +252,7 @@ export function buildSoundSurface(source: MeshSource): SoundSurface {
       [
         "mesh-loose-vertices",
         loose,
-        `${countWords(loose.length, "vertex belongs", "vertices belong")} to no face and went`,
+        `${countWords(loose.length, "vertex belongs", "vertices belong")} to no face, line or point and went`,
       ],
     ]),
     ...reportOrientation(x, tri, orientation, source.outside),
