@@ -127,4 +127,25 @@ describe("room on the cloth", () => {
       expect(panels.checks.filter((c) => !c.holds)).toEqual([]);
     }
   });
+
+  test("a number of strips the cloth has no room for is a stop that names the least number that fits; asked for, it does", () => {
+    const form = makeCatenoid(4, 2);
+    // bug: gores whose number the job fixed were refused one by one by the rolls, none of them saying which number would do
+    const ask = (count: number) => {
+      const { seams, panels } = fitOn(form, onCloth(makeJob({ layout: "gores", count }), 1500));
+      expect(panels.output.length).toBe(count);
+      return seams.findings.filter((f) => f.code === "seam-count-wide");
+    };
+    const [told] = ask(12);
+    expect(told).toMatchObject({ level: "stop", station: "seams", value: 12, where: ["region 1", "seams.count"] });
+    const fits = Number(told.limit);
+    // by hand: the rim, 2π · 4 m, over the usable width less one overlap
+    const job = makeJob();
+    const net = 1.5 - (2 * job.fabric.selvedge) / 1000 - job.allowances.seam / 1000;
+    expect(Math.abs(fits - Math.ceil((2 * Math.PI * 4) / net))).toBeLessThanOrEqual(1);
+    expect(told.text).toContain(`${fits} fit`);
+    expect(told.remedy).toContain(`Ask for ${fits} strips`);
+    expect(ask(fits)).toEqual([]);
+    expect(ask(fits - 1)).toHaveLength(1);
+  });
 });

@@ -8,6 +8,7 @@ import type { FoundForm } from "../records/foundForm.ts";
 import type { Job } from "../records/job.ts";
 import type { LayoutEstimate, LayoutRow } from "../records/stripLayout.ts";
 import { runSeams, type SeamOptions } from "../seams/runSeams.ts";
+import { findCount } from "./askedCount.ts";
 import { type ClothRoom, firstOptions, isTurned, measureExtent, measureRoom } from "./clothRoom.ts";
 import { joinRows, measureRows } from "./compareLayouts.ts";
 import { easeStress, measureStressExcess } from "./easeStress.ts";
@@ -93,20 +94,27 @@ function correct(options: SeamOptions, fitted: Fitted, lap: number, press: (way:
   return { ...options, widthFactors, lengthFactors };
 }
 
-/** Ways whose panels are wider than the cloth, with the share by which they are. */
-function listWideWays(fitted: Fitted, room: ClothRoom): Map<string, number> {
+/** Widest cut panel of an estimate's strips, m. */
+function widestOf(fitted: Fitted, estimate: LayoutEstimate): number {
   const byId = new Map(fitted.panels.output.map((p) => [p.id, p]));
-  const out = new Map<string, number>();
-  for (const estimate of fitted.seams.output.estimates ?? []) {
-    const widths = measureStrips(estimate, byId).flatMap((size) => (size ? [size.width] : []));
-    const most = Math.max(0, ...widths) / room.width;
-    if (most > 1) out.set(estimate.way, most);
-  }
-  return out;
+  return Math.max(0, ...measureStrips(estimate, byId).map((size) => size?.width ?? 0));
 }
 
-/** Lays out until every panel fits the room and the widths are alike. */
-function fitWidths(runBoth: RunBoth, room: ClothRoom, lap: number): { fitted: Fitted; options: SeamOptions } {
+/** Ways whose panels are wider than the cloth, with the share by which they are. */
+function listWideWays(fitted: Fitted, room: ClothRoom): [string, number][] {
+  return (fitted.seams.output.estimates ?? []).flatMap((estimate): [string, number][] => {
+    const most = widestOf(fitted, estimate) / room.width;
+    return most > 1 ? [[estimate.way, most]] : [];
+  });
+}
+
+/** Lays out until every panel fits the room and the widths are alike; `free`: the number of strips may grow. */
+function fitWidths(
+  runBoth: RunBoth,
+  room: ClothRoom,
+  lap: number,
+  free: boolean,
+): { fitted: Fitted; options: SeamOptions } {
   let options = firstOptions(room, lap);
   let best: { fitted: Fitted; options: SeamOptions; judged: Judged } | null = null;
   const wideBefore = new Map<string, number>();
@@ -120,8 +128,10 @@ function fitWidths(runBoth: RunBoth, room: ClothRoom, lap: number): { fitted: Fi
       if (best.judged.spread <= ALIKE) break;
       if (before && before.misfits === 0 && best.judged.spread > (1 - GAIN) * before.spread) break;
     }
+    // a fixed number that is too few stays too few: alike and measured once more is all there is to gain
+    if (!free && before && before.misfits === best.judged.misfits && best.judged.spread <= ALIKE) break;
     // A way that is too wide again although its widths were measured is pressed: its strips count as that much wider.
-    const wide = listWideWays(fitted, room);
+    const wide = free ? listWideWays(fitted, room) : [];
     for (const [way, most] of wide)
       if (options.widthFactors?.[way]) wideBefore.set(way, 1.002 * most * (wideBefore.get(way) ?? 1));
     options = correct(options, fitted, lap, (way) => wideBefore.get(way) ?? 1);
@@ -130,12 +140,17 @@ function fitWidths(runBoth: RunBoth, room: ClothRoom, lap: number): { fitted: Fi
   return best;
 }
 
-/** Fits as fitPanels does, without the table. */
-function fitAll(runBoth: RunBoth, job: Job): Fitted {
+/** Fits as fitPanels does, without the table; `withCount` runs both stations for another number of strips. */
+function fitAll(runBoth: RunBoth, job: Job, withCount: (count: number) => RunBoth): Fitted {
   const room = measureRoom(job);
   const lap = job.allowances.seam / 1000;
-  const { fitted, options } = fitWidths(runBoth, room, lap);
-  if (job.seams.count !== "auto") return fitted;
+  const { count } = job.seams;
+  const { fitted, options } = fitWidths(runBoth, room, lap, count === "auto");
+  if (count !== "auto") {
+    const layOut = (n: number) => fitWidths(withCount(n), room, lap, false).fitted;
+    const told = findCount(fitted, { count, room, lap, widestOf, layOut });
+    return told ? { ...fitted, seams: { ...fitted.seams, findings: [told, ...fitted.seams.findings] } } : fitted;
+  }
   const eased = easeStress(fitted, options, runBoth, job.seams.minWidth ?? null);
   if (eased.fitted === fitted || judge(eased.fitted, room).spread <= ALIKE) return eased.tell(eased.fitted);
   const again = runBoth(correct(eased.options, eased.fitted, lap, () => 1));
@@ -149,17 +164,19 @@ function fitAll(runBoth: RunBoth, job: Job): Fitted {
 export function fitPanels(form: FoundForm, job: Job, context: FitContext): Fitted {
   const measured: LayoutRow[] = [];
   let weighed: LayoutRow[] = [];
-  const runBoth: RunBoth = (options) => {
-    context.onStation("seams");
-    const seams = runSeams(form, job, options, context.seams);
-    context.onStation("panels");
-    const panels = runPanels(seams.output, form, job, context.panels);
-    if (weighed.length === 0) weighed = seams.output.compared ?? [];
-    const fitted = { seams, panels, options };
-    measured.push(...measureRows(fitted));
-    return fitted;
-  };
-  const fitted = fitAll(runBoth, job);
+  const runAs =
+    (asked: Job): RunBoth =>
+    (options) => {
+      context.onStation("seams");
+      const seams = runSeams(form, asked, options, context.seams);
+      context.onStation("panels");
+      const panels = runPanels(seams.output, form, asked, context.panels);
+      if (weighed.length === 0) weighed = seams.output.compared ?? [];
+      const fitted = { seams, panels, options };
+      measured.push(...measureRows(fitted));
+      return fitted;
+    };
+  const fitted = fitAll(runAs(job), job, (count) => runAs({ ...job, seams: { ...job.seams, count } }));
   const narrow = noteNarrow(fitted, job.seams.minWidth ?? null);
   const compared = joinRows(measureRows(fitted), measured, weighed);
   const findings = [...fitted.seams.findings, ...narrow];
