@@ -1,11 +1,11 @@
 // The open job: head with its name and state, the spine with the leaves, the leaf itself.
-import { FormLeaf } from "./leaves/FormLeaf.tsx";
-import { PanelsLeaf } from "./leaves/PanelsLeaf.tsx";
-import { PapersLeaf } from "./leaves/PapersLeaf.tsx";
-import { RigLeaf } from "./leaves/RigLeaf.tsx";
-import { RollsLeaf } from "./leaves/RollsLeaf.tsx";
-import { SeamsLeaf } from "./leaves/SeamsLeaf.tsx";
-import { SiteLeaf } from "./leaves/SiteLeaf.tsx";
+import { FormLeaf } from "./leaves/form/FormLeaf.tsx";
+import { PanelsLeaf } from "./leaves/panels/PanelsLeaf.tsx";
+import { PapersLeaf } from "./leaves/papers/PapersLeaf.tsx";
+import { RigLeaf } from "./leaves/rig/RigLeaf.tsx";
+import { RollsLeaf } from "./leaves/rolls/RollsLeaf.tsx";
+import { SeamsLeaf } from "./leaves/seams/SeamsLeaf.tsx";
+import { SiteLeaf } from "./leaves/site/SiteLeaf.tsx";
 import { countFindings } from "./parts/FindingList.tsx";
 import { jumpTo, leafOfFinding, leafOfPath } from "./parts/jump.ts";
 import { turnTheme } from "./parts/keys.ts";

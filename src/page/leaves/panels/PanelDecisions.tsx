@@ -1,11 +1,11 @@
 // What can be decided about cloth and panels: the cloth, compensation, allowances, the warp of one panel.
-import { setAllowance } from "../actions/panels/setAllowance.ts";
-import { setCompensation } from "../actions/panels/setCompensation.ts";
-import { setDecompensation } from "../actions/panels/setDecompensation.ts";
-import { setPanel } from "../actions/panels/setPanel.ts";
-import { ChoiceField, NumberField, SwitchField, TextField } from "../parts/Fields.tsx";
-import { act } from "../store/bookStore.ts";
-import { useBook } from "../store/useBook.ts";
+import { setAllowance } from "../../actions/panels/setAllowance.ts";
+import { setCompensation } from "../../actions/panels/setCompensation.ts";
+import { setDecompensation } from "../../actions/panels/setDecompensation.ts";
+import { setPanel } from "../../actions/panels/setPanel.ts";
+import { ChoiceField, NumberField, SwitchField, TextField } from "../../parts/Fields.tsx";
+import { act } from "../../store/bookStore.ts";
+import { useBook } from "../../store/useBook.ts";
 import { ClothDecisions } from "./ClothDecisions.tsx";
 
 const LENGTHS = [

@@ -1,14 +1,14 @@
 // Seams in one's own hands: each end slid along its edge, seams added, removed, evened.
-import { addSeam } from "../actions/seams/addSeam.ts";
-import { evenSeams } from "../actions/seams/evenSeams.ts";
-import { layPairs } from "../actions/seams/layPairs.ts";
-import { moveSeamEnd } from "../actions/seams/moveSeamEnd.ts";
-import { removeSeam } from "../actions/seams/removeSeam.ts";
-import { takeSeams } from "../actions/seams/takeSeams.ts";
-import { NumberField } from "../parts/Fields.tsx";
-import { act } from "../store/bookStore.ts";
-import { findSeamEnds } from "../store/seamEnds.ts";
-import { useBook } from "../store/useBook.ts";
+import { addSeam } from "../../actions/seams/addSeam.ts";
+import { evenSeams } from "../../actions/seams/evenSeams.ts";
+import { layPairs } from "../../actions/seams/layPairs.ts";
+import { moveSeamEnd } from "../../actions/seams/moveSeamEnd.ts";
+import { removeSeam } from "../../actions/seams/removeSeam.ts";
+import { takeSeams } from "../../actions/seams/takeSeams.ts";
+import { NumberField } from "../../parts/Fields.tsx";
+import { act } from "../../store/bookStore.ts";
+import { findSeamEnds } from "../../store/seamEnds.ts";
+import { useBook } from "../../store/useBook.ts";
 
 /** The list of pairs, or the way to it. */
 export function SeamEnds() {

@@ -1,17 +1,17 @@
 // Site: what does the roof say? Readings typed in on a tablet, with large targets; the log is kept and goes out as a file.
 
-import { setSiteLimit } from "../actions/site/setSiteLimit.ts";
-import { strikeReading } from "../actions/site/strikeReading.ts";
-import { listSteps } from "../flat/rigSteps.ts";
-import { logFiles, saveFile } from "../keep/saveFiles.ts";
-import { CautionList } from "../parts/CautionList.tsx";
-import { NumberField, TextField } from "../parts/Fields.tsx";
-import { figure } from "../parts/figure.ts";
-import { act, bookStore } from "../store/bookStore.ts";
-import type { Reading } from "../store/project.ts";
-import { useBook } from "../store/useBook.ts";
+import { setSiteLimit } from "../../actions/site/setSiteLimit.ts";
+import { strikeReading } from "../../actions/site/strikeReading.ts";
+import { listSteps } from "../../flat/rigSteps.ts";
+import { logFiles, saveFile } from "../../keep/saveFiles.ts";
+import { CautionList } from "../../parts/CautionList.tsx";
+import { NumberField, TextField } from "../../parts/Fields.tsx";
+import { figure } from "../../parts/figure.ts";
+import { act, bookStore } from "../../store/bookStore.ts";
+import type { Reading } from "../../store/project.ts";
+import { useBook } from "../../store/useBook.ts";
+import { LeafFrame } from "../LeafFrame.tsx";
 import { Corrections } from "./Corrections.tsx";
-import { LeafFrame } from "./LeafFrame.tsx";
 import { ReadingEntry } from "./ReadingEntry.tsx";
 
 /** Limits the papers print, by the key they are read under. */

@@ -1,12 +1,12 @@
 // What can be decided about rolls and nesting.
-import { addRoll } from "../actions/rolls/addRoll.ts";
-import { removeRoll } from "../actions/rolls/removeRoll.ts";
-import { setNest } from "../actions/rolls/setNest.ts";
-import { setPin } from "../actions/rolls/setPin.ts";
-import { setRoll } from "../actions/rolls/setRoll.ts";
-import { NumberField, SwitchField, TextField } from "../parts/Fields.tsx";
-import { act } from "../store/bookStore.ts";
-import { useBook } from "../store/useBook.ts";
+import { addRoll } from "../../actions/rolls/addRoll.ts";
+import { removeRoll } from "../../actions/rolls/removeRoll.ts";
+import { setNest } from "../../actions/rolls/setNest.ts";
+import { setPin } from "../../actions/rolls/setPin.ts";
+import { setRoll } from "../../actions/rolls/setRoll.ts";
+import { NumberField, SwitchField, TextField } from "../../parts/Fields.tsx";
+import { act } from "../../store/bookStore.ts";
+import { useBook } from "../../store/useBook.ts";
 
 const FIGURES = [
   { key: "width", label: "Width over all", unit: "mm", factor: 1 },

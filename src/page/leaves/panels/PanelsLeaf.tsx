@@ -1,15 +1,15 @@
 // Panels: what is cut, and which stress will it take?
-import type { FactsPanel } from "../../core/records/facts.ts";
-import { PanelSheet } from "../flat/PanelSheet.tsx";
-import { FieldPicker } from "../parts/FieldPicker.tsx";
-import { FigureTable } from "../parts/FigureTable.tsx";
-import { figure } from "../parts/figure.ts";
-import { Waiting } from "../parts/Waiting.tsx";
-import { LazySolid } from "../solid/LazySolid.tsx";
-import { bookStore } from "../store/bookStore.ts";
-import { useBook } from "../store/useBook.ts";
-import { useShownFacts, useShownFields } from "../store/useShown.ts";
-import { LeafFrame } from "./LeafFrame.tsx";
+import type { FactsPanel } from "../../../core/records/facts.ts";
+import { PanelSheet } from "../../flat/PanelSheet.tsx";
+import { FieldPicker } from "../../parts/FieldPicker.tsx";
+import { FigureTable } from "../../parts/FigureTable.tsx";
+import { figure } from "../../parts/figure.ts";
+import { Waiting } from "../../parts/Waiting.tsx";
+import { LazySolid } from "../../solid/LazySolid.tsx";
+import { bookStore } from "../../store/bookStore.ts";
+import { useBook } from "../../store/useBook.ts";
+import { useShownFacts, useShownFields } from "../../store/useShown.ts";
+import { LeafFrame } from "../LeafFrame.tsx";
 import { PanelDecisions } from "./PanelDecisions.tsx";
 
 function PanelTable({ panels }: { panels: readonly FactsPanel[] }) {

@@ -1,10 +1,10 @@
 // What can be decided about the pulling up: stages, limit, temperature, turnbuckles.
-import { setReadingError } from "../actions/rig/setReadingError.ts";
-import { setRigFigure } from "../actions/rig/setRigFigure.ts";
-import { setStages } from "../actions/rig/setStages.ts";
-import { NumberField, readNumber, TextField } from "../parts/Fields.tsx";
-import { act, notify } from "../store/bookStore.ts";
-import { useBook } from "../store/useBook.ts";
+import { setReadingError } from "../../actions/rig/setReadingError.ts";
+import { setRigFigure } from "../../actions/rig/setRigFigure.ts";
+import { setStages } from "../../actions/rig/setStages.ts";
+import { NumberField, readNumber, TextField } from "../../parts/Fields.tsx";
+import { act, notify } from "../../store/bookStore.ts";
+import { useBook } from "../../store/useBook.ts";
 import { AdjusterDecisions } from "./AdjusterDecisions.tsx";
 
 const percent = (shares: readonly number[]) => shares.map((s) => String(Number((100 * s).toPrecision(6)))).join(" ");

@@ -1,19 +1,19 @@
 // Seams: where do they run?
 import { useEffect } from "react";
-import { setLayout } from "../actions/seams/setLayout.ts";
-import { PairSheet } from "../flat/PairSheet.tsx";
-import { ChoiceField, NumberField, TextField } from "../parts/Fields.tsx";
-import { FigureTable } from "../parts/FigureTable.tsx";
-import { figure } from "../parts/figure.ts";
-import { Waiting } from "../parts/Waiting.tsx";
-import { LazySolid } from "../solid/LazySolid.tsx";
-import { act, bookStore } from "../store/bookStore.ts";
-import { isSameWork } from "../store/hand.ts";
-import { useBook } from "../store/useBook.ts";
-import { useShownFacts, useShownFields } from "../store/useShown.ts";
-import { watchSeams, weighLayouts } from "../worker/dragger.ts";
+import { setLayout } from "../../actions/seams/setLayout.ts";
+import { PairSheet } from "../../flat/PairSheet.tsx";
+import { ChoiceField, NumberField, TextField } from "../../parts/Fields.tsx";
+import { FigureTable } from "../../parts/FigureTable.tsx";
+import { figure } from "../../parts/figure.ts";
+import { Waiting } from "../../parts/Waiting.tsx";
+import { LazySolid } from "../../solid/LazySolid.tsx";
+import { act, bookStore } from "../../store/bookStore.ts";
+import { isSameWork } from "../../store/hand.ts";
+import { useBook } from "../../store/useBook.ts";
+import { useShownFacts, useShownFields } from "../../store/useShown.ts";
+import { watchSeams, weighLayouts } from "../../worker/dragger.ts";
+import { LeafFrame } from "../LeafFrame.tsx";
 import { LayoutCards } from "./LayoutCards.tsx";
-import { LeafFrame } from "./LeafFrame.tsx";
 import { SeamEnds } from "./SeamEnds.tsx";
 
 const LAYOUTS = [

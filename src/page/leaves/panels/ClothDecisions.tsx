@@ -1,10 +1,10 @@
 // The cloth: one of the catalogue, or one of the job's own with every constant.
-import fabrics from "../../../templates/fabrics.json";
-import { type ClothFigure, ownCloth, setClothFigure } from "../actions/panels/setClothFigure.ts";
-import { setFabric } from "../actions/panels/setFabric.ts";
-import { ChoiceField, NumberField } from "../parts/Fields.tsx";
-import { act } from "../store/bookStore.ts";
-import { useBook } from "../store/useBook.ts";
+import fabrics from "../../../../templates/fabrics.json";
+import { type ClothFigure, ownCloth, setClothFigure } from "../../actions/panels/setClothFigure.ts";
+import { setFabric } from "../../actions/panels/setFabric.ts";
+import { ChoiceField, NumberField } from "../../parts/Fields.tsx";
+import { act } from "../../store/bookStore.ts";
+import { useBook } from "../../store/useBook.ts";
 
 const FIGURES: { key: ClothFigure; label: string; unit: string; factor?: number; hint?: string }[] = [
   { key: "Ew", label: "Stiffness along the warp, Ew", unit: "kN/m" },

@@ -1,13 +1,13 @@
 // Rolls: which cloth, and where on it?
-import type { ClothTotal, NestedRoll } from "../../core/records/roll.ts";
-import { RollSheet } from "../flat/RollSheet.tsx";
-import { FigureTable } from "../parts/FigureTable.tsx";
-import { figure } from "../parts/figure.ts";
-import { Waiting } from "../parts/Waiting.tsx";
-import { bookStore } from "../store/bookStore.ts";
-import { useBook } from "../store/useBook.ts";
-import { useShownFacts } from "../store/useShown.ts";
-import { LeafFrame } from "./LeafFrame.tsx";
+import type { ClothTotal, NestedRoll } from "../../../core/records/roll.ts";
+import { RollSheet } from "../../flat/RollSheet.tsx";
+import { FigureTable } from "../../parts/FigureTable.tsx";
+import { figure } from "../../parts/figure.ts";
+import { Waiting } from "../../parts/Waiting.tsx";
+import { bookStore } from "../../store/bookStore.ts";
+import { useBook } from "../../store/useBook.ts";
+import { useShownFacts } from "../../store/useShown.ts";
+import { LeafFrame } from "../LeafFrame.tsx";
 import { RollDecisions } from "./RollDecisions.tsx";
 
 function Fill({ rolls }: { rolls: readonly NestedRoll[] }) {

@@ -1,11 +1,11 @@
 // What can be decided about the adjusters and what else holds the roof up: turnbuckles, stiffness, struts, stays.
-import turnbuckles from "../../../templates/turnbuckles.json";
-import type { FactsAdjuster } from "../../core/records/rig.ts";
-import { addAdjuster, removeAdjuster, setAdjuster } from "../actions/rig/adjusters.ts";
-import { setSupport } from "../actions/rig/setSupport.ts";
-import { ChoiceField, NumberField } from "../parts/Fields.tsx";
-import { act, bookStore } from "../store/bookStore.ts";
-import { useBook } from "../store/useBook.ts";
+import turnbuckles from "../../../../templates/turnbuckles.json";
+import type { FactsAdjuster } from "../../../core/records/rig.ts";
+import { addAdjuster, removeAdjuster, setAdjuster } from "../../actions/rig/adjusters.ts";
+import { setSupport } from "../../actions/rig/setSupport.ts";
+import { ChoiceField, NumberField } from "../../parts/Fields.tsx";
+import { act, bookStore } from "../../store/bookStore.ts";
+import { useBook } from "../../store/useBook.ts";
 
 const FIGURES = [
   { key: "shortest", label: "Shortest, pin to pin", unit: "mm" },

@@ -1,15 +1,15 @@
 // Papers: what leaves the office?
 import { useEffect, useMemo, useState } from "react";
-import { setHead } from "../actions/papers/setHead.ts";
-import { setPapers } from "../actions/papers/setPapers.ts";
-import { blobOf, fileStem, packJob, saveFile, zipFiles } from "../keep/saveFiles.ts";
-import { ChoiceField, TextField } from "../parts/Fields.tsx";
-import { FigureTable } from "../parts/FigureTable.tsx";
-import { Waiting } from "../parts/Waiting.tsx";
-import { act, type PaperFile } from "../store/bookStore.ts";
-import { useBook } from "../store/useBook.ts";
-import { requestPapers } from "../worker/planner.ts";
-import { LeafFrame } from "./LeafFrame.tsx";
+import { setHead } from "../../actions/papers/setHead.ts";
+import { setPapers } from "../../actions/papers/setPapers.ts";
+import { blobOf, fileStem, packJob, saveFile, zipFiles } from "../../keep/saveFiles.ts";
+import { ChoiceField, TextField } from "../../parts/Fields.tsx";
+import { FigureTable } from "../../parts/FigureTable.tsx";
+import { Waiting } from "../../parts/Waiting.tsx";
+import { act, type PaperFile } from "../../store/bookStore.ts";
+import { useBook } from "../../store/useBook.ts";
+import { requestPapers } from "../../worker/planner.ts";
+import { LeafFrame } from "../LeafFrame.tsx";
 
 const WHAT: [RegExp, string][] = [
   [/^facts\.json$/, "the whole plan as data"],

@@ -1,12 +1,12 @@
 // One reading: at what, how much, by whom. Says at once whether a force lies in the window the schedule gives.
 import { useState } from "react";
-import { addReading } from "../actions/site/addReading.ts";
-import type { RigStep } from "../flat/rigSteps.ts";
-import { readNumber } from "../parts/Fields.tsx";
-import { figure } from "../parts/figure.ts";
-import { act, bookStore } from "../store/bookStore.ts";
-import type { Reading } from "../store/project.ts";
-import { useBook } from "../store/useBook.ts";
+import { addReading } from "../../actions/site/addReading.ts";
+import type { RigStep } from "../../flat/rigSteps.ts";
+import { readNumber } from "../../parts/Fields.tsx";
+import { figure } from "../../parts/figure.ts";
+import { act, bookStore } from "../../store/bookStore.ts";
+import type { Reading } from "../../store/project.ts";
+import { useBook } from "../../store/useBook.ts";
 
 type Kind = "force" | "frequency" | "position";
 

@@ -1,20 +1,20 @@
 // Form: is this surface in balance, at which forces?
-import type { Facts } from "../../core/records/facts.ts";
-import { setMeshWord } from "../actions/form/setMeshWord.ts";
-import { setPrestress } from "../actions/form/setPrestress.ts";
-import { setSettle } from "../actions/form/setSettle.ts";
-import { FieldPicker } from "../parts/FieldPicker.tsx";
-import { ChoiceField, NumberField, SwitchField } from "../parts/Fields.tsx";
-import { type FigureRow, FigureTable } from "../parts/FigureTable.tsx";
-import { figure } from "../parts/figure.ts";
-import { Waiting } from "../parts/Waiting.tsx";
-import { LazySolid } from "../solid/LazySolid.tsx";
-import { act } from "../store/bookStore.ts";
-import { useBook } from "../store/useBook.ts";
-import { useShownFacts, useShownFields } from "../store/useShown.ts";
+import type { Facts } from "../../../core/records/facts.ts";
+import { setMeshWord } from "../../actions/form/setMeshWord.ts";
+import { setPrestress } from "../../actions/form/setPrestress.ts";
+import { setSettle } from "../../actions/form/setSettle.ts";
+import { FieldPicker } from "../../parts/FieldPicker.tsx";
+import { ChoiceField, NumberField, SwitchField } from "../../parts/Fields.tsx";
+import { type FigureRow, FigureTable } from "../../parts/FigureTable.tsx";
+import { figure } from "../../parts/figure.ts";
+import { Waiting } from "../../parts/Waiting.tsx";
+import { LazySolid } from "../../solid/LazySolid.tsx";
+import { act } from "../../store/bookStore.ts";
+import { useBook } from "../../store/useBook.ts";
+import { useShownFacts, useShownFields } from "../../store/useShown.ts";
+import { LeafFrame } from "../LeafFrame.tsx";
 import { AnchorDecisions } from "./AnchorDecisions.tsx";
 import { EdgeDecisions } from "./EdgeDecisions.tsx";
-import { LeafFrame } from "./LeafFrame.tsx";
 
 function FormDecisions() {
   const job = useBook((b) => b.job);

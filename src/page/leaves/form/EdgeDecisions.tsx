@@ -1,13 +1,13 @@
 // What can be decided about the edges: what each is, the force and the cable of it.
-import cables from "../../../templates/cables.json";
-import { setCableFigure } from "../actions/form/setCableFigure.ts";
-import { setEdge } from "../actions/form/setEdge.ts";
-import { ChoiceField, NumberField, SwitchField } from "../parts/Fields.tsx";
-import { figure } from "../parts/figure.ts";
-import { act, bookStore } from "../store/bookStore.ts";
-import type { Project } from "../store/project.ts";
-import { useBook } from "../store/useBook.ts";
-import { useShownFacts } from "../store/useShown.ts";
+import cables from "../../../../templates/cables.json";
+import { setCableFigure } from "../../actions/form/setCableFigure.ts";
+import { setEdge } from "../../actions/form/setEdge.ts";
+import { ChoiceField, NumberField, SwitchField } from "../../parts/Fields.tsx";
+import { figure } from "../../parts/figure.ts";
+import { act, bookStore } from "../../store/bookStore.ts";
+import type { Project } from "../../store/project.ts";
+import { useBook } from "../../store/useBook.ts";
+import { useShownFacts } from "../../store/useShown.ts";
 
 const KINDS = [
   { value: "", words: "as found" },

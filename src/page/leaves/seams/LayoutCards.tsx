@@ -1,12 +1,12 @@
 // Layouts side by side: each in miniature with its figures; one click takes one and writes down why.
-import type { ComparedLayout } from "../../core/plan/compareLayouts.ts";
-import type { FactsForm } from "../../core/records/facts.ts";
-import type { SeamDecision } from "../../core/records/job.ts";
-import { takeLayout } from "../actions/seams/takeLayout.ts";
-import { figure } from "../parts/figure.ts";
-import { act, bookStore } from "../store/bookStore.ts";
-import { isSameWork } from "../store/hand.ts";
-import { useBook } from "../store/useBook.ts";
+import type { ComparedLayout } from "../../../core/plan/compareLayouts.ts";
+import type { FactsForm } from "../../../core/records/facts.ts";
+import type { SeamDecision } from "../../../core/records/job.ts";
+import { takeLayout } from "../../actions/seams/takeLayout.ts";
+import { figure } from "../../parts/figure.ts";
+import { act, bookStore } from "../../store/bookStore.ts";
+import { isSameWork } from "../../store/hand.ts";
+import { useBook } from "../../store/useBook.ts";
 
 /** Figures of a layout over all its regions. */
 interface Sums {

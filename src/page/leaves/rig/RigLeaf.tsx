@@ -1,19 +1,19 @@
 // Rig: how is it pulled up?
 import { useEffect, useRef } from "react";
-import { ForceChart } from "../flat/ForceChart.tsx";
-import { RigPlan } from "../flat/RigPlan.tsx";
-import { listSteps, type RigStep } from "../flat/rigSteps.ts";
-import { SensitivityBars } from "../flat/SensitivityBars.tsx";
-import { listBuiltRows } from "../parts/builtRows.ts";
-import { CautionList } from "../parts/CautionList.tsx";
-import { FieldPicker } from "../parts/FieldPicker.tsx";
-import { FigureTable } from "../parts/FigureTable.tsx";
-import { figure } from "../parts/figure.ts";
-import { Waiting } from "../parts/Waiting.tsx";
-import { LazySolid } from "../solid/LazySolid.tsx";
-import { bookStore } from "../store/bookStore.ts";
-import { useBook } from "../store/useBook.ts";
-import { LeafFrame } from "./LeafFrame.tsx";
+import { ForceChart } from "../../flat/ForceChart.tsx";
+import { RigPlan } from "../../flat/RigPlan.tsx";
+import { listSteps, type RigStep } from "../../flat/rigSteps.ts";
+import { SensitivityBars } from "../../flat/SensitivityBars.tsx";
+import { listBuiltRows } from "../../parts/builtRows.ts";
+import { CautionList } from "../../parts/CautionList.tsx";
+import { FieldPicker } from "../../parts/FieldPicker.tsx";
+import { FigureTable } from "../../parts/FigureTable.tsx";
+import { figure } from "../../parts/figure.ts";
+import { Waiting } from "../../parts/Waiting.tsx";
+import { LazySolid } from "../../solid/LazySolid.tsx";
+import { bookStore } from "../../store/bookStore.ts";
+import { useBook } from "../../store/useBook.ts";
+import { LeafFrame } from "../LeafFrame.tsx";
 import { RigDecisions } from "./RigDecisions.tsx";
 
 function Strip({ steps, at }: { steps: readonly RigStep[]; at: number }) {

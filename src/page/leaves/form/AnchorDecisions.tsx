@@ -1,12 +1,12 @@
 // What can be decided about the anchors: where the far pin is, how far the cloth is cut back, one more, one less.
 import { useState } from "react";
-import { addAnchor, removeAnchor, setAnchor } from "../actions/form/setAnchor.ts";
-import { NumberField } from "../parts/Fields.tsx";
-import { figure } from "../parts/figure.ts";
-import { PointField } from "../parts/PointField.tsx";
-import { act, bookStore } from "../store/bookStore.ts";
-import { useBook } from "../store/useBook.ts";
-import { useShownFacts } from "../store/useShown.ts";
+import { addAnchor, removeAnchor, setAnchor } from "../../actions/form/setAnchor.ts";
+import { NumberField } from "../../parts/Fields.tsx";
+import { figure } from "../../parts/figure.ts";
+import { PointField } from "../../parts/PointField.tsx";
+import { act, bookStore } from "../../store/bookStore.ts";
+import { useBook } from "../../store/useBook.ts";
+import { useShownFacts } from "../../store/useShown.ts";
 
 function Anchor({ id, at }: { id: string; at: readonly number[] }) {
   const own = useBook((b) => b.project?.job.anchors?.find((a) => a.name === id));

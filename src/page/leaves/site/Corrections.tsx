@@ -1,8 +1,8 @@
 // What to turn after the readings: the state that fits them best, the moves, what every gauge will read after them.
-import { FindingList } from "../parts/FindingList.tsx";
-import { figure } from "../parts/figure.ts";
-import { useBook } from "../store/useBook.ts";
-import { requestCorrection, stopPlan } from "../worker/planner.ts";
+import { FindingList } from "../../parts/FindingList.tsx";
+import { figure } from "../../parts/figure.ts";
+import { useBook } from "../../store/useBook.ts";
+import { requestCorrection, stopPlan } from "../../worker/planner.ts";
 
 /** Turns as a hand sets them: whole ones and sixths. */
 function turnsInWords(turns: number): string {
