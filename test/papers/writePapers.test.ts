@@ -184,6 +184,11 @@ describe.skipIf(missing.length > 0)(`PDF sheets read by other programs${reason}`
           // Short names: then nothing is shortened, no head and above all no number.
           const cut = here.filter((w) => w.text.includes("…") && w.y0 > 24 && w.y1 < height - 31);
           if (title.startsWith("plain")) expect(cut, `${name} sheet ${page}`).toEqual([]);
+          // A heading, 12 pt and bold, is never the last of a sheet.
+          const body = here.filter((w) => w.y1 < height - 31);
+          const last = body.filter((w) => w.y1 > Math.max(...body.map((v) => v.y1)) - 1);
+          for (const w of last)
+            expect(Math.abs(sizeOf(w) - 12), `${name} sheet ${page}: "${w.text}"`).toBeGreaterThan(0.3);
           const text = here.map((w) => w.text).join(" ");
           const head = here.filter((w) => w.y0 < 24).map((w) => w.text);
           expect(head.join(" ").includes("NOT FOR ISSUE"), `${name} sheet ${page}`).toBe(stamped(facts, name));

@@ -1,7 +1,7 @@
 // Plane measures the papers need beside those of surface/ring.ts: runs of an outline, chords across it, the roomiest place in
 // it. Millimetres; nothing here decides anything about the cloth.
 import type { FactsPanel, FactsSide, Vec2 } from "../../records/facts.ts";
-import { ringBox, ringDistance, ringHolds } from "../../surface/ring.ts";
+import { pointSegmentSquared, ringBox, ringDistance, ringHolds } from "../../surface/ring.ts";
 
 export interface Box {
   min: Vec2;
@@ -17,6 +17,12 @@ export function boxOf(points: readonly Vec2[]): Box {
 /** Straight distance of two points. */
 export function distance(a: Vec2, b: Vec2): number {
   return Math.hypot(b[0] - a[0], b[1] - a[1]);
+}
+
+/** Least distance of a point from an open run. */
+export function runDistance(run: readonly Vec2[], p: Vec2): number {
+  const squares = run.slice(1).map((b, i) => pointSegmentSquared(...p, ...run[i], b));
+  return Math.sqrt(Math.min(...squares));
 }
 
 /** Point at a share 0…1 of the length of an open run, and the run's direction there (unit). */

@@ -3,7 +3,7 @@
 // corners of the cut line. Does not judge: the tolerance is the office's.
 import type { FactsPanel, Vec2 } from "../../records/facts.ts";
 import type { ControlLengths } from "../../records/flatPanel.ts";
-import { chordAcross, distance } from "./flatGeometry.ts";
+import { chordAcross, distance, runDistance, sideRun } from "./flatGeometry.ts";
 
 export interface Corner {
   /** C1, C2, … in the order of the sides: corner k is where side k begins. */
@@ -135,4 +135,10 @@ export function measurePanel(panel: FactsPanel): PanelMeasures {
   });
   const widths = placeWidths(panel, control.widths);
   return { corners, sides, diagonals, widths, start: widths.length > 0 ? startOf(panel) : "" };
+}
+
+/** Index of the side whose net line comes nearest to a point. */
+export function nearestSide(panel: FactsPanel, at: Vec2): number {
+  const gaps = panel.sides.map((s) => runDistance(sideRun(panel, s), at));
+  return gaps.indexOf(Math.min(...gaps));
 }

@@ -5,6 +5,7 @@ import type { Facts, FactsPanel, Vec2 } from "../../records/facts.ts";
 import type { NestedRoll } from "../../records/roll.ts";
 import { decimal } from "../words/decimal.ts";
 import { stampOf } from "../words/stamp.ts";
+import { batchOf } from "./clothBatch.ts";
 import { AT_HOME, addPanelInPlace, addPieceInPlace } from "./clothDrawing.ts";
 import {
   addLabelInPlace,
@@ -70,7 +71,7 @@ export function panelDrawing(facts: Facts, panel: FactsPanel): Drawing {
   addPanelInPlace(drawing, panel, AT_HOME);
   const box = boxOf(panel.cut);
   const notes = [
-    `PANEL ${panel.id}  FABRIC ${panel.fabric}  BATCH ${panel.batch ?? "not given"}  OUTER FACE UP  WARP ALONG X`,
+    `PANEL ${panel.id}  FABRIC ${panel.fabric}  BATCH ${batchOf(facts, panel) ?? "not given"}  OUTER FACE UP  WARP ALONG X`,
   ];
   addNotesInPlace(drawing, facts, notes, [box.min[0], box.max[1] + 100]);
   return withoutRepeats(drawing);

@@ -3,6 +3,7 @@
 import type { PDFFont } from "pdf-lib";
 import type { Finding, FindingLevel } from "../../problem.ts";
 import type { Facts } from "../../records/facts.ts";
+import { type LikeChecks, likeChecks } from "../tables/likeChecks.ts";
 import { type LikeFindings, likeFindings } from "../tables/likeFindings.ts";
 import { cautionsOf } from "../words/cautions.ts";
 import { ENGINEER_SUPPLIES } from "../words/cautionTexts.ts";
@@ -240,12 +241,25 @@ function flowChecksInPlace(flow: Flow, facts: Facts): void {
   }
   // What did not hold comes first; the order is otherwise the plan's.
   const ordered = [...checks.filter((c) => !c.holds), ...checks.filter((c) => c.holds)];
-  const rows = ordered.map((c) => [
-    c.station,
-    unitsInText(facts.job, c.text),
-    valueText(c.value),
-    valueText(c.limit),
-    c.holds ? "yes" : "NO",
-  ]);
+  const ids = (list: readonly { id: string }[] | undefined) => (list ?? []).map((e) => e.id);
+  const groups = likeChecks(ordered, { panels: ids(facts.panels), rolls: ids(facts.rolls) });
+  const rows = groups.map((group) => {
+    const { worst } = group;
+    return [
+      worst.station,
+      checkText(facts, group),
+      valueText(worst.value),
+      valueText(worst.limit),
+      worst.holds ? "yes" : "NO",
+    ];
+  });
   flowTableInPlace(flow, CHECK_COLUMNS, rows);
+}
+
+/** A check in words; of many alike how many there are, the first of their names, and which of them the value is of. */
+function checkText(facts: Facts, { text, kind, names, worstName }: LikeChecks): string {
+  const words = unitsInText(facts.job, text);
+  if (names.length === 0) return words;
+  const more = names.length > PLACES ? ` and ${names.length - PLACES} more` : "";
+  return `${names.length} ${kind}s: ${words}; nearest to its limit, or beyond it: ${worstName}. ${names.slice(0, PLACES).join(", ")}${more}`;
 }

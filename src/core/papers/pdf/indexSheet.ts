@@ -128,7 +128,8 @@ export async function writeIndexSheet(facts: Facts, fonts: FontFiles, paths: rea
   );
   for (const kind of ["cloth", "rig"] as const) {
     const reason = holdReason(facts, kind);
-    if (reason !== "")
+    const written = ENTRIES.some((e) => e.kind === kind && paths.some((p) => e.path.test(p)));
+    if (written && reason !== "")
       text(
         `${kind === "cloth" ? "Papers for cloth" : "Papers of the rig"}: NOT FOR ISSUE, ${reason}. See the findings sheets.`,
       );

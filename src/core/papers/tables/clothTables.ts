@@ -1,6 +1,7 @@
 // The lists for office and store: rolls, panels with all other cloth, seams. Every row carries issue, revision and status,
 // because rows are copied out of lists and travel alone.
 import type { Facts, FactsPanel, FactsPiece, FactsSeam } from "../../records/facts.ts";
+import { batchOf } from "../drawing/clothBatch.ts";
 import { boxOf } from "../drawing/flatGeometry.ts";
 import { measurePanel } from "../drawing/panelMeasures.ts";
 import { decimal } from "../words/decimal.ts";
@@ -76,7 +77,7 @@ export function panelTable(facts: Facts): string {
       "panel",
       null,
       p.fabric,
-      p.batch,
+      batchOf(facts, p),
       ...lie(p.id),
       numberCell(p.size.length, 1),
       numberCell(p.size.width, 1),
@@ -101,7 +102,7 @@ export function panelTable(facts: Facts): string {
     p.kind,
     p.for,
     p.fabric,
-    p.batch,
+    batchOf(facts, p),
     ...lie(p.id),
     ...size(p),
     ...empty,

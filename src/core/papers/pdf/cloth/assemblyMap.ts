@@ -1,5 +1,6 @@
 // The whole roof on one sheet with the names of panels, seams, edges and corners, then the seam schedule and the other cloth.
 import type { Facts, FactsJob, FactsPiece, Vec2 } from "../../../records/facts.ts";
+import { batchOf } from "../../drawing/clothBatch.ts";
 import { boxOf, insidePoint, pointAlong } from "../../drawing/flatGeometry.ts";
 import { stripPlace } from "../../drawing/stripPlace.ts";
 import { placesOf, seamSide } from "../../tables/clothTables.ts";
@@ -132,7 +133,7 @@ function drawPieces(book: Book): void {
   const pieces = facts.pieces ?? [];
   if (pieces.length === 0) return;
   const { flat } = paperUnits(facts.job);
-  const clothOf = (p: FactsPiece) => `${p.fabric}, ${p.batch ?? "not given"}`;
+  const clothOf = (p: FactsPiece) => `${p.fabric}, batch ${batchOf(facts, p) ?? "not given"}`;
   const one = new Set(pieces.map(clothOf)).size === 1;
   const columns: readonly Column[] = [
     { head: ["Piece"], width: 34 },
@@ -160,7 +161,7 @@ function drawPieces(book: Book): void {
     ];
   });
   const flow = openFlow(book, "Patches, strips, covers and test pieces");
-  if (one) flowTextInPlace(flow, `All of fabric ${pieces[0].fabric}, batch ${pieces[0].batch ?? "not given"}.`);
+  if (one) flowTextInPlace(flow, `All of fabric ${clothOf(pieces[0])}.`);
   flowGapInPlace(flow, 1.5);
   flowTableInPlace(flow, columns, rows);
 }

@@ -1,33 +1,23 @@
 // Panel cards: one panel a card, everything a welder needs to check it before it is joined, on paper that is filled in by hand.
 // Then the assembly map and the seam schedule. Numbers come from the facts; nothing is judged here.
-import type { Facts, FactsJob, FactsPanel, Vec2 } from "../../../records/facts.ts";
+import type { Facts, FactsJob, FactsPanel } from "../../../records/facts.ts";
+import { batchOf } from "../../drawing/clothBatch.ts";
 import { boxOf } from "../../drawing/flatGeometry.ts";
-import { measurePanel, type PanelMeasures } from "../../drawing/panelMeasures.ts";
+import { measurePanel, nearestSide, type PanelMeasures } from "../../drawing/panelMeasures.ts";
 import { massOf, placesOf } from "../../tables/clothTables.ts";
+import { orderWelds } from "../../tables/weldOrder.ts";
 import { decimal } from "../../words/decimal.ts";
 import { paperUnits } from "../../words/paperUnits.ts";
-import { addSheet, type Book, closeBook, type FontFiles, openBook, type Sheet } from "../layout/book.ts";
-import {
-  type BoxArea,
-  drawBox,
-  drawRun,
-  drawStencil,
-  drawText,
-  fitText,
-  keepStencil,
-  PITCH,
-  SMALL,
-  type Stencil,
-  wrapText,
-} from "../layout/pen.ts";
-import { fitRoof, type RoofView, viewRoof } from "../layout/roofView.ts";
+import { addSheet, type Book, closeBook, type FontFiles, openBook } from "../layout/book.ts";
+import { type BoxArea, drawText, fitText, PITCH, SMALL, wrapText } from "../layout/pen.ts";
+import { viewRoof } from "../layout/roofView.ts";
 import { type Column, drawHalves, drawTable, tableHeight } from "../layout/table.ts";
 import { drawAssemblyMap } from "./assemblyMap.ts";
 import { flowAssemblyOrder } from "./assemblyOrder.ts";
+import { drawFoot, FOOT, type PanelLaps, type Roof } from "./cardFoot.ts";
 import { cardScale, drawPanelFigure, figureHeight, sideMeets } from "./panelFigure.ts";
 import { flowWeldingFirst } from "./weldingFirst.ts";
 
-const FOOT = 27;
 /** The figure never gets less of the sheet's height than this, mm, if it needs it; more sides go to a second sheet. */
 const LEAST_FIGURE = 52;
 
@@ -36,16 +26,18 @@ function sideColumns(job: FactsJob): readonly Column[] {
   const { flat, span } = paperUnits(job);
   const wide = isImperial(job) ? 25 : 0;
   return [
-    { head: ["No."], width: 10 },
-    { head: ["Seam", "or edge"], width: 26 },
-    { head: ["Meets"], width: 27 },
-    { head: ["Net,", flat.unit], width: wide || 15, align: "end", bold: true },
+    { head: ["No."], width: 9.5 },
+    { head: ["Seam", "or edge"], width: wide ? 20 : 22 },
+    { head: ["Meets"], width: wide ? 20 : 20.7 },
+    { head: ["Net,", flat.unit], width: wide ? 27 : 15, align: "end", bold: true },
     { head: ["Edge,", flat.unit], width: wide || 15, align: "end" },
-    { head: ["Chord,", flat.unit], width: wide || 16.5, align: "end" },
-    { head: ["On the", `form, ${span.unit}`], width: wide || 18, align: "end" },
-    { head: ["Allow-", `ance, ${flat.unit}`], width: wide ? 30 : 24, align: "end" },
-    { head: ["Lap"], width: wide ? 17 : 14 },
-    { head: ["Tape,", flat.unit], width: wide || 13.5 },
+    { head: ["Chord,", flat.unit], width: wide || 15.5, align: "end" },
+    { head: ["On the", `form, ${span.unit}`], width: wide || 18.5, align: "end" },
+    { head: ["Allow-", `ance, ${flat.unit}`], width: wide ? 30 : 22, align: "end" },
+    { head: ["Lap"], width: 14 },
+    { head: ["Weld", "order"], width: 13, align: "end" },
+    { head: ["Tape", "before"], width: wide ? 18 : 15 },
+    { head: ["Tape", "after"], width: wide ? 18 : 14 },
   ];
 }
 
@@ -53,21 +45,15 @@ function checkColumns(job: FactsJob): readonly Column[] {
   const { flat } = paperUnits(job);
   const wide = isImperial(job) ? 25 : 0;
   return [
-    { head: ["Diagonals,", "widths"], width: wide ? 41 : 33 },
-    { head: ["Net,", flat.unit], width: wide || 17, align: "end", bold: true },
-    { head: ["Cut,", flat.unit], width: wide || 17, align: "end" },
-    { head: ["Tape,", flat.unit], width: 22 },
+    { head: ["Diagonals,", "widths"], width: wide ? 41 : 26 },
+    { head: ["Net,", flat.unit], width: wide || 15, align: "end", bold: true },
+    { head: ["Cut,", flat.unit], width: wide || 15, align: "end" },
+    { head: ["Tape", "before"], width: wide ? 22 : 16 },
   ];
 }
 
 function isImperial(job: FactsJob): boolean {
   return job.units === "imperial";
-}
-
-/** The roof for the key plans, kept at the first card. */
-interface Roof {
-  view: RoofView;
-  plan: KeyPlan | null;
 }
 
 /** The bytes of panel-cards.pdf. */
@@ -76,7 +62,8 @@ export async function writePanelCards(facts: Facts, fonts: FontFiles): Promise<U
   flowWeldingFirst(book);
   const view = viewRoof(facts);
   const roof: Roof = { view, plan: null };
-  for (const panel of facts.panels ?? []) drawCard(book, roof, panel);
+  const orders = weldOrders(facts);
+  for (const panel of facts.panels ?? []) drawCard(book, roof, panel, orders);
   drawAssemblyMap(book, view);
   flowAssemblyOrder(book);
   return closeBook(book);
@@ -101,19 +88,49 @@ function reach(job: FactsJob, length: number | null): string {
   return length === null ? "–" : paperUnits(job).flat.of(length);
 }
 
-function sideRows(facts: Facts, panel: FactsPanel, measures: PanelMeasures): string[][] {
+/** Seams with their place in the order of welding. */
+function weldOrders(facts: Facts): Map<string, string> {
+  return new Map(orderWelds(facts).steps.flatMap((step, k) => step.seams.map((id) => [id, `${k + 1}`] as const)));
+}
+
+function lapsOf(facts: Facts, panel: FactsPanel): PanelLaps {
+  const at = (lap: string) => panel.sides.flatMap((s, i) => (lapOf(facts, panel, i) === lap ? [s.id] : []));
+  return { top: at("on top"), below: at("below") };
+}
+
+/** How many slits the flap of each side gets; they are on the cut layer, told here because they are easily overlooked. */
+function slitWords(panel: FactsPanel): string {
+  const slits = panel.marks.filter((m) => m.kind === "slit" && m.points && m.points.length > 1);
+  if (slits.length === 0) return "";
+  const counts = new Map<number, number>();
+  for (const { points } of slits) {
+    const side = nearestSide(panel, (points ?? [])[0]);
+    counts.set(side, (counts.get(side) ?? 0) + 1);
+  }
+  const told = [...counts].sort((a, b) => a[0] - b[0]).map(([side, n]) => `${n} in the flap of side ${side + 1}`);
+  return ` Slits: ${told.join(", ")}.`;
+}
+
+function sideRows(
+  facts: Facts,
+  panel: FactsPanel,
+  measures: PanelMeasures,
+  orders: ReadonlyMap<string, string>,
+): string[][] {
   const { job } = facts;
   const { flat, span } = paperUnits(job);
   return panel.sides.map((s, i) => [
     `${i + 1}`,
     s.id,
-    sideMeets(facts, panel, i),
+    sideMeets(facts, panel, i).replace(/ edge$|^edge /, ""),
     flat.of(s.lengthFlat),
     reach(job, measures.sides[i].edge),
     reach(job, measures.sides[i].chord),
     span.of(s.lengthErected),
     allowanceText(job, s.allowance),
     lapOf(facts, panel, i),
+    orders.get(s.id) ?? "–",
+    "",
     "",
   ]);
 }
@@ -161,8 +178,8 @@ function headTexts(facts: Facts, panel: FactsPanel, measures: PanelMeasures, sca
   const weight = mass === null ? "" : `, ${weights.whole(mass)}`;
   const stations = measures.start === "" ? "" : ` Widths: from ${measures.start}.`;
   return [
-    `Scale 1:${scale}, outer face up, warp along the arrow. Fabric ${panel.fabric}, batch ${panel.batch ?? "not given"}, ${lie}. Cut area ${area.whole(panel.area.cut)}${weight}.`,
-    `Thick: cut. Dashed: net. Ticks: match marks. Side n begins at Cn. Edge, chord: along and straight between ringed cut corners.${stations}`,
+    `Scale 1:${scale}, outer face up, warp along the arrow. Fabric ${panel.fabric}, batch ${batchOf(facts, panel) ?? "not given"}, ${lie}. Cut area ${area.whole(panel.area.cut)}${weight}.`,
+    `Thick: cut. Dashed: net. Ticks: match marks. Side n begins at Cn. Edge, chord: between ringed cut corners, taped before welding; net: after it.${stations}${slitWords(panel)}`,
     `The flat is compensated (${(["warp", "weft"] as const).map((way) => tellTaken(panel, way)).join(", ")}${back.length > 0 ? `; taken back ${back.join("; ")}` : ""}): do not compensate again.`,
     ...(codes.length > 0 ? [`See the findings sheets for this panel: ${codes.join(", ")}.`] : []),
   ];
@@ -175,11 +192,11 @@ function headLines(book: Book, texts: readonly string[], width: number): string[
   );
 }
 
-function drawCard(book: Book, roof: Roof, panel: FactsPanel): void {
+function drawCard(book: Book, roof: Roof, panel: FactsPanel, orders: ReadonlyMap<string, string>): void {
   const { facts } = book;
   const sheet = addSheet(book, `Panel card ${panel.id}`);
   const measures = measurePanel(panel);
-  const sides: CardTable = { columns: sideColumns(facts.job), rows: sideRows(facts, panel, measures) };
+  const sides: CardTable = { columns: sideColumns(facts.job), rows: sideRows(facts, panel, measures, orders) };
   const checks: CardTable = { columns: checkColumns(facts.job), rows: checkRows(facts.job, measures) };
   // Feet and inches find no room beside each other: the checks then stand in two halves below the sides.
   const below = isImperial(facts.job);
@@ -194,7 +211,7 @@ function drawCard(book: Book, roof: Roof, panel: FactsPanel): void {
     return { x: sheet.left, y, width, height: Math.max(headBottom - y, LEAST_FIGURE / 2) };
   };
   // All sides on one card are worth a smaller figure.
-  const least = Math.min(below ? 0.7 * LEAST_FIGURE : LEAST_FIGURE, figureHeight(panel, width));
+  const least = Math.min(below ? 0.55 * LEAST_FIGURE : LEAST_FIGURE, figureHeight(panel, width));
   let shown = sides.rows.length;
   // The table beside it is as high anyway: fewer rows than its rows would gain nothing.
   while (shown > (below ? 1 : checks.rows.length) && figureOf(shown).height < least) shown--;
@@ -207,14 +224,14 @@ function drawCard(book: Book, roof: Roof, panel: FactsPanel): void {
   });
   drawPanelFigure({ book, sheet, panel, measures, box, scale });
   const top = box.y - 2;
-  const area = { left: sheet.left, width: below ? width : width * 0.7, y: top };
+  const area = { left: sheet.left, width: below ? width : width * 0.735, y: top };
   const under = drawTable(book, sheet, sides.columns, sides.rows.slice(0, shown), area) - 2;
   if (below) drawHalves(book, sheet, checks.columns, checks.rows, under);
   else {
-    const right = { left: sheet.left + width * 0.71, width: width * 0.29, y: top };
+    const right = { left: sheet.left + width * 0.745, width: width * 0.255, y: top };
     drawTable(book, sheet, checks.columns, checks.rows, right);
   }
-  drawFoot(book, sheet, roof, panel);
+  drawFoot(book, sheet, roof, panel, lapsOf(facts, panel));
   drawMoreSides(book, panel, sides.columns, sides.rows.slice(shown));
 }
 
@@ -234,66 +251,4 @@ function drawMoreSides(book: Book, panel: FactsPanel, columns: readonly Column[]
     drawTable(book, sheet, columns, left.slice(0, fits), area);
     left = left.slice(fits);
   }
-}
-
-/** Boxes to tick, the weld trial of the day, and where the panel sits in the roof. */
-function drawFoot(book: Book, sheet: Sheet, roof: Roof, panel: FactsPanel): void {
-  const { page } = sheet;
-  const width = sheet.right - sheet.left;
-  const top = sheet.bottom + FOOT - 2;
-  const line = (text: string, x: number, y: number, end: number) => {
-    drawText(page, text, { x, y, size: SMALL, font: book.regular });
-    drawRun(
-      page,
-      [
-        [x + 19, y - 0.6],
-        [end, y - 0.6],
-      ],
-      { width: 0.13 },
-    );
-  };
-  ["Cut", "Marked", "Measured", "Welded"].forEach((step, i) => {
-    const y = top - 4 - 5.9 * i;
-    drawBox(page, { x: sheet.left, y: y - 0.6, width: 3.6, height: 3.6 }, { width: 0.3 });
-    drawText(page, step, { x: sheet.left + 5.5, y, size: SMALL, font: book.bold });
-    line("by, date", sheet.left + 25, y, sheet.left + width * 0.31);
-  });
-  const x = sheet.left + width * 0.34;
-  drawText(page, "Weld trial of the day (fill in before welding)", { x, y: top - 4, size: SMALL, font: book.bold });
-  ["Machine", "Settings", "Pull test", "By, date"].forEach((what, i) => {
-    line(what, x, top - 9 - 5 * i, sheet.left + width * 0.66);
-  });
-  roof.plan ??= keepKeyPlan(book, roof.view, sheet);
-  drawKeyPlan(book, sheet, roof.view, panel, roof.plan);
-}
-
-/** The roof drawn once for all cards, at a place of its own on each. */
-interface KeyPlan {
-  box: BoxArea;
-  place: (p: Vec2) => Vec2;
-  lines: Stencil;
-}
-
-/** Sheets of a book are all alike, so the plan stands on the same place of every card. */
-function keepKeyPlan(book: Book, view: RoofView, sheet: Sheet): KeyPlan {
-  const width = sheet.right - sheet.left;
-  const box = { x: sheet.left + width * 0.69, y: sheet.bottom, width: width * 0.31, height: FOOT - 2 };
-  const place = fitRoof(view, { x: box.x + 2, y: box.y + 1, width: box.width - 4, height: box.height - 7 });
-  const lines = keepStencil(book.doc, box, [
-    ...view.panels.flatMap((p) =>
-      p.outlines.map((o) => ({ points: o.map(place), options: { width: 0.15, closed: true } })),
-    ),
-    ...view.seams.map((s) => ({ points: s.run.map(place), options: { width: 0.35 } })),
-  ]);
-  return { box, place, lines };
-}
-
-function drawKeyPlan(book: Book, sheet: Sheet, view: RoofView, panel: FactsPanel, plan: KeyPlan): void {
-  const { box, place } = plan;
-  const title = { x: box.x, y: box.y + box.height - 4, size: SMALL, font: book.regular };
-  drawText(sheet.page, `Key plan, ${view.name}`, title);
-  for (const outline of view.panels.find((p) => p.id === panel.id)?.outlines ?? []) {
-    drawRun(sheet.page, outline.map(place), { width: 0.15, closed: true, fill: 0.55 });
-  }
-  drawStencil(sheet.page, plan.lines);
 }

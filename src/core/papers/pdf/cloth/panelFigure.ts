@@ -79,6 +79,9 @@ export function drawPanelFigure({ book, sheet, panel, measures, box, scale }: Pa
   for (const w of measures.widths) {
     if (w.net) drawRun(sheet.page, w.net.map(place), { width: 0.13, dash: [1, 1] });
   }
+  for (const m of panel.marks) {
+    if (m.kind === "slit" && m.points) drawRun(sheet.page, m.points.map(place), { width: 0.4 });
+  }
   drawSideLabels(figure);
   drawCorners(figure, measures);
   drawMatchMarks(figure);

@@ -61,13 +61,15 @@ export function flowWeldingFirst(book: Book): void {
 
 function flowLapInPlace(flow: Flow, lap: Lap, drawn: boolean): void {
   const { flat } = paperUnits(flow.book.facts.job);
+  const all = lap.seams.length === (flow.book.facts.seams ?? []).length;
   const more = lap.seams.length > LISTED ? ` and ${lap.seams.length - LISTED} more` : "";
+  const seams = all ? "All seams" : `${lap.seams.slice(0, LISTED).join(", ")}${more}`;
   const reaches = (mm: number) =>
     mm === 0 ? "ends at it" : mm > 0 ? `reaches ${flat.whole(mm)} beyond it` : `ends ${flat.whole(-mm)} before it`;
   if (drawn) drawLap(flow, lap);
   flowTextInPlace(
     flow,
-    `Lap ${flat.whole(lap.top + lap.below)} about the seam line: the panel on top ${reaches(lap.top)}, the panel below ${reaches(lap.below)}. ${lap.seams.slice(0, LISTED).join(", ")}${more}.`,
+    `Lap ${flat.whole(lap.top + lap.below)} about the seam line: the panel on top ${reaches(lap.top)}, the panel below ${reaches(lap.below)}. ${seams}.`,
   );
   flowGapInPlace(flow, 2);
 }

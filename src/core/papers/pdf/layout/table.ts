@@ -2,7 +2,7 @@
 // a sheet that moves down and turns the page.
 import type { PDFFont } from "pdf-lib";
 import { addSheet, type Book, type Sheet } from "./book.ts";
-import { drawBox, drawText, fitText, pitchOf, SMALL, wrapText } from "./pen.ts";
+import { drawBox, drawText, fitText, pitchOf, SMALL, textWidth, wrapText } from "./pen.ts";
 
 export interface Column {
   /** Lines of the head. */
@@ -41,9 +41,12 @@ export function needInPlace(flow: Flow, height: number): void {
   flow.y = sheet.top;
 }
 
-/** A heading with room for at least two lines under it. */
+/** Height under a heading that what follows may ask for before it turns the page itself: head and first row of a table, a caution. */
+const BELOW_HEADING = 32;
+
+/** A heading that is never left alone at the foot of a sheet. */
 export function flowHeadingInPlace(flow: Flow, text: string): void {
-  needInPlace(flow, 20);
+  needInPlace(flow, 8 + BELOW_HEADING);
   flow.y -= 8;
   const room = flow.sheet.right - flow.sheet.left;
   const line = fitText(text, flow.book.bold, 12, room);
@@ -140,14 +143,35 @@ function drawHead(book: Book, sheet: Sheet, columns: readonly Column[], area: Ar
   );
 }
 
-/** A table on one spot, each cell one line, shortened where it must be; returns the y below. */
+/**
+ * Columns in which every head and every number fits: where one does not, its column takes room from those of names, which may be
+ * shortened. Nobody cuts or turns by a number with its middle left out.
+ */
+function fitColumns(book: Book, columns: readonly Column[], rows: readonly string[][], area: Area): readonly Column[] {
+  const { width } = layOut(columns, area.left, area.width);
+  const size = area.size ?? SMALL;
+  const need = columns.map((c, k) => {
+    const heads = c.head.map((h) => textWidth(h, book.bold, size));
+    const cells = rows.map((row) => textWidth(row[k], c.bold ? book.bold : book.regular, size));
+    return Math.max(...heads, ...(c.align === "end" ? cells : [])) + 2 * PAD + 0.1;
+  });
+  const short = need.reduce((sum, n, k) => sum + Math.max(0, n - width[k]), 0);
+  if (short === 0) return columns;
+  const spare = need.map((n, k) => Math.max(0, width[k] - n));
+  const all = spare.reduce((a, b) => a + b, 0);
+  const given = Math.min(1, short / Math.max(all, 1e-9));
+  return columns.map((c, k) => ({ ...c, width: Math.max(need[k], width[k] - given * spare[k]) }));
+}
+
+/** A table on one spot, each cell one line; names are shortened where they must be, numbers only where no room is left at all. */
 export function drawTable(
   book: Book,
   sheet: Sheet,
-  columns: readonly Column[],
+  given: readonly Column[],
   rows: readonly string[][],
   area: Area,
 ): number {
+  const columns = fitColumns(book, given, rows, area);
   const { width } = layOut(columns, area.left, area.width);
   const size = area.size ?? SMALL;
   const fonts = columns.map((c) => (c.bold ? book.bold : book.regular));
