@@ -9,7 +9,7 @@ import type { CutPanel } from "../records/flatPanel.ts";
 import type { FoundForm } from "../records/foundForm.ts";
 import type { EdgePlace, Job } from "../records/job.ts";
 import type { StripLayout } from "../records/stripLayout.ts";
-import { matchVertices, moveSeam, openSeams, type SeamWork } from "../seams/moveSeam.ts";
+import { moveSeamInPlace, openSeams, type SeamWork } from "../seams/moveSeam.ts";
 import type { Vec3 } from "../surface/surface.ts";
 import { buildPanelFacts, buildSeamFacts } from "./buildFacts.ts";
 import { fitPanels } from "./fitPanels.ts";
@@ -27,13 +27,13 @@ export interface SeamDrag {
   form: FoundForm;
   fitted: Fitted;
   work: SeamWork;
-  /** The other panels as the seam's own cutting numbers their vertices. */
+  /** The other panels in the numbers of the seam in hand. */
   held: { weld: string; others: CutPanel[] } | null;
 }
 
 /** What came of a move. */
 export interface Dragged {
-  /** The whole roof cut again; choices and estimates left out. */
+  /** The seam's two strips and all seams they have; choices and estimates left out. */
   layout: StripLayout;
   /** The panels on both sides of the seam, as they would be cut. */
   panels: CutPanel[];
@@ -47,26 +47,22 @@ export function openDrag(form: FoundForm, job: Job, fitted: Fitted): SeamDrag {
   return { form, fitted, work: openSeams(form, job, fitted.options), held: null };
 }
 
-/** The other panels in the numbers of a layout cut with this seam last. */
-function holdOthers(drag: SeamDrag, layout: StripLayout, moved: ReadonlySet<string>): CutPanel[] {
-  const number = matchVertices(drag.fitted.seams.output, layout);
-  return drag.fitted.panels.output
-    .filter((p) => !moved.has(p.id))
-    .map((p) => ({ ...p, surfaceVertex: p.surfaceVertex.map((v) => number[v]) }));
-}
-
 /**
  * Moves a weld and makes its panels anew. Called again and again while a finger drags; the first call for a weld takes longer.
  * @throws PlanError seam-move where the seam cannot go there; those of flattening and outlines
  */
 export function dragSeamInPlace(drag: SeamDrag, weld: string, to: readonly [EdgePlace, EdgePlace]): Dragged {
-  const { form, work } = drag;
-  const layout = moveSeam(work, weld, to);
-  const moved = new Set(layout.seams.filter((seam) => seam.weld === weld).flatMap((seam) => seam.strips));
-  if (drag.held?.weld !== weld) drag.held = { weld, others: holdOthers(drag, layout, moved) };
+  const { form, work, fitted } = drag;
+  const { layout, flat: start } = moveSeamInPlace(work, weld, to);
+  const moved = new Set(layout.strips.map((strip) => strip.id));
+  const number = work.held?.seam.number ?? [];
+  if (drag.held?.weld !== weld) {
+    const others = fitted.panels.output.filter((p) => !moved.has(p.id));
+    drag.held = { weld, others: others.map((p) => ({ ...p, surfaceVertex: p.surfaceVertex.map((v) => number[v]) })) };
+  }
   const { others } = drag.held;
-  const flat = reflattenPanels(layout, buildFlattenOptions(form, work.job), others, {});
-  const shared = new Set(layout.seams.filter((s) => s.strips.some((id) => moved.has(id))).flatMap((s) => s.strips));
+  const flat = reflattenPanels(layout, buildFlattenOptions(form, work.job), others, start);
+  const shared = new Set(layout.seams.flatMap((s) => s.strips));
   const near = [...flat, ...others.filter((p) => shared.has(p.id))];
   const place = buildPanelPlace(near, { seams: layout.seams, form, job: work.job });
   return { layout, panels: flat.map((panel) => outlinePanel(panel, place, work.job.allowances).output) };

@@ -44,9 +44,9 @@ export interface CutForm {
 }
 
 /** Shares of an edge within which a crossing is moved to its end; the smaller one where the larger pinches a narrow strip. */
-const SNAPS = [0.004, 0.0005];
+export const SNAPS = [0.004, 0.0005];
 /** … but no further than this, m: a crossing moved by more makes a jog in the seam that fairing (0.2 mm) must keep. */
-const SNAP_REACH = 1.5e-4;
+export const SNAP_REACH = 1.5e-4;
 
 function formPoints(plans: readonly RegionPlan[], path: SeamPath): SurfacePoint[] {
   const of = plans[path.region].region.formVertex;

@@ -1,5 +1,6 @@
-// Moves one seam of a layout and cuts again, all others where they were: for a seam end that is dragged. Traces one geodesic and
-// cuts; lays nothing out, checks nothing (the plan does, when the seam is let go).
+// Seams that can be moved one at a time, and the layout with one of them between two other places: for a seam end that is dragged.
+// Traces one geodesic over the cloth on both sides and parts it there (partHeld.ts); lays nothing out, checks nothing (the plan does,
+// when the seam is let go).
 import { PlanError } from "../problem.ts";
 import type { FoundForm } from "../records/foundForm.ts";
 import type { EdgePlace, Job } from "../records/job.ts";
@@ -7,21 +8,27 @@ import type { StripLayout } from "../records/stripLayout.ts";
 import { measureDistance, pointAt, vertexAt } from "../surface/measures.ts";
 import type { SurfacePoint } from "../surface/surface.ts";
 import { isSamePoint } from "../surface/surfacePoint.ts";
+import { AT_VERTEX } from "./chain.ts";
 import { cutStrips } from "./cutStrips.ts";
+import { findOnRim, type HeldSeam, holdSeam } from "./holdSeam.ts";
 import { nameStrips } from "./nameStrips.ts";
-import { findEdge, findInRegion, placeOnEdge } from "./pairs.ts";
+import { findEdge, placeOnEdge } from "./pairs.ts";
+import { joinParts, type MovedSeam, nameHalves, partHeld } from "./partHeld.ts";
 import { type LaidSeams, laySeams, type SeamOptions } from "./runSeams.ts";
 import { traceSeam } from "./seamLine.ts";
-import type { SeamPath } from "./seamPath.ts";
 
 /** A layout whose seams can be moved one at a time. */
 export interface SeamWork {
   job: Job;
   laid: LaidSeams;
+  /** The layout as laid. */
+  whole: StripLayout;
   /** By id of its weld: the paths (indices) that make it. */
   pathsOf: ReadonlyMap<string, number[]>;
   /** By id of its weld: places of its two ends; only of welds of one path whose ends lie on edges, which are those that can be moved. */
   ends: ReadonlyMap<string, [EdgePlace, EdgePlace]>;
+  /** The seam in hand, and which of its two strips lies to the left of its way. */
+  held: { weld: string; seam: HeldSeam; halves: [string, string] } | null;
 }
 
 /** A place of the form as a share of an edge; null inside the cloth. */
@@ -44,11 +51,6 @@ function nameEdgePlace(form: FoundForm, p: SurfacePoint): EdgePlace | null {
   return null;
 }
 
-function cutAndName(job: Job, laid: LaidSeams, paths: SeamPath[]) {
-  const cut = cutStrips(laid.form, laid.adjacency, laid.labels, laid.plans, paths);
-  return { cut, named: nameStrips(laid.form, job, laid.plans, cut) };
-}
-
 /** True where another seam of the layout ends on this path between its ends. */
 function carriesEnd(laid: LaidSeams, path: number): boolean {
   const own = laid.paths[path];
@@ -68,7 +70,8 @@ function carriesEnd(laid: LaidSeams, path: number): boolean {
  */
 export function openSeams(found: FoundForm, job: Job, options: SeamOptions): SeamWork {
   const laid = laySeams(found, job, options, {});
-  const { named } = cutAndName(job, laid, laid.paths);
+  const cut = cutStrips(laid.form, laid.adjacency, laid.labels, laid.plans, laid.paths);
+  const named = nameStrips(laid.form, job, laid.plans, cut);
   const pathsOf = new Map<string, number[]>();
   laid.paths.forEach(({ weld }, i) => {
     const id = named.weldOf.get(weld);
@@ -84,44 +87,57 @@ export function openSeams(found: FoundForm, job: Job, options: SeamOptions): Sea
     );
     if (both[0] && both[1]) ends.set(id, [both[0], both[1]]);
   }
-  return { job, laid, pathsOf, ends };
+  const whole = { surface: cut.surface, seams: named.seams, strips: named.strips, choices: [] };
+  return { job, laid, whole, pathsOf, ends, held: null };
 }
 
-/**
- * The layout with one weld between two other places. Its path is cut last, so that all vertices of the others keep their numbers
- * from one move of it to the next.
- * @throws PlanError seam-move: this weld cannot be moved, or not there; those of cutting
- */
-export function moveSeam(work: SeamWork, weld: string, to: readonly [EdgePlace, EdgePlace]): StripLayout {
-  const { laid, job } = work;
-  const path = work.ends.has(weld) ? work.pathsOf.get(weld)?.[0] : undefined;
-  if (path === undefined)
+/** The held seam parted between two places. @throws PlanError seam-move */
+function partBetween(work: SeamWork, seam: HeldSeam, weld: string, to: readonly [EdgePlace, EdgePlace]) {
+  const { form } = work.laid;
+  const [from, finish] = to.map((place) => {
+    const edge = findEdge(form, place.edge, weld);
+    const at = pointAt(form.surface, placeOnEdge(form, edge, place.at));
+    return findOnRim(seam, form.edges.indexOf(edge), at, AT_VERTEX);
+  });
+  if (!from || !finish)
+    throw new PlanError(
+      "seam-move",
+      `${weld} cannot end there: it would cross another seam, or its two panels do not border that edge`,
+      weld,
+    );
+  const line = traceSeam(seam, from, finish);
+  if (!line.clear)
+    throw new PlanError(
+      "seam-move",
+      `${weld} would run along an edge or another seam, or touch it, between these places`,
+      weld,
+    );
+  return partHeld(seam, line.points, weld);
+}
+
+/** Takes a seam in hand. @throws PlanError seam-move: it cannot be moved by itself; those of cutting */
+function takeInHand(work: SeamWork, weld: string): NonNullable<SeamWork["held"]> {
+  const ends = work.ends.get(weld);
+  const path = work.pathsOf.get(weld)?.[0];
+  if (ends === undefined || path === undefined)
     throw new PlanError(
       "seam-move",
       `${weld} cannot be moved by itself: it has several legs, ends inside the cloth, or carries the end of another seam; give the seams one by one (pairs)`,
       weld,
     );
-  const old = laid.paths[path];
-  const region = laid.regions[old.region];
-  const [from, finish] = to.map((place) => {
-    const at = placeOnEdge(laid.form, findEdge(laid.form, place.edge, weld), place.at);
-    return findInRegion(laid.form, region, at)[0];
-  });
-  if (!from || !finish)
-    throw new PlanError("seam-move", `${weld} cannot end there: ${region.id} does not border both edges`, weld);
-  const line = traceSeam(region, from, finish);
-  if (!line.clear)
-    throw new PlanError("seam-move", `${weld} would run along an edge or leave the cloth between these places`, weld);
-  const paths = [...laid.paths.filter((_, i) => i !== path), { ...old, line }];
-  const { cut, named } = cutAndName(job, laid, paths);
-  if (cut.paths.length < paths.length) throw new PlanError("seam-move", `${weld} would cross another seam`, weld);
-  return { surface: cut.surface, seams: named.seams, strips: named.strips, choices: [] };
+  const own = new Set(work.whole.seams.filter((s) => s.weld === weld).flatMap((s) => s.strips));
+  const strips = work.whole.strips.filter((s) => own.has(s.id));
+  const seam = holdSeam(work.laid, work.whole, path, strips);
+  return { weld, seam, halves: nameHalves(partBetween(work, seam, weld, ends), work.whole, strips) };
 }
 
-/** Vertex of one cut surface for each vertex of another, by place; -1 where it is not there. */
-export function matchVertices(from: StripLayout, to: StripLayout): Int32Array {
-  const key = (layout: StripLayout, v: number) => pointAt(layout.surface, { a: v, b: v, t: 0 }).join();
-  const at = new Map<string, number>();
-  for (let v = 0; v < to.surface.xyz.length / 3; v++) at.set(key(to, v), v);
-  return Int32Array.from({ length: from.surface.xyz.length / 3 }, (_, v) => at.get(key(from, v)) ?? -1);
+/**
+ * The two strips of a weld between two other places, and its seams. The first move of a weld takes longer: its cloth is taken in hand.
+ * Vertices of the base keep their numbers from one move of it to the next.
+ * @throws PlanError seam-move: this weld cannot be moved, or not there; those of cutting
+ */
+export function moveSeamInPlace(work: SeamWork, weld: string, to: readonly [EdgePlace, EdgePlace]): MovedSeam {
+  if (work.held?.weld !== weld) work.held = takeInHand(work, weld);
+  const { seam, halves } = work.held;
+  return joinParts(seam, partBetween(work, seam, weld, to), halves, work.laid.form, weld);
 }

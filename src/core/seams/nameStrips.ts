@@ -9,7 +9,7 @@ import { isOpening } from "./openHoles.ts";
 import type { RegionPlan } from "./seamPath.ts";
 import { findEnds, measureVertices } from "./stripEnds.ts";
 import { listSides, type RawSide } from "./stripSides.ts";
-import { LEVEL_SLOPE, measureRise } from "./upperStrip.ts";
+import { LEVEL_SLOPE, laysOver, measureSlope } from "./upperStrip.ts";
 
 /** Strips and seams under their names. */
 export interface NamedStrips {
@@ -134,16 +134,14 @@ export function nameStrips(form: FoundForm, job: Job, plans: readonly RegionPlan
     seamOf.set(sideKey(b, a, vertices[vertices.length - 1], vertices[0]), id);
     const group = side.edge >= 0 ? `cable ${side.edge}` : cut.paths[side.path].weld;
     if (!weldOf.has(group)) weldOf.set(group, id);
-    const back = [...vertices].reverse();
-    const rise = measureRise(cut, vertices) - measureRise(cut, back);
-    if (Math.abs(rise) < 2 * LEVEL_SLOPE) level.push(id);
+    if (Math.abs(measureSlope(cut, vertices)) < 2 * LEVEL_SLOPE) level.push(id);
     return {
       id,
       weld: weldOf.get(group) ?? id,
       cable: cableOf(side.edge),
       vertices,
       strips: [stripId(a), stripId(b)],
-      upper: rise > -2 * LEVEL_SLOPE ? stripId(a) : stripId(b),
+      upper: laysOver(cut, vertices) ? stripId(a) : stripId(b),
       length: measureVertices(cut.surface, vertices),
     };
   });

@@ -21,7 +21,11 @@ export interface SeamLine {
 }
 
 /** The geodesic between two places of a region; two ends in one place give a line of no length that is not clear. */
-export function traceSeam(region: Region, from: SurfacePoint, to: SurfacePoint): SeamLine {
+export function traceSeam(
+  region: Pick<Region, "surface" | "adjacency" | "solver">,
+  from: SurfacePoint,
+  to: SurfacePoint,
+): SeamLine {
   if (isSamePoint(from, to))
     return {
       points: [from, to],

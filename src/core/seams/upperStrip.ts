@@ -7,7 +7,7 @@ import type { CutForm } from "./cutStrips.ts";
 export const LEVEL_SLOPE = 0.005;
 
 /** Mean rise per metre from a seam into the cloth on the left of its way, over its half-edges, weighted by length. */
-export function measureRise(cut: CutForm, vertices: readonly number[]): number {
+function measureRise(cut: CutForm, vertices: readonly number[]): number {
   const { tri } = cut.surface;
   const { fan, fanStart } = cut.adjacency;
   let sum = 0;
@@ -29,4 +29,14 @@ export function measureRise(cut: CutForm, vertices: readonly number[]): number {
     }
   }
   return total > 0 ? sum / total : 0;
+}
+
+/** True where the strip whose outline these vertices are lies over its neighbour there: it is not the lower one. */
+export function laysOver(cut: CutForm, vertices: readonly number[]): boolean {
+  return measureSlope(cut, vertices) > -2 * LEVEL_SLOPE;
+}
+
+/** Rise across a seam from one strip's outline: positive where that strip is the upper one; within twice LEVEL_SLOPE it is level. */
+export function measureSlope(cut: CutForm, vertices: readonly number[]): number {
+  return measureRise(cut, vertices) - measureRise(cut, [...vertices].reverse());
 }

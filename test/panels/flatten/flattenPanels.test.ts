@@ -288,7 +288,7 @@ describe("two panels of a doubly curved sheet", () => {
   test("one panel anew, its seam held to the other's length", () => {
     const layout = saddleLayout();
     const all = flattenPanels(layout, PLAIN, {}).output;
-    const [again] = reflattenPanels(layout, PLAIN, [all[0]], {});
+    const [again] = reflattenPanels(layout, PLAIN, [all[0]], new Map());
     expect(again.id).toBe("P2");
     // The tied answer is also the best for one panel when the other does not move.
     expect(distance(again.flat, all[1].flat)).toBeLessThan(0.05);

@@ -15,8 +15,8 @@ import { buildFlattenStart } from "./flattenStart.ts";
 import { buildRunDirections } from "./localStrip.ts";
 import { buildTargetField, type FlattenOptions } from "./panelTarget.ts";
 
-/** Enough to see a panel while its seam is dragged: 1 µm on a side, the stress to five figures. */
-const SEEN = { ...FLATTEN_TOLERANCE, energy: 1e-6, gap: 1e-6 };
+/** Enough to see a panel while its seam is dragged: the step that promises so little is the last, and leaves far less (see the test). */
+const SEEN = { ...FLATTEN_TOLERANCE, energy: 1e-2, gap: 1e-5 };
 /** Enough to read from where a fade reaches. */
 const ROUGH = { ...FLATTEN_TOLERANCE, energy: 1e-3, gap: 1e-5 };
 
@@ -30,7 +30,14 @@ export function flattenPanels(
   options: FlattenOptions,
   context: StationContext,
 ): StationResult<FlatPanel[]> {
-  const { panels, converged, gap } = flattenStrips(layout, options, [], FLATTEN_TOLERANCE, context);
+  const { panels, converged, gap } = flattenStrips({
+    layout,
+    options,
+    others: [],
+    start: new Map(),
+    tolerance: FLATTEN_TOLERANCE,
+    context,
+  });
   const findings = listPanelFindings(panels);
   if (!converged) {
     findings.unshift({
@@ -57,30 +64,36 @@ export function flattenPanels(
 /**
  * Flattens again the panels that `others` does not hold; seams shared with those keep the length they are cut to.
  * For a dragged seam: its two panels anew, the rest as it was. The energy is that of these panels alone, so a last flattenPanels is due.
+ * `start`: by strip, its vertices laid flat without a fold; strips it lacks are unfolded. @shape 2*n
  * @throws PlanError as flattenPanels
  */
 export function reflattenPanels(
   layout: StripLayout,
   options: FlattenOptions,
   others: readonly FlatPanel[],
-  context: StationContext,
+  start: ReadonlyMap<string, Float64Array<ArrayBuffer>>,
 ): FlatPanel[] {
-  return flattenStrips(layout, options, others, SEEN, context).panels;
+  return flattenStrips({ layout, options, others, start, tolerance: SEEN, context: {} }).panels;
 }
 
-function flattenStrips(
-  layout: StripLayout,
-  options: FlattenOptions,
-  others: readonly FlatPanel[],
-  tolerance: FlattenTolerance,
-  context: StationContext,
-): { panels: FlatPanel[]; converged: boolean; gap: number } {
+interface FlattenWork {
+  layout: StripLayout;
+  options: FlattenOptions;
+  others: readonly FlatPanel[];
+  start: ReadonlyMap<string, Float64Array<ArrayBuffer>>;
+  tolerance: FlattenTolerance;
+  context: StationContext;
+}
+
+function flattenStrips(work: FlattenWork): { panels: FlatPanel[]; converged: boolean; gap: number } {
+  const { layout, options, others, start, tolerance, context } = work;
   const stiffness = buildStiffness(options.fabric);
   const drafts = listDrafts(layout, options, stiffness, new Set(others.map((p) => p.id)));
   if (drafts.length === 0) return { panels: [], converged: true, gap: 0 };
   const problem = buildFlattenProblem(layout, drafts, others, stiffness);
   let x = new Float64Array(2 * problem.nV);
-  for (const d of drafts) x.set(buildFlattenStart(d.strip, d.target.turn, d.target.elastic), 2 * d.first);
+  for (const d of drafts)
+    x.set(buildFlattenStart(d.strip, d.target.turn, d.target.elastic, start.get(d.strip.id)), 2 * d.first);
   let result = { x, converged: true, gap: 0 };
   // Where a fade reaches is read from flat cloth, so that is made first, its decompensated sides at their length already.
   const rounds = drafts.some((d) => d.target.decompensated.length > 0) ? 2 : 1;

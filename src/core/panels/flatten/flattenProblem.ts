@@ -4,6 +4,7 @@ import { PlanError } from "../../problem.ts";
 import type { FlatPanel } from "../../records/flatPanel.ts";
 import type { StripLayout } from "../../records/stripLayout.ts";
 import { buildErectedMetric, type ClothStiffness } from "../../structure/cloth.ts";
+import { buildHeldOutline, measureAlong } from "./heldOutline.ts";
 import { buildLocalStrip, type LocalStrip } from "./localStrip.ts";
 import { buildPanelTarget, type FlattenOptions, type PanelTarget } from "./panelTarget.ts";
 
@@ -135,23 +136,22 @@ function listTies(layout: StripLayout, drafts: readonly PanelDraft[], others: re
   const index = (vertices: Uint32Array<ArrayBuffer>, first: number) =>
     new Map([...vertices].map((v, i) => [v, first + i]));
   const free = new Map(drafts.map((d) => [d.strip.id, index(d.strip.surfaceVertex, d.first)]));
-  const held = new Map(others.map((p) => [p.id, { local: index(p.surfaceVertex, 0), flat: p.flat }]));
+  const held = new Map(others.map((p) => [p.id, buildHeldOutline(p)]));
   const out: Tie[] = [];
   for (const seam of layout.seams) {
     const [a, b] = seam.strips.map((id) => free.get(id));
     const cut = held.get(a === undefined ? seam.strips[0] : seam.strips[1]);
     const own = a ?? b;
     if (own === undefined) continue;
-    for (let k = 1; k < seam.vertices.length; k++) {
-      const [u, v] = [seam.vertices[k - 1], seam.vertices[k]];
-      const at = (map: Map<number, number>, w: number): number => map.get(w) ?? refuseSeam(seam.id, w);
-      if (a !== undefined && b !== undefined) {
-        out.push({ ends: [at(a, u), at(a, v), at(b, u), at(b, v)], length: 0 });
-      } else if (cut !== undefined) {
-        const [p, q] = [2 * at(cut.local, u), 2 * at(cut.local, v)];
-        const length = Math.sqrt((cut.flat[q] - cut.flat[p]) ** 2 + (cut.flat[q + 1] - cut.flat[p + 1]) ** 2) / 1000;
-        out.push({ ends: [at(own, u), at(own, v), -1, -1], length });
-      }
+    const at = (map: Map<number, number>, w: number): number => map.get(w) ?? refuseSeam(seam.id, w);
+    const pieces = seam.vertices.slice(1).map((v, k): [number, number] => [seam.vertices[k], v]);
+    if (a !== undefined && b !== undefined)
+      for (const [u, v] of pieces) out.push({ ends: [at(a, u), at(a, v), at(b, u), at(b, v)], length: 0 });
+    else if (cut !== undefined) {
+      const length = measureAlong(cut, layout.surface, seam.vertices);
+      pieces.forEach(([u, v], k) => {
+        out.push({ ends: [at(own, u), at(own, v), -1, -1], length: length[k] });
+      });
     }
   }
   for (const { strip, target, first } of drafts)

@@ -6,15 +6,16 @@ import type { LocalStrip } from "./localStrip.ts";
 
 /**
  * Flat points of the relaxed cloth to start the flattening from: axis at `turn` degrees from x, sizes divided by 1 + elastic strain.
- * @shape 2*n @units m
+ * @shape 2*n, unfolded too: the strip laid flat without a fold, where it is known @units m
  * @throws PlanError strip-axis: the two ends have one mean point; panel-disc, panel-fold (unfoldSurface), the strip named
  */
 export function buildFlattenStart(
   strip: LocalStrip,
   turn: number,
   elastic: { warp: number; weft: number },
+  unfolded?: Float64Array<ArrayBuffer>,
 ): Float64Array<ArrayBuffer> {
-  const xy = unfold(strip);
+  const xy = unfolded ?? unfold(strip);
   const a = meanOf(xy, strip.from);
   const b = meanOf(xy, strip.to);
   const length = Math.sqrt((b[0] - a[0]) ** 2 + (b[1] - a[1]) ** 2);

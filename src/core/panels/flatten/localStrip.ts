@@ -98,10 +98,10 @@ export function buildRunDirections(strip: LocalStrip): Float64Array<ArrayBuffer>
     for (let i = 0; i < pieces.length; i += 6) {
       const [dx, dy, dz] = [pieces[i] - mx, pieces[i + 1] - my, pieces[i + 2] - mz];
       const d = dx * dx + dy * dy + dz * dz;
-      const w = d * d;
-      sx += pieces[i + 3] / w;
-      sy += pieces[i + 4] / w;
-      sz += pieces[i + 5] / w;
+      const w = 1 / (d * d);
+      sx += pieces[i + 3] * w;
+      sy += pieces[i + 4] * w;
+      sz += pieces[i + 5] * w;
     }
     const [px, py, pz] = [x[b] - x[a], x[b + 1] - x[a + 1], x[b + 2] - x[a + 2]];
     const [qx, qy, qz] = [x[c] - x[a], x[c + 1] - x[a + 1], x[c + 2] - x[a + 2]];
