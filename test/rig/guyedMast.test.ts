@@ -1,43 +1,16 @@
 // A sail with a guyed mast at each of its high corners, from the job to the played moves.
 import { beforeAll, expect, test } from "vitest";
-import type { Job, RigJob } from "../../src/core/records/job.ts";
+import type { RigJob } from "../../src/core/records/job.ts";
 import type { FactsRig } from "../../src/core/records/rig.ts";
 import { type RigResult, runRig } from "../../src/core/rig/runRig.ts";
 import type { Vec3 } from "../../src/core/surface/surface.ts";
+import { guy, guyAnchors } from "./guyedSail.ts";
 import { giveAdjusters, makeSmallSail, planInput } from "./madeRig.ts";
 import { buildAgain } from "./solveAgain.ts";
 
 const made = makeSmallSail([8, 6]);
-const heads: Record<string, Vec3> = { "corner-se": [5.697, -4.682, 4.622], "corner-nw": [-5.697, 4.682, 4.622] };
-
-/** Mast and two stays at each head; way: 1 puts the stays' feet behind the mast, -1 under the sail. */
-function guy(way: 1 | -1): Pick<RigJob, "struts" | "stays"> {
-  const places = Object.entries(heads);
-  const out = ([x, y]: Vec3) => [Math.sign(x), Math.sign(y)];
-  return {
-    struts: places.map(([corner, at], i) => {
-      const [a, b] = out(at);
-      return { name: `mast-${i + 1}`, from: [at[0] + 0.3 * a, at[1] + 0.3 * b, 0] as Vec3, to: corner, EA: 630000 };
-    }),
-    stays: places.flatMap(([corner, at], i) => {
-      const [a, b] = out(at);
-      return [
-        [3.5, 1.2],
-        [1.2, 3.5],
-      ].map(([dx, dy], k) => ({
-        name: `stay-${2 * i + k + 1}`,
-        from: corner,
-        to: [at[0] + way * a * dx, at[1] + way * b * dy, 0] as Vec3,
-        EA: 25000,
-        force: null,
-        minBreakingForce: 200,
-      }));
-    }),
-  };
-}
-
-const anchors: Job["anchors"] = Object.entries(heads).map(([name, support]) => ({ name, support }));
-const plan = (rig: Partial<RigJob>) => planInput(made, { anchors }, { adjusters: giveAdjusters(made), ...rig });
+const plan = (rig: Partial<RigJob>) =>
+  planInput(made, { anchors: guyAnchors }, { adjusters: giveAdjusters(made), ...rig });
 
 let result: { output: RigResult; checks: { holds: boolean }[]; findings: { code: string; level: string }[] };
 let rig: FactsRig;

@@ -33,9 +33,7 @@ test("thirty random rigs: every state at rest, no limit passed, targets held, an
     const [chosen, clockwise, byForce] = ways;
     expect(ways.map((w) => w.way)).toEqual(["chosen", "clockwise", "by-force"]);
     for (const plain of [clockwise, byForce]) {
-      // a plain way may end a little below the targets; no order of the moves has a lower peak than its own finished state
-      const height = Math.max(1.001 * plain.peak.share, chosen.end.share);
-      expect(chosen.peak.share, `${name} peak against ${plain.way}`).toBeLessThanOrEqual(height);
+      expect(chosen.peak.share, `${name} peak against ${plain.way}`).toBeLessThanOrEqual(plain.peak.share);
       expect(chosen.visits, `${name} visits against ${plain.way}`).toBeLessThanOrEqual(plain.visits);
     }
     expect(chosen.steps, name).toBeLessThanOrEqual(clockwise.steps);

@@ -216,6 +216,8 @@ export interface FactsStage {
   fraction: number;
   moves: FactsMove[];
   forces: Record<string, number>;
+  /** Share of the cloth that is wrinkled or slack at the end of the stage. */
+  slackCloth?: number;
   /** Where the near end of each adjuster stands at the end of the stage, by adjuster, m. */
   corners?: Record<string, Vec3>;
   /** Travel left at the end of the stage by adjuster, and the thread still in the body at each threaded end where known. mm */

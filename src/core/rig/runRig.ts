@@ -10,8 +10,10 @@ import { measureSensitivity } from "./otherwise/sensitivity.ts";
 import { buildTemperatureTable } from "./otherwise/temperatureTable.ts";
 import { measureAsBuilt } from "./review/asBuilt.ts";
 import { reviewBuilt } from "./review/reviewBuilt.ts";
+import { reviewLimits, reviewPulls } from "./review/reviewLimits.ts";
 import { findTargetMisses, reviewRig, roundedLimit } from "./review/reviewRig.ts";
 import { reviewShift } from "./review/reviewShift.ts";
+import { reviewSlackCloth, reviewTravelAlone } from "./review/reviewSite.ts";
 import { reviewLean, reviewNotches, reviewRest } from "./review/reviewSteps.ts";
 import type { RigInput } from "./rigInput.ts";
 import { countModes, type RigState, solveState } from "./stages/solveLengths.ts";
@@ -78,16 +80,21 @@ export function runRig(input: RigInput, context: StationContext): StationResult<
   const rest = reviewRest([exact, ...stages.map((stage) => stage.end), ...played.states]);
   const { influence } = stages[stages.length - 1].linear;
   const laterStates = played.states.slice(stages[0].begin === null ? 1 : 0);
+  const pulls = reviewPulls(input, rig, finished, played.states);
   findings.push(
     ...findTargetMisses(rig, exact),
     ...rest.findings,
     ...built.findings,
+    ...reviewLimits(rig, played.states, input.rig.limit),
     ...review.findings,
+    ...pulls.findings,
+    ...reviewSlackCloth(played.stages, input.proof.slack),
+    ...reviewTravelAlone(rig, solver, finished),
     ...reviewShift(input, asBuilt),
     ...reviewLean(rig, finished, laterStates),
     ...reviewNotches(rig, finished, influence, roundedLimit),
   );
-  checks.push(...rest.checks, ...built.checks, ...review.checks);
+  checks.push(...rest.checks, ...built.checks, ...review.checks, ...pulls.checks);
   context.onProgress?.(0.97, "sensitivity");
   const sensitivity = measureSensitivity(rig, solver, finished);
   const output = { cables: lines, rig: writeRig(rig, finished), asBuilt, tensioning, sensitivity };

@@ -27,6 +27,10 @@ describe("readings", () => {
     expect(limitOf(rig, move.adjuster)).toBeCloseTo(0.55 * 90, 9);
     expect(stopForce(rig, move)).toBeCloseTo(0.55 * 90, 9);
     expect(stopForce(rig, { ...move, high: 10 })).toBe(10);
+    // A cable is as weak as its end fitting.
+    const [first] = facts.cables!;
+    const fitted = { ...rig, facts: { ...facts, cables: [{ ...first!, minBreakingForce: 184, fitting: 60 }] } };
+    expect(limitOf(fitted, first!.id)).toBeCloseTo(0.55 * 60, 9);
     // Without a capacity there is no limit to hold it to.
     expect(stopForce(rig, { ...move, adjuster: "T2" })).toBe(60);
   });
@@ -103,6 +107,17 @@ describe("lists of the rig", () => {
     });
     expect(t1).toMatchObject({ left_to_shorten_mm: "99.5", left_to_lengthen_mm: "100.5", capacity_kN: "90.0" });
     expect(t2!.capacity_kN).toBe("");
+    expect([t1!.ends, t1!.engagement_at_longest_mm, t1!.weakest_part]).toEqual(["", "", ""]);
+    // both-handed: what is turned out leaves each thread by half; one thread: by all of it
+    const told = (ends: "both" | "single") => {
+      const own = { ends, engagement: 26, weakest: "anchor" as const };
+      return rows(hardwareTable({ ...rig, adjusters: rig.adjusters.map((a) => ({ ...a, ...own })) }))[0]!;
+    };
+    const left = 1000 * rig.adjusters[0]!.range.longest - 1050;
+    expect(told("both")).toMatchObject({ ends: "right and left hand", weakest_part: "anchor" });
+    expect(Number(told("both").engagement_least_mm)).toBeCloseTo(26 + left / 2, 1);
+    expect(told("single")).toMatchObject({ ends: "single", engagement_at_longest_mm: "26.0" });
+    expect(Number(told("single").engagement_least_mm)).toBeCloseTo(26 + left, 1);
     const issued = withRig(sampleFacts({ stop: false }), { issuable: true });
     expect(rows(cableTable(issued))[0]!.status).toBe("no stop open, no default taken");
     expect(rows(cableTable(withRig(sampleFacts(), { issuable: true })))[0]!.status).toBe("NOT FOR ISSUE");
@@ -119,6 +134,25 @@ describe.skipIf(missing.length > 0)(`schedule as another reader finds it${reason
         .join(" ")
         .includes(title),
     );
+
+  test("what the numbers of the plan call for stands before any work, with its signal word, the like of many told once", async () => {
+    const caution = (code: string, where: string, text: string) => ({
+      ...{ code, where, text, level: "caution" as const, station: "rig" as const, value: 1, limit: 1 },
+      ...{ remedy: "do this", basis: "test" },
+    });
+    const spent = ["T1", "T2", "T3", "T4", "T5", "T6"].map((id) =>
+      caution("travel-spent", id, `${id} has little left`),
+    );
+    const alone = caution("travel-alone", "T1", "10 mm taken in at all adjusters adds 34 kN to the 62 kN of T1");
+    const called = { ...facts, findings: [...facts.findings, ...spent, alone] };
+    const bytes = await writeTensioningSchedule(rigFacts(called)!, fonts);
+    const text = textOf(bytes).replace(/\s+/g, " ");
+    expect(text.indexOf("What the numbers of this plan call for")).toBeLessThan(text.indexOf("Before stage 1"));
+    expect(text).toContain("WARNING: 10 mm taken in at all adjusters adds 34 kN to the 62 kN of T1. Do this.");
+    expect(text).toContain("CAUTION: T4 has little left. Do this.");
+    expect(text).toContain("CAUTION: the like holds for T5, T6 (findings sheets).");
+    expect(textOf(await sheets)).not.toContain("What the numbers of this plan call for");
+  });
 
   test("every move stands on its stage's sheets with what to turn, which way, how far, tape, gauge, window and stop", async () => {
     const bytes = await sheets;

@@ -30,13 +30,21 @@ describe("torque at the body", () => {
   test("without friction the work of a turn is force times travel", () => {
     const thread = { diameter: 20, pitch: 2.5 };
     expect(bodyTorque(30, thread, 0) * 2 * Math.PI).toBeCloseTo((30 * 5) / 1000, 12);
+    expect(bodyTorque(30, { ...thread, ends: 1 }, 0) * 2 * Math.PI).toBeCloseTo((30 * 2.5) / 1000, 12);
   });
 });
 
 test("a thread is the one given, else the one named, else the thickest of its pitch, else unknown", () => {
-  expect(threadOf({ ...adjuster, thread: 27 })).toEqual({ diameter: 27, pitch: 3, assumed: false });
-  expect(threadOf(adjuster)).toEqual({ diameter: 24, pitch: 3, assumed: true });
-  expect(threadOf({ ...adjuster, turnbuckle: "job" })).toEqual({ diameter: 27, pitch: 3, assumed: true });
-  expect(threadOf({ ...adjuster, turnbuckle: "open-body-m30" })).toEqual({ diameter: 27, pitch: 3, assumed: true });
+  expect(threadOf({ ...adjuster, thread: 27 })).toEqual({ diameter: 27, pitch: 3, ends: 2, assumed: false });
+  expect(threadOf(adjuster)).toEqual({ diameter: 24, pitch: 3, ends: 2, assumed: true });
+  expect(threadOf({ ...adjuster, turnbuckle: "job" })).toEqual({ diameter: 27, pitch: 3, ends: 2, assumed: true });
+  expect(threadOf({ ...adjuster, turnbuckle: "open-body-m30" })).toEqual({
+    diameter: 27,
+    pitch: 3,
+    ends: 2,
+    assumed: true,
+  });
   expect(threadOf({ ...adjuster, perTurn: 7.3 })).toBeNull();
+  // one thread and a swivel: a turn is one pitch
+  expect(threadOf({ ...adjuster, ends: "single" })).toEqual({ diameter: 64, pitch: 6, ends: 1, assumed: true });
 });

@@ -32,8 +32,9 @@ export function startPins(rig: RigFacts, adjuster: FactsAdjuster): number {
 export function limitOf(rig: RigFacts, id: string): number | null {
   const adjuster = rig.adjusters.find((a) => a.id === id);
   const cable = rig.facts.cables?.find((c) => c.id === id);
-  const weakest = adjuster ? adjuster.capacity : (cable?.minBreakingForce ?? null);
-  return weakest === null ? null : rig.tensioning.limit * weakest;
+  const parts = adjuster ? [adjuster.capacity] : [cable?.minBreakingForce ?? null, cable?.fitting ?? null];
+  const known = parts.filter((kN) => kN !== null);
+  return known.length === 0 ? null : rig.tensioning.limit * Math.min(...known);
 }
 
 /** The reading at which a move is stopped whatever the travel: the top of its window, or the member's limit where that is less. */

@@ -91,11 +91,21 @@ export function travelOf(rig: RigFacts, adjuster: FactsAdjuster) {
   };
 }
 
-/** hardware.csv: one row an adjuster. */
+/** Least thread in the body at each threaded end over the whole sequence, its start too, mm; null where the job does not say. */
+function leastEngaged(rig: RigFacts, adjuster: FactsAdjuster): number | null {
+  if (adjuster.engagement === undefined) return null;
+  const moves = allMoves(rig.tensioning).filter((m) => m.adjuster === adjuster.id);
+  const longest = 1000 * Math.max(adjuster.pinLength, ...moves.flatMap((m) => [m.pinFrom, m.pinTo]));
+  const out = adjuster.range.longest * 1000 - longest;
+  return adjuster.engagement + (adjuster.ends === "single" ? out : out / 2);
+}
+
+/** hardware.csv: one row an adjuster; blank cells are what the job does not say. */
 export function hardwareTable(rig: RigFacts): string {
-  const header = ["adjuster", "anchor", "turnbuckle", "thread_mm", "travel_per_turn_mm", "shortest_mm", "longest_mm"];
+  const header = ["adjuster", "anchor", "turnbuckle", "thread_mm", "ends", "travel_per_turn_mm", "shortest_mm"];
+  header.push("longest_mm", "engagement_at_longest_mm", "engagement_least_mm");
   header.push("start_pin_to_pin_mm", "finished_pin_to_pin_mm", "travel_used_mm", "left_to_shorten_mm");
-  header.push("left_to_lengthen_mm", "target_kN", "capacity_kN", "utilisation_percent", ...TAIL);
+  header.push("left_to_lengthen_mm", "target_kN", "capacity_kN", "weakest_part", "utilisation_percent", ...TAIL);
   const rows = rig.adjusters.map((a): Cell[] => {
     const travel = travelOf(rig, a);
     return [
@@ -103,9 +113,12 @@ export function hardwareTable(rig: RigFacts): string {
       a.anchor,
       typeText(a.turnbuckle),
       maybe(a.thread, 1),
+      a.ends === undefined ? null : a.ends === "both" ? "right and left hand" : "single",
       numberCell(a.perTurn, 2),
       numberCell(a.range.shortest * 1000, 1),
       numberCell(a.range.longest * 1000, 1),
+      maybe(a.engagement, 1),
+      maybe(leastEngaged(rig, a), 1),
       numberCell(travel.start, 1),
       numberCell(travel.finished, 1),
       numberCell(travel.used, 1),
@@ -113,6 +126,7 @@ export function hardwareTable(rig: RigFacts): string {
       numberCell(travel.leftOut, 1),
       numberCell(a.target, 2),
       maybe(a.capacity, 1),
+      a.weakest ?? null,
       a.capacity === null ? null : numberCell((100 * a.target) / a.capacity, 1),
       ...tailOf(rig.facts),
     ];

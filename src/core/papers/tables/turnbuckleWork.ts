@@ -48,15 +48,18 @@ export function turnsText(turns: number): string {
 
 /**
  * The thread an adjuster is taken to have, mm: the one given; else the one its turnbuckle's name tells ("m24") where the pitch
- * agrees; else the thickest coarse thread of the pitch, which asks for most. null where the travel a turn fits none with two ends.
+ * agrees; else the thickest coarse thread of the pitch, which asks for most. null where the travel a turn fits none.
  */
-export function threadOf(adjuster: FactsAdjuster): { diameter: number; pitch: number; assumed: boolean } | null {
-  const pitch = adjuster.perTurn / 2;
-  if (adjuster.thread !== undefined) return { diameter: adjuster.thread, pitch, assumed: false };
+export function threadOf(
+  adjuster: FactsAdjuster,
+): { diameter: number; pitch: number; ends: 1 | 2; assumed: boolean } | null {
+  const ends = adjuster.ends === "single" ? 1 : 2;
+  const pitch = adjuster.perTurn / ends;
+  if (adjuster.thread !== undefined) return { diameter: adjuster.thread, pitch, ends, assumed: false };
   const fitting = COARSE.filter(([, p]) => Math.abs(p - pitch) < 1e-6).map(([d]) => d);
   if (fitting.length === 0) return null;
   const named = Number(/(?:^|[^a-z0-9])m(\d+)(?!\d)/i.exec(adjuster.turnbuckle)?.[1]);
-  return { diameter: fitting.includes(named) ? named : Math.max(...fitting), pitch, assumed: true };
+  return { diameter: fitting.includes(named) ? named : Math.max(...fitting), pitch, ends, assumed: true };
 }
 
 /** The thread in words: "M24", "M24 assumed", or that nothing is known of it. */
@@ -66,13 +69,17 @@ export function threadText(adjuster: FactsAdjuster): string {
 }
 
 /**
- * Torque at the body of a turnbuckle with right- and left-hand ends, kN·m: 2·F·(d2/2)·tan(φ + ρ').
- * @shape force kN; thread diameter and pitch mm
+ * Torque at the body of a turnbuckle, kN·m: F·(d2/2)·tan(φ + ρ') for each of its threads, both turned at once.
+ * @shape force kN; thread diameter and pitch mm; ends: threads in the body, two where left out
  * @source screw with V-thread of 60°: lead angle φ = P/(π d2), tan ρ' = μ/cos 30°, d2 = d − 0.6495 P (ISO 724); textbook
  */
-export function bodyTorque(force: number, thread: { diameter: number; pitch: number }, friction: number): number {
+export function bodyTorque(
+  force: number,
+  thread: { diameter: number; pitch: number; ends?: 1 | 2 },
+  friction: number,
+): number {
   const pitchDiameter = thread.diameter - 0.6495 * thread.pitch;
   const lead = Math.atan(thread.pitch / (Math.PI * pitchDiameter));
   const rub = Math.atan(friction / Math.cos(Math.PI / 6));
-  return (force * pitchDiameter * Math.tan(lead + rub)) / 1000;
+  return (((thread.ends ?? 2) / 2) * force * pitchDiameter * Math.tan(lead + rub)) / 1000;
 }

@@ -10,6 +10,7 @@ import { traceCable } from "../cables/traceCable.ts";
 import type { RigInput } from "../rigInput.ts";
 import { balanceHeads, type HeadPull } from "./balanceHeads.ts";
 import { moveClampedInPlace } from "./edgeShift.ts";
+import { findPinsBehind } from "./pinDirections.ts";
 import {
   addNode,
   holdClampedEdges,
@@ -333,6 +334,6 @@ export function buildRig(input: RigInput): Rig {
     L0: new Float64Array(list.L0),
     panelOf,
     flat: cut,
-    stops: forces.unbalanced ? [forces.unbalanced] : [],
+    stops: [...(forces.unbalanced ? [forces.unbalanced] : []), ...findPinsBehind(input, nodes.xyz, placed)],
   };
 }

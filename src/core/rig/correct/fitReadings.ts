@@ -20,8 +20,11 @@ export interface ReadingTrust {
   length: number;
 }
 
-/** Survey to 3 mm, adjusters within a centimetre (common practice). */
-export const trustDefaults = { place: 0.003, length: 0.01 };
+/**
+ * Survey to 3 mm each way, adjusters within a centimetre (common practice). A bound of ±a is a standard deviation of a/√3
+ * (JCGM 100:2008, 4.3.7, rectangular distribution; from memory).
+ */
+export const trustDefaults = { place: 0.003 / Math.sqrt(3), length: 0.01 };
 
 /** What is known of the lengths before a set of readings: where each adjuster is believed to be, and how firmly. */
 export interface LengthBelief {

@@ -19,9 +19,6 @@ export interface PlayedPlan {
   ways: FactsWay[] | null;
 }
 
-/** Share by which a way's peak may be passed and still count as no higher: less than any gauge shows. */
-const alike = 1e-3;
-
 /** Plays the stages in the best order found; modes: strong tension modes of the rig. */
 export function playPlan(
   decision: RigDecision,
@@ -53,8 +50,8 @@ export function playPlan(
     describeWay("clockwise", rig, plain, end),
     playByForce(decision, rig, solver, stages, context),
   ];
-  // first order may have been wrong: then the plain order it is
-  if (measureHeight(ways[0]) > (1 + alike) * measureHeight(ways[1]))
+  // first order may have been wrong: then the plain order it is, so that no peak is ever higher than the plain order's
+  if (measureHeight(ways[0]) > measureHeight(ways[1]))
     return gather(plain, [{ ...ways[1], way: "chosen" }, ways[1], ways[2]]);
   return gather(chosen, ways);
 }

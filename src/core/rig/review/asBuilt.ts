@@ -3,7 +3,7 @@ import type { FactsAsBuilt } from "../../records/rig.ts";
 import { buildTriangleRoom, measureTriangle } from "../../structure/elements.ts";
 import type { Rig } from "../build/buildRig.ts";
 import type { RigInput } from "../rigInput.ts";
-import { type Places, readForces } from "../stages/readState.ts";
+import { measureSlackCloth, type Places, readForces } from "../stages/readState.ts";
 
 /** Share of the roof's size that a point may move where the job sets no limit. own: sight, not strength */
 const MOVED_SHARE = 1 / 500;
@@ -39,12 +39,10 @@ export function measureAsBuilt(rig: Rig, state: Places, input: Pick<RigInput, "f
   const figures = WAYS.map(() => ({ min: Infinity, mean: 0, max: -Infinity, rmsError: 0 }));
   const own = new Map<string, { area: number; error: [number, number] }>();
   let area = 0;
-  let slack = 0;
   for (let t = 0; t < s.area.length; t++) {
-    const taut = measureTriangle(s, state.x, t, room) === 0;
+    measureTriangle(s, state.x, t, room);
     const a = s.area[t];
     area += a;
-    if (!taut) slack += a;
     const panel = own.get(rig.panelOf[t]) ?? { area: 0, error: [0, 0] };
     own.set(rig.panelOf[t], panel);
     panel.area += a;
@@ -75,7 +73,7 @@ export function measureAsBuilt(rig: Rig, state: Places, input: Pick<RigInput, "f
     displacementMax: measureDisplacement(rig, state.x),
     forces: readForces(rig, state),
     stress: { warp: figures[0], weft: figures[1] },
-    compressedShare: slack / area,
+    compressedShare: measureSlackCloth(rig, state),
     intended: { stress: { ...intended }, forces },
     limits: { ...input.proof, moved },
     panels,

@@ -1,9 +1,9 @@
 // What a person must know of the rig: targets missed, limits passed, travel too short, slack members, poor balance of forces.
 import type { Check, Finding } from "../../problem.ts";
-import type { FactsMove, FactsStage } from "../../records/rig.ts";
+import type { FactsStage } from "../../records/rig.ts";
 import { measureLink } from "../../structure/elements.ts";
-import { measureDistance } from "../../surface/measures.ts";
 import type { Rig } from "../build/buildRig.ts";
+import { findPinsOff } from "../build/pinDirections.ts";
 import type { RigInput } from "../rigInput.ts";
 import { measureEngaged, readAdjusters } from "../stages/readState.ts";
 import { countModes, type RigState } from "../stages/solveLengths.ts";
@@ -30,7 +30,10 @@ export function findTargetMisses(rig: Rig, exact: RigState & { off: number }): F
         where: a.id,
         value: forces[i],
         limit: a.target,
-        text: `${a.id} reaches ${forces[i].toFixed(2)} kN of its target of ${a.target.toFixed(2)} kN: no lengths of the adjusters give all targets at once`,
+        text:
+          forces[i] > slackShare * a.target
+            ? `${a.id} reaches ${forces[i].toFixed(2)} kN of its target of ${a.target.toFixed(2)} kN: no lengths of the adjusters give all targets at once`
+            : `${a.id} cannot go taut: it hangs slack where ${a.target.toFixed(2)} kN are wanted, at any lengths tried`,
         remedy: "put the far pin where the pull of the form points, check the cable forces and the balance of the form",
         basis: "0.5 % before moves are rounded (design)",
       },
@@ -65,10 +68,10 @@ export function reviewRig(
   findings.push(
     ...reviewReach(rig, plan.stages, plan.finished),
     ...reviewThreads(rig, plan.stages),
-    ...reviewPeaks(rig, plan.stages, input.rig.limit),
+    ...reviewSlackAdjusters(rig, plan.stages),
     ...reviewSlackMembers(rig, plan.stages),
     ...reviewModes(rig, plan.singular),
-    ...reviewDirections(input, rig),
+    ...findPinsOff(input, rig.structure.xyz, rig.adjusters),
   );
   for (const a of rig.adjusters) if (a.capacity === null) findings.push(noCapacity(a.id, "turnbuckle"));
   for (const c of rig.cables) if (c.capacity === null) findings.push(noCapacity(c.id, "cable"));
@@ -171,36 +174,9 @@ function reviewThreads(rig: Rig, stages: FactsStage[]): Finding[] {
   });
 }
 
-/** Peaks: no member past its limit at any step, none of the adjusters slack after the first stage. */
-function reviewPeaks(rig: Rig, stages: FactsStage[], limit: number): Finding[] {
+/** Adjusters that hang slack after any step of the stages after the first. */
+function reviewSlackAdjusters(rig: Rig, stages: FactsStage[]): Finding[] {
   const findings: Finding[] = [];
-  let worst: FactsMove | null = null;
-  for (const m of stages.flatMap((s) => s.moves)) if (m.greatest.share > (worst?.greatest.share ?? 0)) worst = m;
-  if (worst && worst.greatest.share > 1) {
-    findings.push({
-      code: "limit-passed",
-      level: "stop",
-      station: "rig",
-      where: worst.greatest.id,
-      value: worst.greatest.kN,
-      limit: worst.greatest.kN / worst.greatest.share,
-      text: `${worst.greatest.id} carries ${worst.greatest.kN.toFixed(1)} kN after step ${worst.step}; its limit is ${(worst.greatest.kN / worst.greatest.share).toFixed(1)} kN (${(100 * limit).toFixed(0)} % of its weakest part, ${nameWeakest(rig, worst.greatest.id)})`,
-      remedy: "take stronger parts or a lower prestress; the engineer decides",
-      basis: "limit as given in the job",
-    });
-  } else if (worst && worst.greatest.share > 0.9) {
-    findings.push({
-      code: "limit-near",
-      level: "caution",
-      station: "rig",
-      where: worst.greatest.id,
-      value: worst.greatest.share,
-      limit: 1,
-      text: `${worst.greatest.id} comes to ${(100 * worst.greatest.share).toFixed(0)} % of its limit at step ${worst.step}`,
-      remedy: "watch its gauge at that step",
-      basis: "limit as given in the job",
-    });
-  }
   for (const s of stages.slice(1))
     for (const a of rig.adjusters) {
       const slack = s.readings?.find((r) => r.forces[a.id] < slackShare * a.target);
@@ -218,14 +194,6 @@ function reviewPeaks(rig: Rig, stages: FactsStage[], limit: number): Finding[] {
         });
     }
   return findings;
-}
-
-/** Whose capacity a member's limit is. */
-function nameWeakest(rig: Rig, id: string): string {
-  const adjuster = rig.adjusters.find((a) => a.id === id);
-  if (adjuster) return adjuster.weakest ?? "none given";
-  const cable = rig.cables.find((c) => c.id === id);
-  return cable && cable.capacity !== cable.minBreakingForce ? "its end fitting" : "the rope";
 }
 
 /** Cables and stays that carry nothing: in the stages after the first, or at the end. */
@@ -276,36 +244,4 @@ function reviewModes(rig: Rig, singular: number[]): Finding[] {
       basis: "singular values of the influence matrix, those above 5 % of the greatest counted",
     },
   ];
-}
-
-/** Far pins that do not lie where the form pulls. */
-function reviewDirections(input: RigInput, rig: Rig): Finding[] {
-  const findings: Finding[] = [];
-  const pulls = new Map(input.form.reactions.map((r) => [r.anchor, r.force]));
-  for (const a of rig.adjusters) {
-    const pull = pulls.get(a.anchor);
-    const support = input.supports[a.anchor];
-    if (!pull || !support) continue;
-    const at: [number, number, number] = [0, 1, 2].map((i) => rig.structure.xyz[3 * a.nodes[0] + i]) as [
-      number,
-      number,
-      number,
-    ];
-    const far = measureDistance(at, support);
-    const cos = [0, 1, 2].reduce((sum, i) => sum - (pull[i] / a.target) * ((support[i] - at[i]) / far), 0);
-    const angle = (Math.acos(Math.min(1, Math.max(-1, cos))) * 180) / Math.PI;
-    if (angle > 3)
-      findings.push({
-        code: "pin-direction",
-        level: "caution",
-        station: "rig",
-        where: a.id,
-        value: angle,
-        limit: 3,
-        text: `the far pin of ${a.id} lies ${angle.toFixed(1)}° off the line of the form's pull`,
-        remedy: "move the pin into the line of pull, or let the form be found with the pin where it is",
-        basis: "own argument: the corner would move until it lines up",
-      });
-  }
-  return findings;
 }

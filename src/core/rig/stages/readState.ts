@@ -1,6 +1,6 @@
 // What a gauge, a tape and a survey read in a state of the rig.
 import type { FactsMove, Turnbuckle } from "../../records/rig.ts";
-import { measureLink } from "../../structure/elements.ts";
+import { buildTriangleRoom, measureLink, measureTriangle } from "../../structure/elements.ts";
 import { vertexAt } from "../../surface/measures.ts";
 import type { Vec3 } from "../../surface/surface.ts";
 import type { Rig, RigCable } from "../build/buildRig.ts";
@@ -75,6 +75,18 @@ export function readForces(rig: Rig, state: Places): Record<string, number> {
 export function readCorners(rig: Rig, state: Places): Record<string, Vec3> {
   const surface = { xyz: state.x, tri: new Uint32Array(0) };
   return Object.fromEntries(rig.adjusters.map((a) => [a.id, vertexAt(surface, a.nodes[0])]));
+}
+
+/** Share of the cloth, by flat area, that is wrinkled or slack in a state. */
+export function measureSlackCloth(rig: Rig, state: Places): number {
+  const { structure: s } = rig;
+  const room = buildTriangleRoom();
+  let [slack, whole] = [0, 0];
+  for (let t = 0; t < s.area.length; t++) {
+    whole += s.area[t];
+    if (measureTriangle(s, state.x, t, room) !== 0) slack += s.area[t];
+  }
+  return whole > 0 ? slack / whole : 0;
 }
 
 /** What a tape reads between the pins of adjuster i: its stretched length, or its own length where it hangs slack. */

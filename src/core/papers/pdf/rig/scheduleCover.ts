@@ -22,6 +22,7 @@ import {
   openFlow,
   tableHeight,
 } from "../layout/table.ts";
+import { flowCalledInPlace } from "./scheduleCalled.ts";
 
 /** Size of running text, pt. */
 export const BODY = 10;
@@ -44,6 +45,7 @@ export function flowCover(book: Book, rig: RigFacts): void {
   flowHeadingInPlace(flow, "Limits for the day");
   flowTableInPlace(flow, LIMIT_COLUMNS, rows, { size: LARGE });
   flowTorqueInPlace(flow, rig);
+  flowCalledInPlace(flow, rig, BODY);
   flowHeadingInPlace(flow, "Cautions from the first step to the last");
   flowCautionsInPlace(flow, cautionsOf(rig.facts, "schedule"), BODY);
 }
