@@ -21,6 +21,24 @@ const WATCH = `(() => {
   requestAnimationFrame(tick);
 })()`;
 
+/** Before the page starts: what the worker that redraws says it took, and when it was asked and heard. */
+const HEAR = `(() => {
+  window.heard = [];
+  const Own = Worker;
+  window.Worker = class extends Own {
+    constructor(...given) {
+      super(...given);
+      this.addEventListener("message", ({ data }) => {
+        if (data.kind === "dragged") window.heard.push({ ms: data.ms, asked: this.asked, heard: performance.now() });
+      });
+    }
+    postMessage(data, ...more) {
+      if (data.kind === "drag") this.asked = performance.now();
+      super.postMessage(data, ...more);
+    }
+  };
+})()`;
+
 const medianOf = (all: readonly number[]) => [...all].sort((a, b) => a - b)[all.length >> 1];
 
 interface Seen {
@@ -35,6 +53,8 @@ export async function benchSlide(jobPath: string, meshPath: string) {
   const bench = await setUp();
   try {
     const { page } = await bench.open();
+    await page.addInitScript(HEAR);
+    await page.reload();
     page.setDefaultTimeout(300_000);
     const job = { ...JSON.parse(readFileSync(jobPath, "utf8")), nest: { steps: 5 } };
     job.mesh.file = basename(meshPath);
@@ -46,6 +66,8 @@ export async function benchSlide(jobPath: string, meshPath: string) {
     await turnTo(page, "Seams");
     const grips = page.getByRole("slider");
     await grips.first().waitFor();
+    // as long as a hand takes to get there
+    await page.waitForTimeout(4000);
     const middle = 2 * Math.floor((await grips.count()) / 4);
     const [a, b] = await Promise.all([middle, middle + 2].map((i) => grips.nth(i).boundingBox()));
     if (a === null || b === null) throw new Error("no grips");
@@ -66,6 +88,7 @@ export async function benchSlide(jobPath: string, meshPath: string) {
     await drawnAfter(0);
     await page.waitForTimeout(500);
     await page.evaluate("(window.seen.long.length = 0, window.seen.gaps.length = 0)");
+    await page.evaluate("window.heard.length = 0");
     const times: number[] = [];
     for (let k = 1; k <= MOVES; k++) {
       const share = STEP * (k < 14 ? k : 26 - k);
@@ -76,6 +99,7 @@ export async function benchSlide(jobPath: string, meshPath: string) {
       times.push(now.shown - now.moved);
     }
     const during = await seen();
+    const heard = await page.evaluate<{ ms: number; asked: number; heard: number }[]>("window.heard");
     const begin = await page.evaluate<number>("performance.now()");
     await page.mouse.up();
     await page
@@ -87,6 +111,8 @@ export async function benchSlide(jobPath: string, meshPath: string) {
     const tie = (await page.evaluate<number>("performance.now()")) - begin;
     return {
       redraw: medianOf(times),
+      worker: medianOf(heard.map((h) => h.ms)),
+      sent: medianOf(heard.map((h) => h.heard - h.asked - h.ms)),
       worst: Math.max(...times),
       longestTask: Math.max(0, ...during.long),
       longestFrame: Math.max(...during.gaps),

@@ -3,6 +3,7 @@
 import { measureLayout } from "../../core/plan/compareLayouts.ts";
 import {
   dragSeamInPlace,
+  type Grip,
   listGrips,
   type MadeRoof,
   openDrag,
@@ -20,6 +21,11 @@ let roof: MadeRoof | null = null;
 let drag: SeamDrag | null = null;
 let port: MessagePort | null = null;
 
+/** How often, and for how long at most (ms), a seam is slid to where it is, unseen, before the first hand takes one. */
+const WARM = { moves: 40, ms: 4000 };
+let warmed = 0;
+let warming: ReturnType<typeof setTimeout> | undefined;
+
 function post(reply: DragReply): void {
   self.postMessage(reply);
 }
@@ -34,12 +40,35 @@ function takeUp(next: SentRoof): void {
   } catch (error) {
     if (!(error instanceof PlanError)) throw error;
   }
-  post({ kind: "grips", run, grips: drag === null ? [] : listGrips(drag) });
+  const grips = drag === null ? [] : listGrips(drag);
+  post({ kind: "grips", run, grips });
+  const one = grips[grips.length >> 1];
+  if (one !== undefined) warmUp(one, performance.now());
+}
+
+/**
+ * A worker's code is slow until the browser has seen it run some dozen times, and a hand would feel that. So the seam in the middle is
+ * slid to where it lies, once a turn so that whatever is asked meanwhile goes first; the first true move ends it.
+ */
+function warmUp(grip: Grip, begin: number): void {
+  clearTimeout(warming);
+  if (warmed >= WARM.moves || performance.now() - begin > WARM.ms) return;
+  warming = setTimeout(() => {
+    warmed++;
+    try {
+      if (drag !== null) seeDragged(dragSeamInPlace(drag, grip.weld, grip.ends), grip.weld);
+    } catch (error) {
+      if (!(error instanceof PlanError)) throw error;
+      return;
+    }
+    warmUp(grip, begin);
+  });
 }
 
 function redraw(request: Extract<DragRequest, { kind: "drag" }>): void {
   const { weld, to } = request;
   if (request.run !== run || drag === null) return;
+  clearTimeout(warming);
   const begin = performance.now();
   try {
     const seen = seeDragged(dragSeamInPlace(drag, weld, to), weld);
