@@ -8,17 +8,24 @@ interface Common {
   path: string;
   /** Whether the job itself gives the value. */
   given: boolean;
+  /** Nothing holds where the job gives nothing, so no default is marked: what stands in the empty field says so. */
+  open?: boolean;
   /** What the value does or stands on, in a few words. */
   hint?: string | undefined;
 }
 
+/** Marks what a default decides. */
+function Taken({ given, open = false }: Pick<Common, "given" | "open">) {
+  return given || open ? null : <span className="taken"> default</span>;
+}
+
 function Frame(props: Common & { id: string; fault?: string | null; children: React.ReactNode }) {
-  const { id, label, path, given, hint, fault, children } = props;
+  const { id, label, path, hint, fault, children } = props;
   return (
     <div className="field" data-path={path}>
       <label htmlFor={id}>
         {label}
-        {!given && <span className="taken"> default</span>}
+        <Taken {...props} />
       </label>
       <div className="entry">{children}</div>
       {hint !== undefined && (
@@ -145,7 +152,7 @@ export function SwitchField(props: Common & { value: boolean; onChange: (value: 
       <input id={id} type="checkbox" checked={value} onChange={(e) => onChange(e.target.checked)} />
       <label htmlFor={id}>
         {label}
-        {!given && <span className="taken"> default</span>}
+        <Taken given={given} />
       </label>
       {hint !== undefined && <p className="hint">{hint}</p>}
     </div>

@@ -18,6 +18,7 @@ const OF_KEY: Record<string, Leaf> = {
   anchors: "form",
   warp: "form",
   survey: "site",
+  clothCut: "site",
   seams: "seams",
   panels: "panels",
   fabric: "panels",
@@ -27,6 +28,7 @@ const OF_KEY: Record<string, Leaf> = {
   rolls: "rolls",
   nest: "rolls",
   rig: "rig",
+  proof: "rig",
   papers: "papers",
   title: "papers",
   issue: "papers",
@@ -53,6 +55,8 @@ export function jumpTo(leaf: Leaf, where: string): void {
       fields.find((f) => where !== "" && f.dataset.path?.startsWith(`${where}.`));
     const entry = field?.querySelector<HTMLElement>("input, select, button");
     const goal = entry ?? document.querySelector<HTMLElement>("main h1");
+    // what is folded away can take no focus
+    for (let fold = goal?.closest("details"); fold; fold = fold.parentElement?.closest("details")) fold.open = true;
     goal?.scrollIntoView({ block: "center" });
     goal?.focus();
   });

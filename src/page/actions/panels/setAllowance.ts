@@ -6,7 +6,7 @@ import { placeInJob } from "../placeInJob.ts";
 export function setAllowance(
   project: Project,
   args: {
-    key: "seam" | "seamOn" | "pocket" | "pocketStrip" | "clamp" | "hem";
+    key: "seam" | "seamOn" | "pocket" | "pocketStrip" | "cover" | "clamp" | "hem";
     value: string | number | boolean | undefined;
   },
 ): Project {

@@ -5,7 +5,7 @@ import { placeInJob } from "../placeInJob.ts";
 /** The act. */
 export function setPapers(
   project: Project,
-  args: { key: "date" | "drawnBy" | "checkedBy" | "sheet" | "units"; value: string | undefined },
+  args: { key: "date" | "drawnBy" | "checkedBy" | "supersedes" | "sheet" | "units"; value: string | undefined },
 ): Project {
   return placeInJob(project, ["papers", args.key], args.value);
 }

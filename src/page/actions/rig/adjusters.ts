@@ -10,12 +10,15 @@ function listAdjusters(project: Project, standing: Standing): Adjuster[] {
   return project.job.rig?.adjusters ?? standing.map(({ id, anchor }) => ({ name: id, anchor }));
 }
 
-/** Turnbuckle of one adjuster, of the catalogue or its own, or its stiffness EA, kN; undefined: the default. */
+/**
+ * Turnbuckle of one adjuster, of the catalogue or its own; its stiffness EA, or what its fitting or its anchor carries, kN; undefined:
+ * the default, or not given.
+ */
 export function setAdjuster(
   project: Project,
   args: {
     adjuster: string;
-    key: "turnbuckle" | "EA";
+    key: "turnbuckle" | "EA" | "fitting" | "anchorCapacity";
     value: Adjuster["turnbuckle"] | Adjuster["EA"];
     standing: Standing;
   },

@@ -6,8 +6,8 @@ import { placeInJob } from "../placeInJob.ts";
 export function setLayout(
   project: Project,
   args: {
-    key: "layout" | "from" | "to" | "count" | "maxWidth" | "minWidth" | "maxLength" | "why";
-    value: string | number | undefined;
+    key: "layout" | "from" | "to" | "count" | "maxWidth" | "minWidth" | "maxLength" | "why" | "doubleCloth";
+    value: string | number | boolean | undefined;
   },
 ): Project {
   const other = ["layout", "from", "to", "count"].includes(args.key);

@@ -1,7 +1,7 @@
 // What can be decided about the edges: what each is, the force and the cable of it.
 import cables from "../../../../templates/cables.json";
 import { setCableFigure } from "../../actions/form/setCableFigure.ts";
-import { setEdge } from "../../actions/form/setEdge.ts";
+import { setEdge, setTerminal } from "../../actions/form/setEdge.ts";
 import { ChoiceField, NumberField, SwitchField } from "../../parts/Fields.tsx";
 import { figure } from "../../parts/figure.ts";
 import { act, bookStore } from "../../store/bookStore.ts";
@@ -27,6 +27,49 @@ const FIGURES = [
 ] as const;
 
 type EdgeWord = NonNullable<Project["job"]["edges"]>[string];
+
+const MAKING = [
+  { key: "stretch", label: "Grows for good", unit: "%", factor: 0.01, hint: "of its length" },
+  { key: "fitting", label: "End fitting carries", unit: "kN", factor: 1, hint: undefined },
+  { key: "clamps", label: "A clamp every", unit: "mm", factor: 1, hint: undefined },
+] as const;
+
+/** How the cable is made; folded away until something of it is given. */
+function Making({ edge, own }: { edge: string; own: EdgeWord | undefined }) {
+  const given = own?.terminals !== undefined || MAKING.some(({ key }) => own?.[key] !== undefined);
+  return (
+    <details className="made" open={given}>
+      <summary>How the cable is made</summary>
+      {([0, 1] as const).map((end) => (
+        <NumberField
+          key={end}
+          label={`${end === 0 ? "First" : "Last"} end fitting takes off`}
+          path={`edges.${edge}.terminals[${end}]`}
+          given={own?.terminals !== undefined}
+          value={own?.terminals?.[end] ?? null}
+          none="0"
+          unit="mm"
+          onChange={(value) => act(setTerminal, { edge, end, value }, `end fitting of ${edge}`)}
+        />
+      ))}
+      {MAKING.map(({ key, label, unit, factor, hint }) => (
+        <NumberField
+          key={key}
+          label={label}
+          path={`edges.${edge}.${key}`}
+          given={own?.[key] !== undefined}
+          value={own?.[key] ?? null}
+          none="not given"
+          open
+          unit={unit}
+          factor={factor}
+          hint={hint}
+          onChange={(value) => act(setEdge, { edge, key, value }, `${label.toLowerCase()} of ${edge}`)}
+        />
+      ))}
+    </details>
+  );
+}
 
 function Cable({ edge, own }: { edge: string; own: EdgeWord | undefined }) {
   const type = useBook((b) => b.facts?.cables?.find((c) => c.edge === edge)?.type);
@@ -60,11 +103,13 @@ function Cable({ edge, own }: { edge: string; own: EdgeWord | undefined }) {
             given={inline[key] !== undefined}
             value={inline[key] ?? null}
             none="not given"
+            open
             unit={unit}
             hint={hint}
             onChange={(value) => act(setCableFigure, { edge, key, value }, `${label} of the cable of ${edge}`)}
           />
         ))}
+      <Making edge={edge} own={own} />
       <SwitchField
         label="Prestretched"
         path={`edges.${edge}.prestretched`}

@@ -1,10 +1,9 @@
 // Form: is this surface in balance, at which forces?
 import type { Facts } from "../../../core/records/facts.ts";
 import { setMeshWord } from "../../actions/form/setMeshWord.ts";
-import { setPrestress } from "../../actions/form/setPrestress.ts";
 import { setSettle } from "../../actions/form/setSettle.ts";
 import { FieldPicker } from "../../parts/FieldPicker.tsx";
-import { ChoiceField, NumberField, SwitchField } from "../../parts/Fields.tsx";
+import { ChoiceField, SwitchField } from "../../parts/Fields.tsx";
 import { type FigureRow, FigureTable } from "../../parts/FigureTable.tsx";
 import { figure } from "../../parts/figure.ts";
 import { Waiting } from "../../parts/Waiting.tsx";
@@ -15,25 +14,14 @@ import { useShownFacts, useShownFields } from "../../store/useShown.ts";
 import { LeafFrame } from "../LeafFrame.tsx";
 import { AnchorDecisions } from "./AnchorDecisions.tsx";
 import { EdgeDecisions } from "./EdgeDecisions.tsx";
+import { PrestressDecisions } from "./PrestressDecisions.tsx";
 
 function FormDecisions() {
-  const job = useBook((b) => b.job);
   const given = useBook((b) => b.project?.job);
   if (given === undefined) return null;
-  const prestress = (way: "warp" | "weft") => (
-    <NumberField
-      label={way === "warp" ? "Prestress along the warp" : "Prestress along the weft"}
-      path={`prestress.${way}`}
-      given={given.prestress?.[way] !== undefined}
-      value={job?.prestress[way] ?? given.prestress?.[way] ?? null}
-      unit="kN/m"
-      onChange={(value) => act(setPrestress, { way, value }, `prestress ${way}`)}
-    />
-  );
   return (
     <>
-      {prestress("warp")}
-      {prestress("weft")}
+      <PrestressDecisions />
       <SwitchField
         label="Settle the mesh into balance first"
         path="settle"

@@ -11,6 +11,7 @@ import { ClothDecisions } from "./ClothDecisions.tsx";
 const LENGTHS = [
   { key: "seam", label: "Overlap of a seam", hint: "finished" },
   { key: "pocket", label: "Cable pocket", hint: "beyond the fold" },
+  { key: "cover", label: "Cover strips over cables inside the cloth", hint: "wide; 0: none" },
   { key: "clamp", label: "Set-back at clamped edges", hint: "takes cloth away" },
   { key: "hem", label: "Hem at free edges", hint: undefined },
 ] as const;
@@ -74,6 +75,7 @@ function OnePanel() {
         given={given?.[panel.id]?.batch !== undefined}
         value={given?.[panel.id]?.batch ?? ""}
         none="any"
+        open
         onChange={(value) => act(setPanel, { panel: panel.id, key: "batch", value }, `batch of ${panel.id}`)}
       />
     </>
@@ -129,6 +131,7 @@ export function PanelDecisions() {
           given={typeof given.decompensation?.[key] === "number"}
           value={given.decompensation?.[key] ?? null}
           none="not taken back"
+          open
           unit="m"
           onChange={(value) => act(setDecompensation, { key, value }, `compensation taken back along ${label}`)}
         />

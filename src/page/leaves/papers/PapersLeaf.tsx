@@ -119,13 +119,14 @@ function PaperDecisions() {
   const given = useBook((b) => b.project?.job);
   if (given === undefined) return null;
   const papers = given.papers ?? {};
-  const line = (key: "date" | "drawnBy" | "checkedBy", label: string) => (
+  const line = (key: "date" | "drawnBy" | "checkedBy" | "supersedes", label: string) => (
     <TextField
       label={label}
       path={`papers.${key}`}
       given={papers[key] !== undefined}
       value={papers[key] ?? ""}
       none="left open"
+      open
       onChange={(value) => act(setPapers, { key, value }, label.toLowerCase())}
     />
   );
@@ -145,6 +146,7 @@ function PaperDecisions() {
         value={given.issue ?? "A"}
         onChange={(value) => act(setHead, { key: "issue", value }, "issue letter")}
       />
+      {line("supersedes", "Takes the place of issue")}
       {line("date", "Date")}
       {line("drawnBy", "Drawn by")}
       {line("checkedBy", "Checked by")}

@@ -14,6 +14,11 @@ const FIGURES = [
   { key: "capacity", label: "Capacity", unit: "kN" },
 ] as const;
 
+const CARRIED = [
+  { key: "fitting", label: "Fitting" },
+  { key: "anchorCapacity", label: "Anchor" },
+] as const;
+
 function Adjuster({ one: a, standing }: { one: FactsAdjuster; standing: readonly FactsAdjuster[] }) {
   const given = useBook((b) => b.project?.job.rig?.adjusters?.find((g) => g.name === a.id));
   const chosen = useBook((b) => b.chosen === a.id);
@@ -21,8 +26,11 @@ function Adjuster({ one: a, standing }: { one: FactsAdjuster; standing: readonly
   const inline = typeof own === "object" ? own : null;
   const standingOwn = { perTurn: a.perTurn, shortest: 1000 * a.range.shortest, longest: 1000 * a.range.longest };
   const path = `rig.adjusters.${a.id}`;
-  const change = (key: "turnbuckle" | "EA", value: Parameters<typeof setAdjuster>[1]["value"], words: string) =>
-    act(setAdjuster, { adjuster: a.id, key, value, standing }, `${words} of ${a.id}`);
+  const change = (
+    key: "turnbuckle" | "EA" | "fitting" | "anchorCapacity",
+    value: Parameters<typeof setAdjuster>[1]["value"],
+    words: string,
+  ) => act(setAdjuster, { adjuster: a.id, key, value, standing }, `${words} of ${a.id}`);
   return (
     <fieldset
       className={chosen ? "edge lit" : "edge"}
@@ -55,6 +63,7 @@ function Adjuster({ one: a, standing }: { one: FactsAdjuster; standing: readonly
             given={inline[key] !== undefined}
             value={inline[key] ?? null}
             none="not given"
+            open
             unit={unit}
             onChange={(value) => {
               const { [key]: former, ...rest } = inline;
@@ -76,6 +85,19 @@ function Adjuster({ one: a, standing }: { one: FactsAdjuster; standing: readonly
         unit="kN"
         onChange={(value) => change("EA", value, "EA")}
       />
+      {CARRIED.map(({ key, label }) => (
+        <NumberField
+          key={key}
+          label={`${label} of ${a.id} carries`}
+          path={`${path}.${key}`}
+          given={given?.[key] !== undefined}
+          value={given?.[key] ?? null}
+          none="not given"
+          open
+          unit="kN"
+          onChange={(value) => change(key, value, `capacity of the ${label.toLowerCase()}`)}
+        />
+      ))}
       <button
         type="button"
         onClick={() => act(removeAdjuster, { adjuster: a.id, standing }, `adjuster ${a.id} removed`)}
@@ -135,6 +157,7 @@ function Supports() {
           given={typeof one[key] === "number"}
           value={one[key] ?? null}
           none={none}
+          open={none === "not given"}
           unit="kN"
           onChange={(value) => act(setSupport, { list, index, key, value }, `${label} of ${one.name}`)}
         />

@@ -6,6 +6,7 @@ import { NumberField, readNumber, TextField } from "../../parts/Fields.tsx";
 import { act, notify } from "../../store/bookStore.ts";
 import { useBook } from "../../store/useBook.ts";
 import { AdjusterDecisions } from "./AdjusterDecisions.tsx";
+import { ProofDecisions } from "./ProofDecisions.tsx";
 
 const percent = (shares: readonly number[]) => shares.map((s) => String(Number((100 * s).toPrecision(6)))).join(" ");
 
@@ -64,6 +65,17 @@ export function RigDecisions() {
         unit="%"
         onChange={(value) => act(setReadingError, { value }, "error of readings")}
       />
+      <NumberField
+        label="Expansion by heat of what the anchors stand on"
+        path="rig.frameAlpha"
+        given={given?.frameAlpha !== undefined}
+        value={given?.frameAlpha ?? rig?.frameAlpha ?? null}
+        factor={1e-6}
+        unit="10⁻⁶/K"
+        hint="0: the anchors stay where they are; steel about 12"
+        onChange={(value) => act(setRigFigure, { key: "frameAlpha", value }, "expansion of the frame")}
+      />
+      <ProofDecisions />
       <AdjusterDecisions />
     </>
   );

@@ -2,7 +2,7 @@
 import { useEffect } from "react";
 import { setLayout } from "../../actions/seams/setLayout.ts";
 import { PairSheet } from "../../flat/PairSheet.tsx";
-import { ChoiceField, NumberField, TextField } from "../../parts/Fields.tsx";
+import { ChoiceField, NumberField, SwitchField, TextField } from "../../parts/Fields.tsx";
 import { FigureTable } from "../../parts/FigureTable.tsx";
 import { figure } from "../../parts/figure.ts";
 import { Waiting } from "../../parts/Waiting.tsx";
@@ -93,6 +93,7 @@ function SeamDecisions() {
         given={given?.minWidth !== undefined}
         value={given?.minWidth ?? null}
         none="not stated"
+        open
         unit="mm"
         hint="flat, without allowances"
         onChange={(value) => act(setLayout, { key: "minWidth", value }, "narrowest panel")}
@@ -105,6 +106,13 @@ function SeamDecisions() {
         none="roll length"
         unit="mm"
         onChange={(value) => act(setLayout, { key: "maxLength", value }, "longest panel")}
+      />
+      <SwitchField
+        label="Laps count as two layers of cloth"
+        path="seams.doubleCloth"
+        given={given?.doubleCloth !== undefined}
+        value={given?.doubleCloth ?? false}
+        onChange={(value) => act(setLayout, { key: "doubleCloth", value: value ? true : undefined }, "double cloth")}
       />
       {given?.why !== undefined && (
         <TextField

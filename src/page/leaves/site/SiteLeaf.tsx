@@ -13,6 +13,7 @@ import { useBook } from "../../store/useBook.ts";
 import { LeafFrame } from "../LeafFrame.tsx";
 import { Corrections } from "./Corrections.tsx";
 import { ReadingEntry } from "./ReadingEntry.tsx";
+import { SurveyDecisions } from "./SurveyDecisions.tsx";
 
 /** Limits the papers print, by the key they are read under. */
 const LIMITS = [
@@ -37,6 +38,7 @@ function SiteLimits() {
           given={site?.[key] !== undefined}
           value={typeof site?.[key] === "number" ? site[key] : null}
           none="not given"
+          open
           unit={unit}
           onChange={(value) => act(setSiteLimit, { key, value }, label.toLowerCase())}
         />
@@ -47,6 +49,7 @@ function SiteLimits() {
         given={site?.overnight !== undefined}
         value={String(site?.overnight ?? "")}
         none="not given"
+        open
         onChange={(value) => act(setSiteLimit, { key: "overnight", value }, "state overnight")}
       />
     </>
@@ -159,6 +162,7 @@ export function SiteLeaf() {
         <>
           <CautionList paper="schedule" />
           <SiteLimits />
+          <SurveyDecisions />
         </>
       }
     />
