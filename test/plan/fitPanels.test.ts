@@ -114,6 +114,20 @@ describe("room on the cloth", () => {
     },
   );
 
+  test("fewer strips that were cut on the way and came out too wide are told with their width", () => {
+    // three strips of 2.4 m fill the cloth, but not with the pockets of the outer ones
+    const form = makeForm(makeGrid(24, 12, (u, v) => [12 * u, 7.2 * v, 0.02 * u * v]));
+    const cables = { ...form, edges: form.edges.map((e) => ({ ...e, kind: "cable" as const })) };
+    const job = onCloth(makeJob({ layout: "bands", from: "E4", to: "E2" }), 2500);
+    const { seams } = fitOn(cables, job);
+    const [choice] = seams.output.choices;
+    expect(choice.count).toBe(4);
+    expect(choice.why).toMatch(
+      / 3 strips from E4 to E2 were cut too: up to 25\d\d mm wide, flap of 100 mm included, of 2450 mm usable\./,
+    );
+    expect(fitOn(form, job).seams.output.choices[0].why).not.toContain("were cut too");
+  });
+
   test("panels longer than the roll, the job's own limit or the table are cut across until the cut ones fit", () => {
     const form = makeForm(makeGrid(24, 24, (u, v) => [12 * u, 9 * v, u * v]));
     const rolls = onCloth(makeJob(), 2500, 7000);

@@ -13,6 +13,7 @@ import { type ClothRoom, firstOptions, isTurned, measureExtent, measureRoom } fr
 import { joinRows, measureRows } from "./compareLayouts.ts";
 import { easeStress, measureStressExcess } from "./easeStress.ts";
 import type { Fitted, RunBoth } from "./fitted.ts";
+import { tellTooWide } from "./tellTooWide.ts";
 
 /** Layouts tried for the sake of the width before the best one stands. */
 const ROUNDS = 6;
@@ -163,6 +164,7 @@ function fitAll(runBoth: RunBoth, job: Job, withCount: (count: number) => RunBot
 /** Lays out, flattens and outlines until every panel fits the room, widths are alike and the stress error is in bounds. */
 export function fitPanels(form: FoundForm, job: Job, context: FitContext): Fitted {
   const measured: LayoutRow[] = [];
+  const tried: Fitted[] = [];
   let weighed: LayoutRow[] = [];
   const runAs =
     (asked: Job): RunBoth =>
@@ -174,13 +176,15 @@ export function fitPanels(form: FoundForm, job: Job, context: FitContext): Fitte
       if (weighed.length === 0) weighed = seams.output.compared ?? [];
       const fitted = { seams, panels, options };
       measured.push(...measureRows(fitted));
+      if (asked === job) tried.push(fitted);
       return fitted;
     };
   const fitted = fitAll(runAs(job), job, (count) => runAs({ ...job, seams: { ...job.seams, count } }));
   const narrow = noteNarrow(fitted, job.seams.minWidth ?? null);
   const compared = joinRows(measureRows(fitted), measured, weighed);
   const findings = [...fitted.seams.findings, ...narrow];
-  return { ...fitted, seams: { ...fitted.seams, findings, output: { ...fitted.seams.output, compared } } };
+  const choices = tellTooWide(fitted, tried, measureRoom(job));
+  return { ...fitted, seams: { ...fitted.seams, findings, output: { ...fitted.seams.output, compared, choices } } };
 }
 
 /** Panels narrower than the job allows. */
