@@ -23,6 +23,34 @@ describe("cutOrder", () => {
     expect(cutOrder(pieces, 4000)).toEqual({ order: ["a", "long", "b"], feeds: [0, 4000, 8000] });
   });
 
+  it("feeds two long pieces side by side once, and forward only, whatever lies beside them", () => {
+    // bug: fed to the end of the first, then back to the beginning of the second
+    const pieces = [
+      piece("l1", 0, 9000),
+      piece("l2", 0, 7000, 900),
+      piece("c", 3500, 6000, 1800),
+      piece("d", 7200, 8000),
+    ];
+    expect(cutOrder(pieces, 4000)).toEqual({ order: ["c", "l2", "d", "l1"], feeds: [0, 3500, 7200] });
+    const one = fc.record({ x: fc.integer({ min: 0, max: 20_000 }), length: fc.integer({ min: 10, max: 15_000 }) });
+    fc.assert(
+      fc.property(fc.array(one, { minLength: 1, maxLength: 15 }), (list) => {
+        const own = list.map(({ x, length }, k) => piece(`p${k}`, x, x + length, k));
+        const { feeds } = cutOrder(own, 4000);
+        for (let k = 1; k < feeds.length; k++) expect(feeds[k]).toBeGreaterThan(feeds[k - 1]);
+        for (const p of own) {
+          // whole on one table length, or on every one it runs over without a gap
+          const whole = feeds.some((x) => x <= p.x0 && p.x1 <= x + 4000);
+          if (p.x1 - p.x0 <= 4000) expect(whole, p.id).toBe(true);
+          let cut = p.x0;
+          for (const x of feeds) if (x <= cut) cut = Math.max(cut, Math.min(p.x1, x + 4000));
+          expect(cut, p.id).toBe(p.x1);
+        }
+      }),
+      { seed: 7, numRuns: 200 },
+    );
+  });
+
   it("cuts each piece once, whole on the table at its feed where it fits at all", () => {
     const one = fc.record({ x: fc.integer({ min: 0, max: 20_000 }), length: fc.integer({ min: 10, max: 4000 }) });
     fc.assert(

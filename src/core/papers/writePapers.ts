@@ -51,7 +51,7 @@ function allCutFiles(facts: Facts, wants: Wants): PaperFile[] {
   const ids = (list: readonly { id: string }[]) => list.map((e) => e.id);
   return [
     ...cutFiles("rolls", ids(rolls), (i) => rollDrawing(facts, rolls[i]), wants),
-    ...cutFiles("bites", ids(bites), (i) => rollDrawing(facts, bites[i].roll, bites[i].words), wants),
+    ...cutFiles("bites", ids(bites), (i) => rollDrawing(facts, bites[i].roll, bites[i].words, bites[i].before), wants),
     ...cutFiles("panels", ids(panels), (i) => panelDrawing(facts, panels[i]), wants),
   ];
 }

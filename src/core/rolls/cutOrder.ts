@@ -1,5 +1,6 @@
 // In which order the pieces of a roll are cut, and where the cloth is fed on the table. Does not: nest, or divide pieces.
-// Source: common practice: from the free end towards the roll, so that what is not yet cut stays one web and keeps the cloth lying.
+// Source: common practice: from the free end towards the roll, so that what is not yet cut stays one web and keeps the cloth lying;
+// the table feeds forward only.
 
 /** A piece on the roll: where it begins and ends along it, and its lower edge. */
 export interface CutPiece {
@@ -13,28 +14,23 @@ export interface CutPiece {
 const HAIR = 1e-6;
 
 /**
- * Ids in cutting order, and the places along the roll that are fed to the table's beginning, one after the other. Each piece is
- * cut whole within one bite; one that is longer than the bite is fed on along its length.
+ * Ids in cutting order, and the places along the roll that are fed to the table's beginning, rising. A piece is cut whole while all
+ * of it lies on the table; one longer than the bite is cut up to each next feed, beside whatever else lies there, and is done where
+ * its end lies on the table.
  * @param bite length of cloth the table takes at once, null for all of it
  * @units mm
  */
 export function cutOrder(pieces: CutPiece[], bite: number | null): { order: string[]; feeds: number[] } {
   const rising = [...pieces].sort((a, b) => a.x1 - b.x1 || a.y0 - b.y0 || (a.id < b.id ? -1 : 1));
-  if (bite === null) return { order: rising.map((p) => p.id), feeds: [] };
-  const order: string[] = [];
+  if (bite === null || pieces.length === 0) return { order: rising.map((p) => p.id), feeds: [] };
   const feeds: number[] = [];
   let left = rising;
-  while (left.length > 0) {
-    const at = Math.min(...left.map((p) => p.x0));
-    // A piece longer than the bite may begin where the table lies already.
-    if (at !== feeds.at(-1)) feeds.push(at);
-    const fits = left.filter((p) => p.x1 <= at + bite + HAIR);
-    // Nothing ends on the table: the piece that begins here is longer than the bite.
-    const first = left.find((p) => p.x0 === at) as CutPiece;
-    if (first.x1 > at + bite + HAIR) for (let x = at + bite; x < first.x1 - HAIR; x += bite) feeds.push(x);
-    const cut = first.x1 > at + bite + HAIR ? [...fits.filter((p) => p !== first), first] : fits;
-    order.push(...cut.map((p) => p.id));
-    left = left.filter((p) => !cut.includes(p));
+  for (let at = Math.min(...left.map((p) => p.x0)); left.length > 0; ) {
+    feeds.push(at);
+    const end = at + bite;
+    left = left.filter((p) => p.x1 > end + HAIR);
+    // Fed on to the first piece not begun; one that is longer than the table goes on where the table ended.
+    at = Math.min(...left.map((p) => (p.x1 - p.x0 > bite + HAIR ? Math.max(p.x0, end) : p.x0)));
   }
-  return { order, feeds };
+  return { order: rising.map((p) => p.id), feeds };
 }

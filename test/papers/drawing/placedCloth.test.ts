@@ -16,12 +16,23 @@ const square: Vec2[] = [
 function facts(starts: number[], bite: number | null): Facts {
   const sample = sampleFacts({ stop: false });
   const pieces = starts.map((_, i) => ({ ...sample.pieces![0]!, id: `C${i + 1}`, cut: square }));
-  const placements = starts.map((x, i) => ({ panel: `C${i + 1}`, rotation: 0 as const, x, y: 600 * (i % 2) }));
+  const placements = starts.map((x, i) => ({
+    panel: `C${i + 1}`,
+    rotation: 0 as const,
+    x,
+    y: 600 * (i % 2),
+    order: 0,
+  }));
   const flaws = [{ x: 2900, y: 0, length: 300, width: 50 }];
+  const { order, feeds } = cutOrder(
+    placements.map((p) => ({ id: p.panel, x0: p.x, x1: p.x + 1000, y0: p.y })),
+    bite,
+  );
+  for (const p of placements) p.order = order.indexOf(p.panel) + 1;
   return {
     ...sample,
     pieces,
-    rolls: [{ ...sample.rolls![0]!, used: Math.max(...starts) + 1000, placements, flaws, bite }],
+    rolls: [{ ...sample.rolls![0]!, used: Math.max(...starts) + 1000, placements, flaws, bite, feeds }],
   };
 }
 
@@ -52,7 +63,7 @@ test("every piece is cut in just one table length, whole, in the order of the ro
 test("no bite, or one the roll fits in, needs no table lengths; a piece too long gets one of its own", () => {
   expect(tableBites(facts([0, 1100], null), facts([0, 1100], null).rolls![0]!)).toEqual([]);
   expect(tableBites(facts([0, 1100], 5000), facts([0, 1100], 5000).rolls![0]!)).toEqual([]);
-  const f = facts([0, 1100], 800);
+  const f = facts([0, 1700], 800);
   expect(tableBites(f, f.rolls![0]!).map((b) => b.roll.placements.length)).toEqual([1, 1]);
 });
 
@@ -61,12 +72,8 @@ test("table lengths, their starts and the order within them are those of the rol
   for (const bite of [1200, 2000, 900]) {
     const f = facts(starts, bite);
     const roll = f.rolls![0]!;
-    const { order, feeds } = cutOrder(
-      roll.placements.map((p) => ({ id: p.panel, x0: p.x, x1: p.x + 1000, y0: p.y })),
-      bite,
-    );
-    for (const p of roll.placements) p.order = order.indexOf(p.panel) + 1;
-    roll.feeds = feeds;
+    const order = [...roll.placements].sort((a, b) => a.order! - b.order!).map((p) => p.panel);
+    const feeds = roll.feeds!;
     expect(placedInOrder(f, roll).map((c) => c.p.panel)).toEqual(order);
     const bites = tableBites(f, roll);
     expect(bites.flatMap((b) => placedInOrder(f, b.roll).map((c) => c.p.panel))).toEqual(order);
@@ -78,4 +85,30 @@ test("table lengths, their starts and the order within them are those of the rol
       .map((l) => l.text.split(" ")[0]);
     expect(names).toEqual(order);
   }
+});
+
+test("beside a piece longer than the table the cloth is fed forward only; what lies whole on the table is cut there", () => {
+  // bug: the long piece was fed to its end first, then the cloth back to the squares beside it
+  const f = facts([0, 1100, 2300, 3400], 1500);
+  const roll = f.rolls![0]!;
+  const long: Vec2[] = square.map(([x, y]) => [5 * x, y]);
+  f.pieces!.push({ ...f.pieces![0]!, id: "L", cut: long });
+  roll.placements.push({ panel: "L", rotation: 0, x: 0, y: 1200 });
+  roll.used = 5000;
+  const laid = roll.placements.map((p) => ({
+    id: p.panel,
+    x0: p.x,
+    x1: p.x + (p.panel === "L" ? 5000 : 1000),
+    y0: p.y,
+  }));
+  const { order, feeds } = cutOrder(laid, 1500);
+  for (const p of roll.placements) p.order = order.indexOf(p.panel) + 1;
+  roll.feeds = feeds;
+  // by hand: each square begins a feed; from 3400 the table reaches 4900, 100 mm short of the long piece's end
+  expect(feeds).toEqual([0, 1100, 2300, 3400, 4900]);
+  expect(order).toEqual(["C1", "C2", "C3", "C4", "L"]);
+  const bites = tableBites(f, roll);
+  expect(bites).toHaveLength(1);
+  expect(bites[0]!.roll.feeds).toEqual([1100, 2300, 3400, 4900]);
+  expect(bites[0]!.words[1]).toContain("UP TO THE NEXT FEED MARK");
 });

@@ -51,41 +51,53 @@ export interface TableBite {
   roll: NestedRoll;
   /** Where it begins on the whole roll, mm: the cloth is fed on to there. */
   from: number;
+  /** What earlier table lengths have cut, as it lies on this one. */
+  before: Placement[];
   words: string[];
 }
 
 /** An end this near the table's edge still lies on it, mm. */
 const HAIR = 1e-6;
 
+/** The feeds at which a table length begins: all but those at which a piece longer than the table is still being cut. */
+function partStarts(feeds: readonly number[], cloth: readonly PlacedCloth[], bite: number): number[] {
+  const parted = (k: number) =>
+    cloth.some((c) => c.end - c.start > bite + HAIR && c.start < feeds[k] - HAIR && c.end > feeds[k - 1] + bite + HAIR);
+  return feeds.flatMap((x, k) => (k > 0 && parted(k) ? [] : [x]));
+}
+
 /**
- * The roll in lengths the table takes at once, as the roll's record feeds it: each begins at the first piece not yet cut and holds
- * every piece that ends within it. A piece longer than the table is fed on along its length, the findings tell of it. [] where the
- * table takes the whole roll.
+ * The roll in lengths the table takes at once, as the roll's record feeds it: each begins at a feed and holds every piece that is
+ * done before the next. Where a piece longer than the table is fed on, its feeds are one length with marks inside it. [] where
+ * the table takes the whole roll.
  */
 export function tableBites(facts: Facts, roll: NestedRoll): TableBite[] {
   const bite = roll.bite ?? Infinity;
   if (!(bite < roll.used)) return [];
-  const parts: { from: number; cloth: PlacedCloth[] }[] = [];
-  let left = placedInOrder(facts, roll);
-  while (left.length > 0) {
-    const from = Math.min(...left.map((c) => c.start));
-    const within = left.filter((c) => c.start === from || c.end <= from + bite + HAIR);
-    parts.push({ from, cloth: within });
-    left = left.filter((c) => !within.includes(c));
-  }
-  return parts.map(({ from, cloth }, k) => {
-    const used = Math.max(...cloth.map((c) => c.end)) - from;
-    const placements = cloth.map((c) => ({ ...c.p, x: c.p.x - from }));
+  const cloth = placedInOrder(facts, roll);
+  const feeds = roll.feeds ?? [];
+  const starts = partStarts(feeds, cloth, bite);
+  // A piece is done at the first feed from which the table reaches its end.
+  const doneAt = (c: PlacedCloth) => feeds.find((x) => c.end <= x + bite + HAIR) ?? feeds[feeds.length - 1];
+  return starts.map((from, k) => {
+    const next = starts[k + 1] ?? Infinity;
+    const own = cloth.filter((c) => doneAt(c) >= from && doneAt(c) < next);
+    const used = Math.max(...own.map((c) => c.end)) - from;
+    const shifted = (c: PlacedCloth) => ({ ...c.p, x: c.p.x - from });
+    const before = cloth.filter((c) => doneAt(c) < from).map(shifted);
+    const placements = own.map(shifted);
     const flaws = roll.flaws.flatMap((f) => {
       const [x0, x1] = [Math.max(0, f.x - from), f.x + f.length - from];
       return x1 > 0 ? [{ ...f, x: x0, length: x1 - x0 }] : [];
     });
     const words = [
-      `TABLE LENGTH ${k + 1} OF ${parts.length}: X = 0 IS ${Math.round(from)} MM FROM THE START OF THE ROLL. CUT IN THIS ORDER.`,
+      `TABLE LENGTH ${k + 1} OF ${starts.length}: X = 0 IS ${Math.round(from)} MM FROM THE START OF THE ROLL. CUT IN THIS ORDER.`,
     ];
-    const long = used > bite + HAIR;
-    if (long) words.push("LONGER THAN THE TABLE: CUT UP TO A FEED MARK, FEED ON TO IT, CUT ON FROM THERE.");
-    const feeds = (roll.feeds ?? []).map((x) => x - from).filter((x) => long && x > HAIR && x < used);
-    return { roll: { ...roll, used, placements, flaws, feeds }, from, words };
+    if (used > bite + HAIR)
+      words.push(
+        "LONGER THAN THE TABLE: CUT WHAT LIES WHOLE ON IT, THE LONG PIECE UP TO THE NEXT FEED MARK; FEED ON TO IT.",
+      );
+    const marks = feeds.filter((x) => x > from && x < next).map((x) => x - from);
+    return { roll: { ...roll, used, placements, flaws, feeds: marks }, from, before, words };
   });
 }

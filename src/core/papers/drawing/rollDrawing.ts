@@ -2,7 +2,7 @@
 // shows in which unit the file was read. Also the drawing of one panel alone.
 
 import type { Facts, FactsPanel, Vec2 } from "../../records/facts.ts";
-import type { NestedRoll } from "../../records/roll.ts";
+import type { NestedRoll, Placement } from "../../records/roll.ts";
 import { decimal } from "../words/decimal.ts";
 import { stampOf } from "../words/stamp.ts";
 import { batchOf } from "./clothBatch.ts";
@@ -17,6 +17,7 @@ import {
 } from "./drawing.ts";
 import { boxOf } from "./flatGeometry.ts";
 import { placedInOrder } from "./placedCloth.ts";
+import { withSharedCuts } from "./sharedCuts.ts";
 import { addSymbolInPlace, scaleBar } from "./symbols.ts";
 
 const BAR = 1000;
@@ -26,13 +27,32 @@ const STAMP_HEIGHT = 140;
 /** Least length of a feed mark, mm. */
 const FEED_MARK = 30;
 
+/** A roll's cloth as it lies, nothing else. */
+function clothOf(facts: Facts, roll: NestedRoll): Drawing {
+  const drawing = emptyDrawing(`Roll ${roll.id}`);
+  for (const { p, panel, piece } of placedInOrder(facts, roll)) {
+    if (panel) addPanelInPlace(drawing, panel, p);
+    else if (piece) addPieceInPlace(drawing, facts, piece, p);
+  }
+  return withoutRepeats(drawing);
+}
+
 /**
  * The roll with all that lies on it, as it lies, from the start of the roll to the end of the used length. The lower left corner
- * of everything drawn is the outer corner of the cloth: x = 0, y = −selvedge.
+ * of everything drawn is the outer corner of the cloth: x = 0, y = −selvedge. Where the nest leaves no gap, an edge that two pieces
+ * share is cut once.
+ * @param before what was cut from this roll before, where only a length of it is drawn
  * @throws PlanError "papers-unknown-piece" for a placement of cloth that the facts do not hold
  */
-export function rollDrawing(facts: Facts, roll: NestedRoll, words: readonly string[] = []): Drawing {
-  const drawing = emptyDrawing(`Roll ${roll.id}`);
+export function rollDrawing(
+  facts: Facts,
+  roll: NestedRoll,
+  words: readonly string[] = [],
+  before: readonly Placement[] = [],
+): Drawing {
+  const all = clothOf(facts, roll);
+  const earlier = roll.gap > 0 ? [] : clothOf(facts, { ...roll, placements: [...before] }).strokes;
+  const { drawing, shared } = roll.gap > 0 ? { drawing: all, shared: 0 } : withSharedCuts(all, earlier);
   const selvedge = (roll.width - roll.usableWidth) / 2;
   const end = Math.max(roll.used, 1);
   addBoxInPlace(drawing, [0, -selvedge], [end, roll.width - selvedge]);
@@ -49,16 +69,13 @@ export function rollDrawing(facts: Facts, roll: NestedRoll, words: readonly stri
     addNoteInPlace(drawing, "FLAW", [flaw.x, far[1] + 20], 20);
   }
   addFeedsInPlace(drawing, roll, selvedge);
-  for (const { p, panel, piece } of placedInOrder(facts, roll)) {
-    if (panel) addPanelInPlace(drawing, panel, p);
-    else if (piece) addPieceInPlace(drawing, facts, piece, p);
-  }
   const notes = [
     `ROLL ${roll.id}  FABRIC ${roll.fabric}  BATCH ${roll.batch ?? "not given"}  OUTER FACE UP`,
     `WIDTH ${decimal(roll.width, 0)}  USABLE ${decimal(roll.usableWidth, 0)}  USED LENGTH ${decimal(roll.used, 0)}  PIECES ${roll.placements.length}`,
     ...(roll.outerFace === "down"
       ? ["INNER FACE UP AS IT COMES OFF THE ROLL: TURN THE CLOTH OVER LENGTHWISE FIRST"]
       : []),
+    ...(shared > 0 ? [`SHARED EDGES, ${decimal(shared, 0)} MM, ARE CUT ONCE: OUTLINES BESIDE THEM ARE OPEN RUNS`] : []),
     ...words,
   ];
   addNotesInPlace(drawing, facts, notes, [0, roll.width - selvedge + 100]);

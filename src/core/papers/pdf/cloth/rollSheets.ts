@@ -44,10 +44,10 @@ function drawRoll(book: Book, roll: NestedRoll): void {
   const sheet = addSheet(book, `Roll ${roll.id}`);
   const cloth = placedInOrder(facts, roll);
   const bites = tableBites(facts, roll);
-  const feeds = (roll.feeds ?? bites.map((b) => b.from)).map((x) => flat.of(x)).join(", ");
+  const feeds = roll.feeds ?? [];
   const table =
     bites.length > 0
-      ? ` Cut in ${bites.length} table lengths of ${flat.whole(roll.bite ?? 0)} at most: fed on until the table begins at ${feeds} ${flat.unit} from the start of the roll.`
+      ? ` The table takes ${flat.whole(roll.bite ?? 0)} at once: ${feeds.length} feeds, until it begins at ${feeds.map((x) => flat.of(x)).join(", ")} ${flat.unit} from the start of the roll (dashed below).`
       : "";
   const over = (100 * (roll.used - roll.lowerBound)) / Math.max(roll.lowerBound, 1e-9);
   const bound = ` No nest of these pieces needs less than ${flat.whole(roll.lowerBound)} of it (${decimal(over, 1)} % over).`;
@@ -106,6 +106,10 @@ function drawRows(book: Book, sheet: Sheet, roll: NestedRoll, cloth: readonly Pl
         drawRun(sheet.page, [a, b], { width: 0.25 });
       }
       for (const c of here) drawRun(sheet.page, c.cut.map(place), { width: 0.3, closed: true });
+      for (const x of roll.feeds ?? []) {
+        const across: Vec2[] = [-selvedge, roll.usableWidth + selvedge].map((y) => place([x, y]));
+        drawRun(sheet.page, across, { width: 0.3, dash: [1.5, 1.5] });
+      }
     });
     const field: LabelField = { within: frame, outlines: [], taken: [] };
     for (const c of here) {
