@@ -1,7 +1,8 @@
 // seamstay correct JOB --readings FILE.csv: from what the crew read to what it turns. Readings are kept, never overwritten.
 import { existsSync, mkdirSync, readFileSync, writeFileSync } from "node:fs";
 import { dirname, join } from "node:path";
-import { type CorrectedPlan, correctPlan, type KeptRound } from "../core/plan/correctPlan.ts";
+import { type CorrectedPlan, correctPlan } from "../core/plan/correctPlan.ts";
+import type { KeptRound } from "../core/plan/partLog.ts";
 import { PlanError } from "../core/problem.ts";
 import type { Correction } from "../core/records/rig.ts";
 import { withFile } from "./fileErrors.ts";

@@ -204,6 +204,24 @@ describe("a sail in the page", { timeout: LONG }, () => {
     expect(desk.faults).toEqual([]);
   });
 
+  it("Site: turns made are written into the log, and what is read after them is the next round", async () => {
+    const { page } = desk;
+    await turnTo(page, "Site");
+    await page.getByRole("button", { name: "These turns were made: write them into the log" }).click();
+    await page.getByText("The turns are in the log. Read all adjusters again").waitFor();
+    const log = page.getByRole("table", { name: "Log, the latest first" });
+    await log
+      .getByText(/^turned: (taken in|let out) [\d.]+ mm$/)
+      .first()
+      .waitFor();
+    await page.getByText("1 reading in the log.").waitFor();
+    await page.getByLabel("Force, kN").fill("20");
+    await page.getByRole("button", { name: "Write it into the log" }).click();
+    await page.getByText("2 readings in the log.").waitFor();
+    await page.getByRole("button", { name: /^Work out corrections.*, with the round before$/ }).waitFor();
+    expect(await judge(page)).toEqual([]);
+  });
+
   it("keeps what the cloth was settled to through a change of the title", async () => {
     const { page } = desk;
     await turnTo(page, "Papers");

@@ -8,7 +8,7 @@ import { decodeText, titleOfMesh } from "../../core/plan/meshText.ts";
 import { PlanError } from "../../core/problem.ts";
 import type { MeshFile, Project, Reading } from "../store/project.ts";
 import { newId } from "./keepBook.ts";
-import { readReadings } from "./readings.ts";
+import { readReadings, readTurns } from "./readings.ts";
 
 /** A file with its bytes in hand. */
 export interface LoadedFile {
@@ -73,12 +73,14 @@ function isJob(file: LoadedFile): boolean {
   return new TextDecoder().decode(file.bytes.subarray(0, 400)).includes("seamstay-job");
 }
 
-/** The readings that count and those that were struck, in the order they were taken. */
+/** The readings that count, those that were struck, and the turns, in the order they were taken. */
 function readLog(files: readonly LoadedFile[]): Reading[] {
   const csvs = files.filter((f) => /readings.*\.csv$/i.test(f.name));
   const log = csvs.flatMap((csv) => {
     const struck = /struck\.csv$/i.test(csv.name);
     return readReadings(decodeText(csv.bytes, csv.name)).map((r) => (struck ? { ...r, struck: true as const } : r));
   });
+  const turns = files.filter((f) => /turns\.csv$/i.test(f.name));
+  log.push(...turns.flatMap((csv) => readTurns(decodeText(csv.bytes, csv.name))));
   return log.sort((a, b) => (a.time < b.time ? -1 : a.time > b.time ? 1 : 0));
 }

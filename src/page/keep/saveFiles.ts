@@ -1,6 +1,6 @@
 // Files out of the page: single ones, and several as one zip with a fixed stamp, so that equal content is an equal file.
 import type { Project, Reading } from "../store/project.ts";
-import { writeReadings } from "./readings.ts";
+import { writeReadings, writeTurns } from "./readings.ts";
 
 export interface SavedFile {
   path: string;
@@ -59,8 +59,12 @@ export async function packJob(project: Project): Promise<SavedFile> {
   ]);
 }
 
-/** The log as files: what counts as the command line reads it, and what was struck beside it. */
+/** The log as files: what counts as the command line reads it, and beside it what was struck and what was turned. */
 export function logFiles(log: readonly Reading[]): SavedFile[] {
-  const struck = log.some((r) => r.struck) ? [{ path: "readings-struck.csv", bytes: writeReadings(log, true) }] : [];
-  return log.length === 0 ? [] : [{ path: "readings.csv", bytes: writeReadings(log) }, ...struck];
+  const struck = log.some((r) => r.struck && r.turned === undefined)
+    ? [{ path: "readings-struck.csv", bytes: writeReadings(log, true) }]
+    : [];
+  const turned = log.some((r) => r.turned !== undefined && !r.struck);
+  const turns = turned ? [{ path: "turns.csv", bytes: writeTurns(log) }] : [];
+  return log.length === 0 ? [] : [{ path: "readings.csv", bytes: writeReadings(log) }, ...struck, ...turns];
 }

@@ -7,7 +7,7 @@ export interface MeshFile {
   bytes: Uint8Array<ArrayBuffer>;
 }
 
-/** One reading of the site log, as the readings file has it. */
+/** One line of the site log: a reading, as the readings file has it, or an adjuster turned. */
 export interface Reading {
   time: string;
   by: string;
@@ -23,6 +23,10 @@ export interface Reading {
   temperature: number | null;
   /** m, a surveyed position. */
   at: [number, number, number] | null;
+  /** Step of the schedule after which it was read or turned; left out: not known. */
+  step?: number;
+  /** mm by which an adjuster was turned, as it was told; positive shortens. Then nothing was read. */
+  turned?: number;
   /** Taken back, but kept to be read. */
   struck?: true;
 }

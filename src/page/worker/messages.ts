@@ -3,6 +3,7 @@ import type { ComparedLayout } from "../../core/plan/compareLayouts.ts";
 import type { CorrectedPlan } from "../../core/plan/correctPlan.ts";
 import type { Grip, MadeRoof, SeenPanel } from "../../core/plan/dragSeam.ts";
 import type { SurfaceFields } from "../../core/plan/measureFields.ts";
+import type { KeptRound } from "../../core/plan/partLog.ts";
 import type { Station } from "../../core/problem.ts";
 import type { Facts, FactsSeam } from "../../core/records/facts.ts";
 import type { EdgePlace, Job, SeamDecision } from "../../core/records/job.ts";
@@ -34,6 +35,8 @@ export type Request =
       /** The readings file, and the stage at whose end was read in per cent; null: the finished roof. */
       text: string;
       percent: number | null;
+      /** Rounds read before at the same place, and what was turned after each. */
+      kept: KeptRound[];
     };
 
 export type Reply =

@@ -74,9 +74,9 @@ function createTeller(run: number, stationOf: () => Station): (share: number, wo
 }
 
 function correct(request: Extract<Request, { kind: "correct" }>): void {
-  const { run, text, percent } = request;
+  const { run, text, percent, kept } = request;
   const { job, source } = read(request);
-  const corrected = correctPlan(job, source, { text, percent }, { onProgress: createTeller(run, () => "rig") });
+  const corrected = correctPlan(job, source, { text, percent, kept }, { onProgress: createTeller(run, () => "rig") });
   post({ kind: "corrected", run, corrected });
 }
 

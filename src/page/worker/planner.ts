@@ -1,6 +1,6 @@
 // Starts, ends and hears the worker. The newest request wins: a worker that still computes an older one is ended.
 import type { Facts } from "../../core/records/facts.ts";
-import { writeReadings } from "../keep/readings.ts";
+import { partReadings } from "../keep/readings.ts";
 import { bookStore } from "../store/bookStore.ts";
 import { type Hand, isSameWork } from "../store/hand.ts";
 import type { Project } from "../store/project.ts";
@@ -123,13 +123,17 @@ export function requestPapers(facts: Facts): void {
   send({ kind: "papers", run, facts });
 }
 
-/** Works out what to turn after the readings of the log. @param percent stage at whose end was read; null: the finished roof */
-export function requestCorrection(project: Project, percent: number | null): void {
+/**
+ * Works out what to turn after the readings of the log that stand after a step, the rounds before the last turns counted too.
+ * @param percent stage at whose end was read; null: the finished roof
+ */
+export function requestCorrection(project: Project, step: number, percent: number | null): void {
+  const { text, kept } = partReadings(project.log, step);
+  if (text === null) return;
   run++;
   subject = { readingsOf: project };
   bookStore.setState({ correcting: true, correctFault: null, corrected: null });
-  const text = new TextDecoder().decode(writeReadings(project.log));
-  send({ kind: "correct", run, given: project.job, mesh: project.mesh, text, percent });
+  send({ kind: "correct", run, given: project.job, mesh: project.mesh, text, percent, kept });
 }
 
 /** Stops what is computed; what was planned before stays. */

@@ -1,6 +1,9 @@
 // What to turn after the readings: the state that fits them best, the moves, what every gauge will read after them.
+import { addTurns } from "../../actions/site/addTurns.ts";
+import { partReadings } from "../../keep/readings.ts";
 import { FindingList } from "../../parts/FindingList.tsx";
 import { figure } from "../../parts/figure.ts";
+import { act } from "../../store/bookStore.ts";
 import { useBook } from "../../store/useBook.ts";
 import { requestCorrection, stopPlan } from "../../worker/planner.ts";
 
@@ -10,7 +13,7 @@ function turnsInWords(turns: number): string {
   return `${Math.floor(sixths / 6)} ${sixths % 6}/6 turns`;
 }
 
-function Result() {
+function Result({ step }: { step: number }) {
   const corrected = useBook((b) => b.corrected);
   const log = useBook((b) => b.project?.log);
   if (corrected === null) return null;
@@ -53,6 +56,16 @@ function Result() {
           </tbody>
         </table>
       )}
+      {correction.moves.length > 0 && !stopped && corrected.of.log === log && (
+        <button
+          type="button"
+          onClick={() =>
+            act(addTurns, { moves: correction.moves, step, time: new Date().toISOString().slice(0, 19) }, "turns made")
+          }
+        >
+          These turns were made: write them into the log
+        </button>
+      )}
       <table className="things">
         <caption>What the readings say, and the forecast</caption>
         <thead>
@@ -80,14 +93,22 @@ function Result() {
   );
 }
 
-/** The button and what comes of it; `percent`: the stage that was read at the end of, null: the finished roof. */
-export function Corrections({ percent, stage }: { percent: number | null; stage: string }) {
+/** Where the crew stands: a step of the schedule, and the stage that ends with it in per cent; null: the finished roof. */
+export interface CorrectionPlace {
+  step: number;
+  percent: number | null;
+  stage: string;
+}
+
+/** The button and what comes of it. */
+export function Corrections({ step, percent, stage }: CorrectionPlace) {
   const project = useBook((b) => b.project);
   const status = useBook((b) => b.status);
   const correcting = useBook((b) => b.correcting);
   const fault = useBook((b) => b.correctFault);
   const words = useBook((b) => b.progress.words);
   if (project === null || project.log.every((r) => r.struck)) return null;
+  const { text, kept } = partReadings(project.log, step);
   return (
     <section className="corrections" aria-label="Corrections">
       {correcting ? (
@@ -97,14 +118,21 @@ export function Corrections({ percent, stage }: { percent: number | null; stage:
             Stop
           </button>
         </p>
+      ) : text === null ? (
+        <p className="hint">
+          {kept.length > 0
+            ? "The turns are in the log. Read all adjusters again, then the next corrections are worked out from both rounds."
+            : `No reading of the log was taken here, at the end of ${stage}.`}
+        </p>
       ) : (
         <button
           type="button"
           className="main"
           disabled={status === "running"}
-          onClick={() => requestCorrection(project, percent)}
+          onClick={() => requestCorrection(project, step, percent)}
         >
           Work out corrections, read at the end of {stage}
+          {kept.length > 0 && `, with ${kept.length === 1 ? "the round" : `${kept.length} rounds`} before`}
         </button>
       )}
       {fault !== null && (
@@ -112,7 +140,7 @@ export function Corrections({ percent, stage }: { percent: number | null; stage:
           {fault.message}
         </p>
       )}
-      <Result />
+      <Result step={step} />
     </section>
   );
 }

@@ -114,7 +114,7 @@ export function ReadingEntry({ step }: { step: RigStep | null }) {
     const reading = readEntry(kind, texts, id, by.trim());
     if (typeof reading === "string") return setFault(reading);
     setFault("");
-    act(addReading, { reading }, `reading of ${id}`);
+    act(addReading, { reading: { ...reading, step: step?.step ?? 0 } }, `reading of ${id}`);
     setTexts({ ...EMPTY, temperature: texts.temperature });
   };
   const entry = (key: keyof typeof EMPTY, label: string, unit: string) => (

@@ -57,6 +57,8 @@ function SiteLimits() {
 }
 
 function whatWasRead(r: Reading): string {
+  if (r.turned !== undefined)
+    return `turned: ${r.turned > 0 ? "taken in" : "let out"} ${figure(Math.abs(r.turned), 1)} mm`;
   if (r.force !== null) return `${figure(r.force, 1)} kN`;
   if (r.frequency !== null)
     return `${figure(r.frequency, 2)} Hz on ${figure(r.freeLength ?? 0, 3)} m of ${figure(r.massPerMetre ?? 0, 3)} kg/m`;
@@ -92,7 +94,7 @@ function Log({ log }: { log: readonly Reading[] }) {
               <td>
                 <button
                   type="button"
-                  aria-label={`${r.struck ? "Count again" : "Strike"} the reading of ${r.id} of ${r.time}`}
+                  aria-label={`${r.struck ? "Count again" : "Strike"} the ${r.turned === undefined ? "reading" : "turn"} of ${r.id} of ${r.time}`}
                   onClick={() => act(strikeReading, { index }, r.struck ? "reading counted again" : "reading struck")}
                 >
                   {r.struck ? "Count again" : "Strike"}
@@ -111,7 +113,8 @@ export function SiteLeaf() {
   const stored = useBook((b) => b.project?.log);
   const step = useBook((b) => b.step);
   const log = stored ?? [];
-  const struck = log.filter((r) => r.struck).length;
+  const readings = log.filter((r) => r.turned === undefined);
+  const struck = readings.filter((r) => r.struck).length;
   const steps = tensioning ? listSteps(tensioning) : [];
   const at = Math.min(step, steps.length);
   const now = steps[at - 1] ?? null;
@@ -123,9 +126,9 @@ export function SiteLeaf() {
       station="rig"
       question="What does the roof say?"
       answer={
-        log.length === 0
+        readings.length === 0
           ? "No readings yet."
-          : `${log.length} ${log.length === 1 ? "reading" : "readings"} in the log${struck === 0 ? "" : `, ${struck} of them struck`}.`
+          : `${readings.length} ${readings.length === 1 ? "reading" : "readings"} in the log${struck === 0 ? "" : `, ${struck} of them struck`}.`
       }
       tools={
         <>
@@ -149,8 +152,15 @@ export function SiteLeaf() {
       stage={
         <div className="readings">
           <ReadingEntry step={now} />
-          {steps.length > 0 && (
+          {now !== null && !now.hold && (
+            <p className="hint">
+              Corrections are worked out at the end of a stage: here after step{" "}
+              {steps.find((s) => s.hold && s.stage === now.stage)?.step}.
+            </p>
+          )}
+          {steps.length > 0 && (now === null || now.hold) && (
             <Corrections
+              step={now?.step ?? 0}
               percent={stage === undefined ? null : 100 * stage.fraction}
               stage={stage?.name ?? "the finished roof"}
             />
