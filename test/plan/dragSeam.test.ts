@@ -1,6 +1,6 @@
 // A dragged seam: its two panels anew, equal to the whole roof's where nothing moved, seams with the others as long as they were.
 import { expect, test } from "vitest";
-import { dragSeamInPlace, openDrag, type SeamDrag, tieRoof } from "../../src/core/plan/dragSeam.ts";
+import { dragSeamInPlace, listGrips, openDrag, type SeamDrag, tieRoof } from "../../src/core/plan/dragSeam.ts";
 import { fitPanels } from "../../src/core/plan/fitPanels.ts";
 import type { CutPanel } from "../../src/core/records/flatPanel.ts";
 import type { EdgePlace, Job } from "../../src/core/records/job.ts";
@@ -166,6 +166,24 @@ test("one of two seams round a ring: its cloth is slit by the other, whose sides
   expect(layout.seams.length).toBe(2);
   for (const seam of layout.seams)
     expect(Math.abs(flatLength(layout, seam.id, panels[0]) - flatLength(layout, seam.id, panels[1]))).toBeLessThan(0.1);
+});
+
+test("a seam slid on a roof with seams across: tied again its strips still fit the cloth's length", () => {
+  // bug: seams given one by one had no seams across, so that one slid seam left a roof of panels too long for the roll
+  const form = saddle();
+  const job = makeJob({ maxLength: 5000 });
+  const drag = open(form, job);
+  const pairs = listGrips(drag).map((grip) => grip.ends);
+  const all = [2.2, 4.4, 6.6].map((x): [EdgePlace, EdgePlace] => [
+    { edge: "E1", at: x / 9 },
+    { edge: "E3", at: 1 - x / 9 },
+  ]);
+  expect(pairs.length).toBeLessThan(all.length);
+  const { fitted } = tieRoof({ form, job, fitted: drag.fitted }, all);
+  expect(fitted.panels.output.length).toBeGreaterThanOrEqual(8);
+  for (const p of fitted.panels.output) expect(p.size.length).toBeLessThanOrEqual(5000);
+  expect([...fitted.seams.findings, ...fitted.panels.findings].filter((f) => f.level === "stop")).toEqual([]);
+  expect(fitted.panels.checks.filter((c) => !c.holds)).toEqual([]);
 });
 
 test("a seam is not dragged over its neighbour or along an edge", () => {

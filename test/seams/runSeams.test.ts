@@ -2,6 +2,8 @@
 import { existsSync, readFileSync } from "node:fs";
 import fc from "fast-check";
 import { describe, expect, test } from "vitest";
+import type { StripLayout } from "../../src/core/records/stripLayout.ts";
+import { openSeams } from "../../src/core/seams/moveSeam.ts";
 import { runSeams } from "../../src/core/seams/runSeams.ts";
 import type { Vec3 } from "../../src/core/surface/surface.ts";
 import { expectSoundLayout, listLengths } from "./judgeLayout.ts";
@@ -443,6 +445,39 @@ describe("seams across", () => {
         expect(output.strips.length).toBeGreaterThan(output.choices[0].count);
       }
   });
+});
+
+test("between seams given one by one, strips too long for the cloth are cut across as those laid out are", () => {
+  const hollow = makeForm(
+    makeGrid(28, 28, (u, v) => {
+      const x = 12 * (u - 0.5) * (1 - 0.5 * v * (1 - v));
+      const y = 9 * (v - 0.5) * (1 - 0.5 * u * (1 - u));
+      return [x, y, 0.06 * x * y];
+    }),
+  );
+  const ring = makeForm(
+    makeRing(64, 20, (turn, row) => [(1 + 8 * row) * Math.cos(turn), (1 + 8 * row) * Math.sin(turn), 3 * (1 - row)]),
+  );
+  const saddle = makeForm(makeGrid(24, 18, (u, v) => [12 * (u - 0.5), 9 * (v - 0.5), 7 * (u - 0.5) * (v - 0.5)]));
+  for (const form of [square(7), hollow, ring, saddle]) {
+    const whole = { usableWidth: 2, maxLength: null };
+    const pairs = [...openSeams(form, makeJob(), whole).ends.values()];
+    const job = makeJob({ layout: "pairs", pairs });
+    const strips = runSeams(form, job, whole).output.strips.length;
+    expect(strips).toBeGreaterThan(2);
+    for (const maxLength of [5, 2.6]) {
+      const { output, findings } = runSeams(form, job, { ...whole, maxLength });
+      expectSoundLayout(form, output);
+      expect(findings.filter((f) => f.level === "stop")).toEqual([]);
+      const laid = runSeams(form, makeJob(), { ...whole, maxLength }).output;
+      expect(Math.abs(output.strips.length - laid.strips.length)).toBeLessThanOrEqual(strips);
+      expect(output.strips.length).toBeGreaterThan(strips);
+      for (const seam of output.seams) expect(seam.length).toBeGreaterThan(0.1);
+      // the given seams stand where they were: all of their cloth's borders are still there
+      const metres = (of: StripLayout) => of.seams.reduce((sum, s) => sum + s.length, 0);
+      expect(metres(output)).toBeGreaterThan(metres(runSeams(form, job, whole).output));
+    }
+  }
 });
 
 describe("refusals", () => {

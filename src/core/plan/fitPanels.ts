@@ -101,6 +101,12 @@ function widestOf(fitted: Fitted, estimate: LayoutEstimate): number {
   return Math.max(0, ...measureStrips(estimate, byId).map((size) => size?.width ?? 0));
 }
 
+/** The longest panel over the longest piece that the cloth gives; strips between given seams are parted anew by it. */
+function measureOverlength(fitted: Fitted, room: ClothRoom): number {
+  const lengths = fitted.panels.output.filter((p) => !isTurned(p)).map((p) => measureExtent(p.cut).length);
+  return room.length === null ? 0 : Math.max(0, ...lengths) / room.length;
+}
+
 /** Ways whose panels are wider than the cloth, with the share by which they are. */
 function listWideWays(fitted: Fitted, room: ClothRoom): [string, number][] {
   return (fitted.seams.output.estimates ?? []).flatMap((estimate): [string, number][] => {
@@ -124,7 +130,12 @@ function fitWidths(
     const judged = judge(fitted, room);
     const before = best?.judged;
     if (!best || isBetter(judged, best.judged)) best = { fitted, options, judged };
-    if ((fitted.seams.output.estimates ?? []).length === 0) break;
+    if ((fitted.seams.output.estimates ?? []).length === 0) {
+      const longer = measureOverlength(fitted, room);
+      if (longer <= 1 || options.maxLength === null) break;
+      options = { ...options, maxLength: options.maxLength / longer / 1.001 };
+      continue;
+    }
     if (best.judged.misfits === 0) {
       if (best.judged.spread <= ALIKE) break;
       if (before && before.misfits === 0 && best.judged.spread > (1 - GAIN) * before.spread) break;

@@ -3,6 +3,7 @@
 import { measureDistance, pointAt } from "../surface/measures.ts";
 import type { Surface, SurfacePoint } from "../surface/surface.ts";
 import type { Chain } from "./chain.ts";
+import type { Region } from "./region.ts";
 import { type SeamLine, traceSeam } from "./seamLine.ts";
 import type { RegionLayout } from "./trial.ts";
 
@@ -37,7 +38,7 @@ const ASIDE = 0.25;
 const TRIES = 6;
 
 /** A flank of strips: places with arc lengths. */
-interface Flank {
+export interface Flank {
   points: readonly SurfacePoint[];
   arc: number[];
   /** Arc lengths of seams that end on it already. */
@@ -102,35 +103,45 @@ function shareOut(length: number, n: number, shift: number): number[] {
   return Array.from({ length: n - 1 }, (_, k) => (k + 1) / n + shift / length);
 }
 
+/** A seam across, and where on its two flanks it ends. */
+interface LaidAcross {
+  line: SeamLine;
+  ends: [number, number];
+}
+
 /** Seams of one strip, or null where one finds no place or would leave the strip. */
-function crossStrip(
-  layout: RegionLayout,
-  flanks: Flank[],
-  strip: number,
-  shares: readonly number[],
-): CrossSeam[] | null {
-  const [before, after] = [flanks[strip], flanks[strip + 1]];
-  const seams: CrossSeam[] = [];
-  const ends: [number, number][] = [];
-  for (const [k, share] of shares.entries()) {
-    const last = ends[ends.length - 1] ?? [0, 0];
+function crossStrip(region: Region, [before, after]: [Flank, Flank], shares: readonly number[]): LaidAcross[] | null {
+  const seams: LaidAcross[] = [];
+  for (const share of shares) {
+    const last = seams[seams.length - 1]?.ends ?? [0, 0];
     const pairs = pairStops(listStops(before, share, last[0]), listStops(after, share, last[1]), share);
     let laid = false;
     for (const [p, q] of pairs) {
-      const line = traceSeam(layout.region, p.point, q.point);
+      const line = traceSeam(region, p.point, q.point);
       if (!line.clear) continue;
-      ends.push([p.at, q.at]);
-      seams.push({ line, strip, piece: k });
+      seams.push({ line, ends: [p.at, q.at] });
       laid = true;
       break;
     }
     if (!laid) return null;
   }
-  for (const [p, q] of ends) {
-    before.taken.push(p);
-    after.taken.push(q);
-  }
   return seams;
+}
+
+/**
+ * Seams that part a strip longer than `maxLength` into the fewest pieces, square to its flanks, both of which run from its start;
+ * `odd` strips are parted a little before, others a little after. Null where there is no place for them.
+ * @units m
+ */
+export function partStrip(
+  region: Region,
+  flanks: [Flank, Flank],
+  { length, maxLength, odd }: { length: number; maxLength: number; odd: boolean },
+): LaidAcross[] | null {
+  const n = Math.ceil(length / maxLength - 1e-9);
+  const room = maxLength - length / n;
+  const shift = room < TOGETHER ? 0 : ((odd ? -1 : 1) * Math.min(STAGGER, room)) / 2;
+  return crossStrip(region, flanks, shareOut(length, n, shift)) ?? crossStrip(region, flanks, shareOut(length, n, 0));
 }
 
 /**
@@ -143,17 +154,17 @@ export function layCrossSeams(layout: RegionLayout, maxLength: number | null): C
   const plan: CrossPlan = { seams: [], pieces: sizes.map(() => 1) };
   if (maxLength === null || hugging.length > 0 || sizes.every((size) => size.length <= maxLength)) return plan;
   const flanks = listFlanks(layout);
-  sizes.forEach((size, j) => {
-    if (size.length <= maxLength) return;
-    const n = Math.ceil(size.length / maxLength - 1e-9);
-    const room = maxLength - size.length / n;
-    const shift = room < TOGETHER ? 0 : ((j % 2 === 0 ? 1 : -1) * Math.min(STAGGER, room)) / 2;
-    const seams =
-      crossStrip(layout, flanks, j, shareOut(size.length, n, shift)) ??
-      crossStrip(layout, flanks, j, shareOut(size.length, n, 0));
+  sizes.forEach(({ length }, j) => {
+    if (length <= maxLength) return;
+    const own: [Flank, Flank] = [flanks[j], flanks[j + 1]];
+    const seams = partStrip(layout.region, own, { length, maxLength, odd: j % 2 === 1 });
     if (!seams) return;
-    plan.seams.push(...seams);
-    plan.pieces[j] = n;
+    for (const [p, q] of seams.map(({ ends }) => ends)) {
+      own[0].taken.push(p);
+      own[1].taken.push(q);
+    }
+    plan.seams.push(...seams.map(({ line }, piece) => ({ line, strip: j, piece })));
+    plan.pieces[j] = seams.length + 1;
   });
   return plan;
 }

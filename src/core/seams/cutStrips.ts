@@ -38,6 +38,8 @@ export interface CutForm {
   strips: RawStrip[];
   /** By half-edge of the cut surface, for all strip borders. */
   marks: Map<number, BorderMark>;
+  /** Place on the form of each vertex beyond the form's own, in order. */
+  inserted: SurfacePoint[];
   /** Seam paths that were cut, the others fell out with a stop. */
   paths: SeamPath[];
   findings: Finding[];
@@ -213,7 +215,7 @@ function cutOnce(
     }
     return { region, place, triangles, outline: loops[0] };
   });
-  return { surface, adjacency, stripOf, strips, marks, paths, findings };
+  return { surface, adjacency, stripOf, strips, marks, inserted: cut.vertexPlace, paths, findings };
 }
 
 /** True where a → b runs the path's way. */

@@ -89,7 +89,16 @@ export function partHeld(held: HeldSeam, line: readonly SurfacePoint[], weld: st
     });
     const first = strips[0].outline.find((h) => marks.get(h) === HELD) ?? 0;
     return {
-      cut: { surface: cut.surface, adjacency: cut.adjacency, stripOf, strips, marks, paths: [], findings: [] },
+      cut: {
+        surface: cut.surface,
+        adjacency: cut.adjacency,
+        stripOf,
+        strips,
+        marks,
+        inserted: cut.vertexPlace,
+        paths: [],
+        findings: [],
+      },
       baseVertex: Uint32Array.from({ length: n + cut.vertexPlace.length }, (_, v) =>
         v < n ? held.baseVertex[v] : nBase + v - n,
       ),

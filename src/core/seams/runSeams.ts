@@ -11,6 +11,7 @@ import type { Candidate } from "./candidate.ts";
 import { type Chain, findOnChain } from "./chain.ts";
 import { checkStrips } from "./checkStrips.ts";
 import { factorAt, NO_FACTORS, type WidthFactors } from "./comb.ts";
+import { crossGivenStrips, isShort } from "./crossGiven.ts";
 import { type CrossPlan, layCrossSeams } from "./crossSeams.ts";
 import { cutStrips } from "./cutStrips.ts";
 import { layoutRegion, wayKey } from "./layoutRegion.ts";
@@ -202,6 +203,19 @@ function layoutPairs(form: FoundForm, job: Job, options: SeamOptions, regions: r
   return { paths, plans, findings };
 }
 
+/** The given seams with those across their strips that the cloth's length asks for, m. */
+function crossGiven(
+  on: { form: FoundForm; adjacency: Adjacency; labels: Map<number, number> },
+  given: ReturnType<typeof layoutPairs>,
+  maxLength: number | null,
+) {
+  if (maxLength === null || isShort(given.plans, given.paths, maxLength)) return given;
+  const across = crossGivenStrips({ ...on, ...given }, maxLength);
+  const crossed = new Set(across.map((path) => path.region));
+  const plans = given.plans.map((plan, r) => (crossed.has(r) ? { ...plan, strips: null } : plan));
+  return { ...given, plans, paths: [...given.paths, ...across] };
+}
+
 /** Seams laid, nothing cut. */
 export interface LaidSeams {
   /** The form, or its working copy with openings opened. */
@@ -229,7 +243,10 @@ export function laySeams(found: FoundForm, job: Job, options: SeamOptions, conte
   checkNames(found, job);
   const { form, adjacency, regions, labels, pruned } = prepareRegions(found, job);
   const findings: Finding[] = notePruned(pruned);
-  const given = job.seams.layout === "pairs" ? layoutPairs(form, job, options, regions) : null;
+  const given =
+    job.seams.layout === "pairs"
+      ? crossGiven({ form, adjacency, labels }, layoutPairs(form, job, options, regions), options.maxLength)
+      : null;
   const layouts = given ? [] : layoutAll(form, job, options, regions, context);
   findings.push(...(given?.findings ?? []), ...layouts.flatMap((l) => [...l.findings, ...noteHugging(l)]));
   const crosses = layouts.map((layout) => {
