@@ -190,6 +190,7 @@ export function makeJob(seams: Partial<SeamDecision> = {}): Job {
       frameAlpha: 0,
       limit: 0.5,
       readingError: 0.03,
+      selfWeight: false,
       defaults: [],
       defaultCable: {
         id: "job",

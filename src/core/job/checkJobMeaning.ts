@@ -75,8 +75,13 @@ function checkSeams({ seams }: JobFile): void {
 function checkRig(rig: JobFile["rig"], catalogues: Catalogues): void {
   rig?.adjusters?.forEach((a, i) => {
     const where = `rig.adjusters[${i}]`;
-    if ((a.anchor === undefined) === (a.edge === undefined) || (a.edge === undefined) !== (a.end === undefined)) {
-      const text = `${where}: an adjuster stands at an anchor ("anchor"), or at one end of an edge ("edge" and "end")`;
+    const places = [a.anchor, a.edge, a.ring].filter((place) => place !== undefined).length;
+    const twice = a.ring !== undefined && (rig.adjusters ?? []).findIndex((b) => b.ring === a.ring) < i;
+    const support = a.support !== undefined && a.ring === undefined;
+    if (places !== 1 || (a.edge === undefined) !== (a.end === undefined) || twice || support) {
+      const text = twice
+        ? `${where}: ring ${a.ring} has an adjuster already; one jack hauls one ring`
+        : `${where}: an adjuster stands at an anchor ("anchor"), or at one end of an edge ("edge" and "end"), or hauls a ring ("ring", with its far pin as "support")`;
       throw new PlanError("job-adjuster-place", text, where);
     }
     if (typeof a.turnbuckle === "string" && !(a.turnbuckle in catalogues.turnbuckles)) {

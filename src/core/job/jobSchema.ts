@@ -187,6 +187,8 @@ const rig = z.strictObject({
         anchor: name.optional(),
         edge: name.optional(),
         end: z.union([name, z.literal(0), z.literal(1)]).optional(),
+        ring: name.optional(),
+        support: point.optional(),
         turnbuckle: z.union([name, turnbuckle]).optional(),
         EA: num(0, 1e8, { unit: "kN", above: true }).optional(),
         fitting: kN.optional(),
@@ -225,6 +227,7 @@ const rig = z.strictObject({
     .optional(),
   temperature: num(-60, 80, { unit: "degC" }).optional(),
   frameAlpha: alpha.optional(),
+  selfWeight: z.boolean().optional(),
   limit: num(0, 1, { above: true, remedy: "a share of the weakest part's capacity" }).optional(),
   reading: z
     .strictObject({ error: num(0, 0.5, { remedy: "a share of the reading: 5 % is 0.05" }).optional() })

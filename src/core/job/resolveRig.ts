@@ -76,7 +76,7 @@ export function resolveRig(file: JobFile, catalogues: Catalogues, ledger: Defaul
         end: a.end === undefined ? null : a.end === 0 ? "first" : a.end === 1 ? "last" : a.end,
         turnbuckle: resolveTurnbuckle(a.turnbuckle, catalogues),
         EA: a.EA ?? null,
-        ...leaveOut({ fitting: a.fitting, anchorCapacity: a.anchorCapacity }),
+        ...leaveOut({ fitting: a.fitting, anchorCapacity: a.anchorCapacity, ring: a.ring, support: a.support }),
       })) ?? null,
     struts: (rig.struts ?? []).map((s) => ({ name: s.name, from: s.from, to: s.to, EA: s.EA ?? null })),
     stays: (rig.stays ?? []).map((s) => ({
@@ -91,6 +91,7 @@ export function resolveRig(file: JobFile, catalogues: Catalogues, ledger: Defaul
     stages: rig.stages ?? [...d.stages],
     temperature: takeDefault<number>(ledger, temperature, d.temperature, "rig.temperature", `${d.temperature} degC`),
     frameAlpha: rig.frameAlpha ?? 0,
+    selfWeight: rig.selfWeight ?? false,
     limit: rig.limit ?? d.limit,
     readingError: takeDefault<number>(
       ledger,

@@ -7,6 +7,7 @@ import type { FormEdge, FoundForm } from "../records/foundForm.ts";
 import type { Job } from "../records/job.ts";
 import type { AdjusterDecision } from "../records/rig.ts";
 import type { StripLayout } from "../records/stripLayout.ts";
+import { isRing } from "../rig/build/placeRings.ts";
 import type { RigInput } from "../rig/rigInput.ts";
 import type { Vec3 } from "../surface/surface.ts";
 import { tellSurvey } from "./tellSurvey.ts";
@@ -77,6 +78,50 @@ function settleCable(edge: FormEdge, job: Job, notes: Notes): RigInput["cables"]
   return { type: { ...given, EA: given.EA ?? fallback.EA ?? 1, alpha, status: {} }, ...made };
 }
 
+/** The ring a jack hauls; its far pin must be the job's own before a schedule may be issued. */
+function settleRing(
+  form: FoundForm,
+  a: { name: string; ring?: string; support?: Vec3 },
+  notes: Notes,
+): Pick<AdjusterDecision, "ring" | "support"> {
+  const { name, ring, support } = a;
+  if (ring === undefined) return {};
+  const rings = form.edges.filter(isRing).map((e) => e.id);
+  if (!rings.includes(ring))
+    throw new PlanError(
+      "adjuster-ring",
+      `adjuster ${name} hauls ring "${ring}", which is no closed clamped edge; there are ${rings.join(", ") || "none"}`,
+      name,
+    );
+  if (!support)
+    noteDefault(
+      notes,
+      `rig.adjusters.${name}.support`,
+      `${name}: the far pin it hauls ring ${ring} to is not given; it is put 1.0 m beyond the ring's hub along the pull`,
+      `write rig.adjusters.${name}.support`,
+    );
+  return { ring, ...(support ? { support } : {}) };
+}
+
+/** Cables whose mass nobody gave, where weight is to count. */
+function tellWeight(cables: RigInput["cables"]): Finding[] {
+  const open = Object.keys(cables).filter((id) => cables[id].type.mass === null);
+  if (open.length === 0) return [];
+  return [
+    {
+      code: "weight-open",
+      level: "caution",
+      station: "rig",
+      where: open,
+      value: null,
+      limit: null,
+      text: `self-weight is asked for, but the mass of ${open.join(", ")} is not given: they are counted without weight`,
+      remedy: "write the cables' mass in kg/m",
+      basis: "rules of the job file",
+    },
+  ];
+}
+
 /** A name for an adjuster at an anchor that nothing else in the file has. */
 function nameAdjuster(anchor: string, taken: Set<string>): string {
   let name = /^A\d+$/.test(anchor) ? `T${anchor.slice(1)}` : `T-${anchor}`;
@@ -136,6 +181,7 @@ function settleAdjusters(
       "write rig.adjusters in the job",
     );
   return wanted.map((a) => {
+    const jack = "ring" in a ? settleRing(form, a, notes) : {};
     const anchor = form.anchors.find((q) => q.id === a.anchor);
     const far = anchor ? supports[anchor.id] : undefined;
     if (anchor && !far)
@@ -169,6 +215,7 @@ function settleAdjusters(
       end: a.edge === null ? null : findEnd(form, job, a.edge, a.end, a.name),
       turnbuckle: a.turnbuckle ?? job.rig.defaultTurnbuckle,
       EA: a.EA ?? adjusterEA,
+      ...jack,
       ...("fitting" in a && a.fitting !== undefined ? { fitting: a.fitting } : {}),
       ...("anchorCapacity" in a && a.anchorCapacity !== undefined ? { anchorCapacity: a.anchorCapacity } : {}),
     };
@@ -237,8 +284,9 @@ export function buildRigInput(
         "write the stay's EA and breaking force",
       );
   notes.findings.push(...tellSurvey({ form, supports }, job, adjusters));
-  const { stages, temperature, frameAlpha, limit, readingError } = job.rig;
-  const settings = { temperature, frameAlpha, limit, readingError };
+  const { stages, temperature, frameAlpha, limit, readingError, selfWeight } = job.rig;
+  const settings = { temperature, frameAlpha, limit, readingError, selfWeight };
+  if (selfWeight) notes.findings.push(...tellWeight(cables));
   const whole = stages[stages.length - 1] === 1 ? stages : [...stages.filter((s) => s < 1), 1];
   return {
     output: {

@@ -140,6 +140,9 @@ export interface RigJob {
         edge: string | null;
         /** "first", "last", or the anchor at that end. */
         end: string | null;
+        /** A closed clamped edge that it hauls, and its far pin, m. */
+        ring?: string;
+        support?: Vec3;
         turnbuckle: Turnbuckle | null;
         EA: number | null;
         /** kN; left out: not given */
@@ -164,6 +167,7 @@ export interface RigJob {
   frameAlpha: number;
   limit: number;
   readingError: number;
+  selfWeight: boolean;
   /** Paths of what is not the job's own word. */
   defaults: string[];
   defaultCable: CableSpec & { status: Record<string, ValueStatus> };

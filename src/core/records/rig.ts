@@ -53,12 +53,15 @@ export interface CableMaking {
 /** A place of the rig: an anchor's or node's name, or coordinates in m. */
 export type RigPlace = string | Vec3;
 
-/** An adjuster as the plan settles it: at an anchor, or in the first or last link of a cable edge. */
+/** An adjuster as the plan settles it: at an anchor, in the first or last link of a cable edge, or a jack that hauls a ring. */
 export interface AdjusterDecision {
   name: string;
   anchor: string | null;
   edge: string | null;
   end: "first" | "last" | null;
+  /** The closed clamped edge it hauls, and the far pin it hauls to, m; left out: outward along the pull. */
+  ring?: string;
+  support?: Vec3;
   turnbuckle: Turnbuckle;
   /** kN */
   EA: number;
@@ -103,6 +106,8 @@ export interface RigDecision {
   limit: number;
   /** Share by which a reading may be off. */
   readingError: number;
+  /** Cloth and edge cables weigh on the roof. */
+  selfWeight: boolean;
   /** Keys the schedule stands on that the job did not give: with any of them the schedule is not for issue. */
   defaults: string[];
 }
@@ -155,7 +160,10 @@ export interface FactsRig {
   /** layers: of cloth in the mean, where seams lap and their second layer is counted; 1 where left out. */
   cloth: { nodes: Vec3; flat: [number, number][]; panel: string; layers?: number }[];
   cables: { id: string; nodes: number[]; EA: number; slackLengths: number[] }[];
-  struts: { id: string; nodes: [number, number]; EA: number; slackLength: number }[];
+  /** brace: stiffening of a hauled ring, which stands for the ring itself. */
+  struts: { id: string; nodes: [number, number]; EA: number; slackLength: number; brace?: true }[];
+  /** Weight that hangs on the nodes, kN; left out: none was asked for. */
+  selfWeight?: number;
   adjusters: FactsAdjuster[];
 }
 

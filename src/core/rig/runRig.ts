@@ -4,6 +4,7 @@ import type { FactsAsBuilt, FactsCable, FactsRig, FactsSensitivity, FactsTension
 import { measureLink } from "../structure/elements.ts";
 import { createEquilibriumSolver } from "../structure/equilibrium.ts";
 import { buildRig, type Rig } from "./build/buildRig.ts";
+import { findRingsOff } from "./build/placeRings.ts";
 import { buildCableLine } from "./cables/cableSchedule.ts";
 import { playPlan } from "./moves/playPlan.ts";
 import { measureSensitivity } from "./otherwise/sensitivity.ts";
@@ -91,6 +92,7 @@ export function runRig(input: RigInput, context: StationContext): StationResult<
     ...reviewSlackCloth(played.stages, input.proof.slack),
     ...reviewTravelAlone(rig, solver, finished),
     ...reviewShift(input, asBuilt),
+    ...findRingsOff(input),
     ...reviewLean(rig, finished, laterStates),
     ...reviewNotches(rig, finished, influence, roundedLimit),
   );
@@ -141,7 +143,13 @@ function writeRig(rig: Rig, finished: RigState): FactsRig {
       EA: c.EA,
       slackLengths: [...finished.L0.subarray(c.firstLink, c.firstLink + c.nodes.length - 1)],
     })),
-    struts: rig.struts.map((q) => ({ id: q.id, nodes: q.nodes, EA: q.EA, slackLength: finished.L0[q.link] })),
+    struts: [
+      ...rig.struts.map((q) => ({ id: q.id, nodes: q.nodes, EA: q.EA, slackLength: finished.L0[q.link] })),
+      ...rig.braces.map(({ id, nodes: ends, link }) => {
+        return { id, nodes: ends, EA: s.EA[link], slackLength: finished.L0[link], brace: true as const };
+      }),
+    ],
+    ...(s.load.some((kN) => kN !== 0) ? { selfWeight: s.load.reduce((sum, kN) => sum - kN, 0) } : {}),
     adjusters: rig.adjusters.map((a) => ({
       id: a.id,
       nodes: a.nodes,

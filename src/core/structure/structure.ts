@@ -1,5 +1,5 @@
 // Cloth, cables, adjusters and struts as one assembly of elements: what equilibrium is solved on. Types and building only.
-// Leaves out: sliding of a cable in its pocket, doubled cloth at patches, self-weight, bending.
+// Leaves out: sliding of a cable in its pocket, doubled cloth at patches, bending; weight only as loads on the nodes.
 import { PlanError } from "../problem.ts";
 import type { ClothStiffness } from "./cloth.ts";
 

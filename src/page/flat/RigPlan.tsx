@@ -63,9 +63,11 @@ export function RigPlan({
           onPointerLeave={() => point(null)}
         />
       ))}
-      {rig.struts.map((s) => (
-        <polyline key={s.id} className="strut" points={line(s.nodes.map((n) => rig.nodes[n]))} />
-      ))}
+      {rig.struts
+        .filter((s) => !s.brace)
+        .map((s) => (
+          <polyline key={s.id} className="strut" points={line(s.nodes.map((n) => rig.nodes[n]))} />
+        ))}
       {rig.adjusters.map((a) => {
         const [p, q] = a.nodes.map((n) => rig.nodes[n]);
         const out =

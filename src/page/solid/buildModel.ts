@@ -85,7 +85,7 @@ function linesOf(facts: Facts, form: FactsForm): ModelLine[] {
   const { rig } = facts;
   for (const a of rig?.adjusters ?? [])
     lines.push({ id: a.id, kind: "adjuster", points: a.nodes.map((n) => rig?.nodes[n] ?? []) });
-  for (const s of rig?.struts ?? [])
+  for (const s of (rig?.struts ?? []).filter((q) => !q.brace))
     lines.push({ id: s.id, kind: "strut", points: s.nodes.map((n) => rig?.nodes[n] ?? []) });
   return lines;
 }

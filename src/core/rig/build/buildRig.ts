@@ -11,6 +11,7 @@ import type { RigInput } from "../rigInput.ts";
 import { balanceHeads, type HeadPull } from "./balanceHeads.ts";
 import { moveClampedInPlace } from "./edgeShift.ts";
 import { findPinsBehind } from "./pinDirections.ts";
+import { findRingsOff, placeRings, type RingBrace, ringEA } from "./placeRings.ts";
 import {
   addNode,
   holdClampedEdges,
@@ -20,6 +21,7 @@ import {
   resolvePlace,
   settleTurnbuckle,
 } from "./rigNodes.ts";
+import { weighStructure } from "./selfWeight.ts";
 
 /** A cable or stay: a run of links that share one EA. */
 export interface RigCable {
@@ -66,6 +68,8 @@ export interface Rig {
   cables: RigCable[];
   struts: RigStrut[];
   adjusters: RigAdjuster[];
+  /** Stiffening of hauled rings: no member of its own. */
+  braces: (RingBrace & { link: number })[];
   L0: Float64Array<ArrayBuffer>;
   /** Panel of every cloth triangle, and its corners in that panel's cut cloth, mm. */
   panelOf: string[];
@@ -293,6 +297,7 @@ export function buildRig(input: RigInput): Rig {
   const nodes: NodeList = { xyz: [...layout.surface.xyz], held: new Array(3 * nV).fill(0) };
   for (let v = 0; v < form.fixed.length; v++) if (form.fixed[v]) nodes.held.fill(1, 3 * v, 3 * v + 3);
   holdClampedEdges(input, nodes);
+  const rings = placeRings(input, nodes);
   const placed = placeAdjusters(input, nodes);
   const { struts, heads } = placeStruts(input, nodes, placed);
   const stays = input.rig.stays.map((s) => ({
@@ -314,7 +319,8 @@ export function buildRig(input: RigInput): Rig {
     atEnds.push(...ends.adjusters);
   });
   const built = struts.map((s, i) => ({ ...s, link: addLink(list, s.nodes, s.EA, -forces.strut[i], 1) }));
-  const adjusters = [...placed, ...atEnds].map((a) => {
+  const braces = rings.braces.map((b) => ({ ...b, link: addLink(list, b.nodes, ringEA, 0, 1) }));
+  const adjusters = [...placed, ...rings.adjusters, ...atEnds].map((a) => {
     const decision = input.rig.adjusters.find((d) => d.name === a.id);
     return { ...a, ...findWeakest(a.turnbuckle, decision), link: addLink(list, a.nodes, a.EA, a.target) };
   });
@@ -326,14 +332,20 @@ export function buildRig(input: RigInput): Rig {
     EA: new Float64Array(list.EA),
     strut: new Uint8Array(list.strut),
   });
+  const load = weighStructure(input, nodes.xyz.length / 3, { ...structure, cables, L0: list.L0 });
   return {
-    structure,
+    structure: load ? { ...structure, load } : structure,
     cables,
     struts: built,
     adjusters,
+    braces,
     L0: new Float64Array(list.L0),
     panelOf,
     flat: cut,
-    stops: [...(forces.unbalanced ? [forces.unbalanced] : []), ...findPinsBehind(input, nodes.xyz, placed)],
+    stops: [
+      ...(forces.unbalanced ? [forces.unbalanced] : []),
+      ...findPinsBehind(input, nodes.xyz, placed),
+      ...findRingsOff(input).filter((f) => f.level === "stop"),
+    ],
   };
 }

@@ -23,7 +23,7 @@ export function warmLengths(
 ): Float64Array<ArrayBuffer> {
   const L0 = Float64Array.from(lengths);
   for (const a of rig.adjusters) L0[a.link] *= 1 + steelExpansion * step;
-  for (const s of rig.struts) L0[s.link] *= 1 + steelExpansion * step;
+  for (const s of [...rig.struts, ...rig.braces]) L0[s.link] *= 1 + steelExpansion * step;
   rig.cables.forEach((c, k) => {
     for (let i = 0; i + 1 < c.nodes.length; i++) L0[c.firstLink + i] *= 1 + expansion.cables[k] * step;
   });

@@ -170,7 +170,7 @@ function flowHardware(book: Book, rig: RigFacts): void {
     flow,
     `Left: travel to shorten and to lengthen at the finished state, for re-tensioning. Limit: ${decimal(100 * rig.tensioning.limit, 0)} % of the capacity, which is the least of turnbuckle, fitting and anchor that the job gives. No size is chosen here from prestress: the engineer sizes turnbuckles, pins, plates and anchors from design forces.`,
   );
-  const struts = rig.facts.rig?.struts ?? [];
+  const struts = (rig.facts.rig?.struts ?? []).filter((s) => !s.brace);
   if (struts.length > 0) {
     const { span, stiffness } = paperUnits(rig.facts.job);
     const last = rig.tensioning.stages[rig.tensioning.stages.length - 1];

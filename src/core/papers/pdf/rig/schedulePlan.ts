@@ -39,7 +39,9 @@ export function drawSchedulePlan(book: Book, rig: RigFacts, view: RoofView): voi
   const at = (n: number): Vec2 => view.project(nodes[n] as Vec3);
   const stays = (rig.facts.cables ?? []).filter((c) => c.edge === null).map((c) => c.id);
   const runs = [
-    ...(rig.facts.rig?.struts ?? []).map((s) => ({ id: s.id, run: s.nodes.map(at), width: 0.9 })),
+    ...(rig.facts.rig?.struts ?? [])
+      .filter((s) => !s.brace)
+      .map((s) => ({ id: s.id, run: s.nodes.map(at), width: 0.9 })),
     ...(rig.facts.rig?.cables ?? [])
       .filter((c) => stays.includes(c.id))
       .map((c) => ({ id: c.id, run: c.nodes.map(at), width: 0.35 })),
