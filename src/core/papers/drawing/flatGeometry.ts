@@ -48,14 +48,19 @@ export function pointAlong(run: readonly Vec2[], share: number): { at: Vec2; alo
 /** A place counts as roomy when it has this share of the room of the roomiest. */
 const ROOMY = 0.75;
 
-/**
- * Of the points of an 11 × 11 grid over the box that lie roomily inside the outline, the one nearest to the box's middle, and
- * its distance to the outline. Good enough for a label. @source own
- */
-export function insidePoint(outline: readonly Vec2[]): { at: Vec2; clear: number } {
+interface InsidePlace {
+  at: Vec2;
+  /** Distance to the outline. */
+  clear: number;
+  /** Steps of the grid from the middle of the box. */
+  off: number;
+}
+
+/** The points of an 11 × 11 grid over the box that lie inside the outline. */
+function gridInside(outline: readonly Vec2[]): InsidePlace[] {
   const ring = Float64Array.from(outline.flat());
   const box = ringBox(ring);
-  const places: { at: Vec2; clear: number; off: number }[] = [];
+  const places: InsidePlace[] = [];
   for (let i = 1; i < 12; i++) {
     for (let j = 1; j < 12; j++) {
       const x = box.x0 + ((box.x1 - box.x0) * i) / 12;
@@ -64,10 +69,25 @@ export function insidePoint(outline: readonly Vec2[]): { at: Vec2; clear: number
         places.push({ at: [x, y], clear: ringDistance(ring, x, y), off: Math.hypot(i - 6, j - 6) });
     }
   }
+  return places;
+}
+
+/**
+ * Of the points of an 11 × 11 grid over the box that lie roomily inside the outline, the one nearest to the box's middle, and
+ * its distance to the outline. Good enough for a label. @source own
+ */
+export function insidePoint(outline: readonly Vec2[]): { at: Vec2; clear: number } {
+  const places = gridInside(outline);
   const room = places.reduce((most, p) => Math.max(most, p.clear), 0);
-  let best = { at: outline[0], clear: 0, off: Infinity };
+  let best: InsidePlace = { at: outline[0], clear: 0, off: Infinity };
   for (const p of places) if (p.clear >= ROOMY * room && p.off < best.off) best = p;
   return best;
+}
+
+/** Places inside the outline for a label: the one of insidePoint, then the others from the roomiest on. */
+export function insidePlaces(outline: readonly Vec2[]): Vec2[] {
+  const rest = gridInside(outline).sort((a, b) => b.clear - a.clear || a.off - b.off);
+  return [insidePoint(outline).at, ...rest.map((p) => p.at)];
 }
 
 /** Outermost crossings of a closed outline with the line through p along the unit direction d, or null where it misses. */

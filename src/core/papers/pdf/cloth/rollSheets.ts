@@ -2,15 +2,12 @@
 // pieces numbered in the order of cutting, a list to tick.
 import type { Facts, Vec2 } from "../../../records/facts.ts";
 import type { NestedRoll } from "../../../records/roll.ts";
-import { insidePoint } from "../../drawing/flatGeometry.ts";
 import { type PlacedCloth, placedInOrder, type TableBite, tableBites } from "../../drawing/placedCloth.ts";
 import { cautionsOf } from "../../words/cautions.ts";
 import { decimal } from "../../words/decimal.ts";
 import { paperUnits } from "../../words/paperUnits.ts";
-import { addSheet, type Book, closeBook, drawParagraph, type FontFiles, openBook, type Sheet } from "../layout/book.ts";
+import { addSheet, type Book, closeBook, drawParagraph, type FontFiles, openBook } from "../layout/book.ts";
 import { flowCautionsInPlace } from "../layout/cautionBlock.ts";
-import { type LabelField, setNameInPlace } from "../layout/labelField.ts";
-import { type BoxArea, drawBox, drawClipped, drawRun, drawText, SMALL } from "../layout/pen.ts";
 import {
   type Column,
   drawTable,
@@ -21,10 +18,8 @@ import {
   openFlow,
   tableHeight,
 } from "../layout/table.ts";
+import { drawRollFigure } from "./rollFigure.ts";
 
-/** Most rows a long roll is broken into, and the gap between them, mm. */
-const MOST_ROWS = 6;
-const ROW_GAP = 9;
 /** Size of tables, pt. */
 const TABLE = 10;
 /** Share of the sheet a list of pieces may take under the figure. */
@@ -47,7 +42,7 @@ function drawRoll(book: Book, roll: NestedRoll): void {
   const feeds = roll.feeds ?? [];
   const table =
     bites.length > 0
-      ? ` The table takes ${flat.whole(roll.bite ?? 0)} at once: ${feeds.length} feeds, until it begins at ${feeds.map((x) => flat.of(x)).join(", ")} ${flat.unit} from the start of the roll (dashed below).`
+      ? ` The table takes ${flat.whole(roll.bite ?? 0)} at once: ${feeds.length} feeds, until it begins at ${feeds.map((x) => flat.of(x)).join(", ")} ${flat.unit} from the start of the roll (dashed: feed 2, 3 …).`
       : "";
   const over = (100 * (roll.used - roll.lowerBound)) / Math.max(roll.lowerBound, 1e-9);
   const bound = ` No nest of these pieces needs less than ${flat.whole(roll.lowerBound)} of it (${decimal(over, 1)} % over).`;
@@ -55,7 +50,7 @@ function drawRoll(book: Book, roll: NestedRoll): void {
   const left = roll.remnant === undefined ? "" : ` Left on the roll: ${flat.whole(roll.remnant)}.`;
   const words = [
     `Fabric ${roll.fabric}, batch ${roll.batch ?? "not given"}. Width ${flat.whole(roll.width)}, usable ${flat.whole(roll.usableWidth)}, used ${flat.whole(roll.used)} of ${flat.whole(roll.length)}: ${decimal(100 * roll.utilisation, 0)} % of the cloth used.${bound}${left}${moneyWords(roll.cost, roll.currency)} ${cloth.length} pieces, at least ${flat.whole(roll.gap)} apart.${table}`,
-    `${turned}OUTER FACE UP, warp along the roll, start of the roll at the left. Numbers in the order of cutting. Crossed: flaw. The cut file rules, this figure does not: no measure is taken from it.`,
+    `${turned}OUTER FACE UP, warp along the roll, start of the roll at the left. Numbers in the order of cutting, in their pieces or at the end of a line that begins on them. Crossed: flaw. The cut file rules, this figure does not: no measure is taken from it.`,
   ];
   let y = sheet.top;
   for (const text of words) y = drawParagraph(book, sheet, text, y);
@@ -65,63 +60,12 @@ function drawRoll(book: Book, roll: NestedRoll): void {
   const below = height < BELOW * (y - sheet.bottom) ? height + 3 : 0;
   const width = sheet.right - sheet.left;
   const box = { x: sheet.left, y: sheet.bottom + below, width, height: y - sheet.bottom - below - 3 };
-  drawRows(book, sheet, roll, cloth, box);
+  drawRollFigure(book, sheet, roll, cloth, box);
   if (below > 0) {
     drawTable(book, sheet, list.columns, list.rows, { left: sheet.left, width, y: sheet.bottom + height, size: TABLE });
   } else {
     const flow = openFlow(book, `Roll ${roll.id}: pieces in the order of cutting`);
     flowTableInPlace(flow, list.columns, list.rows, { size: TABLE });
-  }
-}
-
-/** The roll in as many rows as give the greatest scale. */
-function drawRows(book: Book, sheet: Sheet, roll: NestedRoll, cloth: readonly PlacedCloth[], box: BoxArea): void {
-  const used = Math.max(roll.used, 1);
-  const scaleOf = (n: number) => Math.min((n * box.width) / used, (box.height / n - ROW_GAP) / roll.width);
-  let rows = 1;
-  for (let n = 2; n <= MOST_ROWS; n++) if (scaleOf(n) > scaleOf(rows)) rows = n;
-  const scale = scaleOf(rows);
-  const length = used / rows;
-  const selvedge = (roll.width - roll.usableWidth) / 2;
-  const { flat } = paperUnits(book.facts.job);
-  for (let k = 0; k < rows; k++) {
-    const from = k * length;
-    const base = box.y + box.height - (k + 1) * (scale * roll.width + ROW_GAP) + 4;
-    const place = ([x, y]: Vec2): Vec2 => [box.x + scale * (x - from), base + scale * (y + selvedge)];
-    const frame = { x: box.x, y: base, width: scale * length, height: scale * roll.width };
-    drawBox(sheet.page, frame, { width: 0.3 });
-    const marks: [number, "start" | "end"][] = [
-      [from, "start"],
-      [from + length, "end"],
-    ];
-    for (const [x, align] of marks) {
-      const at = { x: align === "start" ? frame.x : frame.x + frame.width, y: base - 4 };
-      drawText(sheet.page, flat.whole(x), { ...at, size: SMALL, font: book.regular, align });
-    }
-    const here = cloth.map((c, n) => ({ ...c, n })).filter((c) => c.end > from && c.start < from + length);
-    drawClipped(sheet.page, frame, () => {
-      for (const flaw of roll.flaws) {
-        const [a, b] = [place([flaw.x, flaw.y]), place([flaw.x + flaw.length, flaw.y + flaw.width])];
-        drawBox(sheet.page, { x: a[0], y: a[1], width: b[0] - a[0], height: b[1] - a[1] }, { width: 0.25 });
-        drawRun(sheet.page, [a, b], { width: 0.25 });
-      }
-      for (const c of here) drawRun(sheet.page, c.cut.map(place), { width: 0.3, closed: true });
-      for (const x of roll.feeds ?? []) {
-        const across: Vec2[] = [-selvedge, roll.usableWidth + selvedge].map((y) => place([x, y]));
-        drawRun(sheet.page, across, { width: 0.3, dash: [1.5, 1.5] });
-      }
-    });
-    const field: LabelField = { within: frame, outlines: [], taken: [] };
-    for (const c of here) {
-      const middle = insidePoint(c.cut).at;
-      // A piece cut by the end of a row is named where its middle lies.
-      if (middle[0] < from || middle[0] >= from + length) continue;
-      const at = place(middle);
-      const spots = [0, 10, -10, 20, -20, 32, -32].map((d): Vec2 => [at[0] + d, at[1]]);
-      const own = { ...field, outlines: [c.cut.map(place)] };
-      if (!setNameInPlace(book, sheet, own, `${c.n + 1}: ${c.p.panel}`, spots))
-        setNameInPlace(book, sheet, { ...field, outlines: [] }, `${c.n + 1}`, spots);
-    }
   }
 }
 
@@ -135,9 +79,9 @@ function pieceTable(
   const place = book.facts.job.units === "imperial" ? 35 : 26;
   const columns: readonly Column[] = [
     { head: ["No."], width: 14, bold: true },
-    ...(bites.length > 0 ? [{ head: ["Table", "length"], width: 17 }] : []),
+    ...(bites.length > 0 ? [{ head: ["Table", "length"], width: 20 }] : []),
     { head: ["Piece"], width: 46, bold: true },
-    { head: ["What"], width: 100 - 2 * place },
+    { head: ["What"], width: (bites.length > 0 ? 94 : 100) - 2 * place },
     { head: ["From,", flat.unit], width: place, align: "end" },
     { head: ["To,", flat.unit], width: place, align: "end" },
     { head: ["Turned"], width: 20, align: "end" },

@@ -68,6 +68,14 @@ export function takePlaceInPlace(
   return null;
 }
 
+/** Where a line from a label to a point leaves the label's box. */
+export function leaderStart(box: BoxArea, to: Vec2): Vec2 {
+  const at: Vec2 = [box.x + box.width / 2, box.y + box.height / 2];
+  const d: Vec2 = [to[0] - at[0], to[1] - at[1]];
+  const t = Math.min(1, 1 / Math.max(Math.abs(d[0]) / (box.width / 2), Math.abs(d[1]) / (box.height / 2), 1e-9));
+  return [at[0] + t * d[0], at[1] + t * d[1]];
+}
+
 /** Sets a name on white at the first free of the given middles; false where none is free. */
 export function setNameInPlace(
   book: Book,
@@ -75,17 +83,17 @@ export function setNameInPlace(
   field: LabelField,
   text: string,
   middles: Iterable<Vec2>,
-  style: { bold?: boolean; size?: number; longest?: number } = {},
+  style: { bold?: boolean; size?: number; longest?: number; height?: number } = {},
 ): boolean {
   const font = style.bold ? book.bold : book.regular;
   const size = style.size ?? SMALL;
   const shown = fitText(text, font, size, style.longest ?? 40);
   const width = textWidth(shown, font, size);
-  const height = (3.6 * size) / SMALL;
+  const height = ((style.height ?? 1) * 3.6 * size) / SMALL;
   const at = takePlaceInPlace(field, { width, height }, middles);
   if (!at) return false;
   const box = { x: at[0] - width / 2 - 0.3, y: at[1] - height / 2, width: width + 0.6, height };
   drawBox(sheet.page, box, { width: 0, fill: 1, outline: false });
-  drawText(sheet.page, shown, { x: at[0], y: at[1] - 0.32 * height, size, font, align: "middle" });
+  drawText(sheet.page, shown, { x: at[0], y: at[1] - (0.32 * 3.6 * size) / SMALL, size, font, align: "middle" });
   return true;
 }
