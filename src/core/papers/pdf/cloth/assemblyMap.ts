@@ -11,6 +11,7 @@ import { type LabelField, setNameInPlace } from "../layout/labelField.ts";
 import { type BoxArea, drawBox, drawRun } from "../layout/pen.ts";
 import { fitRoof, type RoofView } from "../layout/roofView.ts";
 import { type Column, flowGapInPlace, flowTableInPlace, flowTextInPlace, openFlow } from "../layout/table.ts";
+import { drawUnrolled } from "./unrolledMap.ts";
 
 function seamColumns(job: FactsJob): readonly Column[] {
   const { span, flat, fine } = paperUnits(job);
@@ -37,6 +38,7 @@ export function drawAssemblyMap(book: Book, view: RoofView): void {
   const top = drawParagraph(book, sheet, words, sheet.top) - 2;
   const box = { x: sheet.left, y: sheet.bottom, width: sheet.right - sheet.left, height: top - sheet.bottom };
   drawMap(book, sheet, view, box);
+  drawUnrolled(book);
   drawSchedule(book);
   drawPieces(book);
 }

@@ -1,7 +1,6 @@
 // After the map: the order of welding with what each piece weighs, what is lifted, and how the roof is folded so that it unfolds in the
 // order in which its corners are wanted.
-import type { Facts } from "../../../records/facts.ts";
-import { allMoves, rigFacts } from "../../tables/rigReadings.ts";
+import { foldOrder } from "../../tables/panelOrder.ts";
 import { orderWelds } from "../../tables/weldOrder.ts";
 import { cautionsNamed } from "../../words/cautions.ts";
 import { paperUnits } from "../../words/paperUnits.ts";
@@ -22,14 +21,6 @@ function listed(names: readonly string[]): string {
   return names.length > LISTED
     ? `${names.slice(0, LISTED).join(", ")} and ${names.length - LISTED} more`
     : names.join(", ");
-}
-
-/** Corners in the order they are moved, where there is a rig; else the anchors as the plan lists them. */
-function cornersOf(facts: Facts): string[] {
-  const rig = rigFacts(facts);
-  if (!rig) return (facts.form?.anchors ?? []).filter((a) => a.isolated).map((a) => a.id);
-  const order = [...new Set(allMoves(rig.tensioning).map((m) => m.adjuster))];
-  return order.map((id) => `${rig.adjusters.find((a) => a.id === id)?.anchor ?? "?"} (${id})`);
 }
 
 /** Order of welding, weights, folding. */
@@ -77,13 +68,21 @@ export function flowAssemblyOrder(book: Book): void {
     flow,
     "Folding and unfolding (common practice; settle it with the crew before the bundle is made)",
   );
-  const corners = cornersOf(facts);
-  const order =
-    corners.length > 0 ? ` Corners leave the bundle in this order, the first on top: ${listed(corners)}.` : "";
   flowTextInPlace(
     flow,
-    `Outer face inward. Zigzag across the strips from both long sides to the middle, then from both ends, each fold padded; every corner with its name on a tag that shows.${order} Draw on the bundle which way it unfolds and which corner of the site it is laid to.`,
+    "Outer face inward, each fold padded; every corner with its name on a tag that shows. Draw on the bundle which way it unfolds and which corner of the site it is laid to.",
   );
+  pieces.forEach((p, i) => {
+    const { corners, panels } = foldOrder(facts, p.panels);
+    const which = pieces.length > 1 ? `Piece ${i + 1}: ` : "";
+    const first = corners[0] ?? "the end that is wanted first";
+    const steps = [
+      `${which}Fold zigzag along the seams, panel by panel, the first lowest, the last on top: ${listed(panels)}.`,
+      `${which}Then fold the pack from its other end towards ${first}, so that ${first} lies on top and outside.`,
+      `${which}On site the bundle opens the other way round: ${first} leaves first and is held, then panels ${listed([...panels].reverse())}.${corners.length > 1 ? ` Corners are wanted in this order: ${listed(corners)}.` : ""}`,
+    ];
+    for (const text of steps) flowTextInPlace(flow, text);
+  });
   flowGapInPlace(flow, 3);
   flowCautionsInPlace(flow, cautionsNamed(facts, "suspended-load", "heavy-pack", "glass-folds"));
 }

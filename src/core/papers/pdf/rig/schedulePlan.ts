@@ -1,14 +1,14 @@
 // The plan a crew finds its adjusters on, and what each is set to before anything is hung.
 import type { Vec2 } from "../../../records/facts.ts";
 import type { Vec3 } from "../../../surface/surface.ts";
-import { insidePoint, pointAlong } from "../../drawing/flatGeometry.ts";
+import { insidePlaces, insidePoint, pointAlong } from "../../drawing/flatGeometry.ts";
 import { type RigFacts, startPins } from "../../tables/rigReadings.ts";
 import { travelOf } from "../../tables/rigTables.ts";
 import { cautionsNamed } from "../../words/cautions.ts";
 import { paperUnits } from "../../words/paperUnits.ts";
 import { addSheet, type Book, drawParagraph } from "../layout/book.ts";
 import { flowCautionsInPlace } from "../layout/cautionBlock.ts";
-import { type LabelField, setNameInPlace } from "../layout/labelField.ts";
+import { type LabelField, leaderStart, setNameInPlace } from "../layout/labelField.ts";
 import { type BoxArea, drawRing, drawRun, LARGE } from "../layout/pen.ts";
 import { fitRoof, type RoofView } from "../layout/roofView.ts";
 import {
@@ -32,7 +32,7 @@ function beyond(p: Vec2, from: Vec2, reach: number): Vec2 {
 /** The roof with adjusters, masts and stays named as on site. */
 export function drawSchedulePlan(book: Book, rig: RigFacts, view: RoofView): void {
   const sheet = addSheet(book, "Plan of the adjusters");
-  const words = `The roof ${view.name}, not to scale; x of the mesh to the right. Thick line and ring: adjuster with its name, then its anchor; the ring is the pin that does not move. Put the same names on the turnbuckles on site before the start. Dashed: masts and stays.`;
+  const words = `The roof ${view.name}, not to scale; x of the mesh to the right. Thick line and ring: adjuster with its name, then its anchor; the ring is the pin that does not move. Put the same names on the turnbuckles on site before the start. Dashed: masts and stays; a mast seen from above is a point.`;
   const top = drawParagraph(book, sheet, words, sheet.top, { size: BODY }) - 2;
   const box = { x: sheet.left, y: sheet.bottom, width: sheet.right - sheet.left, height: top - sheet.bottom };
   const nodes = rig.facts.rig?.nodes ?? [];
@@ -54,7 +54,8 @@ export function drawSchedulePlan(book: Book, rig: RigFacts, view: RoofView): voi
   const drawn = pins.map((p): [Vec2, Vec2] => [place(p.near), farEnd(place(p.near), place(p.far), middle)]);
   // Names keep off the adjusters; those of the border keep off the roof too.
   const inside: LabelField = { within: box, outlines: drawn, taken: drawn.map(([, end]) => around(end, 2)) };
-  const border: LabelField = { ...inside, outlines: [...drawn, ...outlines] };
+  const lines = runs.map((r) => r.run.map(place));
+  const border: LabelField = { ...inside, outlines: [...drawn, ...outlines, ...lines] };
   for (const o of outlines) drawRun(sheet.page, o, { width: 0.13, closed: true });
   for (const e of view.edges) drawRun(sheet.page, e.run.map(place), { width: 0.4 });
   for (const r of runs) drawRun(sheet.page, r.run.map(place), { width: r.width, dash: [2, 1.4] });
@@ -77,13 +78,32 @@ export function drawSchedulePlan(book: Book, rig: RigFacts, view: RoofView): voi
   }
   for (const r of runs) {
     const run = r.run.map(place);
-    const spots = [0.5, 0.35, 0.65].flatMap((f) => [0, ...AWAY].map((d) => beyond(pointAlong(run, f).at, middle, d)));
-    setNameInPlace(book, sheet, inside, r.id, spots, { size: BODY, longest: 60 });
+    // On its own line, which the name's ground interrupts; a mast seen from above is a point, its name lies beside it.
+    const at = pointAlong(run, 0.5).at;
+    const on = [0.6, 0.75, 0.5, 0.9, 0.35].map((f) => pointAlong(run, f).at);
+    const beside = AWAY.flatMap((d) => [0, 1, 2, 3, 4, 5, 6, 7].map((k): Vec2 => around8(at, d + 2, k)));
+    const upright = Math.hypot(run[run.length - 1][0] - run[0][0], run[run.length - 1][1] - run[0][1]) < UPRIGHT;
+    const spots = upright ? beside : [...on, ...beside];
+    const before = inside.taken.length;
+    const set = setNameInPlace(book, sheet, inside, r.id, spots, { size: BODY, longest: 60 });
+    if (set && upright) drawRun(sheet.page, [leaderStart(inside.taken[before], at), at], { width: 0.2 });
   }
   for (const p of view.panels) {
     const outline = (p.outlines[0] ?? []).map(place);
-    if (outline.length > 2) setNameInPlace(book, sheet, inside, p.id, [insidePoint(outline).at], { size: BODY });
+    if (outline.length < 3) continue;
+    const clear = { ...inside, outlines: [...drawn, outline] };
+    if (!setNameInPlace(book, sheet, clear, p.id, insidePlaces(outline), { size: BODY }))
+      setNameInPlace(book, sheet, inside, p.id, [insidePoint(outline).at], { size: BODY });
   }
+}
+
+/** A run shorter than this on the sheet is seen as a point, mm. */
+const UPRIGHT = 3;
+
+/** One of eight places round a point. */
+function around8([x, y]: Vec2, reach: number, k: number): Vec2 {
+  const a = (k * Math.PI) / 4;
+  return [x + 1.6 * reach * Math.cos(a), y + reach * Math.sin(a)];
 }
 
 /** Seen from above a short adjuster would vanish: it is drawn at least 5 mm long. */
