@@ -3,6 +3,7 @@
 import type { PDFFont } from "pdf-lib";
 import type { Finding, FindingLevel } from "../../problem.ts";
 import type { Facts } from "../../records/facts.ts";
+import { layoutHeads, layoutRows } from "../tables/layoutRows.ts";
 import { type LikeChecks, likeChecks } from "../tables/likeChecks.ts";
 import { type LikeFindings, likeFindings } from "../tables/likeFindings.ts";
 import { cautionsOf } from "../words/cautions.ts";
@@ -39,6 +40,16 @@ const CHECK_COLUMNS: readonly Column[] = [
   { head: ["Value"], width: 34, align: "end" },
   { head: ["Limit"], width: 34, align: "end" },
   { head: ["Held"], width: 18, bold: true },
+];
+
+const NUMBER = { width: 20, align: "end" } as const;
+
+const LAYOUT_COLUMNS: readonly Omit<Column, "head">[] = [
+  { width: 22, bold: true },
+  { width: 62 },
+  ...Array.from({ length: 7 }, () => NUMBER),
+  { width: 30 },
+  { width: 16, bold: true },
 ];
 
 const PLACES = 10;
@@ -105,6 +116,7 @@ export async function writeFindingSheets(given: Facts, fonts: FontFiles): Promis
   flowCautionsInPlace(flow, cautionsOf(facts, "findings"));
   flowEngineerInPlace(flow);
   flowFindingsInPlace(flow, facts, "note");
+  flowLayoutsInPlace(flow, facts);
   flowChecksInPlace(flow, facts);
   return closeBook(book);
 }
@@ -230,6 +242,19 @@ function flowEngineerInPlace(flow: Flow): void {
     });
   });
   flowGapInPlace(flow, 3);
+}
+
+/** Why the seams run where they do, and what else was weighed. */
+function flowLayoutsInPlace(flow: Flow, facts: Facts): void {
+  const { layouts = [] } = facts;
+  if (layouts.length === 0) return;
+  flowHeadingInPlace(flow, "Layouts of the seams, and why these were taken");
+  for (const { region, why } of layouts) flowTextInPlace(flow, `${region}: ${unitsInText(facts.job, why)}`);
+  const rows = layoutRows(facts);
+  if (rows.length === 0) return;
+  flowGapInPlace(flow, 2);
+  const columns = layoutHeads(facts).map((head, k): Column => ({ head, ...LAYOUT_COLUMNS[k] }));
+  flowTableInPlace(flow, columns, rows);
 }
 
 function flowChecksInPlace(flow: Flow, facts: Facts): void {
