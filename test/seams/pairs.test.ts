@@ -1,6 +1,7 @@
 // Seams given one by one: legs, welds, ends of strips that no layout names, and what is refused.
 import { describe, expect, test } from "vitest";
 import type { EdgePlace } from "../../src/core/records/job.ts";
+import { openSeams } from "../../src/core/seams/moveSeam.ts";
 import { noteSeamEnds } from "../../src/core/seams/noteEnds.ts";
 import { findEdge } from "../../src/core/seams/pairs.ts";
 import { buildRegions } from "../../src/core/seams/region.ts";
@@ -252,4 +253,33 @@ describe("flagged", () => {
     expect(codes(16)).toEqual(["seam-two-ways"]);
     expect(codes(8)).toEqual([]);
   });
+});
+
+test("round a ring given seams leave the panels the names that laid out gores have", () => {
+  // bug: one gore's seam slid made a list of pairs, whose panels were then named from one side of the roof to the other
+  const form = makeForm(
+    makeRing(48, 10, (turn, row) => {
+      const r = 1 + 4 * row;
+      // a rim of four corners, the gores between them of several lengths
+      const square = 1 + row * (0.25 / Math.max(Math.abs(Math.cos(turn)), Math.abs(Math.sin(turn))) - 0.25);
+      return [r * square * Math.cos(turn), r * square * Math.sin(turn), 2 * (1 - row)];
+    }),
+  );
+  for (const count of [5, 8, 11]) {
+    const options = { usableWidth: 5, maxLength: null };
+    const asked = makeJob({ layout: "gores", count });
+    const laid = runSeams(form, asked, options).output;
+    const pairs = [...openSeams(form, asked, options).ends.values()].reverse();
+    expect(pairs.length).toBe(count);
+    const given = runSeams(form, makeJob({ layout: "pairs", pairs }), options).output;
+    const middles = (of: typeof laid) =>
+      of.strips.map(({ triangles }) => {
+        const corners = triangles.flatMap((t) => [...of.surface.tri.slice(3 * t, 3 * t + 3)]);
+        return [0, 1].map((c) => corners.reduce((sum, v) => sum + of.surface.xyz[3 * v + c], 0) / corners.length);
+      });
+    const theirs = middles(laid);
+    middles(given).forEach((p, i) => {
+      expect(Math.hypot(p[0] - theirs[i][0], p[1] - theirs[i][1])).toBeLessThan(1e-6);
+    });
+  }
 });

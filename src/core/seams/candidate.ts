@@ -162,7 +162,7 @@ export function listGores(form: FoundForm, region: Region, from: string | null):
   const outer = named ? short : long;
   const upright = measureTurn(region, outer) >= 0;
   const start = buildChain(inner, 0, 0, { whole: true, reverse: upright });
-  const seat = outer.turns.length > 0 ? pickCorner(region, outer) : findLowest(region, outer);
+  const seat = findSeat(region, outer);
   const finish = buildChain(outer, seat, seat, { whole: true, reverse: !upright });
   const at: Vec3 = vertexAt(region.surface, outer.vertices[seat]);
   return [
@@ -177,6 +177,11 @@ export function listGores(form: FoundForm, region: Region, from: string | null):
       to: nameChain(form, finish),
     },
   ];
+}
+
+/** Place in a ring's outer outline at which its gores begin to be counted. */
+export function findSeat(region: Region, outer: Outline): number {
+  return outer.turns.length > 0 ? pickCorner(region, outer) : findLowest(region, outer);
 }
 
 /** The corner of an outline that lies lowest, then farthest along +x, then +y. */

@@ -4,6 +4,7 @@ import type { FoundForm } from "../records/foundForm.ts";
 import type { Job } from "../records/job.ts";
 import type { Seam, Strip, StripSide } from "../records/stripLayout.ts";
 import { vertexAt } from "../surface/measures.ts";
+import { findSeat } from "./candidate.ts";
 import type { CutForm } from "./cutStrips.ts";
 import { isOpening } from "./openHoles.ts";
 import type { RegionPlan } from "./seamPath.ts";
@@ -31,8 +32,22 @@ function pickPrefix(taken: ReadonlySet<string>, n: number, short: string, long: 
   return prefix;
 }
 
-/** Reading order of the strips: region by region, then their place in it, or from one side of the roof to the other. */
-function sortStrips(cut: CutForm): number[] {
+/** Turn of a place about a ring from where its gores begin, counter-clockwise seen from above, 0 … 2π; null for a region that is no ring. */
+function turnAbout({ region }: RegionPlan): ((p: readonly number[]) => number) | null {
+  if (region.outlines.length !== 2) return null;
+  const [outer, inner] = region.outlines;
+  const own = inner.vertices.map((v) => vertexAt(region.surface, v));
+  const centre = [0, 1].map((c) => own.reduce((sum, p) => sum + p[c] / own.length, 0));
+  const angle = (p: readonly number[]) => Math.atan2(p[1] - centre[1], p[0] - centre[0]);
+  const zero = angle(vertexAt(region.surface, outer.vertices[findSeat(region, outer)]));
+  return (p) => (angle(p) - zero + 4 * Math.PI) % (2 * Math.PI);
+}
+
+/**
+ * Reading order of the strips: region by region, then their place in it; where that is not known round a ring from where gores begin, or
+ * from one side of the roof to the other.
+ */
+function sortStrips(plans: readonly RegionPlan[], cut: CutForm): number[] {
   const middle = cut.strips.map((strip) => {
     const sum = [0, 0, 0];
     for (const t of strip.triangles)
@@ -45,13 +60,17 @@ function sortStrips(cut: CutForm): number[] {
   const spread = (c: number) => Math.max(...middle.map((m) => m[c])) - Math.min(...middle.map((m) => m[c]));
   const first = spread(0) >= spread(1) * (1 - 1e-6) ? 0 : 1;
   const scale = 1e-6 * Math.max(spread(0), spread(1), 1e-9);
+  const turns = plans.map(turnAbout);
   return cut.strips
     .map((_, s) => s)
     .sort((a, b) => {
       const p = cut.strips[a];
       const q = cut.strips[b];
+      const turn = p.place < 0 ? turns[p.region] : null;
+      const apart = turn ? turn(middle[a]) - turn(middle[b]) : 0;
+      const round = Math.abs(apart) > 1e-9 ? apart : 0;
       const steps = [first, 1 - first, 2].map((c) => middle[a][c] - middle[b][c]);
-      return p.region - q.region || p.place - q.place || (steps.find((d) => Math.abs(d) > scale) ?? a - b);
+      return p.region - q.region || p.place - q.place || round || (steps.find((d) => Math.abs(d) > scale) ?? a - b);
     });
 }
 
@@ -108,7 +127,7 @@ export function nameStrips(form: FoundForm, job: Job, plans: readonly RegionPlan
   const ends = sides.map((list, s) => findEnds(cut, s, list));
   const forced = new Set(ends.flatMap((end) => (end.split === undefined ? [] : [end.split])));
   if (forced.size > 0) sides = listSides(plans, cut, forced);
-  const order = sortStrips(cut);
+  const order = sortStrips(plans, cut);
   const rank: number[] = [];
   order.forEach((s, i) => {
     rank[s] = i;
