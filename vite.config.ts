@@ -22,8 +22,8 @@ export default defineConfig({
   },
   test: {
     include: ["test/**/*.test.ts"],
-    testTimeout: 120_000,
-    hookTimeout: 120_000,
+    testTimeout: 300_000,
+    hookTimeout: 300_000,
     // A wait of the browser tests that ran out is tried once more, and told in the report; a wrong result never is.
     retry: { count: 1, condition: /TimeoutError|Timeout \d+ms exceeded/ },
     reporters: ["default", ["json", { outputFile: "out/test-results.json" }]],

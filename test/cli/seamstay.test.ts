@@ -49,7 +49,9 @@ describe("the built command line", () => {
     expect(first).toMatchObject({ exit: 0, err: "" });
     const told = JSON.parse(first.out);
     expect(told.figures).toMatchObject({ stops: 0, checksFailed: 0 });
-    expect(told.findings.filter((f: Finding) => f.level === "caution")).toEqual([]);
+    // A roof that is pulled up has its dangers however good its job is; nothing else is to be cautioned of.
+    const cautions = told.findings.filter((f: Finding) => f.level === "caution").map((f: Finding) => f.code);
+    expect(cautions).toEqual(name === "market-hall" ? [] : ["stage-slack", "travel-alone"]);
     expect(told.figures.panels).toBeGreaterThan(1);
     for (const f of told.files) expect(existsSync(join(scratch, `a-${name}`, f.path)), f.path).toBe(true);
     expect(seamstay("plan", job, "--out", `b-${name}`, "--quiet")).toEqual({ exit: 0, out: "", err: "" });
