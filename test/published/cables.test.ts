@@ -61,34 +61,95 @@ test("T1, M20 turnbuckle with right- and left-hand ends: 7.551 turns are 37.755 
   expect(37.755 / perTurn).toBeCloseTo(7.551, 9);
 });
 
-test("T3, edge cable of 10 m chord and 1/10 sag in cloth of 2 kN/m: T = s·R = 26.000 kN, arc 10.26457 m (closed form)", () => {
-  // cloth between the arc and three straight clamped edges; the chain finds force and length of the cable by itself.
-  // a polygon falls short of its arc with the square of its sides: two meshes give the limit (Richardson)
-  const plan = (n: number) => {
-    const half = Math.atan(1 / 5) * 2;
-    const radius = 13;
-    const mesh = buildGrid(n, Math.round(n / 8), (u, v) => {
-      const a = half * (2 * u - 1);
-      const arc = radius * Math.cos(a) - radius * Math.cos(half);
-      const x = (1 - v) * (5 + radius * Math.sin(a)) + v * 10 * u;
-      return [x, (1 - v) * arc + v * 4, 3];
-    });
-    const [south, east, north, west] = listSides(n, Math.round(n / 8));
-    mesh.lines = [
-      { name: "arc", vertices: south },
-      { name: "frame", vertices: [...east, ...north.slice(1), ...west.slice(1)] },
-    ];
-    mesh.points = [{ name: "held", vertices: [...new Set([...east, ...north, ...west])] }];
-    const job = makeJob({ edges: { arc: { kind: "cable", force: null }, frame: { kind: "clamped" } } });
-    const facts = runPlan(job, { ...mesh, unit: "m", up: "z", outside: "up" }, { revision: "test" }, {});
-    const line = facts.cables?.find((c) => c.id === "arc");
-    if (!line) throw new Error("no cable along the arc");
-    return line;
-  };
-  const [coarse, fine] = [plan(64), plan(128)];
-  const limit = (q: "force" | "erectedLength") => fine[q] + (fine[q] - coarse[q]) / 3;
-  expect(Math.abs(limit("force") - 26)).toBeLessThan(1e-5);
-  expect(Math.abs(limit("erectedLength") - 10.26457)).toBeLessThan(1e-5);
-  // slack length by N = EA·(L − L0)/L0
-  expect(fine.slackLength).toBeCloseTo(fine.erectedLength / (1 + fine.force / fine.EA), 12);
-});
+// Edge cable over a chord of 10 m in cloth of 2 kN/m, closed form, recomputed: sag over chord, radius, arc, force T = s·R, the naive
+// w·L²/(8f), half angle at the end in degrees, horizontal part of the force; n: sides of the finer mesh, and how near it must come
+const edgeCables = [
+  {
+    name: "1/8",
+    sag: 1 / 8,
+    radius: 10.625,
+    arc: 10.41159,
+    force: 21.25,
+    naive: 20,
+    half: 28.072,
+    level: 18.75,
+    n: 64,
+    within: 1e-4,
+  },
+  {
+    name: "1/10",
+    sag: 1 / 10,
+    radius: 13,
+    arc: 10.26457,
+    force: 26,
+    naive: 25,
+    half: 22.62,
+    level: 24,
+    n: 128,
+    within: 1e-5,
+  },
+  {
+    name: "1/12",
+    sag: 1 / 12,
+    radius: 15.4167,
+    arc: 10.18417,
+    force: 30.833,
+    naive: 30,
+    half: 18.925,
+    level: 29.167,
+    n: 64,
+    within: 4e-4,
+  },
+  {
+    name: "1/15",
+    sag: 1 / 15,
+    radius: 19.0833,
+    arc: 10.1181,
+    force: 38.167,
+    naive: 37.5,
+    half: 15.189,
+    level: 36.833,
+    n: 64,
+    within: 4e-4,
+  },
+];
+
+test.each(edgeCables)(
+  "T3, edge cable of 10 m chord and a sag of $name in cloth of 2 kN/m: T = s·R = $force kN, arc $arc m (closed form)",
+  (given) => {
+    const half = 2 * Math.atan(2 * given.sag);
+    const radius = 5 / Math.sin(half);
+    expect(radius).toBeCloseTo(given.radius, 4);
+    expect((half * 180) / Math.PI).toBeCloseTo(given.half, 3);
+    expect(2 * radius * Math.cos(half)).toBeCloseTo(given.level, 3);
+    expect((2 * 100) / (8 * 10 * given.sag)).toBeCloseTo(given.naive, 9);
+    // cloth between the arc and three straight clamped edges; the chain finds force and length of the cable by itself.
+    // a polygon falls short of its arc with the square of its sides: two meshes give the limit (Richardson)
+    const plan = (n: number) => {
+      const mesh = buildGrid(n, Math.round(n / 8), (u, v) => {
+        const a = half * (2 * u - 1);
+        const arc = radius * Math.cos(a) - radius * Math.cos(half);
+        const x = (1 - v) * (5 + radius * Math.sin(a)) + v * 10 * u;
+        return [x, (1 - v) * arc + v * 4, 3];
+      });
+      const [south, east, north, west] = listSides(n, Math.round(n / 8));
+      mesh.lines = [
+        { name: "arc", vertices: south },
+        { name: "frame", vertices: [...east, ...north.slice(1), ...west.slice(1)] },
+      ];
+      mesh.points = [{ name: "held", vertices: [...new Set([...east, ...north, ...west])] }];
+      const job = makeJob({ edges: { arc: { kind: "cable", force: null }, frame: { kind: "clamped" } } });
+      const facts = runPlan(job, { ...mesh, unit: "m", up: "z", outside: "up" }, { revision: "test" }, {});
+      const line = facts.cables?.find((c) => c.id === "arc");
+      if (!line) throw new Error("no cable along the arc");
+      return line;
+    };
+    const [coarse, fine] = [plan(given.n / 2), plan(given.n)];
+    const limit = (q: "force" | "erectedLength") => fine[q] + (fine[q] - coarse[q]) / 3;
+    expect(Math.abs(limit("force") - 2 * radius)).toBeLessThan(given.within);
+    expect(Math.abs(2 * radius - given.force)).toBeLessThan(5e-4);
+    expect(Math.abs(limit("erectedLength") - given.arc)).toBeLessThan(Math.max(1e-5, given.within / 10));
+    // slack length by N = EA·(L − L0)/L0
+    expect(fine.slackLength).toBeCloseTo(fine.erectedLength / (1 + fine.force / fine.EA), 12);
+  },
+);

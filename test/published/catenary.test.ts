@@ -68,6 +68,40 @@ test("parabola and catenary over 20 m: a chain of the catenary's length hangs wi
   }
 });
 
+// Sag modulus over E for E 150 kN/mm2 and 83 kN/m3: stress in N/mm2, then at a span of 20 m and of 50 m
+// (Et/E = 1/(1 + (γ l)² E/(12 σ³)): Ernst 1965, EN 1993-1-11:2006 5.4.2, from memory; values recomputed)
+const sagModuli = [
+  [50, 0.784, 0.367],
+  [100, 0.967, 0.823],
+  [200, 0.996, 0.974],
+  [400, 0.9995, 0.9967],
+];
+
+test("sag modulus: a chain of many links pulled a little further apart is as soft as its sag says", () => {
+  // 1000 mm2
+  const [EA, w, n] = [150_000, 0.083, 200];
+  for (const [stress, ...ratios] of sagModuli)
+    [20, 50].forEach((span, i) => {
+      const given = 1 / (1 + ((w * span) ** 2 * EA) / (12 * stress ** 3));
+      expect(given).toBeCloseTo(ratios[i], 3);
+      // parabola of that force: its length, less what it stretches
+      const r = (w * span) / (8 * stress);
+      const L0 = (span * (1 + (8 / 3) * r * r)) / (1 + stress / EA);
+      const pull = (reach: number) => {
+        const chain = hangChain(new Array(n).fill(L0 / n), reach, w, EA);
+        expect(chain.converged).toBe(true);
+        const { force, u } = measureLink(chain.structure, chain.x, new Float64Array(n).fill(L0 / n), 0);
+        return force * u[0];
+      };
+      const step = 1e-6 * span;
+      const H = pull(span);
+      const tangent = ((pull(span + step) - pull(span - step)) / (2 * step)) * (span / EA);
+      const sag = 1 / (1 + ((w * span) ** 2 * EA) / (12 * H ** 3));
+      expect(Math.abs(tangent / sag - 1), `${stress} N/mm2, ${span} m`).toBeLessThan(0.01);
+      expect(Math.abs(H / stress - 1)).toBeLessThan(0.01);
+    });
+});
+
 test("taut string: 20 kN, 12 m, 0.70 kg/m at 7.0430 Hz; 50, 15, 1.25 at 6.6667; 100, 20, 4.0 at 3.9528; 1 % of frequency is 2.01 % of force", () => {
   for (const [force, length, mass, frequency] of [
     [20, 12, 0.7, 7.043],

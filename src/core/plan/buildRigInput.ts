@@ -97,7 +97,7 @@ function settleRing(
     noteDefault(
       notes,
       `rig.adjusters.${name}.support`,
-      `${name}: the far pin it hauls ring ${ring} to is not given; it is put 1.0 m beyond the ring's hub along the pull`,
+      `${name}: the far pin it hauls ring ${ring} to is not given; it is put 1.0 m beyond the ring's middle along the pull`,
       `write rig.adjusters.${name}.support`,
     );
   return { ring, ...(support ? { support } : {}) };

@@ -3,6 +3,7 @@ import { writeCableSheets } from "../../../src/core/papers/pdf/rig/cableSheets.t
 import { writeTensioningSchedule } from "../../../src/core/papers/pdf/rig/tensioningSchedule.ts";
 import {
   cornerDistances,
+  cornerHeights,
   holdReadings,
   jackStep,
   limitOf,
@@ -57,6 +58,10 @@ describe("readings", () => {
     const at = cornerDistances(rig, { ...stage, corners: { T1: [0, 0, 0], T2: [3, 4, 0] } });
     expect(at.find((d) => d.from === "T1" && d.to === "T2")!.atStage).toBeCloseTo(5, 9);
     expect(at.find((d) => d.from === "T1" && d.to === "T3")!.atStage).toBeNull();
+    const heights = cornerHeights(rig, { ...stage, corners: { T1: [0, 0, 2.5] } });
+    expect(heights.map((h) => h.id)).toEqual(rig.adjusters.map((a) => a.id));
+    expect([heights[0]!.atStage, heights[1]!.atStage]).toEqual([2.5, null]);
+    expect(heights[0]!.finished).toBe(facts.rig!.nodes[rig.adjusters[0]!.nodes[0]]![2]);
   });
 });
 
@@ -152,6 +157,17 @@ describe.skipIf(missing.length > 0)(`schedule as another reader finds it${reason
     expect(text).toContain("CAUTION: T4 has little left. Do this.");
     expect(text).toContain("CAUTION: the like holds for T5, T6 (findings sheets).");
     expect(textOf(await sheets)).not.toContain("What the numbers of this plan call for");
+  });
+
+  test("the visit after settling: each adjuster with its final force, window and the travel left; heights at every hold point", async () => {
+    const text = textOf(await sheets).replace(/\s+/g, " ");
+    const visit = text.slice(text.indexOf("Re-tension visit after settling"));
+    const last = holdReadings(rig, rig.tensioning.stages.at(-1)!);
+    for (const a of rig.adjusters) {
+      const { planned, low, high } = last.find((r) => r.id === a.id)!;
+      expect(visit).toContain(`${a.id} ${planned.toFixed(1)} ${low.toFixed(1)} – ${high.toFixed(1)}`);
+      expect(text).toContain(`${a.id}, height`);
+    }
   });
 
   test("every move stands on its stage's sheets with what to turn, which way, how far, tape, gauge, window and stop", async () => {

@@ -95,6 +95,19 @@ export function cornerDistances(rig: RigFacts, stage: FactsStage): CornerDistanc
   });
 }
 
+/** Heights of the near pins to level, in the order of the adjusters: z of the mesh. @units m */
+export function cornerHeights(
+  rig: RigFacts,
+  stage: FactsStage,
+): { id: string; finished: number; atStage: number | null }[] {
+  const nodes = rig.facts.rig?.nodes ?? [];
+  return rig.adjusters.map((a) => ({
+    id: a.id,
+    finished: nodes[a.nodes[0]][2],
+    atStage: stage.corners?.[a.id]?.[2] ?? null,
+  }));
+}
+
 /** Step from which on an adjuster asks for more than a hand gives at its body, or null; by estimate. */
 export function jackStep(rig: RigFacts, adjuster: FactsAdjuster): number | null {
   const thread = threadOf(adjuster);

@@ -1,5 +1,5 @@
 // Rings that a jack hauls: a closed clamped edge freed from its supports and held by one adjuster on its axis. The ring is rigid: rim,
-// spokes to two hubs on its axis and the axis itself are struts so stiff that their stretch does not count (steel rings are).
+// spokes to its middle and to two hubs on its axis are struts so stiff that their stretch does not count (steel rings are).
 import { type Finding, PlanError } from "../../problem.ts";
 import type { FormEdge } from "../../records/foundForm.ts";
 import type { AdjusterDecision } from "../../records/rig.ts";
@@ -68,21 +68,19 @@ function placeRing(input: RigInput, nodes: NodeList, a: AdjusterDecision & { rin
   const vertices = [...new Set(pieces.flat())];
   const { middle, radius } = measureRing(nodes.xyz, vertices);
   for (const v of vertices) nodes.held.fill(0, 3 * v, 3 * v + 3);
-  const drawn = a.support ?? along(middle, pull, -(1 + radius / 2) / target);
+  const drawn = a.support ?? along(middle, pull, -1 / target);
   const gap = measureDistance(middle, drawn);
   const axis = [0, 1, 2].map((k) => (drawn[k] - middle[k]) / gap) as Vec3;
-  const near = addNode(nodes, along(middle, axis, radius / 2), false);
-  const back = addNode(nodes, along(middle, axis, -radius / 2), false);
+  // the near pin is the ring's middle: its height is the ring's
+  const near = addNode(nodes, middle, false);
+  const hubs = [0.5, -0.5].map((share) => addNode(nodes, along(middle, axis, share * radius), false));
   const far = addNode(nodes, input.survey[a.ring] ?? drawn, true);
   const pairs: [number, number][] = [
     ...pieces,
-    ...vertices.flatMap((v): [number, number][] => [
-      [near, v],
-      [back, v],
-    ]),
-    [near, back],
+    ...[near, ...hubs].flatMap((hub) => vertices.map((v): [number, number] => [hub, v])),
+    ...hubs.map((hub): [number, number] => [near, hub]),
   ];
-  const turnbuckle = settleTurnbuckle(a.turnbuckle, gap - radius / 2);
+  const turnbuckle = settleTurnbuckle(a.turnbuckle, gap);
   const adjuster: PlacedAdjuster = { id: a.name, anchor: a.ring, nodes: [near, far], EA: a.EA, target, turnbuckle };
   return { adjuster, braces: pairs.map((pair, i): RingBrace => ({ id: `${a.ring}:${i + 1}`, nodes: pair })) };
 }

@@ -1,7 +1,7 @@
 // The hold point at the end of a stage: forces of all members and distances between corners, read, compared and signed before
 // anyone goes on.
 import type { FactsStage } from "../../../records/rig.ts";
-import { cornerDistances, holdReadings, type RigFacts } from "../../tables/rigReadings.ts";
+import { cornerDistances, cornerHeights, holdReadings, type RigFacts } from "../../tables/rigReadings.ts";
 import { paperUnits } from "../../words/paperUnits.ts";
 import { drawBox, drawRun, drawText, LARGE } from "../layout/pen.ts";
 import {
@@ -47,15 +47,20 @@ function forceTable(rig: RigFacts, stage: FactsStage): Table {
 function cornerTable(rig: RigFacts, stage: FactsStage): Table {
   const { span } = paperUnits(rig.facts.job);
   const distances = cornerDistances(rig, stage);
-  const planned = distances.some((d) => d.atStage !== null);
+  const heights = cornerHeights(rig, stage);
+  const planned = [...distances, ...heights].some((d) => d.atStage !== null);
   const columns: Column[] = [
-    { head: ["Between near", "pins of"], width: 44, bold: true },
+    { head: ["Near pins:", "between, height"], width: 44, bold: true },
     ...(planned ? [{ head: ["Planned", span.unit], width: 27, align: "end" as const, bold: true }] : []),
     { head: ["Finished", span.unit], width: 27, align: "end" },
     { head: ["Measured", span.unit], width: 27 },
   ];
-  const rows = distances.map((d) => [
-    `${d.from} – ${d.to}`,
+  const lines = [
+    ...distances.map((d) => ({ ...d, name: `${d.from} – ${d.to}` })),
+    ...heights.map((h) => ({ ...h, name: `${h.id}, height` })),
+  ];
+  const rows = lines.map((d) => [
+    d.name,
     ...(planned ? [d.atStage === null ? "–" : span.of(d.atStage)] : []),
     span.of(d.finished),
     "",
@@ -75,7 +80,7 @@ export function flowHoldInPlace(flow: Flow, rig: RigFacts, stage: FactsStage, k:
   const wanted = HEAD + (beside ? Math.max(...heights) : halves[0] + halves[1] + 3) + SIGN_HEIGHT;
   if (wanted > flow.y - flow.sheet.bottom) needInPlace(flow, Infinity);
   const pressed = holdReadings(rig, stage).some((r) => r.planned < 0);
-  const words = `Read all members after half an hour, compare with the window (temperature: see the table of temperatures), measure the corners. ${last ? "Lock both ends of every turnbuckle, mark them with paint." : "Nothing of the next stage is turned before this is signed."} A cable inside its pocket cannot be read: leave it blank, the adjusters decide.${pressed ? " Minus: pressed, as a mast is." : ""}`;
+  const words = `Read all members after half an hour, compare with the window (temperature: see the table of temperatures), measure the corners: distances by tape, heights by level from the height of the mesh. ${last ? "Lock both ends of every turnbuckle, mark them with paint." : "Nothing of the next stage is turned before this is signed."} A cable inside its pocket cannot be read: leave it blank, the adjusters decide.${pressed ? " Minus: pressed, as a mast is." : ""}`;
   flowHeadingInPlace(flow, `HOLD POINT ${k + 1}`);
   flowTextInPlace(flow, words, { size: BODY });
   flowGapInPlace(flow, 1.5);

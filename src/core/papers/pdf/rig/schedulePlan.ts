@@ -64,7 +64,11 @@ export function drawSchedulePlan(book: Book, rig: RigFacts, view: RoofView): voi
     drawRun(sheet.page, [near, end], { width: 1.1 });
     drawRing(sheet.page, end, 1.3, { width: 0.4, fill: 1 });
     const spots = AWAY.flatMap((r) => [beyond(end, near, r + 3), beyond(end, middle, r + 3)]);
-    setNameInPlace(book, sheet, border, `${p.id}  (${p.anchor})`, spots, { bold: true, size: 14, longest: 60 });
+    const style = { bold: true, size: 14, longest: 60 };
+    const name = `${p.id}  (${p.anchor})`;
+    // One that stands within the roof, at a ring, has no free place outside: its name lies over the cloth, before all others do.
+    if (!setNameInPlace(book, sheet, border, name, spots, style))
+      setNameInPlace(book, sheet, inside, name, spots, style);
   });
   const kinds = new Map((rig.facts.form?.edges ?? []).map((e) => [e.id, e.kind]));
   for (const e of view.edges) {

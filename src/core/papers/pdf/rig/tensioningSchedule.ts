@@ -1,5 +1,5 @@
 // The tensioning schedule: what a crew holds in its hands. Cover, plan with adjusters, one block a stage, what to do outside the
-// window, temperature, log, sign-off. The numbers are the rig station's; nothing is judged or rounded to fit here.
+// window, temperature, log, the visit after settling, sign-off. The numbers are the rig station's; nothing is judged or rounded to fit here.
 import type { Facts } from "../../../records/facts.ts";
 import type { RigFacts } from "../../tables/rigReadings.ts";
 import { closeBook, type FontFiles, openBook } from "../layout/book.ts";
@@ -8,6 +8,7 @@ import { flowCover } from "./scheduleCover.ts";
 import { drawSchedulePlan, flowStart } from "./schedulePlan.ts";
 import { flowLog, flowOutside, flowSignOff, flowTemperature } from "./scheduleRecord.ts";
 import { flowStages } from "./scheduleStages.ts";
+import { flowVisit } from "./scheduleVisit.ts";
 
 /** The bytes of tensioning-schedule.pdf. */
 export async function writeTensioningSchedule(rig: RigFacts, fonts: FontFiles): Promise<Uint8Array> {
@@ -20,6 +21,7 @@ export async function writeTensioningSchedule(rig: RigFacts, fonts: FontFiles): 
   flowOutside(book, rig);
   flowTemperature(book, rig);
   flowLog(book, rig);
+  flowVisit(book, rig);
   flowSignOff(book);
   return closeBook(book);
 }
