@@ -288,6 +288,14 @@ describe.skipIf(missing.length > 0)(`schedule as another reader finds it${reason
     expect(cables).toContain("metallic area");
   });
 
+  test("no length between corners is shortened on a narrow sheet in feet, inches and sixteenths", async () => {
+    const us = { ...facts, job: { ...facts.job, units: "imperial" as const, sheet: "Letter" as const } };
+    const far = (p: readonly number[]) => p.map((v) => 1.4123 * v) as [number, number, number];
+    const wide = { ...us, rig: { ...us.rig!, nodes: us.rig!.nodes.map(far) } };
+    const { words } = wordsOf(await writeTensioningSchedule(rigFacts(wide)!, fonts));
+    expect(words.filter((w) => /….*&quot;|'.*…/.test(w.text)).map((w) => w.text)).toEqual([]);
+  });
+
   test("a jack is asked for from the step at which the torque passes what a hand gives", async () => {
     expect(jackStep(rig, rig.adjusters[0]!)).toBeNull();
     const heavy = { ...rig.adjusters[0]!, thread: 48, perTurn: 10 };

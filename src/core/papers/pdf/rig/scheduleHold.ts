@@ -86,9 +86,11 @@ export function flowHoldInPlace(flow: Flow, rig: RigFacts, stage: FactsStage, k:
   flowGapInPlace(flow, 1.5);
   if (beside) {
     const width = flow.sheet.right - flow.sheet.left;
-    const area = { left: flow.sheet.left, width: 0.54 * width, y: flow.y, size: LARGE };
+    // Feet and inches are longer than metres, kip shorter than kN.
+    const share = rig.facts.job.units === "imperial" ? 0.45 : 0.54;
+    const area = { left: flow.sheet.left, width: share * width, y: flow.y, size: LARGE };
     drawTable(flow.book, flow.sheet, forces.columns, forces.rows, area);
-    const right = { ...area, left: flow.sheet.left + 0.56 * width, width: 0.44 * width };
+    const right = { ...area, left: flow.sheet.left + (share + 0.02) * width, width: (0.98 - share) * width };
     if (corners.rows.length > 0) drawTable(flow.book, flow.sheet, corners.columns, corners.rows, right);
     flow.y -= Math.max(...heights);
   } else {
