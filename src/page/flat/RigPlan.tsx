@@ -75,6 +75,11 @@ export function RigPlan({
         const d = [out[0] - middle[0], out[1] - middle[1]];
         const l = Math.hypot(...d) || 1;
         const force = step?.forces[a.id];
+        // two lines: below a lower corner, above an upper one, so that neither lies on the pin
+        const [left, top] = [
+          out[0] + (d[0] / l) * 3.2 * size,
+          -(out[1] + (d[1] / l) * 2 * size) - (d[1] > 0 ? 1.25 * size : 0),
+        ];
         return (
           <g
             key={a.id}
@@ -89,13 +94,13 @@ export function RigPlan({
           >
             <polyline points={line([p, q])} />
             <circle cx={out[0]} cy={-out[1]} r={0.45 * size} />
-            <text x={out[0] + (d[0] / l) * 3.2 * size} y={-(out[1] + (d[1] / l) * 2 * size)} fontSize={1.15 * size}>
+            <text x={left} y={top} fontSize={1.15 * size}>
               {a.id}
             </text>{" "}
             <text
               className="force"
-              x={out[0] + (d[0] / l) * 3.2 * size}
-              y={-(out[1] + (d[1] / l) * 2 * size) + 1.25 * size}
+              x={left}
+              y={top + 1.25 * size}
               fontSize={size}
             >
               {force === undefined ? "not pulled yet" : `${figure(force, 1)} kN`}

@@ -64,6 +64,8 @@ interface Parts {
   lit: Set<string>;
   /** Half width and height of the model as first seen, m. */
   reach: [number, number];
+  /** Whether a person has turned or moved the view: until then it shows all of whatever is put in. */
+  turned: boolean;
 }
 
 function segmentsOf(line: ModelLine): Float32Array {
@@ -130,8 +132,8 @@ export function createScene(canvas: HTMLCanvasElement, ink: SceneInk, onDraw: (p
     colours: null,
     ink,
     lit: new Set(),
-
     reach: [1, 1],
+    turned: false,
   };
   let asked = 0;
   const drawNow = () => {
@@ -144,6 +146,9 @@ export function createScene(canvas: HTMLCanvasElement, ink: SceneInk, onDraw: (p
     if (asked === 0) asked = requestAnimationFrame(drawNow);
   };
   controls.addEventListener("change", draw);
+  controls.addEventListener("start", () => {
+    parts.turned = true;
+  });
   const view = handleView({ canvas, camera, controls, renderer, scene, parts, draw });
   return {
     ...view,
@@ -262,7 +267,6 @@ function handleView(stage: Stage): Omit<SceneView, "dispose"> {
   };
   return {
     show: (model, colours) => {
-      const first = parts.model === null;
       clearInPlace(scene, parts);
       Object.assign(parts, { model, colours, mesh: buildMesh(model) });
       if (parts.mesh !== null) scene.add(parts.mesh);
@@ -276,8 +280,8 @@ function handleView(stage: Stage): Omit<SceneView, "dispose"> {
         });
       paintInPlace(parts);
       lightLinesInPlace(parts);
-      if (first) fitInPlace(stage);
-      else frameInPlace(stage);
+      if (parts.turned) frameInPlace(stage);
+      else fitInPlace(stage);
       draw();
     },
     light: (ids) => {
@@ -292,8 +296,12 @@ function handleView(stage: Stage): Omit<SceneView, "dispose"> {
       lightLinesInPlace(parts);
       draw();
     },
-    fit: () => fitInPlace(stage),
+    fit: () => {
+      parts.turned = false;
+      fitInPlace(stage);
+    },
     turn: (around, over) => {
+      parts.turned = true;
       const arm = camera.position.clone().sub(controls.target);
       const flat = Math.hypot(arm.x, arm.y);
       const tilt = Math.min(Math.max(Math.atan2(arm.z, flat) + over, -1.55), 1.55);
@@ -305,6 +313,7 @@ function handleView(stage: Stage): Omit<SceneView, "dispose"> {
       draw();
     },
     zoom: (factor) => {
+      parts.turned = true;
       camera.zoom = Math.min(Math.max(camera.zoom * factor, 0.2), 200);
       camera.updateProjectionMatrix();
       draw();

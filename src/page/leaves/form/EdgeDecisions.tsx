@@ -75,20 +75,23 @@ function Cable({ edge, own }: { edge: string; own: EdgeWord | undefined }) {
   const type = useBook((b) => b.facts?.cables?.find((c) => c.edge === edge)?.type);
   const path = `edges.${edge}.cable`;
   const given = own?.cable;
+  // what the job says of all edges is said of this one
+  const shared = useBook((b) => b.project?.job.edges?.default?.cable);
   const inline = typeof given === "object" ? given : null;
+  const word = shared === undefined ? "not given" : "as all edges";
   return (
     <>
       <ChoiceField
         label="Cable"
         path={path}
-        given={given !== undefined}
+        given={given !== undefined || shared !== undefined}
         value={inline ? "own" : typeof given === "string" ? given : ""}
         choices={[
-          { value: "", words: type === undefined ? "not given" : `not given: ${type}` },
+          { value: "", words: type === undefined || type === "job" ? word : `${word}: ${type}` },
           ...cables.cables.map((c) => ({ value: c.id, words: c.name })),
           { value: "own", words: "figures of its own" },
         ]}
-        hint={given === undefined ? "the engineer sizes it; without it the schedule is not for issue" : undefined}
+        hint={given === undefined && shared === undefined ? "the engineer sizes it; without it the schedule is not for issue" : undefined}
         onChange={(value) => {
           if (value === "own") act(setCableFigure, { edge, key: "EA", value: eaOf(given ?? type) }, `cable of ${edge}`);
           else act(setEdge, { edge, key: "cable", value: value === "" ? undefined : value }, `cable of ${edge}`);
