@@ -41,6 +41,8 @@ function planOnChange(): void {
   let timer: ReturnType<typeof setTimeout> | undefined;
   bookStore.subscribe((now, before) => {
     const { project } = now;
+    // stopped right after a change: that change is not planned either, until the next one or until it is asked for
+    if (now.status === "stopped" && before.status !== "stopped") clearTimeout(timer);
     if (project === null || (project.job === before.project?.job && project.mesh === before.project.mesh)) return;
     clearTimeout(timer);
     const fresh = project.id !== before.project?.id;

@@ -97,12 +97,7 @@ export function RigPlan({
             <text x={left} y={top} fontSize={1.15 * size}>
               {a.id}
             </text>{" "}
-            <text
-              className="force"
-              x={left}
-              y={top + 1.25 * size}
-              fontSize={size}
-            >
+            <text className="force" x={left} y={top + 1.25 * size} fontSize={size}>
               {force === undefined ? "not pulled yet" : `${figure(force, 1)} kN`}
             </text>
           </g>

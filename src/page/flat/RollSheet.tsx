@@ -145,6 +145,12 @@ function RowCloth({ roll, row, clip }: { roll: NestedRoll; row: RollRow; clip: s
 export function RollSheet({ facts, roll, shape }: { facts: Facts; roll: NestedRoll; shape: number }) {
   const svg = useRef<SVGSVGElement>(null);
   const [drag, setDrag] = useState<Drag | null>(null);
+  // what is in hand now: on a busy machine the drawing lags behind it
+  const held = useRef<Drag | null>(null);
+  const hold = (next: Drag | null) => {
+    held.current = next;
+    setDrag(next);
+  };
   const id = useId();
   const rows = rollRows(roll.used, roll.width, shape);
   const span = rows[0].to - rows[0].from;
@@ -159,15 +165,18 @@ export function RollSheet({ facts, roll, shape }: { facts: Facts; roll: NestedRo
   const grab = (e: React.PointerEvent, p: Placement) => {
     if (e.button !== 0) return;
     svg.current?.setPointerCapture(e.pointerId);
-    setDrag({ panel: p.panel, from: place(e), by: { x: 0, y: 0 } });
+    hold({ panel: p.panel, from: place(e), by: { x: 0, y: 0 } });
   };
-  const drop = () => {
-    const p = roll.placements.find((q) => q.panel === drag?.panel);
-    setDrag(null);
-    if (drag === null || p === undefined) return;
+  const wayOf = (e: React.PointerEvent, { from }: Drag) => ({ x: place(e).x - from.x, y: place(e).y - from.y });
+  const drop = (e: React.PointerEvent) => {
+    const taken = held.current;
+    const p = roll.placements.find((q) => q.panel === taken?.panel);
+    hold(null);
+    if (taken === null || p === undefined) return;
+    const by = wayOf(e, taken);
     // Rows crossed on the way count as lengths of roll.
-    const jump = Math.round(drag.by.y / pitch);
-    const [dx, dy] = [drag.by.x - jump * span, drag.by.y - jump * pitch];
+    const jump = Math.round(by.y / pitch);
+    const [dx, dy] = [by.x - jump * span, by.y - jump * pitch];
     if (Math.hypot(dx, dy) > 5 || jump !== 0) pin(roll, p, cuts.get(p.panel) ?? [], { dx, dy });
     else bookStore.setState({ chosen: p.panel });
   };
@@ -178,11 +187,9 @@ export function RollSheet({ facts, roll, shape }: { facts: Facts; roll: NestedRo
       viewBox={`${-0.02 * span} ${-0.14 * roll.width} ${1.04 * span} ${rows.length * pitch}`}
       role="group"
       aria-label={`Roll ${roll.id}, ${(roll.used / 1000).toFixed(2)} metres used`}
-      onPointerMove={(e) =>
-        drag && setDrag({ ...drag, by: { x: place(e).x - drag.from.x, y: place(e).y - drag.from.y } })
-      }
+      onPointerMove={(e) => held.current && hold({ ...held.current, by: wayOf(e, held.current) })}
       onPointerUp={drop}
-      onPointerCancel={() => setDrag(null)}
+      onPointerCancel={() => hold(null)}
     >
       {rows.map((row, i) => (
         <g key={row.from} transform={`translate(${-row.from} ${i * pitch + roll.width - edge}) scale(1 -1)`}>

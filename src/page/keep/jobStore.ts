@@ -5,6 +5,7 @@ import type { JobFile } from "../../core/job/jobSchema.ts";
 import { migrateJob } from "../../core/job/jobVersions.ts";
 import type { Leaf } from "../store/bookStore.ts";
 import type { MeshFile, Reading } from "../store/project.ts";
+import { dropWord } from "./lastWord.ts";
 import type { Line } from "./timeline.ts";
 
 /** A job as it is kept. */
@@ -129,6 +130,7 @@ export async function saveJob(
 
 /** Takes a job out of the store. */
 export async function deleteJob(id: string): Promise<void> {
+  dropWord(id);
   const db = await openShelf();
   const tx = db.transaction(["jobs", "meshes", "states"], "readwrite");
   await tx.objectStore("jobs").delete(id);

@@ -3,6 +3,7 @@
 import { bookStore, dismiss, LEAVES, type Leaf, notify, openProject } from "../store/bookStore.ts";
 import type { Project } from "../store/project.ts";
 import { loadJob, saveJob } from "./jobStore.ts";
+import { dropWord, hearWord, leaveWord } from "./lastWord.ts";
 import { isSameLine, type Line, lineOf, readLine, renameLine } from "./timeline.ts";
 
 /** Quiet time before an edit is written, ms. */
@@ -35,8 +36,10 @@ export async function openKept(id: string, leaf?: Leaf): Promise<boolean> {
   await writing;
   const found = await loadJob(id);
   if (found === null) return false;
-  shelved = { line: found.whole ? found.line : null, count: found.count };
-  openProject(readLine(found.line), leaf ?? found.leaf);
+  const last = hearWord(id, found.line);
+  // where another tab has saved since the last word was left, the counts differ, and the word goes on as a copy
+  shelved = { line: found.whole ? found.line : null, count: last?.count ?? found.count };
+  openProject(readLine(last?.line ?? found.line), leaf ?? last?.leaf ?? found.leaf);
   rememberOpen(id);
   return true;
 }
@@ -47,6 +50,8 @@ export function openNew(project: Project): void {
   shelved = { line: null, count: 0 };
   openProject({ project, past: [], future: [] });
   rememberOpen(project.id);
+  // its mesh is in no other place: no quiet time for that
+  flush();
 }
 
 /** Which job this tab has open, and on which leaf; survives a reload of this tab only. */
@@ -87,11 +92,22 @@ function flush(): void {
   writing = writing.then(() => write(shelf, lineOf({ project, past, future }), leaf));
 }
 
+/** The page goes: what the store may have no time to take is left beside it. */
+function leave(): void {
+  const { project, past, future, leaf } = bookStore.getState();
+  if (project === null) return;
+  if (shelved.line !== null) leaveWord(lineOf({ project, past, future }), shelved.line, shelved.count, leaf);
+  flush();
+}
+
 async function write(shelf: Shelved, line: Line, leaf: Leaf): Promise<void> {
   const { project } = line.states[line.at];
   const open = () => shelf === shelved;
   // What was changed while this was written is kept in its own turn.
-  const settle = () => bookStore.setState((s) => ({ keeping: open() ? s.project !== project : s.keeping }));
+  const settle = () => {
+    bookStore.setState((s) => ({ keeping: open() ? s.project !== project : s.keeping }));
+    if (!open() || bookStore.getState().project === project) dropWord(project.id);
+  };
   // The whole line: an edit taken back at once stands at the state kept before, but can be done again.
   if (shelf.line !== null && isSameLine(line, shelf.line)) return settle();
   const now = new Date().toISOString();
@@ -120,6 +136,7 @@ function forkCopy(): void {
   const forked = asCopy(lineOf({ project, past, future }));
   const { project: copy } = readLine(forked);
   shelved = { line: null, count: 0 };
+  dropWord(project.id);
   bookStore.setState({ ...readLine(forked), planned: null });
   rememberOpen(copy.id);
   notify(
@@ -153,7 +170,7 @@ export function startKeeping(): void {
     bookStore.setState({ keeping: true });
     timer = setTimeout(flush, QUIET);
   });
-  addEventListener("pagehide", flush);
+  addEventListener("pagehide", leave);
   document.addEventListener("visibilitychange", () => {
     if (document.visibilityState === "hidden") flush();
   });

@@ -8,7 +8,8 @@ import type { SentFields } from "../worker/messages.ts";
 import { buildModel, fieldValues, type Model } from "./buildModel.ts";
 import { Grips } from "./Grips.tsx";
 import { Legend } from "./Legend.tsx";
-import { createScene, type Project, type SceneInk, type SceneView } from "./scene.ts";
+import type { SceneInk } from "./paintScene.ts";
+import { createScene, type Project, type SceneView } from "./scene.ts";
 
 /** Inks of the theme, from the style sheet. */
 function readInk(element: Element): SceneInk {
@@ -30,10 +31,22 @@ function readInk(element: Element): SceneInk {
   };
 }
 
+/** Steps of a scale that colours are worked out for. */
+const STEPS = 1024;
+
 function paintCorners(model: Model, scale: Scale | null): Float32Array | null {
   if (scale === null || model.value.length === 0) return null;
+  const { min, max } = scale;
+  const table = Array.from({ length: STEPS + 1 }, (_, i) => colourOf(scale, min + (i / STEPS) * (max - min)));
+  const none = colourOf(scale, Number.NaN);
   const out = new Float32Array(3 * model.value.length);
-  for (let i = 0; i < model.value.length; i++) out.set(colourOf(scale, model.value[i]), 3 * i);
+  for (let i = 0; i < model.value.length; i++) {
+    const at = Math.round((STEPS * (model.value[i] - min)) / (max - min));
+    const [r, g, b] = Number.isNaN(at) ? none : table[Math.min(Math.max(at, 0), STEPS)];
+    out[3 * i] = r;
+    out[3 * i + 1] = g;
+    out[3 * i + 2] = b;
+  }
   return out;
 }
 
@@ -64,9 +77,25 @@ const KEYS: Record<string, (view: SceneView) => void> = {
   "0": (v) => v.fit(),
 };
 
-/** Mounts the scene on the canvas and feeds it; returns it once it stands. */
-function useScene(model: Model | null, scale: Scale | null) {
-  const canvas = useRef<HTMLCanvasElement>(null);
+/** The one canvas of the page with its scene: making one blocks the page, so the leaves hand it on. */
+let kept: { canvas: HTMLCanvasElement; view: SceneView } | null = null;
+
+/** Puts the canvas into a place of the page. @throws Error where the browser draws no WebGL */
+function takeScene(host: HTMLElement): NonNullable<typeof kept> {
+  const canvas = kept?.canvas ?? document.createElement("canvas");
+  host.prepend(canvas);
+  try {
+    kept ??= { canvas, view: createScene(canvas, readInk(canvas)) };
+  } catch (error) {
+    canvas.remove();
+    throw error;
+  }
+  return kept;
+}
+
+/** Brings the scene into its place and feeds it; `words` says what is drawn. */
+function useScene(model: Model | null, scale: Scale | null, words: string) {
+  const host = useRef<HTMLDivElement>(null);
   const names = useRef<HTMLDivElement>(null);
   const view = useRef<SceneView | null>(null);
   const labels = useRef<Model["labels"]>([]);
@@ -75,33 +104,45 @@ function useScene(model: Model | null, scale: Scale | null) {
   const pointed = useBook((b) => b.pointed);
   const chosen = useBook((b) => b.chosen);
   const theme = useBook((b) => b.theme);
+  const job = useBook((b) => b.project?.id ?? "");
   useEffect(() => {
-    const element = canvas.current;
-    if (element === null) return;
-    let made: SceneView;
+    if (host.current === null) return;
+    let taken: NonNullable<typeof kept>;
     try {
-      made = createScene(element, readInk(element), (project) => {
-        placeLabels(names.current, labels.current, project);
-        putGrips.current?.(project);
-      });
+      taken = takeScene(host.current);
     } catch {
       setBroken(true);
       return;
     }
+    const { canvas, view: made } = taken;
     view.current = made;
+    made.watch((project) => {
+      placeLabels(names.current, labels.current, project);
+      putGrips.current?.(project);
+    });
     const watch = new ResizeObserver(() => made.resize());
-    watch.observe(element);
+    watch.observe(canvas);
     return () => {
       watch.disconnect();
-      made.dispose();
+      made.watch(null);
+      canvas.remove();
       view.current = null;
     };
   }, []);
   useEffect(() => {
+    const canvas = host.current?.querySelector("canvas");
+    canvas?.setAttribute("tabindex", "0");
+    canvas?.setAttribute("role", "application");
+    canvas?.setAttribute(
+      "aria-label",
+      `${words} Turn with the arrow keys, + and − come closer and go back, 0 shows all.`,
+    );
+  }, [words]);
+  useEffect(() => {
     if (model === null || view.current === null) return;
     labels.current = model.labels;
-    view.current.show(model, paintCorners(model, scale));
-  }, [model, scale]);
+    view.current.show(job, model, paintCorners(model, scale));
+  }, [job, model, scale]);
   // while a seam's end is slid the surface is not drawn again: without a graphics card that would block the page
   const held = useBook((b) => b.hand !== null && b.hand.laid === null);
   useEffect(() => {
@@ -109,7 +150,7 @@ function useScene(model: Model | null, scale: Scale | null) {
   }, [pointed, chosen, held]);
   // biome-ignore lint/correctness/useExhaustiveDependencies: the inks are read from the sheet of the theme
   useEffect(() => {
-    const apply = () => canvas.current && view.current?.ink(readInk(canvas.current));
+    const apply = () => host.current && view.current?.ink(readInk(host.current));
     requestAnimationFrame(apply);
     const dark = matchMedia("(prefers-color-scheme: dark)");
     dark.addEventListener("change", apply);
@@ -119,7 +160,7 @@ function useScene(model: Model | null, scale: Scale | null) {
     putGrips.current = put;
   }, []);
   const project = useCallback(() => view.current?.project ?? null, []);
-  return { canvas, names, view, broken, hookGrips, project };
+  return { host, names, view, broken, hookGrips, project };
 }
 
 function choose(id: string | null): void {
@@ -144,19 +185,16 @@ export function SolidView(props: {
     const values = fieldValues(fields, field);
     return values === null ? null : scaleOf(field, values, facts.form?.stress ?? { warp: 1, weft: 1 });
   }, [facts, fields, field]);
-  const { canvas, names, view, broken, hookGrips, project } = useScene(model, scale);
+  const { host, names, view, broken, hookGrips, project } = useScene(model, scale, words);
   const pointed = useBook((b) => b.pointed);
   const chosen = useBook((b) => b.chosen);
   const place = (e: { nativeEvent: { offsetX: number; offsetY: number } }) =>
     [e.nativeEvent.offsetX, e.nativeEvent.offsetY] as const;
   return (
     <div className="solid">
-      {/* biome-ignore lint/a11y/noInteractiveElementToNoninteractiveRole: turned by keys of its own */}
-      <canvas
-        ref={canvas}
-        tabIndex={0}
-        role="application"
-        aria-label={`${words} Turn with the arrow keys, + and − come closer and go back, 0 shows all.`}
+      {/* biome-ignore lint/a11y/noStaticElementInteractions: the canvas in it has the role and the focus */}
+      <div
+        ref={host}
         onPointerMove={(e) => e.buttons === 0 && point(view.current?.pick(...place(e)) ?? null)}
         onPointerLeave={() => point(null)}
         onClick={(e) => choose(view.current?.pick(...place(e)) ?? null)}

@@ -3,7 +3,6 @@ import {
   AmbientLight,
   BufferAttribute,
   BufferGeometry,
-  Color,
   DirectionalLight,
   DoubleSide,
   Mesh,
@@ -20,18 +19,16 @@ import { LineMaterial } from "three/addons/lines/LineMaterial.js";
 import { LineSegments2 } from "three/addons/lines/LineSegments2.js";
 import { LineSegmentsGeometry } from "three/addons/lines/LineSegmentsGeometry.js";
 import type { Model, ModelLine } from "./buildModel.ts";
-
-/** Colours of a theme, as CSS writes them. */
-export interface SceneInk {
-  cloth: string;
-  clothOther: string;
-  lit: string;
-  lines: Record<ModelLine["kind"], string>;
-}
+import { density, linearise, paintInPlace, type SceneInk, type SceneParts } from "./paintScene.ts";
 
 export interface SceneView {
-  /** Puts a model in; `colours` 9*nT red, green, blue of each corner, or null for plain cloth. */
-  show: (model: Model, colours: Float32Array | null) => void;
+  /**
+   * Puts a model of a job in; `colours` 9*nT red, green, blue of each corner, or null for plain cloth. Another job is shown whole,
+   * the same one as it was turned.
+   */
+  show: (job: string, model: Model, colours: Float32Array | null) => void;
+  /** Who is told after each drawing where things lie now; null: nobody. */
+  watch: (onDraw: ((project: Project) => void) | null) => void;
   light: (ids: readonly (string | null)[]) => void;
   ink: (ink: SceneInk) => void;
   fit: () => void;
@@ -42,30 +39,6 @@ export interface SceneView {
   pick: (x: number, y: number) => string | null;
   project: Project;
   resize: () => void;
-  dispose: () => void;
-}
-
-const WIDTHS: Record<ModelLine["kind"], number> = {
-  seam: 2,
-  cable: 4,
-  clamped: 5,
-  free: 2,
-  inner: 4,
-  adjuster: 5,
-  strut: 5,
-};
-
-interface Parts {
-  model: Model | null;
-  mesh: Mesh<BufferGeometry, MeshLambertMaterial> | null;
-  lines: { line: ModelLine; object: LineSegments2; material: LineMaterial }[];
-  colours: Float32Array | null;
-  ink: SceneInk;
-  lit: Set<string>;
-  /** Half width and height of the model as first seen, m. */
-  reach: [number, number];
-  /** Whether a person has turned or moved the view: until then it shows all of whatever is put in. */
-  turned: boolean;
 }
 
 function segmentsOf(line: ModelLine): Float32Array {
@@ -73,30 +46,6 @@ function segmentsOf(line: ModelLine): Float32Array {
   const out = new Float32Array(6 * Math.max(points.length - 1, 0));
   for (let i = 1; i < points.length; i++) out.set([...points[i - 1], ...points[i]], 6 * (i - 1));
   return out;
-}
-
-/** Colours of the corners: the field's, or cloth with every other panel a little darker; what is lit is mixed with the lit ink. */
-function paintInPlace(parts: Parts): void {
-  const { model, mesh, colours, ink, lit } = parts;
-  if (model === null || mesh === null) return;
-  const plain = [new Color(ink.cloth), new Color(ink.clothOther)];
-  const lamp = new Color(ink.lit);
-  const attribute = mesh.geometry.getAttribute("color") as BufferAttribute;
-  const out = attribute.array as Float32Array;
-  const one = new Color();
-  for (let t = 0; t < model.owner.length; t++) {
-    const isLit = lit.has(model.owners[model.owner[t]] ?? "") && model.owners.length > 1;
-    for (let c = 0; c < 3; c++) {
-      const at = 9 * t + 3 * c;
-      if (colours === null) one.copy(plain[model.owner[t] % 2] ?? lamp);
-      else one.setRGB(colours[at], colours[at + 1], colours[at + 2], "srgb");
-      if (isLit) one.lerp(lamp, 0.45);
-      out[at] = one.r;
-      out[at + 1] = one.g;
-      out[at + 2] = one.b;
-    }
-  }
-  attribute.needsUpdate = true;
 }
 
 function buildMesh(model: Model): Mesh<BufferGeometry, MeshLambertMaterial> {
@@ -115,9 +64,16 @@ function buildMesh(model: Model): Mesh<BufferGeometry, MeshLambertMaterial> {
   return new Mesh(geometry, material);
 }
 
-/** A view on a canvas. @throws Error where the browser draws no WebGL */
-export function createScene(canvas: HTMLCanvasElement, ink: SceneInk, onDraw: (project: Project) => void): SceneView {
+/**
+ * A view on a canvas that lies on the page. Without a graphics card it takes the browser 0.1 s to make a canvas and to size it, so it
+ * is sized before anything is drawn on it, and only when its size changes.
+ * @throws Error where the browser draws no WebGL
+ */
+export function createScene(canvas: HTMLCanvasElement, ink: SceneInk): SceneView {
+  Object.assign(canvas, { width: density() * canvas.clientWidth, height: density() * canvas.clientHeight });
   const renderer = new WebGLRenderer({ canvas, antialias: true, alpha: true });
+  // asking for faults of the shaders would wait until they are compiled
+  renderer.debug.checkShaderErrors = false;
   const scene = new Scene();
   const camera = new OrthographicCamera(-1, 1, 1, -1, 0.01, 1000);
   camera.up.set(0, 0, 1);
@@ -125,22 +81,26 @@ export function createScene(canvas: HTMLCanvasElement, ink: SceneInk, onDraw: (p
   controls.enableDamping = false;
   const sun = new DirectionalLight("#ffffff", 2.1);
   scene.add(new AmbientLight("#ffffff", 1.25), sun);
-  const parts: Parts = {
+  const parts: SceneParts = {
     model: null,
     mesh: null,
     lines: [],
     colours: null,
     ink,
     lit: new Set(),
+    stale: false,
+    job: "",
     reach: [1, 1],
     turned: false,
   };
   let asked = 0;
+  let told: ((project: Project) => void) | null = null;
   const drawNow = () => {
     asked = 0;
+    if (parts.stale) paintInPlace(parts);
     sun.position.copy(camera.position).add(new Vector3(-3, -2, 8));
     renderer.render(scene, camera);
-    onDraw(projector(camera, canvas));
+    told?.(projector(camera, canvas));
   };
   const draw = () => {
     if (asked === 0) asked = requestAnimationFrame(drawNow);
@@ -152,11 +112,8 @@ export function createScene(canvas: HTMLCanvasElement, ink: SceneInk, onDraw: (p
   const view = handleView({ canvas, camera, controls, renderer, scene, parts, draw });
   return {
     ...view,
-    dispose: () => {
-      cancelAnimationFrame(asked);
-      controls.dispose();
-      clearInPlace(scene, parts);
-      renderer.dispose();
+    watch: (onDraw) => {
+      told = onDraw;
     },
   };
 }
@@ -171,7 +128,7 @@ function projector(camera: OrthographicCamera, canvas: HTMLCanvasElement): Proje
   };
 }
 
-function clearInPlace(scene: Scene, parts: Parts): void {
+function clearInPlace(scene: Scene, parts: SceneParts): void {
   if (parts.mesh !== null) {
     scene.remove(parts.mesh);
     parts.mesh.geometry.dispose();
@@ -192,7 +149,7 @@ interface Stage {
   controls: OrbitControls;
   renderer: WebGLRenderer;
   scene: Scene;
-  parts: Parts;
+  parts: SceneParts;
   draw: () => void;
 }
 
@@ -225,8 +182,8 @@ function centreInPlace({ camera, controls, parts }: Stage): [number, number] {
 function frameInPlace(stage: Stage): void {
   const { canvas, camera, renderer, parts } = stage;
   const [w, h] = [Math.max(canvas.clientWidth, 1), Math.max(canvas.clientHeight, 1)];
-  renderer.setPixelRatio(Math.min(devicePixelRatio, 2));
-  renderer.setSize(w, h, false);
+  const [wide, high] = [w, h].map((n) => Math.floor(density() * n));
+  if (canvas.width !== wide || canvas.height !== high) renderer.setSize(wide, high, false);
   const radius = parts.mesh?.geometry.boundingSphere?.radius ?? 1;
   const [halfWide, halfHigh] = parts.reach;
   const half = 1.12 * Math.max(halfHigh, (halfWide * h) / w);
@@ -239,7 +196,6 @@ function frameInPlace(stage: Stage): void {
     far: 30 * radius,
   });
   camera.updateProjectionMatrix();
-  for (const { material } of parts.lines) material.resolution.set(w, h);
 }
 
 function fitInPlace(stage: Stage): void {
@@ -257,7 +213,7 @@ function fitInPlace(stage: Stage): void {
   stage.draw();
 }
 
-function handleView(stage: Stage): Omit<SceneView, "dispose"> {
+function handleView(stage: Stage): Omit<SceneView, "watch"> {
   const { canvas, camera, controls, scene, parts, draw } = stage;
   const ray = new Raycaster();
   const hit = (x: number, y: number) => {
@@ -266,34 +222,41 @@ function handleView(stage: Stage): Omit<SceneView, "dispose"> {
     return ray.intersectObject(parts.mesh)[0];
   };
   return {
-    show: (model, colours) => {
+    show: (job, model, colours) => {
       clearInPlace(scene, parts);
-      Object.assign(parts, { model, colours, mesh: buildMesh(model) });
+      const linear = colours === null ? null : linearise(colours);
+      Object.assign(parts, {
+        job,
+        model,
+        colours: linear,
+        mesh: buildMesh(model),
+        turned: parts.turned && job === parts.job,
+      });
       if (parts.mesh !== null) scene.add(parts.mesh);
       parts.lines = model.lines
         .filter((l) => l.points.length > 1)
         .map((line) => {
-          const material = new LineMaterial({ color: parts.ink.lines[line.kind], linewidth: WIDTHS[line.kind] });
+          const material = new LineMaterial({ color: parts.ink.lines[line.kind] });
           const object = new LineSegments2(new LineSegmentsGeometry().setPositions(segmentsOf(line)), material);
           scene.add(object);
           return { line, object, material };
         });
-      paintInPlace(parts);
-      lightLinesInPlace(parts);
+      parts.stale = true;
       if (parts.turned) frameInPlace(stage);
       else fitInPlace(stage);
       draw();
     },
     light: (ids) => {
-      parts.lit = new Set(ids.filter((id) => id !== null));
-      paintInPlace(parts);
-      lightLinesInPlace(parts);
+      const lit = new Set(ids.filter((id) => id !== null));
+      if (lit.size === parts.lit.size && [...lit].every((id) => parts.lit.has(id))) return;
+      parts.lit = lit;
+      parts.stale = true;
       draw();
     },
     ink: (ink) => {
+      if (JSON.stringify(ink) === JSON.stringify(parts.ink)) return;
       parts.ink = ink;
-      paintInPlace(parts);
-      lightLinesInPlace(parts);
+      parts.stale = true;
       draw();
     },
     fit: () => {
@@ -330,12 +293,4 @@ function handleView(stage: Stage): Omit<SceneView, "dispose"> {
       draw();
     },
   };
-}
-
-function lightLinesInPlace(parts: Parts): void {
-  for (const { line, material } of parts.lines) {
-    const lit = parts.lit.has(line.id);
-    material.color.set(lit ? parts.ink.lit : parts.ink.lines[line.kind]);
-    material.linewidth = WIDTHS[line.kind] + (lit ? 3 : 0);
-  }
 }

@@ -91,7 +91,11 @@ function Cable({ edge, own }: { edge: string; own: EdgeWord | undefined }) {
           ...cables.cables.map((c) => ({ value: c.id, words: c.name })),
           { value: "own", words: "figures of its own" },
         ]}
-        hint={given === undefined && shared === undefined ? "the engineer sizes it; without it the schedule is not for issue" : undefined}
+        hint={
+          given === undefined && shared === undefined
+            ? "the engineer sizes it; without it the schedule is not for issue"
+            : undefined
+        }
         onChange={(value) => {
           if (value === "own") act(setCableFigure, { edge, key: "EA", value: eaOf(given ?? type) }, `cable of ${edge}`);
           else act(setEdge, { edge, key: "cable", value: value === "" ? undefined : value }, `cable of ${edge}`);

@@ -1,0 +1,145 @@
+// Acts that come faster than the page can follow: nothing of what was done is lost, and nothing old stands where the new should.
+import type { Page } from "playwright-core";
+import { afterAll, beforeAll, describe, expect, it } from "vitest";
+import {
+  type Bench,
+  type Desk,
+  enter,
+  fieldOf,
+  kept,
+  LONG,
+  planned,
+  plannedAnew,
+  SOON,
+  setUp,
+  shows,
+  turnTo,
+} from "./bench.ts";
+import { SMALL_JOB, smallFiles } from "./smallForm.ts";
+
+let bench: Bench;
+beforeAll(async () => {
+  bench = await setUp();
+}, LONG);
+afterAll(() => bench?.close());
+
+async function openSmall(job = SMALL_JOB): Promise<Desk> {
+  const desk = await bench.open();
+  await desk.page.getByLabel("Choose files").setInputFiles(smallFiles(job));
+  return desk;
+}
+
+/** A job whose nesting lasts until it is stopped. */
+const ENDLESS = { ...SMALL_JOB, nest: { steps: 1e7 } };
+
+const nesting = (page: Page) => page.locator(".doing").getByText(/nest|roll/i);
+
+describe("rapid acts", { timeout: LONG }, () => {
+  it("a panel dragged on the roll in one stroke, down, moved and let go before anything is drawn, is pinned", async () => {
+    const { page, context, faults } = await openSmall();
+    const revision = await planned(page);
+    await turnTo(page, "Rolls");
+    await page.locator("svg.roll g.placed").last().waitFor();
+    await page.evaluate(() => {
+      const svg = document.querySelector("svg.roll");
+      const piece = [...document.querySelectorAll("svg.roll g.placed path")].at(-1);
+      if (!svg || !piece) throw new Error("nothing lies on the roll");
+      // a pointer that is not a true one cannot be captured
+      svg.setPointerCapture = () => {};
+      const { left, top, width, height } = piece.getBoundingClientRect();
+      const tell = (target: Element, type: string, dx: number) =>
+        target.dispatchEvent(
+          new PointerEvent(type, {
+            bubbles: true,
+            clientX: left + width / 2 + dx,
+            clientY: top + height / 2,
+            button: 0,
+          }),
+        );
+      tell(piece, "pointerdown", 0);
+      tell(svg, "pointermove", 40);
+      tell(svg, "pointermove", 80);
+      tell(svg, "pointerup", 80);
+    });
+    await page.getByRole("button", { name: "Let go" }).waitFor();
+    await plannedAnew(page, revision);
+    expect(faults).toEqual([]);
+    await context.close();
+  });
+
+  it("edited again and again while it is planned, the last word is what is planned", async () => {
+    const { page, context, faults } = await openSmall(ENDLESS);
+    await turnTo(page, "Rolls");
+    await nesting(page).waitFor();
+    for (const gap of ["21", "22", "23"]) await enter(page, "Gap between cuts", gap);
+    await enter(page, "Steps of search", "1");
+    await planned(page);
+    await shows(page, "Gap between cuts", "23");
+    const between = page.getByRole("row", { name: "Between cuts" }).first();
+    await expect.poll(() => between.innerText(), SOON).toContain("23");
+    expect(faults).toEqual([]);
+    await context.close();
+  });
+
+  it("stopped right after an edit, it says so and stays stopped; planned again it is the edited job", async () => {
+    const { page, context, faults } = await openSmall(ENDLESS);
+    await turnTo(page, "Rolls");
+    await nesting(page).waitFor();
+    // Edit and stop in one breath, so that the edit's own plan has not begun.
+    await fieldOf(page, "Gap between cuts").fill("24");
+    await fieldOf(page, "Gap between cuts").evaluate((field) => {
+      field.dispatchEvent(new KeyboardEvent("keydown", { key: "Enter", bubbles: true }));
+      document.querySelector<HTMLElement>(".state button")?.click();
+    });
+    await page.getByText("Stopped", { exact: true }).waitFor();
+    // longer than the quiet time after which an edit is planned
+    await page.waitForTimeout(600);
+    await page.getByText("Stopped", { exact: true }).waitFor();
+    await enter(page, "Steps of search", "1");
+    await planned(page);
+    await shows(page, "Gap between cuts", "24");
+    expect(faults).toEqual([]);
+    await context.close();
+  });
+
+  it("reloaded while it is planned, right after an edit, the edit is there and planning begins again", async () => {
+    const { page, context, faults } = await openSmall(ENDLESS);
+    await turnTo(page, "Rolls");
+    await nesting(page).waitFor();
+    await kept(page);
+    await enter(page, "Gap between cuts", "26");
+    await page.reload();
+    await shows(page, "Gap between cuts", "26");
+    await page.getByRole("progressbar", { name: "Planning" }).waitFor();
+    await page.getByRole("button", { name: "Undo gap between cuts" }).waitFor();
+    await fieldOf(page, "Steps of search").waitFor();
+    expect(faults).toEqual([]);
+    await context.close();
+  });
+
+  it("a leaf turned while the papers are written: they are there when one comes back, of the newest plan", async () => {
+    const { page, context, faults } = await openSmall();
+    const first = await planned(page);
+    await turnTo(page, "Papers");
+    await turnTo(page, "Rolls");
+    await enter(page, "Gap between cuts", "27");
+    await turnTo(page, "Papers");
+    const revision = (await plannedAnew(page, first)).replace("Planned, revision ", "");
+    await page.getByText(new RegExp(`files, revision ${revision}`)).waitFor();
+    expect(faults).toEqual([]);
+    await context.close();
+  });
+
+  it("another job opened while one is planned: nothing of the former one comes after it", async () => {
+    const { page, context, faults } = await openSmall(ENDLESS);
+    await turnTo(page, "Rolls");
+    await nesting(page).waitFor();
+    await page.getByRole("button", { name: /open the list of jobs/ }).click();
+    await page.getByLabel("Choose files").setInputFiles(smallFiles({ ...SMALL_JOB, title: "Second booth" }));
+    await planned(page);
+    await page.getByRole("button", { name: "Seamstay Second booth, open the list of jobs" }).waitFor();
+    await page.getByRole("button", { name: "Undo", exact: true }).and(page.locator(":disabled")).waitFor();
+    expect(faults).toEqual([]);
+    await context.close();
+  });
+});
