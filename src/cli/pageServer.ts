@@ -43,6 +43,8 @@ const GUARDS = {
   "x-content-type-options": "nosniff",
   "referrer-policy": "no-referrer",
   "cross-origin-opener-policy": "same-origin",
+  // with the line before: the threads of the nest may share memory
+  "cross-origin-embedder-policy": "require-corp",
   "cross-origin-resource-policy": "same-origin",
   "permissions-policy": "camera=(), microphone=(), geolocation=()",
 };

@@ -34,6 +34,10 @@ async function figureOf(what: string): Promise<number> {
 }
 
 describe("leaves", { timeout: LONG }, () => {
+  it("may share memory among its workers, so that the nest has its threads", async () => {
+    await expect.poll(() => desk.page.evaluate(() => crossOriginIsolated), SOON).toBe(true);
+  });
+
   it("Form: prestress is read with a comma, and undo takes it back", async () => {
     const { page } = desk;
     const before = await figureOf("Area");

@@ -50,6 +50,14 @@ describe("the server of the page", () => {
     expect((await ask("/assets/a.js?x=1")).headers["cache-control"]).toMatch(/immutable/);
   });
 
+  // HTML standard, cross-origin isolation: both headers on the page, the second on every worker script too
+  it.each(["/", "/assets/a.js"])("lets the threads of the nest share memory (%s)", async (path) => {
+    expect((await ask(path)).headers).toMatchObject({
+      "cross-origin-opener-policy": "same-origin",
+      "cross-origin-embedder-policy": "require-corp",
+    });
+  });
+
   it.each(["evil.example", "evil.example:80", "127.0.0.1", "127.0.0.1.evil.example", "localhost:1"])(
     "refuses the Host %j",
     async (host) => {

@@ -19,6 +19,7 @@ import { PlanError, type Station } from "../../core/problem.ts";
 import type { Facts } from "../../core/records/facts.ts";
 import { describeFault } from "./describeFault.ts";
 import type { Reply, Request, SentRoof } from "./messages.ts";
+import { openNestThreads } from "./nestThreads.ts";
 
 // The schema library may compile its checks into code; the page forbids that, so it must not even try.
 config({ jitless: true });
@@ -80,10 +81,11 @@ function correct(request: Extract<Request, { kind: "correct" }>): void {
   post({ kind: "corrected", run, corrected });
 }
 
-function plan(request: Extract<Request, { kind: "plan" }>): void {
+async function plan(request: Extract<Request, { kind: "plan" }>): Promise<void> {
   const { run } = request;
   const input = read(request);
   post({ kind: "read", run, job: input.job, revision: input.revision });
+  const workShares = await openNestThreads();
   let station: Station = "job";
   const cap = capNest(input.job.nest.seconds, () => performance.now());
   const tell = createTeller(run, () => station);
@@ -106,7 +108,7 @@ function plan(request: Extract<Request, { kind: "plan" }>): void {
       onFacts,
       onRoof: (roof) => request.roofs.postMessage({ run, roof } satisfies SentRoof),
     },
-    { onProgress: tell, cancelled: cap.cancelled, elapsed: cap.elapsed },
+    { onProgress: tell, cancelled: cap.cancelled, elapsed: cap.elapsed, ...(workShares ? { workShares } : {}) },
   );
   const facts = complete(planned);
   const fields = measureFields(facts, input.job.warp);
@@ -137,7 +139,7 @@ async function papers(run: number, facts: Facts): Promise<void> {
 self.onmessage = async (event: MessageEvent<Request>) => {
   const request = event.data;
   try {
-    if (request.kind === "plan") plan(request);
+    if (request.kind === "plan") await plan(request);
     else if (request.kind === "correct") correct(request);
     else await papers(request.run, request.facts);
   } catch (error) {
