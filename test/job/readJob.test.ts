@@ -361,6 +361,18 @@ describe("what is refused", () => {
     ["job-turnbuckle-unknown", "rig.adjusters[0].turnbuckle", "open-body-m20", "rig.adjusters.0.turnbuckle", "M20"],
     ["job-turnbuckle", "rig.adjusters[1].turnbuckle", "pin to pin", "rig.adjusters.1.turnbuckle.longest", 300],
     ["job-adjuster-place", "rig.adjusters[0]", "one end of an edge", "rig.adjusters.0.edge", "north"],
+    ["job-adjuster-place", "rig.adjusters[0]", "or hauls a ring", "rig.adjusters.0.ring", "ring"],
+    ["job-adjuster-place", "rig.adjusters[0]", "its far pin", "rig.adjusters.0.support", [0, 0, 9]],
+    [
+      "job-adjuster-place",
+      "rig.adjusters[1]",
+      "one jack hauls one ring",
+      "rig.adjusters",
+      [
+        { name: "J1", ring: "top" },
+        { name: "J2", ring: "top" },
+      ],
+    ],
     ["job-stages", "rig.stages[2]", "0.2 does not rise", "rig.stages.2", 0.2],
     ["job-mesh", "mesh", "both a file and an inline mesh", "mesh.vertices", []],
     ["job-mesh", "mesh", "not complete", "mesh", { vertices: [] }],
