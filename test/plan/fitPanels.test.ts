@@ -123,8 +123,10 @@ describe("room on the cloth", () => {
     const [choice] = seams.output.choices;
     expect(choice.count).toBe(4);
     expect(choice.why).toMatch(
-      / 3 strips from E4 to E2 were cut too: up to 25\d\d mm wide, flap of 100 mm included, of 2450 mm usable\./,
+      / 3 strips from E4 to E2 were cut too: up to 25\d\d mm wide, pocket of 100 mm included, of 2450 mm usable\. They may fit with the pockets as separate strips/,
     );
+    const apart = { ...job, allowances: { ...job.allowances, pocketStrip: true } };
+    expect(fitOn(cables, apart).seams.output.choices[0].count).toBe(3);
     expect(fitOn(form, job).seams.output.choices[0].why).not.toContain("were cut too");
   });
 

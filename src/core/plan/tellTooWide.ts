@@ -5,9 +5,9 @@ import type { LayoutChoice } from "../records/stripLayout.ts";
 import { type ClothRoom, isTurned, measureExtent } from "./clothRoom.ts";
 import type { Fitted } from "./fitted.ts";
 
-/** Width of the pocket or hem that a panel is cut with beside its net outline, mm: the widest of its edges'. */
-function widestFlap(panel: CutPanel): number {
-  return Math.max(0, ...panel.outlines.map((side, k) => (panel.sides[k].kind === "seam" ? 0 : side.allowance)));
+/** Width of the pocket that a panel is cut with, mm; 0 where it has none. */
+function widestPocket(panel: CutPanel): number {
+  return Math.max(0, ...panel.outlines.map((side, k) => (panel.sides[k].kind === "cable" ? side.allowance : 0)));
 }
 
 function describeTooWide(choice: LayoutChoice, fitted: Fitted, room: ClothRoom): string | null {
@@ -15,12 +15,13 @@ function describeTooWide(choice: LayoutChoice, fitted: Fitted, room: ClothRoom):
   const sized = own.map((panel) => ({ panel, width: 1000 * measureExtent(panel.cut).width }));
   const widest = sized.reduce((a, b) => (b.width > a.width ? b : a), sized[0]);
   if (!widest || widest.width <= 1000 * room.width) return null;
-  const flap = widestFlap(widest.panel);
-  const flapped = flap > 0 ? `, flap of ${flap.toFixed(0)} mm included` : "";
-  return (
+  const pocket = widestPocket(widest.panel);
+  const least = 1000 * room.width;
+  const told =
     ` ${choice.count} strips from ${choice.from} to ${choice.to} were cut too: up to ${widest.width.toFixed(0)} mm wide` +
-    `${flapped}, of ${(1000 * room.width).toFixed(0)} mm usable.`
-  );
+    `${pocket > 0 ? `, pocket of ${pocket.toFixed(0)} mm included` : ""}, of ${least.toFixed(0)} mm usable.`;
+  if (pocket === 0 || widest.width - pocket > least) return told;
+  return `${told} They may fit with the pockets as separate strips (allowances.pocketStrip).`;
 }
 
 /** The choices of a fitted roof, each with the way of fewest strips that was tried for it and came out too wide. */
