@@ -2,7 +2,7 @@
 import { capNest } from "../core/plan/capNest.ts";
 import { writeFactsJson } from "../core/plan/factsFile.ts";
 import type { PlanInput } from "../core/plan/readPlanInput.ts";
-import type { Station, StationContext } from "../core/problem.ts";
+import type { Finding, Station, StationContext } from "../core/problem.ts";
 import type { Facts } from "../core/records/facts.ts";
 import type { Job, MeshSource } from "../core/records/job.ts";
 import { openNestThreads } from "./nestThreads.ts";
@@ -21,7 +21,7 @@ export interface PlanDoors {
   writePapers: (
     facts: Facts,
     options: { fonts: { regular: Uint8Array; bold: Uint8Array } },
-  ) => Promise<{ files: OutputFile[] }>;
+  ) => Promise<{ files: OutputFile[]; findings: Finding[] }>;
 }
 
 /** How the verbs reach the world: doors are opened only by those that plan, because opening takes time. */
@@ -57,9 +57,10 @@ export async function makeFacts(
   }
 }
 
-/** facts.json and the papers drawn from it. */
-export async function makePapers(facts: Facts, around: Surroundings): Promise<OutputFile[]> {
+/** facts.json and the papers drawn from it; the facts with what the papers add to their findings. */
+export async function makePapers(given: Facts, around: Surroundings): Promise<{ facts: Facts; files: OutputFile[] }> {
   const doors = await around.openDoors();
-  const { files } = await doors.writePapers(facts, { fonts: loadFonts() });
-  return [{ path: "facts.json", bytes: writeFactsJson(facts) }, ...files];
+  const { files, findings } = await doors.writePapers(given, { fonts: loadFonts() });
+  const facts = { ...given, findings };
+  return { facts, files: [{ path: "facts.json", bytes: writeFactsJson(facts) }, ...files] };
 }

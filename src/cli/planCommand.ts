@@ -25,8 +25,8 @@ export async function planInto(
   options: { until?: Station; quiet: boolean },
 ): Promise<WrittenPlan> {
   checkOutputFolder(folder);
-  const facts = await makeFacts(readInput(jobPath, loadCatalogues()), around, options);
-  const files = await makePapers(facts, around);
+  const planned = await makeFacts(readInput(jobPath, loadCatalogues()), around, options);
+  const { facts, files } = await makePapers(planned, around);
   const cleared = await holdSignals(() => writeOutputFolder(folder, files));
   if (!options.quiet) for (const line of cleared) around.terminal.err(line);
   return { facts, files };

@@ -84,6 +84,7 @@ export function buildDoors(bend: { findings?: Finding[]; files?: string[] } = {}
         path,
         bytes: new TextEncoder().encode(`${path} of ${facts.job.revision}`),
       })),
+      findings: facts.findings,
     }),
   };
   return { doors, calls };

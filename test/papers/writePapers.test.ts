@@ -278,7 +278,17 @@ describe.skipIf(missing.length > 0)(`PDF sheets read by other programs${reason}`
   test("letters no face has are shown as ? and told in a note; those it has stay", async () => {
     const make = SETS["names right to left, of 300 letters, empty, equal but for case, A4"]!;
     const facts = make();
-    const written = async (f: Facts) => textOf(await writeFindingSheets(f, fonts)).replace(/ /g, "");
+    const made = (f: Facts) => writePapers(f, { fonts, papers: ["findings"] });
+    const written = async (f: Facts) => textOf((await made(f)).files[0]!.bytes).replace(/ /g, "");
+    // What the papers add belongs into the facts, and drawn from those they are the same.
+    const { files, findings } = await made(facts);
+    expect(findings.slice(0, -1)).toEqual(facts.findings);
+    expect(findings.at(-1)).toMatchObject({ code: "papers-letters", level: "note" });
+    expect(findings.at(-1)!.where).toContain(STRANGE.T1);
+    const again = await made({ ...facts, findings });
+    expect(again.findings).toEqual(findings);
+    expect(Buffer.compare(again.files[0]!.bytes, files[0]!.bytes)).toBe(0);
+    expect((await made(sampleFacts({ names: HOSTILE }))).findings).toEqual(sampleFacts({ names: HOSTILE }).findings);
     expect(facts.rig!.adjusters.some((a) => a.id === STRANGE.T1)).toBe(true);
     expect(await written(facts)).toContain("papers-letters");
     expect(await written(facts)).toContain("??");

@@ -1,6 +1,7 @@
 // Every paper of a plan, from its facts alone: cut files for each roll and panel, lists, cards, papers of the rig, findings, an
 // index, all in one zip where asked. Reads no clock, no file, no network; the fonts are handed in. PDF and zip libraries are loaded
 // only when such a paper is really written.
+import type { Finding } from "../problem.ts";
 import type { Facts } from "../records/facts.ts";
 import { DEFAULT_PAPERS, type PaperChoice } from "./choosePapers.ts";
 import { writeDxf2000 } from "./cutFiles/dxf2000.ts";
@@ -16,6 +17,7 @@ import type { FontFiles } from "./pdf/layout/book.ts";
 import { controlTable, panelTable, rollTable, seamTable } from "./tables/clothTables.ts";
 import { rigFacts } from "./tables/rigReadings.ts";
 import { cableTable, hardwareTable, moveTable } from "./tables/rigTables.ts";
+import { namesOf } from "./words/names.ts";
 
 type Wants = (choice: PaperChoice) => boolean;
 
@@ -94,16 +96,29 @@ async function sheets(facts: Facts, fonts: FontFiles, wants: Wants): Promise<Pap
   return files;
 }
 
+/** Names that no face of the sheets is asked to draw: plain letters need no look into it. */
+const PLAIN = /^[\u0020-\u024f]*$/;
+
+/** What the papers add to the findings: letters of names that the sheets cannot show. */
+async function ownFindings(facts: Facts, fonts: FontFiles): Promise<Finding[]> {
+  if (namesOf(facts).every((name) => PLAIN.test(name))) return [];
+  const { tellLetters } = await import("./pdf/nameLetters.ts");
+  return tellLetters(facts, fonts);
+}
+
 /**
  * The papers that are asked for and that the facts allow: a plan that stopped early still gets its findings sheets, a plan without
- * rolls its panels, one clamped all round no paper of a rig. Equal facts give equal bytes. facts.json itself is the caller's.
+ * rolls its panels, one clamped all round no paper of a rig. Equal facts give equal bytes. facts.json itself is the caller's;
+ * `findings` are what belongs into it: those of the facts, and what the papers add.
  * @throws PlanError papers-number, papers-outline: the facts hold what cannot be drawn; papers-unknown-piece: a roll places
  *   cloth that is not there
  */
 export async function writePapers(
-  facts: Facts,
+  given: Facts,
   options: { fonts: FontFiles; papers?: readonly PaperChoice[] },
-): Promise<{ files: PaperFile[] }> {
+): Promise<{ files: PaperFile[]; findings: Finding[] }> {
+  const findings = [...given.findings, ...(await ownFindings(given, options.fonts))];
+  const facts = { ...given, findings };
   const chosen = new Set(options.papers ?? DEFAULT_PAPERS);
   const wants: Wants = (choice) => chosen.has(choice);
   const files = [
@@ -120,5 +135,5 @@ export async function writePapers(
     const { writeBundle } = await import("./bundle.ts");
     files.push({ path: "papers.zip", bytes: writeBundle(files, facts.job.date) });
   }
-  return { files };
+  return { files, findings };
 }

@@ -2,7 +2,7 @@
 // Knows no React and no worker.
 import { createStore } from "zustand/vanilla";
 import type { CorrectedPlan } from "../../core/plan/correctPlan.ts";
-import type { Station } from "../../core/problem.ts";
+import type { Finding, Station } from "../../core/problem.ts";
 import type { Facts } from "../../core/records/facts.ts";
 import type { Job } from "../../core/records/job.ts";
 import type { PlanFault, SentFields } from "../worker/messages.ts";
@@ -38,7 +38,8 @@ export interface ResultSlice {
   /** The project the facts are of. */
   planned: Project | null;
   fault: PlanFault | null;
-  papers: { of: Facts; files: PaperFile[] } | null;
+  /** The papers of some facts, and what writing them added to the findings. */
+  papers: { of: Facts; files: PaperFile[]; added: Finding[] } | null;
   papersFault: PlanFault | null;
   writing: boolean;
   /** What to turn after the readings, and the project they are of. */

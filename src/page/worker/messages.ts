@@ -4,7 +4,7 @@ import type { CorrectedPlan } from "../../core/plan/correctPlan.ts";
 import type { Grip, MadeRoof, SeenPanel } from "../../core/plan/dragSeam.ts";
 import type { SurfaceFields } from "../../core/plan/measureFields.ts";
 import type { KeptRound } from "../../core/plan/partLog.ts";
-import type { Station } from "../../core/problem.ts";
+import type { Finding, Station } from "../../core/problem.ts";
 import type { Facts, FactsSeam } from "../../core/records/facts.ts";
 import type { EdgePlace, Job, SeamDecision } from "../../core/records/job.ts";
 
@@ -45,7 +45,7 @@ export type Reply =
   /** Facts as far as the plan has come: the work of `station` stands in them. */
   | { kind: "soFar"; run: number; station: Station; facts: Facts; fields: SurfaceFields | null }
   | { kind: "planned"; run: number; facts: Facts; fields: SurfaceFields | null }
-  | { kind: "papers"; run: number; files: { path: string; bytes: Uint8Array<ArrayBuffer> }[] }
+  | { kind: "papers"; run: number; files: { path: string; bytes: Uint8Array<ArrayBuffer> }[]; added: Finding[] }
   | { kind: "corrected"; run: number; corrected: CorrectedPlan }
   | { kind: "failed"; run: number; fault: PlanFault };
 

@@ -125,13 +125,15 @@ function buffersOf(fields: SurfaceFields | null): ArrayBuffer[] {
 
 async function papers(run: number, facts: Facts): Promise<void> {
   fonts ??= await loadFonts();
-  const { files } = await writePapers(facts, { fonts });
-  const all = [{ path: "facts.json", bytes: writeFactsJson(facts) }, ...files].map(({ path, bytes }) => ({
-    path,
-    bytes: Uint8Array.from(bytes),
-  }));
+  const { files, findings } = await writePapers(facts, { fonts });
+  const all = [{ path: "facts.json", bytes: writeFactsJson({ ...facts, findings }) }, ...files].map(
+    ({ path, bytes }) => ({
+      path,
+      bytes: Uint8Array.from(bytes),
+    }),
+  );
   post(
-    { kind: "papers", run, files: all },
+    { kind: "papers", run, files: all, added: findings.slice(facts.findings.length) },
     all.map((f) => f.bytes.buffer),
   );
 }

@@ -73,7 +73,7 @@ function hear(reply: Reply): void {
     case "papers":
       busy = false;
       if (subject !== null && "facts" in subject)
-        set({ papers: { of: subject.facts, files: reply.files }, writing: false });
+        set({ papers: { of: subject.facts, files: reply.files, added: reply.added }, writing: false });
       return;
     case "corrected":
       busy = false;

@@ -1,6 +1,5 @@
 // The findings sheets: what is open, what was checked against what, what the engineer must supply. The one paper that is
 // written whatever the plan came to.
-import type { PDFFont } from "pdf-lib";
 import type { Finding, FindingLevel } from "../../problem.ts";
 import type { Facts } from "../../records/facts.ts";
 import { layoutHeads, layoutRows } from "../tables/layoutRows.ts";
@@ -12,7 +11,7 @@ import { decimal } from "../words/decimal.ts";
 import { unitsInText } from "../words/paperUnits.ts";
 import { closeBook, type FontFiles, openBook } from "./layout/book.ts";
 import { flowCautionsInPlace } from "./layout/cautionBlock.ts";
-import { drawText, lettersMissing, MM, PITCH, SMALL, textWidth } from "./layout/pen.ts";
+import { drawText, MM, PITCH, SMALL, textWidth } from "./layout/pen.ts";
 import {
   type Column,
   type Flow,
@@ -75,40 +74,9 @@ export function valueText(value: number | string | null): string {
   return size >= 1000 ? decimal(value, 0) : String(Number(value.toPrecision(4)));
 }
 
-/** What the sheets cannot show of the names: said once, with the names it concerns. */
-function lettersNote(facts: Facts, font: PDFFont): Finding[] {
-  const lists = [
-    facts.panels,
-    facts.seams,
-    facts.rolls,
-    facts.pieces,
-    facts.form?.edges,
-    facts.form?.anchors,
-    facts.rig?.adjusters,
-  ];
-  const names = [facts.job.title, ...lists.flatMap((list) => (list ?? []).map((e) => e.id))];
-  const where = names.filter((name) => lettersMissing(name, font).length > 0);
-  if (where.length === 0) return [];
-  return [
-    {
-      code: "papers-letters",
-      level: "note",
-      station: "papers",
-      where,
-      value: where.length,
-      limit: null,
-      text: "Names hold letters that the face of the sheets has not: each stands as ? on the sheets. Cut files and lists hold the names as typed (DXF: ? for letters beyond U+FFFF).",
-      remedy:
-        "Give names in letters the face has (Latin, Greek, Cyrillic, Hebrew, Arabic and others), so that no two look alike.",
-      basis: "own argument",
-    },
-  ];
-}
-
 /** The bytes of findings.pdf. */
-export async function writeFindingSheets(given: Facts, fonts: FontFiles): Promise<Uint8Array> {
-  const book = await openBook(given, fonts, "findings", "findings");
-  const facts = { ...given, findings: [...given.findings, ...lettersNote(given, book.regular)] };
+export async function writeFindingSheets(facts: Facts, fonts: FontFiles): Promise<Uint8Array> {
+  const book = await openBook(facts, fonts, "findings", "findings");
   const flow = openFlow(book, "Findings");
   flowSummaryInPlace(flow, facts);
   for (const level of ["stop", "caution"] as const) flowFindingsInPlace(flow, facts, level);

@@ -241,6 +241,11 @@ export function PapersLeaf() {
                   against: "hash of the job and everything it reads",
                 },
                 { what: "Issue", value: facts?.job.issue ?? "" },
+                ...(papers?.added ?? []).map((f) => ({
+                  what: "Names changed on the sheets",
+                  value: String(f.value ?? ""),
+                  against: `${f.text} ${[f.where].flat().join(", ")}`,
+                })),
               ]}
             />
             <PaperList files={files} shown={shownFile?.path ?? null} onShow={setShown} />
