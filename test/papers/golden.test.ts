@@ -5,9 +5,12 @@ import { writeDxfR12 } from "../../src/core/papers/cutFiles/dxfR12.ts";
 import { writeSvg } from "../../src/core/papers/cutFiles/svg.ts";
 import { withArcs } from "../../src/core/papers/drawing/arcs.ts";
 import type { Drawing } from "../../src/core/papers/drawing/drawing.ts";
+import { tableBites } from "../../src/core/papers/drawing/placedCloth.ts";
 import { panelDrawing, rollDrawing } from "../../src/core/papers/drawing/rollDrawing.ts";
+import { writeIndexSheet } from "../../src/core/papers/pdf/indexSheet.ts";
 import type { Facts, Vec2 } from "../../src/core/records/facts.ts";
 import type { Placement } from "../../src/core/records/roll.ts";
+import { fonts } from "./made/madePapers.ts";
 import { HOSTILE, sampleFacts } from "./made/sampleFacts.ts";
 
 /** One roll with what is given on it. */
@@ -56,12 +59,29 @@ function arcs(): Drawing {
   return withArcs(panelDrawing(facts, facts.panels![2]!));
 }
 
+/** The second length of a table that takes 1500 mm at once, two patches on it. */
+function tableBite(): Drawing {
+  const facts = sampleFacts({ stop: false });
+  const patch = facts.pieces![0]!;
+  facts.pieces = [1, 2, 3, 4].map((n) => ({ ...patch, id: `C${n}`, for: `A${n}` }));
+  const placements = [0, 700, 1600, 2300].map((x, n) => ({
+    panel: `C${n + 1}`,
+    rotation: 0 as const,
+    x,
+    y: 10 + 90 * n,
+  }));
+  const roll = { ...facts.rolls![0]!, used: 2900, flaws: [], placements, bite: 1500, feeds: [0, 1600] };
+  const [, second] = tableBites(facts, roll);
+  return rollDrawing(facts, second!.roll, second!.words);
+}
+
 for (const [name, ending, write, make] of [
   ["patches", "dxf", writeDxfR12, patches],
   ["patches", "svg", writeSvg, patches],
   ["strips", "svg", writeSvg, strips],
   ["hostile-panel", "svg", writeSvg, hostilePanel],
   ["arcs", "svg", writeSvg, arcs],
+  ["table-bite", "svg", writeSvg, tableBite],
 ] as const) {
   test(`the drawing of ${name} is written as test/golden/${name}.${ending} has it`, () => {
     const text = write(make());
@@ -72,3 +92,13 @@ for (const [name, ending, write, make] of [
     expect(text === golden, `${kept} differs: compare it with ${name}-changed.${ending}`).toBe(true);
   });
 }
+
+// A sheet with frame, title block, stamp and table; the changed one is opened beside the kept one.
+test("the index sheet is written as test/golden/index.pdf has it", async () => {
+  const paths = ["findings.pdf", "rolls/R1.dxf", "rolls/R1.svg", "panels/P1.dxf", "panel-cards.pdf", "panels.csv"];
+  const bytes = Buffer.from(await writeIndexSheet(sampleFacts(), fonts, paths));
+  const kept = "test/golden/index.pdf";
+  const same = existsSync(kept) && readFileSync(kept).equals(bytes);
+  if (!same && !process.env.CI) writeFileSync("test/golden/index-changed.pdf", bytes);
+  expect(same, `${kept} differs: open it beside index-changed.pdf`).toBe(true);
+});
