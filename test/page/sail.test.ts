@@ -57,15 +57,25 @@ describe("a sail in the page", { timeout: LONG }, () => {
     await page.getByText(/m of cloth from 1 roll/).waitFor();
   });
 
-  it.each(["light", "dark"] as const)("axe finds nothing on any leaf, %s", async (colorScheme) => {
-    const { page } = desk;
-    await page.emulateMedia({ colorScheme });
-    for (const leaf of LEAVES) {
-      await turnTo(page, leaf);
-      if (leaf === "Papers") await page.getByText(/files, revision/).waitFor();
-      expect(await judge(page), leaf).toEqual([]);
-    }
-  });
+  it.each([
+    ["light", 1440, 900],
+    ["dark", 1440, 900],
+    ["light", 820, 1180],
+    ["dark", 820, 1180],
+  ] as const)(
+    "axe finds nothing on any leaf, %s, %i x %i, and nothing needs sideways scrolling",
+    async (colorScheme, width, height) => {
+      const { page } = desk;
+      await page.emulateMedia({ colorScheme });
+      await page.setViewportSize({ width, height });
+      for (const leaf of LEAVES) {
+        await turnTo(page, leaf);
+        if (leaf === "Papers") await page.getByText(/files, revision/).waitFor();
+        expect(await judge(page), leaf).toEqual([]);
+        await expect.poll(() => sideways(page), { ...SOON, message: leaf }).toBeLessThanOrEqual(0);
+      }
+    },
+  );
 
   it("stress as patterned and as built over the surface, with a legend about the wanted stress", async () => {
     const { page } = desk;
@@ -78,18 +88,6 @@ describe("a sail in the page", { timeout: LONG }, () => {
       await page.getByText("middle: the wanted 2.00 kN/m").waitFor();
       expect(await judge(page), leaf).toEqual([]);
       await page.getByRole("button", { name: "plain" }).click();
-    }
-  });
-
-  it.each([
-    [1440, 900],
-    [820, 1180],
-  ])("%i x %i needs no sideways scrolling", async (width, height) => {
-    const { page } = desk;
-    await page.setViewportSize({ width, height });
-    for (const leaf of LEAVES) {
-      await turnTo(page, leaf);
-      await expect.poll(() => sideways(page), { ...SOON, message: leaf }).toBeLessThanOrEqual(0);
     }
   });
 
@@ -130,6 +128,19 @@ describe("a sail in the page", { timeout: LONG }, () => {
     await bars.getByRole("heading", { name: "What an error does to T-C1" }).waitFor();
     await expect.poll(() => bars.locator("li .number").first().innerText(), SOON).toMatch(/kN$/);
     await page.keyboard.press("Escape");
+  });
+
+  it("what is pointed at in the plan of the rig lights up in figures and chart, and the other way round", async () => {
+    const { page } = desk;
+    await turnTo(page, "Rig");
+    const plan = page.getByRole("group", { name: "Plan of the adjusters" });
+    await plan.getByRole("button", { name: /^T-C2/ }).locator("circle").hover({ force: true });
+    await page.locator("tr.lit", { hasText: "T-C2 target" }).waitFor();
+    await page.locator(".chart .trace.lit").waitFor();
+    await page.getByRole("row", { name: /^T-C3 target/ }).hover();
+    await plan.locator(".adjuster.lit", { hasText: "T-C3" }).waitFor();
+    await plan.locator(".adjuster.lit", { hasText: "T-C2" }).waitFor({ state: "detached" });
+    await page.mouse.move(0, 0);
   });
 
   it("cables, far pins and turnbuckles are edited in place, and what stands on them follows", async () => {

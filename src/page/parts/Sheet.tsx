@@ -10,7 +10,19 @@ export function Sheet({ title, children }: { title: string; children: React.Reac
   }, []);
   const close = () => bookStore.setState({ sheet: "none" });
   return (
-    <dialog ref={dialog} className="over" aria-label={title} onClose={close}>
+    <dialog
+      ref={dialog}
+      className="over"
+      aria-label={title}
+      onClose={close}
+      onKeyDown={(e) => {
+        // the browser tells of its closing a moment later, and a key pressed meanwhile would be lost
+        if (e.key !== "Escape") return;
+        e.preventDefault();
+        e.stopPropagation();
+        close();
+      }}
+    >
       <header>
         <h2>{title}</h2>
         <button type="button" onClick={close}>
