@@ -54,9 +54,10 @@ def dxf_contours(path, faults):
     lines = [e for e in doc.modelspace() if e.dxftype() in ("POLYLINE", "LWPOLYLINE")]
     box = bbox.extents(lines, fast=True)
     low, high = doc.header["$EXTMIN"], doc.header["$EXTMAX"]
-    # Texts reach beyond the lines above and to the right only by an estimate; below and to the left nothing does.
-    apart = max(abs(low[0] - box.extmin.x), abs(low[1] - box.extmin.y))
-    if apart > LIMIT or high[0] < box.extmax.x - LIMIT or high[1] < box.extmax.y - LIMIT:
+    # Texts reach beyond the lines by an estimate; below and to the left by less than their height.
+    beyond = max((e.dxf.height for e in doc.modelspace().query("TEXT")), default=0.0)
+    out = [box.extmin.x - low[0], box.extmin.y - low[1]]
+    if min(out) < -LIMIT or max(out) > beyond or high[0] < box.extmax.x - LIMIT or high[1] < box.extmax.y - LIMIT:
         faults.append(f"{path}: header extents {low[:2]} {high[:2]}, drawn {box.extmin} {box.extmax}")
     if doc.dxfversion == "AC1015" and doc.units != 4:
         faults.append(f"{path}: unit {doc.units}, not 4 (mm)")
