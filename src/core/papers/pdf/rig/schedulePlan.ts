@@ -67,7 +67,8 @@ export function drawSchedulePlan(book: Book, rig: RigFacts, view: RoofView): voi
     const style = { bold: true, size: 14, longest: 60 };
     const name = `${p.id}  (${p.anchor})`;
     // One that stands within the roof, at a ring, has no free place outside: its name lies over the cloth, before all others do.
-    if (!setNameInPlace(book, sheet, border, name, spots, style))
+    const beside = AWAY.flatMap((d) => EIGHT.map((k) => around8(end, d + 2, k)));
+    if (!setNameInPlace(book, sheet, border, name, [...spots, ...beside], style))
       setNameInPlace(book, sheet, inside, name, spots, style);
   });
   const kinds = new Map((rig.facts.form?.edges ?? []).map((e) => [e.id, e.kind]));
@@ -85,7 +86,7 @@ export function drawSchedulePlan(book: Book, rig: RigFacts, view: RoofView): voi
     // On its own line, which the name's ground interrupts; a mast seen from above is a point, its name lies beside it.
     const at = pointAlong(run, 0.5).at;
     const on = [0.6, 0.75, 0.5, 0.9, 0.35].map((f) => pointAlong(run, f).at);
-    const beside = AWAY.flatMap((d) => [0, 1, 2, 3, 4, 5, 6, 7].map((k): Vec2 => around8(at, d + 2, k)));
+    const beside = AWAY.flatMap((d) => EIGHT.map((k) => around8(at, d + 2, k)));
     const upright = Math.hypot(run[run.length - 1][0] - run[0][0], run[run.length - 1][1] - run[0][1]) < UPRIGHT;
     const spots = upright ? beside : [...on, ...beside];
     const before = inside.taken.length;
@@ -103,6 +104,8 @@ export function drawSchedulePlan(book: Book, rig: RigFacts, view: RoofView): voi
 
 /** A run shorter than this on the sheet is seen as a point, mm. */
 const UPRIGHT = 3;
+
+const EIGHT = [0, 1, 2, 3, 4, 5, 6, 7];
 
 /** One of eight places round a point. */
 function around8([x, y]: Vec2, reach: number, k: number): Vec2 {
