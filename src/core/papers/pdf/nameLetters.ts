@@ -5,7 +5,7 @@ import type { Finding } from "../../problem.ts";
 import type { Facts } from "../../records/facts.ts";
 import { namesOf } from "../words/names.ts";
 import { type FontFiles, openBook } from "./layout/book.ts";
-import { lettersMissing } from "./layout/pen.ts";
+import { lettersMissing } from "./layout/glyphs.ts";
 
 /** What the sheets cannot show of the names: said once, with the names it concerns. */
 function lettersNote(facts: Facts, font: PDFFont): Finding[] {

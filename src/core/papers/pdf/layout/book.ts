@@ -4,9 +4,11 @@
 import fontkit from "@pdf-lib/fontkit";
 import { PDFDocument, type PDFFont, PDFHexString, PDFName, type PDFPage, PDFString } from "pdf-lib";
 import type { Facts, FactsJob } from "../../../records/facts.ts";
+import { namesOf } from "../../words/names.ts";
 import { paperUnits } from "../../words/paperUnits.ts";
 import { plainText } from "../../words/plainText.ts";
 import { holdReason, type PaperKind, stampOf } from "../../words/stamp.ts";
+import { tellNames } from "./glyphs.ts";
 import { drawBox, drawText, fitText, MM, pitchOf, SMALL, textWidth, wrapText } from "./pen.ts";
 
 /** TTF bytes of the two faces every sheet is set in. */
@@ -58,6 +60,7 @@ export async function openBook(facts: Facts, fonts: FontFiles, title: string, ki
   const features = { liga: false, kern: false };
   const regular = await doc.embedFont(fonts.regular, { subset: true, customName: "SEAMRG+DejaVuSans", features });
   const bold = await doc.embedFont(fonts.bold, { subset: true, customName: "SEAMBD+DejaVuSans-Bold", features });
+  for (const font of [regular, bold]) tellNames(font, namesOf(facts));
   // Written by hand: no version of a library and no clock may show in the bytes.
   const info: Record<string, PDFHexString | PDFString> = {
     Title: PDFHexString.fromText(plainText(`${facts.job.title}: ${title}, issue ${facts.job.issue}`)),

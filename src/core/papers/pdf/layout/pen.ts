@@ -1,7 +1,6 @@
 // The few strokes all sheets are made of: text, lines, boxes, in mm; and how long a text is, how it wraps, how it is shortened.
 import {
   clip,
-  degrees,
   drawObject,
   endPath,
   type PDFDocument,
@@ -17,6 +16,7 @@ import {
 import { PlanError } from "../../../problem.ts";
 import type { Vec2 } from "../../../records/facts.ts";
 import { plainText } from "../../words/plainText.ts";
+import { lineAdvance, lineGlyphs } from "./glyphs.ts";
 
 /** Points in a millimetre. */
 export const MM = 72 / 25.4;
@@ -32,45 +32,9 @@ export function pitchOf(size: number): number {
   return (PITCH * size) / SMALL;
 }
 
-// Advance of each character at 1 pt, kept by face: asking the font for every beginning of every line takes seconds.
-const advances = new WeakMap<PDFFont, Map<string, number>>();
-
-// Code points a face can draw, kept by face.
-const drawable = new WeakMap<PDFFont, Set<number>>();
-
-/** Letters of a text that a face has not, each once. */
-export function lettersMissing(text: string, font: PDFFont): string[] {
-  let known = drawable.get(font);
-  if (!known) {
-    known = new Set(font.getCharacterSet());
-    drawable.set(font, known);
-  }
-  const has = known;
-  return [...new Set(plainText(text))].filter((letter) => !has.has(letter.codePointAt(0) ?? 0));
-}
-
-/** The text as a face can draw it: "?" for a letter it has not, where an empty box would look like a mark to be ticked. */
-function drawnText(text: string, font: PDFFont): string {
-  return lettersMissing(text, font).reduce((t, letter) => t.replaceAll(letter, "?"), text);
-}
-
-/** Width of a text in mm; the faces are set without ligatures and kerning, so it is the sum of its characters. */
+/** Width of a text in mm. */
 export function textWidth(text: string, font: PDFFont, size: number): number {
-  let known = advances.get(font);
-  if (!known) {
-    known = new Map();
-    advances.set(font, known);
-  }
-  let sum = 0;
-  for (const letter of text) {
-    let advance = known.get(letter);
-    if (advance === undefined) {
-      advance = font.widthOfTextAtSize(drawnText(letter, font) || letter, 1);
-      known.set(letter, advance);
-    }
-    sum += advance;
-  }
-  return (sum * size) / MM;
+  return (lineAdvance(text, font) * size) / MM;
 }
 
 /** A text with its middle left out; three fifths of the letters that stay are its end. */
@@ -138,19 +102,36 @@ export interface TextOptions {
   turn?: number;
 }
 
+// Name of a face on a page, kept by page: a new one for every line is what a page is heavy with.
+const faceNames = new WeakMap<PDFPage, Map<PDFFont, string>>();
+
+function faceName(page: PDFPage, font: PDFFont): string {
+  let names = faceNames.get(page);
+  if (!names) {
+    names = new Map();
+    faceNames.set(page, names);
+  }
+  let name = names.get(font);
+  if (name === undefined) {
+    name = page.node.newFontDictionary(font.name, font.ref).toString();
+    names.set(font, name);
+  }
+  return name;
+}
+
 /** One line of text. */
 export function drawText(page: PDFPage, text: string, options: TextOptions): void {
   const plain = plainText(text);
   if (plain === "") return;
-  const width = textWidth(plain, options.font, options.size);
+  const { font, size } = options;
+  checkRun([[options.x, options.y]]);
+  const width = options.align ? textWidth(plain, font, size) : 0;
   const shift = options.align === "middle" ? width / 2 : options.align === "end" ? width : 0;
-  page.drawText(drawnText(plain, options.font), {
-    x: (options.x - shift) * MM,
-    y: options.y * MM,
-    size: options.size,
-    font: options.font,
-    ...(options.turn ? { rotate: degrees(options.turn) } : {}),
-  });
+  const turn = ((options.turn ?? 0) * Math.PI) / 180;
+  const [c, s] = [Math.cos(turn), Math.sin(turn)].map(fine);
+  const at = `${c} ${s} ${fine(-s)} ${c} ${fine((options.x - shift) * MM)} ${fine(options.y * MM)} Tm`;
+  const words = `BT 0 g ${faceName(page, font)} ${size} Tf ${at} <${lineGlyphs(plain, font)}> Tj ET`;
+  page.pushOperators(PDFOperator.of(words as PDFOperatorNames));
 }
 
 export interface LineOptions {
@@ -167,6 +148,11 @@ export interface LineOptions {
 
 /** Points nearer than this to the one before are not drawn, mm: an eye does not see them, a file feels them. */
 const NEAR = 0.06;
+
+/** Four decimals, without an exponent. */
+function fine(value: number): number {
+  return Math.round(value * 1e4) / 1e4 + 0;
+}
 
 function short(value: number): string {
   // Two decimals of a point are 0.004 mm; trailing zeros and "-0" say nothing.
