@@ -89,7 +89,8 @@ export function workPackShare(share: PackShare, port: MessagePort): { result: Pa
   const { task, ids } = buildPackTask(instance);
   const spent = () => (now() - began) / 1000;
   const ended = () => spent() > seconds - END;
-  const orders = Math.min(ORDERS_MOST, ORDERS * seconds);
+  // Counted from here: on a busy machine a thread may start later than the orders would end, and a first layout there must be.
+  const orders = spent() + Math.min(ORDERS_MOST, ORDERS * seconds);
   const found = searchOrders({ ...task, stop: () => spent() > orders }, { steps: Number.MAX_SAFE_INTEGER, seed });
   if (!found || found.layout.left.length > 0) throw new Error(`${instance.name}: no layout within ${seconds} s`);
   const [bed] = found.layout.beds;

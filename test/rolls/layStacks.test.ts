@@ -55,6 +55,18 @@ describe("20 equal strips", () => {
     expect(used(petal, 2500)).toBeLessThan(7 * 6.01);
   });
 
+  it("blunt gores that just do not fit beside each other lie a little apart along the roll", () => {
+    // 1490 to 470 over 2700, roll 2450: end to end a turned pair is 745 + 980 + 10 + 745 = 2480 high. Moved on by p they are
+    // 980 − 510·p/2700 apart in the middle: p = 159, so pairs of 2859, wide end to wide end: 10·2869 m, single file 54.2 m.
+    const gore = strip(
+      2700,
+      (t) => -745 + 510 * t,
+      (t) => 745 - 510 * t,
+      1,
+    );
+    expect(used(gore, 2450)).toBeLessThan(10 * 2.93);
+  });
+
   it("lenses lie staggered, tips between waists", () => {
     // 900 at the waist, 40 at the tips, roll 1500: none two across. Beside one another by p = 0.6 of the length they are
     // 590 apart: 19·3603 + 6000 = 74.45 m.

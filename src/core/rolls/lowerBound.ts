@@ -1,9 +1,11 @@
-// Lengths below which no nest of given pieces on a roll can come, whatever the method: area, longest piece, chords across.
+// Lengths below which no nest of given pieces on a roll can come, whatever the method: area, longest piece, chords across,
+// and lines along (levelBound.ts).
 // Source: own argument on dual feasible functions (S. P. Fekete and J. Schepers, New classes of fast lower bounds for bin
 // packing problems, 2001): at each x the chords across the roll, each with one gap, sum to at most width + gap; so do their
 // images under a dual feasible function, and the integral over x bounds the length. A half turn changes no integral.
 import { type PlaneRing, ringArea, ringBox } from "../surface/ring.ts";
 import { walkSlabs } from "./columns.ts";
+import { boundByLevels } from "./levelBound.ts";
 
 /** Shares of a slab in which a slanting chord is taken at its least. */
 const PARTS = 8;
@@ -51,9 +53,10 @@ function chordRuns(ring: PlaneRing, width: number, gap: number): [number, number
 
 /**
  * The greatest of all bounds, from the roll's start on.
+ * @param rolls the pieces may lie on so many rolls of this width, whose lengths are added up
  * @units mm; width: usable; start: trim at the start of the roll
  */
-export function boundLength(rings: PlaneRing[], width: number, gap: number, start: number): number {
+export function boundLength(rings: PlaneRing[], width: number, gap: number, start: number, rolls = 1): number {
   if (rings.length === 0) return 0;
   let best = 0;
   let sum = 0;
@@ -70,5 +73,5 @@ export function boundLength(rings: PlaneRing[], width: number, gap: number, star
     for (const [dx, share] of runs) length += dx * stepped(k, e > 0 ? clipped(e, share) : share);
     best = Math.max(best, length);
   }
-  return start + best;
+  return start + Math.max(best, boundByLevels(rings, width, gap, rolls));
 }

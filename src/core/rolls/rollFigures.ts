@@ -9,6 +9,11 @@ import { boundLength } from "./lowerBound.ts";
 import { clothArea, placementOf } from "./nestShape.ts";
 import { usableWidth } from "./sortPieces.ts";
 
+/** A perfect tiling meets its bound to the last bits; only those are taken back, a false bound shows. */
+function notPast(used: number, bound: number): number {
+  return bound > used && bound < used * (1 + 1e-6) ? used : bound;
+}
+
 /** A filled bed as the record of its roll. */
 export function recordRoll(bed: Bed, roll: StockRoll, pieces: NestPiece[], options: NestDecision): NestedRoll {
   const { bite } = options;
@@ -41,8 +46,7 @@ export function recordRoll(bed: Bed, roll: StockRoll, pieces: NestPiece[], optio
     flaws: roll.flaws,
     placements: placements.sort((a, b) => (a.panel < b.panel ? -1 : a.panel > b.panel ? 1 : 0)),
     utilisation: area / (used * roll.width),
-    // A perfect tiling meets its bound to the last bits; only those are taken back here.
-    lowerBound: Math.min(boundLength(cuts, usableWidth(roll), bed.gap, roll.start), used * (1 + 1e-9)),
+    lowerBound: notPast(used, boundLength(cuts, usableWidth(roll), bed.gap, roll.start)),
     remnant: Math.max(0, roll.length - used),
     start: roll.start,
     ...(roll.outerFace === "down" ? { outerFace: roll.outerFace } : {}),
@@ -59,7 +63,8 @@ export function boundAll(pieces: NestPiece[], stock: StockRoll[], gap: number): 
     const own = stock.filter((r) => r.fabric === fabric);
     if (own.length === 0) continue;
     const cuts = pieces.filter((p) => p.fabric === fabric).map((p) => p.cut);
-    sum += boundLength(cuts, Math.max(...own.map(usableWidth)), gap, Math.min(...own.map((r) => r.start)));
+    const rolls = own.some((r) => r.assumed) ? cuts.length : own.length;
+    sum += boundLength(cuts, Math.max(...own.map(usableWidth)), gap, Math.min(...own.map((r) => r.start)), rolls);
   }
   return sum / 1000;
 }
@@ -74,7 +79,7 @@ export function totalCloth(rolls: NestedRoll[], pieces: NestPiece[], stock: Stoc
   const used = rolls.reduce((sum, r) => sum + r.used, 0) / 1000;
   return {
     used,
-    bound: Math.min(boundAll(own, stock, gap), used * (1 + 1e-9)),
+    bound: notPast(used, boundAll(own, stock, gap)),
     taken,
     area,
     utilisation: taken > 0 ? area / taken : 0,
