@@ -116,6 +116,44 @@ describe("pair fields", () => {
     }
   });
 
+  it("are no deeper than the least push by trying, where two sums end in one line (bug: both lost that side)", () => {
+    // Outlines on whole numbers, found by trial, and a shift at which the depth told was twice the push and more.
+    const cases: [number[], number[], [number, number]][] = [
+      [
+        [3, 6, 0, 5, 6, 1, 2, 5],
+        [2, 0, 3, 0, 4, 2, 5, 0, 3, 5],
+        [-0.28, 1.2],
+      ],
+      [
+        [5, 0, 6, 3, 5, 4, 5, 5, 3, 5],
+        [5, 4, 3, 3, 2, 6, 0, 0],
+        [-0.85, -2.47],
+      ],
+      [
+        [1, 2, 4, 2, 1, 3, 0, 4],
+        [6, 3, 1, 6, 2, 3, 3, 2, 4, 0],
+        [2.06, 2.04],
+      ],
+      [
+        [5, 2, 6, 1, 6, 4, 2, 4, 4, 2],
+        [1, 4, 0, 0, 5, 0, 2, 1, 6, 2],
+        [-5.98, -2.48],
+      ],
+    ];
+    for (const [p, q, [x, y]] of cases) {
+      const [a, b] = [Float64Array.from(p), Float64Array.from(q)];
+      let push = Infinity;
+      for (let angle = 0; angle < 2 * Math.PI; angle += Math.PI / 180)
+        for (let by = 0; by < push; by += 0.01) {
+          const at = { ring: a, x: x + by * Math.cos(angle), y: y + by * Math.sin(angle) };
+          if (ringGap(at, { ring: b, x: 0, y: 0 }, 1, 1e-6) >= 0) push = by;
+        }
+      const depth = fieldDepth(buildPairField(convexParts(a), convexParts(b), -1e-9, 24), x, y);
+      expect(depth).toBeGreaterThan(0);
+      expect(depth).toBeLessThanOrEqual(push);
+    }
+  });
+
   it("leave the one place free at which a prong fits its slot exactly", () => {
     const prong = Float64Array.from([0, 0, 2, 0, 2, 5, 0, 5]);
     const slot = Float64Array.from([0, 0, 10, 0, 10, 8, 6, 8, 6, 3, 4, 3, 4, 8, 0, 8]);

@@ -9,6 +9,8 @@ import type { PlaneRing } from "../../surface/ring.ts";
 const FAN = Math.PI / 12;
 /** Directions closer than this are one, radians. */
 const ONE = 1e-9;
+/** Rounding, as a share of a field's extent; far below the room a piece has in a slot that fits it exactly. */
+const HAIR = 1e-13;
 
 /** The shifts at which one shape overlaps another. */
 export interface PairField {
@@ -124,10 +126,11 @@ function sideOf(sums: Sums, s: number, e: number): [number, number, number, numb
   return [c * nx - from * ny, c * ny + from * nx, c * nx - to * ny, c * ny + to * nx];
 }
 
-/** Shares of a side that lie outside all other sums. */
-function openShares(sums: Sums, own: number, side: [number, number, number, number]): [number, number][] {
-  const { planes, first } = sums;
+/** Shares of the side of half-plane e of a sum that lie outside all other sums. */
+function openShares(sums: Sums, own: number, e: number, side: [number, number, number, number]): [number, number][] {
+  const { planes, first, box } = sums;
   const [x, y, ux, uy] = [side[0], side[1], side[2] - side[0], side[3] - side[1]];
+  const hair = HAIR * Math.max(box[1] - box[0], box[3] - box[2]);
   let open: [number, number][] = [[0, 1]];
   for (let s = 0; s + 1 < first.length && open.length > 0; s++) {
     if (s === own) continue;
@@ -135,9 +138,11 @@ function openShares(sums: Sums, own: number, side: [number, number, number, numb
     for (let k = first[s]; k < first[s + 1] && from < to; k++) {
       const at = planes[3 * k] * x + planes[3 * k + 1] * y - planes[3 * k + 2];
       const rate = planes[3 * k] * ux + planes[3 * k + 1] * uy;
-      if (rate > 0) to = Math.min(to, -at / rate);
-      else if (rate < 0) from = Math.max(from, -at / rate);
-      else if (at >= 0) to = -1;
+      if (rate > hair) to = Math.min(to, -at / rate);
+      else if (rate < -hair) from = Math.max(from, -at / rate);
+      // Of two sums that end in one line neither covers the other; two that meet there leave nothing between them.
+      else if (at >= (planes[3 * k] * planes[3 * e] + planes[3 * k + 1] * planes[3 * e + 1] > 0 ? -hair : hair))
+        to = -1;
     }
     if (from >= to) continue;
     const left: [number, number][] = [];
@@ -158,7 +163,7 @@ function openSides(sums: Sums): Float64Array<ArrayBuffer> {
       const side = sideOf(sums, s, e);
       if (!side) continue;
       const [x, y, ux, uy] = [side[0], side[1], side[2] - side[0], side[3] - side[1]];
-      for (const [p, q] of openShares(sums, s, side)) out.push(x + p * ux, y + p * uy, x + q * ux, y + q * uy);
+      for (const [p, q] of openShares(sums, s, e, side)) out.push(x + p * ux, y + p * uy, x + q * ux, y + q * uy);
     }
   return Float64Array.from(out);
 }
@@ -206,6 +211,21 @@ function isDeep(deep: Float64Array, n: number, cell: number): boolean {
   return Math.min(deep[o], deep[o + 1], deep[o + n + 1], deep[o + n + 2]) > 0;
 }
 
+/** Lists what can matter within r of a place: the deepest sum first, the half-plane that parts it most first. */
+function listCell(sums: Sums, each: Float64Array, most: Float64Array, r: number, list: number[]): void {
+  let least = Infinity;
+  for (const v of most) if (v < least) least = v;
+  const near: number[] = [];
+  for (let s = 0; s < most.length; s++) if (most[s] < r && most[s] <= least + 2 * r) near.push(s);
+  for (const s of near.sort((p, q) => most[p] - most[q])) {
+    const planes: number[] = [];
+    for (let e = sums.first[s]; e < sums.first[s + 1]; e++) if (each[e] + r >= most[s] - r) planes.push(e);
+    planes.sort((p, q) => each[q] - each[p]);
+    list.push(planes.length);
+    for (const e of planes) list.push(3 * e);
+  }
+}
+
 /** The field of shape a against shape b, from their convex parts. @param mostCells cells along an axis at most */
 export function buildPairField(a: PlaneRing[], b: PlaneRing[], gap: number, mostCells: number): PairField {
   const sums = buildSums(a, b, gap);
@@ -224,15 +244,7 @@ export function buildPairField(a: PlaneRing[], b: PlaneRing[], gap: number, most
   const deep = most.length > 1 ? deepCorners(sums, sides, n, stepX, stepY) : new Float64Array(0);
   for (let cell = 0; cell < n * n; cell++) {
     measureAt(sums, x0 + ((cell % n) + 0.5) * stepX, y0 + (Math.floor(cell / n) + 0.5) * stepY, each, most);
-    let least = Infinity;
-    for (const v of most) if (v < least) least = v;
-    const listed = isDeep(deep, n, cell) ? 0 : most.length;
-    for (let s = 0; s < listed; s++) {
-      if (most[s] >= r || most[s] > least + 2 * r) continue;
-      const at = list.push(0) - 1;
-      for (let e = sums.first[s]; e < sums.first[s + 1]; e++) if (each[e] + r >= most[s] - r) list.push(3 * e);
-      list[at] = list.length - at - 1;
-    }
+    if (!isDeep(deep, n, cell)) listCell(sums, each, most, r, list);
     start[cell + 1] = list.length;
   }
   return {
@@ -261,32 +273,31 @@ export function fieldDepth(f: PairField, dx: number, dy: number): number {
   let j = v | 0;
   if (i >= n) i = n - 1;
   if (j >= n) j = n - 1;
-  const { list, planes, start } = f;
+  const { list, planes, start, deep } = f;
   let deepest = 0;
-  const first = start[j * n + i];
+  if (deep.length > 0) {
+    const s = u - i;
+    const t = v - j;
+    const o = j * (n + 1) + i;
+    const low = deep[o] + s * (deep[o + 1] - deep[o]);
+    const high = deep[o + n + 1] + s * (deep[o + n + 2] - deep[o + n + 1]);
+    const mean = low + t * (high - low);
+    // Never more than the distance to free cloth, so nothing where a list says apart.
+    if (mean > 0) deepest = mean;
+  }
   const end = start[j * n + i + 1];
-  for (let k = first; k < end; ) {
+  for (let k = start[j * n + i]; k < end; ) {
     const last = k + list[k];
+    // A sum less deep than what is known is left at its first half-plane that says so.
+    const enough = -deepest;
     let most = -Infinity;
-    for (k++; k <= last; k++) {
+    for (k++; k <= last && most < enough; k++) {
       const e = list[k];
       const d = planes[e] * dx + planes[e + 1] * dy - planes[e + 2];
-      if (d > most) {
-        most = d;
-        if (d >= 0) break;
-      }
+      if (d > most) most = d;
     }
     k = last + 1;
-    if (-most > deepest) deepest = -most;
+    if (most < enough) deepest = -most;
   }
-  // Where a list says apart, so do the corners: their mean is never more than the distance to free cloth.
-  if (f.deep.length === 0 || (deepest === 0 && end > first)) return deepest;
-  const s = u - i;
-  const t = v - j;
-  const o = j * (n + 1) + i;
-  const g = f.deep;
-  const low = g[o] + s * (g[o + 1] - g[o]);
-  const high = g[o + n + 1] + s * (g[o + n + 2] - g[o + n + 1]);
-  const deep = low + t * (high - low);
-  return Math.max(deep, deepest);
+  return deepest;
 }
