@@ -1,7 +1,7 @@
 // Moves one piece of a strip to the cheapest place found: random places near, far and in touch with others, the best few of them
 // refined by coordinate descent. Does not: choose the piece. Source: own settings of common practice (packing.md, 6).
 import { drawInteger, type Random } from "../../numeric/random.ts";
-import { fieldOf, gatherAll, gatherNear, pricePlace, putPiece, type Strip } from "./strip.ts";
+import { fieldOf, pricePlace, putPiece, type Strip } from "./strip.ts";
 
 interface Place {
   s: number;
@@ -17,9 +17,6 @@ const SAME = 0.1;
 /** Steps of the descent, shares of the piece's lesser extent: of each kept place from, to; then of the best down to. */
 const STEPS = [0.25, 0.02, 0.0005];
 
-/** A descent gathers what lies within so many of its first steps. */
-const WANDER = 2;
-
 /** Coordinate descent from a place: along, across and aslant, steps growing with success. */
 function descendInPlace(strip: Strip, i: number, place: Place, span: [number, number], random: Random): void {
   const shape = strip.task.shapes[place.s];
@@ -29,9 +26,6 @@ function descendInPlace(strip: Strip, i: number, place: Place, span: [number, nu
   const [from, to] = span;
   let stepX = from;
   let stepY = from;
-  const margin = WANDER * from;
-  let [aroundX, aroundY] = [place.x, place.y];
-  gatherNear(strip, i, place.s, place, margin);
   while ((stepX > to || stepY > to) && place.price > 0) {
     const way = random();
     const dx = way < 0.4 || way >= 0.8 ? stepX : 0;
@@ -41,11 +35,6 @@ function descendInPlace(strip: Strip, i: number, place: Place, span: [number, nu
       const x = Math.max(xMin, Math.min(xMax, place.x + sign * dx));
       const y = Math.max(0, Math.min(yMax, place.y + sign * dy));
       if (x === place.x && y === place.y) continue;
-      if (Math.abs(x - aroundX) > margin || Math.abs(y - aroundY) > margin) {
-        aroundX = x;
-        aroundY = y;
-        gatherNear(strip, i, place.s, { x, y }, margin);
-      }
       const price = pricePlace(strip, i, place.s, x, y, place.price);
       if (price >= place.price) continue;
       place.x = x;
@@ -111,7 +100,6 @@ function fits(strip: Strip, s: number): boolean {
 export function movePiece(strip: Strip, i: number, random: Random): boolean {
   const { choices, shapes, start, width } = strip.task;
   const here: Place = { s: strip.shape[i], x: strip.x[i], y: strip.y[i], price: 0 };
-  gatherAll(strip, i);
   here.price = pricePlace(strip, i, here.s, here.x, here.y, Infinity);
   if (here.price <= 0) return false;
   const before = here.price;

@@ -20,26 +20,42 @@ const SINK = 0.95;
 /** A gain below this share does not count as one. */
 const GAIN = 0.02;
 
+/** Pairs dearer than their least, by their place in the weights, and a depth for every place, zero between two passes. */
+interface Raised {
+  pairs: number[];
+  depth: Float64Array;
+}
+
+function setWeight(strip: Strip, pair: number, weight: number): void {
+  const { n } = strip;
+  strip.weight[pair] = weight;
+  strip.weight[(pair % n) * n + Math.floor(pair / n)] = weight;
+}
+
 /** Weights of pairs in conflict grow, the others sink back. Returns the overlap. */
-function reweighInPlace(strip: Strip, depth: Float64Array): number {
-  const { n, weight } = strip;
+function reweighInPlace(strip: Strip, raised: Raised): number {
+  const { n, weight, least } = strip;
+  const { depth } = raised;
+  const hit: number[] = [];
   let most = 0;
   let sum = 0;
-  depth.fill(0);
   visitOverlaps(strip, (i, j, d) => {
+    hit.push(i * n + j);
     depth[i * n + j] = d;
     sum += d;
     if (d > most) most = d;
   });
-  for (let i = 0; i < n; i++)
-    for (let j = i + 1; j < n; j++) {
-      const k = i * n + j;
-      const d = depth[k];
-      const by = GROW_LEAST + (GROW - GROW_LEAST) * (d / most);
-      const w = d > 0 ? weight[k] * by : Math.max(strip.least[k], weight[k] * SINK);
-      weight[k] = w;
-      weight[j * n + i] = w;
-    }
+  const pairs = [...hit];
+  for (const k of raised.pairs) {
+    if (depth[k] > 0) continue;
+    setWeight(strip, k, Math.max(least[k], weight[k] * SINK));
+    if (weight[k] > least[k]) pairs.push(k);
+  }
+  for (const k of hit) {
+    setWeight(strip, k, weight[k] * (GROW_LEAST + (GROW - GROW_LEAST) * (depth[k] / most)));
+    depth[k] = 0;
+  }
+  raised.pairs = pairs;
   return sum;
 }
 
@@ -63,7 +79,7 @@ function drawOrder(strip: Strip, random: Random): number[] {
 export function separate(strip: Strip, patience: Patience, random: Random, stop: () => boolean): boolean {
   const { none } = strip.task;
   strip.weight.set(strip.least);
-  const depth = new Float64Array(strip.n ** 2);
+  const raised: Raised = { pairs: [], depth: new Float64Array(strip.n ** 2) };
   let best: StripState = copyState(strip);
   let least = measureOverlap(strip);
   for (let strike = 0; strike < patience.strikes && least > none; strike++) {
@@ -74,7 +90,7 @@ export function separate(strip: Strip, patience: Patience, random: Random, stop:
         return false;
       }
       for (const i of drawOrder(strip, random)) movePiece(strip, i, random);
-      const total = reweighInPlace(strip, depth);
+      const total = reweighInPlace(strip, raised);
       if (total >= least) continue;
       if (total < (1 - GAIN) * least) idle = -1;
       least = total;

@@ -3,6 +3,7 @@
 // and three-dimensional nesting problems, EJOR 183, 2007); depth of overlap as price (T. Imamichi et al., Discrete
 // Optimization 6, 2009), here by pairField.ts.
 import type { PlaneRing } from "../../surface/ring.ts";
+import { type BoxIndex, columnOf, indexBox, openIndex, rowOf } from "./boxIndex.ts";
 import { buildPairField, fieldDepth, type PairField } from "./pairField.ts";
 
 /** A shape as the strip sees it: box at 0, 0. */
@@ -47,9 +48,8 @@ export interface Strip {
   /** Weight of each pair, both ways, and its least: pairs of large pieces weigh more, so that small ones give way. */
   weight: Float64Array<ArrayBuffer>;
   least: Float64Array<ArrayBuffer>;
-  /** The pieces a price is made of: the first `nearCount`. */
-  near: Int32Array<ArrayBuffer>;
-  nearCount: number;
+  /** Where the boxes lie. */
+  index: BoxIndex;
   fields: (PairField | null)[];
   /** Places priced so far. */
   priced: number;
@@ -97,8 +97,7 @@ export function openStrip(task: StripTask, state: StripState): Strip {
     y1: new Float64Array(n),
     weight: leastWeights(task),
     least: leastWeights(task),
-    near: new Int32Array(n),
-    nearCount: 0,
+    index: openIndex(n, { start: task.start, end: state.length, width: task.width }),
     fields: fieldsFor(task),
     priced: 0,
   };
@@ -119,6 +118,7 @@ export function putPiece(strip: Strip, i: number, s: number, x: number, y: numbe
   strip.y[i] = y;
   strip.x1[i] = x + shape.length;
   strip.y1[i] = y + shape.height;
+  indexBox(strip.index, i, x, strip.x1[i], y, strip.y1[i]);
 }
 
 /** Puts everything where a state has it. */
@@ -149,30 +149,11 @@ export function depthAgainst(strip: Strip, s: number, j: number, x: number, y: n
     : fieldDepth(fieldOf(strip, t, s), strip.x[j] - x, strip.y[j] - y);
 }
 
-/** Takes all pieces but i into the prices to come. */
-export function gatherAll(strip: Strip, i: number): void {
-  let count = 0;
-  for (let j = 0; j < strip.n; j++) if (j !== i) strip.near[count++] = j;
-  strip.nearCount = count;
-}
-
-/** Takes into the prices to come what piece i as shape s can meet within `margin` of x, y. */
-export function gatherNear(strip: Strip, i: number, s: number, at: { x: number; y: number }, margin: number): void {
-  const { n, near, x, y, x1, y1 } = strip;
-  const { length, height } = strip.task.shapes[s];
-  const more = strip.task.reach + margin;
-  const [left, right] = [at.x - more, at.x + length + more];
-  const [low, high] = [at.y - more, at.y + height + more];
-  let count = 0;
-  for (let j = 0; j < n; j++)
-    if (x[j] < right && x1[j] > left && y[j] < high && y1[j] > low && j !== i) near[count++] = j;
-  strip.nearCount = count;
-}
-
-/** Weighted price of piece i as shape s at x, y against the pieces gathered; given up once it passes the bound. */
+/** Weighted price of piece i as shape s at x, y against all others; given up once it passes the bound. */
 // Six parameters: called a million times a second, a record of options would be built each time.
 export function pricePlace(strip: Strip, i: number, s: number, x: number, y: number, bound: number): number {
-  const { near, nearCount, x: px, y: py, x1, y1, weight } = strip;
+  const { x: px, y: py, x1, y1, weight, index } = strip;
+  const { starts, ends, floors, roofs, words } = index;
   const { reach } = strip.task;
   const shape = strip.task.shapes[s];
   const left = x - reach;
@@ -180,15 +161,23 @@ export function pricePlace(strip: Strip, i: number, s: number, x: number, y: num
   const low = y - reach;
   const high = y + shape.height + reach;
   const row = i * strip.n;
+  let a = columnOf(index, right) * words;
+  let b = columnOf(index, left) * words;
+  let c = rowOf(index, high) * words;
+  let d = rowOf(index, low) * words;
   let price = 0;
   strip.priced++;
-  for (let k = 0; k < nearCount; k++) {
-    const j = near[k];
-    if (px[j] >= right || x1[j] <= left || py[j] >= high || y1[j] <= low) continue;
-    const d = depthAgainst(strip, s, j, x, y);
-    if (d > 0) {
-      price += weight[row + j] * d;
-      if (price >= bound) return price;
+  for (let w = 0; w < words; w++) {
+    let bits = starts[a++] & ends[b++] & floors[c++] & roofs[d++];
+    while (bits !== 0) {
+      const j = 32 * w + 31 - Math.clz32(bits & -bits);
+      bits &= bits - 1;
+      if (px[j] >= right || x1[j] <= left || py[j] >= high || y1[j] <= low || j === i) continue;
+      const depth = depthAgainst(strip, s, j, x, y);
+      if (depth > 0) {
+        price += weight[row + j] * depth;
+        if (price >= bound) return price;
+      }
     }
   }
   return price;
@@ -196,14 +185,26 @@ export function pricePlace(strip: Strip, i: number, s: number, x: number, y: num
 
 /** Depths of all overlapping pairs: visit gets the two pieces, the first the lesser number, and the depth. */
 export function visitOverlaps(strip: Strip, visit: (i: number, j: number, depth: number) => void): void {
-  const { n, x, y, x1, y1, shape } = strip;
+  const { x, y, x1, y1, shape, index } = strip;
+  const { starts, ends, floors, roofs, words } = index;
   const { reach, movable } = strip.task;
-  for (let i = 0; i < movable; i++)
-    for (let j = i + 1; j < n; j++) {
-      if (x[j] >= x1[i] + reach || x1[j] + reach <= x[i] || y[j] >= y1[i] + reach || y1[j] + reach <= y[i]) continue;
-      const d = depthAgainst(strip, shape[i], j, x[i], y[i]);
-      if (d > 0) visit(i, j, d);
+  for (let i = 0; i < movable; i++) {
+    const a = columnOf(index, x1[i] + reach) * words;
+    const b = columnOf(index, x[i] - reach) * words;
+    const c = rowOf(index, y1[i] + reach) * words;
+    const d = rowOf(index, y[i] - reach) * words;
+    for (let w = i >> 5; w < words; w++) {
+      let bits = starts[a + w] & ends[b + w] & floors[c + w] & roofs[d + w];
+      while (bits !== 0) {
+        const j = 32 * w + 31 - Math.clz32(bits & -bits);
+        bits &= bits - 1;
+        if (j <= i) continue;
+        if (x[j] >= x1[i] + reach || x1[j] + reach <= x[i] || y[j] >= y1[i] + reach || y1[j] + reach <= y[i]) continue;
+        const depth = depthAgainst(strip, shape[i], j, x[i], y[i]);
+        if (depth > 0) visit(i, j, depth);
+      }
     }
+  }
 }
 
 /** Sum of all depths. */
