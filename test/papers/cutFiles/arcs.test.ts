@@ -13,7 +13,7 @@ import { addStrokeInPlace, type Drawing, emptyDrawing, extents } from "../../../
 import { panelDrawing } from "../../../src/core/papers/drawing/rollDrawing.ts";
 import type { Vec2 } from "../../../src/core/records/facts.ts";
 import { sampleFacts } from "../made/sampleFacts.ts";
-import { apart, hasEzdxf, PYTHON } from "./readDxf.ts";
+import { apart, flattened, hasEzdxf, PYTHON } from "./readDxf.ts";
 
 /** A lens of two arcs of 5 m and 3 m, with a corner, a straight and a wavy side: what an arc can and cannot stand for. */
 function shapes(): Drawing {
@@ -31,26 +31,6 @@ function shapes(): Drawing {
 }
 
 const drawings = [shapes(), ...sampleFacts().panels!.map((p) => panelDrawing(sampleFacts(), p))];
-
-/** Points of a run with its arcs cut up, by the textbook formula of the bulge. */
-function flattened(points: readonly Vec2[], bulges: readonly number[], closed: boolean): Vec2[] {
-  return points.flatMap((a, i): Vec2[] => {
-    const b = points[(i + 1) % points.length]!;
-    const bulge = bulges[i] ?? 0;
-    if (bulge === 0 || (!closed && i === points.length - 1)) return [a];
-    const angle = 4 * Math.atan(bulge);
-    const chord = Math.hypot(b[0] - a[0], b[1] - a[1]);
-    const radius = chord / 2 / Math.sin(angle / 2);
-    const heading = Math.atan2(b[1] - a[1], b[0] - a[0]) - angle / 2;
-    return Array.from({ length: 512 }, (_, k): Vec2 => {
-      const t = (angle * k) / 512;
-      return [
-        a[0] + radius * (Math.sin(heading + t) - Math.sin(heading)),
-        a[1] + radius * (Math.cos(heading) - Math.cos(heading + t)),
-      ];
-    });
-  });
-}
 
 test("arcs stand for curves: far fewer points, nowhere farther than 0.1 mm, corners kept", () => {
   for (const drawing of drawings) {

@@ -65,3 +65,23 @@ export function apart(a: Vec2[], b: Vec2[]): number {
     );
   return Math.max(oneWay(a, b), oneWay(b, a));
 }
+
+/** Points of a run with its arcs cut up, by the textbook formula of the bulge. */
+export function flattened(points: readonly Vec2[], bulges: readonly number[], closed: boolean, parts = 512): Vec2[] {
+  return points.flatMap((a, i): Vec2[] => {
+    const b = points[(i + 1) % points.length]!;
+    const bulge = bulges[i] ?? 0;
+    if (bulge === 0 || (!closed && i === points.length - 1)) return [a];
+    const angle = 4 * Math.atan(bulge);
+    const chord = Math.hypot(b[0] - a[0], b[1] - a[1]);
+    const radius = chord / 2 / Math.sin(angle / 2);
+    const heading = Math.atan2(b[1] - a[1], b[0] - a[0]) - angle / 2;
+    return Array.from({ length: parts }, (_, k): Vec2 => {
+      const t = (angle * k) / parts;
+      return [
+        a[0] + radius * (Math.sin(heading + t) - Math.sin(heading)),
+        a[1] + radius * (Math.cos(heading) - Math.cos(heading + t)),
+      ];
+    });
+  });
+}

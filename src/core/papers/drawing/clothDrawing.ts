@@ -2,6 +2,7 @@
 // and strips, on a roll or alone. Where a mark stands, how high and at which angle is the panels station's decision.
 import type { Facts, FactsPanel, FactsPiece, Vec2 } from "../../records/facts.ts";
 import { decimal } from "../words/decimal.ts";
+import { fromCutStart } from "./cutStart.ts";
 import { addLabelInPlace, addStrokeInPlace, type Drawing, textLength } from "./drawing.ts";
 import { boxOf, insidePoint } from "./flatGeometry.ts";
 import { penTexts, READ_AT_ARMS_LENGTH } from "./penTexts.ts";
@@ -49,7 +50,7 @@ export function addPanelInPlace(drawing: Drawing, panel: FactsPanel, lie: Lie): 
     });
   }
   if (!panel.marks.some((m) => m.kind === "name")) addNameInPlace(drawing, panel.id, panel.cut, lie);
-  addStrokeInPlace(drawing, { layer: "cut", points: panel.cut.map((p) => placed(p, lie)), closed: true });
+  addStrokeInPlace(drawing, { layer: "cut", points: fromCutStart(panel.cut.map((p) => placed(p, lie))), closed: true });
 }
 
 /** Draws the cut outline of a patch, strip, cover or test piece with its name and what it belongs to. */
@@ -60,7 +61,7 @@ export function addPieceInPlace(drawing: Drawing, facts: Facts, piece: FactsPiec
   const place = stripPlace(facts, piece);
   if (place) addStripInPlace(drawing, piece, name, place, lie);
   else addNameInPlace(drawing, name, piece.cut, lie);
-  addStrokeInPlace(drawing, { layer: "cut", points: piece.cut.map((p) => placed(p, lie)), closed: true });
+  addStrokeInPlace(drawing, { layer: "cut", points: fromCutStart(piece.cut.map((p) => placed(p, lie))), closed: true });
 }
 
 /** A pocket strip: its fold, its name above it, below it where it lies along its edge and which end is which. */

@@ -7,6 +7,7 @@ import { decimal } from "../words/decimal.ts";
 import { stampOf } from "../words/stamp.ts";
 import { batchOf } from "./clothBatch.ts";
 import { AT_HOME, addPanelInPlace, addPieceInPlace } from "./clothDrawing.ts";
+import { CUT_START } from "./cutStart.ts";
 import {
   addLabelInPlace,
   addStrokeInPlace,
@@ -134,6 +135,7 @@ function addNotesInPlace(drawing: Drawing, facts: Facts, notes: readonly string[
   const before = job.supersedes ? `  SUPERSEDES ${job.supersedes}` : "";
   const given = (text: string) => text || "not given";
   const sheet = [
+    CUT_START,
     `${job.title}  ISSUE ${job.issue}${before}  REVISION ${job.revision}  DATE ${given(job.date)}`,
     `DRAWN BY ${given(job.drawnBy)}  CHECKED BY ${given(job.checkedBy)}`,
   ];
