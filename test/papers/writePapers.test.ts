@@ -275,6 +275,20 @@ describe.skipIf(missing.length > 0)(`PDF sheets read by other programs${reason}`
     expect(text.split("CAUTION").length).toBeGreaterThan(1);
   });
 
+  test("a limit that is a least one says so on the findings sheets: a greater value is no fault", async () => {
+    const facts = sampleFacts({ stop: false });
+    const check = { station: "rolls", text: "used length", value: 27583, limit: 26154, holds: true } as const;
+    facts.checks = [
+      check,
+      { ...check, text: "slope", value: 3, limit: 5 },
+      { ...check, text: "teeth", value: 1, limit: 4, holds: false },
+    ];
+    const text = textOf(await writeFindingSheets(facts, fonts)).replace(/\s+/g, " ");
+    expect(text).toContain("27583 at least 26154 yes");
+    expect(text).toContain(" 3 5 yes");
+    expect(text).toContain(" 1 at least 4 NO");
+  });
+
   test("letters no face has are shown as ? and told in a note; those it has stay", async () => {
     const make = SETS["names right to left, of 300 letters, empty, equal but for case, A4"]!;
     const facts = make();

@@ -34,6 +34,19 @@ describe.skipIf(missing.length > 0)(`cards as another reader finds them${reason}
     for (const head of ["before", "after"]) expect(textOf(bytes, 2)).toContain(head);
   });
 
+  test("a name the table of sides must shorten stands whole above it; corners at anchors carry their names; notes stay off the card", async () => {
+    const long = "edge-cable-of-the-south-eastern-rim-over-the-quay";
+    const facts = sampleFacts({ stop: false, names: { E1: long } });
+    const note = { ...facts.findings.find((f) => f.level === "note")!, where: ["P1"], code: "panel-compensated" };
+    facts.findings = [...facts.findings, note];
+    const text = textOf(await writePanelCards(facts, fonts), 2).replace(/\s+/g, " ");
+    expect(text).toContain(`Names in full: side 1 ${long}.`);
+    expect(text).toContain("C1, A1");
+    expect(text).toContain("pocket-fold (caution)");
+    expect(text).not.toContain("panel-compensated");
+    expect(textOf(await writePanelCards(sampleFacts({ stop: false }), fonts), 2)).not.toContain("Names in full");
+  });
+
   test("a panel without a batch of its own has that of the roll it lies on; slits are counted by their side", async () => {
     const facts = sampleFacts({ stop: false });
     const [panel] = facts.panels!;

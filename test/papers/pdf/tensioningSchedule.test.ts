@@ -4,6 +4,7 @@ import { writeTensioningSchedule } from "../../../src/core/papers/pdf/rig/tensio
 import {
   cornerDistances,
   cornerHeights,
+  finalForce,
   holdReadings,
   jackStep,
   limitOf,
@@ -45,6 +46,22 @@ describe("readings", () => {
     const mast = readings.find((r) => r.id === "mast-1")!;
     expect(mast.low).toBeCloseTo(-3.3, 9);
     expect(mast.high).toBeCloseTo(-1.1, 9);
+  });
+
+  test("a hold window is that of the move before it where the force is the same, though the last stage ends off the target", () => {
+    const aim = rig.adjusters[0]!;
+    const off = {
+      ...rig.tensioning.stages.at(-1)!,
+      forces: { ...rig.tensioning.stages.at(-1)!.forces, [aim.id]: 0.98 * aim.target },
+    };
+    const stages = [...rig.tensioning.stages.slice(0, -1), off];
+    const made = { ...rig, tensioning: { ...rig.tensioning, stages } };
+    const window = rig.tensioning.readingError * aim.target;
+    const hold = holdReadings(made, off).find((r) => r.id === aim.id)!;
+    expect(hold.high - hold.planned).toBeCloseTo(window, 9);
+    // What the sheets call final is what the last stage reaches, on every sheet.
+    expect(finalForce(made, aim.id)).toBeCloseTo(0.98 * aim.target, 9);
+    expect(finalForce(made, "nobody")).toBeNull();
   });
 
   test("corner distances: round the roof and across, each pair once", () => {
@@ -167,6 +184,8 @@ describe.skipIf(missing.length > 0)(`schedule as another reader finds it${reason
       const { planned, low, high } = last.find((r) => r.id === a.id)!;
       expect(visit).toContain(`${a.id} ${planned.toFixed(1)} ${low.toFixed(1)} – ${high.toFixed(1)}`);
       expect(text).toContain(`${a.id}, height`);
+      const set = text.slice(text.indexOf("Before stage 1"), text.indexOf("Then hang the cloth"));
+      expect(set).toContain(`${a.perTurn.toFixed(1)} ${planned.toFixed(1)}`);
     }
   });
 
@@ -195,6 +214,18 @@ describe.skipIf(missing.length > 0)(`schedule as another reader finds it${reason
       for (const id of Object.keys(stage.forces)) expect(text).toContain(id);
       expect(text).toContain("T1 – T3");
     });
+  });
+
+  test("before an adjuster is set its caution is read; a mast stands before cloth is pinned to it, and is told only where there is one", async () => {
+    const text = textOf(await sheets).replace(/\s+/g, " ");
+    const from = text.indexOf("Before stage 1");
+    expect(text.indexOf("A turnbuckle turned out too far", from)).toBeLessThan(text.indexOf("SET pin to", from));
+    expect(text.indexOf("Slack or half-tensioned", from)).toBeLessThan(text.indexOf("Cables in their pockets", from));
+    expect(text).toContain("Masts first: mast-1 stands held every way");
+    const bare = { ...facts, rig: { ...facts.rig!, struts: [] }, cables: facts.cables!.filter((c) => c.edge !== null) };
+    const none = textOf(await writeTensioningSchedule(rigFacts(bare)!, fonts)).replace(/\s+/g, " ");
+    expect(none).not.toContain("Masts first");
+    expect(none).not.toContain("Dashed: masts");
   });
 
   test("cautions stand before the step they belong to, the gravest first", async () => {

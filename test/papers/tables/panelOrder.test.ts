@@ -110,6 +110,9 @@ describe.skipIf(missing.length > 0)(`the sheets of it${reason}`, () => {
       wordsOf(bytes).words.filter((w) => w.page === page && w.text === name && w.y0 > 40)[0]!;
     const order = ["P1", "S1", "P2", "S2", "P3"].map((n) => at(n).y0);
     expect([order, [...order].reverse()]).toContainEqual([...order].sort((a, b) => a - b));
+    // As in the plan beside it: what lies north lies above, whichever end the row begins at.
+    expect(at("P3").y0).toBeLessThan(at("P1").y0);
+    expect([at("E1").y0 > at("P2").y0, at("E3").y0 < at("P2").y0]).toEqual([true, true]);
     const { corners } = foldOrder(facts, ["P1", "P2", "P3"]);
     expect(textOf(bytes)).toContain(`${corners[0]} leaves first and is held`);
   });

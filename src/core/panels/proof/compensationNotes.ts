@@ -32,7 +32,7 @@ export function noteCompensation(panels: readonly FlatPanel[]): Finding[] {
       limit: null,
       text:
         `${group.length === 1 ? `panel ${group[0].id} is` : `${group.length} panels are`} patterned for ` +
-        `${batch === null ? "no named batch" : `batch ${batch}`}: ${ways.join("; ")}. ` +
+        `${batch === null ? "any batch of the cloth, by no test of its own" : `batch ${batch}`}: ${ways.join("; ")}. ` +
         "Per cent are of the cloth: flat = form / (1 + e), so 1 % takes 9.90 mm off a metre, not 10",
       remedy:
         "the flat shapes hold it already: do not compensate again; another batch needs its own test (compensation, panels)",

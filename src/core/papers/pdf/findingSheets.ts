@@ -53,6 +53,9 @@ const LAYOUT_COLUMNS: readonly Omit<Column, "head">[] = [
 
 const PLACES = 10;
 
+/** Findings carry bare numbers: what they count, their words say. */
+const SHARES = "Value and limit are in the unit the words name; a share is given as a part of one (0.05 is 5 %).";
+
 const HEADINGS: Readonly<Record<FindingLevel, string>> = {
   stop: "Stops: no paper may be issued while one of these is open",
   caution: "Cautions: each wants a decision",
@@ -174,13 +177,16 @@ function findingRow(facts: Facts, { worst: f, all }: LikeFindings): string[] {
 function flowFindingsInPlace(flow: Flow, facts: Facts, level: FindingLevel): void {
   const found = facts.findings.filter((f) => f.level === level);
   flowHeadingInPlace(flow, HEADINGS[level]);
-  if (found.length === 0) flowTextInPlace(flow, "None.");
-  else
-    flowTableInPlace(
-      flow,
-      FINDING_COLUMNS,
-      likeFindings(found).map((group) => findingRow(facts, group)),
-    );
+  if (found.length === 0) {
+    flowTextInPlace(flow, "None.");
+    return;
+  }
+  flowTableInPlace(
+    flow,
+    FINDING_COLUMNS,
+    likeFindings(found).map((group) => findingRow(facts, group)),
+  );
+  if (level !== "note") flowTextInPlace(flow, SHARES);
 }
 
 function flowEngineerInPlace(flow: Flow): void {
@@ -242,7 +248,7 @@ function flowChecksInPlace(flow: Flow, facts: Facts): void {
       worst.station,
       checkText(facts, group),
       valueText(worst.value),
-      valueText(worst.limit),
+      limitText(worst),
       worst.holds ? "yes" : "NO",
     ];
   });
@@ -254,5 +260,12 @@ function checkText(facts: Facts, { text, kind, names, worstName }: LikeChecks): 
   const words = unitsInText(facts.job, text);
   if (names.length === 0) return words;
   const more = names.length > PLACES ? ` and ${names.length - PLACES} more` : "";
-  return `${names.length} ${kind}s: ${words}; nearest to its limit, or beyond it: ${worstName}. ${names.slice(0, PLACES).join(", ")}${more}`;
+  return `${names.length} ${kind}s (${names.slice(0, PLACES).join(", ")}${more}): ${words}; the value is that of ${worstName}, the nearest to the limit or the farthest beyond it`;
+}
+
+/** A limit that is a least one says so: a value above it would else read as a check that failed. */
+function limitText({ value, limit, holds }: LikeChecks["worst"]): string {
+  const numbers = typeof value === "number" && typeof limit === "number";
+  const least = numbers && (holds ? value > limit : value < limit);
+  return least ? `at least ${valueText(limit)}` : valueText(limit);
 }

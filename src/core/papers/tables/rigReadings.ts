@@ -49,12 +49,21 @@ export interface HoldReading {
   high: number;
 }
 
-/** What all members are to read at the end of a stage; the window is the gauge's share of the member's final force. @units kN */
-export function holdReadings(rig: RigFacts, stage: FactsStage): HoldReading[] {
+/** What a member carries when the last stage is done, moves as a hand sets them; an adjuster without a reading its target. @units kN */
+export function finalForce(rig: RigFacts, id: string): number | null {
   const last = rig.tensioning.stages[rig.tensioning.stages.length - 1];
+  return last?.forces[id] ?? rig.adjusters.find((a) => a.id === id)?.target ?? null;
+}
+
+/**
+ * What all members are to read at the end of a stage. The window is the gauge's share of the force aimed at: an adjuster's target, as
+ * in the windows of its moves, else the member's final force. @units kN
+ */
+export function holdReadings(rig: RigFacts, stage: FactsStage): HoldReading[] {
   return Object.keys(stage.forces).map((id) => {
     const planned = stage.forces[id];
-    const window = rig.tensioning.readingError * Math.abs(last.forces[id] ?? planned);
+    const aim = rig.adjusters.find((a) => a.id === id)?.target ?? finalForce(rig, id) ?? planned;
+    const window = rig.tensioning.readingError * Math.abs(aim);
     const low = planned >= 0 ? Math.max(0, planned - window) : planned - window;
     return { id, planned, low, high: planned + window };
   });

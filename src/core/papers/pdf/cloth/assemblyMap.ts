@@ -1,16 +1,15 @@
 // The whole roof on one sheet with the names of panels, seams, edges and corners, then the seam schedule and the other cloth.
-import type { Facts, FactsJob, FactsPiece, Vec2 } from "../../../records/facts.ts";
-import { batchOf } from "../../drawing/clothBatch.ts";
-import { boxOf, insidePoint, pointAlong } from "../../drawing/flatGeometry.ts";
-import { stripPlace } from "../../drawing/stripPlace.ts";
-import { placesOf, seamSide } from "../../tables/clothTables.ts";
+import type { Facts, FactsJob, Vec2 } from "../../../records/facts.ts";
+import { insidePoint, pointAlong } from "../../drawing/flatGeometry.ts";
+import { seamSide } from "../../tables/clothTables.ts";
 import { decimal } from "../../words/decimal.ts";
 import { paperUnits } from "../../words/paperUnits.ts";
 import { addSheet, type Book, drawParagraph, type Sheet } from "../layout/book.ts";
 import { type LabelField, setNameInPlace } from "../layout/labelField.ts";
 import { type BoxArea, drawBox, drawRun } from "../layout/pen.ts";
 import { fitRoof, type RoofView } from "../layout/roofView.ts";
-import { type Column, flowGapInPlace, flowTableInPlace, flowTextInPlace, openFlow } from "../layout/table.ts";
+import { type Column, flowTableInPlace, flowTextInPlace, openFlow } from "../layout/table.ts";
+import { flowOtherCloth } from "./otherCloth.ts";
 import { drawUnrolled } from "./unrolledMap.ts";
 
 function seamColumns(job: FactsJob): readonly Column[] {
@@ -34,13 +33,13 @@ function seamColumns(job: FactsJob): readonly Column[] {
 /** Adds the map, the seam schedule and the list of other cloth to the book. */
 export function drawAssemblyMap(book: Book, view: RoofView): void {
   const sheet = addSheet(book, "Assembly map");
-  const words = `The roof ${view.name}, not to scale; x of the mesh to the right. Thick lines: seams, with the panel that lies on top so that water runs off it.`;
+  const words = `The roof ${view.name}, not to scale; x of the mesh to the right. Thick lines: seams, with the panel that lies on top so that water runs off it; S1/P2, where room is short, is seam S1 with P2 on top.`;
   const top = drawParagraph(book, sheet, words, sheet.top) - 2;
   const box = { x: sheet.left, y: sheet.bottom, width: sheet.right - sheet.left, height: top - sheet.bottom };
   drawMap(book, sheet, view, box);
-  drawUnrolled(book);
+  drawUnrolled(book, view);
   drawSchedule(book);
-  drawPieces(book);
+  flowOtherCloth(book);
 }
 
 function drawMap(book: Book, sheet: Sheet, view: RoofView, box: BoxArea): void {
@@ -58,19 +57,15 @@ function drawMap(book: Book, sheet: Sheet, view: RoofView, box: BoxArea): void {
     const spots = [0, 4, -4, 8, -8].flatMap((dy) => [0, 8, -8, 16, -16].map((dx): Vec2 => [at[0] + dx, at[1] + dy]));
     setNameInPlace(book, sheet, field, p.id, spots, { bold: true, size: 11 });
   }
-  for (const s of view.seams) {
-    const run = s.run.map(place);
-    const spots = [0.5, 0.4, 0.6, 0.3, 0.7, 0.2, 0.8, 0.12, 0.88].map((f) => pointAlong(run, f).at);
-    if (!setNameInPlace(book, sheet, field, `${s.id}: ${s.upper} on top`, spots))
-      setNameInPlace(book, sheet, field, s.id, spots);
-  }
+  nameSeams(book, sheet, view, field, place);
   const middle: Vec2 = [inner.x + inner.width / 2, inner.y + inner.height / 2];
   for (const e of view.edges) {
     const run = e.run.map(place);
     const spots = [0.5, 0.4, 0.6, 0.3, 0.7, 0.2, 0.8].flatMap((f) =>
-      [4, 7, 11].map((r) => outward(pointAlong(run, f).at, middle, r)),
+      [4, 7, 11, 15].map((r) => outward(pointAlong(run, f).at, middle, r)),
     );
-    setNameInPlace(book, sheet, field, e.id, spots);
+    const clear = { ...field, outlines: view.edges.map((o) => openLine(o.run.map(place))) };
+    if (!setNameInPlace(book, sheet, clear, e.id, spots)) setNameInPlace(book, sheet, field, e.id, spots);
   }
   for (const a of view.anchors) {
     const p = place(a.at);
@@ -83,6 +78,33 @@ function drawMap(book: Book, sheet: Sheet, view: RoofView, box: BoxArea): void {
       [5, 7, 10, 14].map((r) => outward(p, middle, r)),
     );
   }
+}
+
+/** A run as a closed outline that holds no cloth: there and back. */
+function openLine(run: Vec2[]): Vec2[] {
+  return [...run, ...[...run].reverse()];
+}
+
+/**
+ * Each seam with the panel on top, on its own line and off all others, in few letters where there is no room for words: a name that
+ * lies over two seams is read off the wrong one.
+ */
+function nameSeams(book: Book, sheet: Sheet, view: RoofView, field: LabelField, place: (p: Vec2) => Vec2): void {
+  const edges = view.edges.map((e) => openLine(e.run.map(place)));
+  const runs = view.seams.map((s) => s.run.map(place));
+  view.seams.forEach((s, i) => {
+    const run = runs[i];
+    const spots = [0, 1, 2, 3, 4, 5, 6, 7, 8].flatMap((k) =>
+      [0.5 + 0.05 * k, 0.5 - 0.05 * k].map((f) => pointAlong(run, f).at),
+    );
+    const off = [...edges, ...runs.flatMap((r, k) => (k === i ? [] : [openLine(r)]))];
+    const clear = { ...field, outlines: off };
+    if (setNameInPlace(book, sheet, clear, `${s.id}: ${s.upper} on top`, spots)) return;
+    const brief = `${s.id}/${s.upper}`;
+    if (setNameInPlace(book, sheet, clear, brief, spots)) return;
+    for (const text of [`${s.id}: ${s.upper} on top`, brief, s.id])
+      if (setNameInPlace(book, sheet, field, text, spots)) return;
+  });
 }
 
 function outward(p: Vec2, middle: Vec2, reach: number): Vec2 {
@@ -128,42 +150,4 @@ function drawSchedule(book: Book): void {
   const words =
     "Seams with the same weld are one continuous weld. Join match mark to match mark, the same number on both panels; never stretch one side to meet the other. The lengths are along the net line.";
   flowTextInPlace(flow, words);
-}
-
-function drawPieces(book: Book): void {
-  const { facts } = book;
-  const pieces = facts.pieces ?? [];
-  if (pieces.length === 0) return;
-  const { flat } = paperUnits(facts.job);
-  const clothOf = (p: FactsPiece) => `${p.fabric}, batch ${batchOf(facts, p) ?? "not given"}`;
-  const one = new Set(pieces.map(clothOf)).size === 1;
-  const columns: readonly Column[] = [
-    { head: ["Piece"], width: 34 },
-    { head: ["Kind, for"], width: 34 },
-    ...(one ? [] : [{ head: ["Fabric, batch"], width: 32 }]),
-    { head: ["Roll"], width: 20 },
-    { head: ["Length,", flat.unit], width: 25, align: "end" },
-    { head: ["Width,", flat.unit], width: 23, align: "end" },
-    { head: ["Lies along its edge,", flat.unit], width: 58 },
-    { head: ["Done by, date"], width: 34 },
-  ];
-  const places = placesOf(facts);
-  const rows = pieces.map((p) => {
-    const { min, max } = boxOf(p.cut);
-    const strip = stripPlace(facts, p);
-    return [
-      p.id,
-      `${p.kind}, ${p.for}`,
-      ...(one ? [] : [clothOf(p)]),
-      places.get(p.id)?.roll ?? "none",
-      flat.of(max[0] - min[0]),
-      flat.of(max[1] - min[1]),
-      strip ? `${flat.of(strip.from)} to ${flat.of(strip.to)} from ${strip.start}` : "",
-      "",
-    ];
-  });
-  const flow = openFlow(book, "Patches, strips, covers and test pieces");
-  if (one) flowTextInPlace(flow, `All of fabric ${clothOf(pieces[0])}.`);
-  flowGapInPlace(flow, 1.5);
-  flowTableInPlace(flow, columns, rows);
 }

@@ -52,7 +52,7 @@ export function flowAssemblyOrder(book: Book): void {
   ]);
   if (rows.length > 0) {
     const words =
-      "Always the weld next whose joined piece is lightest, so that little is dragged: a proposal, the floor may choose another. Weights are cloth as cut, without patches, cables and fittings.";
+      "Next is always the weld that makes the lightest piece, so that little is dragged. A proposal: the floor may choose another order. Weights are cloth as cut, without patches, cables and fittings.";
     flowTextInPlace(flow, words);
     flowGapInPlace(flow, 1.5);
     flowTableInPlace(flow, columns, rows);
@@ -61,7 +61,7 @@ export function flowAssemblyOrder(book: Book): void {
   pieces.forEach((p, i) => {
     flowTextInPlace(
       flow,
-      `Piece ${i + 1} of ${pieces.length}: ${p.panels.length} panels, about ${weight(p.mass)} of cloth: ${listed(p.panels)}.`,
+      `Piece ${i + 1} of ${pieces.length}: ${p.panels.length} panels, about ${weight(p.mass)} of cloth: ${p.panels.join(", ")}.`,
     );
   });
   flowHeadingInPlace(
@@ -77,9 +77,9 @@ export function flowAssemblyOrder(book: Book): void {
     const which = pieces.length > 1 ? `Piece ${i + 1}: ` : "";
     const first = corners[0] ?? "the end that is wanted first";
     const steps = [
-      `${which}Fold zigzag along the seams, panel by panel, the first lowest, the last on top: ${listed(panels)}.`,
+      `${which}Fold zigzag along the seams, panel by panel, the first lowest, the last on top: ${panels.join(", ")}.`,
       `${which}Then fold the pack from its other end towards ${first}, so that ${first} lies on top and outside.`,
-      `${which}On site the bundle opens the other way round: ${first} leaves first and is held, then panels ${listed([...panels].reverse())}.${corners.length > 1 ? ` Corners are wanted in this order: ${listed(corners)}.` : ""}`,
+      `${which}On site the bundle opens the other way round: ${first} leaves first and is held, then panels ${[...panels].reverse().join(", ")}.${corners.length > 1 ? ` Corners are wanted in this order: ${corners.join(", ")}.` : ""}`,
     ];
     for (const text of steps) flowTextInPlace(flow, text);
   });

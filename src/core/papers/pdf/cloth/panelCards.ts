@@ -11,7 +11,7 @@ import { paperUnits } from "../../words/paperUnits.ts";
 import { addSheet, type Book, closeBook, type FontFiles, openBook } from "../layout/book.ts";
 import { type BoxArea, drawText, fitText, PITCH, SMALL, wrapText } from "../layout/pen.ts";
 import { viewRoof } from "../layout/roofView.ts";
-import { type Column, drawHalves, drawTable, tableHeight } from "../layout/table.ts";
+import { type Column, drawHalves, drawTable, rowsShortened, tableHeight } from "../layout/table.ts";
 import { drawAssemblyMap } from "./assemblyMap.ts";
 import { flowAssemblyOrder } from "./assemblyOrder.ts";
 import { drawFoot, FOOT, type PanelLaps, type Roof } from "./cardFoot.ts";
@@ -173,23 +173,34 @@ function headTexts(facts: Facts, panel: FactsPanel, measures: PanelMeasures, sca
   const back = panel.decompensated.map(
     (d) => `along side ${d.side + 1} (${panel.sides[d.side]?.id ?? "?"}), fading over ${span.whole(d.fade)}`,
   );
-  const found = facts.findings.filter((f) => [f.where].flat().includes(panel.id));
-  const codes = [...new Set(found.map((f) => `${f.code} (${f.level})`))];
   const weight = mass === null ? "" : `, ${weights.whole(mass)}`;
   const stations = measures.start === "" ? "" : ` Widths: from ${measures.start}.`;
   return [
     `Scale 1:${scale}, outer face up, warp along the arrow. Fabric ${panel.fabric}, batch ${batchOf(facts, panel) ?? "not given"}, ${lie}. Cut area ${area.whole(panel.area.cut)}${weight}.`,
-    `Thick: cut. Dashed: net. Ticks: match marks. Side n begins at Cn. Edge, chord: between ringed cut corners, taped before welding; net: after it.${stations}${slitWords(panel)}`,
+    `Thick: cut line. Dashed: net line. Ticks: match marks. Square: corner of the net line; ring: of the cut line. Side n begins at Cn. Tape edge and chord from ring to ring before welding, net after it.${stations}${slitWords(panel)}`,
     `The flat is compensated (${(["warp", "weft"] as const).map((way) => tellTaken(panel, way)).join(", ")}${back.length > 0 ? `; taken back ${back.join("; ")}` : ""}): do not compensate again.`,
-    ...(codes.length > 0 ? [`See the findings sheets for this panel: ${codes.join(", ")}.`] : []),
   ];
 }
 
-/** Lines of the head; a list of findings that grows too long is cut off, the sheets it names hold it whole. */
-function headLines(book: Book, texts: readonly string[], width: number): string[] {
-  return texts.flatMap((text, i) =>
-    i < 3 ? wrapText(text, book.regular, SMALL, width) : [fitText(text, book.regular, SMALL, width)],
-  );
+/** What somebody must decide about this panel; the words of notes, which all panels share, stand on the findings sheets alone. */
+function foundText(facts: Facts, panel: FactsPanel): string {
+  const found = facts.findings.filter((f) => f.level !== "note" && [f.where].flat().includes(panel.id));
+  const codes = [...new Set(found.map((f) => `${f.code} (${f.level})`))];
+  return codes.length > 0 ? `See the findings sheets for this panel: ${codes.join(", ")}.` : "";
+}
+
+const KEY_LINES = 3;
+
+/** Names that the table of sides has to shorten, whole: as many as three lines hold. */
+function keyLines(book: Book, shortened: readonly string[][], width: number): string[] {
+  if (shortened.length === 0) return [];
+  for (let n = shortened.length; n > 0; n--) {
+    const more = n < shortened.length ? ` and ${shortened.length - n} more on the assembly map` : "";
+    const names = shortened.slice(0, n).map((row) => `side ${row[0]} ${row[1]}`);
+    const lines = wrapText(`Names in full: ${names.join(", ")}${more}.`, book.regular, SMALL, width);
+    if (lines.length <= KEY_LINES) return lines;
+  }
+  return [];
 }
 
 function drawCard(book: Book, roof: Roof, panel: FactsPanel, orders: ReadonlyMap<string, string>): void {
@@ -201,7 +212,14 @@ function drawCard(book: Book, roof: Roof, panel: FactsPanel, orders: ReadonlyMap
   // Feet and inches find no room beside each other: the checks then stand in two halves below the sides.
   const below = isImperial(facts.job);
   const width = sheet.right - sheet.left;
-  let lines = headLines(book, headTexts(facts, panel, measures, 1000), width);
+  const sideArea = { left: sheet.left, width: below ? width : width * 0.735 };
+  const key = keyLines(book, rowsShortened(book, sides.columns, sides.rows, { ...sideArea, y: 0 }, 1), width);
+  // A list of findings that grows too long is cut off, the sheets it names hold it whole.
+  const found = foundText(facts, panel);
+  const foot = [...key, ...(found === "" ? [] : [fitText(found, book.regular, SMALL, width)])];
+  const head = (scale: number) =>
+    headTexts(facts, panel, measures, scale).flatMap((text) => wrapText(text, book.regular, SMALL, width));
+  let lines = [...head(1000), ...foot];
   const headBottom = sheet.top - lines.length * PITCH - 1;
   const checkHeight = tableHeight(checks.columns, below ? Math.ceil(checks.rows.length / 2) : checks.rows.length);
   const figureOf = (count: number): BoxArea => {
@@ -218,13 +236,13 @@ function drawCard(book: Book, roof: Roof, panel: FactsPanel, orders: ReadonlyMap
   const box = figureOf(shown);
   const scale = cardScale(panel, box);
   // The words with the true scale are never longer than with the widest number.
-  lines = headLines(book, headTexts(facts, panel, measures, scale), width);
+  lines = [...head(scale), ...foot];
   lines.forEach((text, i) => {
     drawText(sheet.page, text, { x: sheet.left, y: sheet.top - PITCH * (i + 1) + 1, size: SMALL, font: book.regular });
   });
   drawPanelFigure({ book, sheet, panel, measures, box, scale });
   const top = box.y - 2;
-  const area = { left: sheet.left, width: below ? width : width * 0.735, y: top };
+  const area = { ...sideArea, y: top };
   const under = drawTable(book, sheet, sides.columns, sides.rows.slice(0, shown), area) - 2;
   if (below) drawHalves(book, sheet, checks.columns, checks.rows, under);
   else {

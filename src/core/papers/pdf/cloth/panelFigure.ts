@@ -1,6 +1,7 @@
 // The panel on its card, drawn at a round scale: cut and net line, sides with number, name and neighbour, corners, diagonals,
 // width lines, match marks, warp arrow, face. Nothing is lettered over anything else; what finds no room is left to the table.
 import type { Facts, FactsPanel, Vec2 } from "../../../records/facts.ts";
+import { cornerAnchors } from "../../drawing/cornerAnchors.ts";
 import { boxOf, insidePoint, pointAlong, sideRun } from "../../drawing/flatGeometry.ts";
 import type { PanelMeasures } from "../../drawing/panelMeasures.ts";
 import type { Book, Sheet } from "../layout/book.ts";
@@ -14,6 +15,8 @@ const MARGIN_Y = 7;
 const LABEL_HEIGHT = 3.6;
 const LONGEST_LABEL = 58;
 const MANY_SIDES = 6;
+/** Names keep this from the number of a match mark beside them, mm: "W1" next to "2" is read as twelve. */
+const APART = 2.2;
 
 /** Greatest round scale, as 1:n, at which the panel and its labels fit the box. */
 export function cardScale(panel: FactsPanel, box: BoxArea): number {
@@ -94,7 +97,7 @@ function setLabel(
   figure: Figure,
   text: string,
   middles: Iterable<Vec2>,
-  options: { bold?: boolean; size?: number; off?: Vec2[][] } = {},
+  options: { bold?: boolean; size?: number; off?: Vec2[][]; apart?: number } = {},
 ): Vec2 | null {
   const font = options.bold ? figure.book.bold : figure.book.regular;
   const size = options.size ?? SMALL;
@@ -103,7 +106,7 @@ function setLabel(
   const width = textWidth(shown, font, size);
   const { off = [] } = options;
   const field = { ...figure.field, outlines: [...figure.field.outlines, ...off] };
-  const at = takePlaceInPlace(field, { width, height }, middles);
+  const at = takePlaceInPlace(field, { width: width + 2 * (options.apart ?? 0), height }, middles);
   if (!at) return null;
   const ground = { x: at[0] - width / 2 - 0.3, y: at[1] - height / 2, width: width + 0.6, height };
   drawBox(figure.sheet.page, ground, { width: 0, fill: 1, outline: false });
@@ -124,7 +127,7 @@ function drawNameBlock(figure: Figure, measures: PanelMeasures): void {
   );
   // Off the width lines where there is such a place: letters on a dashed line are hard to tell.
   const off = measures.widths.flatMap((w) => (w.net ? [w.net.map(place)] : []));
-  const style = { bold: true, size: 14 };
+  const style = { bold: true, size: 14, apart: APART };
   if (!setLabel(figure, panel.id, spots, { ...style, off })) setLabel(figure, panel.id, [...spots, place(at)], style);
   const arrow = { width: 24, height: 5.5 };
   const beside = [0.625, 0.375, 0.55, 0.7, 0.3, 0.2, 0.8].flatMap((f) =>
@@ -218,7 +221,8 @@ function leader(figure: Figure, run: Vec2[], at: Vec2, size: { width: number; he
 function drawCorners(figure: Figure, measures: PanelMeasures): void {
   const box = boxOf(figure.panel.cut);
   const middle = figure.place([(box.min[0] + box.max[0]) / 2, (box.min[1] + box.max[1]) / 2]);
-  for (const corner of measures.corners) {
+  const anchors = cornerAnchors(figure.book.facts, figure.panel);
+  measures.corners.forEach((corner, k) => {
     const p = figure.place(corner.at);
     drawBox(figure.sheet.page, { x: p[0] - 0.4, y: p[1] - 0.4, width: 0.8, height: 0.8 }, { width: 0.1, fill: 0 });
     if (corner.cut >= 0) drawRing(figure.sheet.page, figure.place(figure.panel.cut[corner.cut]), 1, { width: 0.2 });
@@ -232,15 +236,24 @@ function drawCorners(figure: Figure, measures: PanelMeasures): void {
       [p[0] + sx * r, p[1] - sy * r],
       [p[0] - sx * r, p[1] - sy * r * 0.7],
     ]);
+    const anchor = anchors[k];
+    const full = `${corner.name}, ${anchor}`;
+    const half = textWidth(full, figure.book.regular, SMALL) / 2;
+    const wide = [2, 4, 6, 8].flatMap((r): Vec2[] => [
+      [p[0] + sx * (r + half), p[1] + sy * r * 0.5],
+      [p[0] + sx * (r + half), p[1]],
+      [p[0] + sx * half, p[1] + sy * (r + 2)],
+    ]);
+    if (anchor !== null && 2 * half <= LONGEST_LABEL && setLabel(figure, full, wide)) return;
     setLabel(figure, corner.name, around);
-  }
+  });
 }
 
 function drawWidthNames(figure: Figure, measures: PanelMeasures): void {
   for (const w of measures.widths) {
     if (!w.net) continue;
     const [a, b] = w.net.map(figure.place);
-    const along = [0.2, 0.8, 0.3, 0.7, 0.12, 0.88, 0.4, 0.6].map(
+    const along = [0.2, 0.8, 0.3, 0.7, 0.12, 0.88, 0.4, 0.6, 0.5, 0.45, 0.55, 0.35, 0.65].map(
       (f): Vec2 => [a[0] + f * (b[0] - a[0]), a[1] + f * (b[1] - a[1])],
     );
     // A strip too narrow for its letters has them beyond its line.
@@ -249,7 +262,8 @@ function drawWidthNames(figure: Figure, measures: PanelMeasures): void {
       [b[0] + (r * (b[0] - a[0])) / l, b[1] + (r * (b[1] - a[1])) / l],
       [a[0] - (r * (b[0] - a[0])) / l, a[1] - (r * (b[1] - a[1])) / l],
     ]);
-    setLabel(figure, w.name, [...along, ...beyond]);
+    if (!setLabel(figure, w.name, [...along, ...beyond], { apart: APART }))
+      setLabel(figure, w.name, [...along, ...beyond]);
   }
 }
 

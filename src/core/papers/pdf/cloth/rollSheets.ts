@@ -50,7 +50,7 @@ function drawRoll(book: Book, roll: NestedRoll): void {
   const left = roll.remnant === undefined ? "" : ` Left on the roll: ${flat.whole(roll.remnant)}.`;
   const words = [
     `Fabric ${roll.fabric}, batch ${roll.batch ?? "not given"}. Width ${flat.whole(roll.width)}, usable ${flat.whole(roll.usableWidth)}, used ${flat.whole(roll.used)} of ${flat.whole(roll.length)}: ${decimal(100 * roll.utilisation, 0)} % of the cloth used.${bound}${left}${moneyWords(roll.cost, roll.currency)} ${cloth.length} pieces, ${roll.gap > 0 ? `at least ${flat.whole(roll.gap)} apart` : "edges shared where they touch and then cut once"}.${table}`,
-    `${turned}OUTER FACE UP, warp along the roll, start of the roll at the left. Numbers in the order of cutting, in their pieces or at the end of a line that begins on them. Crossed: flaw. The cut file rules, this figure does not: no measure is taken from it.`,
+    `${turned}OUTER FACE UP, warp along the roll, start of the roll at the left. Numbers in the order of cutting, in their pieces or at the end of a line that begins on them.${roll.flaws.length > 0 ? " Crossed: flaw." : ""} The cut file rules, this figure does not: no measure is taken from it.`,
   ];
   let y = sheet.top;
   for (const text of words) y = drawParagraph(book, sheet, text, y);

@@ -1,11 +1,13 @@
 // The roof unrolled: every panel flat, outer face up, one below the other in the order of the roof, so that who lays out or welds sees
 // which panel comes next and along which seam. Never mirrored; turned by half where its seam would else lie on the far side.
 import type { Facts, FactsPanel, Vec2 } from "../../../records/facts.ts";
-import { boxOf, insidePoint } from "../../drawing/flatGeometry.ts";
+import { ringHolds } from "../../../surface/ring.ts";
+import { boxOf, insidePoint, pointAlong, sideRun } from "../../drawing/flatGeometry.ts";
 import { panelRow, type RowPanel, seamAbove } from "../../tables/panelOrder.ts";
 import { addSheet, type Book, drawParagraph, type Sheet } from "../layout/book.ts";
 import { type LabelField, setNameInPlace } from "../layout/labelField.ts";
-import { type BoxArea, drawRun } from "../layout/pen.ts";
+import { type BoxArea, drawRun, SMALL, textWidth } from "../layout/pen.ts";
+import type { RoofView } from "../layout/roofView.ts";
 
 /** Room between panels for the name of a seam, and least height of a panel for its own, mm. */
 const GAP = 5.2;
@@ -47,16 +49,18 @@ function otherSeams(facts: Facts, row: readonly RowPanel[]): string[] {
 }
 
 const LISTED = 16;
+/** Longest name of an edge that is set into a panel, mm. */
+const LONGEST = 40;
 
 /** The sheets of the unrolled roof. */
-export function drawUnrolled(book: Book): void {
+export function drawUnrolled(book: Book, view: RoofView): void {
   const { facts } = book;
-  const row = panelRow(facts);
+  const row = asInPlan(facts, view, panelRow(facts));
   if (row.length < 2) return;
   const others = otherSeams(facts, row);
   const more = others.length > LISTED ? ` and ${others.length - LISTED} more` : "";
   const rest = others.length > 0 ? ` Seams not shown: ${others.slice(0, LISTED).join(", ")}${more}.` : "";
-  const words = `Every panel flat and outer face up, in the order of the roof: it meets the one above it along the seam named between them; at the head of a column that is the last of the column before. Arrow: warp. Not to scale.${rest}`;
+  const words = `Every panel flat and outer face up, in the order of the roof: it meets the one above it along the seam named between them; at the head of a column that is the last of the column before. Along its sides: the edges. Arrow: warp. Not to scale.${rest}`;
   const open = (paper: string): { sheet: Sheet; box: BoxArea } => {
     const sheet = addSheet(book, paper);
     const top = drawParagraph(book, sheet, words, sheet.top) - 2;
@@ -81,6 +85,39 @@ export function drawUnrolled(book: Book): void {
   });
 }
 
+/** Whether a panel stands in the row as its flat cloth has it, or turned by half, so that its seams lie where the row wants them. */
+function standsRight(panel: FactsPanel, step: RowPanel, next: string | null): boolean {
+  return step.seam === null ? next === null || !seamAbove(panel, next) : seamAbove(panel, step.seam);
+}
+
+/** From this share of agreement on a row lies the other way round than the plan. */
+const AGAINST = -0.3;
+
+/** The row from its other end where the panels would else stand upside down beside the plan of the roof. */
+function asInPlan(facts: Facts, view: RoofView, row: readonly RowPanel[]): readonly RowPanel[] {
+  const panels = new Map((facts.panels ?? []).map((p) => [p.id, p]));
+  let [along, all] = [0, 0];
+  row.forEach((step, n) => {
+    const panel = panels.get(step.panel);
+    if (!panel) return;
+    const plan = panel.erected.map(view.project);
+    const mean = (points: readonly Vec2[], k: 0 | 1) =>
+      points.reduce((s, p) => s + p[k], 0) / Math.max(1, points.length);
+    const [p0, p1, f0, f1] = [mean(plan, 0), mean(plan, 1), mean(panel.flat, 0), mean(panel.flat, 1)];
+    const turn = standsRight(panel, step, row[n + 1]?.seam ?? null) ? 1 : -1;
+    panel.flat.forEach(([x, y], v) => {
+      const [u, w] = [plan[v][0] - p0, plan[v][1] - p1];
+      along += turn * ((x - f0) * u + (y - f1) * w);
+      all += Math.hypot(x - f0, y - f1) * Math.hypot(u, w);
+    });
+  });
+  if (along >= AGAINST * all) return row;
+  return row.map((_, n) => {
+    const k = row.length - 1 - n;
+    return { panel: row[k].panel, seam: row[k + 1]?.seam ?? null };
+  });
+}
+
 /** A panel with the seam to the one before above it; one that begins a row has the seam to the next below it. */
 function drawPanel(
   book: Book,
@@ -90,8 +127,7 @@ function drawPanel(
   area: BoxArea,
   scale: number,
 ): void {
-  const right = step.seam === null ? next === null || !seamAbove(panel, next) : seamAbove(panel, step.seam);
-  const turn = right ? 1 : -1;
+  const turn = standsRight(panel, step, next) ? 1 : -1;
   const { min, max } = boxOf(panel.cut);
   const middle: Vec2 = [area.x + area.width / 2, area.y + (area.height - GAP) / 2];
   const place = ([x, y]: Vec2): Vec2 => [
@@ -107,10 +143,33 @@ function drawPanel(
   const reach = (scale * (max[0] - min[0])) / 2;
   const x = middle[0] + 0.6 * reach;
   const label = field.taken[0];
-  if (label === undefined || x - 4 > label.x + label.width) drawArrow(sheet, [x, at[1]], turn);
+  if (label === undefined || x - 4 > label.x + label.width) {
+    drawArrow(sheet, [x, at[1]], turn);
+    field.taken.push({ x: x - 3.4, y: at[1] - 1, width: 6.8, height: 2 });
+  }
+  nameEdges(book, sheet, panel, { ...field, outlines: [outline] }, place);
   if (step.seam === null) return;
   const top: Vec2 = [middle[0], area.y + area.height - GAP / 2];
   setNameInPlace(book, sheet, field, step.seam, [top], { longest: area.width - 4 });
+}
+
+/** The edges a panel has, inside it along their sides; what finds no room stands on the card. */
+function nameEdges(book: Book, sheet: Sheet, panel: FactsPanel, field: LabelField, place: (p: Vec2) => Vec2): void {
+  const ring = Float64Array.from(panel.cut.flatMap(place));
+  for (const side of panel.sides) {
+    const width = textWidth(side.id, book.regular, SMALL);
+    if (side.kind === "seam" || width > LONGEST) continue;
+    const run = sideRun(panel, side).map(place);
+    const spots = [0.5, 0.42, 0.58, 0.34, 0.66, 0.26, 0.74].flatMap((f) => {
+      const { at, along } = pointAlong(run, f);
+      const [nx, ny] = [-along[1], along[0]];
+      const reach = (Math.abs(nx) * width + Math.abs(ny) * 3.6) / 2;
+      return [1.5, 3, 5].map((gap): Vec2 => [at[0] + (gap + reach) * nx, at[1] + (gap + reach) * ny]);
+    });
+    // Beyond the panel a name would be taken for that of the side it lies next to.
+    const own = spots.filter(([x, y]) => ringHolds(ring, x, y));
+    setNameInPlace(book, sheet, field, side.id, own);
+  }
 }
 
 function drawArrow(sheet: Sheet, [x, y]: Vec2, turn: 1 | -1): void {

@@ -14,6 +14,7 @@ import {
   needInPlace,
   openFlow,
 } from "../layout/table.ts";
+import { flowPocketInPlace } from "./pocketSection.ts";
 
 /** More kinds of lap than this are told in words only. */
 const DRAWN = 3;
@@ -55,6 +56,7 @@ export function flowWeldingFirst(book: Book): void {
     flow,
     "Which panel is on top stands on every card, in the column Lap, and in the seam schedule. Seam line to seam line, match mark to match mark; the width of the weld itself is set by the weld trial.",
   );
+  flowPocketInPlace(flow);
   flowHeadingInPlace(flow, "Cautions");
   flowCautionsInPlace(flow, cautionsOf(facts, "panels"));
 }

@@ -64,11 +64,15 @@ export function fitText(text: string, font: PDFFont, size: number, width: number
   return cutMiddle(letters, low);
 }
 
-/** Lines no longer than the width; a word that is longer is broken. At least one line. */
+/** A number and its unit, a sign and its number: parted by the end of a line they are misread. */
+const QUANTITY =
+  /(?<=\d) (?=(?:%|°[CF]|mm|m²?|kN(?:\/m)?|kg|m\/s|in|ft|lbf?|kip|mph|N·m)(?![\p{L}\d]))|(?<=±) (?=\d)/gu;
+
+/** Lines no longer than the width; a word that is longer is broken, a number keeps its unit. At least one line. */
 export function wrapText(text: string, font: PDFFont, size: number, width: number): string[] {
   const lines: string[] = [];
   let line = "";
-  for (const word of plainText(text).split(" ")) {
+  for (const word of plainText(text).replace(QUANTITY, "\u00a0").split(" ")) {
     const longer = line === "" ? word : `${line} ${word}`;
     if (textWidth(longer, font, size) <= width) {
       line = longer;

@@ -1,6 +1,7 @@
 // Tables that flow: cells wrap, rows stay whole where they can, a new sheet repeats the head. And the flow itself: a place on
 // a sheet that moves down and turns the page.
 import type { PDFFont } from "pdf-lib";
+import { plainText } from "../../words/plainText.ts";
 import { addSheet, type Book, type Sheet } from "./book.ts";
 import { drawBox, drawText, fitText, pitchOf, SMALL, textWidth, wrapText } from "./pen.ts";
 
@@ -161,6 +162,21 @@ function fitColumns(book: Book, columns: readonly Column[], rows: readonly strin
   const all = spare.reduce((a, b) => a + b, 0);
   const given = Math.min(1, short / Math.max(all, 1e-9));
   return columns.map((c, k) => ({ ...c, width: Math.max(need[k], width[k] - given * spare[k]) }));
+}
+
+/** Rows whose cell in column k such a table would shorten. */
+export function rowsShortened(
+  book: Book,
+  given: readonly Column[],
+  rows: readonly string[][],
+  area: Area,
+  k: number,
+): string[][] {
+  const columns = fitColumns(book, given, rows, area);
+  const width = layOut(columns, area.left, area.width).width[k] - 2 * PAD;
+  const font = columns[k].bold ? book.bold : book.regular;
+  const size = area.size ?? SMALL;
+  return rows.filter((row) => fitText(row[k], font, size, width) !== plainText(row[k]));
 }
 
 /** A table on one spot, each cell one line; names are shortened where they must be, numbers only where no room is left at all. */

@@ -3,7 +3,7 @@
 
 import type { Facts } from "../../../records/facts.ts";
 import { edgeStart } from "../../drawing/stripPlace.ts";
-import { limitOf, type RigFacts, rigFacts } from "../../tables/rigReadings.ts";
+import { finalForce, limitOf, type RigFacts, rigFacts } from "../../tables/rigReadings.ts";
 import { travelOf } from "../../tables/rigTables.ts";
 import { threadText } from "../../tables/turnbuckleWork.ts";
 import { cautionsOf } from "../../words/cautions.ts";
@@ -34,6 +34,12 @@ export async function writeCableSheets(facts: Facts, fonts: FontFiles): Promise<
   const rig = rigFacts(facts);
   if (rig) flowHardware(book, rig);
   return closeBook(book);
+}
+
+/** Masts are pressed, and nobody reads that off a minus. */
+function pressedText(of: (kN: number) => string, kN: number | null): string {
+  if (kN === null) return "–";
+  return kN < 0 ? `${of(-kN)} pressed` : of(kN);
 }
 
 function share(value: number | null): string {
@@ -79,7 +85,7 @@ function flowCables(book: Book): void {
       true,
     );
     text(
-      "The maker of the cable takes off what sockets, forks, thimbles and plates need at both ends, and for an edge that ends in an adjuster what the adjuster is long.",
+      "The maker of the cable takes off what sockets, forks, thimbles and plates need at both ends, and the adjuster's length where an edge ends in one.",
     );
   }
   for (const c of cables)
@@ -158,7 +164,7 @@ function flowHardware(book: Book, rig: RigFacts): void {
       pins.of(a.pinLength),
       travel.of(way.used),
       `${travel.of(way.leftIn)} / ${travel.of(way.leftOut)}`,
-      force.of(a.target),
+      force.of(finalForce(rig, a.id) ?? a.target),
       a.capacity === null ? "not given" : force.of(a.capacity),
       limit === null ? "not given" : force.of(limit),
     ];
@@ -173,7 +179,6 @@ function flowHardware(book: Book, rig: RigFacts): void {
   const struts = (rig.facts.rig?.struts ?? []).filter((s) => !s.brace);
   if (struts.length > 0) {
     const { span, stiffness } = paperUnits(rig.facts.job);
-    const last = rig.tensioning.stages[rig.tensioning.stages.length - 1];
     flowHeadingInPlace(flow, "Masts and struts");
     const head: readonly Column[] = [
       { head: ["Name"], width: 60, bold: true },
@@ -185,7 +190,7 @@ function flowHardware(book: Book, rig: RigFacts): void {
       s.id,
       span.of(s.slackLength),
       stiffness.of(s.EA),
-      last?.forces[s.id] === undefined ? "–" : force.of(last.forces[s.id]),
+      pressedText(force.of, finalForce(rig, s.id)),
     ]);
     flowTableInPlace(flow, head, lines, { size: SIZE });
   }

@@ -65,6 +65,8 @@ function cornerTable(rig: RigFacts, stage: FactsStage): Table {
     span.of(d.finished),
     "",
   ]);
+  // How far a corner may stand off its place nobody but the engineer says.
+  if (rows.length > 0) rows.push(["Allowed ±", ...new Array<string>(planned ? 3 : 2).fill("")]);
   return { columns, rows };
 }
 
@@ -80,7 +82,7 @@ export function flowHoldInPlace(flow: Flow, rig: RigFacts, stage: FactsStage, k:
   const wanted = HEAD + (beside ? Math.max(...heights) : halves[0] + halves[1] + 3) + SIGN_HEIGHT;
   if (wanted > flow.y - flow.sheet.bottom) needInPlace(flow, Infinity);
   const pressed = holdReadings(rig, stage).some((r) => r.planned < 0);
-  const words = `Read all members after half an hour, compare with the window (temperature: see the table of temperatures), measure the corners: distances by tape, heights by level from the height of the mesh. ${last ? "Lock both ends of every turnbuckle, mark them with paint." : "Nothing of the next stage is turned before this is signed."} A cable inside its pocket cannot be read: leave it blank, the adjusters decide.${pressed ? " Minus: pressed, as a mast is." : ""}`;
+  const words = `Read all members after half an hour, compare with the window (temperature: see the table of temperatures), measure the corners at the near pins, those on the cloth's side: distances by tape, heights by level, z of the mesh; how far off they may be the engineer says. ${last ? "Lock both ends of every turnbuckle, mark them with paint." : "Nothing of the next stage is turned before this is signed."} A cable inside its pocket cannot be read: leave it blank, the adjusters decide.${pressed ? " Minus: pressed, as a mast is." : ""}`;
   flowHeadingInPlace(flow, `HOLD POINT ${k + 1}`);
   flowTextInPlace(flow, words, { size: BODY });
   flowGapInPlace(flow, 1.5);

@@ -2,7 +2,7 @@
 import type { Vec2 } from "../../../records/facts.ts";
 import type { Vec3 } from "../../../surface/surface.ts";
 import { insidePlaces, insidePoint, pointAlong } from "../../drawing/flatGeometry.ts";
-import { type RigFacts, startPins } from "../../tables/rigReadings.ts";
+import { finalForce, type RigFacts, startPins } from "../../tables/rigReadings.ts";
 import { travelOf } from "../../tables/rigTables.ts";
 import { cautionsNamed } from "../../words/cautions.ts";
 import { paperUnits } from "../../words/paperUnits.ts";
@@ -32,9 +32,6 @@ function beyond(p: Vec2, from: Vec2, reach: number): Vec2 {
 /** The roof with adjusters, masts and stays named as on site. */
 export function drawSchedulePlan(book: Book, rig: RigFacts, view: RoofView): void {
   const sheet = addSheet(book, "Plan of the adjusters");
-  const words = `The roof ${view.name}, not to scale; x of the mesh to the right. Thick line and ring: adjuster with its name, then its anchor; the ring is the pin that does not move. Put the same names on the turnbuckles on site before the start. Dashed: masts and stays; a mast seen from above is a point.`;
-  const top = drawParagraph(book, sheet, words, sheet.top, { size: BODY }) - 2;
-  const box = { x: sheet.left, y: sheet.bottom, width: sheet.right - sheet.left, height: top - sheet.bottom };
   const nodes = rig.facts.rig?.nodes ?? [];
   const at = (n: number): Vec2 => view.project(nodes[n] as Vec3);
   const stays = (rig.facts.cables ?? []).filter((c) => c.edge === null).map((c) => c.id);
@@ -46,6 +43,10 @@ export function drawSchedulePlan(book: Book, rig: RigFacts, view: RoofView): voi
       .filter((c) => stays.includes(c.id))
       .map((c) => ({ id: c.id, run: c.nodes.map(at), width: 0.35 })),
   ];
+  const dashed = runs.length > 0 ? " Dashed: masts and stays; a mast seen from above is a point." : "";
+  const words = `The roof ${view.name}, not to scale; x of the mesh to the right. Thick line and ring: adjuster with its name, then its anchor; the ring is the pin that does not move. Put the same names on the turnbuckles on site before the start.${dashed}`;
+  const top = drawParagraph(book, sheet, words, sheet.top, { size: BODY }) - 2;
+  const box = { x: sheet.left, y: sheet.bottom, width: sheet.right - sheet.left, height: top - sheet.bottom };
   const pins = rig.adjusters.map((a) => ({ id: a.id, anchor: a.anchor, near: at(a.nodes[0]), far: at(a.nodes[1]) }));
   const inner = { x: box.x + 34, y: box.y + 12, width: box.width - 68, height: box.height - 24 };
   const place = fitRoof(view, inner, [...pins.flatMap((p) => [p.near, p.far]), ...runs.flatMap((r) => r.run)]);
@@ -128,6 +129,7 @@ function around([x, y]: Vec2, r: number): BoxArea {
 export function flowStart(book: Book, rig: RigFacts): void {
   const { pins, force, travel } = paperUnits(rig.facts.job);
   const flow = openFlow(book, "Before stage 1: set the adjusters");
+  flowCautionsInPlace(flow, cautionsNamed(book.facts, "thread-engagement"), BODY);
   const columns: readonly Column[] = [
     { head: ["Adjuster"], width: 34, bold: true },
     { head: ["Anchor"], width: 34 },
@@ -147,22 +149,27 @@ export function flowStart(book: Book, rig: RigFacts): void {
     pins.of(a.range.shortest),
     pins.of(a.range.longest),
     travel.of(a.perTurn),
-    force.of(a.target),
+    force.of(finalForce(rig, a.id) ?? a.target),
     "",
   ]);
   flowTableInPlace(flow, columns, rows, { size: LARGE });
   flowGapInPlace(flow, 2);
   const text = (words: string) => flowTextInPlace(flow, words, { size: BODY });
   text(
-    "Turn every adjuster to the length in the third column, with the same length of thread in the body at both ends, before the cloth is hung. Grease the threads. Put a paint mark along body and both ends: turns are counted from it.",
+    "Turn every adjuster to its length SET, pin to pin, with the same length of thread in the body at both ends, before the cloth is hung. Grease the threads. Put a paint mark along body and both ends: turns are counted from it.",
   );
   text(
     "Pin to pin is measured from the middle of one pin to the middle of the other, with the tape held tight along the turnbuckle. Under force it grows a little: the lengths in the steps are those a tape reads under the force of that step.",
   );
   const spent = rig.adjusters.filter((a) => travelOf(rig, a).leftIn < 0);
   flowGapInPlace(flow, 3);
-  flowCautionsInPlace(flow, cautionsNamed(book.facts, "wind-lift", "suspended-load", "thread-engagement"), BODY);
   flowHeadingInPlace(flow, "Then hang the cloth");
+  flowCautionsInPlace(flow, cautionsNamed(book.facts, "wind-lift", "suspended-load"), BODY);
+  const masts = (book.facts.rig?.struts ?? []).filter((s) => !s.brace).map((s) => s.id);
+  if (masts.length > 0)
+    text(
+      `Masts first: ${masts.join(", ")} ${masts.length > 1 ? "stand" : "stands"} held every way, by stays or by lines to firm points, before any cloth is pinned. Until the roof is taut the cloth holds no mast.`,
+    );
   text(
     "Cables in their pockets, every corner held by a line until it is pinned to its adjuster. Nothing is turned before all corners are pinned and the area below is clear.",
   );

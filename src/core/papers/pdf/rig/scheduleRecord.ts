@@ -22,7 +22,7 @@ const HEADING = 20;
 /** The sheet to turn to when a reading does not fit. */
 export function flowOutside(book: Book, rig: RigFacts): void {
   const flow = openFlow(book, "When a reading lies outside its window");
-  const { travel } = paperUnits(rig.facts.job);
+  const { travel, force } = paperUnits(rig.facts.job);
   const perTurn = rig.adjusters[0];
   const steps = [
     "STOP. Turn nothing on, let nothing out. Everybody out of the lines of the cables.",
@@ -42,7 +42,8 @@ export function flowOutside(book: Book, rig: RigFacts): void {
     flowGapInPlace(flow, 2);
   });
   const share = Number((100 * rig.tensioning.readingError).toPrecision(3));
-  const words = `How wide a window is: ± ${share} % of the final force of that adjuster, at every stage, because a gauge errs by its range and not by its reading. At the first stages the window is wide against the force: there the pin lengths and the corners count more.`;
+  const perForce = `${perTurn.id}: ${force.whole(perTurn.target)}, so ± ${force.whole(rig.tensioning.readingError * perTurn.target)}`;
+  const words = `How wide a window is: ± ${share} % of the force an adjuster is aimed at in the end (${perForce}), at every stage, because a gauge errs by its range and not by its reading. At the first stages the window is wide against the force: there the pin lengths and the corners count more.`;
   flowTextInPlace(flow, words, { size: BODY });
 }
 
@@ -116,7 +117,7 @@ export function flowSignOff(book: Book): void {
   const flow = openFlow(book, "Sign-off");
   const text = (words: string) => flowTextInPlace(flow, words, { size: BODY });
   text(
-    "Signed when the finished forces and the corners lie within their windows, every turnbuckle is locked and marked, and the log is complete. Read all forces again after a week and after the first warm and cold days: coated cloth relaxes. Keep these sheets with the building.",
+    "Signed when the finished forces lie within their windows, the corners stand where the engineer allows, every turnbuckle is locked and marked, and the log is complete. Read all forces again after a week and after the first warm and cold days: coated cloth relaxes. Keep these sheets with the building.",
   );
   flowGapInPlace(flow, 6);
   const { page, left, right } = flow.sheet;

@@ -15,16 +15,16 @@ export function flowVisit(book: Book, rig: RigFacts): void {
   flowTextInPlace(flow, words, { size: BODY });
   flowGapInPlace(flow, 2);
   const columns: readonly Column[] = [
-    { head: ["", "Adjuster"], width: 34, bold: true },
+    { head: ["", "Adjuster"], width: 30, bold: true },
     { head: ["Final", force.unit], width: 24, align: "end", bold: true },
     { head: ["Window", force.unit], width: 36, align: "end" },
     { head: ["Pins, by", `tape, ${pins.unit}`], width: 28, align: "end" },
-    { head: ["Travel", `left, ${travel.unit}`], width: 28, align: "end" },
-    { head: ["Read", force.unit], width: 26 },
+    { head: ["Left to", `shorten, ${travel.unit}`], width: 34, align: "end" },
+    { head: ["Read", force.unit], width: 22 },
     { head: ["Pins read", pins.unit], width: 26 },
-    { head: ["Turned", "by"], width: 26 },
-    { head: ["Then", force.unit], width: 26 },
-    { head: ["", "Lock"], width: 18 },
+    { head: ["Turned,", "turns"], width: 22 },
+    { head: ["Then", `read, ${force.unit}`], width: 26 },
+    { head: ["", "Locked"], width: 25 },
   ];
   const last = rig.tensioning.stages[rig.tensioning.stages.length - 1];
   const windows = new Map(holdReadings(rig, last).map((r) => [r.id, r]));
