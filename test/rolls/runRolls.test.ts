@@ -259,6 +259,11 @@ describe("which rolls", () => {
     expect(output.map((r) => r.placements.map((p) => p.panel))).toEqual([["a"], ["b"]]);
     expect(findings.map((f) => [f.code, f.level])).toEqual([["batch-split", "note"]]);
     expect(findings[0].value).toBeCloseTo(6, 6);
+    // A strip goes with its panel: it is not named, and alone it is no proposal.
+    const strips = [{ ...box("b-strip", 3000, 900, "b2"), follows: true }];
+    const named = runRolls([...pieces.map((p) => ({ ...p, cut: box("", 3000, 500).cut })), ...strips], rolls, OPTIONS);
+    expect(named.findings.flatMap((f) => f.where)).not.toContain("b-strip");
+    expect(runRolls([pieces[0], ...strips], rolls, OPTIONS).findings).toEqual([]);
     const alike = pieces.map((p) => ({ ...p, batch: "b1" }));
     expect(runRolls(alike, rolls, OPTIONS).findings).toEqual([]);
   });

@@ -3,7 +3,7 @@ import { buildPieces } from "../panels/pieces/cutPieces.ts";
 import { type Finding, PlanError, type Station, type StationContext, type StationResult } from "../problem.ts";
 import type { Facts } from "../records/facts.ts";
 import type { Job, MeshSource } from "../records/job.ts";
-import type { StockRoll } from "../records/roll.ts";
+import type { NestPiece, StockRoll } from "../records/roll.ts";
 import { runRig } from "../rig/runRig.ts";
 import { totalCloth } from "../rolls/rollFigures.ts";
 import { runRolls } from "../rolls/runRolls.ts";
@@ -14,6 +14,7 @@ import { runBuiltForm } from "./builtForm.ts";
 import { firstOptions, measureRoom } from "./clothRoom.ts";
 import type { MadeRoof } from "./dragSeam.ts";
 import { fitPanels } from "./fitPanels.ts";
+import { tellBatches } from "./tellBatches.ts";
 
 /** How a plan is asked for. */
 export interface PlanOptions {
@@ -141,9 +142,11 @@ function runStationsInPlace(
   if (options.until === "panels") return;
 
   options.onStation("rolls");
-  const pieces = [...panels, ...others].map((p) => ({ id: p.id, fabric: p.fabric, batch: p.batch, cut: p.cut }));
+  const bare = (p: NestPiece): NestPiece => ({ id: p.id, fabric: p.fabric, batch: p.batch, cut: p.cut });
+  const pieces = [...panels.map(bare), ...others.map((p) => ({ ...bare(p), follows: true }))];
   const stock = buildStock(job);
   const nested = take(runRolls(pieces, stock, job.nest, share("rolls", "rig")));
+  facts.findings.push(...tellBatches(nested, panels, job));
   facts.rolls = nested;
   facts.cloth = totalCloth(nested, pieces, stock, job.nest.gap);
   options.onFacts?.("rolls", facts);

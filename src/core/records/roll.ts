@@ -7,6 +7,8 @@ export interface NestPiece {
   fabric: string;
   batch: string | null;
   cut: Ring;
+  /** True for a patch, strip or test piece: its batch is that of the panels it belongs to. */
+  follows?: boolean;
 }
 
 /** Zone not to be used: x from the roll's start, y from the inner edge of the selvedge. mm */

@@ -11,15 +11,15 @@ const WORTH = 0.02;
 /** Layouts tried at most. */
 const STEPS = 24;
 
-/** The panels that would change their batch, by the batch they would go to. */
+/** The panels that would change their batch, by the batch they would go to; what follows a panel has no batch of its own. */
 function changesOf(layout: Layout, offers: OfferedRoll[], pieces: NestPiece[]): Map<string, string[]> {
   const changes = new Map<string, string[]>();
   layout.beds.forEach((bed, i) => {
     const batch = offers[i].roll.batch;
     if (batch === null) return;
     for (const { piece } of bed.laid) {
-      const { id, batch: own } = pieces[piece];
-      if (own !== null && own !== batch) changes.set(batch, [...(changes.get(batch) ?? []), id]);
+      const { id, batch: own, follows } = pieces[piece];
+      if (!follows && own !== null && own !== batch) changes.set(batch, [...(changes.get(batch) ?? []), id]);
     }
   });
   return changes;
