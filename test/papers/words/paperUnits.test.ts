@@ -72,6 +72,7 @@ describe("sentences of the stations on imperial sheets", () => {
     ["62.0 kN of 100 kN", "62.0 kN [13.9 kip] of 100 kN [22.5 kip]"],
     ["at 15 °C, below 10 degC", "at 15 °C [59 °F], below 10 degC [50 °F]"],
     ["area 38.2 m², 1.05 kg/m2, 12 m/s", "area 38.2 m² [411 ft²], 1.05 kg/m2 [0.215 lb/ft²], 12 m/s [26.8 mph]"],
+    ["curved 0.0100 to 0.0200 1/m²", "curved 0.0100 to 0.0200 1/m² [0.000929 to 0.00186 1/ft²]"],
     ["3 metres, M24, P3 mm2, 5 %", "3 metres, M24, P3 mm2, 5 %"],
   ])("%s", (text, wanted) => {
     expect(said(text)).toBe(wanted);

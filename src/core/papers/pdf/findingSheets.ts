@@ -112,7 +112,7 @@ function flowSummaryInPlace(flow: Flow, facts: Facts): void {
     flow,
     `${got} Mesh ${facts.job.mesh}. The plan is made for prestress; it does not design for wind, snow or ponding. Cautions for the work stand below, before anything is handled.`,
   );
-  if (facts.form) flowTextInPlace(flow, describeForm(facts.form));
+  if (facts.form) flowTextInPlace(flow, unitsInText(facts.job, describeForm(facts.form)));
 }
 
 /** Balance, forces and relief of the form in plain words. */
@@ -123,7 +123,7 @@ function describeForm(form: NonNullable<Facts["form"]>): string {
   const within = residual.tangentialMax === undefined ? "" : `, within it ${percent(residual.tangentialMax)}`;
   const found = edges.flatMap((e) =>
     e.forceFrom === "balance" && e.force !== null
-      ? [`${e.id} ${decimal(e.force, 2)} kN${e.spread === undefined ? "" : ` ± ${decimal(e.spread, 2)}`}`]
+      ? [`${e.id} ${decimal(e.force, 2)} kN${e.spread === undefined ? "" : ` ± ${decimal(e.spread, 2)} kN`}`]
       : [],
   );
   const shown = found.length > PLACES ? [...found.slice(0, PLACES), `${found.length - PLACES} more`] : found;

@@ -125,10 +125,11 @@ const IN_TEXT: Readonly<Record<string, readonly [string, number]>> = {
   "kN/m": ["lbf/ft", (1000 / KIP) * 0.3048],
   kg: ["lb", 1 / POUND],
   "kg/m2": ["lb/ft²", SQUARE_FOOT / POUND],
+  "1/m²": ["1/ft²", SQUARE_FOOT],
 };
 const NUMBER = String.raw`[-−]?\d+(?:\.\d+)?`;
 const QUANTITY = new RegExp(
-  String.raw`(?<![\w.])(${NUMBER})(?:( to | and | or | x | × |/)(${NUMBER}))?[ \u00a0](mm|m2|m²|m/s|m|kN/m|kN|kg/m2|kg|°C|degC)(?![\w²/·])`,
+  String.raw`(?<![\w.])(${NUMBER})(?:( to | and | or | x | × |/)(${NUMBER}))?[ \u00a0](mm|m2|m²|m/s|m|kN/m|kN|kg/m2|kg|1/m²|°C|degC)(?![\w²/·])`,
   "g",
 );
 

@@ -127,8 +127,8 @@ function titleRows(book: Book, sheet: Sheet, n: number): Field[][] {
   const at = reference === undefined ? "not stated" : `${temperature.whole(reference)}`;
   return [
     [
-      { label: "Title", value: given(job.title), share: 0.36 },
-      { label: "Paper", value: sheet.paper.replace(/ \(continued\)$/, ""), share: job.supersedes ? 0.25 : 0.3 },
+      { label: "Title", value: given(job.title), share: job.supersedes ? 0.31 : 0.36 },
+      { label: "Paper", value: sheet.paper.replace(/ \(continued\)$/, ""), share: 0.3 },
       job.supersedes
         ? { label: "Issue, supersedes", value: `${given(job.issue)}, ${plainText(job.supersedes)}`, share: 0.13 }
         : { label: "Issue", value: given(job.issue), share: 0.08 },

@@ -4,7 +4,7 @@
 import { allMoves, jackStep, limitOf, type RigFacts } from "../../tables/rigReadings.ts";
 import { bodyTorque, HAND_TORQUE, THREAD_FRICTION, threadOf, threadText } from "../../tables/turnbuckleWork.ts";
 import { cautionsOf } from "../../words/cautions.ts";
-import { paperUnits } from "../../words/paperUnits.ts";
+import { paperUnits, unitsInText } from "../../words/paperUnits.ts";
 import { siteLimits } from "../../words/siteLimits.ts";
 import { holdReason } from "../../words/stamp.ts";
 import { typeText } from "../../words/typeText.ts";
@@ -59,7 +59,9 @@ function flowScopeInPlace(flow: Flow, rig: RigFacts): void {
     flowHeadingInPlace(flow, "Not for issue: do not tension from these sheets");
     text(`Because: ${reason}.`, true);
     const stops = facts.findings.filter((f) => f.level === "stop");
-    for (const f of stops.slice(0, 6)) flowTextInPlace(flow, `• ${f.text} ${f.remedy}`, { size: BODY, indent: 4 });
+    for (const f of stops.slice(0, 6)) {
+      flowTextInPlace(flow, unitsInText(facts.job, `• ${f.text} ${f.remedy}`), { size: BODY, indent: 4 });
+    }
     if (stops.length > 6) text(`And ${stops.length - 6} more: see the findings sheets.`);
     // Several defaults may be taken at one place: the place is told once.
     const taken = [...new Set(facts.findings.flatMap((f) => (f.code === "rig-default" ? f.where : [])))];
