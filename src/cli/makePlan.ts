@@ -1,4 +1,5 @@
 // From what was read to facts and papers, with progress shown. Writes no files.
+import type { PaperChoice } from "../core/papers/choosePapers.ts";
 import { capNest } from "../core/plan/capNest.ts";
 import { writeFactsJson } from "../core/plan/factsFile.ts";
 import type { PlanInput } from "../core/plan/readPlanInput.ts";
@@ -20,7 +21,7 @@ export interface PlanDoors {
   ) => Facts;
   writePapers: (
     facts: Facts,
-    options: { fonts: { regular: Uint8Array; bold: Uint8Array } },
+    options: { fonts: { regular: Uint8Array; bold: Uint8Array }; papers?: readonly PaperChoice[] },
   ) => Promise<{ files: OutputFile[]; findings: Finding[] }>;
 }
 
@@ -57,10 +58,14 @@ export async function makeFacts(
   }
 }
 
-/** facts.json and the papers drawn from it; the facts with what the papers add to their findings. */
-export async function makePapers(given: Facts, around: Surroundings): Promise<{ facts: Facts; files: OutputFile[] }> {
+/** facts.json and the papers drawn from it, all but arcs and the zip where none are named; the facts with what the papers add to their findings. */
+export async function makePapers(
+  given: Facts,
+  around: Surroundings,
+  papers?: readonly PaperChoice[],
+): Promise<{ facts: Facts; files: OutputFile[] }> {
   const doors = await around.openDoors();
-  const { files, findings } = await doors.writePapers(given, { fonts: loadFonts() });
+  const { files, findings } = await doors.writePapers(given, { fonts: loadFonts(), ...(papers ? { papers } : {}) });
   const facts = { ...given, findings };
   return { facts, files: [{ path: "facts.json", bytes: writeFactsJson(facts) }, ...files] };
 }

@@ -1,4 +1,5 @@
 // seamstay plan JOB --out DIR
+import { choosePapers, type PaperChoice } from "../core/papers/choosePapers.ts";
 import type { Station } from "../core/problem.ts";
 import type { Facts } from "../core/records/facts.ts";
 import { holdSignals } from "./holdSignals.ts";
@@ -22,11 +23,11 @@ export async function planInto(
   jobPath: string,
   folder: string,
   around: Surroundings,
-  options: { until?: Station; quiet: boolean },
+  options: { until?: Station; papers?: readonly PaperChoice[]; quiet: boolean },
 ): Promise<WrittenPlan> {
   checkOutputFolder(folder);
   const planned = await makeFacts(readInput(jobPath, loadCatalogues()), around, options);
-  const { facts, files } = await makePapers(planned, around);
+  const { facts, files } = await makePapers(planned, around, options.papers);
   const cleared = await holdSignals(() => writeOutputFolder(folder, files));
   if (!options.quiet) for (const line of cleared) around.terminal.err(line);
   return { facts, files };
@@ -36,7 +37,7 @@ export async function planInto(
 export async function planCommand(args: string[], around: Surroundings): Promise<number> {
   const { operands, values, flags } = parseOptions("plan", args, {
     operands: ["JOB"],
-    values: ["out", "until"],
+    values: ["out", "until", "papers"],
     flags: ["json", "quiet"],
   });
   const { out, until } = values;
@@ -44,10 +45,12 @@ export async function planCommand(args: string[], around: Surroundings): Promise
   if (until !== undefined && !(UNTIL as readonly string[]).includes(until)) {
     throw usageError(`--until ${until}: no such station; it is one of ${UNTIL.join(", ")}`);
   }
+  // Looked at before the plan begins: a word misspelt is told at once.
+  const papers = values.papers === undefined ? {} : { papers: choosePapers(values.papers) };
   const json = flags.has("json");
   const quiet = flags.has("quiet");
   const station = until === undefined ? {} : { until: until as Station };
-  const { facts, files } = await planInto(operands[0], out, around, { ...station, quiet });
+  const { facts, files } = await planInto(operands[0], out, around, { ...station, ...papers, quiet });
   const figures = measurePlan(facts);
   const exit = figures.stops > 0 ? 1 : 0;
   if (json) {

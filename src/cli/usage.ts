@@ -1,5 +1,7 @@
 // What the verbs are and how they are called. The texts of `seamstay help`.
 
+import { PAPER_CHOICES } from "../core/papers/choosePapers.ts";
+
 /** Stations a plan can stop after. */
 export const UNTIL = ["form", "seams", "panels", "rolls", "rig"] as const;
 
@@ -13,11 +15,13 @@ export const VERBS: { verb: string; call: string; words: string; more: string[] 
   },
   {
     verb: "plan",
-    call: "plan JOB|FORM.obj --out DIR [--until STATION] [--json] [--quiet]",
+    call: "plan JOB|FORM.obj --out DIR [--until STATION] [--papers LIST] [--json] [--quiet]",
     words: "plans a job and writes facts.json and the papers into DIR",
     more: [
       "  JOB is a job file (JSON); a mesh (OBJ, metres, z up) is planned with the defaults of common practice",
       `  --until STATION   stops after ${UNTIL.join(", ")}`,
+      "  --papers LIST     writes these papers, with commas between them, in place of all but arcs and bundle; all: every one",
+      ...Object.entries(PAPER_CHOICES).map(([name, what]) => `      ${name.padEnd(13)} ${what}`),
       "  --json            prints one JSON object on stdout in place of words",
       "  --quiet           prints nothing but errors",
       "  DIR is made, or replaced where it holds an earlier plan; files in it that are not of the plan stay",

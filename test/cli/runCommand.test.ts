@@ -1,6 +1,7 @@
 import { mkdirSync, truncateSync, writeFileSync } from "node:fs";
 import { join } from "node:path";
 import { describe, expect, it } from "vitest";
+import { PAPER_CHOICES } from "../../src/core/papers/choosePapers.ts";
 import { buildDoors, call, makeScratch, SQUARE, stopFinding } from "./fakePlan.ts";
 
 const scratch = makeScratch();
@@ -22,7 +23,7 @@ describe("usage", () => {
     ["--out wants a value behind it", ["plan", job, "--out"]],
     ["--out wants a value behind it", ["plan", job, "--out", "--quiet"]],
     ["--out wants a value behind it", ["plan", job, "--out="]],
-    ["plan knows no option --ouput; it has --out --until --json --quiet", ["plan", job, "--ouput", "x"]],
+    ["plan knows no option --ouput; it has --out --until --papers --json --quiet", ["plan", job, "--ouput", "x"]],
     ["plan knows no option -o", ["plan", job, "-o", "x"]],
     ["--json takes no value", ["plan", job, "--out", "x", "--json=yes"]],
     ["--out is given twice", ["plan", job, "--out", "x", "--out", "y"]],
@@ -51,6 +52,34 @@ describe("usage", () => {
     for (const verb of ["start", "plan", "check", "demo", "help"]) expect(all.out).toContain(`seamstay ${verb}`);
     expect((await call(["plan", "--help"])).out).toBe((await call(["help", "plan"])).out);
     expect((await call(["--help"])).out).toBe(all.out);
+  });
+});
+
+describe("papers chosen", () => {
+  it("hands the papers named on to their writer, all that are usual where none are", async () => {
+    const { doors } = buildDoors();
+    const asked: (readonly string[] | undefined)[] = [];
+    const listening: typeof doors = {
+      ...doors,
+      writePapers: (facts, options) => {
+        asked.push(options.papers);
+        return doors.writePapers(facts, options);
+      },
+    };
+    await call(["plan", job, "--out", at("chosen"), "--papers", "rig, bundle", "--quiet"], listening);
+    await call(["plan", job, "--out", at("usual"), "--quiet"], listening);
+    await call(["plan", job, "--out", at("every"), "--papers", "all", "--quiet"], listening);
+    expect(asked).toEqual([["rig", "bundle"], undefined, Object.keys(PAPER_CHOICES)]);
+  });
+
+  it("refuses a word that names no paper before anything is planned, and says which there are", async () => {
+    const { doors, calls } = buildDoors();
+    const { exit, err } = await call(["plan", job, "--out", at("none"), "--papers", "cards"], doors);
+    expect(exit).toBe(2);
+    expect(err).toContain('"cards" names no paper; choose of: all, cut-files, dxf2000, arcs');
+    expect(calls).toEqual([]);
+    const help = await call(["help", "plan"]);
+    for (const choice of Object.keys(PAPER_CHOICES)) expect(help.out).toContain(`\n      ${choice} `);
   });
 });
 

@@ -7,6 +7,7 @@ import { withArcs } from "../../src/core/papers/drawing/arcs.ts";
 import type { Drawing } from "../../src/core/papers/drawing/drawing.ts";
 import { tableBites } from "../../src/core/papers/drawing/placedCloth.ts";
 import { panelDrawing, rollDrawing } from "../../src/core/papers/drawing/rollDrawing.ts";
+import { writePanelCards } from "../../src/core/papers/pdf/cloth/panelCards.ts";
 import { writeIndexSheet } from "../../src/core/papers/pdf/indexSheet.ts";
 import type { Facts, Vec2 } from "../../src/core/records/facts.ts";
 import type { Placement } from "../../src/core/records/roll.ts";
@@ -93,12 +94,28 @@ for (const [name, ending, write, make] of [
   });
 }
 
-// A sheet with frame, title block, stamp and table; the changed one is opened beside the kept one.
-test("the index sheet is written as test/golden/index.pdf has it", async () => {
-  const paths = ["findings.pdf", "rolls/R1.dxf", "rolls/R1.svg", "panels/P1.dxf", "panel-cards.pdf", "panels.csv"];
-  const bytes = Buffer.from(await writeIndexSheet(sampleFacts(), fonts, paths));
-  const kept = "test/golden/index.pdf";
-  const same = existsSync(kept) && readFileSync(kept).equals(bytes);
-  if (!same && !process.env.CI) writeFileSync("test/golden/index-changed.pdf", bytes);
-  expect(same, `${kept} differs: open it beside index-changed.pdf`).toBe(true);
-});
+/** A card of one panel with its marks, with what stands before it and the map behind it. */
+function oneCard(): Promise<Uint8Array> {
+  const facts = sampleFacts({ stop: false });
+  return writePanelCards({ ...facts, panels: [facts.panels![0]!], seams: [facts.seams![0]!] }, fonts);
+}
+
+// Sheets with frame, title block, stamp and table, and with a figure; the changed one is opened beside the kept one.
+for (const [name, write] of [
+  [
+    "index",
+    () => {
+      const paths = ["findings.pdf", "rolls/R1.dxf", "rolls/R1.svg", "panels/P1.dxf", "panel-cards.pdf", "panels.csv"];
+      return writeIndexSheet(sampleFacts(), fonts, paths);
+    },
+  ],
+  ["panel-card", oneCard],
+] as const) {
+  test(`the ${name} is written as test/golden/${name}.pdf has it`, async () => {
+    const bytes = Buffer.from(await write());
+    const kept = `test/golden/${name}.pdf`;
+    const same = existsSync(kept) && readFileSync(kept).equals(bytes);
+    if (!same && !process.env.CI) writeFileSync(`test/golden/${name}-changed.pdf`, bytes);
+    expect(same, `${kept} differs: open it beside ${name}-changed.pdf`).toBe(true);
+  });
+}
