@@ -15,6 +15,8 @@ const HAIR = 1e-6;
 const ROUNDS = 120;
 const IDLE = 30;
 const STRIDE_FIRST = 0.6;
+/** Sums in all the changes: very many kinds of pieces get fewer of them. */
+const WORK = 4e7;
 
 /** What so many pieces of one kind take of the levels, the gap before the next piece counted in; pairs of levels as one. */
 interface Taken {
@@ -132,7 +134,8 @@ export function boundByLevels(rings: PlaneRing[], width: number, gap: number, ro
   }
   // Weights grow where pieces take much (exponentiated gradient); the best of all is kept, each of them is a bound.
   let weights = from.map((w) => 0.9 * w + 0.1 / LEVELS);
-  for (let round = 0, idle = 0; round < ROUNDS && idle < IDLE; round++, idle++) {
+  const rounds = Math.min(ROUNDS, WORK / all.reduce((sum, t) => sum + t.length.length, 0));
+  for (let round = 0, idle = 0; round < rounds && idle < IDLE; round++, idle++) {
     const bound = weigh(all, weights, up);
     if (bound > best * (1 + 1e-6)) {
       best = bound;

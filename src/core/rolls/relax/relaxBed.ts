@@ -135,11 +135,12 @@ export type Relaxing = Generator<{ orders: ShareOrder[]; done: number }, Bed, (S
  */
 export function* relaxRounds(bed: Bed, nest: NestTask, limits: { steps: number; seed: number }): Relaxing {
   const loose = bed.laid.filter((p) => !p.pinned).length;
+  if (loose === 0 || limits.steps < LEAST_STEPS) return bed;
   const rings = bed.laid.map((p) => p.shape.ring);
   // No layout is shorter than its bound or its pins; one that meets it to a thousandth is good enough.
   const bound = NEAR * boundLength(rings, bed.width, bed.gap, bed.start);
   const fixed = Math.max(bound, ...bed.laid.filter((p) => p.pinned).map((p) => p.x + p.shape.length));
-  if (loose === 0 || limits.steps < LEAST_STEPS || fixed >= bedReach(bed)) return bed;
+  if (fixed >= bedReach(bed)) return bed;
   const framed = frameBed(bed, nest);
   // Few steps are not worth sharing.
   const shares = limits.steps >= SHARES * ROUND_LEAST * loose ? SHARES : 1;
