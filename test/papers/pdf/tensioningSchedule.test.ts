@@ -272,13 +272,29 @@ describe.skipIf(missing.length > 0)(`schedule as another reader finds it${reason
     for (const w of words) expect(sizeOf(w), w.text).toBeGreaterThan(8.9);
   });
 
+  test("sixteen members at four corners: what is signed stands on the sheet of its numbers", async () => {
+    const more = Object.fromEntries(Array.from({ length: 8 }, (_, i) => [`belt-${i + 1}`, 3]));
+    const stages = rig.tensioning.stages.map((s) => ({ ...s, forces: { ...s.forces, ...more } }));
+    const many = { ...facts, tensioning: { ...facts.tensioning!, stages } };
+    const bytes = await writeTensioningSchedule(rigFacts(many)!, fonts);
+    stages.forEach((_, k) => {
+      const text = wordsOf(bytes)
+        .words.map((w) => w.page)
+        .filter((p, i, all) => all.indexOf(p) === i)
+        .map((p) => textOf(bytes, p))
+        .find((t) => t.includes(`HOLD POINT ${k + 1}`))!;
+      expect(text).toContain("belt-8");
+      expect(text).toMatch(/Released for the next stage|Finished state accepted/);
+    });
+  });
+
   test("the window of a pressed member reads from – to without a dash among its minus signs", async () => {
     const bytes = await sheets;
     const text = pages(bytes, "Stage 1 of 3")
       .map((p) => textOf(bytes, p))
       .join(" ");
     expect(text).toContain("-3.3 to -1.1");
-    expect(text).toContain("Minus: pressed");
+    expect(text).toContain("minus is pressed");
   });
 
   test("the cover says what it is not, what must be there, and which limits nobody gave", async () => {

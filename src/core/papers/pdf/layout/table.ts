@@ -144,6 +144,9 @@ function drawHead(book: Book, sheet: Sheet, columns: readonly Column[], area: Ar
   );
 }
 
+/** Share of the room to spare that columns give up for names. */
+const GIVEN = 0.35;
+
 /**
  * Columns in which every head and every number fits: where one does not, its column takes room from those of names, which may be
  * shortened. Nobody cuts or turns by a number with its middle left out.
@@ -151,15 +154,24 @@ function drawHead(book: Book, sheet: Sheet, columns: readonly Column[], area: Ar
 function fitColumns(book: Book, columns: readonly Column[], rows: readonly string[][], area: Area): readonly Column[] {
   const { width } = layOut(columns, area.left, area.width);
   const size = area.size ?? SMALL;
-  const need = columns.map((c, k) => {
+  const hard = columns.map((c, k) => {
     const heads = c.head.map((h) => textWidth(h, book.bold, size));
     const cells = rows.map((row) => textWidth(row[k], c.bold ? book.bold : book.regular, size));
     return Math.max(...heads, ...(c.align === "end" ? cells : [])) + 2 * PAD + 0.1;
   });
-  const short = need.reduce((sum, n, k) => sum + Math.max(0, n - width[k]), 0);
+  const shortOf = (wanted: readonly number[]) => wanted.reduce((sum, n, k) => sum + Math.max(0, n - width[k]), 0);
+  const spareOf = (wanted: readonly number[]) => wanted.map((n, k) => Math.max(0, width[k] - n));
+  const sum = (list: readonly number[]) => list.reduce((a, b) => a + b, 0);
+  // Names too, where others have room enough that what is written by hand keeps most of its own.
+  const whole = columns.map((c, k) => {
+    const cells = rows.map((row) => textWidth(plainText(row[k]), c.bold ? book.bold : book.regular, size));
+    return Math.max(hard[k], ...cells.map((w) => w + 2 * PAD + 0.1));
+  });
+  const need = shortOf(whole) <= GIVEN * sum(spareOf(whole)) ? whole : hard;
+  const short = shortOf(need);
   if (short === 0) return columns;
-  const spare = need.map((n, k) => Math.max(0, width[k] - n));
-  const all = spare.reduce((a, b) => a + b, 0);
+  const spare = spareOf(need);
+  const all = sum(spare);
   const given = Math.min(1, short / Math.max(all, 1e-9));
   return columns.map((c, k) => ({ ...c, width: Math.max(need[k], width[k] - given * spare[k]) }));
 }

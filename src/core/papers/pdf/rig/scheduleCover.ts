@@ -93,7 +93,7 @@ function flowGearInPlace(flow: Flow, rig: RigFacts): void {
   const jack =
     heavy.length > 0
       ? `Jack or puller with its own gauge, for ${heavy.join(", ")}: by estimate too heavy for a hand (table below)`
-      : "Bar of half a metre for the turnbuckles; a jack at hand in case a thread runs heavier than estimated";
+      : "Bar of half a metre (20 in) for the turnbuckles; a jack at hand in case a thread runs heavier than estimated";
   const gear = [
     "One person in charge who may stop the work, and a second who only reads and writes",
     "One person at each adjuster that is moved in the same step, in speaking contact",
@@ -149,6 +149,6 @@ function flowTorqueInPlace(flow: Flow, rig: RigFacts): void {
   flowGapInPlace(flow, 1.5);
   flowTextInPlace(
     flow,
-    `Estimate from force, thread and a friction of ${THREAD_FRICTION} (0.10 greased to 0.20 dry; common practice), both ends turned by the body; a thread not given is taken by the name of the turnbuckle or as the thickest coarse one of its pitch. A hand gives about ${torque.whole(HAND_TORQUE)} at half a metre (common practice). Above that, at the finished force too, the load is taken over by the jack, the body turned free, the load set down again. Limit: ${Number((100 * rig.tensioning.limit).toPrecision(3))} % of what the turnbuckle bears.`,
+    `Estimate from force, thread and a friction of ${THREAD_FRICTION} (0.10 greased to 0.20 dry; common practice), both ends turned by the body; a thread not given is taken by the name of the turnbuckle or as the thickest coarse one of its pitch. A hand gives about ${torque.whole(HAND_TORQUE)} at half a metre, 20 in (common practice). Above that, at the finished force too, the load is taken over by the jack, the body turned free, the load set down again. Limit: ${Number((100 * rig.tensioning.limit).toPrecision(3))} % of what the turnbuckle bears.`,
   );
 }

@@ -17,7 +17,7 @@ import {
 } from "../layout/table.ts";
 import { BODY } from "./scheduleCover.ts";
 
-const SIGN_HEIGHT = 24;
+const SIGN_HEIGHT = 15.5;
 /** Heading and words, mm. */
 const HEAD = 25;
 
@@ -65,24 +65,31 @@ function cornerTable(rig: RigFacts, stage: FactsStage): Table {
     span.of(d.finished),
     "",
   ]);
-  // How far a corner may stand off its place nobody but the engineer says.
-  if (rows.length > 0) rows.push(["Allowed ±", ...new Array<string>(planned ? 3 : 2).fill("")]);
   return { columns, rows };
+}
+
+/** How far a corner may stand off its place nobody but the engineer says: a row for it where the table stands whole. */
+function withAllowed({ columns, rows }: Table): Table {
+  if (rows.length === 0) return { columns, rows };
+  return { columns, rows: [...rows, ["Allowed ±", ...new Array<string>(columns.length - 1).fill("")]] };
 }
 
 /** The hold point of stage k: tables side by side where a sheet holds them so, else each in two halves. */
 export function flowHoldInPlace(flow: Flow, rig: RigFacts, stage: FactsStage, k: number): void {
   const last = k === rig.tensioning.stages.length - 1;
   const forces = forceTable(rig, stage);
-  const corners = cornerTable(rig, stage);
-  const heights = [forces, corners].map((t) => tableHeight(t.columns, t.rows.length, LARGE));
-  const halves = [forces, corners].map((t) => tableHeight(t.columns, Math.ceil(t.rows.length / 2), LARGE));
+  const bare = cornerTable(rig, stage);
   const whole = flow.sheet.top - flow.sheet.bottom;
+  const allowed = withAllowed(bare);
+  const heights = [forces, allowed].map((t) => tableHeight(t.columns, t.rows.length, LARGE));
+  const halves = [forces, bare].map((t) => tableHeight(t.columns, Math.ceil(t.rows.length / 2), LARGE));
   const beside = HEAD + Math.max(...heights) + SIGN_HEIGHT <= whole;
-  const wanted = HEAD + (beside ? Math.max(...heights) : halves[0] + halves[1] + 3) + SIGN_HEIGHT;
+  const wanted = HEAD + (beside ? Math.max(...heights) : halves[0] + halves[1] + 1.5) + SIGN_HEIGHT;
   if (wanted > flow.y - flow.sheet.bottom) needInPlace(flow, Infinity);
+  const corners = beside ? allowed : bare;
   const pressed = holdReadings(rig, stage).some((r) => r.planned < 0);
-  const words = `Read all members after half an hour, compare with the window (temperature: see the table of temperatures), measure the corners at the near pins, those on the cloth's side: distances by tape, heights by level, z of the mesh; how far off they may be the engineer says. ${last ? "Lock both ends of every turnbuckle, mark them with paint." : "Nothing of the next stage is turned before this is signed."} A cable inside its pocket cannot be read: leave it blank, the adjusters decide.${pressed ? " Minus: pressed, as a mast is." : ""}`;
+  const at = paperUnits(rig.facts.job).temperature.whole(rig.tensioning.referenceTemperature);
+  const words = `Half an hour later read all members (windows hold at ${at}${pressed ? ", minus is pressed" : ""}) and measure the corners at the near pins, on the cloth's side: distances by tape, heights by level, z of the mesh. ${last ? "Lock every turnbuckle, mark it with paint." : "Turn nothing on before this is signed."} A cable in its pocket cannot be read: leave it blank.`;
   flowHeadingInPlace(flow, `HOLD POINT ${k + 1}`);
   flowTextInPlace(flow, words, { size: BODY });
   flowGapInPlace(flow, 1.5);
@@ -97,7 +104,7 @@ export function flowHoldInPlace(flow: Flow, rig: RigFacts, stage: FactsStage, k:
     flow.y -= Math.max(...heights);
   } else {
     flowHalvesInPlace(flow, forces.columns, forces.rows, { size: LARGE });
-    flowGapInPlace(flow, 3);
+    flowGapInPlace(flow, 1.5);
     flowHalvesInPlace(flow, corners.columns, corners.rows, { size: LARGE });
   }
   signInPlace(flow, last ? "Finished state accepted" : "Released for the next stage");
@@ -108,15 +115,15 @@ function signInPlace(flow: Flow, what: string): void {
   needInPlace(flow, SIGN_HEIGHT);
   const { page, left, right } = flow.sheet;
   const { regular, bold } = flow.book;
-  const top = flow.y - 3;
-  drawBox(page, { x: left, y: top - 18, width: right - left, height: 18 }, { width: 0.6 });
-  drawText(page, what, { x: left + 2, y: top - 6, size: LARGE, font: bold });
+  const top = flow.y - 1.5;
+  drawBox(page, { x: left, y: top - 14, width: right - left, height: 14 }, { width: 0.6 });
+  drawText(page, what, { x: left + 2, y: top - 5, size: LARGE, font: bold });
   const fields = ["Wind", "Cloth temp.", "Time", "Name", "Signature"];
   const width = (right - left - 4) / fields.length;
   fields.forEach((field, i) => {
     const x = left + 2 + i * width;
-    drawText(page, field, { x, y: top - 15, size: BODY, font: regular });
-    const line = (dx: number): [number, number] => [x + dx, top - 15.6];
+    drawText(page, field, { x, y: top - 11.5, size: BODY, font: regular });
+    const line = (dx: number): [number, number] => [x + dx, top - 12.1];
     drawRun(page, [line(24), line(width - 3)], { width: 0.2 });
   });
   flowGapInPlace(flow, SIGN_HEIGHT);
