@@ -1,8 +1,9 @@
 // The page as a whole: desk or book, notices, sheets, and what is dropped onto it.
 import { useEffect, useState } from "react";
 import { Book } from "./Book.tsx";
-import { Beginnings, Desk, openFiles } from "./Desk.tsx";
+import { Beginnings, Desk } from "./Desk.tsx";
 import { takeUpdate } from "./keep/offline.ts";
+import { openFiles } from "./keep/openBook.ts";
 import { FindingList } from "./parts/FindingList.tsx";
 import { hearKeys, KEY_SHEET } from "./parts/keys.ts";
 import { Sheet } from "./parts/Sheet.tsx";

@@ -2,36 +2,17 @@
 import { useEffect, useState } from "react";
 import { deleteJob, type KeptJob, listJobs } from "./keep/jobStore.ts";
 import { explainFault, openKept, openNew } from "./keep/keepBook.ts";
-import { loadFiles, readFiles } from "./keep/openFiles.ts";
+import { openFiles, tryOpen } from "./keep/openBook.ts";
 import { openStarter, STARTERS } from "./keep/starters.ts";
-import { bookStore, notify } from "./store/bookStore.ts";
-
-/** What goes wrong while opening is said, not swallowed. */
-export async function tryOpen(open: () => Promise<void>): Promise<void> {
-  try {
-    await open();
-    bookStore.setState((s) => ({ notices: s.notices.filter((n) => n.id !== "open") }));
-  } catch (error) {
-    const words = error instanceof Error ? error.message : String(error);
-    notify("open", error instanceof DOMException ? explainFault(error) : words, true);
-  }
-}
-
-/** Opens files as a job; a mesh that an open job waits for completes that one. */
-export async function openFiles(files: readonly File[]): Promise<void> {
-  await tryOpen(async () => {
-    const { project } = bookStore.getState();
-    const next = readFiles(await loadFiles(files), project);
-    openNew(next);
-    // The job that waited for its mesh goes on under a new name in the store.
-    if (project !== null && next.job === project.job) await deleteJob(project.id);
-  });
-}
+import { showTime } from "./parts/clock.ts";
+import { FilePick } from "./parts/FilePick.tsx";
 
 /** The kept jobs. */
 export function JobList() {
   const [jobs, setJobs] = useState<KeptJob[] | null>(null);
   const [fault, setFault] = useState("");
+  // a job that is deleted cannot come back: asked for twice
+  const [sure, setSure] = useState<string | null>(null);
   const read = () => {
     listJobs()
       .then(setJobs)
@@ -41,6 +22,11 @@ export function JobList() {
   if (fault !== "") return <p className="hint">{fault}</p>;
   if (jobs === null) return <p className="hint">Looking…</p>;
   if (jobs.length === 0) return <p className="hint">None yet. Whatever you open is kept here as you go.</p>;
+  const remove = async (id: string) => {
+    setSure(null);
+    await tryOpen(() => deleteJob(id));
+    read();
+  };
   return (
     <ul className="jobs">
       {jobs.map((j) => (
@@ -48,17 +34,21 @@ export function JobList() {
           <button type="button" className="open" onClick={() => tryOpen(async () => void (await openKept(j.id)))}>
             {j.title}
           </button>
-          <span className="quiet">{j.savedAt.replace("T", " ").slice(0, 16)}</span>
-          <button
-            type="button"
-            aria-label={`Delete ${j.title}`}
-            onClick={async () => {
-              await deleteJob(j.id);
-              read();
-            }}
-          >
-            Delete
-          </button>
+          <span className="quiet">kept {showTime(j.savedAt)}</span>
+          {sure === j.id ? (
+            <span className="sure">
+              <button type="button" aria-label={`Delete ${j.title} for good`} onClick={() => remove(j.id)}>
+                Delete for good
+              </button>
+              <button type="button" onClick={() => setSure(null)}>
+                Keep it
+              </button>
+            </span>
+          ) : (
+            <button type="button" aria-label={`Delete ${j.title}`} onClick={() => setSure(j.id)}>
+              Delete
+            </button>
+          )}
         </li>
       ))}
     </ul>
@@ -72,19 +62,7 @@ export function Beginnings() {
       <section className="drop">
         <h2>Open a form or a job</h2>
         <p>Drop an OBJ of the found form anywhere on this page, or a job (JSON) with its mesh, or a zip saved here.</p>
-        <label className="filepick">
-          <input
-            type="file"
-            multiple
-            accept=".obj,.json,.zip,.csv"
-            onChange={(e) => {
-              const files = [...(e.target.files ?? [])];
-              e.target.value = "";
-              if (files.length > 0) void openFiles(files);
-            }}
-          />
-          <span>Choose files</span>
-        </label>
+        <FilePick label="Choose files" accept=".obj,.json,.zip,.csv" multiple onPick={openFiles} />
       </section>
       <section>
         <h2>Begin with a starter</h2>

@@ -2,9 +2,9 @@
 import { createRoot } from "react-dom/client";
 import type { JobFile } from "../core/job/jobSchema.ts";
 import { App } from "./App.tsx";
-import { tryOpen } from "./Desk.tsx";
 import { lastOpen, newId, openKept, openNew, startKeeping } from "./keep/keepBook.ts";
 import { goOffline } from "./keep/offline.ts";
+import { tryOpen } from "./keep/openBook.ts";
 import { bookStore } from "./store/bookStore.ts";
 import { requestPlan } from "./worker/planner.ts";
 import "./style/ink.css";

@@ -14,6 +14,7 @@ import {
   type Page,
 } from "playwright-core";
 import { build } from "vite";
+import { afterAll, beforeAll, expect } from "vitest";
 import { type OpenedJob, servePage } from "../../src/cli/pageServer.ts";
 
 const ARGS = [
@@ -131,6 +132,61 @@ export async function setUp(opened: OpenedJob | null = null): Promise<Bench> {
   };
 }
 
+/** The bench of a test file: set up before its tests, put away after them. */
+export function benchOfFile(): Omit<Bench, "close"> {
+  let bench: Bench | null = null;
+  const there = (): Bench => {
+    if (bench === null) throw new Error("the bench is there in tests and hooks only");
+    return bench;
+  };
+  beforeAll(async () => {
+    bench = await setUp();
+  }, LONG);
+  afterAll(() => bench?.close());
+  return {
+    get url() {
+      return there().url;
+    },
+    get folder() {
+      return there().folder;
+    },
+    get browser() {
+      return there().browser;
+    },
+    open: (options) => there().open(options),
+  };
+}
+
+/** Files as a person chooses them. */
+export type GivenFiles = { name: string; mimeType: string; buffer: Buffer }[];
+
+/** A desk of its own with these files opened on it. */
+export async function openWith(
+  bench: Pick<Bench, "open">,
+  files: GivenFiles,
+  options?: BrowserContextOptions,
+): Promise<Desk> {
+  const desk = await bench.open(options);
+  await desk.page.getByLabel("Choose files").setInputFiles(files);
+  return desk;
+}
+
+/** The same, once it is planned. */
+export async function openPlanned(
+  bench: Pick<Bench, "open">,
+  files: GivenFiles,
+  options?: BrowserContextOptions,
+): Promise<Desk & { revision: string }> {
+  const desk = await openWith(bench, files, options);
+  return { ...desk, revision: await planned(desk.page) };
+}
+
+/** Nothing went wrong on a desk; it is put away. */
+export async function clear({ context, faults }: Desk): Promise<void> {
+  expect(faults).toEqual([]);
+  await context.close();
+}
+
 /** Waits until what is on the desk is planned. */
 export async function planned(page: Page): Promise<string> {
   const state = page.getByText(/^Planned, revision/);
@@ -161,6 +217,12 @@ export async function enter(page: Page, label: string | RegExp, text: string): P
   const field = fieldOf(page, label);
   await field.fill(text);
   await field.press("Enter");
+}
+
+/** Types a place into its three fields. */
+export async function enterPlace(page: Page, label: string, place: readonly [string, string, string]): Promise<void> {
+  for (const [k, axis] of ["x", "y", "z"].entries()) await page.getByLabel(`${label}, ${axis}`).fill(place[k]);
+  await page.getByLabel(`${label}, z`).press("Enter");
 }
 
 /** The first entry of a label. */

@@ -1,33 +1,24 @@
 // Decisions that were once only in the job file: each is made in place, with its unit, and its effect seen.
 import type { Page } from "playwright-core";
-import { afterAll, beforeAll, describe, expect, it } from "vitest";
+import { describe, expect, it } from "vitest";
 import {
-  type Bench,
-  type Desk,
+  benchOfFile,
+  clear,
   enter,
+  enterPlace,
   fieldOf,
   focused,
   LONG,
+  openPlanned,
   planned,
   plannedAnew,
   SOON,
-  setUp,
   shows,
   turnTo,
 } from "./bench.ts";
 import { sailFiles, smallFiles } from "./smallForm.ts";
 
-let bench: Bench;
-beforeAll(async () => {
-  bench = await setUp();
-}, LONG);
-afterAll(() => bench?.close());
-
-async function openWith(files: ReturnType<typeof smallFiles>): Promise<Desk & { revision: string }> {
-  const desk = await bench.open();
-  await desk.page.getByLabel("Choose files").setInputFiles(files);
-  return { ...desk, revision: await planned(desk.page) };
-}
+const bench = benchOfFile();
 
 /** Codes of all findings of the plan on the desk. */
 async function codes(page: Page): Promise<string[]> {
@@ -48,7 +39,8 @@ const lefts = async (page: Page) =>
 
 describe("decisions in place", { timeout: LONG }, () => {
   it("a flaw on a roll is kept clear, and removed again", async () => {
-    const { page, context, faults, revision } = await openWith(smallFiles());
+    const desk = await openPlanned(bench, smallFiles());
+    const { page, revision } = desk;
     await turnTo(page, "Rolls");
     const row = page.getByRole("row", { name: "Taken off" }).first().locator("td");
     const taken = async () => Number.parseFloat(await row.innerText());
@@ -65,12 +57,12 @@ describe("decisions in place", { timeout: LONG }, () => {
     await page.getByRole("button", { name: "Remove flaw 1" }).click();
     await page.getByLabel("Flaw 1 of R1 is long").waitFor({ state: "detached" });
     await expect.poll(async () => planned(page), SOON).toBe(revision);
-    expect(faults).toEqual([]);
-    await context.close();
+    await clear(desk);
   });
 
   it("the form is asked for its prestress, laps count twice, a clamped edge is surveyed", async () => {
-    const { page, context, faults, revision } = await openWith(smallFiles());
+    const desk = await openPlanned(bench, smallFiles());
+    const { page, revision } = desk;
     await fieldOf(page, "Prestress is taken").selectOption("balance");
     const asked = await plannedAnew(page, revision);
     await expect.poll(() => codes(page), SOON).toContainEqual(expect.stringMatching(/^cloth-stress-(balance|open)$/));
@@ -84,13 +76,7 @@ describe("decisions in place", { timeout: LONG }, () => {
     await page.getByText("Survey (0)").click();
     await fieldOf(page, "It lies at").selectOption("edge south");
     await page.getByLabel("Along the edge, % of its length").fill("50");
-    for (const [axis, value] of [
-      ["x", "3"],
-      ["y", "-0.02"],
-      ["z", "0.6"],
-    ])
-      await page.getByLabel(`Where south really is, ${axis}`).fill(value);
-    await page.getByLabel("Where south really is, z").press("Enter");
+    await enterPlace(page, "Where south really is", ["3", "-0.02", "0.6"]);
     await page.getByText("Survey (1)").waitFor();
     const surveyed = await plannedAnew(page, doubled);
     await expect.poll(() => codes(page), SOON).toContain("survey-clamped");
@@ -99,12 +85,12 @@ describe("decisions in place", { timeout: LONG }, () => {
     await expect.poll(() => codes(page), SOON).toContain("survey-stress");
     await page.getByRole("button", { name: /^Remove the survey of south/ }).click();
     await page.getByText("Survey (0)").waitFor();
-    expect(faults).toEqual([]);
-    await context.close();
+    await clear(desk);
   });
 
   it("limits of the roof as built, capacities, end fittings, a surveyed pin; what cannot be together is said", async () => {
-    const { page, context, faults, revision } = await openWith(sailFiles());
+    const desk = await openPlanned(bench, sailFiles());
+    const { page, revision } = desk;
     await fieldOf(page, "Prestress is taken").selectOption("balance");
     const alert = page.getByRole("alert");
     await alert.getByText(/take one of the two out of the job/).waitFor();
@@ -125,13 +111,7 @@ describe("decisions in place", { timeout: LONG }, () => {
     await turnTo(page, "Site");
     await page.getByText("Survey (0)").click();
     await fieldOf(page, "It lies at").selectOption("anchor C1");
-    for (const [axis, value] of [
-      ["x", "-0.75"],
-      ["y", "-0.65"],
-      ["z", "2.9"],
-    ])
-      await page.getByLabel(`Where C1 really is, ${axis}`).fill(value);
-    await page.getByLabel("Where C1 really is, z").press("Enter");
+    await enterPlace(page, "Where C1 really is", ["-0.75", "-0.65", "2.9"]);
     now = await plannedAnew(page, now);
     await expect.poll(() => codes(page), SOON).toContainEqual(expect.stringMatching(/^survey-(pin|anchor)$/));
     await turnTo(page, "Papers");
@@ -139,7 +119,6 @@ describe("decisions in place", { timeout: LONG }, () => {
     await shows(page, "Takes the place of issue", "0");
     await plannedAnew(page, now);
     await page.getByText(/files, revision/).waitFor();
-    expect(faults).toEqual([]);
-    await context.close();
+    await clear(desk);
   });
 });

@@ -4,36 +4,27 @@ import { cpSync, mkdtempSync, readFileSync, writeFileSync } from "node:fs";
 import { tmpdir } from "node:os";
 import { join } from "node:path";
 import type { Page } from "playwright-core";
-import { afterAll, beforeAll, describe, expect, it } from "vitest";
+import { describe, expect, it } from "vitest";
 import { servePage } from "../../src/cli/pageServer.ts";
 import {
-  type Bench,
-  type Desk,
+  benchOfFile,
   enter,
   kept,
   LONG,
+  openPlanned,
   PATIENCE,
   planned,
   plannedAnew,
   SOON,
-  setUp,
   shows,
   turnTo,
   watch,
 } from "./bench.ts";
 import { SMALL_JOB, smallFiles, smallForm } from "./smallForm.ts";
 
-let bench: Bench;
-beforeAll(async () => {
-  bench = await setUp();
-}, LONG);
-afterAll(() => bench?.close());
+const bench = benchOfFile();
 
-async function openSmall(): Promise<Desk & { revision: string }> {
-  const desk = await bench.open();
-  await desk.page.getByLabel("Choose files").setInputFiles(smallFiles());
-  return { ...desk, revision: await planned(desk.page) };
-}
+const openSmall = () => openPlanned(bench, smallFiles());
 
 /** Puts jobs into the store of the browser as a program of store version 1 kept them. */
 async function keepAsBefore(page: Page, jobs: Record<string, object>): Promise<void> {

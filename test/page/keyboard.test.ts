@@ -1,18 +1,16 @@
 // Every act by the keyboard alone: no pointer is used, whatever is wanted is reached with Tab, the arrow keys, or a key of the sheet.
 import type { Locator, Page } from "playwright-core";
-import { afterAll, beforeAll, describe, expect, it } from "vitest";
-import { type Bench, type Desk, kept, LONG, planned, plannedAnew, SOON, setUp } from "./bench.ts";
+import { beforeAll, describe, expect, it } from "vitest";
+import { benchOfFile, type Desk, kept, LONG, planned, plannedAnew, SOON } from "./bench.ts";
 import { SAIL_JOB, sailFiles } from "./smallForm.ts";
 
-let bench: Bench;
+const bench = benchOfFile();
 let desk: Desk;
 let revision = "";
 
 beforeAll(async () => {
-  bench = await setUp();
   desk = await bench.open();
 }, LONG);
-afterAll(() => bench?.close());
 
 const isFocused = (goal: Locator) =>
   goal.evaluateAll((all) => all.some((e) => e === document.activeElement || e.contains(document.activeElement)));

@@ -1,32 +1,30 @@
 // Every leaf: a decision is changed and its effect seen. One job clamped all round, walked as a person walks it.
-import { afterAll, beforeAll, describe, expect, it } from "vitest";
+import { readFileSync } from "node:fs";
+import { beforeAll, describe, expect, it } from "vitest";
 import {
-  type Bench,
+  benchOfFile,
   type Desk,
   enter,
   fieldOf,
   focused,
   LONG,
+  openPlanned,
   planned,
   plannedAnew,
   SOON,
-  setUp,
   shows,
   turnTo,
 } from "./bench.ts";
 import { smallFiles } from "./smallForm.ts";
 
-let bench: Bench;
+const bench = benchOfFile();
 let desk: Desk;
 let revision = "";
 
 beforeAll(async () => {
-  bench = await setUp();
-  desk = await bench.open();
-  await desk.page.getByLabel("Choose files").setInputFiles(smallFiles());
-  revision = await planned(desk.page);
+  const opened = await openPlanned(bench, smallFiles(), { acceptDownloads: true });
+  [desk, revision] = [opened, opened.revision];
 }, LONG);
-afterAll(() => bench?.close());
 
 /** The number of a row of figures. */
 async function figureOf(what: string): Promise<number> {
@@ -191,6 +189,40 @@ describe("leaves", { timeout: LONG }, () => {
     await page.locator("tr.struck", { hasText: "0.012" }).waitFor();
     await page.getByRole("button", { name: /^Count again/ }).click();
     await page.getByText("1 reading in the log.").waitFor();
+  });
+
+  it("Site: the log goes out as a file and comes in again as it was edited; readings alone are added to it", async () => {
+    const { page } = desk;
+    await turnTo(page, "Site");
+    const [saved] = await Promise.all([
+      page.waitForEvent("download"),
+      page.getByRole("button", { name: "Save the log (CSV)" }).click(),
+    ]);
+    expect(saved.suggestedFilename()).toBe("site-log.csv");
+    const text = readFileSync(await saved.path(), "utf8");
+    const give = (name: string, content: string) =>
+      page
+        .getByLabel("Take in a log (CSV)")
+        .setInputFiles([{ name, mimeType: "text/csv", buffer: Buffer.from(content) }]);
+    const more = `2026-03-04T10:00,"'=A ""B"",\nC",spare,12.5,,,,,,,,3,,yes\r\n`;
+    await give("site-log.csv", text.replace("0.012", "0.021") + more);
+    await page.getByText("The log is now that of the file: 2 lines, 1 before.").waitFor();
+    await page.getByText("2 readings in the log, 1 of them struck.").waitFor();
+    await page.getByRole("row", { name: /0\.021/ }).waitFor();
+    await page.locator("tr.struck", { hasText: /=A "B",\s+C.*spare.*12\.5 kN/ }).waitFor();
+    await page.getByRole("button", { name: "Undo log taken in" }).click();
+    await page.getByText("1 reading in the log.").waitFor();
+    await page.getByRole("row", { name: /0\.012/ }).waitFor();
+    await give("readings.csv", "id;force_kN;time\nspare;12,5;2026-03-04T10:00\n");
+    await page.getByText("1 of 1 readings were new and are in the log.").waitFor();
+    await page.getByText("2 readings in the log.").waitFor();
+    await give("readings.csv", "id,force_kN\nspare,much\n");
+    await page
+      .getByRole("alert")
+      .getByText(/row 2: force_kN is "much"/)
+      .waitFor();
+    await page.getByRole("alert").getByRole("button", { name: "Close" }).click();
+    await page.getByText("2 readings in the log.").waitFor();
   });
 
   it("a decision that cannot be is said with its place, and undone", async () => {

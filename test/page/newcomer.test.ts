@@ -2,14 +2,10 @@
 // stands on the page; and the surface of a roof clamped all round, coloured by what it carries.
 import { readFileSync } from "node:fs";
 import { unzipSync } from "fflate";
-import { afterAll, beforeAll, describe, expect, it } from "vitest";
-import { type Bench, judge, LONG, planned, plannedAnew, SOON, setUp } from "./bench.ts";
+import { describe, expect, it } from "vitest";
+import { benchOfFile, judge, LONG, planned, plannedAnew, SOON } from "./bench.ts";
 
-let bench: Bench;
-beforeAll(async () => {
-  bench = await setUp();
-}, LONG);
-afterAll(() => bench?.close());
+const bench = benchOfFile();
 
 describe("a newcomer", { timeout: LONG }, () => {
   it("plans the market hall on wider rolls and has its papers", async () => {
@@ -42,7 +38,13 @@ describe("a newcomer", { timeout: LONG }, () => {
     expect(rolls[0].width).toBe(before + 1000);
     await page.getByText("Panels", { exact: true }).click();
     await page.getByText("warp stress as patterned").click();
-    await page.getByText("middle: the wanted").waitFor();
+    await page.locator(".legend", { hasText: "Warp stress as patterned" }).getByText("middle: the wanted").waitFor();
+    await page.getByText("Rig", { exact: true }).click();
+    await page.getByText("No adjuster stands on this form: it is held all round").waitFor();
+    await page.locator(".legend").waitFor({ state: "detached" });
+    await page.getByLabel("The roof as built.").waitFor();
+    await page.getByText("warp stress as built").click();
+    await page.locator(".legend", { hasText: "Warp stress as built" }).getByText("middle: the wanted").waitFor();
     expect(await judge(page)).toEqual([]);
     expect(faults).toEqual([]);
     await context.close();

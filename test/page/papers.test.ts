@@ -5,20 +5,16 @@ import { tmpdir } from "node:os";
 import { join } from "node:path";
 import { unzipSync } from "fflate";
 import type { Page } from "playwright-core";
-import { afterAll, beforeAll, describe, expect, it } from "vitest";
+import { describe, expect, it } from "vitest";
 import { loadCatalogues, loadFonts } from "../../src/cli/packageFiles.ts";
 import { readInput } from "../../src/cli/readInput.ts";
 import { writePapers } from "../../src/core/papers/writePapers.ts";
 import { runPlan } from "../../src/core/plan/runPlan.ts";
 import type { Facts } from "../../src/core/records/facts.ts";
-import { type Bench, LONG, planned, setUp, turnTo } from "./bench.ts";
+import { benchOfFile, LONG, planned, turnTo } from "./bench.ts";
 import { SAIL_JOB, sailFiles } from "./smallForm.ts";
 
-let bench: Bench;
-beforeAll(async () => {
-  bench = await setUp();
-}, LONG);
-afterAll(() => bench?.close());
+const bench = benchOfFile();
 
 const ROOT = join(import.meta.dirname, "../..");
 const hash = (bytes: Uint8Array) => createHash("sha256").update(bytes).digest("hex");

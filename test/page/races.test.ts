@@ -1,33 +1,25 @@
 // Acts that come faster than the page can follow: nothing of what was done is lost, and nothing old stands where the new should.
 import type { Page } from "playwright-core";
-import { afterAll, beforeAll, describe, expect, it } from "vitest";
+import { describe, expect, it } from "vitest";
 import {
-  type Bench,
-  type Desk,
+  benchOfFile,
+  clear,
   enter,
   fieldOf,
   kept,
   LONG,
+  openWith,
   planned,
   plannedAnew,
   SOON,
-  setUp,
   shows,
   turnTo,
 } from "./bench.ts";
 import { SMALL_JOB, smallFiles } from "./smallForm.ts";
 
-let bench: Bench;
-beforeAll(async () => {
-  bench = await setUp();
-}, LONG);
-afterAll(() => bench?.close());
+const bench = benchOfFile();
 
-async function openSmall(job = SMALL_JOB): Promise<Desk> {
-  const desk = await bench.open();
-  await desk.page.getByLabel("Choose files").setInputFiles(smallFiles(job));
-  return desk;
-}
+const openSmall = (job = SMALL_JOB) => openWith(bench, smallFiles(job));
 
 /** A job whose nesting lasts until it is stopped. */
 const ENDLESS = { ...SMALL_JOB, nest: { steps: 1e7 } };
@@ -36,7 +28,8 @@ const nesting = (page: Page) => page.locator(".doing").getByText(/nest|roll/i);
 
 describe("rapid acts", { timeout: LONG }, () => {
   it("a panel dragged on the roll in one stroke, down, moved and let go before anything is drawn, is pinned", async () => {
-    const { page, context, faults } = await openSmall();
+    const desk = await openSmall();
+    const { page } = desk;
     const revision = await planned(page);
     await turnTo(page, "Rolls");
     await page.locator("svg.roll g.placed").last().waitFor();
@@ -63,12 +56,12 @@ describe("rapid acts", { timeout: LONG }, () => {
     });
     await page.getByRole("button", { name: "Let go" }).waitFor();
     await plannedAnew(page, revision);
-    expect(faults).toEqual([]);
-    await context.close();
+    await clear(desk);
   });
 
   it("edited again and again while it is planned, the last word is what is planned", async () => {
-    const { page, context, faults } = await openSmall(ENDLESS);
+    const desk = await openSmall(ENDLESS);
+    const { page } = desk;
     await turnTo(page, "Rolls");
     await nesting(page).waitFor();
     for (const gap of ["21", "22", "23"]) await enter(page, "Gap between cuts", gap);
@@ -77,12 +70,12 @@ describe("rapid acts", { timeout: LONG }, () => {
     await shows(page, "Gap between cuts", "23");
     const between = page.getByRole("row", { name: "Between cuts" }).first();
     await expect.poll(() => between.innerText(), SOON).toContain("23");
-    expect(faults).toEqual([]);
-    await context.close();
+    await clear(desk);
   });
 
   it("stopped right after an edit, it says so and stays stopped; planned again it is the edited job", async () => {
-    const { page, context, faults } = await openSmall(ENDLESS);
+    const desk = await openSmall(ENDLESS);
+    const { page } = desk;
     await turnTo(page, "Rolls");
     await nesting(page).waitFor();
     // Edit and stop in one breath, so that the edit's own plan has not begun.
@@ -98,12 +91,12 @@ describe("rapid acts", { timeout: LONG }, () => {
     await enter(page, "Steps of search", "1");
     await planned(page);
     await shows(page, "Gap between cuts", "24");
-    expect(faults).toEqual([]);
-    await context.close();
+    await clear(desk);
   });
 
   it("reloaded while it is planned, right after an edit, the edit is there and planning begins again", async () => {
-    const { page, context, faults } = await openSmall(ENDLESS);
+    const desk = await openSmall(ENDLESS);
+    const { page } = desk;
     await turnTo(page, "Rolls");
     await nesting(page).waitFor();
     await kept(page);
@@ -113,12 +106,12 @@ describe("rapid acts", { timeout: LONG }, () => {
     await page.getByRole("progressbar", { name: "Planning" }).waitFor();
     await page.getByRole("button", { name: "Undo gap between cuts" }).waitFor();
     await fieldOf(page, "Steps of search").waitFor();
-    expect(faults).toEqual([]);
-    await context.close();
+    await clear(desk);
   });
 
   it("a leaf turned while the papers are written: they are there when one comes back, of the newest plan", async () => {
-    const { page, context, faults } = await openSmall();
+    const desk = await openSmall();
+    const { page } = desk;
     const first = await planned(page);
     await turnTo(page, "Papers");
     await turnTo(page, "Rolls");
@@ -126,12 +119,12 @@ describe("rapid acts", { timeout: LONG }, () => {
     await turnTo(page, "Papers");
     const revision = (await plannedAnew(page, first)).replace("Planned, revision ", "");
     await page.getByText(new RegExp(`files, revision ${revision}`)).waitFor();
-    expect(faults).toEqual([]);
-    await context.close();
+    await clear(desk);
   });
 
   it("another job opened while one is planned: nothing of the former one comes after it", async () => {
-    const { page, context, faults } = await openSmall(ENDLESS);
+    const desk = await openSmall(ENDLESS);
+    const { page } = desk;
     await turnTo(page, "Rolls");
     await nesting(page).waitFor();
     await page.getByRole("button", { name: /open the list of jobs/ }).click();
@@ -139,7 +132,6 @@ describe("rapid acts", { timeout: LONG }, () => {
     await planned(page);
     await page.getByRole("button", { name: "Seamstay Second booth, open the list of jobs" }).waitFor();
     await page.getByRole("button", { name: "Undo", exact: true }).and(page.locator(":disabled")).waitFor();
-    expect(faults).toEqual([]);
-    await context.close();
+    await clear(desk);
   });
 });

@@ -1,36 +1,32 @@
 // A seam's end slid along its edge: with the mouse, a finger and the keys; its panels redrawn, the roof tied again, undone.
 import type { Page } from "playwright-core";
-import { afterAll, beforeAll, describe, expect, it } from "vitest";
+import { beforeAll, describe, expect, it } from "vitest";
 import {
-  type Bench,
+  benchOfFile,
   type Desk,
   enter,
   judge,
   LONG,
+  openPlanned,
   PATIENCE,
   planned,
   plannedAnew,
   SOON,
-  setUp,
   turnTo,
 } from "./bench.ts";
 import { smallFiles } from "./smallForm.ts";
 
-let bench: Bench;
+const bench = benchOfFile();
 let desk: Desk;
 let revision = "";
 
 beforeAll(async () => {
-  bench = await setUp();
-  desk = await bench.open({ hasTouch: true });
-  await desk.page.getByLabel("Choose files").setInputFiles(smallFiles());
-  await planned(desk.page);
+  desk = await openPlanned(bench, smallFiles(), { hasTouch: true });
   await turnTo(desk.page, "Seams");
   await enter(desk.page, "Number of strips", "4");
   await desk.page.getByText(/between 4 panels/).waitFor({ timeout: PATIENCE });
   revision = await planned(desk.page);
 }, LONG);
-afterAll(() => bench?.close());
 
 const grips = (page: Page) => page.getByRole("slider");
 const beside = (page: Page) => page.getByRole("complementary", { name: "Panels of the seam" });

@@ -9,6 +9,28 @@ const W = 640;
 const H = 190;
 const LEFT = 44;
 const BOTTOM = 26;
+const RIGHT = 96;
+/** Ends nearer than a line of text carry one name together. */
+const LINE = 11;
+
+/** Names at the ends of the traces: those that would lie over each other stand as one. */
+function nameEnds(
+  ends: readonly { id: string; y: number }[],
+  lit: (id: string) => boolean,
+): { y: number; words: string }[] {
+  const groups: { y: number; ids: string[] }[] = [];
+  for (const { id, y } of [...ends].sort((a, b) => a.y - b.y)) {
+    const last = groups.at(-1);
+    if (last !== undefined && y - last.y < LINE) last.ids.push(id);
+    else groups.push({ y, ids: [id] });
+  }
+  return groups.map(({ y, ids }) => {
+    const one = ids.find(lit);
+    const all = ids.sort((a, b) => a.localeCompare(b, "en", { numeric: true })).join(", ");
+    if (one !== undefined && ids.length > 1) return { y, words: `${one}, …` };
+    return { y, words: all.length <= 14 ? all : `${ids[0]} and ${ids.length - 1} more` };
+  });
+}
 
 /** The chart; `at`: index of the step looked at. */
 export function ForceChart({ facts, steps, at }: { facts: Facts; steps: readonly RigStep[]; at: number }) {
@@ -20,8 +42,9 @@ export function ForceChart({ facts, steps, at }: { facts: Facts; steps: readonly
   const peak = Math.max(1e-9, ...steps.flatMap((s) => adjusters.map((a) => s.forces[a.id] ?? 0)));
   const lowest = limits.length > 0 ? Math.min(...limits) : null;
   const top = lowest !== null && lowest < 3 * peak ? Math.max(peak, lowest) * 1.08 : peak * 1.08;
-  const x = (i: number) => LEFT + ((W - LEFT - 60) * i) / Math.max(steps.length, 1);
+  const x = (i: number) => LEFT + ((W - LEFT - RIGHT) * i) / Math.max(steps.length, 1);
   const y = (kN: number) => 8 + (H - BOTTOM - 8) * (1 - kN / top);
+  const lit = (id: string) => id === pointed || id === chosen;
   return (
     <svg
       className="chart"
@@ -31,7 +54,7 @@ export function ForceChart({ facts, steps, at }: { facts: Facts; steps: readonly
     >
       {[0, 0.25, 0.5, 0.75, 1].map((s) => (
         <g key={s}>
-          <line className="rule" x1={LEFT} x2={W - 60} y1={y(s * peak)} y2={y(s * peak)} />
+          <line className="rule" x1={LEFT} x2={W - RIGHT} y1={y(s * peak)} y2={y(s * peak)} />
           <text x={LEFT - 6} y={y(s * peak) + 4} textAnchor="end">
             {figure(s * peak, peak < 10 ? 1 : 0)}
           </text>
@@ -50,24 +73,27 @@ export function ForceChart({ facts, steps, at }: { facts: Facts; steps: readonly
       ))}
       {lowest !== null && lowest <= top && (
         <g>
-          <line className="limit" x1={LEFT} x2={W - 60} y1={y(lowest)} y2={y(lowest)} />
-          <text x={W - 56} y={y(lowest) + 4} className="limit">
+          <line className="limit" x1={LEFT} x2={W - RIGHT} y1={y(lowest)} y2={y(lowest)} />
+          <text x={W - RIGHT + 4} y={y(lowest) + 4} className="limit">
             limit {figure(lowest, 0)}
           </text>
         </g>
       )}
       {adjusters.map((a, k) => (
-        <g key={a.id} className={a.id === pointed || a.id === chosen ? "trace lit" : "trace"}>
+        <g key={a.id} className={lit(a.id) ? "trace lit" : "trace"}>
           <polyline
             strokeDasharray={DASHES[k % DASHES.length]}
             points={[`${x(0)},${y(0)}`, ...steps.map((s, i) => `${x(i + 1)},${y(s.forces[a.id] ?? 0)}`)].join(" ")}
           />
-          {(k === 0 || a.id === chosen || a.id === pointed) && (
-            <text x={x(steps.length) + 6} y={y(steps.at(-1)?.forces[a.id] ?? 0) - 3 + 11 * (k % 2)}>
-              {a.id}
-            </text>
-          )}
         </g>
+      ))}
+      {nameEnds(
+        adjusters.map((a) => ({ id: a.id, y: y(steps.at(-1)?.forces[a.id] ?? 0) })),
+        lit,
+      ).map(({ y: at, words }) => (
+        <text key={at} x={x(steps.length) + 6} y={at + 4}>
+          {words}
+        </text>
       ))}
       <line className="cursor" x1={x(at)} x2={x(at)} y1={4} y2={H - BOTTOM} />
     </svg>

@@ -3,6 +3,10 @@ import type { SeenPanel } from "../../core/plan/dragSeam.ts";
 import type { FactsPanel, Vec2 } from "../../core/records/facts.ts";
 import { bookStore } from "../store/bookStore.ts";
 import { useBook } from "../store/useBook.ts";
+import { stackPanels } from "./stackPanels.ts";
+
+/** Width of the stage over its height, about: between a desk's and a tablet's. */
+const SHAPE = 1.25;
 
 const path = (points: readonly Vec2[], closed: boolean) =>
   points.map(([x, y], i) => `${i === 0 ? "M" : "L"}${x.toFixed(1)} ${(-y).toFixed(1)}`).join("") + (closed ? "Z" : "");
@@ -65,22 +69,23 @@ export function boxOf(panel: SeenPanel): { x: number; y: number; w: number; h: n
   return { x, y, w: Math.max(...xs) - x, h: Math.max(...ys) - y };
 }
 
-/** All panels under each other at one scale, or the chosen one alone. */
+/** All panels at one scale, or the chosen one alone. */
 export function PanelSheet({ panels, alone }: { panels: readonly FactsPanel[]; alone: string | null }) {
   const pointed = useBook((b) => b.pointed);
   const shown = alone === null ? panels : panels.filter((p) => p.id === alone);
   const boxes = shown.map(boxOf);
   const gap = alone === null ? 350 : 100;
-  const width = Math.max(...boxes.map((b) => b.w)) + 2 * gap;
-  let y = gap;
-  const tops = boxes.map((b) => {
-    const top = y;
-    y += b.h + gap;
-    return top;
-  });
-  const size = Math.max(width, y) / 45;
+  const { at, width, height } = stackPanels(boxes, gap, SHAPE);
+  const size = Math.max(width, height) / 45;
+  // no name is higher than half its panel
+  const letter = Math.min(1.5 * size, 0.5 * Math.min(...boxes.map((b) => b.h)));
   return (
-    <svg className="sheet" viewBox={`0 0 ${width.toFixed(0)} ${y.toFixed(0)}`} role="group" aria-label="Flat panels">
+    <svg
+      className="sheet"
+      viewBox={`0 0 ${width.toFixed(0)} ${height.toFixed(0)}`}
+      role="group"
+      aria-label="Flat panels"
+    >
       {shown.map((p, i) => (
         <g
           key={p.id}
@@ -88,8 +93,8 @@ export function PanelSheet({ panels, alone }: { panels: readonly FactsPanel[]; a
           tabIndex={0}
           aria-label={`Panel ${p.id}, ${(p.size.length / 1000).toFixed(2)} by ${(p.size.width / 1000).toFixed(2)} metres`}
           aria-pressed={alone === p.id}
-          className={p.id === pointed ? "panel lit" : "panel"}
-          transform={`translate(${gap - boxes[i].x} ${tops[i] + boxes[i].h + boxes[i].y})`}
+          className={p.id === pointed && alone === null ? "panel lit" : "panel"}
+          transform={`translate(${at[i].x - boxes[i].x} ${at[i].y + boxes[i].h + boxes[i].y})`}
           onClick={() => bookStore.setState({ chosen: alone === p.id ? null : p.id })}
           onKeyDown={(e) => {
             if (e.key !== "Enter" && e.key !== " ") return;
@@ -103,7 +108,7 @@ export function PanelSheet({ panels, alone }: { panels: readonly FactsPanel[]; a
           <text
             x={boxes[i].x + boxes[i].w / 2}
             y={-(boxes[i].y + boxes[i].h / 2)}
-            fontSize={size * 1.5}
+            fontSize={letter}
             className="panel-name"
           >
             {p.id}

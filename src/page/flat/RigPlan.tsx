@@ -12,7 +12,7 @@ function boundsOf(form: FactsForm, rig: FactsRig): { x: number; y: number; w: nu
   const ys = points.map((p) => p[1]);
   const [x, y] = [Math.min(...xs), Math.min(...ys)];
   const [w, h] = [Math.max(...xs) - x, Math.max(...ys) - y];
-  return { x, y, w, h, size: Math.max(w, h) / 30 };
+  return { x, y, w, h, size: Math.max(w, h) / (rig.adjusters.length > 8 ? 30 : 22) };
 }
 
 const line = (points: readonly number[][]) => points.map((p) => `${p[0].toFixed(3)},${(-p[1]).toFixed(3)}`).join(" ");

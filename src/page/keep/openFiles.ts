@@ -5,10 +5,10 @@ import { migrateJob } from "../../core/job/jobVersions.ts";
 import { leastJob } from "../../core/job/leastJob.ts";
 import { readJson } from "../../core/job/readJson.ts";
 import { decodeText, titleOfMesh } from "../../core/plan/meshText.ts";
+import { readSiteLog } from "../../core/plan/siteLog.ts";
 import { PlanError } from "../../core/problem.ts";
-import type { MeshFile, Project, Reading } from "../store/project.ts";
+import type { MeshFile, Project } from "../store/project.ts";
 import { newId } from "./keepBook.ts";
-import { readReadings, readTurns } from "./readings.ts";
 
 /** A file with its bytes in hand. */
 export interface LoadedFile {
@@ -16,14 +16,26 @@ export interface LoadedFile {
   bytes: Uint8Array<ArrayBuffer>;
 }
 
-/** Bytes of chosen files; a zip is opened. */
+async function unzip(name: string, bytes: Uint8Array): Promise<Record<string, Uint8Array>> {
+  const { unzipSync } = await import("fflate");
+  try {
+    return unzipSync(bytes);
+  } catch (error) {
+    throw new PlanError(
+      "files-zip",
+      `${name}: the zip is damaged or cut short (${error instanceof Error ? error.message : String(error)}); fetch or save it anew, or open what is in it by itself`,
+      name,
+    );
+  }
+}
+
+/** Bytes of chosen files; a zip is opened. @throws PlanError files-zip */
 export async function loadFiles(files: readonly File[]): Promise<LoadedFile[]> {
   const loaded: LoadedFile[] = [];
   for (const file of files) {
     const bytes = new Uint8Array(await file.arrayBuffer());
     if (/\.zip$/i.test(file.name)) {
-      const { unzipSync } = await import("fflate");
-      for (const [path, inner] of Object.entries(unzipSync(bytes))) {
+      for (const [path, inner] of Object.entries(await unzip(file.name, bytes))) {
         if (!path.endsWith("/")) loaded.push({ name: path.split("/").at(-1) ?? path, bytes: Uint8Array.from(inner) });
       }
     } else loaded.push({ name: file.name, bytes });
@@ -33,7 +45,7 @@ export async function loadFiles(files: readonly File[]): Promise<LoadedFile[]> {
 
 /**
  * The project the files make. Dropped beside an open job, a mesh it waits for completes it.
- * @throws PlanError files-none, mesh-kind; codes of readJson and migrateJob
+ * @throws PlanError files-none, files-facts, files-log; codes of readJson and migrateJob
  */
 export function readFiles(files: readonly LoadedFile[], open: Project | null): Project {
   const meshes = files.filter((f) => /\.obj$/i.test(f.name));
@@ -41,14 +53,26 @@ export function readFiles(files: readonly LoadedFile[], open: Project | null): P
   const job = jobs.find((f) => isJob(f)) ?? jobs[0];
   if (job !== undefined) {
     const { value } = readJson(decodeText(job.bytes, job.name));
+    if (isFacts(value))
+      throw new PlanError(
+        "files-facts",
+        `${job.name} is what came out of a plan; what goes into one is the job. Open the zip that “Save the job with its mesh” gave, or the job with its mesh`,
+        job.name,
+      );
     const given = migrateJob(value) as unknown as JobFile;
     const wanted = baseName(given.mesh?.file);
     const mesh = meshes.find((m) => m.name === wanted) ?? meshes[0] ?? null;
-    return { id: newId(), job: given, mesh, log: readLog(files) };
+    return { id: newId(), job: given, mesh, log: readLog(files)?.lines ?? [] };
   }
   const [mesh] = meshes;
   if (mesh === undefined) {
     const names = files.map((f) => f.name).join(", ");
+    if (files.length > 0 && files.every((f) => /\.csv$/i.test(f.name)))
+      throw new PlanError(
+        "files-log",
+        `${names}: readings belong to a job; open the job first, then take them in on its leaf Site`,
+        names,
+      );
     throw new PlanError(
       "files-none",
       `${names || "nothing"}: a mesh is read as OBJ, a job as JSON, both together as zip; export the form as OBJ with its named lines`,
@@ -69,18 +93,18 @@ function baseName(path: string | undefined): string | undefined {
   return path?.split(/[/\\]/).at(-1);
 }
 
+function isFacts(value: unknown): boolean {
+  return typeof value === "object" && value !== null && "format" in value && value.format === "seamstay-facts";
+}
+
 function isJob(file: LoadedFile): boolean {
   return new TextDecoder().decode(file.bytes.subarray(0, 400)).includes("seamstay-job");
 }
 
-/** The readings that count, those that were struck, and the turns, in the order they were taken. */
-function readLog(files: readonly LoadedFile[]): Reading[] {
-  const csvs = files.filter((f) => /readings.*\.csv$/i.test(f.name));
-  const log = csvs.flatMap((csv) => {
-    const struck = /struck\.csv$/i.test(csv.name);
-    return readReadings(decodeText(csv.bytes, csv.name)).map((r) => (struck ? { ...r, struck: true as const } : r));
-  });
-  const turns = files.filter((f) => /turns\.csv$/i.test(f.name));
-  log.push(...turns.flatMap((csv) => readTurns(decodeText(csv.bytes, csv.name))));
-  return log.sort((a, b) => (a.time < b.time ? -1 : a.time > b.time ? 1 : 0));
+/** The log among the files: the whole one, or else the readings; null where there is none. @throws PlanError codes of readSiteLog */
+export function readLog(files: readonly LoadedFile[]): ReturnType<typeof readSiteLog> | null {
+  const logs = files
+    .filter((f) => /(readings|log)[^/]*\.csv$/i.test(f.name))
+    .map((f) => readSiteLog(decodeText(f.bytes, f.name)));
+  return logs.find((log) => log.whole) ?? logs[0] ?? null;
 }

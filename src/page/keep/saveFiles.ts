@@ -1,6 +1,6 @@
 // Files out of the page: single ones, and several as one zip with a fixed stamp, so that equal content is an equal file.
+import { writeReadings, writeSiteLog } from "../../core/plan/siteLog.ts";
 import type { Project, Reading } from "../store/project.ts";
-import { writeReadings, writeTurns } from "./readings.ts";
 
 export interface SavedFile {
   path: string;
@@ -59,12 +59,12 @@ export async function packJob(project: Project): Promise<SavedFile> {
   ]);
 }
 
-/** The log as files: what counts as the command line reads it, and beside it what was struck and what was turned. */
+/** The log as files: whole, and beside it what counts of it as the command line reads it. */
 export function logFiles(log: readonly Reading[]): SavedFile[] {
-  const struck = log.some((r) => r.struck && r.turned === undefined)
-    ? [{ path: "readings-struck.csv", bytes: writeReadings(log, true) }]
-    : [];
-  const turned = log.some((r) => r.turned !== undefined && !r.struck);
-  const turns = turned ? [{ path: "turns.csv", bytes: writeTurns(log) }] : [];
-  return log.length === 0 ? [] : [{ path: "readings.csv", bytes: writeReadings(log) }, ...struck, ...turns];
+  if (log.length === 0) return [];
+  const encoder = new TextEncoder();
+  return [
+    { path: "site-log.csv", bytes: encoder.encode(writeSiteLog(log)) },
+    { path: "readings.csv", bytes: encoder.encode(writeReadings(log)) },
+  ];
 }

@@ -1,6 +1,6 @@
 // Starts, ends and hears the worker. The newest request wins: a worker that still computes an older one is ended.
+import { partSiteLog } from "../../core/plan/siteLog.ts";
 import type { Facts } from "../../core/records/facts.ts";
-import { partReadings } from "../keep/readings.ts";
 import { bookStore } from "../store/bookStore.ts";
 import { type Hand, isSameWork } from "../store/hand.ts";
 import type { Project } from "../store/project.ts";
@@ -128,7 +128,7 @@ export function requestPapers(facts: Facts): void {
  * @param percent stage at whose end was read; null: the finished roof
  */
 export function requestCorrection(project: Project, step: number, percent: number | null): void {
-  const { text, kept } = partReadings(project.log, step);
+  const { text, kept } = partSiteLog(project.log, step);
   if (text === null) return;
   run++;
   subject = { readingsOf: project };

@@ -57,7 +57,8 @@ type Form = NonNullable<Facts["form"]>;
 function tellForce({ forceFrom, spread }: Form["edges"][number]): string {
   if (forceFrom === "job") return "given by the job";
   if (forceFrom === "sag") return "usual sag, nobody says the force";
-  return `best balance with the cloth${spread === undefined ? "" : `, ± ${figure(spread, 2)} kN`}`;
+  const sure = spread === undefined ? "" : spread < 0.005 ? ", surely" : `, ± ${figure(spread, 2)} kN`;
+  return `best balance with the cloth${sure}`;
 }
 
 /** Curvature, which says how narrow strips must be, and slope, by which water runs off. */

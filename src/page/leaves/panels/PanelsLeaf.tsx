@@ -4,6 +4,7 @@ import { PanelSheet } from "../../flat/PanelSheet.tsx";
 import { FieldPicker } from "../../parts/FieldPicker.tsx";
 import { FigureTable } from "../../parts/FigureTable.tsx";
 import { figure } from "../../parts/figure.ts";
+import { ThingRow } from "../../parts/ThingRow.tsx";
 import { Waiting } from "../../parts/Waiting.tsx";
 import { LazySolid } from "../../solid/LazySolid.tsx";
 import { bookStore } from "../../store/bookStore.ts";
@@ -13,8 +14,6 @@ import { LeafFrame } from "../LeafFrame.tsx";
 import { PanelDecisions } from "./PanelDecisions.tsx";
 
 function PanelTable({ panels }: { panels: readonly FactsPanel[] }) {
-  const pointed = useBook((b) => b.pointed);
-  const chosen = useBook((b) => b.chosen);
   return (
     <table className="things">
       <caption>Panels</caption>
@@ -28,17 +27,7 @@ function PanelTable({ panels }: { panels: readonly FactsPanel[] }) {
       </thead>
       <tbody>
         {panels.map((p) => (
-          <tr
-            key={p.id}
-            className={p.id === chosen || p.id === pointed ? "lit" : undefined}
-            onPointerEnter={() => bookStore.setState({ pointed: p.id })}
-            onPointerLeave={() => bookStore.setState({ pointed: null })}
-          >
-            <th scope="row">
-              <button type="button" className="place" onClick={() => bookStore.setState({ chosen: p.id })}>
-                {p.id}
-              </button>
-            </th>
+          <ThingRow key={p.id} id={p.id}>
             <td>
               {figure(p.size.length, 0)} × {figure(p.size.width, 0)}
             </td>
@@ -48,7 +37,7 @@ function PanelTable({ panels }: { panels: readonly FactsPanel[] }) {
             <td>
               {figure(p.stress.weft.mean, 2)} ± {figure(p.stress.weft.rmsError, 2)}
             </td>
-          </tr>
+          </ThingRow>
         ))}
       </tbody>
     </table>

@@ -141,10 +141,15 @@ export function RigLeaf() {
       }
       tools={<FieldPicker fields={["none", "builtWarp", "builtWeft"]} value={onForm ? field : "none"} />}
       stage={
-        !facts || !plan ? (
+        !facts?.cables || !form ? (
           <Waiting what="Adjusters" />
-        ) : onForm ? (
-          <LazySolid facts={facts} fields={fields} field={field} words="The roof as built, coloured by stress." />
+        ) : onForm || !plan ? (
+          <LazySolid
+            facts={facts}
+            fields={fields}
+            field={onForm ? field : "none"}
+            words={onForm ? "The roof as built, coloured by stress." : "The roof as built."}
+          />
         ) : (
           <div className="rigging">
             <RigPlan form={form} rig={rig} facts={facts} step={now} />

@@ -1,6 +1,7 @@
 // What to turn after the readings: the state that fits them best, the moves, what every gauge will read after them.
+import { partSiteLog } from "../../../core/plan/siteLog.ts";
 import { addTurns } from "../../actions/site/addTurns.ts";
-import { partReadings } from "../../keep/readings.ts";
+import { writeTime } from "../../parts/clock.ts";
 import { FindingList } from "../../parts/FindingList.tsx";
 import { figure } from "../../parts/figure.ts";
 import { act } from "../../store/bookStore.ts";
@@ -59,9 +60,7 @@ function Result({ step }: { step: number }) {
       {correction.moves.length > 0 && !stopped && corrected.of.log === log && (
         <button
           type="button"
-          onClick={() =>
-            act(addTurns, { moves: correction.moves, step, time: new Date().toISOString().slice(0, 19) }, "turns made")
-          }
+          onClick={() => act(addTurns, { moves: correction.moves, step, time: writeTime() }, "turns made")}
         >
           These turns were made: write them into the log
         </button>
@@ -108,7 +107,7 @@ export function Corrections({ step, percent, stage }: CorrectionPlace) {
   const fault = useBook((b) => b.correctFault);
   const words = useBook((b) => b.progress.words);
   if (project === null || project.log.every((r) => r.struck)) return null;
-  const { text, kept } = partReadings(project.log, step);
+  const { text, kept } = partSiteLog(project.log, step);
   return (
     <section className="corrections" aria-label="Corrections">
       {correcting ? (

@@ -2,11 +2,12 @@
 import { useState } from "react";
 import { addReading } from "../../actions/site/addReading.ts";
 import type { RigStep } from "../../flat/rigSteps.ts";
+import { writeTime } from "../../parts/clock.ts";
 import { readNumber } from "../../parts/Fields.tsx";
-import { figure } from "../../parts/figure.ts";
 import { act, bookStore } from "../../store/bookStore.ts";
 import type { Reading } from "../../store/project.ts";
 import { useBook } from "../../store/useBook.ts";
+import { expectReading, judgeReading, tellExpected } from "./expectReading.ts";
 
 type Kind = "force" | "frequency" | "position";
 
@@ -42,7 +43,7 @@ function readEntry(kind: Kind, texts: typeof EMPTY, id: string, by: string): Rea
   const of = (key: string, wanted: Kind) => (kind === wanted ? (read[key] ?? null) : null);
   const { x, y, z } = read;
   return {
-    time: new Date().toISOString().slice(0, 19),
+    time: writeTime(),
     by,
     id,
     force: of("force", "force"),
@@ -54,26 +55,17 @@ function readEntry(kind: Kind, texts: typeof EMPTY, id: string, by: string): Rea
   };
 }
 
-/** What the schedule expects of an adjuster after a step, in words. */
+/** What the schedule expects to be read there, and at once whether what is typed lies within it. */
 function Window({ step, id, text }: { step: RigStep | null; id: string; text: string }) {
-  const move = step?.moves.find((m) => m.adjuster === id);
-  const force = step?.forces[id];
-  if (force === undefined) return <p className="window">The schedule gives no force for this here.</p>;
+  const facts = useBook((b) => b.facts);
+  const expected = facts && step && expectReading(facts, step, id);
+  if (!expected) return <p className="window">The schedule gives no force for this here.</p>;
   const value = readNumber(text);
-  const verdict =
-    move === undefined || typeof value !== "number"
-      ? ""
-      : value < move.low
-        ? `low by ${figure(move.low - value, 1)} kN: do not go on, ask the engineer`
-        : value > move.high
-          ? `high by ${figure(value - move.high, 1)} kN: stop, ask the engineer`
-          : "inside the window";
+  const verdict = typeof value === "number" ? judgeReading(expected, value) : null;
   return (
     <p className="window" aria-live="polite">
-      {move === undefined
-        ? `Expected ${figure(force, 1)} kN`
-        : `Expected ${figure(move.expect, 1)} kN, window ${figure(move.low, 1)} to ${figure(move.high, 1)}`}
-      {verdict !== "" && <strong className={verdict.startsWith("inside") ? "fine" : "off"}> {verdict}</strong>}
+      {tellExpected(expected)}
+      {verdict !== null && <strong className={verdict.fine ? "fine" : "off"}> {verdict.words}</strong>}
     </p>
   );
 }

@@ -3,9 +3,12 @@
 import { setSiteLimit } from "../../actions/site/setSiteLimit.ts";
 import { strikeReading } from "../../actions/site/strikeReading.ts";
 import { listSteps } from "../../flat/rigSteps.ts";
+import { openFiles } from "../../keep/openBook.ts";
 import { logFiles, saveFile } from "../../keep/saveFiles.ts";
 import { CautionList } from "../../parts/CautionList.tsx";
+import { showTime } from "../../parts/clock.ts";
 import { NumberField, TextField } from "../../parts/Fields.tsx";
+import { FilePick } from "../../parts/FilePick.tsx";
 import { figure } from "../../parts/figure.ts";
 import { act, bookStore } from "../../store/bookStore.ts";
 import type { Reading } from "../../store/project.ts";
@@ -77,7 +80,7 @@ function Log({ log }: { log: readonly Reading[] }) {
           <th scope="col">What</th>
           <th scope="col">Reading</th>
           <th scope="col">°C</th>
-          <th scope="col">Slip?</th>
+          <th scope="col">A slip?</th>
         </tr>
       </thead>
       <tbody>
@@ -86,7 +89,7 @@ function Log({ log }: { log: readonly Reading[] }) {
           .reverse()
           .map(({ r, index }) => (
             <tr key={`${r.time} ${index}`} className={r.struck ? "struck" : undefined}>
-              <td>{r.time.replace("T", " ").slice(0, 16)}</td>
+              <td>{showTime(r.time)}</td>
               <td>{r.by}</td>
               <th scope="row">{r.id}</th>
               <td>{whatWasRead(r)}</td>
@@ -144,9 +147,10 @@ export function SiteLeaf() {
               </button>
             </fieldset>
           )}
-          <button type="button" disabled={log.length === 0} onClick={() => logFiles(log).forEach(saveFile)}>
+          <button type="button" disabled={log.length === 0} onClick={() => logFiles(log).slice(0, 1).forEach(saveFile)}>
             Save the log (CSV)
           </button>
+          <FilePick label="Take in a log (CSV)" accept=".csv" onPick={openFiles} />
         </>
       }
       stage={

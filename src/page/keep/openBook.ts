@@ -1,0 +1,47 @@
+// What a person opens: files, a starter, a kept job. What goes wrong on the way is said, not swallowed.
+import { takeLog } from "../actions/site/takeLog.ts";
+import { act, bookStore, notify } from "../store/bookStore.ts";
+import { deleteJob } from "./jobStore.ts";
+import { explainFault, openNew } from "./keepBook.ts";
+import { type LoadedFile, loadFiles, readFiles, readLog } from "./openFiles.ts";
+
+/** Opens, and says what went wrong. */
+export async function tryOpen(open: () => Promise<void>): Promise<void> {
+  try {
+    await open();
+    bookStore.setState((s) => ({ notices: s.notices.filter((n) => n.id !== "open") }));
+  } catch (error) {
+    const words = error instanceof Error ? error.message : String(error);
+    notify("open", error instanceof DOMException ? explainFault(error) : words, true);
+  }
+}
+
+/** Readings dropped onto an open job go into its log. @returns whether they were that */
+function takeReadings(files: readonly LoadedFile[]): boolean {
+  const { project } = bookStore.getState();
+  const log = files.every((f) => /\.csv$/i.test(f.name)) ? readLog(files) : null;
+  if (project === null || log === null) return false;
+  const before = project.log.length;
+  act(takeLog, log, "log taken in");
+  const now = bookStore.getState().project?.log.length ?? 0;
+  notify(
+    "log",
+    log.whole
+      ? `The log is now that of the file: ${now} lines, ${before} before. Undo takes it back.`
+      : `${now - before} of ${log.lines.length} readings were new and are in the log.`,
+  );
+  return true;
+}
+
+/** Opens files as a job; a mesh that an open job waits for completes that one, readings go into its log. */
+export async function openFiles(files: readonly File[]): Promise<void> {
+  await tryOpen(async () => {
+    const { project } = bookStore.getState();
+    const loaded = await loadFiles(files);
+    if (takeReadings(loaded)) return;
+    const next = readFiles(loaded, project);
+    openNew(next);
+    // The job that waited for its mesh goes on under a new name in the store.
+    if (project !== null && next.job === project.job) await deleteJob(project.id);
+  });
+}
