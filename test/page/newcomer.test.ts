@@ -38,13 +38,7 @@ describe("a newcomer", { timeout: LONG }, () => {
     expect(rolls[0].width).toBe(before + 1000);
     await page.getByText("Panels", { exact: true }).click();
     await page.getByText("warp stress as patterned").click();
-    await page.locator(".legend", { hasText: "Warp stress as patterned" }).getByText("middle: the wanted").waitFor();
-    await page.getByText("Rig", { exact: true }).click();
-    await page.getByText("No adjuster stands on this form: it is held all round").waitFor();
-    await page.locator(".legend").waitFor({ state: "detached" });
-    await page.getByLabel("The roof as built.").waitFor();
-    await page.getByText("warp stress as built").click();
-    await page.locator(".legend", { hasText: "Warp stress as built" }).getByText("middle: the wanted").waitFor();
+    await page.getByText("middle: the wanted").waitFor();
     expect(await judge(page)).toEqual([]);
     expect(faults).toEqual([]);
     await context.close();
