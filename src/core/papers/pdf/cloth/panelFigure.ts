@@ -128,7 +128,14 @@ function drawNameBlock(figure: Figure, measures: PanelMeasures): void {
   // Off the width lines where there is such a place: letters on a dashed line are hard to tell.
   const off = measures.widths.flatMap((w) => (w.net ? [w.net.map(place)] : []));
   const style = { bold: true, size: 14, apart: APART };
-  if (!setLabel(figure, panel.id, spots, { ...style, off })) setLabel(figure, panel.id, [...spots, place(at)], style);
+  const anywhere = [...spots, place(at)];
+  // Rather near a number than not there at all.
+  for (const [places, options] of [
+    [spots, { ...style, off }],
+    [anywhere, style],
+    [anywhere, { ...style, apart: 0 }],
+  ] as const)
+    if (setLabel(figure, panel.id, places, options)) break;
   const arrow = { width: 24, height: 5.5 };
   const beside = [0.625, 0.375, 0.55, 0.7, 0.3, 0.2, 0.8].flatMap((f) =>
     [0, 0.2, -0.2].map(
