@@ -129,6 +129,8 @@ export function Grips(props: {
   const grips = useGrips();
   const line = useRef<SVGPolylineElement>(null);
   const path = useBook((b) => b.hand?.path ?? null);
+  // gone with the leaf, no pointer would let go
+  useEffect(() => letGo, []);
   useEffect(() => {
     const put = (to: Project) => {
       grips.forEach(({ place }, i) => {

@@ -34,7 +34,7 @@ function readInk(element: Element): SceneInk {
 /** Steps of a scale that colours are worked out for. */
 const STEPS = 1024;
 
-function paintCorners(model: Model, scale: Scale | null): Float32Array | null {
+function paintPoints(model: Model, scale: Scale | null): Float32Array | null {
   if (scale === null || model.value.length === 0) return null;
   const { min, max } = scale;
   const table = Array.from({ length: STEPS + 1 }, (_, i) => colourOf(scale, min + (i / STEPS) * (max - min)));
@@ -141,7 +141,7 @@ function useScene(model: Model | null, scale: Scale | null, words: string) {
   useEffect(() => {
     if (model === null || view.current === null) return;
     labels.current = model.labels;
-    view.current.show(job, model, paintCorners(model, scale));
+    view.current.show(job, model, paintPoints(model, scale));
   }, [job, model, scale]);
   // while a seam's end is slid the surface is not drawn again: without a graphics card that would block the page
   const held = useBook((b) => b.hand !== null && b.hand.laid === null);

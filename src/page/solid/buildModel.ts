@@ -1,4 +1,4 @@
-// From the facts to what the solid view draws: corners with normals and values, lines, points. Knows no three.
+// From the facts to what the solid view draws: points with normals and values, triangles, lines. Knows no three.
 import type { Facts, FactsForm } from "../../core/records/facts.ts";
 import type { FieldName } from "../store/bookStore.ts";
 import type { SentFields } from "../worker/messages.ts";
@@ -10,10 +10,15 @@ export interface ModelLine {
   points: number[][];
 }
 
-/** A surface ready to draw. @shape position, normal 9*nT; value 3*nT (NaN: none) or empty; owner nT, index into owners */
+/**
+ * A surface ready to draw. Points belong to one patch each: its vertices, or each triangle's own corners where values are those of
+ * triangles.
+ * @shape position, normal 3*nP; triangles 3*nT; value nP (NaN: none) or empty; owner nP, index into owners
+ */
 export interface Model {
   position: Float32Array<ArrayBuffer>;
   normal: Float32Array<ArrayBuffer>;
+  triangles: Uint32Array<ArrayBuffer>;
   value: Float32Array<ArrayBuffer>;
   owner: Uint16Array<ArrayBuffer>;
   owners: string[];
@@ -113,33 +118,43 @@ export function buildModel(facts: Facts, fields: SentFields | null, field: Field
   const { form } = facts;
   if (form === undefined) return null;
   const patches = patchesOf(facts, form, field);
-  const nT = patches.reduce((n, p) => n + p.triangles.length, 0);
   const found = valuesOf(fields, field);
-  const position = new Float32Array(9 * nT);
-  const normal = new Float32Array(9 * nT);
-  const value = new Float32Array(found === null ? 0 : 3 * nT);
-  const owner = new Uint16Array(nT);
-  let t = 0;
+  const apart = found?.of === "triangle";
+  const nT = patches.reduce((n, p) => n + p.triangles.length, 0);
+  const nP = apart ? 3 * nT : patches.reduce((n, p) => n + p.vertices.length, 0);
+  const position = new Float32Array(3 * nP);
+  const normal = new Float32Array(3 * nP);
+  const triangles = new Uint32Array(3 * nT);
+  const value = new Float32Array(found === null ? 0 : nP);
+  const owner = new Uint16Array(nP);
+  let point = 0;
+  let corner = 0;
   patches.forEach((patch, i) => {
     const sums = sumNormals(patch);
+    const put = (v: number) => {
+      const [x, y, z] = [sums[3 * v], sums[3 * v + 1], sums[3 * v + 2]];
+      const size = Math.sqrt(x * x + y * y + z * z) || 1;
+      const [p, q, r] = patch.vertices[v];
+      position.set([p, q, r], 3 * point);
+      normal.set([x / size, y / size, z / size], 3 * point);
+      owner[point] = i;
+      if (found !== null) value[point] = found.values[apart ? Math.floor(point / 3) : v];
+      point++;
+    };
+    const first = point;
+    if (!apart) for (let v = 0; v < patch.vertices.length; v++) put(v);
     for (const triangle of patch.triangles) {
-      owner[t] = i;
-      for (let c = 0; c < 3; c++) {
-        const v = triangle[c];
-        const size = Math.hypot(sums[3 * v], sums[3 * v + 1], sums[3 * v + 2]) || 1;
-        for (let k = 0; k < 3; k++) {
-          position[9 * t + 3 * c + k] = patch.vertices[v][k];
-          normal[9 * t + 3 * c + k] = sums[3 * v + k] / size;
-        }
-        if (found !== null) value[3 * t + c] = found.values[found.of === "vertex" ? v : t];
+      for (const v of triangle) {
+        triangles[corner++] = apart ? point : first + v;
+        if (apart) put(v);
       }
-      t++;
     }
   });
   const lines = linesOf(facts, form);
   return {
     position,
     normal,
+    triangles,
     value,
     owner,
     owners: patches.map((p) => p.id),

@@ -1,4 +1,4 @@
-// Colours of the scene: cloth or a field on the corners of the surface, inks on its lines, and the light on what is pointed at.
+// Colours of the scene: cloth or a field on the points of the surface, inks on its lines, and the light on what is pointed at.
 import { type BufferAttribute, type BufferGeometry, Color, type Mesh, type MeshLambertMaterial } from "three";
 import type { LineMaterial } from "three/addons/lines/LineMaterial.js";
 import type { LineSegments2 } from "three/addons/lines/LineSegments2.js";
@@ -27,6 +27,9 @@ const WIDTHS: Record<ModelLine["kind"], number> = {
 export interface SceneParts {
   model: Model | null;
   mesh: Mesh<BufferGeometry, MeshLambertMaterial> | null;
+  /** The mesh's own triangles, and fewer of them for turning; null: not yet made. */
+  whole: BufferGeometry | null;
+  fewer: BufferGeometry | null;
   lines: { line: ModelLine; object: LineSegments2; material: LineMaterial }[];
   colours: Float32Array | null;
   ink: SceneInk;
@@ -43,7 +46,7 @@ export interface SceneParts {
 /** Dots of the canvas to a CSS pixel. */
 export const density = () => Math.min(devicePixelRatio, 2);
 
-/** Shares of full light for shades as they stand on a screen, in fine steps: one power for each corner would take too long. */
+/** Shares of full light for shades as they stand on a screen, in fine steps: one power for each point would take too long. */
 const LIGHT = Float32Array.from({ length: 4096 }, (_, i) => new Color().setRGB(i / 4095, 0, 0, "srgb").r);
 
 /** Shades 0…1 of a screen (sRGB) as shares of light. */
@@ -52,7 +55,7 @@ export function linearise(shades: Float32Array): Float32Array {
 }
 
 /**
- * Colours of the corners: the field's, or cloth with every other panel a little darker; what is lit is mixed with the lit ink. Lines
+ * Colours of the points: the field's, or cloth with every other panel a little darker; what is lit is mixed with the lit ink. Lines
  * that are lit are drawn in its ink.
  */
 export function paintInPlace(parts: SceneParts): void {
@@ -66,14 +69,13 @@ export function paintInPlace(parts: SceneParts): void {
   const attribute = mesh.geometry.getAttribute("color") as BufferAttribute;
   const out = attribute.array as Float32Array;
   const litOwner = model.owners.map((id) => model.owners.length > 1 && lit.has(id));
-  for (let t = 0; t < model.owner.length; t++) {
-    const owner = model.owner[t];
+  for (let p = 0; p < model.owner.length; p++) {
+    const owner = model.owner[p];
     const cloth = plain[owner % 2];
     const share = litOwner[owner] ? 0.45 : 0;
-    for (let i = 9 * t; i < 9 * t + 9; i++) {
-      const k = i % 3;
-      const own = colours === null ? cloth[k] : colours[i];
-      out[i] = own + share * (lampOf[k] - own);
+    for (let k = 0; k < 3; k++) {
+      const own = colours === null ? cloth[k] : colours[3 * p + k];
+      out[3 * p + k] = own + share * (lampOf[k] - own);
     }
   }
   attribute.needsUpdate = true;

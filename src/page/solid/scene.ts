@@ -19,11 +19,13 @@ import { LineMaterial } from "three/addons/lines/LineMaterial.js";
 import { LineSegments2 } from "three/addons/lines/LineSegments2.js";
 import { LineSegmentsGeometry } from "three/addons/lines/LineSegmentsGeometry.js";
 import type { Model, ModelLine } from "./buildModel.ts";
+import { coarsen } from "./coarsen.ts";
+import { BROWSER_CLOCK, createPace } from "./pace.ts";
 import { density, linearise, paintInPlace, type SceneInk, type SceneParts } from "./paintScene.ts";
 
 export interface SceneView {
   /**
-   * Puts a model of a job in; `colours` 9*nT red, green, blue of each corner, or null for plain cloth. Another job is shown whole,
+   * Puts a model of a job in; `colours` 3*nP red, green, blue of each point, or null for plain cloth. Another job is shown whole,
    * the same one as it was turned.
    */
   show: (job: string, model: Model, colours: Float32Array | null) => void;
@@ -53,6 +55,7 @@ function buildMesh(model: Model): Mesh<BufferGeometry, MeshLambertMaterial> {
   geometry.setAttribute("position", new BufferAttribute(model.position, 3));
   geometry.setAttribute("normal", new BufferAttribute(model.normal, 3));
   geometry.setAttribute("color", new BufferAttribute(new Float32Array(model.position.length), 3));
+  geometry.setIndex(new BufferAttribute(model.triangles, 1));
   geometry.computeBoundingSphere();
   const material = new MeshLambertMaterial({
     vertexColors: true,
@@ -84,6 +87,8 @@ export function createScene(canvas: HTMLCanvasElement, ink: SceneInk): SceneView
   const parts: SceneParts = {
     model: null,
     mesh: null,
+    whole: null,
+    fewer: null,
     lines: [],
     colours: null,
     ink,
@@ -98,6 +103,9 @@ export function createScene(canvas: HTMLCanvasElement, ink: SceneInk): SceneView
   const drawNow = () => {
     asked = 0;
     if (parts.stale) paintInPlace(parts);
+    const less = pace.begin();
+    detailInPlace(parts, less);
+    canvas.dataset.detail = less ? "less" : "all";
     sun.position.copy(camera.position).add(new Vector3(-3, -2, 8));
     renderer.render(scene, camera);
     told?.(projector(camera, canvas));
@@ -105,11 +113,12 @@ export function createScene(canvas: HTMLCanvasElement, ink: SceneInk): SceneView
   const draw = () => {
     if (asked === 0) asked = requestAnimationFrame(drawNow);
   };
-  controls.addEventListener("change", draw);
+  const pace = createPace(draw, BROWSER_CLOCK);
+  controls.addEventListener("change", pace.move);
   controls.addEventListener("start", () => {
     parts.turned = true;
   });
-  const view = handleView({ canvas, camera, controls, renderer, scene, parts, draw });
+  const view = handleView({ canvas, camera, controls, renderer, scene, parts, draw, move: pace.move });
   return {
     ...view,
     watch: (onDraw) => {
@@ -131,15 +140,16 @@ function projector(camera: OrthographicCamera, canvas: HTMLCanvasElement): Proje
 function clearInPlace(scene: Scene, parts: SceneParts): void {
   if (parts.mesh !== null) {
     scene.remove(parts.mesh);
-    parts.mesh.geometry.dispose();
     parts.mesh.material.dispose();
   }
+  parts.whole?.dispose();
+  parts.fewer?.dispose();
   for (const { object, material } of parts.lines) {
     scene.remove(object);
     object.geometry.dispose();
     material.dispose();
   }
-  parts.mesh = null;
+  parts.mesh = parts.whole = parts.fewer = null;
   parts.lines = [];
 }
 
@@ -151,6 +161,21 @@ interface Stage {
   scene: Scene;
   parts: SceneParts;
   draw: () => void;
+  /** Draws since the view was turned. */
+  move: () => void;
+}
+
+/** Puts the whole surface in its place, or fewer triangles over the same points. */
+function detailInPlace(parts: SceneParts, less: boolean): void {
+  const { model, mesh, whole } = parts;
+  if (model === null || mesh === null || whole === null) return;
+  if (less && parts.fewer === null) {
+    parts.fewer = new BufferGeometry();
+    for (const [name, values] of Object.entries(whole.attributes)) parts.fewer.setAttribute(name, values);
+    parts.fewer.setIndex(new BufferAttribute(coarsen(model), 1));
+    parts.fewer.boundingSphere = whole.boundingSphere;
+  }
+  mesh.geometry = (less ? parts.fewer : null) ?? whole;
 }
 
 /** Moves the point looked at to the middle of what the camera sees, and gives half its width and height. */
@@ -214,7 +239,7 @@ function fitInPlace(stage: Stage): void {
 }
 
 function handleView(stage: Stage): Omit<SceneView, "watch"> {
-  const { canvas, camera, controls, scene, parts, draw } = stage;
+  const { canvas, camera, controls, scene, parts, draw, move } = stage;
   const ray = new Raycaster();
   const hit = (x: number, y: number) => {
     if (parts.mesh === null) return undefined;
@@ -233,6 +258,7 @@ function handleView(stage: Stage): Omit<SceneView, "watch"> {
         turned: parts.turned && job === parts.job,
       });
       if (parts.mesh !== null) scene.add(parts.mesh);
+      parts.whole = parts.mesh?.geometry ?? null;
       parts.lines = model.lines
         .filter((l) => l.points.length > 1)
         .map((line) => {
@@ -273,18 +299,18 @@ function handleView(stage: Stage): Omit<SceneView, "watch"> {
       arm.set(r * Math.cos(tilt) * Math.cos(angle), r * Math.cos(tilt) * Math.sin(angle), r * Math.sin(tilt));
       camera.position.copy(controls.target).add(arm);
       controls.update();
-      draw();
+      move();
     },
     zoom: (factor) => {
       parts.turned = true;
       camera.zoom = Math.min(Math.max(camera.zoom * factor, 0.2), 200);
       camera.updateProjectionMatrix();
-      draw();
+      move();
     },
     pick: (x, y) => {
       const found = hit(x, y);
-      const index = found?.faceIndex ?? null;
-      const id = index === null ? null : (parts.model?.owners[parts.model.owner[index] ?? 0] ?? null);
+      const point = found?.face?.a ?? null;
+      const id = point === null ? null : (parts.model?.owners[parts.model.owner[point] ?? 0] ?? null);
       return id === "" ? null : id;
     },
     project: projector(camera, canvas),
