@@ -5,8 +5,7 @@ import { App } from "./App.tsx";
 import { lastOpen, newId, openKept, openNew, startKeeping } from "./keep/keepBook.ts";
 import { goOffline } from "./keep/offline.ts";
 import { tryOpen } from "./keep/openBook.ts";
-import { bookStore } from "./store/bookStore.ts";
-import { requestPlan } from "./worker/planner.ts";
+import { planOnChange } from "./worker/planOnChange.ts";
 import "./style/ink.css";
 import "./style/book.css";
 import "./style/leaf.css";
@@ -14,9 +13,6 @@ import "./style/fields.css";
 import "./style/parts.css";
 import "./style/drawings.css";
 import "./style/site.css";
-
-/** Quiet time before a changed job is planned, ms: a second thought within it costs no plan. */
-const QUIET = 250;
 
 /** What `seamstay open JOB` hands over; null where it named none. */
 async function fetchOpened(): Promise<{ name: string; job: JobFile; mesh: string | null } | null> {
@@ -35,19 +31,6 @@ async function takeUp(): Promise<void> {
   if (opened === null) return;
   const bytes = opened.mesh === null ? null : new Uint8Array(await (await fetch("./opened-mesh")).arrayBuffer());
   openNew({ id: newId(), job: opened.job, mesh: bytes === null ? null : { name: opened.mesh ?? "", bytes }, log: [] });
-}
-
-function planOnChange(): void {
-  let timer: ReturnType<typeof setTimeout> | undefined;
-  bookStore.subscribe((now, before) => {
-    const { project } = now;
-    // stopped right after a change: that change is not planned either, until the next one or until it is asked for
-    if (now.status === "stopped" && before.status !== "stopped") clearTimeout(timer);
-    if (project === null || (project.job === before.project?.job && project.mesh === before.project.mesh)) return;
-    clearTimeout(timer);
-    const fresh = project.id !== before.project?.id;
-    timer = setTimeout(() => requestPlan(project), fresh ? 0 : QUIET);
-  });
 }
 
 startKeeping();

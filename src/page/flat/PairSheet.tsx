@@ -39,7 +39,8 @@ function useWords(weld: string | null): { words: string; grave: boolean } {
       grave: false,
     };
   }
-  if (tied !== null)
+  const can = grips?.welds.some((g) => g.weld === weld) === true;
+  if (tied !== null && (status === "running" || weld === null || can))
     return {
       words: `The whole roof is tied again, ${tied.panels.length} panels${status === "running" ? "; rolls and rig follow" : ""}.`,
       grave: false,
@@ -47,7 +48,6 @@ function useWords(weld: string | null): { words: string; grave: boolean } {
   if (hand !== null) return { words: "The whole roof is being tied again…", grave: false };
   if (grips === null || grips.welds.length === 0)
     return { words: "Choose a seam to see its two panels.", grave: false };
-  const can = grips.welds.some((g) => g.weld === weld);
   if (weld === null || can)
     return {
       words: "Slide a seam's end along its edge, with the pointer or the arrow keys; its two panels follow here.",

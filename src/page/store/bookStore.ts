@@ -46,9 +46,10 @@ export interface ResultSlice {
   corrected: { of: Project; plan: CorrectedPlan } | null;
   correcting: boolean;
   correctFault: PlanFault | null;
-  /** Welds whose ends can be slid; the one in hand; the roof tied again after it, while its plan is worked out. */
+  /** Welds whose ends can be slid; the one in hand; whose roof is being tied again after it; that roof tied. */
   grips: Grips | null;
   hand: Hand | null;
+  tying: Project | null;
   tied: Tied | null;
   /** Layouts compared side by side; null: not asked for. */
   weighed: Weighed | null;
@@ -91,6 +92,7 @@ const NO_RESULT: ResultSlice = {
   correctFault: null,
   grips: null,
   hand: null,
+  tying: null,
   tied: null,
   weighed: null,
 };

@@ -29,6 +29,13 @@ export interface Hand {
   laid: Project | null;
 }
 
+/** True while a weld in hand lies elsewhere than it began. */
+export function isSliding(hand: Hand | null): boolean {
+  if (hand === null || hand.laid !== null) return false;
+  const [from, to] = [hand.from[hand.end], hand.to[hand.end]];
+  return from.edge !== to.edge || from.at !== to.at;
+}
+
 /** Layouts side by side: those asked for, and those worked out so far, in that order. */
 export interface Weighed {
   of: Project;
@@ -36,7 +43,7 @@ export interface Weighed {
   done: ComparedLayout[];
 }
 
-/** The whole roof tied again, before its plan is there. */
+/** The whole roof tied again; its plan says the same and more. */
 export interface Tied {
   of: Project;
   seams: FactsSeam[];

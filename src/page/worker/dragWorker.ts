@@ -1,5 +1,5 @@
-// The worker that redraws a dragged seam's panels while the plan's worker goes on with rolls and rig. Roofs come to it from there
-// by a port of its own, so that they never pass through the page.
+// The worker that redraws a dragged seam's panels, whatever the plan's worker does meanwhile, and ties the roof again. Roofs come to
+// it from there by a port of its own, so that they never pass through the page.
 import { measureLayout } from "../../core/plan/compareLayouts.ts";
 import {
   dragSeamInPlace,
@@ -67,7 +67,10 @@ function warmUp(grip: Grip, begin: number): void {
 
 function redraw(request: Extract<DragRequest, { kind: "drag" }>): void {
   const { weld, to } = request;
-  if (request.run !== run || drag === null) return;
+  if (request.run !== run || drag === null) {
+    post({ kind: "outdated", run });
+    return;
+  }
   clearTimeout(warming);
   const begin = performance.now();
   try {
@@ -93,14 +96,18 @@ function weigh({ run: of, asked }: Extract<DragRequest, { kind: "weigh" }>): voi
 }
 
 function tie({ run: of, next, pairs }: Extract<DragRequest, { kind: "tie" }>): void {
-  if (of !== run || roof === null) return;
+  if (of !== run || roof === null) {
+    post({ kind: "untied", run: next });
+    return;
+  }
+  clearTimeout(warming);
   const begin = performance.now();
   try {
     const tied = tieRoof(roof, pairs);
     post({ kind: "tied", run: next, ...seeRoof(tied), ms: performance.now() - begin });
     takeUp({ run: next, roof: tied });
-  } catch (error) {
-    post({ kind: "untied", run: next, fault: describeFault(error) });
+  } catch {
+    post({ kind: "untied", run: next });
   }
 }
 

@@ -11,6 +11,8 @@ import { findSeamEnds } from "../store/seamEnds.ts";
 import type { DragReply, DragRequest, SeamPlaces } from "./messages.ts";
 
 let worker: Worker | null = null;
+/** It broke down: the next plan's roof is dragged by another one. */
+let broke = false;
 /** Where the newest plan's roof will come from, until the worker listens there. */
 let waiting: MessagePort | null = null;
 /** Places this near each other on an edge are one, share of it. */
@@ -23,7 +25,7 @@ let run = 0;
 let tiedRuns = 0;
 let asked = false;
 let leaving = false;
-let next: Extract<DragRequest, { kind: "drag" }> | null = null;
+let next: { weld: string; to: SeamPlaces } | null = null;
 
 function send(request: DragRequest, transfer: Transferable[] = []): void {
   worker?.postMessage(request, transfer);
@@ -42,12 +44,14 @@ export function openRoofs(of: number, project: Project): MessagePort {
   for (const old of projects.keys()) if (old > 0 && old < of - 1 && old !== run) projects.delete(old);
   waiting?.close();
   waiting = port2;
+  if (broke) watchSeams();
   listen();
   return port1;
 }
 
 /** From now on seams can be taken in hand; called when they are looked at. */
 export function watchSeams(): void {
+  broke = false;
   if (worker === null) {
     worker = new Worker(new URL("./dragWorker.ts", import.meta.url), { type: "module", name: "seamstay-drag" });
     worker.onmessage = (event: MessageEvent<DragReply>) => hear(event.data);
@@ -55,8 +59,10 @@ export function watchSeams(): void {
       event.preventDefault();
       worker?.terminate();
       worker = null;
-      asked = false;
-      bookStore.setState({ grips: null, hand: null });
+      broke = true;
+      asked = leaving = false;
+      next = null;
+      bookStore.setState({ grips: null, hand: null, tying: null });
       notify("drag", "Sliding seams broke down; the job is whole. Plan again, or type where the seam ends.", true);
     };
   }
@@ -71,12 +77,13 @@ function hear(reply: DragReply): void {
   const project = projects.get(reply.run);
   if (reply.kind === "grips") {
     run = reply.run;
+    bookStore.setState({ grips: project === undefined ? null : { of: project, welds: reply.grips } });
     if (project === undefined) return;
-    bookStore.setState({ grips: { of: project, welds: reply.grips } });
     followHand(project, reply.grips);
   } else if (reply.kind === "tied") {
-    if (project !== undefined)
-      bookStore.setState({ tied: { of: project, seams: reply.seams, panels: reply.panels, ms: reply.ms } });
+    const { seams, panels, ms } = reply;
+    if (project !== undefined) bookStore.setState({ tied: { of: project, seams, panels, ms } });
+    endTie(project);
   } else if (reply.kind === "weighed") {
     const { weighed } = bookStore.getState();
     if (weighed === null || !isSameWork(weighed.of, project)) return;
@@ -87,11 +94,14 @@ function hear(reply: DragReply): void {
     const asks = fresh ? listAsks(job, reply.layout.ways) : weighed.asks;
     bookStore.setState({ weighed: { ...weighed, asks, done } });
     weighNext();
-  } else if (reply.kind === "untied") projects.delete(reply.run);
-  else {
+  } else if (reply.kind === "untied") {
+    endTie(project);
+    projects.delete(reply.run);
+  } else {
     asked = false;
     const { hand } = bookStore.getState();
-    if (hand?.weld === reply.weld && hand.laid === null) {
+    if (reply.kind === "outdated") askAnew();
+    else if (hand?.weld === reply.weld && hand.laid === null) {
       if (reply.kind === "dragged")
         changeHand({ drawn: reply.to, path: reply.path, panels: reply.panels, fault: null });
       else changeHand({ fault: reply.fault.message });
@@ -102,21 +112,43 @@ function hear(reply: DragReply): void {
   }
 }
 
-/** A roof that was made anew may name its welds otherwise: the one in hand is known by its places. */
+function endTie(project: Project | undefined): void {
+  if (isSameWork(bookStore.getState().tying, project)) bookStore.setState({ tying: null });
+}
+
+/**
+ * A roof that was made anew may name its welds otherwise: the one in hand is known by its places, those it was laid at or, while it
+ * is slid, those it began at.
+ */
 function followHand(project: Project, welds: readonly Grip[]): void {
-  const { hand, chosen } = bookStore.getState();
-  if (hand === null || !isSameWork(hand.laid, project)) return;
+  const { hand, chosen, project: now } = bookStore.getState();
+  if (hand === null || !isSameWork(hand.laid ?? now, project)) return;
+  const places = hand.laid === null ? hand.from : hand.to;
   const same = welds.find(({ ends }) =>
-    ends.every((p, k) => p.edge === hand.to[k].edge && Math.abs(p.at - hand.to[k].at) < SAME),
+    ends.every((p, k) => p.edge === places[k].edge && Math.abs(p.at - places[k].at) < SAME),
   );
-  if (same === undefined || same.weld === hand.weld) return;
+  if (same === undefined) {
+    if (hand.laid === null) putBack();
+    return;
+  }
+  if (same.weld === hand.weld) return;
+  if (next !== null) next = { ...next, weld: same.weld };
   bookStore.setState({ chosen: chosen === hand.weld ? same.weld : chosen, hand: { ...hand, weld: same.weld } });
+}
+
+/** Asks once more for where the hand is, of the roof that is dragged now; a hand on no weld of it is put back. */
+function askAnew(): void {
+  const { hand, grips, project } = bookStore.getState();
+  if (hand === null || hand.laid !== null) return;
+  const { weld, to } = hand;
+  if (isSameWork(grips?.of, project) && grips?.welds.some((g) => g.weld === weld)) next ??= { weld, to };
+  else putBack();
 }
 
 function askNext(): void {
   if (asked || next === null) return;
   asked = true;
-  send(next);
+  send({ kind: "drag", run, ...next });
   next = null;
 }
 
@@ -155,7 +187,7 @@ export function slideEnd(place: SeamPlaces[0]): void {
   if (hand === null || hand.laid !== null) return;
   const to: SeamPlaces = hand.end === 0 ? [place, hand.to[1]] : [hand.to[0], place];
   changeHand({ to });
-  next = { kind: "drag", run, weld: hand.weld, to };
+  next = { weld: hand.weld, to };
   askNext();
 }
 
@@ -176,7 +208,9 @@ export function letGo(): void {
 
 /** All seams one by one with this one between two other places: in their own numbers where the job gives them so already. */
 function listPairs(hand: Hand, to: SeamPlaces): EdgePlace[][] {
-  const { grips, facts, project } = bookStore.getState();
+  const { grips, project, soFar, ...whole } = bookStore.getState();
+  // before the first plan stands there is only what it has come to
+  const facts = soFar.panels?.facts ?? whole.facts;
   const own = grips?.welds.find((g) => g.weld === hand.weld);
   const given = project?.job.seams?.pairs;
   if (given !== undefined && typeof own?.pair === "number") {
@@ -198,14 +232,17 @@ function lay(hand: Hand): void {
     bookStore.setState({ hand: null });
     return;
   }
-  act(layPairs, { pairs: listPairs(hand, to) }, `end of ${weld}`);
+  const laid = listPairs(hand, to);
+  // out of hand first: who hears of the changed job must not take it for one changed under the hand, nor plan the one before it
+  bookStore.setState({ hand: null, tying: project });
+  act(layPairs, { pairs: laid }, `end of ${weld}`);
   const after = bookStore.getState().project;
   const pairs = after?.job.seams?.pairs;
   if (after === null || after === project || pairs === undefined) {
-    bookStore.setState({ hand: null });
+    bookStore.setState({ tying: null });
     return;
   }
-  changeHand({ to, laid: after, fault: null });
+  bookStore.setState({ hand: { ...hand, to, laid: after, fault: null }, tying: worker === null ? null : after });
   projects.set(--tiedRuns, after);
   send({ kind: "tie", run, next: tiedRuns, pairs });
 }

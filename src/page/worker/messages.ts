@@ -71,6 +71,9 @@ export type DragReply =
   | { kind: "grips"; run: number; grips: Grip[] }
   | { kind: "dragged"; run: number; weld: string; to: SeamPlaces; path: number[][]; panels: SeenPanel[]; ms: number }
   | { kind: "refused"; run: number; weld: string; to: SeamPlaces; fault: PlanFault }
+  /** Asked of a roof that another one has followed: to be asked again. */
+  | { kind: "outdated"; run: number }
   | { kind: "tied"; run: number; seams: FactsSeam[]; panels: SeenPanel[]; ms: number }
   | { kind: "weighed"; run: number; layout: ComparedLayout }
-  | { kind: "untied"; run: number; fault: PlanFault };
+  /** It could not be tied; its plan says why. */
+  | { kind: "untied"; run: number };

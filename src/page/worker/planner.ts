@@ -2,7 +2,7 @@
 import { partSiteLog } from "../../core/plan/siteLog.ts";
 import type { Facts } from "../../core/records/facts.ts";
 import { bookStore } from "../store/bookStore.ts";
-import { type Hand, isSameWork } from "../store/hand.ts";
+import { type Hand, isSameWork, isSliding } from "../store/hand.ts";
 import type { Project } from "../store/project.ts";
 import { openRoofs } from "./dragger.ts";
 import type { PlanFault, Reply, Request } from "./messages.ts";
@@ -12,6 +12,8 @@ let busy = false;
 let run = 0;
 /** Project or facts the running request is about. */
 let subject: { project: Project } | { facts: Facts } | { readingsOf: Project } | null = null;
+/** To be planned once nothing that goes first is under way. */
+let due: Project | null = null;
 
 function start(): Worker {
   const fresh = new Worker(new URL("./planWorker.ts", import.meta.url), { type: "module", name: "seamstay-plan" });
@@ -54,7 +56,6 @@ function hear(reply: Reply): void {
       return;
     case "soFar":
       set((b) => ({ soFar: { ...b.soFar, [reply.station]: { facts: reply.facts, fields: reply.fields } } }));
-      if (reply.station !== "form") set({ tied: null });
       return;
     case "planned":
       busy = false;
@@ -99,8 +100,38 @@ function fail(fault: PlanFault): void {
   else bookStore.setState({ status: "failed", fault });
 }
 
+/** Plans the project as soon as no seam is slid and its roof is tied: beside a plan with its threads a tie takes three times as long. */
+export function planSoon(project: Project): void {
+  due = project;
+  startDue();
+}
+
+/** Starts the plan that waits, if nothing goes before it any more. */
+export function startDue(): void {
+  const { hand, tying, project } = bookStore.getState();
+  if (!isSameWork(due, project)) due = null;
+  if (due === null || isSliding(hand)) return;
+  if (isSameWork(tying, due)) wait("tying the roof again");
+  else requestPlan(due);
+}
+
+/** Ends a plan under way; it waits to be started anew. */
+export function pausePlan(): void {
+  if (!busy || subject === null || !("project" in subject)) return;
+  due = subject.project;
+  run++;
+  end();
+  wait("waiting for the seam in hand");
+}
+
+/** What stands so far stays: the surface the seam in hand lies on may be of it. */
+function wait(words: string): void {
+  bookStore.setState({ status: "running", fault: null, progress: { share: 0, words, station: "job" } });
+}
+
 /** Plans the project from the start. */
 export function requestPlan(project: Project): void {
+  due = null;
   run++;
   subject = { project };
   bookStore.setState({
@@ -136,11 +167,12 @@ export function requestCorrection(project: Project, step: number, percent: numbe
   send({ kind: "correct", run, given: project.job, mesh: project.mesh, text, percent, kept });
 }
 
-/** Stops what is computed; what was planned before stays. */
+/** Stops what is computed or waits to be; what was planned before stays. */
 export function stopPlan(): void {
-  if (!busy) return;
+  const planning = bookStore.getState().status === "running";
+  if (!busy && !planning) return;
+  due = null;
   run++;
   end();
-  const planning = subject !== null && "project" in subject;
   bookStore.setState({ writing: false, correcting: false, ...(planning ? { status: "stopped" } : {}) });
 }
