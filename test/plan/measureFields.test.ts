@@ -10,7 +10,7 @@ import type { Vec3 } from "../../src/core/surface/surface.ts";
 let facts: Facts;
 beforeAll(() => {
   const { job, source } = readInput("templates/market-hall/job.json", loadCatalogues());
-  facts = runPlan(job, source, { until: "panels", revision: "0" }, {});
+  facts = runPlan({ ...job, nest: { ...job.nest, steps: 0 } }, source, { revision: "0" }, {});
 });
 
 describe("fields of the market hall", () => {
@@ -24,6 +24,17 @@ describe("fields of the market hall", () => {
       expect(Math.max(...own)).toBeCloseTo(p.stress.warp.max, 5);
     }
     expect(at).toBe(patterned?.warp.length);
+  });
+
+  it("gives the least and greatest stress as built again, of a roof that has no rig", () => {
+    const { built } = measureFields(facts, null) ?? {};
+    expect(facts.rig).toBeUndefined();
+    expect(built?.warp.length).toBe(facts.panels?.reduce((n, p) => n + p.triangles.length, 0));
+    for (const way of ["warp", "weft"] as const) {
+      const own = [...(built?.[way] ?? [])];
+      expect(Math.min(...own)).toBeCloseTo(facts.asBuilt?.stress[way].min ?? -1, 4);
+      expect(Math.max(...own)).toBeCloseTo(facts.asBuilt?.stress[way].max ?? -1, 4);
+    }
   });
 
   it("gives the form's greatest residual again", () => {

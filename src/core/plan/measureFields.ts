@@ -12,7 +12,7 @@ import type { Vec3 } from "../surface/surface.ts";
 export interface SurfaceFields {
   /** Of each triangle of each panel, panel by panel, kN/m; absent before the panels station. */
   patterned?: { warp: Float32Array<ArrayBuffer>; weft: Float32Array<ArrayBuffer> };
-  /** Of each triangle of rig.cloth, kN/m. */
+  /** Of each triangle of rig.cloth, of assembled.cloth where there is no rig, kN/m. */
   built?: { warp: Float32Array<ArrayBuffer>; weft: Float32Array<ArrayBuffer> };
   /** Of each vertex of the form: share of the mean summed membrane force (facts.md, form.residual). */
   residual: Float32Array<ArrayBuffer>;
@@ -26,7 +26,8 @@ export interface SurfaceFields {
  * @source facts.md "Strain and stress"; curvature: angle deficit over a third of the area around (Meyer et al. 2003, section 3.4)
  */
 export function measureFields(facts: Facts, warp: Vec3 | null): SurfaceFields | null {
-  const { form, panels, rig } = facts;
+  const { form, panels } = facts;
+  const built = facts.rig ?? facts.assembled;
   if (form === undefined) return null;
   const fields: SurfaceFields = { residual: measureFormResidual(form, warp), curvature: measureCurvature(form) };
   if (panels) {
@@ -35,12 +36,12 @@ export function measureFields(facts: Facts, warp: Vec3 | null): SurfaceFields | 
     );
     fields.patterned = { warp: join(parts.map((s) => s.warp)), weft: join(parts.map((s) => s.weft)) };
   }
-  if (rig && panels) {
+  if (built && panels) {
     const byId = new Map(panels.map((p) => [p.id, p]));
-    const parts = rig.cloth.map((c) => {
+    const parts = built.cloth.map((c) => {
       const panel = byId.get(c.panel);
       const none = { warp: 0, weft: 0 };
-      const erected = c.nodes.flatMap((n) => rig.nodes[n]);
+      const erected = c.nodes.flatMap((n) => built.nodes[n]);
       return measureStress(
         erected,
         [0, 1, 2],

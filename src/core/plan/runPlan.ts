@@ -157,6 +157,7 @@ function runStationsInPlace(
   const rig = take(runRig(rigInput, share("rig", "papers")));
   facts.cables = rig.cables;
   if (rig.rig) facts.rig = rig.rig;
+  if (rig.assembled) facts.assembled = rig.assembled;
   if (rig.asBuilt) facts.asBuilt = rig.asBuilt;
   if (rig.tensioning) facts.tensioning = rig.tensioning;
   if (rig.sensitivity) facts.sensitivity = rig.sensitivity;

@@ -4,7 +4,7 @@ import type { Vec3 } from "../surface/surface.ts";
 import type { Fabric } from "./fabric.ts";
 import type { ControlLengths, PanelMark, StressFigures } from "./flatPanel.ts";
 import type { EdgeKind, Residual } from "./foundForm.ts";
-import type { FactsAsBuilt, FactsCable, FactsRig, FactsSensitivity, FactsTensioning } from "./rig.ts";
+import type { FactsAsBuilt, FactsAssembled, FactsCable, FactsRig, FactsSensitivity, FactsTensioning } from "./rig.ts";
 import type { ClothTotal, NestedRoll } from "./roll.ts";
 import type { LayoutChoice, LayoutRow } from "./stripLayout.ts";
 
@@ -140,6 +140,7 @@ export interface Facts {
   cloth?: ClothTotal;
   cables?: FactsCable[];
   rig?: FactsRig;
+  assembled?: FactsAssembled;
   asBuilt?: FactsAsBuilt;
   tensioning?: FactsTensioning;
   /** What errors of making and setting out do to the final forces. */

@@ -167,6 +167,9 @@ export interface FactsRig {
   adjusters: FactsAdjuster[];
 }
 
+/** The roof as built where nothing can be turned, so that no rig is written: places of the nodes (m) and triangles of the panels. */
+export type FactsAssembled = Pick<FactsRig, "nodes" | "cloth">;
+
 /** How far the assembled roof may be from what was intended. */
 export interface ProofLimits {
   /** Mean stress of the whole roof, share off the intended one. */

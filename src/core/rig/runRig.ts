@@ -1,6 +1,13 @@
 // The rig station: cables, the finished state in balance, stages, moves, temperature. Does not read readings back (site).
 import type { Check, Finding, StationContext, StationResult } from "../problem.ts";
-import type { FactsAsBuilt, FactsCable, FactsRig, FactsSensitivity, FactsTensioning } from "../records/rig.ts";
+import type {
+  FactsAsBuilt,
+  FactsAssembled,
+  FactsCable,
+  FactsRig,
+  FactsSensitivity,
+  FactsTensioning,
+} from "../records/rig.ts";
 import { measureLink } from "../structure/elements.ts";
 import { createEquilibriumSolver } from "../structure/equilibrium.ts";
 import { buildRig, type Rig } from "./build/buildRig.ts";
@@ -24,6 +31,7 @@ import { solveRig } from "./stages/solveRig.ts";
 export interface RigResult {
   cables: FactsCable[];
   rig: FactsRig | null;
+  assembled: FactsAssembled | null;
   asBuilt: FactsAsBuilt | null;
   tensioning: FactsTensioning | null;
   sensitivity: FactsSensitivity[] | null;
@@ -41,7 +49,7 @@ export function runRig(input: RigInput, context: StationContext): StationResult<
     const spec = c.edge === null ? undefined : input.cables[c.edge];
     return buildCableLine(input, c, { type: spec?.type ?? null, prestretched: spec?.prestretched ?? true });
   });
-  const without = { rig: null, asBuilt: null, tensioning: null, sensitivity: null };
+  const without = { rig: null, assembled: null, asBuilt: null, tensioning: null, sensitivity: null };
   if (rig.stops.length > 0) return { output: { cables: lines, ...without }, findings: rig.stops, checks };
   if (rig.adjusters.length === 0) {
     findings.push({
@@ -58,7 +66,7 @@ export function runRig(input: RigInput, context: StationContext): StationResult<
     const proof = proveHeld(input, rig, context);
     findings.push(...proof.findings);
     checks.push(...proof.checks);
-    return { output: { cables: lines, ...without, asBuilt: proof.output }, findings, checks };
+    return { output: { cables: lines, ...without, ...proof.output }, findings, checks };
   }
   const solved = solveRig(input, rig, context);
   checks.push(...solved.checks);
@@ -99,23 +107,28 @@ export function runRig(input: RigInput, context: StationContext): StationResult<
   checks.push(...rest.checks, ...built.checks, ...review.checks, ...pulls.checks);
   context.onProgress?.(0.97, "sensitivity");
   const sensitivity = measureSensitivity(rig, solver, finished);
-  const output = { cables: lines, rig: writeRig(rig, finished), asBuilt, tensioning, sensitivity };
+  const output = { cables: lines, rig: writeRig(rig, finished), assembled: null, asBuilt, tensioning, sensitivity };
   return { output, findings, checks };
 }
 
 /** The proof of a roof that nothing is turned on: panels and cables as they are cut, its points held as the form holds them. */
-function proveHeld(input: RigInput, rig: Rig, context: StationContext): StationResult<FactsAsBuilt | null> {
+function proveHeld(
+  input: RigInput,
+  rig: Rig,
+  context: StationContext,
+): StationResult<Pick<RigResult, "assembled" | "asBuilt">> {
   // A form that nothing holds has no place of its own.
-  if (!rig.structure.held.includes(1)) return { output: null, findings: [], checks: [] };
+  if (!rig.structure.held.includes(1)) return { output: { assembled: null, asBuilt: null }, findings: [], checks: [] };
   context.onProgress?.(0.3, "assembled roof in balance");
   const solver = createEquilibriumSolver(rig.structure);
   const state = solveState(rig, solver, { x: rig.structure.xyz, L0: rig.L0 }, { sharp: true, ...context });
-  const output = measureAsBuilt(rig, state, input);
-  const built = reviewBuilt(output);
+  const asBuilt = measureAsBuilt(rig, state, input);
+  const built = reviewBuilt(asBuilt);
+  const { nodes, cloth } = writeRig(rig, state);
   const rest = reviewRest([state]);
   return {
-    output,
-    findings: [...rest.findings, ...built.findings, ...reviewShift(input, output)],
+    output: { assembled: { nodes, cloth }, asBuilt },
+    findings: [...rest.findings, ...built.findings, ...reviewShift(input, asBuilt)],
     checks: [...rest.checks, ...built.checks],
   };
 }

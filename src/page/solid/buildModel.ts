@@ -34,9 +34,10 @@ interface Patch {
 
 /** Patches of the surface at the place the field lives on. */
 function patchesOf(facts: Facts, form: FactsForm, field: FieldName): Patch[] {
-  const { panels, rig } = facts;
-  if ((field === "builtWarp" || field === "builtWeft") && rig) {
-    return [{ id: "", vertices: rig.nodes, triangles: rig.cloth.map((c) => c.nodes) }];
+  const { panels } = facts;
+  const built = facts.rig ?? facts.assembled;
+  if ((field === "builtWarp" || field === "builtWeft") && built) {
+    return [{ id: "", vertices: built.nodes, triangles: built.cloth.map((c) => c.nodes) }];
   }
   if (panels === undefined || field === "residual" || field === "curvature") {
     return [{ id: "", vertices: form.vertices, triangles: form.triangles }];
