@@ -333,16 +333,22 @@ describe("shuffled, renamed, scaled", () => {
       700 * draw() + 200,
       300 + 500 * draw(),
     ]);
+    // The mean of a few seeds: one alone is luck.
     const used = (list: NestPiece[], scale = 1) =>
-      runRolls(
-        list.map((p) => ({ ...p, cut: p.cut.map((v) => v * scale) })),
-        [{ ...ROLL, width: 1500 * scale, length: 50_000 * scale }],
-        { ...OPTIONS, steps: 60 },
-      ).output[0].used / scale;
+      [1, 2, 3, 4, 5, 6].reduce(
+        (sum, seed) =>
+          sum +
+          runRolls(
+            list.map((p) => ({ ...p, cut: p.cut.map((v) => v * scale) })),
+            [{ ...ROLL, width: 1500 * scale, length: 50_000 * scale }],
+            { ...OPTIONS, steps: 60, seed },
+          ).output[0].used,
+        0,
+      ) / scale;
     const plain = points.map((p, k) => piece(`p${k}`, p));
     const other = points.map((p, k) => piece(`q${99 - k}`, p)).reverse();
-    expect(Math.abs(used(other) / used(plain) - 1)).toBeLessThan(0.06);
-    expect(Math.abs(used(plain, 0.01) / used(plain) - 1)).toBeLessThan(0.06);
+    expect(Math.abs(used(other) / used(plain) - 1)).toBeLessThan(0.03);
+    expect(Math.abs(used(plain, 0.01) / used(plain) - 1)).toBeLessThan(0.03);
   });
 });
 

@@ -20,10 +20,10 @@ const SINK = 0.95;
 /** A gain below this share does not count as one. */
 const GAIN = 0.02;
 
-/** Pairs dearer than their least, by their place in the weights, and a depth for every place, zero between two passes. */
+/** Pairs dearer than their least, by their place in the weights, and a price for every place, zero between two passes. */
 interface Raised {
   pairs: number[];
-  depth: Float64Array;
+  price: Float64Array;
 }
 
 function setWeight(strip: Strip, pair: number, weight: number): void {
@@ -35,25 +35,25 @@ function setWeight(strip: Strip, pair: number, weight: number): void {
 /** Weights of pairs in conflict grow, the others sink back. Returns the overlap. */
 function reweighInPlace(strip: Strip, raised: Raised): number {
   const { n, weight, least } = strip;
-  const { depth } = raised;
+  const { price } = raised;
   const hit: number[] = [];
   let most = 0;
   let sum = 0;
   visitOverlaps(strip, (i, j, d) => {
     hit.push(i * n + j);
-    depth[i * n + j] = d;
+    price[i * n + j] = d;
     sum += d;
     if (d > most) most = d;
   });
   const pairs = [...hit];
   for (const k of raised.pairs) {
-    if (depth[k] > 0) continue;
+    if (price[k] > 0) continue;
     setWeight(strip, k, Math.max(least[k], weight[k] * SINK));
     if (weight[k] > least[k]) pairs.push(k);
   }
   for (const k of hit) {
-    setWeight(strip, k, weight[k] * (GROW_LEAST + (GROW - GROW_LEAST) * (depth[k] / most)));
-    depth[k] = 0;
+    setWeight(strip, k, weight[k] * (GROW_LEAST + (GROW - GROW_LEAST) * (price[k] / most)));
+    price[k] = 0;
   }
   raised.pairs = pairs;
   return sum;
@@ -79,7 +79,7 @@ function drawOrder(strip: Strip, random: Random): number[] {
 export function separate(strip: Strip, patience: Patience, random: Random, stop: () => boolean): boolean {
   const { none } = strip.task;
   strip.weight.set(strip.least);
-  const raised: Raised = { pairs: [], depth: new Float64Array(strip.n ** 2) };
+  const raised: Raised = { pairs: [], price: new Float64Array(strip.n ** 2) };
   let best: StripState = copyState(strip);
   let least = measureOverlap(strip);
   for (let strike = 0; strike < patience.strikes && least > none; strike++) {

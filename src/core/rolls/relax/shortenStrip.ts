@@ -36,7 +36,7 @@ export interface StripSearch {
 export const SETTINGS = {
   /** Shares of the length cut off while exploring: at first, and at least. */
   cut: 0.01,
-  cutLeast: 0.001,
+  cutLeast: 0.0003,
   /** Passes without a gain, and how often they are begun again: while exploring, while compacting. */
   explore: { passes: 100, strikes: 2 },
   compact: { passes: 50, strikes: 2 },
