@@ -37,6 +37,8 @@ export interface PackResult {
 export interface PackShare {
   instance: PackInstance;
   seed: number;
+  /** Number of the thread. */
+  number: number;
   began: number;
   seconds: number;
 }
@@ -94,7 +96,7 @@ export function workPackShare(share: PackShare, port: MessagePort): { result: Pa
   const found = searchOrders({ ...task, stop: () => spent() > orders }, { steps: Number.MAX_SAFE_INTEGER, seed });
   if (!found || found.layout.left.length > 0) throw new Error(`${instance.name}: no layout within ${seconds} s`);
   const [bed] = found.layout.beds;
-  const { search, bedOf } = openSearchOf(bed, task, seed, 0);
+  const { search, bedOf } = openSearchOf(bed, task, { seed, share: share.number, fixed: 0 });
   let told = { at: spent(), length: search.best.length };
   let tries = 0;
   for (; !ended() && tries < 1e9; tries++) {
@@ -145,7 +147,7 @@ export async function benchPack(
   const shares = links.map(
     ({ port2 }, k) =>
       new Promise<{ result: PackResult; tries: number } | null>((done) => {
-        const share: PackShare = { instance, seed: seed + 1000 * k, began, seconds };
+        const share: PackShare = { instance, seed: seed + 1000 * k, number: k, began, seconds };
         const worker = new Worker(file, { workerData: { share, port: port2 }, transferList: [port2] });
         worker.on("message", done);
         // A thread that dies costs its share.

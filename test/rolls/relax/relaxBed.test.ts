@@ -73,8 +73,8 @@ describe("relaxBed", () => {
     const bedOfOrder = (order: number[]) => layPieces(task, { order, rule: "least x" }, null)!.beds[0];
     const [one, other] = [bedOfOrder([0, 1, 2, 3, 4, 5]), bedOfOrder([5, 4, 1, 2, 0, 3])];
     expect(one.laid.map((p) => p.piece)).not.toEqual(other.laid.map((p) => p.piece));
-    const { search } = openSearchOf(one, task, 1, 0);
-    const read = openSearchOf(other, task, 2, 0).bedOf(search.best)!;
+    const { search } = openSearchOf(one, task, { seed: 1, share: 0, fixed: 0 });
+    const read = openSearchOf(other, task, { seed: 2, share: 1, fixed: 0 }).bedOf(search.best)!;
     const places = (laid: Bed["laid"]) =>
       [...laid]
         .sort((a, b) => a.piece - b.piece)
@@ -92,7 +92,7 @@ describe("relaxBed", () => {
     const { task: strip, from, fixed } = order!;
     for (let stopAt = 0; stopAt < 200; stopAt++) {
       let asked = 0;
-      const search = openSearch(strip, from, stopAt, fixed);
+      const search = openSearch(strip, from, { seed: stopAt, share: stopAt % 2, fixed });
       const stop = () => asked++ >= stopAt;
       for (let k = 0; k < 6 && asked < stopAt; k++) tryShorter(search, k / 6, stop);
       const { best } = search;

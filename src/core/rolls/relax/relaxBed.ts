@@ -120,9 +120,9 @@ function bedFrom(bed: Bed, framed: Framed, state: StripState, areas: number[]): 
 }
 
 /** A search on one bed that the caller drives by a clock of its own, and the way back to a bed. */
-export function openSearchOf(bed: Bed, nest: NestTask, seed: number, fixed: number) {
+export function openSearchOf(bed: Bed, nest: NestTask, way: { seed: number; share: number; fixed: number }) {
   const framed = frameBed(bed, nest);
-  const search: StripSearch = openSearch(framed.task, framed.from, seed, fixed);
+  const search: StripSearch = openSearch(framed.task, framed.from, way);
   return { search, bedOf: (state: StripState) => bedFrom(bed, framed, state, nest.areas) };
 }
 
@@ -150,8 +150,9 @@ export function* relaxRounds(bed: Bed, nest: NestTask, limits: { steps: number; 
   for (let round = 0; round < rounds && !nest.stop(); round++) {
     const done = Math.floor((each * round) / rounds);
     const steps = Math.floor((each * (round + 1)) / rounds) - done;
-    const order = { kind: "shorten strip" as const, task: framed.task, from: best, fixed, done, steps, of: each };
-    const orders = Array.from({ length: shares }, (_, k) => ({ ...order, seed: limits.seed + k }));
+    const { seed } = limits;
+    const order = { kind: "shorten strip" as const, task: framed.task, from: best, fixed, seed, done, steps, of: each };
+    const orders = Array.from({ length: shares }, (_, share) => ({ ...order, share }));
     const states = yield { orders, done: shares * done };
     for (const state of states) if (state && state.length < best.length) best = state;
   }

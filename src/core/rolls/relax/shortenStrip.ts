@@ -23,8 +23,9 @@ export interface StripSearch {
   best: StripState;
   /** Layouts that could not be parted at the length now tried, least overlap first. */
   failed: { state: StripState; overlap: number }[];
-  /** Share of the length to be cut off next. */
+  /** Share of the length to be cut off next, and the least. */
   cut: number;
+  cutLeast: number;
   /** Failures at the length now tried. */
   idle: number;
   /** Pieces by the size of their boxes, greatest first. */
@@ -34,9 +35,8 @@ export interface StripSearch {
 }
 
 export const SETTINGS = {
-  /** Shares of the length cut off while exploring: at first, and at least. */
+  /** Share of the length cut off at first while exploring. */
   cut: 0.01,
-  cutLeast: 0.0003,
   /** Passes without a gain, and how often they are begun again: while exploring, while compacting. */
   explore: { passes: 100, strikes: 2 },
   compact: { passes: 50, strikes: 2 },
@@ -51,6 +51,12 @@ export const SETTINGS = {
   /** Pieces that may be swapped, as a share of all. */
   large: 0.6,
 };
+/**
+ * Searches side by side cut in different ways, those of an even number down to the first of these shares of the length: narrow cuts
+ * win a little often; wide ones win where lengths come in steps (outlines on whole numbers), since there the last of a step is
+ * as hard as all of it.
+ */
+const CUT_LEAST = [0.0003, 0.001];
 /** Rounding. */
 const HAIR = 1e-9;
 
@@ -61,8 +67,16 @@ function reachOf(strip: Strip): number {
   return reach;
 }
 
-/** A search from a layout that does not overlap; `fixed` is how far what cannot move reaches. */
-export function openSearch(task: StripTask, from: StripState, seed: number, fixed: number): StripSearch {
+/**
+ * A search from a layout that does not overlap.
+ * @param way seed; number of the search among those side by side; how far what cannot move reaches
+ */
+export function openSearch(
+  task: StripTask,
+  from: StripState,
+  way: { seed: number; share: number; fixed: number },
+): StripSearch {
+  const { seed, share, fixed } = way;
   const strip = openStrip(task, from);
   const box = (i: number) => {
     const { length, height } = task.shapes[task.choices[i][0]];
@@ -74,7 +88,9 @@ export function openSearch(task: StripTask, from: StripState, seed: number, fixe
   const long = task.choices.map((own) => task.start + Math.min(...own.map((s) => task.shapes[s].length)));
   const least = Math.max(fixed, ...long.slice(0, task.movable));
   const best = copyState(strip);
-  return { strip, random: buildRandom(seed), best, failed: [], cut: SETTINGS.cut, idle: 0, large, fixed: least };
+  const cutLeast = CUT_LEAST[share % CUT_LEAST.length];
+  const random = buildRandom(seed);
+  return { strip, random, best, failed: [], cut: SETTINGS.cut, cutLeast, idle: 0, large, fixed: least };
 }
 
 /** Takes over a better layout found elsewhere. */
@@ -164,7 +180,7 @@ function explore(search: StripSearch, stop: () => boolean): boolean {
   failed.sort((a, b) => a.overlap - b.overlap);
   if (failed.length > SETTINGS.pool) failed.pop();
   search.idle++;
-  if (search.idle % SETTINGS.patience === 0) search.cut = Math.max(SETTINGS.cutLeast, search.cut / 2);
+  if (search.idle % SETTINGS.patience === 0) search.cut = Math.max(search.cutLeast, search.cut / 2);
   return false;
 }
 

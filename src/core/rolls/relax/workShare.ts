@@ -14,6 +14,8 @@ export interface ShareOrder {
   /** How far what cannot move reaches, and no strip need be shorter. */
   fixed: number;
   seed: number;
+  /** Number of the share among those of its round. */
+  share: number;
   /** Steps done before these, how many to do, and of how many in all. */
   done: number;
   steps: number;
@@ -25,7 +27,11 @@ const SPREAD = 7919;
 
 /** The shortest layout found; what it began from where none is shorter. */
 export function workShare(order: ShareOrder, stop: () => boolean): StripState {
-  const search = openSearch(order.task, order.from, order.seed + SPREAD * order.done, order.fixed);
+  const search = openSearch(order.task, order.from, {
+    seed: order.seed + order.share + SPREAD * order.done,
+    share: order.share,
+    fixed: order.fixed,
+  });
   const { strip } = search;
   const spent = () => strip.priced >= order.steps * PLACES_A_STEP;
   // An attempt that prices nothing (all is apart at once) still counts, so that the work ends.
