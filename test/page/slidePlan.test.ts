@@ -58,6 +58,19 @@ async function slide(page: Page): Promise<void> {
   );
 }
 
+/** Waits until the plan has come to the rolls. */
+const nesting = (page: Page) =>
+  doing(page)
+    .getByText(/nest|roll/i)
+    .waitFor();
+
+/** Slides an end while the rolls are nested; the plan waits for it. */
+async function slideWhilePlanned(page: Page): Promise<void> {
+  await nesting(page);
+  await slide(page);
+  await doing(page).getByText("waiting for the seam in hand").waitFor();
+}
+
 describe("a seam's end and the plan", { timeout: LONG }, () => {
   it("let go, the roof is tied first and planned then", async () => {
     const { page, context, faults } = await openSeams({ steps: 1 });
@@ -77,24 +90,15 @@ describe("a seam's end and the plan", { timeout: LONG }, () => {
 
   it("slid while the rest is planned, that plan waits; put back it begins again, let go the new one does", async () => {
     const { page, context, faults } = await openSeams({ steps: 1e7 });
-    await doing(page)
-      .getByText(/nest|roll/i)
-      .waitFor();
-    await slide(page);
-    await doing(page).getByText("waiting for the seam in hand").waitFor();
+    await slideWhilePlanned(page);
     await page.keyboard.press("Escape");
     await page.mouse.up();
-    await doing(page)
-      .getByText(/nest|roll/i)
-      .waitFor();
+    await nesting(page);
     await grips(page).nth(5).waitFor();
-    await slide(page);
-    await doing(page).getByText("waiting for the seam in hand").waitFor();
+    await slideWhilePlanned(page);
     await page.mouse.up();
     await page.getByRole("button", { name: /^Undo end of S/ }).waitFor();
-    await doing(page)
-      .getByText(/nest|roll/i)
-      .waitFor();
+    await nesting(page);
     await page.getByRole("button", { name: "Stop" }).click();
     await page.getByText("Stopped", { exact: true }).waitFor();
     expect(faults).toEqual([]);
@@ -103,11 +107,7 @@ describe("a seam's end and the plan", { timeout: LONG }, () => {
 
   it("stopped with a seam in hand, nothing is planned until it is let go", async () => {
     const { page, context, faults } = await openSeams({ steps: 1e7 });
-    await doing(page)
-      .getByText(/nest|roll/i)
-      .waitFor();
-    await slide(page);
-    await doing(page).getByText("waiting for the seam in hand").waitFor();
+    await slideWhilePlanned(page);
     await page.keyboard.press(".");
     await page.getByText("Stopped", { exact: true }).waitFor();
     await page.keyboard.press("Escape");
@@ -117,9 +117,7 @@ describe("a seam's end and the plan", { timeout: LONG }, () => {
     await page.getByText("Stopped", { exact: true }).waitFor();
     await slide(page);
     await page.mouse.up();
-    await doing(page)
-      .getByText(/nest|roll/i)
-      .waitFor();
+    await nesting(page);
     expect(faults).toEqual([]);
     await context.close();
   });

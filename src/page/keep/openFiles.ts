@@ -5,10 +5,10 @@ import { migrateJob } from "../../core/job/jobVersions.ts";
 import { leastJob } from "../../core/job/leastJob.ts";
 import { readJson } from "../../core/job/readJson.ts";
 import { decodeText, titleOfMesh } from "../../core/plan/meshText.ts";
-import { readSiteLog } from "../../core/plan/siteLog.ts";
 import { PlanError } from "../../core/problem.ts";
 import type { MeshFile, Project } from "../store/project.ts";
 import { newId } from "./keepBook.ts";
+import { readLogFiles } from "./logTables.ts";
 
 /** A file with its bytes in hand. */
 export interface LoadedFile {
@@ -101,10 +101,13 @@ function isJob(file: LoadedFile): boolean {
   return new TextDecoder().decode(file.bytes.subarray(0, 400)).includes("seamstay-job");
 }
 
-/** The log among the files: the whole one, or else the readings; null where there is none. @throws PlanError codes of readSiteLog */
-export function readLog(files: readonly LoadedFile[]): ReturnType<typeof readSiteLog> | null {
-  const logs = files
-    .filter((f) => /(readings|log)[^/]*\.csv$/i.test(f.name))
-    .map((f) => readSiteLog(decodeText(f.bytes, f.name)));
-  return logs.find((log) => log.whole) ?? logs[0] ?? null;
+/**
+ * The log among the files, by their names; files that are all tables are taken for one whatever their names. Null where there is none.
+ * @throws PlanError codes of readLogFiles
+ */
+export function readLog(files: readonly LoadedFile[]): ReturnType<typeof readLogFiles> {
+  const tables = files.filter((f) => /\.csv$/i.test(f.name));
+  const named = tables.filter((f) => /(readings|turns|log)[^/]*\.csv$/i.test(f.name));
+  const logs = named.length === 0 && tables.length === files.length ? tables : named;
+  return readLogFiles(logs.map((f) => ({ name: f.name, text: decodeText(f.bytes, f.name) })));
 }
