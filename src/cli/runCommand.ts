@@ -5,6 +5,7 @@ import { correctCommand } from "./correctCommand.ts";
 import { demoCommand } from "./demoCommand.ts";
 import type { Surroundings } from "./makePlan.ts";
 import { openCommand } from "./openCommand.ts";
+import { papersCommand } from "./papersCommand.ts";
 import { parseOptions } from "./parseOptions.ts";
 import { planCommand } from "./planCommand.ts";
 import { startCommand } from "./startCommand.ts";
@@ -54,6 +55,8 @@ async function dispatch(verb: string | undefined, rest: string[], around: Surrou
       return await checkCommand(rest, around);
     case "correct":
       return await correctCommand(rest, around);
+    case "papers":
+      return await papersCommand(rest, around);
     case "start":
       return await startCommand(rest, around.terminal);
     case "open":

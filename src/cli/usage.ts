@@ -34,6 +34,12 @@ export const VERBS: { verb: string; call: string; words: string; more: string[] 
     more: [],
   },
   {
+    verb: "papers",
+    call: "papers FACTS.json --out DIR [--papers LIST] [--json] [--quiet]",
+    words: "writes the papers of a plan anew from its facts.json, planning nothing",
+    more: ["  --papers LIST     as with plan: help plan lists what can be named"],
+  },
+  {
     verb: "correct",
     call: "correct JOB --readings FILE.csv [--stage PERCENT] [--out DIR] [--json] [--quiet]",
     words: "says what to turn after forces and places have been read on site",

@@ -1,5 +1,4 @@
 // Small forms for the page, planned in a second or two: a clamped saddle, and a sail hung from four corners.
-import type { GivenFiles } from "./bench.ts";
 
 /** OBJ text of a saddle of 6 x 4 m with n strips each way; the rim is named side by side. */
 export function smallForm(n = 8): string {
@@ -67,7 +66,7 @@ export const SAIL_JOB = {
   rig: { stages: [0.5, 1] },
 };
 
-function files(job: { mesh: { file: string } }, mesh: string): GivenFiles {
+function files(job: { mesh: { file: string } }, mesh: string) {
   return [
     { name: "job.json", mimeType: "application/json", buffer: Buffer.from(JSON.stringify(job)) },
     { name: job.mesh.file, mimeType: "text/plain", buffer: Buffer.from(mesh) },

@@ -7,11 +7,12 @@ const DEEPEST = 200;
 
 /**
  * Value of a JSON text.
+ * @param what it is called where it is none
  * @throws PlanError job-json: not JSON, with line and column; nested deeper than 200 levels
  */
-export function readJson(text: string): { value: unknown; findings: Finding[] } {
+export function readJson(text: string, what = "job"): { value: unknown; findings: Finding[] } {
   const body = text.startsWith("\uFEFF") ? text.slice(1) : text;
-  const twice = scanJson(body);
+  const twice = scanJson(body, what);
   const value: unknown = JSON.parse(body);
   const findings = twice.map(
     (where): Finding => ({
@@ -21,7 +22,7 @@ export function readJson(text: string): { value: unknown; findings: Finding[] } 
       where,
       value: null,
       limit: null,
-      text: `the key ${where} stands twice in the job; the last one counts`,
+      text: `the key ${where} stands twice in the ${what}; the last one counts`,
       remedy: "delete the one that is not meant",
       basis: "RFC 8259, section 4: names within an object should be unique",
     }),
@@ -31,16 +32,17 @@ export function readJson(text: string): { value: unknown; findings: Finding[] } 
 
 interface Scan {
   text: string;
+  what: string;
   at: number;
   twice: string[];
 }
 
 /** Paths of the keys that stand twice; throws where the text is not JSON. */
-function scanJson(text: string): string[] {
-  const scan: Scan = { text, at: 0, twice: [] };
+function scanJson(text: string, what: string): string[] {
+  const scan: Scan = { text, what, at: 0, twice: [] };
   skipSpace(scan);
   scanValue(scan, "", 0);
-  if (scan.at < text.length) fail(scan, "nothing more after the end of the job");
+  if (scan.at < text.length) fail(scan, `nothing more after the end of the ${what}`);
   return scan.twice;
 }
 
@@ -54,7 +56,7 @@ function fail(scan: Scan, expected: string): never {
       : "the end of the file";
   throw new PlanError(
     "job-json",
-    `the job is not JSON: line ${line}, column ${column}: ${found} where ${expected} is expected; correct it there`,
+    `the ${scan.what} is not JSON: line ${line}, column ${column}: ${found} where ${expected} is expected; correct it there`,
     `line ${line}, column ${column}`,
     { line, column },
   );
