@@ -1,7 +1,8 @@
 // Lays long strips in stacks: one above the other across the roll as close as their outlines allow, spoons or half-turn pairs,
 // then stack behind stack along it, tips interleaved. What is no long strip is laid afterwards into what is left.
 // Does not: choose the order (searchOrders.ts). Source: packing of monotone strips by dropping one profile onto another, own.
-import { type Bed, bedReach, type LaidShape, layInPlace, settle } from "./bed.ts";
+import { type Bed, type LaidShape, layInPlace, settle } from "./bed.ts";
+import { type Stack, shiftBehind } from "./layBehind.ts";
 import { type Layout, type LayoutCost, layPieces, type NestTask, openBeds } from "./layPieces.ts";
 import type { NestShape } from "./nestShape.ts";
 import { slideRoom } from "./slideRoom.ts";
@@ -19,13 +20,6 @@ const LONG = 0.5;
 const ALIKE = 0.6;
 /** Kinds of strips looked at for the next place of a stack. */
 const LOOK = 6;
-
-interface Stack {
-  laid: LaidShape[];
-  /** Extent along the roll. */
-  x0: number;
-  x1: number;
-}
 
 const isLong = (shape: NestShape, bed: Bed) =>
   shape.length >= SLIM * shape.height && shape.length >= LONG * bed.width && shape.height <= bed.width;
@@ -95,35 +89,12 @@ function turnStack(stack: Stack, task: NestTask, bed: Bed): Stack | null {
   return { laid, x0: -stack.x1, x1: -stack.x0 };
 }
 
-/** Shift along the roll that brings a stack behind all that lies there, as near as it comes; null where a flaw is in its way. */
-function chainShift(stack: Stack, bed: Bed): number | null {
-  const from = Math.max(bedReach(bed), bed.start) + bed.gap + 2 * bed.slack - stack.x0;
-  let room = Infinity;
-  for (const p of stack.laid) {
-    const at = { shape: p.shape, x: p.x + from, y: p.y };
-    room = Math.min(room, at.x - bed.start);
-    for (const list of [bed.laid, bed.flawShapes])
-      for (const other of list) room = slideRoom(at, other, 0, bed.gap, room);
-  }
-  const shift = from - room;
-  const clear = bed.flawShapes.every((f) =>
-    stack.laid.every(
-      (p) =>
-        p.x + shift >= f.x + f.shape.length + bed.gap ||
-        p.x + shift + p.shape.length + bed.gap <= f.x ||
-        p.y >= f.y + f.shape.height + bed.gap ||
-        p.y + p.shape.height + bed.gap <= f.y,
-    ),
-  );
-  return clear ? shift : null;
-}
-
 /** Lays a stack at the end of a roll, turned as lets it come nearer. False where it has no room. */
 function chainInPlace(bed: Bed, stack: Stack, task: NestTask): boolean {
   const turned = turnStack(stack, task, bed);
   let best: { stack: Stack; shift: number } | null = null;
   for (const s of turned ? [stack, turned] : [stack]) {
-    const shift = chainShift(s, bed);
+    const shift = shiftBehind(s, bed);
     if (shift === null || s.x1 + shift > bed.length) continue;
     if (!best || s.x1 + shift < best.stack.x1 + best.shift - 1e-9 * bed.width) best = { stack: s, shift };
   }

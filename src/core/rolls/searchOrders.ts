@@ -1,6 +1,7 @@
 // Tries orders of the pieces and keeps the layout of least cloth: a few sorted orders, then seeded changes to the best one.
 // Stops by steps or when told to; same seed, same layout. Source: late acceptance (E. K. Burke and Y. Bykov, The late acceptance hill-climbing heuristic, 2017; from memory), on orders.
 import { buildRandom, drawInteger, type Random } from "../numeric/random.ts";
+import { chainRoll, layChain, orderChain } from "./layChain.ts";
 import {
   compactInPlace,
   isLess,
@@ -39,8 +40,8 @@ function sortedOrders(task: NestTask): number[][] {
 interface Genome {
   order: number[];
   rule: TurnRule;
-  /** How stacks are built; null: piece by piece. */
-  stacks: StackRule | null;
+  /** How stacks are built, or wide pieces chained; null: piece by piece. */
+  stacks: StackRule | "chain" | null;
   /** Rolls in the order in which they are filled. */
   rolls: number[];
 }
@@ -69,13 +70,24 @@ function layGenome(task: NestTask, genome: Genome, beat: LayoutCost | null): Lay
   const offers = genome.rolls.map((i) => task.offers[i]);
   const { order, rule, stacks } = genome;
   const own = { ...task, offers };
-  const layout = stacks ? layStacks(own, order, stacks, beat) : layPieces(own, { order, rule }, beat);
+  const layout =
+    stacks === "chain"
+      ? layChain(own, order, beat)
+      : stacks
+        ? layStacks(own, order, stacks, beat)
+        : layPieces(own, { order, rule }, beat);
   if (!layout) return null;
   const beds: Layout["beds"] = [];
   genome.rolls.forEach((i, k) => {
     beds[i] = layout.beds[k];
   });
   return { ...layout, beds };
+}
+
+/** A genome to start with; the order of a chain is sought first. */
+function openGenome(task: NestTask, genome: Genome, seed: number): Genome {
+  const roll = genome.stacks === "chain" ? chainRoll(task, genome.rolls) : null;
+  return roll === null ? genome : { ...genome, order: orderChain(task, genome.order, roll, seed) };
 }
 
 /** A changed copy: places swapped or a piece moved, near or far, never two alike; now and then another rule. */
@@ -115,9 +127,11 @@ export function searchOrders(task: NestTask, limits: SearchLimits): { layout: La
   const orders = sortedOrders(task);
   const single = orders.flatMap((order) => RULES.map((rule) => ({ order, rule, stacks: null })));
   const stacked = orders.slice(0, 3).flatMap((order) => STACKS.map((stacks) => ({ order, rule: RULES[0], stacks })));
-  const starts = [...single.slice(0, 3), ...stacked, ...single.slice(3)].map(
-    (g, k): Genome => ({ ...g, rolls: rolls[k % rolls.length] }),
-  );
+  const chained = rolls
+    .filter((list) => chainRoll(task, list) !== null)
+    .map((list): Genome => ({ order: orders[0], rule: RULES[0], stacks: "chain", rolls: list }));
+  const on = (g: Omit<Genome, "rolls">, k: number): Genome => ({ ...g, rolls: rolls[k % rolls.length] });
+  const starts = [...single.slice(0, 3).map(on), ...chained, ...[...stacked, ...single.slice(3)].map(on)];
   let best: Layout | null = null;
   let bestOf: Genome = starts[0];
   let now: { cost: LayoutCost; genome: Genome } | null = null;
@@ -131,7 +145,9 @@ export function searchOrders(task: NestTask, limits: SearchLimits): { layout: La
       memory = new Array(memoryOf(limits.steps)).fill(best.cost);
     }
     const genome: Genome =
-      sorting || !now ? starts[steps % starts.length] : changeGenome(now.genome, random, kind, rolls.length === 1);
+      sorting || !now
+        ? openGenome(task, starts[steps % starts.length], limits.seed)
+        : changeGenome(now.genome, random, kind, rolls.length === 1);
     const slot = steps % Math.max(1, memory.length);
     const toBeat: LayoutCost | null = now ? worse(memory[slot], now.cost) : (best?.cost ?? null);
     // A cap may cut the search short, never the first layout.
