@@ -275,6 +275,17 @@ describe("other ways to say it", () => {
     expect(flaws({ outerFace: "down" }, "end")).toEqual([{ ...flaw, x: 29_150, y: 2160 }]);
   });
 
+  it("refuses a flaw off its roll, from either end, and a trim that leaves nothing", () => {
+    const read = (roll: object) =>
+      readJob({ ...(leastJob("form.obj", "Bay") as object), rolls: [{ length: 40_000, ...roll }] }, catalogues);
+    const flaw = { y: 0, length: 300, width: 200 };
+    for (const from of ["start", "end"]) {
+      expect(() => read({ flaws: [{ ...flaw, x: 40_000, from }] })).toThrow(/^rolls\[0\]\.flaws\[0\]: lies from/);
+      expect(read({ flaws: [{ ...flaw, x: 39_900, from }] }).job.rolls?.[0].flaws).toHaveLength(1);
+    }
+    expect(() => read({ start: 40_000 })).toThrow(/^rolls\[0\]\.start: a trim of 40000 mm leaves nothing/);
+  });
+
   it("leaves no cut without a gap unless edges may be shared", () => {
     const gap = (nest: object) => readJob({ ...(leastJob("form.obj", "Bay") as object), nest }, catalogues);
     expect(gap({}).job.nest.gap).toBe(10);

@@ -398,6 +398,16 @@ describe("pins", () => {
     expect(run([pin("a", 0, 0, 0, "Z")])?.code).toBe("pin-roll");
   });
 
+  it("may miss the gap by the rounding of what is typed (bug: taken, then called a fault of the program)", () => {
+    const pieces = [box("a", 1000, 900), box("b", 1000, 900), box("c", 700, 700)];
+    const pin = (panel: string, x: number) => ({ panel, roll: "A", x, y: 0, rotation: 0 as const });
+    const run = (x: number) => runRolls(pieces, [ROLL], { ...OPTIONS, gap: 10, pins: [pin("a", 0), pin("b", x)] });
+    const { findings, checks } = run(1009.96);
+    expect(findings).toEqual([]);
+    expect(checks.filter((c) => !c.holds)).toEqual([]);
+    expect(() => run(1009.9)).toThrow(/9.90 mm apart/);
+  });
+
   it("may name a roll that is taken for granted", () => {
     const assumed = { ...ROLL, id: "any", assumed: true };
     const pins = [{ panel: "a", roll: "R2", x: 10, y: 20, rotation: 0 as const }];

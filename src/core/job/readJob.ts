@@ -1,7 +1,6 @@
 // A parsed job file to a job with every decision resolved. Reads no files, knows no mesh: names of edges and anchors are
 // checked where the mesh is known. Source: the fixed contract of the job file.
-import type { Finding } from "../problem.ts";
-import { PlanError } from "../problem.ts";
+import { type Finding, PlanError } from "../problem.ts";
 import type { Job, MeshSource } from "../records/job.ts";
 import type { Catalogues } from "./catalogues.ts";
 import { checkJobMeaning } from "./checkJobMeaning.ts";
@@ -225,7 +224,31 @@ function resolveRolls(file: JobFile, fabric: Job["fabric"], ledger: DefaultLedge
       price: roll.price ?? file.nest?.price ?? null,
     };
     checkUsableWidth(`rolls[${i}]`, read.width, read.selvedge);
-    return { ...read, flaws: (roll.flaws ?? []).map((f) => placeFlaw(f, read)) };
+    const flaws = (roll.flaws ?? []).map((f) => placeFlaw(f, read));
+    checkAlongRoll(i, read, flaws);
+    return { ...read, flaws };
+  });
+}
+
+/** Trim that leaves nothing of a roll, and a flaw that lies past its end, are slips of a unit or of the end they are measured from. */
+function checkAlongRoll(
+  i: number,
+  roll: { length: number; start: number },
+  flaws: { x: number; length: number }[],
+): void {
+  const refuse = (path: string, words: string): never => {
+    throw new PlanError("job-value-range", `rolls[${i}].${path}: ${words}`, `rolls[${i}].${path}`, {
+      length: roll.length,
+    });
+  };
+  if (roll.start >= roll.length)
+    refuse("start", `a trim of ${roll.start} mm leaves nothing of a roll of ${roll.length} mm; correct one of them`);
+  flaws.forEach((f, k) => {
+    if (f.x < roll.length && f.x + f.length > 0) return;
+    refuse(
+      `flaws[${k}]`,
+      `lies from ${f.x} to ${f.x + f.length} mm from the start, off a roll of ${roll.length} mm; correct its x, the end it is measured from, or the roll's length`,
+    );
   });
 }
 

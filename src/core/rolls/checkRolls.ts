@@ -10,6 +10,8 @@ import { stopFinding } from "./sortPieces.ts";
 const HAIR = 0.01;
 /** mm: depth of overlap that counts. */
 const TOUCH = 1e-3;
+/** Two pins may miss the gap by this, mm: they are typed with rounded figures. */
+export const PIN_GAP = 0.05;
 
 interface Lying {
   id: string;
@@ -39,14 +41,15 @@ function lyingOn(roll: NestedRoll, pieces: Map<string, NestPiece>): Lying[] {
   });
 }
 
-/** Least distance of any two pieces on a roll (Infinity where all are further than the gap), and which two. */
-function leastGap(lying: Lying[], gap: number): { near: number; who: string[] } {
+/** Least distance of any two pieces on a roll (Infinity where all are further than the gap), and which two; pins as they were allowed. */
+function leastGap(lying: Lying[], gap: number, pinned: ReadonlySet<string>): { near: number; who: string[] } {
   const order = [...lying].sort((a, b) => a.x0 - b.x0);
   let near = Infinity;
   let who: string[] = [];
   order.forEach((a, i) => {
     for (let j = i + 1; j < order.length && order[j].x0 <= a.x1 + gap + 1; j++) {
       const d = ringGap(a, order[j], gap + 1, TOUCH);
+      if (d >= gap - PIN_GAP && pinned.has(a.id) && pinned.has(order[j].id)) continue;
       if (d < near) {
         near = d;
         who = [a.id, order[j].id];
@@ -75,9 +78,10 @@ export function checkRoll(
   roll: NestedRoll,
   start: number,
   pieces: Map<string, NestPiece>,
+  pinned: ReadonlySet<string> = new Set(),
 ): { checks: Check[]; findings: Finding[] } {
   const lying = lyingOn(roll, pieces);
-  const { near, who } = leastGap(lying, roll.gap);
+  const { near, who } = leastGap(lying, roll.gap, pinned);
   const outside = lying.filter(
     (p) => p.x0 < start - HAIR || p.x1 > roll.length + HAIR || p.y0 < -HAIR || p.y1 > roll.usableWidth + HAIR,
   );

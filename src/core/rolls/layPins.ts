@@ -3,6 +3,7 @@ import { PlanError } from "../problem.ts";
 import type { NestDecision } from "../records/job.ts";
 import type { NestPiece } from "../records/roll.ts";
 import type { LaidShape } from "./bed.ts";
+import { PIN_GAP } from "./checkRolls.ts";
 import { buildShape, turnRing } from "./nestShape.ts";
 import type { OfferedRoll } from "./offerRolls.ts";
 import { ringGap } from "./ringGap.ts";
@@ -10,8 +11,6 @@ import { usableWidth } from "./sortPieces.ts";
 
 /** Depth of overlap that counts, mm. */
 const TOUCH = 1e-3;
-/** A pin may miss the gap by this, mm: it is typed with rounded figures. */
-const PIN_GAP = 0.05;
 
 type Pin = NestDecision["pins"][number];
 

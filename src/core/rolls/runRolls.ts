@@ -67,7 +67,10 @@ function buildTask(
   };
 }
 
-/** How much more cloth is needed for what is left over, nested on an endless roll of its widest kind. */
+/**
+ * How much more cloth is needed for what is left over, nested on an endless roll of its widest kind: on a new roll with its trim, or at the
+ * end of one that is longer by as much, a gap behind what lies there.
+ */
 function shortage(left: number[], pieces: NestPiece[], task: NestTask, stock: StockRoll[]): Finding[] {
   const kinds = new Map<string, number[]>();
   for (const p of left) {
@@ -79,14 +82,15 @@ function shortage(left: number[], pieces: NestPiece[], task: NestTask, stock: St
     const rolls = stock.filter((r) => suits(piece, r));
     const roll = rolls.reduce((a, b) => (usableWidth(b) > usableWidth(a) ? b : a));
     const { gap, dx, slack } = task.offers[0].size;
-    const size = { ...bedSize(roll, gap, dx, slack), length: Infinity, start: 0, flaws: [] };
+    const begins = Math.max(roll.start, gap);
+    const size = { ...bedSize(roll, gap, dx, slack), length: Infinity, start: begins, flaws: [] };
     const one = { ...task, stop: () => false, offers: [{ size, takes: () => true, pins: [] }] };
     const order = [...group].sort((a, b) => task.areas[b] - task.areas[a] || a - b);
     const metres = bedReach((layPieces(one, { order, rule: "least x" }, null) as { beds: Bed[] }).beds[0]) / 1000;
     const names = group.map((p) => pieces[p].id);
     const cloth = `${piece.fabric}${piece.batch === null ? "" : `, batch ${piece.batch}`}`;
     return stopFinding("roll-short", names, metres, null, {
-      text: `The rolls of ${cloth} end ${metres.toFixed(1)} m (at ${usableWidth(roll)} mm usable) too early: ${names.join(", ")} left over.`,
+      text: `The rolls of ${cloth} end ${(Math.ceil(metres * 10 - 1e-6) / 10).toFixed(1)} m (at ${usableWidth(roll)} mm usable) too early: ${names.join(", ")} left over.`,
       remedy: "Add a roll, or a longer one, to the stock.",
     });
   });
@@ -174,9 +178,10 @@ export function runRolls(
   const filled = best.beds.map((bed, i) => ({ bed, roll: offers[i].roll })).filter(({ bed }) => bed.laid.length > 0);
   const rolls = filled.map(({ bed, roll }) => recordRoll(bed, roll, fit, options));
   const byId = new Map(fit.map((p) => [p.id, p]));
-  const output = closeNumbering(rolls, offers, options.pins.length > 0);
+  const pinned = new Set(options.pins.map((p) => p.panel));
+  const output = closeNumbering(rolls, offers, pinned.size > 0);
   output.forEach((roll, i) => {
-    const verdict = checkRoll(roll, filled[i].roll.start, byId);
+    const verdict = checkRoll(roll, filled[i].roll.start, byId, pinned);
     checks.push(...verdict.checks);
     findings.push(...verdict.findings);
   });

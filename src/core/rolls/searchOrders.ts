@@ -22,9 +22,11 @@ export interface SearchLimits {
 
 const RULES: TurnRule[] = ["least x", "least end", "least y"];
 
-/** Orders worth trying first: by length, height, area, box and slimness, greatest first. */
+/** Orders worth trying first: by length, height, area, box and slimness, greatest first; before all what fewest rolls take. */
 function sortedOrders(task: NestTask): number[][] {
   const first = (p: number) => task.shapes[p][0];
+  const rolls = new Map(task.loose.map((p) => [p, task.offers.filter((o) => o.takes(p)).length]));
+  const choice = (p: number) => rolls.get(p) ?? 0;
   const keys: ((p: number) => number)[] = [
     (p) => task.areas[p],
     (p) => first(p).length,
@@ -33,7 +35,7 @@ function sortedOrders(task: NestTask): number[][] {
     (p) => Math.max(first(p).length, first(p).height),
     (p) => first(p).length + first(p).height,
   ];
-  return keys.map((key) => [...task.loose].sort((a, b) => key(b) - key(a) || a - b));
+  return keys.map((key) => [...task.loose].sort((a, b) => choice(a) - choice(b) || key(b) - key(a) || a - b));
 }
 
 /** What a layout is built from. */

@@ -93,8 +93,8 @@ function isApart(bed: Bed, touch: number): boolean {
       const b = all[j];
       const gap = bed.gap + a.shape.slack + b.shape.slack;
       if (b.x >= a.x + a.shape.length + gap) break;
-      // Flaws may overlap one another.
-      if (a.piece < 0 && b.piece < 0) continue;
+      // Flaws may overlap one another, pins were judged where they were laid.
+      if (a.pinned && b.pinned) continue;
       if (ringGap(a, b, gap + touch, touch) < Math.max(0, gap - touch)) return false;
     }
     return true;
