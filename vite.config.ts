@@ -16,6 +16,7 @@ export default defineConfig({
         bench: "test/bench/bench.ts",
         packWorker: "test/bench/packWorker.ts",
         "chunks/slideCase": "test/page/slideCase.ts",
+        "chunks/firstViewCase": "test/page/firstViewCase.ts",
       },
       output: { entryFileNames: "[name].js", chunkFileNames: "chunks/[name].js" },
     },

@@ -24,6 +24,12 @@ const CASES: Record<string, { call: string; least: number; run: (args: string[])
     run: async ([job, mesh]) =>
       (await import(new URL("./chunks/slideCase.js", import.meta.url).href)).benchSlide(job, mesh),
   },
+  first: {
+    call: "first [JOB.json MESH.obj]",
+    least: 0,
+    run: async ([job, mesh]) =>
+      (await import(new URL("./chunks/firstViewCase.js", import.meta.url).href)).benchFirstView(job, mesh),
+  },
   flatten: { call: "flatten STRIP.obj", least: 1, run: ([strip]) => benchFlatten(readSurface(strip).surface) },
   form: { call: "form N", least: 1, run: ([n]) => benchForm(readCount(n, "N")) },
   geodesic: { call: "geodesic MESH.obj PAIRS.txt", least: 2, run: ([mesh, pairs]) => benchPairs(mesh, pairs) },

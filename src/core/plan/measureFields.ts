@@ -21,26 +21,42 @@ export interface SurfaceFields {
 }
 
 /**
- * Fields of a plan.
+ * Balance and curvature of the form.
  * @param warp direction the prestress is measured along, as the job gives it; null: the mean of both is taken
- * @source facts.md "Strain and stress"; curvature: angle deficit over a third of the area around (Meyer et al. 2003, section 3.4)
+ * @source curvature: angle deficit over a third of the area around (Meyer et al. 2003, section 3.4)
  */
-export function measureFields(facts: Facts, warp: Vec3 | null): SurfaceFields | null {
-  const { form, panels } = facts;
-  const built = facts.rig ?? facts.assembled;
-  if (form === undefined) return null;
-  const fields: SurfaceFields = { residual: measureFormResidual(form, warp), curvature: measureCurvature(form) };
-  if (panels) {
-    const parts = panels.map((p) =>
+export function measureFormFields(form: FactsForm, warp: Vec3 | null): Pick<SurfaceFields, "residual" | "curvature"> {
+  return { residual: measureFormResidual(form, warp), curvature: measureCurvature(form) };
+}
+
+/**
+ * Stress as patterned, kN/m.
+ * @source facts.md "Strain and stress"
+ */
+export function measurePatterned(
+  facts: Facts,
+  panels: NonNullable<Facts["panels"]>,
+): NonNullable<SurfaceFields["patterned"]> {
+  return join(
+    panels.map((p) =>
       measureStress(p.erected.flat(), p.triangles.flat(), p.flat.flat(), p.permanent, stiffnessOf(facts, p.fabric)),
-    );
-    fields.patterned = { warp: join(parts.map((s) => s.warp)), weft: join(parts.map((s) => s.weft)) };
-  }
-  if (built && panels) {
-    const byId = new Map(panels.map((p) => [p.id, p]));
-    const parts = built.cloth.map((c) => {
+    ),
+  );
+}
+
+/**
+ * Stress as built, kN/m.
+ * @source facts.md "Strain and stress"
+ */
+export function measureBuilt(
+  facts: Facts,
+  built: NonNullable<Facts["assembled"]>,
+): NonNullable<SurfaceFields["built"]> {
+  const byId = new Map(facts.panels?.map((p) => [p.id, p]));
+  const none = { warp: 0, weft: 0 };
+  return join(
+    built.cloth.map((c) => {
       const panel = byId.get(c.panel);
-      const none = { warp: 0, weft: 0 };
       const erected = c.nodes.flatMap((n) => built.nodes[n]);
       return measureStress(
         erected,
@@ -49,22 +65,24 @@ export function measureFields(facts: Facts, warp: Vec3 | null): SurfaceFields | 
         panel?.permanent ?? none,
         stiffnessOf(facts, panel?.fabric ?? ""),
       );
-    });
-    fields.built = { warp: join(parts.map((s) => s.warp)), weft: join(parts.map((s) => s.weft)) };
-  }
-  return fields;
+    }),
+  );
 }
+
+type Stress = NonNullable<SurfaceFields["patterned"]>;
 
 function stiffnessOf(facts: Facts, fabric: string): ClothStiffness {
   return buildStiffness(facts.fabrics[fabric] ?? Object.values(facts.fabrics)[0]);
 }
 
-function join(parts: Float32Array<ArrayBuffer>[]): Float32Array<ArrayBuffer> {
-  const out = new Float32Array(parts.reduce((n, p) => n + p.length, 0));
+function join(parts: Stress[]): Stress {
+  const size = parts.reduce((n, p) => n + p.warp.length, 0);
+  const out = { warp: new Float32Array(size), weft: new Float32Array(size) };
   let at = 0;
-  for (const part of parts) {
-    out.set(part, at);
-    at += part.length;
+  for (const { warp, weft } of parts) {
+    out.warp.set(warp, at);
+    out.weft.set(weft, at);
+    at += warp.length;
   }
   return out;
 }
@@ -76,7 +94,7 @@ function measureStress(
   flat: number[] | Vec2,
   permanent: { warp: number; weft: number },
   d: ClothStiffness,
-): { warp: Float32Array<ArrayBuffer>; weft: Float32Array<ArrayBuffer> } {
+): Stress {
   const corners = Uint32Array.from(tri);
   const metric = buildErectedMetric(Float64Array.from(xyz), corners);
   const xy = Float64Array.from(flat, (v, i) => (v / 1000) * (1 + (i % 2 === 0 ? permanent.warp : permanent.weft)));

@@ -2,7 +2,7 @@
 import { lazy, Suspense } from "react";
 import type { Facts } from "../../core/records/facts.ts";
 import type { FieldName } from "../store/bookStore.ts";
-import type { SentFields } from "../worker/messages.ts";
+import type { SentFields } from "../worker/growingFacts.ts";
 
 const SolidView = lazy(async () => ({ default: (await import("./SolidView.tsx")).SolidView }));
 

@@ -4,11 +4,11 @@ import type { Facts } from "../../core/records/facts.ts";
 import { colourOf, type Scale, scaleOf } from "../colour/scales.ts";
 import { bookStore, type FieldName } from "../store/bookStore.ts";
 import { useBook } from "../store/useBook.ts";
-import type { SentFields } from "../worker/messages.ts";
-import { buildModel, fieldValues, type Model } from "./buildModel.ts";
+import type { SentFields } from "../worker/growingFacts.ts";
+import { buildModel, isOfPoints, type Model, nameModel, shapeOf, valuesOf } from "./buildModel.ts";
 import { Grips } from "./Grips.tsx";
 import { Legend } from "./Legend.tsx";
-import type { SceneInk } from "./paintScene.ts";
+import { linearise, type SceneInk } from "./paintScene.ts";
 import { createScene, type Project, type SceneView } from "./scene.ts";
 
 /** Inks of the theme, from the style sheet. */
@@ -34,18 +34,18 @@ function readInk(element: Element): SceneInk {
 /** Steps of a scale that colours are worked out for. */
 const STEPS = 1024;
 
-function paintPoints(model: Model, scale: Scale | null): Float32Array | null {
-  if (scale === null || model.value.length === 0) return null;
+/** Colours of points by their values, as shares of light. */
+function paintPoints(value: Float32Array, scale: Scale | null): Float32Array | null {
+  if (scale === null || value.length === 0) return null;
   const { min, max } = scale;
-  const table = Array.from({ length: STEPS + 1 }, (_, i) => colourOf(scale, min + (i / STEPS) * (max - min)));
-  const none = colourOf(scale, Number.NaN);
-  const out = new Float32Array(3 * model.value.length);
-  for (let i = 0; i < model.value.length; i++) {
-    const at = Math.round((STEPS * (model.value[i] - min)) / (max - min));
-    const [r, g, b] = Number.isNaN(at) ? none : table[Math.min(Math.max(at, 0), STEPS)];
-    out[3 * i] = r;
-    out[3 * i + 1] = g;
-    out[3 * i + 2] = b;
+  const none = STEPS + 1;
+  const steps = Array.from({ length: none }, (_, i) => colourOf(scale, min + (i / STEPS) * (max - min)));
+  const table = linearise(Float32Array.from([...steps, colourOf(scale, Number.NaN)].flat()));
+  const out = new Float32Array(3 * value.length);
+  for (let i = 0; i < value.length; i++) {
+    const at = Math.round((STEPS * (value[i] - min)) / (max - min));
+    const row = 3 * (Number.isNaN(at) ? none : Math.min(Math.max(at, 0), STEPS));
+    for (let k = 0; k < 3; k++) out[3 * i + k] = table[row + k];
   }
   return out;
 }
@@ -141,7 +141,7 @@ function useScene(model: Model | null, scale: Scale | null, words: string) {
   useEffect(() => {
     if (model === null || view.current === null) return;
     labels.current = model.labels;
-    view.current.show(job, model, paintPoints(model, scale));
+    view.current.show(job, model, paintPoints(model.value, scale));
   }, [job, model, scale]);
   // while a seam's end is slid the surface is not drawn again: without a graphics card that would block the page
   const held = useBook((b) => b.hand !== null && b.hand.laid === null);
@@ -180,11 +180,17 @@ export function SolidView(props: {
   grips?: boolean;
 }) {
   const { facts, fields, field, words, grips = false } = props;
-  const model = useMemo(() => buildModel(facts, fields, field), [facts, fields, field]);
-  const scale = useMemo(() => {
-    const values = fieldValues(fields, field);
-    return values === null ? null : scaleOf(field, values, facts.form?.stress ?? { warp: 1, weft: 1 });
-  }, [facts, fields, field]);
+  const { form, seams, rig } = facts;
+  const shape = shapeOf(fields, field);
+  const values = valuesOf(fields, field);
+  const panels = fields?.panelsShape;
+  const over = useMemo(() => nameModel({ form, seams, rig }, panels), [form, seams, rig, panels]);
+  const apart = !isOfPoints(field);
+  const model = useMemo(() => shape && buildModel(shape, values, apart, over), [shape, values, apart, over]);
+  const scale = useMemo(
+    () => values && scaleOf(field, values, form?.stress ?? { warp: 1, weft: 1 }),
+    [form, values, field],
+  );
   const { host, names, view, broken, hookGrips, project } = useScene(model, scale, words);
   const pointed = useBook((b) => b.pointed);
   const chosen = useBook((b) => b.chosen);
@@ -214,7 +220,7 @@ export function SolidView(props: {
           </span>
         ))}
       </div>
-      {grips && facts.form && !broken && <Grips form={facts.form} project={project} hook={hookGrips} />}
+      {grips && form && !broken && <Grips form={form} project={project} hook={hookGrips} />}
       {scale !== null && <Legend scale={scale} />}
       {broken && (
         <p className="broken">

@@ -1,7 +1,8 @@
 // From the facts to what the solid view draws: points with normals and values, triangles, lines. Knows no three.
 import type { Facts, FactsForm } from "../../core/records/facts.ts";
 import type { FieldName } from "../store/bookStore.ts";
-import type { SentFields } from "../worker/messages.ts";
+import type { SentFields } from "../worker/growingFacts.ts";
+import type { Shape } from "../worker/shapes.ts";
 
 /** A line over the surface. */
 export interface ModelLine {
@@ -26,42 +27,21 @@ export interface Model {
   labels: { id: string; at: number[] }[];
 }
 
-interface Patch {
-  id: string;
-  vertices: number[][];
-  triangles: number[][];
+/** The surface a field lives on; null before the form is there. */
+export function shapeOf(fields: SentFields | null, field: FieldName): Shape | null {
+  if (fields === null) return null;
+  const { formShape, panelsShape, builtShape } = fields;
+  if ((field === "builtWarp" || field === "builtWeft") && builtShape) return builtShape;
+  return isOfPoints(field) ? formShape : (panelsShape ?? formShape);
 }
 
-/** Patches of the surface at the place the field lives on. */
-function patchesOf(facts: Facts, form: FactsForm, field: FieldName): Patch[] {
-  const { panels } = facts;
-  const built = facts.rig ?? facts.assembled;
-  if ((field === "builtWarp" || field === "builtWeft") && built) {
-    return [{ id: "", vertices: built.nodes, triangles: built.cloth.map((c) => c.nodes) }];
-  }
-  if (panels === undefined || field === "residual" || field === "curvature") {
-    return [{ id: "", vertices: form.vertices, triangles: form.triangles }];
-  }
-  return panels.map((p) => ({ id: p.id, vertices: p.erected, triangles: p.triangles }));
+/** Whether the values of a field are those of the form's points; else they are those of triangles. */
+export function isOfPoints(field: FieldName): boolean {
+  return field === "residual" || field === "curvature";
 }
 
-/** Sums of the triangles' vector areas at each vertex: directions of the normals. */
-function sumNormals({ vertices, triangles }: Patch): Float64Array {
-  const sum = new Float64Array(3 * vertices.length);
-  for (const [a, b, c] of triangles) {
-    const [p, q, r] = [vertices[a], vertices[b], vertices[c]];
-    const u = [q[0] - p[0], q[1] - p[1], q[2] - p[2]];
-    const v = [r[0] - p[0], r[1] - p[1], r[2] - p[2]];
-    const n = [u[1] * v[2] - u[2] * v[1], u[2] * v[0] - u[0] * v[2], u[0] * v[1] - u[1] * v[0]];
-    for (const i of [a, b, c]) for (let k = 0; k < 3; k++) sum[3 * i + k] += n[k];
-  }
-  return sum;
-}
-
-function valuesOf(
-  fields: SentFields | null,
-  field: FieldName,
-): { values: Float32Array; of: "triangle" | "vertex" } | null {
+/** The values a field has, of vertices or of triangles. */
+export function valuesOf(fields: SentFields | null, field: FieldName): Float32Array<ArrayBuffer> | null {
   const found = {
     none: undefined,
     residual: fields?.residual,
@@ -71,24 +51,20 @@ function valuesOf(
     builtWarp: fields?.built?.warp,
     builtWeft: fields?.built?.weft,
   }[field];
-  if (found === undefined) return null;
-  return { values: found, of: field === "residual" || field === "curvature" ? "vertex" : "triangle" };
+  return found ?? null;
 }
 
-/** The values a field has, for the scale. */
-export function fieldValues(fields: SentFields | null, field: FieldName): Float32Array | null {
-  return valuesOf(fields, field)?.values ?? null;
-}
+/** What of a plan has lines over its surface. */
+type Named = { [K in "form" | "seams" | "rig"]: Facts[K] | undefined };
 
-function linesOf(facts: Facts, form: FactsForm): ModelLine[] {
+function linesOf({ seams, rig }: Named, form: FactsForm): ModelLine[] {
   const inner = ["ridge", "valley", "belt"];
   const lines: ModelLine[] = form.edges.map((e) => ({
     id: e.id,
     kind: inner.includes(e.kind) ? "inner" : (e.kind as ModelLine["kind"]),
     points: e.vertices.map((v) => form.vertices[v]),
   }));
-  for (const s of facts.seams ?? []) lines.push({ id: s.id, kind: "seam", points: s.path });
-  const { rig } = facts;
+  for (const s of seams ?? []) lines.push({ id: s.id, kind: "seam", points: s.path });
   for (const a of rig?.adjusters ?? [])
     lines.push({ id: a.id, kind: "adjuster", points: a.nodes.map((n) => rig?.nodes[n] ?? []) });
   for (const s of (rig?.struts ?? []).filter((q) => !q.brace))
@@ -100,66 +76,54 @@ function middleOf(points: readonly number[][]): number[] {
   return points[Math.floor(points.length / 2)] ?? [0, 0, 0];
 }
 
-function labelsOf(facts: Facts, form: FactsForm, lines: readonly ModelLine[]): Model["labels"] {
+function labelsOf(form: FactsForm, panels: Shape | undefined, lines: readonly ModelLine[]): Model["labels"] {
   const labels = lines.filter((l) => l.kind !== "strut").map((l) => ({ id: l.id, at: middleOf(l.points) }));
-  for (const p of facts.panels ?? []) {
-    const mean = [0, 1, 2].map((k) => p.erected.reduce((s, v) => s + v[k], 0) / p.erected.length);
-    const near = (v: number[]) => v.reduce((s, x, k) => s + (x - mean[k]) ** 2, 0);
-    labels.push({
-      id: p.id,
-      at: p.erected.reduce((best: number[], v) => (near(v) < near(best) ? v : best), p.erected[0]),
-    });
-  }
+  panels?.owners.forEach((id, i) => {
+    labels.push({ id, at: panels.middles[i] });
+  });
   for (const a of form.anchors.slice(0, 40)) labels.push({ id: a.id, at: form.vertices[a.vertex] });
   return labels;
 }
 
-/** The model of a plan, coloured by a field; null before the form is there. */
-export function buildModel(facts: Facts, fields: SentFields | null, field: FieldName): Model | null {
-  const { form } = facts;
-  if (form === undefined) return null;
-  const patches = patchesOf(facts, form, field);
-  const found = valuesOf(fields, field);
-  const apart = found?.of === "triangle";
-  const nT = patches.reduce((n, p) => n + p.triangles.length, 0);
-  const nP = apart ? 3 * nT : patches.reduce((n, p) => n + p.vertices.length, 0);
-  const position = new Float32Array(3 * nP);
-  const normal = new Float32Array(3 * nP);
-  const triangles = new Uint32Array(3 * nT);
-  const value = new Float32Array(found === null ? 0 : nP);
-  const owner = new Uint16Array(nP);
-  let point = 0;
-  let corner = 0;
-  patches.forEach((patch, i) => {
-    const sums = sumNormals(patch);
-    const put = (v: number) => {
-      const [x, y, z] = [sums[3 * v], sums[3 * v + 1], sums[3 * v + 2]];
-      const size = Math.sqrt(x * x + y * y + z * z) || 1;
-      const [p, q, r] = patch.vertices[v];
-      position.set([p, q, r], 3 * point);
-      normal.set([x / size, y / size, z / size], 3 * point);
-      owner[point] = i;
-      if (found !== null) value[point] = found.values[apart ? Math.floor(point / 3) : v];
-      point++;
-    };
-    const first = point;
-    if (!apart) for (let v = 0; v < patch.vertices.length; v++) put(v);
-    for (const triangle of patch.triangles) {
-      for (const v of triangle) {
-        triangles[corner++] = apart ? point : first + v;
-        if (apart) put(v);
-      }
-    }
-  });
-  const lines = linesOf(facts, form);
-  return {
-    position,
-    normal,
-    triangles,
-    value,
-    owner,
-    owners: patches.map((p) => p.id),
-    lines,
-    labels: labelsOf(facts, form, lines),
+/** A shape whose triangles have their own corners, since values are those of triangles. */
+function spread(shape: Shape, values: Float32Array): Omit<Model, "lines" | "labels" | "owners"> {
+  const { triangles: corners } = shape;
+  const n = corners.length;
+  const out = {
+    position: new Float32Array(3 * n),
+    normal: new Float32Array(3 * n),
+    triangles: Uint32Array.from({ length: n }, (_, i) => i),
+    value: new Float32Array(n),
+    owner: new Uint16Array(n),
   };
+  for (let i = 0; i < n; i++) {
+    const v = corners[i];
+    for (let k = 0; k < 3; k++) {
+      out.position[3 * i + k] = shape.position[3 * v + k];
+      out.normal[3 * i + k] = shape.normal[3 * v + k];
+    }
+    out.value[i] = values[(i / 3) | 0];
+    out.owner[i] = shape.owner[v];
+  }
+  return out;
+}
+
+/** Lines and names over a surface. */
+export function nameModel(facts: Named, panels: Shape | undefined): Pick<Model, "lines" | "labels"> {
+  const { form } = facts;
+  if (form === undefined) return { lines: [], labels: [] };
+  const lines = linesOf(facts, form);
+  return { lines, labels: labelsOf(form, panels, lines) };
+}
+
+/** What is drawn of a shape, its values with it: one for each point, or, `apart`, one for each triangle. */
+export function buildModel(
+  shape: Shape,
+  values: Float32Array<ArrayBuffer> | null,
+  apart: boolean,
+  over: Pick<Model, "lines" | "labels">,
+): Model {
+  const { position, normal, triangles, owner, owners } = shape;
+  if (apart && values !== null) return { owners, ...over, ...spread(shape, values) };
+  return { position, normal, triangles, value: values ?? new Float32Array(0), owner, owners, ...over };
 }

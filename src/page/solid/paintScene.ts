@@ -1,6 +1,6 @@
 // Colours of the scene: cloth or a field on the points of the surface, inks on its lines, and the light on what is pointed at.
 import { type BufferAttribute, type BufferGeometry, Color, type Mesh, type MeshLambertMaterial } from "three";
-import type { LineMaterial } from "three/addons/lines/LineMaterial.js";
+import { LineMaterial } from "three/addons/lines/LineMaterial.js";
 import type { LineSegments2 } from "three/addons/lines/LineSegments2.js";
 import type { Model, ModelLine } from "./buildModel.ts";
 
@@ -30,7 +30,9 @@ export interface SceneParts {
   /** The mesh's own triangles, and fewer of them for turning; null: not yet made. */
   whole: BufferGeometry | null;
   fewer: BufferGeometry | null;
-  lines: { line: ModelLine; object: LineSegments2; material: LineMaterial }[];
+  lines: { line: ModelLine; object: LineSegments2 }[];
+  /** Of lines, by their kind and whether they are lit: one for each line would be set up anew with every model. */
+  inks: Map<string, LineMaterial>;
   colours: Float32Array | null;
   ink: SceneInk;
   lit: Set<string>;
@@ -81,10 +83,22 @@ export function paintInPlace(parts: SceneParts): void {
   attribute.needsUpdate = true;
 }
 
+/** The material of a line, lit or not. */
+export function inkOf({ inks, lit }: Pick<SceneParts, "inks" | "lit">, { id, kind }: ModelLine): LineMaterial {
+  const name = `${kind} ${lit.has(id)}`;
+  const known = inks.get(name);
+  if (known !== undefined) return known;
+  const fresh = new LineMaterial();
+  inks.set(name, fresh);
+  return fresh;
+}
+
 function lightLinesInPlace(parts: SceneParts): void {
-  for (const { line, material } of parts.lines) {
+  for (const { line, object } of parts.lines) {
     const lit = parts.lit.has(line.id);
+    const material = inkOf(parts, line);
     material.color.set(lit ? parts.ink.lit : parts.ink.lines[line.kind]);
     material.linewidth = density() * (WIDTHS[line.kind] + (lit ? 3 : 0));
+    object.material = material;
   }
 }

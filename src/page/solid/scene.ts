@@ -15,17 +15,16 @@ import {
   WebGLRenderer,
 } from "three";
 import { OrbitControls } from "three/addons/controls/OrbitControls.js";
-import { LineMaterial } from "three/addons/lines/LineMaterial.js";
 import { LineSegments2 } from "three/addons/lines/LineSegments2.js";
 import { LineSegmentsGeometry } from "three/addons/lines/LineSegmentsGeometry.js";
 import type { Model, ModelLine } from "./buildModel.ts";
 import { coarsen } from "./coarsen.ts";
 import { BROWSER_CLOCK, createPace } from "./pace.ts";
-import { density, linearise, paintInPlace, type SceneInk, type SceneParts } from "./paintScene.ts";
+import { density, inkOf, paintInPlace, type SceneInk, type SceneParts } from "./paintScene.ts";
 
 export interface SceneView {
   /**
-   * Puts a model of a job in; `colours` 3*nP red, green, blue of each point, or null for plain cloth. Another job is shown whole,
+   * Puts a model of a job in; `colours` 3*nP red, green, blue of each point as shares of light, or null for plain cloth. Another job is shown whole,
    * the same one as it was turned.
    */
   show: (job: string, model: Model, colours: Float32Array | null) => void;
@@ -50,21 +49,25 @@ function segmentsOf(line: ModelLine): Float32Array {
   return out;
 }
 
-function buildMesh(model: Model): Mesh<BufferGeometry, MeshLambertMaterial> {
+function buildMesh(model: Model, cloth: MeshLambertMaterial): Mesh<BufferGeometry, MeshLambertMaterial> {
   const geometry = new BufferGeometry();
   geometry.setAttribute("position", new BufferAttribute(model.position, 3));
   geometry.setAttribute("normal", new BufferAttribute(model.normal, 3));
   geometry.setAttribute("color", new BufferAttribute(new Float32Array(model.position.length), 3));
   geometry.setIndex(new BufferAttribute(model.triangles, 1));
   geometry.computeBoundingSphere();
-  const material = new MeshLambertMaterial({
+  return new Mesh(geometry, cloth);
+}
+
+/** What all cloth is made of: a material of its own for each model would be set up anew each time. */
+function buildCloth(): MeshLambertMaterial {
+  return new MeshLambertMaterial({
     vertexColors: true,
     side: DoubleSide,
     polygonOffset: true,
     polygonOffsetFactor: 3,
     polygonOffsetUnits: 3,
   });
-  return new Mesh(geometry, material);
 }
 
 /**
@@ -90,6 +93,7 @@ export function createScene(canvas: HTMLCanvasElement, ink: SceneInk): SceneView
     whole: null,
     fewer: null,
     lines: [],
+    inks: new Map(),
     colours: null,
     ink,
     lit: new Set(),
@@ -108,7 +112,7 @@ export function createScene(canvas: HTMLCanvasElement, ink: SceneInk): SceneView
     canvas.dataset.detail = less ? "less" : "all";
     sun.position.copy(camera.position).add(new Vector3(-3, -2, 8));
     renderer.render(scene, camera);
-    told?.(projector(camera, canvas));
+    told?.(project);
   };
   const draw = () => {
     if (asked === 0) asked = requestAnimationFrame(drawNow);
@@ -118,7 +122,22 @@ export function createScene(canvas: HTMLCanvasElement, ink: SceneInk): SceneView
   controls.addEventListener("start", () => {
     parts.turned = true;
   });
-  const view = handleView({ canvas, camera, controls, renderer, scene, parts, draw, move: pace.move });
+  const size: CanvasSize = { wide: canvas.clientWidth, high: canvas.clientHeight };
+  const project = projector(camera, size);
+  const cloth = buildCloth();
+  const view = handleView({
+    canvas,
+    size,
+    camera,
+    controls,
+    renderer,
+    scene,
+    parts,
+    cloth,
+    project,
+    draw,
+    move: pace.move,
+  });
   return {
     ...view,
     watch: (onDraw) => {
@@ -130,24 +149,27 @@ export function createScene(canvas: HTMLCanvasElement, ink: SceneInk): SceneView
 /** Place of a point of the model on the canvas, CSS pixels, and its depth -1…1. */
 export type Project = (at: readonly number[]) => { x: number; y: number; depth: number };
 
-function projector(camera: OrthographicCamera, canvas: HTMLCanvasElement): Project {
+/** What the camera is framed for, CSS pixels: asked of the canvas at every point, the page would be laid out again each time. */
+interface CanvasSize {
+  wide: number;
+  high: number;
+}
+
+function projector(camera: OrthographicCamera, size: CanvasSize): Project {
+  const p = new Vector3();
   return (at) => {
-    const p = new Vector3(at[0], at[1], at[2]).project(camera);
-    return { x: ((p.x + 1) / 2) * canvas.clientWidth, y: ((1 - p.y) / 2) * canvas.clientHeight, depth: p.z };
+    p.set(at[0], at[1], at[2]).project(camera);
+    return { x: ((p.x + 1) / 2) * size.wide, y: ((1 - p.y) / 2) * size.high, depth: p.z };
   };
 }
 
 function clearInPlace(scene: Scene, parts: SceneParts): void {
-  if (parts.mesh !== null) {
-    scene.remove(parts.mesh);
-    parts.mesh.material.dispose();
-  }
+  if (parts.mesh !== null) scene.remove(parts.mesh);
   parts.whole?.dispose();
   parts.fewer?.dispose();
-  for (const { object, material } of parts.lines) {
+  for (const { object } of parts.lines) {
     scene.remove(object);
     object.geometry.dispose();
-    material.dispose();
   }
   parts.mesh = parts.whole = parts.fewer = null;
   parts.lines = [];
@@ -155,11 +177,14 @@ function clearInPlace(scene: Scene, parts: SceneParts): void {
 
 interface Stage {
   canvas: HTMLCanvasElement;
+  size: CanvasSize;
   camera: OrthographicCamera;
   controls: OrbitControls;
   renderer: WebGLRenderer;
   scene: Scene;
   parts: SceneParts;
+  cloth: MeshLambertMaterial;
+  project: Project;
   draw: () => void;
   /** Draws since the view was turned. */
   move: () => void;
@@ -184,12 +209,12 @@ function centreInPlace({ camera, controls, parts }: Stage): [number, number] {
   if (model === null) return [1, 1];
   const right = new Vector3().setFromMatrixColumn(camera.matrixWorld, 0);
   const above = new Vector3().setFromMatrixColumn(camera.matrixWorld, 1);
-  const at = new Vector3();
   const x = [Number.POSITIVE_INFINITY, Number.NEGATIVE_INFINITY];
   const y = [Number.POSITIVE_INFINITY, Number.NEGATIVE_INFINITY];
+  const [begun, raised] = [right, above].map((axis) => axis.dot(controls.target));
   const take = (a: number, b: number, c: number) => {
-    at.set(a, b, c).sub(controls.target);
-    const [u, v] = [at.dot(right), at.dot(above)];
+    const u = a * right.x + b * right.y + c * right.z - begun;
+    const v = a * above.x + b * above.y + c * above.z - raised;
     if (u < x[0]) x[0] = u;
     if (u > x[1]) x[1] = u;
     if (v < y[0]) y[0] = v;
@@ -205,8 +230,9 @@ function centreInPlace({ camera, controls, parts }: Stage): [number, number] {
 }
 
 function frameInPlace(stage: Stage): void {
-  const { canvas, camera, renderer, parts } = stage;
+  const { canvas, size, camera, renderer, parts } = stage;
   const [w, h] = [Math.max(canvas.clientWidth, 1), Math.max(canvas.clientHeight, 1)];
+  Object.assign(size, { wide: w, high: h });
   const [wide, high] = [w, h].map((n) => Math.floor(density() * n));
   if (canvas.width !== wide || canvas.height !== high) renderer.setSize(wide, high, false);
   const radius = parts.mesh?.geometry.boundingSphere?.radius ?? 1;
@@ -239,22 +265,21 @@ function fitInPlace(stage: Stage): void {
 }
 
 function handleView(stage: Stage): Omit<SceneView, "watch"> {
-  const { canvas, camera, controls, scene, parts, draw, move } = stage;
+  const { size, camera, controls, scene, parts, draw, move } = stage;
   const ray = new Raycaster();
   const hit = (x: number, y: number) => {
     if (parts.mesh === null) return undefined;
-    ray.setFromCamera(new Vector2((2 * x) / canvas.clientWidth - 1, 1 - (2 * y) / canvas.clientHeight), camera);
+    ray.setFromCamera(new Vector2((2 * x) / size.wide - 1, 1 - (2 * y) / size.high), camera);
     return ray.intersectObject(parts.mesh)[0];
   };
   return {
     show: (job, model, colours) => {
       clearInPlace(scene, parts);
-      const linear = colours === null ? null : linearise(colours);
       Object.assign(parts, {
         job,
         model,
-        colours: linear,
-        mesh: buildMesh(model),
+        colours,
+        mesh: buildMesh(model, stage.cloth),
         turned: parts.turned && job === parts.job,
       });
       if (parts.mesh !== null) scene.add(parts.mesh);
@@ -262,10 +287,12 @@ function handleView(stage: Stage): Omit<SceneView, "watch"> {
       parts.lines = model.lines
         .filter((l) => l.points.length > 1)
         .map((line) => {
-          const material = new LineMaterial({ color: parts.ink.lines[line.kind] });
-          const object = new LineSegments2(new LineSegmentsGeometry().setPositions(segmentsOf(line)), material);
+          const object = new LineSegments2(
+            new LineSegmentsGeometry().setPositions(segmentsOf(line)),
+            inkOf(parts, line),
+          );
           scene.add(object);
-          return { line, object, material };
+          return { line, object };
         });
       parts.stale = true;
       if (parts.turned) frameInPlace(stage);
@@ -313,7 +340,7 @@ function handleView(stage: Stage): Omit<SceneView, "watch"> {
       const id = point === null ? null : (parts.model?.owners[parts.model.owner[point] ?? 0] ?? null);
       return id === "" ? null : id;
     },
-    project: projector(camera, canvas),
+    project: stage.project,
     resize: () => {
       frameInPlace(stage);
       draw();

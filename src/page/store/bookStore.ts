@@ -5,7 +5,8 @@ import type { CorrectedPlan } from "../../core/plan/correctPlan.ts";
 import type { Finding, Station } from "../../core/problem.ts";
 import type { Facts } from "../../core/records/facts.ts";
 import type { Job } from "../../core/records/job.ts";
-import type { PlanFault, SentFields } from "../worker/messages.ts";
+import type { Grown, SentFields } from "../worker/growingFacts.ts";
+import type { PlanFault } from "../worker/messages.ts";
 import type { Grips, Hand, Tied, Weighed } from "./hand.ts";
 import type { Project } from "./project.ts";
 
@@ -34,7 +35,7 @@ export interface ResultSlice {
   facts: Facts | null;
   fields: SentFields | null;
   /** What a plan under way has worked out, by the station it goes up to; each leaf is drawn once from the part that shows it. */
-  soFar: Partial<Record<Station, { facts: Facts; fields: SentFields | null }>>;
+  soFar: Partial<Record<Station, Grown>>;
   /** The project the facts are of. */
   planned: Project | null;
   fault: PlanFault | null;

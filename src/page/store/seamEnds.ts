@@ -6,49 +6,68 @@ export interface EdgePlace {
   at: number;
 }
 
-/** The place on an edge nearest to a point, and its distance. */
-function placeOn(
-  form: FactsForm,
-  edge: FactsForm["edges"][number],
-  p: readonly number[],
-): { at: number; distance: number } {
-  const points = edge.vertices.map((v) => form.vertices[v]);
-  let along = 0;
-  let best = { along: 0, distance: Number.POSITIVE_INFINITY };
-  for (let i = 1; i < points.length; i++) {
-    const [a, b] = [points[i - 1], points[i]];
-    const d = [b[0] - a[0], b[1] - a[1], b[2] - a[2]];
-    const length = Math.hypot(...d);
-    const share = d.reduce((s, x, k) => s + x * (p[k] - a[k]), 0) / (length * length || 1);
-    const t = Math.min(Math.max(share, 0), 1);
-    const distance = Math.hypot(...d.map((x, k) => a[k] + t * x - p[k]));
-    if (distance < best.distance) best = { along: along + t * length, distance };
-    along += length;
+/** Points of an edge and the way along it to each of them, m. */
+interface Run {
+  points: readonly (readonly number[])[];
+  along: Float64Array;
+}
+
+/** Runs of the edges of a form, measured once: grips are put in their places at every drawing. */
+const measured = new WeakMap<FactsForm, Map<string, Run>>();
+
+function runsOf(form: FactsForm): Map<string, Run> {
+  const known = measured.get(form);
+  if (known !== undefined) return known;
+  const runs = new Map<string, Run>();
+  for (const { id, vertices } of form.edges) {
+    const points = vertices.map((v) => form.vertices[v]);
+    const along = new Float64Array(points.length);
+    for (let i = 1; i < points.length; i++) {
+      const [[a, b, c], [p, q, r]] = [points[i - 1], points[i]];
+      along[i] = along[i - 1] + Math.hypot(p - a, q - b, r - c);
+    }
+    runs.set(id, { points, along });
   }
-  return { at: best.along / (along || 1), distance: best.distance };
+  measured.set(form, runs);
+  return runs;
+}
+
+/** The place on an edge nearest to a point, and its distance. */
+function placeOn({ points, along }: Run, [x, y, z]: readonly number[]): { at: number; distance: number } {
+  let at = 0;
+  let least = Number.POSITIVE_INFINITY;
+  for (let i = 1; i < points.length; i++) {
+    const [[a, b, c], [p, q, r]] = [points[i - 1], points[i]];
+    const [u, v, w] = [p - a, q - b, r - c];
+    const share = (u * (x - a) + v * (y - b) + w * (z - c)) / (u * u + v * v + w * w || 1);
+    const t = Math.min(Math.max(share, 0), 1);
+    const distance = Math.hypot(a + t * u - x, b + t * v - y, c + t * w - z);
+    if (distance < least) {
+      least = distance;
+      at = along[i - 1] + t * (along[i] - along[i - 1]);
+    }
+  }
+  return { at: at / (along.at(-1) || 1), distance: least };
 }
 
 /** The place at a share of an edge, m. */
 export function pointOnEdge(form: FactsForm, place: EdgePlace): number[] | null {
-  const edge = form.edges.find((e) => e.id === place.edge);
-  if (edge === undefined) return null;
-  const points = edge.vertices.map((v) => form.vertices[v]);
-  const arc = [0];
-  for (let i = 1; i < points.length; i++)
-    arc.push(arc[i - 1] + Math.hypot(...points[i].map((x, k) => x - points[i - 1][k])));
-  const s = place.at * (arc.at(-1) ?? 0);
+  const run = runsOf(form).get(place.edge);
+  if (run === undefined) return null;
+  const { points, along } = run;
+  const s = place.at * (along.at(-1) ?? 0);
   let i = 1;
-  while (i < points.length - 1 && arc[i] < s) i++;
-  const t = Math.min(Math.max((s - arc[i - 1]) / (arc[i] - arc[i - 1] || 1), 0), 1);
+  while (i < points.length - 1 && along[i] < s) i++;
+  const t = Math.min(Math.max((s - along[i - 1]) / (along[i] - along[i - 1] || 1), 0), 1);
   return points[i - 1].map((x, k) => x + t * (points[i][k] - x));
 }
 
 /** Nearest place on any edge of the form, and its distance. */
 function nearestPlace(form: FactsForm, p: readonly number[]): { place: EdgePlace; distance: number } | null {
   let found: { place: EdgePlace; distance: number } | null = null;
-  for (const edge of form.edges) {
-    const { at, distance } = placeOn(form, edge, p);
-    if (found === null || distance < found.distance) found = { place: { edge: edge.id, at }, distance };
+  for (const [edge, run] of runsOf(form)) {
+    const { at, distance } = placeOn(run, p);
+    if (found === null || distance < found.distance) found = { place: { edge, at }, distance };
   }
   return found;
 }

@@ -1,7 +1,7 @@
 // What a leaf shows of the plan: the part of a plan under way that has come as far as the leaf, else the latest whole plan.
 import type { Station } from "../../core/problem.ts";
 import type { Facts } from "../../core/records/facts.ts";
-import type { SentFields } from "../worker/messages.ts";
+import type { Grown, SentFields } from "../worker/growingFacts.ts";
 import type { Book, Leaf } from "./bookStore.ts";
 import { useBook } from "./useBook.ts";
 
@@ -17,7 +17,7 @@ const OF_LEAF: Record<Leaf, Station> = {
 };
 
 /** The part of a plan under way that shows all of a leaf, or null. */
-function partFor(book: Book, leaf: Leaf): { facts: Facts; fields: SentFields | null } | null {
+function partFor(book: Book, leaf: Leaf): Grown | null {
   return book.soFar[OF_LEAF[leaf]] ?? null;
 }
 

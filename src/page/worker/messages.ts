@@ -2,13 +2,12 @@
 import type { ComparedLayout } from "../../core/plan/compareLayouts.ts";
 import type { CorrectedPlan } from "../../core/plan/correctPlan.ts";
 import type { Grip, MadeRoof, SeenPanel } from "../../core/plan/dragSeam.ts";
-import type { SurfaceFields } from "../../core/plan/measureFields.ts";
 import type { KeptRound } from "../../core/plan/partLog.ts";
 import type { Finding, Station } from "../../core/problem.ts";
 import type { Facts, FactsSeam } from "../../core/records/facts.ts";
 import type { EdgePlace, Job, SeamDecision } from "../../core/records/job.ts";
-
-export type SentFields = SurfaceFields;
+import type { Added } from "./growingFacts.ts";
+import type { Slice } from "./inParts.ts";
 
 /** A PlanError, or a fault of the program, as a plain record. */
 export interface PlanFault {
@@ -26,7 +25,8 @@ export type Request =
       /** Takes the roof once its panels are made, for who drags its seams. */
       roofs: MessagePort;
     }
-  | { kind: "papers"; run: number; facts: Facts }
+  /** facts null: of the plan this worker made last. */
+  | { kind: "papers"; run: number; facts: Facts | null }
   | {
       kind: "correct";
       run: number;
@@ -42,9 +42,11 @@ export type Request =
 export type Reply =
   | { kind: "read"; run: number; job: Job; revision: string }
   | { kind: "progress"; run: number; share: number; words: string; station: Station }
-  /** Facts as far as the plan has come: the work of `station` stands in them. */
-  | { kind: "soFar"; run: number; station: Station; facts: Facts; fields: SurfaceFields | null }
-  | { kind: "planned"; run: number; facts: Facts; fields: SurfaceFields | null }
+  /** Some of what the next `soFar` or `planned` adds. */
+  | { kind: "slice"; run: number; slice: Slice }
+  /** As far as the plan has come: the work of `station` stands in it. */
+  | { kind: "soFar"; run: number; station: Station; added: Added }
+  | { kind: "planned"; run: number; added: Added }
   | { kind: "papers"; run: number; files: { path: string; bytes: Uint8Array<ArrayBuffer> }[]; added: Finding[] }
   | { kind: "corrected"; run: number; corrected: CorrectedPlan }
   | { kind: "failed"; run: number; fault: PlanFault };

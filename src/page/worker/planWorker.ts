@@ -12,12 +12,12 @@ import { writePapers } from "../../core/papers/writePapers.ts";
 import { capNest } from "../../core/plan/capNest.ts";
 import { correctPlan } from "../../core/plan/correctPlan.ts";
 import { writeFactsJson } from "../../core/plan/factsFile.ts";
-import { measureFields, type SurfaceFields } from "../../core/plan/measureFields.ts";
 import { type PlanInput, readPlanInput } from "../../core/plan/readPlanInput.ts";
 import { runPlan } from "../../core/plan/runPlan.ts";
 import { PlanError, type Station } from "../../core/problem.ts";
 import type { Facts } from "../../core/records/facts.ts";
 import { describeFault } from "./describeFault.ts";
+import { createGiver } from "./growingFacts.ts";
 import type { Reply, Request, SentRoof } from "./messages.ts";
 import { openNestThreads } from "./nestThreads.ts";
 
@@ -28,6 +28,8 @@ config({ jitless: true });
 const TICKS = 10;
 
 let catalogues: Catalogues | null = null;
+/** Of the newest plan made here. */
+let last: Facts | null = null;
 let fonts: { regular: Uint8Array; bold: Uint8Array } | null = null;
 
 function post(reply: Reply, transfer: Transferable[] = []): void {
@@ -93,11 +95,11 @@ async function plan(request: Extract<Request, { kind: "plan" }>): Promise<void> 
     station = next;
     cap.onStation(next);
   };
-  const complete = (facts: Facts): Facts => ({ ...facts, findings: [...input.findings, ...facts.findings] });
-  const onFacts = (done: Station, soFar: Facts) => {
-    const facts = complete(soFar);
-    const fields = measureFields(facts, input.job.warp);
-    post({ kind: "soFar", run, station: done, facts, fields }, buffersOf(fields));
+  const give = createGiver(input.job.warp, input.findings);
+  const send = (facts: Facts, kind: { kind: "soFar"; station: Station } | { kind: "planned" }) => {
+    const { added, slices } = give(facts);
+    for (const slice of slices) post({ kind: "slice", run, slice });
+    post({ ...kind, run, added }, buffersIn(added.fields));
   };
   const planned = runPlan(
     input.job,
@@ -105,22 +107,21 @@ async function plan(request: Extract<Request, { kind: "plan" }>): Promise<void> 
     {
       revision: input.revision,
       onStation,
-      onFacts,
+      onFacts: (done, facts) => send(facts, { kind: "soFar", station: done }),
       onRoof: (roof) => request.roofs.postMessage({ run, roof } satisfies SentRoof),
     },
     { onProgress: tell, cancelled: cap.cancelled, elapsed: cap.elapsed, ...(workShares ? { workShares } : {}) },
   );
-  const facts = complete(planned);
-  const fields = measureFields(facts, input.job.warp);
-  post({ kind: "planned", run, facts, fields }, buffersOf(fields));
+  last = { ...planned, findings: [...input.findings, ...planned.findings] };
+  send(planned, { kind: "planned" });
 }
 
 /** Fields are handed over, not copied. */
-function buffersOf(fields: SurfaceFields | null): ArrayBuffer[] {
-  const { residual, curvature, patterned, built } = fields ?? {};
-  return [residual, curvature, patterned?.warp, patterned?.weft, built?.warp, built?.weft].flatMap((b) =>
-    b === undefined ? [] : [b.buffer],
-  );
+function buffersIn(fields: object): ArrayBuffer[] {
+  return Object.values(fields).flatMap((v: unknown) => {
+    if (ArrayBuffer.isView(v)) return v.buffer instanceof ArrayBuffer ? [v.buffer] : [];
+    return typeof v === "object" && v !== null && !Array.isArray(v) ? buffersIn(v) : [];
+  });
 }
 
 async function papers(run: number, facts: Facts): Promise<void> {
@@ -143,7 +144,11 @@ self.onmessage = async (event: MessageEvent<Request>) => {
   try {
     if (request.kind === "plan") await plan(request);
     else if (request.kind === "correct") correct(request);
-    else await papers(request.run, request.facts);
+    else {
+      const facts = request.facts ?? last;
+      if (facts === null) throw new Error("papers were asked for of no plan");
+      await papers(request.run, facts);
+    }
   } catch (error) {
     post({ kind: "failed", run: request.run, fault: describeFault(error) });
   }

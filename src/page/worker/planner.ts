@@ -5,6 +5,7 @@ import { bookStore } from "../store/bookStore.ts";
 import { type Hand, isSameWork, isSliding } from "../store/hand.ts";
 import type { Project } from "../store/project.ts";
 import { openRoofs } from "./dragger.ts";
+import { createTaker } from "./growingFacts.ts";
 import type { PlanFault, Reply, Request } from "./messages.ts";
 
 let worker: Worker | null = null;
@@ -12,6 +13,10 @@ let busy = false;
 let run = 0;
 /** Project or facts the running request is about. */
 let subject: { project: Project } | { facts: Facts } | { readingsOf: Project } | null = null;
+/** Takes in the plan under way. */
+let taker = createTaker();
+/** The newest plan, while the worker that made it is there: it can write its papers without being handed the facts again. */
+let made: Facts | null = null;
 /** To be planned once nothing that goes first is under way. */
 let due: Project | null = null;
 
@@ -34,6 +39,7 @@ function start(): Worker {
 function end(): void {
   worker?.terminate();
   worker = null;
+  made = null;
   busy = false;
 }
 
@@ -54,16 +60,23 @@ function hear(reply: Reply): void {
     case "progress":
       set({ progress: { share: reply.share, words: reply.words, station: reply.station } });
       return;
-    case "soFar":
-      set((b) => ({ soFar: { ...b.soFar, [reply.station]: { facts: reply.facts, fields: reply.fields } } }));
+    case "slice":
+      taker.take(reply.slice);
       return;
-    case "planned":
+    case "soFar": {
+      const grown = taker.join(reply.added);
+      set((b) => ({ soFar: { ...b.soFar, [reply.station]: grown } }));
+      return;
+    }
+    case "planned": {
       busy = false;
+      const { facts, fields } = taker.join(reply.added);
+      made = facts;
       set({
         status: "done",
         soFar: {},
-        facts: reply.facts,
-        fields: reply.fields,
+        facts,
+        fields,
         planned: subject !== null && "project" in subject ? subject.project : null,
         fault: null,
         papers: null,
@@ -71,6 +84,7 @@ function hear(reply: Reply): void {
         hand: handAfter(subject),
       });
       return;
+    }
     case "papers":
       busy = false;
       if (subject !== null && "facts" in subject)
@@ -133,6 +147,7 @@ function wait(words: string): void {
 export function requestPlan(project: Project): void {
   due = null;
   run++;
+  taker = createTaker();
   subject = { project };
   bookStore.setState({
     status: "running",
@@ -151,7 +166,8 @@ export function requestPapers(facts: Facts): void {
   run++;
   subject = { facts };
   bookStore.setState({ writing: true, papersFault: null });
-  send({ kind: "papers", run, facts });
+  if (busy) end();
+  send({ kind: "papers", run, facts: made === facts ? null : facts });
 }
 
 /**
