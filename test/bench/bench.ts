@@ -25,8 +25,8 @@ const CASES: Record<string, { call: string; least: number; run: (args: string[])
       (await import(new URL("./chunks/slideCase.js", import.meta.url).href)).benchSlide(job, mesh),
   },
   first: {
-    call: "first [JOB.json MESH.obj]",
-    least: 0,
+    call: "first JOB.json MESH.obj",
+    least: 2,
     run: async ([job, mesh]) =>
       (await import(new URL("./chunks/firstViewCase.js", import.meta.url).href)).benchFirstView(job, mesh),
   },
