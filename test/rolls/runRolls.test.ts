@@ -4,11 +4,12 @@ import { describe, expect, it } from "vitest";
 import { buildRandom } from "../../src/core/numeric/random.ts";
 import type { PlanError } from "../../src/core/problem.ts";
 import type { NestDecision } from "../../src/core/records/job.ts";
-import type { NestedRoll, NestPiece, StockRoll } from "../../src/core/records/roll.ts";
+import type { NestPiece, StockRoll } from "../../src/core/records/roll.ts";
 import { totalCloth } from "../../src/core/rolls/rollFigures.ts";
 import { runRolls } from "../../src/core/rolls/runRolls.ts";
-import { isSimpleRing, ringArea } from "../../src/core/surface/ring.ts";
+import { isSimpleRing } from "../../src/core/surface/ring.ts";
 import { drawStock } from "../bench/stockCase.ts";
+import { judge, oracleGap, placedPoints } from "./judge.ts";
 
 const OPTIONS: NestDecision = { steps: 40, seconds: null, seed: 1, gap: 0, turn: true, bite: null, pins: [] };
 const ROLL: StockRoll = {
@@ -31,81 +32,6 @@ const piece = (id: string, points: number[], batch: string | null = null): NestP
 });
 const box = (id: string, length: number, width: number, batch: string | null = null) =>
   piece(id, [0, 0, length, 0, length, width, 0, width], batch);
-
-type Points = [number, number][];
-
-function placedPoints(p: NestPiece, at: { rotation: number; x: number; y: number }): Points {
-  const s = at.rotation === 180 ? -1 : 1;
-  return Array.from({ length: p.cut.length / 2 }, (_, i) => [s * p.cut[2 * i] + at.x, s * p.cut[2 * i + 1] + at.y]);
-}
-
-/** Brute force, written apart from the code under test: all segments against all, and winding of sample points. */
-function oracleGap(a: Points, b: Points): number {
-  const inside = (r: Points, [x, y]: [number, number]) => {
-    let angle = 0;
-    for (let i = 0; i < r.length; i++) {
-      const [p, q] = [r[i], r[(i + 1) % r.length]];
-      angle += Math.atan2(
-        (p[0] - x) * (q[1] - y) - (p[1] - y) * (q[0] - x),
-        (p[0] - x) * (q[0] - x) + (p[1] - y) * (q[1] - y),
-      );
-    }
-    return Math.abs(angle) > Math.PI;
-  };
-  const toSegment = ([x, y]: [number, number], p: [number, number], q: [number, number]) => {
-    let best = Infinity;
-    const l2 = (q[0] - p[0]) ** 2 + (q[1] - p[1]) ** 2;
-    const t = Math.max(0, Math.min(1, ((x - p[0]) * (q[0] - p[0]) + (y - p[1]) * (q[1] - p[1])) / l2));
-    best = Math.min(best, Math.hypot(x - p[0] - t * (q[0] - p[0]), y - p[1] - t * (q[1] - p[1])));
-    return best;
-  };
-  const depth = (r: Points, v: [number, number]) =>
-    Math.min(...r.map((p, i) => toSegment(v, p, r[(i + 1) % r.length])));
-  let gap = Infinity;
-  for (const [r, o] of [
-    [a, b],
-    [b, a],
-  ])
-    for (let i = 0; i < o.length; i++) {
-      const [p, q] = [o[i], o[(i + 1) % o.length]];
-      // Points all along the side: a crossing shows as a point that lies deep inside.
-      for (let t = 0; t < 1; t += 1 / 64) {
-        const v: [number, number] = [p[0] + t * (q[0] - p[0]), p[1] + t * (q[1] - p[1])];
-        if (inside(r, v) && depth(r, v) > 0.01) return -1;
-      }
-      gap = Math.min(gap, depth(r, p));
-    }
-  return gap;
-}
-
-function judge(rolls: NestedRoll[], pieces: NestPiece[], gap: number): void {
-  for (const roll of rolls) {
-    const lying = roll.placements.map((at) => ({
-      at,
-      points: placedPoints(pieces.find((p) => p.id === at.panel)!, at),
-    }));
-    let reach = 0;
-    for (const { points, at } of lying)
-      for (const [x, y] of points) {
-        reach = Math.max(reach, x);
-        expect(x, at.panel).toBeGreaterThan(-1e-6);
-        expect(x, at.panel).toBeLessThan(roll.length + 1e-6);
-        expect(y, at.panel).toBeGreaterThan(-1e-6);
-        expect(y, at.panel).toBeLessThan(roll.usableWidth + 1e-6);
-      }
-    expect(reach).toBeCloseTo(roll.used, 6);
-    for (let i = 0; i < lying.length; i++)
-      for (let j = 0; j < i; j++)
-        expect(
-          oracleGap(lying[i].points, lying[j].points),
-          `${lying[i].at.panel} and ${lying[j].at.panel}`,
-        ).toBeGreaterThanOrEqual(gap - 0.01);
-    const area = lying.reduce((sum, l) => sum + ringArea(Float64Array.from(l.points.flat())), 0);
-    expect(roll.utilisation).toBeCloseTo(area / (roll.used * roll.width), 9);
-    expect(roll.lowerBound).toBeLessThanOrEqual(roll.used + 1e-6);
-    expect(roll.lowerBound).toBeGreaterThanOrEqual(area / roll.width - 1e-6);
-  }
-}
 
 describe("exact nests", () => {
   it("tiles rectangles without loss", () => {
@@ -319,36 +245,6 @@ describe("cloth and money", () => {
     const small = Array.from({ length: 12 }, (_, k) => box(`s${k}`, 400, 240));
     const used = (list: NestPiece[]) => runRolls(list, [ROLL], { ...OPTIONS, gap: 10 }).output[0].used;
     expect(used([...small, ...large])).toBeCloseTo(used(large), 6);
-  });
-});
-
-describe("shuffled, renamed, scaled", () => {
-  it("lie as densely within noise, whatever the order and the names", () => {
-    const draw = buildRandom(5);
-    const points = Array.from({ length: 12 }, () => [
-      0,
-      0,
-      900 * draw() + 300,
-      0,
-      700 * draw() + 200,
-      300 + 500 * draw(),
-    ]);
-    // The mean of a few seeds: one alone is luck.
-    const used = (list: NestPiece[], scale = 1) =>
-      [1, 2, 3, 4, 5, 6].reduce(
-        (sum, seed) =>
-          sum +
-          runRolls(
-            list.map((p) => ({ ...p, cut: p.cut.map((v) => v * scale) })),
-            [{ ...ROLL, width: 1500 * scale, length: 50_000 * scale }],
-            { ...OPTIONS, steps: 60, seed },
-          ).output[0].used,
-        0,
-      ) / scale;
-    const plain = points.map((p, k) => piece(`p${k}`, p));
-    const other = points.map((p, k) => piece(`q${99 - k}`, p)).reverse();
-    expect(Math.abs(used(other) / used(plain) - 1)).toBeLessThan(0.03);
-    expect(Math.abs(used(plain, 0.01) / used(plain) - 1)).toBeLessThan(0.03);
   });
 });
 

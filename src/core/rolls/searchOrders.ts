@@ -133,7 +133,12 @@ export function searchOrders(task: NestTask, limits: SearchLimits): { layout: La
     .filter((list) => chainRoll(task, list) !== null)
     .map((list): Genome => ({ order: orders[0], rule: RULES[0], stacks: "chain", rolls: list }));
   const on = (g: Omit<Genome, "rolls">, k: number): Genome => ({ ...g, rolls: rolls[k % rolls.length] });
-  const starts = [...single.slice(0, 3).map(on), ...chained, ...[...stacked, ...single.slice(3)].map(on)];
+  const starts = [
+    on(single[0], 0),
+    ...chained,
+    ...single.slice(1, 3).map((g, k) => on(g, k + 1)),
+    ...[...stacked, ...single.slice(3)].map(on),
+  ];
   let best: Layout | null = null;
   let bestOf: Genome = starts[0];
   let now: { cost: LayoutCost; genome: Genome } | null = null;
