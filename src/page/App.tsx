@@ -4,6 +4,7 @@ import { Book } from "./Book.tsx";
 import { Beginnings, Desk } from "./Desk.tsx";
 import { takeUpdate } from "./keep/offline.ts";
 import { openFiles } from "./keep/openBook.ts";
+import { LooseFacts } from "./leaves/papers/LooseFacts.tsx";
 import { FindingList } from "./parts/FindingList.tsx";
 import { hearKeys, KEY_SHEET } from "./parts/keys.ts";
 import { Sheet } from "./parts/Sheet.tsx";
@@ -50,6 +51,7 @@ function Sheets() {
       </Sheet>
     );
   }
+  if (sheet === "facts") return <LooseFacts />;
   if (sheet === "keys") {
     return (
       <Sheet title="Keys">

@@ -5,6 +5,8 @@ import { App } from "./App.tsx";
 import { lastOpen, newId, openKept, openNew, startKeeping } from "./keep/keepBook.ts";
 import { goOffline } from "./keep/offline.ts";
 import { tryOpen } from "./keep/openBook.ts";
+import { readChoice } from "./keep/paperChoice.ts";
+import { bookStore } from "./store/bookStore.ts";
 import { planOnChange } from "./worker/planOnChange.ts";
 import "./style/ink.css";
 import "./style/book.css";
@@ -33,6 +35,7 @@ async function takeUp(): Promise<void> {
   openNew({ id: newId(), job: opened.job, mesh: bytes === null ? null : { name: opened.mesh ?? "", bytes }, log: [] });
 }
 
+bookStore.setState({ choice: readChoice() });
 startKeeping();
 planOnChange();
 const root = document.getElementById("book");

@@ -151,7 +151,7 @@ describe("by keyboard alone", { timeout: LONG }, () => {
     await leaf(page, 6, "What leaves the office?");
     await page.getByText(/files, revision/).waitFor();
     await press(page, "panels.csv");
-    await expect.poll(() => page.locator("pre.preview").innerText(), SOON).toContain("P1");
+    await expect.poll(() => page.locator(".preview.list").innerText(), SOON).toContain("P1");
     const [saved] = await Promise.all([page.waitForEvent("download"), press(page, "Save all papers (zip)")]);
     expect(saved.suggestedFilename()).toMatch(/\.zip$/);
   });

@@ -165,7 +165,7 @@ describe("leaves", { timeout: LONG }, () => {
     revision = await plannedAnew(page, revision);
     await page.getByText(/files, revision/).waitFor();
     await page.getByRole("button", { name: "panels.csv", exact: true }).click();
-    await expect.poll(() => page.locator("pre.preview").innerText(), SOON).toContain("P1");
+    await expect.poll(() => page.locator(".preview.list").innerText(), SOON).toContain("P1");
     await page.getByRole("button", { name: "Seamstay Ticket booth, north, open the list of jobs" }).waitFor();
   });
 

@@ -46,7 +46,10 @@ describe("opening", { timeout: LONG }, () => {
       ],
       [[file("booth.zip", "not one at all")], /^booth\.zip: the zip is damaged/],
       [[file("photo.png", "x")], /^photo\.png: a mesh is read as OBJ/],
-      [[file("facts.json", '{"format":"seamstay-facts","version":1}')], /^facts\.json is what came out of a plan/],
+      [
+        [file("facts.json", '{"format":"seamstay-facts","version":1}')],
+        /^facts\.json: job, fabrics, checks, findings are missing/,
+      ],
       [[file("job.json", '{"format":"seamstay-job",')], /job\.json|JSON/],
       [[file("readings.csv", "time,id,mood\n")], /no column "mood"/],
     ] as const) {

@@ -3,7 +3,7 @@ import { takeLog } from "../actions/site/takeLog.ts";
 import { act, bookStore, notify } from "../store/bookStore.ts";
 import { deleteJob } from "./jobStore.ts";
 import { explainFault, openNew } from "./keepBook.ts";
-import { type LoadedFile, loadFiles, readFiles, readLog } from "./openFiles.ts";
+import { type LoadedFile, loadFiles, readFiles, readLog, readLooseFacts } from "./openFiles.ts";
 
 /** Opens, and says what went wrong. */
 export async function tryOpen(open: () => Promise<void>): Promise<void> {
@@ -39,6 +39,8 @@ export async function openFiles(files: readonly File[]): Promise<void> {
     const { project } = bookStore.getState();
     const loaded = await loadFiles(files);
     if (takeReadings(loaded)) return;
+    const loose = readLooseFacts(loaded);
+    if (loose !== null) return bookStore.setState({ loose, sheet: "facts" });
     const next = readFiles(loaded, project);
     openNew(next);
     // The job that waited for its mesh goes on under a new name in the store.

@@ -4,8 +4,10 @@ import type { JobFile } from "../../core/job/jobSchema.ts";
 import { migrateJob } from "../../core/job/jobVersions.ts";
 import { leastJob } from "../../core/job/leastJob.ts";
 import { readJson } from "../../core/job/readJson.ts";
+import { isFacts, readFacts } from "../../core/plan/factsFile.ts";
 import { decodeText, titleOfMesh } from "../../core/plan/meshText.ts";
 import { PlanError } from "../../core/problem.ts";
+import type { Facts } from "../../core/records/facts.ts";
 import type { MeshFile, Project } from "../store/project.ts";
 import { newId } from "./keepBook.ts";
 import { readLogFiles } from "./logTables.ts";
@@ -49,8 +51,7 @@ export async function loadFiles(files: readonly File[]): Promise<LoadedFile[]> {
  */
 export function readFiles(files: readonly LoadedFile[], open: Project | null): Project {
   const meshes = files.filter((f) => /\.obj$/i.test(f.name));
-  const jobs = files.filter((f) => /\.json$/i.test(f.name));
-  const job = jobs.find((f) => isJob(f)) ?? jobs[0];
+  const job = findJob(files);
   if (job !== undefined) {
     const { value } = readJson(decodeText(job.bytes, job.name));
     if (isFacts(value))
@@ -84,6 +85,17 @@ export function readFiles(files: readonly LoadedFile[], open: Project | null): P
   return projectOfMesh(mesh);
 }
 
+/**
+ * Facts among files that hold neither job nor mesh, to be opened for their papers; null where there are none.
+ * @throws PlanError codes of readJson and readFacts
+ */
+export function readLooseFacts(files: readonly LoadedFile[]): { name: string; facts: Facts } | null {
+  const found = findJob(files);
+  if (found === undefined || isJob(found) || files.some((f) => /\.obj$/i.test(f.name))) return null;
+  const { value } = readJson(decodeText(found.bytes, found.name), found.name);
+  return isFacts(value) ? { name: found.name, facts: readFacts(value, found.name) } : null;
+}
+
 /** The least job for a mesh. */
 export function projectOfMesh(mesh: MeshFile): Project {
   return { id: newId(), job: leastJob(mesh.name, titleOfMesh(mesh.name)) as JobFile, mesh, log: [] };
@@ -93,8 +105,10 @@ function baseName(path: string | undefined): string | undefined {
   return path?.split(/[/\\]/).at(-1);
 }
 
-function isFacts(value: unknown): boolean {
-  return typeof value === "object" && value !== null && "format" in value && value.format === "seamstay-facts";
+/** The job of the files, or else the JSON file that may be something else; the list of what a plan wrote is neither. */
+function findJob(files: readonly LoadedFile[]): LoadedFile | undefined {
+  const jobs = files.filter((f) => /\.json$/i.test(f.name));
+  return jobs.find((f) => isJob(f)) ?? jobs.find((f) => /facts/i.test(f.name)) ?? jobs[0];
 }
 
 function isJob(file: LoadedFile): boolean {

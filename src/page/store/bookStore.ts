@@ -1,6 +1,7 @@
 // The one store of the page, in three slices: project (undone by snapshots), result (the latest plan), look (not undone).
 // Knows no React and no worker.
 import { createStore } from "zustand/vanilla";
+import { DEFAULT_PAPERS, type PaperChoice } from "../../core/papers/choosePapers.ts";
 import type { CorrectedPlan } from "../../core/plan/correctPlan.ts";
 import type { Finding, Station } from "../../core/problem.ts";
 import type { Facts } from "../../core/records/facts.ts";
@@ -27,6 +28,12 @@ export interface PaperFile {
   bytes: Uint8Array<ArrayBuffer>;
 }
 
+/** Papers, and what writing them added to the findings. */
+export interface WrittenPapers {
+  files: PaperFile[];
+  added: Finding[];
+}
+
 export interface ResultSlice {
   status: "none" | "running" | "done" | "failed" | "stopped";
   progress: { share: number; words: string; station: Station };
@@ -39,8 +46,8 @@ export interface ResultSlice {
   /** The project the facts are of. */
   planned: Project | null;
   fault: PlanFault | null;
-  /** The papers of some facts, and what writing them added to the findings. */
-  papers: { of: Facts; files: PaperFile[]; added: Finding[] } | null;
+  /** The papers of some facts as they were chosen, and what writing them added to the findings. */
+  papers: ({ of: Facts; choice: readonly PaperChoice[] } & WrittenPapers) | null;
   papersFault: PlanFault | null;
   writing: boolean;
   /** What to turn after the readings, and the project they are of. */
@@ -64,7 +71,11 @@ export interface LookSlice {
   field: FieldName;
   /** Step of the tensioning that is looked at; 0 before the first. */
   step: number;
-  sheet: "none" | "keys" | "findings" | "jobs";
+  sheet: "none" | "keys" | "findings" | "jobs" | "facts";
+  /** Which papers are written. */
+  choice: readonly PaperChoice[];
+  /** Facts opened for their papers, beside whatever job is on the desk. */
+  loose: { name: string; facts: Facts } | null;
   theme: Theme;
   /** Said once, until closed. */
   notices: { id: string; text: string; grave: boolean }[];
@@ -109,6 +120,8 @@ export const bookStore = createStore<Book>(() => ({
   field: "none",
   step: 0,
   sheet: "none",
+  choice: DEFAULT_PAPERS,
+  loose: null,
   theme: "system",
   notices: [],
   kept: null,

@@ -1,4 +1,5 @@
 // What the page and its worker say to each other. Types only.
+import type { PaperChoice } from "../../core/papers/choosePapers.ts";
 import type { ComparedLayout } from "../../core/plan/compareLayouts.ts";
 import type { CorrectedPlan } from "../../core/plan/correctPlan.ts";
 import type { Grip, MadeRoof, SeenPanel } from "../../core/plan/dragSeam.ts";
@@ -25,8 +26,8 @@ export type Request =
       /** Takes the roof once its panels are made, for who drags its seams. */
       roofs: MessagePort;
     }
-  /** facts null: of the plan this worker made last. */
-  | { kind: "papers"; run: number; facts: Facts | null }
+  /** facts null: of the plan this worker made last; `name`: the file the facts came in from, null: they were planned here. */
+  | { kind: "papers"; run: number; facts: Facts | null; choice: readonly PaperChoice[]; name: string | null }
   | {
       kind: "correct";
       run: number;

@@ -11,7 +11,7 @@ import { type Catalogues, readCatalogues } from "../../core/job/catalogues.ts";
 import { writePapers } from "../../core/papers/writePapers.ts";
 import { capNest } from "../../core/plan/capNest.ts";
 import { correctPlan } from "../../core/plan/correctPlan.ts";
-import { writeFactsJson } from "../../core/plan/factsFile.ts";
+import { tellBrokenFacts, writeFactsJson } from "../../core/plan/factsFile.ts";
 import { type PlanInput, readPlanInput } from "../../core/plan/readPlanInput.ts";
 import { runPlan } from "../../core/plan/runPlan.ts";
 import { PlanError, type Station } from "../../core/problem.ts";
@@ -124,9 +124,11 @@ function buffersIn(fields: object): ArrayBuffer[] {
   });
 }
 
-async function papers(run: number, facts: Facts): Promise<void> {
+async function papers({ run, choice, name }: Extract<Request, { kind: "papers" }>, facts: Facts): Promise<void> {
   fonts ??= await loadFonts();
-  const { files, findings } = await writePapers(facts, { fonts });
+  const { files, findings } = await writePapers(facts, { fonts, papers: choice }).catch((error: unknown) => {
+    throw name === null ? error : tellBrokenFacts(error, name);
+  });
   const all = [{ path: "facts.json", bytes: writeFactsJson({ ...facts, findings }) }, ...files].map(
     ({ path, bytes }) => ({
       path,
@@ -147,7 +149,7 @@ self.onmessage = async (event: MessageEvent<Request>) => {
     else {
       const facts = request.facts ?? last;
       if (facts === null) throw new Error("papers were asked for of no plan");
-      await papers(request.run, facts);
+      await papers(request, facts);
     }
   } catch (error) {
     post({ kind: "failed", run: request.run, fault: describeFault(error) });

@@ -1,4 +1,5 @@
 // Starts, ends and hears the worker. The newest request wins: a worker that still computes an older one is ended.
+import type { PaperChoice } from "../../core/papers/choosePapers.ts";
 import { partSiteLog } from "../../core/plan/siteLog.ts";
 import type { Facts } from "../../core/records/facts.ts";
 import { bookStore } from "../store/bookStore.ts";
@@ -12,13 +13,17 @@ let worker: Worker | null = null;
 let busy = false;
 let run = 0;
 /** Project or facts the running request is about. */
-let subject: { project: Project } | { facts: Facts } | { readingsOf: Project } | null = null;
+let subject: { project: Project } | { facts: Facts; choice: readonly PaperChoice[] } | { readingsOf: Project } | null =
+  null;
 /** Takes in the plan under way. */
 let taker = createTaker();
 /** The newest plan, while the worker that made it is there: it can write its papers without being handed the facts again. */
 let made: Facts | null = null;
 /** To be planned once nothing that goes first is under way. */
 let due: Project | null = null;
+
+/** What is said of papers and corrections that were stopped. */
+const STOPPED: PlanFault = { code: "cancelled", message: "Stopped. The plan stands as it was.", where: [] };
 
 function start(): Worker {
   const fresh = new Worker(new URL("./planWorker.ts", import.meta.url), { type: "module", name: "seamstay-plan" });
@@ -88,7 +93,10 @@ function hear(reply: Reply): void {
     case "papers":
       busy = false;
       if (subject !== null && "facts" in subject)
-        set({ papers: { of: subject.facts, files: reply.files, added: reply.added }, writing: false });
+        set({
+          papers: { of: subject.facts, choice: subject.choice, files: reply.files, added: reply.added },
+          writing: false,
+        });
       return;
     case "corrected":
       busy = false;
@@ -161,13 +169,14 @@ export function requestPlan(project: Project): void {
   send({ kind: "plan", run, given: project.job, mesh: project.mesh, roofs }, [roofs]);
 }
 
-/** Writes the papers of a plan. */
+/** Writes the papers of a plan that are chosen. */
 export function requestPapers(facts: Facts): void {
+  const { choice } = bookStore.getState();
   run++;
-  subject = { facts };
+  subject = { facts, choice };
   bookStore.setState({ writing: true, papersFault: null });
   if (busy) end();
-  send({ kind: "papers", run, facts: made === facts ? null : facts });
+  send({ kind: "papers", run, facts: made === facts ? null : facts, choice, name: null });
 }
 
 /**
@@ -185,10 +194,17 @@ export function requestCorrection(project: Project, step: number, percent: numbe
 
 /** Stops what is computed or waits to be; what was planned before stays. */
 export function stopPlan(): void {
-  const planning = bookStore.getState().status === "running";
+  const { status, writing, correcting } = bookStore.getState();
+  const planning = status === "running";
   if (!busy && !planning) return;
   due = null;
   run++;
   end();
-  bookStore.setState({ writing: false, correcting: false, ...(planning ? { status: "stopped" } : {}) });
+  bookStore.setState({
+    writing: false,
+    correcting: false,
+    ...(planning ? { status: "stopped" } : {}),
+    ...(writing ? { papersFault: STOPPED } : {}),
+    ...(correcting ? { correctFault: STOPPED } : {}),
+  });
 }

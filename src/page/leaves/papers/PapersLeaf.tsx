@@ -1,59 +1,16 @@
 // Papers: what leaves the office?
-import { useEffect, useMemo, useState } from "react";
+import { useEffect, useState } from "react";
 import type { Facts } from "../../../core/records/facts.ts";
-import { blobOf, fileStem, packJob, saveFile, zipFiles } from "../../keep/saveFiles.ts";
+import { fileStem, packJob, saveFile, zipFiles } from "../../keep/saveFiles.ts";
 import { FigureTable } from "../../parts/FigureTable.tsx";
 import { Waiting } from "../../parts/Waiting.tsx";
-import type { PaperFile } from "../../store/bookStore.ts";
 import { useBook } from "../../store/useBook.ts";
-import { requestPapers } from "../../worker/planner.ts";
+import { requestPapers, stopPlan } from "../../worker/planner.ts";
 import { LeafFrame } from "../LeafFrame.tsx";
+import { PaperChoices } from "./PaperChoices.tsx";
 import { PaperDecisions } from "./PaperDecisions.tsx";
 import { PaperList } from "./PaperList.tsx";
-
-/** A drawing for the table has hairlines; on a screen they are drawn a pixel wide. Only for looking at. */
-function thicken(file: PaperFile): PaperFile {
-  const style = "<style>path{vector-effect:non-scaling-stroke;stroke-width:1.3px}</style>";
-  const text = new TextDecoder().decode(file.bytes).replace("</title>", `</title>${style}`);
-  return { path: file.path, bytes: new TextEncoder().encode(text) };
-}
-
-function Preview({ file }: { file: PaperFile | undefined }) {
-  const url = useMemo(() => (file?.path.endsWith(".svg") ? URL.createObjectURL(blobOf(thicken(file))) : null), [file]);
-  useEffect(
-    () => () => {
-      if (url !== null) URL.revokeObjectURL(url);
-    },
-    [url],
-  );
-  if (file === undefined) return <p className="waiting">Choose a paper from the list to look at it.</p>;
-  if (url !== null)
-    return (
-      <div
-        className={file.path.startsWith("rolls/") ? "preview roomy" : "preview"}
-        tabIndex={0}
-        role="group"
-        aria-label={`Drawing ${file.path}`}
-      >
-        <img src={url} alt={`Drawing ${file.path}`} />
-      </div>
-    );
-  if (/\.csv$/.test(file.path)) {
-    const rows = new TextDecoder()
-      .decode(file.bytes)
-      .replace(/^\uFEFF/, "")
-      .trimEnd()
-      .split(/\r?\n/);
-    return (
-      <pre className="preview" tabIndex={0}>
-        {rows.slice(0, 200).join("\n")}
-      </pre>
-    );
-  }
-  return (
-    <p className="waiting">{file.path} is opened by its own program: save it, then open or print it from there.</p>
-  );
-}
+import { Preview } from "./Preview.tsx";
 
 /** Which of the papers may be issued; they say the same on every sheet. */
 function tellIssue(facts: Facts | null): string {
@@ -74,7 +31,8 @@ export function PapersLeaf() {
   const writing = useBook((b) => b.writing);
   const project = useBook((b) => b.project);
   const [shown, setShown] = useState<string | null>(null);
-  const files = papers?.of === facts ? papers?.files : undefined;
+  const choice = useBook((b) => b.choice);
+  const files = papers?.of === facts && papers?.choice === choice ? papers?.files : undefined;
   useEffect(() => {
     if (status === "done" && facts !== null && files === undefined && !writing && fault === null) requestPapers(facts);
   }, [status, facts, files, writing, fault]);
@@ -111,11 +69,23 @@ export function PapersLeaf() {
         files ? (
           <Preview file={shownFile} />
         ) : fault ? (
-          <p className="waiting" role="alert">
-            {fault.message}
-          </p>
+          <>
+            <p className="waiting" role="alert">
+              {fault.message}
+            </p>
+            {facts !== null && status === "done" && (
+              <button type="button" onClick={() => requestPapers(facts)}>
+                Write the papers
+              </button>
+            )}
+          </>
         ) : writing ? (
-          <p className="waiting">The papers are being written…</p>
+          <>
+            <p className="waiting">The papers are being written…</p>
+            <button type="button" onClick={stopPlan}>
+              Stop writing
+            </button>
+          </>
         ) : (
           <Waiting what="The papers" />
         )
@@ -143,7 +113,12 @@ export function PapersLeaf() {
           </>
         )
       }
-      decisions={<PaperDecisions />}
+      decisions={
+        <>
+          <PaperChoices />
+          <PaperDecisions />
+        </>
+      }
     />
   );
 }
