@@ -6,6 +6,7 @@ import { openFiles, tryOpen } from "./keep/openBook.ts";
 import { openStarter, STARTERS } from "./keep/starters.ts";
 import { showTime } from "./parts/clock.ts";
 import { FilePick } from "./parts/FilePick.tsx";
+import { keepTogether } from "./parts/figure.ts";
 
 /** The kept jobs. */
 export function JobList() {
@@ -40,7 +41,8 @@ export function JobList() {
               <button type="button" aria-label={`Delete ${j.title} for good`} onClick={() => remove(j.id)}>
                 Delete for good
               </button>
-              <button type="button" onClick={() => setSure(null)}>
+              {/* the button that asked is gone; what harms nothing is at hand next */}
+              <button type="button" ref={(b) => b?.focus()} onClick={() => setSure(null)}>
                 Keep it
               </button>
             </span>
@@ -76,7 +78,7 @@ export function Beginnings() {
               >
                 {s.name.replaceAll("-", " ")}
               </button>
-              <p>{s.line}</p>
+              <p>{keepTogether(s.line)}</p>
             </li>
           ))}
         </ul>

@@ -4,7 +4,9 @@ import type { SeenPanel } from "../../core/plan/dragSeam.ts";
 import { figure } from "../parts/figure.ts";
 import { isSameWork } from "../store/hand.ts";
 import { useBook } from "../store/useBook.ts";
-import { boxOf, PanelDrawing } from "./PanelSheet.tsx";
+import { useRoom } from "../store/useRoom.ts";
+import { namePlace } from "./namePlace.ts";
+import { boxOf, PanelDrawing, PanelName } from "./PanelSheet.tsx";
 
 const GAP = 250;
 const NONE: SeenPanel[] = [];
@@ -82,22 +84,12 @@ function Drawing({ panels }: { panels: readonly SeenPanel[] }) {
         return (
           <g key={p.id} className="panel" transform={`translate(${GAP - b.x} ${top + b.h + b.y})`}>
             <PanelDrawing panel={p} size={size} detail={false} />
-            <text x={b.x + b.w / 2} y={-(b.y + b.h / 2)} fontSize={1.5 * size} className="panel-name">
-              {p.id}
-            </text>
+            <PanelName id={p.id} at={namePlace(p.cut).at} height={1.5 * size} />
           </g>
         );
       })}
     </svg>
   );
-}
-
-/** Widest panel the rolls take, mm; null before the job is read. */
-function useRoom(): number | null {
-  const job = useBook((b) => b.job);
-  if (job === null) return null;
-  const rolls = job.rolls ?? [{ width: job.fabric.rollWidth, selvedge: job.fabric.selvedge }];
-  return Math.min(...rolls.map((r) => r.width - 2 * r.selvedge));
 }
 
 /** The sheet beside the surface. */

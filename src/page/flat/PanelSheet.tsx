@@ -3,6 +3,7 @@ import type { SeenPanel } from "../../core/plan/dragSeam.ts";
 import type { FactsPanel, Vec2 } from "../../core/records/facts.ts";
 import { bookStore } from "../store/bookStore.ts";
 import { useBook } from "../store/useBook.ts";
+import { namePlace } from "./namePlace.ts";
 import { stackPanels } from "./stackPanels.ts";
 
 /** Width of the stage over its height, about: between a desk's and a tablet's. */
@@ -61,6 +62,15 @@ export function PanelDrawing({ panel, size, detail }: { panel: SeenPanel; size: 
   );
 }
 
+/** The name of a panel, its middle at a place of the panel's own axes. */
+export function PanelName({ id, at: [x, y], height }: { id: string; at: Vec2; height: number }) {
+  return (
+    <text x={x} y={-y} fontSize={height} className="panel-name">
+      {id}
+    </text>
+  );
+}
+
 /** Where the cut cloth lies in its own axes, mm. */
 export function boxOf(panel: SeenPanel): { x: number; y: number; w: number; h: number } {
   const xs = panel.cut.map((p) => p[0]);
@@ -77,8 +87,12 @@ export function PanelSheet({ panels, alone }: { panels: readonly FactsPanel[]; a
   const gap = alone === null ? 350 : 100;
   const { at, width, height } = stackPanels(boxes, gap, SHAPE);
   const size = Math.max(width, height) / 45;
-  // no name is higher than half its panel
-  const letter = Math.min(1.5 * size, 0.5 * Math.min(...boxes.map((b) => b.h)));
+  // no name is higher than half the cloth it stands on
+  const letter = Math.min(1.5 * size, ...shown.map((p) => 0.5 * namePlace(p.cut).room));
+  const nameAt = (p: FactsPanel) => {
+    const runs = alone === null ? [] : p.marks.flatMap((m) => (m.points === undefined ? [] : [m.points]));
+    return namePlace(p.cut, { runs, name: p.id, height: letter }).at;
+  };
   return (
     <svg
       className="sheet"
@@ -105,14 +119,7 @@ export function PanelSheet({ panels, alone }: { panels: readonly FactsPanel[]; a
           onPointerLeave={() => bookStore.setState({ pointed: null })}
         >
           <PanelDrawing panel={p} size={size} detail={alone !== null} />
-          <text
-            x={boxes[i].x + boxes[i].w / 2}
-            y={-(boxes[i].y + boxes[i].h / 2)}
-            fontSize={letter}
-            className="panel-name"
-          >
-            {p.id}
-          </text>
+          <PanelName id={p.id} at={nameAt(p)} height={letter} />
         </g>
       ))}
     </svg>

@@ -5,6 +5,7 @@ import type { NestedRoll, Placement } from "../../core/records/roll.ts";
 import { setPin } from "../actions/rolls/setPin.ts";
 import { act, bookStore } from "../store/bookStore.ts";
 import { useBook } from "../store/useBook.ts";
+import { namePlace } from "./namePlace.ts";
 import { pinPlace } from "./pinPlace.ts";
 import { type RollRow, rollRows } from "./rollRows.ts";
 
@@ -22,18 +23,17 @@ function outline(cut: readonly Vec2[], p: Placement, by: { x: number; y: number 
   return `${cut.map(([x, y], i) => `${i === 0 ? "M" : "L"}${(turn * x + p.x + by.x).toFixed(1)} ${(turn * y + p.y + by.y).toFixed(1)}`).join("")}Z`;
 }
 
-function middleOf(cut: readonly Vec2[], p: Placement): Vec2 {
+/** Where the name of what is placed stands, on the roll, and how much cloth there is for it, mm. */
+function nameOn(cut: readonly Vec2[], p: Placement): { at: Vec2; room: number } {
   const turn = p.rotation === 180 ? -1 : 1;
-  const xs = cut.map((q) => q[0]);
-  const ys = cut.map((q) => q[1]);
-  const mid = (v: number[]) => (Math.min(...v) + Math.max(...v)) / 2;
-  return [turn * mid(xs) + p.x, turn * mid(ys) + p.y];
+  const { at, room } = namePlace(cut);
+  return { at: [turn * at[0] + p.x, turn * at[1] + p.y], room };
 }
 
 /** Height of a name that stays within its piece, mm; 0 where it would be too small to read. */
-function letterHeight(cut: readonly Vec2[], name: string, roll: NestedRoll): number {
-  const reach = (k: 0 | 1) => Math.max(...cut.map((q) => q[k])) - Math.min(...cut.map((q) => q[k]));
-  const height = Math.min(roll.width / 9, reach(1) / 2, reach(0) / (0.7 * name.length));
+function letterHeight(cut: readonly Vec2[], room: number, name: string, roll: NestedRoll): number {
+  const xs = cut.map((q) => q[0]);
+  const height = Math.min(roll.width / 9, room / 2, (Math.max(...xs) - Math.min(...xs)) / (0.7 * name.length));
   return height < roll.width / 32 ? 0 : height;
 }
 
@@ -64,9 +64,12 @@ function PlacedPiece(props: {
   const chosen = useBook((b) => b.chosen);
   const pinned = useBook((b) => b.project?.job.nest?.pins?.some((q) => q.panel === p.panel) ?? false);
   const by = drag?.panel === p.panel ? drag.by : { x: 0, y: 0 };
-  const [x, y] = middleOf(cut, p);
+  const {
+    at: [x, y],
+    room,
+  } = nameOn(cut, p);
   const lit = p.panel === pointed || p.panel === chosen;
-  const letters = letterHeight(cut, p.panel, roll);
+  const letters = letterHeight(cut, room, p.panel, roll);
   return (
     <g clipPath={`url(#${clip})`}>
       <g
@@ -196,7 +199,7 @@ export function RollSheet({ facts, roll, shape }: { facts: Facts; roll: NestedRo
           <RowCloth roll={roll} row={row} clip={`${id}r${i}`} />
           {roll.placements.map((p) => {
             const cut = cuts.get(p.panel) ?? [];
-            const [middle] = middleOf(cut, p);
+            const [middle] = nameOn(cut, p).at;
             return (
               <PlacedPiece
                 key={p.panel}
@@ -210,5 +213,36 @@ export function RollSheet({ facts, roll, shape }: { facts: Facts; roll: NestedRo
         </g>
       ))}
     </svg>
+  );
+}
+
+/** What the drawing of a roll shows by which look. */
+export function RollKey({ roll }: { roll: NestedRoll }) {
+  const pinned = useBook((b) => b.project?.job.nest?.pins?.some((p) => p.roll === roll.id) ?? false);
+  const items: [string, string][] = [
+    ["placed", "panel"],
+    ["bed", "offcut"],
+    ["used", "cut off the roll here"],
+  ];
+  if (pinned) items.splice(1, 0, ["placed pinned", "pinned"]);
+  if (roll.flaws.length > 0) items.push(["flaw", "flaw, kept clear"]);
+  return (
+    <ul className="rollkey" aria-label="What the roll shows">
+      {items.map(([look, words]) => (
+        <li key={look}>
+          <svg className="sheet roll" viewBox="0 0 28 14" aria-hidden="true">
+            {look === "used" ? (
+              <line className={look} x1={14} x2={14} y1={0} y2={14} />
+            ) : (
+              <g className={look}>
+                <path className={look} d="M1 1H27V13H1Z" />
+              </g>
+            )}
+          </svg>
+          {words}
+        </li>
+      ))}
+      <li>Drag a panel to pin it where it lies.</li>
+    </ul>
   );
 }

@@ -68,11 +68,13 @@ export async function listJobs(): Promise<KeptJob[]> {
 const statesOf = (id: string, from = 0) => IDBKeyRange.bound([id, from], [id, Number.POSITIVE_INFINITY]);
 
 /**
- * A kept job with its line of states, whether the store has all of them, and the count it stands at; null where it is gone.
+ * A kept job with its line of states, whether the store has all of them, the count it stands at and when it was kept; null where it is gone.
  * Older versions are migrated.
  * @throws PlanError codes of migrateJob, as job-version-newer
  */
-export async function loadJob(id: string): Promise<{ line: Line; whole: boolean; count: number; leaf: Leaf } | null> {
+export async function loadJob(
+  id: string,
+): Promise<{ line: Line; whole: boolean; count: number; leaf: Leaf; savedAt: string } | null> {
   const db = await openShelf();
   const kept = await db.get("jobs", id);
   if (kept === undefined) return null;
@@ -81,13 +83,13 @@ export async function loadJob(id: string): Promise<{ line: Line; whole: boolean;
     project: { id, job: migrateJob(job) as unknown as JobFile, mesh, log },
     words,
   });
-  const { job, log, count, leaf, at = 0 } = kept;
+  const { job, log, count, leaf, savedAt, at = 0 } = kept;
   const states = (await db.getAll("states", statesOf(id))).map(restore);
   // A job of an older program was kept without its line: it begins here.
   const whole = states.length > at;
   const now = restore({ job, log, words: states[at]?.words ?? "" });
   const line = whole ? { states: states.with(at, now), at } : { states: [now], at: 0 };
-  return { line, whole, count, leaf };
+  return { line, whole, count, leaf, savedAt };
 }
 
 /**

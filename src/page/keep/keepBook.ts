@@ -40,6 +40,7 @@ export async function openKept(id: string, leaf?: Leaf): Promise<boolean> {
   // where another tab has saved since the last word was left, the counts differ, and the word goes on as a copy
   shelved = { line: found.whole ? found.line : null, count: last?.count ?? found.count };
   openProject(readLine(last?.line ?? found.line), leaf ?? last?.leaf ?? found.leaf);
+  if (last === null) bookStore.setState({ kept: found.savedAt });
   rememberOpen(id);
   return true;
 }

@@ -19,10 +19,13 @@ function Taken({ given, open = false }: Pick<Common, "given" | "open">) {
   return given || open ? null : <span className="taken"> default</span>;
 }
 
-function Frame(props: Common & { id: string; fault?: string | null; children: React.ReactNode }) {
-  const { id, label, path, hint, fault, children } = props;
+/** Words longer than this get a line of their own below their label, so that they are not cut off. */
+const LONG_WORDS = 22;
+
+function Frame(props: Common & { id: string; fault?: string | null; long?: boolean; children: React.ReactNode }) {
+  const { id, label, path, hint, fault, long = false, children } = props;
   return (
-    <div className="field" data-path={path}>
+    <div className={long ? "field long" : "field"} data-path={path}>
       <label htmlFor={id}>
         {label}
         <Taken {...props} />
@@ -104,7 +107,7 @@ export function ChoiceField<T extends string>(
 ) {
   const id = useId();
   return (
-    <Frame {...props} id={id}>
+    <Frame {...props} id={id} long={props.choices.some((c) => c.words.length > LONG_WORDS)}>
       <select id={id} value={props.value} onChange={(e) => props.onChange(e.target.value as T)}>
         {props.choices.map((c) => (
           <option key={c.value} value={c.value}>

@@ -1,6 +1,7 @@
 // Figures of a leaf: what, how much, held against what. A row that speaks of a thing lights it up in the drawings.
 import { bookStore } from "../store/bookStore.ts";
 import { useBook } from "../store/useBook.ts";
+import { keepTogether } from "./figure.ts";
 
 export interface FigureRow {
   what: string;
@@ -13,6 +14,9 @@ export interface FigureRow {
   /** The edge, anchor, cable, adjuster it speaks of. */
   id?: string;
 }
+
+/** A few words stay on one line; a range of numbers may break. */
+const keepShort = (value: string) => (value.length > 16 ? value : value.replaceAll(" ", "\u00a0"));
 
 /** A two-column table of figures with what they are held against underneath. */
 export function FigureTable({ caption, rows }: { caption: string; rows: readonly FigureRow[] }) {
@@ -36,12 +40,12 @@ export function FigureTable({ caption, rows }: { caption: string; rows: readonly
           >
             <th scope="row">
               {r.what}
-              {r.against !== undefined && <span className="against">{r.against}</span>}
+              {r.against !== undefined && <span className="against">{keepTogether(r.against)}</span>}
             </th>
             <td>
               {r.holds === false && <span className="mark">fails </span>}
-              {r.value}
-              {r.unit !== undefined && <span className="unit"> {r.unit}</span>}
+              {keepShort(r.value)}
+              {r.unit !== undefined && <span className="unit">{`\u00a0${r.unit}`}</span>}
             </td>
           </tr>
         ))}

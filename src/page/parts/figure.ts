@@ -18,3 +18,11 @@ export function figure(value: number, decimals?: number): string {
   const text = decimals === undefined ? String(Number(value.toPrecision(3))) : value.toFixed(decimals);
   return text.replace("-", "−");
 }
+
+/** A line of words in which no number stands parted from its unit or from the letter it belongs to at a line's end. */
+export function keepTogether(words: string): string {
+  return words
+    .replace(/(\d) (?=(?:[a-zA-Zµ]{1,2}|mm2|kN\/m|kg\/m|m\/s|[%°]C?|m[²³])(?![\w/]))/g, "$1\u00a0")
+    .replace(/\b([xyz]) (?=[−\d])/g, "$1\u00a0")
+    .replace(/(rms error|limit) (?=\d)/g, "$1\u00a0");
+}

@@ -118,11 +118,11 @@ function Grip({ form, grip, project }: { form: FactsForm; grip: GripPlace; proje
   );
 }
 
-/** All grips, and the seam in hand where it is slid to; `hook` is given what puts them where they are drawn, and null when they go. */
+/** All grips, and the seam in hand where it is slid to; `hook` is given what puts them where they are drawn and tells these places, and null when they go. */
 export function Grips(props: {
   form: FactsForm;
   project: () => Project | null;
-  hook: (place: ((project: Project) => void) | null) => void;
+  hook: (place: ((project: Project) => { x: number; y: number }[]) | null) => void;
 }) {
   const { form, project, hook } = props;
   const box = useRef<HTMLDivElement>(null);
@@ -133,21 +133,22 @@ export function Grips(props: {
   useEffect(() => letGo, []);
   useEffect(() => {
     const put = (to: Project) => {
+      const spots: { x: number; y: number }[] = [];
       grips.forEach(({ place }, i) => {
         const element = box.current?.children[i];
         const at = pointOnEdge(form, place);
         if (!(element instanceof HTMLElement) || at === null) return;
         const { x, y } = to(at);
+        spots.push({ x, y });
         element.style.transform = `translate(-50%, -50%) translate(${x.toFixed(1)}px, ${y.toFixed(1)}px)`;
       });
       const points = (path ?? []).map((p) => to(p)).map(({ x, y }) => `${x.toFixed(1)},${y.toFixed(1)}`);
       line.current?.setAttribute("points", points.join(" "));
+      return spots;
     };
     hook(put);
-    const now = project();
-    if (now !== null) put(now);
     return () => hook(null);
-  }, [form, grips, path, project, hook]);
+  }, [form, grips, path, hook]);
   return (
     <>
       <svg className="slid" aria-hidden="true">

@@ -9,6 +9,7 @@ import { buildModel, isOfPoints, type Model, nameModel, shapeOf, valuesOf } from
 import { Grips } from "./Grips.tsx";
 import { Legend } from "./Legend.tsx";
 import { linearise, type SceneInk } from "./paintScene.ts";
+import { placeNames } from "./placeNames.ts";
 import { createScene, type Project, type SceneView } from "./scene.ts";
 
 /** Inks of the theme, from the style sheet. */
@@ -50,22 +51,6 @@ function paintPoints(value: Float32Array, scale: Scale | null): Float32Array | n
   return out;
 }
 
-/** Moves the names to where their places are drawn; names in front of others win where two would overlap. */
-function placeLabels(box: HTMLElement | null, labels: Model["labels"], project: Project): void {
-  if (box === null) return;
-  const taken: [number, number][] = [];
-  labels.forEach(({ at }, i) => {
-    const element = box.children[i];
-    if (!(element instanceof HTMLElement)) return;
-    const { x, y } = project(at);
-    const free = taken.every(([u, v]) => Math.abs(u - x) > 46 || Math.abs(v - y) > 17);
-    element.hidden = !free;
-    if (!free) return;
-    taken.push([x, y]);
-    element.style.transform = `translate(-50%, -50%) translate(${x.toFixed(1)}px, ${y.toFixed(1)}px)`;
-  });
-}
-
 const KEYS: Record<string, (view: SceneView) => void> = {
   ArrowLeft: (v) => v.turn(-0.12, 0),
   ArrowRight: (v) => v.turn(0.12, 0),
@@ -99,7 +84,7 @@ function useScene(model: Model | null, scale: Scale | null, words: string) {
   const names = useRef<HTMLDivElement>(null);
   const view = useRef<SceneView | null>(null);
   const labels = useRef<Model["labels"]>([]);
-  const putGrips = useRef<((project: Project) => void) | null>(null);
+  const putGrips = useRef<((project: Project) => { x: number; y: number }[]) | null>(null);
   const [broken, setBroken] = useState(false);
   const pointed = useBook((b) => b.pointed);
   const chosen = useBook((b) => b.chosen);
@@ -117,8 +102,7 @@ function useScene(model: Model | null, scale: Scale | null, words: string) {
     const { canvas, view: made } = taken;
     view.current = made;
     made.watch((project) => {
-      placeLabels(names.current, labels.current, project);
-      putGrips.current?.(project);
+      placeNames(names.current, labels.current, project, putGrips.current?.(project) ?? []);
     });
     const watch = new ResizeObserver(() => made.resize());
     watch.observe(canvas);
@@ -156,10 +140,18 @@ function useScene(model: Model | null, scale: Scale | null, words: string) {
     dark.addEventListener("change", apply);
     return () => dark.removeEventListener("change", apply);
   }, [theme]);
-  const hookGrips = useCallback((put: ((project: Project) => void) | null) => {
-    putGrips.current = put;
-  }, []);
   const project = useCallback(() => view.current?.project ?? null, []);
+  const hookGrips = useCallback(
+    (put: ((project: Project) => { x: number; y: number }[]) | null) => {
+      putGrips.current = put;
+      const now = project();
+      if (put === null || now === null) return;
+      const spots = put(now);
+      // while one is slid the names keep their places
+      if (bookStore.getState().hand === null) placeNames(names.current, labels.current, now, spots);
+    },
+    [project],
+  );
   return { host, names, view, broken, hookGrips, project };
 }
 

@@ -124,18 +124,25 @@ export function FormLeaf() {
             rows={[
               { what: "Area", value: figure(form.area, 2), unit: "m²" },
               { what: "Triangles", value: String(form.triangles.length) },
+              ...(limit
+                ? [
+                    {
+                      what: "Out of balance, as judged",
+                      value: figure(Number(limit.value)),
+                      against: `limit ${figure(Number(limit.limit))} of the mean force of the cloth`,
+                      holds: limit.holds,
+                    },
+                  ]
+                : []),
               {
-                what: "Out of balance, greatest",
+                what: "… greatest, any direction",
                 value: figure(form.residual.max),
-                ...(limit
-                  ? { against: `limit ${figure(Number(limit.limit))} of the mean membrane force`, holds: limit.holds }
-                  : {}),
               },
               { what: "… across the cloth", value: figure(form.residual.normalMax) },
               ...(form.residual.tangentialMax === undefined
                 ? []
                 : [{ what: "… within the cloth", value: figure(form.residual.tangentialMax) }]),
-              { what: "Out of balance, mean (rms)", value: figure(form.residual.rms) },
+              { what: "… mean (rms)", value: figure(form.residual.rms) },
               ...reliefRows(form.relief),
               ...cables.slice(0, 12).map((e) => ({
                 id: e.id,

@@ -67,7 +67,10 @@ export function PapersLeaf() {
       }
       stage={
         files ? (
-          <Preview file={shownFile} />
+          <>
+            {shownFile && <p className="shown">{shownFile.path}</p>}
+            <Preview file={shownFile} />
+          </>
         ) : fault ? (
           <>
             <p className="waiting" role="alert">

@@ -21,7 +21,7 @@ function Strip({ steps, at }: { steps: readonly RigStep[]; at: number }) {
   useEffect(() => {
     const one = list.current?.children[at - 1];
     if (one instanceof HTMLElement && list.current)
-      list.current.scrollLeft = one.offsetLeft - list.current.offsetLeft - 140;
+      list.current.scrollTop = one.offsetTop - list.current.offsetTop - 60;
   }, [at]);
   const go = (i: number) => bookStore.setState({ step: Math.min(Math.max(i, 0), steps.length) });
   return (

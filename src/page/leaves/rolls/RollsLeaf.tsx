@@ -1,6 +1,6 @@
 // Rolls: which cloth, and where on it?
 import type { ClothTotal, NestedRoll } from "../../../core/records/roll.ts";
-import { RollSheet } from "../../flat/RollSheet.tsx";
+import { RollKey, RollSheet } from "../../flat/RollSheet.tsx";
 import { FigureTable } from "../../parts/FigureTable.tsx";
 import { figure } from "../../parts/figure.ts";
 import { Waiting } from "../../parts/Waiting.tsx";
@@ -103,7 +103,16 @@ export function RollsLeaf() {
           </fieldset>
         )
       }
-      stage={facts && shown ? <RollSheet facts={facts} roll={shown} shape={0.72} /> : <Waiting what="The rolls" />}
+      stage={
+        facts && shown ? (
+          <>
+            <RollSheet facts={facts} roll={shown} shape={0.72} />
+            <RollKey roll={shown} />
+          </>
+        ) : (
+          <Waiting what="The rolls" />
+        )
+      }
       figures={
         rolls &&
         shown && (

@@ -7,6 +7,7 @@ import { figure } from "../../parts/figure.ts";
 import { act, bookStore } from "../../store/bookStore.ts";
 import { isSameWork } from "../../store/hand.ts";
 import { useBook } from "../../store/useBook.ts";
+import { useRoom } from "../../store/useRoom.ts";
 
 /** Figures of a layout over all its regions. */
 interface Sums {
@@ -84,21 +85,35 @@ function tellWhy(name: string, own: Sums, stood: Sums | null, of: number): strin
   return `${head}; in place of ${stood.panels} panels, ${stood.seams.toFixed(1)} m of seam, stress off by ${(100 * stood.stressError).toFixed(1)} %`;
 }
 
+/** Widths of the panels; where the widest is wider than the rolls take, that is said. */
+function tellWidths({ least, greatest }: Sums): string {
+  const [from, to] = [figure(least, 2), figure(greatest, 2)];
+  return from === to ? `${to} m` : `${from} to ${to} m`;
+}
+
 function Figures({ sums }: { sums: Sums }) {
+  const room = useRoom();
+  const wide = room !== null && sums.greatest > room / 1000;
   const rows: [string, string][] = [
     ["Panels", String(sums.panels)],
     ["Seam", `${figure(sums.seams, 1)} m`],
     ["Cloth, at least", `${figure(sums.cloth, 1)} m²`],
-    ["Widths", `${figure(sums.least, 2)} to ${figure(sums.greatest, 2)} m`],
+    ["Widths", tellWidths(sums)],
     ["Stress off, worst panel", `${figure(100 * sums.stressError, 1)} %`],
   ];
   return (
     <table className="figures">
       <tbody>
         {rows.map(([what, value]) => (
-          <tr key={what}>
-            <th scope="row">{what}</th>
-            <td>{value}</td>
+          <tr key={what} className={wide && what === "Widths" ? "fails" : undefined}>
+            <th scope="row">
+              {what}
+              {wide && what === "Widths" && <span className="against">the roll takes {figure(room / 1000, 2)} m</span>}
+            </th>
+            <td>
+              {wide && what === "Widths" && <span className="mark">fails </span>}
+              {value}
+            </td>
           </tr>
         ))}
       </tbody>

@@ -155,6 +155,7 @@ export function SiteLeaf() {
       }
       stage={
         <div className="readings">
+          <CautionList paper="schedule" />
           <ReadingEntry step={now} />
           {now !== null && !now.hold && (
             <p className="hint">
@@ -174,7 +175,6 @@ export function SiteLeaf() {
       }
       decisions={
         <>
-          <CautionList paper="schedule" />
           <SiteLimits />
           <SurveyDecisions />
         </>

@@ -1,0 +1,79 @@
+// Where the names over the surface stand: at their places, or a little off them where a grip or another name is in the way.
+import type { Model } from "./buildModel.ts";
+import type { Project } from "./scene.ts";
+
+/** Half height of a name, and of a grip, px. */
+const HALF_NAME = 9;
+const HALF_GRIP = 10;
+/** Half width of a letter, and what is added to a name on either side, px. */
+const HALF_LETTER = 3.6;
+const PAD = 5;
+
+interface Box {
+  x: number;
+  y: number;
+  halfWide: number;
+  halfHigh: number;
+}
+
+/** Ways off its place a name may give, in its half size and a grip's together: up and down, then sideways. */
+const WAYS = [
+  [0, 0],
+  [0, -1],
+  [0, 1],
+  [1, 0],
+  [-1, 0],
+  [2, 0],
+  [-2, 0],
+] as const;
+
+const meets = (a: Box, b: Box) =>
+  Math.abs(a.x - b.x) < a.halfWide + b.halfWide && Math.abs(a.y - b.y) < a.halfHigh + b.halfHigh;
+
+/**
+ * Middles of the names, in order; the first wins where two would overlap, and one that finds no room is left out.
+ * @shape names id and place on the drawing, spots middles of grips -> one place or null for each name
+ * @units px, y down
+ */
+export function findPlaces(
+  names: readonly { id: string; x: number; y: number }[],
+  spots: readonly { x: number; y: number }[],
+): ({ x: number; y: number } | null)[] {
+  const taken: Box[] = spots.map(({ x, y }) => ({ x, y, halfWide: HALF_GRIP, halfHigh: HALF_GRIP }));
+  return names.map(({ id, x, y }) => {
+    const halfWide = HALF_LETTER * id.length + PAD;
+    for (const [u, v] of WAYS) {
+      const box: Box = {
+        x: x + u * (halfWide + HALF_GRIP + 1),
+        y: y + v * (HALF_NAME + HALF_GRIP + 1),
+        halfWide,
+        halfHigh: HALF_NAME,
+      };
+      if (taken.some((other) => meets(box, other))) continue;
+      taken.push(box);
+      return { x: box.x, y: box.y };
+    }
+    return null;
+  });
+}
+
+/** Moves the names to where their places are drawn, clear of the grips. */
+export function placeNames(
+  box: HTMLElement | null,
+  labels: Model["labels"],
+  project: Project,
+  spots: readonly { x: number; y: number }[],
+): void {
+  if (box === null) return;
+  const places = findPlaces(
+    labels.map(({ id, at }) => ({ id, ...project(at) })),
+    spots,
+  );
+  places.forEach((place, i) => {
+    const element = box.children[i];
+    if (!(element instanceof HTMLElement)) return;
+    element.hidden = place === null;
+    if (place !== null)
+      element.style.transform = `translate(-50%, -50%) translate(${place.x.toFixed(1)}px, ${place.y.toFixed(1)}px)`;
+  });
+}
