@@ -6,6 +6,7 @@ import { takeUpdate } from "./keep/offline.ts";
 import { openFiles } from "./keep/openBook.ts";
 import { LooseFacts } from "./leaves/papers/LooseFacts.tsx";
 import { FindingList } from "./parts/FindingList.tsx";
+import { holdFocus } from "./parts/holdFocus.ts";
 import { hearKeys, KEY_SHEET } from "./parts/keys.ts";
 import { Sheet } from "./parts/Sheet.tsx";
 import { dismiss } from "./store/bookStore.ts";
@@ -109,6 +110,7 @@ export function App() {
     else document.documentElement.dataset.theme = theme;
   }, [theme]);
   useEffect(hearKeys, []);
+  useEffect(holdFocus, []);
   return (
     <>
       <Notices />

@@ -1,5 +1,5 @@
 // The desk before a job is open: drop a form, begin with a starter, go on with a job that is kept here.
-import { useEffect, useState } from "react";
+import { useEffect, useRef, useState } from "react";
 import { deleteJob, type KeptJob, listJobs } from "./keep/jobStore.ts";
 import { explainFault, openKept, openNew } from "./keep/keepBook.ts";
 import { openFiles, tryOpen } from "./keep/openBook.ts";
@@ -14,6 +14,17 @@ export function JobList() {
   const [fault, setFault] = useState("");
   // a job that is deleted cannot come back: asked for twice
   const [sure, setSure] = useState<string | null>(null);
+  // the button that was pressed goes with the question and with the answer: which one has the focus next
+  const next = useRef<string | null>(null);
+  const takeFocus = (name: string) => (element: HTMLElement | null) => {
+    if (element === null || next.current !== name) return;
+    next.current = null;
+    element.focus();
+  };
+  const turn = (id: string | null, focus: string) => {
+    next.current = focus;
+    setSure(id);
+  };
   const read = () => {
     listJobs()
       .then(setJobs)
@@ -24,12 +35,12 @@ export function JobList() {
   if (jobs === null) return <p className="hint">Looking…</p>;
   if (jobs.length === 0) return <p className="hint">None yet. Whatever you open is kept here as you go.</p>;
   const remove = async (id: string) => {
-    setSure(null);
+    turn(null, "list");
     await tryOpen(() => deleteJob(id));
     read();
   };
   return (
-    <ul className="jobs">
+    <ul className="jobs" ref={takeFocus("list")} tabIndex={-1}>
       {jobs.map((j) => (
         <li key={j.id}>
           <button type="button" className="open" onClick={() => tryOpen(async () => void (await openKept(j.id)))}>
@@ -38,16 +49,20 @@ export function JobList() {
           <span className="quiet">kept {showTime(j.savedAt)}</span>
           {sure === j.id ? (
             <span className="sure">
-              <button type="button" aria-label={`Delete ${j.title} for good`} onClick={() => remove(j.id)}>
+              <button type="button" aria-label={`Delete for good: ${j.title}`} onClick={() => remove(j.id)}>
                 Delete for good
               </button>
-              {/* the button that asked is gone; what harms nothing is at hand next */}
-              <button type="button" ref={(b) => b?.focus()} onClick={() => setSure(null)}>
+              <button type="button" ref={takeFocus("keep")} onClick={() => turn(null, j.id)}>
                 Keep it
               </button>
             </span>
           ) : (
-            <button type="button" aria-label={`Delete ${j.title}`} onClick={() => setSure(j.id)}>
+            <button
+              type="button"
+              ref={takeFocus(j.id)}
+              aria-label={`Delete ${j.title}`}
+              onClick={() => turn(j.id, "keep")}
+            >
               Delete
             </button>
           )}

@@ -89,7 +89,7 @@ describe("opening", { timeout: LONG }, () => {
     await jobs.getByRole("button", { name: "Keep it" }).click();
     await name.waitFor();
     await jobs.getByRole("button", { name: `Delete ${title}`, exact: true }).click();
-    await jobs.getByRole("button", { name: `Delete ${title} for good` }).click();
+    await jobs.getByRole("button", { name: `Delete for good: ${title}` }).click();
     await jobs.getByText("None yet.").waitFor();
     await clear(desk);
   });

@@ -1,12 +1,15 @@
 // A sheet laid over the book: keys, findings, jobs. Escape puts it away.
-import { useEffect, useRef } from "react";
+import { useLayoutEffect, useRef } from "react";
 import { bookStore } from "../store/bookStore.ts";
 
 /** The sheet; focus goes into it and comes back. */
 export function Sheet({ title, children }: { title: string; children: React.ReactNode }) {
   const dialog = useRef<HTMLDialogElement>(null);
-  useEffect(() => {
-    dialog.current?.showModal();
+  useLayoutEffect(() => {
+    const shown = dialog.current;
+    shown?.showModal();
+    // only a sheet that is closed, not one that is merely gone, gives the focus back to where it was
+    return () => shown?.close();
   }, []);
   const close = () => bookStore.setState({ sheet: "none" });
   return (
@@ -14,7 +17,7 @@ export function Sheet({ title, children }: { title: string; children: React.Reac
       ref={dialog}
       className="over"
       aria-label={title}
-      onClose={close}
+      onClose={() => dialog.current !== null && close()}
       onKeyDown={(e) => {
         // the browser tells of its closing a moment later, and a key pressed meanwhile would be lost
         if (e.key !== "Escape") return;
