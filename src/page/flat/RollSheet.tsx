@@ -230,12 +230,12 @@ export function RollKey({ roll }: { roll: NestedRoll }) {
     <ul className="rollkey" aria-label="What the roll shows">
       {items.map(([look, words]) => (
         <li key={look}>
-          <svg className="sheet roll" viewBox="0 0 28 14" aria-hidden="true">
+          <svg className="swatch" viewBox="0 0 28 14" aria-hidden="true">
             {look === "used" ? (
               <line className={look} x1={14} x2={14} y1={0} y2={14} />
             ) : (
-              <g className={look}>
-                <path className={look} d="M1 1H27V13H1Z" />
+              <g className={look === "placed pinned" ? "cloth held" : look === "placed" ? "cloth" : look}>
+                <path d="M1 1H27V13H1Z" />
               </g>
             )}
           </svg>
