@@ -1,5 +1,8 @@
 import { describe, expect, test } from "vitest";
+import { buildRandom, drawInteger } from "../../../src/core/numeric/random.ts";
 import { numberCell, writeCsv } from "../../../src/core/papers/tables/csv.ts";
+import { plainText } from "../../../src/core/papers/words/plainText.ts";
+import { splitTable } from "../../../src/core/rig/correct/readTable.ts";
 import { readCsv } from "./readCsv.ts";
 
 describe("writeCsv", () => {
@@ -26,5 +29,20 @@ describe("writeCsv", () => {
 
   test("a number that is not finite is refused", () => {
     expect(() => writeCsv(["a"], [[numberCell(Number.NaN, 1)]])).toThrow(/finite/);
+  });
+});
+
+describe("a list shown on the page", () => {
+  test("has the cells that were written, 500 random tables", () => {
+    const parts = ["P1", ",", '"', " ", "=SUM(A1)", "-", "+2", "@x", "é", "0.5", ""];
+    const random = buildRandom(5);
+    const cell = () =>
+      Array.from({ length: drawInteger(random, 4) }, () => parts[drawInteger(random, parts.length)]).join("");
+    for (let k = 0; k < 500; k++) {
+      const head = ["id", "name", "note"];
+      const rows = Array.from({ length: drawInteger(random, 4) }, () => [cell(), cell(), cell()]);
+      const shown = splitTable(writeCsv(head, rows), ",", "list.csv").map((r) => r.cells);
+      expect(shown).toEqual([head, ...rows.map((row) => row.map(plainText))]);
+    }
   });
 });

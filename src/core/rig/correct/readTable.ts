@@ -28,8 +28,8 @@ function readCell(text: string): string {
   return text.startsWith("'") && FORMULA.test(text.slice(1)) ? text.slice(1) : text;
 }
 
-/** Cells of all lines; an empty line is none. @throws PlanError readings-quote */
-function splitTable(text: string, separator: string, what: string): { row: number; cells: string[] }[] {
+/** Cells of all lines, without blanks round them; an empty line is none. @throws PlanError readings-quote */
+export function splitTable(text: string, separator: string, what: string): { row: number; cells: string[] }[] {
   const rows: { row: number; cells: string[] }[] = [];
   let [cells, cell, quoted, opened, line, row] = [[] as string[], "", false, 0, 1, 1];
   const endRow = () => {

@@ -1,8 +1,8 @@
 // A paper looked at on the page.
 import { useEffect, useMemo } from "react";
+import { splitTable } from "../../../core/rig/correct/readTable.ts";
 import { blobOf } from "../../keep/saveFiles.ts";
 import type { PaperFile } from "../../store/bookStore.ts";
-import { readCsv } from "./readCsv.ts";
 
 /** A drawing for the table has hairlines; on a screen they are drawn a pixel wide. Only for looking at. */
 function thicken(file: PaperFile): PaperFile {
@@ -15,8 +15,9 @@ function thicken(file: PaperFile): PaperFile {
 const SHOWN = 500;
 
 function Table({ file }: { file: PaperFile }) {
-  const [head = [], ...rows] = readCsv(new TextDecoder().decode(file.bytes));
-  const shown = rows.slice(0, SHOWN).map((cells, row) => ({ row, cells }));
+  const [head, ...rows] = splitTable(new TextDecoder().decode(file.bytes), ",", file.path);
+  const names = head?.cells ?? [];
+  const shown = rows.slice(0, SHOWN);
   return (
     <div className="preview list" tabIndex={0} role="group" aria-label={`List ${file.path}`}>
       <table className="things">
@@ -26,7 +27,7 @@ function Table({ file }: { file: PaperFile }) {
         </caption>
         <thead>
           <tr>
-            {head.map((cell) => (
+            {names.map((cell) => (
               <th key={cell} scope="col">
                 {cell}
               </th>
@@ -37,7 +38,7 @@ function Table({ file }: { file: PaperFile }) {
           {shown.map(({ row, cells }) => (
             <tr key={row}>
               {cells.map((cell, k) => (
-                <td key={head[k]}>{cell}</td>
+                <td key={names[k]}>{cell}</td>
               ))}
             </tr>
           ))}
