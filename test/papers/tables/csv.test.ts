@@ -2,7 +2,7 @@ import { describe, expect, test } from "vitest";
 import { buildRandom, drawInteger } from "../../../src/core/numeric/random.ts";
 import { numberCell, writeCsv } from "../../../src/core/papers/tables/csv.ts";
 import { plainText } from "../../../src/core/papers/words/plainText.ts";
-import { splitTable } from "../../../src/core/rig/correct/readTable.ts";
+import { listCells } from "../../../src/core/plan/listCells.ts";
 import { readCsv } from "./readCsv.ts";
 
 describe("writeCsv", () => {
@@ -41,7 +41,7 @@ describe("a list shown on the page", () => {
     for (let k = 0; k < 500; k++) {
       const head = ["id", "name", "note"];
       const rows = Array.from({ length: drawInteger(random, 4) }, () => [cell(), cell(), cell()]);
-      const shown = splitTable(writeCsv(head, rows), ",", "list.csv").map((r) => r.cells);
+      const shown = listCells(new TextEncoder().encode(writeCsv(head, rows)), "list.csv");
       expect(shown).toEqual([head, ...rows.map((row) => row.map(plainText))]);
     }
   });

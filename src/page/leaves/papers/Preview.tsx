@@ -1,6 +1,6 @@
 // A paper looked at on the page.
 import { useEffect, useMemo } from "react";
-import { splitTable } from "../../../core/rig/correct/readTable.ts";
+import { listCells } from "../../../core/plan/listCells.ts";
 import { blobOf } from "../../keep/saveFiles.ts";
 import type { PaperFile } from "../../store/bookStore.ts";
 
@@ -15,9 +15,8 @@ function thicken(file: PaperFile): PaperFile {
 const SHOWN = 500;
 
 function Table({ file }: { file: PaperFile }) {
-  const [head, ...rows] = splitTable(new TextDecoder().decode(file.bytes), ",", file.path);
-  const names = head?.cells ?? [];
-  const shown = rows.slice(0, SHOWN);
+  const [names = [], ...rows] = listCells(file.bytes, file.path);
+  const shown = rows.slice(0, SHOWN).map((cells, row) => ({ row, cells }));
   return (
     <div className="preview list" tabIndex={0} role="group" aria-label={`List ${file.path}`}>
       <table className="things">
