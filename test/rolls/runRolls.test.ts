@@ -484,6 +484,8 @@ describe("random pieces", () => {
           seed,
         });
         judge(output, pieces, gap);
+        // A selvedge off either side: 2000 − 2 · 40.
+        for (const roll of output) expect(roll.usableWidth).toBe(1920);
         laid += output.reduce((sum, r) => sum + r.placements.length, 0);
         const fit = pieces.length - findings.length;
         expect(output.reduce((sum, r) => sum + r.placements.length, 0)).toBe(fit);
