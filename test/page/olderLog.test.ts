@@ -30,7 +30,9 @@ const forcesIn = (text: string | null) => readReadings(text ?? "").map((r) => r.
 
 async function openZip(files: Record<string, string>) {
   const zip = zipSync(Object.fromEntries(Object.entries(files).map(([name, text]) => [name, strToU8(text)])));
-  return readFiles(await loadFiles([new File([Uint8Array.from(zip)], "Ticket-booth.zip")]), null);
+  const faults: string[] = [];
+  const loaded = await loadFiles([new File([Uint8Array.from(zip)], "Ticket-booth.zip")]);
+  return { ...readFiles(loaded, null, (fault) => faults.push(fault.message)), faults };
 }
 
 /** Code and words the tables are refused with. */
@@ -60,6 +62,23 @@ describe("a log saved by an older page", () => {
     expect(log.map((r) => r.struck ?? false)).toEqual([false, true, ...Array(6).fill(false)]);
     expect(log.flatMap((r) => r.step ?? [])).toEqual([7, 7]);
     expect(log[6]).toMatchObject({ freeLength: 12, massPerMetre: 1.9 });
+  });
+
+  it("a time that tells no zone is the page's own, without seconds or with a blank too (bug: taken for the machine's)", () => {
+    const typed = table("readings.csv", "time,id,force_kN\n2026-03-04T08:10,T1,41\n2026-03-04 08:40:00,T1,44\n");
+    expect(readLog([typed, older[2]])?.lines.map((r) => [r.time, r.force ?? r.turned])).toEqual([
+      ["2026-03-04T08:10Z", 41],
+      ["2026-03-04T08:30:00Z", 4],
+      ["2026-03-04T08:30:00Z", -2.5],
+      ["2026-03-04T08:40:00Z", 44],
+    ]);
+  });
+
+  it("that cannot be read does not keep its job from being opened, and says why (bug: the whole zip was refused)", async () => {
+    const zipped = { "job.json": JOB, "readings.csv": "time,id,force_kN\nnoon,T1,4\n", "turns.csv": TURNS };
+    const { job, log, faults } = await openZip(zipped);
+    expect([job.title, log]).toEqual(["Ticket booth", []]);
+    expect(faults).toEqual([expect.stringMatching(/^readings\.csv: a line of T1 has the time "noon"/)]);
   });
 
   it("parts at its turns: what was read before them is another state, what was struck counts in neither", async () => {

@@ -11,8 +11,9 @@ export interface LogFile {
   text: string;
 }
 
-/** Time as the older page wrote it: in UTC, without saying so. */
-const UNZONED = /^\d{4}-\d\d-\d\dT\d\d:\d\d:\d\d$/;
+/** A time that tells no zone. The older page wrote its own in UTC so; taken as the machine's own time it would lie hours off its turn. */
+const UNZONED = /^(\d{4}-\d\d-\d\d)[T ](\d\d:\d\d(?::\d\d(?:\.\d+)?)?)$/;
+const zoned = (time: string) => time.replace(UNZONED, "$1T$2Z");
 
 /** Work on one file; what is wrong there is told with its name. */
 function inFile<T>(name: string, work: () => T): T {
@@ -25,10 +26,10 @@ function inFile<T>(name: string, work: () => T): T {
 }
 
 /** When a line was written, ms; NaN where that cannot be told. */
-const timeOf = ({ time }: SiteLine) => Date.parse(UNZONED.test(time) ? `${time}Z` : time);
+const timeOf = ({ time }: SiteLine) => Date.parse(zoned(time));
 
 /** The line with its zone told: beside lines that tell theirs it keeps its place. */
-const marked = (line: SiteLine): SiteLine => (UNZONED.test(line.time) ? { ...line, time: `${line.time}Z` } : line);
+const marked = (line: SiteLine): SiteLine => ({ ...line, time: zoned(line.time) });
 
 function tellUntimed(name: string, { time, id }: SiteLine): PlanError {
   return new PlanError(

@@ -3,7 +3,7 @@ import { takeLog } from "../actions/site/takeLog.ts";
 import { act, bookStore, notify } from "../store/bookStore.ts";
 import { deleteJob } from "./jobStore.ts";
 import { explainFault, openNew } from "./keepBook.ts";
-import { type LoadedFile, loadFiles, readFiles, readLog, readLooseFacts } from "./openFiles.ts";
+import { findLogTables, type LoadedFile, loadFiles, readFiles, readLog, readLooseFacts } from "./openFiles.ts";
 
 /** Opens, and says what went wrong. */
 export async function tryOpen(open: () => Promise<void>): Promise<void> {
@@ -40,9 +40,23 @@ export async function openFiles(files: readonly File[]): Promise<void> {
     const loaded = await loadFiles(files);
     if (takeReadings(loaded)) return;
     const loose = readLooseFacts(loaded);
-    if (loose !== null) return bookStore.setState({ loose, sheet: "facts" });
-    const next = readFiles(loaded, project);
+    if (loose !== null) {
+      const left = findLogTables(loaded).map((f) => f.name);
+      if (left.length > 0)
+        notify("log", `${left.join(", ")}: not taken in beside facts; open the job, then drop them alone.`, true);
+      return bookStore.setState({ loose, sheet: "facts" });
+    }
+    let fault = "";
+    const next = readFiles(loaded, project, ({ message }) => {
+      fault = message;
+    });
     openNew(next);
+    if (fault !== "")
+      notify(
+        "log",
+        `The job is open without the log that lies beside it. ${fault}. Mend that table and drop all tables of the log here.`,
+        true,
+      );
     // The job that waited for its mesh goes on under a new name in the store.
     if (project !== null && next.job === project.job) await deleteJob(project.id);
   });

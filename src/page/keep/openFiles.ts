@@ -6,6 +6,7 @@ import { leastJob } from "../../core/job/leastJob.ts";
 import { readJson } from "../../core/job/readJson.ts";
 import { isFacts, readFacts } from "../../core/plan/factsFile.ts";
 import { decodeText, titleOfMesh } from "../../core/plan/meshText.ts";
+import type { SiteLine } from "../../core/plan/siteLog.ts";
 import { PlanError } from "../../core/problem.ts";
 import type { Facts } from "../../core/records/facts.ts";
 import type { MeshFile, Project } from "../store/project.ts";
@@ -47,9 +48,14 @@ export async function loadFiles(files: readonly File[]): Promise<LoadedFile[]> {
 
 /**
  * The project the files make. Dropped beside an open job, a mesh it waits for completes it.
+ * @param onLogFault told why the log beside a job cannot be read: the job is whole without it, and opened
  * @throws PlanError files-none, files-facts, files-log; codes of readJson and migrateJob
  */
-export function readFiles(files: readonly LoadedFile[], open: Project | null): Project {
+export function readFiles(
+  files: readonly LoadedFile[],
+  open: Project | null,
+  onLogFault: (fault: PlanError) => void,
+): Project {
   const meshes = files.filter((f) => /\.obj$/i.test(f.name));
   const job = findJob(files);
   if (job !== undefined) {
@@ -63,7 +69,7 @@ export function readFiles(files: readonly LoadedFile[], open: Project | null): P
     const given = migrateJob(value) as unknown as JobFile;
     const wanted = baseName(given.mesh?.file);
     const mesh = meshes.find((m) => m.name === wanted) ?? meshes[0] ?? null;
-    return { id: newId(), job: given, mesh, log: readLog(files)?.lines ?? [] };
+    return { id: newId(), job: given, mesh, log: readLogBeside(files, onLogFault) };
   }
   const [mesh] = meshes;
   if (mesh === undefined) {
@@ -115,13 +121,27 @@ function isJob(file: LoadedFile): boolean {
   return new TextDecoder().decode(file.bytes.subarray(0, 400)).includes("seamstay-job");
 }
 
+function readLogBeside(files: readonly LoadedFile[], onLogFault: (fault: PlanError) => void): SiteLine[] {
+  try {
+    return readLog(files)?.lines ?? [];
+  } catch (error) {
+    if (!(error instanceof PlanError)) throw error;
+    onLogFault(error);
+    return [];
+  }
+}
+
+/** Tables whose names say that they are of a site's log. */
+export function findLogTables(files: readonly LoadedFile[]): LoadedFile[] {
+  return files.filter((f) => /(readings|turns|log)[^/]*\.csv$/i.test(f.name));
+}
+
 /**
  * The log among the files, by their names; files that are all tables are taken for one whatever their names. Null where there is none.
  * @throws PlanError codes of readLogFiles
  */
 export function readLog(files: readonly LoadedFile[]): ReturnType<typeof readLogFiles> {
-  const tables = files.filter((f) => /\.csv$/i.test(f.name));
-  const named = tables.filter((f) => /(readings|turns|log)[^/]*\.csv$/i.test(f.name));
-  const logs = named.length === 0 && tables.length === files.length ? tables : named;
+  const named = findLogTables(files);
+  const logs = named.length === 0 && files.every((f) => /\.csv$/i.test(f.name)) ? files : named;
   return readLogFiles(logs.map((f) => ({ name: f.name, text: decodeText(f.bytes, f.name) })));
 }

@@ -162,6 +162,7 @@ export function requestPlan(project: Project): void {
     soFar: {},
     fault: null,
     writing: false,
+    papersFault: null,
     correcting: false,
     progress: { share: 0, words: "reading the job", station: "job" },
   });
@@ -174,7 +175,8 @@ export function requestPapers(facts: Facts): void {
   const { choice } = bookStore.getState();
   run++;
   subject = { facts, choice };
-  bookStore.setState({ writing: true, papersFault: null });
+  // One worker: what it did is ended, and must not be shown as still going on.
+  bookStore.setState({ writing: true, papersFault: null, correcting: false });
   if (busy) end();
   send({ kind: "papers", run, facts: made === facts ? null : facts, choice, name: null });
 }
@@ -188,7 +190,7 @@ export function requestCorrection(project: Project, step: number, percent: numbe
   if (text === null) return;
   run++;
   subject = { readingsOf: project };
-  bookStore.setState({ correcting: true, correctFault: null, corrected: null });
+  bookStore.setState({ correcting: true, correctFault: null, corrected: null, writing: false });
   send({ kind: "correct", run, given: project.job, mesh: project.mesh, text, percent, kept });
 }
 
@@ -196,7 +198,7 @@ export function requestCorrection(project: Project, step: number, percent: numbe
 export function stopPlan(): void {
   const { status, writing, correcting } = bookStore.getState();
   const planning = status === "running";
-  if (!busy && !planning) return;
+  if (!busy && !planning && !writing && !correcting) return;
   due = null;
   run++;
   end();

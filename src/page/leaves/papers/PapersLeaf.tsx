@@ -29,13 +29,16 @@ export function PapersLeaf() {
   const papers = useBook((b) => b.papers);
   const fault = useBook((b) => b.papersFault);
   const writing = useBook((b) => b.writing);
+  const correcting = useBook((b) => b.correcting);
   const project = useBook((b) => b.project);
   const [shown, setShown] = useState<string | null>(null);
   const choice = useBook((b) => b.choice);
   const files = papers?.of === facts && papers?.choice === choice ? papers?.files : undefined;
   useEffect(() => {
-    if (status === "done" && facts !== null && files === undefined && !writing && fault === null) requestPapers(facts);
-  }, [status, facts, files, writing, fault]);
+    // corrections that are worked out go first: papers would end them
+    const idle = status === "done" && !writing && !correcting;
+    if (idle && facts !== null && files === undefined && fault === null) requestPapers(facts);
+  }, [status, facts, files, writing, correcting, fault]);
   const stem = `${fileStem(facts?.job.title ?? "")}-${facts?.job.revision ?? ""}`;
   const shownFile = files?.find((f) => f.path === shown) ?? files?.find((f) => /^panels\/.*\.svg$/.test(f.path));
   return (
