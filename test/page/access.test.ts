@@ -175,7 +175,7 @@ describe("within reach", { timeout: LONG }, () => {
       await turnTo(page, leaf);
       await page.locator(texts).first().waitFor();
       await expect.poll(() => lowContrast(page, texts, 4.5), { ...SOON, message: leaf }).toMatchObject({ low: [] });
-      expect((await lowContrast(page, texts, 4.5)).texts).toBeGreaterThan(2);
+      await expect.poll(async () => (await lowContrast(page, texts, 4.5)).texts, SOON).toBeGreaterThan(2);
     }
     await turnTo(page, "Panels");
     await page.getByRole("button", { name: /^Panel P2/ }).press("Enter");
@@ -195,7 +195,7 @@ describe("within reach", { timeout: LONG }, () => {
     const figures =
       ".leaf-site :is(h1, .answer, input, output, .unit, .window, .window strong, label, .who, legend, td)";
     await expect.poll(() => lowContrast(page, figures, 7), SOON).toMatchObject({ low: [] });
-    expect((await lowContrast(page, figures, 7)).texts).toBeGreaterThan(12);
+    await expect.poll(async () => (await lowContrast(page, figures, 7)).texts, SOON).toBeGreaterThan(12);
     await page.getByLabel("Force, kN").fill("");
   });
 

@@ -18,7 +18,7 @@ export function holdFocus(): () => void {
     const near = around.find((p) => p.isConnected && p.querySelector(FOCUSABLE) !== null);
     const next = near?.querySelector<HTMLElement>(FOCUSABLE) ?? document.querySelector<HTMLElement>("h1[tabindex]");
     last = null;
-    next?.focus();
+    next?.focus({ preventScroll: true });
   };
   const watch = new MutationObserver(mend);
   watch.observe(document.body, { childList: true, subtree: true });

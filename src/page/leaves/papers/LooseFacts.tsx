@@ -1,5 +1,5 @@
 // The papers of a facts.json opened by itself, on a sheet over whatever is on the desk: that stays as it is.
-import { useEffect, useState } from "react";
+import { useCallback, useEffect, useRef, useState } from "react";
 import { fileStem, saveFile, zipFiles } from "../../keep/saveFiles.ts";
 import { Sheet } from "../../parts/Sheet.tsx";
 import type { WrittenPapers } from "../../store/bookStore.ts";
@@ -10,33 +10,36 @@ import { PaperChoices } from "./PaperChoices.tsx";
 import { PaperList } from "./PaperList.tsx";
 import { Preview } from "./Preview.tsx";
 
-type Answer = WrittenPapers | PlanFault | "stopped" | null;
+type Answer = WrittenPapers | PlanFault | "stopped";
 
-/** Writes the papers and again where another choice is made; `again` counts how often it was asked for anew. */
-function useLoosePapers(again: number): [Answer, () => void] {
+/** Writes the papers, and again where other facts are opened or another choice is made; `answer` null: they are being written. */
+function useLoosePapers(): { answer: Answer | null; stop: () => void; write: () => void } {
   const loose = useBook((b) => b.loose);
   const choice = useBook((b) => b.choice);
-  const [answer, setAnswer] = useState<Answer>(null);
-  const [stop, setStop] = useState<() => void>(() => () => {});
-  // biome-ignore lint/correctness/useExhaustiveDependencies: asked for anew, it is written anew
-  useEffect(() => {
+  const [last, setLast] = useState<{ of: typeof loose; choice: typeof choice; answer: Answer } | null>(null);
+  const end = useRef(() => {});
+  const tell = useCallback((answer: Answer) => setLast({ of: loose, choice, answer }), [loose, choice]);
+  const write = useCallback(() => {
     if (loose === null) return;
-    setAnswer(null);
-    const end = drawLoosePapers(loose, choice, setAnswer);
-    setStop(() => () => {
-      end();
-      setAnswer("stopped");
-    });
-    return end;
-  }, [loose, choice, again]);
-  return [answer, stop];
+    setLast(null);
+    end.current = drawLoosePapers(loose, choice, tell);
+  }, [loose, choice, tell]);
+  useEffect(() => {
+    write();
+    return () => end.current();
+  }, [write]);
+  const stop = () => {
+    end.current();
+    tell("stopped");
+  };
+  // what was written of other facts, or chosen otherwise, is never shown as theirs
+  return { answer: last?.of === loose && last?.choice === choice ? last.answer : null, stop, write };
 }
 
 /** The sheet. */
 export function LooseFacts() {
   const loose = useBook((b) => b.loose);
-  const [again, setAgain] = useState(0);
-  const [answer, stop] = useLoosePapers(again);
+  const { answer, stop, write } = useLoosePapers();
   const [shown, setShown] = useState<string | null>(null);
   if (loose === null) return null;
   const { title, revision, issue } = loose.facts.job;
@@ -66,7 +69,7 @@ export function LooseFacts() {
       {(answer === "stopped" || (answer !== null && "message" in answer)) && (
         <p role="alert">
           {answer === "stopped" ? "Stopped; nothing was written." : answer.message}{" "}
-          <button type="button" onClick={() => setAgain(again + 1)}>
+          <button type="button" onClick={write}>
             Write the papers
           </button>
         </p>
