@@ -108,12 +108,12 @@ export function PairSheet() {
           <caption>Cut, mm; stress as patterned, kN/m</caption>
           <tbody>
             {panels.map((p) => {
-              const wide = room !== null && p.size.width > room;
+              const wide = room !== null && p.size.width > 1000 * room.cut;
               return (
                 <tr key={p.id} className={wide ? "fails" : undefined}>
                   <th scope="row">
                     {p.id}
-                    {wide && <span className="against">the roll takes {figure(room, 0)}</span>}
+                    {wide && <span className="against">the cloth takes {figure(1000 * room.cut, 0)}</span>}
                   </th>
                   <td>
                     {figure(p.size.length, 0)} × {figure(p.size.width, 0)}

@@ -1,10 +1,11 @@
-// How wide a panel may be to lie on the cloth of the job.
+// How wide a panel may be to lie on the cloth of the job, as the plan itself judges it.
+import { firstOptions, measureRoom } from "../../core/plan/clothRoom.ts";
 import { useBook } from "./useBook.ts";
 
-/** Widest panel the rolls take, mm; null before the job is read. */
-export function useRoom(): number | null {
+/** Widest cut panel, and widest strip before its allowances, that the job's cloth takes, m; null before the job is read. */
+export function useRoom(): { cut: number; strip: number } | null {
   const job = useBook((b) => b.job);
   if (job === null) return null;
-  const rolls = job.rolls ?? [{ width: job.fabric.rollWidth, selvedge: job.fabric.selvedge }];
-  return Math.min(...rolls.map((r) => r.width - 2 * r.selvedge));
+  const room = measureRoom(job);
+  return { cut: room.width, strip: firstOptions(room, job.allowances.seam / 1000).usableWidth };
 }

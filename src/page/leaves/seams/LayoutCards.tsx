@@ -85,7 +85,10 @@ function tellWhy(name: string, own: Sums, stood: Sums | null, of: number): strin
   return `${head}; in place of ${stood.panels} panels, ${stood.seams.toFixed(1)} m of seam, stress off by ${(100 * stood.stressError).toFixed(1)} %`;
 }
 
-/** Widths of the panels; where the widest is wider than the rolls take, that is said. */
+/** A strip is too wide past this share of the limit, as in the plan's own finding. */
+const OVER = 1.0005;
+
+/** Widths of the panels. */
 function tellWidths({ least, greatest }: Sums): string {
   const [from, to] = [figure(least, 2), figure(greatest, 2)];
   return from === to ? `${to} m` : `${from} to ${to} m`;
@@ -93,7 +96,7 @@ function tellWidths({ least, greatest }: Sums): string {
 
 function Figures({ sums }: { sums: Sums }) {
   const room = useRoom();
-  const wide = room !== null && sums.greatest > room / 1000;
+  const wide = room !== null && sums.greatest > OVER * room.strip;
   const rows: [string, string][] = [
     ["Panels", String(sums.panels)],
     ["Seam", `${figure(sums.seams, 1)} m`],
@@ -108,7 +111,7 @@ function Figures({ sums }: { sums: Sums }) {
           <tr key={what} className={wide && what === "Widths" ? "fails" : undefined}>
             <th scope="row">
               {what}
-              {wide && what === "Widths" && <span className="against">the roll takes {figure(room / 1000, 2)} m</span>}
+              {wide && what === "Widths" && <span className="against">the cloth takes {figure(room.strip, 2)} m</span>}
             </th>
             <td>
               {wide && what === "Widths" && <span className="mark">fails </span>}
