@@ -6,8 +6,10 @@ import { setPin } from "../actions/rolls/setPin.ts";
 import { act, bookStore } from "../store/bookStore.ts";
 import { useBook } from "../store/useBook.ts";
 import { namePlace } from "./namePlace.ts";
+import { pieceLabel } from "./pieceLabel.ts";
 import { pinPlace } from "./pinPlace.ts";
 import { type RollRow, rollRows } from "./rollRows.ts";
+import { useScale } from "./useScale.ts";
 
 interface Drag {
   panel: string;
@@ -30,11 +32,10 @@ function nameOn(cut: readonly Vec2[], p: Placement): { at: Vec2; room: number } 
   return { at: [turn * at[0] + p.x, turn * at[1] + p.y], room };
 }
 
-/** Height of a name that stays within its piece, mm; 0 where it would be too small to read. */
-function letterHeight(cut: readonly Vec2[], room: number, name: string, roll: NestedRoll): number {
-  const xs = cut.map((q) => q[0]);
-  const height = Math.min(roll.width / 9, room / 2, (Math.max(...xs) - Math.min(...xs)) / (0.7 * name.length));
-  return height < roll.width / 32 ? 0 : height;
+/** Middle of a label that no end of its row cuts off, on the roll, mm. */
+function withinRow(x: number, { words, height }: { words: string; height: number }, row: RollRow): number {
+  const half = 0.35 * words.length * height;
+  return Math.max(row.from + half, Math.min(row.to - half, x));
 }
 
 /** Pins a placed panel where it lies, moved by dx, dy mm. */
@@ -55,11 +56,12 @@ function PlacedPiece(props: {
   cut: readonly Vec2[];
   row: RollRow;
   clip: string;
+  scale: number;
   drag: Drag | null;
   onGrab: (e: React.PointerEvent, p: Placement) => void;
   first: boolean;
 }) {
-  const { roll, placement: p, cut, row, clip, drag, onGrab, first } = props;
+  const { roll, placement: p, cut, row, clip, scale, drag, onGrab, first } = props;
   const pointed = useBook((b) => b.pointed);
   const chosen = useBook((b) => b.chosen);
   const pinned = useBook((b) => b.project?.job.nest?.pins?.some((q) => q.panel === p.panel) ?? false);
@@ -69,7 +71,10 @@ function PlacedPiece(props: {
     room,
   } = nameOn(cut, p);
   const lit = p.panel === pointed || p.panel === chosen;
-  const letters = letterHeight(cut, room, p.panel, roll);
+  const here = x >= row.from && x < row.to;
+  const xs = cut.map((q) => q[0]);
+  const length = Math.max(...xs) - Math.min(...xs);
+  const label = here ? pieceLabel(`${p.panel}${pinned ? " ⚲" : ""}`, p.order, { length, across: room, scale }) : null;
   return (
     <g clipPath={`url(#${clip})`}>
       <g
@@ -90,10 +95,15 @@ function PlacedPiece(props: {
       >
         <title>{p.panel}</title>
         <path d={outline(cut, p, by)} />
-        {letters > 0 && x >= row.from && x < row.to && (
-          <text x={x + by.x} y={-(y + by.y)} transform="scale(1 -1)" fontSize={letters} className="panel-name">
-            {p.panel}
-            {pinned ? " ⚲" : ""}
+        {label !== null && (
+          <text
+            x={withinRow(x, label, row) + by.x}
+            y={-(y + by.y)}
+            transform="scale(1 -1)"
+            fontSize={label.height}
+            className="panel-name"
+          >
+            {label.words}
           </text>
         )}
       </g>
@@ -102,7 +112,7 @@ function PlacedPiece(props: {
 }
 
 /** Cloth of one row: selvedges, bed, flaws, where the used length ends. */
-function RowCloth({ roll, row, clip }: { roll: NestedRoll; row: RollRow; clip: string }) {
+function RowCloth({ roll, row, clip, scale }: { roll: NestedRoll; row: RollRow; clip: string; scale: number }) {
   const edge = (roll.width - roll.usableWidth) / 2;
   const length = Math.max(Math.min(row.to, roll.length) - row.from, 0);
   return (
@@ -135,7 +145,7 @@ function RowCloth({ roll, row, clip }: { roll: NestedRoll; row: RollRow; clip: s
         x={row.from}
         y={-(1.03 * roll.width - edge)}
         transform="scale(1 -1)"
-        fontSize={roll.width / 14}
+        fontSize={Math.min(0.1 * roll.width, 13 / scale)}
         className="metre"
       >
         {(row.from / 1000).toFixed(1)} m
@@ -160,6 +170,8 @@ export function RollSheet({ facts, roll, shape }: { facts: Facts; roll: NestedRo
   const pitch = roll.width * (1 + GAP);
   const cuts = new Map([...(facts.panels ?? []), ...(facts.pieces ?? [])].map((p) => [p.id, p.cut]));
   const edge = (roll.width - roll.usableWidth) / 2;
+  const [wide, high] = [1.04 * span, rows.length * pitch];
+  const scale = useScale(svg, wide, high);
   const place = (e: { clientX: number; clientY: number }) => {
     const matrix = svg.current?.getScreenCTM()?.inverse();
     const p = new DOMPoint(e.clientX, e.clientY).matrixTransform(matrix);
@@ -187,7 +199,7 @@ export function RollSheet({ facts, roll, shape }: { facts: Facts; roll: NestedRo
     <svg
       ref={svg}
       className="sheet roll"
-      viewBox={`${-0.02 * span} ${-0.14 * roll.width} ${1.04 * span} ${rows.length * pitch}`}
+      viewBox={`${-0.02 * span} ${-0.14 * roll.width} ${wide} ${high}`}
       role="group"
       aria-label={`Roll ${roll.id}, ${(roll.used / 1000).toFixed(2)} metres used`}
       onPointerMove={(e) => held.current && hold({ ...held.current, by: wayOf(e, held.current) })}
@@ -196,14 +208,14 @@ export function RollSheet({ facts, roll, shape }: { facts: Facts; roll: NestedRo
     >
       {rows.map((row, i) => (
         <g key={row.from} transform={`translate(${-row.from} ${i * pitch + roll.width - edge}) scale(1 -1)`}>
-          <RowCloth roll={roll} row={row} clip={`${id}r${i}`} />
+          <RowCloth roll={roll} row={row} clip={`${id}r${i}`} scale={scale} />
           {roll.placements.map((p) => {
             const cut = cuts.get(p.panel) ?? [];
             const [middle] = nameOn(cut, p).at;
             return (
               <PlacedPiece
                 key={p.panel}
-                {...{ roll, placement: p, cut, row, drag }}
+                {...{ roll, placement: p, cut, row, scale, drag }}
                 clip={`${id}r${i}`}
                 onGrab={grab}
                 first={middle >= row.from && middle < row.to}
@@ -219,6 +231,10 @@ export function RollSheet({ facts, roll, shape }: { facts: Facts; roll: NestedRo
 /** What the drawing of a roll shows by which look. */
 export function RollKey({ roll }: { roll: NestedRoll }) {
   const pinned = useBook((b) => b.project?.job.nest?.pins?.some((p) => p.roll === roll.id) ?? false);
+  const lit = useBook((b) => {
+    const find = (id: string | null) => roll.placements.find((p) => p.panel === id);
+    return find(b.pointed) ?? find(b.chosen);
+  });
   const items: [string, string][] = [
     ["placed", "panel"],
     ["bed", "offcut"],
@@ -242,6 +258,11 @@ export function RollKey({ roll }: { roll: NestedRoll }) {
           {words}
         </li>
       ))}
+      <li>
+        {lit === undefined
+          ? "Numbers: order of cutting, names in the list."
+          : `Lit up: ${lit.panel}, cut as no. ${lit.order}.`}
+      </li>
       <li>Drag a panel to pin it where it lies.</li>
     </ul>
   );

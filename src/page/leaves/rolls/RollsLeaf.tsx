@@ -3,6 +3,7 @@ import type { ClothTotal, NestedRoll } from "../../../core/records/roll.ts";
 import { RollKey, RollSheet } from "../../flat/RollSheet.tsx";
 import { FigureTable } from "../../parts/FigureTable.tsx";
 import { figure } from "../../parts/figure.ts";
+import { ThingRow } from "../../parts/ThingRow.tsx";
 import { Waiting } from "../../parts/Waiting.tsx";
 import { bookStore } from "../../store/bookStore.ts";
 import { useBook } from "../../store/useBook.ts";
@@ -64,6 +65,36 @@ function Total({ cloth }: { cloth: ClothTotal }) {
           : [{ what: "Cost of the cloth", value: figure(cloth.cost, 2), unit: cloth.currency ?? "" }]),
       ]}
     />
+  );
+}
+
+/** What lies on a roll, in the order of cutting. */
+function Pieces({ roll }: { roll: NestedRoll }) {
+  const inOrder = [...roll.placements].sort((a, b) => (a.order ?? 0) - (b.order ?? 0));
+  return (
+    <details className="pieces">
+      <summary>
+        {inOrder.length} pieces on {roll.id}
+      </summary>
+      <table className="things">
+        <caption>In the order of cutting</caption>
+        <thead>
+          <tr>
+            <th scope="col">Piece</th>
+            <th scope="col">No.</th>
+            <th scope="col">Turned, °</th>
+          </tr>
+        </thead>
+        <tbody>
+          {inOrder.map((p) => (
+            <ThingRow key={p.panel} id={p.panel}>
+              <td>{p.order}</td>
+              <td>{p.rotation}</td>
+            </ThingRow>
+          ))}
+        </tbody>
+      </table>
+    </details>
   );
 }
 
@@ -141,6 +172,7 @@ export function RollsLeaf() {
             />
             <Fill rolls={rolls} />
             {facts?.cloth && <Total cloth={facts.cloth} />}
+            <Pieces roll={shown} />
           </>
         )
       }
