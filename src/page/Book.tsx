@@ -9,7 +9,8 @@ import { SiteLeaf } from "./leaves/site/SiteLeaf.tsx";
 import { countFindings } from "./parts/FindingList.tsx";
 import { jumpTo, leafOfFinding, leafOfPath } from "./parts/jump.ts";
 import { turnTheme } from "./parts/keys.ts";
-import { bookStore, LEAVES, type Leaf, redo, undo } from "./store/bookStore.ts";
+import { PressButton } from "./parts/PressButton.tsx";
+import { type Book as BookState, bookStore, LEAVES, type Leaf, redo, undo } from "./store/bookStore.ts";
 import { useBook } from "./store/useBook.ts";
 import { requestPlan, stopPlan } from "./worker/planner.ts";
 
@@ -62,6 +63,12 @@ function Spine() {
   );
 }
 
+/** The station by its leaf's name, and what is done in it. */
+function tellProgress({ station, words }: BookState["progress"]): string {
+  if (station === "job") return words;
+  return words === "" ? NAMES[station] : `${NAMES[station]}: ${words}`;
+}
+
 function PlanState() {
   const status = useBook((b) => b.status);
   const progress = useBook((b) => b.progress);
@@ -72,10 +79,8 @@ function PlanState() {
     return (
       <div className="state">
         <progress max={1} value={progress.share} aria-label="Planning" />
-        <span className="doing">{progress.words || progress.station}</span>
-        <button type="button" onClick={stopPlan}>
-          Stop
-        </button>
+        <span className="doing">{tellProgress(progress)}</span>
+        <PressButton onPress={stopPlan}>Stop</PressButton>
       </div>
     );
   }
@@ -85,9 +90,7 @@ function PlanState() {
       {facts !== null && status === "done" && <span>Planned, revision {facts.job.revision}</span>}
       {status === "stopped" && <span>Stopped</span>}
       {(status === "stopped" || status === "failed") && project !== null && (
-        <button type="button" onClick={() => requestPlan(project)}>
-          Plan again
-        </button>
+        <PressButton onPress={() => requestPlan(project)}>Plan again</PressButton>
       )}
       {count !== "" && (
         <button type="button" onClick={() => bookStore.setState({ sheet: "findings" })}>

@@ -207,6 +207,29 @@ export async function plannedAnew(page: Page, before: string): Promise<string> {
   return planned(page);
 }
 
+/**
+ * From now on the page presses Stop itself, once, as soon as what goes on is told in these words: within the same task, so that no
+ * station is too quick to be caught.
+ * @param place of the words; the button stands in it or beside it
+ */
+export async function stopAt(page: Page, words: string, place = ".state .doing"): Promise<void> {
+  await page.evaluate(
+    ([words, place]) => {
+      const watch = new MutationObserver(() => {
+        const told = document.querySelector(place);
+        if (told === null || !new RegExp(words).test((told as HTMLElement).innerText)) return;
+        const near = told.querySelector("button") === null ? told.parentElement : told;
+        const press = [...(near?.querySelectorAll("button") ?? [])].find((b) => b.textContent?.startsWith("Stop"));
+        if (press === undefined) return;
+        watch.disconnect();
+        press.click();
+      });
+      watch.observe(document.body, { subtree: true, childList: true, characterData: true });
+    },
+    [words, place],
+  );
+}
+
 /** Opens a leaf. */
 export async function turnTo(page: Page, leaf: string): Promise<void> {
   await page.getByRole("navigation", { name: "Leaves" }).getByRole("button", { name: leaf }).click();

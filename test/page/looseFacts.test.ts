@@ -112,7 +112,7 @@ describe("papers chosen, and papers of facts alone", { timeout: LONG }, () => {
     let hold = true;
     await page.route(/\.ttf$/, (route) => (hold ? undefined : route.continue()));
     await turnTo(page, "Papers");
-    await page.getByRole("button", { name: "Stop writing" }).click();
+    await page.getByRole("button", { name: "Stop writing" }).dblclick();
     await page.getByRole("alert").getByText("Stopped. The plan stands as it was.").waitFor();
     expect(await planned(page)).toBe(revision);
     hold = false;

@@ -1,8 +1,9 @@
-// Papers and corrections share the plan's worker: what is ended for the other is no longer shown as going on, and Stop reaches each. No
-// browser; a worker that never answers stands for long work.
+// One worker plans, writes papers and works out corrections: what is ended for the other is no longer shown as going on, Stop reaches
+// each, and nothing of a job that left the desk comes to stand under the next. No browser; a worker that answers only where the test does
+// stands for long work.
 import { beforeAll, beforeEach, describe, expect, it, vi } from "vitest";
 import type { Facts } from "../../src/core/records/facts.ts";
-import { bookStore } from "../../src/page/store/bookStore.ts";
+import { bookStore, openProject } from "../../src/page/store/bookStore.ts";
 import type { Project } from "../../src/page/store/project.ts";
 
 const facts = {} as Facts;
@@ -14,6 +15,9 @@ const project = {
   log: [{ ...reading, temperature: null, at: null }],
 } as unknown as Project;
 let planner: typeof import("../../src/page/worker/planner.ts");
+/** What the page asked last, and the worker it asked. */
+let asked: { run: number } | null = null;
+let worker: { onmessage: (event: { data: unknown }) => void } | null = null;
 const under = () => {
   const { writing, correcting } = bookStore.getState();
   return { writing, correcting };
@@ -23,7 +27,12 @@ beforeAll(async () => {
   vi.stubGlobal(
     "Worker",
     class {
-      postMessage() {}
+      onmessage = () => {};
+      postMessage(request: { kind: string; run: number }) {
+        if (!["plan", "papers", "correct"].includes(request.kind)) return;
+        asked = request;
+        worker = this;
+      }
       terminate() {}
     },
   );
@@ -58,4 +67,40 @@ describe("one worker for papers and corrections", () => {
     planner.stopPlan();
     expect(bookStore.getState().status).toBe("stopped");
   });
+});
+
+describe("another job opened", () => {
+  const facts = { form: {}, findings: [] };
+  const answers = {
+    plan: { kind: "planned", added: { bones: facts, fields: {} } },
+    correction: { kind: "corrected", corrected: {} },
+    papers: { kind: "papers", files: [], added: [] },
+    "plan that cannot be made": { kind: "failed", fault: { code: "x", message: "x", where: [] } },
+  };
+
+  it.each(Object.entries(answers))(
+    "the %s of the former job that comes in at that moment is not its own (bug: it was taken)",
+    async (_, answer) => {
+      const { planOnChange } = await import("../../src/page/worker/planOnChange.ts");
+      vi.useFakeTimers();
+      try {
+        planOnChange();
+        openProject({ project, past: [], future: [] });
+        await vi.runAllTimersAsync();
+        if (answer.kind === "corrected") planner.requestCorrection(project, 1, null);
+        if (answer.kind === "papers") planner.requestPapers(facts as unknown as Facts);
+        const { run } = asked ?? { run: -1 };
+        const former = worker;
+        openProject({ project: { ...project, id: "q", job: {} as Project["job"] }, past: [], future: [] });
+        former?.onmessage({ data: { ...answer, run } });
+        expect(bookStore.getState()).toMatchObject({ facts: null, corrected: null, papers: null, fault: null });
+        await vi.runAllTimersAsync();
+        expect(bookStore.getState()).toMatchObject({ status: "running", facts: null });
+        expect(asked?.run).toBeGreaterThan(run);
+        planner.stopPlan();
+      } finally {
+        vi.useRealTimers();
+      }
+    },
+  );
 });

@@ -3,6 +3,7 @@ import type { Station } from "../../core/problem.ts";
 import type { Facts } from "../../core/records/facts.ts";
 import type { Grown, SentFields } from "../worker/growingFacts.ts";
 import type { Book, Leaf } from "./bookStore.ts";
+import { isSameWork } from "./hand.ts";
 import { useBook } from "./useBook.ts";
 
 /** Seams stand in the facts together with the panels: both are fitted to each other. */
@@ -31,7 +32,8 @@ export function useShownFields(leaf: Leaf): SentFields | null {
   return useBook((b) => (partFor(b, leaf) ?? b).fields);
 }
 
-/** Whether a leaf shows an older plan while a new one is under way. */
+/** Whether a leaf shows a plan from before the last change: a new one is under way, or was stopped or failed on the way. */
 export function isOlder(book: Book): boolean {
-  return book.status === "running" && book.facts !== null && partFor(book, book.leaf) === null;
+  if (book.facts === null || partFor(book, book.leaf) !== null) return false;
+  return book.status === "running" || !isSameWork(book.planned, book.project);
 }

@@ -2,7 +2,7 @@
 import { bookStore } from "../store/bookStore.ts";
 import { isSameWork, isSliding } from "../store/hand.ts";
 import { putBack } from "./dragger.ts";
-import { pausePlan, planSoon, startDue } from "./planner.ts";
+import { leaveJob, pausePlan, planSoon, startDue } from "./planner.ts";
 
 /** Quiet time before a changed job is planned, ms: a second thought within it costs no plan. */
 const QUIET = 250;
@@ -14,6 +14,7 @@ export function planOnChange(): void {
     const { project, hand } = now;
     // stopped right after a change: that change is not planned either, until the next one or until it is asked for
     if (now.status === "stopped" && before.status !== "stopped") clearTimeout(timer);
+    if (project?.id !== before.project?.id) leaveJob();
     if (project !== null && !isSameWork(project, before.project)) {
       clearTimeout(timer);
       timer = setTimeout(() => planSoon(project), project.id !== before.project?.id ? 0 : QUIET);

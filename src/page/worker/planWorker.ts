@@ -65,21 +65,37 @@ function read(request: Extract<Request, { kind: "plan" | "correct" }>): PlanInpu
   });
 }
 
-/** Tells progress, a few times a second. */
-function createTeller(run: number, stationOf: () => Station): (share: number, words: string) => void {
+/** Tells progress: a station and a step of it as soon as they begin, numbers that only go on a few times a second. */
+function createTeller(run: number, first: Station) {
+  let station = first;
+  let share = 0;
+  let step = "";
   let told = Number.NEGATIVE_INFINITY;
-  return (share, words) => {
-    const now = performance.now();
-    if (now - told < 1000 / TICKS) return;
-    told = now;
-    post({ kind: "progress", run, share, words, station: stationOf() });
+  const tell = (words: string) => {
+    told = performance.now();
+    post({ kind: "progress", run, share, words, station });
+  };
+  return {
+    begin: (next: Station): void => {
+      station = next;
+      step = "";
+      // what the station before did last is over, however long the first word of this one takes
+      tell("");
+    },
+    tell: (now: number, words: string): void => {
+      share = now;
+      const [next] = words.split(/\d/, 1);
+      if (next === step && performance.now() - told < 1000 / TICKS) return;
+      step = next;
+      tell(words);
+    },
   };
 }
 
 function correct(request: Extract<Request, { kind: "correct" }>): void {
   const { run, text, percent, kept } = request;
   const { job, source } = read(request);
-  const corrected = correctPlan(job, source, { text, percent, kept }, { onProgress: createTeller(run, () => "rig") });
+  const corrected = correctPlan(job, source, { text, percent, kept }, { onProgress: createTeller(run, "rig").tell });
   post({ kind: "corrected", run, corrected });
 }
 
@@ -88,11 +104,10 @@ async function plan(request: Extract<Request, { kind: "plan" }>): Promise<void> 
   const input = read(request);
   post({ kind: "read", run, job: input.job, revision: input.revision });
   const workShares = await openNestThreads();
-  let station: Station = "job";
   const cap = capNest(input.job.nest.seconds, () => performance.now());
-  const tell = createTeller(run, () => station);
+  const teller = createTeller(run, "job");
   const onStation = (next: Station) => {
-    station = next;
+    teller.begin(next);
     cap.onStation(next);
   };
   const give = createGiver(input.job.warp, input.findings);
@@ -110,7 +125,7 @@ async function plan(request: Extract<Request, { kind: "plan" }>): Promise<void> 
       onFacts: (done, facts) => send(facts, { kind: "soFar", station: done }),
       onRoof: (roof) => request.roofs.postMessage({ run, roof } satisfies SentRoof),
     },
-    { onProgress: tell, cancelled: cap.cancelled, elapsed: cap.elapsed, ...(workShares ? { workShares } : {}) },
+    { onProgress: teller.tell, cancelled: cap.cancelled, elapsed: cap.elapsed, ...(workShares ? { workShares } : {}) },
   );
   last = { ...planned, findings: [...input.findings, ...planned.findings] };
   send(planned, { kind: "planned" });

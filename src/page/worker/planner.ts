@@ -190,8 +190,21 @@ export function requestCorrection(project: Project, step: number, percent: numbe
   if (text === null) return;
   run++;
   subject = { readingsOf: project };
-  bookStore.setState({ correcting: true, correctFault: null, corrected: null, writing: false });
+  bookStore.setState({
+    correcting: true,
+    correctFault: null,
+    corrected: null,
+    writing: false,
+    progress: { share: 0, words: "", station: "rig" },
+  });
   send({ kind: "correct", run, given: project.job, mesh: project.mesh, text, percent, kept });
+}
+
+/** Ends what is computed of a job that is no longer on the desk: nothing of it may come to stand under the next one. */
+export function leaveJob(): void {
+  due = null;
+  run++;
+  end();
 }
 
 /** Stops what is computed or waits to be; what was planned before stays. */

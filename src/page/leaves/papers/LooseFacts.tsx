@@ -1,6 +1,7 @@
 // The papers of a facts.json opened by itself, on a sheet over whatever is on the desk: that stays as it is.
 import { useCallback, useEffect, useRef, useState } from "react";
 import { fileStem, saveFile, zipFiles } from "../../keep/saveFiles.ts";
+import { PressButton } from "../../parts/PressButton.tsx";
 import { Sheet } from "../../parts/Sheet.tsx";
 import type { WrittenPapers } from "../../store/bookStore.ts";
 import { useBook } from "../../store/useBook.ts";
@@ -36,6 +37,13 @@ function useLoosePapers(): { answer: Answer | null; stop: () => void; write: () 
   return { answer: last?.of === loose && last?.choice === choice ? last.answer : null, stop, write };
 }
 
+/** What stands in place of papers that are not there; null: they are. */
+function tellAnswer(answer: Answer | null): string | null {
+  if (answer === null) return "The papers are being written…";
+  if (answer === "stopped") return "Stopped; nothing was written.";
+  return "message" in answer ? answer.message : null;
+}
+
 /** The sheet. */
 export function LooseFacts() {
   const loose = useBook((b) => b.loose);
@@ -45,6 +53,7 @@ export function LooseFacts() {
   const { title, revision, issue } = loose.facts.job;
   const stops = loose.facts.findings.filter((f) => f.level === "stop").length;
   const files = answer !== null && typeof answer === "object" && "files" in answer ? answer.files : undefined;
+  const words = tellAnswer(answer);
   const stem = `${fileStem(title)}-${revision}`;
   return (
     <Sheet title={`Papers of ${title}`}>
@@ -58,20 +67,12 @@ export function LooseFacts() {
           NOT FOR ISSUE: {stops} {stops === 1 ? "stop is" : "stops are"} open, and every paper says so.
         </p>
       )}
-      {answer === null && (
-        <p>
-          The papers are being written…{" "}
-          <button type="button" onClick={stop}>
-            Stop writing
-          </button>
-        </p>
-      )}
-      {(answer === "stopped" || (answer !== null && "message" in answer)) && (
-        <p role="alert">
-          {answer === "stopped" ? "Stopped; nothing was written." : answer.message}{" "}
-          <button type="button" onClick={write}>
-            Write the papers
-          </button>
+      {words !== null && (
+        <p role={answer === null ? undefined : "alert"}>
+          {words}{" "}
+          <PressButton onPress={answer === null ? stop : write}>
+            {answer === null ? "Stop writing" : "Write the papers"}
+          </PressButton>
         </p>
       )}
       <PaperChoices />

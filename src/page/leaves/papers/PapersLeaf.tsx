@@ -3,6 +3,7 @@ import { useEffect, useState } from "react";
 import type { Facts } from "../../../core/records/facts.ts";
 import { fileStem, packJob, saveFile, zipFiles } from "../../keep/saveFiles.ts";
 import { FigureTable } from "../../parts/FigureTable.tsx";
+import { PressButton } from "../../parts/PressButton.tsx";
 import { Waiting } from "../../parts/Waiting.tsx";
 import { useBook } from "../../store/useBook.ts";
 import { requestPapers, stopPlan } from "../../worker/planner.ts";
@@ -80,17 +81,13 @@ export function PapersLeaf() {
               {fault.message}
             </p>
             {facts !== null && status === "done" && (
-              <button type="button" onClick={() => requestPapers(facts)}>
-                Write the papers
-              </button>
+              <PressButton onPress={() => requestPapers(facts)}>Write the papers</PressButton>
             )}
           </>
         ) : writing ? (
           <>
             <p className="waiting">The papers are being written…</p>
-            <button type="button" onClick={stopPlan}>
-              Stop writing
-            </button>
+            <PressButton onPress={stopPlan}>Stop writing</PressButton>
           </>
         ) : (
           <Waiting what="The papers" />

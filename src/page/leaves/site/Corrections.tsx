@@ -4,6 +4,7 @@ import { addTurns } from "../../actions/site/addTurns.ts";
 import { writeTime } from "../../parts/clock.ts";
 import { FindingList } from "../../parts/FindingList.tsx";
 import { figure } from "../../parts/figure.ts";
+import { PressButton } from "../../parts/PressButton.tsx";
 import { act } from "../../store/bookStore.ts";
 import { useBook } from "../../store/useBook.ts";
 import { requestCorrection, stopPlan } from "../../worker/planner.ts";
@@ -112,10 +113,8 @@ export function Corrections({ step, percent, stage }: CorrectionPlace) {
     <section className="corrections" aria-label="Corrections">
       {correcting ? (
         <p className="row" role="status">
-          Working out what to turn: {words}
-          <button type="button" onClick={stopPlan}>
-            Stop
-          </button>
+          Working out what to turn{words && `: ${words}`}
+          <PressButton onPress={stopPlan}>Stop</PressButton>
         </p>
       ) : text === null ? (
         <p className="hint">
@@ -124,15 +123,14 @@ export function Corrections({ step, percent, stage }: CorrectionPlace) {
             : `No reading of the log was taken here, at the end of ${stage}.`}
         </p>
       ) : (
-        <button
-          type="button"
+        <PressButton
           className="main"
           disabled={status === "running"}
-          onClick={() => requestCorrection(project, step, percent)}
+          onPress={() => requestCorrection(project, step, percent)}
         >
           Work out corrections, read at the end of {stage}
           {kept.length > 0 && `, with ${kept.length === 1 ? "the round" : `${kept.length} rounds`} before`}
-        </button>
+        </PressButton>
       )}
       {fault !== null && (
         <p className="fault" role="alert">
