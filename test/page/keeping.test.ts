@@ -186,6 +186,7 @@ describe("keeping", { timeout: LONG }, () => {
       .getByRole("alert")
       .getByText(/keeps nothing here \(a private window/)
       .waitFor();
+    await page.getByText("not kept", { exact: true }).waitFor();
     expect(faults).toEqual([]);
     await context.close();
   });

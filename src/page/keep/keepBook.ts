@@ -1,8 +1,8 @@
 // Saves the job as it goes, and says when that fails. Another tab on the same job is noticed; where both have changed it,
 // this tab's work goes on as a copy, so neither is lost.
 import { bookStore, dismiss, LEAVES, type Leaf, notify, openProject } from "../store/bookStore.ts";
-import type { Project } from "../store/project.ts";
-import { loadJob, saveJob } from "./jobStore.ts";
+import type { MeshFile, Project } from "../store/project.ts";
+import { deleteJob, loadJob, saveJob } from "./jobStore.ts";
 import { dropWord, hearWord, leaveWord } from "./lastWord.ts";
 import { isSameLine, type Line, lineOf, readLine, renameLine } from "./timeline.ts";
 
@@ -53,6 +53,24 @@ export function openNew(project: Project): void {
   rememberOpen(project.id);
   // its mesh is in no other place: no quiet time for that
   flush();
+}
+
+/**
+ * Gives the open job the mesh it waited for. It goes on under a new name in the store, with all that can be undone; the one without the
+ * mesh is taken out once that is kept, and stays where it cannot be.
+ */
+export async function completeOpen(mesh: MeshFile): Promise<void> {
+  const { project, past, future, leaf } = bookStore.getState();
+  if (project === null) return;
+  flush();
+  const { states, at } = renameLine(lineOf({ project, past, future }), newId(), (p) => p);
+  const line = { states: states.map((s) => ({ ...s, project: { ...s.project, mesh } })), at };
+  const shelf: Shelved = { line: null, count: 0 };
+  shelved = shelf;
+  openProject(readLine(line), leaf);
+  flush();
+  await writing;
+  if (shelf.line !== null) await deleteJob(project.id);
 }
 
 /** Which job this tab has open, and on which leaf; survives a reload of this tab only. */
@@ -118,6 +136,8 @@ async function write(shelf: Shelved, line: Line, leaf: Leaf): Promise<void> {
     Object.assign(shelf, { line, count: next });
     settle();
     if (open()) bookStore.setState({ kept: now });
+    // a job that was given its mesh is remembered no sooner: loaded anew, the page is to find the one or the other
+    if (open()) noteOpen();
     dismiss("keep");
     channel.postMessage({ kind: "saved", id: project.id, from: self });
   } catch (error) {

@@ -1,8 +1,7 @@
 // What a person opens: files, a starter, a kept job. What goes wrong on the way is said, not swallowed.
 import { takeLog } from "../actions/site/takeLog.ts";
 import { act, bookStore, notify } from "../store/bookStore.ts";
-import { deleteJob } from "./jobStore.ts";
-import { explainFault, openNew } from "./keepBook.ts";
+import { completeOpen, explainFault, openNew } from "./keepBook.ts";
 import { findLogTables, type LoadedFile, loadFiles, readFiles, readLog, readLooseFacts } from "./openFiles.ts";
 
 /** Opens, and says what went wrong. */
@@ -50,6 +49,7 @@ export async function openFiles(files: readonly File[]): Promise<void> {
     const next = readFiles(loaded, project, ({ message }) => {
       fault = message;
     });
+    if (project !== null && next.job === project.job && next.mesh !== null) return completeOpen(next.mesh);
     openNew(next);
     if (fault !== "")
       notify(
@@ -57,7 +57,5 @@ export async function openFiles(files: readonly File[]): Promise<void> {
         `The job is open without the log that lies beside it. ${fault}. Mend that table and drop all tables of the log here.`,
         true,
       );
-    // The job that waited for its mesh goes on under a new name in the store.
-    if (project !== null && next.job === project.job) await deleteJob(project.id);
   });
 }
