@@ -1,6 +1,7 @@
 // Flat panels as they are cut: outline, net line, marks, names. One scale for all; warp runs along x.
 import type { SeenPanel } from "../../core/plan/dragSeam.ts";
 import type { FactsPanel, Vec2 } from "../../core/records/facts.ts";
+import { pressed } from "../parts/pressed.ts";
 import { bookStore } from "../store/bookStore.ts";
 import { useBook } from "../store/useBook.ts";
 import { namePlace } from "./namePlace.ts";
@@ -110,11 +111,7 @@ export function PanelSheet({ panels, alone }: { panels: readonly FactsPanel[]; a
           className={p.id === pointed && alone === null ? "panel lit" : "panel"}
           transform={`translate(${at[i].x - boxes[i].x} ${at[i].y + boxes[i].h + boxes[i].y})`}
           onClick={() => bookStore.setState({ chosen: alone === p.id ? null : p.id })}
-          onKeyDown={(e) => {
-            if (e.key !== "Enter" && e.key !== " ") return;
-            e.preventDefault();
-            bookStore.setState({ chosen: alone === p.id ? null : p.id });
-          }}
+          onKeyDown={pressed(() => bookStore.setState({ chosen: alone === p.id ? null : p.id }))}
           onPointerEnter={() => bookStore.setState({ pointed: p.id })}
           onPointerLeave={() => bookStore.setState({ pointed: null })}
         >

@@ -2,6 +2,7 @@
 import type { Facts, FactsForm } from "../../core/records/facts.ts";
 import type { FactsRig } from "../../core/records/rig.ts";
 import { figure } from "../parts/figure.ts";
+import { pressed } from "../parts/pressed.ts";
 import { bookStore } from "../store/bookStore.ts";
 import { useBook } from "../store/useBook.ts";
 import type { RigStep } from "./rigSteps.ts";
@@ -88,7 +89,7 @@ export function RigPlan({
             className={`adjuster${moving.has(a.id) ? " moving" : ""}${lit(a.id) ? " lit" : ""}`}
             aria-label={`${a.id} ${force === undefined ? "not pulled yet" : `${figure(force, 1)} kN`}, adjuster${moving.has(a.id) ? " that moves in this step" : ""}`}
             onClick={() => bookStore.setState({ chosen: a.id })}
-            onKeyDown={(e) => e.key === "Enter" && bookStore.setState({ chosen: a.id })}
+            onKeyDown={pressed(() => bookStore.setState({ chosen: a.id }))}
             onPointerEnter={() => point(a.id)}
             onPointerLeave={() => point(null)}
           >

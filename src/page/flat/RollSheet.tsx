@@ -3,6 +3,7 @@ import { useId, useRef, useState } from "react";
 import type { Facts, Vec2 } from "../../core/records/facts.ts";
 import type { NestedRoll, Placement } from "../../core/records/roll.ts";
 import { setPin } from "../actions/rolls/setPin.ts";
+import { pressed } from "../parts/pressed.ts";
 import { act, bookStore } from "../store/bookStore.ts";
 import { useBook } from "../store/useBook.ts";
 import { namePlace } from "./namePlace.ts";
@@ -75,22 +76,24 @@ function PlacedPiece(props: {
   const xs = cut.map((q) => q[0]);
   const length = Math.max(...xs) - Math.min(...xs);
   const label = here ? pieceLabel(`${p.panel}${pinned ? " ⚲" : ""}`, p.order, { length, across: room, scale }) : null;
+  const choose = pressed(() => bookStore.setState({ chosen: p.panel }));
   return (
     <g clipPath={`url(#${clip})`}>
       <g
         className={`placed${lit ? " lit" : ""}${pinned ? " pinned" : ""}`}
         role="button"
         tabIndex={first ? 0 : -1}
-        aria-label={`${p.panel} on ${roll.id} at ${(p.x / 1000).toFixed(2)} m${pinned ? ", pinned" : ""}. Arrow keys move it by 10 mm and pin it, Delete lets it go.`}
+        aria-label={`${p.panel} on ${roll.id} at ${(p.x / 1000).toFixed(2)} m${pinned ? ", pinned" : ""}. Arrow keys move it by 10 mm and pin it, with Shift by 100; Delete lets it go.`}
         onPointerDown={(e) => onGrab(e, p)}
         onPointerEnter={() => bookStore.setState({ pointed: p.panel })}
         onPointerLeave={() => bookStore.setState({ pointed: null })}
         onKeyDown={(e) => {
           const step = STEPS[e.key];
           if (e.key === "Delete") act(setPin, { panel: p.panel, place: null }, `${p.panel} let go`);
-          if (step === undefined) return;
+          if (step === undefined) return choose(e);
           e.preventDefault();
-          pin(roll, p, cut, { dx: 10 * step[0], dy: 10 * step[1] });
+          const by = e.shiftKey ? 100 : 10;
+          pin(roll, p, cut, { dx: by * step[0], dy: by * step[1] });
         }}
       >
         <title>{p.panel}</title>

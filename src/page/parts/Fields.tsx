@@ -1,5 +1,6 @@
 // Fields to decide in: a number with its unit, a choice, a line of text, a yes or no. Each shows what holds now and whether
-// the job says so or a default; emptied, the default holds again. A change is handed on when the field is left or Enter pressed.
+// the job says so or a default; emptied, the default holds again. A change is handed on when the field is left or Enter pressed; Escape takes it back.
+// An input says by `data-taken` that it holds nothing the job does not have.
 import { useId, useState } from "react";
 
 interface Common {
@@ -86,6 +87,7 @@ export function NumberField(
         placeholder={none}
         aria-describedby={props.hint === undefined ? undefined : `${id}-hint`}
         aria-invalid={fault !== null}
+        data-taken={text === null || undefined}
         onChange={(e) => setText(e.target.value)}
         onBlur={commit}
         onKeyDown={(e) => {
@@ -138,9 +140,13 @@ export function TextField(
         autoComplete="off"
         value={text ?? value}
         placeholder={props.none}
+        data-taken={text === null || undefined}
         onChange={(e) => setText(e.target.value)}
         onBlur={commit}
-        onKeyDown={(e) => e.key === "Enter" && commit()}
+        onKeyDown={(e) => {
+          if (e.key === "Enter") commit();
+          if (e.key === "Escape") setText(null);
+        }}
       />
     </Frame>
   );

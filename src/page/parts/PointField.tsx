@@ -58,6 +58,7 @@ export function PointField(props: {
               autoComplete="off"
               aria-label={`${label}, ${axis}`}
               aria-invalid={fault !== null}
+              data-taken={texts === null || undefined}
               value={(texts ?? shown)[k]}
               onChange={(e) => setTexts((texts ?? shown).with(k, e.target.value))}
               onKeyDown={(e) => {

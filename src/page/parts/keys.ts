@@ -50,19 +50,28 @@ export const KEY_SHEET: Key[] = [
   { keys: "J", words: "jobs kept in this browser" },
   { keys: "[ and ]", words: "one step of the tensioning back, on" },
   { keys: "T", words: "light, dark, as the system" },
-  { keys: "Escape", words: "let go of what is chosen; put a sheet away" },
+  { keys: "Escape", words: "take back what was typed and leave the field; let go of what is chosen; put a sheet away" },
   { keys: "Tab, Enter", words: "from field to field; take what was typed" },
   { keys: "Arrow keys on the surface", words: "turn it; + and − come closer and go back, 0 shows all" },
   {
     keys: "Arrow keys on a seam's end",
-    words: "slide it by 10 mm, with Shift by 100; Enter lets go, Escape puts it back",
+    words: "slide it by 10 mm, with Shift by 100, past a corner onto the next edge; Enter lets go, Escape puts it back",
   },
-  { keys: "Arrow keys on a roll", words: "move a panel by 10 mm and pin it; Delete lets it go" },
+  { keys: "Arrow keys on a roll", words: "move a panel by 10 mm, with Shift by 100, and pin it; Delete lets it go" },
+  { keys: "Enter or Space on a drawing", words: "choose the panel or the adjuster that has the focus" },
   { keys: "?", words: "this sheet" },
 ];
 
-function isTyping(target: EventTarget | null): boolean {
-  return target instanceof HTMLElement && target.closest("input, select, textarea") !== null;
+const TEXT = "input:not([type=checkbox], [type=file])";
+
+/** Keys without Ctrl are the field's own there. */
+function isTyping(target: EventTarget | null): target is HTMLElement {
+  return target instanceof HTMLElement && target.matches(`${TEXT}, select`);
+}
+
+/** Something is typed there that the job does not have yet: undo is the browser's, letter by letter. */
+function isHalfTyped(target: EventTarget | null): boolean {
+  return target instanceof HTMLElement && target.matches(`${TEXT}:not([data-taken])`);
 }
 
 /** Hears the keys; returns what ends it. */
@@ -72,15 +81,21 @@ export function hearKeys(): () => void {
     if (e.defaultPrevented || sheet !== "none") return;
     const key = e.key.length === 1 ? e.key.toLowerCase() : e.key;
     if (e.ctrlKey || e.metaKey) {
-      if (key === "z" && !isTyping(e.target)) e.shiftKey ? redo() : undo();
-      else if (key === "y" && !isTyping(e.target)) redo();
+      if (key === "z" && !isHalfTyped(e.target)) e.shiftKey ? redo() : undo();
+      else if (key === "y" && !isHalfTyped(e.target)) redo();
       else if (key === "s" && project !== null) void packJob(project).then(saveFile);
       else return;
       e.preventDefault();
       return;
     }
-    if (isTyping(e.target) || e.altKey || project === null) {
-      if (key === "?" && !isTyping(e.target)) bookStore.setState({ sheet: "keys" });
+    if (isTyping(e.target)) {
+      const field = e.target;
+      // once the field has taken back what was typed: left before that, it would hand it on
+      if (key === "Escape") queueMicrotask(() => field.blur());
+      return;
+    }
+    if (e.altKey || project === null) {
+      if (key === "?") bookStore.setState({ sheet: "keys" });
       return;
     }
     const leaf = LEAVES[Number(key) - 1];

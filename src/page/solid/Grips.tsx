@@ -3,7 +3,7 @@ import { useEffect, useRef } from "react";
 import type { FactsForm } from "../../core/records/facts.ts";
 import { bookStore } from "../store/bookStore.ts";
 import { isSameWork } from "../store/hand.ts";
-import { type EdgePlace, pointOnEdge } from "../store/seamEnds.ts";
+import { type EdgePlace, pointOnEdge, slideAlong } from "../store/seamEnds.ts";
 import { useBook } from "../store/useBook.ts";
 import { letGo, putBack, slideEnd, takeEnd } from "../worker/dragger.ts";
 import type { Project } from "./scene.ts";
@@ -67,9 +67,7 @@ function slideByKey(form: FactsForm, grip: GripPlace, e: React.KeyboardEvent): v
   const held = hand?.weld === grip.weld && hand.end === grip.end && hand.laid === null;
   if (step !== undefined) {
     takeEnd(grip.weld, grip.end);
-    const length = form.edges.find((edge) => edge.id === grip.place.edge)?.length ?? 1;
-    const by = (step * STEP * (e.shiftKey ? 10 : 1)) / length;
-    slideEnd({ edge: grip.place.edge, at: Math.min(Math.max(grip.place.at + by, 0), 1) });
+    slideEnd(slideAlong(form, grip.place, step * STEP * (e.shiftKey ? 10 : 1)));
     clearTimeout(timer);
     timer = setTimeout(letGo, QUIET);
   } else if (held && e.key === "Enter") {

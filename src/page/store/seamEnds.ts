@@ -62,6 +62,26 @@ export function pointOnEdge(form: FactsForm, place: EdgePlace): number[] | null 
   return points[i - 1].map((x, k) => x + t * (points[i][k] - x));
 }
 
+/**
+ * The place that lies `by` metres on along an edge, negative: back. It stops where the edge ends; from there it goes on along the edge
+ * that meets it, or round a closed one.
+ */
+export function slideAlong(form: FactsForm, place: EdgePlace, by: number): EdgePlace {
+  const own = form.edges.find((e) => e.id === place.edge);
+  if (own === undefined) return place;
+  if (by > 0 ? place.at < 1 : place.at > 0)
+    return { edge: own.id, at: Math.min(Math.max(place.at + by / own.length, 0), 1) };
+  const corner = own.vertices.at(by > 0 ? -1 : 0);
+  const closed = own.vertices[0] === own.vertices.at(-1);
+  const next = closed
+    ? own
+    : form.edges.find((e) => e !== own && (e.vertices[0] === corner || e.vertices.at(-1) === corner));
+  if (next === undefined) return place;
+  const way = Math.min(Math.abs(by) / next.length, 1);
+  const fromStart = closed ? by > 0 : next.vertices[0] === corner;
+  return { edge: next.id, at: fromStart ? way : 1 - way };
+}
+
 /** Nearest place on any edge of the form, and its distance. */
 function nearestPlace(form: FactsForm, p: readonly number[]): { place: EdgePlace; distance: number } | null {
   let found: { place: EdgePlace; distance: number } | null = null;

@@ -18,6 +18,7 @@ export function FlawDecisions({ roll, name }: { roll: number; name: string }) {
     <div data-path={`rolls[${roll}].flaws`}>
       {flaws.map((f, flaw) => {
         const what = `Flaw ${flaw + 1} of ${name}`;
+        const words = `flaw ${flaw + 1} of ${name}`;
         return (
           // biome-ignore lint/suspicious/noArrayIndexKey: a flaw is known by its place in the job
           <div key={flaw} className="flaw" role="group" aria-label={what}>
@@ -31,7 +32,7 @@ export function FlawDecisions({ roll, name }: { roll: number; name: string }) {
                 unit={unit}
                 factor={factor}
                 hint={hint}
-                onChange={(value) => act(setFlaw, { roll, flaw, key, value }, `${what.toLowerCase()}`)}
+                onChange={(value) => act(setFlaw, { roll, flaw, key, value }, words)}
               />
             ))}
             <ChoiceField
@@ -43,9 +44,9 @@ export function FlawDecisions({ roll, name }: { roll: number; name: string }) {
                 { value: "start", words: "the roll's start" },
                 { value: "end", words: "the roll's end" },
               ]}
-              onChange={(value) => act(setFlaw, { roll, flaw, key: "from", value }, `${what.toLowerCase()}`)}
+              onChange={(value) => act(setFlaw, { roll, flaw, key: "from", value }, words)}
             />
-            <button type="button" onClick={() => act(removeFlaw, { roll, flaw }, `${what.toLowerCase()} removed`)}>
+            <button type="button" onClick={() => act(removeFlaw, { roll, flaw }, `${words} removed`)}>
               Remove flaw {flaw + 1}
             </button>
           </div>
