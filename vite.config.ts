@@ -17,6 +17,7 @@ export default defineConfig({
         packWorker: "test/bench/packWorker.ts",
         "chunks/slideCase": "test/page/slideCase.ts",
         "chunks/firstViewCase": "test/page/firstViewCase.ts",
+        "chunks/roundsCase": "test/page/roundsCase.ts",
       },
       output: { entryFileNames: "[name].js", chunkFileNames: "chunks/[name].js" },
     },

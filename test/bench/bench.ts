@@ -30,6 +30,16 @@ const CASES: Record<string, { call: string; least: number; run: (args: string[])
     run: async ([job, mesh]) =>
       (await import(new URL("./chunks/firstViewCase.js", import.meta.url).href)).benchFirstView(job, mesh),
   },
+  rounds: {
+    call: "rounds JOB.json MESH.obj ROUNDS",
+    least: 3,
+    run: async ([job, mesh, rounds]) =>
+      (await import(new URL("./chunks/roundsCase.js", import.meta.url).href)).benchRounds(
+        job,
+        mesh,
+        readCount(rounds, "ROUNDS"),
+      ),
+  },
   flatten: { call: "flatten STRIP.obj", least: 1, run: ([strip]) => benchFlatten(readSurface(strip).surface) },
   form: { call: "form N", least: 1, run: ([n]) => benchForm(readCount(n, "N")) },
   geodesic: { call: "geodesic MESH.obj PAIRS.txt", least: 2, run: ([mesh, pairs]) => benchPairs(mesh, pairs) },

@@ -104,11 +104,11 @@ export function watch(page: Page, desk: Pick<Desk, "requests" | "faults">): void
   });
 }
 
-/** The bench, with a job handed over where one is given. */
-export async function setUp(opened: OpenedJob | null = null): Promise<Bench> {
+/** The bench, with a job handed over where one is given; `args`: what else Chromium is started with. */
+export async function setUp(opened: OpenedJob | null = null, args: readonly string[] = []): Promise<Bench> {
   const folder = await buildPage();
   const { server, port } = await servePage(folder, 0, opened);
-  const browser = await chromium.launch({ executablePath: findChromium(), args: ARGS });
+  const browser = await chromium.launch({ executablePath: findChromium(), args: [...ARGS, ...args] });
   const url = `http://127.0.0.1:${port}/`;
   return {
     url,

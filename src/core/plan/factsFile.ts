@@ -72,13 +72,16 @@ export function readFacts(value: unknown, name: string): Facts {
   return value as unknown as Facts;
 }
 
-/** What is said where papers cannot be drawn from facts that came in from a file: a PlanError tells by itself what it met. */
+/**
+ * What is said where papers cannot be drawn from facts that came in from a file: a PlanError tells by itself what it met. Any other error
+ * may be the file's or the program's, and what is said blames neither.
+ */
 export function tellBrokenFacts(error: unknown, name: string): PlanError {
   if (error instanceof PlanError) return error;
   const words = error instanceof Error ? error.message : String(error);
   return new PlanError(
     "facts-broken",
-    `${name}: no papers can be drawn from it (${words}); plan the job again and take its facts.json`,
+    `${name}: no papers can be drawn from it (${words}): it was changed since a plan wrote it, or this program has a fault; plan the job again and take its facts.json, and where that fails too, report it with the file`,
     name,
   );
 }

@@ -3,7 +3,7 @@ import { useCallback, useEffect, useRef, useState } from "react";
 import { fileStem, saveFile, zipFiles } from "../../keep/saveFiles.ts";
 import { PressButton } from "../../parts/PressButton.tsx";
 import { Sheet } from "../../parts/Sheet.tsx";
-import type { WrittenPapers } from "../../store/bookStore.ts";
+import { bookStore, type WrittenPapers } from "../../store/bookStore.ts";
 import { useBook } from "../../store/useBook.ts";
 import { drawLoosePapers } from "../../worker/loosePapers.ts";
 import type { PlanFault } from "../../worker/messages.ts";
@@ -49,6 +49,8 @@ export function LooseFacts() {
   const loose = useBook((b) => b.loose);
   const { answer, stop, write } = useLoosePapers();
   const [shown, setShown] = useState<string | null>(null);
+  // facts of a large roof take tens of megabytes: they go with their sheet
+  useEffect(() => () => bookStore.setState({ loose: null }), []);
   if (loose === null) return null;
   const { title, revision, issue } = loose.facts.job;
   const stops = loose.facts.findings.filter((f) => f.level === "stop").length;
