@@ -179,8 +179,9 @@ afterAll(() => bench?.close());
 describe("the surface where frames come slowly", { timeout: LONG }, () => {
   it("turned with the mouse it shows less, let be it shows all", async () => {
     const { page, context, faults } = await bench.open();
-    // every frame of this page takes longer than a slow one
+    // drawn in the page, where every frame takes longer than a slow one
     await page.addInitScript(() => {
+      Reflect.deleteProperty(HTMLCanvasElement.prototype, "transferControlToOffscreen");
       const own = requestAnimationFrame;
       window.requestAnimationFrame = (then) =>
         own(() => {

@@ -1,7 +1,7 @@
 // The ends of the seams as grips over the surface: slid along the edges with mouse, finger or arrow keys.
-import { useEffect, useRef } from "react";
+import { useEffect, useMemo, useRef } from "react";
 import type { FactsForm } from "../../core/records/facts.ts";
-import { bookStore } from "../store/bookStore.ts";
+import { type Book, bookStore } from "../store/bookStore.ts";
 import { isSameWork } from "../store/hand.ts";
 import { type EdgePlace, pointOnEdge, slideAlong } from "../store/seamEnds.ts";
 import { useBook } from "../store/useBook.ts";
@@ -50,12 +50,19 @@ interface GripPlace {
   place: EdgePlace;
 }
 
+/** Whether the grips are those of a roof that is being tied again: they stay in sight, and none can be taken. */
+const isTying = ({ grips, hand, project }: Book) => !isSameWork(grips?.of, project) && isSameWork(hand?.laid, project);
+
 /** Grips of the roof on the desk, the one in hand where it is slid to. */
 function useGrips(): GripPlace[] {
-  const grips = useBook((b) => (isSameWork(b.grips?.of, b.project) ? b.grips : null));
+  const grips = useBook((b) => (isSameWork(b.grips?.of, b.project) || isTying(b) ? b.grips : null));
   const hand = useBook((b) => b.hand);
-  return (grips?.welds ?? []).flatMap(({ weld, ends }) =>
-    ([0, 1] as const).map((end) => ({ weld, end, place: (hand?.weld === weld ? hand.to : ends)[end] })),
+  return useMemo(
+    () =>
+      (grips?.welds ?? []).flatMap(({ weld, ends }) =>
+        ([0, 1] as const).map((end) => ({ weld, end, place: (hand?.weld === weld ? hand.to : ends)[end] })),
+      ),
+    [grips, hand],
   );
 }
 
@@ -85,6 +92,7 @@ function slideByKey(form: FactsForm, grip: GripPlace, e: React.KeyboardEvent): v
 function Grip({ form, grip, project }: { form: FactsForm; grip: GripPlace; project: () => Project | null }) {
   const { weld, end, place } = grip;
   const lit = useBook((b) => b.chosen === weld);
+  const tying = useBook(isTying);
   const length = form.edges.find((e) => e.id === place.edge)?.length ?? 0;
   const slide = (e: React.PointerEvent) => {
     const box = e.currentTarget.parentElement?.getBoundingClientRect();
@@ -97,6 +105,7 @@ function Grip({ form, grip, project }: { form: FactsForm; grip: GripPlace; proje
     <button
       type="button"
       role="slider"
+      aria-disabled={tying}
       className={lit ? "grip lit" : "grip"}
       aria-label={`${weld}, end on ${place.edge}`}
       aria-valuemin={0}

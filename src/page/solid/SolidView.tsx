@@ -1,16 +1,17 @@
 // The surface, shaded and turnable, with its names and the legend of its colours. Mounts the scene and passes on what is chosen.
 import { useCallback, useEffect, useMemo, useRef, useState } from "react";
 import type { Facts } from "../../core/records/facts.ts";
-import { colourOf, type Scale, scaleOf } from "../colour/scales.ts";
+import { type Scale, scaleOf } from "../colour/scales.ts";
 import { bookStore, type FieldName } from "../store/bookStore.ts";
 import { useBook } from "../store/useBook.ts";
 import type { SentFields } from "../worker/growingFacts.ts";
 import { buildModel, isOfPoints, type Model, nameModel, shapeOf, valuesOf } from "./buildModel.ts";
 import { Grips } from "./Grips.tsx";
 import { Legend } from "./Legend.tsx";
-import { linearise, type SceneInk } from "./paintScene.ts";
+import { paintPoints } from "./paintPoints.ts";
 import { placeNames } from "./placeNames.ts";
 import { createScene, type Project, type SceneView } from "./scene.ts";
+import type { SceneInk } from "./stageOrders.ts";
 
 /** Inks of the theme, from the style sheet. */
 function readInk(element: Element): SceneInk {
@@ -32,25 +33,6 @@ function readInk(element: Element): SceneInk {
   };
 }
 
-/** Steps of a scale that colours are worked out for. */
-const STEPS = 1024;
-
-/** Colours of points by their values, as shares of light. */
-function paintPoints(value: Float32Array, scale: Scale | null): Float32Array | null {
-  if (scale === null || value.length === 0) return null;
-  const { min, max } = scale;
-  const none = STEPS + 1;
-  const steps = Array.from({ length: none }, (_, i) => colourOf(scale, min + (i / STEPS) * (max - min)));
-  const table = linearise(Float32Array.from([...steps, colourOf(scale, Number.NaN)].flat()));
-  const out = new Float32Array(3 * value.length);
-  for (let i = 0; i < value.length; i++) {
-    const at = Math.round((STEPS * (value[i] - min)) / (max - min));
-    const row = 3 * (Number.isNaN(at) ? none : Math.min(Math.max(at, 0), STEPS));
-    for (let k = 0; k < 3; k++) out[3 * i + k] = table[row + k];
-  }
-  return out;
-}
-
 const KEYS: Record<string, (view: SceneView) => void> = {
   ArrowLeft: (v) => v.turn(-0.12, 0),
   ArrowRight: (v) => v.turn(0.12, 0),
@@ -62,19 +44,24 @@ const KEYS: Record<string, (view: SceneView) => void> = {
   "0": (v) => v.fit(),
 };
 
-/** The one canvas of the page with its scene: making one blocks the page, so the leaves hand it on. */
+/** The one canvas of the page with its scene: making one takes its time, so the leaves hand it on. */
 let kept: { canvas: HTMLCanvasElement; view: SceneView } | null = null;
+/** Who shows it now: told when it breaks, with whether another canvas may be tried. */
+let tellBroken: ((again: boolean) => void) | null = null;
 
-/** Puts the canvas into a place of the page. @throws Error where the browser draws no WebGL */
-function takeScene(host: HTMLElement): NonNullable<typeof kept> {
+/** Puts the canvas into a place of the page. */
+function takeScene(host: HTMLElement, broken: (again: boolean) => void): NonNullable<typeof kept> {
+  tellBroken = broken;
   const canvas = kept?.canvas ?? document.createElement("canvas");
   host.prepend(canvas);
-  try {
-    kept ??= { canvas, view: createScene(canvas, readInk(canvas)) };
-  } catch (error) {
-    canvas.remove();
-    throw error;
-  }
+  kept ??= {
+    canvas,
+    view: createScene(canvas, readInk(canvas), (again) => {
+      canvas.remove();
+      kept = null;
+      tellBroken?.(again);
+    }),
+  };
   return kept;
 }
 
@@ -84,35 +71,39 @@ function useScene(model: Model | null, scale: Scale | null, words: string) {
   const names = useRef<HTMLDivElement>(null);
   const view = useRef<SceneView | null>(null);
   const labels = useRef<Model["labels"]>([]);
+  /** Whether the scene was given what this leaf shows: until then it is still as another leaf left it. */
+  const given = useRef(false);
   const putGrips = useRef<((project: Project) => { x: number; y: number }[]) | null>(null);
   const [broken, setBroken] = useState(false);
   const pointed = useBook((b) => b.pointed);
   const chosen = useBook((b) => b.chosen);
   const theme = useBook((b) => b.theme);
   const job = useBook((b) => b.project?.id ?? "");
+  const [tried, setTried] = useState(0);
+  // biome-ignore lint/correctness/useExhaustiveDependencies: each try takes another canvas
   useEffect(() => {
     if (host.current === null) return;
-    let taken: NonNullable<typeof kept>;
-    try {
-      taken = takeScene(host.current);
-    } catch {
-      setBroken(true);
-      return;
-    }
-    const { canvas, view: made } = taken;
+    const { canvas, view: made } = takeScene(host.current, (again) => {
+      view.current = null;
+      if (again) setTried((n) => n + 1);
+      else setBroken(true);
+    });
     view.current = made;
     made.watch((project) => {
-      placeNames(names.current, labels.current, project, putGrips.current?.(project) ?? []);
+      if (given.current) placeNames(names.current, labels.current, project, putGrips.current?.(project) ?? []);
     });
     const watch = new ResizeObserver(() => made.resize());
     watch.observe(canvas);
     return () => {
       watch.disconnect();
       made.watch(null);
+      given.current = false;
+      tellBroken = null;
       canvas.remove();
       view.current = null;
     };
-  }, []);
+  }, [tried]);
+  // biome-ignore lint/correctness/useExhaustiveDependencies: each try takes another canvas
   useEffect(() => {
     const canvas = host.current?.querySelector("canvas");
     canvas?.setAttribute("tabindex", "0");
@@ -121,12 +112,18 @@ function useScene(model: Model | null, scale: Scale | null, words: string) {
       "aria-label",
       `${words} Turn with the arrow keys, + and − come closer and go back, 0 shows all.`,
     );
-  }, [words]);
+  }, [words, tried]);
+  // biome-ignore lint/correctness/useExhaustiveDependencies: each try is shown the model anew
   useEffect(() => {
-    if (model === null || view.current === null) return;
-    labels.current = model.labels;
-    view.current.show(job, model, paintPoints(model.value, scale));
-  }, [job, model, scale]);
+    if (model === null) return;
+    // in a task of its own: the page has just been drawn anew
+    const show = setTimeout(() => {
+      labels.current = model.labels;
+      given.current = true;
+      view.current?.show(job, model, paintPoints(model.value, scale));
+    });
+    return () => clearTimeout(show);
+  }, [job, model, scale, tried]);
   // while a seam's end is slid the surface is not drawn again: without a graphics card that would block the page
   const held = useBook((b) => b.hand !== null && b.hand.laid === null);
   useEffect(() => {
@@ -140,7 +137,7 @@ function useScene(model: Model | null, scale: Scale | null, words: string) {
     dark.addEventListener("change", apply);
     return () => dark.removeEventListener("change", apply);
   }, [theme]);
-  const project = useCallback(() => view.current?.project ?? null, []);
+  const project = useCallback(() => (given.current ? (view.current?.project() ?? null) : null), []);
   const hookGrips = useCallback(
     (put: ((project: Project) => { x: number; y: number }[]) | null) => {
       putGrips.current = put;

@@ -1,33 +1,25 @@
-// The one module that knows three: draws a model on a canvas, turns it, says what is under the pointer. Draws on demand only.
+// The surface as it is looked at: where the camera stands, what is under the pointer, where things lie on the canvas. The stage draws.
 import {
-  AmbientLight,
   BufferAttribute,
   BufferGeometry,
-  DirectionalLight,
   DoubleSide,
+  Matrix4,
   Mesh,
-  MeshLambertMaterial,
+  MeshBasicMaterial,
   OrthographicCamera,
   Raycaster,
-  Scene,
+  Sphere,
   Vector2,
   Vector3,
-  WebGLRenderer,
 } from "three";
 import { OrbitControls } from "three/addons/controls/OrbitControls.js";
-import { LineSegments2 } from "three/addons/lines/LineSegments2.js";
-import { LineSegmentsGeometry } from "three/addons/lines/LineSegmentsGeometry.js";
 import type { Model, ModelLine } from "./buildModel.ts";
-import { coarsen } from "./coarsen.ts";
-import { BROWSER_CLOCK, createPace } from "./pace.ts";
-import { density, inkOf, paintInPlace, type SceneInk, type SceneParts } from "./paintScene.ts";
+import { openStage } from "./openStage.ts";
+import type { Colours, DrawnLine, SceneInk, Sight, StageOrder, StageSize } from "./stageOrders.ts";
 
 export interface SceneView {
-  /**
-   * Puts a model of a job in; `colours` 3*nP red, green, blue of each point as shares of light, or null for plain cloth. Another job is shown whole,
-   * the same one as it was turned.
-   */
-  show: (job: string, model: Model, colours: Float32Array | null) => void;
+  /** Puts a model of a job in; null colours: plain cloth. Another job is shown whole, the same one as it was turned. */
+  show: (job: string, model: Model, colours: Colours | null) => void;
   /** Who is told after each drawing where things lie now; null: nobody. */
   watch: (onDraw: ((project: Project) => void) | null) => void;
   light: (ids: readonly (string | null)[]) => void;
@@ -38,116 +30,22 @@ export interface SceneView {
   zoom: (factor: number) => void;
   /** Id under a point of the canvas (CSS pixels), or null. */
   pick: (x: number, y: number) => string | null;
-  project: Project;
+  /** Where things lie on the picture that is seen; null until what was put in last is drawn. */
+  project: () => Project | null;
   resize: () => void;
-}
-
-function segmentsOf(line: ModelLine): Float32Array {
-  const { points } = line;
-  const out = new Float32Array(6 * Math.max(points.length - 1, 0));
-  for (let i = 1; i < points.length; i++) out.set([...points[i - 1], ...points[i]], 6 * (i - 1));
-  return out;
-}
-
-function buildMesh(model: Model, cloth: MeshLambertMaterial): Mesh<BufferGeometry, MeshLambertMaterial> {
-  const geometry = new BufferGeometry();
-  geometry.setAttribute("position", new BufferAttribute(model.position, 3));
-  geometry.setAttribute("normal", new BufferAttribute(model.normal, 3));
-  geometry.setAttribute("color", new BufferAttribute(new Float32Array(model.position.length), 3));
-  geometry.setIndex(new BufferAttribute(model.triangles, 1));
-  geometry.computeBoundingSphere();
-  return new Mesh(geometry, cloth);
-}
-
-/** What all cloth is made of: a material of its own for each model would be set up anew each time. */
-function buildCloth(): MeshLambertMaterial {
-  return new MeshLambertMaterial({
-    vertexColors: true,
-    side: DoubleSide,
-    polygonOffset: true,
-    polygonOffsetFactor: 3,
-    polygonOffsetUnits: 3,
-  });
-}
-
-/**
- * A view on a canvas that lies on the page. Without a graphics card it takes the browser 0.1 s to make a canvas and to size it, so it
- * is sized before anything is drawn on it, and only when its size changes.
- * @throws Error where the browser draws no WebGL
- */
-export function createScene(canvas: HTMLCanvasElement, ink: SceneInk): SceneView {
-  Object.assign(canvas, { width: density() * canvas.clientWidth, height: density() * canvas.clientHeight });
-  const renderer = new WebGLRenderer({ canvas, antialias: true, alpha: true });
-  // asking for faults of the shaders would wait until they are compiled
-  renderer.debug.checkShaderErrors = false;
-  const scene = new Scene();
-  const camera = new OrthographicCamera(-1, 1, 1, -1, 0.01, 1000);
-  camera.up.set(0, 0, 1);
-  const controls = new OrbitControls(camera, canvas);
-  controls.enableDamping = false;
-  const sun = new DirectionalLight("#ffffff", 2.1);
-  scene.add(new AmbientLight("#ffffff", 1.25), sun);
-  const parts: SceneParts = {
-    model: null,
-    mesh: null,
-    whole: null,
-    fewer: null,
-    lines: [],
-    inks: new Map(),
-    colours: null,
-    ink,
-    lit: new Set(),
-    stale: false,
-    job: "",
-    reach: [1, 1],
-    turned: false,
-  };
-  let asked = 0;
-  let told: ((project: Project) => void) | null = null;
-  const drawNow = () => {
-    asked = 0;
-    if (parts.stale) paintInPlace(parts);
-    const less = pace.begin();
-    detailInPlace(parts, less);
-    canvas.dataset.detail = less ? "less" : "all";
-    sun.position.copy(camera.position).add(new Vector3(-3, -2, 8));
-    renderer.render(scene, camera);
-    told?.(project);
-  };
-  const draw = () => {
-    if (asked === 0) asked = requestAnimationFrame(drawNow);
-  };
-  const pace = createPace(draw, BROWSER_CLOCK);
-  controls.addEventListener("change", pace.move);
-  controls.addEventListener("start", () => {
-    parts.turned = true;
-  });
-  const size: CanvasSize = { wide: canvas.clientWidth, high: canvas.clientHeight };
-  const project = projector(camera, size);
-  const cloth = buildCloth();
-  const view = handleView({
-    canvas,
-    size,
-    camera,
-    controls,
-    renderer,
-    scene,
-    parts,
-    cloth,
-    project,
-    draw,
-    move: pace.move,
-  });
-  return {
-    ...view,
-    watch: (onDraw) => {
-      told = onDraw;
-    },
-  };
 }
 
 /** Place of a point of the model on the canvas, CSS pixels, and its depth -1…1. */
 export type Project = (at: readonly number[]) => { x: number; y: number; depth: number };
+
+function drawnLine({ id, kind, points }: ModelLine): DrawnLine {
+  const segments = new Float32Array(6 * Math.max(points.length - 1, 0));
+  for (let i = 1; i < points.length; i++) {
+    segments.set(points[i - 1], 6 * (i - 1));
+    segments.set(points[i], 6 * i - 3);
+  }
+  return { id, kind, segments };
+}
 
 /** What the camera is framed for, CSS pixels: asked of the canvas at every point, the page would be laid out again each time. */
 interface CanvasSize {
@@ -155,166 +53,251 @@ interface CanvasSize {
   high: number;
 }
 
-function projector(camera: OrthographicCamera, size: CanvasSize): Project {
-  const p = new Vector3();
-  return (at) => {
-    p.set(at[0], at[1], at[2]).project(camera);
-    return { x: ((p.x + 1) / 2) * size.wide, y: ((1 - p.y) / 2) * size.high, depth: p.z };
+/** Dots of the canvas. */
+function dotsOf(canvas: HTMLCanvasElement): StageSize {
+  const density = Math.min(devicePixelRatio, 2);
+  const [wide, high] = [canvas.clientWidth, canvas.clientHeight].map((n) => Math.floor(density * Math.max(n, 1)));
+  return { wide, high, density };
+}
+
+interface Parts {
+  canvas: HTMLCanvasElement;
+  size: CanvasSize;
+  dots: StageSize;
+  camera: OrthographicCamera;
+  controls: OrbitControls;
+  /** What the newest picture was drawn with: names go by what is seen. Null: what was put in last is not drawn yet. */
+  seen: Matrix4 | null;
+  frame: number;
+  model: Model | null;
+  /** Points the model is framed by, and a sphere about them. */
+  outline: Vector3[];
+  sphere: Sphere;
+  /** For the pointer; never drawn. Null: nothing of this surface was pointed at yet. */
+  mesh: Mesh<BufferGeometry, MeshBasicMaterial> | null;
+  job: string;
+  lit: readonly string[];
+  ink: string;
+  /** Half width and height of the model as first seen, m. */
+  reach: [number, number];
+  /** Whether a person has turned or moved the view: until then it shows all of whatever is put in. */
+  turned: boolean;
+  send: (order: StageOrder) => void;
+}
+
+/**
+ * A view on a canvas that lies on the page and was drawn on by nobody yet.
+ * @param broken is told when nothing can be drawn, with whether another canvas may be tried
+ */
+export function createScene(canvas: HTMLCanvasElement, ink: SceneInk, broken: (again: boolean) => void): SceneView {
+  let told: ((project: Project) => void) | null = null;
+  const camera = new OrthographicCamera(-1, 1, 1, -1, 0.01, 1000);
+  camera.up.set(0, 0, 1);
+  const controls = new OrbitControls(camera, canvas);
+  controls.enableDamping = false;
+  const dots = dotsOf(canvas);
+  const parts: Parts = {
+    canvas,
+    size: { wide: Math.max(canvas.clientWidth, 1), high: Math.max(canvas.clientHeight, 1) },
+    dots,
+    camera,
+    controls,
+    seen: null,
+    frame: 0,
+    model: null,
+    outline: [],
+    sphere: new Sphere(),
+    mesh: null,
+    job: "",
+    lit: [],
+    ink: JSON.stringify(ink),
+    reach: [1, 1],
+    turned: false,
+    send: openStage(
+      canvas,
+      { ink, size: dots },
+      {
+        drawn: ({ sight, less }) => {
+          canvas.dataset.detail = less ? "less" : "all";
+          if (sight.frame < parts.frame) return;
+          parts.seen = seenBy(sight);
+          told?.(project);
+        },
+        broken,
+      },
+    ),
+  };
+  const project = projector(parts);
+  controls.addEventListener("change", () => {
+    if (parts.turned) look(parts, true);
+  });
+  controls.addEventListener("start", () => {
+    parts.turned = true;
+  });
+  return {
+    ...handleModel(parts),
+    ...handleCamera(parts),
+    project: () => (parts.seen === null ? null : project),
+    watch: (onDraw) => {
+      told = onDraw;
+    },
   };
 }
 
-function clearInPlace(scene: Scene, parts: SceneParts): void {
-  if (parts.mesh !== null) scene.remove(parts.mesh);
-  parts.whole?.dispose();
-  parts.fewer?.dispose();
-  for (const { object } of parts.lines) {
-    scene.remove(object);
-    object.geometry.dispose();
-  }
-  parts.mesh = parts.whole = parts.fewer = null;
-  parts.lines = [];
+function seenBy({ camera, projection }: Sight): Matrix4 {
+  const inverse = new Matrix4().fromArray(camera).invert();
+  return new Matrix4().fromArray(projection).multiply(inverse);
 }
 
-interface Stage {
-  canvas: HTMLCanvasElement;
-  size: CanvasSize;
-  camera: OrthographicCamera;
-  controls: OrbitControls;
-  renderer: WebGLRenderer;
-  scene: Scene;
-  parts: SceneParts;
-  cloth: MeshLambertMaterial;
-  project: Project;
-  draw: () => void;
-  /** Draws since the view was turned. */
-  move: () => void;
+function sightOf({ camera, frame }: Parts): Sight {
+  camera.updateMatrixWorld();
+  return { camera: camera.matrixWorld.toArray(), projection: camera.projectionMatrix.toArray(), frame };
 }
 
-/** Puts the whole surface in its place, or fewer triangles over the same points. */
-function detailInPlace(parts: SceneParts, less: boolean): void {
-  const { model, mesh, whole } = parts;
-  if (model === null || mesh === null || whole === null) return;
-  if (less && parts.fewer === null) {
-    parts.fewer = new BufferGeometry();
-    for (const [name, values] of Object.entries(whole.attributes)) parts.fewer.setAttribute(name, values);
-    parts.fewer.setIndex(new BufferAttribute(coarsen(model), 1));
-    parts.fewer.boundingSphere = whole.boundingSphere;
-  }
-  mesh.geometry = (less ? parts.fewer : null) ?? whole;
+/** Has the surface drawn as the camera sees it now; `turned`: by a person, who may turn on. */
+function look(parts: Parts, turned: boolean): void {
+  parts.send({ kind: "sight", sight: sightOf(parts), turned });
+}
+
+function projector(parts: Parts): Project {
+  const p = new Vector3();
+  return (at) => {
+    p.set(at[0], at[1], at[2]).applyMatrix4(parts.seen ?? seenBy(sightOf(parts)));
+    return { x: ((p.x + 1) / 2) * parts.size.wide, y: ((1 - p.y) / 2) * parts.size.high, depth: p.z };
+  };
+}
+
+/** So many points of a surface are enough to frame it by: its edges are taken whole, by their lines. */
+const ENOUGH = 2000;
+
+function outlineOf({ position, lines }: Model): Vector3[] {
+  const out = lines.flatMap(({ points }) => points.map(([x, y, z]) => new Vector3(x, y, z)));
+  const step = 3 * Math.ceil(position.length / 3 / ENOUGH);
+  for (let i = 0; i < position.length; i += step) out.push(new Vector3().fromArray(position, i));
+  return out;
 }
 
 /** Moves the point looked at to the middle of what the camera sees, and gives half its width and height. */
-function centreInPlace({ camera, controls, parts }: Stage): [number, number] {
-  const { model } = parts;
-  if (model === null) return [1, 1];
-  const right = new Vector3().setFromMatrixColumn(camera.matrixWorld, 0);
-  const above = new Vector3().setFromMatrixColumn(camera.matrixWorld, 1);
-  const x = [Number.POSITIVE_INFINITY, Number.NEGATIVE_INFINITY];
-  const y = [Number.POSITIVE_INFINITY, Number.NEGATIVE_INFINITY];
-  const [begun, raised] = [right, above].map((axis) => axis.dot(controls.target));
-  const take = (a: number, b: number, c: number) => {
-    const u = a * right.x + b * right.y + c * right.z - begun;
-    const v = a * above.x + b * above.y + c * above.z - raised;
-    if (u < x[0]) x[0] = u;
-    if (u > x[1]) x[1] = u;
-    if (v < y[0]) y[0] = v;
-    if (v > y[1]) y[1] = v;
-  };
-  const { position } = model;
-  for (let i = 0; i < position.length; i += 3) take(position[i], position[i + 1], position[i + 2]);
-  for (const { points } of model.lines) for (const [a, b, c] of points) take(a, b, c);
-  const shift = right.multiplyScalar((x[0] + x[1]) / 2).add(above.multiplyScalar((y[0] + y[1]) / 2));
+function centreInPlace({ camera, controls, outline }: Parts): [number, number] {
+  const [shift, halves] = [new Vector3(), [1, 1]];
+  for (const k of [0, 1]) {
+    const axis = new Vector3().setFromMatrixColumn(camera.matrixWorld, k);
+    let [least, most] = [Number.POSITIVE_INFINITY, Number.NEGATIVE_INFINITY];
+    for (const p of outline) {
+      const along = axis.dot(p);
+      if (along < least) least = along;
+      if (along > most) most = along;
+    }
+    shift.addScaledVector(axis, (least + most) / 2 - axis.dot(controls.target));
+    halves[k] = (most - least) / 2;
+  }
   controls.target.add(shift);
   camera.position.add(shift);
-  return [(x[1] - x[0]) / 2, (y[1] - y[0]) / 2];
+  return [halves[0], halves[1]];
 }
 
-function frameInPlace(stage: Stage): void {
-  const { canvas, size, camera, renderer, parts } = stage;
+/** Frames the model for the size the canvas has now. */
+function frameInPlace(parts: Parts): void {
+  const { canvas, size, camera, sphere, reach } = parts;
   const [w, h] = [Math.max(canvas.clientWidth, 1), Math.max(canvas.clientHeight, 1)];
   Object.assign(size, { wide: w, high: h });
-  const [wide, high] = [w, h].map((n) => Math.floor(density() * n));
-  if (canvas.width !== wide || canvas.height !== high) renderer.setSize(wide, high, false);
-  const radius = parts.mesh?.geometry.boundingSphere?.radius ?? 1;
-  const [halfWide, halfHigh] = parts.reach;
-  const half = 1.12 * Math.max(halfHigh, (halfWide * h) / w);
+  parts.frame++;
+  parts.seen = null;
+  const dots = dotsOf(canvas);
+  if (JSON.stringify(dots) !== JSON.stringify(parts.dots)) {
+    parts.dots = dots;
+    parts.send({ kind: "size", size: dots });
+  }
+  const half = 1.12 * Math.max(reach[1], (reach[0] * h) / w);
   Object.assign(camera, {
     left: (-half * w) / h,
     right: (half * w) / h,
     top: half,
     bottom: -half,
     near: 0.01,
-    far: 30 * radius,
+    far: 30 * sphere.radius,
   });
   camera.updateProjectionMatrix();
 }
 
-function fitInPlace(stage: Stage): void {
-  const { camera, controls, parts } = stage;
-  const sphere = parts.mesh?.geometry.boundingSphere;
-  if (!sphere) return;
+/** Shows all of the model, as it is first seen. */
+function fitInPlace(parts: Parts): void {
+  const { camera, controls, sphere, outline } = parts;
+  if (outline.length === 0) return;
   camera.zoom = 1;
   controls.target.copy(sphere.center);
   camera.position.copy(sphere.center).add(new Vector3(-0.55, -1, 0.85).normalize().multiplyScalar(8 * sphere.radius));
   camera.lookAt(sphere.center);
   camera.updateMatrixWorld();
-  parts.reach = centreInPlace(stage);
-  frameInPlace(stage);
+  parts.reach = centreInPlace(parts);
+  frameInPlace(parts);
   controls.update();
-  stage.draw();
 }
 
-function handleView(stage: Stage): Omit<SceneView, "watch"> {
-  const { size, camera, controls, scene, parts, draw, move } = stage;
+function isSameSurface(a: Model | null, b: Model): boolean {
+  return a !== null && a.position === b.position && a.triangles === b.triangles && a.owner === b.owner;
+}
+
+function takeInPlace(parts: Parts, model: Model): void {
+  if (!isSameSurface(parts.model, model)) parts.mesh = null;
+  parts.model = model;
+  parts.outline = outlineOf(model);
+  parts.sphere.setFromPoints(parts.outline);
+}
+
+function meshOf({ position, triangles }: Model): Mesh<BufferGeometry, MeshBasicMaterial> {
+  const geometry = new BufferGeometry();
+  geometry.setAttribute("position", new BufferAttribute(position, 3));
+  geometry.setIndex(new BufferAttribute(triangles, 1));
+  return new Mesh(geometry, new MeshBasicMaterial({ side: DoubleSide }));
+}
+
+function handleModel(parts: Parts): Pick<SceneView, "show" | "light" | "ink" | "pick"> {
+  const { size, camera, send } = parts;
   const ray = new Raycaster();
-  const hit = (x: number, y: number) => {
-    if (parts.mesh === null) return undefined;
-    ray.setFromCamera(new Vector2((2 * x) / size.wide - 1, 1 - (2 * y) / size.high), camera);
-    return ray.intersectObject(parts.mesh)[0];
-  };
   return {
     show: (job, model, colours) => {
-      clearInPlace(scene, parts);
-      Object.assign(parts, {
-        job,
-        model,
-        colours,
-        mesh: buildMesh(model, stage.cloth),
-        turned: parts.turned && job === parts.job,
-      });
-      if (parts.mesh !== null) scene.add(parts.mesh);
-      parts.whole = parts.mesh?.geometry ?? null;
-      parts.lines = model.lines
-        .filter((l) => l.points.length > 1)
-        .map((line) => {
-          const object = new LineSegments2(
-            new LineSegmentsGeometry().setPositions(segmentsOf(line)),
-            inkOf(parts, line),
-          );
-          scene.add(object);
-          return { line, object };
-        });
-      parts.stale = true;
-      if (parts.turned) frameInPlace(stage);
-      else fitInPlace(stage);
-      draw();
+      const { position, normal, triangles, owner, owners } = model;
+      const surface = isSameSurface(parts.model, model) ? null : { position, normal, triangles, owner, owners };
+      const lines =
+        parts.model?.lines === model.lines ? null : model.lines.filter((l) => l.points.length > 1).map(drawnLine);
+      parts.turned &&= job === parts.job;
+      parts.job = job;
+      takeInPlace(parts, model);
+      if (parts.turned) frameInPlace(parts);
+      else fitInPlace(parts);
+      send({ kind: "show", surface, lines, colours, sight: sightOf(parts) });
     },
-    light: (ids) => {
-      const lit = new Set(ids.filter((id) => id !== null));
-      if (lit.size === parts.lit.size && [...lit].every((id) => parts.lit.has(id))) return;
-      parts.lit = lit;
-      parts.stale = true;
-      draw();
+    light: (given) => {
+      const ids = given.filter((id) => id !== null);
+      if (ids.length === parts.lit.length && ids.every((id) => parts.lit.includes(id))) return;
+      parts.lit = ids;
+      send({ kind: "light", ids });
     },
     ink: (ink) => {
-      if (JSON.stringify(ink) === JSON.stringify(parts.ink)) return;
-      parts.ink = ink;
-      parts.stale = true;
-      draw();
+      const words = JSON.stringify(ink);
+      if (words === parts.ink) return;
+      parts.ink = words;
+      send({ kind: "ink", ink });
     },
+    pick: (x, y) => {
+      if (parts.model === null) return null;
+      const { owners, owner } = parts.model;
+      parts.mesh ??= meshOf(parts.model);
+      ray.setFromCamera(new Vector2((2 * x) / size.wide - 1, 1 - (2 * y) / size.high), camera);
+      const point = ray.intersectObject(parts.mesh)[0]?.face?.a ?? null;
+      return (point !== null && owners[owner[point]]) || null;
+    },
+  };
+}
+
+function handleCamera(parts: Parts): Pick<SceneView, "fit" | "turn" | "zoom" | "resize"> {
+  const { camera, controls } = parts;
+  return {
     fit: () => {
       parts.turned = false;
-      fitInPlace(stage);
+      fitInPlace(parts);
+      look(parts, false);
     },
     turn: (around, over) => {
       parts.turned = true;
@@ -326,24 +309,17 @@ function handleView(stage: Stage): Omit<SceneView, "watch"> {
       arm.set(r * Math.cos(tilt) * Math.cos(angle), r * Math.cos(tilt) * Math.sin(angle), r * Math.sin(tilt));
       camera.position.copy(controls.target).add(arm);
       controls.update();
-      move();
+      look(parts, true);
     },
     zoom: (factor) => {
       parts.turned = true;
       camera.zoom = Math.min(Math.max(camera.zoom * factor, 0.2), 200);
       camera.updateProjectionMatrix();
-      move();
+      look(parts, true);
     },
-    pick: (x, y) => {
-      const found = hit(x, y);
-      const point = found?.face?.a ?? null;
-      const id = point === null ? null : (parts.model?.owners[parts.model.owner[point] ?? 0] ?? null);
-      return id === "" ? null : id;
-    },
-    project: stage.project,
     resize: () => {
-      frameInPlace(stage);
-      draw();
+      frameInPlace(parts);
+      look(parts, false);
     },
   };
 }

@@ -98,8 +98,12 @@ const ON_EDGE = 1e-3;
 /**
  * The two ends of each weld, in the plan's order. Seams on inner cables are no pairs, they follow their cable; seams across strips
  * end within the cloth and come of the strips' length.
+ * @param known ends that need not be sought, by the weld: to seek them all takes a while
  */
-export function findSeamEnds(facts: Facts): { weld: string; places: EdgePlace[] }[] {
+export function findSeamEnds(
+  facts: Facts,
+  known: ReadonlyMap<string, EdgePlace[]> = new Map(),
+): { weld: string; places: EdgePlace[] }[] {
   const { form, seams } = facts;
   if (form === undefined || seams === undefined) return [];
   const welds = new Map<string, readonly number[][][]>();
@@ -107,6 +111,8 @@ export function findSeamEnds(facts: Facts): { weld: string; places: EdgePlace[] 
   const same = (a: readonly number[] | undefined, b: readonly number[] | undefined) =>
     a?.every((x, k) => x === b?.[k]) === true;
   return [...welds].flatMap(([weld, paths]) => {
+    const places = known.get(weld);
+    if (places !== undefined) return [{ weld, places }];
     const ends = paths.flatMap((p) => [p[0], p.at(-1)]);
     const open = ends.filter((e) => ends.filter((o) => same(o, e)).length === 1);
     const [a, b] = open.slice(0, 2).map((e) => nearestPlace(form, e ?? []));

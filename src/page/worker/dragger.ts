@@ -107,8 +107,7 @@ function hear(reply: DragReply): void {
       else changeHand({ fault: reply.fault.message });
     }
     askNext();
-    const now = bookStore.getState().hand;
-    if (leaving && !asked && now !== null && now.laid === null) lay(now);
+    layIfDrawn();
   }
 }
 
@@ -203,7 +202,12 @@ export function letGo(): void {
   const { hand } = bookStore.getState();
   if (hand === null || hand.laid !== null) return;
   leaving = true;
-  if (!asked && next === null) lay(hand);
+  layIfDrawn();
+}
+
+function layIfDrawn(): void {
+  const { hand } = bookStore.getState();
+  if (leaving && !asked && next === null && hand !== null && hand.laid === null) lay(hand);
 }
 
 /** All seams one by one with this one between two other places: in their own numbers where the job gives them so already. */
@@ -218,9 +222,8 @@ function listPairs(hand: Hand, to: SeamPlaces): EdgePlace[][] {
     return given.map((pair, i) => (i === at ? [to[0], ...pair.slice(1, -1), to[1]] : pair));
   }
   if (facts === null) return [];
-  return findSeamEnds(facts).map(({ weld, places }) =>
-    weld === hand.weld ? to : (grips?.welds.find((g) => g.weld === weld)?.ends ?? places),
-  );
+  const known = new Map<string, EdgePlace[]>(grips?.welds.map(({ weld, ends }) => [weld, ends]));
+  return findSeamEnds(facts, known.set(hand.weld, to)).map(({ places }) => places);
 }
 
 function lay(hand: Hand): void {

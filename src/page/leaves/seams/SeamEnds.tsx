@@ -1,4 +1,5 @@
 // Seams in one's own hands: each end slid along its edge, seams added, removed, evened.
+import { useDeferredValue } from "react";
 import { addSeam } from "../../actions/seams/addSeam.ts";
 import { evenSeams } from "../../actions/seams/evenSeams.ts";
 import { layPairs } from "../../actions/seams/layPairs.ts";
@@ -14,6 +15,8 @@ import { useBook } from "../../store/useBook.ts";
 export function SeamEnds() {
   const facts = useBook((b) => b.facts);
   const pairs = useBook((b) => b.project?.job.seams?.pairs);
+  // the fields of twenty seams that come at once would block the page
+  const ready = useDeferredValue(pairs?.length ?? 0, 0);
   if (pairs === undefined) {
     return (
       <button
@@ -30,9 +33,9 @@ export function SeamEnds() {
   return (
     <div className="group" data-path="seams.pairs">
       <h3>Seams by hand</h3>
-      {pairs.map((pair, i) => (
+      {pairs.slice(0, ready).map((pair, i) => (
         // biome-ignore lint/suspicious/noArrayIndexKey: a pair has no name but its place
-        <fieldset key={i} className="edge">
+        <fieldset key={i} className="edge many">
           <legend>Seam {i + 1}</legend>
           {pair.map((p, k) => (
             <NumberField
