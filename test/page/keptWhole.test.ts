@@ -142,13 +142,14 @@ describe("two tabs on one job", { timeout: LONG }, () => {
   async function openTwice() {
     const desk = await openPlanned(bench, smallFiles());
     const first = desk.page;
+    await turnTo(first, "Papers");
+    await enter(first, "Checked by", "both");
     await kept(first);
     const second = await desk.context.newPage();
     watch(second, desk);
     await second.goto(bench.url);
     await second.getByRole("button", { name: "Ticket booth", exact: true }).click();
     await planned(second);
-    await turnTo(first, "Papers");
     await turnTo(second, "Papers");
     await enter(first, "Drawn by", "first");
     await second.getByText(/just changed in another tab/).waitFor();
@@ -157,11 +158,14 @@ describe("two tabs on one job", { timeout: LONG }, () => {
 
   it("changed in both and another job opened at once: the later change is a copy in the list", async () => {
     const { desk, second } = await openTwice();
-    // a change and another job in one breath, so that the change is written when its job is no longer on the desk
-    await enter(second, "Drawn by", "second");
-    await second.keyboard.press("Tab");
     await second.getByRole("button", { name: /open the list of jobs/ }).click();
-    await second.getByRole("button", { name: "bandstand", exact: true }).click();
+    await second.getByRole("button", { name: "bandstand", exact: true }).waitFor();
+    // a change and another job in one breath, so that the change is written when its job is no longer on the desk
+    await second.evaluate(() => {
+      const all = [...document.querySelectorAll("button")];
+      all.find((b) => b.getAttribute("aria-label") === "Undo checked by")?.click();
+      all.find((b) => b.textContent === "bandstand")?.click();
+    });
     await second.getByRole("button", { name: /^Seamstay Bandstand/i }).waitFor();
     await isListed(second, "Ticket booth (copy)", 1);
     await isListed(second, "Ticket booth", 1);
