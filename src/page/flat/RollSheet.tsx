@@ -83,7 +83,7 @@ function PlacedPiece(props: {
         className={`placed${lit ? " lit" : ""}${pinned ? " pinned" : ""}`}
         role="button"
         tabIndex={first ? 0 : -1}
-        aria-label={`${p.panel} on ${roll.id} at ${(p.x / 1000).toFixed(2)} m${pinned ? ", pinned" : ""}. Arrow keys move it by 10 mm and pin it, with Shift by 100; Delete lets it go.`}
+        aria-label={`${p.panel} on ${roll.id} at ${(p.x / 1000).toFixed(2)} m${p.order === undefined ? "" : `, cut as no. ${p.order}`}${pinned ? ", pinned" : ""}. Arrow keys move it by 10 mm and pin it, with Shift by 100; Delete lets it go.`}
         onPointerDown={(e) => onGrab(e, p)}
         onPointerEnter={() => bookStore.setState({ pointed: p.panel })}
         onPointerLeave={() => bookStore.setState({ pointed: null })}
