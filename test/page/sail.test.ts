@@ -55,6 +55,16 @@ describe("a sail in the page", { timeout: LONG }, () => {
     await page.getByText(/m of cloth from 1 roll/).waitFor();
   });
 
+  it("says from what width of roll one strip fewer would do", async () => {
+    const { page } = desk;
+    for (const leaf of ["Seams", "Panels", "Rolls"]) {
+      await turnTo(page, leaf);
+      await page
+        .getByText(/^Wider cloth: 2 strips in place of 3 would be about [\d.]+ m wide .* rolls of about [\d.]+ m on\./)
+        .waitFor();
+    }
+  });
+
   it.each([
     ["light", 1440, 900],
     ["dark", 1440, 900],

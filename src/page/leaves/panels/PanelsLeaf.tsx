@@ -6,6 +6,7 @@ import { FigureTable } from "../../parts/FigureTable.tsx";
 import { figure } from "../../parts/figure.ts";
 import { ThingRow } from "../../parts/ThingRow.tsx";
 import { Waiting } from "../../parts/Waiting.tsx";
+import { WiderCloth } from "../../parts/WiderCloth.tsx";
 import { LazySolid } from "../../solid/LazySolid.tsx";
 import { bookStore } from "../../store/bookStore.ts";
 import { useBook } from "../../store/useBook.ts";
@@ -129,7 +130,16 @@ export function PanelsLeaf() {
           <PanelSheet panels={panels} alone={alone} />
         )
       }
-      figures={panels && panels.length > 0 && <PanelFigures panels={panels} />}
+      figures={
+        facts &&
+        panels &&
+        panels.length > 0 && (
+          <>
+            <PanelFigures panels={panels} />
+            <WiderCloth facts={facts} />
+          </>
+        )
+      }
       decisions={<PanelDecisions />}
     />
   );

@@ -5,6 +5,7 @@ import { FigureTable } from "../../parts/FigureTable.tsx";
 import { figure } from "../../parts/figure.ts";
 import { ThingRow } from "../../parts/ThingRow.tsx";
 import { Waiting } from "../../parts/Waiting.tsx";
+import { WiderCloth } from "../../parts/WiderCloth.tsx";
 import { bookStore } from "../../store/bookStore.ts";
 import { useBook } from "../../store/useBook.ts";
 import { useShownFacts } from "../../store/useShown.ts";
@@ -145,6 +146,7 @@ export function RollsLeaf() {
         )
       }
       figures={
+        facts &&
         rolls &&
         shown && (
           <>
@@ -171,7 +173,8 @@ export function RollsLeaf() {
               ]}
             />
             <Fill rolls={rolls} />
-            {facts?.cloth && <Total cloth={facts.cloth} />}
+            {facts.cloth && <Total cloth={facts.cloth} />}
+            <WiderCloth facts={facts} />
             <Pieces roll={shown} />
           </>
         )

@@ -5,6 +5,7 @@ import { FigureTable } from "../../parts/FigureTable.tsx";
 import { figure } from "../../parts/figure.ts";
 import { ThingRow } from "../../parts/ThingRow.tsx";
 import { Waiting } from "../../parts/Waiting.tsx";
+import { WiderCloth } from "../../parts/WiderCloth.tsx";
 import { LazySolid } from "../../solid/LazySolid.tsx";
 import { bookStore } from "../../store/bookStore.ts";
 import { isSameWork } from "../../store/hand.ts";
@@ -107,6 +108,7 @@ export function SeamsLeaf() {
                 <strong>{l.region}</strong>: {l.count} strips as {l.layout}, {l.from} to {l.to}. {l.why}
               </p>
             ))}
+            {facts && <WiderCloth facts={facts} />}
             <FigureTable
               caption="Totals"
               rows={[
