@@ -1,7 +1,8 @@
 // Forces through the sequence: a line for each adjuster, its limit dashed, told apart by dash and name, not by colour alone.
+
 import type { Facts } from "../../core/records/facts.ts";
 import { figure } from "../parts/figure.ts";
-import { bookStore } from "../store/bookStore.ts";
+import { pointing } from "../parts/pointing.ts";
 import { useBook } from "../store/useBook.ts";
 import { axisSteps } from "./axisSteps.ts";
 import type { RigStep } from "./rigSteps.ts";
@@ -49,12 +50,7 @@ function DashKey({ ids, lit }: { ids: readonly string[]; lit: (id: string) => bo
   return (
     <ul className="dashkey" aria-label="Lines of the chart">
       {ids.map((id, k) => (
-        <li
-          key={id}
-          className={lit(id) ? "trace lit" : "trace"}
-          onPointerEnter={() => bookStore.setState({ pointed: id })}
-          onPointerLeave={() => bookStore.setState({ pointed: null })}
-        >
+        <li key={id} className={lit(id) ? "trace lit" : "trace"} {...pointing(id)}>
           <svg viewBox="0 0 40 8" aria-hidden="true">
             <polyline strokeDasharray={DASHES[k % DASHES.length]} points="0,4 40,4" />
           </svg>

@@ -1,6 +1,8 @@
 // Flat panels as they are cut: outline, net line, marks, names. One scale for all; warp runs along x.
+
 import type { SeenPanel } from "../../core/plan/dragSeam.ts";
 import type { FactsPanel, Vec2 } from "../../core/records/facts.ts";
+import { pointing } from "../parts/pointing.ts";
 import { pressed } from "../parts/pressed.ts";
 import { bookStore } from "../store/bookStore.ts";
 import { useBook } from "../store/useBook.ts";
@@ -112,8 +114,7 @@ export function PanelSheet({ panels, alone }: { panels: readonly FactsPanel[]; a
           transform={`translate(${at[i].x - boxes[i].x} ${at[i].y + boxes[i].h + boxes[i].y})`}
           onClick={() => bookStore.setState({ chosen: alone === p.id ? null : p.id })}
           onKeyDown={pressed(() => bookStore.setState({ chosen: alone === p.id ? null : p.id }))}
-          onPointerEnter={() => bookStore.setState({ pointed: p.id })}
-          onPointerLeave={() => bookStore.setState({ pointed: null })}
+          {...pointing(p.id)}
         >
           <PanelDrawing panel={p} size={size} detail={alone !== null} />
           <PanelName id={p.id} at={nameAt(p)} height={letter} />

@@ -1,7 +1,9 @@
 // The roof from above: edges, cables, anchors, adjusters with the force they carry at the step looked at.
+
 import type { Facts, FactsForm } from "../../core/records/facts.ts";
 import type { FactsRig } from "../../core/records/rig.ts";
 import { figure } from "../parts/figure.ts";
+import { pointing } from "../parts/pointing.ts";
 import { pressed } from "../parts/pressed.ts";
 import { bookStore } from "../store/bookStore.ts";
 import { useBook } from "../store/useBook.ts";
@@ -17,8 +19,6 @@ function boundsOf(form: FactsForm, rig: FactsRig): { x: number; y: number; w: nu
 }
 
 const line = (points: readonly number[][]) => points.map((p) => `${p[0].toFixed(3)},${(-p[1]).toFixed(3)}`).join(" ");
-
-const point = (id: string | null) => bookStore.setState({ pointed: id });
 
 /** The plan. */
 export function RigPlan({
@@ -50,8 +50,7 @@ export function RigPlan({
         <polyline
           key={e.id}
           className={`side ${e.kind}${lit(e.id) ? " lit" : ""}`}
-          onPointerEnter={() => point(e.id)}
-          onPointerLeave={() => point(null)}
+          {...pointing(e.id)}
           points={line(e.vertices.map((v) => form.vertices[v]))}
         />
       ))}
@@ -60,8 +59,7 @@ export function RigPlan({
           key={s.id}
           className={`side seam${lit(s.id) ? " lit" : ""}`}
           points={line(s.path)}
-          onPointerEnter={() => point(s.id)}
-          onPointerLeave={() => point(null)}
+          {...pointing(s.id)}
         />
       ))}
       {rig.struts
@@ -90,8 +88,7 @@ export function RigPlan({
             aria-label={`${a.id} ${force === undefined ? "not pulled yet" : `${figure(force, 1)} kN`}, adjuster${moving.has(a.id) ? " that moves in this step" : ""}`}
             onClick={() => bookStore.setState({ chosen: a.id })}
             onKeyDown={pressed(() => bookStore.setState({ chosen: a.id }))}
-            onPointerEnter={() => point(a.id)}
-            onPointerLeave={() => point(null)}
+            {...pointing(a.id)}
           >
             <polyline points={line([p, q])} />
             <circle cx={out[0]} cy={-out[1]} r={0.45 * size} />

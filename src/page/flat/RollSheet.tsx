@@ -1,8 +1,10 @@
 // A roll with what lies on it, in rows like a text. Panels are moved with the pointer or the arrow keys and then stay pinned.
+
 import { useId, useRef, useState } from "react";
 import type { Facts, Vec2 } from "../../core/records/facts.ts";
 import type { NestedRoll, Placement } from "../../core/records/roll.ts";
 import { setPin } from "../actions/rolls/setPin.ts";
+import { pointing } from "../parts/pointing.ts";
 import { pressed } from "../parts/pressed.ts";
 import { act, bookStore } from "../store/bookStore.ts";
 import { useBook } from "../store/useBook.ts";
@@ -85,8 +87,7 @@ function PlacedPiece(props: {
         tabIndex={first ? 0 : -1}
         aria-label={`${p.panel} on ${roll.id} at ${(p.x / 1000).toFixed(2)} m${p.order === undefined ? "" : `, cut as no. ${p.order}`}${pinned ? ", pinned" : ""}. Arrow keys move it by 10 mm and pin it, with Shift by 100; Delete lets it go.`}
         onPointerDown={(e) => onGrab(e, p)}
-        onPointerEnter={() => bookStore.setState({ pointed: p.panel })}
-        onPointerLeave={() => bookStore.setState({ pointed: null })}
+        {...pointing(p.panel)}
         onKeyDown={(e) => {
           const step = STEPS[e.key];
           if (e.key === "Delete") act(setPin, { panel: p.panel, place: null }, `${p.panel} let go`);

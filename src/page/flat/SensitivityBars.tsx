@@ -1,8 +1,9 @@
 // What an error of making or setting out does to the forces: a bar for each, the worst first, with the error that makes a tenth.
+
 import { useState } from "react";
 import type { FactsSensitivity } from "../../core/records/rig.ts";
 import { figure } from "../parts/figure.ts";
-import { bookStore } from "../store/bookStore.ts";
+import { pointing } from "../parts/pointing.ts";
 import { useBook } from "../store/useBook.ts";
 
 const FIRST = 8;
@@ -30,8 +31,7 @@ export function SensitivityBars({ sensitivity }: { sensitivity: readonly FactsSe
           <li
             key={`${s.what} ${s.id}`}
             className={s.id === pointed || s.id === chosen ? "lit" : undefined}
-            onPointerEnter={() => bookStore.setState({ pointed: s.id })}
-            onPointerLeave={() => bookStore.setState({ pointed: null })}
+            {...pointing(s.id)}
           >
             <span>{nameOf(s)}</span>
             <span className="track" aria-hidden="true">

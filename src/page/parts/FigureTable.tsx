@@ -1,7 +1,8 @@
 // Figures of a leaf: what, how much, held against what. A row that speaks of a thing lights it up in the drawings.
-import { bookStore } from "../store/bookStore.ts";
+
 import { useBook } from "../store/useBook.ts";
 import { keepTogether } from "./figure.ts";
+import { pointing } from "./pointing.ts";
 
 export interface FigureRow {
   what: string;
@@ -22,7 +23,6 @@ const keepShort = (value: string) => (value.length > 16 ? value : value.replaceA
 export function FigureTable({ caption, rows }: { caption: string; rows: readonly FigureRow[] }) {
   const pointed = useBook((b) => b.pointed);
   const chosen = useBook((b) => b.chosen);
-  const point = (id: string | undefined) => id !== undefined && bookStore.setState({ pointed: id });
   const look = (r: FigureRow) => {
     if (r.holds === false) return "fails";
     return r.id !== undefined && (r.id === pointed || r.id === chosen) ? "lit" : undefined;
@@ -32,12 +32,7 @@ export function FigureTable({ caption, rows }: { caption: string; rows: readonly
       <caption>{caption}</caption>
       <tbody>
         {rows.map((r) => (
-          <tr
-            key={r.what}
-            className={look(r)}
-            onPointerEnter={() => point(r.id)}
-            onPointerLeave={() => r.id !== undefined && bookStore.setState({ pointed: null })}
-          >
+          <tr key={r.what} className={look(r)} {...(r.id !== undefined && pointing(r.id))}>
             <th scope="row">
               {r.what}
               {r.against !== undefined && <span className="against">{keepTogether(r.against)}</span>}

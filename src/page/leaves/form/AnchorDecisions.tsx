@@ -1,10 +1,12 @@
 // What can be decided about the anchors: where the far pin is, how far the cloth is cut back, one more, one less.
+
 import { useState } from "react";
 import { addAnchor, removeAnchor, setAnchor } from "../../actions/form/setAnchor.ts";
 import { NumberField } from "../../parts/Fields.tsx";
 import { figure } from "../../parts/figure.ts";
 import { PointField } from "../../parts/PointField.tsx";
-import { act, bookStore } from "../../store/bookStore.ts";
+import { pointing } from "../../parts/pointing.ts";
+import { act } from "../../store/bookStore.ts";
 import { useBook } from "../../store/useBook.ts";
 import { useShownFacts } from "../../store/useShown.ts";
 
@@ -13,12 +15,7 @@ function Anchor({ id, at }: { id: string; at: readonly number[] }) {
   const chosen = useBook((b) => b.chosen === id);
   const named = `anchors.${id}`;
   return (
-    <fieldset
-      className={chosen ? "edge lit" : "edge"}
-      data-path={named}
-      onPointerEnter={() => bookStore.setState({ pointed: id })}
-      onPointerLeave={() => bookStore.setState({ pointed: null })}
-    >
+    <fieldset className={chosen ? "edge lit" : "edge"} data-path={named} {...pointing(id)}>
       <legend>
         {id} <span className="quiet">at {at.map((v) => figure(v, 2)).join(", ")} m</span>
       </legend>

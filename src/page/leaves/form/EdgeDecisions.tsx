@@ -1,10 +1,12 @@
 // What can be decided about the edges: what each is, the force and the cable of it.
+
 import cables from "../../../../templates/cables.json";
 import { setCableFigure } from "../../actions/form/setCableFigure.ts";
 import { setEdge, setTerminal } from "../../actions/form/setEdge.ts";
 import { ChoiceField, NumberField, SwitchField } from "../../parts/Fields.tsx";
 import { figure } from "../../parts/figure.ts";
-import { act, bookStore } from "../../store/bookStore.ts";
+import { pointing } from "../../parts/pointing.ts";
+import { act } from "../../store/bookStore.ts";
 import type { Project } from "../../store/project.ts";
 import { useBook } from "../../store/useBook.ts";
 import { useShownFacts } from "../../store/useShown.ts";
@@ -148,13 +150,7 @@ export function EdgeDecisions() {
         const own = given?.[e.id];
         const named = `edges.${e.id}`;
         return (
-          <fieldset
-            key={e.id}
-            className={e.id === chosen ? "edge lit" : "edge"}
-            data-path={named}
-            onPointerEnter={() => bookStore.setState({ pointed: e.id })}
-            onPointerLeave={() => bookStore.setState({ pointed: null })}
-          >
+          <fieldset key={e.id} className={e.id === chosen ? "edge lit" : "edge"} data-path={named} {...pointing(e.id)}>
             <legend>
               {e.id} <span className="quiet">{figure(e.length, 2)} m</span>
             </legend>

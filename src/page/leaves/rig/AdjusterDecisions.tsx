@@ -1,10 +1,12 @@
 // What can be decided about the adjusters and what else holds the roof up: turnbuckles, stiffness, struts, stays.
+
 import turnbuckles from "../../../../templates/turnbuckles.json";
 import type { FactsAdjuster } from "../../../core/records/rig.ts";
 import { addAdjuster, removeAdjuster, setAdjuster } from "../../actions/rig/adjusters.ts";
 import { setSupport } from "../../actions/rig/setSupport.ts";
 import { ChoiceField, NumberField } from "../../parts/Fields.tsx";
-import { act, bookStore } from "../../store/bookStore.ts";
+import { pointing } from "../../parts/pointing.ts";
+import { act } from "../../store/bookStore.ts";
 import { useBook } from "../../store/useBook.ts";
 
 const FIGURES = [
@@ -32,12 +34,7 @@ function Adjuster({ one: a, standing }: { one: FactsAdjuster; standing: readonly
     words: string,
   ) => act(setAdjuster, { adjuster: a.id, key, value, standing }, `${words} of ${a.id}`);
   return (
-    <fieldset
-      className={chosen ? "edge lit" : "edge"}
-      data-path={path}
-      onPointerEnter={() => bookStore.setState({ pointed: a.id })}
-      onPointerLeave={() => bookStore.setState({ pointed: null })}
-    >
+    <fieldset className={chosen ? "edge lit" : "edge"} data-path={path} {...pointing(a.id)}>
       <legend>
         {a.id} <span className="quiet">at {a.anchor}</span>
       </legend>

@@ -135,7 +135,9 @@ export function RigLeaf() {
       answer={
         steps.length === 0
           ? facts?.cables
-            ? "No adjuster stands on this form: it is held all round and carries no schedule; how it stands once assembled is told beside."
+            ? facts.assembled !== undefined
+              ? "No adjuster stands on this form: it is held all round and carries no schedule; how it stands once assembled is told beside."
+              : "No schedule could be made: what stops it stands under “To look at” and with the findings."
             : "Not worked out yet."
           : `${rig?.adjusters.length ?? 0} adjusters in ${steps.length} steps; on the way no part passes ${figure(100 * greatest, 0)} % of its limit.`
       }
