@@ -52,6 +52,12 @@ function buildRules() {
       to: { path: "(^|/)three(/|$)" },
     },
     {
+      name: "the reader of PDF only where sheets are shown",
+      severity: "error",
+      from: { path: "^src/", pathNot: "^src/page/(sheets/openSheets|worker/sheetWorker)\\.ts$" },
+      to: { path: "(^|/)pdfjs-dist(/|$)" },
+    },
+    {
       name: "react only in the page",
       severity: "error",
       from: { path: "^src/", pathNot: "^src/page/" },

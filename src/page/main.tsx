@@ -15,6 +15,7 @@ import "./style/fields.css";
 import "./style/parts.css";
 import "./style/drawings.css";
 import "./style/site.css";
+import "./style/print.css";
 
 /** What `seamstay open JOB` hands over; null where it named none. */
 async function fetchOpened(): Promise<{ name: string; job: JobFile; mesh: string | null } | null> {

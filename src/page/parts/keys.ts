@@ -59,6 +59,11 @@ export const KEY_SHEET: Key[] = [
   },
   { keys: "Arrow keys on a roll", words: "move a panel by 10 mm, with Shift by 100, and pin it; Delete lets it go" },
   { keys: "Enter or Space on a drawing", words: "choose the panel or the adjuster that has the focus" },
+  {
+    keys: "Page keys, ← → on a paper",
+    words: "sheet before, next sheet; + and − larger and smaller, 0 as wide as the page",
+  },
+  { keys: "Ctrl P", words: "print the paper that is looked at" },
   { keys: "?", words: "this sheet" },
 ];
 

@@ -2,6 +2,7 @@
 import { useEffect, useMemo } from "react";
 import { listCells } from "../../../core/plan/listCells.ts";
 import { blobOf } from "../../keep/saveFiles.ts";
+import { SheetView } from "../../sheets/SheetView.tsx";
 import type { PaperFile } from "../../store/bookStore.ts";
 
 /** A drawing for the table has hairlines; on a screen they are drawn a pixel wide. Only for looking at. */
@@ -47,7 +48,7 @@ function Table({ file }: { file: PaperFile }) {
   );
 }
 
-/** The paper: drawn, as a table, or how to come to see it. */
+/** The paper: drawn, as a table, sheet by sheet, or how to come to see it. */
 export function Preview({ file }: { file: PaperFile | undefined }) {
   const url = useMemo(() => (file?.path.endsWith(".svg") ? URL.createObjectURL(blobOf(thicken(file))) : null), [file]);
   useEffect(
@@ -69,7 +70,6 @@ export function Preview({ file }: { file: PaperFile | undefined }) {
       </div>
     );
   if (/\.csv$/.test(file.path)) return <Table file={file} />;
-  return (
-    <p className="waiting">{file.path} is opened by its own program: save it, then open or print it from there.</p>
-  );
+  if (/\.pdf$/.test(file.path)) return <SheetView key={file.path} file={file} />;
+  return <p className="waiting">{file.path} is opened by its own program: save it, then open it from there.</p>;
 }

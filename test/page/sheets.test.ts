@@ -1,0 +1,90 @@
+// A PDF looked at and printed on the page: sheet by sheet with the keys, its words as text, and what the browser prints of it.
+import { PDFDocument } from "pdf-lib";
+import { describe, expect, it } from "vitest";
+import { readWords } from "../../src/page/sheets/readWords.ts";
+import { benchOfFile, clear, judge, LONG, openPlanned, SOON, turnTo } from "./bench.ts";
+import { sailFiles } from "./smallForm.ts";
+
+const bench = benchOfFile();
+
+/** Kept as text: the tool that drives the browser prints by itself, so the page's own print only says that it was asked for. */
+const HOLD_PRINT = "window.print = () => { window.asked = (window.asked ?? 0) + 1; }";
+
+describe("a PDF on the page", { timeout: LONG }, () => {
+  it.each(["light", "dark"] as const)(
+    "is read sheet by sheet, with its words, and printed (%s)",
+    async (colorScheme) => {
+      const viewport = colorScheme === "light" ? { width: 1440, height: 900 } : { width: 820, height: 1180 };
+      const desk = await openPlanned(bench, sailFiles(), { colorScheme, viewport });
+      const { page } = desk;
+      await page.evaluate(HOLD_PRINT);
+      await turnTo(page, "Papers");
+      await page.getByRole("button", { name: "cables.pdf", exact: true }).click();
+      const place = page.getByRole("group", { name: "Paper cables.pdf" });
+      await page.getByText(/^Sheet 1 of \d+$/).waitFor();
+      const count = Number((await page.getByText(/^Sheet 1 of \d+$/).innerText()).split(" ").at(-1));
+      expect(count).toBeGreaterThan(1);
+      await place.locator("summary").click();
+      const words = () => place.locator("pre").innerText();
+      await expect.poll(words, SOON).toMatch(new RegExp(`Kiosk sail .* 1 of ${count}`));
+      // ink on paper: the sheet is drawn, not only opened
+      const dark = () =>
+        place.locator("canvas").evaluate((c) => {
+          const canvas = c as HTMLCanvasElement;
+          const { data } = canvas.getContext("2d")?.getImageData(0, 0, canvas.width, canvas.height) ?? { data: [] };
+          let n = 0;
+          for (let i = 0; i < data.length; i += 4) if (data[i + 3] === 255 && data[i] < 100) n++;
+          return n;
+        });
+      await expect.poll(dark, SOON).toBeGreaterThan(1000);
+      await place.press("PageDown");
+      await expect.poll(words, SOON).toMatch(new RegExp(`Kiosk sail .* 2 of ${count}`));
+      await place.press("Home");
+      await page.getByText(`Sheet 1 of ${count}`).waitFor();
+      const wide = () => place.locator("canvas").evaluate((c) => c.getBoundingClientRect().width);
+      const before = await wide();
+      await place.press("+");
+      await expect.poll(wide, SOON).toBeGreaterThan(1.2 * before);
+      await expect.poll(() => page.evaluate(() => document.documentElement.scrollWidth), SOON).toBe(viewport.width);
+      await place.press("0");
+      await expect.poll(wide, SOON).toBe(before);
+      await expect.poll(() => judge(page), SOON).toEqual([]);
+      await page.keyboard.press("Control+p");
+      await expect.poll(() => page.evaluate("window.asked"), SOON).toBe(1);
+      const { pages, sizes } = await readSizes(await page.pdf({ preferCSSPageSize: true }));
+      expect(pages).toBe(count);
+      // ISO 216: A4 is 297 x 210 mm; browsers round a page to whole dots of 1/96 inch
+      for (const [w, h] of sizes) {
+        expect(Math.abs((w / 72) * 25.4 - 297)).toBeLessThan(0.3);
+        expect(Math.abs((h / 72) * 25.4 - 210)).toBeLessThan(0.3);
+      }
+      await page.evaluate(() => dispatchEvent(new Event("afterprint")));
+      await expect.poll(() => page.locator(".printed").count(), SOON).toBe(0);
+      await clear(desk);
+    },
+  );
+});
+
+async function readSizes(bytes: Uint8Array): Promise<{ pages: number; sizes: [number, number][] }> {
+  const all = (await PDFDocument.load(bytes)).getPages();
+  return { pages: all.length, sizes: all.map((p) => [p.getWidth(), p.getHeight()]) };
+}
+
+describe("words of a sheet", () => {
+  const at = (text: string, x: number, y: number, height = 10) => ({
+    text,
+    at: [height, 0, 0, height, x, y],
+    width: 5 * text.length,
+  });
+
+  it("lines from the top down, each from left to right, columns parted, upright words last", () => {
+    const upright = { text: "edge W1", at: [0, 10, -10, 0, 5, 300], width: 35 };
+    expect(
+      readWords([upright, at("right", 200, 700), at("below", 10, 680), at("left", 10, 701), at(" ", 90, 700)]),
+    ).toEqual(["left  right", "below", "edge W1"]);
+  });
+
+  it("runs that touch are one word, a small gap is a space", () => {
+    expect(readWords([at("Seam", 10, 50), at("stay", 30, 50), at("A", 53, 50)])).toEqual(["Seamstay A"]);
+  });
+});
