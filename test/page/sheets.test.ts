@@ -1,5 +1,6 @@
 // A PDF looked at and printed on the page: sheet by sheet with the keys, its words as text, and what the browser prints of it.
 import { PDFDocument } from "pdf-lib";
+import type { Page } from "playwright-core";
 import { describe, expect, it } from "vitest";
 import { readWords } from "../../src/page/sheets/readWords.ts";
 import { benchOfFile, clear, judge, LONG, openPlanned, SOON, turnTo } from "./bench.ts";
@@ -7,8 +8,43 @@ import { sailFiles } from "./smallForm.ts";
 
 const bench = benchOfFile();
 
-/** Kept as text: the tool that drives the browser prints by itself, so the page's own print only says that it was asked for. */
-const HOLD_PRINT = "window.print = () => { window.asked = (window.asked ?? 0) + 1; }";
+/**
+ * Kept as text: the tool that drives the browser prints by itself, so the page's own print only says that it was asked for; URLs lent and
+ * not taken back are held in `lent`.
+ */
+const HOLD_PRINT = `
+  window.print = () => { window.asked = (window.asked ?? 0) + 1; };
+  const lent = window.lent = new Set();
+  const { createObjectURL, revokeObjectURL } = URL;
+  URL.createObjectURL = (of) => { const url = createObjectURL.call(URL, of); lent.add(url); return url; };
+  URL.revokeObjectURL = (url) => { lent.delete(url); revokeObjectURL.call(URL, url); };`;
+
+/** The second picture fails, as it does where memory is short. */
+const FAIL_PICTURE = `
+  const { toBlob } = HTMLCanvasElement.prototype;
+  let made = 0;
+  HTMLCanvasElement.prototype.toBlob = function (...given) { made++ === 1 ? given[0](null) : toBlob.apply(this, given); };`;
+
+/** Whether the page takes Ctrl P for itself, pressed in a field or beside all fields. */
+function takesPrint(page: Page, inField: boolean): Promise<boolean> {
+  return page.evaluate((inField) => {
+    const field = document.createElement("input");
+    document.body.append(field);
+    const press = new KeyboardEvent("keydown", { key: "p", ctrlKey: true, bubbles: true, cancelable: true });
+    (inField ? field : document.body).dispatchEvent(press);
+    field.remove();
+    return press.defaultPrevented;
+  }, inField);
+}
+
+/** What a shown PDF takes hold of: its workers, faces in the document, URLs. */
+async function held(page: Page): Promise<{ workers: number; faces: number; urls: unknown }> {
+  return {
+    workers: page.workers().filter((w) => w.url().includes("sheetWorker")).length,
+    faces: await page.evaluate(() => document.fonts.size),
+    urls: await page.evaluate("window.lent.size"),
+  };
+}
 
 describe("a PDF on the page", { timeout: LONG }, () => {
   it.each(["light", "dark"] as const)(
@@ -19,6 +55,11 @@ describe("a PDF on the page", { timeout: LONG }, () => {
       const { page } = desk;
       await page.evaluate(HOLD_PRINT);
       await turnTo(page, "Papers");
+      const table = page.getByRole("button", { name: "cables.csv", exact: true });
+      await table.click();
+      await expect.poll(() => held(page), SOON).toMatchObject({ workers: 0, urls: 0 });
+      const free = await held(page);
+      expect(await takesPrint(page, false)).toBe(false);
       await page.getByRole("button", { name: "cables.pdf", exact: true }).click();
       const place = page.getByRole("group", { name: "Paper cables.pdf" });
       await page.getByText(/^Sheet 1 of \d+$/).waitFor();
@@ -49,6 +90,8 @@ describe("a PDF on the page", { timeout: LONG }, () => {
       await place.press("0");
       await expect.poll(wide, SOON).toBe(before);
       await expect.poll(() => judge(page), SOON).toEqual([]);
+      expect((await held(page)).faces).toBeGreaterThan(free.faces);
+      expect(await takesPrint(page, true)).toBe(false);
       await page.keyboard.press("Control+p");
       await expect.poll(() => page.evaluate("window.asked"), SOON).toBe(1);
       const { pages, sizes } = await readSizes(await page.pdf({ preferCSSPageSize: true }));
@@ -60,9 +103,30 @@ describe("a PDF on the page", { timeout: LONG }, () => {
       }
       await page.evaluate(() => dispatchEvent(new Event("afterprint")));
       await expect.poll(() => page.locator(".printed").count(), SOON).toBe(0);
+      // the paper gone, all it took hold of is let go of
+      await table.click();
+      await expect.poll(() => held(page), SOON).toEqual(free);
+      expect(await takesPrint(page, false)).toBe(false);
       await clear(desk);
     },
   );
+
+  it("what cannot be made ready is said, and nothing of it stays", async () => {
+    const desk = await openPlanned(bench, sailFiles());
+    const { page } = desk;
+    await page.evaluate(HOLD_PRINT);
+    await page.evaluate(FAIL_PICTURE);
+    await turnTo(page, "Papers");
+    await page.getByRole("button", { name: "cables.pdf", exact: true }).click();
+    await page.getByText(/^Sheet 1 of [2-9]/).waitFor();
+    await page.getByRole("button", { name: "Print", exact: true }).click();
+    const told = page.getByRole("alert").filter({ hasText: "cables.pdf cannot be shown or printed here" });
+    await expect.poll(() => told.innerText(), SOON).toContain("no picture of the sheet");
+    await expect.poll(() => page.evaluate("window.lent.size"), SOON).toBe(0);
+    expect(await page.evaluate("window.asked")).toBeUndefined();
+    await expect.poll(() => takesPrint(page, false), SOON).toBe(false);
+    await clear(desk);
+  });
 });
 
 async function readSizes(bytes: Uint8Array): Promise<{ pages: number; sizes: [number, number][] }> {

@@ -70,7 +70,7 @@ export const KEY_SHEET: Key[] = [
 const TEXT = "input:not([type=checkbox], [type=file])";
 
 /** Keys without Ctrl are the field's own there. */
-function isTyping(target: EventTarget | null): target is HTMLElement {
+export function isTyping(target: EventTarget | null): target is HTMLElement {
   return target instanceof HTMLElement && target.matches(`${TEXT}, select`);
 }
 

@@ -1,5 +1,6 @@
 // A PDF on the page: one sheet at a time at reading size, turned with keys, its words below it, and printed.
 import { useCallback, useEffect, useRef, useState } from "react";
+import { isTyping } from "../parts/keys.ts";
 import type { PaperFile } from "../store/bookStore.ts";
 import type { OpenSheets } from "./openSheets.ts";
 
@@ -139,17 +140,19 @@ export function SheetView({ file }: { file: PaperFile }) {
   };
   const zoomBy = (factor: number) => setZoom((z) => (factor === 0 ? 1 : Math.min(Math.max(z * factor, LEAST), MOST)));
   const { begin } = print;
+  const said = shut || fault;
   useEffect(() => {
     // the book itself is nothing to print: the key prints the paper that is looked at
     const hear = (e: KeyboardEvent) => {
-      if (!(e.ctrlKey || e.metaKey) || e.key.toLowerCase() !== "p") return;
+      if (!(e.ctrlKey || e.metaKey) || e.shiftKey || e.altKey || e.key.toLowerCase() !== "p") return;
+      const over = document.querySelector("dialog[open]");
+      if (said !== "" || isTyping(e.target) || (over !== null && !over.contains(place.current))) return;
       e.preventDefault();
-      void begin();
+      if (!e.repeat) void begin();
     };
     addEventListener("keydown", hear);
     return () => removeEventListener("keydown", hear);
-  }, [begin]);
-  const said = shut || fault;
+  }, [begin, said, place]);
   if (said !== "")
     return (
       <p className="waiting" role="alert">

@@ -40,10 +40,13 @@ export async function openSheets(bytes: Uint8Array<ArrayBuffer>): Promise<OpenSh
   const worker = PDFWorker.create({ port });
   // the bytes are handed over, and the paper itself must stay
   const task = getDocument({ data: bytes.slice(), worker, isEvalSupported: false, useWasm: false, stopAtErrors: true });
+  // the reader takes its faces out of the document only once the worker has answered, so that is ended last
   const close = () => {
-    void task.destroy();
-    worker.destroy();
-    port.terminate();
+    const ended = Promise.race([task.destroy(), broke]).catch(() => {});
+    void ended.then(() => {
+      worker.destroy();
+      port.terminate();
+    });
   };
   const book = await Promise.race([task.promise, broke]).catch((error: unknown) => {
     close();

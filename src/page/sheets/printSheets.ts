@@ -43,15 +43,11 @@ export async function printSheets(
   const drop = () => {
     for (const url of urls) URL.revokeObjectURL(url);
   };
-  for (let sheet = 1; sheet <= sheets.count; sheet++) {
+  const add = async (sheet: number) => {
     onSheet(sheet);
     const size = await sheets.sizeOf(sheet);
     const scale = Math.min(DENSITY / 72, Math.sqrt(MOST / (size.width * size.height)));
-    const drawn = await sheets.draw(canvas, sheet, scale);
-    if (!drawn || cancelled()) {
-      drop();
-      return null;
-    }
+    if (!(await sheets.draw(canvas, sheet, scale))) return false;
     let kind = sizes.findIndex((s) => s.width === size.width && s.height === size.height);
     if (kind < 0) kind = sizes.push(size) - 1;
     const picture = document.createElement("img");
@@ -61,6 +57,15 @@ export async function printSheets(
     urls.push(picture.src);
     await picture.decode();
     place.append(picture);
+    return true;
+  };
+  let whole = false;
+  try {
+    for (let sheet = 1; sheet <= sheets.count; sheet++) if (!(await add(sheet)) || cancelled()) return null;
+    whole = true;
+  } finally {
+    // given up or failed: nothing of it stays
+    if (!whole) drop();
   }
   const style = new CSSStyleSheet();
   style.replaceSync(rulesOf(sizes));
