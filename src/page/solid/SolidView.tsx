@@ -69,7 +69,7 @@ function takeScene(host: HTMLElement, broken: (again: boolean) => void): NonNull
 function useScene(model: Model | null, scale: Scale | null, words: string) {
   const host = useRef<HTMLDivElement>(null);
   const names = useRef<HTMLDivElement>(null);
-  const view = useRef<SceneView | null>(null);
+  const [view, setView] = useState<SceneView | null>(null);
   const labels = useRef<Model["labels"]>([]);
   /** Whether the scene was given what this leaf shows: until then it is still as another leaf left it. */
   const given = useRef(false);
@@ -79,65 +79,67 @@ function useScene(model: Model | null, scale: Scale | null, words: string) {
   const chosen = useBook((b) => b.chosen);
   const theme = useBook((b) => b.theme);
   const job = useBook((b) => b.project?.id ?? "");
-  const [tried, setTried] = useState(0);
-  // biome-ignore lint/correctness/useExhaustiveDependencies: each try takes another canvas
   useEffect(() => {
-    if (host.current === null) return;
-    const { canvas, view: made } = takeScene(host.current, (again) => {
-      view.current = null;
-      if (again) setTried((n) => n + 1);
-      else setBroken(true);
-    });
-    view.current = made;
-    made.watch((project) => {
-      if (given.current) placeNames(names.current, labels.current, project, putGrips.current?.(project) ?? []);
-    });
-    const watch = new ResizeObserver(() => made.resize());
-    watch.observe(canvas);
-    return () => {
-      watch.disconnect();
-      made.watch(null);
-      given.current = false;
-      tellBroken = null;
-      canvas.remove();
-      view.current = null;
+    const place = host.current;
+    if (place === null) return;
+    let letGo = () => {};
+    const take = () => {
+      const { canvas, view: made } = takeScene(place, (again) => {
+        letGo();
+        if (again) take();
+        else setBroken(true);
+      });
+      made.watch((project) => {
+        if (given.current) placeNames(names.current, labels.current, project, putGrips.current?.(project) ?? []);
+      });
+      const watch = new ResizeObserver(() => made.resize());
+      watch.observe(canvas);
+      letGo = () => {
+        watch.disconnect();
+        made.watch(null);
+        given.current = false;
+        tellBroken = null;
+        canvas.remove();
+        setView(null);
+      };
+      setView(made);
     };
-  }, [tried]);
-  // biome-ignore lint/correctness/useExhaustiveDependencies: each try takes another canvas
+    take();
+    return () => letGo();
+  }, []);
   useEffect(() => {
-    const canvas = host.current?.querySelector("canvas");
+    const canvas = view && host.current?.querySelector("canvas");
     canvas?.setAttribute("tabindex", "0");
     canvas?.setAttribute("role", "application");
     canvas?.setAttribute(
       "aria-label",
       `${words} Turn with the arrow keys, + and − come closer and go back, 0 shows all.`,
     );
-  }, [words, tried]);
-  // biome-ignore lint/correctness/useExhaustiveDependencies: each try is shown the model anew
+  }, [words, view]);
   useEffect(() => {
-    if (model === null) return;
+    if (model === null || view === null) return;
     // in a task of its own: the page has just been drawn anew
     const show = setTimeout(() => {
       labels.current = model.labels;
       given.current = true;
-      view.current?.show(job, model, paintPoints(model.value, scale));
+      view.show(job, model, paintPoints(model.value, scale));
     });
     return () => clearTimeout(show);
-  }, [job, model, scale, tried]);
+  }, [job, model, scale, view]);
   // while a seam's end is slid the surface is not drawn again: without a graphics card that would block the page
   const held = useBook((b) => b.hand !== null && b.hand.laid === null);
   useEffect(() => {
-    if (!held) view.current?.light([pointed, chosen]);
-  }, [pointed, chosen, held]);
+    if (!held) view?.light([pointed, chosen]);
+  }, [view, pointed, chosen, held]);
   // biome-ignore lint/correctness/useExhaustiveDependencies: the inks are read from the sheet of the theme
   useEffect(() => {
-    const apply = () => host.current && view.current?.ink(readInk(host.current));
+    const apply = () => host.current && view?.ink(readInk(host.current));
     requestAnimationFrame(apply);
     const dark = matchMedia("(prefers-color-scheme: dark)");
     dark.addEventListener("change", apply);
     return () => dark.removeEventListener("change", apply);
-  }, [theme]);
-  const project = useCallback(() => (given.current ? (view.current?.project() ?? null) : null), []);
+  }, [view, theme]);
+  const project = useCallback(() => (given.current ? (view?.project() ?? null) : null), [view]);
   const hookGrips = useCallback(
     (put: ((project: Project) => { x: number; y: number }[]) | null) => {
       putGrips.current = put;
@@ -190,15 +192,15 @@ export function SolidView(props: {
       {/* biome-ignore lint/a11y/noStaticElementInteractions: the canvas in it has the role and the focus */}
       <div
         ref={host}
-        onPointerMove={(e) => e.buttons === 0 && point(view.current?.pick(...place(e)) ?? null)}
+        onPointerMove={(e) => e.buttons === 0 && point(view?.pick(...place(e)) ?? null)}
         onPointerLeave={() => point(null)}
-        onClick={(e) => choose(view.current?.pick(...place(e)) ?? null)}
+        onClick={(e) => choose(view?.pick(...place(e)) ?? null)}
         onKeyDown={(e) => {
           const key = KEYS[e.key];
-          if (key === undefined || view.current === null || e.ctrlKey || e.metaKey) return;
+          if (key === undefined || view === null || e.ctrlKey || e.metaKey) return;
           e.preventDefault();
           e.stopPropagation();
-          key(view.current);
+          key(view);
         }}
       />
       <div className="names" ref={names} aria-hidden="true">
