@@ -14,12 +14,21 @@ export interface ClothRoom {
 /** Least share of the cloth's width that is left beside the allowances; where more is asked for, the rolls station names the panels. */
 const LEAST_SHARE = 0.2;
 
+/** Sizes of the job's rolls, or of the fabric's full roll, mm. */
+function listRolls({ rolls, fabric }: Job): { width: number; selvedge: number; length: number; start: number }[] {
+  return rolls ?? [{ width: fabric.rollWidth, selvedge: fabric.selvedge, length: fabric.rollLength, start: 0 }];
+}
+
+/** The narrowest of the job's rolls by what is left between its selvedges, mm. */
+export function findNarrowest(job: Job): { usable: number; selvedge: number } {
+  const all = listRolls(job).map(({ width, selvedge }) => ({ usable: width - 2 * selvedge, selvedge }));
+  return all.reduce((a, b) => (b.usable < a.usable ? b : a));
+}
+
 /** The cloth's room: the narrowest of the job's rolls, or the fabric's full roll. */
 export function measureRoom(job: Job): ClothRoom {
-  const rolls = job.rolls ?? [
-    { width: job.fabric.rollWidth, selvedge: job.fabric.selvedge, length: job.fabric.rollLength, start: 0 },
-  ];
-  const width = Math.min(...rolls.map((r) => r.width - 2 * r.selvedge), job.seams.maxWidth ?? Infinity) / 1000;
+  const rolls = listRolls(job);
+  const width = Math.min(findNarrowest(job).usable, job.seams.maxWidth ?? Infinity) / 1000;
   const bite = job.nest.pastBite === "feed" ? Infinity : (job.nest.bite ?? Infinity);
   const longest = Math.max(...rolls.map((r) => r.length - r.start));
   const length = Math.min(longest, job.seams.maxLength ?? Infinity, bite) / 1000;
@@ -46,6 +55,6 @@ export function measureExtent(ring: Ring): { length: number; width: number } {
 }
 
 /** True for a panel whose warp the job turns: its size on the cloth says nothing of the strip. */
-export function isTurned(panel: CutPanel): boolean {
+export function isTurned(panel: { axis: Pick<CutPanel["axis"], "turn"> }): boolean {
   return Math.abs(panel.axis.turn) > 1e-9;
 }

@@ -2,7 +2,7 @@
 // Source: own; the strips of a region share its width, the relation by which the plan itself looks for a number (askedCount.ts).
 import type { Job } from "../records/job.ts";
 import type { LayoutChoice } from "../records/stripLayout.ts";
-import { measureRoom } from "./clothRoom.ts";
+import { findNarrowest, measureRoom } from "./clothRoom.ts";
 
 /** One strip fewer on a region. */
 export interface FewerStrips {
@@ -37,9 +37,7 @@ export function tellFewerStrips(
   layouts: readonly LayoutChoice[],
   panels: readonly PanelWidth[],
 ): FewerStrips[] {
-  const own = job.rolls ?? [{ width: job.fabric.rollWidth, selvedge: job.fabric.selvedge }];
-  const narrowest = own.reduce((a, b) => (b.width - 2 * b.selvedge < a.width - 2 * a.selvedge ? b : a));
-  const usable = narrowest.width - 2 * narrowest.selvedge;
+  const { usable, selvedge } = findNarrowest(job);
   const limit = 1000 * measureRoom(job).width;
   const lap = job.allowances.seam;
   return layouts.flatMap(({ region, layout, count, panels: ids }): FewerStrips[] => {
@@ -49,8 +47,6 @@ export function tellFewerStrips(
     const now = Math.max(...mine.map((p) => p.width));
     const widest = ((now - lap) * count) / (count - 1) + lap;
     const held = limit < usable ? "asked" : "cloth";
-    return [
-      { region, strips: count, widest, roll: widest + 2 * narrowest.selvedge, limit: widest > limit ? held : null },
-    ];
+    return [{ region, strips: count, widest, roll: widest + 2 * selvedge, limit: widest > limit ? held : null }];
   });
 }

@@ -1,4 +1,5 @@
 // What wider cloth would change: from what width of roll one strip fewer would do, or that it is not the cloth that asks for so many.
+import { isTurned } from "../../core/plan/clothRoom.ts";
 import { type FewerStrips, tellFewerStrips } from "../../core/plan/fewerStrips.ts";
 import type { Facts } from "../../core/records/facts.ts";
 import { useBook } from "../store/useBook.ts";
@@ -20,7 +21,7 @@ export function WiderCloth({ facts }: { facts: Facts }) {
   const job = useBook((b) => b.job);
   const room = useRoom();
   if (job === null || room === null) return null;
-  const panels = (facts.panels ?? []).map((p) => ({ id: p.id, width: p.size.width, turned: p.axis.turn !== 0 }));
+  const panels = (facts.panels ?? []).map((p) => ({ id: p.id, width: p.size.width, turned: isTurned(p) }));
   const all = tellFewerStrips(job, facts.layouts ?? [], panels);
   const byWidth = all.filter((f) => f.limit !== null).sort((a, b) => a.roll - b.roll);
   const one = byWidth[0] ?? all[0];
