@@ -1,5 +1,4 @@
 // Forces through the sequence: a line for each adjuster, its limit dashed, told apart by dash and name, not by colour alone.
-
 import type { Facts } from "../../core/records/facts.ts";
 import { figure } from "../parts/figure.ts";
 import { pointing } from "../parts/pointing.ts";

@@ -1,5 +1,4 @@
 // Flat panels as they are cut: outline, net line, marks, names. One scale for all; warp runs along x.
-
 import type { SeenPanel } from "../../core/plan/dragSeam.ts";
 import type { FactsPanel, Vec2 } from "../../core/records/facts.ts";
 import { pointing } from "../parts/pointing.ts";

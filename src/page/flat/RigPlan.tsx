@@ -1,5 +1,4 @@
 // The roof from above: edges, cables, anchors, adjusters with the force they carry at the step looked at.
-
 import type { Facts, FactsForm } from "../../core/records/facts.ts";
 import type { FactsRig } from "../../core/records/rig.ts";
 import { figure } from "../parts/figure.ts";

@@ -1,5 +1,4 @@
 // A roll with what lies on it, in rows like a text. Panels are moved with the pointer or the arrow keys and then stay pinned.
-
 import { useId, useRef, useState } from "react";
 import type { Facts, Vec2 } from "../../core/records/facts.ts";
 import type { NestedRoll, Placement } from "../../core/records/roll.ts";

@@ -1,5 +1,4 @@
 // What an error of making or setting out does to the forces: a bar for each, the worst first, with the error that makes a tenth.
-
 import { useState } from "react";
 import type { FactsSensitivity } from "../../core/records/rig.ts";
 import { figure } from "../parts/figure.ts";

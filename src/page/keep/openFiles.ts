@@ -1,5 +1,4 @@
 // From files dropped or chosen to a project: a job with its mesh, a mesh alone, or a zip that holds both.
-
 import type { JobFile } from "../../core/job/jobSchema.ts";
 import { migrateJob } from "../../core/job/jobVersions.ts";
 import { leastJob } from "../../core/job/leastJob.ts";

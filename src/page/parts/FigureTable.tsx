@@ -1,5 +1,4 @@
 // Figures of a leaf: what, how much, held against what. A row that speaks of a thing lights it up in the drawings.
-
 import { useBook } from "../store/useBook.ts";
 import { keepTogether } from "./figure.ts";
 import { pointing } from "./pointing.ts";

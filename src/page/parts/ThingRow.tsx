@@ -1,5 +1,4 @@
 // A row of a table that speaks of a thing of the roof: pointed at, it lights the thing up wherever it is drawn; its name chooses it.
-
 import { bookStore } from "../store/bookStore.ts";
 import { useBook } from "../store/useBook.ts";
 import { pointing } from "./pointing.ts";

@@ -1,5 +1,4 @@
 // The worker: the very core the command line uses, behind messages. One request at a time; who wants to stop it ends it.
-
 import regularFace from "dejavu-fonts-ttf/ttf/DejaVuSans.ttf?url";
 import boldFace from "dejavu-fonts-ttf/ttf/DejaVuSans-Bold.ttf?url";
 import { config } from "zod";

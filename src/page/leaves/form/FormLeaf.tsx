@@ -57,7 +57,7 @@ type Form = NonNullable<Facts["form"]>;
 function tellForce({ forceFrom, spread }: Form["edges"][number]): string {
   if (forceFrom === "job") return "given by the job";
   if (forceFrom === "sag") return "usual sag, nobody says the force";
-  const sure = spread === undefined ? "" : spread < 0.005 ? ", surely" : `, ± ${figure(spread, 2)} kN`;
+  const sure = spread === undefined ? "" : spread < 0.005 ? ", to 0.01 kN" : `, ± ${figure(spread, 2)} kN`;
   return `best balance with the cloth${sure}`;
 }
 

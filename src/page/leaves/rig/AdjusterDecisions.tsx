@@ -1,5 +1,4 @@
 // What can be decided about the adjusters and what else holds the roof up: turnbuckles, stiffness, struts, stays.
-
 import turnbuckles from "../../../../templates/turnbuckles.json";
 import type { FactsAdjuster } from "../../../core/records/rig.ts";
 import { addAdjuster, removeAdjuster, setAdjuster } from "../../actions/rig/adjusters.ts";
