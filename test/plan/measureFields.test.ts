@@ -49,6 +49,13 @@ describe("fields of the market hall", () => {
     expect(Math.max(...inner)).toBeLessThan(0);
   });
 
+  it("gives the least and greatest curvature the form station tells", () => {
+    const { curvature } = measureFormFields(facts.form as FactsForm, null);
+    const inner = [...curvature].filter((v) => !Number.isNaN(v));
+    expect(Math.min(...inner)).toBeCloseTo(facts.form?.relief?.curvature?.least ?? 0, 6);
+    expect(Math.max(...inner)).toBeCloseTo(facts.form?.relief?.curvature?.greatest ?? 0, 6);
+  });
+
   it("finds 1/4 per m2 on a cap of radius 2 m (Gauss)", () => {
     const n = 20;
     const vertices: Vec3[] = [];

@@ -3,10 +3,11 @@
 import { isCable, measureStations } from "../form/balance/cablePull.ts";
 import { measureResidual, sumForces } from "../form/balance/measureBalance.ts";
 import { measureMembraneForces } from "../form/balance/membraneForces.ts";
+import { measureCurvature } from "../form/relief/measureRelief.ts";
 import type { Facts, FactsForm, Vec2 } from "../records/facts.ts";
 import type { FormEdge } from "../records/foundForm.ts";
 import { buildErectedMetric, buildStiffness, type ClothStiffness, measureTriangleStrain } from "../structure/cloth.ts";
-import type { Vec3 } from "../surface/surface.ts";
+import type { Surface, Vec3 } from "../surface/surface.ts";
 
 /** Values to colour by; NaN where a place has none (a held vertex has no residual). */
 export interface SurfaceFields {
@@ -16,17 +17,24 @@ export interface SurfaceFields {
   built?: { warp: Float32Array<ArrayBuffer>; weft: Float32Array<ArrayBuffer> };
   /** Of each vertex of the form: share of the mean summed membrane force (facts.md, form.residual). */
   residual: Float32Array<ArrayBuffer>;
-  /** Of each inner vertex of the form: Gaussian curvature, 1/m2; negative is a saddle. */
+  /** Of each vertex of the form off its rim and cables: Gaussian curvature, 1/m2; negative is a saddle. */
   curvature: Float32Array<ArrayBuffer>;
 }
 
 /**
- * Balance and curvature of the form.
+ * Balance and curvature of the form, both as the form station measures them.
  * @param warp direction the prestress is measured along, as the job gives it; null: the mean of both is taken
- * @source curvature: angle deficit over a third of the area around (Meyer et al. 2003, section 3.4)
  */
 export function measureFormFields(form: FactsForm, warp: Vec3 | null): Pick<SurfaceFields, "residual" | "curvature"> {
-  return { residual: measureFormResidual(form, warp), curvature: measureCurvature(form) };
+  const surface = { xyz: Float64Array.from(form.vertices.flat()), tri: Uint32Array.from(form.triangles.flat()) };
+  const edges = form.edges.map((e): FormEdge => ({ ...e, loop: 0, forceFrom: "none" }));
+  const fixed = new Uint8Array(form.vertices.length);
+  for (const a of form.anchors) fixed[a.vertex] = 1;
+  for (const e of edges) if (e.kind === "clamped") for (const v of e.vertices) fixed[v] = 1;
+  return {
+    residual: measureFormResidual(form, surface, edges, fixed, warp),
+    curvature: Float32Array.from(measureCurvature(surface, edges, fixed)),
+  };
 }
 
 /**
@@ -109,13 +117,14 @@ function measureStress(
   return out;
 }
 
-function measureFormResidual(form: FactsForm, warp: Vec3 | null): Float32Array<ArrayBuffer> {
-  const surface = { xyz: Float64Array.from(form.vertices.flat()), tri: Uint32Array.from(form.triangles.flat()) };
-  const edges = form.edges.map((e): FormEdge => ({ ...e, loop: 0, forceFrom: "none" }));
-  const fixed = new Uint8Array(form.vertices.length);
-  for (const a of form.anchors) fixed[a.vertex] = 1;
-  for (const e of edges) if (e.kind === "clamped") for (const v of e.vertices) fixed[v] = 1;
-  const membrane = measureMembraneForces(surface, { ...form.stress, direction: warp });
+function measureFormResidual(
+  { stress }: FactsForm,
+  surface: Surface,
+  edges: readonly FormEdge[],
+  fixed: Uint8Array<ArrayBuffer>,
+  warp: Vec3 | null,
+): Float32Array<ArrayBuffer> {
+  const membrane = measureMembraneForces(surface, { ...stress, direction: warp });
   const stations = edges.map((e) => (isCable(e) ? measureStations(surface.xyz, e.vertices) : null));
   const { size } = measureResidual(
     surface,
@@ -134,25 +143,4 @@ function measureFormResidual(form: FactsForm, warp: Vec3 | null): Float32Array<A
     free++;
   }
   return Float32Array.from(size, (r, v) => (fixed[v] ? Number.NaN : (r * free) / scale));
-}
-
-function measureCurvature(form: FactsForm): Float32Array<ArrayBuffer> {
-  const { vertices, triangles } = form;
-  const deficit = new Float64Array(vertices.length).fill(2 * Math.PI);
-  const area = new Float64Array(vertices.length);
-  for (const t of triangles) {
-    for (let k = 0; k < 3; k++) {
-      const [o, a, b] = [vertices[t[k]], vertices[t[(k + 1) % 3]], vertices[t[(k + 2) % 3]]];
-      const u = [a[0] - o[0], a[1] - o[1], a[2] - o[2]];
-      const v = [b[0] - o[0], b[1] - o[1], b[2] - o[2]];
-      const c = [u[1] * v[2] - u[2] * v[1], u[2] * v[0] - u[0] * v[2], u[0] * v[1] - u[1] * v[0]];
-      const cross = Math.sqrt(c[0] ** 2 + c[1] ** 2 + c[2] ** 2);
-      deficit[t[k]] -= Math.atan2(cross, u[0] * v[0] + u[1] * v[1] + u[2] * v[2]);
-      area[t[k]] += cross / 6;
-    }
-  }
-  const out = Float32Array.from(deficit, (d, v) => d / area[v]);
-  for (const e of form.edges)
-    if (["cable", "clamped", "free"].includes(e.kind)) for (const v of e.vertices) out[v] = Number.NaN;
-  return out;
 }

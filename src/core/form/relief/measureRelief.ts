@@ -76,19 +76,17 @@ function findPlain(
   return plain;
 }
 
-/** Least and greatest curvature at plain vertices, the mean over the triangles round each. */
-function findCurvature(
+/** Curvature at plain vertices, the mean over the triangles round each; NaN elsewhere. @shape nV @units 1/m² */
+function meanCurvatures(
   surface: Surface,
-  adjacency: Adjacency,
+  { fan, fanStart, nV }: Adjacency,
   plain: Uint8Array<ArrayBuffer>,
   areas: Float64Array<ArrayBuffer>,
-): FormRelief["curvature"] {
+): Float64Array<ArrayBuffer> {
   const { tri } = surface;
-  const { fan, fanStart, nV } = adjacency;
   const curvature = measureCurvatures(surface, plain, areas);
-  let found: FormRelief["curvature"] = null;
-  for (let v = 0; v < nV; v++) {
-    if (!plain[v]) continue;
+  return Float64Array.from({ length: nV }, (_, v) => {
+    if (!plain[v]) return Number.NaN;
     let sum = 0;
     let area = 0;
     for (let i = fanStart[v]; i < fanStart[v + 1]; i++) {
@@ -97,18 +95,42 @@ function findCurvature(
       sum += curvature[t] * areas[t];
       area += areas[t];
     }
-    if (area === 0) continue;
-    const k = sum / area;
+    // no triangle round it lies clear of rim and cables
+    return area === 0 ? Number.NaN : sum / area;
+  });
+}
+
+/** Areas of triangles by their vector areas. @shape vector 3*nT, twice the area -> nT */
+function sizesOf(vector: Float64Array): Float64Array<ArrayBuffer> {
+  return Float64Array.from({ length: vector.length / 3 }, (_, t) => {
+    const [x, y, z] = vector.subarray(3 * t, 3 * t + 3);
+    return Math.sqrt(x * x + y * y + z * z) / 2;
+  });
+}
+
+/**
+ * Gaussian curvature of the form where cloth alone is curved: neither on the rim nor on a cable or a fixed point.
+ * @shape fixed nV, 1 = held -> nV, NaN where there is none @units 1/m², negative is a saddle
+ */
+export function measureCurvature(
+  surface: Surface,
+  edges: readonly FormEdge[],
+  fixed: Uint8Array<ArrayBuffer>,
+): Float64Array<ArrayBuffer> {
+  const adjacency = buildAdjacency(surface);
+  const plain = findPlain(adjacency, edges, fixed, surface.tri);
+  return meanCurvatures(surface, adjacency, plain, sizesOf(measureVectorAreas(surface)));
+}
+
+/** Least and greatest of the curvatures. */
+function findCurvature(curvature: Float64Array): FormRelief["curvature"] {
+  let found: FormRelief["curvature"] = null;
+  curvature.forEach((k, v) => {
+    if (Number.isNaN(k)) return;
     found ??= { least: k, leastAt: v, greatest: k, greatestAt: v };
-    if (k < found.least) {
-      found.least = k;
-      found.leastAt = v;
-    }
-    if (k > found.greatest) {
-      found.greatest = k;
-      found.greatestAt = v;
-    }
-  }
+    if (k < found.least) Object.assign(found, { least: k, leastAt: v });
+    if (k > found.greatest) Object.assign(found, { greatest: k, greatestAt: v });
+  });
   return found;
 }
 
@@ -147,14 +169,13 @@ export function measureRelief(
   const { xyz, tri } = surface;
   const adjacency = buildAdjacency(surface);
   const vector = measureVectorAreas(surface);
-  const areas = new Float64Array(tri.length / 3);
+  const areas = sizesOf(vector);
   let flattest = Infinity;
   let flattestAt = -1;
   let flat = 0;
   let all = 0;
   for (let t = 0; t < areas.length; t++) {
     const plan = Math.sqrt(vector[3 * t] ** 2 + vector[3 * t + 1] ** 2);
-    areas[t] = Math.sqrt(plan ** 2 + vector[3 * t + 2] ** 2) / 2;
     const slope = Math.atan2(plan, Math.abs(vector[3 * t + 2]));
     all += areas[t];
     if (slope < FLAT) flat += areas[t];
@@ -166,7 +187,7 @@ export function measureRelief(
   const flatShare = flat / all;
   const pits = findPits(surface, adjacency, plain);
   const relief: FormRelief = {
-    curvature: findCurvature(surface, adjacency, plain, areas),
+    curvature: findCurvature(meanCurvatures(surface, adjacency, plain, areas)),
     flattest,
     flattestAt,
     flatShare,
