@@ -6,7 +6,7 @@ import type { Download, Locator, Page } from "playwright-core";
 import { describe, expect, it } from "vitest";
 import { PAPER_CHOICES } from "../../src/core/papers/choosePapers.ts";
 import { benchOfFile, clear, kept, LONG, SOON } from "./bench.ts";
-import { awaitChoosers, givenBy, keyed, leaf, pressed, rested, tabTo } from "./keys.ts";
+import { awaitChoosers, givenBy, keyed, leaf, pressed, rested, tabTo, unfolded } from "./keys.ts";
 
 const bench = benchOfFile();
 
@@ -30,6 +30,7 @@ describe("the desk and the papers by keyboard alone", { timeout: LONG }, () => {
 
     await leaf(page, 6);
     await page.getByRole("button", { name: "panel-cards.pdf", exact: true }).waitFor();
+    await unfolded("Papers to write")(page);
     await keyed(PAPER_CHOICES["panel-cards"], "Space")(page);
     await page.getByRole("button", { name: "panel-cards.pdf", exact: true }).waitFor({ state: "detached" });
     const facts = await saved(page, page.getByRole("button", { name: "Save facts.json", exact: true }));

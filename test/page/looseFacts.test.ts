@@ -89,8 +89,11 @@ describe("papers chosen, and papers of facts alone", { timeout: LONG }, () => {
     const desk = await openPlanned(bench, smallFiles(), { acceptDownloads: true });
     const { page } = desk;
     await turnTo(page, "Papers");
+    const kinds = page.getByText(/^Papers to write: \d of 9 kinds$/);
+    await kinds.click();
     for (const c of ["cut-files", "dxf2000", "roll-sheets", "panel-cards", "rig", "findings"] as const)
       await choose(page, c, false);
+    await expect.poll(() => kinds.innerText(), SOON).toBe("Papers to write: 2 of 9 kinds");
     await page.getByText(/^\d files, revision/).waitFor();
     const zip = await saveBundle(page);
     const facts = Buffer.from(zip["facts.json"], "latin1");
@@ -101,6 +104,7 @@ describe("papers chosen, and papers of facts alone", { timeout: LONG }, () => {
     expect(await table.getByRole("columnheader").count()).toBe(zip["panels.csv"].split("\r\n")[0].split(",").length);
     await page.reload();
     await page.getByText(/^\d files, revision/).waitFor();
+    await kinds.click();
     await expect.poll(() => page.getByRole("checkbox", { name: PAPER_CHOICES.rig }).isChecked(), SOON).toBe(false);
     await clear(desk);
   });

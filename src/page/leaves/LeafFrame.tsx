@@ -18,10 +18,18 @@ export function LeafFrame(props: {
   stage: React.ReactNode;
   figures?: React.ReactNode;
   decisions: React.ReactNode;
+  /** Where they make what the figures list: they stand over it. */
+  decisionsFirst?: boolean;
 }) {
   const facts = useShownFacts(props.leaf);
   const older = useBook(isOlder);
   const findings = facts?.findings;
+  const decisions = (
+    <div className="card decisions">
+      <h2>Decisions</h2>
+      {props.decisions}
+    </div>
+  );
   const own = findings?.filter((f) => leafOfFinding(f) === props.leaf && f.level !== "note") ?? [];
   return (
     <div className={`leaf leaf-${props.leaf}`}>
@@ -43,6 +51,7 @@ export function LeafFrame(props: {
             <FindingList findings={own} />
           </div>
         )}
+        {props.decisionsFirst && decisions}
         {props.figures !== undefined && (
           <div className="card">
             <h2>Figures</h2>
@@ -50,10 +59,7 @@ export function LeafFrame(props: {
             <CheckTable checks={facts?.checks.filter((c) => c.station === props.station) ?? []} />
           </div>
         )}
-        <div className="card decisions">
-          <h2>Decisions</h2>
-          {props.decisions}
-        </div>
+        {!props.decisionsFirst && decisions}
       </section>
     </div>
   );

@@ -80,9 +80,11 @@ export function LooseFacts() {
       <PaperChoices />
       {files !== undefined && (
         <>
-          <button type="button" className="main" onClick={async () => saveFile(await zipFiles(`${stem}.zip`, files))}>
-            Save all papers (zip)
-          </button>
+          <div className="tools">
+            <button type="button" className="main" onClick={async () => saveFile(await zipFiles(`${stem}.zip`, files))}>
+              Save all papers (zip)
+            </button>
+          </div>
           {shown !== null && <Preview file={files.find((f) => f.path === shown)} />}
           <PaperList files={files} shown={shown} onShow={setShown} />
         </>

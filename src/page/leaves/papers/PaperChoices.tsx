@@ -37,3 +37,16 @@ export function PaperChoices() {
     </fieldset>
   );
 }
+
+/** The same, folded away under how many are chosen. */
+export function FoldedChoices() {
+  const chosen = useBook((b) => b.choice);
+  return (
+    <details className="made">
+      <summary>
+        Papers to write: {CHOICES.filter((c) => chosen.includes(c)).length} of {CHOICES.length} kinds
+      </summary>
+      <PaperChoices />
+    </details>
+  );
+}

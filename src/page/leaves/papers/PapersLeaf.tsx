@@ -5,10 +5,11 @@ import { fileStem, packJob, saveFile, zipFiles } from "../../keep/saveFiles.ts";
 import { FigureTable } from "../../parts/FigureTable.tsx";
 import { PressButton } from "../../parts/PressButton.tsx";
 import { Waiting } from "../../parts/Waiting.tsx";
+import type { PaperFile } from "../../store/bookStore.ts";
 import { useBook } from "../../store/useBook.ts";
 import { requestPapers, stopPlan } from "../../worker/planner.ts";
 import { LeafFrame } from "../LeafFrame.tsx";
-import { PaperChoices } from "./PaperChoices.tsx";
+import { FoldedChoices } from "./PaperChoices.tsx";
 import { PaperDecisions } from "./PaperDecisions.tsx";
 import { PaperList } from "./PaperList.tsx";
 import { Preview } from "./Preview.tsx";
@@ -21,6 +22,12 @@ function tellIssue(facts: Facts | null): string {
   if (facts?.tensioning?.issuable === false)
     return "Schedule, cables and hardware are NOT FOR ISSUE: they stand on defaults. Nothing stops the others.";
   return "Nothing stops them from being issued.";
+}
+
+/** What lies on top before a paper is chosen: sheets that can be printed, the list of them all first. */
+function firstToShow(files: readonly PaperFile[]): PaperFile | undefined {
+  const found = [/^index\.pdf$/, /\.pdf$/, /\.svg$/].map((kind) => files.find((f) => kind.test(f.path)));
+  return found.find((f) => f !== undefined);
 }
 
 /** The leaf. */
@@ -41,7 +48,7 @@ export function PapersLeaf() {
     if (idle && facts !== null && files === undefined && fault === null) requestPapers(facts);
   }, [status, facts, files, writing, correcting, fault]);
   const stem = `${fileStem(facts?.job.title ?? "")}-${facts?.job.revision ?? ""}`;
-  const shownFile = files?.find((f) => f.path === shown) ?? files?.find((f) => /^panels\/.*\.svg$/.test(f.path));
+  const shownFile = files?.find((f) => f.path === shown) ?? (files && firstToShow(files));
   return (
     <LeafFrame
       leaf="papers"
@@ -116,9 +123,10 @@ export function PapersLeaf() {
           </>
         )
       }
+      decisionsFirst
       decisions={
         <>
-          <PaperChoices />
+          <FoldedChoices />
           <PaperDecisions />
         </>
       }
