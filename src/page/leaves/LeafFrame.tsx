@@ -3,9 +3,9 @@ import type { Station } from "../../core/problem.ts";
 import { CheckTable } from "../parts/CheckTable.tsx";
 import { FindingList } from "../parts/FindingList.tsx";
 import { leafOfFinding } from "../parts/jump.ts";
+import { LastChange } from "../parts/LastChange.tsx";
 import type { Leaf } from "../store/bookStore.ts";
-import { useBook } from "../store/useBook.ts";
-import { isOlder, useShownFacts } from "../store/useShown.ts";
+import { useShownFacts } from "../store/useShown.ts";
 
 /** A leaf; `stage` is left out until the plan has come that far. */
 export function LeafFrame(props: {
@@ -22,7 +22,6 @@ export function LeafFrame(props: {
   decisionsFirst?: boolean;
 }) {
   const facts = useShownFacts(props.leaf);
-  const older = useBook(isOlder);
   const findings = facts?.findings;
   const decisions = (
     <div className="card decisions">
@@ -37,7 +36,7 @@ export function LeafFrame(props: {
         <h1 tabIndex={-1}>{props.question}</h1>
         <p className="answer">
           {props.answer}
-          {older && <span className="quiet"> This is still the plan before the last change.</span>}
+          <LastChange />
         </p>
       </header>
       <section className="stage" aria-label="The thing itself">

@@ -5,6 +5,7 @@ import type { Facts } from "../../core/records/facts.ts";
 import { useBook } from "../store/useBook.ts";
 import { useRoom } from "../store/useRoom.ts";
 import { figure } from "./figure.ts";
+import { jumpTo } from "./jump.ts";
 
 const strips = (n: number) => `${n} ${n === 1 ? "strip" : "strips"}`;
 
@@ -20,6 +21,7 @@ function tell(one: FewerStrips, room: number, asked: boolean): string {
 export function WiderCloth({ facts }: { facts: Facts }) {
   const job = useBook((b) => b.job);
   const room = useRoom();
+  const field = useBook((b) => (b.project?.job.rolls?.length ? "rolls[0].width" : "rolls"));
   if (job === null || room === null) return null;
   const panels = (facts.panels ?? []).map((p) => ({ id: p.id, width: p.size.width, turned: isTurned(p) }));
   const all = tellFewerStrips(job, facts.layouts ?? [], panels);
@@ -29,7 +31,10 @@ export function WiderCloth({ facts }: { facts: Facts }) {
   return (
     <p className="why">
       <strong>Wider cloth{all.length > 1 && `, ${one.region} first`}</strong>:{" "}
-      {tell(one, room.cut, job.seams.count !== "auto")}
+      {tell(one, room.cut, job.seams.count !== "auto")}{" "}
+      <button type="button" className="place" onClick={() => jumpTo("rolls", field)}>
+        Set the rolls’ width
+      </button>
     </p>
   );
 }

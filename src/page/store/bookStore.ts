@@ -9,6 +9,7 @@ import type { Job } from "../../core/records/job.ts";
 import type { Grown, SentFields } from "../worker/growingFacts.ts";
 import type { PlanFault } from "../worker/messages.ts";
 import type { Grips, Hand, Tied, Weighed } from "./hand.ts";
+import type { PlanTotals } from "./planTotals.ts";
 import type { Project } from "./project.ts";
 
 export const LEAVES = ["form", "seams", "panels", "rolls", "rig", "papers", "site"] as const;
@@ -41,6 +42,8 @@ export interface ResultSlice {
   job: Job | null;
   facts: Facts | null;
   fields: SentFields | null;
+  /** What the plan before this one came to, where that was another one. */
+  before: PlanTotals | null;
   /** What a plan under way has worked out, by the station it goes up to; each leaf is drawn once from the part that shows it. */
   soFar: Partial<Record<Station, Grown>>;
   /** The project the facts are of. */
@@ -93,6 +96,7 @@ const NO_RESULT: ResultSlice = {
   job: null,
   facts: null,
   fields: null,
+  before: null,
   soFar: {},
   planned: null,
   fault: null,

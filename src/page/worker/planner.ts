@@ -4,6 +4,7 @@ import { partSiteLog } from "../../core/plan/siteLog.ts";
 import type { Facts } from "../../core/records/facts.ts";
 import { bookStore } from "../store/bookStore.ts";
 import { type Hand, isSameWork, isSliding } from "../store/hand.ts";
+import { totalPlan } from "../store/planTotals.ts";
 import type { Project } from "../store/project.ts";
 import { openRoofs } from "./dragger.ts";
 import { createTaker } from "./growingFacts.ts";
@@ -77,11 +78,14 @@ function hear(reply: Reply): void {
       busy = false;
       const { facts, fields } = taker.join(reply.added);
       made = facts;
+      const { facts: former, before } = bookStore.getState();
+      const another = former !== null && former.job.revision !== facts.job.revision;
       set({
         status: "done",
         soFar: {},
         facts,
         fields,
+        before: another ? totalPlan(former) : before,
         planned: subject !== null && "project" in subject ? subject.project : null,
         fault: null,
         papers: null,

@@ -103,6 +103,7 @@ export function PapersLeaf() {
       figures={
         files && (
           <>
+            <PaperList files={files} shown={shownFile?.path ?? null} onShow={setShown} />
             <FigureTable
               caption="Title block"
               rows={[
@@ -119,7 +120,6 @@ export function PapersLeaf() {
                 })),
               ]}
             />
-            <PaperList files={files} shown={shownFile?.path ?? null} onShow={setShown} />
           </>
         )
       }

@@ -7,6 +7,7 @@ import { ThingRow } from "../../parts/ThingRow.tsx";
 import { Waiting } from "../../parts/Waiting.tsx";
 import { WiderCloth } from "../../parts/WiderCloth.tsx";
 import { bookStore } from "../../store/bookStore.ts";
+import { totalPlan } from "../../store/planTotals.ts";
 import { useBook } from "../../store/useBook.ts";
 import { useShownFacts } from "../../store/useShown.ts";
 import { LeafFrame } from "../LeafFrame.tsx";
@@ -105,17 +106,16 @@ export function RollsLeaf() {
   const chosen = useBook((b) => b.chosen);
   const rolls = facts?.rolls;
   const shown = rolls?.find((r) => r.id === chosen || r.placements.some((p) => p.panel === chosen)) ?? rolls?.[0];
-  const used = rolls?.reduce((s, r) => s + r.used, 0) ?? 0;
-  const waste = rolls?.reduce((s, r) => s + (1 - r.utilisation) * r.used * r.width, 0) ?? 0;
+  const total = facts && totalPlan(facts);
   return (
     <LeafFrame
       leaf="rolls"
       station="rolls"
       question="Which cloth, and where on it?"
       answer={
-        rolls === undefined
+        rolls === undefined || total === null
           ? "Not worked out yet."
-          : `${figure(used / 1000, 2)} m of cloth from ${rolls.length} ${rolls.length === 1 ? "roll" : "rolls"}; ${figure(waste / 1e6, 1)} m² is left over as offcut.`
+          : `${figure(total.taken, 2)} m of cloth from ${rolls.length} ${rolls.length === 1 ? "roll" : "rolls"}, ${figure(total.cloth, 1)} m² in all; ${figure(total.offcut, 1)} m² of it is left over as offcut.`
       }
       tools={
         rolls &&
