@@ -165,7 +165,7 @@ describe("a seam's end", { timeout: LONG }, () => {
     const before = await planned(page);
     await page.getByRole("button", { name: "Compare layouts" }).click();
     const cards = page.getByRole("list", { name: "Layouts side by side" }).getByRole("listitem");
-    await page.getByText("Being worked out").last().waitFor({ state: "detached" });
+    await page.getByText(/^All \d layouts are worked out/).waitFor();
     await expect.poll(() => cards.count(), SOON).toBeGreaterThan(2);
     await cards.first().getByText("As it stands").waitFor();
     const other = cards.filter({ has: page.getByRole("button", { name: /^Take \d strips/ }) }).first();

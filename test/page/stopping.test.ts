@@ -8,6 +8,7 @@ import {
   clear,
   type Desk,
   enter,
+  judge,
   kept,
   LONG,
   openPlanned,
@@ -145,6 +146,45 @@ describe("stopped while it is planned", { timeout: LONG }, () => {
     await page.getByRole("button", { name: "Write the papers" }).click();
     await page.getByText(/files, revision/).waitFor();
     expect(faults).toEqual([]);
+  });
+});
+
+describe("stopped while layouts are compared", { timeout: LONG }, () => {
+  it("what was worked out stays, no other is begun; gone on with, by the button and the key", async () => {
+    const desk = await openPlanned(bench, smallFiles());
+    const { page, revision } = desk;
+    await turnTo(page, "Seams");
+    const compare = page.getByRole("button", { name: "Compare layouts" });
+    const takes = page.getByRole("list", { name: "Layouts side by side" }).getByRole("button", { name: /^Take / });
+    const goOn = page.getByRole("button", { name: "Go on", exact: true });
+    const isStopped = async (n: number) => {
+      await page.getByText(new RegExp(`^Stopped: ${n} of [3-6] layouts are worked out`)).waitFor();
+      await expect.poll(() => takes.count(), SOON).toBe(n);
+      await expect.poll(() => page.getByRole("progressbar").count(), SOON).toBe(0);
+      await expect.poll(() => page.getByText("Being worked out").count(), SOON).toBe(0);
+    };
+    await stopAt(page, "^Layout 2 of", ".weighing");
+    await compare.click();
+    await isStopped(1);
+    expect(await judge(page)).toEqual([]);
+    // the focus stays where Stop was pressed: the same place goes on
+    await goOn.focus();
+    await page.evaluate(() => {
+      const watch = new MutationObserver(() => {
+        if (!document.querySelector(".weighing")?.textContent?.startsWith("Layout 3 of")) return;
+        watch.disconnect();
+        document.body.dispatchEvent(new KeyboardEvent("keydown", { key: ".", bubbles: true }));
+      });
+      watch.observe(document.body, { subtree: true, childList: true, characterData: true });
+    });
+    await page.keyboard.press("Enter");
+    await isStopped(2);
+    await goOn.click();
+    await page.getByText(/^All [3-6] layouts are worked out/).waitFor();
+    expect(await planned(page)).toBe(revision);
+    await page.getByRole("button", { name: "Back to the surface" }).click();
+    await compare.waitFor();
+    await clear(desk);
   });
 });
 

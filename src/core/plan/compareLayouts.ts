@@ -82,6 +82,9 @@ export interface ComparedLayout {
   refused: string | null;
 }
 
+/** Share of a layout's work that is done once its seams are laid, by and large. */
+const LAID = 0.3;
+
 /** One layout cut and flattened: see compareLayouts. @throws PlanError cancelled */
 export function measureLayout(
   form: FoundForm,
@@ -92,8 +95,12 @@ export function measureLayout(
   const other: Job = { ...job, seams: { ...job.seams, ...asked } };
   try {
     const options = firstOptions(measureRoom(other), other.allowances.seam / 1000);
-    const seams = runSeams(form, other, options, context);
-    const panels = runPanels(seams.output, form, other, context);
+    const tell = (from: number, to: number): StationContext => ({
+      ...context,
+      onProgress: (share, words) => context.onProgress?.(from + share * (to - from), words),
+    });
+    const seams = runSeams(form, other, options, tell(0, LAID));
+    const panels = runPanels(seams.output, form, other, tell(LAID, 1));
     const { surface, seams: lines } = seams.output;
     return {
       asked,

@@ -1,6 +1,7 @@
 // The keys of the page: what each does, in the order of the sheet that lists them.
 import { packJob, saveFile } from "../keep/saveFiles.ts";
 import { bookStore, LEAVES, redo, type Theme, undo } from "../store/bookStore.ts";
+import { weigher } from "../worker/dragger.ts";
 import { requestPlan, stopPlan } from "../worker/planner.ts";
 
 export interface Key {
@@ -31,7 +32,10 @@ const PLAIN: Record<string, () => void> = {
     const { project } = bookStore.getState();
     if (project !== null) requestPlan(project);
   },
-  ".": stopPlan,
+  ".": () => {
+    stopPlan();
+    weigher.stop();
+  },
   t: turnTheme,
   "[": () => moveStep(-1),
   "]": () => moveStep(1),
@@ -45,7 +49,7 @@ export const KEY_SHEET: Key[] = [
   { keys: "Ctrl Y or Ctrl Shift Z", words: "redo" },
   { keys: "Ctrl S", words: "save the job with its mesh as a file" },
   { keys: "P", words: "plan again" },
-  { keys: ".", words: "stop what is being planned" },
+  { keys: ".", words: "stop what is being worked out" },
   { keys: "F", words: "all findings" },
   { keys: "J", words: "jobs kept in this browser" },
   { keys: "[ and ]", words: "one step of the tensioning back, on" },

@@ -40,7 +40,11 @@ export function isSliding(hand: Hand | null): boolean {
 export interface Weighed {
   of: Project;
   asks: Partial<SeamDecision>[];
+  /** Which others there are is known with the first one only. */
+  open: boolean;
   done: ComparedLayout[];
+  /** How far the next one has come; null: stopped, or all are done. */
+  doing: { share: number; words: string } | null;
 }
 
 /** The whole roof tied again; its plan says the same and more. */

@@ -15,6 +15,7 @@ import {
 import { PlanError } from "../../core/problem.ts";
 import { describeFault } from "./describeFault.ts";
 import type { DragReply, DragRequest, SentRoof } from "./messages.ts";
+import { createTeller } from "./teller.ts";
 
 let run = -1;
 let roof: MadeRoof | null = null;
@@ -82,16 +83,17 @@ function redraw(request: Extract<DragRequest, { kind: "drag" }>): void {
 }
 
 /** Another layout on its own; a fault of the program is told as a refusal, so that the next one is still weighed. */
-function weigh({ run: of, asked }: Extract<DragRequest, { kind: "weigh" }>): void {
-  if (of !== run || roof === null) return;
+function weigh({ run: of, turn, asked, stop }: Extract<DragRequest, { kind: "weigh" }>): void {
+  const isStopped = () => stop !== null && Atomics.load(stop, 0) !== 0;
+  if (of !== run || roof === null || isStopped()) return;
+  const { tell } = createTeller((share, words) => post({ kind: "weighing", run, turn, share, words }));
   try {
-    post({ kind: "weighed", run, layout: measureLayout(roof.form, roof.job, asked) });
+    const layout = measureLayout(roof.form, roof.job, asked, { onProgress: tell, cancelled: isStopped });
+    post({ kind: "weighed", run, turn, layout });
   } catch (error) {
-    post({
-      kind: "weighed",
-      run,
-      layout: { asked, rows: [], ways: [], lines: [], refused: describeFault(error).message },
-    });
+    if (isStopped()) return;
+    const refused = describeFault(error).message;
+    post({ kind: "weighed", run, turn, layout: { asked, rows: [], ways: [], lines: [], refused } });
   }
 }
 

@@ -1,7 +1,6 @@
 // Sliding a seam's end: starts and hears the worker that redraws. One place is asked for at a time and the newest wins; places that
 // were passed meanwhile are never asked for.
 import type { Grip } from "../../core/plan/dragSeam.ts";
-import { listAsks } from "../../core/plan/listAsks.ts";
 import type { EdgePlace } from "../../core/records/job.ts";
 import { layPairs } from "../actions/seams/layPairs.ts";
 import { act, bookStore, notify } from "../store/bookStore.ts";
@@ -9,6 +8,7 @@ import { type Hand, isSameWork } from "../store/hand.ts";
 import type { Project } from "../store/project.ts";
 import { findSeamEnds } from "../store/seamEnds.ts";
 import type { DragReply, DragRequest, SeamPlaces } from "./messages.ts";
+import { createWeigher } from "./weigher.ts";
 
 let worker: Worker | null = null;
 /** It broke down: the next plan's roof is dragged by another one. */
@@ -30,6 +30,9 @@ let next: { weld: string; to: SeamPlaces } | null = null;
 function send(request: DragRequest, transfer: Transferable[] = []): void {
   worker?.postMessage(request, transfer);
 }
+
+/** Layouts worked out side by side: slid seams go between two of them. */
+export const weigher = createWeigher((ask) => send({ kind: "weigh", run, ...ask }));
 
 function listen(): void {
   if (worker === null || waiting === null) return;
@@ -62,6 +65,7 @@ export function watchSeams(): void {
       broke = true;
       asked = leaving = false;
       next = null;
+      weigher.stop();
       bookStore.setState({ grips: null, hand: null, tying: null });
       notify("drag", "Sliding seams broke down; the job is whole. Plan again, or type where the seam ends.", true);
     };
@@ -80,20 +84,13 @@ function hear(reply: DragReply): void {
     bookStore.setState({ grips: project === undefined ? null : { of: project, welds: reply.grips } });
     if (project === undefined) return;
     followHand(project, reply.grips);
+    weigher.askAnew();
   } else if (reply.kind === "tied") {
     const { seams, panels, ms } = reply;
     if (project !== undefined) bookStore.setState({ tied: { of: project, seams, panels, ms } });
     endTie(project);
-  } else if (reply.kind === "weighed") {
-    const { weighed } = bookStore.getState();
-    if (weighed === null || !isSameWork(weighed.of, project)) return;
-    const { facts, job } = bookStore.getState();
-    const done = [...weighed.done, reply.layout];
-    // seams given one by one were weighed against nothing: what the plan would take by itself says which ways there are
-    const fresh = done.length === 1 && job !== null && (facts?.compared ?? []).length === 0;
-    const asks = fresh ? listAsks(job, reply.layout.ways) : weighed.asks;
-    bookStore.setState({ weighed: { ...weighed, asks, done } });
-    weighNext();
+  } else if (reply.kind === "weighing" || reply.kind === "weighed") {
+    weigher.hear(reply);
   } else if (reply.kind === "untied") {
     endTie(project);
     projects.delete(reply.run);
@@ -149,20 +146,6 @@ function askNext(): void {
   asked = true;
   send({ kind: "drag", run, ...next });
   next = null;
-}
-
-/** Has layouts worked out beside the one that stands, one after another; slid seams go first. */
-export function weighLayouts(): void {
-  const { grips, project, job, facts } = bookStore.getState();
-  if (grips === null || project === null || job === null || !isSameWork(grips.of, project)) return;
-  bookStore.setState({ weighed: { of: project, asks: listAsks(job, facts?.compared ?? []), done: [] } });
-  weighNext();
-}
-
-function weighNext(): void {
-  const { weighed } = bookStore.getState();
-  const asked = weighed?.asks[weighed.done.length];
-  if (asked !== undefined) send({ kind: "weigh", run, asked });
 }
 
 /** Takes the end of a weld in hand. */

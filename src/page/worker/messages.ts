@@ -61,12 +61,19 @@ export interface SentRoof {
   roof: MadeRoof;
 }
 
+/** One layout asked for: its answers carry the turn; `stop` turns 1 once it is no longer wanted, null: no memory is shared here. */
+export interface WeighAsk {
+  turn: number;
+  asked: Partial<SeamDecision>;
+  stop: Int32Array<SharedArrayBuffer> | null;
+}
+
 export type DragRequest =
   /** Where roofs come from, from now on. */
   | { kind: "listen"; roofs: MessagePort }
   | { kind: "drag"; run: number; weld: string; to: SeamPlaces }
   /** Cuts and flattens one other layout of the roof's form. */
-  | { kind: "weigh"; run: number; asked: Partial<SeamDecision> }
+  | ({ kind: "weigh"; run: number } & WeighAsk)
   | { kind: "tie"; run: number; next: number; pairs: EdgePlace[][] };
 
 export type DragReply =
@@ -77,6 +84,7 @@ export type DragReply =
   /** Asked of a roof that another one has followed: to be asked again. */
   | { kind: "outdated"; run: number }
   | { kind: "tied"; run: number; seams: FactsSeam[]; panels: SeenPanel[]; ms: number }
-  | { kind: "weighed"; run: number; layout: ComparedLayout }
+  | { kind: "weighing"; run: number; turn: number; share: number; words: string }
+  | { kind: "weighed"; run: number; turn: number; layout: ComparedLayout }
   /** It could not be tied; its plan says why. */
   | { kind: "untied"; run: number };

@@ -1,7 +1,7 @@
 // When a plan begins: a little after the job has changed, not while a seam is slid, and after the tie of one that was let go.
 import { bookStore } from "../store/bookStore.ts";
 import { isSameWork, isSliding } from "../store/hand.ts";
-import { putBack } from "./dragger.ts";
+import { putBack, weigher } from "./dragger.ts";
 import { leaveJob, pausePlan, planSoon, startDue } from "./planner.ts";
 
 /** Quiet time before a changed job is planned, ms: a second thought within it costs no plan. */
@@ -17,6 +17,8 @@ export function planOnChange(): void {
     if (project?.id !== before.project?.id) leaveJob();
     if (project !== null && !isSameWork(project, before.project)) {
       clearTimeout(timer);
+      // of the job as it was: gone on with if it comes back
+      weigher.stop();
       timer = setTimeout(() => planSoon(project), project.id !== before.project?.id ? 0 : QUIET);
       // its grips are gone, so nobody could let it go
       if (hand !== null && hand.laid === null) putBack();

@@ -19,12 +19,10 @@ import { describeFault } from "./describeFault.ts";
 import { createGiver } from "./growingFacts.ts";
 import type { Reply, Request, SentRoof } from "./messages.ts";
 import { openNestThreads } from "./nestThreads.ts";
+import { createTeller } from "./teller.ts";
 
 // The schema library may compile its checks into code; the page forbids that, so it must not even try.
 config({ jitless: true });
-
-/** Ticks a second that progress is told. */
-const TICKS = 10;
 
 let catalogues: Catalogues | null = null;
 /** Of the newest plan made here. */
@@ -64,37 +62,11 @@ function read(request: Extract<Request, { kind: "plan" | "correct" }>): PlanInpu
   });
 }
 
-/** Tells progress: a station and a step of it as soon as they begin, numbers that only go on a few times a second. */
-function createTeller(run: number, first: Station) {
-  let station = first;
-  let share = 0;
-  let step = "";
-  let told = Number.NEGATIVE_INFINITY;
-  const tell = (words: string) => {
-    told = performance.now();
-    post({ kind: "progress", run, share, words, station });
-  };
-  return {
-    begin: (next: Station): void => {
-      station = next;
-      step = "";
-      // what the station before did last is over, however long the first word of this one takes
-      tell("");
-    },
-    tell: (now: number, words: string): void => {
-      share = now;
-      const [next] = words.split(/\d/, 1);
-      if (next === step && performance.now() - told < 1000 / TICKS) return;
-      step = next;
-      tell(words);
-    },
-  };
-}
-
 function correct(request: Extract<Request, { kind: "correct" }>): void {
   const { run, text, percent, kept } = request;
   const { job, source } = read(request);
-  const corrected = correctPlan(job, source, { text, percent, kept }, { onProgress: createTeller(run, "rig").tell });
+  const { tell } = createTeller((share, words) => post({ kind: "progress", run, share, words, station: "rig" }));
+  const corrected = correctPlan(job, source, { text, percent, kept }, { onProgress: tell });
   post({ kind: "corrected", run, corrected });
 }
 
@@ -104,9 +76,11 @@ async function plan(request: Extract<Request, { kind: "plan" }>): Promise<void> 
   post({ kind: "read", run, job: input.job, revision: input.revision });
   const workShares = await openNestThreads();
   const cap = capNest(input.job.nest.seconds, () => performance.now());
-  const teller = createTeller(run, "job");
+  let station: Station = "job";
+  const teller = createTeller((share, words) => post({ kind: "progress", run, share, words, station }));
   const onStation = (next: Station) => {
-    teller.begin(next);
+    station = next;
+    teller.begin();
     cap.onStation(next);
   };
   const give = createGiver(input.job.warp, input.findings);

@@ -4,10 +4,12 @@ import type { FactsForm } from "../../../core/records/facts.ts";
 import type { SeamDecision } from "../../../core/records/job.ts";
 import { takeLayout } from "../../actions/seams/takeLayout.ts";
 import { figure } from "../../parts/figure.ts";
+import { PressButton } from "../../parts/PressButton.tsx";
 import { act, bookStore } from "../../store/bookStore.ts";
-import { isSameWork } from "../../store/hand.ts";
+import { isSameWork, type Weighed } from "../../store/hand.ts";
 import { useBook } from "../../store/useBook.ts";
 import { useRoom } from "../../store/useRoom.ts";
+import { weigher } from "../../worker/dragger.ts";
 
 /** Figures of a layout over all its regions. */
 interface Sums {
@@ -124,6 +126,53 @@ function Figures({ sums }: { sums: Sums }) {
   );
 }
 
+/** How far the comparing has come; it can be stopped and gone on with. */
+function WeighState({ asks, open, done, doing }: Weighed) {
+  const ready = useBook((b) => isSameWork(b.grips?.of, b.project));
+  const all = open ? "" : ` of ${asks.length}`;
+  if (doing === null && done.length === asks.length) {
+    return (
+      <p className="row" role="status">
+        All {done.length} layouts are worked out.
+      </p>
+    );
+  }
+  return (
+    <div className="row weighing">
+      {doing === null ? (
+        <span role="status">
+          Stopped: {done.length}
+          {all} layouts are worked out.
+        </span>
+      ) : (
+        <>
+          <progress
+            max={1}
+            value={open ? undefined : (done.length + doing.share) / asks.length}
+            aria-label="Comparing layouts"
+          />
+          <span role="status">
+            Layout {done.length + 1}
+            {all}
+          </span>
+          <span className="quiet">{doing.words}</span>
+        </>
+      )}
+      <PressButton disabled={doing === null && !ready} onPress={doing === null ? weigher.goOn : weigher.stop}>
+        {doing === null ? "Go on" : "Stop comparing"}
+      </PressButton>
+    </div>
+  );
+}
+
+/** What stands on a card without figures. */
+function tellCard(weighed: Weighed, i: number): string | null {
+  const done = weighed.done[i];
+  if (done !== undefined) return done.refused;
+  if (weighed.doing === null) return "Not worked out: stopped.";
+  return i === weighed.done.length ? "Being worked out…" : "Waits for the one before.";
+}
+
 /** The cards; the first is what stands. */
 export function LayoutCards() {
   const facts = useBook((b) => b.facts);
@@ -142,33 +191,36 @@ export function LayoutCards() {
     bookStore.setState({ weighed: null });
   };
   return (
-    <ul className="cards" aria-label="Layouts side by side">
-      <li className="stands">
-        <h2>As it stands</h2>
-        <Miniature form={form} lines={(facts?.seams ?? []).map((s) => s.path)} />
-        {stood && <Figures sums={stood} />}
-      </li>
-      {weighed.asks.map((asked, i) => {
-        const done = weighed.done[i];
-        const sums = done === undefined ? null : sumUp(done);
-        const name = nameAsk(asked);
-        return (
-          <li key={name}>
-            <h2>{name}</h2>
-            {done === undefined && <p className="hint">Being worked out…</p>}
-            {done?.refused != null && <p className="hint">{done.refused}</p>}
-            {done !== undefined && sums !== null && (
-              <>
-                <Miniature form={form} lines={done.lines} />
-                <Figures sums={sums} />
-                <button type="button" onClick={() => take(asked, sums)}>
-                  Take {name}
-                </button>
-              </>
-            )}
-          </li>
-        );
-      })}
-    </ul>
+    <>
+      <WeighState {...weighed} />
+      <ul className="cards" aria-label="Layouts side by side">
+        <li className="stands">
+          <h2>As it stands</h2>
+          <Miniature form={form} lines={(facts?.seams ?? []).map((s) => s.path)} />
+          {stood && <Figures sums={stood} />}
+        </li>
+        {weighed.asks.map((asked, i) => {
+          const done = weighed.done[i];
+          const sums = done === undefined ? null : sumUp(done);
+          const name = nameAsk(asked);
+          const told = tellCard(weighed, i);
+          return (
+            <li key={name}>
+              <h2>{name}</h2>
+              {told !== null && <p className="hint">{told}</p>}
+              {done !== undefined && sums !== null && (
+                <>
+                  <Miniature form={form} lines={done.lines} />
+                  <Figures sums={sums} />
+                  <button type="button" onClick={() => take(asked, sums)}>
+                    Take {name}
+                  </button>
+                </>
+              )}
+            </li>
+          );
+        })}
+      </ul>
+    </>
   );
 }

@@ -11,7 +11,7 @@ import { bookStore } from "../../store/bookStore.ts";
 import { isSameWork } from "../../store/hand.ts";
 import { useBook } from "../../store/useBook.ts";
 import { useShownFacts, useShownFields } from "../../store/useShown.ts";
-import { watchSeams, weighLayouts } from "../../worker/dragger.ts";
+import { watchSeams, weigher } from "../../worker/dragger.ts";
 import { LeafFrame } from "../LeafFrame.tsx";
 import { LayoutCards } from "./LayoutCards.tsx";
 import { SeamDecisions } from "./SeamDecisions.tsx";
@@ -56,7 +56,11 @@ function CompareButton() {
       type="button"
       aria-pressed={comparing}
       disabled={!ready}
-      onClick={() => (comparing ? bookStore.setState({ weighed: null }) : weighLayouts())}
+      onClick={() => {
+        if (!comparing) return weigher.begin();
+        weigher.stop();
+        bookStore.setState({ weighed: null });
+      }}
     >
       {comparing ? "Back to the surface" : "Compare layouts"}
     </button>
