@@ -156,6 +156,7 @@ function Head() {
 
 function Fault() {
   const fault = useBook((b) => b.fault);
+  const first = useBook((b) => b.past.length === 0);
   if (fault === null) return null;
   const place = fault.where.find((w) => leafOfPath(w) !== undefined);
   return (
@@ -172,9 +173,16 @@ function Fault() {
           Show me
         </button>
       )}
-      <button type="button" onClick={undo}>
-        Undo
-      </button>
+      {first ? (
+        // nothing was changed here: what is wrong came with the files
+        <button type="button" onClick={() => bookStore.setState({ sheet: "jobs" })}>
+          Open another
+        </button>
+      ) : (
+        <button type="button" onClick={undo}>
+          Undo
+        </button>
+      )}
     </div>
   );
 }

@@ -58,14 +58,14 @@ export function readFiles(
   const meshes = files.filter((f) => /\.obj$/i.test(f.name));
   const job = findJob(files);
   if (job !== undefined) {
-    const { value } = readJson(decodeText(job.bytes, job.name));
+    const { value } = readJson(decodeText(job.bytes, job.name), job.name);
     if (isFacts(value))
       throw new PlanError(
         "files-facts",
         `${job.name} is what came out of a plan; what goes into one is the job. Open the zip that “Save the job with its mesh” gave, or the job with its mesh`,
         job.name,
       );
-    const given = migrateJob(value) as unknown as JobFile;
+    const given = bringUpToDate(value, job.name);
     const wanted = baseName(given.mesh?.file);
     const mesh = meshes.find((m) => m.name === wanted) ?? meshes[0] ?? null;
     return { id: newId(), job: given, mesh, log: readLogBeside(files, onLogFault) };
@@ -104,6 +104,16 @@ export function readLooseFacts(files: readonly LoadedFile[]): { name: string; fa
 /** The least job for a mesh. */
 export function projectOfMesh(mesh: MeshFile): Project {
   return { id: newId(), job: leastJob(mesh.name, titleOfMesh(mesh.name)) as JobFile, mesh, log: [] };
+}
+
+/** The job as one of the present version; what is wrong names the file. @throws PlanError codes of migrateJob */
+function bringUpToDate(value: unknown, name: string): JobFile {
+  try {
+    return migrateJob(value) as unknown as JobFile;
+  } catch (error) {
+    if (!(error instanceof PlanError)) throw error;
+    throw new PlanError(error.code, `${name}: ${error.message}`, error.where, error.facts);
+  }
 }
 
 function baseName(path: string | undefined): string | undefined {

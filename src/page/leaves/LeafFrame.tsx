@@ -16,6 +16,7 @@ export function LeafFrame(props: {
   answer: string;
   tools?: React.ReactNode;
   stage: React.ReactNode;
+  /** Left out, null or false where there are none yet. */
   figures?: React.ReactNode;
   decisions: React.ReactNode;
   /** Where they make what the figures list: they stand over it. */
@@ -51,7 +52,7 @@ export function LeafFrame(props: {
           </div>
         )}
         {props.decisionsFirst && decisions}
-        {props.figures !== undefined && (
+        {props.figures != null && props.figures !== false && (
           <div className="card">
             <h2>Figures</h2>
             {props.figures}

@@ -72,7 +72,7 @@ export function NumberField(
   const commit = () => {
     if (text === null) return;
     const read = readNumber(text);
-    if (read === null) return setFault(`“${text}” is no number`);
+    if (read === null) return setFault(`“${text}” is no number: type it alone${unit === "" ? "" : `, in ${unit}`}`);
     setFault(null);
     setText(null);
     if (text !== shown) onChange(read === undefined ? undefined : Number((read * factor).toPrecision(15)));

@@ -70,6 +70,14 @@ function Window({ step, id, text }: { step: RigStep | null; id: string; text: st
   );
 }
 
+/** Why there is nowhere to read at. */
+function tellNothing(kind: Kind, planned: boolean): string {
+  if (!planned) return "Where readings are taken stands here once the job is planned.";
+  return kind === "position"
+    ? "This plan has no anchors whose position is measured."
+    : "This plan has nothing to read a force at.";
+}
+
 function PlacePicker({ kind, id, onPick }: { kind: Kind; id: string; onPick: (id: string) => void }) {
   const facts = useBook((b) => b.facts);
   const rig = facts?.rig;
@@ -85,7 +93,7 @@ function PlacePicker({ kind, id, onPick }: { kind: Kind; id: string; onPick: (id
           {one}
         </button>
       ))}
-      {ids.length === 0 && <p className="hint">This plan has nothing to read a force at.</p>}
+      {ids.length === 0 && <p className="hint">{tellNothing(kind, facts !== null)}</p>}
     </fieldset>
   );
 }
