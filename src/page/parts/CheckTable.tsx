@@ -1,5 +1,7 @@
 // The checks a station made: those that fail in full, those that hold folded away.
+
 import type { Check } from "../../core/problem.ts";
+import { Fold } from "./Fold.tsx";
 import { figure } from "./figure.ts";
 
 /** Checks of one station, with value and limit. */
@@ -9,10 +11,11 @@ export function CheckTable({ checks: own }: { checks: readonly Check[] }) {
   const show = (v: number | string) => (typeof v === "number" ? figure(v) : v);
   const sorted = [...failed, ...own.filter((c) => c.holds)];
   return (
-    <details className="checks" open={failed.length > 0}>
-      <summary>
-        {failed.length === 0 ? `All ${own.length} checks hold` : `${failed.length} of ${own.length} checks fail`}
-      </summary>
+    <Fold
+      className="checks"
+      open={failed.length > 0}
+      words={failed.length === 0 ? `All ${own.length} checks hold` : `${failed.length} of ${own.length} checks fail`}
+    >
       <table className="figures">
         <tbody>
           {sorted.map((c) => (
@@ -29,6 +32,6 @@ export function CheckTable({ checks: own }: { checks: readonly Check[] }) {
           ))}
         </tbody>
       </table>
-    </details>
+    </Fold>
   );
 }

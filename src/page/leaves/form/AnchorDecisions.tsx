@@ -1,7 +1,9 @@
 // What can be decided about the anchors: where the far pin is, how far the cloth is cut back, one more, one less.
+
 import { useState } from "react";
 import { addAnchor, removeAnchor, setAnchor } from "../../actions/form/setAnchor.ts";
 import { NumberField } from "../../parts/Fields.tsx";
+import { Fold } from "../../parts/Fold.tsx";
 import { figure } from "../../parts/figure.ts";
 import { PointField } from "../../parts/PointField.tsx";
 import { pointing } from "../../parts/pointing.ts";
@@ -79,12 +81,16 @@ export function AnchorDecisions() {
   const told = new Set(given?.map((a) => a.name));
   const listed = form.anchors.filter((a) => a.isolated || told.has(a.id));
   return (
-    <details className="group" data-path="anchors" open={listed.some((a) => a.id === chosen)}>
-      <summary>Anchors ({listed.length})</summary>
+    <Fold
+      className="group"
+      path="anchors"
+      open={listed.some((a) => a.id === chosen)}
+      words={`Anchors (${listed.length})`}
+    >
       {listed.map((a) => (
         <Anchor key={a.id} id={a.id} at={form.vertices[a.vertex]} />
       ))}
       <NewAnchor />
-    </details>
+    </Fold>
   );
 }

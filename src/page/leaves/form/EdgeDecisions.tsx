@@ -1,8 +1,10 @@
 // What can be decided about the edges: what each is, the force and the cable of it.
+
 import cables from "../../../../templates/cables.json";
 import { setCableFigure } from "../../actions/form/setCableFigure.ts";
 import { setEdge, setTerminal } from "../../actions/form/setEdge.ts";
 import { ChoiceField, NumberField, SwitchField } from "../../parts/Fields.tsx";
+import { Fold } from "../../parts/Fold.tsx";
 import { figure } from "../../parts/figure.ts";
 import { pointing } from "../../parts/pointing.ts";
 import { act } from "../../store/bookStore.ts";
@@ -39,8 +41,7 @@ const MAKING = [
 function Making({ edge, own }: { edge: string; own: EdgeWord | undefined }) {
   const given = own?.terminals !== undefined || MAKING.some(({ key }) => own?.[key] !== undefined);
   return (
-    <details className="made" open={given}>
-      <summary>How the cable is made</summary>
+    <Fold className="made" open={given} words="How the cable is made">
       {([0, 1] as const).map((end) => (
         <NumberField
           key={end}
@@ -68,7 +69,7 @@ function Making({ edge, own }: { edge: string; own: EdgeWord | undefined }) {
           onChange={(value) => act(setEdge, { edge, key, value }, `${label.toLowerCase()} of ${edge}`)}
         />
       ))}
-    </details>
+    </Fold>
   );
 }
 
@@ -143,8 +144,11 @@ export function EdgeDecisions() {
   const chosen = useBook((b) => b.chosen);
   if (edges === undefined) return null;
   return (
-    <details className="group" open={edges.length <= 6 || edges.some((e) => e.id === chosen)}>
-      <summary>Edges ({edges.length})</summary>
+    <Fold
+      className="group"
+      open={edges.length <= 6 || edges.some((e) => e.id === chosen)}
+      words={`Edges (${edges.length})`}
+    >
       {edges.map((e) => {
         const own = given?.[e.id];
         const named = `edges.${e.id}`;
@@ -181,6 +185,6 @@ export function EdgeDecisions() {
           </fieldset>
         );
       })}
-    </details>
+    </Fold>
   );
 }

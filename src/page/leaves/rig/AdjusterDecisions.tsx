@@ -1,9 +1,11 @@
 // What can be decided about the adjusters and what else holds the roof up: turnbuckles, stiffness, struts, stays.
+
 import turnbuckles from "../../../../templates/turnbuckles.json";
 import type { FactsAdjuster } from "../../../core/records/rig.ts";
 import { addAdjuster, removeAdjuster, setAdjuster } from "../../actions/rig/adjusters.ts";
 import { setSupport } from "../../actions/rig/setSupport.ts";
 import { ChoiceField, NumberField } from "../../parts/Fields.tsx";
+import { Fold } from "../../parts/Fold.tsx";
 import { pointing } from "../../parts/pointing.ts";
 import { act } from "../../store/bookStore.ts";
 import { useBook } from "../../store/useBook.ts";
@@ -169,17 +171,17 @@ export function AdjusterDecisions() {
   return (
     <>
       {standing !== undefined && (
-        <details
+        <Fold
           className="group"
-          data-path="rig.adjusters"
+          path="rig.adjusters"
           open={standing.length <= 4 || standing.some((a) => a.id === chosen)}
+          words={`Adjusters (${standing.length})`}
         >
-          <summary>Adjusters ({standing.length})</summary>
           {standing.map((a) => (
             <Adjuster key={a.id} one={a} standing={standing} />
           ))}
           <NewAdjuster standing={standing} />
-        </details>
+        </Fold>
       )}
       <Supports />
     </>

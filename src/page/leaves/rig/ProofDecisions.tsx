@@ -1,6 +1,8 @@
 // How far the roof as built may be from what was intended, before somebody must look at it.
+
 import { setProof } from "../../actions/rig/setProof.ts";
 import { NumberField } from "../../parts/Fields.tsx";
+import { Fold } from "../../parts/Fold.tsx";
 import { act } from "../../store/bookStore.ts";
 import { useBook } from "../../store/useBook.ts";
 
@@ -18,8 +20,7 @@ export function ProofDecisions() {
   const held = useBook((b) => b.job?.proof);
   const moved = useBook((b) => b.facts?.asBuilt?.limits.moved);
   return (
-    <details className="group" data-path="proof" open={given !== undefined}>
-      <summary>Limits of the roof as built</summary>
+    <Fold className="group" path="proof" open={given !== undefined} words="Limits of the roof as built">
       {LIMITS.map(({ key, label, unit, factor }) => (
         <NumberField
           key={key}
@@ -33,6 +34,6 @@ export function ProofDecisions() {
           onChange={(value) => act(setProof, { key, value }, label.toLowerCase())}
         />
       ))}
-    </details>
+    </Fold>
   );
 }

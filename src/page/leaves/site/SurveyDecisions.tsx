@@ -1,7 +1,9 @@
 // The survey: where anchors, far pins and clamped edges really are. The plan follows them.
+
 import { useState } from "react";
 import { addSurveyed, moveSurveyed, type Surveyed, setClothCut } from "../../actions/site/survey.ts";
 import { ChoiceField, readNumber, SwitchField } from "../../parts/Fields.tsx";
+import { Fold } from "../../parts/Fold.tsx";
 import { PointField } from "../../parts/PointField.tsx";
 import { act } from "../../store/bookStore.ts";
 import { useBook } from "../../store/useBook.ts";
@@ -68,8 +70,7 @@ export function SurveyDecisions() {
   const survey = useBook((b) => b.project?.job.survey) ?? [];
   const cut = useBook((b) => b.project?.job.clothCut);
   return (
-    <details className="group" data-path="survey" open={survey.length > 0}>
-      <summary>Survey ({survey.length})</summary>
+    <Fold className="group" path="survey" open={survey.length > 0} words={`Survey (${survey.length})`}>
       {survey.map((p, index) => (
         <div key={nameOf(p)} className="surveyed">
           <PointField
@@ -96,6 +97,6 @@ export function SurveyDecisions() {
         hint="on: a survey of clamped edges changes the stress, not the panels"
         onChange={(value) => act(setClothCut, { value }, "whether the cloth is cut")}
       />
-    </details>
+    </Fold>
   );
 }
