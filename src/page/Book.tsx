@@ -143,6 +143,9 @@ function Head() {
         <button type="button" onClick={turnTheme}>
           Colours: {theme === "system" ? "as the system" : theme}
         </button>
+        <button type="button" onClick={() => bookStore.setState({ sheet: "jobs" })}>
+          Jobs
+        </button>
         <button type="button" onClick={() => bookStore.setState({ sheet: "keys" })}>
           Keys
         </button>

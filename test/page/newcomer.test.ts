@@ -68,7 +68,11 @@ describe("a newcomer", { timeout: LONG }, () => {
     const before = Number(await width(page).inputValue());
     expect(hundreds).toBeGreaterThan(before);
     await told(page, "Width").toBe(`${before}\u00a0mm`);
-    await width(page).fill(String(hundreds));
+    await width(page).fill("wide");
+    await width(page).press("Enter");
+    await page.getByRole("alert").filter({ hasText: "“wide” is no length: give it in mm" }).waitFor();
+    // as the sentence gives it
+    await width(page).fill(`${hundreds / 1000} m`);
     await width(page).press("Enter");
 
     const anew = await plannedAnew(page, first);

@@ -2,6 +2,7 @@
 // the job says so or a default; emptied, the default holds again. A change is handed on when the field is left or Enter pressed; Escape takes it back.
 // An input says by `data-taken` that it holds nothing the job does not have.
 import { useId, useState } from "react";
+import { readEntry, refuseEntry } from "./readEntry.ts";
 
 interface Common {
   label: string;
@@ -46,14 +47,6 @@ function Frame(props: Common & { id: string; fault?: string | null; long?: boole
   );
 }
 
-/** Reads a number as people write it, with a comma or a point; undefined for nothing, null for what is no number. */
-export function readNumber(text: string): number | undefined | null {
-  const plain = text.trim().replace(",", ".").replace("−", "-");
-  if (plain === "") return undefined;
-  const value = Number(plain);
-  return Number.isFinite(value) ? value : null;
-}
-
 /** A number with its unit. `factor`: what is shown times factor is what the job has (per cent: 0.01). */
 export function NumberField(
   props: Common & {
@@ -71,8 +64,8 @@ export function NumberField(
   const [fault, setFault] = useState<string | null>(null);
   const commit = () => {
     if (text === null) return;
-    const read = readNumber(text);
-    if (read === null) return setFault(`“${text}” is no number: type it alone${unit === "" ? "" : `, in ${unit}`}`);
+    const read = readEntry(text, unit);
+    if (read === null) return setFault(refuseEntry(text, unit));
     setFault(null);
     setText(null);
     if (text !== shown) onChange(read === undefined ? undefined : Number((read * factor).toPrecision(15)));

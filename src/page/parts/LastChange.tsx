@@ -12,20 +12,21 @@ const FIGURES = [
   { key: "offcut", what: "offcut", unit: " m²", decimals: 1 },
 ] as const;
 
-/** One line with the figures that differ; nothing before there are two plans to hold against each other. */
+/** One line with the figures that differ; empty before there are two plans to hold against each other. */
 export function LastChange() {
   const facts = useBook((b) => b.facts);
   const before = useBook((b) => b.before);
   const older = useBook(isOlder);
   const running = useBook((b) => b.status === "running");
   const still = "This is still the plan before the last change.";
-  if (facts === null || before === null) return older ? <span className="quiet"> {still}</span> : null;
+  // its line is always kept: whatever is below it, seams in hand too, must not jump when a plan comes to stand
+  if (older || running || facts === null || before === null)
+    return <span className="change">{older ? still : "\u00a0"}</span>;
   const now = totalPlan(facts);
   const told = FIGURES.flatMap(({ key, what, unit, decimals }) => {
     const [was, is] = [figure(before[key], decimals), figure(now[key], decimals)];
     return was === is ? [] : [`${what} ${was} → ${is}${unit}`];
   });
-  // it keeps its line while the next plan is made, so that nothing below jumps
   const words = told.length === 0 ? "panels, weld and cloth as before" : told.join(", ");
-  return <span className="change">{older ? still : running ? "\u00a0" : keepTogether(`Last change: ${words}.`)}</span>;
+  return <span className="change">{keepTogether(`Last change: ${words}.`)}</span>;
 }

@@ -1,6 +1,6 @@
 // A place in space: three numbers in metres, z up. Handed on when all three are there; emptied, the default holds again.
 import { useId, useState } from "react";
-import { readNumber } from "./Fields.tsx";
+import { readNumber } from "./readEntry.ts";
 
 type Point = [number, number, number];
 

@@ -2,7 +2,8 @@
 import { setReadingError } from "../../actions/rig/setReadingError.ts";
 import { setRigFigure } from "../../actions/rig/setRigFigure.ts";
 import { setStages } from "../../actions/rig/setStages.ts";
-import { NumberField, readNumber, TextField } from "../../parts/Fields.tsx";
+import { NumberField, TextField } from "../../parts/Fields.tsx";
+import { readNumber } from "../../parts/readEntry.ts";
 import { act, notify } from "../../store/bookStore.ts";
 import { useBook } from "../../store/useBook.ts";
 import { AdjusterDecisions } from "./AdjusterDecisions.tsx";

@@ -3,7 +3,7 @@ import { useState } from "react";
 import { addReading } from "../../actions/site/addReading.ts";
 import type { RigStep } from "../../flat/rigSteps.ts";
 import { writeTime } from "../../parts/clock.ts";
-import { readNumber } from "../../parts/Fields.tsx";
+import { readNumber } from "../../parts/readEntry.ts";
 import { act, bookStore } from "../../store/bookStore.ts";
 import type { Reading } from "../../store/project.ts";
 import { useBook } from "../../store/useBook.ts";

@@ -1,10 +1,10 @@
 // The survey: where anchors, far pins and clamped edges really are. The plan follows them.
-
 import { useState } from "react";
 import { addSurveyed, moveSurveyed, type Surveyed, setClothCut } from "../../actions/site/survey.ts";
-import { ChoiceField, readNumber, SwitchField } from "../../parts/Fields.tsx";
+import { ChoiceField, SwitchField } from "../../parts/Fields.tsx";
 import { Fold } from "../../parts/Fold.tsx";
 import { PointField } from "../../parts/PointField.tsx";
+import { readNumber } from "../../parts/readEntry.ts";
 import { act } from "../../store/bookStore.ts";
 import { useBook } from "../../store/useBook.ts";
 
