@@ -15,8 +15,18 @@ const WATCH = `(() => {
   window.seen = seen;
   new PerformanceObserver((list) => { for (const e of list.getEntries()) seen.long.push(e.duration); }).observe({ entryTypes: ["longtask"] });
   addEventListener("pointermove", () => { seen.moved = performance.now(); }, true);
+  let waiting = null;
+  const tell = () => {
+    if (waiting === null || seen.moved <= waiting.moved || seen.shown <= seen.moved) return;
+    waiting.resolve({ ...seen });
+    waiting = null;
+  };
+  // resolved by what comes: asked for again and again, the page would be blocked by the asking
+  window.drawnAfter = (moved) => new Promise((resolve) => { waiting = { moved, resolve }; tell(); });
   new MutationObserver((all) => {
-    if (all.some((m) => m.target.nodeName === "path" || m.addedNodes.length > 0)) seen.shown = performance.now();
+    if (!all.some((m) => m.target.nodeName === "path" || m.addedNodes.length > 0)) return;
+    seen.shown = performance.now();
+    tell();
   }).observe(document.querySelector(".beside"), { subtree: true, childList: true, attributes: true, attributeFilter: ["d"] });
   const tick = () => { const now = performance.now(); seen.gaps.push(now - seen.last); seen.last = now; requestAnimationFrame(tick); };
   requestAnimationFrame(tick);
@@ -75,14 +85,12 @@ export async function benchSlide(jobPath: string, meshPath: string) {
     const [x, y] = [a.x + a.width / 2, a.y + a.height / 2];
     await page.evaluate(WATCH);
     const seen = () => page.evaluate<Seen>("({ ...window.seen })");
+    /** What was seen once a picture stood that is newer than a move after `moved`. */
     const drawnAfter = async (moved: number) => {
-      const end = Date.now() + PATIENCE;
-      while (Date.now() < end) {
-        const now = await seen();
-        if (now.shown > moved) return now;
-        await page.waitForTimeout(5);
-      }
-      throw new Error(`nothing was redrawn; the page says: ${await page.locator(".beside").innerText()}`);
+      const late = setTimeout(() => console.error("nothing is redrawn"), PATIENCE);
+      const now = await page.evaluate<Seen>(`window.drawnAfter(${moved})`);
+      clearTimeout(late);
+      return now;
     };
     await page.mouse.move(x, y);
     await page.mouse.down();
@@ -95,8 +103,7 @@ export async function benchSlide(jobPath: string, meshPath: string) {
       const share = STEP * (k < 14 ? k : 26 - k);
       const before = (await seen()).moved;
       await page.mouse.move(x + share * (b.x - a.x), y + share * (b.y - a.y));
-      await page.waitForFunction(`window.seen.moved > ${before}`);
-      const now = await drawnAfter((await seen()).moved);
+      const now = await drawnAfter(before);
       times.push(now.shown - now.moved);
     }
     const during = await seen();

@@ -1,5 +1,5 @@
 // The two panels of one seam flat beside the surface: as planned, or as they are redrawn while the seam's end is slid.
-import { useRef } from "react";
+import { useMemo, useRef } from "react";
 import type { SeenPanel } from "../../core/plan/dragSeam.ts";
 import { figure } from "../parts/figure.ts";
 import { isSameWork } from "../store/hand.ts";
@@ -11,20 +11,22 @@ import { boxOf, PanelDrawing, PanelName } from "./PanelSheet.tsx";
 const GAP = 250;
 const NONE: SeenPanel[] = [];
 
-/** The seam that is looked at, and its panels as they are known now. */
+/** The seam that is looked at, and its panels as they are known now: the same ones until others are drawn. */
 function usePair(): { weld: string | null; panels: readonly SeenPanel[] } {
-  const hand = useBook((b) => b.hand);
+  const held = useBook((b) => (b.hand !== null && b.hand.panels.length > 0 ? b.hand.weld : null));
+  const drawn = useBook((b) => b.hand?.panels ?? NONE);
   const chosen = useBook((b) => b.chosen);
   // once the plan of a tied roof stands, it says the same and more
   const tied = useBook((b) => (isSameWork(b.tied?.of, b.project) && !isSameWork(b.planned, b.project) ? b.tied : null));
   const facts = useBook((b) => b.facts);
-  const seams = tied?.seams ?? facts?.seams ?? [];
-  const all = tied?.panels ?? facts?.panels ?? NONE;
-  const seam = seams.find((s) => s.id === chosen);
-  if (hand !== null && hand.panels.length > 0 && tied === null) return { weld: hand.weld, panels: hand.panels };
-  if (seam === undefined) return { weld: null, panels: NONE };
-  const ids = new Set(seams.filter((s) => s.weld === seam.weld).flatMap((s) => s.sides.map((side) => side.panel)));
-  return { weld: seam.weld, panels: all.filter((p) => ids.has(p.id)) };
+  return useMemo(() => {
+    if (held !== null && tied === null) return { weld: held, panels: drawn };
+    const seams = tied?.seams ?? facts?.seams ?? [];
+    const seam = seams.find((s) => s.id === chosen);
+    if (seam === undefined) return { weld: null, panels: NONE };
+    const ids = new Set(seams.filter((s) => s.weld === seam.weld).flatMap((s) => s.sides.map((side) => side.panel)));
+    return { weld: seam.weld, panels: (tied?.panels ?? facts?.panels ?? NONE).filter((p) => ids.has(p.id)) };
+  }, [held, drawn, chosen, tied, facts]);
 }
 
 /** What goes on, in one sentence. */
@@ -92,16 +94,22 @@ function Drawing({ panels }: { panels: readonly SeenPanel[] }) {
   );
 }
 
+function Words({ weld }: { weld: string | null }) {
+  const { words, grave } = useWords(weld);
+  return (
+    <p className={grave ? "fault" : "hint"} role="status">
+      {words}
+    </p>
+  );
+}
+
 /** The sheet beside the surface. */
 export function PairSheet() {
   const { weld, panels } = usePair();
-  const { words, grave } = useWords(weld);
   const room = useRoom();
   return (
     <aside className="beside" aria-label="Panels of the seam">
-      <p className={grave ? "fault" : "hint"} role="status">
-        {words}
-      </p>
+      <Words weld={weld} />
       {panels.length > 0 && <Drawing key={weld} panels={panels} />}
       {panels.length > 0 && (
         <table className="figures">

@@ -1,5 +1,5 @@
 // The ends of the seams as grips over the surface: slid along the edges with mouse, finger or arrow keys.
-import { useEffect, useMemo, useRef } from "react";
+import { memo, useEffect, useMemo, useRef } from "react";
 import type { FactsForm } from "../../core/records/facts.ts";
 import { type Book, bookStore } from "../store/bookStore.ts";
 import { isSameWork } from "../store/hand.ts";
@@ -53,18 +53,20 @@ interface GripPlace {
 /** Whether the grips are those of a roof that is being tied again: they stay in sight, and none can be taken. */
 const isTying = ({ grips, hand, project }: Book) => !isSameWork(grips?.of, project) && isSameWork(hand?.laid, project);
 
-/** Grips of the roof on the desk, the one in hand where it is slid to. */
+/** Grips of the roof on the desk, each where its end lies while no hand slides it. */
 function useGrips(): GripPlace[] {
   const grips = useBook((b) => (isSameWork(b.grips?.of, b.project) || isTying(b) ? b.grips : null));
-  const hand = useBook((b) => b.hand);
   return useMemo(
     () =>
       (grips?.welds ?? []).flatMap(({ weld, ends }) =>
-        ([0, 1] as const).map((end) => ({ weld, end, place: (hand?.weld === weld ? hand.to : ends)[end] })),
+        ([0, 1] as const).map((end) => ({ weld, end, place: ends[end] })),
       ),
-    [grips, hand],
+    [grips],
   );
 }
+
+/** Where a grip is now: the one in hand is where it is slid to. */
+const placeNow = ({ weld, end, place }: GripPlace, { hand }: Book) => (hand?.weld === weld ? hand.to[end] : place);
 
 let timer: ReturnType<typeof setTimeout> | undefined;
 
@@ -88,11 +90,17 @@ function slideByKey(form: FactsForm, grip: GripPlace, e: React.KeyboardEvent): v
   e.stopPropagation();
 }
 
-/** One grip. Slid with the pointer it follows the edge nearest to it on the screen. */
-function Grip({ form, grip, project }: { form: FactsForm; grip: GripPlace; project: () => Project | null }) {
-  const { weld, end, place } = grip;
+/** One grip. Slid with the pointer it follows the edge nearest to it on the screen. The others are not drawn anew meanwhile. */
+const Grip = memo(function Grip(props: {
+  form: FactsForm;
+  grip: GripPlace;
+  tying: boolean;
+  project: () => Project | null;
+}) {
+  const { form, grip, tying, project } = props;
+  const { weld, end } = grip;
+  const place = useBook((b) => placeNow(grip, b));
   const lit = useBook((b) => b.chosen === weld);
-  const tying = useBook(isTying);
   const length = form.edges.find((e) => e.id === place.edge)?.length ?? 0;
   const slide = (e: React.PointerEvent) => {
     const box = e.currentTarget.parentElement?.getBoundingClientRect();
@@ -120,10 +128,10 @@ function Grip({ form, grip, project }: { form: FactsForm; grip: GripPlace; proje
       onPointerMove={(e) => e.currentTarget.hasPointerCapture(e.pointerId) && slide(e)}
       onPointerUp={letGo}
       onPointerCancel={putBack}
-      onKeyDown={(e) => slideByKey(form, grip, e)}
+      onKeyDown={(e) => slideByKey(form, { weld, end, place }, e)}
     />
   );
-}
+});
 
 /** All grips, and the seam in hand where it is slid to; `hook` is given what puts them where they are drawn and tells these places, and null when they go. */
 export function Grips(props: {
@@ -133,29 +141,45 @@ export function Grips(props: {
 }) {
   const { form, project, hook } = props;
   const box = useRef<HTMLDivElement>(null);
-  const grips = useGrips();
   const line = useRef<SVGPolylineElement>(null);
-  const path = useBook((b) => b.hand?.path ?? null);
+  const grips = useGrips();
+  const tying = useBook(isTying);
   // gone with the leaf, no pointer would let go
   useEffect(() => letGo, []);
   useEffect(() => {
+    const putGrip = (to: Project, i: number) => {
+      const element = box.current?.children[i];
+      const at = pointOnEdge(form, placeNow(grips[i], bookStore.getState()));
+      if (!(element instanceof HTMLElement) || at === null) return [];
+      const { x, y } = to(at);
+      element.style.transform = `translate(-50%, -50%) translate(${x.toFixed(1)}px, ${y.toFixed(1)}px)`;
+      return [{ x, y }];
+    };
+    const putLine = (to: Project) => {
+      const points = (bookStore.getState().hand?.path ?? []).map((p) => to(p));
+      line.current?.setAttribute("points", points.map(({ x, y }) => `${x.toFixed(1)},${y.toFixed(1)}`).join(" "));
+    };
     const put = (to: Project) => {
-      const spots: { x: number; y: number }[] = [];
-      grips.forEach(({ place }, i) => {
-        const element = box.current?.children[i];
-        const at = pointOnEdge(form, place);
-        if (!(element instanceof HTMLElement) || at === null) return;
-        const { x, y } = to(at);
-        spots.push({ x, y });
-        element.style.transform = `translate(-50%, -50%) translate(${x.toFixed(1)}px, ${y.toFixed(1)}px)`;
-      });
-      const points = (path ?? []).map((p) => to(p)).map(({ x, y }) => `${x.toFixed(1)},${y.toFixed(1)}`);
-      line.current?.setAttribute("points", points.join(" "));
-      return spots;
+      putLine(to);
+      return grips.flatMap((_, i) => putGrip(to, i));
     };
     hook(put);
-    return () => hook(null);
-  }, [form, grips, path, hook]);
+    // what is slid alone as long as it is; put back, all are put in their places once more
+    const end = bookStore.subscribe(({ hand }, { hand: before }) => {
+      if (hand === before) return;
+      if (hand === null) return hook(put);
+      const to = project();
+      if (to === null) return;
+      grips.forEach(({ weld }, i) => {
+        if (weld === hand.weld || weld === before?.weld) putGrip(to, i);
+      });
+      if (hand.path !== before?.path) putLine(to);
+    });
+    return () => {
+      end();
+      hook(null);
+    };
+  }, [form, grips, hook, project]);
   return (
     <>
       <svg className="slid" aria-hidden="true">
@@ -163,7 +187,7 @@ export function Grips(props: {
       </svg>
       <div className="grips" ref={box}>
         {grips.map((grip) => (
-          <Grip key={`${grip.weld} ${grip.end}`} form={form} grip={grip} project={project} />
+          <Grip key={`${grip.weld} ${grip.end}`} form={form} grip={grip} tying={tying} project={project} />
         ))}
       </div>
     </>

@@ -1,5 +1,5 @@
 // Seams in one's own hands: each end slid along its edge, seams added, removed, evened.
-import { useDeferredValue } from "react";
+import { useEffect, useState } from "react";
 import { addSeam } from "../../actions/seams/addSeam.ts";
 import { evenSeams } from "../../actions/seams/evenSeams.ts";
 import { layPairs } from "../../actions/seams/layPairs.ts";
@@ -11,12 +11,25 @@ import { act } from "../../store/bookStore.ts";
 import { findSeamEnds } from "../../store/seamEnds.ts";
 import { useBook } from "../../store/useBook.ts";
 
+/** So many seams' fields are put in at once. */
+const AT_ONCE = 4;
+
+/** How many of the fields may stand: those of twenty seams that come at once would block the page. */
+function useReady(count: number): number {
+  const [ready, setReady] = useState(0);
+  useEffect(() => {
+    if (ready >= count) return;
+    const more = setTimeout(() => setReady(ready + AT_ONCE), 0);
+    return () => clearTimeout(more);
+  }, [ready, count]);
+  return ready;
+}
+
 /** The list of pairs, or the way to it. */
 export function SeamEnds() {
   const facts = useBook((b) => b.facts);
   const pairs = useBook((b) => b.project?.job.seams?.pairs);
-  // the fields of twenty seams that come at once would block the page
-  const ready = useDeferredValue(pairs?.length ?? 0, 0);
+  const ready = useReady(pairs?.length ?? 0);
   if (pairs === undefined) {
     return (
       <button
