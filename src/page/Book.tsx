@@ -89,6 +89,11 @@ function PlanState() {
     <div className="state">
       {facts !== null && status === "done" && <span>Planned, revision {facts.job.revision}</span>}
       {status === "stopped" && <span>Stopped</span>}
+      {status === "failed" && (
+        <button type="button" onClick={() => document.getElementById("fault")?.scrollIntoView()}>
+          Failed: why?
+        </button>
+      )}
       {(status === "stopped" || status === "failed") && project !== null && (
         <PressButton onPress={() => requestPlan(project)}>Plan again</PressButton>
       )}
@@ -163,7 +168,7 @@ function Fault() {
   if (fault === null) return null;
   const place = fault.where.find((w) => leafOfPath(w) !== undefined);
   return (
-    <div className="banner grave" role="alert">
+    <div id="fault" className="banner grave" role="alert">
       <div>
         <strong>Not planned.</strong>{" "}
         {fault.message.split("\n").map((line) => (

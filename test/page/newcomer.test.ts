@@ -68,9 +68,18 @@ describe("a newcomer", { timeout: LONG }, () => {
     const before = Number(await width(page).inputValue());
     expect(hundreds).toBeGreaterThan(before);
     await told(page, "Width").toBe(`${before}\u00a0mm`);
-    await width(page).fill("wide");
-    await width(page).press("Enter");
+    // over what stands there, as it is found
+    await page.keyboard.type("wide");
+    await page.keyboard.press("Enter");
     await page.getByRole("alert").filter({ hasText: "“wide” is no length: give it in mm" }).waitFor();
+    // more than can be: the field is far below the reason, and the head leads to it
+    await width(page).fill("250000");
+    await width(page).press("Enter");
+    await press(page, "Failed: why?");
+    const reason = page.getByRole("alert").filter({ hasText: "Not planned." });
+    const inSight = () =>
+      reason.evaluate((e) => e.contains(document.elementFromPoint(innerWidth / 2, e.getBoundingClientRect().top + 9)));
+    await expect.poll(inSight, SOON).toBe(true);
     // as the sentence gives it
     await width(page).fill(`${hundreds / 1000} m`);
     await width(page).press("Enter");

@@ -45,7 +45,7 @@ export function leafOfFinding(finding: Pick<Finding, "station" | "where">): Leaf
   return leafOfPath([finding.where].flat()[0] ?? "") ?? "form";
 }
 
-/** Opens the leaf, lights the thing, puts the cursor into its field where there is one. */
+/** Opens the leaf, lights the thing, puts the cursor into its field where there is one, all of it chosen. */
 export function jumpTo(leaf: Leaf, where: string): void {
   bookStore.setState({ leaf, chosen: where === "" ? null : where, sheet: "none" });
   requestAnimationFrame(() => {
@@ -59,5 +59,7 @@ export function jumpTo(leaf: Leaf, where: string): void {
     for (let fold = goal?.closest("details"); fold; fold = fold.parentElement?.closest("details")) fold.open = true;
     goal?.scrollIntoView({ block: "center" });
     goal?.focus();
+    // what is typed next takes the place of what stands there
+    if (goal instanceof HTMLInputElement) goal.select();
   });
 }
