@@ -76,6 +76,7 @@ describe("leaves", { timeout: LONG }, () => {
     await page.getByRole("button", { name: "Take these seams in hand" }).click();
     revision = await plannedAnew(page, revision);
     await page.getByText(/^4 seams/).waitFor();
+    await page.getByText(/5 strips as pairs: as asked/).waitFor();
     const begin = page.getByLabel(/^Begins on/).first();
     const at = Number(await begin.inputValue());
     await begin.fill(String(at + 2));

@@ -109,7 +109,8 @@ export function SeamsLeaf() {
           <>
             {layouts?.map((l) => (
               <p key={l.region} className="why">
-                <strong>{l.region}</strong>: {l.count} strips as {l.layout}, {l.from} to {l.to}. {l.why}
+                <strong>{l.region}</strong>: {l.count} strips as {l.layout}
+                {l.from !== "" && `, ${l.from} to ${l.to}`}: {l.why}
               </p>
             ))}
             {facts && <WiderCloth facts={facts} />}
