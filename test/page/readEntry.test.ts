@@ -34,6 +34,8 @@ it.each([
   ["3 ft 2 in", "mm"],
   ["1,200.5", "mm"],
   ["1e999", "mm"],
+  // no unit, though every record has it
+  ["3 constructor", "mm"],
 ])("%s in a field of %s is none", (text, unit) => {
   expect(readEntry(text, unit)).toBeNull();
   expect(refuseEntry(text, unit)).toContain(text);

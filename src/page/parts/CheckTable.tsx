@@ -1,5 +1,4 @@
 // The checks a station made: those that fail in full, those that hold folded away.
-
 import type { Check } from "../../core/problem.ts";
 import { Fold } from "./Fold.tsx";
 import { figure } from "./figure.ts";

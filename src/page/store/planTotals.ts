@@ -3,7 +3,6 @@ import type { Facts } from "../../core/records/facts.ts";
 
 /** What a plan comes to; 0 where it has not come that far. */
 export interface PlanTotals {
-  revision: string;
   panels: number;
   /** Length of all seams on the form, m. */
   weld: number;
@@ -20,7 +19,6 @@ export function totalPlan(facts: Facts): PlanTotals {
   const sum = <T>(list: readonly T[] | undefined, of: (one: T) => number) =>
     list?.reduce((total, one) => total + of(one), 0) ?? 0;
   return {
-    revision: facts.job.revision,
     panels: facts.panels?.length ?? 0,
     weld: sum(facts.seams, (s) => s.length),
     taken: sum(facts.rolls, (r) => r.used) / 1e3,

@@ -1,5 +1,4 @@
 // What can be decided about the anchors: where the far pin is, how far the cloth is cut back, one more, one less.
-
 import { useState } from "react";
 import { addAnchor, removeAnchor, setAnchor } from "../../actions/form/setAnchor.ts";
 import { NumberField } from "../../parts/Fields.tsx";

@@ -1,5 +1,4 @@
 // What can be decided about the edges: what each is, the force and the cable of it.
-
 import cables from "../../../../templates/cables.json";
 import { setCableFigure } from "../../actions/form/setCableFigure.ts";
 import { setEdge, setTerminal } from "../../actions/form/setEdge.ts";
