@@ -4,7 +4,7 @@ import { PlanError } from "../../problem.ts";
 import type { FlatPanel } from "../../records/flatPanel.ts";
 import type { StripLayout } from "../../records/stripLayout.ts";
 import { buildErectedMetric, type ClothStiffness } from "../../structure/cloth.ts";
-import { buildHeldOutline, measureAlong } from "./heldOutline.ts";
+import { buildHeldOutline, type HeldOutline, measureAlong } from "./heldOutline.ts";
 import { buildLocalStrip, type LocalStrip } from "./localStrip.ts";
 import { buildPanelTarget, type FlattenOptions, type PanelTarget } from "./panelTarget.ts";
 
@@ -136,7 +136,13 @@ function listTies(layout: StripLayout, drafts: readonly PanelDraft[], others: re
   const index = (vertices: Uint32Array<ArrayBuffer>, first: number) =>
     new Map([...vertices].map((v, i) => [v, first + i]));
   const free = new Map(drafts.map((d) => [d.strip.id, index(d.strip.surfaceVertex, d.first)]));
-  const held = new Map(others.map((p) => [p.id, buildHeldOutline(p)]));
+  const held = new Map(others.map((p) => [p.id, p]));
+  const outlines = new Map<FlatPanel, HeldOutline>();
+  const outlineOf = (panel: FlatPanel): HeldOutline => {
+    const outline = outlines.get(panel) ?? buildHeldOutline(panel);
+    outlines.set(panel, outline);
+    return outline;
+  };
   const out: Tie[] = [];
   for (const seam of layout.seams) {
     const [a, b] = seam.strips.map((id) => free.get(id));
@@ -148,7 +154,7 @@ function listTies(layout: StripLayout, drafts: readonly PanelDraft[], others: re
     if (a !== undefined && b !== undefined)
       for (const [u, v] of pieces) out.push({ ends: [at(a, u), at(a, v), at(b, u), at(b, v)], length: 0 });
     else if (cut !== undefined) {
-      const length = measureAlong(cut, layout.surface, seam.vertices);
+      const length = measureAlong(outlineOf(cut), layout.surface, seam.vertices);
       pieces.forEach(([u, v], k) => {
         out.push({ ends: [at(own, u), at(own, v), -1, -1], length: length[k] });
       });

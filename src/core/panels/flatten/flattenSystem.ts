@@ -36,21 +36,24 @@ export function buildFlattenSystem(problem: FlattenProblem): FlattenSystem {
   const start = new Uint32Array(nT + nTies + axes.length + 1);
   const held = new Uint8Array(2 * nV);
   for (const v of pin) held.fill(1, 2 * v, 2 * v + 2);
-  const dof: number[] = [];
-  const add = (i: number) => dof.push(held[i] === 1 ? -1 : i);
+  const dof = new Int32Array(6 * nT + 8 * nTies + axes.reduce((sum, axis) => sum + axis.dof.length, 0));
+  let n = 0;
+  const add = (i: number) => {
+    dof[n++] = held[i] === 1 ? -1 : i;
+  };
   for (let t = 0; t < nT; t++) {
     for (let k = 0; k < 3; k++) for (let c = 0; c < 2; c++) add(2 * tri[3 * t + k] + c);
-    start[t + 1] = dof.length;
+    start[t + 1] = n;
   }
   for (let s = 0; s < nTies; s++) {
     for (let k = 0; k < 4; k++) if (tie[4 * s + k] >= 0) for (let c = 0; c < 2; c++) add(2 * tie[4 * s + k] + c);
-    start[nT + s + 1] = dof.length;
+    start[nT + s + 1] = n;
   }
   axes.forEach((axis, i) => {
     for (const d of axis.dof) add(d);
-    start[nT + nTies + i + 1] = dof.length;
+    start[nT + nTies + i + 1] = n;
   });
-  const where = buildPattern(2 * nV, start, Int32Array.from(dof));
+  const where = buildPattern(2 * nV, start, dof.subarray(0, n));
   return {
     problem,
     where,
@@ -96,7 +99,7 @@ export function measureGaps(problem: FlattenProblem, x: Float64Array<ArrayBuffer
   const { tie, axes } = problem;
   const nTies = tie.length / 4;
   const out = new Float64Array(nTies + axes.length);
-  const run = new Float64Array(3);
+  const run = new Float64Array(2);
   for (let s = 0; s < nTies; s++) {
     const first = measurePiece(problem, x, tie[4 * s], tie[4 * s + 1], run);
     out[s] =
@@ -166,7 +169,10 @@ function fillStrainDerivative(
   e: Float64Array<ArrayBuffer>,
   b: Float64Array<ArrayBuffer>,
 ): void {
-  const [, , , det, cww, cff, cwf] = e;
+  const det = e[3];
+  const cww = e[4];
+  const cff = e[5];
+  const cwf = e[6];
   for (let k = 0; k < 3; k++) {
     const p = 2 * tri[3 * t + ((k + 1) % 3)];
     const q = 2 * tri[3 * t + ((k + 2) % 3)];
@@ -188,45 +194,49 @@ function addConditions(system: FlattenSystem, x: Float64Array<ArrayBuffer>): voi
   const nT = tri.length / 3;
   const nTies = tie.length / 4;
   const gaps = measureGaps(problem, x);
-  const run = new Float64Array(3);
+  const run = new Float64Array(2);
+  const dof = new Int32Array(8);
+  const value = new Float64Array(8);
+  const room = Math.max(8, ...axes.map((axis) => axis.dof.length));
+  const h = new Float64Array((room * (room + 1)) / 2);
   for (let s = 0; s < nTies; s++) {
-    const dof: number[] = [];
-    const value: number[] = [];
+    let n = 0;
     for (let side = 0; side < 2; side++) {
       const a = tie[4 * s + 2 * side];
       const b = tie[4 * s + 2 * side + 1];
       if (a < 0) continue;
       measurePiece(problem, x, a, b, run);
-      const sign = side === 0 ? 1 : -1;
-      dof.push(2 * a, 2 * a + 1, 2 * b, 2 * b + 1);
-      for (const [end, v] of [
-        [-sign, a],
-        [sign, b],
-      ]) {
-        value.push(end * run[0] * problem.shrink[2 * v], end * run[1] * problem.shrink[2 * v + 1]);
+      for (let end = 0; end < 2; end++) {
+        const v = end === 0 ? a : b;
+        const sign = (side === 0) === (end === 0) ? -1 : 1;
+        for (let c = 0; c < 2; c++) {
+          dof[n] = 2 * v + c;
+          value[n++] = sign * run[c] * problem.shrink[2 * v + c];
+        }
       }
     }
-    addCondition(system, nT + s, dof, value, { gap: gaps[s], multiplier: system.multiplier[s] });
+    addCondition(system, nT + s, { dof, value, n, force: system.multiplier[s] + system.stiff * gaps[s] }, h);
   }
-  axes.forEach((axis, i) => {
-    const n = nTies + i;
-    addCondition(system, nT + n, axis.dof, axis.value, { gap: gaps[n], multiplier: system.multiplier[n] });
+  axes.forEach(({ dof, value }, i) => {
+    const k = nTies + i;
+    const force = system.multiplier[k] + system.stiff * gaps[k];
+    addCondition(system, nT + k, { dof, value, n: dof.length, force }, h);
   });
 }
 
+/** Adds a condition on the first n unknowns of a list; h: room for their packed lower triangle. */
 function addCondition(
   system: FlattenSystem,
   element: number,
-  dof: number[],
-  value: number[],
-  at: { gap: number; multiplier: number },
+  on: { dof: ArrayLike<number>; value: ArrayLike<number>; n: number; force: number },
+  h: Float64Array<ArrayBuffer>,
 ): void {
   const { gradient, values, where, stiff } = system;
-  const h = new Float64Array((dof.length * (dof.length + 1)) / 2);
-  let n = 0;
-  for (let i = 0; i < dof.length; i++) {
-    gradient[dof[i]] += value[i] * (at.multiplier + stiff * at.gap);
-    for (let j = 0; j <= i; j++) h[n++] = stiff * value[i] * value[j];
+  const { dof, value, n, force } = on;
+  let at = 0;
+  for (let i = 0; i < n; i++) {
+    gradient[dof[i]] += value[i] * force;
+    for (let j = 0; j <= i; j++) h[at++] = stiff * value[i] * value[j];
   }
   addElementInPlace(values, where, element, h);
 }

@@ -94,9 +94,14 @@ export function buildRunDirections(strip: LocalStrip): Float64Array<ArrayBuffer>
     const mx = (x[a] + x[b] + x[c]) / 3;
     const my = (x[a + 1] + x[b + 1] + x[c + 1]) / 3;
     const mz = (x[a + 2] + x[b + 2] + x[c + 2]) / 3;
-    let [sx, sy, sz] = [0, 0, 0];
+    let sx = 0;
+    let sy = 0;
+    let sz = 0;
+    // no small arrays in here: every triangle meets every piece, and they were over half of what dragging a seam had to clear away
     for (let i = 0; i < pieces.length; i += 6) {
-      const [dx, dy, dz] = [pieces[i] - mx, pieces[i + 1] - my, pieces[i + 2] - mz];
+      const dx = pieces[i] - mx;
+      const dy = pieces[i + 1] - my;
+      const dz = pieces[i + 2] - mz;
       const d = dx * dx + dy * dy + dz * dz;
       const w = 1 / (d * d);
       sx += pieces[i + 3] * w;

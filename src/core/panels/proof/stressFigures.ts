@@ -82,8 +82,9 @@ export function measurePanelStress(panel: PatternedPanel, d: ClothStiffness): Pa
     sum: 0,
     error: 0,
   }));
+  const frame: WarpFrame = { area: 0, warp: [0, 0, 0], side: [0, 0, 0] };
   for (let t = 0; t < s.length; t += 3) {
-    const frame = measureWarpFrame(erected, xy, tri, t);
+    fillWarpFrame(erected, xy, tri, t, frame);
     const { area } = frame;
     total += area;
     for (let k = 0; k < 2; k++) {
@@ -95,7 +96,9 @@ export function measurePanelStress(panel: PatternedPanel, d: ClothStiffness): Pa
       way.error += area * (v - way.target) ** 2;
     }
     if (measureLeastPrincipal(s[t], s[t + 1], s[t + 2]) <= 0) compressed += area;
-    const [rx, ry, rz] = [panel.run[t], panel.run[t + 1], panel.run[t + 2]];
+    const rx = panel.run[t];
+    const ry = panel.run[t + 1];
+    const rz = panel.run[t + 2];
     if (area === 0 || (rx === 0 && ry === 0 && rz === 0)) continue;
     const { warp: w, side: v } = frame;
     const along = rx * w[0] + ry * w[1] + rz * w[2];
@@ -118,34 +121,47 @@ export function measurePanelStress(panel: PatternedPanel, d: ClothStiffness): Pa
   };
 }
 
-/** Erected area of a triangle (t counts corners), unit direction of its warp line F·e_x and the unit vector square to it. */
-function measureWarpFrame(
+/** A triangle's erected area, the unit direction of its warp line F·e_x, and the unit vector square to it. */
+interface WarpFrame {
+  area: number;
+  warp: [number, number, number];
+  side: [number, number, number];
+}
+
+/** The warp frame of a triangle (t counts corners) goes to `frame`. */
+function fillWarpFrame(
   x: Float64Array<ArrayBuffer>,
   xy: Float64Array<ArrayBuffer>,
   tri: Uint32Array<ArrayBuffer>,
   t: number,
-): { area: number; warp: number[]; side: number[] } {
-  const [a, b, c] = [tri[t], tri[t + 1], tri[t + 2]];
+  frame: WarpFrame,
+): void {
+  const a = tri[t];
+  const b = tri[t + 1];
+  const c = tri[t + 2];
   const uy = xy[2 * b + 1] - xy[2 * a + 1];
   const vy = xy[2 * c + 1] - xy[2 * a + 1];
-  const p = [0, 1, 2].map((k) => x[3 * b + k] - x[3 * a + k]);
-  const q = [0, 1, 2].map((k) => x[3 * c + k] - x[3 * a + k]);
-  const n = cross(p, q);
-  const double = Math.sqrt(n[0] ** 2 + n[1] ** 2 + n[2] ** 2);
+  const px = x[3 * b] - x[3 * a];
+  const py = x[3 * b + 1] - x[3 * a + 1];
+  const pz = x[3 * b + 2] - x[3 * a + 2];
+  const qx = x[3 * c] - x[3 * a];
+  const qy = x[3 * c + 1] - x[3 * a + 1];
+  const qz = x[3 * c + 2] - x[3 * a + 2];
+  const nx = py * qz - pz * qy;
+  const ny = pz * qx - px * qz;
+  const nz = px * qy - py * qx;
+  const double = Math.sqrt(nx ** 2 + ny ** 2 + nz ** 2);
   // First column of F = [p q]·X⁻¹ but for the positive factor 1/det.
-  const w = p.map((v, k) => v * vy - q[k] * uy);
-  const length = Math.sqrt(w[0] ** 2 + w[1] ** 2 + w[2] ** 2);
-  const warp = w.map((v) => v / length);
-  return {
-    area: double / 2,
-    warp,
-    side: cross(
-      n.map((v) => v / double),
-      warp,
-    ),
-  };
-}
-
-function cross(a: number[], b: number[]): number[] {
-  return [a[1] * b[2] - a[2] * b[1], a[2] * b[0] - a[0] * b[2], a[0] * b[1] - a[1] * b[0]];
+  const wx = px * vy - qx * uy;
+  const wy = py * vy - qy * uy;
+  const wz = pz * vy - qz * uy;
+  const length = Math.sqrt(wx ** 2 + wy ** 2 + wz ** 2);
+  const { warp, side } = frame;
+  warp[0] = wx / length;
+  warp[1] = wy / length;
+  warp[2] = wz / length;
+  side[0] = (ny / double) * warp[2] - (nz / double) * warp[1];
+  side[1] = (nz / double) * warp[0] - (nx / double) * warp[2];
+  side[2] = (nx / double) * warp[1] - (ny / double) * warp[0];
+  frame.area = double / 2;
 }
