@@ -111,6 +111,32 @@ describe("leaves", { timeout: LONG }, () => {
     await expect.poll(() => warp.getAttribute("placeholder"), SOON).toBe("0.399");
   });
 
+  it("Panels: every kind of line that is drawn stands in the key with its look, of all panels and of one alone", async () => {
+    const { page } = desk;
+    const key = page.getByRole("list", { name: "Lines of the panels" });
+    // of the visible lines: class and stroke, as drawn here and as drawn in the key
+    const looks = (place: string) =>
+      page.locator(place).evaluateAll((all) => {
+        const told = all.map((e) => {
+          const { stroke, strokeWidth, strokeDasharray } = getComputedStyle(e);
+          return `${e.getAttribute("class")} ${stroke} ${strokeWidth} ${strokeDasharray}`;
+        });
+        return [...new Set(told)].sort();
+      });
+    const drawn = () => looks("[aria-label='Flat panels'] path:not(.cut, .lit)");
+    const explained = () => looks("[aria-label='Lines of the panels'] path:not(.cut)");
+    await page.mouse.move(0, 0);
+    await key.getByText("cut line", { exact: true }).waitFor();
+    await expect.poll(async () => (await explained()).length, SOON).toBeGreaterThanOrEqual(3);
+    await expect.poll(drawn, SOON).toEqual(await explained());
+    await page.getByRole("table", { name: "Panels" }).getByRole("button", { name: "P2", exact: true }).click();
+    await page.mouse.move(0, 0);
+    await key.getByText(/^pen: match marks.*warp arrow$/).waitFor();
+    await expect.poll(drawn, SOON).toEqual(await explained());
+    await page.getByRole("button", { name: "Show all panels" }).click();
+    await key.getByText(/^pen:/).waitFor({ state: "detached" });
+  });
+
   it("what is pointed at lights up in table and drawing alike", async () => {
     const { page } = desk;
     await page.getByRole("table", { name: "Panels" }).getByRole("row", { name: /^P2/ }).hover();

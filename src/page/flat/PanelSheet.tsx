@@ -51,6 +51,8 @@ export function PanelDrawing({ panel, size, detail }: { panel: SeenPanel; size: 
             <path key={i} className={m.kind === "slit" ? "slit" : "pen"} d={path(m.points, false)} />
           ),
         )}
+      {/* once more on top: without an allowance the net line would lie over it */}
+      <path className="cutline" d={path(panel.cut, true)} />
       {detail &&
         panel.sides.map((side) => {
           const [x, y] = middle(sideLine(panel, side));

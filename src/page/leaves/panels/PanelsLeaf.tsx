@@ -1,5 +1,6 @@
 // Panels: what is cut, and which stress will it take?
 import type { FactsPanel } from "../../../core/records/facts.ts";
+import { PanelKey } from "../../flat/PanelKey.tsx";
 import { PanelSheet } from "../../flat/PanelSheet.tsx";
 import { FieldPicker } from "../../parts/FieldPicker.tsx";
 import { FigureTable } from "../../parts/FigureTable.tsx";
@@ -127,7 +128,10 @@ export function PanelsLeaf() {
         ) : onForm ? (
           <LazySolid facts={facts} fields={fields} field={field} words="The panels on the form, coloured by stress." />
         ) : (
-          <PanelSheet panels={panels} alone={alone} />
+          <>
+            <PanelSheet panels={panels} alone={alone} />
+            <PanelKey panels={alone === null ? panels : panels.filter((p) => p.id === alone)} detail={alone !== null} />
+          </>
         )
       }
       figures={
