@@ -20,6 +20,7 @@ const KINDS: Record<string, string> = {
   ".json": "application/json",
   ".webmanifest": "application/manifest+json",
   ".ttf": "font/ttf",
+  ".txt": "text/plain; charset=utf-8",
   ".obj": "text/plain; charset=utf-8",
 };
 

@@ -64,6 +64,11 @@ function Sheets() {
             </div>
           ))}
         </dl>
+        <p>
+          <a href="./third-party.txt" target="_blank" rel="noreferrer">
+            Packages this page is built with, and their licences
+          </a>
+        </p>
       </Sheet>
     );
   }

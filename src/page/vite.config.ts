@@ -3,6 +3,7 @@ import { createHash } from "node:crypto";
 import { readFileSync } from "node:fs";
 import react from "@vitejs/plugin-react";
 import { defineConfig, type Plugin } from "vite";
+import { gatherNotices } from "./notices.ts";
 
 /** Emits service-worker.js: keep/serviceWorker.js with the names of all built files, and a version that is their hash. */
 function listFilesForOffline(): Plugin {
@@ -24,12 +25,14 @@ function listFilesForOffline(): Plugin {
   };
 }
 
+const notices = gatherNotices();
+
 export default defineConfig({
   root: import.meta.dirname,
   base: "./",
   publicDir: false,
-  plugins: [react(), listFilesForOffline()],
-  worker: { format: "es" },
+  plugins: [react(), notices.page, listFilesForOffline()],
+  worker: { format: "es", plugins: () => [notices.worker()] },
   build: {
     outDir: "../../dist/page",
     emptyOutDir: true,

@@ -19,7 +19,7 @@ function countTabs(goals: (Element | null)[]): number {
   if (goals.some((g) => g === now || g?.contains(now))) return 0;
   const all = [
     ...(document.querySelector("dialog[open]") ?? document).querySelectorAll<HTMLElement | SVGElement>(
-      "button:not(:disabled), input:not(:disabled), select:not(:disabled), summary, [tabindex='0']",
+      "a[href], button:not(:disabled), input:not(:disabled), select:not(:disabled), summary, [tabindex='0']",
     ),
   ].filter((e) => e.tabIndex >= 0 && e.checkVisibility());
   const from = all.indexOf(now as HTMLElement);

@@ -16,6 +16,7 @@ beforeAll(async () => {
   writeFileSync(join(folder, "secret.html"), "outside");
   writeFileSync(join(folder, "page/index.html"), "<!doctype html>");
   writeFileSync(join(folder, "page/assets/a.js"), "1");
+  writeFileSync(join(folder, "page/third-party.txt"), "© 2010");
   writeFileSync(join(folder, "page/assets/a.js.map"), "{}");
   const mesh = { name: "m.obj", bytes: new TextEncoder().encode("v 0 0 0") };
   const served = await servePage(join(folder, "page"), 0, { name: "job.json", job: { title: "Kiosk" }, mesh });
@@ -48,6 +49,15 @@ describe("the server of the page", () => {
     expect(CONTENT_POLICY).toMatch(/default-src 'none'/);
     expect(CONTENT_POLICY).not.toMatch(/unsafe|https?:|\*/);
     expect((await ask("/assets/a.js?x=1")).headers["cache-control"]).toMatch(/immutable/);
+  });
+
+  it("serves the licences of its packages as text to be read, under the same policy", async () => {
+    const got = await ask("/third-party.txt");
+    expect(got).toMatchObject({ status: 200, text: "© 2010" });
+    expect(got.headers).toMatchObject({
+      "content-type": "text/plain; charset=utf-8",
+      "content-security-policy": CONTENT_POLICY,
+    });
   });
 
   // HTML standard, cross-origin isolation: both headers on the page, the second on every worker script too
