@@ -115,9 +115,20 @@ describe("decisions in place", { timeout: LONG }, () => {
     await turnTo(page, "Site");
     await page.getByText("Survey (0)").click();
     await fieldOf(page, "It lies at").selectOption("anchor C1");
-    await enterPlace(page, "Where C1 really is", ["-0.75", "-0.65", "2.9"]);
+    await enterPlace(page, "Where C1 really is", ["-750 mm", "-0.65", "2.9 kN"]);
+    await alert.getByText("z: “2.9 kN” is no length: give it in m").waitFor();
+    await enterPlace(page, "Where C1 really is", ["-750 mm", "-0.65", "2.9"]);
     now = await plannedAnew(page, now);
     await expect.poll(() => codes(page), SOON).toContainEqual(expect.stringMatching(/^survey-(pin|anchor)$/));
+    await shows(page, "C1, x", "-0.75");
+    // a gauge that shows newtons, and one that shows a mass
+    await page.getByRole("button", { name: "T-C1", exact: true }).click();
+    await page.getByLabel("Force, kN").fill("250 kg");
+    await page.getByRole("button", { name: "Write it into the log" }).click();
+    await alert.getByText("Force: “250 kg” is no force: give it in kN, or with its unit behind it (N, daN").waitFor();
+    await page.getByLabel("Force, kN").fill("2500 N");
+    await page.getByRole("button", { name: "Write it into the log" }).click();
+    await page.getByRole("row", { name: /T-C1 2\.5 kN/ }).waitFor();
     await turnTo(page, "Papers");
     await enter(page, "Takes the place of issue", "0");
     await shows(page, "Takes the place of issue", "0");

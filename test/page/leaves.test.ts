@@ -207,11 +207,14 @@ describe("leaves", { timeout: LONG }, () => {
     await page.getByRole("button", { name: "Write it into the log" }).click();
     await page.getByRole("alert").getByText("x is missing").waitFor();
     for (const [label, value] of [
-      ["x, m", "0.012"],
-      ["y, m", "0"],
+      ["x, m", "12 mm"],
+      ["y, m", "none"],
       ["z, m", "1.2"],
     ])
       await page.getByLabel(label, { exact: true }).fill(value);
+    await page.getByRole("button", { name: "Write it into the log" }).click();
+    await page.getByRole("alert").getByText("y: “none” is no length: give it in m").waitFor();
+    await page.getByLabel("y, m", { exact: true }).fill("0");
     await page.getByRole("button", { name: "Write it into the log" }).click();
     await page.getByText("1 reading in the log.").waitFor();
     await page.getByRole("button", { name: /^Strike/ }).click();

@@ -1,18 +1,20 @@
 // A place in space: three numbers in metres, z up. Handed on when all three are there; emptied, the default holds again.
 import { useId, useState } from "react";
-import { readNumber } from "./readEntry.ts";
+import { readEntry, refuseEntry } from "./readEntry.ts";
 
 type Point = [number, number, number];
 
 const AXES = ["x", "y", "z"] as const;
 
 function readPoint(texts: readonly string[]): Point | undefined | string {
-  const read = texts.map(readNumber);
+  const read = texts.map((text) => readEntry(text, "m"));
   const wrong = read.indexOf(null);
-  if (wrong >= 0) return `“${texts[wrong]}” is no number`;
+  if (wrong >= 0) return `${AXES[wrong]}: ${refuseEntry(texts[wrong], "m")}`;
   const [x, y, z] = read;
   if (typeof x === "number" && typeof y === "number" && typeof z === "number") return [x, y, z];
-  return read.every((n) => n === undefined) ? undefined : "all three of x, y and z are wanted";
+  if (read.every((n) => n === undefined)) return undefined;
+  const missing = AXES.filter((_, k) => read[k] === undefined).join(" and ");
+  return `${missing} is missing: give all three of x, y and z, in m, or empty all three`;
 }
 
 /** The field. */

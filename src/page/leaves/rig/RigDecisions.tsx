@@ -3,7 +3,7 @@ import { setReadingError } from "../../actions/rig/setReadingError.ts";
 import { setRigFigure } from "../../actions/rig/setRigFigure.ts";
 import { setStages } from "../../actions/rig/setStages.ts";
 import { NumberField, TextField } from "../../parts/Fields.tsx";
-import { readNumber } from "../../parts/readEntry.ts";
+import { readEntry } from "../../parts/readEntry.ts";
 import { act, notify } from "../../store/bookStore.ts";
 import { useBook } from "../../store/useBook.ts";
 import { AdjusterDecisions } from "./AdjusterDecisions.tsx";
@@ -16,7 +16,7 @@ function readStages(text: string): number[] | null {
   const read = text
     .split(/[\s;]+/)
     .filter((w) => w !== "")
-    .map(readNumber);
+    .map((word) => readEntry(word, "%"));
   return read.every((n) => typeof n === "number") ? read.map((n) => Number((n / 100).toPrecision(12))) : null;
 }
 

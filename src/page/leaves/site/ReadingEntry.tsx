@@ -3,7 +3,7 @@ import { useState } from "react";
 import { addReading } from "../../actions/site/addReading.ts";
 import type { RigStep } from "../../flat/rigSteps.ts";
 import { writeTime } from "../../parts/clock.ts";
-import { readNumber } from "../../parts/readEntry.ts";
+import { readEntry, refuseEntry } from "../../parts/readEntry.ts";
 import { act, bookStore } from "../../store/bookStore.ts";
 import type { Reading } from "../../store/project.ts";
 import { useBook } from "../../store/useBook.ts";
@@ -11,7 +11,15 @@ import { expectReading, judgeReading, tellExpected } from "./expectReading.ts";
 
 type Kind = "force" | "frequency" | "position";
 
-const ENTRIES: Record<Kind, { key: string; label: string; unit: string }[]> = {
+const EMPTY = { force: "", frequency: "", freeLength: "", mass: "", x: "", y: "", z: "", temperature: "" };
+
+interface Entry {
+  key: keyof typeof EMPTY;
+  label: string;
+  unit: string;
+}
+
+const ENTRIES: Record<Kind, Entry[]> = {
   force: [{ key: "force", label: "Force", unit: "kN" }],
   frequency: [
     { key: "frequency", label: "Frequency", unit: "Hz" },
@@ -25,21 +33,22 @@ const ENTRIES: Record<Kind, { key: string; label: string; unit: string }[]> = {
   ],
 };
 
-const EMPTY = { force: "", frequency: "", freeLength: "", mass: "", x: "", y: "", z: "", temperature: "" };
+const TEMPERATURE: Entry = { key: "temperature", label: "Temperature", unit: "°C" };
 
 /** A reading from what was typed; a sentence where it is none. */
-function readEntry(kind: Kind, texts: typeof EMPTY, id: string, by: string): Reading | string {
+function readReading(kind: Kind, texts: typeof EMPTY, id: string, by: string): Reading | string {
   if (id === "") return "Choose what was read.";
   const read: Record<string, number | null> = {};
-  for (const [key, text] of Object.entries(texts)) {
-    const value = readNumber(text);
-    if (value === null) return `“${text}” is no number.`;
+  for (const { key, label, unit } of [...ENTRIES[kind], TEMPERATURE]) {
+    const value = readEntry(texts[key], unit);
+    if (value === null) return `${label}: ${refuseEntry(texts[key], unit)}.`;
     read[key] = value ?? null;
   }
   const missing = ENTRIES[kind].find((e) => read[e.key] === null);
-  if (missing !== undefined) return `${missing.label} is missing.`;
+  if (missing !== undefined) return `${missing.label} is missing: type it in ${missing.unit}.`;
   const negative = kind !== "position" && ENTRIES[kind].find((e) => (read[e.key] ?? 0) < 0);
-  if (negative) return `${negative.label} cannot be below 0.`;
+  if (negative)
+    return `${negative.label} is ${read[negative.key]} ${negative.unit}: it cannot be below 0. Read again, or type it without the minus.`;
   const of = (key: string, wanted: Kind) => (kind === wanted ? (read[key] ?? null) : null);
   const { x, y, z } = read;
   return {
@@ -60,7 +69,7 @@ function Window({ step, id, text }: { step: RigStep | null; id: string; text: st
   const facts = useBook((b) => b.facts);
   const expected = facts && step && expectReading(facts, step, id);
   if (!expected) return <p className="window">The schedule gives no force for this here.</p>;
-  const value = readNumber(text);
+  const value = readEntry(text, "kN");
   const verdict = typeof value === "number" ? judgeReading(expected, value) : null;
   return (
     <p className="window" aria-live="polite">
@@ -111,13 +120,13 @@ export function ReadingEntry({ step }: { step: RigStep | null }) {
   const [fault, setFault] = useState("");
   const submit = (e: React.FormEvent) => {
     e.preventDefault();
-    const reading = readEntry(kind, texts, id, by.trim());
+    const reading = readReading(kind, texts, id, by.trim());
     if (typeof reading === "string") return setFault(reading);
     setFault("");
     act(addReading, { reading: { ...reading, step: step?.step ?? 0 } }, `reading of ${id}`);
     setTexts({ ...EMPTY, temperature: texts.temperature });
   };
-  const entry = (key: keyof typeof EMPTY, label: string, unit: string) => (
+  const entry = ({ key, label, unit }: Entry) => (
     <label key={key} className="large">
       <span>{label}</span>
       <input
@@ -143,8 +152,8 @@ export function ReadingEntry({ step }: { step: RigStep | null }) {
       <PlacePicker kind={kind} id={id} onPick={setId} />
       {kind === "force" && id !== "" && <Window step={step} id={id} text={texts.force} />}
       <div className="entries">
-        {ENTRIES[kind].map((e) => entry(e.key as keyof typeof EMPTY, e.label, e.unit))}
-        {entry("temperature", "Temperature", "°C")}
+        {ENTRIES[kind].map(entry)}
+        {entry(TEMPERATURE)}
         <label className="large">
           <span>Read by</span>
           <input autoComplete="off" value={by} onChange={(e) => setBy(e.target.value)} />

@@ -4,7 +4,7 @@ import { addSurveyed, moveSurveyed, type Surveyed, setClothCut } from "../../act
 import { ChoiceField, SwitchField } from "../../parts/Fields.tsx";
 import { Fold } from "../../parts/Fold.tsx";
 import { PointField } from "../../parts/PointField.tsx";
-import { readNumber } from "../../parts/readEntry.ts";
+import { readEntry, refuseEntry } from "../../parts/readEntry.ts";
 import { act } from "../../store/bookStore.ts";
 import { useBook } from "../../store/useBook.ts";
 
@@ -22,13 +22,20 @@ function useSurveyable(): { value: string; words: string }[] {
   ];
 }
 
+/** Why no place of an edge lies at a share of its length, %; null where one does. */
+function tellOff(share: number | undefined): string | null {
+  if (share === undefined || (share >= 0 && share <= 100)) return null;
+  return `${share} % is off the edge: 0 % is its one end, 100 % its other`;
+}
+
 function NewPoint() {
   const [what, setWhat] = useState("");
   const [along, setAlong] = useState("");
   const onEdge = what.startsWith("edge ");
   const name = what.slice(what.indexOf(" ") + 1);
-  const share = readNumber(along);
-  const ready = what !== "" && (!onEdge || (typeof share === "number" && share >= 0 && share <= 100));
+  const share = readEntry(along, "%");
+  const fault = share === null ? refuseEntry(along, "%") : tellOff(share);
+  const ready = what !== "" && (!onEdge || (share !== undefined && fault === null));
   return (
     <fieldset className="edge">
       <legend>One more surveyed point</legend>
@@ -44,6 +51,11 @@ function NewPoint() {
         <label className="field">
           Along the edge, % of its length{" "}
           <input inputMode="decimal" autoComplete="off" value={along} onChange={(e) => setAlong(e.target.value)} />
+          {fault !== null && (
+            <p className="fault" role="alert">
+              {fault}
+            </p>
+          )}
         </label>
       )}
       {ready && (

@@ -33,9 +33,15 @@ export function tellExpected({ planned, low, high, limit }: Expected): string {
 }
 
 /** What a reading says; null where it is held against nothing. */
-export function judgeReading({ low, high, limit }: Expected, kN: number): { fine: boolean; words: string } | null {
+export function judgeReading(
+  { planned, low, high, limit }: Expected,
+  kN: number,
+): { fine: boolean; words: string } | null {
   if (limit !== null && kN > limit)
     return { fine: false, words: `above the limit by ${figure(kN - limit, 1)} kN: stop, ease it, ask the engineer` };
+  // held against nothing else, a slip of the unit would pass unseen
+  if ((low === null || high === null) && planned > 0 && kN > 10 * planned)
+    return { fine: false, words: "more than ten times what is expected: read again, and give its unit (N, daN, kN)" };
   if (low === null || high === null) return null;
   if (kN < low) return { fine: false, words: `low by ${figure(low - kN, 1)} kN: do not go on, ask the engineer` };
   if (kN > high) return { fine: false, words: `high by ${figure(kN - high, 1)} kN: stop, ask the engineer` };
