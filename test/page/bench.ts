@@ -78,8 +78,9 @@ export async function buildPage(): Promise<string> {
   const done = join(out, `page-${hashSources()}`);
   if (existsSync(done)) return done;
   mkdirSync(out, { recursive: true });
+  // never that of these sources: another worker may have built it since, and be at work on it
   for (const old of readdirSync(out).filter((n) => n.startsWith("page-") && !n.endsWith(".part")))
-    rmSync(join(out, old), { recursive: true, force: true });
+    if (join(out, old) !== done) rmSync(join(out, old), { recursive: true, force: true });
   const part = `${done}-${process.pid}.part`;
   // as people get it: where this says "test" the view library is built with checks that take seconds over a large roof
   process.env.NODE_ENV = "production";
