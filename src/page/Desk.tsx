@@ -1,5 +1,5 @@
 // The desk before a job is open: drop a form, begin with a starter, go on with a job that is kept here.
-import { useEffect, useRef, useState } from "react";
+import { useEffect, useState } from "react";
 import { deleteJob, type KeptJob, listJobs } from "./keep/jobStore.ts";
 import { explainFault, openKept, openNew } from "./keep/keepBook.ts";
 import { openFiles, tryOpen } from "./keep/openBook.ts";
@@ -7,6 +7,7 @@ import { openStarter, STARTERS } from "./keep/starters.ts";
 import { showTime } from "./parts/clock.ts";
 import { FilePick } from "./parts/FilePick.tsx";
 import { keepTogether } from "./parts/figure.ts";
+import { useNextFocus } from "./parts/nextFocus.ts";
 
 /** The kept jobs. */
 export function JobList() {
@@ -15,14 +16,9 @@ export function JobList() {
   // a job that is deleted cannot come back: asked for twice
   const [sure, setSure] = useState<string | null>(null);
   // the button that was pressed goes with the question and with the answer: which one has the focus next
-  const next = useRef<string | null>(null);
-  const takeFocus = (name: string) => (element: HTMLElement | null) => {
-    if (element === null || next.current !== name) return;
-    next.current = null;
-    element.focus();
-  };
-  const turn = (id: string | null, focus: string) => {
-    next.current = focus;
+  const focus = useNextFocus();
+  const turn = (id: string | null, next: string) => {
+    focus.ask(next);
     setSure(id);
   };
   const read = () => {
@@ -40,7 +36,7 @@ export function JobList() {
     read();
   };
   return (
-    <ul className="jobs" ref={takeFocus("list")} tabIndex={-1}>
+    <ul className="jobs" ref={focus.at("list")} tabIndex={-1}>
       {jobs.map((j) => (
         <li key={j.id}>
           <button type="button" className="open" onClick={() => tryOpen(async () => void (await openKept(j.id)))}>
@@ -52,14 +48,14 @@ export function JobList() {
               <button type="button" aria-label={`Delete for good: ${j.title}`} onClick={() => remove(j.id)}>
                 Delete for good
               </button>
-              <button type="button" ref={takeFocus("keep")} onClick={() => turn(null, j.id)}>
+              <button type="button" ref={focus.at("keep")} onClick={() => turn(null, j.id)}>
                 Keep it
               </button>
             </span>
           ) : (
             <button
               type="button"
-              ref={takeFocus(j.id)}
+              ref={focus.at(j.id)}
               aria-label={`Delete ${j.title}`}
               onClick={() => turn(j.id, "keep")}
             >

@@ -1,7 +1,7 @@
 // Where the focus goes when what had it is taken away, and where it must not go.
 import type { Page } from "playwright-core";
 import { describe, expect, it } from "vitest";
-import { benchOfFile, clear, type Desk, LONG, openPlanned, SOON, turnTo } from "./bench.ts";
+import { benchOfFile, clear, type Desk, LONG, openPlanned, plannedAnew, SOON, turnTo } from "./bench.ts";
 import { smallFiles } from "./smallForm.ts";
 
 const bench = benchOfFile();
@@ -37,6 +37,28 @@ describe("the focus", { timeout: LONG }, () => {
     await page.getByRole("button", { name: /^Undo roll R\d removed/ }).waitFor();
     await expect.poll(() => removes(page).count(), SOON).toBeLessThan(2);
     await expect.poll(() => holder(page), SOON).toBe("decisions");
+    await clear(desk);
+  });
+
+  it("goes to the width of a roll that was added, all of it chosen, and to seams taken in hand", async () => {
+    const desk = await openPlanned(bench, smallFiles());
+    const { page, revision } = desk;
+    const widths = page.getByRole("textbox", { name: "Width over all" });
+    await turnTo(page, "Rolls");
+    await page.getByRole("button", { name: "Add a roll" }).click();
+    await expect.poll(() => widths.count(), SOON).toBe(2);
+    await page.keyboard.type("1700");
+    await page.keyboard.press("Enter");
+    await expect
+      .poll(() => widths.evaluateAll((all) => all.map((f) => (f as HTMLInputElement).value)), SOON)
+      .toEqual(["1500", "1700"]);
+    await plannedAnew(page, revision);
+    await turnTo(page, "Seams");
+    await page.getByRole("button", { name: "Take these seams in hand" }).click();
+    const begins = page.getByLabel(/^Begins on/).first();
+    await begins.waitFor();
+    await page.keyboard.press("Tab");
+    await expect.poll(() => begins.evaluate((field) => field === document.activeElement), SOON).toBe(true);
     await clear(desk);
   });
 

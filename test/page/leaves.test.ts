@@ -180,6 +180,19 @@ describe("leaves", { timeout: LONG }, () => {
     await expect.poll(() => figureOf("Taken off"), SOON).toBeLessThan(before);
   });
 
+  it("Rolls: what lies on no roll is told beside the cloth (bug: a roll too short looked like cloth saved)", async () => {
+    const { page } = desk;
+    const long = await fieldOf(page, "Length on the roll").inputValue();
+    await enter(page, "Length on the roll", "7");
+    revision = await plannedAnew(page, revision);
+    await page.getByText(/\d+ (piece lies|pieces lie) on no roll: why stands under/).waitFor();
+    await page.getByText(/^Last change: .*pieces on no roll 0 → [1-9]/).waitFor();
+    await enter(page, "Length on the roll", long);
+    revision = await plannedAnew(page, revision);
+    await page.getByText(/(piece lies|pieces lie) on no roll/).waitFor({ state: "detached" });
+    await page.getByText(/^Last change: .*pieces on no roll [1-9]\d* → 0/).waitFor();
+  });
+
   it("Rig: a form clamped all round says that it has no schedule; its limit is still decided here", async () => {
     const { page } = desk;
     await turnTo(page, "Rig");

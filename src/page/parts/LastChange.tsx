@@ -7,6 +7,7 @@ import { figure, keepTogether } from "./figure.ts";
 const FIGURES = [
   { key: "panels", what: "panels", unit: "", decimals: 0 },
   { key: "weld", what: "weld", unit: " m", decimals: 2 },
+  { key: "left", what: "pieces on no roll", unit: "", decimals: 0 },
   { key: "taken", what: "taken off the rolls", unit: " m", decimals: 2 },
   { key: "cloth", what: "cloth", unit: " m²", decimals: 1 },
   { key: "offcut", what: "offcut", unit: " m²", decimals: 1 },

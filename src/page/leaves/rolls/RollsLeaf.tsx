@@ -100,6 +100,12 @@ function Pieces({ roll }: { roll: NestedRoll }) {
   );
 }
 
+/** What the cloth told of is not enough for. */
+function tellLeft(left: number): string {
+  if (left === 0) return "";
+  return ` ${left} ${left === 1 ? "piece lies" : "pieces lie"} on no roll: why stands under “To look at”.`;
+}
+
 /** The leaf. */
 export function RollsLeaf() {
   const facts = useShownFacts("rolls");
@@ -115,7 +121,7 @@ export function RollsLeaf() {
       answer={
         rolls === undefined || total === null
           ? "Not worked out yet."
-          : `${figure(total.taken, 2)} m of cloth from ${rolls.length} ${rolls.length === 1 ? "roll" : "rolls"}, ${figure(total.cloth, 1)} m² in all; ${figure(total.offcut, 1)} m² of it is left over as offcut.`
+          : `${figure(total.taken, 2)} m of cloth from ${rolls.length} ${rolls.length === 1 ? "roll" : "rolls"}, ${figure(total.cloth, 1)} m² in all; ${figure(total.offcut, 1)} m² of it is left over as offcut.${tellLeft(total.left)}`
       }
       tools={
         rolls &&

@@ -3,6 +3,7 @@ import { addRoll } from "../../actions/rolls/addRoll.ts";
 import { removeRoll } from "../../actions/rolls/removeRoll.ts";
 import { setRoll } from "../../actions/rolls/setRoll.ts";
 import { ChoiceField, NumberField, TextField } from "../../parts/Fields.tsx";
+import { useNextFocus } from "../../parts/nextFocus.ts";
 import { act } from "../../store/bookStore.ts";
 import { useBook } from "../../store/useBook.ts";
 import { FlawDecisions } from "./FlawDecisions.tsx";
@@ -14,14 +15,14 @@ const FIGURES = [
   { key: "start", label: "Trimmed off at the start", unit: "mm", factor: 1 },
 ] as const;
 
-function Roll({ index }: { index: number }) {
+function Roll({ index, place }: { index: number; place: React.Ref<HTMLFieldSetElement> }) {
   const roll = useBook((b) => b.project?.job.rolls?.[index]);
   const read = useBook((b) => b.job?.rolls?.[index]);
   if (roll === undefined) return null;
   const name = roll.id ?? `R${index + 1}`;
   const path = `rolls[${index}]`;
   return (
-    <fieldset className="edge" data-path={path}>
+    <fieldset ref={place} className="edge" data-path={path}>
       <legend>{name}</legend>
       {FIGURES.map(({ key, label, unit, factor }) => (
         <NumberField
@@ -77,25 +78,26 @@ function Roll({ index }: { index: number }) {
 export function StockDecisions() {
   const rolls = useBook((b) => b.project?.job.rolls);
   const fabric = useBook((b) => b.job?.fabric);
+  // of a roll that was just added the width is what is asked next
+  const focus = useNextFocus();
+  const add = () => {
+    focus.ask(String(rolls?.length ?? 0));
+    act(addRoll, { width: fabric?.rollWidth ?? 3000, length: fabric?.rollLength ?? 50_000 }, "roll added");
+  };
   return (
     <div className="group" data-path="rolls">
       <h3>Rolls in store</h3>
       {rolls === undefined && (
         <p className="hint">
           None listed: as many as needed are taken, {fabric?.rollWidth ?? "–"} mm wide
-          {fabric ? `, of ${fabric.id}` : ""}.
+          {fabric ? `, of ${fabric.id}` : ""}. To take another width, add a roll and change it.
         </p>
       )}
       {rolls?.map((_, index) => (
         // biome-ignore lint/suspicious/noArrayIndexKey: a roll is known by its place in the job
-        <Roll key={index} index={index} />
+        <Roll key={index} index={index} place={focus.at(String(index))} />
       ))}
-      <button
-        type="button"
-        onClick={() =>
-          act(addRoll, { width: fabric?.rollWidth ?? 3000, length: fabric?.rollLength ?? 50_000 }, "roll added")
-        }
-      >
+      <button type="button" onClick={add}>
         Add a roll
       </button>
     </div>

@@ -7,6 +7,7 @@ import { moveSeamEnd } from "../../actions/seams/moveSeamEnd.ts";
 import { removeSeam } from "../../actions/seams/removeSeam.ts";
 import { takeSeams } from "../../actions/seams/takeSeams.ts";
 import { NumberField } from "../../parts/Fields.tsx";
+import { useNextFocus } from "../../parts/nextFocus.ts";
 import { act } from "../../store/bookStore.ts";
 import { findSeamEnds } from "../../store/seamEnds.ts";
 import { useBook } from "../../store/useBook.ts";
@@ -30,14 +31,18 @@ export function SeamEnds() {
   const facts = useBook((b) => b.facts);
   const pairs = useBook((b) => b.project?.job.seams?.pairs);
   const ready = useReady(pairs?.length ?? 0);
+  // the button goes with its act: Tab leads on to the first of the seams it gives
+  const focus = useNextFocus();
   if (pairs === undefined) {
     return (
       <button
         type="button"
         disabled={facts?.seams === undefined || facts.seams.length === 0}
-        onClick={() =>
-          facts && act(layPairs, { pairs: findSeamEnds(facts).map((e) => e.places) }, "seams taken in hand")
-        }
+        onClick={() => {
+          if (facts === null) return;
+          focus.ask("seams");
+          act(layPairs, { pairs: findSeamEnds(facts).map((e) => e.places) }, "seams taken in hand");
+        }}
       >
         Take these seams in hand
       </button>
@@ -45,7 +50,9 @@ export function SeamEnds() {
   }
   return (
     <div className="group" data-path="seams.pairs">
-      <h3>Seams by hand</h3>
+      <h3 ref={focus.at("seams")} tabIndex={-1}>
+        Seams by hand
+      </h3>
       {pairs.slice(0, ready).map((pair, i) => (
         // biome-ignore lint/suspicious/noArrayIndexKey: a pair has no name but its place
         <fieldset key={i} className="edge many">

@@ -78,7 +78,7 @@ export function SeamsLeaf() {
   const answer =
     seams === undefined
       ? "Not worked out yet."
-      : `${seams.length} seams, ${figure(total, 1)} m of weld, between ${panels?.length ?? layouts?.reduce((n, l) => n + l.panels.length, 0) ?? 0} panels.`;
+      : `${seams.length} ${seams.length === 1 ? "seam" : "seams"}, ${figure(total, 1)} m of weld, between ${panels?.length ?? layouts?.reduce((n, l) => n + l.panels.length, 0) ?? 0} panels.`;
   return (
     <LeafFrame
       leaf="seams"
