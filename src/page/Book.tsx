@@ -10,6 +10,7 @@ import { countFindings } from "./parts/FindingList.tsx";
 import { jumpTo, leafOfFinding, leafOfPath } from "./parts/jump.ts";
 import { turnTheme } from "./parts/keys.ts";
 import { PressButton } from "./parts/PressButton.tsx";
+import { placeOfFault } from "./parts/placeOfFault.ts";
 import { type Book as BookState, bookStore, LEAVES, type Leaf, redo, undo } from "./store/bookStore.ts";
 import { useBook } from "./store/useBook.ts";
 import { requestPlan, stopPlan } from "./worker/planner.ts";
@@ -165,8 +166,9 @@ function Head() {
 function Fault() {
   const fault = useBook((b) => b.fault);
   const first = useBook((b) => b.past.length === 0);
+  const job = useBook((b) => b.project?.job);
   if (fault === null) return null;
-  const place = fault.where.find((w) => leafOfPath(w) !== undefined);
+  const place = job && placeOfFault(fault, job);
   return (
     <div id="fault" className="banner grave" role="alert">
       <div>
@@ -176,17 +178,18 @@ function Fault() {
         ))}
         <p className="basis">{fault.code}</p>
       </div>
-      {place !== undefined && (
+      {place && (
         <button type="button" onClick={() => jumpTo(leafOfPath(place) ?? "form", place)}>
           Show me
         </button>
       )}
-      {first ? (
-        // nothing was changed here: what is wrong came with the files
+      {(first || /^(obj|mesh)-/.test(fault.code)) && (
+        // nothing was changed here, or nothing here changes it: what is wrong came with the files
         <button type="button" onClick={() => bookStore.setState({ sheet: "jobs" })}>
           Open another
         </button>
-      ) : (
+      )}
+      {!first && (
         <button type="button" onClick={undo}>
           Undo
         </button>

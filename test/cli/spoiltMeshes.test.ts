@@ -26,6 +26,7 @@ it.each<[name: string, code: string, place: RegExp, remedy: RegExp]>([
   expect(run.exit).toBe(2);
   expect(run.err).toMatch(place);
   expect(run.err).toMatch(remedy);
+  if (/^obj-|^mesh-(empty|no-faces)/.test(code)) expect(run.err).toContain(`${fixture(name)}: `);
   expect(run.err.trimEnd().endsWith(`(${code})`)).toBe(true);
   expect(existsSync(out)).toBe(false);
 });

@@ -5,7 +5,7 @@ import { createObjReader, type MeshParts } from "../form/reading/readObj.ts";
 import type { Catalogues } from "../job/catalogues.ts";
 import { readJob } from "../job/readJob.ts";
 import { measureRevision } from "../job/revision.ts";
-import type { Finding } from "../problem.ts";
+import { type Finding, PlanError } from "../problem.ts";
 import type { Job, MeshSource } from "../records/job.ts";
 import { notText } from "./meshText.ts";
 
@@ -35,7 +35,7 @@ export function readPlanInput(
   const loaded = "file" in read.mesh ? loadMesh(read.mesh.file) : null;
   const parts =
     "file" in read.mesh
-      ? readObjBytes(loaded?.bytes ?? new Uint8Array(0), loaded?.name ?? "")
+      ? readMeshFile(loaded?.bytes ?? new Uint8Array(0), loaded?.name ?? "")
       : readMeshJson(read.mesh.inline, "mesh");
   const { unit, up, outside } = read;
   return {
@@ -44,6 +44,16 @@ export function readPlanInput(
     revision: measureRevision(given.value, read.job, loaded?.bytes ?? new Uint8Array(0)),
     findings: [...given.findings, ...read.findings],
   };
+}
+
+/** What is wrong in a mesh names its file. */
+function readMeshFile(bytes: Uint8Array, name: string): MeshParts {
+  try {
+    return readObjBytes(bytes, name);
+  } catch (error) {
+    if (!(error instanceof PlanError) || error.code === "file-text") throw error;
+    throw new PlanError(error.code, `${name}: ${error.message}`, error.where, error.facts);
+  }
 }
 
 function readObjBytes(bytes: Uint8Array, name: string): MeshParts {

@@ -45,15 +45,28 @@ export function leafOfFinding(finding: Pick<Finding, "station" | "where">): Leaf
   return leafOfPath([finding.where].flat()[0] ?? "") ?? "form";
 }
 
+/** The paths from a place outwards, down to one thing of the job: edges.north.force, edges.north, but not all edges. */
+function listOutwards(where: string): string[] {
+  const outer = where.replace(/(\.[^.[]*|\[[^[]*)$/, "");
+  return /[.[]/.test(outer) ? [where, ...listOutwards(outer)] : [where];
+}
+
+/** The field of a path, or the first within it; where it has none, that of what it lies in. */
+function findField(where: string): HTMLElement | undefined {
+  const fields = [...document.querySelectorAll<HTMLElement>("[data-path]")];
+  for (const path of where === "" ? [] : listOutwards(where)) {
+    const field =
+      fields.find((f) => f.dataset.path === path) ?? fields.find((f) => f.dataset.path?.startsWith(`${path}.`));
+    if (field !== undefined) return field;
+  }
+  return undefined;
+}
+
 /** Opens the leaf, lights the thing, puts the cursor into its field where there is one, all of it chosen. */
 export function jumpTo(leaf: Leaf, where: string): void {
   bookStore.setState({ leaf, chosen: where === "" ? null : where, sheet: "none" });
   requestAnimationFrame(() => {
-    const fields = [...document.querySelectorAll<HTMLElement>("[data-path]")];
-    const field =
-      fields.find((f) => f.dataset.path === where) ??
-      fields.find((f) => where !== "" && f.dataset.path?.startsWith(`${where}.`));
-    const entry = field?.querySelector<HTMLElement>("input, select, button");
+    const entry = findField(where)?.querySelector<HTMLElement>("input, select, button");
     const goal = entry ?? document.querySelector<HTMLElement>("main h1");
     // what is folded away can take no focus
     for (let fold = goal?.closest("details"); fold; fold = fold.parentElement?.closest("details")) fold.open = true;

@@ -14,8 +14,9 @@ function Pins() {
       {!pins?.length && (
         <p className="hint">None. Drag a panel on the roll, or move it with the arrow keys, and it stays there.</p>
       )}
-      {pins?.map((p) => (
-        <p key={p.panel} className="row">
+      {pins?.map((p, i) => (
+        // biome-ignore lint/suspicious/noArrayIndexKey: a job may pin a panel twice, which is told as a fault
+        <p key={`${p.panel} ${i}`} className="row" data-path={`nest.pins[${i}]`}>
           {p.panel} on {p.roll} at {(p.x / 1000).toFixed(2)} m
           <button type="button" onClick={() => act(setPin, { panel: p.panel, place: null }, `${p.panel} let go`)}>
             Let go
