@@ -24,6 +24,12 @@ const CASES: Record<string, { call: string; least: number; run: (args: string[])
     run: async ([job, mesh]) =>
       (await import(new URL("./chunks/slideCase.js", import.meta.url).href)).benchSlide(job, mesh),
   },
+  turn: {
+    call: "turn JOB.json MESH.obj",
+    least: 2,
+    run: async ([job, mesh]) =>
+      (await import(new URL("./chunks/turnCase.js", import.meta.url).href)).benchTurn(job, mesh),
+  },
   first: {
     call: "first JOB.json MESH.obj",
     least: 2,

@@ -1,7 +1,7 @@
 // Layouts worked out side by side: one after another, stopped and gone on with, what was worked out stays. No browser: a worker that
 // answers only where the test does stands for long work.
 import { beforeAll, beforeEach, describe, expect, it, vi } from "vitest";
-import type { ComparedLayout } from "../../src/core/plan/compareLayouts.ts";
+import type { ComparedLayout } from "../../src/core/plan/measureLayout.ts";
 import type { LayoutRow } from "../../src/core/records/stripLayout.ts";
 import { bookStore, openProject } from "../../src/page/store/bookStore.ts";
 import type { Project } from "../../src/page/store/project.ts";

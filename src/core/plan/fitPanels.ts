@@ -10,9 +10,9 @@ import type { LayoutEstimate, LayoutRow } from "../records/stripLayout.ts";
 import { runSeams, type SeamOptions } from "../seams/runSeams.ts";
 import { findCount } from "./askedCount.ts";
 import { type ClothRoom, firstOptions, isTurned, measureExtent, measureRoom } from "./clothRoom.ts";
-import { joinRows, measureRows } from "./compareLayouts.ts";
 import { easeStress, measureStressExcess } from "./easeStress.ts";
 import type { Fitted, RunBoth } from "./fitted.ts";
+import { joinRows, measureRows } from "./measureLayout.ts";
 import { tellTooWide } from "./tellTooWide.ts";
 
 /** Layouts tried for the sake of the width before the best one stands. */

@@ -1,6 +1,7 @@
 // A seam's end in hand: what the store knows of it while it is slid along its edge.
-import type { ComparedLayout } from "../../core/plan/compareLayouts.ts";
+
 import type { Grip, SeenPanel } from "../../core/plan/dragSeam.ts";
+import type { ComparedLayout } from "../../core/plan/measureLayout.ts";
 import type { FactsSeam } from "../../core/records/facts.ts";
 import type { SeamDecision } from "../../core/records/job.ts";
 import type { SeamPlaces } from "../worker/messages.ts";

@@ -1,6 +1,6 @@
 // The worker that redraws a dragged seam's panels, whatever the plan's worker does meanwhile, and ties the roof again. Roofs come to
 // it from there by a port of its own, so that they never pass through the page.
-import { measureLayout } from "../../core/plan/compareLayouts.ts";
+
 import {
   dragSeamInPlace,
   type Grip,
@@ -12,6 +12,7 @@ import {
   seeRoof,
   tieRoof,
 } from "../../core/plan/dragSeam.ts";
+import { measureLayout } from "../../core/plan/measureLayout.ts";
 import { PlanError } from "../../core/problem.ts";
 import { describeFault } from "./describeFault.ts";
 import type { DragReply, DragRequest, SentRoof } from "./messages.ts";

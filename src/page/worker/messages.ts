@@ -1,8 +1,8 @@
 // What the page and its worker say to each other. Types only.
 import type { PaperChoice } from "../../core/papers/choosePapers.ts";
-import type { ComparedLayout } from "../../core/plan/compareLayouts.ts";
 import type { CorrectedPlan } from "../../core/plan/correctPlan.ts";
 import type { Grip, MadeRoof, SeenPanel } from "../../core/plan/dragSeam.ts";
+import type { ComparedLayout } from "../../core/plan/measureLayout.ts";
 import type { KeptRound } from "../../core/plan/partLog.ts";
 import type { Finding, Station } from "../../core/problem.ts";
 import type { Facts, FactsSeam } from "../../core/records/facts.ts";

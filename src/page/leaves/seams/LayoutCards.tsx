@@ -1,5 +1,5 @@
 // Layouts side by side: each in miniature with its figures; one click takes one and writes down why.
-import type { ComparedLayout } from "../../../core/plan/compareLayouts.ts";
+import type { ComparedLayout } from "../../../core/plan/measureLayout.ts";
 import type { FactsForm } from "../../../core/records/facts.ts";
 import type { SeamDecision } from "../../../core/records/job.ts";
 import { takeLayout } from "../../actions/seams/takeLayout.ts";

@@ -1,9 +1,9 @@
 // The table of layouts: what is measured is what was cut, estimates come near it, refusals are told.
 import { expect, test } from "vitest";
 import { measureExtent } from "../../src/core/plan/clothRoom.ts";
-import { compareLayouts } from "../../src/core/plan/compareLayouts.ts";
 import { fitPanels } from "../../src/core/plan/fitPanels.ts";
 import { listAsks } from "../../src/core/plan/listAsks.ts";
+import { measureLayout } from "../../src/core/plan/measureLayout.ts";
 import { runSeams } from "../../src/core/seams/runSeams.ts";
 import { makeForm, makeGrid, makeJob, makeTent } from "../seams/madeForms.ts";
 
@@ -42,7 +42,7 @@ test("the estimate of the stress error is on the safe side of what flattening me
       );
       const job = makeJob({ count });
       const [told] = runSeams(form, job, { usableWidth: 5, maxLength: null }).output.compared ?? [];
-      const [{ rows }] = compareLayouts(form, job, [{}]);
+      const { rows } = measureLayout(form, job, {});
       expect(rows[0].strips).toBe(told.strips);
       expect(told.stressError / rows[0].stressError).toBeGreaterThan(0.9);
       expect(told.stressError / rows[0].stressError).toBeLessThan(2);
@@ -51,12 +51,11 @@ test("the estimate of the stress error is on the safe side of what flattening me
 
 test("layouts asked for are each cut and flattened; narrower strips err less and take more seam", () => {
   const form = saddle();
-  const table = compareLayouts(form, makeJob(), [
-    { layout: "bands", from: "E1", to: "E3", count: 6 },
-    { layout: "bands", from: "E1", to: "E3", count: 9 },
-    { layout: "bands", from: "nowhere", to: "E3" },
-  ]);
-  const [six, nine, none] = table;
+  const [six, nine, none] = [
+    { from: "E1", to: "E3", count: 6 },
+    { from: "E1", to: "E3", count: 9 },
+    { from: "nowhere", to: "E3" },
+  ].map((asked) => measureLayout(form, makeJob(), { layout: "bands", ...asked }));
   expect(six.rows[0]).toMatchObject({ from: "E1", to: "E3", strips: 6, measured: true });
   expect(nine.rows[0].strips).toBe(9);
   expect(nine.rows[0].stressError).toBeLessThan(six.rows[0].stressError);
@@ -81,7 +80,7 @@ test("what is worth comparing: the plan's own choice, the other ways, one strip 
   expect(asks.map((a) => a.count)).toContain(rows[0].strips + 1);
   expect(asks.map((a) => a.count)).toContain(rows[0].strips - 1);
   expect(new Set(asks.map((a) => JSON.stringify(a))).size).toBe(asks.length);
-  for (const { asked, rows: own, lines, refused } of compareLayouts(form, job, asks)) {
+  for (const { asked, rows: own, lines, refused } of asks.map((one) => measureLayout(form, job, one))) {
     expect(refused).toBeNull();
     if (typeof asked.count === "number") expect(own[0].strips).toBe(asked.count);
     if (asked.from) expect([own[0].from, own[0].to].sort()).toEqual([asked.from, asked.to].sort());
