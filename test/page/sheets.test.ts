@@ -25,6 +25,22 @@ const FAIL_PICTURE = `
   let made = 0;
   HTMLCanvasElement.prototype.toBlob = function (...given) { made++ === 1 ? given[0](null) : toBlob.apply(this, given); };`;
 
+/** What the worker of the first paper says is heard only once `window.release` is called: it opens after the next one. */
+const LATE_FIRST = `
+  const Own = Worker;
+  let waiting = null;
+  window.release = () => { const all = waiting; waiting = []; waiting.push = (then) => then(); for (const then of all) then(); };
+  window.Worker = class extends Own {
+    constructor(url, options) {
+      super(url, options);
+      if (options.name !== "seamstay-sheets" || waiting !== null) return;
+      waiting = [];
+      const { addEventListener } = this;
+      this.addEventListener = (kind, then, ...more) =>
+        addEventListener.call(this, kind, kind === "message" ? (event) => waiting.push(() => then(event)) : then, ...more);
+    }
+  };`;
+
 /** Whether the page takes Ctrl P for itself, pressed in a field or beside all fields. */
 function takesPrint(page: Page, inField: boolean): Promise<boolean> {
   return page.evaluate((inField) => {
@@ -110,6 +126,27 @@ describe("a PDF on the page", { timeout: LONG }, () => {
       await clear(desk);
     },
   );
+
+  it("a paper chosen while another still opens is shown whole, however late that one comes", async () => {
+    const desk = await openPlanned(bench, sailFiles());
+    const { page } = desk;
+    await page.evaluate(HOLD_PRINT);
+    await page.evaluate(LATE_FIRST);
+    await turnTo(page, "Papers");
+    await expect.poll(() => held(page), SOON).toMatchObject({ workers: 1 });
+    await page.getByRole("button", { name: "cables.pdf", exact: true }).click();
+    await page.getByText(/^Sheet 1 of [2-9]/).waitFor();
+    await page.evaluate("window.release()");
+    // the late one is put away
+    await expect.poll(() => held(page), SOON).toMatchObject({ workers: 1 });
+    const place = page.getByRole("group", { name: "Paper cables.pdf" });
+    await place.press("PageDown");
+    await place.locator("summary").click();
+    await expect.poll(() => place.locator("pre").innerText(), SOON).toMatch(/Kiosk sail .* 2 of [2-9]/);
+    await place.press("End");
+    await expect.poll(() => place.locator("pre").innerText(), SOON).toMatch(/Kiosk sail .* ([2-9]) of \1/);
+    await clear(desk);
+  });
 
   it("what cannot be made ready is said, and nothing of it stays", async () => {
     const desk = await openPlanned(bench, sailFiles());
