@@ -60,9 +60,9 @@ describe("by keyboard alone", { timeout: LONG }, () => {
     await expect.poll(place, SOON).not.toBe(before);
     await leaf(page, 3);
     await pressed(/^Panel P2/)(page);
-    await page.locator("g.panel[aria-pressed=true]").waitFor();
+    await page.locator("g.panel > [aria-pressed=true]").waitFor();
     await page.keyboard.press("Escape");
-    await page.locator("g.panel[aria-pressed=true]").waitFor({ state: "detached" });
+    await page.locator("g.panel > [aria-pressed=true]").waitFor({ state: "detached" });
   });
 
   it("rig: the steps are gone through, an adjuster is chosen", async () => {

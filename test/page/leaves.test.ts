@@ -140,12 +140,12 @@ describe("leaves", { timeout: LONG }, () => {
   it("what is pointed at lights up in table and drawing alike", async () => {
     const { page } = desk;
     await page.getByRole("table", { name: "Panels" }).getByRole("row", { name: /^P2/ }).hover();
-    await page.locator("g.panel.lit[aria-label^='Panel P2']").waitFor();
+    await page.locator("g.panel.lit > [aria-label^='Panel P2']").waitFor();
     await page.locator("g.panel").filter({ hasText: "P3" }).locator("path.cut").hover({ force: true });
     await page.getByRole("table", { name: "Panels" }).locator("tr.lit", { hasText: "P3" }).waitFor();
     // and with the focus in it, for those who have no pointer
     await page.getByRole("table", { name: "Panels" }).getByRole("button", { name: "P1", exact: true }).focus();
-    await page.locator("g.panel.lit[aria-label^='Panel P1']").waitFor();
+    await page.locator("g.panel.lit > [aria-label^='Panel P1']").waitFor();
     await turnTo(page, "Rolls");
     await page.locator("g.placed", { hasText: "P3" }).first().hover({ force: true });
     await page.locator("g.placed.lit", { hasText: "P3" }).first().waitFor();

@@ -85,7 +85,7 @@ function Drawing({ panels }: { panels: readonly SeenPanel[] }) {
         const b = boxes[i];
         return (
           <g key={p.id} className="panel" transform={`translate(${GAP - b.x} ${top + b.h + b.y})`}>
-            <PanelDrawing panel={p} size={size} detail={false} />
+            <PanelDrawing panel={p} detail={false} />
             <PanelName id={p.id} at={namePlace(p.cut).at} height={1.5 * size} />
           </g>
         );

@@ -29,8 +29,8 @@ function sideLine(panel: SeenPanel, side: SeenPanel["sides"][number]): Vec2[] {
   return out;
 }
 
-/** One panel in its own axes, mm, y up. `detail`: with marks and names of sides. */
-export function PanelDrawing({ panel, size, detail }: { panel: SeenPanel; size: number; detail: boolean }) {
+/** One panel in its own axes, mm, y up. `detail`: with marks. */
+export function PanelDrawing({ panel, detail }: { panel: SeenPanel; detail: boolean }) {
   const pointed = useBook((b) => b.pointed);
   return (
     <>
@@ -53,17 +53,20 @@ export function PanelDrawing({ panel, size, detail }: { panel: SeenPanel; size: 
         )}
       {/* once more on top: without an allowance the net line would lie over it */}
       <path className="cutline" d={path(panel.cut, true)} />
-      {detail &&
-        panel.sides.map((side) => {
-          const [x, y] = middle(sideLine(panel, side));
-          return (
-            <text key={`${side.id} ${side.netFrom}`} x={x} y={-y} fontSize={size * 0.8} className="side-name">
-              {side.id}
-            </text>
-          );
-        })}
     </>
   );
+}
+
+/** Names of the sides, beside the panel: words in a button would have to be said with its own name. */
+function SideNames({ panel, size }: { panel: SeenPanel; size: number }) {
+  return panel.sides.map((side) => {
+    const [x, y] = middle(sideLine(panel, side));
+    return (
+      <text key={`${side.id} ${side.netFrom}`} x={x} y={-y} fontSize={size * 0.8} className="side-name">
+        {side.id}
+      </text>
+    );
+  });
 }
 
 /** The name of a panel, its middle at a place of the panel's own axes. */
@@ -107,18 +110,22 @@ export function PanelSheet({ panels, alone }: { panels: readonly FactsPanel[]; a
       {shown.map((p, i) => (
         <g
           key={p.id}
-          role="button"
-          tabIndex={0}
-          aria-label={`Panel ${p.id}, ${(p.size.length / 1000).toFixed(2)} by ${(p.size.width / 1000).toFixed(2)} metres`}
-          aria-pressed={alone === p.id}
           className={p.id === pointed && alone === null ? "panel lit" : "panel"}
           transform={`translate(${at[i].x - boxes[i].x} ${at[i].y + boxes[i].h + boxes[i].y})`}
-          onClick={() => bookStore.setState({ chosen: alone === p.id ? null : p.id })}
-          onKeyDown={pressed(() => bookStore.setState({ chosen: alone === p.id ? null : p.id }))}
-          {...pointing(p.id)}
         >
-          <PanelDrawing panel={p} size={size} detail={alone !== null} />
-          <PanelName id={p.id} at={nameAt(p)} height={letter} />
+          <g
+            role="button"
+            tabIndex={0}
+            aria-label={`Panel ${p.id}, ${(p.size.length / 1000).toFixed(2)} by ${(p.size.width / 1000).toFixed(2)} metres`}
+            aria-pressed={alone === p.id}
+            onClick={() => bookStore.setState({ chosen: alone === p.id ? null : p.id })}
+            onKeyDown={pressed(() => bookStore.setState({ chosen: alone === p.id ? null : p.id }))}
+            {...pointing(p.id)}
+          >
+            <PanelDrawing panel={p} detail={alone !== null} />
+            <PanelName id={p.id} at={nameAt(p)} height={letter} />
+          </g>
+          {alone !== null && <SideNames panel={p} size={size} />}
         </g>
       ))}
     </svg>
