@@ -11,7 +11,8 @@ export interface FewerStrips {
   strips: number;
   /**
    * Width of the widest of the fewer, with allowances, mm: about. On the three starters and four meshes of differing shape it was
-   * 1 % less to 2 % more than the widest panel of a layout that was cut and flattened; strips of unlike width err by more.
+   * 1 % less to 2 % more than the widest panel of a layout that was cut and flattened; strips of unlike width err by more. The boat
+   * shed is told 4.06 m of roll and takes two strips from between 4.08 and 4.12 m.
    */
   widest: number;
   /** Width of roll that takes them, selvedges of the narrowest roll counted in, mm: about. */

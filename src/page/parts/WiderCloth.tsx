@@ -14,7 +14,7 @@ function tell(one: FewerStrips, room: number, asked: boolean): string {
   if (one.limit === null)
     return `Wider rolls alone would not make the ${strips(one.strips)} fewer: ${one.strips - 1}, ${width}, would lie on the ${figure(room, 2)} m there are${asked ? ", but so many are asked for" : "; it is not the width that asks for so many"}.`;
   const head = `${strips(one.strips - 1)} in place of ${one.strips} would be ${width}: from rolls of about ${figure(one.roll / 1000, 2)} m on`;
-  return `${head}${one.limit === "asked" ? ", and with the widest strip that is asked for set so wide" : ""}. What cloth that takes is known once it is planned.`;
+  return `${head}${one.limit === "asked" ? ", and with the widest strip that is asked for set so wide" : ""}. It may take 3 % more: that, and how much cloth, is known once it is planned.`;
 }
 
 /** One or two sentences; nothing where no strip can be spared, or the seams were given one by one. */
