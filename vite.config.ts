@@ -1,4 +1,3 @@
-import { availableParallelism } from "node:os";
 import { defineConfig } from "vite";
 
 // One build: the command line and the bench as plain Node files. Packages stay in node_modules.
@@ -28,8 +27,6 @@ export default defineConfig({
     include: ["test/**/*.test.ts"],
     testTimeout: 300_000,
     hookTimeout: 300_000,
-    // Left to itself the runner keeps one core back: of two, half of the machine. The longest files, roughly those with most to do, begin.
-    maxWorkers: Math.max(2, availableParallelism() - 1),
     // A wait of the browser tests that ran out is tried once more, and told in the report; a wrong result never is.
     retry: { count: 1, condition: /TimeoutError|Timeout \d+ms exceeded/ },
     reporters: ["default", ["json", { outputFile: "out/test-results.json" }]],
