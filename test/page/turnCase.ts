@@ -48,8 +48,10 @@ export async function benchTurn(jobPath: string, meshPath: string) {
     const canvas = page.locator("canvas");
     await canvas.and(page.locator("[data-detail=all]")).waitFor();
     const stop = page.locator(".state").getByRole("button", { name: "Stop", exact: true });
-    if (await stop.isVisible()) await stop.click();
-    await page.getByText(/^(Stopped$|Planned, revision)/).waitFor();
+    const ended = page.getByText(/^(Stopped$|Planned, revision)/);
+    await stop.or(ended).first().waitFor();
+    if (!(await ended.isVisible())) await stop.click();
+    await ended.waitFor();
     await page.waitForTimeout(3000);
     const box = await canvas.boundingBox();
     if (box === null) throw new Error("no canvas");

@@ -1,5 +1,4 @@
 // A seam's end in hand: what the store knows of it while it is slid along its edge.
-
 import type { Grip, SeenPanel } from "../../core/plan/dragSeam.ts";
 import type { ComparedLayout } from "../../core/plan/measureLayout.ts";
 import type { FactsSeam } from "../../core/records/facts.ts";

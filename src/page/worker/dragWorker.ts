@@ -1,6 +1,5 @@
 // The worker that redraws a dragged seam's panels, whatever the plan's worker does meanwhile, and ties the roof again. Roofs come to
 // it from there by a port of its own, so that they never pass through the page.
-
 import {
   dragSeamInPlace,
   type Grip,
