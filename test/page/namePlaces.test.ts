@@ -1,9 +1,13 @@
-// Where names stand: within the cloth on the flat views, clear of grips and of each other over the surface; round numbers on axes.
+// Where names stand: within the cloth on the flat views, clear of grips, of each other and of the sides over the surface; names too long
+// for their place; lines of a chart that bear several; rows of a roll; round numbers on axes.
 import { describe, expect, it } from "vitest";
 import type { Vec2 } from "../../src/core/records/facts.ts";
 import { axisSteps } from "../../src/page/flat/axisSteps.ts";
+import { joinTraces } from "../../src/page/flat/joinTraces.ts";
 import { namePlace } from "../../src/page/flat/namePlace.ts";
+import { rollRows } from "../../src/page/flat/rollRows.ts";
 import { keepTogether } from "../../src/page/parts/figure.ts";
+import { shortName } from "../../src/page/parts/shortName.ts";
 import { findPlaces } from "../../src/page/solid/placeNames.ts";
 
 /** A panel along a hollow edge: a strip of 12 by 2.6 m whose upper side hangs down by 1.6 m in the middle. */
@@ -73,6 +77,56 @@ describe("names over the surface", () => {
   it("a name nothing is in the way of stands at its place; under a grip it gives way up", () => {
     expect(findPlaces([{ id: "A1", x: 50, y: 60 }], [])).toEqual([{ x: 50, y: 60 }]);
     expect(findPlaces([{ id: "A1", x: 50, y: 60 }], [{ x: 50, y: 60 }])).toEqual([{ x: 50, y: 40 }]);
+  });
+});
+
+describe("names too long for their place", () => {
+  it("one that would be cut off at a side of the drawing is held in it; one turned out of sight is not brought back", () => {
+    const id = "corner-north-west-by-the-";
+    const half = 3.6 * id.length + 5;
+    expect(findPlaces([{ id, x: 20, y: 60 }], [], 400)).toEqual([{ x: half, y: 60 }]);
+    expect(findPlaces([{ id, x: 390, y: 60 }], [], 400)).toEqual([{ x: 400 - half, y: 60 }]);
+    expect(findPlaces([{ id, x: 200, y: 60 }], [], 400)).toEqual([{ x: 200, y: 60 }]);
+    expect(findPlaces([{ id, x: -30, y: 60 }], [], 400)).toEqual([{ x: -30, y: 60 }]);
+  });
+
+  it("beginning and end stay, letters made of several signs whole", () => {
+    expect(shortName("corner-ne", 9)).toBe("corner-ne");
+    expect(shortName("T4-north-west-turnbuckle-60", 11)).toBe("T4-no…le-60");
+    expect(shortName("T4-north-west-turnbuckle-61", 10)).toBe("T4-no…e-61");
+    // e with a combining acute accent is one letter
+    expect(shortName("e\u0301e\u0301e\u0301e\u0301", 4)).toBe("e\u0301e\u0301e\u0301e\u0301");
+    expect(shortName("e\u0301e\u0301e\u0301e\u0301e\u0301", 4)).toBe("e\u0301e\u0301…e\u0301");
+  });
+});
+
+describe("lines of a chart", () => {
+  it("those nowhere further apart than a line is thick are one; one that leaves another at a single step is not", () => {
+    const lines = [
+      { id: "T1", ys: [10, 20, 30] },
+      { id: "T2", ys: [10, 40, 30] },
+      { id: "T3", ys: [11, 21, 31] },
+      { id: "T4", ys: [10, 20, 33] },
+    ];
+    expect(joinTraces(lines)).toEqual([
+      { ids: ["T1", "T3"], ys: [10, 20, 30] },
+      { ids: ["T2"], ys: [10, 40, 30] },
+      { ids: ["T4"], ys: [10, 20, 33] },
+    ]);
+  });
+});
+
+describe("rows of a roll", () => {
+  it.each([
+    ["a broad roll", 48_000, 2500],
+    ["1.9 km of a narrow one", 1_880_000, 420],
+  ])("%s: they follow each other without a gap, and the cloth is more than a line", (_, used, width) => {
+    const rows = rollRows(used, width, 0.75);
+    expect(rows.map((r) => r.from)).toEqual([0, ...rows.slice(0, -1).map((r) => r.to)]);
+    expect(rows[0].to * rows.length).toBeGreaterThanOrEqual(used);
+    // on a stage 800 px wide and 600 high
+    const scale = Math.min(800 / rows[0].to, 600 / (rows.length * 1.3 * width));
+    expect(width * scale).toBeGreaterThan(6);
   });
 });
 

@@ -195,7 +195,10 @@ describe("a sail in the page", { timeout: LONG }, () => {
     expect(await strip.innerText()).not.toContain("50 %");
     await page.getByRole("button", { name: "Step on ▸" }).click();
     await page.getByText("Step 1, stage 40 %").waitFor();
-    await page.locator(".chart .trace").nth(3).waitFor();
+    // each adjuster once in the key, whose lines are those of the chart
+    const key = page.locator(".dashkey li");
+    await expect.poll(() => key.locator("span").allInnerTexts(), SOON).toHaveLength(4);
+    expect(await page.locator("svg.chart .trace").count()).toBe(await key.count());
   });
 
   it("Site: a reading is held against the window of its step, and corrections come of it", async () => {

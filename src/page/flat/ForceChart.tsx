@@ -1,17 +1,24 @@
-// Forces through the sequence: a line for each adjuster, its limit dashed, told apart by dash and name, not by colour alone.
+// Forces through the sequence: a line for each adjuster, or for those that pull alike, its limit dashed, told apart by dash, mark and
+// name, not by colour alone.
 import type { Facts } from "../../core/records/facts.ts";
 import { figure } from "../parts/figure.ts";
 import { pointing } from "../parts/pointing.ts";
+import { shortName } from "../parts/shortName.ts";
 import { useBook } from "../store/useBook.ts";
 import { axisSteps } from "./axisSteps.ts";
+import { joinTraces, type Trace } from "./joinTraces.ts";
 import type { RigStep } from "./rigSteps.ts";
 
 const DASHES = ["", "6 3", "2 3", "9 3 2 3", "12 4", "4 2"];
+/** Marks at the steps of the lines that come after all dashes are used, around 0, 0. */
+const MARKS = ["", "M-3,-3H3V3H-3Z", "M0,-4L4,3H-4Z", "M0,-4L4,0L0,4L-4,0Z"];
 const W = 640;
 const H = 190;
 const LEFT = 44;
 const BOTTOM = 26;
 const RIGHT = 96;
+/** Letters of a name that find room beside the chart, with a word more. */
+const NAME = 10;
 /** Ends nearer than a line of text carry one name together. */
 const LINE = 11;
 
@@ -28,9 +35,10 @@ function nameEnds(
   }
   return groups.map(({ y, ids }) => {
     const one = ids.find(lit);
-    const all = ids.sort((a, b) => a.localeCompare(b, "en", { numeric: true })).join(", ");
-    if (one !== undefined && ids.length > 1) return { y, words: `${one}, …` };
-    return { y, words: all.length <= 14 ? all : `${ids[0]} and ${ids.length - 1} more` };
+    const names = ids.sort((a, b) => a.localeCompare(b, "en", { numeric: true })).map((id) => shortName(id, NAME));
+    const all = names.join(", ");
+    if (one !== undefined && ids.length > 1) return { y, words: `${shortName(one, NAME)}, …` };
+    return { y, words: ids.length === 1 || all.length <= 14 ? all : `${names[0]} and ${ids.length - 1} more` };
   });
 }
 
@@ -44,16 +52,40 @@ function groupLimits(adjusters: readonly { id: string; capacity: number | null }
   return [...groups].sort(([a], [b]) => a - b).map(([kN, ids]) => ({ kN, ids }));
 }
 
-/** Which dash is whose. */
-function DashKey({ ids, lit }: { ids: readonly string[]; lit: (id: string) => boolean }) {
+/** The k-th line through its places in the drawing. */
+function Line({ k, places }: { k: number; places: readonly (readonly [number, number])[] }) {
+  const mark = MARKS[Math.floor(k / DASHES.length) % MARKS.length];
+  return (
+    <>
+      <polyline strokeDasharray={DASHES[k % DASHES.length]} points={places.map((p) => p.join(",")).join(" ")} />
+      {mark !== "" && places.map(([x, y]) => <path key={x} d={mark} transform={`translate(${x} ${y})`} />)}
+    </>
+  );
+}
+
+/** Which line is whose. */
+function LineKey({ traces, lit }: { traces: readonly Trace[]; lit: (id: string) => boolean }) {
   return (
     <ul className="dashkey" aria-label="Lines of the chart">
-      {ids.map((id, k) => (
-        <li key={id} className={lit(id) ? "trace lit" : "trace"} {...pointing(id)}>
+      {traces.map(({ ids }, k) => (
+        <li key={ids[0]} className={ids.some(lit) ? "trace lit" : "trace"}>
           <svg viewBox="0 0 40 8" aria-hidden="true">
-            <polyline strokeDasharray={DASHES[k % DASHES.length]} points="0,4 40,4" />
+            <Line
+              k={k}
+              places={[
+                [0, 4],
+                [20, 4],
+                [40, 4],
+              ]}
+            />
           </svg>
-          {id}
+          {ids.map((id, i) => (
+            <span key={id} {...pointing(id)}>
+              {i > 0 && ", "}
+              {id}
+            </span>
+          ))}
+          {ids.length > 1 && " alike"}
         </li>
       ))}
     </ul>
@@ -73,9 +105,12 @@ export function ForceChart({ facts, steps, at }: { facts: Facts; steps: readonly
   const x = (i: number) => LEFT + ((W - LEFT - RIGHT) * i) / Math.max(steps.length, 1);
   const y = (kN: number) => 8 + (H - BOTTOM - 8) * (1 - kN / top);
   const lit = (id: string) => id === pointed || id === chosen;
+  const traces = joinTraces(adjusters.map(({ id }) => ({ id, ys: steps.map((s) => y(s.forces[id] ?? 0)) })));
+  // what is pointed at lies on top
+  const drawn = traces.map((trace, k) => ({ ...trace, k, lit: trace.ids.some(lit) })).sort((a, b) => +a.lit - +b.lit);
   return (
     <>
-      <DashKey ids={adjusters.map((a) => a.id)} lit={lit} />
+      <LineKey traces={traces} lit={lit} />
       <svg
         className="chart"
         viewBox={`0 0 ${W} ${H}`}
@@ -110,12 +145,9 @@ export function ForceChart({ facts, steps, at }: { facts: Facts; steps: readonly
             </text>
           </g>
         ))}
-        {adjusters.map((a, k) => (
-          <g key={a.id} className={lit(a.id) ? "trace lit" : "trace"}>
-            <polyline
-              strokeDasharray={DASHES[k % DASHES.length]}
-              points={[`${x(0)},${y(0)}`, ...steps.map((s, i) => `${x(i + 1)},${y(s.forces[a.id] ?? 0)}`)].join(" ")}
-            />
+        {drawn.map((trace) => (
+          <g key={trace.ids[0]} className={trace.lit ? "trace lit" : "trace"}>
+            <Line k={trace.k} places={[[x(0), y(0)], ...trace.ys.map((at, i) => [x(i + 1), at] as const)]} />
           </g>
         ))}
         {nameEnds(

@@ -4,9 +4,14 @@ import type { FactsRig } from "../../core/records/rig.ts";
 import { figure } from "../parts/figure.ts";
 import { pointing } from "../parts/pointing.ts";
 import { pressed } from "../parts/pressed.ts";
+import { shortName } from "../parts/shortName.ts";
 import { bookStore } from "../store/bookStore.ts";
 import { useBook } from "../store/useBook.ts";
 import type { RigStep } from "./rigSteps.ts";
+
+/** Letters of a name that find room beside a pin, and how wide one is for its height. */
+const NAME = 18;
+const LETTER = 0.62;
 
 function boundsOf(form: FactsForm, rig: FactsRig): { x: number; y: number; w: number; h: number; size: number } {
   const points = [...form.vertices, ...rig.nodes];
@@ -73,9 +78,12 @@ export function RigPlan({
         const d = [out[0] - middle[0], out[1] - middle[1]];
         const l = Math.hypot(...d) || 1;
         const force = step?.forces[a.id];
+        const words = force === undefined ? "not pulled yet" : `${figure(force, 1)} kN`;
+        const name = shortName(a.id, NAME);
+        const half = Math.min(((LETTER * 1.15 * name.length) / 2) * size, w / 2 + pad);
         // two lines: below a lower corner, above an upper one, so that neither lies on the pin
         const [left, top] = [
-          out[0] + (d[0] / l) * 3.2 * size,
+          Math.min(Math.max(out[0] + (d[0] / l) * 3.2 * size, x - pad + half), x + w + pad - half),
           -(out[1] + (d[1] / l) * 2 * size) - (d[1] > 0 ? 1.25 * size : 0),
         ];
         return (
@@ -84,7 +92,7 @@ export function RigPlan({
             role="button"
             tabIndex={0}
             className={`adjuster${moving.has(a.id) ? " moving" : ""}${lit(a.id) ? " lit" : ""}`}
-            aria-label={`${a.id} ${force === undefined ? "not pulled yet" : `${figure(force, 1)} kN`}, adjuster${moving.has(a.id) ? " that moves in this step" : ""}`}
+            aria-label={`${name} ${words}, ${name === a.id ? "" : `${a.id}, `}adjuster${moving.has(a.id) ? " that moves in this step" : ""}`}
             onClick={() => bookStore.setState({ chosen: a.id })}
             onKeyDown={pressed(() => bookStore.setState({ chosen: a.id }))}
             {...pointing(a.id)}
@@ -92,10 +100,10 @@ export function RigPlan({
             <polyline points={line([p, q])} />
             <circle cx={out[0]} cy={-out[1]} r={0.45 * size} />
             <text x={left} y={top} fontSize={1.15 * size}>
-              {a.id}
+              {name}
             </text>{" "}
             <text className="force" x={left} y={top + 1.25 * size} fontSize={size}>
-              {force === undefined ? "not pulled yet" : `${figure(force, 1)} kN`}
+              {words}
             </text>
           </g>
         );

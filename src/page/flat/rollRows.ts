@@ -6,12 +6,15 @@ export interface RollRow {
   to: number;
 }
 
+/** A kilometre of the narrowest tape still shows as more than a line. */
+const MOST = 80;
+
 /** Rows that show `used` mm of roll so that they fill a stage of the given shape (height over width) best. */
 export function rollRows(used: number, width: number, shape: number): RollRow[] {
   const length = Math.max(used, width);
   let best = 1;
   let scale = 0;
-  for (let n = 1; n <= 12; n++) {
+  for (let n = 1; n <= MOST; n++) {
     const row = length / n;
     const fit = Math.min(1 / row, shape / (n * width * 1.3));
     if (fit > scale * 1.001) {

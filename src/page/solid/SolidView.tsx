@@ -9,7 +9,7 @@ import { buildModel, isOfPoints, type Model, nameModel, shapeOf, valuesOf } from
 import { Grips } from "./Grips.tsx";
 import { Legend } from "./Legend.tsx";
 import { paintPoints } from "./paintPoints.ts";
-import { placeNames } from "./placeNames.ts";
+import { placeNames, writtenName } from "./placeNames.ts";
 import { createScene, type Project, type SceneView } from "./scene.ts";
 import type { SceneInk } from "./stageOrders.ts";
 
@@ -207,7 +207,7 @@ export function SolidView(props: {
         {model?.labels.map(({ id }, i) => (
           // biome-ignore lint/suspicious/noArrayIndexKey: a place may carry the same name twice
           <span key={`${id} ${i}`} className={id === pointed || id === chosen ? "name lit" : "name"}>
-            {id}
+            {writtenName(id)}
           </span>
         ))}
       </div>

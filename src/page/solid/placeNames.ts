@@ -1,4 +1,6 @@
-// Where the names over the surface stand: at their places, or a little off them where a grip or another name is in the way.
+// Where the names over the surface stand: at their places, or a little off them where a grip, another name or the side of the drawing is
+// in the way.
+import { shortName } from "../parts/shortName.ts";
 import type { Model } from "./buildModel.ts";
 import type { Project } from "./scene.ts";
 
@@ -8,6 +10,11 @@ const HALF_GRIP = 10;
 /** Half width of a letter, and what is added to a name on either side, px. */
 const HALF_LETTER = 3.6;
 const PAD = 5;
+/** Letters of a name shown over the surface. */
+const NAME = 24;
+
+/** What is written for a name. */
+export const writtenName = (id: string) => shortName(id, NAME);
 
 interface Box {
   x: number;
@@ -30,21 +37,27 @@ const WAYS = [
 const meets = (a: Box, b: Box) =>
   Math.abs(a.x - b.x) < a.halfWide + b.halfWide && Math.abs(a.y - b.y) < a.halfHigh + b.halfHigh;
 
+/** Moved inwards so far that a name that begins on the drawing is not cut off at its side. */
+function heldIn(x: number, halfWide: number, wide: number): number {
+  return x < 0 || x > wide ? x : Math.max(Math.min(x, wide - halfWide), halfWide);
+}
+
 /**
- * Middles of the names, in order; the first wins where two would overlap, and one that finds no room is left out.
- * @shape names id and place on the drawing, spots middles of grips -> one place or null for each name
+ * Middles of the names, in order; the first wins where two would overlap, and one that finds no room is left out. `wide`: of the drawing.
+ * @shape names id as written and place on the drawing, spots middles of grips -> one place or null for each name
  * @units px, y down
  */
 export function findPlaces(
   names: readonly { id: string; x: number; y: number }[],
   spots: readonly { x: number; y: number }[],
+  wide = Number.POSITIVE_INFINITY,
 ): ({ x: number; y: number } | null)[] {
   const taken: Box[] = spots.map(({ x, y }) => ({ x, y, halfWide: HALF_GRIP, halfHigh: HALF_GRIP }));
   return names.map(({ id, x, y }) => {
     const halfWide = HALF_LETTER * id.length + PAD;
     for (const [u, v] of WAYS) {
       const box: Box = {
-        x: x + u * (halfWide + HALF_GRIP + 1),
+        x: heldIn(x, halfWide, wide) + u * (halfWide + HALF_GRIP + 1),
         y: y + v * (HALF_NAME + HALF_GRIP + 1),
         halfWide,
         halfHigh: HALF_NAME,
@@ -66,8 +79,9 @@ export function placeNames(
 ): void {
   if (box === null) return;
   const places = findPlaces(
-    labels.map(({ id, at }) => ({ id, ...project(at) })),
+    labels.map(({ id, at }) => ({ id: writtenName(id), ...project(at) })),
     spots,
+    project.wide,
   );
   places.forEach((place, i) => {
     const element = box.children[i];

@@ -35,8 +35,11 @@ export interface SceneView {
   resize: () => void;
 }
 
-/** Place of a point of the model on the canvas, CSS pixels, and its depth -1…1. */
-export type Project = (at: readonly number[]) => { x: number; y: number; depth: number };
+/** Place of a point of the model on the canvas, CSS pixels, and its depth -1…1; `wide`: of the canvas. */
+export interface Project {
+  (at: readonly number[]): { x: number; y: number; depth: number };
+  wide: number;
+}
 
 function drawnLine({ id, kind, points }: ModelLine): DrawnLine {
   const segments = new Float32Array(6 * Math.max(points.length - 1, 0));
@@ -161,10 +164,11 @@ function look(parts: Parts, turned: boolean): void {
 
 function projector(parts: Parts): Project {
   const p = new Vector3();
-  return (at) => {
+  const place = (at: readonly number[]) => {
     p.set(at[0], at[1], at[2]).applyMatrix4(parts.seen ?? seenBy(sightOf(parts)));
     return { x: ((p.x + 1) / 2) * parts.size.wide, y: ((1 - p.y) / 2) * parts.size.high, depth: p.z };
   };
+  return Object.assign(place, { wide: parts.size.wide });
 }
 
 /** So many points of a surface are enough to frame it by: its edges are taken whole, by their lines. */
