@@ -104,7 +104,8 @@ const ACTS: { number: number; acts: Act[] }[] = [
     acts: [
       {
         act: "takeLayout",
-        keys: inTurn(rested, pressed("Compare layouts"), pressed(/^Take /)),
+        // "Take these seams in hand" stands there before the first layout is worked out
+        keys: inTurn(rested, pressed("Compare layouts"), pressed(/^Take (\d+|fewest) strips/)),
         words: "layout taken",
         seen: /Taken because: /,
       },
