@@ -62,6 +62,9 @@ describe("one worker for papers and corrections", () => {
     planner.stopPlan();
     expect(under()).toEqual({ writing: false, correcting: false });
     expect(bookStore.getState().papersFault?.code).toBe("cancelled");
+    planner.requestCorrection(project, 1, null);
+    planner.stopPlan();
+    expect(bookStore.getState().correctFault?.code).toBe("cancelled");
     planner.requestPlan(project);
     expect(bookStore.getState()).toMatchObject({ status: "running", papersFault: null });
     planner.stopPlan();

@@ -150,7 +150,15 @@ describe("layouts compared", () => {
     expect(weighed()?.doing).toBeNull();
     dragger.weigher.goOn();
     expect(asked.length).toBe(2);
+    // nor with a roof of the other job, nor by itself with one of its own
+    dragger.openRoofs(++run, other);
+    roof(run);
+    dragger.weigher.goOn();
+    expect(asked.length).toBe(2);
     bookStore.setState({ project });
+    dragger.openRoofs(++run, project);
+    roof(run);
+    expect(asked.length).toBe(2);
     dragger.weigher.goOn();
     expect(asked.length).toBe(3);
   });
@@ -168,6 +176,7 @@ describe("layouts compared", () => {
     expect(weighed()?.doing).toBeNull();
     dragger.weigher.goOn();
     expect(asked.length).toBe(1);
+    expect(weighed()?.doing).toBeNull();
     dragger.openRoofs(++run, project);
     roof(run);
     dragger.weigher.goOn();
