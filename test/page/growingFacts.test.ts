@@ -4,6 +4,7 @@ import { expect, it } from "vitest";
 import { loadCatalogues } from "../../src/cli/packageFiles.ts";
 import { readInput } from "../../src/cli/readInput.ts";
 import { runPlan } from "../../src/core/plan/runPlan.ts";
+import type { Finding } from "../../src/core/problem.ts";
 import type { Facts } from "../../src/core/records/facts.ts";
 import { buildModel, shapeOf, valuesOf } from "../../src/page/solid/buildModel.ts";
 import { createGiver, createTaker, type Grown } from "../../src/page/worker/growingFacts.ts";
@@ -30,6 +31,12 @@ it("a list of a hundred thousand numbers makes many slices, none above what a sl
   expect(bones).toEqual({ list: [] });
   expect(slices.length).toBeGreaterThan(10);
   expect(Math.max(...slices.map((s) => s.items.length))).toBeLessThanOrEqual(1000);
+});
+
+it("findings from before the plan stand before its own", () => {
+  const [before, own] = ["before", "own"].map((code) => ({ code }) as Finding);
+  const { added } = createGiver(null, [before])({ findings: [own] } as unknown as Facts);
+  expect(added.bones.findings).toEqual([before, own]);
 });
 
 it.each(["market-hall", "bandstand"])(
