@@ -212,6 +212,9 @@ describe("a sail in the page", { timeout: LONG }, () => {
     await page.getByText(/high by .* stop, ask the engineer/).waitFor();
     await page.getByRole("button", { name: "Write it into the log" }).click();
     await page.getByText("1 reading in the log.").waitFor();
+    // written down it is still seen to be out
+    const log = page.getByRole("table", { name: "Log, the latest first" });
+    await log.getByText(/^after step 1: high by 5\.\d kN: stop, ask the engineer$/).waitFor();
     await page.getByRole("button", { name: /^Work out corrections/ }).click();
     const result = page.getByRole("table", { name: "What the readings say, and the forecast" });
     await result.waitFor();

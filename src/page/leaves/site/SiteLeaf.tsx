@@ -1,20 +1,17 @@
 // Site: what does the roof say? Readings typed in on a tablet, with large targets; the log is kept and goes out as a file.
 
 import { setSiteLimit } from "../../actions/site/setSiteLimit.ts";
-import { strikeReading } from "../../actions/site/strikeReading.ts";
 import { listSteps } from "../../flat/rigSteps.ts";
 import { openFiles } from "../../keep/openBook.ts";
 import { logFiles, saveFile } from "../../keep/saveFiles.ts";
 import { CautionList } from "../../parts/CautionList.tsx";
-import { showTime } from "../../parts/clock.ts";
 import { NumberField, TextField } from "../../parts/Fields.tsx";
 import { FilePick } from "../../parts/FilePick.tsx";
-import { figure } from "../../parts/figure.ts";
 import { act, bookStore } from "../../store/bookStore.ts";
-import type { Reading } from "../../store/project.ts";
 import { useBook } from "../../store/useBook.ts";
 import { LeafFrame } from "../LeafFrame.tsx";
 import { Corrections } from "./Corrections.tsx";
+import { LogTable } from "./LogTable.tsx";
 import { ReadingEntry } from "./ReadingEntry.tsx";
 import { SurveyDecisions } from "./SurveyDecisions.tsx";
 
@@ -56,57 +53,6 @@ function SiteLimits() {
         onChange={(value) => act(setSiteLimit, { key: "overnight", value }, "state overnight")}
       />
     </>
-  );
-}
-
-function whatWasRead(r: Reading): string {
-  if (r.turned !== undefined)
-    return `turned: ${r.turned > 0 ? "taken in" : "let out"} ${figure(Math.abs(r.turned), 1)} mm`;
-  if (r.force !== null) return `${figure(r.force, 1)} kN`;
-  if (r.frequency !== null)
-    return `${figure(r.frequency, 2)} Hz on ${figure(r.freeLength ?? 0, 3)} m of ${figure(r.massPerMetre ?? 0, 3)} kg/m`;
-  return r.at === null ? "" : `at ${r.at.map((v) => figure(v, 3)).join(", ")} m`;
-}
-
-function Log({ log }: { log: readonly Reading[] }) {
-  if (log.length === 0) return <p className="waiting">No readings yet. The log grows here, the latest first.</p>;
-  return (
-    <table className="things log">
-      <caption>Log, the latest first</caption>
-      <thead>
-        <tr>
-          <th scope="col">When</th>
-          <th scope="col">Who</th>
-          <th scope="col">What</th>
-          <th scope="col">Reading</th>
-          <th scope="col">°C</th>
-          <th scope="col">A slip?</th>
-        </tr>
-      </thead>
-      <tbody>
-        {log
-          .map((r, index) => ({ r, index }))
-          .reverse()
-          .map(({ r, index }) => (
-            <tr key={`${r.time} ${index}`} className={r.struck ? "struck" : undefined}>
-              <td>{showTime(r.time)}</td>
-              <td>{r.by}</td>
-              <th scope="row">{r.id}</th>
-              <td>{whatWasRead(r)}</td>
-              <td>{r.temperature === null ? "" : figure(r.temperature, 0)}</td>
-              <td>
-                <button
-                  type="button"
-                  aria-label={`${r.struck ? "Count again" : "Strike"} the ${r.turned === undefined ? "reading" : "turn"} of ${r.id} of ${r.time}`}
-                  onClick={() => act(strikeReading, { index }, r.struck ? "reading counted again" : "reading struck")}
-                >
-                  {r.struck ? "Count again" : "Strike"}
-                </button>
-              </td>
-            </tr>
-          ))}
-      </tbody>
-    </table>
   );
 }
 
@@ -170,7 +116,7 @@ export function SiteLeaf() {
               stage={stage?.name ?? "the finished roof"}
             />
           )}
-          <Log log={log} />
+          <LogTable log={log} steps={steps} />
         </div>
       }
       decisions={
