@@ -1,9 +1,9 @@
 // The desk before a job is open: drop a form, begin with a starter, go on with a job that is kept here.
 import { useEffect, useState } from "react";
 import { deleteJob, type KeptJob, listJobs } from "./keep/jobStore.ts";
-import { explainFault, openKept, openNew } from "./keep/keepBook.ts";
-import { openFiles, tryOpen } from "./keep/openBook.ts";
-import { openStarter, STARTERS } from "./keep/starters.ts";
+import { explainFault, openKept } from "./keep/keepBook.ts";
+import { beginStarter, openFiles, tryOpen } from "./keep/openBook.ts";
+import { STARTERS } from "./keep/starters.ts";
 import { showTime } from "./parts/clock.ts";
 import { FilePick } from "./parts/FilePick.tsx";
 import { keepTogether } from "./parts/figure.ts";
@@ -82,11 +82,7 @@ export function Beginnings() {
         <ul className="starters">
           {STARTERS.map((s) => (
             <li key={s.name}>
-              <button
-                type="button"
-                className="open"
-                onClick={() => tryOpen(async () => openNew(await openStarter(s.name)))}
-              >
+              <button type="button" className="open" onClick={() => beginStarter(s.name)}>
                 {s.name.replaceAll("-", " ")}
               </button>
               <p>{keepTogether(s.line)}</p>

@@ -134,4 +134,22 @@ describe("rapid acts", { timeout: LONG }, () => {
     await page.getByRole("button", { name: "Undo", exact: true }).and(page.locator(":disabled")).waitFor();
     await clear(desk);
   });
+
+  it("a starter pressed twice, its mesh still on the way, is one job in the list", async () => {
+    const desk = await bench.open();
+    const { page } = desk;
+    let asked = 0;
+    await page.route(/\.obj$/, async (route) => {
+      asked++;
+      await page.waitForTimeout(500);
+      await route.continue();
+    });
+    await page.getByRole("button", { name: /bandstand/i }).dblclick();
+    await kept(page);
+    expect(asked).toBe(1);
+    await page.getByRole("button", { name: "Jobs", exact: true }).click();
+    await page.locator("ul.jobs li").first().waitFor();
+    expect(await page.locator("ul.jobs li").count()).toBe(1);
+    await clear(desk);
+  });
 });

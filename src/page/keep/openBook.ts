@@ -3,6 +3,7 @@ import { takeLog } from "../actions/site/takeLog.ts";
 import { act, bookStore, notify } from "../store/bookStore.ts";
 import { completeOpen, explainFault, openNew } from "./keepBook.ts";
 import { findLogTables, type LoadedFile, loadFiles, readFiles, readLog, readLooseFacts } from "./openFiles.ts";
+import { openStarter } from "./starters.ts";
 
 /** Opens, and says what went wrong. */
 export async function tryOpen(open: () => Promise<void>): Promise<void> {
@@ -13,6 +14,17 @@ export async function tryOpen(open: () => Promise<void>): Promise<void> {
     const words = error instanceof Error ? error.message : String(error);
     notify("open", error instanceof DOMException ? explainFault(error) : words, true);
   }
+}
+
+/** The starter whose mesh is on its way. */
+let coming: string | null = null;
+
+/** Begins a job with a starter; pressed again while its mesh is on its way, it is still one job. */
+export async function beginStarter(name: string): Promise<void> {
+  if (coming === name) return;
+  coming = name;
+  await tryOpen(async () => openNew(await openStarter(name)));
+  coming = null;
 }
 
 /** Readings dropped onto an open job go into its log. @returns whether they were that */
