@@ -81,9 +81,9 @@ export function LooseFacts() {
       {files !== undefined && (
         <>
           <div className="tools">
-            <button type="button" className="main" onClick={async () => saveFile(await zipFiles(`${stem}.zip`, files))}>
+            <PressButton className="main" onPress={async () => saveFile(await zipFiles(`${stem}.zip`, files))}>
               Save all papers (zip)
-            </button>
+            </PressButton>
           </div>
           {shown !== null && <Preview file={files.find((f) => f.path === shown)} />}
           <PaperList files={files} shown={shown} onShow={setShown} />

@@ -1,5 +1,7 @@
 // The list of papers, those to print first.
+
 import { saveFile } from "../../keep/saveFiles.ts";
+import { PressButton } from "../../parts/PressButton.tsx";
 import type { PaperFile } from "../../store/bookStore.ts";
 
 /** What a file is, by its path; the list of papers is parted by the groups and keeps their order. */
@@ -87,9 +89,9 @@ export function PaperList({
               </th>
               <td>{sizeOf(f.bytes.length)}</td>
               <td>
-                <button type="button" aria-label={`Save ${f.path}`} onClick={() => saveFile(f)}>
+                <PressButton label={`Save ${f.path}`} onPress={() => saveFile(f)}>
                   Save
-                </button>
+                </PressButton>
               </td>
             </tr>
           ))}

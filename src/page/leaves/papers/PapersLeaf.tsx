@@ -63,17 +63,16 @@ export function PapersLeaf() {
       }
       tools={
         <>
-          <button
-            type="button"
+          <PressButton
             className="main"
             disabled={files === undefined}
-            onClick={async () => files && saveFile(await zipFiles(`${stem}.zip`, files))}
+            onPress={async () => files && saveFile(await zipFiles(`${stem}.zip`, files))}
           >
             Save all papers (zip)
-          </button>
-          <button type="button" onClick={async () => project && saveFile(await packJob(project))}>
+          </PressButton>
+          <PressButton onPress={async () => project && saveFile(await packJob(project))}>
             Save the job with its mesh
-          </button>
+          </PressButton>
         </>
       }
       stage={

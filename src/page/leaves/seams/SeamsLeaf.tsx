@@ -3,6 +3,7 @@ import { useEffect } from "react";
 import { PairSheet } from "../../flat/PairSheet.tsx";
 import { FigureTable } from "../../parts/FigureTable.tsx";
 import { figure } from "../../parts/figure.ts";
+import { PressButton } from "../../parts/PressButton.tsx";
 import { ThingRow } from "../../parts/ThingRow.tsx";
 import { Waiting } from "../../parts/Waiting.tsx";
 import { WiderCloth } from "../../parts/WiderCloth.tsx";
@@ -52,18 +53,17 @@ function CompareButton() {
   const ready = useBook((b) => isSameWork(b.grips?.of, b.project) && b.facts?.seams !== undefined);
   const comparing = useBook((b) => isSameWork(b.weighed?.of, b.project));
   return (
-    <button
-      type="button"
-      aria-pressed={comparing}
+    <PressButton
+      pressed={comparing}
       disabled={!ready}
-      onClick={() => {
+      onPress={() => {
         if (!comparing) return weigher.begin();
         weigher.stop();
         bookStore.setState({ weighed: null });
       }}
     >
       {comparing ? "Back to the surface" : "Compare layouts"}
-    </button>
+    </PressButton>
   );
 }
 
