@@ -47,18 +47,18 @@ function viewAt(frame: { ms: number }) {
 }
 
 describe("pace", () => {
-  it("where frames come fast all is drawn, turned or still", () => {
-    const { pace, pass, drawn } = viewAt({ ms: 17 });
+  it.each([17, 33.4])("frames of %d ms, 30 a second or more: all is drawn, turned or still", (ms) => {
+    const { pace, pass, drawn } = viewAt({ ms });
     for (let i = 0; i < 20; i++) {
       pace.move();
-      pass(17);
+      pass(ms);
     }
     pass(2000);
     expect(drawn.length).toBeGreaterThanOrEqual(20);
     expect(new Set(drawn)).toEqual(new Set(["all"]));
   });
 
-  it.each([60, 120, 400, 1500])(
+  it.each([40, 60, 120, 400, 1500])(
     "frames of %d ms: less while it is turned, all at the end, and then nothing more",
     (ms) => {
       const { pace, pass, drawn } = viewAt({ ms });

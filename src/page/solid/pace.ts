@@ -1,7 +1,7 @@
 // How much of the surface is drawn: less while it is turned where frames come slowly, all of it once it is still.
 
-/** A frame that takes longer than this is slow, ms. */
-const SLOW = 50;
+/** A frame that takes longer than this is slow, ms: fewer than 30 a second, with what a screen's beat is off by. */
+const SLOW = 35;
 /** Turned no more since this long, it is still, ms. */
 const STILL = 250;
 
