@@ -88,6 +88,9 @@ describe("names too long for their place", () => {
     expect(findPlaces([{ id, x: 390, y: 60 }], [], 400)).toEqual([{ x: 400 - half, y: 60 }]);
     expect(findPlaces([{ id, x: 200, y: 60 }], [], 400)).toEqual([{ x: 200, y: 60 }]);
     expect(findPlaces([{ id, x: -30, y: 60 }], [], 400)).toEqual([{ x: -30, y: 60 }]);
+    // giving way sideways neither
+    const ways = [0, -1, 1].map((v) => ({ x: 390, y: 60 + 20 * v }));
+    expect(findPlaces([{ id, x: 390, y: 60 }], ways, 400)).toEqual([{ x: 400 - half - (half + 11), y: 60 }]);
   });
 
   it("beginning and end stay, letters made of several signs whole", () => {

@@ -1,4 +1,5 @@
 // Names of any length where there is little room: the beginning and the end stay, by which names of one kind differ.
+import { cutMiddle } from "../../core/papers/words/cutMiddle.ts";
 
 const letters = new Intl.Segmenter("en", { granularity: "grapheme" });
 
@@ -8,5 +9,5 @@ export function shortName(name: string, most: number): string {
   const all = Array.from(letters.segment(name), (s) => s.segment);
   if (all.length <= most) return name;
   const head = Math.ceil((most - 1) / 2);
-  return `${all.slice(0, head).join("")}…${all.slice(all.length - (most - 1 - head)).join("")}`;
+  return cutMiddle(all, head, most - 1 - head);
 }

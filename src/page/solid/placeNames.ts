@@ -37,11 +37,6 @@ const WAYS = [
 const meets = (a: Box, b: Box) =>
   Math.abs(a.x - b.x) < a.halfWide + b.halfWide && Math.abs(a.y - b.y) < a.halfHigh + b.halfHigh;
 
-/** Moved inwards so far that a name that begins on the drawing is not cut off at its side. */
-function heldIn(x: number, halfWide: number, wide: number): number {
-  return x < 0 || x > wide ? x : Math.max(Math.min(x, wide - halfWide), halfWide);
-}
-
 /**
  * Middles of the names, in order; the first wins where two would overlap, and one that finds no room is left out. `wide`: of the drawing.
  * @shape names id as written and place on the drawing, spots middles of grips -> one place or null for each name
@@ -55,9 +50,12 @@ export function findPlaces(
   const taken: Box[] = spots.map(({ x, y }) => ({ x, y, halfWide: HALF_GRIP, halfHigh: HALF_GRIP }));
   return names.map(({ id, x, y }) => {
     const halfWide = HALF_LETTER * id.length + PAD;
+    // moved inwards so far that it is not cut off at a side; what is turned out of sight is not brought back
+    const seen = x >= 0 && x <= wide;
+    const held = (at: number) => (seen ? Math.max(Math.min(at, wide - halfWide), halfWide) : at);
     for (const [u, v] of WAYS) {
       const box: Box = {
-        x: heldIn(x, halfWide, wide) + u * (halfWide + HALF_GRIP + 1),
+        x: held(held(x) + u * (halfWide + HALF_GRIP + 1)),
         y: y + v * (HALF_NAME + HALF_GRIP + 1),
         halfWide,
         halfHigh: HALF_NAME,

@@ -15,6 +15,7 @@ import {
 } from "pdf-lib";
 import { PlanError } from "../../../problem.ts";
 import type { Vec2 } from "../../../records/facts.ts";
+import { cutMiddle } from "../../words/cutMiddle.ts";
 import { plainText } from "../../words/plainText.ts";
 import { lineAdvance, lineGlyphs } from "./glyphs.ts";
 
@@ -37,14 +38,10 @@ export function textWidth(text: string, font: PDFFont, size: number): number {
   return (lineAdvance(text, font) * size) / MM;
 }
 
-/** A text with its middle left out; three fifths of the letters that stay are its end. */
-function cutMiddle(letters: string[], kept: number): string {
+/** So many letters of a text; three fifths of them are its end. */
+function keepLetters(letters: readonly string[], kept: number): string {
   const tail = Math.ceil(0.6 * kept);
-  const end = tail === 0 ? "" : letters.slice(-tail).join("").trimStart();
-  return `${letters
-    .slice(0, kept - tail)
-    .join("")
-    .trimEnd()}…${end}`;
+  return cutMiddle(letters, kept - tail, tail);
 }
 
 /**
@@ -58,10 +55,10 @@ export function fitText(text: string, font: PDFFont, size: number, width: number
   let high = letters.length - 1;
   while (low < high) {
     const half = Math.ceil((low + high) / 2);
-    if (textWidth(cutMiddle(letters, half), font, size) <= width) low = half;
+    if (textWidth(keepLetters(letters, half), font, size) <= width) low = half;
     else high = half - 1;
   }
-  return cutMiddle(letters, low);
+  return keepLetters(letters, low);
 }
 
 /** A number and its unit, a sign and its number: parted by the end of a line they are misread. */
